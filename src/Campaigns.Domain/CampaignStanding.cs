@@ -1,0 +1,21 @@
+namespace Campaigns.Domain;
+
+/// <summary>A campaign as it stands: every planned experiment with its result, corrected over the family.</summary>
+/// <param name="Campaign">The campaign.</param>
+/// <param name="Experiments">Every experiment, in the plan's order.</param>
+/// <param name="FamilySize">Hypotheses that the correction counts.</param>
+/// <param name="LastReview">The latest stored review; null before the first.</param>
+/// <param name="ResultsSinceReview">Experiments tested after the latest review.</param>
+public sealed record CampaignStanding(
+    Campaign Campaign,
+    IReadOnlyList<ExperimentResult> Experiments,
+    int FamilySize,
+    ReviewHead? LastReview,
+    int ResultsSinceReview)
+{
+    /// <summary>Experiments with a test result.</summary>
+    public int TestedCount => Experiments.Count(e => e.P is not null);
+
+    /// <summary>Experiments that survive the correction.</summary>
+    public int SurvivorCount => Experiments.Count(e => e.Survives == true);
+}

@@ -1,0 +1,49 @@
+using Campaigns.Statistics.Probability;
+
+namespace Campaigns.Domain;
+
+/// <summary>One experiment as it stands: its plan, its test and what the campaign's correction makes of it.</summary>
+public sealed record ExperimentResult
+{
+    /// <summary>What was planned.</summary>
+    public required PlannedExperiment Plan { get; init; }
+
+    /// <summary>Place in the plan, from 1.</summary>
+    public required int Position { get; init; }
+
+    /// <summary>Where the experiment stands.</summary>
+    public required ExperimentStatus Status { get; init; }
+
+    /// <summary>Groups with at least one value.</summary>
+    public int GroupCount { get; init; }
+
+    /// <summary>Values at hand, missing ones left out.</summary>
+    public int ObservationCount { get; init; }
+
+    /// <summary>The test statistic; null without a result.</summary>
+    public double? Statistic { get; init; }
+
+    /// <summary>First degrees of freedom; null without a result or where the test has none.</summary>
+    public double? Df1 { get; init; }
+
+    /// <summary>Second degrees of freedom; null without a result or where the test has none.</summary>
+    public double? Df2 { get; init; }
+
+    /// <summary>The test's p-value; null without a result (in the family it then counts as 1).</summary>
+    public PValue? P { get; init; }
+
+    /// <summary>The p-value adjusted over the family; null without a result.</summary>
+    public PValue? AdjustedP { get; init; }
+
+    /// <summary>Whether the adjusted p-value is at most the level; null without a result.</summary>
+    public bool? Survives { get; init; }
+
+    /// <summary>Eta squared of the sample; null without a result.</summary>
+    public double? EtaSquared { get; init; }
+
+    /// <summary>Omega squared, possibly negative; null without a result.</summary>
+    public double? OmegaSquared { get; init; }
+
+    /// <summary>Reasons of the amendments by which values came in after the test; empty where there are none.</summary>
+    public IReadOnlyList<string> Amendments { get; init; } = [];
+}

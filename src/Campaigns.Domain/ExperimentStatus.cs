@@ -1,0 +1,69 @@
+namespace Campaigns.Domain;
+
+/// <summary>Where an experiment stands. The words in <see cref="ExperimentStatusWords"/> are frozen: files and scripts rely on them.</summary>
+public enum ExperimentStatus
+{
+    /// <summary>Registered, no values yet.</summary>
+    Planned,
+
+    /// <summary>Some of the planned values are there.</summary>
+    Incomplete,
+
+    /// <summary>All planned values are there; not yet tested.</summary>
+    Ready,
+
+    /// <summary>Tested, with a result.</summary>
+    Tested,
+
+    /// <summary>Tested; fewer than two groups hold values.</summary>
+    TooFewGroups,
+
+    /// <summary>Tested; no group holds more than one value.</summary>
+    NoReplication,
+
+    /// <summary>Tested; all values are the same.</summary>
+    ConstantResponse,
+
+    /// <summary>Tested; no variation inside any group while the groups differ.</summary>
+    ZeroWithinVariation,
+}
+
+/// <summary>The frozen words and the plain sentences of <see cref="ExperimentStatus"/>.</summary>
+public static class ExperimentStatusWords
+{
+    private static readonly (ExperimentStatus Status, string Word, string Sentence)[] Words =
+    [
+        (ExperimentStatus.Planned, "planned", "registered, no values yet"),
+        (ExperimentStatus.Incomplete, "incomplete", "some of the planned values are missing"),
+        (ExperimentStatus.Ready, "ready", "complete, not yet tested"),
+        (ExperimentStatus.Tested, "tested", "tested"),
+        (ExperimentStatus.TooFewGroups, "too-few-groups", "no test: fewer than two groups hold values"),
+        (ExperimentStatus.NoReplication, "no-replication", "no test: no group holds more than one value"),
+        (ExperimentStatus.ConstantResponse, "constant-response", "no test: all values are the same"),
+        (ExperimentStatus.ZeroWithinVariation, "zero-within-variance", "no test: the values inside every group are all the same while the groups differ, so the measurement is too coarse to show its own variation"),
+    ];
+
+    /// <summary>The frozen word of a status.</summary>
+    public static string Word(this ExperimentStatus status) => Words[(int)status].Word;
+
+    /// <summary>The status in a plain sentence, without a full stop.</summary>
+    public static string Sentence(this ExperimentStatus status) => Words[(int)status].Sentence;
+
+    /// <summary>The status of a frozen word.</summary>
+    /// <exception cref="ArgumentException">No status has this word.</exception>
+    public static ExperimentStatus Parse(string word)
+    {
+        foreach ((ExperimentStatus status, string known, _) in Words)
+        {
+            if (known == word)
+            {
+                return status;
+            }
+        }
+
+        throw new ArgumentException($"'{word}' is no status of an experiment.", nameof(word));
+    }
+
+    /// <summary>Whether the experiment's test was run, with or without a result; it is then closed to more data.</summary>
+    public static bool WasTested(this ExperimentStatus status) => status >= ExperimentStatus.Tested;
+}

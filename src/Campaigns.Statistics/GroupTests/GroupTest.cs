@@ -1,0 +1,25 @@
+namespace Campaigns.Statistics.GroupTests;
+
+/// <summary>An omnibus test of "all group means are equal": one sealed class in one file, and one line in <see cref="GroupTestRegistry"/>.</summary>
+public abstract class GroupTest
+{
+    /// <summary>The short, frozen, lower-case word by which plans, files and commands name the test.</summary>
+    public abstract string Key { get; }
+
+    /// <summary>The test's name in the field's words.</summary>
+    public abstract string Name { get; }
+
+    /// <summary>The hypothesis that a small p-value speaks against.</summary>
+    public abstract string Hypothesis { get; }
+
+    /// <summary>What must hold for the p-value to mean what it says.</summary>
+    public abstract string Assumes { get; }
+
+    /// <summary>Where the method was published.</summary>
+    public abstract string Source { get; }
+
+    /// <summary>Tests one experiment.</summary>
+    /// <param name="sample">Its observations; at least the group count must be set.</param>
+    /// <returns><see cref="Tested"/>, or <see cref="NotTestable"/> with the reason.</returns>
+    public abstract TestOutcome Test(GroupedSample sample);
+}

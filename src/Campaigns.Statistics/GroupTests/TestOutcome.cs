@@ -1,0 +1,47 @@
+using Campaigns.Statistics.Probability;
+
+namespace Campaigns.Statistics.GroupTests;
+
+/// <summary>What an omnibus test of one experiment gave: a statistic with its p-value, or the reason why there is none.</summary>
+/// <param name="GroupCount">Groups that hold at least one value.</param>
+/// <param name="ObservationCount">Values used, missing ones left out.</param>
+public abstract record TestOutcome(int GroupCount, int ObservationCount);
+
+/// <summary>A test that could be computed.</summary>
+/// <param name="GroupCount">Groups that hold at least one value.</param>
+/// <param name="ObservationCount">Values used.</param>
+/// <param name="Statistic">The test statistic (F for the F test); finite.</param>
+/// <param name="Df1">First degrees of freedom; null where the test has none.</param>
+/// <param name="Df2">Second degrees of freedom; null where the test has none.</param>
+/// <param name="P">The upper-tail p-value with its logarithm.</param>
+/// <param name="Variation">The table of variation of the one-way layout.</param>
+public sealed record Tested(
+    int GroupCount,
+    int ObservationCount,
+    double Statistic,
+    double? Df1,
+    double? Df2,
+    PValue P,
+    VariationTable Variation) : TestOutcome(GroupCount, ObservationCount);
+
+/// <summary>A test that has no result; the hypothesis stays in its family and counts there as p = 1.</summary>
+/// <param name="GroupCount">Groups that hold at least one value.</param>
+/// <param name="ObservationCount">Values at hand.</param>
+/// <param name="Reason">Why there is no result.</param>
+public sealed record NotTestable(int GroupCount, int ObservationCount, NotTestableReason Reason) : TestOutcome(GroupCount, ObservationCount);
+
+/// <summary>Why an experiment's data cannot give a test result.</summary>
+public enum NotTestableReason
+{
+    /// <summary>Fewer than two groups hold values.</summary>
+    TooFewGroups,
+
+    /// <summary>No group holds more than one value, so nothing tells the variation within groups.</summary>
+    NoReplication,
+
+    /// <summary>All values of the experiment are the same.</summary>
+    ConstantResponse,
+
+    /// <summary>The values inside every group are all the same while the groups differ: the measurement is too coarse to show its own variation.</summary>
+    ZeroWithinVariation,
+}
