@@ -1,0 +1,112 @@
+using Campaigns.Catalog.Providers;
+using Microsoft.Data.Sqlite;
+
+namespace Campaigns.Catalog;
+
+/// <summary>An open catalog: one connection, on which everything of one command happens.</summary>
+/// <remarks>
+/// What is done once per experiment goes through prepared statements; every other question may use <see cref="Context"/>,
+/// which is built when it is first asked for, because building it costs a third of a second that a small command should not pay.
+/// </remarks>
+public sealed class Catalog : IDisposable
+{
+    private CatalogContext? _context;
+    private int _depth;
+
+    private Catalog(SqliteConnection connection, string path, TimeProvider clock)
+    {
+        Connection = connection;
+        Path = path;
+        Clock = clock;
+    }
+
+    /// <summary>The file.</summary>
+    public string Path { get; }
+
+    /// <summary>Where instants come from.</summary>
+    public TimeProvider Clock { get; }
+
+    /// <summary>The catalog through EF Core, on the same connection.</summary>
+    public CatalogContext Context => _context ??= CatalogContext.On(Connection);
+
+    internal SqliteConnection Connection { get; }
+
+    /// <summary>The instant to be stored now, in microseconds since 1970 UTC.</summary>
+    internal long Now => Instants.ToMicroseconds(Clock.GetUtcNow());
+
+    /// <summary>Opens a catalog that exists.</summary>
+    /// <param name="path">The file.</param>
+    /// <param name="clock">Where instants come from.</param>
+    /// <exception cref="CatalogException">Missing, unreadable, locked, damaged, foreign, older or newer.</exception>
+    public static Catalog Open(string path, TimeProvider clock)
+    {
+        ArgumentNullException.ThrowIfNull(path);
+        return new Catalog(SqliteCatalogFile.Open(path), path, clock);
+    }
+
+    /// <summary>Opens a catalog, creating an empty one where there is no file.</summary>
+    /// <inheritdoc cref="Open"/>
+    public static Catalog OpenOrCreate(string path, TimeProvider clock)
+    {
+        if (!File.Exists(path) && !Directory.Exists(path))
+        {
+            SqliteCatalogFile.Create(path);
+        }
+
+        return Open(path, clock);
+    }
+
+    /// <summary>Does a piece of work in one transaction: all of it is kept, or nothing. Inside another one it joins that.</summary>
+    /// <param name="work">The work.</param>
+    /// <exception cref="CatalogException">The catalog is locked, full, read-only or damaged; nothing was changed.</exception>
+    public T Change<T>(Func<T> work)
+    {
+        ArgumentNullException.ThrowIfNull(work);
+        if (_depth > 0)
+        {
+            return work();
+        }
+
+        Run("BEGIN IMMEDIATE");
+        _depth++;
+        try
+        {
+            T result = work();
+            Run("COMMIT");
+            return result;
+        }
+        catch
+        {
+            RollBack();
+            throw;
+        }
+        finally
+        {
+            _depth--;
+        }
+    }
+
+    /// <inheritdoc/>
+    public void Dispose()
+    {
+        _context?.Dispose();
+        Connection.Dispose();
+    }
+
+    internal SqliteStatement Prepare(string sql) => new(Connection, sql);
+
+    private void Run(string sql)
+    {
+        using SqliteStatement statement = Prepare(sql);
+        statement.Run();
+    }
+
+    /// <summary>Rolls back; where SQLite has done so by itself (a full disk, a damaged page) there is nothing left to do.</summary>
+    private void RollBack()
+    {
+        if (SQLitePCL.raw.sqlite3_get_autocommit(Connection.Handle) == 0)
+        {
+            Run("ROLLBACK");
+        }
+    }
+}

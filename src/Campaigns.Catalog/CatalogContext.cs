@@ -1,0 +1,60 @@
+using System.Data.Common;
+using Campaigns.Catalog.Rows;
+using Microsoft.EntityFrameworkCore;
+using Microsoft.EntityFrameworkCore.Metadata.Conventions;
+
+namespace Campaigns.Catalog;
+
+/// <summary>The catalog's model: the source of its schema and migrations, and the way by which all but the hottest questions are asked.</summary>
+/// <param name="options">Provider and connection.</param>
+public sealed class CatalogContext(DbContextOptions<CatalogContext> options) : DbContext(options)
+{
+    /// <summary>Campaigns.</summary>
+    public DbSet<CampaignRow> Campaigns => Set<CampaignRow>();
+
+    /// <summary>Experiments.</summary>
+    public DbSet<ExperimentRow> Experiments => Set<ExperimentRow>();
+
+    /// <summary>Groups of every set.</summary>
+    public DbSet<GroupRow> Groups => Set<GroupRow>();
+
+    /// <summary>Loaded files.</summary>
+    public DbSet<LoadRow> Loads => Set<LoadRow>();
+
+    /// <summary>Packed measurements.</summary>
+    public DbSet<MeasurementRow> Measurements => Set<MeasurementRow>();
+
+    /// <summary>Test runs.</summary>
+    public DbSet<TestRunRow> TestRuns => Set<TestRunRow>();
+
+    /// <summary>Test results.</summary>
+    public DbSet<TestResultRow> TestResults => Set<TestResultRow>();
+
+    /// <summary>Reviews.</summary>
+    public DbSet<ReviewRow> Reviews => Set<ReviewRow>();
+
+    /// <summary>Makes a context on a connection that is open already and stays its owner's.</summary>
+    /// <param name="connection">An open SQLite connection.</param>
+    /// <param name="migrationsAssembly">Name of the assembly that holds the migrations; null where none are run.</param>
+    public static CatalogContext On(DbConnection connection, string? migrationsAssembly = null) =>
+        new(new DbContextOptionsBuilder<CatalogContext>()
+            .UseSqlite(connection, sqlite => _ = migrationsAssembly is null ? sqlite : sqlite.MigrationsAssembly(migrationsAssembly))
+            .UseQueryTrackingBehavior(QueryTrackingBehavior.NoTracking)
+            .Options);
+
+    /// <inheritdoc/>
+    protected override void ConfigureConventions(ModelConfigurationBuilder configurationBuilder)
+    {
+        ArgumentNullException.ThrowIfNull(configurationBuilder);
+
+        // An index behind every foreign key would serve deletions of parents alone, and nothing here is deleted; the useful ones are named in Mapping.
+        configurationBuilder.Conventions.Remove<ForeignKeyIndexConvention>();
+    }
+
+    /// <inheritdoc/>
+    protected override void OnModelCreating(ModelBuilder modelBuilder)
+    {
+        ArgumentNullException.ThrowIfNull(modelBuilder);
+        modelBuilder.ApplyConfigurationsFromAssembly(typeof(CatalogContext).Assembly);
+    }
+}

@@ -1,0 +1,117 @@
+using Campaigns.Catalog.Providers;
+using Campaigns.Domain;
+using Campaigns.Statistics.Probability;
+
+namespace Campaigns.Catalog.Plans;
+
+/// <summary>Campaigns in the catalog: found, opened, sealed.</summary>
+/// <param name="catalog">The open catalog.</param>
+public sealed class CampaignStore(Catalog catalog)
+{
+    private const string Columns =
+        "id, code, title, purpose, error_rate, level, correction, default_test, default_follow_up, is_exploratory, opened_at, sealed_at, plan_digest";
+
+    /// <summary>Every campaign, in the order in which they were opened.</summary>
+    public IReadOnlyList<StoredCampaign> All()
+    {
+        using SqliteStatement select = catalog.Prepare($"SELECT {Columns} FROM campaigns ORDER BY id");
+        var campaigns = new List<StoredCampaign>();
+        while (select.Read())
+        {
+            campaigns.Add(Row(select));
+        }
+
+        return campaigns;
+    }
+
+    /// <summary>The campaign with a code; null where there is none.</summary>
+    public StoredCampaign? Find(string code)
+    {
+        using SqliteStatement select = catalog.Prepare($"SELECT {Columns} FROM campaigns WHERE code = ?1");
+        select.Bind(1, code);
+        return select.Read() ? Row(select) : null;
+    }
+
+    /// <summary>The campaign with a code.</summary>
+    /// <exception cref="RefusedException">There is none; the message names the nearest.</exception>
+    public StoredCampaign Get(string code) => Find(code) ?? throw NotFound(code);
+
+    /// <summary>Opens a campaign.</summary>
+    /// <exception cref="RefusedException">The code is taken.</exception>
+    public StoredCampaign Open(Campaign campaign)
+    {
+        ArgumentNullException.ThrowIfNull(campaign);
+        return catalog.Change(() =>
+        {
+            if (Find(campaign.Code) is not null)
+            {
+                throw new RefusedException($"There is a campaign '{campaign.Code}' already; choose another code.");
+            }
+
+            using SqliteStatement next = catalog.Prepare("SELECT coalesce(max(id), 0) + 1 FROM campaigns");
+            next.Read();
+            long id = next.Integer(0);
+            next.Reset();
+            using SqliteStatement insert = catalog.Prepare($"INSERT INTO campaigns ({Columns}) VALUES (?1, ?2, ?3, ?4, ?5, ?6, ?7, ?8, ?9, ?10, ?11, NULL, NULL)");
+            insert.Bind(1, id).Bind(2, campaign.Code).Bind(3, campaign.Title).Bind(4, campaign.Purpose)
+                .Bind(5, campaign.ErrorRate.Word()).Bind(6, campaign.Level.Value).Bind(7, campaign.Correction)
+                .Bind(8, campaign.DefaultTest).Bind(9, campaign.DefaultFollowUp)
+                .Bind(10, campaign.IsExploratory ? 1L : 0L).Bind(11, catalog.Now).Run();
+            return Get(campaign.Code);
+        });
+    }
+
+    /// <summary>Marks an open campaign as one whose experiments come from its data.</summary>
+    internal void MarkExploratory(long id)
+    {
+        using SqliteStatement update = catalog.Prepare("UPDATE campaigns SET is_exploratory = 1 WHERE id = ?1");
+        update.Bind(1, id).Run();
+    }
+
+    /// <summary>Fixes the plan: level, correction and family stay as they are from here on.</summary>
+    /// <returns>The sealed campaign.</returns>
+    /// <exception cref="RefusedException">Sealed already, or without experiments.</exception>
+    public StoredCampaign Seal(string code) => catalog.Change(() =>
+    {
+        StoredCampaign stored = Get(code);
+        if (stored.Campaign.IsSealed)
+        {
+            throw new RefusedException(FormattableString.Invariant($"The campaign '{code}' is sealed already, since {stored.Campaign.SealedAt:yyyy-MM-dd HH:mm:ss} UTC."));
+        }
+
+        IReadOnlyList<PlannedExperiment> plan = new PlanStore(catalog).Read(stored.Id);
+        if (plan.Count == 0)
+        {
+            throw new RefusedException($"The campaign '{code}' has no experiments to seal; register them with 'campaigns plan {code} FILE', or load measurements to explore without a plan.");
+        }
+
+        using SqliteStatement update = catalog.Prepare("UPDATE campaigns SET sealed_at = ?2, plan_digest = ?3 WHERE id = ?1");
+        update.Bind(1, stored.Id).Bind(2, catalog.Now).Bind(3, PlanDigest.Of(stored.Campaign, plan)).Run();
+        return Get(code);
+    });
+
+    private RefusedException NotFound(string code)
+    {
+        string[] codes = [.. All().Select(c => c.Campaign.Code)];
+        string hint = codes.Length == 0 ? "the catalog holds none yet"
+            : Nearest.Of(code, codes) is { } near ? $"did you mean '{near}'?"
+            : "'campaigns list' shows those there are";
+        return new RefusedException($"There is no campaign '{code}' in the catalog '{catalog.Path}'; {hint}.");
+    }
+
+    private static StoredCampaign Row(SqliteStatement row) => new(row.Integer(0), new Campaign
+    {
+        Code = row.Text(1),
+        Title = row.Text(2),
+        Purpose = row.Text(3),
+        ErrorRate = ErrorRateWords.Parse(row.Text(4)) ?? throw new CatalogException("The catalog holds an error rate that this program does not know."),
+        Level = new SignificanceLevel(row.Real(5)),
+        Correction = row.Text(6),
+        DefaultTest = row.Text(7),
+        DefaultFollowUp = row.Text(8),
+        IsExploratory = row.Integer(9) != 0,
+        OpenedAt = Instants.FromMicroseconds(row.Integer(10)),
+        SealedAt = row.NullableInteger(11) is { } at ? Instants.FromMicroseconds(at) : null,
+        PlanDigest = row.NullableText(12),
+    });
+}

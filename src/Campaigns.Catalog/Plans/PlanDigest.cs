@@ -1,0 +1,72 @@
+using System.Buffers.Binary;
+using System.Security.Cryptography;
+using System.Text;
+using Campaigns.Domain;
+
+namespace Campaigns.Catalog.Plans;
+
+/// <summary>The SHA-256 of a plan: what the sealed record can be held against.</summary>
+/// <remarks>
+/// Every field goes in as its length and its UTF-8 text, after a word that names what follows, so that no two different plans share an encoding.
+/// An exploratory campaign has no plan; its digest covers level, correction and tests alone.
+/// </remarks>
+internal static class PlanDigest
+{
+    public static string Of(Campaign campaign, IReadOnlyList<PlannedExperiment> experiments)
+    {
+        using var hash = IncrementalHash.CreateHash(HashAlgorithmName.SHA256);
+        Add(hash, "campaigns plan 1");
+        Add(hash, campaign.Code);
+        Add(hash, campaign.Title);
+        Add(hash, campaign.Purpose);
+        Add(hash, campaign.ErrorRate.Word());
+        Add(hash, Number(campaign.Level.Value));
+        Add(hash, campaign.Correction);
+        Add(hash, campaign.DefaultTest);
+        Add(hash, campaign.DefaultFollowUp);
+        Add(hash, campaign.IsExploratory ? "exploratory" : "planned");
+        if (!campaign.IsExploratory)
+        {
+            foreach (PlannedExperiment experiment in experiments)
+            {
+                Add(hash, experiment);
+            }
+        }
+
+        return Convert.ToHexStringLower(hash.GetHashAndReset());
+    }
+
+    private static void Add(IncrementalHash hash, PlannedExperiment experiment)
+    {
+        Add(hash, "experiment");
+        Add(hash, experiment.Code);
+        Add(hash, experiment.Title);
+        Add(hash, experiment.Response);
+        Add(hash, experiment.Unit);
+        Add(hash, FormattableString.Invariant($"{experiment.Groups.Count}"));
+        foreach (string group in experiment.Groups)
+        {
+            Add(hash, group);
+        }
+
+        Add(hash, experiment.Control ?? "");
+        Add(hash, experiment.Test);
+        Add(hash, experiment.FollowUp);
+        Add(hash, FormattableString.Invariant($"{experiment.Replicates}"));
+        Add(hash, Number(experiment.SmallestEffect));
+        Add(hash, Number(experiment.AssumedStandardDeviation));
+        Add(hash, Number(experiment.Weight));
+        Add(hash, experiment.Family ?? "");
+    }
+
+    private static string Number(double? value) => FormattableString.Invariant($"{value:R}");
+
+    private static void Add(IncrementalHash hash, string text)
+    {
+        byte[] bytes = Encoding.UTF8.GetBytes(text);
+        Span<byte> length = stackalloc byte[8];
+        BinaryPrimitives.WriteInt64LittleEndian(length, bytes.Length);
+        hash.AppendData(length);
+        hash.AppendData(bytes);
+    }
+}

@@ -1,0 +1,117 @@
+using Campaigns.Catalog.Providers;
+using Campaigns.Domain;
+
+namespace Campaigns.Catalog.Plans;
+
+/// <summary>What registering a plan file did.</summary>
+/// <param name="Added">Experiments that are new.</param>
+/// <param name="Changed">Experiments that were registered otherwise before.</param>
+/// <param name="Unchanged">Experiments that stand as they were.</param>
+public sealed record PlanChange(int Added, int Changed, int Unchanged);
+
+/// <summary>The plans in the catalog.</summary>
+/// <param name="catalog">The open catalog.</param>
+public sealed class PlanStore(Catalog catalog)
+{
+    internal const string ExperimentColumns =
+        "id, campaign_id, code, title, response, unit, group_set_id, groups_are_planned, control, test, follow_up, replicates, smallest_effect, assumed_sd, weight, family";
+
+    /// <summary>The planned experiments of a campaign, in the plan's order; where the plan names no groups, those that came with the data are given.</summary>
+    /// <param name="campaignId">The campaign.</param>
+    public IReadOnlyList<PlannedExperiment> Read(long campaignId)
+    {
+        using var sets = new GroupSets(catalog, campaignId);
+        using SqliteStatement select = catalog.Prepare($"SELECT {ExperimentColumns} FROM experiments WHERE campaign_id = ?1 ORDER BY id");
+        select.Bind(1, campaignId);
+        var plan = new List<PlannedExperiment>();
+        while (select.Read())
+        {
+            plan.Add(Row(select, sets));
+        }
+
+        return plan;
+    }
+
+    /// <summary>Registers experiments, or changes registered ones, while the plan is open.</summary>
+    /// <param name="code">The campaign.</param>
+    /// <param name="experiments">Those to add or to change, each code once.</param>
+    /// <exception cref="RefusedException">The campaign is sealed, or its experiments come from its data.</exception>
+    public PlanChange Register(string code, IReadOnlyList<PlannedExperiment> experiments) => catalog.Change(() =>
+    {
+        StoredCampaign stored = new CampaignStore(catalog).Get(code);
+        if (stored.Campaign.IsSealed)
+        {
+            throw new RefusedException(FormattableString.Invariant($"The plan of '{code}' is sealed since {stored.Campaign.SealedAt:yyyy-MM-dd HH:mm:ss} UTC and takes no changes; open a new campaign for new experiments."));
+        }
+
+        if (stored.Campaign.IsExploratory)
+        {
+            throw new RefusedException($"The experiments of '{code}' come from measurements that are loaded already, so a plan would come after the data; open a new campaign for a plan.");
+        }
+
+        return Write(stored.Id, experiments);
+    });
+
+    private PlanChange Write(long campaignId, IReadOnlyList<PlannedExperiment> experiments)
+    {
+        Dictionary<string, (long Id, PlannedExperiment Plan)> known = Known(campaignId);
+        using var sets = new GroupSets(catalog, campaignId);
+        using var writer = new ExperimentWriter(catalog, campaignId);
+        int added = 0, changed = 0, unchanged = 0;
+        foreach (PlannedExperiment experiment in experiments)
+        {
+            long? set = experiment.Groups.Count > 0 ? sets.IdOf(experiment.Groups) : null;
+            if (!known.TryGetValue(experiment.Code, out (long Id, PlannedExperiment Plan) old))
+            {
+                writer.Insert(experiment, set, groupsArePlanned: set is not null);
+                added++;
+            }
+            else if (SamePlan(old.Plan, experiment))
+            {
+                unchanged++;
+            }
+            else
+            {
+                writer.Replace(old.Id, experiment, set);
+                changed++;
+            }
+        }
+
+        return new PlanChange(added, changed, unchanged);
+    }
+
+    private Dictionary<string, (long Id, PlannedExperiment Plan)> Known(long campaignId)
+    {
+        using var sets = new GroupSets(catalog, campaignId);
+        using SqliteStatement select = catalog.Prepare($"SELECT {ExperimentColumns} FROM experiments WHERE campaign_id = ?1 ORDER BY id");
+        select.Bind(1, campaignId);
+        var known = new Dictionary<string, (long, PlannedExperiment)>(StringComparer.Ordinal);
+        while (select.Read())
+        {
+            known.Add(select.Text(2), (select.Integer(0), Row(select, sets)));
+        }
+
+        return known;
+    }
+
+    private static bool SamePlan(PlannedExperiment a, PlannedExperiment b) =>
+        a.Groups.SequenceEqual(b.Groups, StringComparer.Ordinal) && a with { Groups = b.Groups } == b;
+
+    /// <summary>An experiment from a row that selects <see cref="ExperimentColumns"/>.</summary>
+    internal static PlannedExperiment Row(SqliteStatement row, GroupSets sets) => new()
+    {
+        Code = row.Text(2),
+        Title = row.NullableText(3) ?? "",
+        Response = row.NullableText(4) ?? "",
+        Unit = row.NullableText(5) ?? "",
+        Groups = sets.Labels(row.NullableInteger(6)),
+        Control = row.NullableText(8),
+        Test = row.Text(9),
+        FollowUp = row.Text(10),
+        Replicates = (int?)row.NullableInteger(11),
+        SmallestEffect = row.NullableReal(12),
+        AssumedStandardDeviation = row.NullableReal(13),
+        Weight = row.NullableReal(14),
+        Family = row.NullableText(15),
+    };
+}

@@ -1,0 +1,205 @@
+CREATE TABLE IF NOT EXISTS "__EFMigrationsHistory" (
+    "MigrationId" TEXT NOT NULL CONSTRAINT "PK___EFMigrationsHistory" PRIMARY KEY,
+    "ProductVersion" TEXT NOT NULL
+);
+
+BEGIN TRANSACTION;
+CREATE TABLE "campaigns" (
+    "id" INTEGER NOT NULL CONSTRAINT "PK_campaigns" PRIMARY KEY,
+    "code" TEXT NOT NULL,
+    "title" TEXT NOT NULL,
+    "purpose" TEXT NOT NULL,
+    "error_rate" TEXT NOT NULL,
+    "level" REAL NOT NULL,
+    "correction" TEXT NOT NULL,
+    "default_test" TEXT NOT NULL,
+    "default_follow_up" TEXT NOT NULL,
+    "is_exploratory" INTEGER NOT NULL,
+    "opened_at" INTEGER NOT NULL,
+    "sealed_at" INTEGER NULL,
+    "plan_digest" TEXT NULL,
+    CONSTRAINT "ck_campaigns_code" CHECK (length(code) > 0),
+    CONSTRAINT "ck_campaigns_error_rate" CHECK (error_rate in ('familywise', 'false-discovery')),
+    CONSTRAINT "ck_campaigns_exploratory" CHECK (is_exploratory in (0, 1)),
+    CONSTRAINT "ck_campaigns_level" CHECK (level > 0 and level < 1),
+    CONSTRAINT "ck_campaigns_sealed" CHECK ((sealed_at is null) = (plan_digest is null))
+);
+
+CREATE TABLE "group_sets" (
+    "id" INTEGER NOT NULL CONSTRAINT "PK_group_sets" PRIMARY KEY,
+    "campaign_id" INTEGER NOT NULL,
+    CONSTRAINT "FK_group_sets_campaigns_campaign_id" FOREIGN KEY ("campaign_id") REFERENCES "campaigns" ("id") ON DELETE RESTRICT
+);
+
+CREATE TABLE "loads" (
+    "id" INTEGER NOT NULL CONSTRAINT "PK_loads" PRIMARY KEY,
+    "campaign_id" INTEGER NOT NULL,
+    "file_name" TEXT NOT NULL,
+    "sha256" TEXT NOT NULL,
+    "byte_count" INTEGER NOT NULL,
+    "row_count" INTEGER NOT NULL,
+    "missing_count" INTEGER NOT NULL,
+    "experiment_count" INTEGER NOT NULL,
+    "loaded_at" INTEGER NOT NULL,
+    "amendment_reason" TEXT NULL,
+    CONSTRAINT "ck_loads_counts" CHECK (byte_count >= 0 and row_count > 0 and missing_count between 0 and row_count and experiment_count > 0),
+    CONSTRAINT "ck_loads_reason" CHECK (amendment_reason is null or length(amendment_reason) > 0),
+    CONSTRAINT "ck_loads_sha256" CHECK (length(sha256) = 64),
+    CONSTRAINT "FK_loads_campaigns_campaign_id" FOREIGN KEY ("campaign_id") REFERENCES "campaigns" ("id") ON DELETE RESTRICT
+);
+
+CREATE TABLE "experiments" (
+    "id" INTEGER NOT NULL CONSTRAINT "PK_experiments" PRIMARY KEY,
+    "campaign_id" INTEGER NOT NULL,
+    "code" TEXT NOT NULL,
+    "title" TEXT NULL,
+    "response" TEXT NULL,
+    "unit" TEXT NULL,
+    "group_set_id" INTEGER NULL,
+    "groups_are_planned" INTEGER NOT NULL,
+    "control" TEXT NULL,
+    "test" TEXT NOT NULL,
+    "follow_up" TEXT NOT NULL,
+    "replicates" INTEGER NULL,
+    "smallest_effect" REAL NULL,
+    "assumed_sd" REAL NULL,
+    "weight" REAL NULL,
+    "family" TEXT NULL,
+    CONSTRAINT "ck_experiments_assumed_sd" CHECK (assumed_sd is null or assumed_sd > 0),
+    CONSTRAINT "ck_experiments_code" CHECK (length(code) > 0),
+    CONSTRAINT "ck_experiments_groups_are_planned" CHECK (groups_are_planned in (0, 1) and (groups_are_planned = 0 or group_set_id is not null)),
+    CONSTRAINT "ck_experiments_replicates" CHECK (replicates is null or replicates >= 2),
+    CONSTRAINT "ck_experiments_smallest_effect" CHECK (smallest_effect is null or smallest_effect > 0),
+    CONSTRAINT "ck_experiments_weight" CHECK (weight is null or weight >= 0),
+    CONSTRAINT "FK_experiments_campaigns_campaign_id" FOREIGN KEY ("campaign_id") REFERENCES "campaigns" ("id") ON DELETE RESTRICT,
+    CONSTRAINT "FK_experiments_group_sets_group_set_id" FOREIGN KEY ("group_set_id") REFERENCES "group_sets" ("id") ON DELETE RESTRICT
+);
+
+CREATE TABLE "groups" (
+    "group_set_id" INTEGER NOT NULL,
+    "position" INTEGER NOT NULL,
+    "label" TEXT NOT NULL,
+    CONSTRAINT "PK_groups" PRIMARY KEY ("group_set_id", "position"),
+    CONSTRAINT "ck_groups_label" CHECK (length(label) > 0),
+    CONSTRAINT "ck_groups_position" CHECK (position >= 0 and position < 65536),
+    CONSTRAINT "FK_groups_group_sets_group_set_id" FOREIGN KEY ("group_set_id") REFERENCES "group_sets" ("id") ON DELETE RESTRICT
+);
+
+CREATE TABLE "test_runs" (
+    "id" INTEGER NOT NULL CONSTRAINT "PK_test_runs" PRIMARY KEY,
+    "campaign_id" INTEGER NOT NULL,
+    "last_load_id" INTEGER NULL,
+    "ran_at" INTEGER NOT NULL,
+    "includes_incomplete" INTEGER NOT NULL,
+    "program_version" TEXT NOT NULL,
+    CONSTRAINT "ck_test_runs_includes_incomplete" CHECK (includes_incomplete in (0, 1)),
+    CONSTRAINT "FK_test_runs_campaigns_campaign_id" FOREIGN KEY ("campaign_id") REFERENCES "campaigns" ("id") ON DELETE RESTRICT,
+    CONSTRAINT "FK_test_runs_loads_last_load_id" FOREIGN KEY ("last_load_id") REFERENCES "loads" ("id") ON DELETE RESTRICT
+);
+
+CREATE TABLE measurements (
+    experiment_id INTEGER NOT NULL,
+    load_id INTEGER NOT NULL,
+    value_count INTEGER NOT NULL,
+    missing_count INTEGER NOT NULL,
+    packed BLOB NOT NULL,
+    CONSTRAINT "PK_measurements" PRIMARY KEY (experiment_id, load_id),
+    CONSTRAINT ck_measurements_counts CHECK (value_count >= 0 and missing_count >= 0 and value_count + missing_count > 0),
+    CONSTRAINT "FK_measurements_experiments_experiment_id" FOREIGN KEY (experiment_id) REFERENCES experiments (id) ON DELETE RESTRICT,
+    CONSTRAINT "FK_measurements_loads_load_id" FOREIGN KEY (load_id) REFERENCES loads (id) ON DELETE RESTRICT
+) STRICT, WITHOUT ROWID;
+
+CREATE TABLE "reviews" (
+    "id" INTEGER NOT NULL CONSTRAINT "PK_reviews" PRIMARY KEY,
+    "campaign_id" INTEGER NOT NULL,
+    "number" INTEGER NOT NULL,
+    "taken_at" INTEGER NOT NULL,
+    "correction" TEXT NOT NULL,
+    "level" REAL NOT NULL,
+    "family_size" INTEGER NOT NULL,
+    "tested_count" INTEGER NOT NULL,
+    "survivor_count" INTEGER NOT NULL,
+    "is_interim" INTEGER NOT NULL,
+    "last_test_run_id" INTEGER NULL,
+    "program_version" TEXT NOT NULL,
+    "lines" BLOB NOT NULL,
+    CONSTRAINT "ck_reviews_counts" CHECK (tested_count between 0 and family_size and survivor_count between 0 and tested_count),
+    CONSTRAINT "ck_reviews_interim" CHECK (is_interim in (0, 1)),
+    CONSTRAINT "ck_reviews_level" CHECK (level > 0 and level < 1),
+    CONSTRAINT "ck_reviews_number" CHECK (number > 0),
+    CONSTRAINT "FK_reviews_campaigns_campaign_id" FOREIGN KEY ("campaign_id") REFERENCES "campaigns" ("id") ON DELETE RESTRICT,
+    CONSTRAINT "FK_reviews_test_runs_last_test_run_id" FOREIGN KEY ("last_test_run_id") REFERENCES "test_runs" ("id") ON DELETE RESTRICT
+);
+
+CREATE TABLE test_results (
+    experiment_id INTEGER NOT NULL,
+    test_run_id INTEGER NOT NULL,
+    status TEXT NOT NULL,
+    group_count INTEGER NOT NULL,
+    observation_count INTEGER NOT NULL,
+    statistic REAL NULL,
+    df1 REAL NULL,
+    df2 REAL NULL,
+    p REAL NULL,
+    log_p REAL NULL,
+    eta_squared REAL NULL,
+    omega_squared REAL NULL,
+    CONSTRAINT "PK_test_results" PRIMARY KEY (experiment_id, test_run_id),
+    CONSTRAINT ck_test_results_status CHECK ((status = 'tested') = (p is not null) and (p is null) = (statistic is null)),
+    CONSTRAINT ck_test_results_p CHECK (p is null or (p >= 0 and p <= 1 and (p > 0 or log_p is not null))),
+    CONSTRAINT ck_test_results_log_p CHECK (log_p is null or (p is not null and log_p <= 0)),
+    CONSTRAINT "FK_test_results_experiments_experiment_id" FOREIGN KEY (experiment_id) REFERENCES experiments (id) ON DELETE RESTRICT,
+    CONSTRAINT "FK_test_results_test_runs_test_run_id" FOREIGN KEY (test_run_id) REFERENCES test_runs (id) ON DELETE RESTRICT
+) STRICT, WITHOUT ROWID;
+
+CREATE UNIQUE INDEX "ux_campaigns_code" ON "campaigns" ("code");
+
+CREATE INDEX "ix_experiments_campaign" ON "experiments" ("campaign_id");
+
+CREATE UNIQUE INDEX "ux_experiments_code" ON "experiments" ("campaign_id", "code");
+
+CREATE INDEX "ix_group_sets_campaign" ON "group_sets" ("campaign_id");
+
+CREATE UNIQUE INDEX "ux_groups_label" ON "groups" ("group_set_id", "label");
+
+CREATE UNIQUE INDEX "ux_loads_sha256" ON "loads" ("campaign_id", "sha256");
+
+CREATE INDEX "ix_measurements_load" ON "measurements" ("load_id");
+
+CREATE UNIQUE INDEX "ux_reviews_number" ON "reviews" ("campaign_id", "number");
+
+CREATE INDEX "ix_test_results_run" ON "test_results" ("test_run_id");
+
+CREATE TRIGGER loads_are_kept BEFORE UPDATE ON loads BEGIN SELECT RAISE(ABORT, 'a load is never changed'); END;
+CREATE TRIGGER loads_stay BEFORE DELETE ON loads BEGIN SELECT RAISE(ABORT, 'a load is never deleted'); END;
+CREATE TRIGGER measurements_are_kept BEFORE UPDATE ON measurements BEGIN SELECT RAISE(ABORT, 'measurements are never changed'); END;
+CREATE TRIGGER measurements_stay BEFORE DELETE ON measurements BEGIN SELECT RAISE(ABORT, 'measurements are never deleted'); END;
+CREATE TRIGGER test_runs_are_kept BEFORE UPDATE ON test_runs BEGIN SELECT RAISE(ABORT, 'a test run is never changed'); END;
+CREATE TRIGGER test_runs_stay BEFORE DELETE ON test_runs BEGIN SELECT RAISE(ABORT, 'a test run is never deleted'); END;
+CREATE TRIGGER test_results_are_kept BEFORE UPDATE ON test_results BEGIN SELECT RAISE(ABORT, 'a test result is never changed'); END;
+CREATE TRIGGER test_results_stay BEFORE DELETE ON test_results BEGIN SELECT RAISE(ABORT, 'a test result is never deleted'); END;
+CREATE TRIGGER reviews_are_kept BEFORE UPDATE ON reviews BEGIN SELECT RAISE(ABORT, 'a review is never changed'); END;
+CREATE TRIGGER reviews_stay BEFORE DELETE ON reviews BEGIN SELECT RAISE(ABORT, 'a review is never deleted'); END;
+CREATE TRIGGER campaigns_stay BEFORE DELETE ON campaigns BEGIN SELECT RAISE(ABORT, 'a campaign is never deleted'); END;
+CREATE TRIGGER campaigns_stay_sealed BEFORE UPDATE ON campaigns WHEN old.sealed_at IS NOT NULL
+BEGIN SELECT RAISE(ABORT, 'a sealed campaign is never changed'); END;
+CREATE TRIGGER experiments_join_open_plans BEFORE INSERT ON experiments
+WHEN EXISTS (SELECT 1 FROM campaigns WHERE id = new.campaign_id AND sealed_at IS NOT NULL AND is_exploratory = 0)
+BEGIN SELECT RAISE(ABORT, 'a sealed plan takes no more experiments'); END;
+CREATE TRIGGER experiments_stay_sealed BEFORE DELETE ON experiments
+WHEN EXISTS (SELECT 1 FROM campaigns WHERE id = old.campaign_id AND sealed_at IS NOT NULL)
+BEGIN SELECT RAISE(ABORT, 'an experiment of a sealed plan is never deleted'); END;
+CREATE TRIGGER experiments_are_kept BEFORE UPDATE ON experiments
+WHEN EXISTS (SELECT 1 FROM campaigns WHERE id = old.campaign_id AND sealed_at IS NOT NULL)
+    AND (old.groups_are_planned = 1 OR new.id IS NOT old.id OR new.campaign_id IS NOT old.campaign_id OR new.code IS NOT old.code
+        OR new.title IS NOT old.title OR new.response IS NOT old.response OR new.unit IS NOT old.unit
+        OR new.groups_are_planned IS NOT old.groups_are_planned OR new.control IS NOT old.control OR new.test IS NOT old.test
+        OR new.follow_up IS NOT old.follow_up OR new.replicates IS NOT old.replicates OR new.smallest_effect IS NOT old.smallest_effect
+        OR new.assumed_sd IS NOT old.assumed_sd OR new.weight IS NOT old.weight OR new.family IS NOT old.family)
+BEGIN SELECT RAISE(ABORT, 'an experiment of a sealed plan is never changed; only groups that come with the data may be added'); END;
+
+INSERT INTO "__EFMigrationsHistory" ("MigrationId", "ProductVersion")
+VALUES ('20261201000000_First', '10.0.15');
+
+COMMIT;
+

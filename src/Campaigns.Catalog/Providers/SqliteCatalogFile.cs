@@ -1,0 +1,136 @@
+using System.Buffers.Binary;
+using Microsoft.Data.Sqlite;
+
+namespace Campaigns.Catalog.Providers;
+
+/// <summary>The catalog as a file: recognised by its header before anything else touches it, created beside its place and moved there whole, opened with the settings that keep it one safe file.</summary>
+internal static class SqliteCatalogFile
+{
+    /// <summary>"CAMP" in the header of every catalog.</summary>
+    public const int ApplicationId = 0x43414D50;
+
+    /// <summary>The schema that this program writes: the number of migrations.</summary>
+    public const int SchemaVersion = 1;
+
+    private const int HeaderLength = 100;
+    private static ReadOnlySpan<byte> Signature => "SQLite format 3\0"u8;
+
+    /// <summary>Opens a catalog that exists and is of this program's schema; every other file is left as it is.</summary>
+    /// <exception cref="CatalogException">Missing, unreadable, foreign, older, newer or damaged.</exception>
+    public static SqliteConnection Open(string path)
+    {
+        int version = ReadVersion(path);
+        if (version > SchemaVersion)
+        {
+            throw new CatalogException($"The catalog '{path}' was written by a newer version of this program (schema {version}, this program knows {SchemaVersion}); use that version. The file was not touched.");
+        }
+
+        if (version < SchemaVersion)
+        {
+            throw new CatalogException($"The catalog '{path}' was written by an older version of this program (schema {version}, this program writes {SchemaVersion}); run 'campaigns upgrade' to bring it up to date. The file was not touched.");
+        }
+
+        return Connect(path);
+    }
+
+    /// <summary>Creates an empty catalog: a complete file is made beside the place and then moved there, so that nobody ever sees half a catalog. Where somebody else was quicker, theirs stays.</summary>
+    /// <exception cref="CatalogException">The folder cannot be written.</exception>
+    public static void Create(string path)
+    {
+        string draft = $"{path}.new-{Environment.ProcessId}";
+        try
+        {
+            using (var connection = new SqliteConnection(ConnectionString(draft, SqliteOpenMode.ReadWriteCreate)))
+            {
+                connection.Open();
+                Execute(connection, $"PRAGMA page_size = 8192; PRAGMA application_id = {ApplicationId}; PRAGMA user_version = {SchemaVersion}; PRAGMA synchronous = FULL;");
+                Execute(connection, ReadSchema());
+            }
+
+            File.Move(draft, path, overwrite: false);
+        }
+        catch (IOException) when (File.Exists(path))
+        {
+        }
+        catch (SqliteException error)
+        {
+            throw SqliteErrors.Translate(error.SqliteExtendedErrorCode, error.Message, path, error);
+        }
+        catch (Exception error) when (error is IOException or UnauthorizedAccessException)
+        {
+            throw new CatalogException($"The catalog '{path}' cannot be created: {error.Message}", error);
+        }
+        finally
+        {
+            File.Delete(draft);
+        }
+    }
+
+    /// <summary>Connects with the settings of every catalog, whatever its schema.</summary>
+    public static SqliteConnection Connect(string path)
+    {
+        var connection = new SqliteConnection(ConnectionString(path, SqliteOpenMode.ReadWrite));
+        try
+        {
+            connection.Open();
+
+            // One file that may be copied: a rollback journal, not a write-ahead log. EXTRA also syncs the folder, so an acknowledged action survives a power cut.
+            Execute(connection, "PRAGMA busy_timeout = 5000; PRAGMA foreign_keys = ON; PRAGMA synchronous = EXTRA; PRAGMA journal_mode = DELETE;");
+            return connection;
+        }
+        catch (SqliteException error)
+        {
+            connection.Dispose();
+            throw SqliteErrors.Translate(error.SqliteExtendedErrorCode, error.Message, path, error);
+        }
+    }
+
+    /// <summary>The schema version in the file's header.</summary>
+    /// <exception cref="CatalogException">The file is missing, unreadable or no catalog.</exception>
+    public static int ReadVersion(string path)
+    {
+        Span<byte> header = stackalloc byte[HeaderLength];
+        int length;
+        try
+        {
+            using var stream = new FileStream(path, FileMode.Open, FileAccess.Read, FileShare.ReadWrite | FileShare.Delete, 1);
+            length = stream.ReadAtLeast(header, HeaderLength, throwOnEndOfStream: false);
+        }
+        catch (Exception error) when (error is FileNotFoundException or DirectoryNotFoundException)
+        {
+            throw new CatalogException($"There is no catalog '{path}'; 'campaigns start' or 'campaigns run' creates one, --catalog names another.", error);
+        }
+        catch (Exception error) when (error is IOException or UnauthorizedAccessException)
+        {
+            throw new CatalogException($"The catalog '{path}' cannot be read: {(Directory.Exists(path) ? "it is a folder." : error.Message)}", error);
+        }
+
+        if (length < HeaderLength || !header[..Signature.Length].SequenceEqual(Signature)
+            || BinaryPrimitives.ReadInt32BigEndian(header[68..]) != ApplicationId)
+        {
+            throw new CatalogException($"The file '{path}' is no catalog of this program; it was not touched.");
+        }
+
+        return BinaryPrimitives.ReadInt32BigEndian(header[60..]);
+    }
+
+    /// <summary>Runs a fixed text of one or more statements.</summary>
+    public static void Execute(SqliteConnection connection, string sql)
+    {
+        using SqliteCommand command = connection.CreateCommand();
+#pragma warning disable CA2100 // Fixed texts of this program alone; no value from outside ever stands in a statement.
+        command.CommandText = sql;
+#pragma warning restore CA2100
+        command.ExecuteNonQuery();
+    }
+
+    private static string ConnectionString(string path, SqliteOpenMode mode) =>
+        new SqliteConnectionStringBuilder { DataSource = path, Mode = mode, Pooling = false, DefaultTimeout = 5 }.ToString();
+
+    private static string ReadSchema()
+    {
+        using Stream stream = typeof(SqliteCatalogFile).Assembly.GetManifestResourceStream("Campaigns.Catalog.Providers.Schema.sql")!;
+        using var reader = new StreamReader(stream);
+        return reader.ReadToEnd();
+    }
+}

@@ -1,0 +1,143 @@
+using Microsoft.Data.Sqlite;
+using SQLitePCL;
+using static SQLitePCL.raw;
+
+namespace Campaigns.Catalog.Providers;
+
+/// <summary>A prepared statement that binds and reads spans without a heap object per cell: the way of everything that is done once per experiment.</summary>
+/// <remarks>It runs on the connection, and so inside the transaction, that everything else uses. Parameters and columns are numbered as SQLite numbers them: parameters from 1, columns from 0.</remarks>
+internal sealed class SqliteStatement : IDisposable
+{
+    private readonly SqliteConnection _connection;
+    private readonly sqlite3_stmt _statement;
+
+    public SqliteStatement(SqliteConnection connection, string sql)
+    {
+        _connection = connection;
+        Check(sqlite3_prepare_v2(connection.Handle, sql, out _statement));
+    }
+
+    public SqliteStatement Bind(int parameter, long value)
+    {
+        Check(sqlite3_bind_int64(_statement, parameter, value));
+        return this;
+    }
+
+    public SqliteStatement Bind(int parameter, long? value) => value is { } given ? Bind(parameter, given) : BindNull(parameter);
+
+    public SqliteStatement Bind(int parameter, double? value)
+    {
+        if (value is not { } given)
+        {
+            return BindNull(parameter);
+        }
+
+        if (!double.IsFinite(given))
+        {
+            throw new ArgumentOutOfRangeException(nameof(value), value, "Only finite numbers are stored.");
+        }
+
+        Check(sqlite3_bind_double(_statement, parameter, given));
+        return this;
+    }
+
+    public SqliteStatement Bind(int parameter, string? text)
+    {
+        if (text is null)
+        {
+            return BindNull(parameter);
+        }
+
+        Check(sqlite3_bind_text(_statement, parameter, text));
+        return this;
+    }
+
+    public SqliteStatement BindText(int parameter, ReadOnlySpan<byte> utf8)
+    {
+        Check(sqlite3_bind_text(_statement, parameter, utf8));
+        return this;
+    }
+
+    public SqliteStatement BindBlob(int parameter, ReadOnlySpan<byte> blob)
+    {
+        Check(blob.IsEmpty ? sqlite3_bind_zeroblob(_statement, parameter, 0) : sqlite3_bind_blob(_statement, parameter, blob));
+        return this;
+    }
+
+    public SqliteStatement BindNull(int parameter)
+    {
+        Check(sqlite3_bind_null(_statement, parameter));
+        return this;
+    }
+
+    /// <summary>Runs a statement that gives no rows, and makes it ready for the next use.</summary>
+    public void Run()
+    {
+        int code = sqlite3_step(_statement);
+        if (code is not (SQLITE_DONE or SQLITE_ROW))
+        {
+            Exception error = Error(code);
+            _ = sqlite3_reset(_statement);
+            throw error;
+        }
+
+        Check(sqlite3_reset(_statement));
+    }
+
+    /// <summary>Moves to the next row; at the end the statement is ready for the next use.</summary>
+    public bool Read()
+    {
+        int code = sqlite3_step(_statement);
+        if (code == SQLITE_ROW)
+        {
+            return true;
+        }
+
+        if (code != SQLITE_DONE)
+        {
+            Exception error = Error(code);
+            _ = sqlite3_reset(_statement);
+            throw error;
+        }
+
+        Check(sqlite3_reset(_statement));
+        return false;
+    }
+
+    /// <summary>Makes the statement ready for the next use before its rows are at an end.</summary>
+    public void Reset() => Check(sqlite3_reset(_statement));
+
+    public bool IsNull(int column) => sqlite3_column_type(_statement, column) == SQLITE_NULL;
+
+    public long Integer(int column) => sqlite3_column_int64(_statement, column);
+
+    public long? NullableInteger(int column) => IsNull(column) ? null : Integer(column);
+
+    public double Real(int column) => sqlite3_column_double(_statement, column);
+
+    public double? NullableReal(int column) => IsNull(column) ? null : Real(column);
+
+    public string Text(int column) => sqlite3_column_text(_statement, column).utf8_to_string() ?? "";
+
+    /// <summary>Whether a cell holds just this ASCII text, without making a string of it.</summary>
+    public bool TextEquals(int column, string ascii) =>
+        System.Text.Ascii.Equals(sqlite3_column_blob(_statement, column), ascii);
+
+    public string? NullableText(int column) => IsNull(column) ? null : Text(column);
+
+    /// <summary>The bytes of a cell; valid until the next call on this statement.</summary>
+    public ReadOnlySpan<byte> Blob(int column) => sqlite3_column_blob(_statement, column);
+
+    public void Dispose() => _statement.Dispose();
+
+    private void Check(int code)
+    {
+        if (code != SQLITE_OK)
+        {
+            throw Error(code);
+        }
+    }
+
+    private Exception Error(int code) =>
+        SqliteErrors.Translate(code, sqlite3_errmsg(_connection.Handle).utf8_to_string() ?? "", _connection.DataSource);
+}

@@ -1,0 +1,64 @@
+using Campaigns.Catalog.Providers;
+
+namespace Campaigns.Catalog.Results;
+
+/// <summary>The experiments of a campaign to which values were added after their test, with the reasons given.</summary>
+/// <remarks>Campaigns without an amendment, which is nearly all, cost one look at the list of loads.</remarks>
+internal sealed class AmendedExperiments
+{
+    private readonly Dictionary<long, Amended> _experiments = [];
+
+    public AmendedExperiments(Catalog catalog, long campaignId)
+    {
+        using SqliteStatement loads = catalog.Prepare("SELECT count(*) FROM loads WHERE campaign_id = ?1 AND amendment_reason IS NOT NULL");
+        loads.Bind(1, campaignId).Read();
+        if (loads.Integer(0) == 0)
+        {
+            loads.Reset();
+            return;
+        }
+
+        loads.Reset();
+        using SqliteStatement select = catalog.Prepare(
+            """
+            SELECT m.experiment_id, l.id, l.amendment_reason,
+                (SELECT min(coalesce(t.last_load_id, 0)) FROM test_results r JOIN test_runs t ON t.id = r.test_run_id WHERE r.experiment_id = m.experiment_id),
+                (SELECT max(coalesce(t.last_load_id, 0)) FROM test_results r JOIN test_runs t ON t.id = r.test_run_id WHERE r.experiment_id = m.experiment_id)
+            FROM loads l JOIN measurements m ON m.load_id = l.id
+            WHERE l.campaign_id = ?1 AND l.amendment_reason IS NOT NULL ORDER BY m.experiment_id, l.id
+            """);
+        select.Bind(1, campaignId);
+        while (select.Read())
+        {
+            long load = select.Integer(1);
+            if (select.IsNull(3) || select.Integer(3) >= load)
+            {
+                continue;
+            }
+
+            if (!_experiments.TryGetValue(select.Integer(0), out Amended? amended))
+            {
+                _experiments[select.Integer(0)] = amended = new Amended();
+            }
+
+            amended.Reasons.Add(select.Text(2));
+            amended.AwaitsTest |= select.Integer(4) < load;
+        }
+    }
+
+    public bool Any => _experiments.Count > 0;
+
+    /// <summary>Whether values came in after the latest test, which is then no longer the experiment's result.</summary>
+    public bool AwaitsTest(long experimentId) => _experiments.TryGetValue(experimentId, out Amended? amended) && amended.AwaitsTest;
+
+    /// <summary>The reasons of the amendments, oldest first.</summary>
+    public IReadOnlyList<string> Reasons(long experimentId) =>
+        _experiments.TryGetValue(experimentId, out Amended? amended) ? amended.Reasons : [];
+
+    private sealed class Amended
+    {
+        public List<string> Reasons { get; } = [];
+
+        public bool AwaitsTest { get; set; }
+    }
+}

@@ -1,0 +1,68 @@
+using Campaigns.Statistics.Probability;
+
+namespace Campaigns.Catalog.Results;
+
+/// <summary>The tested part of a family as columns: experiments and their p-values, in the plan's order.</summary>
+internal sealed class FamilyColumns
+{
+    private long[] _experimentIds;
+    private PValue[] _p;
+
+    public FamilyColumns(int capacity = 256)
+    {
+        _experimentIds = new long[capacity];
+        _p = new PValue[capacity];
+    }
+
+    /// <summary>Experiments with a p-value.</summary>
+    public int Count { get; private set; }
+
+    /// <summary>Keys, ascending.</summary>
+    public ReadOnlySpan<long> ExperimentIds => _experimentIds.AsSpan(0, Count);
+
+    /// <summary>One p-value for each.</summary>
+    public ReadOnlySpan<PValue> P => _p.AsSpan(0, Count);
+
+    public void Add(long experimentId, PValue p)
+    {
+        if (Count == _p.Length)
+        {
+            Array.Resize(ref _experimentIds, Count * 2);
+            Array.Resize(ref _p, Count * 2);
+        }
+
+        _experimentIds[Count] = experimentId;
+        _p[Count++] = p;
+    }
+
+    /// <summary>These columns with newer p-values in the place of older ones and added ones in their order; null in the newer ones takes an experiment out. O(n + m).</summary>
+    public FamilyColumns With(IReadOnlyList<(long ExperimentId, PValue? P)> newer)
+    {
+        var merged = new FamilyColumns(Count + newer.Count);
+        int old = 0;
+        foreach ((long id, PValue? p) in newer)
+        {
+            for (; old < Count && _experimentIds[old] < id; old++)
+            {
+                merged.Add(_experimentIds[old], _p[old]);
+            }
+
+            if (old < Count && _experimentIds[old] == id)
+            {
+                old++;
+            }
+
+            if (p is { } given)
+            {
+                merged.Add(id, given);
+            }
+        }
+
+        for (; old < Count; old++)
+        {
+            merged.Add(_experimentIds[old], _p[old]);
+        }
+
+        return merged;
+    }
+}

@@ -1,0 +1,116 @@
+using Campaigns.Catalog.Providers;
+using Campaigns.Statistics.Probability;
+
+namespace Campaigns.Catalog.Results;
+
+/// <summary>Collects a campaign's family: every tested experiment with its p-value, and how many hypotheses there are.</summary>
+/// <remarks>
+/// The latest review's lines are the base and only what was tested after it is read, so that one more experiment among 100,000 costs one packed vector, not a scan of all results.
+/// Without a review, or after an amendment, all results are read: O(m).
+/// </remarks>
+internal sealed class FamilyReader(Catalog catalog)
+{
+    /// <summary>Hypotheses in the family: every experiment of the campaign.</summary>
+    public int FamilySize(long campaignId)
+    {
+        using SqliteStatement count = catalog.Prepare("SELECT count(*) FROM experiments WHERE campaign_id = ?1");
+        count.Bind(1, campaignId).Read();
+        return (int)count.Integer(0);
+    }
+
+    /// <summary>The latest test run; null before the first.</summary>
+    public long? LastTestRun(long campaignId)
+    {
+        using SqliteStatement last = catalog.Prepare("SELECT max(id) FROM test_runs WHERE campaign_id = ?1");
+        last.Bind(1, campaignId).Read();
+        return last.NullableInteger(0);
+    }
+
+    public FamilyColumns Read(long campaignId)
+    {
+        using SqliteStatement latest = catalog.Prepare("SELECT last_test_run_id, lines FROM reviews WHERE campaign_id = ?1 ORDER BY number DESC LIMIT 1");
+        if (!latest.Bind(1, campaignId).Read() || latest.IsNull(0) || new AmendedExperiments(catalog, campaignId).Any)
+        {
+            return ReadAll(campaignId);
+        }
+
+        (long[] ids, PValue[] p, _) = PackedReviewLines.Unpack(latest.Blob(1));
+        var columns = new FamilyColumns(ids.Length + 1);
+        for (int i = 0; i < ids.Length; i++)
+        {
+            columns.Add(ids[i], p[i]);
+        }
+
+        List<(long, PValue?)> newer = TestedAfter(campaignId, latest.Integer(0));
+        return newer.Count == 0 ? columns : columns.With(newer);
+    }
+
+    private FamilyColumns ReadAll(long campaignId)
+    {
+        var amended = new AmendedExperiments(catalog, campaignId);
+        using SqliteStatement select = catalog.Prepare(
+            """
+            SELECT e.id, r.p, r.log_p FROM experiments e JOIN test_results r ON r.experiment_id = e.id
+            WHERE e.campaign_id = ?1 ORDER BY e.id, r.test_run_id
+            """);
+        select.Bind(1, campaignId);
+        var columns = new FamilyColumns();
+        long id = 0;
+        PValue? p = null;
+        while (select.Read())
+        {
+            if (select.Integer(0) != id)
+            {
+                AddCurrent();
+                id = select.Integer(0);
+            }
+
+            p = ReadP(select, 1);
+        }
+
+        AddCurrent();
+        return columns;
+
+        void AddCurrent()
+        {
+            if (p is { } given && !amended.AwaitsTest(id))
+            {
+                columns.Add(id, given);
+            }
+        }
+    }
+
+    private List<(long ExperimentId, PValue? P)> TestedAfter(long campaignId, long testRunId)
+    {
+        using SqliteStatement select = catalog.Prepare(
+            """
+            SELECT r.experiment_id, r.p, r.log_p FROM test_results r JOIN test_runs t ON t.id = r.test_run_id
+            WHERE r.test_run_id > ?2 AND t.campaign_id = ?1 ORDER BY r.experiment_id, r.test_run_id
+            """);
+        select.Bind(1, campaignId).Bind(2, testRunId);
+        var tested = new List<(long, PValue?)>();
+        while (select.Read())
+        {
+            if (tested.Count > 0 && tested[^1].Item1 == select.Integer(0))
+            {
+                tested.RemoveAt(tested.Count - 1);
+            }
+
+            tested.Add((select.Integer(0), ReadP(select, 1)));
+        }
+
+        return tested;
+    }
+
+    /// <summary>The p-value in two neighbouring columns, value and logarithm; null where there is none.</summary>
+    internal static PValue? ReadP(SqliteStatement row, int column)
+    {
+        if (row.IsNull(column))
+        {
+            return null;
+        }
+
+        double value = row.Real(column);
+        return row.IsNull(column + 1) ? PValue.FromValue(value) : PValue.FromValueAndLog(value, row.Real(column + 1));
+    }
+}

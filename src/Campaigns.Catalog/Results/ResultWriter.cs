@@ -1,0 +1,72 @@
+using Campaigns.Catalog.Providers;
+using Campaigns.Domain;
+using Campaigns.Statistics.GroupTests;
+
+namespace Campaigns.Catalog.Results;
+
+/// <summary>Writes the outcomes of one test run; the run itself is stored with its first outcome, so that a run without any leaves no trace.</summary>
+internal sealed class ResultWriter(Catalog catalog, long campaignId, long? lastLoadId, bool includesIncomplete) : IDisposable
+{
+    private SqliteStatement? _insert;
+    private long _runId;
+
+    public int Tested { get; private set; }
+
+    public int NotTestable { get; private set; }
+
+    public void Write(long experimentId, TestOutcome outcome)
+    {
+        _insert ??= Begin();
+        _insert.Bind(1, experimentId).Bind(2, _runId).Bind(4, (long)outcome.GroupCount).Bind(5, (long)outcome.ObservationCount);
+        switch (outcome)
+        {
+            case Tested tested:
+                Tested++;
+                double p = tested.P.Value;
+                _insert.Bind(3, "tested").Bind(6, tested.Statistic).Bind(7, tested.Df1).Bind(8, tested.Df2).Bind(9, p)
+                    .Bind(10, p < PackedReviewLines.LogStoredBelow ? tested.P.Log : null)
+                    .Bind(11, tested.Variation.EtaSquared).Bind(12, tested.Variation.OmegaSquared);
+                break;
+            case NotTestable none:
+                NotTestable++;
+                _insert.Bind(3, StatusOf(none.Reason).Word());
+                for (int parameter = 6; parameter <= 12; parameter++)
+                {
+                    _insert.BindNull(parameter);
+                }
+
+                break;
+            default:
+                throw new InvalidOperationException("An outcome is either a result or the reason why there is none.");
+        }
+
+        _insert.Run();
+    }
+
+    public void Dispose() => _insert?.Dispose();
+
+    private SqliteStatement Begin()
+    {
+        using SqliteStatement next = catalog.Prepare("SELECT coalesce(max(id), 0) + 1 FROM test_runs");
+        next.Read();
+        _runId = next.Integer(0);
+        next.Reset();
+        using SqliteStatement run = catalog.Prepare("INSERT INTO test_runs (id, campaign_id, last_load_id, ran_at, includes_incomplete, program_version) VALUES (?1, ?2, ?3, ?4, ?5, ?6)");
+        run.Bind(1, _runId).Bind(2, campaignId).Bind(3, lastLoadId).Bind(4, catalog.Now)
+            .Bind(5, includesIncomplete ? 1L : 0L).Bind(6, ProgramVersion.Current).Run();
+        return catalog.Prepare(
+            """
+            INSERT INTO test_results (experiment_id, test_run_id, status, group_count, observation_count, statistic, df1, df2, p, log_p, eta_squared, omega_squared)
+            VALUES (?1, ?2, ?3, ?4, ?5, ?6, ?7, ?8, ?9, ?10, ?11, ?12)
+            """);
+    }
+
+    private static ExperimentStatus StatusOf(NotTestableReason reason) => reason switch
+    {
+        NotTestableReason.TooFewGroups => ExperimentStatus.TooFewGroups,
+        NotTestableReason.NoReplication => ExperimentStatus.NoReplication,
+        NotTestableReason.ConstantResponse => ExperimentStatus.ConstantResponse,
+        NotTestableReason.ZeroWithinVariation => ExperimentStatus.ZeroWithinVariation,
+        _ => throw new ArgumentOutOfRangeException(nameof(reason), reason, "No status for this reason."),
+    };
+}

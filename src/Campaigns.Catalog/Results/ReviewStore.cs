@@ -1,0 +1,103 @@
+using Campaigns.Catalog.Plans;
+using Campaigns.Catalog.Providers;
+using Campaigns.Domain;
+using Campaigns.Statistics.Corrections;
+using Campaigns.Statistics.Probability;
+
+namespace Campaigns.Catalog.Results;
+
+/// <summary>What taking a review did.</summary>
+/// <param name="Review">The review that stands.</param>
+/// <param name="IsNew">Whether it was taken now; false where nothing had changed since.</param>
+public sealed record ReviewTaken(ReviewHead Review, bool IsNew);
+
+/// <summary>Reviews in the catalog: taken, kept, never changed.</summary>
+/// <param name="catalog">The open catalog.</param>
+public sealed class ReviewStore(Catalog catalog)
+{
+    private const string Columns =
+        "number, taken_at, correction, level, family_size, tested_count, survivor_count, is_interim, program_version, last_test_run_id";
+
+    /// <summary>Applies the sealed correction to the family and stores the outcome; where nothing changed since the latest review, that one stands.</summary>
+    /// <param name="code">The campaign.</param>
+    /// <param name="testedOnly">Whether only tested experiments are counted; the review is then marked as interim.</param>
+    /// <exception cref="RefusedException">The campaign is not sealed, or nothing was tested.</exception>
+    public ReviewTaken Take(string code, bool testedOnly) => catalog.Change(() =>
+    {
+        StoredCampaign stored = new CampaignStore(catalog).Get(code);
+        if (!stored.Campaign.IsSealed)
+        {
+            throw new RefusedException($"The campaign '{code}' is not sealed: level, correction and family must be fixed before a review; run 'campaigns seal {code}'.");
+        }
+
+        var families = new FamilyReader(catalog);
+        long? lastRun = families.LastTestRun(stored.Id);
+        if (lastRun is null)
+        {
+            throw new RefusedException($"Nothing of the campaign '{code}' was tested yet, so there is nothing to review; run 'campaigns test {code}'.");
+        }
+
+        int planned = families.FamilySize(stored.Id);
+        if (Latest(stored.Id) is { } latest && latest.LastRun == lastRun && latest.Head.IsInterim == testedOnly
+            && (testedOnly || latest.Head.FamilySize == planned) && !new AmendedExperiments(catalog, stored.Id).Any)
+        {
+            return new ReviewTaken(latest.Head, false);
+        }
+
+        return new ReviewTaken(Store(stored, families.Read(stored.Id), planned, testedOnly, lastRun.Value), true);
+    });
+
+    /// <summary>The latest review of a campaign; null before the first.</summary>
+    internal (ReviewHead Head, long? LastRun)? Latest(long campaignId)
+    {
+        using SqliteStatement select = catalog.Prepare($"SELECT {Columns} FROM reviews WHERE campaign_id = ?1 ORDER BY number DESC LIMIT 1");
+        return select.Bind(1, campaignId).Read() ? (Head(select), select.NullableInteger(9)) : null;
+    }
+
+    /// <summary>Every review of a campaign, oldest first.</summary>
+    /// <param name="campaignId">The campaign.</param>
+    public IReadOnlyList<ReviewHead> All(long campaignId)
+    {
+        using SqliteStatement select = catalog.Prepare($"SELECT {Columns} FROM reviews WHERE campaign_id = ?1 ORDER BY number");
+        select.Bind(1, campaignId);
+        var reviews = new List<ReviewHead>();
+        while (select.Read())
+        {
+            reviews.Add(Head(select));
+        }
+
+        return reviews;
+    }
+
+    private ReviewHead Store(StoredCampaign stored, FamilyColumns columns, int planned, bool testedOnly, long lastRun)
+    {
+        Campaign campaign = stored.Campaign;
+        int familySize = testedOnly ? columns.Count : planned;
+        PValue[] adjusted = FamilyVerdict.CorrectionOf(campaign).Adjust(RankedFamily.Of(columns.P, familySize));
+        int survivors = adjusted.Count(campaign.Level.Rejects);
+        int number = (Latest(stored.Id)?.Head.Number ?? 0) + 1;
+        using SqliteStatement next = catalog.Prepare("SELECT coalesce(max(id), 0) + 1 FROM reviews");
+        next.Read();
+        long id = next.Integer(0);
+        next.Reset();
+        using SqliteStatement insert = catalog.Prepare($"INSERT INTO reviews (id, campaign_id, {Columns}, lines) VALUES (?1, ?2, ?3, ?4, ?5, ?6, ?7, ?8, ?9, ?10, ?11, ?12, ?13)");
+        insert.Bind(1, id).Bind(2, stored.Id).Bind(3, (long)number).Bind(4, catalog.Now).Bind(5, campaign.Correction)
+            .Bind(6, campaign.Level.Value).Bind(7, (long)familySize).Bind(8, (long)columns.Count).Bind(9, (long)survivors)
+            .Bind(10, testedOnly ? 1L : 0L).Bind(11, ProgramVersion.Current).Bind(12, lastRun)
+            .BindBlob(13, PackedReviewLines.Pack(columns.ExperimentIds, columns.P, adjusted)).Run();
+        return Latest(stored.Id)!.Value.Head;
+    }
+
+    private static ReviewHead Head(SqliteStatement row) => new()
+    {
+        Number = (int)row.Integer(0),
+        At = Instants.FromMicroseconds(row.Integer(1)),
+        Correction = row.Text(2),
+        Level = new SignificanceLevel(row.Real(3)),
+        FamilySize = (int)row.Integer(4),
+        TestedCount = (int)row.Integer(5),
+        SurvivorCount = (int)row.Integer(6),
+        IsInterim = row.Integer(7) != 0,
+        ProgramVersion = row.Text(8),
+    };
+}

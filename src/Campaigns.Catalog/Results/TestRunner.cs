@@ -1,0 +1,158 @@
+using Campaigns.Catalog.Measurements;
+using Campaigns.Catalog.Plans;
+using Campaigns.Catalog.Providers;
+using Campaigns.Domain;
+using Campaigns.Statistics.GroupTests;
+
+namespace Campaigns.Catalog.Results;
+
+/// <summary>What a test run did.</summary>
+/// <param name="Tested">Experiments with a result.</param>
+/// <param name="NotTestable">Experiments whose data cannot give a result, with the reason stored.</param>
+/// <param name="Incomplete">Experiments left alone because planned values are missing.</param>
+/// <param name="Ran">Whether a run was stored; false where there was nothing to test.</param>
+public sealed record TestRunSummary(int Tested, int NotTestable, int Incomplete, bool Ran);
+
+/// <summary>Runs the planned test of every experiment that is complete and not yet tested.</summary>
+/// <param name="catalog">The open catalog.</param>
+public sealed class TestRunner(Catalog catalog)
+{
+    private const string Select =
+        """
+        SELECT e.id, e.code, e.group_set_id, e.groups_are_planned, e.replicates, e.test, m.load_id, m.missing_count, m.packed
+        FROM experiments e JOIN measurements m ON m.experiment_id = e.id
+        """;
+
+    private const string Unfiltered = Select + " WHERE e.campaign_id = ?1 ORDER BY e.id, m.load_id";
+
+    private const string WithDataAfterRun = Select +
+        """
+         WHERE e.campaign_id = ?1 AND e.id IN (SELECT experiment_id FROM measurements WHERE load_id > ?2)
+        ORDER BY e.id, m.load_id
+        """;
+
+    private const string Untested = Select +
+        """
+         WHERE e.campaign_id = ?1 AND (NOT EXISTS (SELECT 1 FROM test_results r WHERE r.experiment_id = e.id)
+            OR e.id IN (SELECT experiment_id FROM measurements WHERE load_id > ?2))
+        ORDER BY e.id, m.load_id
+        """;
+
+    /// <summary>Tests, in one transaction.</summary>
+    /// <param name="code">The campaign.</param>
+    /// <param name="includeIncomplete">Whether experiments short of their planned values are tested too; recorded.</param>
+    /// <param name="progress">Told now and then how far the work is.</param>
+    /// <param name="cancel">Stops the work; nothing is then kept.</param>
+    /// <exception cref="RefusedException">The campaign is not sealed.</exception>
+    public TestRunSummary Run(string code, bool includeIncomplete, Action<WorkProgress> progress, CancellationToken cancel) => catalog.Change(() =>
+    {
+        StoredCampaign stored = new CampaignStore(catalog).Get(code);
+        if (!stored.Campaign.IsSealed)
+        {
+            throw new RefusedException($"The campaign '{code}' is not sealed: level, correction and family must be fixed before the first result is seen; run 'campaigns seal {code}'.");
+        }
+
+        return Run(stored, includeIncomplete, progress, cancel);
+    });
+
+    private TestRunSummary Run(StoredCampaign stored, bool includeIncomplete, Action<WorkProgress> progress, CancellationToken cancel)
+    {
+        (long? lastRunLoad, bool ranBefore) = LastRun(stored.Id);
+        long? lastLoad = LastLoad(stored.Id);
+        string sql = !ranBefore ? Unfiltered : includeIncomplete ? Untested : WithDataAfterRun;
+        using SqliteStatement select = catalog.Prepare(sql);
+        select.Bind(1, stored.Id);
+        if (ranBefore)
+        {
+            select.Bind(2, lastRunLoad ?? 0);
+        }
+
+        using var sets = new GroupSets(catalog, stored.Id);
+        using var results = new ResultWriter(catalog, stored.Id, lastLoad, includeIncomplete);
+        var work = new Work(sets, results, includeIncomplete);
+        long done = 0;
+        while (select.Read())
+        {
+            if (work.Take(select) && (++done & 0xff) == 0)
+            {
+                cancel.ThrowIfCancellationRequested();
+                progress(new WorkProgress("testing", done, 0, "experiments"));
+            }
+        }
+
+        work.Finish();
+        cancel.ThrowIfCancellationRequested();
+        return new TestRunSummary(results.Tested, results.NotTestable, work.Incomplete, results.Tested + results.NotTestable > 0);
+    }
+
+    private (long? LastLoad, bool Ran) LastRun(long campaignId)
+    {
+        using SqliteStatement select = catalog.Prepare("SELECT last_load_id FROM test_runs WHERE campaign_id = ?1 ORDER BY id DESC LIMIT 1");
+        return select.Bind(1, campaignId).Read() ? (select.NullableInteger(0), true) : (null, false);
+    }
+
+    private long? LastLoad(long campaignId)
+    {
+        using SqliteStatement select = catalog.Prepare("SELECT max(id) FROM loads WHERE campaign_id = ?1");
+        select.Bind(1, campaignId).Read();
+        return select.NullableInteger(0);
+    }
+
+    /// <summary>Gathers the rows of one experiment after the other and tests each when its last row has come.</summary>
+    private sealed class Work(GroupSets sets, ResultWriter results, bool includeIncomplete)
+    {
+        private readonly ObservationColumns _values = new();
+        private long _experiment;
+        private long? _groupSet;
+        private bool _groupsArePlanned;
+        private long? _replicates;
+        private GroupTest? _test;
+        private string _testKey = "";
+        private int[] _counts = new int[16];
+
+        public int Incomplete { get; private set; }
+
+        /// <summary>Takes a row; true where it began a new experiment.</summary>
+        public bool Take(SqliteStatement row)
+        {
+            bool isNew = row.Integer(0) != _experiment;
+            if (isNew)
+            {
+                Finish();
+                _values.Clear();
+                _experiment = row.Integer(0);
+                _groupSet = row.NullableInteger(2);
+                _groupsArePlanned = row.Integer(3) != 0;
+                _replicates = row.NullableInteger(4);
+                if (_test is null || !row.TextEquals(5, _testKey))
+                {
+                    _testKey = row.Text(5);
+                    _test = GroupTestRegistry.Find(_testKey)
+                        ?? throw new RefusedException($"The plan of experiment '{row.Text(1)}' names the test '{_testKey}', which this version of the program does not have.");
+                }
+            }
+
+            PackedMeasurements.Read(row.Blob(8), _values);
+            return isNew;
+        }
+
+        public void Finish()
+        {
+            if (_experiment == 0)
+            {
+                return;
+            }
+
+            int groups = sets.Labels(_groupSet).Length;
+            if (!includeIncomplete && !IsComplete(groups))
+            {
+                Incomplete++;
+                return;
+            }
+
+            results.Write(_experiment, _test!.Test(_values.Sample(groups)));
+        }
+
+        private bool IsComplete(int groups) => Completeness.IsComplete(_values.Groups, groups, _groupsArePlanned, (int?)_replicates, ref _counts);
+    }
+}
