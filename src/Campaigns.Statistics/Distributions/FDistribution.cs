@@ -15,9 +15,9 @@ public sealed class FDistribution
     /// <summary>Up to this many terms the finite sum beats the continued fraction.</summary>
     private const int MostTerms = 24;
     private const double Far = 1e280;
-    private const int CacheSize = 1024;
+    private const int CacheBits = 10;
 
-    private static readonly FDistribution?[] Cache = new FDistribution?[CacheSize];
+    private static readonly FDistribution?[] Cache = new FDistribution?[1 << CacheBits];
 
     private readonly double _a;
     private readonly double _b;
@@ -62,7 +62,7 @@ public sealed class FDistribution
     public static FDistribution For(double df1, double df2)
     {
         // Slots are replaced whole; a race between threads costs a second construction at worst.
-        uint slot = (uint)HashCode.Combine(df1, df2) % CacheSize;
+        int slot = Slot(df1, df2);
         FDistribution? law = Volatile.Read(ref Cache[slot]);
         if (law is null || law.Df1 != df1 || law.Df2 != df2)
         {
@@ -281,6 +281,12 @@ public sealed class FDistribution
     /// <summary>ln(1 + z), from z where that is small, else from 1 + z.</summary>
     private static double LogOnePlus(double z, double onePlus) =>
         Math.Abs(z) < 0.3 ? Accurate.Log1p(z) : Math.Log(onePlus);
+
+    private static int Slot(double df1, double df2)
+    {
+        ulong mixed = (BitConverter.DoubleToUInt64Bits(df1) * 0x9E3779B97F4A7C15) + (BitConverter.DoubleToUInt64Bits(df2) * 0xC2B2AE3D27D4EB4F);
+        return (int)(mixed >> (64 - CacheBits));
+    }
 
     private static double Positive(double value, string name) =>
         value > 0 && double.IsFinite(value)

@@ -47,20 +47,26 @@ internal sealed class TailFraction
         {
             Coefficients c = j <= TabledSteps ? _tabled[j - 1] : At(j);
             double numerator = c.Square * square;
-            double denominator = j + (c.Linear * x) + (c.Shift * (shifted + (j * slope)));
-            double nextTop = (denominator * top) + (numerator * previousTop);
-            double nextBottom = (denominator * bottom) + (numerator * previousBottom);
+            double denominator = Math.FusedMultiplyAdd(c.Linear, x, j) + (c.Shift * Math.FusedMultiplyAdd(j, slope, shifted));
+            double nextTop = Math.FusedMultiplyAdd(denominator, top, numerator * previousTop);
+            double nextBottom = Math.FusedMultiplyAdd(denominator, bottom, numerator * previousBottom);
             double cross = nextTop * bottom;
-            if (Math.Abs(cross - (nextBottom * top)) <= Tolerance * Math.Abs(cross))
+            if (Math.Abs(Math.FusedMultiplyAdd(-nextBottom, top, cross)) <= Tolerance * Math.Abs(cross))
             {
                 return nextTop / nextBottom;
             }
 
-            double scale = Math.Abs(nextBottom) > Big ? 1 / Big : 1;
-            previousTop = top * scale;
-            previousBottom = bottom * scale;
-            top = nextTop * scale;
-            bottom = nextBottom * scale;
+            previousTop = top;
+            previousBottom = bottom;
+            top = nextTop;
+            bottom = nextBottom;
+            if (Math.Abs(nextBottom) > Big)
+            {
+                previousTop /= Big;
+                previousBottom /= Big;
+                top /= Big;
+                bottom /= Big;
+            }
         }
 
         throw new ArithmeticException(FormattableString.Invariant($"The tail of the beta law with a = {_a:R}, b = {_b:R} did not converge at x = {x:R}."));

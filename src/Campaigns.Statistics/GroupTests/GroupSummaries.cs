@@ -6,7 +6,7 @@ namespace Campaigns.Statistics.GroupTests;
 /// <summary>The groups of an experiment in figures, from the exact sums of their typed decimals.</summary>
 public static class GroupSummaries
 {
-    private const int GroupsOnStack = 64;
+    private const int GroupsOnStack = 32;
 
     /// <summary>Count, mean, spread and interval of every group.</summary>
     /// <param name="sample">Any sample, in any order.</param>

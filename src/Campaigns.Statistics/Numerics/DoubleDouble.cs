@@ -35,9 +35,11 @@ public readonly record struct DoubleDouble
     public static DoubleDouble From(UInt128 value) => FromMagnitude(value);
 
     /// <summary>The negated number; exact.</summary>
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
     public static DoubleDouble operator -(DoubleDouble value) => new(-value.High, -value.Low);
 
     /// <summary>The sum.</summary>
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
     public static DoubleDouble operator +(DoubleDouble left, DoubleDouble right)
     {
         DoubleDouble high = TwoSum(left.High, right.High);
@@ -47,9 +49,11 @@ public readonly record struct DoubleDouble
     }
 
     /// <summary>The difference.</summary>
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
     public static DoubleDouble operator -(DoubleDouble left, DoubleDouble right) => left + -right;
 
     /// <summary>The product.</summary>
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
     public static DoubleDouble operator *(DoubleDouble left, DoubleDouble right)
     {
         DoubleDouble product = TwoProduct(left.High, right.High);
@@ -57,18 +61,19 @@ public readonly record struct DoubleDouble
         return FastTwoSum(product.High, product.Low + cross);
     }
 
-    /// <summary>The quotient, by long division: three digits, each a double.</summary>
+    /// <summary>The quotient: that of the leading doubles, and one correction.</summary>
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
     public static DoubleDouble operator /(DoubleDouble left, DoubleDouble right)
     {
         double first = left.High / right.High;
-        DoubleDouble rest = left - (right * From(first));
-        double second = rest.High / right.High;
-        rest -= right * From(second);
-        DoubleDouble quotient = FastTwoSum(first, second);
-        return FastTwoSum(quotient.High, quotient.Low + (rest.High / right.High));
+        DoubleDouble product = TwoProduct(right.High, first);
+        double low = Math.FusedMultiplyAdd(right.Low, first, product.Low);
+        double rest = (left.High - product.High) + (left.Low - low);
+        return FastTwoSum(first, rest / right.High);
     }
 
     /// <summary>The quotient by a double.</summary>
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
     public static DoubleDouble operator /(DoubleDouble left, double right)
     {
         double first = left.High / right;

@@ -107,25 +107,45 @@ public readonly ref struct ExactMoments
 
     /// <summary>n Q - S^2 of a group: n times its sum of squared deviations from its own mean, in squared units of the last typed decimal. Zero exactly where all its values are the same.</summary>
     /// <param name="group">0 to <see cref="GroupCount"/> - 1.</param>
-    public WideReal CountTimesSquaredDeviations(int group)
+    public WideReal CountTimesSquaredDeviations(int group) =>
+        _wide is null
+            ? WideReal.From(_narrow[group].CountTimesSquaredDeviations)
+            : WideReal.From(_wide[group].CountTimesSquaredDeviations);
+
+    /// <summary>The sums of squares within and between groups, in squared units of the last typed decimal.</summary>
+    /// <returns>SSW = sum of (n Q - S^2)/n, and SSB = sum of (N S - n S_total)^2/(n N^2); each exactly zero where it is zero, else of about 32 digits.</returns>
+    public (WideReal Within, WideReal Between) SumsOfSquares()
     {
+        double total = Math.Max(1, Count);
         if (_wide is not null)
         {
-            ref readonly WideSums wide = ref _wide[group];
-            return WideReal.From((wide.Count * wide.Squares) - (wide.Sum * wide.Sum));
+            WideReal wideWithin = WideReal.Zero;
+            WideReal wideBetween = WideReal.Zero;
+            foreach (WideSums group in _wide.Where(g => g.Count > 0))
+            {
+                wideWithin += WideReal.From(group.CountTimesSquaredDeviations) / group.Count;
+                WideReal above = WideReal.From((group.Sum * Count) - (_wideTotal * group.Count));
+                wideBetween += above * above / group.Count;
+            }
+
+            return (wideWithin, wideBetween / total / total);
         }
 
-        ref readonly GroupSums sums = ref _narrow[group];
-        Int128 square = Math.BigMul(sums.Sum, sums.Sum);
-        return WideReal.From((sums.SquaresTimesCount) - (UInt128)square);
-    }
+        // No number here comes near 2^255, nor near the smallest doubles: the exponent of a WideReal is not needed.
+        DoubleDouble within = default;
+        DoubleDouble between = default;
+        foreach (ref readonly GroupSums group in _narrow)
+        {
+            if (group.Count > 0)
+            {
+                within += DoubleDouble.From(group.CountTimesSquaredDeviations) / group.Count;
+                DoubleDouble above = DoubleDouble.From(Math.BigMul(group.Sum, Count) - Math.BigMul(_total, group.Count));
+                between += above * above / group.Count;
+            }
+        }
 
-    /// <summary>N S - n S_total of a group: N n times what its mean lies above the grand mean, in units of the last typed decimal.</summary>
-    /// <param name="group">0 to <see cref="GroupCount"/> - 1.</param>
-    public WideReal MeanAboveGrandMean(int group) =>
-        _wide is null
-            ? WideReal.From(Math.BigMul(_narrow[group].Sum, Count) - Math.BigMul(_total, _narrow[group].Count))
-            : WideReal.From((_wide[group].Sum * Count) - (_wideTotal * _wide[group].Count));
+        return (WideReal.From(within), WideReal.From(between / total / total));
+    }
 
     /// <summary>The sum of a group's mantissas themselves, the origin put back.</summary>
     /// <param name="group">0 to <see cref="GroupCount"/> - 1.</param>
@@ -188,5 +208,7 @@ public readonly ref struct ExactMoments
             Sum += difference;
             Squares += difference * difference;
         }
+
+        public readonly BigInteger CountTimesSquaredDeviations => (Count * Squares) - (Sum * Sum);
     }
 }

@@ -8,13 +8,13 @@ public struct GroupSums
     internal ulong SquaresLow;
     internal ulong SquaresHigh;
 
-    /// <summary>n Q, which the caller knows to fit.</summary>
-    internal readonly UInt128 SquaresTimesCount
+    /// <summary>n Q - S^2, never negative; <see cref="ExactMoments"/> has seen to it that n Q fits.</summary>
+    internal readonly UInt128 CountTimesSquaredDeviations
     {
         get
         {
             ulong high = Math.BigMul(SquaresLow, (ulong)Count, out ulong low);
-            return new(high + (SquaresHigh * (ulong)Count), low);
+            return new UInt128(high + (SquaresHigh * (ulong)Count), low) - (UInt128)Math.BigMul(Sum, Sum);
         }
     }
 }

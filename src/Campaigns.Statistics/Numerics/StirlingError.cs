@@ -25,7 +25,7 @@ public static class StirlingError
         while (z < SeriesFrom)
         {
             double r = 1 / ((2 * z) + 1);
-            sum += z >= 0.5 ? Accurate.ArtanhTail(r * r) : ((z + 0.5) * Accurate.Log1p(1 / z)) - 1;
+            sum += z >= 1 ? Accurate.ArtanhTail(r * r) : ((z + 0.5) * Accurate.Log1p(1 / z)) - 1;
             z += 1;
         }
 

@@ -1,4 +1,5 @@
 using System.Numerics;
+using System.Runtime.CompilerServices;
 
 namespace Campaigns.Statistics.Numerics;
 
@@ -16,6 +17,7 @@ public readonly struct WideReal
     private const int TabledPowers = 64;
 
     private static readonly WideReal[] PowersOfFive = TablePowersOfFive();
+    private static readonly WideReal[] InversePowersOfFive = [.. PowersOfFive.Select(p => From(1.0) / p)];
 
     private readonly DoubleDouble _fraction;
     private readonly long _exponent;
@@ -55,6 +57,9 @@ public readonly struct WideReal
     public static WideReal From(Int128 value) => new(DoubleDouble.From(value), 0);
 
     /// <inheritdoc cref="From(Int128)"/>
+    public static WideReal From(UInt128 value) => new(DoubleDouble.From(value), 0);
+
+    /// <inheritdoc cref="From(Int128)"/>
     /// <remarks>Gives the same bits as the other overload wherever that one could hold the integer.</remarks>
     public static WideReal From(BigInteger value)
     {
@@ -70,19 +75,19 @@ public readonly struct WideReal
     /// <returns>Right to about 2^-102, for powers beyond 64 to about |power| times 2^-104.</returns>
     public static WideReal PowerOfTen(long power)
     {
-        WideReal five = PowerOfFive(Math.Abs(power));
-        if (power < 0)
-        {
-            five = From(1.0) / five;
-        }
-
+        WideReal five =
+            power >= 0 ? PowerOfFive(power)
+            : power >= -TabledPowers ? InversePowersOfFive[-power]
+            : From(1.0) / PowerOfFive(-power);
         return new(five._fraction, five._exponent + power);
     }
 
     /// <summary>The negated number; exact.</summary>
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
     public static WideReal operator -(WideReal value) => new(-value._fraction, value._exponent);
 
     /// <summary>The sum.</summary>
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
     public static WideReal operator +(WideReal left, WideReal right)
     {
         if (left._exponent == right._exponent)
@@ -99,14 +104,17 @@ public readonly struct WideReal
     }
 
     /// <summary>The difference.</summary>
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
     public static WideReal operator -(WideReal left, WideReal right) => left + -right;
 
     /// <summary>The product.</summary>
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
     public static WideReal operator *(WideReal left, WideReal right) =>
         new(left._fraction * right._fraction, left._exponent + right._exponent);
 
     /// <summary>The quotient.</summary>
     /// <exception cref="DivideByZeroException">The divisor is zero.</exception>
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
     public static WideReal operator /(WideReal left, WideReal right) =>
         right.Sign == 0
             ? throw new DivideByZeroException()
@@ -114,6 +122,7 @@ public readonly struct WideReal
 
     /// <summary>The quotient by a double.</summary>
     /// <exception cref="DivideByZeroException">The divisor is zero.</exception>
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
     public static WideReal operator /(WideReal left, double right) =>
         right == 0 ? throw new DivideByZeroException() : new(left._fraction / right, left._exponent);
 
