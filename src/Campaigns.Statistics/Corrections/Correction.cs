@@ -1,3 +1,4 @@
+using System.Buffers;
 using Campaigns.Statistics.Probability;
 
 namespace Campaigns.Statistics.Corrections;
@@ -29,49 +30,69 @@ public abstract class Correction
 
     /// <summary>Adjusted p-values of a family, logarithms included, in the order in which the family's p-values were given.</summary>
     /// <param name="family">The p-values at hand with the size of the family they belong to.</param>
-    /// <returns>One adjusted p-value for each p-value given.</returns>
-    public PValue[] Adjust(RankedFamily family) => throw new NotImplementedException();
+    /// <returns>One adjusted p-value for each p-value given; equal p-values get equal ones, smaller ones never larger ones. Only p = 0 gives 0.</returns>
+    public PValue[] Adjust(RankedFamily family)
+    {
+        double[] values = ArrayPool<double>.Shared.Rent(family.Count);
+        double[] tailLogs = new double[family.TailCount];
+        AdjustRanked(family, values.AsSpan(0, family.Count), tailLogs);
+        var adjusted = new PValue[family.Count];
+        ReadOnlySpan<int> order = family.Order;
+        for (int rank = 0; rank < order.Length; rank++)
+        {
+            double value = values[rank];
+            adjusted[order[rank]] =
+                rank < tailLogs.Length && value < RankedFamily.TailBound ? PValue.FromValueAndLog(value, tailLogs[rank])
+                : value == family.Sorted[rank] ? PValue.FromValueAndLog(value, family.Log(rank))
+                : PValue.FromValue(value);
+        }
+
+        ArrayPool<double>.Shared.Return(values);
+        return adjusted;
+    }
 
     /// <summary>Adjusted p-values as doubles, in the order in which the family's p-values were given.</summary>
     /// <param name="family">The p-values at hand with the size of the family they belong to.</param>
-    /// <param name="adjusted">Takes one adjusted p-value for each p-value given.</param>
-    public void Adjust(RankedFamily family, Span<double> adjusted) => throw new NotImplementedException();
+    /// <param name="adjusted">Takes one adjusted p-value for each p-value given; 0 only for p = 0 and below the range of doubles.</param>
+    /// <exception cref="ArgumentException">The memory to fill is not as long as the p-values are many.</exception>
+    public void Adjust(RankedFamily family, Span<double> adjusted)
+    {
+        if (adjusted.Length != family.Count)
+        {
+            throw new ArgumentException(
+                FormattableString.Invariant($"Memory for {adjusted.Length} adjusted p-values was given for a family with {family.Count} p-values."),
+                nameof(adjusted));
+        }
+
+        double[] values = ArrayPool<double>.Shared.Rent(family.Count);
+        AdjustRanked(family, values.AsSpan(0, family.Count), new double[family.TailCount]);
+        ReadOnlySpan<int> order = family.Order;
+        for (int rank = 0; rank < order.Length; rank++)
+        {
+            adjusted[order[rank]] = values[rank];
+        }
+
+        ArrayPool<double>.Shared.Return(values);
+    }
 
     /// <summary>The procedure itself, on ascending p-values.</summary>
     /// <param name="sorted">The p-values at hand, ascending, in [0, 1].</param>
     /// <param name="familySize">Size of the family, at least the number of p-values; the rest counts as p = 1.</param>
-    /// <param name="adjusted">Takes the adjusted p-values, ascending.</param>
+    /// <param name="adjusted">Takes the adjusted p-values, ascending; values above 1 are cut to 1 afterwards.</param>
     protected abstract void AdjustSorted(ReadOnlySpan<double> sorted, int familySize, Span<double> adjusted);
-}
 
-/// <summary>What kind of error a procedure holds at its level.</summary>
-public enum ErrorRate
-{
-    /// <summary>Each test at the level on its own: nothing is held over the family.</summary>
-    PerTest,
+    private void AdjustRanked(RankedFamily family, Span<double> values, Span<double> tailLogs)
+    {
+        AdjustSorted(family.Sorted, family.FamilySize, values);
+        foreach (ref double value in values)
+        {
+            value = Math.Min(value, 1);
+        }
 
-    /// <summary>The probability of at least one false rejection in the family.</summary>
-    Familywise,
-
-    /// <summary>The expected share of false rejections among all rejections.</summary>
-    FalseDiscovery,
-}
-
-/// <summary>A condition on the joint law of the p-values, from the weakest demand to the strongest.</summary>
-public enum Dependence
-{
-    /// <summary>Any joint law.</summary>
-    Any,
-
-    /// <summary>The p-values of true nulls satisfy Sidak's inequality: P(all above c) is at least the product; holds under independence and for two-sided normal tests of any correlation.</summary>
-    Sidak,
-
-    /// <summary>Simes' inequality holds for the true nulls; holds under independence and positive regression dependence.</summary>
-    Simes,
-
-    /// <summary>Positive regression dependence on the subset of true nulls; independence is a special case.</summary>
-    PositiveRegression,
-
-    /// <summary>Independent p-values.</summary>
-    Independent,
+        if (tailLogs.Length > 0)
+        {
+            FarTail.Logs(family, AdjustSorted, tailLogs);
+            FarTail.Restore(values, tailLogs);
+        }
+    }
 }
