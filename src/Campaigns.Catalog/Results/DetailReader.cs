@@ -26,8 +26,8 @@ public sealed class DetailReader(Catalog catalog)
         (ObservationColumns values, int missing) = ReadValues(campaignId, code);
         IReadOnlyList<string> labels = result.Plan.Groups;
         GroupedSample sample = values.Sample(labels.Count);
-        IReadOnlyList<GroupSummary> summaries = GroupSummaries.Of(sample, Confidence);
-        VariationTable? variation = result.P is null ? null : OneWayLayout.Variation(sample);
+        GroupSummary[] summaries = GroupSummaries.Of(sample, Confidence);
+        VariationTable? variation = result.P is null ? null : OneWayLayout.Of(sample).Table();
         var groups = new List<GroupDetail>();
         for (int group = 0; group < labels.Count; group++)
         {
