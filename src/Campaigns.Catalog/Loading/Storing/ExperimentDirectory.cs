@@ -1,5 +1,4 @@
 using Campaigns.Catalog.Measurements;
-using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Providers;
 
 namespace Campaigns.Catalog.Loading;

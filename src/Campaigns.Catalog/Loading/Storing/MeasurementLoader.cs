@@ -1,0 +1,234 @@
+using Campaigns.Catalog.Measurements;
+using Campaigns.Catalog.Plans;
+using Campaigns.Catalog.Providers;
+using Campaigns.Domain;
+
+namespace Campaigns.Catalog.Loading;
+
+/// <summary>Takes measurement files into the catalog, each whole or not at all.</summary>
+/// <remarks>
+/// One pass over the file. Where the rows of an experiment come together, which is how laboratories write them, memory holds one experiment at a time;
+/// where they do not, the file is begun again and its rows are gathered first (<see cref="RowHeap"/>). O(rows) either way.
+/// </remarks>
+/// <param name="catalog">The open catalog.</param>
+public sealed class MeasurementLoader(Catalog catalog)
+{
+    private const int RowsPerReport = 1 << 14;
+
+    /// <summary>Loads one file.</summary>
+    /// <param name="code">The campaign.</param>
+    /// <param name="path">The file.</param>
+    /// <param name="options">How it is taken in.</param>
+    /// <param name="progress">Told now and then how far the work is.</param>
+    /// <param name="cancel">Stops the work; nothing of the file is then kept.</param>
+    /// <exception cref="RefusedException">The file has problems, was loaded before, or the campaign takes no data; nothing was changed.</exception>
+    /// <exception cref="LoadingException">The file cannot be read.</exception>
+    public LoadSummary Load(string code, string path, LoadOptions options, Action<WorkProgress> progress, CancellationToken cancel)
+    {
+        ArgumentNullException.ThrowIfNull(options);
+        return catalog.Change(() =>
+        {
+            StoredCampaign campaign = new CampaignStore(catalog).Get(code);
+            FileDigest digest = FileDigest.Sha256(path);
+            RefuseRepeat(campaign, digest, path);
+            if (!campaign.Campaign.IsSealed && !campaign.Campaign.IsExploratory && HasPlan(campaign.Id))
+            {
+                throw new RefusedException($"The plan of '{code}' is not sealed: fix it before the data come, with 'campaigns seal {code}', and load again.");
+            }
+
+            return new OneFile(catalog, campaign, path, digest, options, progress, cancel).Load();
+        });
+    }
+
+    /// <summary>Whether a file's bytes were loaded into a campaign before.</summary>
+    /// <param name="campaignId">The campaign.</param>
+    /// <param name="digest">The file.</param>
+    public bool WasLoaded(long campaignId, FileDigest digest)
+    {
+        ArgumentNullException.ThrowIfNull(digest);
+        return LoadedAt(campaignId, digest) is not null;
+    }
+
+    private void RefuseRepeat(StoredCampaign campaign, FileDigest digest, string path)
+    {
+        if (LoadedAt(campaign.Id, digest) is (string name, DateTimeOffset at))
+        {
+            throw new RefusedException(FormattableString.Invariant($"The file '{path}' was loaded into '{campaign.Campaign.Code}' before, as '{name}' on {at:yyyy-MM-dd HH:mm:ss} UTC (same SHA-256 {digest.Hex[..12]}...); it was not loaded again."));
+        }
+    }
+
+    private (string Name, DateTimeOffset At)? LoadedAt(long campaignId, FileDigest digest)
+    {
+        using SqliteStatement select = catalog.Prepare("SELECT file_name, loaded_at FROM loads WHERE campaign_id = ?1 AND sha256 = ?2");
+        select.Bind(1, campaignId).Bind(2, digest.Hex);
+        return select.Read() ? (select.Text(0), Instants.FromMicroseconds(select.Integer(1))) : null;
+    }
+
+    private bool HasPlan(long campaignId)
+    {
+        using SqliteStatement any = catalog.Prepare("SELECT EXISTS (SELECT 1 FROM experiments WHERE campaign_id = ?1)");
+        any.Bind(1, campaignId).Read();
+        return any.Integer(0) != 0;
+    }
+
+    /// <summary>The loading of one file.</summary>
+    private sealed class OneFile(Catalog catalog, StoredCampaign campaign, string path, FileDigest digest, LoadOptions options, Action<WorkProgress> progress, CancellationToken cancel)
+    {
+        private readonly long _loadId = NextId(catalog);
+        private readonly Utf8Interner _labels = new();
+        private readonly Utf8Interner _codes = new();
+        private readonly NameComplaints _complaints = new();
+
+        public LoadSummary Load()
+        {
+            Run("PRAGMA defer_foreign_keys = ON");
+            Run("SAVEPOINT before_file");
+            return TogetherOrNull() ?? Gathered();
+        }
+
+        /// <summary>The way for files in which the rows of an experiment come together; null where they turn out not to.</summary>
+        private LoadSummary? TogetherOrNull()
+        {
+            using var file = MeasurementFile.Open(path, options.Reading);
+            using ExperimentSink sink = NewSink();
+            int current = -1;
+            while (file.Read(out MeasurementRow row))
+            {
+                if (current < 0 || !row.Experiment.SequenceEqual(_codes[current]))
+                {
+                    if (current >= 0)
+                    {
+                        sink.End();
+                    }
+
+                    int number = _codes.Intern(row.Experiment);
+                    if (number <= current)
+                    {
+                        Run("ROLLBACK TO before_file");
+                        _complaints.Clear();
+                        return null;
+                    }
+
+                    current = number;
+                    sink.Begin(row.Experiment, row.Line);
+                }
+
+                AddTo(sink, row);
+                Report(file);
+            }
+
+            if (current >= 0)
+            {
+                sink.End();
+            }
+
+            return Finish(file, sink);
+        }
+
+        /// <summary>The way for files in any order.</summary>
+        private LoadSummary Gathered()
+        {
+            using var file = MeasurementFile.Open(path, options.Reading);
+            var rows = new RowHeap();
+            while (file.Read(out MeasurementRow row))
+            {
+                rows.Add(_codes.Intern(row.Experiment), _labels.Intern(row.Group), row);
+                Report(file);
+            }
+
+            using ExperimentSink sink = NewSink();
+            if (file.Problems.IsEmpty)
+            {
+                rows.HandTo(sink, _codes, cancel);
+            }
+
+            return Finish(file, sink);
+        }
+
+        private void AddTo(ExperimentSink sink, in MeasurementRow row)
+        {
+            ushort group = sink.GroupOf(_labels.Intern(row.Group), row.Line);
+            if (row.IsMissing)
+            {
+                sink.Values.MissingCount++;
+                return;
+            }
+
+            if (row.Value.IsWide)
+            {
+                sink.Values.AddWide(row.Value.WideMantissa, row.Value.Decimals, group, row.Line);
+            }
+            else
+            {
+                sink.Values.Add(row.Value.Mantissa, row.Value.Decimals, group, row.Line);
+            }
+
+            if (!row.Specimen.IsEmpty || !row.Block.IsEmpty || row.Order is not null)
+            {
+                sink.Values.Describe(row.Specimen, row.Block, row.Order);
+            }
+        }
+
+        private LoadSummary Finish(MeasurementFile file, ExperimentSink sink)
+        {
+            _complaints.ReportTo(file.Problems, file.Name);
+            if (!file.Problems.IsEmpty)
+            {
+                throw new RefusedException(
+                    FormattableString.Invariant($"The file '{path}' was refused; nothing of it was loaded. Problems: {file.Problems.Count}."),
+                    [.. file.Problems.Sentences()]);
+            }
+
+            if (new FileInfo(path).Length != digest.Size)
+            {
+                throw new RefusedException($"The file '{path}' changed while it was read; nothing of it was loaded. Load it again when it is finished.");
+            }
+
+            if (!campaign.Campaign.IsExploratory && !campaign.Campaign.IsSealed)
+            {
+                new CampaignStore(catalog).MarkExploratory(campaign.Id);
+            }
+
+            InsertLoad(file, sink);
+            return new LoadSummary(
+                System.IO.Path.GetFileName(path), digest.Hex, file.RowCount, sink.MissingCount, sink.ExperimentCount,
+                sink.NewExperimentCount, sink.Amended, file.IgnoredColumns, file.RespelledNames);
+        }
+
+        private void InsertLoad(MeasurementFile file, ExperimentSink sink)
+        {
+            using SqliteStatement insert = catalog.Prepare(
+                """
+                INSERT INTO loads (id, campaign_id, file_name, sha256, byte_count, row_count, missing_count, experiment_count, loaded_at, amendment_reason)
+                VALUES (?1, ?2, ?3, ?4, ?5, ?6, ?7, ?8, ?9, ?10)
+                """);
+            insert.Bind(1, _loadId).Bind(2, campaign.Id).Bind(3, System.IO.Path.GetFileName(path)).Bind(4, digest.Hex).Bind(5, digest.Size)
+                .Bind(6, file.RowCount).Bind(7, sink.MissingCount).Bind(8, (long)sink.ExperimentCount).Bind(9, catalog.Now)
+                .Bind(10, sink.Amended.Count > 0 ? options.AmendmentReason : null).Run();
+        }
+
+        private ExperimentSink NewSink() => new(catalog, campaign, options, _loadId, digest.Size, _labels, _complaints);
+
+        private void Report(MeasurementFile file)
+        {
+            if (file.RowCount % RowsPerReport == 0)
+            {
+                cancel.ThrowIfCancellationRequested();
+                progress(new WorkProgress($"loading {file.Name}", file.Position, digest.Size, "bytes"));
+            }
+        }
+
+        private void Run(string sql)
+        {
+            using SqliteStatement statement = catalog.Prepare(sql);
+            statement.Run();
+        }
+
+        private static long NextId(Catalog catalog)
+        {
+            using SqliteStatement next = catalog.Prepare("SELECT coalesce(max(id), 0) + 1 FROM loads");
+            next.Read();
+            return next.Integer(0);
+        }
+    }
+}
