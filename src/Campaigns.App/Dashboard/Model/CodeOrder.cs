@@ -10,7 +10,15 @@ public sealed class CodeOrder : IComparer<string>
     public int Compare(string? x, string? y)
     {
         ReadOnlySpan<char> a = x, b = y;
-        int i = 0, j = 0;
+
+        // What both begin with needs no look, except the digits of a number that may go on.
+        int same = a.CommonPrefixLength(b);
+        while (same > 0 && char.IsAsciiDigit(a[same - 1]))
+        {
+            same--;
+        }
+
+        int i = same, j = same;
         while (i < a.Length && j < b.Length)
         {
             if (!char.IsAsciiDigit(a[i]) || !char.IsAsciiDigit(b[j]))

@@ -14,6 +14,7 @@ public sealed class DashboardModel
     private ExperimentFilter _filter = ExperimentFilter.Read("", out _)!;
     private int[] _order = [];
     private int[] _rows = [];
+    private string[]? _searchable;
     private int _selectedRow;
 
     /// <summary>Makes the model; the first experiment in the plan's order is selected.</summary>
@@ -181,6 +182,7 @@ public sealed class DashboardModel
         string? code = Selected?.Plan.Code;
         Standing = _source.Reload();
         _details.Clear();
+        _searchable = null;
         (Correction, Heading, Ranking) = Read(Standing);
         Sort();
         Narrow(code is null ? -1 : Standing.Experiments.ToList().FindIndex(e => e.Plan.Code == code));
@@ -198,7 +200,16 @@ public sealed class DashboardModel
     private void Narrow(int keep)
     {
         IReadOnlyList<ExperimentResult> all = Standing.Experiments;
-        _rows = Array.FindAll(_order, position => _filter.Shows(all[position]));
+        if (FilterText.Length == 0)
+        {
+            _rows = _order;
+        }
+        else
+        {
+            string[] searchable = _searchable ??= [.. all.Select(ExperimentFilter.Searchable)];
+            _rows = Array.FindAll(_order, position => _filter.Shows(all[position], searchable[position]));
+        }
+
         _selectedRow = Math.Max(0, Array.IndexOf(_rows, keep));
     }
 }

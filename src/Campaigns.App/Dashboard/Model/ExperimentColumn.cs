@@ -24,7 +24,7 @@ public sealed class ExperimentColumn
         new("p", e => e.P is { } p ? NumberText.P(p) : null) { Number = e => e.P?.Log },
         new("adjusted", e => e.AdjustedP is { } p ? NumberText.P(p) : null) { Number = e => e.AdjustedP?.Log },
         new("survives", e => e.Survives is { } yes ? yes ? "yes" : "no" : null) { Number = e => e.Survives is { } yes ? yes ? 0 : 1 : null, IsRightAligned = false },
-        new("status", e => e.Status.Word()) { Number = e => (int)e.Status, IsRightAligned = false },
+        new("status", e => e.Amendments.Count > 0 ? e.Status.Word() + ", amended" : e.Status.Word()) { Number = e => (int)e.Status, IsRightAligned = false },
     ];
 
     /// <summary>The column's name.</summary>

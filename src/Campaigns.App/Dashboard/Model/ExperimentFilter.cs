@@ -10,8 +10,10 @@ namespace Campaigns.App.Dashboard.Model;
 /// </remarks>
 public sealed class ExperimentFilter
 {
+    private const string SurvivalWord = "survives:";
     private static readonly string[] Signs = ["<=", ">=", "<", ">", "="];
     private readonly List<Predicate<ExperimentResult>> _conditions = [];
+    private readonly List<string> _words = [];
 
     private ExperimentFilter(string text) => Text = text;
 
@@ -27,22 +29,42 @@ public sealed class ExperimentFilter
         ExperimentFilter filter = new(text);
         foreach (string word in text.Split(' ', StringSplitOptions.RemoveEmptyEntries))
         {
-            if (ConditionOf(word, out problem) is not { } condition)
+            if (!IsCondition(word))
+            {
+                filter._words.Add(word.ToLowerInvariant());
+            }
+            else if (ConditionOf(word, out problem) is { } condition)
+            {
+                filter._conditions.Add(condition);
+            }
+            else
             {
                 return null;
             }
-
-            filter._conditions.Add(condition);
         }
 
         problem = null;
         return filter;
     }
 
+    /// <summary>The text in which words are looked for.</summary>
+    /// <param name="experiment">The experiment.</param>
+    public static string Searchable(ExperimentResult experiment) =>
+        string.Join('\n', experiment.Plan.Code, experiment.Plan.Title, experiment.Plan.Response, experiment.Status.Word()).ToLowerInvariant();
+
     /// <summary>Whether an experiment is shown.</summary>
     /// <param name="experiment">The experiment.</param>
-    public bool Shows(ExperimentResult experiment)
+    /// <param name="searchable">Its <see cref="Searchable"/> text.</param>
+    public bool Shows(ExperimentResult experiment, string searchable)
     {
+        foreach (string word in _words)
+        {
+            if (!searchable.Contains(word, StringComparison.Ordinal))
+            {
+                return false;
+            }
+        }
+
         foreach (Predicate<ExperimentResult> condition in _conditions)
         {
             if (!condition(experiment))
@@ -54,19 +76,18 @@ public sealed class ExperimentFilter
         return true;
     }
 
+    private static bool IsCondition(string word) =>
+        word.StartsWith(SurvivalWord, StringComparison.OrdinalIgnoreCase) || word.AsSpan().ContainsAny("<>=");
+
     private static Predicate<ExperimentResult>? ConditionOf(string word, out string? problem)
     {
         problem = null;
-        if (word.StartsWith("survives:", StringComparison.OrdinalIgnoreCase))
+        if (word.StartsWith(SurvivalWord, StringComparison.OrdinalIgnoreCase))
         {
-            return Survival(word["survives:".Length..], out problem);
+            return Survival(word[SurvivalWord.Length..], out problem);
         }
 
-        if (Signs.FirstOrDefault(s => word.Contains(s, StringComparison.Ordinal)) is not { } sign)
-        {
-            return e => Holds(e, word);
-        }
-
+        string sign = Signs.First(s => word.Contains(s, StringComparison.Ordinal));
         int at = word.IndexOf(sign, StringComparison.Ordinal);
         string name = word[..at].ToLowerInvariant();
         if (ExperimentColumn.All.FirstOrDefault(c => c.Name == name && c.IsRightAligned)?.Number is not { } number)
@@ -100,12 +121,6 @@ public sealed class ExperimentFilter
                 return null;
         }
     }
-
-    private static bool Holds(ExperimentResult e, string word) =>
-        e.Plan.Code.Contains(word, StringComparison.OrdinalIgnoreCase)
-        || e.Plan.Title.Contains(word, StringComparison.OrdinalIgnoreCase)
-        || e.Plan.Response.Contains(word, StringComparison.OrdinalIgnoreCase)
-        || e.Status.Word().Contains(word, StringComparison.Ordinal);
 
     private static bool Compares(double? value, string sign, double bound) => value is { } v && sign switch
     {

@@ -69,16 +69,17 @@ public static class ExperimentOrder
             texts[i] = column.TextOf(experiments[i]) ?? "";
         }
 
-        int[] order = [.. Enumerable.Range(0, texts.Length)];
+        (string Text, int Position)[] order = [.. texts.Select((text, i) => (text, i))];
         int sign = isFalling ? -1 : 1;
-        Array.Sort(order, (i, j) => Compare(texts, i, j, sign));
-        return order;
+        Array.Sort(order, (a, b) => Compare(a, b, sign));
+        return Array.ConvertAll(order, o => o.Position);
     }
 
-    private static int Compare(string[] texts, int i, int j, int sign)
+    private static int Compare((string Text, int Position) a, (string Text, int Position) b, int sign)
     {
-        bool first = texts[i].Length > 0, second = texts[j].Length > 0;
-        int compared = first && second ? sign * CodeOrder.Instance.Compare(texts[i], texts[j]) : second.CompareTo(first);
-        return compared != 0 ? compared : i.CompareTo(j);
+        int compared = a.Text.Length == 0 || b.Text.Length == 0
+            ? (a.Text.Length == 0).CompareTo(b.Text.Length == 0)
+            : sign * CodeOrder.Instance.Compare(a.Text, b.Text);
+        return compared != 0 ? compared : a.Position.CompareTo(b.Position);
     }
 }

@@ -11,6 +11,7 @@ public sealed class Ranking
     private readonly Correction? _correction;
     private readonly int[] _order;
     private readonly int[] _rankOf;
+    private readonly Dictionary<int, double?> _boundaries = [];
 
     /// <summary>Ranks the tested experiments of a campaign; equal p-values stay in the plan's order.</summary>
     /// <param name="standing">The campaign as it stands.</param>
@@ -25,6 +26,10 @@ public sealed class Ranking
         for (int i = 0; i < Count; i++)
         {
             _rankOf[_order[i]] = i + 1;
+            if (At(i + 1) is { Survives: true } survivor)
+            {
+                LargestSurvivor = survivor.P;
+            }
         }
 
         FamilySize = Math.Max(standing.FamilySize, Count);
@@ -60,13 +65,20 @@ public sealed class Ranking
     /// <param name="rank">1 to <see cref="Count"/>.</param>
     public double Log10At(int rank) => At(rank).P!.Value.Log / Math.Log(10);
 
+    /// <summary>The largest p-value that survives; null without a survivor.</summary>
+    public PValue? LargestSurvivor { get; }
+
     /// <summary>The boundary at a rank; null where there is none.</summary>
     /// <param name="rank">1 to <see cref="FamilySize"/>.</param>
-    public double? BoundaryAt(int rank) => _correction?.BoundaryAt(rank, FamilySize, _standing.Campaign.Level.Value);
+    /// <remarks>Kept, since some corrections take time in proportion to the family.</remarks>
+    public double? BoundaryAt(int rank)
+    {
+        if (!_boundaries.TryGetValue(rank, out double? boundary))
+        {
+            boundary = _correction?.BoundaryAt(rank, FamilySize, _standing.Campaign.Level.Value);
+            _boundaries.Add(rank, boundary);
+        }
 
-    /// <summary>The largest p-value that survives; null without a survivor.</summary>
-    public PValue? LargestSurvivor => Enumerable.Range(1, Count).Select(At).LastOrDefault(e => e.Survives == true)?.P;
-
-    /// <summary>The smallest p-value that does not survive; null where all do.</summary>
-    public PValue? SmallestOther => Enumerable.Range(1, Count).Select(At).FirstOrDefault(e => e.Survives != true)?.P;
+        return boundary;
+    }
 }

@@ -16,6 +16,8 @@ public sealed class ExperimentsPage : DashboardPage
     public const int SideBySideWidth = 110;
 
     private const int NarrowestList = 62;
+    private const int WidestList = 104;
+    private const int NarrowestDetail = 48;
     private const int FilterLabel = 7;
     private const int FilterWidth = 22;
     private const int NoteRows = 2;
@@ -77,14 +79,14 @@ public sealed class ExperimentsPage : DashboardPage
     /// <inheritdoc/>
     public override IReadOnlyList<(string Key, string Does)> Keys => _isDetailOpen
         ? [("Esc", "list"), ("Up/Down", "scroll"), ("Left/Right", "previous/next"), ("F1", "help"), ("q", "quit")]
-        : [("Enter", "detail"), ("/", "filter"), ("s", "sort column"), ("r", "reverse"), TurnKeys, ("F5", "reload"), ("F1", "help"), ("q", "quit")];
+        : [("Enter", "detail"), ("/", "filter"), ("s", "sort"), ("r", "reverse"), TurnKeys, ("F5", "reload"), ("F1", "help"), ("q", "quit")];
 
     /// <inheritdoc/>
     public override View Entrance => _isDetailOpen ? _detail : _list;
 
     private bool IsWide => Frame.Width >= SideBySideWidth;
 
-    private int ListWidth => IsWide ? Math.Max(NarrowestList, Frame.Width * 56 / 100) : Frame.Width;
+    private int ListWidth => IsWide ? Math.Clamp(Frame.Width - NarrowestDetail, NarrowestList, WidestList) : Frame.Width;
 
     /// <inheritdoc/>
     public override bool Back()

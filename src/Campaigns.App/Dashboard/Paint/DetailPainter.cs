@@ -47,8 +47,8 @@ public static class DetailPainter
         {
             string df = result switch
             {
-                { Df1: { } df1, Df2: { } df2 } => $" on {Number(df1)} and {Number(df2)} degrees of freedom",
-                { Df1: { } df1 } => $" on {Number(df1)} degrees of freedom",
+                { Df1: { } df1, Df2: { } df2 } => $" on {Freedom(df1)} and {Freedom(df2)} degrees of freedom",
+                { Df1: { } df1 } => $" on {Freedom(df1)} degrees of freedom",
                 _ => "",
             };
             page.Line($"statistic {Number(statistic)}{df}");
@@ -124,6 +124,8 @@ public static class DetailPainter
     }
 
     private static string Number(double value) => NumberText.Screen(value, Digits);
+
+    private static string Freedom(double df) => df == Math.Floor(df) ? NumberText.RoundTrip(df) : Number(df);
 
     private static string Percent(double confidence) => NumberText.RoundTrip(Math.Round(confidence * 100, 6)) + "%";
 

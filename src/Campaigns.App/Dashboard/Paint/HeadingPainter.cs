@@ -3,13 +3,16 @@ using Campaigns.App.Dashboard.Model;
 
 namespace Campaigns.App.Dashboard.Paint;
 
-/// <summary>Paints the three lines above every page.</summary>
+/// <summary>Paints the lines above every page: what is held, how far it is, and what that means with all its conditions.</summary>
 public static class HeadingPainter
 {
-    /// <summary>Rows of the heading.</summary>
-    public const int Height = 3;
-
+    private const int LinesOfFacts = 2;
     private const int ShortestCode = 8;
+
+    /// <summary>Rows that the heading needs.</summary>
+    /// <param name="heading">What it says.</param>
+    /// <param name="width">Cells across.</param>
+    public static int HeightOf(CampaignHeading heading, int width) => LinesOfFacts + MeaningOf(heading, width).Count;
 
     /// <summary>Paints the heading.</summary>
     /// <param name="heading">What it says.</param>
@@ -17,7 +20,7 @@ public static class HeadingPainter
     /// <param name="glyphs">The signs.</param>
     public static TextCanvas Paint(CampaignHeading heading, int width, GlyphSet glyphs)
     {
-        TextCanvas canvas = new(width, Height);
+        TextCanvas canvas = new(width, HeightOf(heading, width));
         string between = " " + glyphs.Between + " ";
         string held = string.Join(between, heading.Held);
         int room = width - CellText.Width(held) - between.Length - 1;
@@ -36,7 +39,14 @@ public static class HeadingPainter
         int next = canvas.Write(1, 1, string.Join(between, progress) + between);
         Ink review = heading.ReviewTrouble is null ? Ink.Text : Ink.Warning;
         canvas.Write(next, 1, CellText.Fit(heading.Review, width - next, glyphs.Cut), review);
-        canvas.Write(1, 2, CellText.Fit(heading.Meaning, width - 1, glyphs.Cut), Ink.Quiet);
+        IReadOnlyList<string> meaning = MeaningOf(heading, width);
+        for (int i = 0; i < meaning.Count; i++)
+        {
+            canvas.Write(1, LinesOfFacts + i, meaning[i], Ink.Quiet);
+        }
+
         return canvas;
     }
+
+    private static IReadOnlyList<string> MeaningOf(CampaignHeading heading, int width) => CellText.Wrap(heading.Meaning, Math.Max(40, width - 2));
 }

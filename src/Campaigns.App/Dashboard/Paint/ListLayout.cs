@@ -3,6 +3,7 @@ using Campaigns.App.Dashboard.Canvas;
 using Campaigns.App.Dashboard.Model;
 using Campaigns.App.Output;
 using Campaigns.Domain;
+using Campaigns.Statistics.Probability;
 
 namespace Campaigns.App.Dashboard.Paint;
 
@@ -23,7 +24,8 @@ public sealed class ListLayout
     {
         _code = Math.Clamp(Longest(experiments, e => CellText.Width(e.Plan.Code)), "experiment".Length, LongestCode);
         _title = Math.Max("title".Length, Longest(experiments, e => e.Plan.Title.Length));
-        _status = Math.Max(ShortestStatus, Longest(experiments, e => e.Status.Word().Length));
+        ExperimentColumn status = ExperimentColumn.Named("status");
+        _status = Math.Max(ShortestStatus, Longest(experiments, e => status.TextOf(e)!.Length));
         _fixed = new()
         {
             ["groups"] = "groups".Length,
@@ -37,24 +39,30 @@ public sealed class ListLayout
 
     /// <summary>The columns that a width has room for, with their first cells and widths.</summary>
     /// <param name="width">Cells across.</param>
-    /// <returns>The title goes first where there is too little room; the others are then cut at the right edge.</returns>
+    /// <returns>Where there is too little room, the title goes first, then groups and n; what is still too wide ends at the right edge.</returns>
     public IReadOnlyList<(ExperimentColumn Column, int X, int Width)> Place(int width)
     {
-        int gaps = ExperimentColumn.All.Count - 1;
-        int spare = width - _code - _fixed.Values.Sum() - gaps;
-        int status = Math.Clamp(spare - Math.Min(_title, Math.Max(ShortestTitle, spare / 2)), Math.Min(ShortestStatus, _status), _status);
-        int title = Math.Min(spare - status, _title);
+        HashSet<string> left = [];
+        int spare = width - _code - _fixed.Values.Sum() - (ExperimentColumn.All.Count - 1);
+        int title = Math.Min(_title, spare - Math.Min(_status, Math.Max(ShortestStatus, spare / 2)));
         if (title < ShortestTitle)
         {
-            title = 0;
-            status = Math.Clamp(spare + 1, ShortestStatus, _status);
+            title = -1;
+            foreach (string name in new[] { "groups", "n" })
+            {
+                if (spare - title < ShortestStatus && left.Add(name))
+                {
+                    spare += _fixed[name] + 1;
+                }
+            }
         }
 
+        int status = Math.Clamp(spare - title, ShortestStatus, _status);
         List<(ExperimentColumn Column, int X, int Width)> placed = [];
         int x = 0;
         foreach (ExperimentColumn column in ExperimentColumn.All)
         {
-            int w = column.Name switch { "experiment" => _code, "title" => title, "status" => status, _ => _fixed[column.Name] };
+            int w = column.Name switch { "experiment" => _code, "title" => title, "status" => status, _ => left.Contains(column.Name) ? 0 : _fixed[column.Name] };
             if (w > 0)
             {
                 placed.Add((column, x, w));
@@ -77,9 +85,9 @@ public sealed class ListLayout
     }
 
     // The text of a p-value is longest where its exponent is, that is at the smallest.
-    private static int SmallestWidth(IReadOnlyList<ExperimentResult> experiments, Func<ExperimentResult, Statistics.Probability.PValue?> p)
+    private static int SmallestWidth(IReadOnlyList<ExperimentResult> experiments, Func<ExperimentResult, PValue?> p)
     {
-        Statistics.Probability.PValue smallest = Statistics.Probability.PValue.One;
+        PValue smallest = PValue.One;
         foreach (ExperimentResult e in experiments)
         {
             if (p(e) is { } value && value < smallest)

@@ -85,7 +85,8 @@ public static class ListPainter
         {
             bool isSurvival = column.Name == "survives";
             string text = isSurvival ? SurvivalText(e.Survives, glyphs) : column.TextOf(e) ?? glyphs.None;
-            Ink ink = isSurvival && e.Survives == true ? Ink.Survivor
+            Ink ink = column.Name == "status" && e.Amendments.Count > 0 ? Ink.Warning
+                : isSurvival && e.Survives == true ? Ink.Survivor
                 : e.Survives is null && column.Name is not ("experiment" or "title") ? Ink.Open
                 : Ink.Text;
             Cell(canvas, column, x, w, y, CellText.Fit(text, w, glyphs.Cut), ink);

@@ -10,6 +10,8 @@ public sealed class RankingPlot
 {
     private const int Left = 9;
     private const int FewestRanks = 20;
+    private const int PowersBelowBoundary = 12;
+    private const int PowersBelowBoundaryNear = 2;
     private readonly Ranking _ranking;
     private readonly GlyphSet _glyphs;
     private readonly TextCanvas _canvas;
@@ -32,7 +34,7 @@ public sealed class RankingPlot
     /// <summary>Paints the plot.</summary>
     /// <param name="ranking">The ranked p-values.</param>
     /// <param name="selectedRank">The rank that is pointed at; 0 for none.</param>
-    /// <param name="isNear">Whether only the surroundings of the boundary are shown: twice the survivors across, and two powers of ten below the boundary.</param>
+    /// <param name="isNear">Whether only the surroundings of the boundary are shown: twice the survivors across, and two powers of ten below the boundary instead of twelve; what lies lower is marked at the edge.</param>
     /// <param name="width">Cells across, at least 30.</param>
     /// <param name="height">Rows, at least 6.</param>
     /// <param name="glyphs">The signs.</param>
@@ -106,7 +108,7 @@ public sealed class RankingPlot
         }
 
         double lowest = Math.Min(smallest, boundary);
-        return Math.Min(-1, (int)Math.Floor(isNear ? Math.Max(lowest, boundary - 2) : lowest));
+        return Math.Min(-1, (int)Math.Floor(Math.Max(lowest, boundary - (isNear ? PowersBelowBoundaryNear : PowersBelowBoundary))));
     }
 
     private int ColumnOf(int rank) => Left + (_shown == 1 ? 0 : (int)Math.Round((rank - 1.0) * (_columns - 1) / (_shown - 1)));

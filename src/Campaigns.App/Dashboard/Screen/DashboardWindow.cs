@@ -30,14 +30,14 @@ public sealed class DashboardWindow : Runnable
         PageContext context = new(model, glyphs, theme);
         _pages = [.. PageList.All.Select(make => make(context))];
         _names = new PageStrip([.. _pages.Select(p => p.Name)]);
-        _heading = new CanvasView((width, _) => HeadingPainter.Paint(model.Heading, width, glyphs), theme) { Width = Dim.Fill(), Height = HeadingPainter.Height };
-        _strip = new CanvasView((width, _) => _names.Paint(model.Page, width), theme) { Y = HeadingPainter.Height, Width = Dim.Fill(), Height = 1 };
+        _heading = new CanvasView((width, _) => HeadingPainter.Paint(model.Heading, width, glyphs), theme) { Width = Dim.Fill(), Height = Dim.Func(_ => HeadingPainter.HeightOf(model.Heading, Frame.Width)) };
+        _strip = new CanvasView((width, _) => _names.Paint(model.Page, width), theme) { Y = Pos.Bottom(_heading), Width = Dim.Fill(), Height = 1 };
         _keys = new CanvasView((width, _) => KeysPainter.Paint(_pages[model.Page].Keys, width), theme) { Y = Pos.AnchorEnd(1), Width = Dim.Fill(), Height = 1 };
         _strip.Clicked += (x, _) => TurnTo(_names.PageAt(x) ?? model.Page);
         Add(_heading, _strip);
         foreach (DashboardPage page in _pages)
         {
-            (page.Y, page.Height, page.Visible) = (HeadingPainter.Height + 1, Dim.Fill(1), page == _pages[model.Page]);
+            (page.Y, page.Height, page.Visible) = (Pos.Bottom(_strip), Dim.Fill(1), page == _pages[model.Page]);
             Add(page);
         }
 
