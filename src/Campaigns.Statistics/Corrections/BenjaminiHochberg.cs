@@ -23,6 +23,9 @@ public sealed class BenjaminiHochberg : Correction
     public override string Source => "Y. Benjamini and Y. Hochberg (1995), Journal of the Royal Statistical Society B 57:289-300; positive dependence: Y. Benjamini and D. Yekutieli (2001), Annals of Statistics 29:1165-1188";
 
     /// <inheritdoc/>
+    public override double? BoundaryAt(int rank, int familySize, double level) => level * rank / familySize;
+
+    /// <inheritdoc/>
     protected override void AdjustSorted(ReadOnlySpan<double> sorted, int familySize, Span<double> adjusted)
     {
         for (int k = 0; k < sorted.Length; k++)

@@ -23,6 +23,13 @@ public sealed class BenjaminiYekutieli : Correction
     public override string Source => "Y. Benjamini and D. Yekutieli (2001), Annals of Statistics 29:1165-1188";
 
     /// <inheritdoc/>
+    public override double? BoundaryAt(int rank, int familySize, double level)
+    {
+        (DoublePair factor, double divisor) = HarmonicFactor.Of(familySize);
+        return level * divisor * rank / factor.High;
+    }
+
+    /// <inheritdoc/>
     protected override void AdjustSorted(ReadOnlySpan<double> sorted, int familySize, Span<double> adjusted)
     {
         (DoublePair factor, double divisor) = HarmonicFactor.Of(familySize);

@@ -23,6 +23,9 @@ public sealed class Bonferroni : Correction
     public override string Source => "O. J. Dunn (1961), Journal of the American Statistical Association 56:52-64";
 
     /// <inheritdoc/>
+    public override double? BoundaryAt(int rank, int familySize, double level) => level / familySize;
+
+    /// <inheritdoc/>
     protected override void AdjustSorted(ReadOnlySpan<double> sorted, int familySize, Span<double> adjusted)
     {
         for (int k = 0; k < sorted.Length; k++)

@@ -75,6 +75,13 @@ public abstract class Correction
         ArrayPool<double>.Shared.Return(values);
     }
 
+    /// <summary>The p-value up to which the procedure compares the hypothesis of a rank with its level, for pictures; decisions come from <see cref="Adjust(RankedFamily)"/> alone.</summary>
+    /// <param name="rank">Rank of the p-value in its family, from 1.</param>
+    /// <param name="familySize">Size of the family, at least <paramref name="rank"/>.</param>
+    /// <param name="level">The level, in (0, 1).</param>
+    /// <returns>The boundary, in (0, 1]; null where the procedure has none that depends on rank, family size and level alone.</returns>
+    public virtual double? BoundaryAt(int rank, int familySize, double level) => null;
+
     /// <summary>The procedure itself, on ascending p-values.</summary>
     /// <param name="sorted">The p-values at hand, ascending, in [0, 1].</param>
     /// <param name="familySize">Size of the family, at least the number of p-values; the rest counts as p = 1.</param>

@@ -23,6 +23,9 @@ public sealed class Hochberg : Correction
     public override string Source => "Y. Hochberg (1988), Biometrika 75:800-802";
 
     /// <inheritdoc/>
+    public override double? BoundaryAt(int rank, int familySize, double level) => level / (familySize - rank + 1);
+
+    /// <inheritdoc/>
     protected override void AdjustSorted(ReadOnlySpan<double> sorted, int familySize, Span<double> adjusted)
     {
         for (int k = 0; k < sorted.Length; k++)

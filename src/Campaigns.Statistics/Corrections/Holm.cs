@@ -23,6 +23,9 @@ public sealed class Holm : Correction
     public override string Source => "S. Holm (1979), Scandinavian Journal of Statistics 6:65-70";
 
     /// <inheritdoc/>
+    public override double? BoundaryAt(int rank, int familySize, double level) => level / (familySize - rank + 1);
+
+    /// <inheritdoc/>
     protected override void AdjustSorted(ReadOnlySpan<double> sorted, int familySize, Span<double> adjusted)
     {
         for (int k = 0; k < sorted.Length; k++)

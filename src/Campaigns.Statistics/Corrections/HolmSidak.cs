@@ -1,3 +1,5 @@
+using Campaigns.Statistics.Numerics;
+
 namespace Campaigns.Statistics.Corrections;
 
 /// <summary>Holm's step-down correction with Sidak's in the place of Bonferroni's at every step.</summary>
@@ -21,6 +23,9 @@ public sealed class HolmSidak : Correction
 
     /// <inheritdoc/>
     public override string Source => "B. S. Holland and M. D. Copenhaver (1987), Biometrics 43:417-423";
+
+    /// <inheritdoc/>
+    public override double? BoundaryAt(int rank, int familySize, double level) => -Accurate.Expm1(Accurate.Log1p(-level) / (familySize - rank + 1));
 
     /// <inheritdoc/>
     protected override void AdjustSorted(ReadOnlySpan<double> sorted, int familySize, Span<double> adjusted)

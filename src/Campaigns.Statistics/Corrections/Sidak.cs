@@ -1,3 +1,5 @@
+using Campaigns.Statistics.Numerics;
+
 namespace Campaigns.Statistics.Corrections;
 
 /// <summary>Sidak's correction: the probability that the smallest of m independent p-values is at most p.</summary>
@@ -21,6 +23,9 @@ public sealed class Sidak : Correction
 
     /// <inheritdoc/>
     public override string Source => "Z. Sidak (1967), Journal of the American Statistical Association 62:626-633";
+
+    /// <inheritdoc/>
+    public override double? BoundaryAt(int rank, int familySize, double level) => -Accurate.Expm1(Accurate.Log1p(-level) / familySize);
 
     /// <inheritdoc/>
     protected override void AdjustSorted(ReadOnlySpan<double> sorted, int familySize, Span<double> adjusted)

@@ -23,6 +23,9 @@ public sealed class Uncorrected : Correction
     public override string Source => "The definition of a p-value; R. A. Fisher (1925), Statistical Methods for Research Workers";
 
     /// <inheritdoc/>
+    public override double? BoundaryAt(int rank, int familySize, double level) => level;
+
+    /// <inheritdoc/>
     protected override void AdjustSorted(ReadOnlySpan<double> sorted, int familySize, Span<double> adjusted)
     {
         sorted.CopyTo(adjusted);

@@ -1,0 +1,90 @@
+using System.Globalization;
+
+namespace Campaigns.App.Dashboard.Canvas;
+
+/// <summary>A horizontal axis from numbers to cells, with round ticks.</summary>
+public sealed class LinearScale
+{
+    private readonly double _low;
+    private readonly double _high;
+    private readonly double _step;
+
+    /// <summary>Makes an axis that holds a range.</summary>
+    /// <param name="low">Smallest number, finite.</param>
+    /// <param name="high">Largest number, finite, at least <paramref name="low"/>.</param>
+    /// <param name="cells">Cells along the axis, at least 2.</param>
+    public LinearScale(double low, double high, int cells)
+    {
+        Cells = Math.Max(2, cells);
+        if (!(high > low))
+        {
+            double pad = low == 0 ? 1 : Math.Abs(low) / 10;
+            (low, high) = (low - pad, high + pad);
+        }
+
+        // Quarters, so that even the whole range of doubles has a finite length.
+        double raw = ((high / 4) - (low / 4)) / Math.Max(2, Cells / 14) * 4;
+        double magnitude = Math.Pow(10, Math.Floor(Math.Log10(raw)));
+        double step = (raw / magnitude) switch { <= 1 => 1, <= 2 => 2, <= 5 => 5, _ => 10 } * magnitude;
+        _step = double.IsFinite(step) && step > 0 ? step : 0;
+        _low = _step > 0 && double.IsFinite(Math.Floor(low / _step) * _step) ? Math.Floor(low / _step) * _step : low;
+        _high = _step > 0 && double.IsFinite(Math.Ceiling(high / _step) * _step) ? Math.Ceiling(high / _step) * _step : high;
+    }
+
+    /// <summary>Cells along the axis.</summary>
+    public int Cells { get; }
+
+    /// <summary>The place of a number among a count of equal places along the axis; numbers outside stand at the nearer end.</summary>
+    /// <param name="value">A finite number.</param>
+    /// <param name="places">Places along the axis: the cells, or twice as many dots.</param>
+    public int PlaceOf(double value, int places)
+    {
+        double share = ((value / 4) - (_low / 4)) / ((_high / 4) - (_low / 4));
+        return Math.Clamp((int)Math.Round(share * (places - 1)), 0, places - 1);
+    }
+
+    /// <summary>Draws the axis line and, below it, the tick labels; labels that would touch are left out.</summary>
+    /// <param name="canvas">Where to draw.</param>
+    /// <param name="x">First column of the axis.</param>
+    /// <param name="y">Row of the line; the labels go to the next.</param>
+    /// <param name="glyphs">The signs.</param>
+    public void Draw(TextCanvas canvas, int x, int y, GlyphSet glyphs)
+    {
+        canvas.Repeat(x, y, Cells, glyphs.Across, Ink.Axis);
+        int free = 0;
+        foreach (double tick in Ticks())
+        {
+            int at = x + PlaceOf(tick, Cells);
+            canvas.Put(at, y, glyphs.TickDown, Ink.Axis);
+            string label = LabelOf(tick);
+            int start = Math.Clamp(at - (label.Length / 2), 0, Math.Max(0, canvas.Width - label.Length));
+            if (start >= free)
+            {
+                canvas.Write(start, y + 1, label, Ink.Axis);
+                free = start + label.Length + 1;
+            }
+        }
+    }
+
+    private IEnumerable<double> Ticks()
+    {
+        int count = _step > 0 ? (int)Math.Min(200, Math.Round((_high / _step) - (_low / _step))) : 1;
+        for (int i = 0; i <= count; i++)
+        {
+            yield return i == count ? _high : _low + (i * _step);
+        }
+    }
+
+    private string LabelOf(double tick)
+    {
+        double size = Math.Max(Math.Abs(_low), Math.Abs(_high));
+        if (_step == 0 || size >= 1e12 || size < 1e-6)
+        {
+            return tick.ToString("0.###e-0", CultureInfo.InvariantCulture);
+        }
+
+        int decimals = Math.Clamp((int)-Math.Floor(Math.Log10(_step) + 1e-9), 0, 12);
+        double rounded = Math.Round(tick, decimals);
+        return (rounded == 0 ? 0 : rounded).ToString("F" + decimals.ToString(CultureInfo.InvariantCulture), CultureInfo.InvariantCulture);
+    }
+}

@@ -1,0 +1,39 @@
+using Campaigns.App.Dashboard.Canvas;
+using Campaigns.App.Dashboard.Model;
+using Campaigns.App.Dashboard.Screen;
+using Campaigns.Statistics.Corrections;
+using Terminal.Gui.App;
+
+namespace Campaigns.App.Dashboard;
+
+/// <summary>Runs the dashboard in the terminal that the program was started from.</summary>
+public static class DashboardProgram
+{
+    private const int Done = 0;
+    private const int WrongUsage = 2;
+
+    /// <summary>Shows a campaign until the user quits.</summary>
+    /// <param name="source">Where the campaign comes from.</param>
+    /// <param name="ascii">Whether to draw with ASCII signs alone.</param>
+    /// <returns>0 after quitting; 2, with a sentence on standard error, where standard input or output is no terminal; 128 and its number after a signal.</returns>
+    /// <remarks>What <paramref name="source"/> throws passes through, after the terminal was given back.</remarks>
+    public static int Run(DashboardSource source, bool ascii)
+    {
+        ArgumentNullException.ThrowIfNull(source);
+        if (Console.IsInputRedirected || Console.IsOutputRedirected)
+        {
+            Console.Error.WriteLine("The dashboard needs a terminal for input and output; to read results in a file or a pipe, use 'results' with --format csv or json.");
+            return WrongUsage;
+        }
+
+        Theme theme = Theme.For(Environment.GetEnvironmentVariable);
+        theme.Apply();
+        DashboardModel model = new(source, CorrectionRegistry.Find);
+        IApplication app = Application.Create();
+        using TerminalGuard guard = new(app);
+        app.Init();
+        using DashboardWindow window = new(model, ascii ? GlyphSet.Ascii : GlyphSet.Full, theme);
+        app.Run(window);
+        return guard.ExitCode is var asked && asked != 0 ? asked : Done;
+    }
+}

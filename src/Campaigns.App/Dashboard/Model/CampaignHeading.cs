@@ -1,0 +1,102 @@
+using System.Globalization;
+using Campaigns.App.Output;
+using Campaigns.Domain;
+using Campaigns.Statistics.Corrections;
+
+namespace Campaigns.App.Dashboard.Model;
+
+/// <summary>What every page says about its campaign: what is held, how far it is, and what that means.</summary>
+public sealed class CampaignHeading
+{
+    /// <summary>Words a campaign's heading.</summary>
+    /// <param name="standing">The campaign as it stands.</param>
+    /// <param name="correction">Its correction; null where the program does not know it.</param>
+    public CampaignHeading(CampaignStanding standing, Correction? correction)
+    {
+        Campaign campaign = standing.Campaign;
+        Code = campaign.Code;
+        Title = campaign.Title;
+        Held = [ErrorRateWords(campaign.ErrorRate), "level " + NumberText.RoundTrip(campaign.Level.Value), correction?.Name ?? campaign.Correction];
+        Plan = campaign.IsExploratory ? "no plan before the data" : campaign.IsSealed ? "plan sealed" : "plan still open";
+        Progress =
+        [
+            $"{Count(standing.TestedCount)} of {Count(standing.Experiments.Count)} planned tested",
+            standing.SurvivorCount == 1 ? "1 survivor" : Count(standing.SurvivorCount) + " survivors",
+        ];
+        Family = standing.FamilySize == standing.Experiments.Count ? null : "family of " + Count(standing.FamilySize);
+        ReviewTrouble = TroubleWith(standing);
+        Review = standing.LastReview is not { } review ? "no review stored yet"
+            : $"review {Count(review.Number)} of {review.At.UtcDateTime.ToString("yyyy-MM-dd", CultureInfo.InvariantCulture)} " + (ReviewTrouble ?? "is up to date");
+        Meaning = correction?.Guarantee ?? $"This program knows no correction named {campaign.Correction}: what it guarantees cannot be said here.";
+        ValidUnder = correction is null ? null : DependenceWords(correction.ValidUnder);
+    }
+
+    /// <summary>The campaign's code, as it was given.</summary>
+    public string Code { get; }
+
+    /// <summary>The campaign's title, as it was given.</summary>
+    public string Title { get; }
+
+    /// <summary>Error rate, level and correction.</summary>
+    public IReadOnlyList<string> Held { get; }
+
+    /// <summary>Whether the plan is sealed.</summary>
+    public string Plan { get; }
+
+    /// <summary>Tested of planned, and survivors.</summary>
+    public IReadOnlyList<string> Progress { get; }
+
+    /// <summary>The size of the family, where it is not the number of planned experiments.</summary>
+    public string? Family { get; }
+
+    /// <summary>Whether the last stored review is up to date.</summary>
+    public string Review { get; }
+
+    /// <summary>In what the last stored review is not up to date; null where it is, and before the first.</summary>
+    public string? ReviewTrouble { get; }
+
+    /// <summary>What the correction guarantees, in one sentence.</summary>
+    public string Meaning { get; }
+
+    /// <summary>What the guarantee supposes of the p-values' dependence; null where the correction is not known.</summary>
+    public string? ValidUnder { get; }
+
+    /// <summary>An error rate in words.</summary>
+    /// <param name="rate">The error rate.</param>
+    public static string ErrorRateWords(ErrorRate rate) => rate switch
+    {
+        ErrorRate.PerTest => "error rate of each test alone",
+        ErrorRate.Familywise => "familywise error rate",
+        ErrorRate.FalseDiscovery => "false discovery rate",
+        _ => throw new ArgumentOutOfRangeException(nameof(rate), rate, "No words for this error rate."),
+    };
+
+    /// <summary>A condition on dependence in words.</summary>
+    /// <param name="dependence">The condition.</param>
+    public static string DependenceWords(Dependence dependence) => dependence switch
+    {
+        Dependence.Any => "holds under any dependence between the tests",
+        Dependence.Sidak => "supposes tests independent, or two-sided normal tests",
+        Dependence.Simes => "supposes tests independent or positively dependent",
+        Dependence.PositiveRegression => "supposes tests independent or positively dependent",
+        Dependence.Independent => "supposes independent tests",
+        _ => throw new ArgumentOutOfRangeException(nameof(dependence), dependence, "No words for this dependence."),
+    };
+
+    private static string? TroubleWith(CampaignStanding standing)
+    {
+        if (standing.LastReview is not { } review)
+        {
+            return null;
+        }
+
+        return standing.ResultsSinceReview > 0 ? "is behind by " + (standing.ResultsSinceReview == 1 ? "1 result" : Count(standing.ResultsSinceReview) + " results")
+            : review.Correction != standing.Campaign.Correction ? "used " + review.Correction
+            : review.Level != standing.Campaign.Level ? "used level " + NumberText.RoundTrip(review.Level.Value)
+            : review.IsInterim ? "is interim: tested ones only"
+            : review.FamilySize != standing.FamilySize ? "counted a family of " + Count(review.FamilySize)
+            : null;
+    }
+
+    private static string Count(int n) => n.ToString(CultureInfo.InvariantCulture);
+}

@@ -1,0 +1,215 @@
+using Campaigns.Domain;
+using Campaigns.Statistics.Corrections;
+
+namespace Campaigns.App.Dashboard.Model;
+
+/// <summary>Everything the dashboard knows: the campaign, the rows shown and their order, the selected experiment, the page. It knows no terminal.</summary>
+/// <remarks>For one thread. Painters read it whenever they draw; <see cref="Changed"/> says that they should.</remarks>
+public sealed class DashboardModel
+{
+    private const int KeptDetails = 64;
+    private readonly DashboardSource _source;
+    private readonly Func<string, Correction?> _findCorrection;
+    private readonly Dictionary<string, ExperimentDetail> _details = [];
+    private ExperimentFilter _filter = ExperimentFilter.Read("", out _)!;
+    private int[] _order = [];
+    private int[] _rows = [];
+    private string[]? _searchable;
+    private int _selectedRow;
+
+    /// <summary>Makes the model; the first experiment in the plan's order is selected.</summary>
+    /// <param name="source">Where the campaign comes from.</param>
+    /// <param name="findCorrection">The correction with a key, or null.</param>
+    public DashboardModel(DashboardSource source, Func<string, Correction?> findCorrection)
+    {
+        _source = source;
+        _findCorrection = findCorrection;
+        Standing = source.Standing;
+        (Correction, Heading, Ranking) = Read(Standing);
+        Sort();
+        Narrow(keep: -1);
+    }
+
+    /// <summary>Something that is shown has changed.</summary>
+    public event Action? Changed;
+
+    /// <summary>The campaign as it stood when it was last loaded.</summary>
+    public CampaignStanding Standing { get; private set; }
+
+    /// <summary>The campaign's correction; null where the program does not know it.</summary>
+    public Correction? Correction { get; private set; }
+
+    /// <summary>What every page says about the campaign.</summary>
+    public CampaignHeading Heading { get; private set; }
+
+    /// <summary>The ranked p-values.</summary>
+    public Ranking Ranking { get; private set; }
+
+    /// <summary>The column sorted by; null for the plan's order.</summary>
+    public ExperimentColumn? SortColumn { get; private set; }
+
+    /// <summary>Whether the largest comes first.</summary>
+    public bool IsFalling { get; private set; }
+
+    /// <summary>The filter as it was typed.</summary>
+    public string FilterText { get; private set; } = "";
+
+    /// <summary>What is wrong with the filter as it was typed, in one sentence; the rows shown are then those of the last one that could be read.</summary>
+    public string? FilterProblem { get; private set; }
+
+    /// <summary>The page shown, from 0.</summary>
+    public int Page { get; private set; }
+
+    /// <summary>Rows shown.</summary>
+    public int RowCount => _rows.Length;
+
+    /// <summary>The selected row, from 0; -1 where no row is shown.</summary>
+    public int SelectedRow => _rows.Length == 0 ? -1 : _selectedRow;
+
+    /// <summary>Position of the selected experiment in the campaign's list, from 0; -1 where no row is shown.</summary>
+    public int SelectedPosition => _rows.Length == 0 ? -1 : _rows[_selectedRow];
+
+    /// <summary>The selected experiment; null where no row is shown.</summary>
+    public ExperimentResult? Selected => _rows.Length == 0 ? null : Standing.Experiments[_rows[_selectedRow]];
+
+    /// <summary>The experiment in a row.</summary>
+    /// <param name="row">Row from 0.</param>
+    public ExperimentResult RowAt(int row) => Standing.Experiments[_rows[row]];
+
+    /// <summary>The selected experiment in full; null where no row is shown.</summary>
+    public ExperimentDetail? SelectedDetail()
+    {
+        if (Selected is not { } selected)
+        {
+            return null;
+        }
+
+        if (!_details.TryGetValue(selected.Plan.Code, out ExperimentDetail? detail))
+        {
+            if (_details.Count >= KeptDetails)
+            {
+                _details.Clear();
+            }
+
+            detail = _source.Detail(selected.Plan.Code);
+            _details.Add(selected.Plan.Code, detail);
+        }
+
+        return detail;
+    }
+
+    /// <summary>Selects a row; beyond the ends the nearest.</summary>
+    /// <param name="row">Row from 0.</param>
+    public void Select(int row)
+    {
+        int nearest = Math.Clamp(row, 0, Math.Max(0, _rows.Length - 1));
+        if (nearest != _selectedRow)
+        {
+            _selectedRow = nearest;
+            Changed?.Invoke();
+        }
+    }
+
+    /// <summary>Selects an experiment; a filter that hides it is taken off.</summary>
+    /// <param name="position">Its position in the campaign's list, from 0.</param>
+    public void SelectPosition(int position)
+    {
+        if (Array.IndexOf(_rows, position) < 0)
+        {
+            SetFilter("");
+        }
+
+        Select(Array.IndexOf(_rows, position));
+    }
+
+    /// <summary>Sorts by a column, the smallest first; by the same column again, the other way round. The selected experiment stays selected.</summary>
+    /// <param name="column">The column; null for the plan's order.</param>
+    public void SortBy(ExperimentColumn? column)
+    {
+        IsFalling = column == SortColumn && !IsFalling;
+        SortColumn = column;
+        int keep = SelectedPosition;
+        Sort();
+        Narrow(keep);
+        Changed?.Invoke();
+    }
+
+    /// <summary>Sorts by the next or an earlier column; the plan's order is one of them.</summary>
+    /// <param name="step">1 for the next, -1 for the one before.</param>
+    public void SortByNeighbour(int step)
+    {
+        IReadOnlyList<ExperimentColumn> all = ExperimentColumn.All;
+        int now = SortColumn is null ? 0 : all.ToList().IndexOf(SortColumn) + 1;
+        int next = (now + step + all.Count + 1) % (all.Count + 1);
+        SortBy(next == 0 ? null : all[next - 1]);
+    }
+
+    /// <summary>Shows only what a filter lets through. The selected experiment stays selected where it is shown.</summary>
+    /// <param name="text">Words and conditions, see <see cref="ExperimentFilter"/>.</param>
+    public void SetFilter(string text)
+    {
+        if (text == FilterText)
+        {
+            return;
+        }
+
+        FilterText = text;
+        if (ExperimentFilter.Read(text, out string? problem) is { } filter)
+        {
+            int keep = SelectedPosition;
+            _filter = filter;
+            Narrow(keep);
+        }
+
+        FilterProblem = problem;
+        Changed?.Invoke();
+    }
+
+    /// <summary>Turns to a page.</summary>
+    /// <param name="page">Page from 0.</param>
+    public void TurnTo(int page)
+    {
+        if (page != Page)
+        {
+            Page = page;
+            Changed?.Invoke();
+        }
+    }
+
+    /// <summary>Loads the campaign again; order, filter and, where it is still there, the selected experiment are kept.</summary>
+    public void Reload()
+    {
+        string? code = Selected?.Plan.Code;
+        Standing = _source.Reload();
+        _details.Clear();
+        _searchable = null;
+        (Correction, Heading, Ranking) = Read(Standing);
+        Sort();
+        Narrow(code is null ? -1 : Standing.Experiments.ToList().FindIndex(e => e.Plan.Code == code));
+        Changed?.Invoke();
+    }
+
+    private (Correction?, CampaignHeading, Ranking) Read(CampaignStanding standing)
+    {
+        Correction? correction = _findCorrection(standing.Campaign.Correction);
+        return (correction, new CampaignHeading(standing, correction), new Ranking(standing, correction));
+    }
+
+    private void Sort() => _order = ExperimentOrder.By(Standing.Experiments, SortColumn, IsFalling);
+
+    private void Narrow(int keep)
+    {
+        IReadOnlyList<ExperimentResult> all = Standing.Experiments;
+        if (FilterText.Length == 0)
+        {
+            _rows = _order;
+        }
+        else
+        {
+            string[] searchable = _searchable ??= [.. all.Select(ExperimentFilter.Searchable)];
+            _rows = Array.FindAll(_order, position => _filter.Shows(all[position], searchable[position]));
+        }
+
+        _selectedRow = Math.Max(0, Array.IndexOf(_rows, keep));
+    }
+}

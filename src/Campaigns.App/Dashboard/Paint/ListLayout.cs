@@ -1,0 +1,101 @@
+using System.Globalization;
+using Campaigns.App.Dashboard.Canvas;
+using Campaigns.App.Dashboard.Model;
+using Campaigns.App.Output;
+using Campaigns.Domain;
+using Campaigns.Statistics.Probability;
+
+namespace Campaigns.App.Dashboard.Paint;
+
+/// <summary>Where the columns of the list stand. The widths come from the whole campaign, so that they do not jump while rows pass; numbers are never cut.</summary>
+public sealed class ListLayout
+{
+    private const int LongestCode = 16;
+    private const int ShortestTitle = 6;
+    private const int ShortestStatus = 8;
+    private readonly int _code;
+    private readonly int _title;
+    private readonly int _status;
+    private readonly Dictionary<string, int> _fixed;
+
+    /// <summary>Measures a campaign.</summary>
+    /// <param name="experiments">Its experiments.</param>
+    public ListLayout(IReadOnlyList<ExperimentResult> experiments)
+    {
+        _code = Math.Clamp(Longest(experiments, e => CellText.Width(e.Plan.Code)), "experiment".Length, LongestCode);
+        _title = Math.Max("title".Length, Longest(experiments, e => e.Plan.Title.Length));
+        ExperimentColumn status = ExperimentColumn.Named("status");
+        _status = Math.Max(ShortestStatus, Longest(experiments, e => status.TextOf(e)!.Length));
+        _fixed = new()
+        {
+            ["groups"] = "groups".Length,
+            ["n"] = Math.Max(3, Longest(experiments, e => e.ObservationCount).ToString(CultureInfo.InvariantCulture).Length),
+            ["statistic"] = "statistic".Length,
+            ["p"] = Math.Max(6, SmallestWidth(experiments, e => e.P)),
+            ["adjusted"] = Math.Max("adjusted".Length, SmallestWidth(experiments, e => e.AdjustedP)),
+            ["survives"] = "survives".Length,
+        };
+    }
+
+    /// <summary>The columns that a width has room for, with their first cells and widths.</summary>
+    /// <param name="width">Cells across.</param>
+    /// <returns>Where there is too little room, the title goes first, then groups and n; what is still too wide ends at the right edge.</returns>
+    public IReadOnlyList<(ExperimentColumn Column, int X, int Width)> Place(int width)
+    {
+        HashSet<string> left = [];
+        int spare = width - _code - _fixed.Values.Sum() - (ExperimentColumn.All.Count - 1);
+        int title = Math.Min(_title, spare - Math.Min(_status, Math.Max(ShortestStatus, spare / 2)));
+        if (title < ShortestTitle)
+        {
+            title = -1;
+            foreach (string name in new[] { "groups", "n" })
+            {
+                if (spare - title < ShortestStatus && left.Add(name))
+                {
+                    spare += _fixed[name] + 1;
+                }
+            }
+        }
+
+        int status = Math.Clamp(spare - title, ShortestStatus, _status);
+        List<(ExperimentColumn Column, int X, int Width)> placed = [];
+        int x = 0;
+        foreach (ExperimentColumn column in ExperimentColumn.All)
+        {
+            int w = column.Name switch { "experiment" => _code, "title" => title, "status" => status, _ => left.Contains(column.Name) ? 0 : _fixed[column.Name] };
+            if (w > 0)
+            {
+                placed.Add((column, x, w));
+                x += w + 1;
+            }
+        }
+
+        return placed;
+    }
+
+    private static int Longest(IReadOnlyList<ExperimentResult> experiments, Func<ExperimentResult, int> length)
+    {
+        int longest = 0;
+        foreach (ExperimentResult e in experiments)
+        {
+            longest = Math.Max(longest, length(e));
+        }
+
+        return longest;
+    }
+
+    // The text of a p-value is longest where its exponent is, that is at the smallest.
+    private static int SmallestWidth(IReadOnlyList<ExperimentResult> experiments, Func<ExperimentResult, PValue?> p)
+    {
+        PValue smallest = PValue.One;
+        foreach (ExperimentResult e in experiments)
+        {
+            if (p(e) is { } value && value < smallest)
+            {
+                smallest = value;
+            }
+        }
+
+        return NumberText.P(smallest).Length;
+    }
+}

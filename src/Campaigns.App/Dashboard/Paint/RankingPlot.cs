@@ -1,0 +1,198 @@
+using System.Globalization;
+using Campaigns.App.Dashboard.Canvas;
+using Campaigns.App.Dashboard.Model;
+using Campaigns.App.Output;
+
+namespace Campaigns.App.Dashboard.Paint;
+
+/// <summary>The ranked p-values on a logarithmic scale with the boundary of the correction.</summary>
+public sealed class RankingPlot
+{
+    private const int Left = 9;
+    private const int FewestRanks = 20;
+    private const int PowersBelowBoundary = 12;
+    private const int PowersBelowBoundaryNear = 2;
+    private readonly Ranking _ranking;
+    private readonly GlyphSet _glyphs;
+    private readonly TextCanvas _canvas;
+    private readonly int _columns;
+    private readonly int _rows;
+    private readonly int _shown;
+    private readonly int _floor;
+
+    private RankingPlot(Ranking ranking, bool isNear, int width, int height, GlyphSet glyphs)
+    {
+        _ranking = ranking;
+        _glyphs = glyphs;
+        _canvas = new TextCanvas(width, height);
+        _columns = width - Left - 1;
+        _rows = height - 2;
+        _shown = isNear ? Math.Clamp(2 * ranking.SurvivorCount, Math.Min(FewestRanks, ranking.FamilySize), ranking.FamilySize) : ranking.FamilySize;
+        _floor = FloorOf(ranking, isNear);
+    }
+
+    /// <summary>Paints the plot.</summary>
+    /// <param name="ranking">The ranked p-values.</param>
+    /// <param name="selectedRank">The rank that is pointed at; 0 for none.</param>
+    /// <param name="isNear">Whether only the surroundings of the boundary are shown: twice the survivors across, and two powers of ten below the boundary instead of twelve; what lies lower is marked at the edge.</param>
+    /// <param name="width">Cells across, at least 30.</param>
+    /// <param name="height">Rows, at least 6.</param>
+    /// <param name="glyphs">The signs.</param>
+    public static TextCanvas Paint(Ranking ranking, int selectedRank, bool isNear, int width, int height, GlyphSet glyphs)
+    {
+        if (ranking.Count == 0 || width < 30 || height < 6)
+        {
+            TextCanvas words = new(width, height);
+            words.Write(1, 0, ranking.Count == 0 ? "Nothing is tested yet: there is no p-value to rank." : "too small to draw", Ink.Open);
+            return words;
+        }
+
+        RankingPlot plot = new(ranking, isNear, width, height, glyphs);
+        plot.Axes(selectedRank);
+        plot.Boundary();
+        plot.Points();
+        return plot._canvas;
+    }
+
+    /// <summary>What the boundary is, in one line.</summary>
+    /// <param name="ranking">The ranked p-values.</param>
+    public static string BoundaryText(Ranking ranking)
+    {
+        if (ranking.Count == 0)
+        {
+            return "";
+        }
+
+        if (ranking is { HasBoundary: false })
+        {
+            return ranking.LargestSurvivor is { } largest
+                ? $"This correction has no simple boundary; the line stands at the largest p that survives, {NumberText.P(largest)}."
+                : "This correction has no simple boundary, and no p-value survives.";
+        }
+
+        double first = ranking.BoundaryAt(1)!.Value, last = ranking.BoundaryAt(ranking.FamilySize)!.Value;
+        string family = ranking.FamilySize.ToString(CultureInfo.InvariantCulture);
+        return first == last
+            ? $"Boundary: p up to {NumberText.Screen(first, 4)} at every rank of {family}."
+            : $"Boundary: from {NumberText.Screen(first, 4)} at rank 1 to {NumberText.Screen(last, 4)} at rank {family}.";
+    }
+
+    /// <summary>What the signs mean.</summary>
+    /// <param name="ranking">The ranked p-values.</param>
+    /// <param name="glyphs">The signs.</param>
+    public static string Key(Ranking ranking, GlyphSet glyphs)
+    {
+        List<string> parts = [glyphs.Survivor + " survives", glyphs.Other + " does not"];
+        if (ranking.FamilySize > ranking.Count)
+        {
+            parts.Add(glyphs.Open + " no result, counts as p = 1");
+        }
+
+        parts.Add(glyphs.BelowScale + " below the scale");
+        parts.Add(glyphs.Boundary + (ranking.HasBoundary ? " boundary" : " largest survivor"));
+        return string.Join("  ", parts);
+    }
+
+    private static int FloorOf(Ranking ranking, bool isNear)
+    {
+        double boundary = Math.Log10((ranking.HasBoundary ? ranking.BoundaryAt(1) : ranking.LargestSurvivor?.Value is > 0 and var p ? p : null) ?? 0.05);
+        double smallest = 0;
+        for (int rank = 1; rank <= ranking.Count; rank++)
+        {
+            double log = ranking.Log10At(rank);
+            if (double.IsFinite(log))
+            {
+                smallest = log;
+                break;
+            }
+        }
+
+        double lowest = Math.Min(smallest, boundary);
+        return Math.Min(-1, (int)Math.Floor(Math.Max(lowest, boundary - (isNear ? PowersBelowBoundaryNear : PowersBelowBoundary))));
+    }
+
+    private int ColumnOf(int rank) => Left + (_shown == 1 ? 0 : (int)Math.Round((rank - 1.0) * (_columns - 1) / (_shown - 1)));
+
+    private int RowOf(double log10) => (int)Math.Round(Math.Clamp(log10 / _floor, 0, 1) * (_rows - 1));
+
+    private void Axes(int selectedRank)
+    {
+        for (int y = 0; y < _rows; y++)
+        {
+            _canvas.Put(Left - 1, y, _glyphs.Upright, Ink.Axis);
+        }
+
+        int step = StepOf((double)-_floor / Math.Max(1, _rows / 2));
+        for (int power = 0; power >= _floor; power -= step)
+        {
+            int y = RowOf(power);
+            _canvas.Put(Left - 1, y, _glyphs.TickLeft, Ink.Axis);
+            _canvas.WriteRight(Left - 2, y, PowerText(power), Ink.Axis);
+        }
+
+        _canvas.Put(Left - 1, _rows, _glyphs.Corner, Ink.Axis);
+        _canvas.Repeat(Left, _rows, _columns, _glyphs.Across, Ink.Axis);
+        string last = _shown.ToString(CultureInfo.InvariantCulture) + (_shown < _ranking.FamilySize ? " of " + _ranking.FamilySize.ToString(CultureInfo.InvariantCulture) : "");
+        _canvas.Write(Left, _rows + 1, "1", Ink.Axis);
+        _canvas.WriteRight(Left + _columns - 1, _rows + 1, last, Ink.Axis);
+        _canvas.Write(Left + (_columns / 2) - 4, _rows + 1, "rank of p", Ink.Axis);
+        if (selectedRank >= 1 && selectedRank <= _shown)
+        {
+            _canvas.Put(ColumnOf(selectedRank), _rows, _glyphs.Here, Ink.Selected);
+        }
+    }
+
+    private void Boundary()
+    {
+        if (!_ranking.HasBoundary && _ranking.LargestSurvivor is not { Value: > 0 })
+        {
+            return;
+        }
+
+        for (int column = 0; column < _columns; column++)
+        {
+            int rank = _columns == 1 ? 1 : 1 + (int)Math.Round((double)column * (_shown - 1) / (_columns - 1));
+            double log = _ranking.BoundaryAt(rank) is { } boundary ? Math.Log10(boundary) : _ranking.LargestSurvivor!.Value.Log / Math.Log(10);
+            if (log >= _floor)
+            {
+                _canvas.Put(Left + column, RowOf(log), _glyphs.Boundary, Ink.Boundary);
+            }
+        }
+    }
+
+    // The rest of the family first, survivors last: where several share a cell, the survivor is seen.
+    private void Points()
+    {
+        for (int rank = _ranking.Count + 1; rank <= _shown; rank++)
+        {
+            _canvas.Put(ColumnOf(rank), 0, _glyphs.Open, Ink.Open);
+        }
+
+        for (int rank = Math.Min(_ranking.Count, _shown); rank >= 1; rank--)
+        {
+            double log = _ranking.Log10At(rank);
+            bool survives = _ranking.At(rank).Survives == true;
+            string sign = log < _floor ? _glyphs.BelowScale : survives ? _glyphs.Survivor : _glyphs.Other;
+            _canvas.Put(ColumnOf(rank), RowOf(log), sign, survives ? Ink.Survivor : Ink.Text);
+        }
+    }
+
+    private static int StepOf(double least)
+    {
+        int step = 1;
+        for (int i = 0; step < least; i++)
+        {
+            step = i % 3 == 1 ? step / 2 * 5 : step * 2;
+        }
+
+        return step;
+    }
+
+    private static string PowerText(int power) => power switch
+    {
+        0 => "1",
+        -1 => "0.1",
+        -2 => "0.01",
+        _ => "1e" + power.ToString(CultureInfo.InvariantCulture),
+    };
+}

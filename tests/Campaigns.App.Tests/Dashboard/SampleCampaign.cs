@@ -1,0 +1,191 @@
+using System.Globalization;
+using Campaigns.App.Dashboard;
+using Campaigns.Domain;
+using Campaigns.Statistics.Corrections;
+using Campaigns.Statistics.GroupTests;
+using Campaigns.Statistics.Probability;
+
+namespace Campaigns.App.Tests.Dashboard;
+
+/// <summary>Invented campaigns put together by hand: their figures are whole and plausible, not computed by the product.</summary>
+internal static class SampleCampaign
+{
+    public const string Hostile = "evil\u001b[31m\u202egpj_name\r\n";
+
+    private static readonly ExperimentStatus[] NoResults =
+        [ExperimentStatus.Planned, ExperimentStatus.Incomplete, ExperimentStatus.Ready, ExperimentStatus.TooFewGroups, ExperimentStatus.NoReplication, ExperimentStatus.ConstantResponse, ExperimentStatus.ZeroWithinVariation];
+
+    /// <summary>A campaign in which about every sixth experiment has no result.</summary>
+    public static CampaignStanding Standing(int planned, string correction = "rising", int withoutResult = 6, Func<int, ExperimentStatus>? status = null)
+    {
+        Random random = new(20_260_501);
+        List<ExperimentResult> experiments = [];
+        for (int i = 0; i < planned; i++)
+        {
+            ExperimentStatus state = status?.Invoke(i) ?? (withoutResult > 0 && i % withoutResult == withoutResult - 1 ? NoResults[i / withoutResult % NoResults.Length] : ExperimentStatus.Tested);
+            experiments.Add(Experiment(i, state, random));
+        }
+
+        Adjust(experiments, planned);
+        return new CampaignStanding(Campaign(correction), experiments, planned, Review(experiments, planned, correction), 0);
+    }
+
+    public static Campaign Campaign(string correction) => new()
+    {
+        Code = "PRIMER-26",
+        Title = "Adhesion of spring primers",
+        ErrorRate = ErrorRate.FalseDiscovery,
+        Level = new SignificanceLevel(0.05),
+        Correction = correction,
+        OpenedAt = new DateTimeOffset(2026, 4, 1, 8, 0, 0, TimeSpan.Zero),
+        SealedAt = new DateTimeOffset(2026, 4, 3, 8, 0, 0, TimeSpan.Zero),
+    };
+
+    public static DashboardSource Source(CampaignStanding standing) =>
+        new(standing, code => Detail(standing.Experiments.First(e => e.Plan.Code == code)), () => standing);
+
+    public static Correction? Find(string key) => key switch { "rising" => new RisingCorrection(), "unbounded" => new UnboundedCorrection(), _ => null };
+
+    public static ExperimentDetail Detail(ExperimentResult result)
+    {
+        Random random = new(result.Position);
+        List<GroupDetail> groups = [];
+        for (int g = 0; g < result.Plan.Groups.Count; g++)
+        {
+            int n = result.Status is ExperimentStatus.Planned || (result.Status is ExperimentStatus.TooFewGroups && g > 0) ? 0
+                : result.Status is ExperimentStatus.NoReplication ? 1
+                : 8;
+            double[] values = [.. Enumerable.Range(0, n).Select(_ => Value(result.Status, g, random))];
+            groups.Add(new GroupDetail(result.Plan.Groups[g], result.Plan.Groups[g] == result.Plan.Control, values, Summary(values)));
+        }
+
+        VariationTable? variation = result.Statistic is { } f
+            ? new VariationTable(new VariationLine(3 * f, 3, f), new VariationLine(28, 28, 1), new VariationLine((3 * f) + 28, 31, 0), f, result.EtaSquared!.Value, result.OmegaSquared!.Value, 1)
+            : null;
+        return new ExperimentDetail(result, groups, 0.95, variation, result.Position % 4 == 0 ? 2 : 0);
+    }
+
+    private static double Value(ExperimentStatus status, int group, Random random) => status switch
+    {
+        ExperimentStatus.ConstantResponse => 12.5,
+        ExperimentStatus.ZeroWithinVariation => 12 + group,
+        _ => Math.Round(12 + (group * 0.7) + (random.NextDouble() * 4), 1),
+    };
+
+    private static GroupSummary Summary(double[] values)
+    {
+        if (values.Length < 2)
+        {
+            return new GroupSummary(values.Length, values.Length == 0 ? null : values[0], null, null, null, null);
+        }
+
+        double mean = values.Average(), deviation = Math.Sqrt(values.Sum(v => (v - mean) * (v - mean)) / (values.Length - 1)), error = deviation / Math.Sqrt(values.Length);
+
+        // 2.3646: t(0.975; 7), from memory; only the picture depends on it.
+        return new GroupSummary(values.Length, mean, deviation, error, mean - (2.3646 * error), mean + (2.3646 * error));
+    }
+
+    private static ExperimentResult Experiment(int i, ExperimentStatus status, Random random)
+    {
+        double u = random.NextDouble();
+        double log = i % 5 == 0 ? -5 - (30 * u) : Math.Log(u);
+        if (i == 0)
+        {
+            log = -11_513.5;
+        }
+
+        bool has = status == ExperimentStatus.Tested;
+        double statistic = Math.Round(Math.Sqrt(-log) * 2.25, 3);
+        return new ExperimentResult
+        {
+            Plan = new PlannedExperiment
+            {
+                Code = "E" + (i + 1).ToString(CultureInfo.InvariantCulture),
+                Title = i == 3 ? Hostile : i == 4 ? "粘度 of the clear coat" : "Blend " + (char)('A' + (i % 26)) + " on steel, wet adhesion",
+                Response = "adhesion",
+                Unit = "MPa",
+                Groups = ["base", "zinc", "resin 2", "resin 3"],
+                Control = "base",
+                Test = "f",
+                FollowUp = "none",
+                Replicates = 8,
+            },
+            Position = i + 1,
+            Status = status,
+            GroupCount = status == ExperimentStatus.Planned ? 0 : status == ExperimentStatus.TooFewGroups ? 1 : 4,
+            ObservationCount = status == ExperimentStatus.Planned ? 0 : status == ExperimentStatus.NoReplication ? 4 : 32,
+            Statistic = has ? statistic : null,
+            Df1 = has ? 3 : null,
+            Df2 = has ? 28 : null,
+            P = has ? PValue.FromLog(log) : null,
+            EtaSquared = has ? 3 * statistic / ((3 * statistic) + 28) : null,
+            OmegaSquared = has ? 3 * (statistic - 1) / ((3 * statistic) + 29) : null,
+            Amendments = i == 10 ? ["oven run 7 was repeated after a power cut"] : [],
+        };
+    }
+
+    // The smallest family size * p / rank from a rank on, as logarithms: enough for a picture with survivors.
+    private static void Adjust(List<ExperimentResult> experiments, int familySize)
+    {
+        int[] order = [.. Enumerable.Range(0, experiments.Count).Where(i => experiments[i].P is not null).OrderBy(i => experiments[i].P!.Value.Log)];
+        double smallest = 0;
+        for (int k = order.Length; k >= 1; k--)
+        {
+            ExperimentResult e = experiments[order[k - 1]];
+            smallest = Math.Min(smallest, e.P!.Value.Log + Math.Log((double)familySize / k));
+            PValue adjusted = PValue.FromLog(smallest);
+            experiments[order[k - 1]] = e with { AdjustedP = adjusted, Survives = adjusted.Value <= 0.05 };
+        }
+    }
+
+    private static ReviewHead Review(List<ExperimentResult> experiments, int familySize, string correction) => new()
+    {
+        Number = 3,
+        At = new DateTimeOffset(2026, 5, 1, 9, 30, 0, TimeSpan.Zero),
+        Correction = correction,
+        Level = new SignificanceLevel(0.05),
+        FamilySize = familySize,
+        TestedCount = experiments.Count(e => e.P is not null),
+        SurvivorCount = experiments.Count(e => e.Survives == true),
+        IsInterim = false,
+        ProgramVersion = "0.1.0",
+    };
+}
+
+/// <summary>Has a boundary that rises with the rank.</summary>
+internal sealed class RisingCorrection : Correction
+{
+    public override string Key => "rising";
+
+    public override string Name => "Rising test correction";
+
+    public override ErrorRate Controls => ErrorRate.FalseDiscovery;
+
+    public override Dependence ValidUnder => Dependence.Independent;
+
+    public override string Guarantee => "On average at most 5% of the survivors are false, over all campaigns run like this one.";
+
+    public override string Source => "invented for these tests";
+
+    public override double? BoundaryAt(int rank, int familySize, double level) => level * rank / familySize;
+
+    protected override void AdjustSorted(ReadOnlySpan<double> sorted, int familySize, Span<double> adjusted) => sorted.CopyTo(adjusted);
+}
+
+/// <summary>Has no simple boundary.</summary>
+internal sealed class UnboundedCorrection : Correction
+{
+    public override string Key => "unbounded";
+
+    public override string Name => "Unbounded test correction";
+
+    public override ErrorRate Controls => ErrorRate.Familywise;
+
+    public override Dependence ValidUnder => Dependence.Any;
+
+    public override string Guarantee => "The probability of any false survivor is at most the level.";
+
+    public override string Source => "invented for these tests";
+
+    protected override void AdjustSorted(ReadOnlySpan<double> sorted, int familySize, Span<double> adjusted) => sorted.CopyTo(adjusted);
+}
