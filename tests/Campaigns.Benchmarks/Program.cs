@@ -1,8 +1,12 @@
 using System.Globalization;
+using BenchmarkDotNet.Running;
 using Campaigns.Benchmarks.Generating;
+using Campaigns.Benchmarks.Kernels;
 
 const string Usage = """
     generate SIZE FOLDER [--shuffled] [--plan]   write a synthetic campaign folder; SIZE is S, M, L or EXPERIMENTSxGROUPSxREPLICATES
+    time                                         milliseconds of a few large kernels
+    kernels [BENCHMARKDOTNET OPTION ...]         careful benchmarks of the hot kernels; --filter '*' runs them all
     """;
 
 switch (args)
@@ -11,6 +15,12 @@ switch (args)
         when CampaignSize.Parse(sizeText) is { } size && options.All(o => o is "--shuffled" or "--plan"):
         CampaignFolder.Write(new SyntheticCampaign(size), folder, options.Contains("--shuffled"), options.Contains("--plan"));
         Console.WriteLine(string.Create(CultureInfo.InvariantCulture, $"{folder}: {size.Rows} rows"));
+        return 0;
+    case ["time"]:
+        Timings.Print(Console.Out);
+        return 0;
+    case ["kernels", .. string[] options]:
+        BenchmarkSwitcher.FromAssembly(typeof(CorrectionKernels).Assembly).Run(options);
         return 0;
     default:
         Console.Error.WriteLine(Usage);

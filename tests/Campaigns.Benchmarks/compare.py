@@ -226,7 +226,7 @@ class Comparison:
 
 
 def main():
-    parser = argparse.ArgumentParser(usage=__doc__.split("\n\n")[1])
+    parser = argparse.ArgumentParser(description=__doc__, formatter_class=argparse.RawDescriptionHelpFormatter, usage=argparse.SUPPRESS)
     parser.add_argument("--install", action="store_true")
     parser.add_argument("--pairs", type=int, default=5)
     parser.add_argument("--work")

@@ -1,0 +1,58 @@
+using System.Diagnostics;
+using System.Globalization;
+using Campaigns.Statistics.Corrections;
+using Campaigns.Statistics.Distributions;
+
+namespace Campaigns.Benchmarks.Kernels;
+
+/// <summary>Milliseconds of a few large kernels, median of seven, as lines "name milliseconds" for a comparison with other programs.</summary>
+internal static class Timings
+{
+    private const int Million = 1_000_000;
+    private const int Repeats = 7;
+
+    public static void Print(TextWriter output)
+    {
+        double[] p = Inputs.PValues(Million);
+        Line("adjust", () =>
+        {
+            RankedFamily family = RankedFamily.Of(p, Million);
+            foreach (string key in new[] { "bonferroni", "holm", "bh" })
+            {
+                CorrectionRegistry.Find(key)!.Adjust(family, new double[Million]);
+            }
+        });
+
+        double[] f = Inputs.FStatistics(Million);
+        double sum = 0;
+        Line("tails", () =>
+        {
+            FDistribution law = FDistribution.For(4, 45);
+            foreach (double x in f)
+            {
+                sum += law.UpperTailPValue(x).Log;
+            }
+        });
+
+        double[] fewer = p[..100_000];
+        Line("hommel", () => CorrectionRegistry.Find("hommel")!.Adjust(RankedFamily.Of(fewer, fewer.Length), new double[fewer.Length]));
+
+        void Line(string name, Action work) =>
+            output.WriteLine(string.Create(CultureInfo.InvariantCulture, $"{name} {MedianMilliseconds(work):F2}"));
+    }
+
+    private static double MedianMilliseconds(Action work)
+    {
+        work();
+        var times = new double[Repeats];
+        for (int i = 0; i < Repeats; i++)
+        {
+            long start = Stopwatch.GetTimestamp();
+            work();
+            times[i] = Stopwatch.GetElapsedTime(start).TotalMilliseconds;
+        }
+
+        Array.Sort(times);
+        return times[Repeats / 2];
+    }
+}
