@@ -1,3 +1,4 @@
+using System.Buffers;
 using Campaigns.Statistics.Probability;
 
 namespace Campaigns.Statistics.Corrections;
@@ -48,13 +49,14 @@ public sealed class RankedFamily
     public static RankedFamily Of(ReadOnlySpan<PValue> pValues, int familySize)
     {
         CheckSize(pValues.Length, familySize);
-        double[] values = new double[pValues.Length];
-        for (int i = 0; i < values.Length; i++)
+        double[] values = ArrayPool<double>.Shared.Rent(pValues.Length);
+        for (int i = 0; i < pValues.Length; i++)
         {
             values[i] = pValues[i].Value + 0.0;
         }
 
-        (double[] sorted, int[] order) = Ranking.Ascending(values);
+        (double[] sorted, int[] order) = Ranking.Ascending(values.AsSpan(0, pValues.Length));
+        ArrayPool<double>.Shared.Return(values);
         int tail = LowerBound(sorted, TailBound);
         if (tail > 1)
         {
@@ -77,8 +79,8 @@ public sealed class RankedFamily
     public static RankedFamily Of(ReadOnlySpan<double> pValues, int familySize)
     {
         CheckSize(pValues.Length, familySize);
-        double[] values = new double[pValues.Length];
-        for (int i = 0; i < values.Length; i++)
+        double[] values = ArrayPool<double>.Shared.Rent(pValues.Length);
+        for (int i = 0; i < pValues.Length; i++)
         {
             double p = pValues[i];
             if (!(p >= 0 && p <= 1))
@@ -90,7 +92,8 @@ public sealed class RankedFamily
             values[i] = p + 0.0;
         }
 
-        (double[] sorted, int[] order) = Ranking.Ascending(values);
+        (double[] sorted, int[] order) = Ranking.Ascending(values.AsSpan(0, pValues.Length));
+        ArrayPool<double>.Shared.Return(values);
         return new RankedFamily(sorted, order, null, familySize);
     }
 

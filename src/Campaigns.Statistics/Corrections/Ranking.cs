@@ -1,145 +1,139 @@
+using System.Buffers;
 using System.Runtime.CompilerServices;
 using System.Runtime.InteropServices;
 
 namespace Campaigns.Statistics.Corrections;
 
-/// <summary>A stable sort of p-values in linear time: radix passes over the bits of the doubles, whose order as integers is their order as numbers from 0 up.</summary>
+/// <summary>A stable sort of p-values by radix passes over the bits of the doubles, whose order as integers is their order as numbers from 0 up.</summary>
 /// <remarks>
-/// Three passes of 11 bits put the leading 33 of the 62 bits in order (p = 1 is the largest key). What still shares those 33 bits is a short run in
-/// continuous data, finished by insertion; a long run, as hostile or finely gridded data give, gets three more passes. Linear in every case.
+/// The leading 32 of the 62 bits that a p-value can use are packed with its position into one word, and three passes put the words in order. P-values that share those bits form
+/// runs, short in continuous data: a run out of order is sorted by its remaining 30 bits, again packed with the position, which keeps ties in their order. Linear unless hostile
+/// data make the runs long, then n log n.
 /// </remarks>
 internal static class Ranking
 {
+    private const int TrailingBits = 30;
+    private const ulong TrailingMask = (1UL << TrailingBits) - 1;
     private const int DigitBits = 11;
     private const int Buckets = 1 << DigitBits;
-    private const int LeadingShift = 29;
-    private const int LongestInsertion = 32;
+    private const int Passes = 3;
+    private const int PositionBits = 32;
 
     /// <summary>The values ascending, and for each rank the position it came from; equal values keep their order.</summary>
-    /// <param name="values">In [0, 1], without -0; overwritten.</param>
-    public static (double[] Sorted, int[] Order) Ascending(double[] values)
+    /// <param name="values">In [0, 1], without -0.</param>
+    public static (double[] Sorted, int[] Order) Ascending(ReadOnlySpan<double> values)
     {
         int n = values.Length;
-        int[] order = new int[n];
+        ulong[] words = ArrayPool<ulong>.Shared.Rent(n);
+        ulong[] spare = ArrayPool<ulong>.Shared.Rent(n);
         for (int i = 0; i < n; i++)
         {
-            order[i] = i;
+            words[i] = (BitConverter.DoubleToUInt64Bits(values[i]) >> TrailingBits << PositionBits) | (uint)i;
         }
 
-        double[] spareKeys = new double[n];
-        int[] spareOrder = new int[n];
-        Span<ulong> keys = MemoryMarshal.Cast<double, ulong>(values.AsSpan());
-        Span<ulong> spare = MemoryMarshal.Cast<double, ulong>(spareKeys.AsSpan());
-        bool inSpare = SortByDigits(keys, order, spare, spareOrder, LeadingShift);
-        double[] sorted = inSpare ? spareKeys : values;
-        int[] ranks = inSpare ? spareOrder : order;
-        FinishRuns(inSpare ? spare : keys, ranks, inSpare ? keys : spare, inSpare ? order : spareOrder);
-        return (sorted, ranks);
+        if (SortByLeadingBits(words.AsSpan(0, n), spare.AsSpan(0, n)))
+        {
+            (words, spare) = (spare, words);
+        }
+
+        SortRuns(words.AsSpan(0, n), values);
+        double[] sorted = GC.AllocateUninitializedArray<double>(n);
+        int[] order = GC.AllocateUninitializedArray<int>(n);
+        for (int rank = 0; rank < n; rank++)
+        {
+            order[rank] = (int)(uint)words[rank];
+            sorted[rank] = values[order[rank]];
+        }
+
+        ArrayPool<ulong>.Shared.Return(words);
+        ArrayPool<ulong>.Shared.Return(spare);
+        return (sorted, order);
     }
 
-    /// <summary>Three stable passes over the digits that begin at a bit.</summary>
+    /// <summary>Sorts words by their upper half; words that share it keep their order.</summary>
     /// <returns>Whether the result lies in the spare memory.</returns>
-    private static bool SortByDigits(Span<ulong> keys, Span<int> order, Span<ulong> spareKeys, Span<int> spareOrder, int shift)
+    private static bool SortByLeadingBits(Span<ulong> words, Span<ulong> spare)
     {
-        Span<int> starts = stackalloc int[3 * Buckets];
-        starts.Clear();
-        ref int count = ref MemoryMarshal.GetReference(starts);
-        foreach (ulong key in keys)
+        Span<int> counts = stackalloc int[Passes * Buckets];
+        counts.Clear();
+        ref int count = ref MemoryMarshal.GetReference(counts);
+        foreach (ulong word in words)
         {
-            Unsafe.Add(ref count, (int)((key >> shift) & (Buckets - 1)))++;
-            Unsafe.Add(ref count, Buckets + (int)((key >> (shift + DigitBits)) & (Buckets - 1)))++;
-            Unsafe.Add(ref count, (2 * Buckets) + (int)((key >> (shift + (2 * DigitBits))) & (Buckets - 1)))++;
+            Unsafe.Add(ref count, Digit(word, 0))++;
+            Unsafe.Add(ref count, Buckets + Digit(word, 1))++;
+            Unsafe.Add(ref count, (2 * Buckets) + Digit(word, 2))++;
         }
 
         bool inSpare = false;
-        for (int pass = 0; pass < 3; pass++)
+        for (int pass = 0; pass < Passes; pass++)
         {
-            int at = shift + (pass * DigitBits);
-            Span<int> next = starts.Slice(pass * Buckets, Buckets);
-            if (keys.Length == 0 || next[(int)((keys[0] >> at) & (Buckets - 1))] == keys.Length)
-            {
-                continue;
-            }
-
+            Span<int> next = counts.Slice(pass * Buckets, Buckets);
             int sum = 0;
+            bool one = false;
             for (int bucket = 0; bucket < Buckets; bucket++)
             {
+                one |= next[bucket] == words.Length;
                 (next[bucket], sum) = (sum, sum + next[bucket]);
             }
 
-            if (inSpare)
+            if (!one)
             {
-                Scatter(spareKeys, spareOrder, keys, order, next, at);
+                Scatter(inSpare ? spare : words, inSpare ? words : spare, next, pass);
+                inSpare = !inSpare;
             }
-            else
-            {
-                Scatter(keys, order, spareKeys, spareOrder, next, at);
-            }
-
-            inSpare = !inSpare;
         }
 
         return inSpare;
     }
 
-    private static void Scatter(Span<ulong> keys, Span<int> order, Span<ulong> toKeys, Span<int> toOrder, Span<int> next, int shift)
+    private static void Scatter(ReadOnlySpan<ulong> words, Span<ulong> target, Span<int> next, int pass)
     {
         // Every bucket's next place lies inside the target because the counts add up to its length.
-        ref ulong target = ref MemoryMarshal.GetReference(toKeys);
-        ref int targetOrder = ref MemoryMarshal.GetReference(toOrder);
+        ref ulong to = ref MemoryMarshal.GetReference(target);
         ref int place = ref MemoryMarshal.GetReference(next);
-        ref int source = ref MemoryMarshal.GetReference(order);
-        for (int i = 0; i < keys.Length; i++)
+        foreach (ulong word in words)
         {
-            ulong key = keys[i];
-            int to = Unsafe.Add(ref place, (int)((key >> shift) & (Buckets - 1)))++;
-            Unsafe.Add(ref target, to) = key;
-            Unsafe.Add(ref targetOrder, to) = Unsafe.Add(ref source, i);
+            Unsafe.Add(ref to, Unsafe.Add(ref place, Digit(word, pass))++) = word;
         }
     }
 
-    private static void FinishRuns(Span<ulong> keys, Span<int> order, Span<ulong> spareKeys, Span<int> spareOrder)
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
+    private static int Digit(ulong word, int pass) => (int)(word >> (PositionBits + (pass * DigitBits))) & (Buckets - 1);
+
+    private static void SortRuns(Span<ulong> words, ReadOnlySpan<double> values)
     {
         int start = 0;
-        while (start < keys.Length)
+        for (int end = 1; end <= words.Length; end++)
         {
-            ulong leading = keys[start] >> LeadingShift;
-            int end = start + 1;
-            while (end < keys.Length && keys[end] >> LeadingShift == leading)
+            if (end < words.Length && words[end] >> PositionBits == words[start] >> PositionBits)
             {
-                end++;
+                continue;
             }
 
-            int length = end - start;
-            if (length > LongestInsertion)
+            if (end - start > 1)
             {
-                if (SortByDigits(keys[start..end], order[start..end], spareKeys[start..end], spareOrder[start..end], 0))
-                {
-                    spareKeys[start..end].CopyTo(keys[start..end]);
-                    spareOrder[start..end].CopyTo(order[start..end]);
-                }
-            }
-            else if (length > 1)
-            {
-                Insert(keys[start..end], order[start..end]);
+                SortRun(words[start..end], values);
             }
 
             start = end;
         }
     }
 
-    private static void Insert(Span<ulong> keys, Span<int> order)
+    private static void SortRun(Span<ulong> run, ReadOnlySpan<double> values)
     {
-        for (int i = 1; i < keys.Length; i++)
+        bool ordered = true;
+        ulong before = 0;
+        foreach (ref ulong word in run)
         {
-            (ulong key, int position) = (keys[i], order[i]);
-            int to = i;
-            for (; to > 0 && keys[to - 1] > key; to--)
-            {
-                (keys[to], order[to]) = (keys[to - 1], order[to - 1]);
-            }
+            uint position = (uint)word;
+            word = ((BitConverter.DoubleToUInt64Bits(values[(int)position]) & TrailingMask) << PositionBits) | position;
+            ordered &= before <= word;
+            before = word;
+        }
 
-            (keys[to], order[to]) = (key, position);
+        if (!ordered)
+        {
+            run.Sort();
         }
     }
 }
