@@ -112,27 +112,9 @@ public static class FamilyRisk
         }
 
         double failures = tests - k;
-        double exponent = StirlingError(tests) - StirlingError(k) - StirlingError(failures)
+        double exponent = StirlingError.Of(tests) - StirlingError.Of(k) - StirlingError.Of(failures)
             - Deviance(k, tests * level) - Deviance(failures, tests * (1 - level));
         return Math.Sqrt(tests / (2 * Math.PI * k * failures)) * Math.Exp(exponent);
-    }
-
-    /// <summary>ln n! less Stirling's formula (n + 1/2) ln n - n + ln(2 pi) / 2.</summary>
-    private static double StirlingError(double n)
-    {
-        if (n > 15)
-        {
-            double square = n * n;
-            return ((1 / 12.0) - (((1 / 360.0) - (((1 / 1260.0) - (((1 / 1680.0) - (1 / (1188 * square))) / square)) / square)) / square)) / n;
-        }
-
-        double factorial = 1;
-        for (int i = 2; i <= n; i++)
-        {
-            factorial *= i;
-        }
-
-        return Math.Log(factorial) - (((n + 0.5) * Math.Log(n)) - n + (0.5 * Math.Log(2 * Math.PI)));
     }
 
     /// <summary>x ln(x / mean) + mean - x, without cancellation where x is near the mean.</summary>

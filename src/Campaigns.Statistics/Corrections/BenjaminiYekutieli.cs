@@ -1,3 +1,5 @@
+using Campaigns.Statistics.Numerics;
+
 namespace Campaigns.Statistics.Corrections;
 
 /// <summary>The Benjamini-Yekutieli step-up correction for the false discovery rate under any dependence.</summary>
@@ -32,7 +34,7 @@ public sealed class BenjaminiYekutieli : Correction
     /// <inheritdoc/>
     protected override void AdjustSorted(ReadOnlySpan<double> sorted, int familySize, Span<double> adjusted)
     {
-        (DoublePair factor, double divisor) = HarmonicFactor.Of(familySize);
+        (DoubleDouble factor, double divisor) = HarmonicFactor.Of(familySize);
         for (int k = 0; k < sorted.Length; k++)
         {
             adjusted[k] = ExactProducts.Quotient(sorted[k], factor.High, factor.Low, divisor * (k + 1));

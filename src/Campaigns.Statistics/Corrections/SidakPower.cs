@@ -1,11 +1,12 @@
 using System.Numerics;
+using Campaigns.Statistics.Numerics;
 
 namespace Campaigns.Statistics.Corrections;
 
 /// <summary>1 - (1 - p)^m, the adjusted p-value of Sidak, without cancellation and rounded once.</summary>
 internal static class SidakPower
 {
-    /// <summary>Below this m p the second term of the expansion, m p (1 - (m-1) p / 2 + ...), is too small for a pair of doubles to hold.</summary>
+    /// <summary>Below this m p the second term of the expansion, m p (1 - (m-1) p / 2 + ...), is too small for 32 digits to hold.</summary>
     private const double LinearBelow = 5.2e-26; // 2^-84
 
     /// <summary>Above this m p, (1 - p)^m is below exp(-40), less than half the distance from 1 to the double before it.</summary>
@@ -16,7 +17,7 @@ internal static class SidakPower
     /// <param name="m">How many; at least 1.</param>
     /// <returns>In [0, 1].</returns>
     /// <remarks>
-    /// Method: with q_a = 1 - (1 - p)^a, q_(a+b) = q_a + q_b (1 - q_a): all terms positive, doubling along the bits of m, in pairs of doubles.
+    /// Method: with q_a = 1 - (1 - p)^a, q_(a+b) = q_a + q_b (1 - q_a): all terms positive, doubling along the bits of m, with 32 digits.
     /// </remarks>
     public static double Of(double p, int m)
     {
@@ -36,14 +37,15 @@ internal static class SidakPower
             return JustBelow(product, Math.FusedMultiplyAdd(p, m, -product));
         }
 
-        var single = new DoublePair(p, 0);
-        DoublePair sum = single;
+        DoubleDouble one = DoubleDouble.From(1.0);
+        DoubleDouble single = DoubleDouble.From(p);
+        DoubleDouble sum = single;
         for (int bit = BitOperations.Log2((uint)m) - 1; bit >= 0; bit--)
         {
-            sum += sum * sum.Complement();
+            sum += sum * (one - sum);
             if ((m >> bit & 1) != 0)
             {
-                sum += single * sum.Complement();
+                sum += single * (one - sum);
             }
         }
 

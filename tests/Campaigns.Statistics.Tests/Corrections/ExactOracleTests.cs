@@ -84,14 +84,13 @@ public sealed class ExactOracleTests
         foreach (double[] p in Cases(count, m))
         {
             Rational[] all = [.. p.Concat(Enumerable.Repeat(1.0, untested)).Select(Rational.Of)];
+            int[] ascending = [.. Enumerable.Range(0, m).OrderBy(i => i < count ? p[i] : 1)];
             var worst = new Rational[m];
             Array.Fill(worst, Rational.Of(0));
             for (int set = 1; set < 1 << m; set++)
             {
-                int[] members = [.. Enumerable.Range(0, m).Where(i => (set >> i & 1) != 0)];
-                Rational[] sorted = [.. members.Select(i => all[i])];
-                Array.Sort(sorted);
-                Rational value = local(sorted);
+                int[] members = [.. ascending.Where(i => (set >> i & 1) != 0)];
+                Rational value = local([.. members.Select(i => all[i])]);
                 foreach (int i in members)
                 {
                     worst[i] = Rational.Max(worst[i], value);

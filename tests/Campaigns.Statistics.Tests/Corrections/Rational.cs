@@ -20,8 +20,13 @@ internal readonly struct Rational(BigInteger numerator, BigInteger denominator) 
         return power >= 0 ? new Rational((BigInteger)mantissa << power, 1) : new Rational(mantissa, BigInteger.One << -power);
     }
 
-    public static Rational operator +(Rational a, Rational b) =>
-        new((a._numerator * b._denominator) + (b._numerator * a._denominator), a._denominator * b._denominator);
+    public static Rational operator +(Rational a, Rational b)
+    {
+        BigInteger numerator = (a._numerator * b._denominator) + (b._numerator * a._denominator);
+        BigInteger denominator = a._denominator * b._denominator;
+        var common = BigInteger.GreatestCommonDivisor(numerator, denominator);
+        return new Rational(numerator / common, denominator / common);
+    }
 
     public static Rational operator *(Rational a, Rational b) => new(a._numerator * b._numerator, a._denominator * b._denominator);
 

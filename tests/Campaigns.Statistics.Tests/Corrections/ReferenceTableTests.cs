@@ -41,6 +41,15 @@ public sealed class ReferenceTableTests
     }
 
     [Fact]
+    public void Sidak_is_rounded_once_from_the_far_tail_to_one_in_families_of_any_size()
+    {
+        foreach (ReferenceRow row in ReferenceTable.Read("campaign/sidak_wide.csv").Rows)
+        {
+            Assert.Equal([row.Number("sidak")], Families.Adjust("sidak", [row.Number("p")], row.Integer("m")));
+        }
+    }
+
+    [Fact]
     public void A_planned_family_larger_than_the_p_values_agrees_with_R()
     {
         (string Key, string Column)[] methods = [("bonferroni", "bonferroni"), ("holm", "holm"), ("hochberg", "hochberg"), ("hommel", "hommel"), ("bh", "BH"), ("by", "BY")];
