@@ -27,7 +27,7 @@ public sealed class BenjaminiYekutieli : Correction
     /// <inheritdoc/>
     public override double? BoundaryAt(int rank, int familySize, double level)
     {
-        (DoublePair factor, double divisor) = HarmonicFactor.Of(familySize);
+        (DoubleDouble factor, double divisor) = HarmonicFactor.Of(familySize);
         return level * divisor * rank / factor.High;
     }
 
