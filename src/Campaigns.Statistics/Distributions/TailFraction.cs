@@ -39,33 +39,36 @@ internal sealed class TailFraction
         double square = x * x;
         double shifted = lambda + 1;
         double slope = 1 + y;
-        double previousTop = 1;
-        double previousBottom = 0;
-        double top = _a / (_a + 1) * shifted;
-        double bottom = 1;
-        for (int j = 1; j <= MostSteps; j++)
+        double evenTop = 1;
+        double evenBottom = 0;
+        double oddTop = _a / (_a + 1) * shifted;
+        double oddBottom = 1;
+        for (int j = 1; j <= MostSteps; j += 2)
         {
             Coefficients c = j <= TabledSteps ? _tabled[j - 1] : At(j);
             double numerator = c.Square * square;
-            double denominator = Math.FusedMultiplyAdd(c.Linear, x, j) + (c.Shift * Math.FusedMultiplyAdd(j, slope, shifted));
-            double nextTop = Math.FusedMultiplyAdd(denominator, top, numerator * previousTop);
-            double nextBottom = Math.FusedMultiplyAdd(denominator, bottom, numerator * previousBottom);
-            double cross = nextTop * bottom;
-            if (Math.Abs(Math.FusedMultiplyAdd(-nextBottom, top, cross)) <= Tolerance * Math.Abs(cross))
+            double denominator = c.At(x, shifted, slope);
+            evenTop = Math.FusedMultiplyAdd(denominator, oddTop, numerator * evenTop);
+            evenBottom = Math.FusedMultiplyAdd(denominator, oddBottom, numerator * evenBottom);
+
+            c = j < TabledSteps ? _tabled[j] : At(j + 1);
+            numerator = c.Square * square;
+            denominator = c.At(x, shifted, slope);
+            oddTop = Math.FusedMultiplyAdd(denominator, evenTop, numerator * oddTop);
+            oddBottom = Math.FusedMultiplyAdd(denominator, evenBottom, numerator * oddBottom);
+
+            double cross = oddTop * evenBottom;
+            if (Math.Abs(Math.FusedMultiplyAdd(-oddBottom, evenTop, cross)) <= Tolerance * Math.Abs(cross))
             {
-                return nextTop / nextBottom;
+                return oddTop / oddBottom;
             }
 
-            previousTop = top;
-            previousBottom = bottom;
-            top = nextTop;
-            bottom = nextBottom;
-            if (Math.Abs(nextBottom) > Big)
+            if (Math.Abs(oddBottom) > Big)
             {
-                previousTop /= Big;
-                previousBottom /= Big;
-                top /= Big;
-                bottom /= Big;
+                evenTop /= Big;
+                evenBottom /= Big;
+                oddTop /= Big;
+                oddBottom /= Big;
             }
         }
 
@@ -75,11 +78,14 @@ internal sealed class TailFraction
     private Coefficients At(double j)
     {
         double s = _a + (2 * j) - 1;
-        return new(
-            (_a + j - 1) / s * ((_a + _b + j - 1) / s) * j * (_b - j),
-            j * (_b - j) / s,
-            (_a + j) / (s + 2));
+        double shift = (_a + j) / (s + 2);
+        return new((_a + j - 1) / s * ((_a + _b + j - 1) / s) * j * (_b - j), j, j * (_b - j) / s, shift, shift * j);
     }
 
-    private readonly record struct Coefficients(double Square, double Linear, double Shift);
+    private readonly record struct Coefficients(double Square, double Constant, double Linear, double Shift, double Slope)
+    {
+        /// <summary>The partial denominator.</summary>
+        public double At(double x, double shifted, double slope) =>
+            Math.FusedMultiplyAdd(Linear, x, Constant) + Math.FusedMultiplyAdd(Shift, shifted, Slope * slope);
+    }
 }

@@ -1,3 +1,4 @@
+using System.Runtime.CompilerServices;
 using Campaigns.Statistics.Numerics;
 
 namespace Campaigns.Statistics.GroupTests;
@@ -97,6 +98,7 @@ public readonly struct OneWayLayout
             (WideReal.Sqrt(meanWithin) * unit).ToDouble());
     }
 
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
     private static VariationLine Line(WideReal sumOfSquares, int degreesOfFreedom) =>
         new(sumOfSquares.ToDouble(), degreesOfFreedom, (sumOfSquares / degreesOfFreedom).ToDouble());
 
