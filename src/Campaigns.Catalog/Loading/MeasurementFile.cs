@@ -122,7 +122,7 @@ public sealed class MeasurementFile : IDisposable
 
     private ReadOnlySpan<byte> RequiredName(int column, scoped ref bool isSound)
     {
-        ReadOnlySpan<byte> name = Name8(column, ref isSound);
+        ReadOnlySpan<byte> name = CleanName(column, ref isSound);
         if (name.IsEmpty && AsciiText.Trim(_file.Field(column)).IsEmpty)
         {
             _file.Report(column, "empty-name", "the field is empty: every value belongs to an experiment and a group.");
@@ -134,11 +134,11 @@ public sealed class MeasurementFile : IDisposable
 
     private ReadOnlySpan<byte> OptionalName(int column, scoped ref bool isSound)
     {
-        ReadOnlySpan<byte> name = Name8(column, ref isSound);
+        ReadOnlySpan<byte> name = CleanName(column, ref isSound);
         return DecimalText.IsMissing(name) ? default : name;
     }
 
-    private ReadOnlySpan<byte> Name8(int column, scoped ref bool isSound)
+    private ReadOnlySpan<byte> CleanName(int column, scoped ref bool isSound)
     {
         ReadOnlySpan<byte> field = _file.Field(column);
         if (_file.IsPlain)
@@ -159,17 +159,17 @@ public sealed class MeasurementFile : IDisposable
     private long? ReadOrder(scoped ref bool isSound)
     {
         ReadOnlySpan<byte> field = AsciiText.Trim(_file.Field(_order));
-        if (DecimalText.IsMissing(field))
+        if (IntegerText.TryParse(field, out long order))
         {
-            return null;
+            return order;
         }
 
-        if (!IntegerText.TryParse(field, out long order))
+        if (!DecimalText.IsMissing(field))
         {
             _file.Report(_order, "not-an-integer", $"{ShownText.Quote(field)} is no whole number: write the place in the order of measuring, such as 12, or leave it empty.");
             isSound = false;
         }
 
-        return order;
+        return null;
     }
 }

@@ -5,11 +5,10 @@ internal static class IntegerText
 {
     private const int MostDigits = 18;
 
-    /// <summary>Reads an optional sign and one to eighteen digits, with nothing else but blanks around them.</summary>
+    /// <summary>Reads an optional sign and one to eighteen digits, with nothing else.</summary>
     public static bool TryParse(ReadOnlySpan<byte> text, out long value)
     {
         value = 0;
-        text = AsciiText.Trim(text);
         bool isNegative = text.StartsWith("-"u8);
         if (isNegative || text.StartsWith("+"u8))
         {

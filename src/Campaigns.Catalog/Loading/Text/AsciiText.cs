@@ -1,10 +1,15 @@
+using System.Runtime.CompilerServices;
+
 namespace Campaigns.Catalog.Loading;
 
 /// <summary>Small operations on UTF-8 text that concern its ASCII part alone.</summary>
 internal static class AsciiText
 {
     /// <summary>The text without the spaces and tabs around it.</summary>
-    public static ReadOnlySpan<byte> Trim(ReadOnlySpan<byte> text)
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
+    public static ReadOnlySpan<byte> Trim(ReadOnlySpan<byte> text) => text.IsEmpty || (text[0] > ' ' && text[^1] > ' ') ? text : TrimBlanks(text);
+
+    private static ReadOnlySpan<byte> TrimBlanks(ReadOnlySpan<byte> text)
     {
         int start = 0;
         int end = text.Length;

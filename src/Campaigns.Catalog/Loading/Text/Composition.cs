@@ -9,6 +9,9 @@ namespace Campaigns.Catalog.Loading;
 /// </remarks>
 internal static class Composition
 {
+    // Dialytika and tonos in one: the only mark of the range whose normal form is two characters.
+    private const char TwoMarks = '\u0344';
+
     private static readonly Dictionary<(char Letter, char Mark), char> Composites = CompositionTable.Composites
         .SelectMany(row => row.LettersAndComposites.Chunk(2).Select(pair => (Key: (pair[0], row.Mark), Composite: pair[1])))
         .ToDictionary(entry => entry.Key, entry => entry.Composite);
@@ -32,7 +35,11 @@ internal static class Composition
 
     private static void Decompose(char c, List<char> into)
     {
-        if (Singles.TryGetValue(c, out char single))
+        if (c == TwoMarks)
+        {
+            into.AddRange("\u0308\u0301");
+        }
+        else if (Singles.TryGetValue(c, out char single))
         {
             Decompose(single, into);
         }
