@@ -62,12 +62,14 @@ public sealed class DashboardModelTests
     [InlineData("E12", "E123", -1)]
     [InlineData("E19b", "E110a", -1)]
     [InlineData("a", "b", -1)]
-    [InlineData("E1", "E01", 1)]
+    [InlineData("E1", "E01", 0)]
+    [InlineData("E000", "E1", -1)]
+    [InlineData("E1234567890", "E987654321", 1)]
     [InlineData("E1", "E1", 0)]
     public void Numbers_inside_codes_are_compared_as_numbers(string first, string second, int sign)
     {
-        Assert.Equal(sign, Math.Sign(CodeOrder.Instance.Compare(first, second)));
-        Assert.Equal(-sign, Math.Sign(CodeOrder.Instance.Compare(second, first)));
+        Assert.Equal(sign, Math.Sign(string.CompareOrdinal(CodeOrder.KeyOf(first), CodeOrder.KeyOf(second))));
+        Assert.Equal(-sign, Math.Sign(string.CompareOrdinal(CodeOrder.KeyOf(second), CodeOrder.KeyOf(first))));
     }
 
     [Fact]

@@ -95,7 +95,7 @@ public sealed class DashboardScreenTests
         screen.Press(Key.CursorRight);
         Assert.Contains("lines 1 to", screen.Text, StringComparison.Ordinal);
         screen.Press(Key.PageDown, Key.Esc);
-        Assert.Contains("plan", screen.Lines[0] + screen.Lines[5], StringComparison.Ordinal);
+        Assert.Contains(screen.Lines, l => l.StartsWith("experimen▼", StringComparison.Ordinal));
         Assert.False(screen.IsStopped);
     }
 
@@ -127,7 +127,7 @@ public sealed class DashboardScreenTests
         screen.Press(new Key('/')).Type("survives:no").Press(Key.Enter, Key.D2, Key.Home, Key.CursorRight);
         ExperimentResult second = screen.Model.Ranking.At(2);
         Assert.Same(second, screen.Model.Selected);
-        Assert.Contains($"{second.Plan.Code} ◆ survives: rank 2 of 48", screen.Text, StringComparison.Ordinal);
+        Assert.Contains($"{second.Plan.Code} ◆ survives: rank 2, ", screen.Text, StringComparison.Ordinal);
         screen.Press(Key.Z);
         Assert.Contains("20 of 48", screen.Text, StringComparison.Ordinal);
         screen.Press(Key.Enter);
@@ -197,7 +197,7 @@ public sealed class DashboardScreenTests
     public void A_campaign_with_nothing_tested_shows_its_plan()
     {
         using TestScreen screen = new(120, 40, SampleCampaign.Standing(12, status: _ => ExperimentStatus.Planned));
-        Assert.Equal(12, screen.Lines.Count(l => l.Contains("○ –    planned", StringComparison.Ordinal)));
+        Assert.Equal(12, screen.Lines.Count(l => l.Contains("○ –      planned", StringComparison.Ordinal)));
         Assert.Contains("registered, no values yet", screen.Text, StringComparison.Ordinal);
         Assert.Contains("Nothing is tested yet", screen.Press(Key.D2).Text, StringComparison.Ordinal);
     }

@@ -114,6 +114,6 @@ public sealed class RankingPage : DashboardPage
 
         string boundary = Ranking.BoundaryAt(Rank) is { } b ? $", boundary {NumberText.Screen(b, 3)}" : "";
         string survives = selected.Survives == true ? Glyphs.Survivor + " survives" : Glyphs.Other + " does not survive";
-        return string.Create(CultureInfo.InvariantCulture, $"{selected.Plan.Code} {survives}: rank {Rank} of {Ranking.FamilySize}, p {NumberText.P(p)}{boundary}, adjusted {NumberText.P(adjusted)}");
+        return string.Create(CultureInfo.InvariantCulture, $"{selected.Plan.Code} {survives}: rank {Rank}, p {NumberText.P(p)}, adjusted {NumberText.P(adjusted)}{boundary}");
     }
 }
