@@ -59,10 +59,14 @@ public sealed class PictureTests
         Assert.DoesNotContain("∞", text, StringComparison.Ordinal);
     }
 
-    [Fact]
-    public void The_whole_range_of_doubles_can_be_drawn()
+    [Theory]
+    [InlineData(-1.7e308, 1.7e308)]
+    [InlineData(1e16, 10000000000000002)]
+    [InlineData(0, 5e-324)]
+    [InlineData(1e-320, 1e300)]
+    public void The_whole_range_of_doubles_can_be_drawn(double low, double high)
     {
-        string text = ObservationPlot.Paint([Group("a", [-1.7e308, 1.7e308, 0])], 60, GlyphSet.Full).ToString();
+        string text = ObservationPlot.Paint([Group("a", [low, high])], 60, GlyphSet.Full).ToString();
         Assert.DoesNotContain("NaN", text, StringComparison.Ordinal);
         Assert.DoesNotContain("Infinity", text, StringComparison.Ordinal);
     }

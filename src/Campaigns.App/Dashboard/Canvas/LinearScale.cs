@@ -5,6 +5,7 @@ namespace Campaigns.App.Dashboard.Canvas;
 /// <summary>A horizontal axis from numbers to cells, with round ticks.</summary>
 public sealed class LinearScale
 {
+    private const double MostSteps = 1e12;
     private readonly double _low;
     private readonly double _high;
     private readonly double _step;
@@ -26,7 +27,9 @@ public sealed class LinearScale
         double raw = ((high / 4) - (low / 4)) / Math.Max(3, Cells / 10) * 4;
         double magnitude = Math.Pow(10, Math.Floor(Math.Log10(raw)));
         double step = (raw / magnitude) switch { <= 1 => 1, <= 2 => 2, <= 5 => 5, _ => 10 } * magnitude;
-        _step = double.IsFinite(step) && step > 0 ? step : 0;
+
+        // Where the numbers are so large beside their spread that multiples of the step run together, only the ends are marked.
+        _step = Math.Max(Math.Abs(low), Math.Abs(high)) / step < MostSteps ? step : 0;
         (_low, _high) = (low, high);
     }
 
