@@ -5,6 +5,7 @@ namespace Campaigns.App.Dashboard.Canvas;
 /// <summary>A horizontal axis from numbers to cells, with round ticks.</summary>
 public sealed class LinearScale
 {
+    private const double MostSteps = 1e12;
     private readonly double _low;
     private readonly double _high;
     private readonly double _step;
@@ -23,12 +24,13 @@ public sealed class LinearScale
         }
 
         // Quarters, so that even the whole range of doubles has a finite length.
-        double raw = ((high / 4) - (low / 4)) / Math.Max(2, Cells / 14) * 4;
+        double raw = ((high / 4) - (low / 4)) / Math.Max(3, Cells / 10) * 4;
         double magnitude = Math.Pow(10, Math.Floor(Math.Log10(raw)));
         double step = (raw / magnitude) switch { <= 1 => 1, <= 2 => 2, <= 5 => 5, _ => 10 } * magnitude;
-        _step = double.IsFinite(step) && step > 0 ? step : 0;
-        _low = _step > 0 && double.IsFinite(Math.Floor(low / _step) * _step) ? Math.Floor(low / _step) * _step : low;
-        _high = _step > 0 && double.IsFinite(Math.Ceiling(high / _step) * _step) ? Math.Ceiling(high / _step) * _step : high;
+
+        // Where the numbers are so large beside their spread that multiples of the step run together, only the ends are marked.
+        _step = Math.Max(Math.Abs(low), Math.Abs(high)) / step < MostSteps ? step : 0;
+        (_low, _high) = (low, high);
     }
 
     /// <summary>Cells along the axis.</summary>
@@ -68,10 +70,17 @@ public sealed class LinearScale
 
     private IEnumerable<double> Ticks()
     {
-        int count = _step > 0 ? (int)Math.Min(200, Math.Round((_high / _step) - (_low / _step))) : 1;
-        for (int i = 0; i <= count; i++)
+        if (_step == 0)
         {
-            yield return i == count ? _high : _low + (i * _step);
+            yield return _low;
+            yield return _high;
+            yield break;
+        }
+
+        double last = Math.Floor(_high / _step);
+        for (double multiple = Math.Ceiling(_low / _step); multiple <= last; multiple++)
+        {
+            yield return multiple * _step;
         }
     }
 

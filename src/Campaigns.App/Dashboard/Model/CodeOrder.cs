@@ -1,68 +1,42 @@
+using System.Text;
+
 namespace Campaigns.App.Dashboard.Model;
 
 /// <summary>Orders names as people count: runs of digits by their number, so that E2 comes before E10; everything else by code unit.</summary>
-public sealed class CodeOrder : IComparer<string>
+public static class CodeOrder
 {
-    /// <summary>The order.</summary>
-    public static CodeOrder Instance { get; } = new();
+    private const int LongestNumber = 40;
 
-    /// <inheritdoc/>
-    public int Compare(string? x, string? y)
+    /// <summary>A text whose ordinal order is that order: before every number its count of digits is put, leading zeros left out.</summary>
+    /// <param name="name">Any text.</param>
+    /// <returns>The same for names that differ in leading zeros alone. Numbers of more than 40 digits are compared as text.</returns>
+    public static string KeyOf(string name)
     {
-        ReadOnlySpan<char> a = x, b = y;
-
-        // What both begin with needs no look, except the digits of a number that may go on.
-        int same = a.CommonPrefixLength(b);
-        while (same > 0 && char.IsAsciiDigit(a[same - 1]))
+        if (!name.AsSpan().ContainsAnyInRange('0', '9'))
         {
-            same--;
+            return name;
         }
 
-        int i = same, j = same;
-        while (i < a.Length && j < b.Length)
+        StringBuilder key = new(name.Length + 4);
+        for (int at = 0; at < name.Length;)
         {
-            if (!char.IsAsciiDigit(a[i]) || !char.IsAsciiDigit(b[j]))
+            if (!char.IsAsciiDigit(name[at]))
             {
-                if (a[i] != b[j])
-                {
-                    return a[i].CompareTo(b[j]);
-                }
-
-                i++;
-                j++;
+                key.Append(name[at++]);
                 continue;
             }
 
-            ReadOnlySpan<char> left = DigitsAt(a, i), right = DigitsAt(b, j);
-            int sign = CompareDigits(left, right);
-            if (sign != 0)
+            int end = at;
+            while (end < name.Length && char.IsAsciiDigit(name[end]))
             {
-                return sign;
+                end++;
             }
 
-            i += left.Length;
-            j += right.Length;
+            ReadOnlySpan<char> digits = name.AsSpan(at, end - at).TrimStart('0');
+            key.Append((char)('0' + Math.Min(digits.Length, LongestNumber))).Append(digits);
+            at = end;
         }
 
-        int rest = (a.Length - i).CompareTo(b.Length - j);
-        return rest != 0 ? rest : a.SequenceCompareTo(b);
-    }
-
-    private static ReadOnlySpan<char> DigitsAt(ReadOnlySpan<char> text, int at)
-    {
-        int end = at;
-        while (end < text.Length && char.IsAsciiDigit(text[end]))
-        {
-            end++;
-        }
-
-        return text[at..end];
-    }
-
-    private static int CompareDigits(ReadOnlySpan<char> left, ReadOnlySpan<char> right)
-    {
-        left = left.TrimStart('0');
-        right = right.TrimStart('0');
-        return left.Length != right.Length ? left.Length.CompareTo(right.Length) : left.SequenceCompareTo(right);
+        return key.ToString();
     }
 }

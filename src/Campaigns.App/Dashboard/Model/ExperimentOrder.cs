@@ -23,33 +23,39 @@ public static class ExperimentOrder
             return plan;
         }
 
-        return column.Number is { } number ? ByNumber(experiments, number, isFalling) : ByText(experiments, column, isFalling);
+        return column.Number is { } number
+            ? Sorted(experiments, e => number(e) is { } value ? (true, value) : (false, 0), Comparer<double>.Default, isFalling)
+            : Sorted(experiments, e => column.TextOf(e) is { Length: > 0 } text ? (true, CodeOrder.KeyOf(text)) : (false, ""), StringComparer.Ordinal, isFalling);
     }
 
-    private static int[] ByNumber(IReadOnlyList<ExperimentResult> experiments, Func<ExperimentResult, double?> number, bool isFalling)
+    private static int[] Sorted<TKey>(IReadOnlyList<ExperimentResult> experiments, Func<ExperimentResult, (bool Has, TKey Key)> keyOf, IComparer<TKey> comparer, bool isFalling)
     {
-        double[] keys = new double[experiments.Count];
+        TKey[] keys = new TKey[experiments.Count];
         int[] order = new int[experiments.Count];
         int with = 0, without = experiments.Count;
         for (int i = 0; i < experiments.Count; i++)
         {
-            if (number(experiments[i]) is { } key)
+            (bool has, TKey key) = keyOf(experiments[i]);
+            order[has ? with : --without] = i;
+            if (has)
             {
-                keys[with] = isFalling ? -key : key;
-                order[with++] = i;
-            }
-            else
-            {
-                order[--without] = i;
+                keys[with++] = key;
             }
         }
 
-        Array.Sort(keys, order, 0, with);
         Array.Reverse(order, with, order.Length - with);
+        Array.Sort(keys, order, 0, with, comparer);
+        if (isFalling)
+        {
+            Array.Reverse(keys, 0, with);
+            Array.Reverse(order, 0, with);
+        }
+
+        // The library's sort does not keep ties in order.
         for (int start = 0; start < with;)
         {
             int end = start + 1;
-            while (end < with && keys[end] == keys[start])
+            while (end < with && comparer.Compare(keys[end], keys[start]) == 0)
             {
                 end++;
             }
@@ -59,27 +65,5 @@ public static class ExperimentOrder
         }
 
         return order;
-    }
-
-    private static int[] ByText(IReadOnlyList<ExperimentResult> experiments, ExperimentColumn column, bool isFalling)
-    {
-        string[] texts = new string[experiments.Count];
-        for (int i = 0; i < texts.Length; i++)
-        {
-            texts[i] = column.TextOf(experiments[i]) ?? "";
-        }
-
-        (string Text, int Position)[] order = [.. texts.Select((text, i) => (text, i))];
-        int sign = isFalling ? -1 : 1;
-        Array.Sort(order, (a, b) => Compare(a, b, sign));
-        return Array.ConvertAll(order, o => o.Position);
-    }
-
-    private static int Compare((string Text, int Position) a, (string Text, int Position) b, int sign)
-    {
-        int compared = a.Text.Length == 0 || b.Text.Length == 0
-            ? (a.Text.Length == 0).CompareTo(b.Text.Length == 0)
-            : sign * CodeOrder.Instance.Compare(a.Text, b.Text);
-        return compared != 0 ? compared : a.Position.CompareTo(b.Position);
     }
 }

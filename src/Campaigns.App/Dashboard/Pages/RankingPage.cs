@@ -98,7 +98,7 @@ public sealed class RankingPage : DashboardPage
     }
 
     private string AssumptionText() =>
-        Model.Correction is null ? "" : $"{Model.Correction.Name} {Model.Heading.ValidUnder}; decided by the adjusted p-values.";
+        Model.Correction is null ? "" : $"{Model.Correction.Name} {Model.Heading.ValidUnder}.";
 
     private string SelectedText()
     {
@@ -113,7 +113,7 @@ public sealed class RankingPage : DashboardPage
         }
 
         string boundary = Ranking.BoundaryAt(Rank) is { } b ? $", boundary {NumberText.Screen(b, 3)}" : "";
-        string survives = ListPainter.SurvivalText(selected.Survives, Glyphs);
-        return string.Create(CultureInfo.InvariantCulture, $"rank {Rank} of {Ranking.FamilySize}: {selected.Plan.Code}, p {NumberText.P(p)}{boundary}, adjusted {NumberText.P(adjusted)}, survives {survives}");
+        string survives = selected.Survives == true ? Glyphs.Survivor + " survives" : Glyphs.Other + " does not survive";
+        return string.Create(CultureInfo.InvariantCulture, $"{selected.Plan.Code} {survives}: rank {Rank}, p {NumberText.P(p)}, adjusted {NumberText.P(adjusted)}{boundary}");
     }
 }

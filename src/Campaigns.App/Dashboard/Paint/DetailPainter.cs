@@ -32,6 +32,12 @@ public static class DetailPainter
             page.Line($"residual standard deviation {Number(variation.ResidualStandardDeviation)} {detail.Result.Plan.Unit}".TrimEnd());
         }
 
+        if (GroupTestRegistry.Find(detail.Result.Plan.Test) is { } test)
+        {
+            page.Title("what the test assumes");
+            page.Line(test.Assumes, Ink.Quiet);
+        }
+
         Notes(page, detail);
         return page.Painted();
     }
@@ -39,10 +45,14 @@ public static class DetailPainter
     private static void Result(Page page, ExperimentResult result, CampaignHeading heading)
     {
         PlannedExperiment plan = result.Plan;
-        GroupTest? test = GroupTestRegistry.Find(plan.Test);
         page.Line(plan.Title.Length > 0 ? $"{plan.Code}: {plan.Title}" : plan.Code, Ink.Heading);
         string unit = plan.Unit.Length > 0 ? $" ({plan.Unit})" : "";
-        page.Line((plan.Response.Length > 0 ? $"{plan.Response}{unit}; " : "") + $"test {test?.Name ?? plan.Test}, follow-up {plan.FollowUp}", Ink.Quiet);
+        if (plan.Response.Length > 0)
+        {
+            page.Line("response: " + plan.Response + unit, Ink.Quiet);
+        }
+
+        page.Line($"test: {GroupTestRegistry.Find(plan.Test)?.Name ?? plan.Test}; follow-up: {plan.FollowUp}", Ink.Quiet);
         if (result is { Statistic: { } statistic, P: { } p })
         {
             string df = result switch
@@ -63,10 +73,6 @@ public static class DetailPainter
             null => ($"{page.Glyphs.Open} {result.Status.Sentence()}", Ink.Open),
         };
         page.Line(sentence, ink);
-        if (test is not null)
-        {
-            page.Line("The test assumes: " + test.Assumes, Ink.Quiet);
-        }
     }
 
     private static void GroupTable(Page page, ExperimentDetail detail)
@@ -82,7 +88,12 @@ public static class DetailPainter
             GroupSummary s = group.Summary;
             double?[] numbers = isWide ? [s.Mean, s.StandardDeviation, s.Lower, s.Upper] : [s.Mean, s.Lower, s.Upper];
             string[] cells = [s.Count.ToString(CultureInfo.InvariantCulture), .. numbers.Select(v => v is { } x ? Number(x) : page.Glyphs.None)];
-            page.Row(label, cells, 5, number, group.Label, Ink.Text, group.IsControl ? " (control)" : "");
+            page.Row(label, cells, 5, number, group.Label, Ink.Text);
+        }
+
+        if (detail.Groups.FirstOrDefault(g => g.IsControl) is { } control)
+        {
+            page.Line("control: " + control.Label, Ink.Quiet);
         }
     }
 
@@ -152,12 +163,11 @@ public static class DetailPainter
             Line(text, Ink.Heading);
         }
 
-        public void Row(int label, string[] cells, int firstWidth, int otherWidth, string name, Ink ink, string suffix = "")
+        public void Row(int label, string[] cells, int firstWidth, int otherWidth, string name, Ink ink)
         {
-            string shown = CellText.Fit(name, Math.Max(1, label - suffix.Length), glyphs.Cut) + suffix;
             _rows.Add((canvas, y) =>
             {
-                canvas.Write(0, y, CellText.Fit(shown, label, glyphs.Cut), ink);
+                canvas.Write(0, y, CellText.Fit(name, label, glyphs.Cut), ink);
                 int end = label + firstWidth - 1;
                 foreach (string cell in cells)
                 {

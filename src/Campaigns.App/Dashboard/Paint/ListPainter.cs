@@ -26,7 +26,7 @@ public static class ListPainter
         {
             bool isSorted = column == model.SortColumn;
             string mark = model.IsFalling ? glyphs.Falling : glyphs.Rising;
-            string name = CellText.Fit(column.Name, isSorted ? w - 1 : w, glyphs.Cut);
+            string name = column.Name[..Math.Min(column.Name.Length, isSorted ? w - 1 : w)];
             Cell(canvas, column, x, w, 0, isSorted ? name + mark : name, Ink.Heading);
         }
 

@@ -52,7 +52,7 @@ public static class ObservationPlot
     {
         string dot = glyphs.HasDots
             ? perDot == 1 ? "a dot is a value" : string.Create(CultureInfo.InvariantCulture, $"a dot is up to {perDot} values")
-            : "a digit counts values, 9 stands for more too";
+            : "digits count values, 9 is 9 or more";
         return $"{dot}; {glyphs.Left}{glyphs.Mean}{glyphs.Right} mean and interval";
     }
 

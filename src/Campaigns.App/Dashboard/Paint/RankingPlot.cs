@@ -73,8 +73,8 @@ public sealed class RankingPlot
         double first = ranking.BoundaryAt(1)!.Value, last = ranking.BoundaryAt(ranking.FamilySize)!.Value;
         string family = ranking.FamilySize.ToString(CultureInfo.InvariantCulture);
         return first == last
-            ? $"Boundary: p up to {NumberText.Screen(first, 4)} at every rank of {family}."
-            : $"Boundary: from {NumberText.Screen(first, 4)} at rank 1 to {NumberText.Screen(last, 4)} at rank {family}.";
+            ? $"Boundary: p up to {NumberText.Screen(first, 3)} at every rank of {family}."
+            : $"Boundary: from {NumberText.Screen(first, 3)} at rank 1 to {NumberText.Screen(last, 3)} at rank {family}.";
     }
 
     /// <summary>What the signs mean.</summary>
@@ -85,10 +85,10 @@ public sealed class RankingPlot
         List<string> parts = [glyphs.Survivor + " survives", glyphs.Other + " does not"];
         if (ranking.FamilySize > ranking.Count)
         {
-            parts.Add(glyphs.Open + " no result, counts as p = 1");
+            parts.Add(glyphs.Open + " no result (p = 1)");
         }
 
-        parts.Add(glyphs.BelowScale + " below the scale");
+        parts.Add(glyphs.BelowScale + " off the scale");
         parts.Add(glyphs.Boundary + (ranking.HasBoundary ? " boundary" : " largest survivor"));
         return string.Join("  ", parts);
     }

@@ -15,6 +15,7 @@ public sealed class TerminalGuard : IDisposable
 
     // Bracketed paste, mouse reports, colours, alternate screen, cursor, cursor-key and keypad mode, in this order.
     private const string Restore = "\e[?2004l\e[?1003l\e[?1015l\e[?1006l\e[0m\e[?1049l\e[?25h\e[?1l\e>";
+    private const int StandardInput = 0;
     private const string RestoreKeys = "\e[?1l\e>";
     private static readonly (PosixSignal Signal, int Number)[] Signals =
         [(PosixSignal.SIGHUP, 1), (PosixSignal.SIGINT, 2), (PosixSignal.SIGQUIT, 3), (PosixSignal.SIGTERM, 15)];
@@ -89,14 +90,19 @@ public sealed class TerminalGuard : IDisposable
         }
     }
 
-    // A closed terminal need not send a signal (it may be blocked, or the shell may be gone first): then reads end at once, for ever.
+    // A closed terminal need not send a signal (the starter may have had it ignored): then reads end at once, for ever.
     private void StopWhenTerminalIsGone()
     {
-        if (!Terminal.Gui.Drivers.Driver.IsAttachedToTerminal(out _, out _))
+        if (!OperatingSystem.IsWindows() && IsTerminal(StandardInput) == 0)
         {
             Stop(129);
         }
     }
+
+    // What .NET offers remembers its first answer.
+    [DllImport("libc", EntryPoint = "isatty")]
+    [DefaultDllImportSearchPaths(DllImportSearchPath.SafeDirectories)]
+    private static extern int IsTerminal(int fileDescriptor);
 
     private static void OnFault(object sender, UnhandledExceptionEventArgs e) => Write(Restore);
 
