@@ -1,0 +1,35 @@
+using Campaigns.App.Output;
+using Campaigns.Domain;
+using Campaigns.Statistics.Corrections;
+
+namespace Campaigns.App.Commands;
+
+/// <summary>Rules of a campaign's description that several commands check.</summary>
+internal static class CampaignRules
+{
+    /// <summary>The correction for an error rate where none is named.</summary>
+    public static string UsualCorrection(ErrorRate rate) => rate == ErrorRate.Familywise ? "holm" : "bh";
+
+    /// <exception cref="UsageException">The code is no short name.</exception>
+    public static void CheckCode(string code)
+    {
+        bool good = code.Length is > 0 and <= 60 && char.IsAsciiLetterOrDigit(code[0])
+            && code.All(c => char.IsAsciiLetterOrDigit(c) || c is '-' or '_' or '.');
+        if (!good)
+        {
+            throw new UsageException("A campaign's code has 1 to 60 letters, digits, hyphens, underscores or points, and begins with a letter or a digit.");
+        }
+    }
+
+    /// <summary>Warns where the correction does not hold the error rate that the campaign is judged by.</summary>
+    public static void WarnOfMismatch(Host host, Campaign campaign)
+    {
+        Correction correction = FamilyVerdict.CorrectionOf(campaign);
+        bool holds = correction.Controls == campaign.ErrorRate
+            || (correction.Controls == ErrorRate.Familywise && campaign.ErrorRate == ErrorRate.FalseDiscovery);
+        if (!holds)
+        {
+            host.Notice($"Note: {correction.Name} does not hold the {CampaignText.RateWords(campaign.ErrorRate)} that '{campaign.Code}' names as its goal. {correction.Guarantee}");
+        }
+    }
+}

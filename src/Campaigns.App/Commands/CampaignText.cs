@@ -1,0 +1,69 @@
+using Campaigns.App.Output;
+using Campaigns.Catalog.Plans;
+using Campaigns.Domain;
+using Campaigns.Statistics.Corrections;
+
+namespace Campaigns.App.Commands;
+
+/// <summary>A campaign in words.</summary>
+internal static class CampaignText
+{
+    public const string Caution =
+        "Survival is evidence, under stated assumptions, that group means differ. It is no release, safety or compliance decision: those belong to the laboratory's quality system, its regulator, and a qualified statistician's review.";
+
+    /// <summary>For example "false discovery rate".</summary>
+    public static string RateWords(ErrorRate rate) => rate switch
+    {
+        ErrorRate.Familywise => "familywise error rate",
+        ErrorRate.FalseDiscovery => "false discovery rate",
+        _ => "error rate of each test alone",
+    };
+
+    /// <summary>For example "false discovery rate at 0.05 by Benjamini-Hochberg".</summary>
+    public static string Goal(Campaign campaign) =>
+        $"{RateWords(campaign.ErrorRate)} at {campaign.Level} by {FamilyVerdict.CorrectionOf(campaign).Name}";
+
+    /// <summary>The lines under every table of results: what was assumed, which procedure, what it promises.</summary>
+    public static IReadOnlyList<string> Footnotes(CampaignStanding standing)
+    {
+        Campaign campaign = standing.Campaign;
+        Correction correction = FamilyVerdict.CorrectionOf(campaign);
+        var lines = new List<string>
+        {
+            FormattableString.Invariant($"{correction.Name} at {campaign.Level} over a family of {standing.FamilySize} ({standing.TestedCount} with a result; the others count as p = 1). {correction.Guarantee}"),
+            "The F test assumes independent observations, normal errors and equal spread in all groups.",
+        };
+        if (campaign.IsExploratory)
+        {
+            lines.Add("Exploratory: the experiments were taken from the data, not from a plan made before it.");
+        }
+
+        if (standing.Experiments.Count(e => e.Amendments.Count > 0) is > 0 and int amended)
+        {
+            lines.Add(FormattableString.Invariant($"Amended: {amended} experiment(s) received values after they had been tested; 'campaigns show {campaign.Code} EXPERIMENT' gives the reason."));
+        }
+
+        lines.Add(ReviewLine(standing));
+        return lines;
+    }
+
+    /// <summary>Whether the latest review is up to date.</summary>
+    public static string ReviewLine(CampaignStanding standing) => standing.LastReview is not { } review
+        ? $"No review was taken yet; 'campaigns review {standing.Campaign.Code}' takes one."
+        : standing.ResultsSinceReview > 0
+            ? FormattableString.Invariant($"Review {review.Number} of {review.At:yyyy-MM-dd HH:mm} UTC is out of date: {standing.ResultsSinceReview} result(s) came after it; 'campaigns review {standing.Campaign.Code}' takes a new one.")
+            : FormattableString.Invariant($"Review {review.Number} of {review.At:yyyy-MM-dd HH:mm} UTC{(review.IsInterim ? " (interim: tested experiments only)" : "")} holds these results.");
+
+    /// <summary>A campaign as one row for scripts.</summary>
+    public static RowTable Row(Campaign campaign) => new(
+        [
+            new Column("campaign", "campaign"), new Column("title", "title"), new Column("error_rate", "error rate"),
+            new Column("level", "level", true), new Column("correction", "correction"), new Column("sealed", "sealed"), new Column("exploratory", "exploratory"),
+        ],
+        [
+            [
+                Cell.Text(campaign.Code), Cell.Text(campaign.Title), Cell.Text(campaign.ErrorRate.Word()), Cell.Number(campaign.Level.Value),
+                Cell.Text(campaign.Correction), Cell.Truth(campaign.IsSealed), Cell.Truth(campaign.IsExploratory),
+            ],
+        ]);
+}

@@ -1,0 +1,76 @@
+using System.CommandLine;
+using Campaigns.App.Output;
+using Campaigns.Catalog.Results;
+using Campaigns.Domain;
+using Campaigns.Statistics.Corrections;
+using Campaigns.Statistics.Probability;
+
+namespace Campaigns.App.Commands;
+
+/// <summary>corrections: every correction side by side.</summary>
+internal sealed class CorrectionsVerb : Verb
+{
+    private readonly Argument<string> _code = SharedOptions.Code();
+    private readonly Option<bool> _byExperiment = new("--by-experiment") { Description = "A row an experiment with its adjusted p under every correction, instead of a row a correction." };
+
+    public override Command Build() => new("corrections", Describe("Every correction side by side on the campaign's family; the sealed one alone decides.",
+        "corrections PRIMERS --by-experiment --format csv"))
+    {
+        _code, _byExperiment,
+    };
+
+    public override int Run(Session session)
+    {
+        using Catalog.Catalog catalog = session.OpenCatalog();
+        CampaignStanding standing = new StandingReader(catalog).Read(session.Get(_code));
+        ExperimentResult[] tested = [.. standing.Experiments.Where(e => e.P is not null)];
+        var family = RankedFamily.Of(tested.Select(e => e.P!.Value).ToArray(), standing.FamilySize);
+        PValue[][] adjusted = [.. CorrectionRegistry.All.Select(c => c.Adjust(family))];
+        session.Print(session.Get(_byExperiment) ? ByExperiment(standing, tested, adjusted) : ByCorrection(standing, adjusted));
+        return ExitCode.Done;
+    }
+
+    private static RowTable ByCorrection(CampaignStanding standing, PValue[][] adjusted)
+    {
+        SignificanceLevel level = standing.Campaign.Level;
+        return new RowTable(
+            [
+                new("correction", "key"), new("name", "name"), new("controls", "holds"), new("valid_under", "under"), new("survivors", "survivors", true),
+                new("level", "level", true), new("family_size", "family", true), new("sealed", "sealed"), new("guarantee", null), new("source", null),
+            ],
+            CorrectionRegistry.All.Select((c, i) => new[]
+            {
+                Cell.Text(c.Key), Cell.Text(c.Name), Cell.Text(CampaignText.RateWords(c.Controls)), Cell.Text(DependenceWords(c.ValidUnder)),
+                Cell.Whole(adjusted[i].Count(level.Rejects)), Cell.Number(level.Value), Cell.Whole(standing.FamilySize),
+                Cell.Truth(c.Key == standing.Campaign.Correction), Cell.Text(c.Guarantee), Cell.Text(c.Source),
+            }))
+        {
+            Above = [FormattableString.Invariant($"{standing.Campaign.Code}: {standing.TestedCount} results in a family of {standing.FamilySize}, every correction at {level}")],
+            Below = ["The sealed correction alone decides what survives; choosing another after seeing this table would undo what a correction is for.", CampaignText.ReviewLine(standing)],
+        };
+    }
+
+    private static RowTable ByExperiment(CampaignStanding standing, ExperimentResult[] tested, PValue[][] adjusted)
+    {
+        Column[] columns =
+        [
+            new("experiment", "experiment"), new("p", "p", true),
+            .. CorrectionRegistry.All.Select(c => new Column(c.Key, c.Key, true)),
+        ];
+        return new RowTable(columns, tested.Select((e, row) => (Cell[])[Cell.Text(e.Plan.Code), Cell.P(e.P), .. adjusted.Select(a => Cell.P(a[row]))]))
+        {
+            Above = [FormattableString.Invariant($"{standing.Campaign.Code}: adjusted p-values in a family of {standing.FamilySize}")],
+            Below = [$"The sealed correction is {standing.Campaign.Correction}; it alone decides what survives.", CampaignText.ReviewLine(standing)],
+        };
+    }
+
+    private static string DependenceWords(Dependence dependence) => dependence switch
+    {
+        Dependence.Any => "any dependence",
+        Dependence.Sidak => "independence, or Sidak's inequality",
+        Dependence.Simes => "independence, or Simes' inequality",
+        Dependence.PositiveRegression => "independence, or positive dependence",
+        Dependence.Independent => "independence",
+        _ => throw new ArgumentOutOfRangeException(nameof(dependence), dependence, "No words for this dependence."),
+    };
+}

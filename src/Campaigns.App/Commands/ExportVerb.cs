@@ -1,0 +1,40 @@
+using System.CommandLine;
+using Campaigns.App.Output;
+using Campaigns.Catalog.Exporting;
+using Campaigns.Catalog.Results;
+using Campaigns.Domain;
+
+namespace Campaigns.App.Commands;
+
+/// <summary>export: plan, measurements and results as tidy CSV.</summary>
+internal sealed class ExportVerb : Verb
+{
+    private readonly Argument<string> _code = SharedOptions.Code();
+    private readonly Option<string> _out = new("--out") { Description = "A folder that does not exist yet, or is empty.", HelpName = "FOLDER", Required = true };
+
+    public override Command Build() => new("export", Describe("Write campaign, plan, measurements and results as tidy files; the folder can be run again with 'campaigns run'.",
+        "export PRIMERS --out primers-export"))
+    {
+        _code, _out,
+    };
+
+    public override int Run(Session session)
+    {
+        string folder = session.Get(_out);
+        using Catalog.Catalog catalog = session.OpenCatalog();
+        CampaignStanding standing = new StandingReader(catalog).Read(session.Get(_code));
+        var export = new CampaignExport(catalog);
+        export.Write(standing, folder, (name, writer) => WriteResults(standing, name, writer));
+        session.Say($"Wrote {standing.Campaign.Code} to '{folder}': campaign.json, plan.csv, measurements/{CampaignExport.MeasurementsName}, {CampaignExport.ResultsName}.");
+        session.PrintForScripts(new RowTable([new Column("campaign", null), new Column("folder", null)], [[Cell.Text(standing.Campaign.Code), Cell.Text(folder)]]));
+        return ExitCode.Done;
+    }
+
+    private static void WriteResults(CampaignStanding standing, string name, TextWriter writer)
+    {
+        if (name == CampaignExport.ResultsName)
+        {
+            CsvRows.Write(new RowTable(ResultsVerb.Columns, standing.Experiments.Select(ResultsVerb.Row)), writer);
+        }
+    }
+}

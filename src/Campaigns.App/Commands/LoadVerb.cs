@@ -1,0 +1,79 @@
+using System.CommandLine;
+using Campaigns.App.Output;
+using Campaigns.Catalog.Loading;
+
+namespace Campaigns.App.Commands;
+
+/// <summary>load: take measurement files.</summary>
+internal sealed class LoadVerb : Verb
+{
+    private readonly Argument<string> _code = SharedOptions.Code();
+    private readonly Argument<string[]> _files = new("FILE") { Description = "Measurement files with the columns experiment, group, value, and where recorded specimen, block, order.", Arity = ArgumentArity.OneOrMore };
+    private readonly Option<string?> _amend = new("--amend") { Description = "Why values are added to experiments that were tested already; recorded and shown.", HelpName = "REASON" };
+
+    public override Command Build() => new("load", Describe("Load measurement files, each whole or not at all; the same file is never loaded twice.",
+        "load PRIMERS week-01.csv week-02.csv"))
+    {
+        _code, _files, _amend, SharedOptions.DecimalMark, SharedOptions.Separator, SharedOptions.Columns,
+    };
+
+    public override int Run(Session session)
+    {
+        string? reason = session.Get(_amend);
+        if (reason is not null && string.IsNullOrWhiteSpace(reason))
+        {
+            throw new UsageException("--amend needs the reason in words.");
+        }
+
+        var options = new LoadOptions(SharedOptions.Reading(session, MeasurementFile.ColumnNames), reason?.Trim());
+        using Catalog.Catalog catalog = session.OpenCatalog();
+        var rows = new List<Cell[]>();
+        try
+        {
+            foreach (string file in session.Get(_files))
+            {
+                rows.Add(Load(session, catalog, session.Get(_code), file, options));
+            }
+        }
+        finally
+        {
+            // Files before a refused one stay loaded, and a script must hear of them.
+            session.PrintForScripts(new RowTable(Columns, rows));
+        }
+
+        return ExitCode.Done;
+    }
+
+    public static IReadOnlyList<Column> Columns { get; } =
+    [
+        new("file", null), new("sha256", null), new("rows", null, true), new("missing", null, true),
+        new("experiments", null, true), new("new_experiments", null, true), new("amended", null),
+    ];
+
+    /// <summary>Loads one file and says what it brought.</summary>
+    public static Cell[] Load(Session session, Catalog.Catalog catalog, string code, string file, LoadOptions options)
+    {
+        using var line = new ProgressLine(session.Host);
+        LoadSummary load = new MeasurementLoader(catalog).Load(code, file, options, line.Report, session.Host.Cancel);
+        line.Dispose();
+        string missing = load.MissingCount > 0 ? FormattableString.Invariant($", {load.MissingCount} marked as missing and left out") : "";
+        string fresh = load.NewExperimentCount > 0 ? FormattableString.Invariant($" ({load.NewExperimentCount} of them new)") : "";
+        session.Say(FormattableString.Invariant($"Loaded {load.FileName}: {load.RowCount} rows for {load.ExperimentCount} experiments{fresh}{missing}."));
+        Notices.IgnoredColumns(session.Host, load.FileName, load.IgnoredColumns);
+        if (load.RespelledNames.Count > 0)
+        {
+            session.Host.Notice($"Note: names written with combining characters were stored in their composed form: {string.Join(", ", load.RespelledNames)}.");
+        }
+
+        if (load.AmendedExperiments.Count > 0)
+        {
+            session.Say($"Recorded as an amendment of tested experiments: {string.Join(", ", load.AmendedExperiments)}. Test them again with 'campaigns test {code}'.");
+        }
+
+        return
+        [
+            Cell.Text(load.FileName), Cell.Text(load.Sha256), Cell.Whole(load.RowCount), Cell.Whole(load.MissingCount),
+            Cell.Whole(load.ExperimentCount), Cell.Whole(load.NewExperimentCount), Cell.Text(string.Join('|', load.AmendedExperiments)),
+        ];
+    }
+}

@@ -1,0 +1,78 @@
+using Campaigns.App.Output;
+using Campaigns.Catalog;
+using Campaigns.Catalog.Loading;
+using Campaigns.Domain;
+using Microsoft.Data.Sqlite;
+
+namespace Campaigns.App.Commands;
+
+/// <summary>Turns what a command throws into a sentence and an exit code; nobody ever sees a stack trace.</summary>
+internal static class Outcome
+{
+    public static int Of(Host host, Func<int> work)
+    {
+        try
+        {
+            int code = work();
+            host.Out.Flush();
+            return code;
+        }
+        catch (UsageException error)
+        {
+            return Fail(host, ExitCode.WrongUsage, error.Message);
+        }
+        catch (RefusedException error)
+        {
+            return Fail(host, ExitCode.Refused, error.Message, error.Details);
+        }
+        catch (LoadingException error)
+        {
+            return Fail(host, ExitCode.Refused, error.Message);
+        }
+        catch (CatalogException error)
+        {
+            return Fail(host, ExitCode.NoCatalog, error.Message);
+        }
+        catch (SqliteException error)
+        {
+            return Fail(host, ExitCode.NoCatalog, $"The catalog cannot be used: {error.Message}");
+        }
+        catch (OperationCanceledException)
+        {
+            return Fail(host, ExitCode.Stopped, "Stopped; the step that was under way left nothing behind.");
+        }
+        catch (IOException error) when (IsClosedPipe(error))
+        {
+            return ExitCode.Done;
+        }
+#pragma warning disable CA1031 // The one catch-all of the program: a fault of ours ends in a sentence, too.
+        catch (Exception error)
+        {
+            return Fail(host, ExitCode.OurFault, $"A fault of the program: {error.Message} ({error.GetType().Name}). Nothing was half-done; please report it with the command that you typed.");
+        }
+#pragma warning restore CA1031
+    }
+
+    /// <summary>Whoever read our output has seen enough ('campaigns results X | head').</summary>
+    private static bool IsClosedPipe(IOException error) => (error.HResult & 0xffff) is 32 or 109;
+
+    private static int Fail(Host host, int code, string message, IReadOnlyList<string>? details = null)
+    {
+        try
+        {
+            host.Out.Flush();
+        }
+        catch (IOException)
+        {
+            // The reader is gone; the error still has its own stream.
+        }
+
+        host.Error.WriteLine(SafeText.Escape(message));
+        foreach (string detail in details ?? [])
+        {
+            host.Error.WriteLine($"  {SafeText.Escape(detail)}");
+        }
+
+        return code;
+    }
+}

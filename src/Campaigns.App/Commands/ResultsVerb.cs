@@ -1,0 +1,47 @@
+using System.CommandLine;
+using Campaigns.App.Output;
+using Campaigns.Catalog.Results;
+using Campaigns.Domain;
+
+namespace Campaigns.App.Commands;
+
+/// <summary>results: a row an experiment.</summary>
+internal sealed class ResultsVerb : Verb
+{
+    private readonly Argument<string> _code = SharedOptions.Code();
+
+    public override Command Build() => new("results", Describe("A row an experiment: test, p, adjusted p, whether it survives; those without a result stay visible.",
+        "results PRIMERS --format csv"))
+    {
+        _code,
+    };
+
+    public override int Run(Session session)
+    {
+        using Catalog.Catalog catalog = session.OpenCatalog();
+        CampaignStanding standing = new StandingReader(catalog).Read(session.Get(_code));
+        session.Print(new RowTable(Columns, standing.Experiments.Select(Row))
+        {
+            Above = [$"{standing.Campaign.Code}: {CampaignText.Goal(standing.Campaign)}"],
+            Below = CampaignText.Footnotes(standing),
+        });
+        return ExitCode.Done;
+    }
+
+    public static IReadOnlyList<Column> Columns { get; } =
+    [
+        new("experiment", "experiment"), new("test", "test"), new("groups", "groups", true), new("observations", "values", true),
+        new("statistic", "statistic", true), new("df1", "df1", true), new("df2", "df2", true), new("p", "p", true), new("adjusted_p", "adjusted p", true),
+        new("survives", "survives"), new("status", "status"),
+        new("ln_p", null, true), new("eta_squared", "eta squared", true), new("omega_squared", null, true), new("title", "title"), new("amendments", null),
+    ];
+
+    public static Cell[] Row(ExperimentResult result) =>
+    [
+        Cell.Text(result.Plan.Code), Cell.Text(result.Plan.Test), Cell.Whole(result.GroupCount), Cell.Whole(result.ObservationCount),
+        Cell.Number(result.Statistic), Cell.Number(result.Df1), Cell.Number(result.Df2), Cell.P(result.P), Cell.P(result.AdjustedP),
+        Cell.Truth(result.Survives), Cell.Text(result.Status.Word()),
+        Cell.Number(result.P?.Log), Cell.Number(result.EtaSquared), Cell.Number(result.OmegaSquared), Cell.Text(result.Plan.Title),
+        Cell.Text(string.Join("; ", result.Amendments)),
+    ];
+}

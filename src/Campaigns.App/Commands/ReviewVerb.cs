@@ -1,0 +1,50 @@
+using System.CommandLine;
+using Campaigns.App.Output;
+using Campaigns.Catalog.Results;
+using Campaigns.Domain;
+
+namespace Campaigns.App.Commands;
+
+/// <summary>review: apply the correction to the family and keep the outcome.</summary>
+internal sealed class ReviewVerb : Verb
+{
+    private readonly Argument<string> _code = SharedOptions.Code();
+    private readonly Option<string?> _family = SharedOptions.WithValues(
+        new Option<string?>("--family") { Description = "Count every planned experiment, or tested ones alone (the review is then marked as interim).", HelpName = "planned|tested" }, "planned", "tested");
+
+    public override Command Build() => new("review", Describe("Apply the sealed correction to the family and store the review.", "review PRIMERS"))
+    {
+        _code, _family,
+    };
+
+    public override int Run(Session session)
+    {
+        string code = session.Get(_code);
+        using Catalog.Catalog catalog = session.OpenCatalog();
+        ReviewHead review = Review(session, catalog, code, session.Get(_family) == "tested");
+        session.PrintForScripts(new RowTable(
+            [
+                new Column("campaign", null), new Column("review", null, true), new Column("taken_at", null), new Column("correction", null), new Column("level", null, true),
+                new Column("family_size", null, true), new Column("tested", null, true), new Column("survivors", null, true), new Column("interim", null),
+            ],
+            [
+                [
+                    Cell.Text(code), Cell.Whole(review.Number), Cell.Text(Words.Instant(review.At)), Cell.Text(review.Correction), Cell.Number(review.Level.Value),
+                    Cell.Whole(review.FamilySize), Cell.Whole(review.TestedCount), Cell.Whole(review.SurvivorCount), Cell.Truth(review.IsInterim),
+                ],
+            ]));
+        return ExitCode.Done;
+    }
+
+    /// <summary>Takes a review and says what it holds.</summary>
+    public static ReviewHead Review(Session session, Catalog.Catalog catalog, string code, bool testedOnly)
+    {
+        ReviewTaken taken = new ReviewStore(catalog).Take(code, testedOnly);
+        ReviewHead review = taken.Review;
+        string interim = review.IsInterim ? " Interim: only tested experiments were counted." : "";
+        session.Say(taken.IsNew
+            ? FormattableString.Invariant($"Review {review.Number} of {code}: {review.SurvivorCount} of {review.TestedCount} tested experiments survive, in a family of {review.FamilySize}.{interim}")
+            : FormattableString.Invariant($"Nothing changed since review {review.Number} of {code}, which stands: {review.SurvivorCount} survivors in a family of {review.FamilySize}.{interim}"));
+        return review;
+    }
+}

@@ -1,0 +1,207 @@
+using System.CommandLine;
+using Campaigns.App.Output;
+using Campaigns.Catalog.Loading;
+using Campaigns.Catalog.Plans;
+using Campaigns.Catalog.Results;
+using Campaigns.Domain;
+
+namespace Campaigns.App.Commands;
+
+/// <summary>run: a whole campaign folder; what was done before is not done again.</summary>
+internal sealed class RunVerb : Verb
+{
+    private const int SurvivorsShown = 20;
+
+    private readonly Argument<string> _folder = new("FOLDER") { Description = "A campaign folder: campaign.json, plan.csv (without it the experiments are taken from the data), measurements/*.csv." };
+
+    public override Command Build() => new("run", Describe("Do everything for a campaign folder: open, plan, seal, load, test, review, and print the survivors and the risk.",
+        "run campaigns/adhesion-screen"))
+    {
+        _folder, SharedOptions.DecimalMark, SharedOptions.Separator, SharedOptions.Columns,
+    };
+
+    public override int Run(Session session)
+    {
+        string folder = session.Get(_folder);
+        CampaignDescription description = ReadDescription(folder);
+        string planPath = Path.Combine(folder, "plan.csv");
+        bool hasPlan = File.Exists(planPath);
+        using Catalog.Catalog catalog = session.OpenOrCreateCatalog();
+        StoredCampaign campaign = catalog.Change(() => Register(session, catalog, description, hasPlan ? planPath : null));
+        LoadFiles(session, catalog, campaign, Path.Combine(folder, "measurements"));
+        string code = description.Code;
+        bool reviewed = catalog.Change(() =>
+        {
+            SealExploratory(session, catalog, code);
+            TestVerb.Test(session, catalog, code, includeIncomplete: false);
+            return ReviewWhereTested(session, catalog, code);
+        });
+        if (reviewed)
+        {
+            PrintSurvivors(session, catalog, code);
+        }
+
+        return ExitCode.Done;
+    }
+
+    private static CampaignDescription ReadDescription(string folder)
+    {
+        if (!Directory.Exists(folder))
+        {
+            throw new RefusedException($"There is no folder '{folder}'.");
+        }
+
+        CampaignFileResult file = CampaignFile.Read(Path.Combine(folder, "campaign.json"), Session.KnownKeys);
+        return file.Campaign ?? throw new RefusedException(
+            $"The file '{Path.Combine(folder, "campaign.json")}' was refused; nothing was changed.", [.. file.Problems.Sentences()]);
+    }
+
+    /// <summary>Opens, plans and seals what is not yet; where it is, the folder must say the same.</summary>
+    private static StoredCampaign Register(Session session, Catalog.Catalog catalog, CampaignDescription description, string? planPath)
+    {
+        var campaigns = new CampaignStore(catalog);
+        StoredCampaign? known = campaigns.Find(description.Code);
+        StoredCampaign stored = known ?? campaigns.Open(Describe(description, catalog.Clock.GetUtcNow()));
+        if (known is null)
+        {
+            session.Say($"Opened campaign {description.Code}: {CampaignText.Goal(stored.Campaign)}.");
+            CampaignRules.WarnOfMismatch(session.Host, stored.Campaign);
+        }
+        else
+        {
+            RefuseOtherDescription(stored.Campaign, description);
+        }
+
+        if (planPath is null)
+        {
+            return stored;
+        }
+
+        IReadOnlyList<PlannedExperiment> plan = PlanVerb.Read(session, stored.Campaign, planPath);
+        if (stored.Campaign.IsSealed)
+        {
+            RefuseOtherPlan(catalog, stored, plan, planPath);
+            session.Say($"The plan of {description.Code} is sealed already, and plan.csv says the same.");
+            return stored;
+        }
+
+        PlanChange change = new PlanStore(catalog).Register(description.Code, plan);
+        session.Say(FormattableString.Invariant($"Registered the plan: {change.Added} experiment(s) added, {change.Changed} changed, {change.Unchanged} as before."));
+        stored = campaigns.Seal(description.Code);
+        session.Say($"Sealed it; plan digest (SHA-256): {stored.Campaign.PlanDigest}.");
+        return stored;
+    }
+
+    private static Campaign Describe(CampaignDescription description, DateTimeOffset now) => new()
+    {
+        Code = description.Code,
+        Title = description.Title,
+        Purpose = description.Purpose,
+        ErrorRate = description.ErrorRate,
+        Level = description.Level,
+        Correction = description.Correction,
+        DefaultTest = description.Test,
+        DefaultFollowUp = description.FollowUp,
+        OpenedAt = now,
+    };
+
+    private static void RefuseOtherDescription(Campaign known, CampaignDescription description)
+    {
+        (string Key, string Stored, string Asked)[] facts =
+        [
+            ("errorRate", known.ErrorRate.Word(), description.ErrorRate.Word()),
+            ("level", known.Level.ToString(), description.Level.ToString()),
+            ("correction", known.Correction, description.Correction),
+            ("test", known.DefaultTest, description.Test),
+            ("followUp", known.DefaultFollowUp, description.FollowUp),
+        ];
+        string[] differences = [.. facts.Where(f => f.Stored != f.Asked).Select(f => $"{f.Key}: the catalog holds {f.Stored}, campaign.json says {f.Asked}")];
+        if (differences.Length > 0)
+        {
+            throw new RefusedException($"The campaign '{known.Code}' is in the catalog with another description; nothing was changed. Give campaign.json another code for a new campaign.", differences);
+        }
+    }
+
+    private static void RefuseOtherPlan(Catalog.Catalog catalog, StoredCampaign stored, IReadOnlyList<PlannedExperiment> plan, string planPath)
+    {
+        IReadOnlyList<string> differences = PlanComparison.Differences(new PlanStore(catalog).Read(stored.Id), plan);
+        if (differences.Count > 0)
+        {
+            throw new RefusedException($"'{planPath}' differs from the sealed plan of '{stored.Campaign.Code}'; nothing was changed. A sealed plan stays as it is: open a new campaign for other experiments.", differences);
+        }
+    }
+
+    private static void LoadFiles(Session session, Catalog.Catalog catalog, StoredCampaign campaign, string folder)
+    {
+        if (!Directory.Exists(folder))
+        {
+            session.Say("There is no folder 'measurements', so nothing was loaded.");
+            return;
+        }
+
+        var options = new LoadOptions(SharedOptions.Reading(session, MeasurementFile.ColumnNames));
+        var loader = new MeasurementLoader(catalog);
+        int known = 0;
+        foreach (string file in Directory.EnumerateFiles(folder, "*.csv").Order(NaturalOrder.Instance))
+        {
+            if (loader.WasLoaded(campaign.Id, FileDigest.Sha256(file)))
+            {
+                known++;
+            }
+            else
+            {
+                LoadVerb.Load(session, catalog, campaign.Campaign.Code, file, options);
+            }
+        }
+
+        if (known > 0)
+        {
+            session.Say(FormattableString.Invariant($"{known} file(s) had been loaded before and were not loaded again."));
+        }
+    }
+
+    /// <summary>Without a plan there is something to seal only when the data have come.</summary>
+    private static void SealExploratory(Session session, Catalog.Catalog catalog, string code)
+    {
+        Campaign campaign = new CampaignStore(catalog).Get(code).Campaign;
+        if (!campaign.IsSealed && campaign.IsExploratory)
+        {
+            new CampaignStore(catalog).Seal(code);
+            session.Say($"Sealed level and correction of {code}. It is exploratory: there was no plan, the experiments were taken from the data.");
+        }
+        else if (!campaign.IsSealed)
+        {
+            throw new RefusedException($"The campaign '{code}' has neither a plan nor data: put a plan.csv or measurements/*.csv into its folder.");
+        }
+    }
+
+    private static bool ReviewWhereTested(Session session, Catalog.Catalog catalog, string code)
+    {
+        StoredCampaign stored = new CampaignStore(catalog).Get(code);
+        if (new OverviewReader(catalog).Read(stored).TestedCount == 0 && new ReviewStore(catalog).All(stored.Id).Count == 0)
+        {
+            session.Say($"Nothing of {code} was tested yet, so there is nothing to review.");
+            return false;
+        }
+
+        ReviewVerb.Review(session, catalog, code, testedOnly: false);
+        return true;
+    }
+
+    private static void PrintSurvivors(Session session, Catalog.Catalog catalog, string code)
+    {
+        CampaignStanding standing = new StandingReader(catalog).Read(code);
+        bool forPeople = session.Format == RowFormat.Table;
+        if (forPeople)
+        {
+            session.Host.Out.WriteLine();
+        }
+
+        session.Print(SurvivorsVerb.Table(catalog, standing, forPeople ? SurvivorsShown : int.MaxValue));
+        if (forPeople)
+        {
+            session.Host.Out.WriteLine();
+            TextTable.Sentences(session.Host, RiskTable.Sentences(new OverviewReader(catalog).Read(new CampaignStore(catalog).Get(code))));
+        }
+    }
+}

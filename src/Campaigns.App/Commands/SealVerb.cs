@@ -1,0 +1,29 @@
+using System.CommandLine;
+using Campaigns.App.Output;
+using Campaigns.Catalog.Plans;
+using Campaigns.Domain;
+
+namespace Campaigns.App.Commands;
+
+/// <summary>seal: fix the plan.</summary>
+internal sealed class SealVerb : Verb
+{
+    private readonly Argument<string> _code = SharedOptions.Code();
+
+    public override Command Build() => new("seal", Describe("Fix the plan: level, correction and family stay as they are from here on.", "seal PRIMERS"))
+    {
+        _code,
+    };
+
+    public override int Run(Session session)
+    {
+        string code = session.Get(_code);
+        using Catalog.Catalog catalog = session.OpenCatalog();
+        Campaign campaign = new CampaignStore(catalog).Seal(code).Campaign;
+        session.Say($"Sealed {code}: {CampaignText.Goal(campaign)}. Plan digest (SHA-256): {campaign.PlanDigest}.");
+        session.PrintForScripts(new RowTable(
+            [new Column("campaign", null), new Column("sealed_at", null), new Column("plan_digest", null)],
+            [[Cell.Text(code), Cell.Text(Words.Instant(campaign.SealedAt!.Value)), Cell.Text(campaign.PlanDigest)]]));
+        return ExitCode.Done;
+    }
+}

@@ -1,0 +1,59 @@
+using System.CommandLine;
+using Campaigns.App.Output;
+using Campaigns.Catalog.Loading;
+using Campaigns.Domain;
+using Campaigns.Statistics.Corrections;
+using Campaigns.Statistics.GroupTests;
+
+namespace Campaigns.App.Commands;
+
+/// <summary>One command at work: what was typed, and the world around it.</summary>
+internal sealed class Session(Host host, ParseResult typed)
+{
+    public Host Host { get; } = host;
+
+    public ParseResult Typed { get; } = typed;
+
+    /// <summary>How rows are printed.</summary>
+    public RowFormat Format => Typed.GetValue(SharedOptions.Format);
+
+    /// <summary>The catalog's file: --catalog, else CAMPAIGNS_CATALOG, else campaigns.db in the current folder.</summary>
+    public string CatalogPath =>
+        Typed.GetValue(SharedOptions.Catalog)
+        ?? (Host.Variable("CAMPAIGNS_CATALOG") is { Length: > 0 } named ? named : "campaigns.db");
+
+    /// <summary>What a plan or a campaign may name.</summary>
+    public static KnownKeys KnownKeys => new(
+        [.. GroupTestRegistry.All.Select(t => t.Key)],
+        FollowUpKeys.All,
+        [.. CorrectionRegistry.All.Select(c => c.Key)]);
+
+    public Catalog.Catalog OpenCatalog() => Catalog.Catalog.Open(CatalogPath, Host.Clock);
+
+    public Catalog.Catalog OpenOrCreateCatalog() => Catalog.Catalog.OpenOrCreate(CatalogPath, Host.Clock);
+
+    public T Get<T>(Option<T> option) => Typed.GetValue(option)!;
+
+    public T Get<T>(Argument<T> argument) => Typed.GetValue(argument)!;
+
+    /// <summary>Says what was done: to people on standard output, and beside rows for a script on standard error.</summary>
+    public void Say(string sentence)
+    {
+        TextWriter writer = Format == RowFormat.Table ? Host.Out : Host.Error;
+        foreach (string line in TextTable.Wrap(SafeText.Escape(sentence), Host.Width))
+        {
+            writer.WriteLine(line);
+        }
+    }
+
+    public void Print(RowTable table) => RowPrinter.Print(Host, Format, table, Typed.GetValue(SharedOptions.Top));
+
+    /// <summary>Prints rows only where a script asked for them; people have read the sentence.</summary>
+    public void PrintForScripts(RowTable table)
+    {
+        if (Format != RowFormat.Table)
+        {
+            Print(table);
+        }
+    }
+}

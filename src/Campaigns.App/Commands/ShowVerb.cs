@@ -1,0 +1,86 @@
+using System.CommandLine;
+using Campaigns.App.Output;
+using Campaigns.Catalog.Plans;
+using Campaigns.Catalog.Results;
+using Campaigns.Domain;
+
+namespace Campaigns.App.Commands;
+
+/// <summary>show: one campaign, or one experiment, in full.</summary>
+internal sealed class ShowVerb : Verb
+{
+    private readonly Argument<string> _code = SharedOptions.Code();
+    private readonly Argument<string?> _experiment = new("EXPERIMENT") { Description = "An experiment of it.", Arity = ArgumentArity.ZeroOrOne };
+
+    public override Command Build() => new("show", Describe("One campaign in full, or one of its experiments: group table, table of variation, result.", "show PRIMERS E07"))
+    {
+        _code, _experiment,
+    };
+
+    public override int Run(Session session)
+    {
+        using Catalog.Catalog catalog = session.OpenCatalog();
+        CampaignStanding standing = new StandingReader(catalog).Read(session.Get(_code));
+        if (session.Typed.GetValue(_experiment) is { } experiment)
+        {
+            ExperimentShow.Write(session, standing, new DetailReader(catalog).Read(standing, experiment));
+        }
+        else
+        {
+            ShowCampaign(session, catalog, standing);
+        }
+
+        return ExitCode.Done;
+    }
+
+    private static void ShowCampaign(Session session, Catalog.Catalog catalog, CampaignStanding standing)
+    {
+        Campaign campaign = standing.Campaign;
+        long id = new CampaignStore(catalog).Get(campaign.Code).Id;
+        var loads = catalog.Context.Loads.Where(l => l.CampaignId == id).OrderBy(l => l.Id).ToList();
+        var facts = new List<(string Name, string Label, Cell Value)>
+        {
+            ("campaign", "campaign", Cell.Text(campaign.Code)),
+            ("title", "title", Cell.Text(campaign.Title)),
+            ("purpose", "purpose", Cell.Text(campaign.Purpose)),
+            ("error_rate", "holds", Cell.Text(campaign.ErrorRate.Word())),
+            ("level", "level", Cell.Number(campaign.Level.Value)),
+            ("correction", "correction", Cell.Text(campaign.Correction)),
+            ("default_test", "usual test", Cell.Text(campaign.DefaultTest)),
+            ("default_follow_up", "usual follow-up", Cell.Text(campaign.DefaultFollowUp)),
+            ("exploratory", "exploratory", Cell.Truth(campaign.IsExploratory)),
+            ("opened_at", "opened", Cell.Text(Words.Instant(campaign.OpenedAt))),
+            ("sealed_at", "sealed", Cell.Text(campaign.SealedAt is { } at ? Words.Instant(at) : null)),
+            ("plan_digest", "plan digest", Cell.Text(campaign.PlanDigest)),
+            ("experiments", "experiments", Cell.Whole(standing.FamilySize)),
+            ("tested", "tested", Cell.Whole(standing.TestedCount)),
+            ("survivors", "survivors", Cell.Whole(standing.SurvivorCount)),
+            ("files_loaded", "files loaded", Cell.Whole(loads.Count)),
+            ("rows_loaded", "rows loaded", Cell.Whole(loads.Sum(l => l.RowCount))),
+            ("amendments", "amendments", Cell.Whole(loads.Count(l => l.AmendmentReason is not null))),
+            ("reviews", "reviews", Cell.Whole(standing.LastReview?.Number ?? 0)),
+        };
+        if (session.Format != RowFormat.Table)
+        {
+            session.Print(new RowTable([.. facts.Select(f => new Column(f.Name, null))], [[.. facts.Select(f => f.Value)]]));
+            return;
+        }
+
+        session.Print(new RowTable([new("fact", "fact"), new("value", "value")], facts.Where(f => f.Value.Kind != CellKind.Empty).Select(f => (Cell[])[Cell.Text(f.Label), f.Value])));
+        session.Host.Out.WriteLine();
+        session.Print(new RowTable(
+            [new("file", "file"), new("rows", "rows", true), new("missing", "missing", true), new("loaded_at", "loaded"), new("sha256", "sha256"), new("amendment", "amendment")],
+            loads.Select(l => (Cell[])[Cell.Text(l.FileName), Cell.Whole(l.RowCount), Cell.Whole(l.MissingCount), Cell.Text(Words.Instant(DateTimeOffset.UnixEpoch.AddTicks(l.LoadedAt * TimeSpan.TicksPerMicrosecond))), Cell.Text(l.Sha256[..12]), Cell.Text(l.AmendmentReason)]))
+        {
+            WhenEmpty = "No file was loaded yet.",
+        });
+        session.Host.Out.WriteLine();
+        session.Print(new RowTable(
+            [new("review", "review", true), new("taken_at", "taken"), new("correction", "correction"), new("level", "level", true), new("family_size", "family", true), new("tested", "tested", true), new("survivors", "survivors", true), new("interim", "interim")],
+            new ReviewStore(catalog).All(id).Select(r => (Cell[])[Cell.Whole(r.Number), Cell.Text(Words.Instant(r.At)), Cell.Text(r.Correction), Cell.Number(r.Level.Value), Cell.Whole(r.FamilySize), Cell.Whole(r.TestedCount), Cell.Whole(r.SurvivorCount), Cell.Truth(r.IsInterim)]))
+        {
+            WhenEmpty = "No review was taken yet.",
+            Below = [.. CampaignText.Footnotes(standing), CampaignText.Caution],
+        });
+    }
+}

@@ -1,0 +1,65 @@
+using System.CommandLine;
+using Campaigns.Catalog.Plans;
+using Campaigns.Domain;
+using Campaigns.Statistics.Corrections;
+using Campaigns.Statistics.GroupTests;
+using Campaigns.Statistics.Probability;
+
+namespace Campaigns.App.Commands;
+
+/// <summary>start: open a campaign.</summary>
+internal sealed class StartVerb : Verb
+{
+    private readonly Argument<string> _code = new("CODE") { Description = "A short name: letters, digits, hyphen, underscore, point." };
+    private readonly Option<string> _title = new("--title") { Description = "One line for people.", HelpName = "TEXT", DefaultValueFactory = _ => "" };
+    private readonly Option<string> _purpose = new("--purpose") { Description = "Why the campaign is run.", HelpName = "TEXT", DefaultValueFactory = _ => "" };
+    private readonly Option<string?> _errorRate = SharedOptions.WithValues(
+        new Option<string?>("--error-rate") { Description = "What is held at the level: the risk of any false survivor, or the share of false ones.", HelpName = "familywise|false-discovery" },
+        [.. ErrorRateWords.All]);
+    private readonly Option<double> _level = new("--level") { Description = "The level, between 0 and 1.", HelpName = "NUMBER", DefaultValueFactory = _ => 0.05 };
+    private readonly Option<string?> _correction = SharedOptions.WithValues(
+        new Option<string?>("--correction") { Description = "The correction (else holm for familywise, bh for false discovery).", HelpName = "KEY" },
+        [.. CorrectionRegistry.All.Select(c => c.Key)]);
+    private readonly Option<string?> _test = SharedOptions.WithValues(
+        new Option<string?>("--test") { Description = "The test of experiments whose plan names none.", HelpName = "KEY" },
+        [.. GroupTestRegistry.All.Select(t => t.Key)]);
+    private readonly Option<string?> _followUp = SharedOptions.WithValues(
+        new Option<string?>("--follow-up") { Description = "The comparisons of experiments whose plan names none.", HelpName = "KEY" },
+        [.. FollowUpKeys.All]);
+
+    public override Command Build() => new("start", Describe("Open a campaign, with its error rate, level and correction.",
+        "start PRIMERS --title \"Primer screen\" --error-rate false-discovery --level 0.05 --correction bh"))
+    {
+        _code, _title, _purpose, _errorRate, _level, _correction, _test, _followUp,
+    };
+
+    public override int Run(Session session)
+    {
+        double level = session.Get(_level);
+        if (!(level > 0 && level < 1))
+        {
+            throw new UsageException("--level takes a number between 0 and 1, both excluded, for example 0.05.");
+        }
+
+        string code = session.Get(_code);
+        CampaignRules.CheckCode(code);
+        ErrorRate rate = ErrorRateWords.Parse(session.Get(_errorRate) ?? "false-discovery")!.Value;
+        using Catalog.Catalog catalog = session.OpenOrCreateCatalog();
+        Campaign campaign = new CampaignStore(catalog).Open(new Campaign
+        {
+            Code = code,
+            Title = session.Get(_title),
+            Purpose = session.Get(_purpose),
+            ErrorRate = rate,
+            Level = new SignificanceLevel(level),
+            Correction = session.Get(_correction) ?? CampaignRules.UsualCorrection(rate),
+            DefaultTest = session.Get(_test) ?? "f",
+            DefaultFollowUp = session.Get(_followUp) ?? "none",
+            OpenedAt = session.Host.Clock.GetUtcNow(),
+        }).Campaign;
+        session.Say($"Opened campaign {campaign.Code}: {CampaignText.Goal(campaign)}. Next: 'campaigns plan {campaign.Code} FILE'.");
+        CampaignRules.WarnOfMismatch(session.Host, campaign);
+        session.PrintForScripts(CampaignText.Row(campaign));
+        return ExitCode.Done;
+    }
+}

@@ -1,0 +1,35 @@
+using Campaigns.Catalog.Exporting;
+
+namespace Campaigns.App.Output;
+
+/// <summary>Writes rows as comma-separated values.</summary>
+internal static class CsvRows
+{
+    public static void Write(RowTable table, TextWriter writer)
+    {
+        var line = new CsvLine(writer);
+        line.Write([.. table.Columns.Select(c => c.Name)]);
+        string[] fields = new string[table.Columns.Count];
+        foreach (Cell[] row in table.Rows)
+        {
+            for (int i = 0; i < row.Length; i++)
+            {
+                fields[i] = Text(row[i]);
+            }
+
+            line.Write(fields);
+        }
+    }
+
+    /// <summary>A cell as it stands in a file.</summary>
+    public static string Text(in Cell cell) => cell.Kind switch
+    {
+        CellKind.Empty => "",
+        CellKind.Text => cell.AsText,
+        CellKind.Whole => FormattableString.Invariant($"{cell.AsWhole}"),
+        CellKind.Number => NumberText.RoundTrip(cell.AsNumber),
+        CellKind.P => NumberText.RoundTrip(cell.AsP),
+        CellKind.Truth => cell.AsTruth ? "true" : "false",
+        _ => throw new InvalidOperationException("A cell is of one of the kinds above."),
+    };
+}

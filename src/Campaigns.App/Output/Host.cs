@@ -1,0 +1,81 @@
+using Spectre.Console;
+
+namespace Campaigns.App.Output;
+
+/// <summary>The world around one run of the program: streams, clock, environment, and the wish to stop.</summary>
+internal sealed class Host
+{
+    /// <summary>Where rows and sentences go.</summary>
+    public required TextWriter Out { get; init; }
+
+    /// <summary>Where progress, notices and errors go.</summary>
+    public required TextWriter Error { get; init; }
+
+    /// <summary>Where instants come from.</summary>
+    public required TimeProvider Clock { get; init; }
+
+    /// <summary>Reads an environment variable.</summary>
+    public required Func<string, string?> Variable { get; init; }
+
+    /// <summary>Whether people watch standard output.</summary>
+    public bool OutIsTerminal { get; init; }
+
+    /// <summary>Whether people watch standard error.</summary>
+    public bool ErrorIsTerminal { get; init; }
+
+    /// <summary>Columns of text that fit a line.</summary>
+    public int Width { get; init; } = 100;
+
+    /// <summary>Asks long work to stop.</summary>
+    public CancellationToken Cancel { get; init; }
+
+    /// <summary>Writes a notice: something that people should know and that changes no result.</summary>
+    public void Notice(string sentence) => Error.WriteLine(SafeText.Escape(sentence));
+
+    /// <summary>A console that writes to a stream and colours only where people watch and NO_COLOR is not set.</summary>
+    public IAnsiConsole NewConsole(TextWriter writer, bool isTerminal)
+    {
+        bool colour = isTerminal && string.IsNullOrEmpty(Variable("NO_COLOR")) && Variable("TERM") != "dumb";
+        IAnsiConsole console = AnsiConsole.Create(new AnsiConsoleSettings
+        {
+            Out = new AnsiConsoleOutput(writer),
+            Ansi = isTerminal && Variable("TERM") != "dumb" ? AnsiSupport.Yes : AnsiSupport.No,
+            ColorSystem = colour ? ColorSystemSupport.EightBit : ColorSystemSupport.NoColors,
+            Interactive = InteractionSupport.No,
+        });
+        console.Profile.Width = Width;
+        return console;
+    }
+
+    /// <summary>The host of a real process.</summary>
+    public static Host OfProcess(CancellationToken cancel)
+    {
+        bool outIsTerminal = !Console.IsOutputRedirected;
+        return new Host
+        {
+            Out = new StreamWriter(Console.OpenStandardOutput(), new System.Text.UTF8Encoding(false), 1 << 15) { AutoFlush = false, NewLine = "\n" },
+            Error = new StreamWriter(Console.OpenStandardError(), new System.Text.UTF8Encoding(false)) { AutoFlush = true, NewLine = "\n" },
+            Clock = TimeProvider.System,
+            Variable = Environment.GetEnvironmentVariable,
+            OutIsTerminal = outIsTerminal,
+            ErrorIsTerminal = !Console.IsErrorRedirected,
+            Width = outIsTerminal ? TerminalWidth() : RedirectedWidth(Environment.GetEnvironmentVariable("COLUMNS")),
+            Cancel = cancel,
+        };
+    }
+
+    private static int TerminalWidth()
+    {
+        try
+        {
+            return Math.Max(40, Console.WindowWidth);
+        }
+        catch (IOException)
+        {
+            return 80;
+        }
+    }
+
+    private static int RedirectedWidth(string? columns) =>
+        int.TryParse(columns, System.Globalization.NumberStyles.None, System.Globalization.CultureInfo.InvariantCulture, out int width) ? Math.Max(40, width) : 120;
+}

@@ -1,0 +1,22 @@
+namespace Campaigns.App.Output;
+
+/// <summary>A column of a table.</summary>
+/// <param name="Name">Name in files; frozen from release to release.</param>
+/// <param name="Heading">Heading for people; null where the column is for scripts alone.</param>
+/// <param name="IsNumeric">Whether it is set to the right.</param>
+internal sealed record Column(string Name, string? Heading, bool IsNumeric = false);
+
+/// <summary>Rows to print, in whichever format was asked for.</summary>
+/// <param name="Columns">The columns, in order.</param>
+/// <param name="Rows">The rows; as many cells as columns.</param>
+internal sealed record RowTable(IReadOnlyList<Column> Columns, IEnumerable<Cell[]> Rows)
+{
+    /// <summary>Sentences above the table, for people alone.</summary>
+    public IReadOnlyList<string> Above { get; init; } = [];
+
+    /// <summary>Sentences below the table, for people alone: assumptions, names of procedures, cautions.</summary>
+    public IReadOnlyList<string> Below { get; init; } = [];
+
+    /// <summary>What people read where there are no rows.</summary>
+    public string WhenEmpty { get; init; } = "There is nothing to show.";
+}

@@ -1,0 +1,134 @@
+using System.Text;
+using System.Text.Json;
+using Campaigns.Catalog.Measurements;
+using Campaigns.Catalog.Plans;
+using Campaigns.Catalog.Providers;
+using Campaigns.Domain;
+
+namespace Campaigns.Catalog.Exporting;
+
+/// <summary>Writes a campaign as a folder of tidy files that any program reads, in the layout that this program runs.</summary>
+/// <param name="catalog">The open catalog.</param>
+public sealed class CampaignExport(Catalog catalog)
+{
+    /// <summary>Name of the file of measurements.</summary>
+    public const string MeasurementsName = "measurements.csv";
+
+    /// <summary>Name of the file of results.</summary>
+    public const string ResultsName = "results.csv";
+
+    /// <summary>Writes the folder whole: it is made beside its place and moved there when it is finished.</summary>
+    /// <param name="standing">The campaign as it stands.</param>
+    /// <param name="folder">A folder that does not exist, or is empty.</param>
+    /// <param name="writeResults">Writes the file of results.</param>
+    /// <exception cref="RefusedException">The folder holds something, or cannot be written.</exception>
+    public void Write(CampaignStanding standing, string folder, Action<string, TextWriter> writeResults)
+    {
+        ArgumentNullException.ThrowIfNull(standing);
+        ArgumentNullException.ThrowIfNull(writeResults);
+        folder = System.IO.Path.TrimEndingDirectorySeparator(System.IO.Path.GetFullPath(folder));
+        if (File.Exists(folder) || (Directory.Exists(folder) && Directory.EnumerateFileSystemEntries(folder).Any()))
+        {
+            throw new RefusedException($"'{folder}' exists and is not an empty folder; nothing was written. Name another.");
+        }
+
+        string draft = $"{folder}.new-{Environment.ProcessId}";
+        try
+        {
+            Directory.CreateDirectory(System.IO.Path.Combine(draft, "measurements"));
+            WriteFile(draft, "campaign.json", writer => WriteCampaign(standing.Campaign, writer));
+            WriteFile(draft, "plan.csv", writer => WritePlan(standing, writer));
+            WriteFile(System.IO.Path.Combine(draft, "measurements"), MeasurementsName, writer => WriteMeasurements(standing, writer));
+            WriteFile(draft, ResultsName, writer => writeResults(ResultsName, writer));
+            if (Directory.Exists(folder))
+            {
+                Directory.Delete(folder);
+            }
+
+            Directory.Move(draft, folder);
+        }
+        catch (Exception error) when (error is IOException or UnauthorizedAccessException)
+        {
+            throw new RefusedException($"The folder '{folder}' cannot be written: {error.Message}");
+        }
+        finally
+        {
+            if (Directory.Exists(draft))
+            {
+                Directory.Delete(draft, recursive: true);
+            }
+        }
+    }
+
+    private static void WriteFile(string folder, string name, Action<TextWriter> write)
+    {
+        using var writer = new StreamWriter(System.IO.Path.Combine(folder, name), append: false, new UTF8Encoding(false), 1 << 16) { NewLine = "\n" };
+        write(writer);
+    }
+
+    private static void WriteCampaign(Campaign campaign, TextWriter writer)
+    {
+        var buffer = new System.Buffers.ArrayBufferWriter<byte>();
+        using (var json = new Utf8JsonWriter(buffer, new JsonWriterOptions { Indented = true, NewLine = "\n" }))
+        {
+            json.WriteStartObject();
+            json.WriteString("code", campaign.Code);
+            json.WriteString("title", campaign.Title);
+            json.WriteString("purpose", campaign.Purpose);
+            json.WriteString("errorRate", campaign.ErrorRate.Word());
+            json.WriteNumber("level", campaign.Level.Value);
+            json.WriteString("correction", campaign.Correction);
+            json.WriteString("test", campaign.DefaultTest);
+            json.WriteString("followUp", campaign.DefaultFollowUp);
+            json.WriteEndObject();
+        }
+
+        writer.WriteLine(Encoding.UTF8.GetString(buffer.WrittenSpan));
+    }
+
+    private static void WritePlan(CampaignStanding standing, TextWriter writer)
+    {
+        var csv = new CsvLine(writer);
+        csv.Write("experiment", "title", "response", "unit", "groups", "control", "test", "follow_up", "replicates", "smallest_effect", "assumed_sd", "weight", "family");
+        foreach (PlannedExperiment e in standing.Experiments.Select(e => e.Plan))
+        {
+            csv.Write(
+                e.Code, e.Title, e.Response, e.Unit, string.Join('|', e.Groups), e.Control ?? "", e.Test, e.FollowUp,
+                CsvLine.Number(e.Replicates), CsvLine.Number(e.SmallestEffect), CsvLine.Number(e.AssumedStandardDeviation), CsvLine.Number(e.Weight), e.Family ?? "");
+        }
+    }
+
+    /// <summary>Every value as it was typed (up to trailing zeros), with where it came from; the rows of one experiment together, in the order in which they were loaded.</summary>
+    private void WriteMeasurements(CampaignStanding standing, TextWriter writer)
+    {
+        long campaignId = new CampaignStore(catalog).Get(standing.Campaign.Code).Id;
+        using var sets = new GroupSets(catalog, campaignId);
+        using SqliteStatement select = catalog.Prepare(
+            """
+            SELECT e.code, e.group_set_id, m.packed, l.file_name FROM experiments e
+            JOIN measurements m ON m.experiment_id = e.id JOIN loads l ON l.id = m.load_id
+            WHERE e.campaign_id = ?1 ORDER BY e.id, m.load_id
+            """);
+        select.Bind(1, campaignId);
+        var csv = new CsvLine(writer);
+        csv.Write("experiment", "group", "value", "specimen", "block", "order", "file", "line");
+        var values = new ObservationColumns();
+        while (select.Read())
+        {
+            string code = select.Text(0);
+            string[] labels = sets.Labels(select.NullableInteger(1));
+            string file = select.Text(3);
+            values.Clear();
+            PackedMeasurements.Read(select.Blob(2), values);
+            for (int i = 0; i < values.Count; i++)
+            {
+                csv.Write(
+                    code, labels[values.Groups[i]], values.Text(i),
+                    values.Specimens[i] < 0 ? "" : values.SpecimenNames.Text(values.Specimens[i]),
+                    values.Blocks[i] < 0 ? "" : values.BlockNames.Text(values.Blocks[i]),
+                    values.Orders[i] == ObservationColumns.NoOrder ? "" : CsvLine.Number(values.Orders[i]),
+                    file, CsvLine.Number(values.Lines[i]));
+            }
+        }
+    }
+}
