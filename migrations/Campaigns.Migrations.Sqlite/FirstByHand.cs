@@ -57,9 +57,6 @@ internal static class FirstByHand
         CREATE TRIGGER campaigns_stay BEFORE DELETE ON campaigns BEGIN SELECT RAISE(ABORT, 'a campaign is never deleted'); END;
         CREATE TRIGGER campaigns_stay_sealed BEFORE UPDATE ON campaigns WHEN old.sealed_at IS NOT NULL
         BEGIN SELECT RAISE(ABORT, 'a sealed campaign is never changed'); END;
-        CREATE TRIGGER experiments_join_open_plans BEFORE INSERT ON experiments
-        WHEN EXISTS (SELECT 1 FROM campaigns WHERE id = new.campaign_id AND sealed_at IS NOT NULL AND is_exploratory = 0)
-        BEGIN SELECT RAISE(ABORT, 'a sealed plan takes no more experiments'); END;
         CREATE TRIGGER experiments_stay_sealed BEFORE DELETE ON experiments
         WHEN EXISTS (SELECT 1 FROM campaigns WHERE id = old.campaign_id AND sealed_at IS NOT NULL)
         BEGIN SELECT RAISE(ABORT, 'an experiment of a sealed plan is never deleted'); END;

@@ -18,4 +18,15 @@ public sealed record CampaignStanding(
 
     /// <summary>Experiments that survive the correction.</summary>
     public int SurvivorCount => Experiments.Count(e => e.Survives == true);
+
+    /// <summary>The campaign in figures.</summary>
+    public CampaignOverview Overview => new(
+        Campaign,
+        FamilySize,
+        TestedCount,
+        Experiments.Count(e => e.P is { } p && Campaign.Level.Rejects(p)),
+        SurvivorCount,
+        Experiments.Count(e => e.Amendments.Count > 0),
+        LastReview,
+        ResultsSinceReview);
 }

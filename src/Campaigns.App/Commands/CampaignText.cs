@@ -24,7 +24,7 @@ internal static class CampaignText
         $"{RateWords(campaign.ErrorRate)} at {campaign.Level} by {FamilyVerdict.CorrectionOf(campaign).Name}";
 
     /// <summary>The lines under every table of results: what was assumed, which procedure, what it promises.</summary>
-    public static IReadOnlyList<string> Footnotes(CampaignStanding standing)
+    public static IReadOnlyList<string> Footnotes(CampaignOverview standing)
     {
         Campaign campaign = standing.Campaign;
         Correction correction = FamilyVerdict.CorrectionOf(campaign);
@@ -38,9 +38,9 @@ internal static class CampaignText
             lines.Add("Exploratory: the experiments were taken from the data, not from a plan made before it.");
         }
 
-        if (standing.Experiments.Count(e => e.Amendments.Count > 0) is > 0 and int amended)
+        if (standing.AmendedCount > 0)
         {
-            lines.Add(FormattableString.Invariant($"Amended: {amended} experiment(s) received values after they had been tested; 'campaigns show {campaign.Code} EXPERIMENT' gives the reason."));
+            lines.Add(FormattableString.Invariant($"Amended: {standing.AmendedCount} experiment(s) received values after they had been tested; 'campaigns show {campaign.Code} EXPERIMENT' gives the reason."));
         }
 
         lines.Add(ReviewLine(standing));
@@ -48,7 +48,7 @@ internal static class CampaignText
     }
 
     /// <summary>Whether the latest review is up to date.</summary>
-    public static string ReviewLine(CampaignStanding standing) => standing.LastReview is not { } review
+    public static string ReviewLine(CampaignOverview standing) => standing.LastReview is not { } review
         ? $"No review was taken yet; 'campaigns review {standing.Campaign.Code}' takes one."
         : standing.ResultsSinceReview > 0
             ? FormattableString.Invariant($"Review {review.Number} of {review.At:yyyy-MM-dd HH:mm} UTC is out of date: {standing.ResultsSinceReview} result(s) came after it; 'campaigns review {standing.Campaign.Code}' takes a new one.")

@@ -85,7 +85,7 @@ internal static class ExperimentShow
         }
 
         yield return FormattableString.Invariant($"Intervals: {100 * detail.Confidence:0.#} % for each mean alone, from the group's own standard deviation and Student's t.");
-        foreach (string line in CampaignText.Footnotes(standing))
+        foreach (string line in CampaignText.Footnotes(standing.Overview))
         {
             yield return line;
         }

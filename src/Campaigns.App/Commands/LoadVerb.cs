@@ -50,12 +50,36 @@ internal sealed class LoadVerb : Verb
         new("experiments", null, true), new("new_experiments", null, true), new("amended", null),
     ];
 
-    /// <summary>Loads one file and says what it brought.</summary>
-    public static Cell[] Load(Session session, Catalog.Catalog catalog, string code, string file, LoadOptions options)
+    /// <summary>Loads one file, unless it was loaded before, and says what it brought.</summary>
+    /// <returns>Whether it was loaded.</returns>
+    public static bool LoadUnlessKnown(Session session, Catalog.Catalog catalog, string code, string file, LoadOptions options)
+    {
+        using var line = new ProgressLine(session.Host);
+        LoadSummary? load = new MeasurementLoader(catalog).LoadUnlessKnown(code, file, options, line.Report, session.Host.Cancel);
+        line.Dispose();
+        if (load is not null)
+        {
+            Say(session, code, load);
+        }
+
+        return load is not null;
+    }
+
+    private static Cell[] Load(Session session, Catalog.Catalog catalog, string code, string file, LoadOptions options)
     {
         using var line = new ProgressLine(session.Host);
         LoadSummary load = new MeasurementLoader(catalog).Load(code, file, options, line.Report, session.Host.Cancel);
         line.Dispose();
+        Say(session, code, load);
+        return
+        [
+            Cell.Text(load.FileName), Cell.Text(load.Sha256), Cell.Whole(load.RowCount), Cell.Whole(load.MissingCount),
+            Cell.Whole(load.ExperimentCount), Cell.Whole(load.NewExperimentCount), Cell.Text(string.Join('|', load.AmendedExperiments)),
+        ];
+    }
+
+    private static void Say(Session session, string code, LoadSummary load)
+    {
         string missing = load.MissingCount > 0 ? FormattableString.Invariant($", {load.MissingCount} marked as missing and left out") : "";
         string fresh = load.NewExperimentCount > 0 ? FormattableString.Invariant($" ({load.NewExperimentCount} of them new)") : "";
         session.Say(FormattableString.Invariant($"Loaded {load.FileName}: {load.RowCount} rows for {load.ExperimentCount} experiments{fresh}{missing}."));
@@ -69,11 +93,5 @@ internal sealed class LoadVerb : Verb
         {
             session.Say($"Recorded as an amendment of tested experiments: {string.Join(", ", load.AmendedExperiments)}. Test them again with 'campaigns test {code}'.");
         }
-
-        return
-        [
-            Cell.Text(load.FileName), Cell.Text(load.Sha256), Cell.Whole(load.RowCount), Cell.Whole(load.MissingCount),
-            Cell.Whole(load.ExperimentCount), Cell.Whole(load.NewExperimentCount), Cell.Text(string.Join('|', load.AmendedExperiments)),
-        ];
     }
 }

@@ -23,7 +23,7 @@ internal sealed class ResultsVerb : Verb
         session.Print(new RowTable(Columns, standing.Experiments.Select(Row))
         {
             Above = [$"{standing.Campaign.Code}: {CampaignText.Goal(standing.Campaign)}"],
-            Below = CampaignText.Footnotes(standing),
+            Below = CampaignText.Footnotes(standing.Overview),
         });
         return ExitCode.Done;
     }

@@ -1,5 +1,4 @@
 using Campaigns.App.Output;
-using Campaigns.Catalog.Results;
 using Campaigns.Domain;
 using Campaigns.Statistics.Numerics;
 

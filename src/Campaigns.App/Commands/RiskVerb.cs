@@ -1,6 +1,7 @@
 using System.CommandLine;
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Results;
+using Campaigns.Domain;
 
 namespace Campaigns.App.Commands;
 

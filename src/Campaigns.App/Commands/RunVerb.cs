@@ -140,18 +140,10 @@ internal sealed class RunVerb : Verb
         }
 
         var options = new LoadOptions(SharedOptions.Reading(session, MeasurementFile.ColumnNames));
-        var loader = new MeasurementLoader(catalog);
         int known = 0;
         foreach (string file in Directory.EnumerateFiles(folder, "*.csv").Order(NaturalOrder.Instance))
         {
-            if (loader.WasLoaded(campaign.Id, FileDigest.Sha256(file)))
-            {
-                known++;
-            }
-            else
-            {
-                LoadVerb.Load(session, catalog, campaign.Campaign.Code, file, options);
-            }
+            known += LoadVerb.LoadUnlessKnown(session, catalog, campaign.Campaign.Code, file, options) ? 0 : 1;
         }
 
         if (known > 0)
@@ -177,8 +169,7 @@ internal sealed class RunVerb : Verb
 
     private static bool ReviewWhereTested(Session session, Catalog.Catalog catalog, string code)
     {
-        StoredCampaign stored = new CampaignStore(catalog).Get(code);
-        if (new OverviewReader(catalog).Read(stored).TestedCount == 0 && new ReviewStore(catalog).All(stored.Id).Count == 0)
+        if (!new ReviewStore(catalog).CanReview(code))
         {
             session.Say($"Nothing of {code} was tested yet, so there is nothing to review.");
             return false;
@@ -190,18 +181,17 @@ internal sealed class RunVerb : Verb
 
     private static void PrintSurvivors(Session session, Catalog.Catalog catalog, string code)
     {
-        CampaignStanding standing = new StandingReader(catalog).Read(code);
         bool forPeople = session.Format == RowFormat.Table;
-        if (forPeople)
+        (RowTable rows, CampaignOverview overview) = SurvivorsVerb.Table(catalog, code, forPeople ? SurvivorsShown : int.MaxValue);
+        if (!forPeople)
         {
-            session.Host.Out.WriteLine();
+            session.Print(rows);
+            return;
         }
 
-        session.Print(SurvivorsVerb.Table(catalog, standing, forPeople ? SurvivorsShown : int.MaxValue));
-        if (forPeople)
-        {
-            session.Host.Out.WriteLine();
-            TextTable.Sentences(session.Host, RiskTable.Sentences(new OverviewReader(catalog).Read(new CampaignStore(catalog).Get(code))));
-        }
+        session.Host.Out.WriteLine();
+        session.Print(rows);
+        session.Host.Out.WriteLine();
+        TextTable.Sentences(session.Host, RiskTable.Sentences(overview));
     }
 }

@@ -19,36 +19,35 @@ internal sealed class SurvivorsVerb : Verb
     public override int Run(Session session)
     {
         using Catalog.Catalog catalog = session.OpenCatalog();
-        CampaignStanding standing = new StandingReader(catalog).Read(session.Get(_code));
-        session.Print(Table(catalog, standing, int.MaxValue));
+        session.Print(Table(catalog, session.Get(_code), int.MaxValue).Rows);
         return ExitCode.Done;
     }
 
     /// <summary>The survivors, ranked by p.</summary>
     /// <param name="catalog">The open catalog.</param>
-    /// <param name="standing">The campaign as it stands.</param>
+    /// <param name="code">The campaign.</param>
     /// <param name="most">Survivors to list.</param>
-    public static RowTable Table(Catalog.Catalog catalog, CampaignStanding standing, int most)
+    public static (RowTable Rows, CampaignOverview Overview) Table(Catalog.Catalog catalog, string code, int most)
     {
-        ExperimentResult[] survivors = [.. standing.Experiments.Where(e => e.Survives == true).OrderBy(e => e.P!.Value).ThenBy(e => e.Position)];
-        ExperimentResult[] listed = most < survivors.Length ? survivors[..most] : survivors;
-        IReadOnlyDictionary<string, WidestGap> gaps = new EffectReader(catalog).WidestGaps(standing.Campaign.Code, listed.Select(e => e.Plan.Code));
-        string more = listed.Length < survivors.Length
-            ? FormattableString.Invariant($" The first {listed.Length} of {survivors.Length} are shown; 'campaigns survivors {standing.Campaign.Code}' gives all.")
+        (CampaignOverview overview, IReadOnlyList<ExperimentResult> listed) = new OverviewReader(catalog).ReadSurvivors(code, most);
+        IReadOnlyDictionary<string, WidestGap> gaps = new EffectReader(catalog).WidestGaps(code, listed.Select(e => e.Plan.Code));
+        string more = listed.Count < overview.SurvivorCount
+            ? FormattableString.Invariant($" The first {listed.Count} of {overview.SurvivorCount} are shown; 'campaigns survivors {code}' gives all.")
             : "";
-        return new RowTable(Columns, listed.Select(e => Row(e, gaps.GetValueOrDefault(e.Plan.Code))))
+        var rows = new RowTable(Columns, listed.Select(e => Row(e, gaps.GetValueOrDefault(e.Plan.Code))))
         {
-            Above = [FormattableString.Invariant($"{standing.Campaign.Code}: {standing.SurvivorCount} of {standing.TestedCount} tested experiments survive ({CampaignText.Goal(standing.Campaign)}).{more}")],
-            Below = [.. CampaignText.Footnotes(standing), "Gaps are those between sample means; gaps of what was selected look larger than they are.", CampaignText.Caution],
+            Above = [FormattableString.Invariant($"{code}: {overview.SurvivorCount} of {overview.TestedCount} tested experiments survive ({CampaignText.Goal(overview.Campaign)}).{more}")],
+            Below = [.. CampaignText.Footnotes(overview), "Gap: the widest between two group means of the sample; gaps of what was selected look larger than they are.", CampaignText.Caution],
             WhenEmpty = "No experiment survives: no difference shown, which is not the same as no difference.",
         };
+        return (rows, overview);
     }
 
     private static IReadOnlyList<Column> Columns { get; } =
     [
-        new("experiment", "experiment"), new("title", "title"), new("test", null), new("statistic", "statistic", true), new("df1", null, true), new("df2", null, true),
-        new("p", "p", true), new("adjusted_p", "adjusted p", true), new("eta_squared", null, true), new("omega_squared", "omega squared", true),
-        new("highest_group", "highest"), new("highest_mean", "mean", true), new("lowest_group", "lowest"), new("lowest_mean", "mean", true),
+        new("experiment", "experiment"), new("title", "title"), new("test", null), new("statistic", null, true), new("df1", null, true), new("df2", null, true),
+        new("p", "p", true), new("adjusted_p", "adjusted p", true), new("eta_squared", null, true), new("omega_squared", null, true),
+        new("highest_group", "highest"), new("highest_mean", null, true), new("lowest_group", "lowest"), new("lowest_mean", null, true),
         new("difference", "gap", true), new("unit", "unit"), new("response", null),
     ];
 

@@ -96,14 +96,14 @@ internal static class TextTable
         var view = new Table().Border(TableBorder.None);
         for (int c = 0; c < shown.Length; c++)
         {
-            var column = new TableColumn(new Text(Cut(headings[c], widths[c]), new Style(decoration: Decoration.Bold))).NoWrap().Width(widths[c]);
+            var column = new TableColumn(new Text(Cut(headings[c], widths[c]), new Style(decoration: Decoration.Bold)) { Overflow = Overflow.Crop }).NoWrap().Width(widths[c]);
             column.Padding = new Padding(0, 0, 2, 0);
             view.AddColumn(table.Columns[shown[c]].IsNumeric ? column.RightAligned() : column);
         }
 
         foreach (string[] row in texts)
         {
-            view.AddRow(row.Select((text, c) => (Spectre.Console.Rendering.IRenderable)new Text(Cut(text, widths[c]))));
+            view.AddRow(row.Select((text, c) => (Spectre.Console.Rendering.IRenderable)new Text(Cut(text, widths[c])) { Overflow = Overflow.Crop }));
         }
 
         return view;

@@ -15,6 +15,13 @@ internal static class SqliteCatalogFile
     private const int HeaderLength = 100;
     private static ReadOnlySpan<byte> Signature => "SQLite format 3\0"u8;
 
+    /// <summary>One connection is used by one thread at a time, so SQLite need not lock itself at every call.</summary>
+    static SqliteCatalogFile()
+    {
+        SQLitePCL.Batteries_V2.Init();
+        _ = SQLitePCL.raw.sqlite3_config(SQLitePCL.raw.SQLITE_CONFIG_MULTITHREAD);
+    }
+
     /// <summary>Opens a catalog that exists and is of this program's schema; every other file is left as it is.</summary>
     /// <exception cref="CatalogException">Missing, unreadable, foreign, older, newer or damaged.</exception>
     public static SqliteConnection Open(string path)
@@ -75,7 +82,8 @@ internal static class SqliteCatalogFile
             connection.Open();
 
             // One file that may be copied: a rollback journal, not a write-ahead log. EXTRA also syncs the folder, so an acknowledged action survives a power cut.
-            Execute(connection, "PRAGMA busy_timeout = 5000; PRAGMA foreign_keys = ON; PRAGMA synchronous = EXTRA; PRAGMA journal_mode = DELETE;");
+            // The journals of single statements stay in memory; they guard nothing that outlives a crash.
+            Execute(connection, "PRAGMA temp_store = MEMORY; PRAGMA busy_timeout = 5000; PRAGMA foreign_keys = ON; PRAGMA synchronous = EXTRA; PRAGMA journal_mode = DELETE;");
             return connection;
         }
         catch (SqliteException error)

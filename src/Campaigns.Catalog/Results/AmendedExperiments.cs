@@ -46,7 +46,9 @@ internal sealed class AmendedExperiments
         }
     }
 
-    public bool Any => _experiments.Count > 0;
+    public int Count => _experiments.Count;
+
+    public bool Any => Count > 0;
 
     /// <summary>Whether values came in after the latest test, which is then no longer the experiment's result.</summary>
     public bool AwaitsTest(long experimentId) => _experiments.TryGetValue(experimentId, out Amended? amended) && amended.AwaitsTest;

@@ -34,7 +34,7 @@ public sealed class EffectReader(Catalog catalog)
             SELECT e.code, e.group_set_id, m.packed FROM experiments e JOIN measurements m ON m.experiment_id = e.id
             WHERE e.campaign_id = ?1 AND e.code IN (SELECT value FROM json_each(?2)) ORDER BY e.id, m.load_id
             """);
-        select.Bind(1, campaignId).Bind(2, JsonSerializer.Serialize([.. experiments], TextArray.Default.StringArray));
+        select.Bind(1, campaignId).Bind(2, JsonSerializer.Serialize([.. experiments], JsonArrays.Default.StringArray));
         var gaps = new Dictionary<string, WidestGap>(StringComparer.Ordinal);
         var values = new ObservationColumns();
         string code = "";
@@ -82,7 +82,3 @@ public sealed class EffectReader(Catalog catalog)
         return high < 0 || high == low ? null : new WidestGap(labels[high], groups[high].Mean!.Value, labels[low], groups[low].Mean!.Value);
     }
 }
-
-/// <summary>Serialises a list of codes without reflection at start-up.</summary>
-[System.Text.Json.Serialization.JsonSerializable(typeof(string[]))]
-internal sealed partial class TextArray : System.Text.Json.Serialization.JsonSerializerContext;

@@ -26,6 +26,18 @@ internal sealed class FamilyReader(Catalog catalog)
         return last.NullableInteger(0);
     }
 
+    /// <summary>Results that came after a test run.</summary>
+    public int ResultsAfter(long campaignId, long testRunId)
+    {
+        using SqliteStatement count = catalog.Prepare(
+            """
+            SELECT count(*) FROM test_results r JOIN test_runs t ON t.id = r.test_run_id
+            WHERE r.test_run_id > ?2 AND t.campaign_id = ?1
+            """);
+        count.Bind(1, campaignId).Bind(2, testRunId).Read();
+        return (int)count.Integer(0);
+    }
+
     public FamilyColumns Read(long campaignId)
     {
         using SqliteStatement latest = catalog.Prepare("SELECT last_test_run_id, lines FROM reviews WHERE campaign_id = ?1 ORDER BY number DESC LIMIT 1");

@@ -5,37 +5,49 @@ using Campaigns.Statistics.Probability;
 
 namespace Campaigns.Catalog.Results;
 
-/// <summary>A campaign in figures.</summary>
-/// <param name="Campaign">The campaign.</param>
-/// <param name="FamilySize">Experiments in its family.</param>
-/// <param name="TestedCount">Experiments with a result.</param>
-/// <param name="UncorrectedCount">Experiments whose own p-value is at most the level.</param>
-/// <param name="SurvivorCount">Experiments that survive the correction.</param>
-/// <param name="LastReview">The latest review; null before the first.</param>
-public sealed record CampaignOverview(Campaign Campaign, int FamilySize, int TestedCount, int UncorrectedCount, int SurvivorCount, ReviewHead? LastReview);
-
-/// <summary>Reads campaigns in figures, without their experiments one by one.</summary>
+/// <summary>Reads campaigns in figures, and their survivors, without the other experiments one by one.</summary>
 /// <param name="catalog">The open catalog.</param>
 public sealed class OverviewReader(Catalog catalog)
 {
     /// <summary>One campaign in figures; O(m log m) in its tested experiments.</summary>
     /// <param name="stored">The campaign.</param>
-    public CampaignOverview Read(StoredCampaign stored)
+    public CampaignOverview Read(StoredCampaign stored) => ReadWithSurvivors(stored).Overview;
+
+    /// <summary>One campaign in figures with its survivors, the smallest p-value first.</summary>
+    /// <param name="code">The campaign.</param>
+    /// <param name="most">Survivors to read in full.</param>
+    /// <exception cref="RefusedException">There is no such campaign.</exception>
+    public (CampaignOverview Overview, IReadOnlyList<ExperimentResult> Survivors) ReadSurvivors(string code, int most)
+    {
+        StoredCampaign stored = new CampaignStore(catalog).Get(code);
+        (CampaignOverview overview, FamilyColumns family, PValue[] adjusted) = ReadWithSurvivors(stored);
+        int[] survivors = [.. Enumerable.Range(0, adjusted.Length).Where(i => stored.Campaign.Level.Rejects(adjusted[i]))];
+        Array.Sort(survivors, (a, b) => family.P[a].CompareTo(family.P[b]) is var order && order != 0 ? order : a.CompareTo(b));
+        int[] listed = most < survivors.Length ? survivors[..most] : survivors;
+        Dictionary<long, ExperimentResult> experiments = new StandingReader(catalog).ReadSome(stored.Id, listed.Select(i => family.ExperimentIds[i]));
+        return (overview, [.. listed.Select(i => experiments[family.ExperimentIds[i]] with { AdjustedP = adjusted[i], Survives = true })]);
+    }
+
+    private (CampaignOverview Overview, FamilyColumns Family, PValue[] Adjusted) ReadWithSurvivors(StoredCampaign stored)
     {
         ArgumentNullException.ThrowIfNull(stored);
         Campaign campaign = stored.Campaign;
         var families = new FamilyReader(catalog);
-        FamilyColumns columns = families.Read(stored.Id);
+        FamilyColumns family = families.Read(stored.Id);
         int familySize = families.FamilySize(stored.Id);
-        PValue[] adjusted = FamilyVerdict.CorrectionOf(campaign).Adjust(RankedFamily.Of(columns.P, familySize));
+        PValue[] adjusted = FamilyVerdict.CorrectionOf(campaign).Adjust(RankedFamily.Of(family.P, familySize));
         int hits = 0;
-        foreach (PValue p in columns.P)
+        foreach (PValue p in family.P)
         {
             hits += campaign.Level.Rejects(p) ? 1 : 0;
         }
 
-        return new CampaignOverview(
-            campaign, familySize, columns.Count, hits, adjusted.Count(campaign.Level.Rejects),
-            new ReviewStore(catalog).Latest(stored.Id)?.Head);
+        (ReviewHead Head, long? LastRun)? latest = new ReviewStore(catalog).Latest(stored.Id);
+        return (
+            new CampaignOverview(
+                campaign, familySize, family.Count, hits, adjusted.Count(campaign.Level.Rejects),
+                new AmendedExperiments(catalog, stored.Id).Count, latest?.Head, families.ResultsAfter(stored.Id, latest?.LastRun ?? 0)),
+            family,
+            adjusted);
     }
 }

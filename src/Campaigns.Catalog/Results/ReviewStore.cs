@@ -47,6 +47,10 @@ public sealed class ReviewStore(Catalog catalog)
         return new ReviewTaken(Store(stored, families.Read(stored.Id), planned, testedOnly, lastRun.Value), true);
     });
 
+    /// <summary>Whether anything of a campaign was tested, so that a review has something to hold.</summary>
+    /// <param name="code">The campaign.</param>
+    public bool CanReview(string code) => new FamilyReader(catalog).LastTestRun(new CampaignStore(catalog).Get(code).Id) is not null;
+
     /// <summary>The latest review of a campaign; null before the first.</summary>
     internal (ReviewHead Head, long? LastRun)? Latest(long campaignId)
     {

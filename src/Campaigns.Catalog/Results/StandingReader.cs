@@ -17,64 +17,52 @@ public sealed class StandingReader(Catalog catalog)
         StoredCampaign stored = new CampaignStore(catalog).Get(code);
         var amended = new AmendedExperiments(catalog, stored.Id);
         Dictionary<long, DataAtHand> untested = UntestedData(stored.Id);
-        List<ExperimentResult> experiments = ReadExperiments(stored.Id, amended, untested);
+        List<ExperimentResult> experiments = ReadExperiments(stored, amended, untested);
         (ReviewHead Head, long? LastRun)? latest = new ReviewStore(catalog).Latest(stored.Id);
         return new CampaignStanding(
             stored.Campaign,
             FamilyVerdict.Apply(stored.Campaign, experiments, experiments.Count),
             experiments.Count,
             latest?.Head,
-            ResultsSince(stored.Id, latest?.LastRun ?? 0));
+            new FamilyReader(catalog).ResultsAfter(stored.Id, latest?.LastRun ?? 0));
     }
 
-    private List<ExperimentResult> ReadExperiments(long campaignId, AmendedExperiments amended, Dictionary<long, DataAtHand> untested)
+    /// <summary>Some tested experiments in full, by their keys, without the correction; one look-up for all.</summary>
+    internal Dictionary<long, ExperimentResult> ReadSome(long campaignId, IEnumerable<long> experimentIds)
     {
-        using var sets = new GroupSets(catalog, campaignId);
-        using SqliteStatement plans = catalog.Prepare($"SELECT {PlanStore.ExperimentColumns} FROM experiments WHERE campaign_id = ?1 ORDER BY id");
-        using SqliteStatement results = catalog.Prepare(
-            """
-            SELECT r.experiment_id, r.status, r.group_count, r.observation_count, r.statistic, r.df1, r.df2, r.p, r.log_p, r.eta_squared, r.omega_squared
-            FROM experiments e JOIN test_results r ON r.experiment_id = e.id WHERE e.campaign_id = ?1 ORDER BY e.id, r.test_run_id
-            """);
-        plans.Bind(1, campaignId);
-        results.Bind(1, campaignId);
-        bool more = results.Read();
-        var experiments = new List<ExperimentResult>();
-        while (plans.Read())
+        using var rows = new ExperimentRows(catalog, campaignId, [.. experimentIds]);
+        var amended = new AmendedExperiments(catalog, campaignId);
+        var experiments = new Dictionary<long, ExperimentResult>();
+        while (rows.Next(amended) is { } experiment)
         {
-            long id = plans.Integer(0);
-            var experiment = new ExperimentResult
-            {
-                Plan = PlanStore.Row(plans, sets),
-                Position = experiments.Count + 1,
-                Status = ExperimentStatus.Planned,
-                Amendments = amended.Reasons(id),
-            };
-
-            // Results come in the order of the same keys; of several for one experiment the last stands.
-            for (; more && results.Integer(0) == id; more = results.Read())
-            {
-                experiment = amended.AwaitsTest(id) ? experiment : WithResult(experiment, results);
-            }
-
-            experiments.Add(untested.TryGetValue(id, out DataAtHand? data) ? data.Describe(experiment) : experiment);
+            experiments.Add(rows.Id, experiment);
         }
 
         return experiments;
     }
 
-    private static ExperimentResult WithResult(ExperimentResult experiment, SqliteStatement row) => experiment with
+    private List<ExperimentResult> ReadExperiments(StoredCampaign stored, AmendedExperiments amended, Dictionary<long, DataAtHand> untested)
     {
-        Status = ExperimentStatusWords.Parse(row.Text(1)),
-        GroupCount = (int)row.Integer(2),
-        ObservationCount = (int)row.Integer(3),
-        Statistic = row.NullableReal(4),
-        Df1 = row.NullableReal(5),
-        Df2 = row.NullableReal(6),
-        P = FamilyReader.ReadP(row, 7),
-        EtaSquared = row.NullableReal(9),
-        OmegaSquared = row.NullableReal(10),
-    };
+        using var rows = new ExperimentRows(catalog, stored.Id, only: null);
+        var experiments = new List<ExperimentResult>();
+        while (rows.Next(amended) is { } experiment)
+        {
+            experiments.Add(untested.TryGetValue(rows.Id, out DataAtHand? data) ? data.Describe(experiment) : experiment);
+        }
+
+        if (stored.Campaign.IsExploratory)
+        {
+            // Without a plan the order of the experiments is the order of their names, whatever the order of the rows that brought them.
+            experiments.Sort((a, b) => NaturalOrder.Instance.Compare(a.Plan.Code, b.Plan.Code));
+        }
+
+        for (int i = 0; i < experiments.Count; i++)
+        {
+            experiments[i] = experiments[i] with { Position = i + 1 };
+        }
+
+        return experiments;
+    }
 
     /// <summary>Counts of the experiments that have data and no standing result.</summary>
     private Dictionary<long, DataAtHand> UntestedData(long campaignId)
@@ -106,17 +94,6 @@ public sealed class StandingReader(Catalog catalog)
         }
 
         return data;
-    }
-
-    private int ResultsSince(long campaignId, long testRunId)
-    {
-        using SqliteStatement count = catalog.Prepare(
-            """
-            SELECT count(*) FROM test_results r JOIN test_runs t ON t.id = r.test_run_id
-            WHERE r.test_run_id > ?2 AND t.campaign_id = ?1
-            """);
-        count.Bind(1, campaignId).Bind(2, testRunId).Read();
-        return (int)count.Integer(0);
     }
 
     /// <summary>Values of an experiment by group, against what its plan asks for.</summary>

@@ -1,4 +1,3 @@
-using Campaigns.Catalog.Measurements;
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Providers;
 using Campaigns.Domain;
@@ -13,8 +12,6 @@ namespace Campaigns.Catalog.Loading;
 /// <param name="catalog">The open catalog.</param>
 public sealed class MeasurementLoader(Catalog catalog)
 {
-    private const int RowsPerReport = 1 << 14;
-
     /// <summary>Loads one file.</summary>
     /// <param name="code">The campaign.</param>
     /// <param name="path">The file.</param>
@@ -23,14 +20,24 @@ public sealed class MeasurementLoader(Catalog catalog)
     /// <param name="cancel">Stops the work; nothing of the file is then kept.</param>
     /// <exception cref="RefusedException">The file has problems, was loaded before, or the campaign takes no data; nothing was changed.</exception>
     /// <exception cref="LoadingException">The file cannot be read.</exception>
-    public LoadSummary Load(string code, string path, LoadOptions options, Action<WorkProgress> progress, CancellationToken cancel)
+    public LoadSummary Load(string code, string path, LoadOptions options, Action<WorkProgress> progress, CancellationToken cancel) =>
+        LoadUnlessKnown(code, path, options, progress, cancel) ?? throw Repeat(code, path);
+
+    /// <summary>Loads one file, unless its bytes were loaded into the campaign before.</summary>
+    /// <returns>What was loaded; null where the file is known.</returns>
+    /// <inheritdoc cref="Load"/>
+    public LoadSummary? LoadUnlessKnown(string code, string path, LoadOptions options, Action<WorkProgress> progress, CancellationToken cancel)
     {
         ArgumentNullException.ThrowIfNull(options);
         return catalog.Change(() =>
         {
             StoredCampaign campaign = new CampaignStore(catalog).Get(code);
             FileDigest digest = FileDigest.Sha256(path);
-            RefuseRepeat(campaign, digest, path);
+            if (LoadedAt(campaign.Id, digest) is not null)
+            {
+                return null;
+            }
+
             if (!campaign.Campaign.IsSealed && !campaign.Campaign.IsExploratory && HasPlan(campaign.Id))
             {
                 throw new RefusedException($"The plan of '{code}' is not sealed: fix it before the data come, with 'campaigns seal {code}', and load again.");
@@ -40,21 +47,11 @@ public sealed class MeasurementLoader(Catalog catalog)
         });
     }
 
-    /// <summary>Whether a file's bytes were loaded into a campaign before.</summary>
-    /// <param name="campaignId">The campaign.</param>
-    /// <param name="digest">The file.</param>
-    public bool WasLoaded(long campaignId, FileDigest digest)
+    private RefusedException Repeat(string code, string path)
     {
-        ArgumentNullException.ThrowIfNull(digest);
-        return LoadedAt(campaignId, digest) is not null;
-    }
-
-    private void RefuseRepeat(StoredCampaign campaign, FileDigest digest, string path)
-    {
-        if (LoadedAt(campaign.Id, digest) is (string name, DateTimeOffset at))
-        {
-            throw new RefusedException(FormattableString.Invariant($"The file '{path}' was loaded into '{campaign.Campaign.Code}' before, as '{name}' on {at:yyyy-MM-dd HH:mm:ss} UTC (same SHA-256 {digest.Hex[..12]}...); it was not loaded again."));
-        }
+        FileDigest digest = FileDigest.Sha256(path);
+        (string name, DateTimeOffset at) = LoadedAt(new CampaignStore(catalog).Get(code).Id, digest)!.Value;
+        return new RefusedException(FormattableString.Invariant($"The file '{path}' was loaded into '{code}' before, as '{name}' on {at:yyyy-MM-dd HH:mm:ss} UTC (same SHA-256 {digest.Hex[..12]}...); it was not loaded again."));
     }
 
     private (string Name, DateTimeOffset At)? LoadedAt(long campaignId, FileDigest digest)
@@ -75,8 +72,6 @@ public sealed class MeasurementLoader(Catalog catalog)
     private sealed class OneFile(Catalog catalog, StoredCampaign campaign, string path, FileDigest digest, LoadOptions options, Action<WorkProgress> progress, CancellationToken cancel)
     {
         private readonly long _loadId = NextId(catalog);
-        private readonly Utf8Interner _labels = new();
-        private readonly Utf8Interner _codes = new();
         private readonly NameComplaints _complaints = new();
 
         public LoadSummary Load()
@@ -90,31 +85,37 @@ public sealed class MeasurementLoader(Catalog catalog)
         private LoadSummary? TogetherOrNull()
         {
             using var file = MeasurementFile.Open(path, options.Reading);
-            using ExperimentSink sink = NewSink();
+            using var rows = new RowSource(file, cancel);
+            using ExperimentSink sink = NewSink(rows);
             int current = -1;
-            while (file.Read(out MeasurementRow row))
+            while (rows.Next() is { } batch)
             {
-                if (current < 0 || !row.Experiment.SequenceEqual(_codes[current]))
+                for (int i = 0; i < batch.Count; i++)
                 {
-                    if (current >= 0)
-                    {
-                        sink.End();
-                    }
-
-                    int number = _codes.Intern(row.Experiment);
-                    if (number <= current)
+                    int experiment = batch[i].Experiment;
+                    if (experiment < current)
                     {
                         Run("ROLLBACK TO before_file");
                         _complaints.Clear();
                         return null;
                     }
 
-                    current = number;
-                    sink.Begin(row.Experiment, row.Line);
+                    if (experiment > current)
+                    {
+                        if (current >= 0)
+                        {
+                            sink.End();
+                        }
+
+                        current = experiment;
+                        sink.Begin(rows.Codes[experiment], batch[i].Line);
+                    }
+
+                    batch.HandTo(sink, i);
                 }
 
-                AddTo(sink, row);
                 Report(file);
+                rows.Recycle(batch);
             }
 
             if (current >= 0)
@@ -129,44 +130,21 @@ public sealed class MeasurementLoader(Catalog catalog)
         private LoadSummary Gathered()
         {
             using var file = MeasurementFile.Open(path, options.Reading);
-            var rows = new RowHeap();
-            while (file.Read(out MeasurementRow row))
+            using var rows = new RowSource(file, cancel);
+            var heap = new RowHeap();
+            while (rows.Next() is { } batch)
             {
-                rows.Add(_codes.Intern(row.Experiment), _labels.Intern(row.Group), row);
+                heap.Add(batch);
                 Report(file);
             }
 
-            using ExperimentSink sink = NewSink();
+            using ExperimentSink sink = NewSink(rows);
             if (file.Problems.IsEmpty)
             {
-                rows.HandTo(sink, _codes, cancel);
+                heap.HandTo(sink, rows.Codes, cancel);
             }
 
             return Finish(file, sink);
-        }
-
-        private void AddTo(ExperimentSink sink, in MeasurementRow row)
-        {
-            ushort group = sink.GroupOf(_labels.Intern(row.Group), row.Line);
-            if (row.IsMissing)
-            {
-                sink.Values.MissingCount++;
-                return;
-            }
-
-            if (row.Value.IsWide)
-            {
-                sink.Values.AddWide(row.Value.WideMantissa, row.Value.Decimals, group, row.Line);
-            }
-            else
-            {
-                sink.Values.Add(row.Value.Mantissa, row.Value.Decimals, group, row.Line);
-            }
-
-            if (!row.Specimen.IsEmpty || !row.Block.IsEmpty || row.Order is not null)
-            {
-                sink.Values.Describe(row.Specimen, row.Block, row.Order);
-            }
         }
 
         private LoadSummary Finish(MeasurementFile file, ExperimentSink sink)
@@ -207,15 +185,12 @@ public sealed class MeasurementLoader(Catalog catalog)
                 .Bind(10, sink.Amended.Count > 0 ? options.AmendmentReason : null).Run();
         }
 
-        private ExperimentSink NewSink() => new(catalog, campaign, options, _loadId, digest.Size, _labels, _complaints);
+        private ExperimentSink NewSink(RowSource rows) => new(catalog, campaign, options, _loadId, digest.Size, rows.Labels, _complaints);
 
         private void Report(MeasurementFile file)
         {
-            if (file.RowCount % RowsPerReport == 0)
-            {
-                cancel.ThrowIfCancellationRequested();
-                progress(new WorkProgress($"loading {file.Name}", file.Position, digest.Size, "bytes"));
-            }
+            cancel.ThrowIfCancellationRequested();
+            progress(new WorkProgress($"loading {file.Name}", file.Position, digest.Size, "bytes"));
         }
 
         private void Run(string sql)

@@ -1,0 +1,87 @@
+using System.Text.Json;
+using Campaigns.Catalog.Plans;
+using Campaigns.Catalog.Providers;
+using Campaigns.Domain;
+
+namespace Campaigns.Catalog.Results;
+
+/// <summary>Walks through the experiments of a campaign with their latest results: two scans in the order of the same keys, merged.</summary>
+internal sealed class ExperimentRows : IDisposable
+{
+    private readonly GroupSets _sets;
+    private readonly SqliteStatement _plans;
+    private readonly SqliteStatement _results;
+    private bool _more;
+
+    /// <param name="catalog">The open catalog.</param>
+    /// <param name="campaignId">The campaign.</param>
+    /// <param name="only">Keys of the experiments wanted; null for all.</param>
+    public ExperimentRows(Catalog catalog, long campaignId, long[]? only)
+    {
+        string chosen = only is null ? "" : " AND e.id IN (SELECT value FROM json_each(?2))";
+        _sets = new GroupSets(catalog, campaignId);
+        _plans = catalog.Prepare($"SELECT {PlanStore.ExperimentColumns} FROM experiments e WHERE e.campaign_id = ?1{chosen} ORDER BY e.id");
+        _results = catalog.Prepare(
+            $"""
+            SELECT r.experiment_id, r.status, r.group_count, r.observation_count, r.statistic, r.df1, r.df2, r.p, r.log_p, r.eta_squared, r.omega_squared
+            FROM experiments e JOIN test_results r ON r.experiment_id = e.id WHERE e.campaign_id = ?1{chosen} ORDER BY e.id, r.test_run_id
+            """);
+        foreach (SqliteStatement statement in (SqliteStatement[])[_plans, _results])
+        {
+            statement.Bind(1, campaignId);
+            if (only is not null)
+            {
+                statement.Bind(2, JsonSerializer.Serialize(only, JsonArrays.Default.Int64Array));
+            }
+        }
+
+        _more = _results.Read();
+    }
+
+    /// <summary>Key of the experiment given last.</summary>
+    public long Id { get; private set; }
+
+    /// <summary>The next experiment; null at the end. Of several results the latest stands, and none where values came in after it.</summary>
+    public ExperimentResult? Next(AmendedExperiments amended)
+    {
+        if (!_plans.Read())
+        {
+            return null;
+        }
+
+        Id = _plans.Integer(0);
+        var experiment = new ExperimentResult
+        {
+            Plan = PlanStore.Row(_plans, _sets),
+            Position = 0,
+            Status = ExperimentStatus.Planned,
+            Amendments = amended.Reasons(Id),
+        };
+        for (; _more && _results.Integer(0) == Id; _more = _results.Read())
+        {
+            experiment = amended.AwaitsTest(Id) ? experiment : WithResult(experiment, _results);
+        }
+
+        return experiment;
+    }
+
+    public void Dispose()
+    {
+        _results.Dispose();
+        _plans.Dispose();
+        _sets.Dispose();
+    }
+
+    private static ExperimentResult WithResult(ExperimentResult experiment, SqliteStatement row) => experiment with
+    {
+        Status = ExperimentStatusWords.Parse(row.Text(1)),
+        GroupCount = (int)row.Integer(2),
+        ObservationCount = (int)row.Integer(3),
+        Statistic = row.NullableReal(4),
+        Df1 = row.NullableReal(5),
+        Df2 = row.NullableReal(6),
+        P = FamilyReader.ReadP(row, 7),
+        EtaSquared = row.NullableReal(9),
+        OmegaSquared = row.NullableReal(10),
+    };
+}

@@ -1,0 +1,20 @@
+namespace Campaigns.Domain;
+
+/// <summary>A campaign in figures, without its experiments one by one.</summary>
+/// <param name="Campaign">The campaign.</param>
+/// <param name="FamilySize">Hypotheses that the correction counts.</param>
+/// <param name="TestedCount">Experiments with a result.</param>
+/// <param name="UncorrectedCount">Experiments whose own p-value is at most the level.</param>
+/// <param name="SurvivorCount">Experiments that survive the correction.</param>
+/// <param name="AmendedCount">Experiments that received values after they had been tested.</param>
+/// <param name="LastReview">The latest review; null before the first.</param>
+/// <param name="ResultsSinceReview">Experiments tested after the latest review.</param>
+public sealed record CampaignOverview(
+    Campaign Campaign,
+    int FamilySize,
+    int TestedCount,
+    int UncorrectedCount,
+    int SurvivorCount,
+    int AmendedCount,
+    ReviewHead? LastReview,
+    int ResultsSinceReview);
