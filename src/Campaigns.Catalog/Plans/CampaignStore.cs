@@ -79,8 +79,9 @@ public sealed class CampaignStore(Catalog catalog)
             throw new RefusedException(FormattableString.Invariant($"The campaign '{code}' is sealed already, since {stored.Campaign.SealedAt:yyyy-MM-dd HH:mm:ss} UTC."));
         }
 
-        IReadOnlyList<PlannedExperiment> plan = new PlanStore(catalog).Read(stored.Id);
-        if (plan.Count == 0)
+        // An exploratory campaign has data, and so experiments, and no plan to digest.
+        IReadOnlyList<PlannedExperiment> plan = stored.Campaign.IsExploratory ? [] : new PlanStore(catalog).Read(stored.Id);
+        if (plan.Count == 0 && !stored.Campaign.IsExploratory)
         {
             throw new RefusedException($"The campaign '{code}' has no experiments to seal; register them with 'campaigns plan {code} FILE', or load measurements to explore without a plan.");
         }

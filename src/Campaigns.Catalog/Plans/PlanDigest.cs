@@ -12,6 +12,8 @@ namespace Campaigns.Catalog.Plans;
 /// </remarks>
 internal static class PlanDigest
 {
+    /// <param name="campaign">The campaign.</param>
+    /// <param name="experiments">Its plan; empty for an exploratory campaign.</param>
     public static string Of(Campaign campaign, IReadOnlyList<PlannedExperiment> experiments)
     {
         using var hash = IncrementalHash.CreateHash(HashAlgorithmName.SHA256);
@@ -25,12 +27,9 @@ internal static class PlanDigest
         Add(hash, campaign.DefaultTest);
         Add(hash, campaign.DefaultFollowUp);
         Add(hash, campaign.IsExploratory ? "exploratory" : "planned");
-        if (!campaign.IsExploratory)
+        foreach (PlannedExperiment experiment in experiments)
         {
-            foreach (PlannedExperiment experiment in experiments)
-            {
-                Add(hash, experiment);
-            }
+            Add(hash, experiment);
         }
 
         return Convert.ToHexStringLower(hash.GetHashAndReset());

@@ -11,14 +11,20 @@ internal sealed class SqliteStatement : IDisposable
     private readonly SqliteConnection _connection;
     private readonly sqlite3_stmt _statement;
 
+    // A binding stays from one use to the next, so a parameter that is null again need not be bound again.
+    private readonly bool[] _isNull;
+
     public SqliteStatement(SqliteConnection connection, string sql)
     {
         _connection = connection;
         Check(sqlite3_prepare_v2(connection.Handle, sql, out _statement));
+        _isNull = new bool[sqlite3_bind_parameter_count(_statement) + 1];
+        Array.Fill(_isNull, true);
     }
 
     public SqliteStatement Bind(int parameter, long value)
     {
+        _isNull[parameter] = false;
         Check(sqlite3_bind_int64(_statement, parameter, value));
         return this;
     }
@@ -37,6 +43,7 @@ internal sealed class SqliteStatement : IDisposable
             throw new ArgumentOutOfRangeException(nameof(value), value, "Only finite numbers are stored.");
         }
 
+        _isNull[parameter] = false;
         Check(sqlite3_bind_double(_statement, parameter, given));
         return this;
     }
@@ -48,25 +55,33 @@ internal sealed class SqliteStatement : IDisposable
             return BindNull(parameter);
         }
 
+        _isNull[parameter] = false;
         Check(sqlite3_bind_text(_statement, parameter, text));
         return this;
     }
 
     public SqliteStatement BindText(int parameter, ReadOnlySpan<byte> utf8)
     {
+        _isNull[parameter] = false;
         Check(sqlite3_bind_text(_statement, parameter, utf8));
         return this;
     }
 
     public SqliteStatement BindBlob(int parameter, ReadOnlySpan<byte> blob)
     {
+        _isNull[parameter] = false;
         Check(blob.IsEmpty ? sqlite3_bind_zeroblob(_statement, parameter, 0) : sqlite3_bind_blob(_statement, parameter, blob));
         return this;
     }
 
     public SqliteStatement BindNull(int parameter)
     {
-        Check(sqlite3_bind_null(_statement, parameter));
+        if (!_isNull[parameter])
+        {
+            _isNull[parameter] = true;
+            Check(sqlite3_bind_null(_statement, parameter));
+        }
+
         return this;
     }
 
