@@ -62,7 +62,7 @@ internal static class CampaignText
         ],
         [
             [
-                Cell.Text(campaign.Code), Cell.Text(campaign.Title), Cell.Text(campaign.ErrorRate.Word()), Cell.Number(campaign.Level.Value),
+                Cell.Text(campaign.Code), Cell.Text(campaign.Title), Cell.Text(campaign.ErrorRate.Word()), Cell.Setting(campaign.Level.Value),
                 Cell.Text(campaign.Correction), Cell.Truth(campaign.IsSealed), Cell.Truth(campaign.IsExploratory),
             ],
         ]);

@@ -41,7 +41,7 @@ internal sealed class CorrectionsVerb : Verb
             CorrectionRegistry.All.Select((c, i) => new[]
             {
                 Cell.Text(c.Key), Cell.Text(c.Name), Cell.Text(CampaignText.RateWords(c.Controls)), Cell.Text(DependenceWords(c.ValidUnder)),
-                Cell.Whole(adjusted[i].Count(level.Rejects)), Cell.Number(level.Value), Cell.Whole(standing.FamilySize),
+                Cell.Whole(adjusted[i].Count(level.Rejects)), Cell.Setting(level.Value), Cell.Whole(standing.FamilySize),
                 Cell.Truth(c.Key == standing.Campaign.Correction), Cell.Text(c.Guarantee), Cell.Text(c.Source),
             }))
         {

@@ -22,7 +22,7 @@ internal sealed class ListVerb : Verb
             ],
             new CampaignStore(catalog).All().Select(overview.Read).Select(c => new[]
             {
-                Cell.Text(c.Campaign.Code), Cell.Text(c.Campaign.Title), Cell.Text(c.Campaign.ErrorRate.Word()), Cell.Number(c.Campaign.Level.Value), Cell.Text(c.Campaign.Correction),
+                Cell.Text(c.Campaign.Code), Cell.Text(c.Campaign.Title), Cell.Text(c.Campaign.ErrorRate.Word()), Cell.Setting(c.Campaign.Level.Value), Cell.Text(c.Campaign.Correction),
                 Cell.Whole(c.FamilySize), Cell.Whole(c.TestedCount), Cell.Whole(c.SurvivorCount),
                 Cell.Whole(c.LastReview?.Number ?? 0), Cell.Truth(c.Campaign.IsSealed), Cell.Truth(c.Campaign.IsExploratory),
             }))

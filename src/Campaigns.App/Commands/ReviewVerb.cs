@@ -29,7 +29,7 @@ internal sealed class ReviewVerb : Verb
             ],
             [
                 [
-                    Cell.Text(code), Cell.Whole(review.Number), Cell.Text(Words.Instant(review.At)), Cell.Text(review.Correction), Cell.Number(review.Level.Value),
+                    Cell.Text(code), Cell.Whole(review.Number), Cell.Text(Words.Instant(review.At)), Cell.Text(review.Correction), Cell.Setting(review.Level.Value),
                     Cell.Whole(review.FamilySize), Cell.Whole(review.TestedCount), Cell.Whole(review.SurvivorCount), Cell.Truth(review.IsInterim),
                 ],
             ]));

@@ -9,9 +9,9 @@ internal static class RiskTable
 {
     private static IReadOnlyList<Column> Columns { get; } =
     [
-        new("campaign", "campaign"), new("tests", "tests", true), new("level", "level", true), new("expected_false_positives", "false if none real", true),
-        new("risk_independent", "risk, independent", true), new("risk_at_least", "at least", true), new("risk_at_most", "at most", true),
-        new("uncorrected_hits", "uncorrected hits", true), new("survivors", "survivors", true), new("correction", "correction"), new("guarantee", null),
+        new("campaign", "campaign"), new("tests", "tests", true), new("level", "level", true), new("expected_false_positives", "expected false", true),
+        new("risk_independent", "risk", true), new("risk_at_least", "at least", true), new("risk_at_most", "at most", true),
+        new("uncorrected_hits", "hits", true), new("survivors", "survive", true), new("correction", "correction"), new("guarantee", null),
     ];
 
     /// <summary>A row a campaign, and for several the programme as a whole.</summary>
@@ -25,7 +25,7 @@ internal static class RiskTable
 
         var below = new List<string>
         {
-            "False if none real: false positives to expect without any correction if every null hypothesis is true (tests times level), whatever the dependence. Risk: that at least one of them is false, for independent tests, and its bounds whatever the dependence.",
+            "Expected false: false positives to expect without any correction if nothing is real (tests times level), whatever the dependence. Risk: that there is at least one, for independent tests; at least, at most: its bounds whatever the dependence. Hits: experiments whose own p is at most the level; survive: those left by the correction.",
         };
         below.AddRange(campaigns.Select(c => $"{c.Campaign.Code}: {CampaignText.Goal(c.Campaign)}. {FamilyVerdict.CorrectionOf(c.Campaign).Guarantee}"));
         if (campaigns.Count > 1)
@@ -57,7 +57,7 @@ internal static class RiskTable
         int tests = c.TestedCount;
         return
         [
-            Cell.Text(c.Campaign.Code), Cell.Whole(tests), Cell.Number(c.Campaign.Level.Value),
+            Cell.Text(c.Campaign.Code), Cell.Whole(tests), Cell.Setting(c.Campaign.Level.Value),
             Cell.Number(FamilyRisk.ExpectedFalsePositives(tests, c.Campaign.Level)), Cell.Number(FamilyRisk.AtLeastOneIfIndependent(tests, c.Campaign.Level)),
             Cell.Number(FamilyRisk.AtLeastOneLowerBound(tests, c.Campaign.Level)), Cell.Number(FamilyRisk.AtLeastOneUpperBound(tests, c.Campaign.Level)),
             Cell.Whole(c.UncorrectedCount), Cell.Whole(c.SurvivorCount), Cell.Text(c.Campaign.Correction), Cell.Text(FamilyVerdict.CorrectionOf(c.Campaign).Guarantee),

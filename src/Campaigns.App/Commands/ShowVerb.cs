@@ -44,7 +44,7 @@ internal sealed class ShowVerb : Verb
             ("title", "title", Cell.Text(campaign.Title)),
             ("purpose", "purpose", Cell.Text(campaign.Purpose)),
             ("error_rate", "holds", Cell.Text(campaign.ErrorRate.Word())),
-            ("level", "level", Cell.Number(campaign.Level.Value)),
+            ("level", "level", Cell.Setting(campaign.Level.Value)),
             ("correction", "correction", Cell.Text(campaign.Correction)),
             ("default_test", "usual test", Cell.Text(campaign.DefaultTest)),
             ("default_follow_up", "usual follow-up", Cell.Text(campaign.DefaultFollowUp)),
@@ -77,7 +77,7 @@ internal sealed class ShowVerb : Verb
         session.Host.Out.WriteLine();
         session.Print(new RowTable(
             [new("review", "review", true), new("taken_at", "taken"), new("correction", "correction"), new("level", "level", true), new("family_size", "family", true), new("tested", "tested", true), new("survivors", "survivors", true), new("interim", "interim")],
-            new ReviewStore(catalog).All(id).Select(r => (Cell[])[Cell.Whole(r.Number), Cell.Text(Words.Instant(r.At)), Cell.Text(r.Correction), Cell.Number(r.Level.Value), Cell.Whole(r.FamilySize), Cell.Whole(r.TestedCount), Cell.Whole(r.SurvivorCount), Cell.Truth(r.IsInterim)]))
+            new ReviewStore(catalog).All(id).Select(r => (Cell[])[Cell.Whole(r.Number), Cell.Text(Words.Instant(r.At)), Cell.Text(r.Correction), Cell.Setting(r.Level.Value), Cell.Whole(r.FamilySize), Cell.Whole(r.TestedCount), Cell.Whole(r.SurvivorCount), Cell.Truth(r.IsInterim)]))
         {
             WhenEmpty = "No review was taken yet.",
             Below = [.. CampaignText.Footnotes(standing.Overview), CampaignText.Caution],

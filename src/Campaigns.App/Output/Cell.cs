@@ -61,6 +61,9 @@ internal readonly struct Cell
     /// <summary>A number; one beyond the range of doubles is left out.</summary>
     public static Cell Number(double? value) => value is { } given && double.IsFinite(given) ? new Cell(CellKind.Number, given) : Empty;
 
+    /// <summary>A number that somebody chose, such as a level: people see it as it was typed, not rounded to a column's digits.</summary>
+    public static Cell Setting(double value) => new(CellKind.Number, value, NumberText.RoundTrip(value));
+
     public static Cell P(PValue? value) => value is { } given ? new Cell(CellKind.P, p: given) : Empty;
 
     public static Cell Truth(bool? value) => value is { } given ? new Cell(CellKind.Truth, given ? 1 : 0) : Empty;

@@ -163,7 +163,7 @@ internal static class TextTable
 
     private static string Text(in Cell cell) => cell.Kind switch
     {
-        CellKind.Number => NumberText.Screen(cell.AsNumber, 5),
+        CellKind.Number => cell.AsText.Length > 0 ? cell.AsText : NumberText.Screen(cell.AsNumber, 5),
         CellKind.P => NumberText.P(cell.AsP),
         CellKind.Truth => cell.AsTruth ? "yes" : "no",
         CellKind.Text => SafeText.Escape(cell.AsText),
