@@ -34,6 +34,7 @@ public sealed class CatalogContext(DbContextOptions<CatalogContext> options) : D
     public DbSet<ReviewRow> Reviews => Set<ReviewRow>();
 
     /// <summary>Makes a context on a connection that is open already and stays its owner's.</summary>
+    /// <remarks>The model that was compiled ahead (CompiledModel) is found by its attribute and used, except where migrations are made or compared.</remarks>
     /// <param name="connection">An open SQLite connection.</param>
     /// <param name="migrationsAssembly">Name of the assembly that holds the migrations; null where none are run.</param>
     public static CatalogContext On(DbConnection connection, string? migrationsAssembly = null) =>
