@@ -21,6 +21,7 @@ Every run starts with no catalog. Only ratios count: single times drift with the
 """
 import argparse
 import csv
+import multiprocessing
 import os
 import pathlib
 import shutil
@@ -129,6 +130,14 @@ class Comparison:
         return a
 
     def agree(self, folder, script):
+        """Compares the results in a process of its own: a parent that has grown would show in the peak memory of its later children."""
+        check = multiprocessing.get_context("fork").Process(target=self.check_agreement, args=(folder, script))
+        check.start()
+        check.join()
+        if check.exitcode != 0:
+            sys.exit(1)
+
+    def check_agreement(self, folder, script):
         """Both sides must have done the same job: F and p to 11 digits, and the same survivors by BH."""
         out = measure([self.program, "results", folder.name, "--format", "csv", "--catalog", self.catalog(folder.name)]).output
         ours = {r["experiment"]: r for r in csv.DictReader(out.splitlines())}
