@@ -21,6 +21,7 @@ Every run starts with no catalog. Only ratios count: single times drift with the
 """
 import argparse
 import csv
+import multiprocessing
 import os
 import pathlib
 import shutil
@@ -85,9 +86,10 @@ class Comparison:
     # -- preparing --------------------------------------------------------------------------------
 
     def publish(self):
-        for project, folder in [("src/Campaigns.App", "program"), ("tests/Campaigns.Benchmarks", "benchmarks")]:
-            measure(["dotnet", "publish", ROOT / project, "-c", "Release", "--use-current-runtime", "--self-contained", "false",
-                     "-p:PublishReadyToRun=true", "-o", self.work / folder])
+        """The program by the profile by which people install it; the benchmarks in the same way."""
+        measure(["dotnet", "publish", ROOT / "src" / "Campaigns.App", "-p:PublishProfile=installed", "-o", self.program.parent])
+        measure(["dotnet", "publish", ROOT / "tests" / "Campaigns.Benchmarks", "-c", "Release", "--use-current-runtime", "--self-contained", "false",
+                 "-p:PublishReadyToRun=true", "-o", self.benchmarks.parent])
 
     def campaign(self, size, name, *options):
         folder = self.work / name
@@ -129,6 +131,14 @@ class Comparison:
         return a
 
     def agree(self, folder, script):
+        """Compares the results in a process of its own: a parent that has grown would show in the peak memory of its later children."""
+        check = multiprocessing.get_context("fork").Process(target=self.check_agreement, args=(folder, script))
+        check.start()
+        check.join()
+        if check.exitcode != 0:
+            sys.exit(1)
+
+    def check_agreement(self, folder, script):
         """Both sides must have done the same job: F and p to 11 digits, and the same survivors by BH."""
         out = measure([self.program, "results", folder.name, "--format", "csv", "--catalog", self.catalog(folder.name)]).output
         ours = {r["experiment"]: r for r in csv.DictReader(out.splitlines())}
