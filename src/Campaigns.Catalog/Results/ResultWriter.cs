@@ -14,7 +14,25 @@ internal sealed class ResultWriter(Catalog catalog, long campaignId, long? lastL
 
     public int NotTestable { get; private set; }
 
-    public void Write(long experimentId, TestOutcome outcome)
+    /// <summary>Experiments left alone because planned values are missing.</summary>
+    public int Incomplete { get; private set; }
+
+    public void Write(TestBatch batch)
+    {
+        for (int i = 0; i < batch.Count; i++)
+        {
+            if (batch.OutcomeOf(i) is { } outcome)
+            {
+                Write(batch[i].Id, outcome);
+            }
+            else
+            {
+                Incomplete++;
+            }
+        }
+    }
+
+    private void Write(long experimentId, TestOutcome outcome)
     {
         _insert ??= Begin();
         _insert.Bind(1, experimentId).Bind(2, _runId).Bind(4, (long)outcome.GroupCount).Bind(5, (long)outcome.ObservationCount);

@@ -1,4 +1,3 @@
-using Campaigns.Catalog.Measurements;
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Providers;
 using Campaigns.Domain;
@@ -17,23 +16,24 @@ public sealed record TestRunSummary(int Tested, int NotTestable, int Incomplete,
 /// <param name="catalog">The open catalog.</param>
 public sealed class TestRunner(Catalog catalog)
 {
-    private const string Select =
-        """
-        SELECT e.id, e.code, e.group_set_id, e.groups_are_planned, e.replicates, e.test, m.load_id, m.missing_count, m.packed
-        FROM experiments e JOIN measurements m ON m.experiment_id = e.id
+    private const string Columns =
+        "e.id, e.code, e.group_set_id, e.groups_are_planned, e.replicates, e.test, m.packed";
+
+    private const string All =
+        $"SELECT {Columns} FROM experiments e JOIN measurements m ON m.experiment_id = e.id WHERE e.campaign_id = ?1 ORDER BY e.id, m.load_id";
+
+    // A cross join is SQLite's way of being told where to begin: at the few experiments that received data, not at all there are.
+    private const string WithDataAfterRun =
+        $"""
+        SELECT {Columns} FROM (SELECT DISTINCT experiment_id FROM measurements WHERE load_id > ?2) n
+        CROSS JOIN experiments e ON e.id = n.experiment_id CROSS JOIN measurements m ON m.experiment_id = e.id
+        WHERE e.campaign_id = ?1 ORDER BY e.id, m.load_id
         """;
 
-    private const string Unfiltered = Select + " WHERE e.campaign_id = ?1 ORDER BY e.id, m.load_id";
-
-    private const string WithDataAfterRun = Select +
-        """
-         WHERE e.campaign_id = ?1 AND e.id IN (SELECT experiment_id FROM measurements WHERE load_id > ?2)
-        ORDER BY e.id, m.load_id
-        """;
-
-    private const string Untested = Select +
-        """
-         WHERE e.campaign_id = ?1 AND (NOT EXISTS (SELECT 1 FROM test_results r WHERE r.experiment_id = e.id)
+    private const string Untested =
+        $"""
+        SELECT {Columns} FROM experiments e JOIN measurements m ON m.experiment_id = e.id
+        WHERE e.campaign_id = ?1 AND (NOT EXISTS (SELECT 1 FROM test_results r WHERE r.experiment_id = e.id)
             OR e.id IN (SELECT experiment_id FROM measurements WHERE load_id > ?2))
         ORDER BY e.id, m.load_id
         """;
@@ -59,7 +59,7 @@ public sealed class TestRunner(Catalog catalog)
     {
         (long? lastRunLoad, bool ranBefore) = LastRun(stored.Id);
         long? lastLoad = LastLoad(stored.Id);
-        string sql = !ranBefore ? Unfiltered : includeIncomplete ? Untested : WithDataAfterRun;
+        string sql = !ranBefore ? All : includeIncomplete ? Untested : WithDataAfterRun;
         using SqliteStatement select = catalog.Prepare(sql);
         select.Bind(1, stored.Id);
         if (ranBefore)
@@ -69,20 +69,32 @@ public sealed class TestRunner(Catalog catalog)
 
         using var sets = new GroupSets(catalog, stored.Id);
         using var results = new ResultWriter(catalog, stored.Id, lastLoad, includeIncomplete);
-        var work = new Work(sets, results, includeIncomplete);
+        using var pipeline = new TestPipeline(includeIncomplete, results.Write);
+        var plans = new PlannedTests(sets);
+        TestBatch batch = pipeline.Fresh();
         long done = 0;
         while (select.Read())
         {
-            if (work.Take(select) && (++done & 0xff) == 0)
+            if (select.Integer(0) != batch.LastId)
             {
-                cancel.ThrowIfCancellationRequested();
-                progress(new WorkProgress("testing", done, 0, "experiments"));
+                if (batch.IsFull)
+                {
+                    cancel.ThrowIfCancellationRequested();
+                    progress(new WorkProgress("testing", done += batch.Count, 0, "experiments"));
+                    pipeline.Give(batch);
+                    batch = pipeline.Fresh();
+                }
+
+                batch.Begin(plans.Of(select));
             }
+
+            batch.Add(select.Blob(6));
         }
 
-        work.Finish();
+        pipeline.Give(batch);
+        pipeline.Finish();
         cancel.ThrowIfCancellationRequested();
-        return new TestRunSummary(results.Tested, results.NotTestable, work.Incomplete, results.Tested + results.NotTestable > 0);
+        return new TestRunSummary(results.Tested, results.NotTestable, results.Incomplete, results.Tested + results.NotTestable > 0);
     }
 
     private (long? LastLoad, bool Ran) LastRun(long campaignId)
@@ -98,61 +110,22 @@ public sealed class TestRunner(Catalog catalog)
         return select.NullableInteger(0);
     }
 
-    /// <summary>Gathers the rows of one experiment after the other and tests each when its last row has come.</summary>
-    private sealed class Work(GroupSets sets, ResultWriter results, bool includeIncomplete)
+    /// <summary>Reads what the plan says of the test of an experiment.</summary>
+    private sealed class PlannedTests(GroupSets sets)
     {
-        private readonly ObservationColumns _values = new();
-        private long _experiment;
-        private long? _groupSet;
-        private bool _groupsArePlanned;
-        private long? _replicates;
         private GroupTest? _test;
-        private string _testKey = "";
-        private int[] _counts = new int[16];
+        private string _key = "";
 
-        public int Incomplete { get; private set; }
-
-        /// <summary>Takes a row; true where it began a new experiment.</summary>
-        public bool Take(SqliteStatement row)
+        public ExperimentToTest Of(SqliteStatement row)
         {
-            bool isNew = row.Integer(0) != _experiment;
-            if (isNew)
+            if (_test is null || !row.TextEquals(5, _key))
             {
-                Finish();
-                _values.Clear();
-                _experiment = row.Integer(0);
-                _groupSet = row.NullableInteger(2);
-                _groupsArePlanned = row.Integer(3) != 0;
-                _replicates = row.NullableInteger(4);
-                if (_test is null || !row.TextEquals(5, _testKey))
-                {
-                    _testKey = row.Text(5);
-                    _test = GroupTestRegistry.Find(_testKey)
-                        ?? throw new RefusedException($"The plan of experiment '{row.Text(1)}' names the test '{_testKey}', which this version of the program does not have.");
-                }
+                _key = row.Text(5);
+                _test = GroupTestRegistry.Find(_key)
+                    ?? throw new RefusedException($"The plan of experiment '{row.Text(1)}' names the test '{_key}', which this version of the program does not have.");
             }
 
-            PackedMeasurements.Read(row.Blob(8), _values);
-            return isNew;
+            return new ExperimentToTest(row.Integer(0), sets.Labels(row.NullableInteger(2)).Length, row.Integer(3) != 0, (int?)row.NullableInteger(4), _test);
         }
-
-        public void Finish()
-        {
-            if (_experiment == 0)
-            {
-                return;
-            }
-
-            int groups = sets.Labels(_groupSet).Length;
-            if (!includeIncomplete && !IsComplete(groups))
-            {
-                Incomplete++;
-                return;
-            }
-
-            results.Write(_experiment, _test!.Test(_values.Sample(groups)));
-        }
-
-        private bool IsComplete(int groups) => Completeness.IsComplete(_values.Groups, groups, _groupsArePlanned, (int?)_replicates, ref _counts);
     }
 }

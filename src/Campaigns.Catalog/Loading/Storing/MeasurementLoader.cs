@@ -32,8 +32,11 @@ public sealed class MeasurementLoader(Catalog catalog)
         return catalog.Change(() =>
         {
             StoredCampaign campaign = new CampaignStore(catalog).Get(code);
-            FileDigest digest = FileDigest.Sha256(path);
-            if (LoadedAt(campaign.Id, digest) is not null)
+            long size = SizeOf(path);
+            Task<FileDigest> digest = Task.Run(() => FileDigest.Sha256(path), cancel);
+
+            // Digesting goes on while the file is read, unless a file of just this size is here already.
+            if (HoldsFileOfSize(campaign.Id, size) && LoadedAt(campaign.Id, Result(digest)) is not null)
             {
                 return null;
             }
@@ -43,7 +46,7 @@ public sealed class MeasurementLoader(Catalog catalog)
                 throw new RefusedException($"The plan of '{code}' is not sealed: fix it before the data come, with 'campaigns seal {code}', and load again.");
             }
 
-            return new OneFile(catalog, campaign, path, digest, options, progress, cancel).Load();
+            return new OneFile(catalog, campaign, path, size, digest, options, progress, cancel).Load();
         });
     }
 
@@ -61,6 +64,22 @@ public sealed class MeasurementLoader(Catalog catalog)
         return select.Read() ? (select.Text(0), Instants.FromMicroseconds(select.Integer(1))) : null;
     }
 
+    private bool HoldsFileOfSize(long campaignId, long size)
+    {
+        using SqliteStatement any = catalog.Prepare("SELECT EXISTS (SELECT 1 FROM loads WHERE campaign_id = ?1 AND byte_count = ?2)");
+        any.Bind(1, campaignId).Bind(2, size).Read();
+        return any.Integer(0) != 0;
+    }
+
+    private static long SizeOf(string path)
+    {
+        var file = new FileInfo(path);
+        return file.Exists ? file.Length : 0;
+    }
+
+    /// <summary>The digest, with the error of reading the file as it was.</summary>
+    private static FileDigest Result(Task<FileDigest> digest) => digest.GetAwaiter().GetResult();
+
     private bool HasPlan(long campaignId)
     {
         using SqliteStatement any = catalog.Prepare("SELECT EXISTS (SELECT 1 FROM experiments WHERE campaign_id = ?1)");
@@ -69,7 +88,7 @@ public sealed class MeasurementLoader(Catalog catalog)
     }
 
     /// <summary>The loading of one file.</summary>
-    private sealed class OneFile(Catalog catalog, StoredCampaign campaign, string path, FileDigest digest, LoadOptions options, Action<WorkProgress> progress, CancellationToken cancel)
+    private sealed class OneFile(Catalog catalog, StoredCampaign campaign, string path, long size, Task<FileDigest> digesting, LoadOptions options, Action<WorkProgress> progress, CancellationToken cancel)
     {
         private readonly long _loadId = NextId(catalog);
         private readonly NameComplaints _complaints = new();
@@ -157,7 +176,8 @@ public sealed class MeasurementLoader(Catalog catalog)
                     [.. file.Problems.Sentences()]);
             }
 
-            if (new FileInfo(path).Length != digest.Size)
+            FileDigest digest = Result(digesting);
+            if (digest.Size != size || SizeOf(path) != size)
             {
                 throw new RefusedException($"The file '{path}' changed while it was read; nothing of it was loaded. Load it again when it is finished.");
             }
@@ -167,13 +187,13 @@ public sealed class MeasurementLoader(Catalog catalog)
                 new CampaignStore(catalog).MarkExploratory(campaign.Id);
             }
 
-            InsertLoad(file, sink);
+            InsertLoad(file, sink, digest);
             return new LoadSummary(
                 System.IO.Path.GetFileName(path), digest.Hex, file.RowCount, sink.MissingCount, sink.ExperimentCount,
                 sink.NewExperimentCount, sink.Amended, file.IgnoredColumns, file.RespelledNames);
         }
 
-        private void InsertLoad(MeasurementFile file, ExperimentSink sink)
+        private void InsertLoad(MeasurementFile file, ExperimentSink sink, FileDigest digest)
         {
             using SqliteStatement insert = catalog.Prepare(
                 """
@@ -185,12 +205,12 @@ public sealed class MeasurementLoader(Catalog catalog)
                 .Bind(10, sink.Amended.Count > 0 ? options.AmendmentReason : null).Run();
         }
 
-        private ExperimentSink NewSink(RowSource rows) => new(catalog, campaign, options, _loadId, digest.Size, rows.Labels, _complaints);
+        private ExperimentSink NewSink(RowSource rows) => new(catalog, campaign, options, _loadId, size, rows.Labels, _complaints);
 
         private void Report(MeasurementFile file)
         {
             cancel.ThrowIfCancellationRequested();
-            progress(new WorkProgress($"loading {file.Name}", file.Position, digest.Size, "bytes"));
+            progress(new WorkProgress($"loading {file.Name}", file.Position, size, "bytes"));
         }
 
         private void Run(string sql)

@@ -1,0 +1,81 @@
+using Campaigns.Catalog.Measurements;
+using Campaigns.Statistics.GroupTests;
+
+namespace Campaigns.Catalog.Results;
+
+/// <summary>What a test must know of an experiment besides its values.</summary>
+/// <param name="Id">Key within the catalog.</param>
+/// <param name="GroupCount">Groups of its set.</param>
+/// <param name="GroupsArePlanned">Whether the plan named them.</param>
+/// <param name="Replicates">Planned values in each group; null where the plan gives no number.</param>
+/// <param name="Test">The planned test.</param>
+internal readonly record struct ExperimentToTest(long Id, int GroupCount, bool GroupsArePlanned, int? Replicates, GroupTest Test);
+
+/// <summary>Some hundred experiments on their way from the catalog through their tests and back: packed values in, outcomes out.</summary>
+internal sealed class TestBatch
+{
+    public const int Size = 256;
+
+    private readonly List<ExperimentToTest> _experiments = new(Size);
+    private readonly List<TestOutcome?> _outcomes = new(Size);
+    private readonly List<(int Experiment, int End)> _parts = new(Size);
+    private byte[] _packed = new byte[1 << 16];
+    private int _length;
+
+    public int Count => _experiments.Count;
+
+    public bool IsFull => Count >= Size;
+
+    public long LastId => Count == 0 ? 0 : _experiments[^1].Id;
+
+    public ExperimentToTest this[int index] => _experiments[index];
+
+    /// <summary>The outcome of an experiment; null where it was left alone because planned values are missing.</summary>
+    public TestOutcome? OutcomeOf(int index) => _outcomes[index];
+
+    public void Clear()
+    {
+        _experiments.Clear();
+        _outcomes.Clear();
+        _parts.Clear();
+        _length = 0;
+    }
+
+    public void Begin(in ExperimentToTest experiment) => _experiments.Add(experiment);
+
+    /// <summary>Adds what one load brought to the experiment begun last.</summary>
+    public void Add(ReadOnlySpan<byte> packed)
+    {
+        if (_length + packed.Length > _packed.Length)
+        {
+            Array.Resize(ref _packed, Math.Max(_length + packed.Length, _packed.Length * 2));
+        }
+
+        packed.CopyTo(_packed.AsSpan(_length));
+        _length += packed.Length;
+        _parts.Add((Count - 1, _length));
+    }
+
+    /// <summary>Runs the tests.</summary>
+    /// <param name="includeIncomplete">Whether experiments short of their planned values are tested too.</param>
+    /// <param name="values">Scratch.</param>
+    public void Test(bool includeIncomplete, ObservationColumns values)
+    {
+        int[] counts = new int[16];
+        int start = 0;
+        int part = 0;
+        for (int i = 0; i < Count; i++)
+        {
+            values.Clear();
+            for (; part < _parts.Count && _parts[part].Experiment == i; part++)
+            {
+                PackedMeasurements.Read(_packed.AsSpan(start, _parts[part].End - start), values);
+                start = _parts[part].End;
+            }
+
+            ExperimentToTest e = _experiments[i];
+            bool ready = includeIncomplete || Completeness.IsComplete(values.Groups, e.GroupCount, e.GroupsArePlanned, e.Replicates, ref counts);
+            _outcomes.Add(ready ? e.Test.Test(values.Sample(e.GroupCount)) : null);
+        }
+    }
+}
