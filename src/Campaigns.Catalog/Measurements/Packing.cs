@@ -3,9 +3,10 @@ using System.Numerics;
 namespace Campaigns.Catalog.Measurements;
 
 /// <summary>Grows a buffer of packed columns: variable-length integers, and columns of small integers in as many bits as the largest needs.</summary>
-internal sealed class PackWriter
+/// <param name="capacity">Bytes to begin with.</param>
+internal sealed class PackWriter(int capacity = 1024)
 {
-    private byte[] _buffer = new byte[1024];
+    private byte[] _buffer = new byte[capacity];
     private int _length;
 
     public ReadOnlySpan<byte> Written => _buffer.AsSpan(0, _length);

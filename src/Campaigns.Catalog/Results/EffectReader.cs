@@ -31,8 +31,9 @@ public sealed class EffectReader(Catalog catalog)
         using var sets = new GroupSets(catalog, campaignId);
         using SqliteStatement select = catalog.Prepare(
             """
-            SELECT e.code, e.group_set_id, m.packed FROM experiments e JOIN measurements m ON m.experiment_id = e.id
-            WHERE e.campaign_id = ?1 AND e.code IN (SELECT value FROM json_each(?2)) ORDER BY e.id, m.load_id
+            SELECT e.code, e.group_set_id, m.packed FROM json_each(?2) wanted
+            CROSS JOIN experiments e ON e.campaign_id = ?1 AND e.code = wanted.value
+            CROSS JOIN measurements m ON m.experiment_id = e.id ORDER BY e.id, m.load_id
             """);
         select.Bind(1, campaignId).Bind(2, JsonSerializer.Serialize([.. experiments], JsonArrays.Default.StringArray));
         var gaps = new Dictionary<string, WidestGap>(StringComparer.Ordinal);

@@ -18,13 +18,14 @@ internal sealed class ExperimentRows : IDisposable
     /// <param name="only">Keys of the experiments wanted; null for all.</param>
     public ExperimentRows(Catalog catalog, long campaignId, long[]? only)
     {
-        string chosen = only is null ? "" : " AND e.id IN (SELECT value FROM json_each(?2))";
+        // Where only some are wanted, the list of them is where SQLite is told to begin.
+        string chosen = only is null ? "experiments e" : "json_each(?2) wanted CROSS JOIN experiments e ON e.id = wanted.value";
         _sets = new GroupSets(catalog, campaignId);
-        _plans = catalog.Prepare($"SELECT {PlanStore.ExperimentColumns} FROM experiments e WHERE e.campaign_id = ?1{chosen} ORDER BY e.id");
+        _plans = catalog.Prepare($"SELECT {PlanStore.ExperimentColumns} FROM {chosen} WHERE e.campaign_id = ?1 ORDER BY e.id");
         _results = catalog.Prepare(
             $"""
             SELECT r.experiment_id, r.status, r.group_count, r.observation_count, r.statistic, r.df1, r.df2, r.p, r.log_p, r.eta_squared, r.omega_squared
-            FROM experiments e JOIN test_results r ON r.experiment_id = e.id WHERE e.campaign_id = ?1{chosen} ORDER BY e.id, r.test_run_id
+            FROM {chosen} CROSS JOIN test_results r ON r.experiment_id = e.id WHERE e.campaign_id = ?1 ORDER BY e.id, r.test_run_id
             """);
         foreach (SqliteStatement statement in (SqliteStatement[])[_plans, _results])
         {

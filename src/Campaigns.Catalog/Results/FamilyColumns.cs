@@ -14,6 +14,15 @@ internal sealed class FamilyColumns
         _p = new PValue[capacity];
     }
 
+    /// <param name="experimentIds">Keys, ascending.</param>
+    /// <param name="p">One p-value for each.</param>
+    public FamilyColumns(long[] experimentIds, PValue[] p)
+    {
+        _experimentIds = experimentIds;
+        _p = p;
+        Count = p.Length;
+    }
+
     /// <summary>Experiments with a p-value.</summary>
     public int Count { get; private set; }
 
@@ -27,8 +36,8 @@ internal sealed class FamilyColumns
     {
         if (Count == _p.Length)
         {
-            Array.Resize(ref _experimentIds, Count * 2);
-            Array.Resize(ref _p, Count * 2);
+            Array.Resize(ref _experimentIds, Math.Max(16, Count * 2));
+            Array.Resize(ref _p, Math.Max(16, Count * 2));
         }
 
         _experimentIds[Count] = experimentId;

@@ -46,13 +46,7 @@ internal sealed class FamilyReader(Catalog catalog)
             return ReadAll(campaignId);
         }
 
-        (long[] ids, PValue[] p, _) = PackedReviewLines.Unpack(latest.Blob(1));
-        var columns = new FamilyColumns(ids.Length + 1);
-        for (int i = 0; i < ids.Length; i++)
-        {
-            columns.Add(ids[i], p[i]);
-        }
-
+        FamilyColumns columns = PackedReviewLines.UnpackFamily(latest.Blob(1));
         List<(long, PValue?)> newer = TestedAfter(campaignId, latest.Integer(0));
         return newer.Count == 0 ? columns : columns.With(newer);
     }

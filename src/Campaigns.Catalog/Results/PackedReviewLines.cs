@@ -8,19 +8,38 @@ namespace Campaigns.Catalog.Results;
 internal static class PackedReviewLines
 {
     private const byte Version = 1;
+    private const int BytesPerLine = 20;
 
-    public static byte[] Pack(ReadOnlySpan<long> experimentIds, ReadOnlySpan<PValue> p, ReadOnlySpan<PValue> adjusted)
+    public static PackWriter Pack(ReadOnlySpan<long> experimentIds, ReadOnlySpan<PValue> p, ReadOnlySpan<PValue> adjusted)
     {
-        var writer = new PackWriter();
+        var writer = new PackWriter((experimentIds.Length * BytesPerLine) + 64);
         writer.Byte(Version);
         writer.Unsigned((ulong)experimentIds.Length);
         writer.Column(experimentIds);
         WritePValues(writer, p);
         WritePValues(writer, adjusted);
-        return writer.Written.ToArray();
+        return writer;
     }
 
-    public static (long[] ExperimentIds, PValue[] P, PValue[] Adjusted) Unpack(ReadOnlySpan<byte> packed)
+    /// <summary>The tested experiments of a review with their p-values.</summary>
+    public static FamilyColumns UnpackFamily(ReadOnlySpan<byte> packed)
+    {
+        PackReader reader = Open(packed, out int count);
+        var ids = new long[count];
+        reader.Column(ids);
+        return new FamilyColumns(ids, ReadPValues(ref reader, count));
+    }
+
+    /// <summary>Every line of a review.</summary>
+    public static (FamilyColumns Family, PValue[] Adjusted) Unpack(ReadOnlySpan<byte> packed)
+    {
+        PackReader reader = Open(packed, out int count);
+        var ids = new long[count];
+        reader.Column(ids);
+        return (new FamilyColumns(ids, ReadPValues(ref reader, count)), ReadPValues(ref reader, count));
+    }
+
+    private static PackReader Open(ReadOnlySpan<byte> packed, out int count)
     {
         var reader = new PackReader(packed);
         if (reader.Byte() != Version)
@@ -28,10 +47,8 @@ internal static class PackedReviewLines
             throw PackReader.Damaged();
         }
 
-        int count = reader.Count(int.MaxValue / 32);
-        var ids = new long[count];
-        reader.Column(ids);
-        return (ids, ReadPValues(ref reader, count), ReadPValues(ref reader, count));
+        count = reader.Count(packed.Length);
+        return reader;
     }
 
     private static void WritePValues(PackWriter writer, ReadOnlySpan<PValue> values)

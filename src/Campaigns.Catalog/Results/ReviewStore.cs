@@ -88,7 +88,7 @@ public sealed class ReviewStore(Catalog catalog)
         insert.Bind(1, id).Bind(2, stored.Id).Bind(3, (long)number).Bind(4, catalog.Now).Bind(5, campaign.Correction)
             .Bind(6, campaign.Level.Value).Bind(7, (long)familySize).Bind(8, (long)columns.Count).Bind(9, (long)survivors)
             .Bind(10, testedOnly ? 1L : 0L).Bind(11, ProgramVersion.Current).Bind(12, lastRun)
-            .BindBlob(13, PackedReviewLines.Pack(columns.ExperimentIds, columns.P, adjusted)).Run();
+            .BindBlob(13, PackedReviewLines.Pack(columns.ExperimentIds, columns.P, adjusted).Written).Run();
         return Latest(stored.Id)!.Value.Head;
     }
 

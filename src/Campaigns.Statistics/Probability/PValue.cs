@@ -9,25 +9,26 @@ public readonly struct PValue : IEquatable<PValue>, IComparable<PValue>
 {
     private readonly double _value;
     private readonly double _log;
-    private readonly bool _given;
 
     private PValue(double value, double log)
     {
         _value = value;
         _log = log;
-        _given = true;
     }
+
+    /// <summary>No p-value is 0 with the logarithm 0, so that pair marks one that was never given.</summary>
+    private bool IsGiven => _value != 0 || _log != 0;
 
     /// <summary>p = 1: what a planned but untested hypothesis counts as.</summary>
     public static PValue One { get; } = new(1, 0);
 
     /// <summary>The p-value as a double in [0, 1]; 0 only where it lies below the smallest double (or was given as 0).</summary>
     /// <exception cref="InvalidOperationException">The value was never given.</exception>
-    public double Value => _given ? _value : throw NeverGiven();
+    public double Value => IsGiven ? _value : throw NeverGiven();
 
     /// <summary>The natural logarithm of the p-value, at most 0; negative infinity only where 0 itself was given.</summary>
     /// <exception cref="InvalidOperationException">The value was never given.</exception>
-    public double Log => _given ? _log : throw NeverGiven();
+    public double Log => IsGiven ? _log : throw NeverGiven();
 
     /// <summary>Whether the p-value is positive but below the smallest positive double, so that only its logarithm tells it.</summary>
     public bool IsBelowDoubleRange => Value == 0 && !double.IsNegativeInfinity(_log);
@@ -61,7 +62,7 @@ public readonly struct PValue : IEquatable<PValue>, IComparable<PValue>
             throw new ArgumentOutOfRangeException(nameof(log), log, "The logarithm of a p-value is at most 0.");
         }
 
-        return new PValue(value, log);
+        return new PValue(value, value == 0 && log == 0 ? throw new ArgumentException("The logarithm of 0 is not 0.", nameof(log)) : log);
     }
 
     /// <summary>Makes a p-value from its natural logarithm.</summary>
@@ -73,17 +74,17 @@ public readonly struct PValue : IEquatable<PValue>, IComparable<PValue>
     public int CompareTo(PValue other) => Log.CompareTo(other.Log);
 
     /// <inheritdoc/>
-    public bool Equals(PValue other) => _given == other._given && _value.Equals(other._value) && _log.Equals(other._log);
+    public bool Equals(PValue other) => _value.Equals(other._value) && _log.Equals(other._log);
 
     /// <inheritdoc/>
     public override bool Equals(object? obj) => obj is PValue other && Equals(other);
 
     /// <inheritdoc/>
-    public override int GetHashCode() => HashCode.Combine(_given, _log);
+    public override int GetHashCode() => HashCode.Combine(_value, _log);
 
     /// <summary>The value in invariant round-trip form, or as "exp(ln p)" below the range of doubles.</summary>
     public override string ToString() =>
-        !_given ? "(no p-value)"
+        !IsGiven ? "(no p-value)"
         : IsBelowDoubleRange ? FormattableString.Invariant($"exp({_log:R})")
         : FormattableString.Invariant($"{_value:R}");
 
