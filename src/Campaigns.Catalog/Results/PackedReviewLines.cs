@@ -28,7 +28,9 @@ internal static class PackedReviewLines
             throw PackReader.Damaged();
         }
 
-        int count = reader.Count(int.MaxValue / 32);
+
+        // Keys differ, so that each takes a bit at least: a damaged count cannot ask for more than the bytes at hand could hold.
+        int count = reader.Count(Math.Min(int.MaxValue / 64, packed.Length) * 8);
         var ids = new long[count];
         reader.Column(ids);
         return (ids, ReadPValues(ref reader, count), ReadPValues(ref reader, count));
@@ -67,9 +69,13 @@ internal static class PackedReviewLines
         for (int i = 0, log = 0; i < count; i++)
         {
             double value = BitConverter.Int64BitsToDouble(bits[i]);
-            values[i] = value < LogStoredBelow
-                ? PValue.FromValueAndLog(value, BitConverter.Int64BitsToDouble(logs[log++]))
-                : PValue.FromValue(value);
+            double known = value < LogStoredBelow ? BitConverter.Int64BitsToDouble(logs[log++]) : 0;
+            if (!(value >= 0 && value <= 1 && known <= 0))
+            {
+                throw PackReader.Damaged();
+            }
+
+            values[i] = value < LogStoredBelow ? PValue.FromValueAndLog(value, known) : PValue.FromValue(value);
         }
 
         return values;
