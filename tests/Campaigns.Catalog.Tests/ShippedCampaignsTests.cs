@@ -96,7 +96,9 @@ public sealed class ShippedCampaignsTests
 
     private static (int, int, int) Overview(TestCatalog test, string name)
     {
-        CampaignOverview overview = new OverviewReader(test.Catalog).Read(test.Campaigns.Get(name));
+        (CampaignOverview overview, IReadOnlyList<ExperimentResult> survivors) = new OverviewReader(test.Catalog).ReadSurvivors(name, int.MaxValue);
+        IEnumerable<ExperimentResult> expected = new StandingReader(test.Catalog).Read(name).Experiments.Where(e => e.Survives == true).OrderBy(e => e.P);
+        Assert.Equal(expected.Select(e => (e.Plan.Code, e.P, e.AdjustedP)), survivors.Select(e => (e.Plan.Code, e.P, e.AdjustedP)));
         return (overview.SurvivorCount, overview.TestedCount, overview.FamilySize);
     }
 

@@ -147,8 +147,9 @@ internal static class SqliteCatalogFile
         command.ExecuteNonQuery();
     }
 
+    /// <summary>SQLite itself waits for a lock as long as busy_timeout says; the time-out of the driver, which would try again until it is over, is shorter, so that nobody waits twice.</summary>
     private static string ConnectionString(string path, SqliteOpenMode mode) =>
-        new SqliteConnectionStringBuilder { DataSource = path, Mode = mode, Pooling = false, DefaultTimeout = 5 }.ToString();
+        new SqliteConnectionStringBuilder { DataSource = path, Mode = mode, Pooling = false, DefaultTimeout = 1 }.ToString();
 
     private static string ReadSchema()
     {

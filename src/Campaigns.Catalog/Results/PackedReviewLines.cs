@@ -28,7 +28,6 @@ internal static class PackedReviewLines
             throw PackReader.Damaged();
         }
 
-
         // Keys differ, so that each takes a bit at least: a damaged count cannot ask for more than the bytes at hand could hold.
         int count = reader.Count(Math.Min(int.MaxValue / 64, packed.Length) * 8);
         var ids = new long[count];

@@ -46,7 +46,8 @@ public sealed class MeasurementLoaderTests
         RefusedException refused = Assert.Throws<RefusedException>(() => catalog.LoadFile(again));
         Assert.Contains("as 'first.csv' on 2026-12-01 08:00:00 UTC", refused.Message, StringComparison.Ordinal);
         Assert.Equal(before, catalog.Dump);
-        Assert.True(new MeasurementLoader(catalog.Catalog).WasLoaded(1, FileDigest.Sha256(again)));
+        Assert.Null(new MeasurementLoader(catalog.Catalog).LoadUnlessKnown(TestCatalog.Code, again, new LoadOptions(DelimitedFileOptions.Default), _ => { }, TestContext.Current.CancellationToken));
+        Assert.Equal(before, catalog.Dump);
     }
 
     [Theory]
@@ -129,7 +130,7 @@ public sealed class MeasurementLoaderTests
         LoadSummary load = catalog.Load("Z,g10,1\nZ,g2,2\nA,x,3\n");
         Assert.Equal(2, load.NewExperimentCount);
         Assert.True(catalog.Standing.Campaign.IsExploratory);
-        Assert.Equal(["Z", "A"], catalog.Standing.Experiments.Select(e => e.Plan.Code));
+        Assert.Equal(["A", "Z"], catalog.Standing.Experiments.Select(e => e.Plan.Code));
         Assert.Equal(["g2", "g10"], catalog.Result("Z").Plan.Groups);
 
         // More of the same, before and after sealing: known labels keep their places, new ones follow.
@@ -138,7 +139,7 @@ public sealed class MeasurementLoaderTests
         catalog.Campaigns.Seal(TestCatalog.Code);
         catalog.Load("Z,g0,6\nD,y,4\n");
         Assert.Equal(["g2", "g10", "g1", "g0"], catalog.Result("Z").Plan.Groups);
-        Assert.Equal(["Z", "A", "B", "D"], catalog.Standing.Experiments.Select(e => e.Plan.Code));
+        Assert.Equal(["A", "B", "D", "Z"], catalog.Standing.Experiments.Select(e => e.Plan.Code));
     }
 
     [Fact]
