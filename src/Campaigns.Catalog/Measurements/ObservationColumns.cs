@@ -176,13 +176,14 @@ internal sealed class ObservationColumns
 
         for (int i = 0; i < Count; i++)
         {
-            _mantissas[i] *= PowersOfTen[powerOfTen];
+            TryScale(ref _mantissas[i], powerOfTen);
         }
 
         Decimals += powerOfTen;
         return true;
     }
 
+    /// <summary>Multiplies by a power of ten where the product fits; where it does not, the mantissa stays as it was.</summary>
     private static bool TryScale(ref long mantissa, int powerOfTen)
     {
         if (powerOfTen >= PowersOfTen.Length)
@@ -191,8 +192,13 @@ internal sealed class ObservationColumns
         }
 
         Int128 scaled = (Int128)mantissa * PowersOfTen[powerOfTen];
+        if (scaled >= LargestMantissa || scaled <= -LargestMantissa)
+        {
+            return false;
+        }
+
         mantissa = (long)scaled;
-        return scaled < LargestMantissa && scaled > -LargestMantissa;
+        return true;
     }
 
     private void Widen()

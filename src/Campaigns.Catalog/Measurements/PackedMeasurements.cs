@@ -13,6 +13,12 @@ internal static class PackedMeasurements
     private const byte Version = 1;
     private const int MostValues = 100_000_000;
 
+    /// <summary>More values than these take at least a bit each, so that the bytes at hand bound what a damaged count can ask for.</summary>
+    private const int MostWithoutBits = 1 << 20;
+
+    /// <summary>Far beyond the decimals of any number that can be typed.</summary>
+    private const int MostDecimals = 10_000;
+
     [Flags]
     private enum Columns : byte
     {
@@ -41,7 +47,7 @@ internal static class PackedMeasurements
             scratch[i] = values.Groups[i];
         }
 
-        writer.Column(scratch);
+        writer.Column(scratch, values.Count > MostWithoutBits ? 1 : 0);
         for (int i = 0; i < scratch.Length; i++)
         {
             scratch[i] = values.Lines[i] - i;
@@ -75,8 +81,8 @@ internal static class PackedMeasurements
         }
 
         var columns = (Columns)reader.Byte();
-        int count = reader.Count(MostValues);
-        int decimals = (int)reader.Signed();
+        int count = reader.Count(columns.HasFlag(Columns.Wide) ? packed.Length : (int)Math.Min(MostValues, MostWithoutBits + (8L * packed.Length)));
+        int decimals = reader.Signed() is >= -MostDecimals and <= MostDecimals and long read ? (int)read : throw PackReader.Damaged();
         Span<long> scratch = Scratch(count * 4);
         Span<long> groups = scratch[..count];
         Span<long> lines = scratch.Slice(count, count);
@@ -187,7 +193,7 @@ internal static class PackedMeasurements
 
     private static Names ReadNames(ref PackReader reader, int count)
     {
-        var texts = new byte[reader.Count(MostValues) + 1][];
+        var texts = new byte[reader.Count(reader.BytesLeft) + 1][];
         texts[0] = [];
         for (int i = 1; i < texts.Length; i++)
         {

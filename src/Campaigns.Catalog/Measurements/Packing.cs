@@ -44,8 +44,10 @@ internal sealed class PackWriter(int capacity = 1024)
     }
 
     /// <summary>A column: its least value, the width in bits, and every value less the least, packed. The count is known to the reader.</summary>
-    /// <remarks>O(n); the differences must fit 63 bits.</remarks>
-    public void Column(ReadOnlySpan<long> values)
+    /// <param name="values">The values.</param>
+    /// <param name="leastWidth">Bits that each takes at least; 0 lets a column of equal values cost nothing.</param>
+    /// <remarks>O(n).</remarks>
+    public void Column(ReadOnlySpan<long> values, int leastWidth = 0)
     {
         long least = values.IsEmpty ? 0 : long.MaxValue;
         long most = values.IsEmpty ? 0 : long.MinValue;
@@ -55,7 +57,7 @@ internal sealed class PackWriter(int capacity = 1024)
             most = Math.Max(most, value);
         }
 
-        int width = 64 - BitOperations.LeadingZeroCount((ulong)most - (ulong)least);
+        int width = Math.Max(leastWidth, 64 - BitOperations.LeadingZeroCount((ulong)most - (ulong)least));
         Signed(least);
         Byte((byte)width);
         Reserve((int)((((long)values.Length * width) + 7) / 8) + 8);
@@ -95,7 +97,7 @@ internal ref struct PackReader(ReadOnlySpan<byte> packed)
 {
     private ReadOnlySpan<byte> _rest = packed;
 
-    public readonly bool AtEnd => _rest.IsEmpty;
+    public readonly int BytesLeft => _rest.Length;
 
     public byte Byte() => Take(1)[0];
 

@@ -66,7 +66,8 @@ public static class CatalogUpgrade
             context.Database.Migrate();
         }
 
-        SqliteCatalogFile.Execute(connection, $"DROP TABLE IF EXISTS \"__EFMigrationsLock\"; PRAGMA journal_mode = DELETE; PRAGMA user_version = {SqliteCatalogFile.SchemaVersion};");
+        SqliteCatalogFile.Execute(connection, $"DROP TABLE IF EXISTS \"__EFMigrationsLock\"; PRAGMA user_version = {SqliteCatalogFile.SchemaVersion};");
+        Demand(connection, "PRAGMA journal_mode = DELETE", answer: "delete", copy);
         Demand(connection, "PRAGMA integrity_check", answer: "ok", copy);
         Demand(connection, "PRAGMA foreign_key_check", answer: null, copy);
     }

@@ -13,6 +13,9 @@ internal static class SqliteCatalogFile
     public const int SchemaVersion = 1;
 
     private const int HeaderLength = 100;
+    private const byte WriteAheadLog = 2;
+    private static int _drafts;
+
     private static ReadOnlySpan<byte> Signature => "SQLite format 3\0"u8;
 
     /// <summary>One connection is used by one thread at a time, so SQLite need not lock itself at every call.</summary>
@@ -44,9 +47,10 @@ internal static class SqliteCatalogFile
     /// <exception cref="CatalogException">The folder cannot be written.</exception>
     public static void Create(string path)
     {
-        string draft = $"{path}.new-{Environment.ProcessId}";
+        string draft = FormattableString.Invariant($"{path}.new-{Environment.ProcessId}-{Interlocked.Increment(ref _drafts)}");
         try
         {
+            File.Delete(draft);
             using (var connection = new SqliteConnection(ConnectionString(draft, SqliteOpenMode.ReadWriteCreate)))
             {
                 connection.Open();
@@ -69,7 +73,10 @@ internal static class SqliteCatalogFile
         }
         finally
         {
-            File.Delete(draft);
+            if (File.Exists(draft))
+            {
+                File.Delete(draft);
+            }
         }
     }
 
@@ -84,6 +91,9 @@ internal static class SqliteCatalogFile
             // One file that may be copied: a rollback journal, not a write-ahead log. EXTRA also syncs the folder, so an acknowledged action survives a power cut.
             // The journals of single statements stay in memory; they guard nothing that outlives a crash.
             Execute(connection, "PRAGMA temp_store = MEMORY; PRAGMA busy_timeout = 5000; PRAGMA foreign_keys = ON; PRAGMA synchronous = EXTRA; PRAGMA journal_mode = DELETE;");
+
+            // The first question that reads the file: a locked or damaged one is told here. On its own, because errors after the first row of a text of several statements are lost.
+            Execute(connection, "PRAGMA schema_version");
             return connection;
         }
         catch (SqliteException error)
@@ -119,6 +129,11 @@ internal static class SqliteCatalogFile
             throw new CatalogException($"The file '{path}' is no catalog of this program; it was not touched.");
         }
 
+        if (header[18] == WriteAheadLog)
+        {
+            throw new CatalogException($"The catalog '{path}' was switched to a write-ahead log by another program, so that its file alone may not be all of it; switch it back there (PRAGMA journal_mode = DELETE) and close that program. The file was not touched.");
+        }
+
         return BinaryPrimitives.ReadInt32BigEndian(header[60..]);
     }
 
@@ -132,8 +147,9 @@ internal static class SqliteCatalogFile
         command.ExecuteNonQuery();
     }
 
+    /// <summary>SQLite itself waits for a lock as long as busy_timeout says; the time-out of the driver, which would try again until it is over, is shorter, so that nobody waits twice.</summary>
     private static string ConnectionString(string path, SqliteOpenMode mode) =>
-        new SqliteConnectionStringBuilder { DataSource = path, Mode = mode, Pooling = false, DefaultTimeout = 5 }.ToString();
+        new SqliteConnectionStringBuilder { DataSource = path, Mode = mode, Pooling = false, DefaultTimeout = 1 }.ToString();
 
     private static string ReadSchema()
     {

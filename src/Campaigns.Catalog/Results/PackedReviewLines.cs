@@ -47,7 +47,8 @@ internal static class PackedReviewLines
             throw PackReader.Damaged();
         }
 
-        count = reader.Count(packed.Length);
+        // Keys differ, so that each takes a bit at least: a damaged count cannot ask for more than the bytes at hand could hold.
+        count = reader.Count(Math.Min(int.MaxValue / 64, packed.Length) * 8);
         return reader;
     }
 
@@ -84,9 +85,13 @@ internal static class PackedReviewLines
         for (int i = 0, log = 0; i < count; i++)
         {
             double value = BitConverter.Int64BitsToDouble(bits[i]);
-            values[i] = value < LogStoredBelow
-                ? PValue.FromValueAndLog(value, BitConverter.Int64BitsToDouble(logs[log++]))
-                : PValue.FromValue(value);
+            double known = value < LogStoredBelow ? BitConverter.Int64BitsToDouble(logs[log++]) : 0;
+            if (!(value >= 0 && value <= 1 && known <= 0))
+            {
+                throw PackReader.Damaged();
+            }
+
+            values[i] = value < LogStoredBelow ? PValue.FromValueAndLog(value, known) : PValue.FromValue(value);
         }
 
         return values;

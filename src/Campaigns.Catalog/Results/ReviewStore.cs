@@ -38,8 +38,11 @@ public sealed class ReviewStore(Catalog catalog)
         }
 
         int planned = families.FamilySize(stored.Id);
+
+        // An amendment takes a result away, and only a new run, another sign of change, brings one back: the count tells.
         if (Latest(stored.Id) is { } latest && latest.LastRun == lastRun && latest.Head.IsInterim == testedOnly
-            && (testedOnly || latest.Head.FamilySize == planned) && !new AmendedExperiments(catalog, stored.Id).Any)
+            && (testedOnly || latest.Head.FamilySize == planned)
+            && (!new AmendedExperiments(catalog, stored.Id).Any || latest.Head.TestedCount == families.Read(stored.Id).Count))
         {
             return new ReviewTaken(latest.Head, false);
         }

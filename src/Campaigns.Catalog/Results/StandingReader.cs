@@ -73,7 +73,7 @@ public sealed class StandingReader(Catalog catalog)
             FROM experiments e JOIN measurements m ON m.experiment_id = e.id
             WHERE e.campaign_id = ?1 AND NOT EXISTS (
                 SELECT 1 FROM test_results r JOIN test_runs t ON t.id = r.test_run_id
-                WHERE r.experiment_id = e.id AND coalesce(t.last_load_id, 0) >= m.load_id)
+                WHERE r.experiment_id = e.id AND coalesce(t.last_load_id, 0) >= (SELECT max(load_id) FROM measurements WHERE experiment_id = e.id))
             ORDER BY e.id, m.load_id
             """);
         using var sets = new GroupSets(catalog, campaignId);

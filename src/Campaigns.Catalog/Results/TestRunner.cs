@@ -33,8 +33,9 @@ public sealed class TestRunner(Catalog catalog)
     private const string Untested =
         $"""
         SELECT {Columns} FROM experiments e JOIN measurements m ON m.experiment_id = e.id
-        WHERE e.campaign_id = ?1 AND (NOT EXISTS (SELECT 1 FROM test_results r WHERE r.experiment_id = e.id)
-            OR e.id IN (SELECT experiment_id FROM measurements WHERE load_id > ?2))
+        WHERE e.campaign_id = ?1 AND NOT EXISTS (
+            SELECT 1 FROM test_results r JOIN test_runs t ON t.id = r.test_run_id
+            WHERE r.experiment_id = e.id AND coalesce(t.last_load_id, 0) >= (SELECT max(load_id) FROM measurements WHERE experiment_id = e.id))
         ORDER BY e.id, m.load_id
         """;
 
@@ -62,7 +63,7 @@ public sealed class TestRunner(Catalog catalog)
         string sql = !ranBefore ? All : includeIncomplete ? Untested : WithDataAfterRun;
         using SqliteStatement select = catalog.Prepare(sql);
         select.Bind(1, stored.Id);
-        if (ranBefore)
+        if (sql == WithDataAfterRun)
         {
             select.Bind(2, lastRunLoad ?? 0);
         }

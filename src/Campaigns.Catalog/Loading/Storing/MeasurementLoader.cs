@@ -158,11 +158,7 @@ public sealed class MeasurementLoader(Catalog catalog)
             }
 
             using ExperimentSink sink = NewSink(rows);
-            if (file.Problems.IsEmpty)
-            {
-                heap.HandTo(sink, rows.Codes, cancel);
-            }
-
+            heap.HandTo(sink, rows.Codes, cancel);
             return Finish(file, sink);
         }
 

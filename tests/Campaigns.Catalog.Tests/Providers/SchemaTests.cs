@@ -1,0 +1,191 @@
+using System.Globalization;
+using System.Reflection;
+using System.Text.RegularExpressions;
+using Campaigns.Catalog.Providers;
+using Campaigns.Catalog.Rows;
+using Campaigns.Statistics.Tests.External;
+using Microsoft.Data.Sqlite;
+using Microsoft.EntityFrameworkCore;
+using Microsoft.EntityFrameworkCore.Metadata;
+
+namespace Campaigns.Catalog.Tests.Providers;
+
+public sealed partial class SchemaTests
+{
+    private const string Migrations = "Campaigns.Migrations.Sqlite";
+
+    /// <summary>A row for every table, parents first, every column with a value of its own.</summary>
+    private static readonly (string Table, Dictionary<string, object> Cells)[] HandBuilt =
+    [
+        ("campaigns", new()
+        {
+            ["id"] = 7L, ["code"] = "c", ["title"] = "Titel µ", ["purpose"] = "why", ["error_rate"] = "familywise", ["level"] = 0.01, ["correction"] = "holm",
+            ["default_test"] = "f", ["default_follow_up"] = "dunnett", ["is_exploratory"] = 1L, ["opened_at"] = 1_764_576_000_000_001L,
+            ["sealed_at"] = 1_764_576_000_000_002L, ["plan_digest"] = "abc",
+        }),
+        ("group_sets", new() { ["id"] = 8L, ["campaign_id"] = 7L }),
+        ("groups", new() { ["group_set_id"] = 8L, ["position"] = 3L, ["label"] = "80 °C" }),
+        ("experiments", new()
+        {
+            ["id"] = 9L, ["campaign_id"] = 7L, ["code"] = "e", ["title"] = "t", ["response"] = "r", ["unit"] = "MPa", ["group_set_id"] = 8L,
+            ["groups_are_planned"] = 1L, ["control"] = "k", ["test"] = "f", ["follow_up"] = "scheffe", ["replicates"] = 6L, ["smallest_effect"] = 0.25,
+            ["assumed_sd"] = 0.5, ["weight"] = 2.0, ["family"] = "main",
+        }),
+        ("loads", new()
+        {
+            ["id"] = 10L, ["campaign_id"] = 7L, ["file_name"] = "w.csv", ["sha256"] = new string('a', 64), ["byte_count"] = 5_000_000_000L, ["row_count"] = 12L,
+            ["missing_count"] = 2L, ["experiment_count"] = 1L, ["loaded_at"] = 1_764_576_000_000_003L, ["amendment_reason"] = "late panel",
+        }),
+        ("measurements", new() { ["experiment_id"] = 9L, ["load_id"] = 10L, ["value_count"] = 10L, ["missing_count"] = 2L, ["packed"] = new byte[] { 1, 2, 255 } }),
+        ("test_runs", new()
+        {
+            ["id"] = 11L, ["campaign_id"] = 7L, ["last_load_id"] = 10L, ["ran_at"] = 1_764_576_000_000_004L, ["includes_incomplete"] = 1L, ["program_version"] = "9.8.7",
+        }),
+        ("test_results", new()
+        {
+            ["experiment_id"] = 9L, ["test_run_id"] = 11L, ["status"] = "tested", ["group_count"] = 2L, ["observation_count"] = 10L, ["statistic"] = 5.5,
+            ["df1"] = 1.5, ["df2"] = 8.25, ["p"] = 4.9406564584124654e-324, ["log_p"] = -744.4400719213812, ["eta_squared"] = 0.5, ["omega_squared"] = -0.125,
+        }),
+        ("reviews", new()
+        {
+            ["id"] = 12L, ["campaign_id"] = 7L, ["number"] = 1L, ["taken_at"] = 1_764_576_000_000_005L, ["correction"] = "holm", ["level"] = 0.01, ["family_size"] = 5L,
+            ["tested_count"] = 4L, ["survivor_count"] = 3L, ["is_interim"] = 1L, ["last_test_run_id"] = 11L, ["program_version"] = "9.8.7", ["lines"] = new byte[] { 9 },
+        }),
+    ];
+
+    [Fact]
+    public void The_embedded_schema_is_what_the_migrations_build()
+    {
+        using var folder = new TestFolder();
+        SqliteCatalogFile.Create(folder["embedded.db"]);
+        using SqliteConnection embedded = Raw.Open(folder["embedded.db"]);
+        using SqliteConnection migrated = Raw.Open(folder["migrated.db"]);
+        using (CatalogContext context = CatalogContext.On(migrated, Migrations))
+        {
+            context.Database.Migrate();
+        }
+
+        // The lock table lives only while a migration runs, or is killed; an upgrade takes it away.
+        const string master = "SELECT type, name, tbl_name, sql FROM sqlite_master WHERE name NOT LIKE '%__EFMigrationsLock%' ORDER BY type, name";
+        const string history = "SELECT * FROM __EFMigrationsHistory";
+        Assert.Equal(Raw.Rows(migrated, master), Raw.Rows(embedded, master));
+        Assert.Equal(Raw.Rows(migrated, history), Raw.Rows(embedded, history));
+        Assert.True(Raw.Rows(embedded, master).Count > 30);
+    }
+
+    [Fact]
+    public void The_model_has_no_change_without_a_migration_and_the_version_counts_the_migrations()
+    {
+        using var catalog = new TestCatalog();
+        using CatalogContext context = CatalogContext.On(catalog.Catalog.Connection, Migrations);
+        Assert.False(context.Database.HasPendingModelChanges());
+        Assert.Empty(context.Database.GetPendingMigrations());
+        int migrations = context.Database.GetMigrations().Count();
+        Assert.Equal(SqliteCatalogFile.SchemaVersion, migrations);
+        Assert.Equal(SqliteCatalogFile.SchemaVersion, Raw.Integer(catalog.Catalog.Connection, "PRAGMA user_version"));
+        Assert.Equal(SqliteCatalogFile.ApplicationId, Raw.Integer(catalog.Catalog.Connection, "PRAGMA application_id"));
+    }
+
+    [Fact]
+    public void A_connection_has_the_settings_that_keep_a_catalog_one_safe_file()
+    {
+        using var catalog = new TestCatalog();
+        SqliteConnection connection = catalog.Catalog.Connection;
+        Assert.Equal(["delete"], Raw.Rows(connection, "PRAGMA journal_mode"));
+        Assert.Equal(3, Raw.Integer(connection, "PRAGMA synchronous"));
+        Assert.Equal(1, Raw.Integer(connection, "PRAGMA foreign_keys"));
+        Assert.Equal(5000, Raw.Integer(connection, "PRAGMA busy_timeout"));
+    }
+
+    [Fact]
+    public void The_model_reads_every_column_of_every_table_as_prepared_statements_wrote_it()
+    {
+        using var catalog = new TestCatalog();
+        catalog.Catalog.Change(() =>
+        {
+            // A sealed campaign takes no more groups of experiments, so the campaign that stands sealed here is an exploratory one.
+            foreach ((string table, Dictionary<string, object> cells) in HandBuilt)
+            {
+                Insert(catalog.Catalog, table, cells);
+            }
+
+            return 0;
+        });
+
+        CatalogContext context = catalog.Catalog.Context;
+        object[] read =
+        [
+            context.Campaigns.Single(c => c.Code == "c"), context.Set<GroupSetRow>().Single(), context.Groups.Single(g => g.Label.StartsWith("80")),
+            context.Experiments.Single(e => e.Replicates == 6), context.Loads.Single(l => l.AmendmentReason != null), context.Measurements.Single(m => m.ValueCount == 10),
+            context.TestRuns.Single(r => r.IncludesIncomplete), context.TestResults.Single(r => r.P < 1e-300), context.Reviews.Single(r => r.IsInterim),
+        ];
+        for (int i = 0; i < read.Length; i++)
+        {
+            IEntityType entity = context.Model.FindEntityType(read[i].GetType())!;
+            Assert.Equal(HandBuilt[i].Table, entity.GetTableName());
+            Assert.Equal(HandBuilt[i].Cells.Keys.Order(), entity.GetProperties().Select(p => p.GetColumnName()).Order());
+            Assert.Equal(HandBuilt[i].Cells.Keys.Order(), Raw.Rows(catalog.Catalog.Connection, $"SELECT name FROM pragma_table_info('{HandBuilt[i].Table}')").Order());
+            foreach (IProperty property in entity.GetProperties())
+            {
+                object expected = HandBuilt[i].Cells[property.GetColumnName()];
+                object? actual = property.PropertyInfo!.GetValue(read[i]);
+                Assert.Equal(expected, expected is long ? Convert.ToInt64(actual, CultureInfo.InvariantCulture) : actual);
+            }
+        }
+
+        Assert.Equal(context.Model.GetEntityTypes().Count(), read.Length);
+    }
+
+    /// <summary>Statements are texts, so the compiler does not check them: each one in the source is prepared against an empty catalog.</summary>
+    [Fact]
+    public void Every_statement_in_the_source_fits_the_schema()
+    {
+        using var catalog = new TestCatalog();
+        string source = Path.Combine(ReferenceTable.Folder(), "..", "..", "src", "Campaigns.Catalog");
+        Dictionary<string, string> constants = typeof(Catalog).Assembly.GetTypes()
+            .SelectMany(t => t.GetFields(BindingFlags.Static | BindingFlags.NonPublic | BindingFlags.Public).Where(f => f.IsLiteral && f.FieldType == typeof(string)).Select(f => (t.Name, Field: f)))
+            .ToDictionary(f => $"{f.Name}.{f.Field.Name}", f => (string)f.Field.GetRawConstantValue()!);
+        List<string> statements = [.. constants.Values.Where(v => v.StartsWith("SELECT", StringComparison.Ordinal))];
+        foreach (string file in Directory.EnumerateFiles(source, "*.cs", SearchOption.AllDirectories).Where(f => !f.Contains("obj", StringComparison.Ordinal)))
+        {
+            string type = Path.GetFileNameWithoutExtension(file);
+            statements.AddRange(Literal().Matches(File.ReadAllText(file)).Select(match => Hole().Replace(match.Groups[1].Value, hole => Filled(type, hole.Groups[1].Value))));
+        }
+
+        Assert.True(statements.Count > 40, FormattableString.Invariant($"{statements.Count} statements were found."));
+        Assert.All(statements, statement =>
+        {
+            using SqliteStatement prepared = catalog.Catalog.Prepare(statement);
+        });
+
+        // A constant by its name; a local of a method adds a condition that may be left out.
+        string Filled(string type, string name) =>
+            char.IsLower(name[0]) ? "" : constants[name.Contains('.', StringComparison.Ordinal) ? name : $"{type}.{name}"];
+    }
+
+    private static void Insert(Catalog catalog, string table, Dictionary<string, object> cells)
+    {
+        string[] columns = [.. cells.Keys];
+        using SqliteStatement insert = catalog.Prepare(
+            $"INSERT INTO {table} ({string.Join(", ", columns)}) VALUES ({string.Join(", ", columns.Select((_, i) => FormattableString.Invariant($"?{i + 1}")))})");
+        for (int i = 0; i < columns.Length; i++)
+        {
+            _ = cells[columns[i]] switch
+            {
+                long integer => insert.Bind(i + 1, integer),
+                double real => insert.Bind(i + 1, real),
+                string text => insert.Bind(i + 1, text),
+                byte[] blob => insert.BindBlob(i + 1, blob),
+                _ => throw new InvalidOperationException(),
+            };
+        }
+
+        insert.Run();
+    }
+
+    [GeneratedRegex("Prepare\\(\\s*\\$?\"{1,3}\\s*((?:SELECT|INSERT|UPDATE|DELETE).*?)\"{1,3}\\s*\\)", RegexOptions.Singleline)]
+    private static partial Regex Literal();
+
+    [GeneratedRegex(@"\{([\w.]+)\}")]
+    private static partial Regex Hole();
+}

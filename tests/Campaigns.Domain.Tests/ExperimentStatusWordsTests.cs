@@ -1,0 +1,30 @@
+namespace Campaigns.Domain.Tests;
+
+public sealed class ExperimentStatusWordsTests
+{
+    /// <summary>Catalogs and scripts hold these words: they never change, and new ones are only added.</summary>
+    private static readonly string[] Frozen =
+        ["planned", "incomplete", "ready", "tested", "too-few-groups", "no-replication", "constant-response", "zero-within-variance"];
+
+    [Fact]
+    public void The_words_are_frozen_and_read_back()
+    {
+        ExperimentStatus[] all = Enum.GetValues<ExperimentStatus>();
+        Assert.Equal(Frozen, all.Select(s => s.Word()));
+        Assert.Equal(all, Frozen.Select(ExperimentStatusWords.Parse));
+        Assert.Throws<ArgumentException>(() => ExperimentStatusWords.Parse("Tested"));
+    }
+
+    [Fact]
+    public void Every_status_has_a_sentence_without_a_full_stop() =>
+        Assert.All(Enum.GetValues<ExperimentStatus>(), s => Assert.Matches("^[a-z].*[a-z]$", s.Sentence()));
+
+    [Fact]
+    public void Only_a_test_that_was_run_closes_an_experiment() => Assert.Equal(
+        [ExperimentStatus.Tested, ExperimentStatus.TooFewGroups, ExperimentStatus.NoReplication, ExperimentStatus.ConstantResponse, ExperimentStatus.ZeroWithinVariation],
+        Enum.GetValues<ExperimentStatus>().Where(s => s.WasTested()));
+
+    [Fact]
+    public void The_words_of_follow_ups_are_frozen() =>
+        Assert.Equal(["none", "tukey-kramer", "games-howell", "dunnett", "scheffe", "holm-pairs"], FollowUpKeys.All);
+}
