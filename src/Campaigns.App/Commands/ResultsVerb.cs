@@ -39,7 +39,7 @@ internal sealed class ResultsVerb : Verb
     public static Cell[] Row(ExperimentResult result) =>
     [
         Cell.Text(result.Plan.Code), Cell.Text(result.Plan.Test), Cell.Whole(result.GroupCount), Cell.Whole(result.ObservationCount),
-        Cell.Number(result.Statistic), Cell.Number(result.Df1), Cell.Number(result.Df2), Cell.P(result.P), Cell.P(result.AdjustedP),
+        Cell.Number(result.Statistic), Cell.Degrees(result.Df1), Cell.Degrees(result.Df2), Cell.P(result.P), Cell.P(result.AdjustedP),
         Cell.Truth(result.Survives), Cell.Text(result.Status.Word()),
         Cell.Number(result.P?.Log), Cell.Number(result.EtaSquared), Cell.Number(result.OmegaSquared), Cell.Text(result.Plan.Title),
         Cell.Text(string.Join("; ", result.Amendments)),

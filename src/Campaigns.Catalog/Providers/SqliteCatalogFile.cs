@@ -45,6 +45,11 @@ internal static class SqliteCatalogFile
     public static void Create(string path)
     {
         string draft = $"{path}.new-{Environment.ProcessId}";
+        if (!Directory.Exists(Path.GetDirectoryName(Path.GetFullPath(path))))
+        {
+            throw new CatalogException($"The catalog '{path}' cannot be created: its folder is not there. Make the folder, or name another with --catalog.");
+        }
+
         try
         {
             using (var connection = new SqliteConnection(ConnectionString(draft, SqliteOpenMode.ReadWriteCreate)))
