@@ -30,6 +30,9 @@ internal static class CommandLine
         () => new CompletionVerb(),
     ];
 
+    // A name that begins with "@" is a name, not a file of arguments.
+    private static readonly ParserConfiguration Parsing = new() { ResponseFileTokenReplacer = null, EnablePosixBundling = false };
+
     private static readonly Lazy<(RootCommand Root, IReadOnlyDictionary<Command, Verb> Verbs)> Tree = new(Build);
 
     /// <summary>Runs what was typed.</summary>
@@ -37,7 +40,7 @@ internal static class CommandLine
     public static int Run(string[] arguments, Host host)
     {
         (RootCommand root, IReadOnlyDictionary<Command, Verb> verbs) = Tree.Value;
-        ParseResult typed = root.Parse(arguments);
+        ParseResult typed = root.Parse(arguments, Parsing);
         bool isVerb = typed.Action is null or ParseErrorAction || typed.Action == typed.CommandResult.Command.Action;
         if (isVerb && Complaint.Of(typed, root) is { } complaint)
         {

@@ -54,6 +54,7 @@ internal static class SharedOptions
             Recursive = true,
             CustomParser = typed => TypedOptions.WordOf(typed, "--format", FormatWords) switch { "csv" => RowFormat.Csv, "json" => RowFormat.Json, _ => RowFormat.Table },
         };
+        option.CompletionSources.Clear();
         option.CompletionSources.Add(FormatWords);
         return option;
     }
