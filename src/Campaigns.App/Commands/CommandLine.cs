@@ -72,6 +72,8 @@ internal static class CommandLine
         }
 
         HelpOption help = root.Options.OfType<HelpOption>().Single();
+        help.Aliases.Clear();
+        help.Aliases.Add("-h");
         help.Action = new HelpWithExample((HelpAction)help.Action!, verbs);
         return (root, verbs);
     }

@@ -191,11 +191,10 @@ public sealed class AdjustVerbTests : IDisposable
     }
 
     [Fact]
-    public void A_file_with_a_header_alone_gives_a_header_alone()
+    public void A_file_without_rows_is_refused()
     {
-        Assert.Empty(_place.Run("adjust", Column(), "--format", "csv").Well().Csv.Rows);
-        Assert.Equal("[]\n", _place.Run("adjust", Column(), "--format", "json").Well().Out);
-        Assert.Contains("The file has no rows.", _place.Run("adjust", Column()).Well().Out, StringComparison.Ordinal);
+        _place.Run("adjust", _place.Write("p.csv", "p\n"), "--format", "csv").Refused(3, "p.csv: has no rows below its header");
+        _place.Run("adjust", _place.Write("p.csv", ""), "--format", "csv").Refused(3, "p.csv");
     }
 
     [Fact]
