@@ -10,11 +10,11 @@ namespace Campaigns.App.Commands;
 /// <summary>adjust: corrections on a column of p-values.</summary>
 internal sealed class AdjustVerb : Verb
 {
-    private readonly Argument<string> _file = new("FILE") { Description = "A table with a header and a column of p-values." };
-    private readonly Option<string> _column = new("--column") { Description = "The column of p-values.", HelpName = "NAME", DefaultValueFactory = _ => "p" };
+    private readonly Argument<string> _file = TypedOptions.NotBlank(new Argument<string>("FILE") { Description = "A table with a header and a column of p-values." });
+    private readonly Option<string> _column = TypedOptions.NotBlank(new Option<string>("--column") { Description = "The column of p-values.", HelpName = "NAME", DefaultValueFactory = _ => "p" });
     private readonly Option<string?> _corrections = new("--correction") { Description = "Keys of the corrections, separated by commas (else all).", HelpName = "KEY,KEY" };
-    private readonly Option<int?> _familySize = new("--family-size") { Description = "Hypotheses in the family, those without a p-value included (else the rows of the file).", HelpName = "N" };
-    private readonly Option<double> _level = new("--level") { Description = "The level at which survivors are counted for people.", HelpName = "NUMBER", DefaultValueFactory = _ => 0.05 };
+    private readonly Option<int?> _familySize = TypedOptions.WholeOrNone("--family-size", 1, "Hypotheses in the family, those without a p-value included (else the rows of the file).");
+    private readonly Option<double> _level = TypedOptions.Level("The level at which survivors are counted for people.");
 
     public override Command Build() => new("adjust", Describe("Corrections on a column of p-values in a file; needs no catalog. Rows without a p-value count in the family as p = 1.",
         "adjust pvalues.csv --correction holm,bh --format csv"))
@@ -24,20 +24,15 @@ internal sealed class AdjustVerb : Verb
 
     public override int Run(Session session)
     {
-        double level = session.Get(_level);
-        if (!(level > 0 && level < 1))
-        {
-            throw new UsageException("--level takes a number between 0 and 1, both excluded, for example 0.05.");
-        }
-
         Correction[] corrections = Chosen(session);
         DelimitedFileOptions reading = SharedOptions.Reading(session, []);
         DelimitedTable table = DelimitedTable.Read(session.Get(_file), reading);
+        RefuseRepeatedNames(session, table, corrections);
         (int[] rows, PValue[] p) = ReadPValues(session, table, reading.DecimalMark);
         int familySize = FamilySize(session, table.RowCount, p.Length);
         var family = RankedFamily.Of(p, familySize);
         PValue[][] adjusted = [.. corrections.Select(c => c.Adjust(family))];
-        session.Print(Table(table, corrections, rows, adjusted, familySize, new SignificanceLevel(level)));
+        session.Print(Table(table, corrections, rows, adjusted, familySize, new SignificanceLevel(session.Get(_level))));
         return ExitCode.Done;
     }
 
@@ -49,9 +44,26 @@ internal sealed class AdjustVerb : Verb
             return [.. CorrectionRegistry.All];
         }
 
-        return [.. keys.Split(',', StringSplitOptions.TrimEntries | StringSplitOptions.RemoveEmptyEntries).Distinct(StringComparer.Ordinal).Select(key =>
-            CorrectionRegistry.Find(key) ?? throw new UsageException(
-                $"There is no correction '{key}'{(Nearest.Of(key, CorrectionRegistry.All.Select(c => c.Key)) is { } near ? $"; did you mean '{near}'?" : ".")} Known are {string.Join(", ", CorrectionRegistry.All.Select(c => c.Key))}."))];
+        return [.. keys.Split(',', StringSplitOptions.TrimEntries).Distinct(StringComparer.Ordinal).Select(key => CorrectionRegistry.Find(key) ?? throw NoCorrection(key))];
+    }
+
+    private static UsageException NoCorrection(string key)
+    {
+        string[] known = [.. CorrectionRegistry.All.Select(c => c.Key)];
+        string near = Nearest.Of(key, known) is { } nearest ? $" (did you mean '{nearest}'?)" : "";
+        return new UsageException($"There is no correction '{key}'{near}; known are {string.Join(", ", known)}.");
+    }
+
+    /// <summary>Two columns of one name could not be told apart in what is written: none may be named as a correction, and for JSON none twice.</summary>
+    private static void RefuseRepeatedNames(Session session, DelimitedTable table, Correction[] corrections)
+    {
+        IEnumerable<string> taken = corrections.Select(c => c.Key);
+        string? repeated = table.Headers.FirstOrDefault(h => taken.Contains(h, StringComparer.Ordinal))
+            ?? (session.Format == RowFormat.Json ? table.Headers.GroupBy(h => h, StringComparer.Ordinal).FirstOrDefault(g => g.Count() > 1)?.Key : null);
+        if (repeated is not null)
+        {
+            throw new RefusedException($"The output would have two columns '{repeated}': rename the one of '{table.Name}', or choose other corrections with --correction.");
+        }
     }
 
     private int FamilySize(Session session, int rows, int given)
@@ -68,21 +80,12 @@ internal sealed class AdjustVerb : Verb
 
         return size >= given
             ? size
-            : throw new UsageException(FormattableString.Invariant($"--family-size {size} is smaller than the {given} p-values of the file; a family counts every hypothesis."));
+            : throw new UsageException(FormattableString.Invariant($"--family-size {size} is smaller than the {given} p-values of the file; a family counts every hypothesis, so give {given} or more."));
     }
 
     private (int[] Rows, PValue[] P) ReadPValues(Session session, DelimitedTable table, DecimalMark mark)
     {
-        int column = -1;
-        if (table.Problems.IsEmpty)
-        {
-            column = table.FindColumn(session.Get(_column));
-            if (column < 0)
-            {
-                throw new RefusedException($"The file '{table.Name}' has no column '{session.Get(_column)}'; it has {string.Join(", ", table.Headers)}. --column names another.");
-            }
-        }
-
+        int column = table.Problems.IsEmpty ? table.FindColumn(session.Get(_column)) : -1;
         var rows = new List<int>();
         var values = new List<PValue>();
         for (int row = 0; column >= 0 && row < table.RowCount; row++)
@@ -113,7 +116,7 @@ internal sealed class AdjustVerb : Verb
     {
         Column[] columns =
         [
-            .. table.Headers.Select(h => new Column(h, h)),
+            .. table.Headers.Select(h => new Column(h, SafeText.Escape(h))),
             .. corrections.Select(c => new Column(c.Key, c.Key, true)),
         ];
         return new RowTable(columns, Rows())

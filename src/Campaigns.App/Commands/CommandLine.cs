@@ -1,7 +1,7 @@
 using System.CommandLine;
 using System.CommandLine.Help;
+using System.CommandLine.Invocation;
 using Campaigns.App.Output;
-using Campaigns.Domain;
 
 namespace Campaigns.App.Commands;
 
@@ -30,22 +30,30 @@ internal static class CommandLine
         () => new CompletionVerb(),
     ];
 
+    // A name that begins with "@" is a name, not a file of arguments.
+    private static readonly ParserConfiguration Parsing = new() { ResponseFileTokenReplacer = null, EnablePosixBundling = false };
+
+    private static readonly Lazy<(RootCommand Root, IReadOnlyDictionary<Command, Verb> Verbs)> Tree = new(Build);
+
     /// <summary>Runs what was typed.</summary>
     /// <returns>The exit code of <see cref="ExitCode"/>.</returns>
     public static int Run(string[] arguments, Host host)
     {
-        RootCommand root = Build(host);
-        ParseResult typed = root.Parse(arguments);
-        if (typed.Errors.Count > 0 && typed.Action is not HelpAction)
+        (RootCommand root, IReadOnlyDictionary<Command, Verb> verbs) = Tree.Value;
+        ParseResult typed = root.Parse(arguments, Parsing);
+        bool isVerb = typed.Action is null or ParseErrorAction || typed.Action == typed.CommandResult.Command.Action;
+        if (isVerb && Complaint.Of(typed, root) is { } complaint)
         {
-            Complain(typed, root, host);
+            host.Error.WriteLine(SafeText.Escape(complaint));
             return ExitCode.WrongUsage;
         }
 
-        return Outcome.Of(host, () => typed.Invoke(new InvocationConfiguration { Output = host.Out, Error = host.Error, EnableDefaultExceptionHandler = false }));
+        return Outcome.Of(host, () => isVerb
+            ? verbs[typed.CommandResult.Command].Run(new Session(host, typed))
+            : typed.Invoke(new InvocationConfiguration { Output = host.Out, Error = host.Error, EnableDefaultExceptionHandler = false }));
     }
 
-    private static RootCommand Build(Host host)
+    private static (RootCommand Root, IReadOnlyDictionary<Command, Verb> Verbs) Build()
     {
         var root = new RootCommand("Campaigns keeps many group-comparison experiments, tests each, corrects over the whole campaign, and shows what survives.")
         {
@@ -53,34 +61,20 @@ internal static class CommandLine
             SharedOptions.Format,
             SharedOptions.Top,
         };
+        var verbs = new Dictionary<Command, Verb>();
         foreach (Func<Verb> make in Verbs)
         {
             Verb verb = make();
             Command command = verb.Build();
-            command.SetAction(typed => verb.Run(new Session(host, typed)));
+            command.SetAction(_ => ExitCode.Done);
             root.Add(command);
+            verbs.Add(command, verb);
         }
 
-        return root;
-    }
-
-    private static void Complain(ParseResult typed, RootCommand root, Host host)
-    {
-        foreach (string message in typed.Errors.Select(e => e.Message).Distinct(StringComparer.Ordinal))
-        {
-            host.Error.WriteLine(SafeText.Escape(message));
-        }
-
-        string[] words = [.. root.Subcommands.Select(c => c.Name)];
-        if (typed.CommandResult.Command == root && typed.UnmatchedTokens is [string first, ..])
-        {
-            host.Error.WriteLine(Nearest.Of(first, words) is { } near
-                ? $"Did you mean '{near}'? 'campaigns {near} --help' explains it."
-                : "'campaigns --help' lists the commands.");
-        }
-        else if (typed.CommandResult.Command != root)
-        {
-            host.Error.WriteLine($"'campaigns {typed.CommandResult.Command.Name} --help' explains the command.");
-        }
+        HelpOption help = root.Options.OfType<HelpOption>().Single();
+        help.Aliases.Clear();
+        help.Aliases.Add("-h");
+        help.Action = new HelpWithExample((HelpAction)help.Action!, verbs);
+        return (root, verbs);
     }
 }

@@ -5,9 +5,11 @@ namespace Campaigns.App.Commands;
 /// <summary>completion: a script for the shell that completes commands and options.</summary>
 internal sealed class CompletionVerb : Verb
 {
-    private readonly Argument<string> _shell = new("SHELL") { Description = "bash, zsh or fish." };
+    private static readonly string[] Shells = ["bash", "zsh", "fish"];
 
-    public CompletionVerb() => _shell.AcceptOnlyFromAmong("bash", "zsh", "fish");
+    private readonly Argument<string> _shell = new("SHELL") { Description = "bash, zsh or fish.", CustomParser = typed => TypedOptions.WordOf(typed, "SHELL", Shells)! };
+
+    public CompletionVerb() => _shell.CompletionSources.Add(Shells);
 
     public override Command Build() => new("completion", Describe("Print a script that makes the shell complete commands and options.", "completion bash > ~/.local/share/bash-completion/completions/campaigns"))
     {
@@ -21,8 +23,10 @@ internal sealed class CompletionVerb : Verb
             "bash" =>
                 """
                 _campaigns() {
-                    local IFS=$'\n'
-                    COMPREPLY=( $(campaigns "[suggest:${COMP_POINT}]" "${COMP_LINE}" 2>/dev/null) )
+                    local IFS=$'\n' word="${COMP_WORDS[COMP_CWORD]}" found
+                    found=$(campaigns "[suggest:${COMP_POINT}]" "${COMP_LINE}" 2>/dev/null)
+                    [[ $word == -* ]] || found=$(grep -v '^-' <<< "$found")
+                    COMPREPLY=( $(compgen -W "$found" -- "$word") )
                 }
                 complete -o default -F _campaigns campaigns
 
@@ -32,7 +36,7 @@ internal sealed class CompletionVerb : Verb
                 #compdef campaigns
                 _campaigns() {
                     local -a words_found
-                    words_found=("${(@f)$(campaigns "[suggest:${#BUFFER}]" "${BUFFER}" 2>/dev/null)}")
+                    words_found=("${(@f)$(campaigns "[suggest:${CURSOR}]" "${BUFFER}" 2>/dev/null)}")
                     compadd -a words_found
                     _files
                 }
@@ -41,7 +45,7 @@ internal sealed class CompletionVerb : Verb
                 """,
             _ =>
                 """
-                complete -c campaigns -a '(campaigns "[suggest:"(commandline -C)"]" (commandline -cp) 2>/dev/null)'
+                complete -c campaigns -a '(campaigns "[suggest:"(commandline -C)"]" "$(commandline -p)" 2>/dev/null)'
 
                 """,
         });

@@ -35,8 +35,8 @@ internal sealed class CorrectionsVerb : Verb
         SignificanceLevel level = standing.Campaign.Level;
         return new RowTable(
             [
-                new("correction", "key"), new("name", "name"), new("controls", "holds"), new("valid_under", "under"), new("survivors", "survivors", true),
-                new("level", "level", true), new("family_size", "family", true), new("sealed", "sealed"), new("guarantee", null), new("source", null),
+                new("correction", "key"), new("name", "name"), new("controls", "holds", GivesWay: 1), new("valid_under", "under", GivesWay: 1), new("survivors", "survivors", true),
+                new("level", "level", true, 2), new("family_size", "family", true, 2), new("sealed", "sealed"), new("guarantee", null), new("source", null),
             ],
             CorrectionRegistry.All.Select((c, i) => new[]
             {

@@ -42,9 +42,9 @@ internal static class ExperimentShow
         if (detail.Variation is { } variation)
         {
             session.Print(new RowTable(VariationColumns, VariationRows(variation, result)));
+            session.Host.Out.WriteLine();
         }
 
-        session.Host.Out.WriteLine();
         TextTable.Sentences(session.Host, Conclusion(standing, detail));
     }
 
@@ -84,7 +84,11 @@ internal static class ExperimentShow
             }
         }
 
-        yield return FormattableString.Invariant($"Intervals: {100 * detail.Confidence:0.#} % for each mean alone, from the group's own standard deviation and Student's t.");
+        if (detail.Groups.Any(g => g.Summary.Lower is not null))
+        {
+            yield return FormattableString.Invariant($"Intervals: {100 * detail.Confidence:0.#} % for each mean alone, from the group's own standard deviation and Student's t.");
+        }
+
         foreach (string line in CampaignText.Footnotes(standing.Overview))
         {
             yield return line;
@@ -100,7 +104,7 @@ internal static class ExperimentShow
         (string Name, Cell Value)[] experiment =
         [
             ("experiment", Cell.Text(r.Plan.Code)), ("title", Cell.Text(r.Plan.Title)), ("response", Cell.Text(r.Plan.Response)), ("unit", Cell.Text(r.Plan.Unit)),
-            ("status", Cell.Text(r.Status.Word())), ("test", Cell.Text(r.Plan.Test)), ("statistic", Cell.Number(r.Statistic)), ("df1", Cell.Number(r.Df1)), ("df2", Cell.Number(r.Df2)),
+            ("status", Cell.Text(r.Status.Word())), ("test", Cell.Text(r.Plan.Test)), ("statistic", Cell.Number(r.Statistic)), ("df1", Cell.Degrees(r.Df1)), ("df2", Cell.Degrees(r.Df2)),
             ("p", Cell.P(r.P)), ("adjusted_p", Cell.P(r.AdjustedP)), ("survives", Cell.Truth(r.Survives)),
             ("between_sum_of_squares", Cell.Number(v?.Between.SumOfSquares)), ("within_sum_of_squares", Cell.Number(v?.Within.SumOfSquares)), ("total_sum_of_squares", Cell.Number(v?.Total.SumOfSquares)),
             ("between_mean_square", Cell.Number(v?.Between.MeanSquare)), ("within_mean_square", Cell.Number(v?.Within.MeanSquare)),

@@ -10,7 +10,7 @@ namespace Campaigns.App.Commands;
 internal sealed class ExportVerb : Verb
 {
     private readonly Argument<string> _code = SharedOptions.Code();
-    private readonly Option<string> _out = new("--out") { Description = "A folder that does not exist yet, or is empty.", HelpName = "FOLDER", Required = true };
+    private readonly Option<string> _out = TypedOptions.NotBlank(new Option<string>("--out") { Description = "A folder that does not exist yet, or is empty.", HelpName = "FOLDER", Required = true });
 
     public override Command Build() => new("export", Describe("Write campaign, plan, measurements and results as tidy files; the folder can be run again with 'campaigns run'.",
         "export PRIMERS --out primers-export"))

@@ -8,8 +8,8 @@ namespace Campaigns.App.Commands;
 internal sealed class LoadVerb : Verb
 {
     private readonly Argument<string> _code = SharedOptions.Code();
-    private readonly Argument<string[]> _files = new("FILE") { Description = "Measurement files with the columns experiment, group, value, and where recorded specimen, block, order.", Arity = ArgumentArity.OneOrMore };
-    private readonly Option<string?> _amend = new("--amend") { Description = "Why values are added to experiments that were tested already; recorded and shown.", HelpName = "REASON" };
+    private readonly Argument<string[]> _files = TypedOptions.NotBlank(new Argument<string[]>("FILE") { Description = "Measurement files with the columns experiment, group, value, and where recorded specimen, block, order.", Arity = ArgumentArity.OneOrMore });
+    private readonly Option<string?> _amend = TypedOptions.NotBlank(new Option<string?>("--amend") { Description = "Why values are added to experiments that were tested already; recorded and shown.", HelpName = "REASON" });
 
     public override Command Build() => new("load", Describe("Load measurement files, each whole or not at all; the same file is never loaded twice.",
         "load PRIMERS week-01.csv week-02.csv"))
@@ -19,13 +19,7 @@ internal sealed class LoadVerb : Verb
 
     public override int Run(Session session)
     {
-        string? reason = session.Get(_amend);
-        if (reason is not null && string.IsNullOrWhiteSpace(reason))
-        {
-            throw new UsageException("--amend needs the reason in words.");
-        }
-
-        var options = new LoadOptions(SharedOptions.Reading(session, MeasurementFile.ColumnNames), reason?.Trim());
+        var options = new LoadOptions(SharedOptions.Reading(session, MeasurementFile.ColumnNames), session.Typed.GetValue(_amend)?.Trim());
         using Catalog.Catalog catalog = session.OpenCatalog();
         var rows = new List<Cell[]>();
         try
@@ -37,8 +31,11 @@ internal sealed class LoadVerb : Verb
         }
         finally
         {
-            // Files before a refused one stay loaded, and a script must hear of them.
-            session.PrintForScripts(new RowTable(Columns, rows));
+            // Files before a refused one stay loaded, and a script must hear of them; where none was, its output stays empty.
+            if (rows.Count > 0)
+            {
+                session.PrintForScripts(new RowTable(Columns, rows));
+            }
         }
 
         return ExitCode.Done;

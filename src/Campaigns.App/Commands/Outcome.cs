@@ -9,6 +9,9 @@ namespace Campaigns.App.Commands;
 /// <summary>Turns what a command throws into a sentence and an exit code; nobody ever sees a stack trace.</summary>
 internal static class Outcome
 {
+    private const int Busy = 5;
+    private const int Locked = 6;
+
     public static int Of(Host host, Func<int> work)
     {
         try
@@ -33,9 +36,11 @@ internal static class Outcome
         {
             return Fail(host, ExitCode.NoCatalog, error.Message);
         }
-        catch (SqliteException error)
+        catch (Exception error) when (error.GetBaseException() is SqliteException beneath)
         {
-            return Fail(host, ExitCode.NoCatalog, $"The catalog cannot be used: {error.Message}");
+            return Fail(host, ExitCode.NoCatalog, beneath.SqliteErrorCode is Busy or Locked
+                ? "The catalog is locked by another program; wait until that one is done, or close it, and try again."
+                : $"The catalog cannot be used: {beneath.Message}");
         }
         catch (OperationCanceledException)
         {
@@ -44,6 +49,10 @@ internal static class Outcome
         catch (IOException error) when (IsClosedPipe(error))
         {
             return ExitCode.Done;
+        }
+        catch (Exception error) when (error is IOException or UnauthorizedAccessException)
+        {
+            return Fail(host, ExitCode.OurFault, $"Reading or writing failed: {error.Message.TrimEnd('.')}; check the disk, and that you may use the file.");
         }
 #pragma warning disable CA1031 // The one catch-all of the program: a fault of ours ends in a sentence, too.
         catch (Exception error)

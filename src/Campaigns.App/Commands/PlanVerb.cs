@@ -10,7 +10,7 @@ namespace Campaigns.App.Commands;
 internal sealed class PlanVerb : Verb
 {
     private readonly Argument<string> _code = SharedOptions.Code();
-    private readonly Argument<string> _file = new("FILE") { Description = "A plan file: one row an experiment; only the column experiment is required." };
+    private readonly Argument<string> _file = TypedOptions.NotBlank(new Argument<string>("FILE") { Description = "A plan file: one row an experiment; only the column experiment is required." });
 
     public override Command Build() => new("plan", Describe("Register experiments from a plan file, or change registered ones, before sealing.",
         "plan PRIMERS plan.csv"))

@@ -30,16 +30,16 @@ internal sealed class ResultsVerb : Verb
 
     public static IReadOnlyList<Column> Columns { get; } =
     [
-        new("experiment", "experiment"), new("test", "test"), new("groups", "groups", true), new("observations", "values", true),
-        new("statistic", "statistic", true), new("df1", "df1", true), new("df2", "df2", true), new("p", "p", true), new("adjusted_p", "adjusted p", true),
-        new("survives", "survives"), new("status", "status"),
-        new("ln_p", null, true), new("eta_squared", "eta squared", true), new("omega_squared", null, true), new("title", "title"), new("amendments", null),
+        new("experiment", "experiment"), new("test", "test", GivesWay: 2), new("groups", "groups", true, 2), new("observations", "values", true, 2),
+        new("statistic", "statistic", true, 1), new("df1", "df1", true, 1), new("df2", "df2", true, 1), new("p", "p", true), new("adjusted_p", "adjusted p", true),
+        new("survives", "survives"), new("status", "status", GivesWay: 1),
+        new("ln_p", null, true), new("eta_squared", "eta squared", true, 4), new("omega_squared", null, true), new("title", "title", GivesWay: 3), new("amendments", null),
     ];
 
     public static Cell[] Row(ExperimentResult result) =>
     [
         Cell.Text(result.Plan.Code), Cell.Text(result.Plan.Test), Cell.Whole(result.GroupCount), Cell.Whole(result.ObservationCount),
-        Cell.Number(result.Statistic), Cell.Number(result.Df1), Cell.Number(result.Df2), Cell.P(result.P), Cell.P(result.AdjustedP),
+        Cell.Number(result.Statistic), Cell.Degrees(result.Df1), Cell.Degrees(result.Df2), Cell.P(result.P), Cell.P(result.AdjustedP),
         Cell.Truth(result.Survives), Cell.Text(result.Status.Word()),
         Cell.Number(result.P?.Log), Cell.Number(result.EtaSquared), Cell.Number(result.OmegaSquared), Cell.Text(result.Plan.Title),
         Cell.Text(string.Join("; ", result.Amendments)),

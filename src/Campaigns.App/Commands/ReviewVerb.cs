@@ -9,8 +9,8 @@ namespace Campaigns.App.Commands;
 internal sealed class ReviewVerb : Verb
 {
     private readonly Argument<string> _code = SharedOptions.Code();
-    private readonly Option<string?> _family = SharedOptions.WithValues(
-        new Option<string?>("--family") { Description = "Count every planned experiment, or tested ones alone (the review is then marked as interim).", HelpName = "planned|tested" }, "planned", "tested");
+    private readonly Option<string?> _family = TypedOptions.Word(
+        "--family", "Count every planned experiment (the default), or tested ones alone (the review is then marked as interim).", "planned|tested", "planned", "tested");
 
     public override Command Build() => new("review", Describe("Apply the sealed correction to the family and store the review.", "review PRIMERS"))
     {

@@ -1,4 +1,5 @@
 using System.CommandLine;
+using Campaigns.App.Dashboard.Canvas;
 using Campaigns.App.Output;
 using Campaigns.Catalog.Loading;
 using Campaigns.Domain;
@@ -40,7 +41,7 @@ internal sealed class Session(Host host, ParseResult typed)
     public void Say(string sentence)
     {
         TextWriter writer = Format == RowFormat.Table ? Host.Out : Host.Error;
-        foreach (string line in TextTable.Wrap(SafeText.Escape(sentence), Host.Width))
+        foreach (string line in CellText.Wrap(sentence, Host.Width))
         {
             writer.WriteLine(line);
         }

@@ -7,34 +7,23 @@ namespace Campaigns.App.Commands;
 /// <summary>Options and arguments that several commands share.</summary>
 internal static class SharedOptions
 {
-    public static Option<string?> Catalog { get; } = new("--catalog")
+    private static readonly string[] FormatWords = ["table", "csv", "json"];
+
+    public static Option<string?> Catalog { get; } = TypedOptions.NotBlank(new Option<string?>("--catalog")
     {
         Description = "The catalog's file (else CAMPAIGNS_CATALOG, else campaigns.db here).",
         HelpName = "FILE",
         Recursive = true,
-    };
+    });
 
-    public static Option<RowFormat> Format { get; } = new("--format")
-    {
-        Description = "How rows are printed: table for people, csv or json for scripts.",
-        HelpName = "table|csv|json",
-        Recursive = true,
-        DefaultValueFactory = _ => RowFormat.Table,
-    };
+    public static Option<RowFormat> Format { get; } = NewFormat();
 
-    public static Option<int> Top { get; } = new("--top")
-    {
-        Description = "Rows that a table shows; 0 shows all. Files get all in any case.",
-        HelpName = "N",
-        Recursive = true,
-        DefaultValueFactory = _ => TextTable.UsualRows,
-    };
+    public static Option<int> Top { get; } = NewTop();
 
-    public static Option<string?> DecimalMark { get; } = WithValues(
-        new Option<string?>("--decimal") { Description = "The decimal mark of the file's numbers.", HelpName = "point|comma" }, "point", "comma");
+    public static Option<string?> DecimalMark { get; } = TypedOptions.Word("--decimal", "The decimal mark of the file's numbers (else point).", "point|comma", "point", "comma");
 
-    public static Option<string?> Separator { get; } = WithValues(
-        new Option<string?>("--separator") { Description = "What parts the file's columns (else found from its first line).", HelpName = "comma|semicolon|tab" }, "comma", "semicolon", "tab");
+    public static Option<string?> Separator { get; } = TypedOptions.Word(
+        "--separator", "What parts the file's columns (else found from its first line).", "comma|semicolon|tab", "comma", "semicolon", "tab");
 
     public static Option<string?> Columns { get; } = new("--columns")
     {
@@ -42,7 +31,7 @@ internal static class SharedOptions
         HelpName = "NAME=HEADER,...",
     };
 
-    public static Argument<string> Code() => new("CODE") { Description = "The campaign." };
+    public static Argument<string> Code() => TypedOptions.NotBlank(new Argument<string>("CODE") { Description = "The campaign." });
 
     /// <summary>How a file of measurements is read.</summary>
     public static DelimitedFileOptions Reading(Session session, IReadOnlyList<string> ourNames)
@@ -56,10 +45,24 @@ internal static class SharedOptions
         };
     }
 
-    /// <summary>An option that takes one of a few words.</summary>
-    public static Option<string?> WithValues(Option<string?> option, params string[] words)
+    private static Option<RowFormat> NewFormat()
     {
-        option.AcceptOnlyFromAmong(words);
+        var option = new Option<RowFormat>("--format")
+        {
+            Description = "How rows are printed: table for people (the default), csv or json for scripts.",
+            HelpName = "table|csv|json",
+            Recursive = true,
+            CustomParser = typed => TypedOptions.WordOf(typed, "--format", FormatWords) switch { "csv" => RowFormat.Csv, "json" => RowFormat.Json, _ => RowFormat.Table },
+        };
+        option.CompletionSources.Clear();
+        option.CompletionSources.Add(FormatWords);
+        return option;
+    }
+
+    private static Option<int> NewTop()
+    {
+        Option<int> option = TypedOptions.Whole("--top", 0, "Rows that a table shows; 0 shows all. Files get all in any case.", TextTable.UsualRows);
+        option.Recursive = true;
         return option;
     }
 
@@ -69,7 +72,7 @@ internal static class SharedOptions
         {
             return ColumnMap.Parse(columns, ourNames);
         }
-        catch (Exception error) when (error is FormatException or ArgumentException)
+        catch (LoadingException error)
         {
             throw new UsageException($"--columns: {error.Message}");
         }

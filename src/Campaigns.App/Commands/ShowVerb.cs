@@ -1,4 +1,5 @@
 using System.CommandLine;
+using Campaigns.App.Dashboard.Canvas;
 using Campaigns.App.Output;
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Results;
@@ -66,7 +67,11 @@ internal sealed class ShowVerb : Verb
             return;
         }
 
-        session.Print(new RowTable([new("fact", "fact"), new("value", "value")], facts.Where(f => f.Value.Kind != CellKind.Empty).Select(f => (Cell[])[Cell.Text(f.Label), f.Value])));
+        foreach ((_, string label, Cell value) in facts.Where(f => f.Value.Kind != CellKind.Empty))
+        {
+            WriteFact(session.Host, label, TextTable.Text(value));
+        }
+
         session.Host.Out.WriteLine();
         session.Print(new RowTable(
             [new("file", "file"), new("rows", "rows", true), new("missing", "missing", true), new("loaded_at", "loaded"), new("sha256", "sha256"), new("amendment", "amendment")],
@@ -82,5 +87,16 @@ internal sealed class ShowVerb : Verb
             WhenEmpty = "No review was taken yet.",
             Below = [.. CampaignText.Footnotes(standing.Overview), CampaignText.Caution],
         });
+    }
+
+    /// <summary>A label, and beside it the value, wrapped: a purpose may be long, and nothing of it is cut.</summary>
+    private static void WriteFact(Host host, string label, string value)
+    {
+        const int indent = 17;
+        foreach (string line in CellText.Wrap(value, host.Width - indent))
+        {
+            host.Out.WriteLine(label.PadRight(indent) + line);
+            label = "";
+        }
     }
 }

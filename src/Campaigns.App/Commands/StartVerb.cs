@@ -13,19 +13,15 @@ internal sealed class StartVerb : Verb
     private readonly Argument<string> _code = new("CODE") { Description = "A short name: letters, digits, hyphen, underscore, point." };
     private readonly Option<string> _title = new("--title") { Description = "One line for people.", HelpName = "TEXT", DefaultValueFactory = _ => "" };
     private readonly Option<string> _purpose = new("--purpose") { Description = "Why the campaign is run.", HelpName = "TEXT", DefaultValueFactory = _ => "" };
-    private readonly Option<string?> _errorRate = SharedOptions.WithValues(
-        new Option<string?>("--error-rate") { Description = "What is held at the level: the risk of any false survivor, or the share of false ones.", HelpName = "familywise|false-discovery" },
-        [.. ErrorRateWords.All]);
-    private readonly Option<double> _level = new("--level") { Description = "The level, between 0 and 1.", HelpName = "NUMBER", DefaultValueFactory = _ => 0.05 };
-    private readonly Option<string?> _correction = SharedOptions.WithValues(
-        new Option<string?>("--correction") { Description = "The correction (else holm for familywise, bh for false discovery).", HelpName = "KEY" },
-        [.. CorrectionRegistry.All.Select(c => c.Key)]);
-    private readonly Option<string?> _test = SharedOptions.WithValues(
-        new Option<string?>("--test") { Description = "The test of experiments whose plan names none.", HelpName = "KEY" },
-        [.. GroupTestRegistry.All.Select(t => t.Key)]);
-    private readonly Option<string?> _followUp = SharedOptions.WithValues(
-        new Option<string?>("--follow-up") { Description = "The comparisons of experiments whose plan names none.", HelpName = "KEY" },
-        [.. FollowUpKeys.All]);
+    private readonly Option<string?> _errorRate = TypedOptions.Word(
+        "--error-rate", "What is held at the level: the risk of any false survivor, or the share of false ones (the default).", "familywise|false-discovery", [.. ErrorRateWords.All]);
+    private readonly Option<double> _level = TypedOptions.Level("The level, between 0 and 1.");
+    private readonly Option<string?> _correction = TypedOptions.Word(
+        "--correction", "The correction (else holm for familywise, bh for false discovery).", "KEY", [.. CorrectionRegistry.All.Select(c => c.Key)]);
+    private readonly Option<string?> _test = TypedOptions.Word(
+        "--test", "The test of experiments whose plan names none (else f).", "KEY", [.. GroupTestRegistry.All.Select(t => t.Key)]);
+    private readonly Option<string?> _followUp = TypedOptions.Word(
+        "--follow-up", "The comparisons of experiments whose plan names none (else none).", "KEY", [.. FollowUpKeys.All]);
 
     public override Command Build() => new("start", Describe("Open a campaign, with its error rate, level and correction.",
         "start PRIMERS --title \"Primer screen\" --error-rate false-discovery --level 0.05 --correction bh"))
@@ -35,12 +31,6 @@ internal sealed class StartVerb : Verb
 
     public override int Run(Session session)
     {
-        double level = session.Get(_level);
-        if (!(level > 0 && level < 1))
-        {
-            throw new UsageException("--level takes a number between 0 and 1, both excluded, for example 0.05.");
-        }
-
         string code = session.Get(_code);
         CampaignRules.CheckCode(code);
         ErrorRate rate = ErrorRateWords.Parse(session.Get(_errorRate) ?? "false-discovery")!.Value;
@@ -51,7 +41,7 @@ internal sealed class StartVerb : Verb
             Title = session.Get(_title),
             Purpose = session.Get(_purpose),
             ErrorRate = rate,
-            Level = new SignificanceLevel(level),
+            Level = new SignificanceLevel(session.Get(_level)),
             Correction = session.Get(_correction) ?? CampaignRules.UsualCorrection(rate),
             DefaultTest = session.Get(_test) ?? "f",
             DefaultFollowUp = session.Get(_followUp) ?? "none",

@@ -5,6 +5,9 @@ namespace Campaigns.App.Commands;
 /// <summary>One command: what can be typed, and what is then done. A new one is a file, and a line in <see cref="CommandLine"/>.</summary>
 internal abstract class Verb
 {
+    /// <summary>A line that shows how the command is typed, for its help text; known once it is built.</summary>
+    public string Example { get; private set; } = "";
+
     /// <summary>The command with its arguments and options, described for the help text.</summary>
     public abstract Command Build();
 
@@ -12,6 +15,11 @@ internal abstract class Verb
     /// <returns>An exit code.</returns>
     public abstract int Run(Session session);
 
-    /// <summary>The description of a command, with an example.</summary>
-    protected static string Describe(string what, string example) => $"{what}\n\nExample:\n  campaigns {example}";
+    /// <summary>Takes the description of the command and an example of it.</summary>
+    /// <returns>The description.</returns>
+    protected string Describe(string what, string example)
+    {
+        Example = $"campaigns {example}";
+        return what;
+    }
 }

@@ -64,6 +64,9 @@ internal readonly struct Cell
     /// <summary>A number that somebody chose, such as a level: people see it as it was typed, not rounded to a column's digits.</summary>
     public static Cell Setting(double value) => new(CellKind.Number, value, NumberText.RoundTrip(value));
 
+    /// <summary>Degrees of freedom: whole ones without decimals.</summary>
+    public static Cell Degrees(double? value) => value is { } given && double.IsInteger(given) ? Setting(given) : Number(value);
+
     public static Cell P(PValue? value) => value is { } given ? new Cell(CellKind.P, p: given) : Empty;
 
     public static Cell Truth(bool? value) => value is { } given ? new Cell(CellKind.Truth, given ? 1 : 0) : Empty;

@@ -1,5 +1,3 @@
-using Spectre.Console;
-
 namespace Campaigns.App.Output;
 
 /// <summary>The world around one run of the program: streams, clock, environment, and the wish to stop.</summary>
@@ -26,26 +24,14 @@ internal sealed class Host
     /// <summary>Columns of text that fit a line.</summary>
     public int Width { get; init; } = 100;
 
+    /// <summary>Whether standard output may be styled: where people watch it, on a terminal that can, and NO_COLOR is not set.</summary>
+    public bool OutIsStyled => OutIsTerminal && string.IsNullOrEmpty(Variable("NO_COLOR")) && Variable("TERM") != "dumb";
+
     /// <summary>Asks long work to stop.</summary>
     public CancellationToken Cancel { get; init; }
 
     /// <summary>Writes a notice: something that people should know and that changes no result.</summary>
     public void Notice(string sentence) => Error.WriteLine(SafeText.Escape(sentence));
-
-    /// <summary>A console that writes to a stream and colours only where people watch and NO_COLOR is not set.</summary>
-    public IAnsiConsole NewConsole(TextWriter writer, bool isTerminal)
-    {
-        bool colour = isTerminal && string.IsNullOrEmpty(Variable("NO_COLOR")) && Variable("TERM") != "dumb";
-        IAnsiConsole console = AnsiConsole.Create(new AnsiConsoleSettings
-        {
-            Out = new AnsiConsoleOutput(writer),
-            Ansi = isTerminal && Variable("TERM") != "dumb" ? AnsiSupport.Yes : AnsiSupport.No,
-            ColorSystem = colour ? ColorSystemSupport.EightBit : ColorSystemSupport.NoColors,
-            Interactive = InteractionSupport.No,
-        });
-        console.Profile.Width = Width;
-        return console;
-    }
 
     /// <summary>The host of a real process.</summary>
     public static Host OfProcess(CancellationToken cancel)

@@ -4,7 +4,8 @@ namespace Campaigns.App.Output;
 /// <param name="Name">Name in files; frozen from release to release.</param>
 /// <param name="Heading">Heading for people; null where the column is for scripts alone.</param>
 /// <param name="IsNumeric">Whether it is set to the right.</param>
-internal sealed record Column(string Name, string? Heading, bool IsNumeric = false);
+/// <param name="GivesWay">Where a line has no room for all columns, those with the greatest number go first; among equals the last.</param>
+internal sealed record Column(string Name, string? Heading, bool IsNumeric = false, int GivesWay = 0);
 
 /// <summary>Rows to print, in whichever format was asked for.</summary>
 /// <param name="Columns">The columns, in order.</param>

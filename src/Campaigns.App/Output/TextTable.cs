@@ -1,4 +1,5 @@
-using Spectre.Console;
+using System.Text;
+using Campaigns.App.Dashboard.Canvas;
 
 namespace Campaigns.App.Output;
 
@@ -14,21 +15,20 @@ internal static class TextTable
     /// <param name="mostRows">Rows to show; 0 for all.</param>
     public static void Write(RowTable table, Host host, int mostRows)
     {
-        IAnsiConsole console = host.NewConsole(host.Out, host.OutIsTerminal);
         Sentences(host, table.Above);
         List<Cell[]> rows = Take(table.Rows, mostRows, out long left);
         if (rows.Count == 0)
         {
-            host.Out.WriteLine(table.WhenEmpty);
+            Sentences(host, [table.WhenEmpty]);
         }
         else
         {
-            console.Write(Build(table, rows, host.Width));
+            WriteRows(host, table.Columns, [.. rows.Select(row => row.Select(cell => Text(cell)).ToArray())]);
         }
 
         if (left > 0)
         {
-            host.Out.WriteLine(FormattableString.Invariant($"... and {left} more rows; --top 0 shows all, --format csv writes all for a file."));
+            Sentences(host, [FormattableString.Invariant($"... and {left} more rows; --top 0 shows all, --format csv writes all for a file.")]);
         }
 
         Sentences(host, table.Below);
@@ -37,35 +37,10 @@ internal static class TextTable
     /// <summary>Writes sentences, wrapped to the width.</summary>
     public static void Sentences(Host host, IEnumerable<string> sentences)
     {
-        foreach (string sentence in sentences)
+        foreach (string line in sentences.SelectMany(sentence => CellText.Wrap(sentence, host.Width)))
         {
-            foreach (string line in Wrap(SafeText.Escape(sentence), host.Width))
-            {
-                host.Out.WriteLine(line);
-            }
+            host.Out.WriteLine(line);
         }
-    }
-
-    /// <summary>Breaks a sentence at its spaces so that no line is wider than asked, where that can be.</summary>
-    public static IEnumerable<string> Wrap(string sentence, int width)
-    {
-        while (sentence.Length > width)
-        {
-            int cut = sentence.LastIndexOf(' ', width);
-            if (cut <= 0)
-            {
-                cut = sentence.IndexOf(' ', width);
-                if (cut < 0)
-                {
-                    break;
-                }
-            }
-
-            yield return sentence[..cut];
-            sentence = sentence[(cut + 1)..];
-        }
-
-        yield return sentence;
     }
 
     private static List<Cell[]> Take(IEnumerable<Cell[]> rows, int most, out long left)
@@ -87,81 +62,38 @@ internal static class TextTable
         return taken;
     }
 
-    private static Table Build(RowTable table, List<Cell[]> rows, int width)
+    private static void WriteRows(Host host, IReadOnlyList<Column> columns, string[][] rows)
     {
-        int[] shown = [.. Enumerable.Range(0, table.Columns.Count).Where(i => table.Columns[i].Heading is not null)];
-        string[][] texts = [.. rows.Select(row => shown.Select(i => Text(row[i])).ToArray())];
-        string[] headings = [.. shown.Select(i => table.Columns[i].Heading!)];
-        int[] widths = Fit(headings, texts, [.. shown.Select(i => table.Columns[i].IsNumeric)], width);
-        var view = new Table().Border(TableBorder.None);
-        for (int c = 0; c < shown.Length; c++)
+        ColumnLayout layout = ColumnLayout.Of(columns, rows, host.Width);
+        string head = Line(columns, [.. columns.Select(c => c.Heading ?? "")], layout);
+        host.Out.WriteLine(host.OutIsStyled ? $"\u001b[1m{head}\u001b[0m" : head);
+        foreach (string[] row in rows)
         {
-            var column = new TableColumn(new Text(Cut(headings[c], widths[c]), new Style(decoration: Decoration.Bold)) { Overflow = Overflow.Crop }).NoWrap().Width(widths[c]);
-            column.Padding = new Padding(0, 0, 2, 0);
-            view.AddColumn(table.Columns[shown[c]].IsNumeric ? column.RightAligned() : column);
+            host.Out.WriteLine(Line(columns, row, layout));
         }
 
-        foreach (string[] row in texts)
+        if (layout.LeftOut.Count > 0)
         {
-            view.AddRow(row.Select((text, c) => (Spectre.Console.Rendering.IRenderable)new Text(Cut(text, widths[c])) { Overflow = Overflow.Crop }));
+            Sentences(host, [$"No room for: {string.Join(", ", layout.LeftOut)}; a wider window shows more, --format csv writes all."]);
         }
-
-        return view;
     }
 
-    /// <summary>Widths that fit: the widest text columns give way first, down to eight characters; numbers are never cut.</summary>
-    private static int[] Fit(string[] headings, string[][] rows, bool[] isNumeric, int width)
+    private static string Line(IReadOnlyList<Column> columns, string[] texts, ColumnLayout layout)
     {
-        int[] widths = [.. headings.Select((h, c) => Math.Max(CellWidth(h), rows.Max(r => CellWidth(r[c]))))];
-        const int least = 8;
-        while (widths.Sum() + (2 * widths.Length) > width)
+        var line = new StringBuilder();
+        for (int i = 0; i < layout.Shown.Count; i++)
         {
-            int widest = -1;
-            for (int c = 0; c < widths.Length; c++)
-            {
-                if (!isNumeric[c] && widths[c] > least && (widest < 0 || widths[c] > widths[widest]))
-                {
-                    widest = c;
-                }
-            }
-
-            if (widest < 0)
-            {
-                break;
-            }
-
-            widths[widest]--;
+            int c = layout.Shown[i];
+            string text = CellText.Fit(texts[c], layout.Widths[i], "…");
+            int blanks = layout.Widths[i] - CellText.Width(text);
+            line.Append(' ', (i > 0 ? ColumnLayout.Gap : 0) + (columns[c].IsNumeric ? blanks : 0)).Append(text).Append(' ', columns[c].IsNumeric ? 0 : blanks);
         }
 
-        return widths;
+        return line.ToString().TrimEnd(' ');
     }
 
-    private static string Cut(string text, int width)
-    {
-        if (CellWidth(text) <= width)
-        {
-            return text;
-        }
-
-        int length = text.Length;
-        while (length > 0 && CellWidth(text[..length]) > width - 1)
-        {
-            length -= length > 1 && char.IsLowSurrogate(text[length - 1]) ? 2 : 1;
-        }
-
-        return text[..length] + "…";
-    }
-
-    private static int CellWidth(string text) => System.Text.Ascii.IsValid(text) ? text.Length : new Segment(text).CellCount();
-
-    private sealed class Segment(string text)
-    {
-        private readonly Spectre.Console.Rendering.Segment _segment = new(text);
-
-        public int CellCount() => _segment.CellCount();
-    }
-
-    private static string Text(in Cell cell) => cell.Kind switch
+    /// <summary>A cell as people see it.</summary>
+    public static string Text(in Cell cell) => cell.Kind switch
     {
         CellKind.Number => cell.AsText.Length > 0 ? cell.AsText : NumberText.Screen(cell.AsNumber, 5),
         CellKind.P => NumberText.P(cell.AsP),

@@ -25,7 +25,7 @@ internal static class FileOpening
     /// <summary>The sentence for an exception of the file system.</summary>
     public static LoadingException Explain(string path, Exception cause)
     {
-        string shown = ShownText.Quote(path).Trim('"');
+        string shown = ShownText.Path(path);
         string sentence = cause switch
         {
             _ when Directory.Exists(path) => $"{shown} is a folder: name a file.",

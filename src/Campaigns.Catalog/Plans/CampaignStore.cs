@@ -95,7 +95,7 @@ public sealed class CampaignStore(Catalog catalog)
     {
         string[] codes = [.. All().Select(c => c.Campaign.Code)];
         string hint = codes.Length == 0 ? "the catalog holds none yet"
-            : Nearest.Of(code, codes) is { } near ? $"did you mean '{near}'?"
+            : Nearest.Of(code, codes) is { } near ? $"'{near}' may be meant"
             : "'campaigns list' shows those there are";
         return new RefusedException($"There is no campaign '{code}' in the catalog '{catalog.Path}'; {hint}.");
     }

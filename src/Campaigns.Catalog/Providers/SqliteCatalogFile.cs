@@ -48,6 +48,11 @@ internal static class SqliteCatalogFile
     public static void Create(string path)
     {
         string draft = FormattableString.Invariant($"{path}.new-{Environment.ProcessId}-{Interlocked.Increment(ref _drafts)}");
+        if (!Directory.Exists(Path.GetDirectoryName(Path.GetFullPath(path))))
+        {
+            throw new CatalogException($"The catalog '{path}' cannot be created: its folder is not there. Make the folder, or name another with --catalog.");
+        }
+
         try
         {
             File.Delete(draft);

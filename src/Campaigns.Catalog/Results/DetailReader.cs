@@ -72,6 +72,6 @@ public sealed class DetailReader(Catalog catalog)
 
     private static string Hint(CampaignStanding standing, string code) =>
         Nearest.Of(code, standing.Experiments.Select(e => e.Plan.Code)) is { } near
-            ? $"did you mean '{near}'?"
+            ? $"'{near}' may be meant"
             : $"'campaigns results {standing.Campaign.Code}' lists those it has";
 }

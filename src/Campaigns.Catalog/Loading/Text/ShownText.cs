@@ -17,14 +17,19 @@ internal static class ShownText
         return Quote(isCut ? text + new string(' ', LongestShown) : text);
     }
 
+    /// <summary>The name of a file, whole, without quotation marks.</summary>
+    public static string Path(string path) => Quote(path, int.MaxValue)[1..^1];
+
     /// <summary>Text, quoted.</summary>
-    public static string Quote(string text)
+    public static string Quote(string text) => Quote(text, LongestShown);
+
+    private static string Quote(string text, int longest)
     {
         StringBuilder shown = new("\"");
         int count = 0;
         foreach (Rune rune in text.EnumerateRunes())
         {
-            if (count++ == LongestShown)
+            if (count++ == longest)
             {
                 shown.Append('…');
                 break;

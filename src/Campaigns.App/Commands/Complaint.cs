@@ -1,0 +1,52 @@
+using System.CommandLine;
+using System.CommandLine.Parsing;
+using Campaigns.Domain;
+
+namespace Campaigns.App.Commands;
+
+/// <summary>Says in one sentence what is wrong with what was typed, and what was probably meant.</summary>
+internal static class Complaint
+{
+    /// <summary>The sentence; null where nothing is wrong.</summary>
+    /// <param name="typed">What was typed, parsed.</param>
+    /// <param name="root">The whole command line.</param>
+    public static string? Of(ParseResult typed, RootCommand root)
+    {
+        Command command = typed.CommandResult.Command;
+        string help = command == root ? "'campaigns --help' lists the commands" : $"'campaigns {command.Name} --help' explains it";
+        if (FirstUnknown(typed) is { } word)
+        {
+            return Unknown(word, command, root, help);
+        }
+
+        return typed.Errors.Count == 0 ? null
+            : command == root && typed.Tokens.Count == 0 ? $"A command is missing; {help}."
+            : $"{typed.Errors[0].Message.TrimEnd('.')}; {help}.";
+    }
+
+    /// <summary>A word that fits nowhere. One that looks like an option is none that we know, even where it could stand for an argument: nothing of ours begins with a hyphen, and a file's name may follow after "--".</summary>
+    private static string? FirstUnknown(ParseResult typed)
+    {
+        bool isEscaped = typed.Tokens.Any(t => t.Type == TokenType.DoubleDash);
+        IEnumerable<string> arguments = isEscaped ? [] : typed.CommandResult.Children.OfType<ArgumentResult>().SelectMany(a => a.Tokens).Select(t => t.Value).Where(LooksLikeOption);
+        return arguments.FirstOrDefault() ?? (typed.UnmatchedTokens is [string first, ..] ? first : null);
+    }
+
+    private static string Unknown(string word, Command command, RootCommand root, string help)
+    {
+        if (LooksLikeOption(word))
+        {
+            IEnumerable<string> options = command.Options.Concat(root.Options.Where(o => o.Recursive)).Select(o => o.Name);
+            string name = word.Split('=')[0];
+            return $"There is no option '{name}'{Meant(Nearest.Of(name, options))}; {help}.";
+        }
+
+        return command == root
+            ? $"There is no command '{word}'{Meant(Nearest.Of(word, root.Subcommands.Select(c => c.Name)))}; {help}."
+            : $"'{word}' is too much for 'campaigns {command.Name}'; {help}.";
+    }
+
+    private static string Meant(string? nearest) => nearest is null ? "" : $" (did you mean '{nearest}'?)";
+
+    private static bool LooksLikeOption(string word) => word.Length > 1 && word[0] == '-' && (word[1] == '-' || char.IsLetter(word[1]));
+}
