@@ -24,17 +24,12 @@ internal sealed class ExportVerb : Verb
         using Catalog.Catalog catalog = session.OpenCatalog();
         CampaignStanding standing = new StandingReader(catalog).Read(session.Get(_code));
         var export = new CampaignExport(catalog);
-        export.Write(standing, folder, (name, writer) => WriteResults(standing, name, writer));
-        session.Say($"Wrote {standing.Campaign.Code} to '{folder}': campaign.json, plan.csv, measurements/{CampaignExport.MeasurementsName}, {CampaignExport.ResultsName}.");
+        export.Write(standing, folder, writer => WriteResults(standing, writer), NumberText.RoundTrip);
+        session.Say($"Wrote {standing.Campaign.Code} to '{folder}': campaign.json, plan.csv, measurements/{CampaignExport.MeasurementsName}, {CampaignExport.ResultsName}, {CampaignExport.ReviewsName}.");
         session.PrintForScripts(new RowTable([new Column("campaign", null), new Column("folder", null)], [[Cell.Text(standing.Campaign.Code), Cell.Text(folder)]]));
         return ExitCode.Done;
     }
 
-    private static void WriteResults(CampaignStanding standing, string name, TextWriter writer)
-    {
-        if (name == CampaignExport.ResultsName)
-        {
-            CsvRows.Write(new RowTable(ResultsVerb.Columns, standing.Experiments.Select(ResultsVerb.Row)), writer);
-        }
-    }
+    private static void WriteResults(CampaignStanding standing, TextWriter writer) =>
+        CsvRows.Write(new RowTable(ResultsVerb.Columns, standing.Experiments.Select(ResultsVerb.Row)), writer);
 }

@@ -3,7 +3,9 @@ using System.Text.Json;
 using Campaigns.Catalog.Measurements;
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Providers;
+using Campaigns.Catalog.Results;
 using Campaigns.Domain;
+using Campaigns.Statistics.Probability;
 
 namespace Campaigns.Catalog.Exporting;
 
@@ -14,6 +16,9 @@ public sealed class CampaignExport(Catalog catalog)
     /// <summary>Name of the file of measurements.</summary>
     public const string MeasurementsName = "measurements.csv";
 
+    /// <summary>Name of the file of reviews.</summary>
+    public const string ReviewsName = "reviews.csv";
+
     /// <summary>Name of the file of results.</summary>
     public const string ResultsName = "results.csv";
 
@@ -21,11 +26,13 @@ public sealed class CampaignExport(Catalog catalog)
     /// <param name="standing">The campaign as it stands.</param>
     /// <param name="folder">A folder that does not exist, or is empty.</param>
     /// <param name="writeResults">Writes the file of results.</param>
+    /// <param name="textOfP">A p-value as it stands in files.</param>
     /// <exception cref="RefusedException">The folder holds something, or cannot be written.</exception>
-    public void Write(CampaignStanding standing, string folder, Action<string, TextWriter> writeResults)
+    public void Write(CampaignStanding standing, string folder, Action<TextWriter> writeResults, Func<PValue, string> textOfP)
     {
         ArgumentNullException.ThrowIfNull(standing);
         ArgumentNullException.ThrowIfNull(writeResults);
+        ArgumentNullException.ThrowIfNull(textOfP);
         folder = System.IO.Path.TrimEndingDirectorySeparator(System.IO.Path.GetFullPath(folder));
         if (File.Exists(folder) || (Directory.Exists(folder) && Directory.EnumerateFileSystemEntries(folder).Any()))
         {
@@ -39,7 +46,8 @@ public sealed class CampaignExport(Catalog catalog)
             WriteFile(draft, "campaign.json", writer => WriteCampaign(standing.Campaign, writer));
             WriteFile(draft, "plan.csv", writer => WritePlan(standing, writer));
             WriteFile(System.IO.Path.Combine(draft, "measurements"), MeasurementsName, writer => WriteMeasurements(standing, writer));
-            WriteFile(draft, ResultsName, writer => writeResults(ResultsName, writer));
+            WriteFile(draft, ReviewsName, writer => WriteReviews(standing, writer, textOfP));
+            WriteFile(draft, ResultsName, writeResults);
             if (Directory.Exists(folder))
             {
                 Directory.Delete(folder);
@@ -128,6 +136,29 @@ public sealed class CampaignExport(Catalog catalog)
                     values.Blocks[i] < 0 ? "" : values.BlockNames.Text(values.Blocks[i]),
                     values.Orders[i] == ObservationColumns.NoOrder ? "" : CsvLine.Number(values.Orders[i]),
                     file, CsvLine.Number(values.Lines[i]));
+            }
+        }
+    }
+
+    /// <summary>Every line of every review as it was stored on its day.</summary>
+    private void WriteReviews(CampaignStanding standing, TextWriter writer, Func<PValue, string> textOfP)
+    {
+        long campaignId = new CampaignStore(catalog).Get(standing.Campaign.Code).Id;
+        using SqliteStatement select = catalog.Prepare("SELECT number, taken_at, correction, level, family_size, is_interim, lines FROM reviews WHERE campaign_id = ?1 ORDER BY number");
+        Dictionary<long, string> codes = new PlanStore(catalog).Codes(campaignId);
+        select.Bind(1, campaignId);
+        var csv = new CsvLine(writer);
+        csv.Write("review", "taken_at", "correction", "level", "family_size", "interim", "experiment", "p", "adjusted_p", "survives");
+        while (select.Read())
+        {
+            string taken = Instants.FromMicroseconds(select.Integer(1)).UtcDateTime.ToString("yyyy-MM-dd'T'HH:mm:ss'Z'", System.Globalization.CultureInfo.InvariantCulture);
+            var level = new SignificanceLevel(select.Real(3));
+            (FamilyColumns family, PValue[] adjusted) = PackedReviewLines.Unpack(select.Blob(6));
+            for (int i = 0; i < family.Count; i++)
+            {
+                csv.Write(
+                    CsvLine.Number(select.Integer(0)), taken, select.Text(2), CsvLine.Number(level.Value), CsvLine.Number(select.Integer(4)), select.Integer(5) != 0 ? "true" : "false",
+                    codes[family.ExperimentIds[i]], textOfP(family.P[i]), textOfP(adjusted[i]), level.Rejects(adjusted[i]) ? "true" : "false");
             }
         }
     }

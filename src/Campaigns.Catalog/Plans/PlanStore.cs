@@ -32,6 +32,20 @@ public sealed class PlanStore(Catalog catalog)
         return plan;
     }
 
+    /// <summary>The codes of a campaign's experiments by their keys.</summary>
+    internal Dictionary<long, string> Codes(long campaignId)
+    {
+        using SqliteStatement select = catalog.Prepare("SELECT id, code FROM experiments WHERE campaign_id = ?1");
+        select.Bind(1, campaignId);
+        var codes = new Dictionary<long, string>();
+        while (select.Read())
+        {
+            codes.Add(select.Integer(0), select.Text(1));
+        }
+
+        return codes;
+    }
+
     /// <summary>Registers experiments, or changes registered ones, while the plan is open.</summary>
     /// <param name="code">The campaign.</param>
     /// <param name="experiments">Those to add or to change, each code once.</param>

@@ -1,3 +1,4 @@
+using Campaigns.Catalog.Measurements;
 using Campaigns.Catalog.Results;
 using Campaigns.Statistics.Probability;
 
@@ -12,10 +13,12 @@ public sealed class PackedReviewLinesTests
         for (int round = 0; round < 200; round++)
         {
             (long[] ids, PValue[] p, PValue[] adjusted) = Draw(random);
-            (long[] readIds, PValue[] readP, PValue[] readAdjusted) = PackedReviewLines.Unpack(PackedReviewLines.Pack(ids, p, adjusted));
-            Assert.Equal(ids, readIds);
-            Assert.Equal(p, readP);
+            PackWriter packed = PackedReviewLines.Pack(ids, p, adjusted);
+            (FamilyColumns family, PValue[] readAdjusted) = PackedReviewLines.Unpack(packed.Written);
+            Assert.Equal(ids, family.ExperimentIds.ToArray());
+            Assert.Equal(p, family.P.ToArray());
             Assert.Equal(adjusted, readAdjusted);
+            Assert.Equal(p, PackedReviewLines.UnpackFamily(packed.Written).P.ToArray());
         }
     }
 
@@ -27,7 +30,7 @@ public sealed class PackedReviewLinesTests
         for (int flip = 0; flip < 2000; flip++)
         {
             (long[] ids, PValue[] p, PValue[] adjusted) = Draw(random);
-            byte[] damaged = PackedReviewLines.Pack(ids, p, adjusted);
+            byte[] damaged = PackedReviewLines.Pack(ids, p, adjusted).Written.ToArray();
             int at = random.Next(flip % 2 == 0 ? Math.Min(16, damaged.Length) : damaged.Length);
             damaged = flip % 4 == 0 ? damaged[..at] : damaged;
             if (damaged.Length > at)
