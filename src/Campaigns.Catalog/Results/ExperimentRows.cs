@@ -19,7 +19,7 @@ internal sealed class ExperimentRows : IDisposable
     public ExperimentRows(Catalog catalog, long campaignId, long[]? only)
     {
         // Where only some are wanted, the list of them is where SQLite is told to begin.
-        string chosen = only is null ? "experiments e" : "json_each(?2) wanted CROSS JOIN experiments e ON e.id = wanted.value";
+        string chosen = only is null ? "experiments e" : "(SELECT value FROM json_each(?2)) wanted CROSS JOIN experiments e ON e.id = wanted.value";
         _sets = new GroupSets(catalog, campaignId);
         _plans = catalog.Prepare($"SELECT {PlanStore.ExperimentColumns} FROM {chosen} WHERE e.campaign_id = ?1 ORDER BY e.id");
         _results = catalog.Prepare(

@@ -257,14 +257,14 @@ public sealed class LifeCycleTests
         ExperimentResult e = catalog.Result("E"), f = catalog.Result("F");
         Assert.True(e.P!.Value.IsBelowDoubleRange && e.AdjustedP!.Value.IsBelowDoubleRange);
         Assert.True(f.P < e.P);
-        Assert.Equal((IEnumerable<double>)[e.P.Value.Log, f.P!.Value.Log], Lines(catalog).P.Select(p => p.Log));
+        Assert.Equal((IEnumerable<double>)[e.P.Value.Log, f.P!.Value.Log], Lines(catalog).Family.P.ToArray().Select(p => p.Log));
         Assert.Equal((IEnumerable<double>)[e.AdjustedP.Value.Log, f.AdjustedP!.Value.Log], Lines(catalog).Adjusted.Select(p => p.Log));
 
         static string Far(string code, int step) => string.Concat(Enumerable.Range(0, 400).Select(i =>
             FormattableString.Invariant($"{code},{(i % 2 == 0 ? "A" : "B")},{(i % 2 == 0 ? 0 : step) + (i % 5)}\n")));
     }
 
-    private static (long[] ExperimentIds, Statistics.Probability.PValue[] P, Statistics.Probability.PValue[] Adjusted) Lines(TestCatalog catalog) =>
+    private static (FamilyColumns Family, Statistics.Probability.PValue[] Adjusted) Lines(TestCatalog catalog) =>
         PackedReviewLines.Unpack(Convert.FromHexString(Raw.Rows(catalog.Catalog.Connection, "SELECT lines FROM reviews ORDER BY number DESC LIMIT 1").Single()));
 
     /// <summary>The family as it is read where there is no review: a copy of the catalog has none.</summary>

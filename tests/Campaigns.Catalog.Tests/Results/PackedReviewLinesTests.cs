@@ -12,10 +12,14 @@ public sealed class PackedReviewLinesTests
         for (int round = 0; round < 200; round++)
         {
             (long[] ids, PValue[] p, PValue[] adjusted) = Draw(random);
-            (long[] readIds, PValue[] readP, PValue[] readAdjusted) = PackedReviewLines.Unpack(PackedReviewLines.Pack(ids, p, adjusted));
-            Assert.Equal(ids, readIds);
-            Assert.Equal(p, readP);
+            byte[] packed = PackedReviewLines.Pack(ids, p, adjusted).Written.ToArray();
+            (FamilyColumns family, PValue[] readAdjusted) = PackedReviewLines.Unpack(packed);
+            Assert.Equal(ids, family.ExperimentIds);
+            Assert.Equal(p, family.P);
             Assert.Equal(adjusted, readAdjusted);
+            FamilyColumns alone = PackedReviewLines.UnpackFamily(packed);
+            Assert.Equal(ids, alone.ExperimentIds);
+            Assert.Equal(p, alone.P);
         }
     }
 
@@ -27,7 +31,7 @@ public sealed class PackedReviewLinesTests
         for (int flip = 0; flip < 2000; flip++)
         {
             (long[] ids, PValue[] p, PValue[] adjusted) = Draw(random);
-            byte[] damaged = PackedReviewLines.Pack(ids, p, adjusted);
+            byte[] damaged = PackedReviewLines.Pack(ids, p, adjusted).Written.ToArray();
             int at = random.Next(flip % 2 == 0 ? Math.Min(16, damaged.Length) : damaged.Length);
             damaged = flip % 4 == 0 ? damaged[..at] : damaged;
             if (damaged.Length > at)
