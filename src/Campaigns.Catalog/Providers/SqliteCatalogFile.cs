@@ -14,6 +14,24 @@ internal static class SqliteCatalogFile
 
     private const int HeaderLength = 100;
     private const byte WriteAheadLog = 2;
+
+    /// <summary>One by one, because the driver loses errors that come after the first row of a text of several statements.</summary>
+    private static readonly string[] Settings =
+    [
+        "PRAGMA busy_timeout = 5000",
+
+        // The first question that reads the file: a locked or damaged one is told here.
+        "PRAGMA schema_version",
+
+        // The journals of single statements stay in memory; they guard nothing that outlives a crash.
+        "PRAGMA temp_store = MEMORY",
+        "PRAGMA foreign_keys = ON",
+
+        // One file that may be copied: a rollback journal, not a write-ahead log. EXTRA also syncs the folder, so an acknowledged action survives a power cut.
+        "PRAGMA synchronous = EXTRA",
+        "PRAGMA journal_mode = DELETE",
+    ];
+
     private static int _drafts;
 
     private static ReadOnlySpan<byte> Signature => "SQLite format 3\0"u8;
@@ -93,12 +111,11 @@ internal static class SqliteCatalogFile
         {
             connection.Open();
 
-            // One file that may be copied: a rollback journal, not a write-ahead log. EXTRA also syncs the folder, so an acknowledged action survives a power cut.
-            // The journals of single statements stay in memory; they guard nothing that outlives a crash.
-            Execute(connection, "PRAGMA temp_store = MEMORY; PRAGMA busy_timeout = 5000; PRAGMA foreign_keys = ON; PRAGMA synchronous = EXTRA; PRAGMA journal_mode = DELETE;");
+            foreach (string setting in Settings)
+            {
+                Execute(connection, setting);
+            }
 
-            // The first question that reads the file: a locked or damaged one is told here. On its own, because errors after the first row of a text of several statements are lost.
-            Execute(connection, "PRAGMA schema_version");
             return connection;
         }
         catch (SqliteException error)

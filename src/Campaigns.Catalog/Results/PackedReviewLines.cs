@@ -86,7 +86,7 @@ internal static class PackedReviewLines
         {
             double value = BitConverter.Int64BitsToDouble(bits[i]);
             double known = value < LogStoredBelow ? BitConverter.Int64BitsToDouble(logs[log++]) : 0;
-            if (!(value >= 0 && value <= 1 && known <= 0))
+            if (!(value >= 0 && value <= 1 && (value >= LogStoredBelow || known < 0)))
             {
                 throw PackReader.Damaged();
             }

@@ -124,14 +124,12 @@ public sealed class OpeningTests
     }
 
     [Fact]
-    public void A_catalog_that_another_program_holds_is_told_as_locked_within_the_time_out()
+    public void A_catalog_that_another_program_holds_is_told_as_locked()
     {
         using TestFolder folder = WithCatalog();
         using SqliteConnection other = Raw.Open(folder[Name]);
         Raw.Execute(other, "BEGIN EXCLUSIVE");
-        long started = Stopwatch.GetTimestamp();
         Assert.Contains("locked by another program", Refused(folder[Name]), StringComparison.Ordinal);
-        Assert.InRange(Stopwatch.GetElapsedTime(started).TotalSeconds, 4, 8);
     }
 
     [Fact]
@@ -140,10 +138,8 @@ public sealed class OpeningTests
         using var catalog = new TestCatalog();
         using SqliteConnection other = Raw.Open(catalog.Catalog.Path);
         Raw.Execute(other, "BEGIN IMMEDIATE");
-        long started = Stopwatch.GetTimestamp();
         CatalogException refused = Assert.Throws<CatalogException>(() => catalog.Start());
         Assert.Contains("locked by another program", refused.Message, StringComparison.Ordinal);
-        Assert.InRange(Stopwatch.GetElapsedTime(started).TotalSeconds, 4, 8);
         Raw.Execute(other, "ROLLBACK");
         Assert.Equal(1, catalog.Start().Id);
     }
