@@ -31,8 +31,8 @@ public sealed class EffectReader(Catalog catalog)
         using var sets = new GroupSets(catalog, campaignId);
         using SqliteStatement select = catalog.Prepare(
             """
-            SELECT e.code, e.group_set_id, m.packed FROM json_each(?2) wanted
-            CROSS JOIN experiments e ON e.campaign_id = ?1 AND e.code = wanted.value
+            SELECT e.code, e.group_set_id, m.packed FROM (SELECT value AS wanted FROM json_each(?2)) w
+            CROSS JOIN experiments e ON e.campaign_id = ?1 AND e.code = w.wanted
             CROSS JOIN measurements m ON m.experiment_id = e.id ORDER BY e.id, m.load_id
             """);
         select.Bind(1, campaignId).Bind(2, JsonSerializer.Serialize([.. experiments], JsonArrays.Default.StringArray));

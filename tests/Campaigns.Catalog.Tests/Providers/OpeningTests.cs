@@ -1,4 +1,3 @@
-using System.Diagnostics;
 using System.Security.Cryptography;
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Providers;
