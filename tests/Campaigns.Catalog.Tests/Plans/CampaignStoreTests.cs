@@ -45,7 +45,7 @@ public sealed class CampaignStoreTests
         using var catalog = new TestCatalog();
         Assert.Contains("holds none yet", Assert.Throws<RefusedException>(() => catalog.Campaigns.Get("screen")).Message, StringComparison.Ordinal);
         catalog.Campaigns.Open(catalog.Start().Campaign with { Code = "screen" });
-        Assert.Contains("did you mean screen?", Assert.Throws<RefusedException>(() => catalog.Campaigns.Get("scren")).Message, StringComparison.Ordinal);
+        Assert.Contains("'screen' may be meant", Assert.Throws<RefusedException>(() => catalog.Campaigns.Get("scren")).Message, StringComparison.Ordinal);
     }
 
     [Fact]
