@@ -34,6 +34,27 @@ public sealed class ProcessTests : IDisposable
         }
     }
 
+    [Theory]
+    [InlineData("campaigns resu", "results")]
+    [InlineData("campaigns results --fo", "--format")]
+    [InlineData("campaigns results --format c", "csv")]
+    [InlineData("campaigns run ", "")]
+    [InlineData("campaigns run ./ca", "")]
+    public void The_bash_script_completes_what_begins_with_the_word_and_leaves_files_to_the_shell(string line, string completed)
+    {
+        Assert.SkipWhen(OperatingSystem.IsWindows(), "needs bash");
+        string words = string.Join(' ', line.Split(' ').Select(w => $"'{w}'"));
+        string script = $"""
+            PATH="$(dirname "$CAMPAIGNS_PROGRAM"):$PATH"
+            source <(campaigns completion bash)
+            COMP_LINE='{line}'; COMP_POINT={line.Length}; COMP_WORDS=({words}); COMP_CWORD={line.Split(' ').Length - 1}
+            _campaigns
+            echo "${"{COMPREPLY[*]}"}"
+            """;
+        Ran ran = Executable.End(Executable.Start("bash", _place.Catalog, ["-c", script])).Well();
+        Assert.Equal((completed + "\n", ""), (ran.Out, ran.Error));
+    }
+
     [Fact]
     public void A_full_disk_behind_standard_output_is_told_in_a_sentence()
     {

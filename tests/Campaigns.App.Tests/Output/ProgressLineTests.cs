@@ -11,8 +11,8 @@ public sealed class ProgressLineTests
     {
         string shown = Shown(isTerminal: true, width: 60);
         string[] lines = shown.Split('\r');
-        Assert.Equal("loading week-01.csv: 60 %, 1.0 MB/s, 0 s left", lines[1].TrimEnd());
-        Assert.Equal("loading week-01.csv: 90 %, 1.0 MB/s, 0 s left", lines[2].TrimEnd());
+        Assert.Equal("loading week-01.csv: 50 %, 1.0 MB/s, 1 s left", lines[1].TrimEnd());
+        Assert.Equal("loading week-01.csv: 70 %, 1.0 MB/s, 0 s left", lines[2].TrimEnd());
         Assert.Equal(("", ""), (lines[^2].Trim(), lines[^1]));
         Assert.DoesNotContain('\n', shown);
     }
