@@ -2,6 +2,7 @@ using Campaigns.App.Output;
 using Campaigns.Catalog.Plans;
 using Campaigns.Domain;
 using Campaigns.Statistics.Corrections;
+using Campaigns.Statistics.GroupTests;
 
 namespace Campaigns.App.Commands;
 
@@ -28,11 +29,11 @@ internal static class CampaignText
     {
         Campaign campaign = standing.Campaign;
         Correction correction = FamilyVerdict.CorrectionOf(campaign);
-        var lines = new List<string>
-        {
+        List<string> lines =
+        [
             FormattableString.Invariant($"{correction.Name} at {campaign.Level} over a family of {standing.FamilySize} ({standing.TestedCount} with a result; the others count as p = 1). {correction.Guarantee}"),
-            "The F test assumes independent observations, normal errors and equal spread in all groups.",
-        };
+            .. GroupTestRegistry.Find(campaign.DefaultTest) is { } test ? [$"{test.Name}, assumes: {char.ToLowerInvariant(test.Assumes[0])}{test.Assumes[1..]}"] : (string[])[],
+        ];
         if (campaign.IsExploratory)
         {
             lines.Add("Exploratory: the experiments were taken from the data, not from a plan made before it.");

@@ -143,9 +143,21 @@ internal sealed class ObservationColumns
     }
 
     /// <summary>The sample to test; it borrows these columns.</summary>
-    public GroupedSample Sample(int groupCount) => IsWide
-        ? new GroupedSample(WideMantissas, Decimals, Groups, groupCount)
-        : new GroupedSample(Mantissas, Decimals, Groups, groupCount);
+    /// <exception cref="CatalogException">A stored group lies outside the experiment's set.</exception>
+    public GroupedSample Sample(int groupCount)
+    {
+        foreach (ushort group in Groups)
+        {
+            if (group >= groupCount)
+            {
+                throw PackReader.Damaged();
+            }
+        }
+
+        return IsWide
+            ? new GroupedSample(WideMantissas, Decimals, Groups, groupCount)
+            : new GroupedSample(Mantissas, Decimals, Groups, groupCount);
+    }
 
     /// <summary>The typed text of a value: its mantissa with the shared count of decimals.</summary>
     public string Text(int i) => DecimalWriter.Write(IsWide ? _wide![i] : _mantissas[i], Decimals);

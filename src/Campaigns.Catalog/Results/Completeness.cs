@@ -24,6 +24,11 @@ internal static class Completeness
         Array.Clear(counts);
         foreach (ushort group in groups)
         {
+            if (group >= groupCount)
+            {
+                throw Measurements.PackReader.Damaged();
+            }
+
             counts[group]++;
         }
 

@@ -95,13 +95,27 @@ public sealed class TestRunner(Catalog catalog)
         pipeline.Give(batch);
         pipeline.Finish();
         cancel.ThrowIfCancellationRequested();
-        return new TestRunSummary(results.Tested, results.NotTestable, results.Incomplete, results.Tested + results.NotTestable > 0);
+        bool ran = results.Tested + results.NotTestable > 0;
+        return new TestRunSummary(results.Tested, results.NotTestable, ran || !ranBefore ? results.Incomplete : Waiting(stored.Id), ran);
     }
 
     private (long? LastLoad, bool Ran) LastRun(long campaignId)
     {
         using SqliteStatement select = catalog.Prepare("SELECT last_load_id FROM test_runs WHERE campaign_id = ?1 ORDER BY id DESC LIMIT 1");
         return select.Bind(1, campaignId).Read() ? (select.NullableInteger(0), true) : (null, false);
+    }
+
+    /// <summary>Experiments that have values and no result: those that were left alone before and received nothing since.</summary>
+    private int Waiting(long campaignId)
+    {
+        using SqliteStatement count = catalog.Prepare(
+            """
+            SELECT count(*) FROM experiments e WHERE e.campaign_id = ?1
+                AND EXISTS (SELECT 1 FROM measurements m WHERE m.experiment_id = e.id)
+                AND NOT EXISTS (SELECT 1 FROM test_results r WHERE r.experiment_id = e.id)
+            """);
+        count.Bind(1, campaignId).Read();
+        return (int)count.Integer(0);
     }
 
     private long? LastLoad(long campaignId)
