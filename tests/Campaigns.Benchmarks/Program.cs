@@ -1,10 +1,12 @@
 using System.Globalization;
 using BenchmarkDotNet.Running;
+using Campaigns.Benchmarks;
 using Campaigns.Benchmarks.Generating;
 using Campaigns.Benchmarks.Kernels;
 
 const string Usage = """
     generate SIZE FOLDER [--shuffled] [--plan]   write a synthetic campaign folder; SIZE is S, M, L or EXPERIMENTSxGROUPSxREPLICATES
+    arrive CATALOG CODE N                        milliseconds of N arrivals of one more experiment, inside one process
     time                                         milliseconds of a few large kernels
     kernels [BENCHMARKDOTNET OPTION ...]         careful benchmarks of the hot kernels; --filter '*' runs them all
     """;
@@ -15,6 +17,10 @@ switch (args)
         when CampaignSize.Parse(sizeText) is { } size && options.All(o => o is "--shuffled" or "--plan"):
         CampaignFolder.Write(new SyntheticCampaign(size), folder, options.Contains("--shuffled"), options.Contains("--plan"));
         Console.WriteLine(string.Create(CultureInfo.InvariantCulture, $"{folder}: {size.Rows} rows"));
+        return 0;
+    case ["arrive", string catalog, string code, string arrivals]
+        when int.TryParse(arrivals, NumberStyles.None, CultureInfo.InvariantCulture, out int count):
+        Arrival.Print(catalog, code, count, Console.Out);
         return 0;
     case ["time"]:
         Timings.Print(Console.Out);

@@ -13,7 +13,7 @@ Modes (default: large stored shuffled small growth size arrival results kernels)
   small     run on 200 experiments, against aov() per experiment
   growth    200,000 experiments against 100,000
   size      bytes of the catalog of 100,000 experiments
-  arrival   one more experiment into 100,000, beyond the same commands on a small catalog
+  arrival   one more experiment into 100,000: load, test and review inside one process
   results   results of 200 experiments, against the start of Rscript with data.table
   kernels   adjustments and F tails inside the process, against p.adjust and pf
 
@@ -190,22 +190,12 @@ class Comparison:
         self.row("catalog of L, MB", self.catalog("L").stat().st_size / 1e6, 70, 35, "kept originals included, if any are kept")
 
     def arrival(self):
-        large, small = self.campaign("L", "L"), self.campaign("S", "S")
-        for folder in (large, small):
-            self.ours(folder)(0)
-        a, b = in_turn(lambda n: self.one_more(large, n), lambda n: self.one_more(small, n), self.pairs)
-        extra = statistics.median(x.seconds - y.seconds for x, y in zip(a, b)) * 1000
-        self.row("one more experiment into L beyond the same into S, ms", extra, 60, 25,
-                 f"load + test + review, three processes: {median(a) * 1000:.0f} ms / {median(b) * 1000:.0f} ms")
-
-    def one_more(self, folder, number):
-        file = self.work / f"arrival-{number}.csv"
-        lines = ["experiment,group,value"]
-        lines += [f"NEW-{number:03d},G{g},{50 + g + number}.{r * 37 % 10}{g * 13 % 10}" for g in range(1, 6) for r in range(10)]
-        file.write_text("\n".join(lines) + "\n")
-        where = ["--catalog", self.catalog(folder.name)]
-        runs = [measure([self.program, *command, *where]) for command in (["load", folder.name, file], ["test", folder.name], ["review", folder.name])]
-        return Run(sum(r.seconds for r in runs), max(r.mebibytes for r in runs), "")
+        large = self.campaign("L", "L")
+        self.ours(large)(0)
+        output = measure([self.benchmarks, "arrive", self.catalog("L"), "L", str(self.pairs + 3)]).output
+        # The first arrivals still hold the start of the process.
+        times = [float(line.split()[1]) for line in output.splitlines()[3:]]
+        self.row("one more experiment into L: load + test + review inside a process, ms", statistics.median(times), 60, 25, "")
 
     def results(self):
         folder = self.campaign("S", "S")

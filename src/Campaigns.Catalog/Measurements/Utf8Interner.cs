@@ -8,8 +8,7 @@ internal sealed class Utf8Interner
 {
     private byte[] _arena = new byte[256];
     private int[] _ends = new int[16];
-    private int[] _slots = new int[64];
-    private uint[] _hashes = new uint[16];
+    private Slot[] _slots = new Slot[64];
 
     /// <summary>Distinct texts so far.</summary>
     public int Count { get; private set; }
@@ -42,19 +41,19 @@ internal sealed class Utf8Interner
     {
         uint hash = Hash(text);
         int slot = Probe(text, hash);
-        return _slots[slot] > 0 ? _slots[slot] - 1 : Add(text, hash, slot);
+        return _slots[slot].Follower > 0 ? _slots[slot].Follower - 1 : Add(text, hash, slot);
     }
 
     /// <summary>The number of a text, or -1 where it was never interned.</summary>
-    public int Find(ReadOnlySpan<byte> text) => _slots[Probe(text, Hash(text))] - 1;
+    public int Find(ReadOnlySpan<byte> text) => _slots[Probe(text, Hash(text))].Follower - 1;
 
     private int Probe(ReadOnlySpan<byte> text, uint hash)
     {
         int mask = _slots.Length - 1;
         for (int slot = (int)(hash & (uint)mask); ; slot = (slot + 1) & mask)
         {
-            int number = _slots[slot] - 1;
-            if (number < 0 || (_hashes[number] == hash && this[number].SequenceEqual(text)))
+            ref readonly Slot at = ref _slots[slot];
+            if (at.Follower == 0 || (at.Hash == hash && _arena.AsSpan(at.Start, at.Length).SequenceEqual(text)))
             {
                 return slot;
             }
@@ -67,11 +66,9 @@ internal sealed class Utf8Interner
         int start = number == 0 ? 0 : _ends[number - 1];
         Reserve(ref _arena, start + text.Length);
         Reserve(ref _ends, number + 1);
-        Reserve(ref _hashes, number + 1);
         text.CopyTo(_arena.AsSpan(start));
         _ends[number] = start + text.Length;
-        _hashes[number] = hash;
-        _slots[slot] = number + 1;
+        _slots[slot] = new Slot { Hash = hash, Follower = number + 1, Start = start, Length = text.Length };
         Count++;
         if (Count * 2 > _slots.Length)
         {
@@ -83,17 +80,21 @@ internal sealed class Utf8Interner
 
     private void Rehash()
     {
-        _slots = new int[_slots.Length * 2];
+        Slot[] old = _slots;
+        _slots = new Slot[old.Length * 2];
         int mask = _slots.Length - 1;
-        for (int number = 0; number < Count; number++)
+        foreach (Slot kept in old)
         {
-            int slot = (int)(_hashes[number] & (uint)mask);
-            while (_slots[slot] != 0)
+            if (kept.Follower > 0)
             {
-                slot = (slot + 1) & mask;
-            }
+                int slot = (int)(kept.Hash & (uint)mask);
+                while (_slots[slot].Follower > 0)
+                {
+                    slot = (slot + 1) & mask;
+                }
 
-            _slots[slot] = number + 1;
+                _slots[slot] = kept;
+            }
         }
     }
 
@@ -123,5 +124,16 @@ internal sealed class Utf8Interner
         }
 
         return (uint)(hash >> 32) ^ (uint)(hash >> 7);
+    }
+
+    /// <summary>A place in the table. Everything a look-up needs but the text itself stands together, because each further place in memory is another miss of the cache.</summary>
+    private struct Slot
+    {
+        public uint Hash;
+
+        /// <summary>The text's number plus one; 0 where the place is free.</summary>
+        public int Follower;
+        public int Start;
+        public int Length;
     }
 }

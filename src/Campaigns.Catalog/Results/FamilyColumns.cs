@@ -51,11 +51,10 @@ internal sealed class FamilyColumns
         int old = 0;
         foreach ((long id, PValue? p) in newer)
         {
-            for (; old < Count && _experimentIds[old] < id; old++)
-            {
-                merged.Add(_experimentIds[old], _p[old]);
-            }
-
+            int next = ExperimentIds[old..].BinarySearch(id);
+            next = old + (next < 0 ? ~next : next);
+            merged.Append(this, old, next);
+            old = next;
             if (old < Count && _experimentIds[old] == id)
             {
                 old++;
@@ -67,11 +66,15 @@ internal sealed class FamilyColumns
             }
         }
 
-        for (; old < Count; old++)
-        {
-            merged.Add(_experimentIds[old], _p[old]);
-        }
-
+        merged.Append(this, old, Count);
         return merged;
+    }
+
+    /// <summary>Adds a stretch of other columns; there is room for it.</summary>
+    private void Append(FamilyColumns other, int from, int to)
+    {
+        other.ExperimentIds[from..to].CopyTo(_experimentIds.AsSpan(Count));
+        other.P[from..to].CopyTo(_p.AsSpan(Count));
+        Count += to - from;
     }
 }

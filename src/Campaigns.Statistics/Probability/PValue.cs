@@ -8,6 +8,8 @@ namespace Campaigns.Statistics.Probability;
 public readonly struct PValue : IEquatable<PValue>, IComparable<PValue>
 {
     private readonly double _value;
+
+    // NaN where the logarithm is that of the value and is computed when it is asked for.
     private readonly double _log;
 
     private PValue(double value, double log)
@@ -28,10 +30,10 @@ public readonly struct PValue : IEquatable<PValue>, IComparable<PValue>
 
     /// <summary>The natural logarithm of the p-value, at most 0; negative infinity only where 0 itself was given.</summary>
     /// <exception cref="InvalidOperationException">The value was never given.</exception>
-    public double Log => IsGiven ? _log : throw NeverGiven();
+    public double Log => !IsGiven ? throw NeverGiven() : double.IsNaN(_log) ? Math.Log(_value) : _log;
 
     /// <summary>Whether the p-value is positive but below the smallest positive double, so that only its logarithm tells it.</summary>
-    public bool IsBelowDoubleRange => Value == 0 && !double.IsNegativeInfinity(_log);
+    public bool IsBelowDoubleRange => Value == 0 && double.IsFinite(_log);
 
     /// <summary>Makes a p-value from a double.</summary>
     /// <param name="value">In [0, 1].</param>
@@ -43,7 +45,7 @@ public readonly struct PValue : IEquatable<PValue>, IComparable<PValue>
             throw new ArgumentOutOfRangeException(nameof(value), value, "A p-value lies in [0, 1].");
         }
 
-        return new PValue(value, Math.Log(value));
+        return new PValue(value, double.NaN);
     }
 
     /// <summary>Makes a p-value from its double and its natural logarithm, where both were computed, each to its own accuracy.</summary>
@@ -74,13 +76,13 @@ public readonly struct PValue : IEquatable<PValue>, IComparable<PValue>
     public int CompareTo(PValue other) => Log.CompareTo(other.Log);
 
     /// <inheritdoc/>
-    public bool Equals(PValue other) => _value.Equals(other._value) && _log.Equals(other._log);
+    public bool Equals(PValue other) => IsGiven == other.IsGiven && (!IsGiven || (_value.Equals(other._value) && Log.Equals(other.Log)));
 
     /// <inheritdoc/>
     public override bool Equals(object? obj) => obj is PValue other && Equals(other);
 
     /// <inheritdoc/>
-    public override int GetHashCode() => HashCode.Combine(_value, _log);
+    public override int GetHashCode() => _value.GetHashCode();
 
     /// <summary>The value in invariant round-trip form, or as "exp(ln p)" below the range of doubles.</summary>
     public override string ToString() =>

@@ -11,17 +11,15 @@ internal sealed class RowHeap
     /// <summary>Keeps a batch; all but the last must be full.</summary>
     public void Add(RowBatch batch) => _batches.Add(batch);
 
-    /// <summary>Hands the rows to a sink, the experiments in the order of their numbers.</summary>
+    /// <summary>Hands the rows to a sink, the experiments in the order of their codes, so that the catalog's index grows at its end.</summary>
     public void HandTo(ExperimentSink sink, Utf8Interner codes, CancellationToken cancel)
     {
         (int[] order, int[] starts) = ByExperiment(codes.Count);
-        for (int experiment = 0; experiment < codes.Count; experiment++)
+        int[] byCode = [.. Enumerable.Range(0, codes.Count)];
+        Array.Sort(byCode, (a, b) => codes[a].SequenceCompareTo(codes[b]));
+        foreach (int experiment in byCode)
         {
-            if ((experiment & 0xff) == 0)
-            {
-                cancel.ThrowIfCancellationRequested();
-            }
-
+            cancel.ThrowIfCancellationRequested();
             sink.Begin(codes[experiment], Row(order[starts[experiment]]).Line);
             for (int i = starts[experiment]; i < starts[experiment + 1]; i++)
             {
