@@ -61,8 +61,47 @@ internal sealed class ExperimentSink : IDisposable
     /// <summary>Tested experiments that received more values.</summary>
     public List<string> Amended { get; } = [];
 
-    /// <summary>Whether the rows that follow belong to an experiment that may take them; otherwise they are only counted.</summary>
-    public void Begin(ReadOnlySpan<byte> code, long line)
+    /// <summary>Takes the rows of a batch, ending one experiment and beginning the next where they change.</summary>
+    /// <param name="batch">The rows.</param>
+    /// <param name="codes">Experiments by their numbers in the file.</param>
+    /// <param name="mayReturn">Whether a smaller number may follow a larger one; where rows are in the file's order it would be an experiment that was ended before.</param>
+    /// <param name="current">Number of the experiment at hand, -1 before the first.</param>
+    /// <returns>False where an experiment returned that may not.</returns>
+    public bool TryTake(RowBatch batch, Utf8Interner codes, bool mayReturn, ref int current)
+    {
+        for (int i = 0; i < batch.Count; i++)
+        {
+            int experiment = batch[i].Experiment;
+            if (experiment != current)
+            {
+                if (experiment < current && !mayReturn)
+                {
+                    return false;
+                }
+
+                EndLast();
+                current = experiment;
+                Begin(codes[experiment], batch[i].Line);
+            }
+
+            batch.HandTo(this, i);
+        }
+
+        return true;
+    }
+
+    /// <summary>Ends the experiment at hand, if there is one.</summary>
+    public void EndLast()
+    {
+        if (_experiment is not null)
+        {
+            End();
+            _experiment = null;
+        }
+    }
+
+    /// <summary>Begins an experiment; rows of one that may not take them are only counted.</summary>
+    private void Begin(ReadOnlySpan<byte> code, long line)
     {
         Values.Clear();
         _labels.Clear();
@@ -87,7 +126,7 @@ internal sealed class ExperimentSink : IDisposable
     public ushort GroupOf(int label, long line) => _labels.NumberOf(label, line);
 
     /// <summary>Stores the rows of the experiment at hand, unless something was found wrong with the file.</summary>
-    public void End()
+    private void End()
     {
         KnownExperiment experiment = _experiment ?? throw new InvalidOperationException("No experiment was begun.");
         long rows = Values.Count + Values.MissingCount;

@@ -109,37 +109,15 @@ public sealed class MeasurementLoader(Catalog catalog)
             int current = -1;
             while (rows.Next() is { } batch)
             {
-                for (int i = 0; i < batch.Count; i++)
+                if (!sink.TryTake(batch, rows.Codes, mayReturn: false, ref current))
                 {
-                    int experiment = batch[i].Experiment;
-                    if (experiment < current)
-                    {
-                        Run("ROLLBACK TO before_file");
-                        _complaints.Clear();
-                        return null;
-                    }
-
-                    if (experiment > current)
-                    {
-                        if (current >= 0)
-                        {
-                            sink.End();
-                        }
-
-                        current = experiment;
-                        sink.Begin(rows.Codes[experiment], batch[i].Line);
-                    }
-
-                    batch.HandTo(sink, i);
+                    Run("ROLLBACK TO before_file");
+                    _complaints.Clear();
+                    return null;
                 }
 
                 Report(file);
                 rows.Recycle(batch);
-            }
-
-            if (current >= 0)
-            {
-                sink.End();
             }
 
             return Finish(file, sink);
@@ -158,12 +136,20 @@ public sealed class MeasurementLoader(Catalog catalog)
             }
 
             using ExperimentSink sink = NewSink(rows);
-            heap.HandTo(sink, rows.Codes, cancel);
+            using BatchPipe ordered = heap.InOrder(rows.Codes, cancel);
+            int current = -1;
+            while (ordered.Next() is { } batch)
+            {
+                sink.TryTake(batch, rows.Codes, mayReturn: true, ref current);
+                ordered.Recycle(batch);
+            }
+
             return Finish(file, sink);
         }
 
         private LoadSummary Finish(MeasurementFile file, ExperimentSink sink)
         {
+            sink.EndLast();
             _complaints.ReportTo(file.Problems, file.Name);
             if (!file.Problems.IsEmpty)
             {

@@ -74,17 +74,23 @@ internal sealed class RowBatch
             kept.Mantissa = row.Value.Mantissa;
         }
 
-        // Either no row of a file is described or nearly all are, so the descriptions stand beside the rows, one each, from the first that has one.
-        if (_descriptions.Count > 0 || !row.Specimen.IsEmpty || !row.Block.IsEmpty || row.Order is not null)
-        {
-            while (_descriptions.Count < Count)
-            {
-                _descriptions.Add(new Description(-1, -1, null));
-            }
+        AddDescription(row.Specimen, row.Block, row.Order);
+        Count++;
+    }
 
-            _descriptions.Add(new Description(InternOrNone(row.Specimen), InternOrNone(row.Block), row.Order));
+    /// <summary>Adds a row of another batch.</summary>
+    public void Add(RowBatch other, int index)
+    {
+        ref FileRow kept = ref _rows[Count];
+        kept = other._rows[index];
+        if (kept.Kind == RowKind.Wide)
+        {
+            _wide.Add(other._wide[(int)kept.Mantissa]);
+            kept.Mantissa = _wide.Count - 1;
         }
 
+        Description description = index < other._descriptions.Count ? other._descriptions[index] : Description.None;
+        AddDescription(other.TextOrNone(description.Specimen), other.TextOrNone(description.Block), description.Order);
         Count++;
     }
 
@@ -113,9 +119,26 @@ internal sealed class RowBatch
         }
     }
 
+    /// <summary>Either no row of a file is described or nearly all are, so the descriptions stand beside the rows, one each, from the first that has one.</summary>
+    private void AddDescription(ReadOnlySpan<byte> specimen, ReadOnlySpan<byte> block, long? order)
+    {
+        if (_descriptions.Count > 0 || !specimen.IsEmpty || !block.IsEmpty || order is not null)
+        {
+            while (_descriptions.Count < Count)
+            {
+                _descriptions.Add(Description.None);
+            }
+
+            _descriptions.Add(new Description(InternOrNone(specimen), InternOrNone(block), order));
+        }
+    }
+
     private int InternOrNone(ReadOnlySpan<byte> text) => text.IsEmpty ? -1 : _texts.Intern(text);
 
     private ReadOnlySpan<byte> TextOrNone(int number) => number < 0 ? default : _texts[number];
 
-    private readonly record struct Description(int Specimen, int Block, long? Order);
+    private readonly record struct Description(int Specimen, int Block, long? Order)
+    {
+        public static Description None => new(-1, -1, null);
+    }
 }

@@ -11,23 +11,30 @@ internal sealed class RowHeap
     /// <summary>Keeps a batch; all but the last must be full.</summary>
     public void Add(RowBatch batch) => _batches.Add(batch);
 
-    /// <summary>Hands the rows to a sink, the experiments in the order of their codes, so that the catalog's index grows at its end.</summary>
-    public void HandTo(ExperimentSink sink, Utf8Interner codes, CancellationToken cancel)
+    /// <summary>The rows in batches, the experiments in the order of their codes, so that the catalog's index grows at its end; put together on a thread of its own.</summary>
+    public BatchPipe InOrder(Utf8Interner codes, CancellationToken cancel) =>
+        new(pipe => PutInOrder(codes, pipe), "ordering measurements", cancel);
+
+    private void PutInOrder(Utf8Interner codes, BatchPipe pipe)
     {
         (int[] order, int[] starts) = ByExperiment(codes.Count);
         int[] byCode = [.. Enumerable.Range(0, codes.Count)];
         Array.Sort(byCode, (a, b) => codes[a].SequenceCompareTo(codes[b]));
+        RowBatch batch = pipe.Fresh();
         foreach (int experiment in byCode)
         {
-            cancel.ThrowIfCancellationRequested();
-            sink.Begin(codes[experiment], Row(order[starts[experiment]]).Line);
             for (int i = starts[experiment]; i < starts[experiment + 1]; i++)
             {
-                _batches[order[i] / RowBatch.Size].HandTo(sink, order[i] % RowBatch.Size);
+                batch.Add(_batches[order[i] / RowBatch.Size], order[i] % RowBatch.Size);
+                if (batch.IsFull)
+                {
+                    pipe.Put(batch);
+                    batch = pipe.Fresh();
+                }
             }
-
-            sink.End();
         }
+
+        pipe.Put(batch);
     }
 
     private ref readonly FileRow Row(int index) => ref _batches[index / RowBatch.Size][index % RowBatch.Size];

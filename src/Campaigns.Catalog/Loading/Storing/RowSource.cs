@@ -1,5 +1,3 @@
-using System.Collections.Concurrent;
-using System.Runtime.ExceptionServices;
 using Campaigns.Catalog.Measurements;
 
 namespace Campaigns.Catalog.Loading;
@@ -11,22 +9,12 @@ namespace Campaigns.Catalog.Loading;
 /// </remarks>
 internal sealed class RowSource : IDisposable
 {
-    private const int BatchesAhead = 4;
-
-    private readonly BlockingCollection<RowBatch> _full = new(BatchesAhead);
-    private readonly ConcurrentBag<RowBatch> _free = [];
-    private readonly CancellationTokenSource _stop;
-    private readonly Thread _thread;
-    private ExceptionDispatchInfo? _fault;
+    private readonly BatchPipe _pipe;
 
     /// <param name="file">The opened file; it is read by the source's thread until that has ended.</param>
     /// <param name="cancel">Stops the reading.</param>
-    public RowSource(MeasurementFile file, CancellationToken cancel)
-    {
-        _stop = CancellationTokenSource.CreateLinkedTokenSource(cancel);
-        _thread = new Thread(() => ReadAll(file)) { IsBackground = true, Name = "reading measurements" };
-        _thread.Start();
-    }
+    public RowSource(MeasurementFile file, CancellationToken cancel) =>
+        _pipe = new BatchPipe(pipe => ReadAll(file, pipe), "reading measurements", cancel);
 
     /// <summary>Experiments by their numbers in the file.</summary>
     public Utf8Interner Codes { get; } = new();
@@ -35,71 +23,32 @@ internal sealed class RowSource : IDisposable
     public Utf8Interner Labels { get; } = new();
 
     /// <summary>The next batch; null at the end of the file, when the file may be asked for its problems.</summary>
-    public RowBatch? Next()
-    {
-        if (_full.TryTake(out RowBatch? batch, Timeout.Infinite, _stop.Token))
-        {
-            return batch;
-        }
-
-        _thread.Join();
-        _fault?.Throw();
-        return null;
-    }
+    public RowBatch? Next() => _pipe.Next();
 
     /// <summary>Gives a batch back that is no longer needed.</summary>
-    public void Recycle(RowBatch batch)
-    {
-        batch.Clear();
-        _free.Add(batch);
-    }
+    public void Recycle(RowBatch batch) => _pipe.Recycle(batch);
 
-    public void Dispose()
-    {
-        _stop.Cancel();
-        _thread.Join();
-        _full.Dispose();
-        _stop.Dispose();
-    }
+    public void Dispose() => _pipe.Dispose();
 
-    private void ReadAll(MeasurementFile file)
+    private void ReadAll(MeasurementFile file, BatchPipe pipe)
     {
-        try
+        RowBatch batch = pipe.Fresh();
+        int experiment = -1;
+        while (file.Read(out MeasurementRow row))
         {
-            RowBatch batch = Fresh();
-            int experiment = -1;
-            while (file.Read(out MeasurementRow row))
+            if (experiment < 0 || !row.Experiment.SequenceEqual(Codes[experiment]))
             {
-                if (experiment < 0 || !row.Experiment.SequenceEqual(Codes[experiment]))
-                {
-                    experiment = Codes.Intern(row.Experiment);
-                }
-
-                batch.Add(experiment, Labels.Intern(row.Group), row);
-                if (batch.IsFull)
-                {
-                    _full.Add(batch, _stop.Token);
-                    batch = Fresh();
-                }
+                experiment = Codes.Intern(row.Experiment);
             }
 
-            _full.Add(batch, _stop.Token);
+            batch.Add(experiment, Labels.Intern(row.Group), row);
+            if (batch.IsFull)
+            {
+                pipe.Put(batch);
+                batch = pipe.Fresh();
+            }
         }
-        catch (OperationCanceledException)
-        {
-            // Whoever stopped the source knows.
-        }
-#pragma warning disable CA1031 // Handed over to the thread that asks for the rows, and thrown there.
-        catch (Exception error)
-        {
-            _fault = ExceptionDispatchInfo.Capture(error);
-        }
-#pragma warning restore CA1031
-        finally
-        {
-            _full.CompleteAdding();
-        }
-    }
 
-    private RowBatch Fresh() => _free.TryTake(out RowBatch? batch) ? batch : new RowBatch();
+        pipe.Put(batch);
+    }
 }

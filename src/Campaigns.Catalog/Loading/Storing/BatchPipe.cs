@@ -1,0 +1,82 @@
+using System.Collections.Concurrent;
+using System.Runtime.ExceptionServices;
+
+namespace Campaigns.Catalog.Loading;
+
+/// <summary>Hands batches of rows from a thread that makes them to the one that stores them, in the order in which they were made, a few batches ahead.</summary>
+internal sealed class BatchPipe : IDisposable
+{
+    private const int BatchesAhead = 4;
+
+    private readonly BlockingCollection<RowBatch> _full = new(BatchesAhead);
+    private readonly ConcurrentBag<RowBatch> _free = [];
+    private readonly CancellationTokenSource _stop;
+    private readonly Thread _thread;
+    private ExceptionDispatchInfo? _fault;
+
+    /// <param name="make">Makes the batches, on a thread of its own: takes empty ones with <see cref="Fresh"/> and gives them with <see cref="Put"/>.</param>
+    /// <param name="name">What the thread does.</param>
+    /// <param name="cancel">Stops the making.</param>
+    public BatchPipe(Action<BatchPipe> make, string name, CancellationToken cancel)
+    {
+        _stop = CancellationTokenSource.CreateLinkedTokenSource(cancel);
+        _thread = new Thread(() => Run(make)) { IsBackground = true, Name = name };
+        _thread.Start();
+    }
+
+    /// <summary>An empty batch, for the maker.</summary>
+    public RowBatch Fresh() => _free.TryTake(out RowBatch? batch) ? batch : new RowBatch();
+
+    /// <summary>Passes a batch on, for the maker.</summary>
+    public void Put(RowBatch batch) => _full.Add(batch, _stop.Token);
+
+    /// <summary>The next batch; null when all were given out.</summary>
+    public RowBatch? Next()
+    {
+        if (_full.TryTake(out RowBatch? batch, Timeout.Infinite, _stop.Token))
+        {
+            return batch;
+        }
+
+        _thread.Join();
+        _fault?.Throw();
+        return null;
+    }
+
+    /// <summary>Gives a batch back that is no longer needed.</summary>
+    public void Recycle(RowBatch batch)
+    {
+        batch.Clear();
+        _free.Add(batch);
+    }
+
+    public void Dispose()
+    {
+        _stop.Cancel();
+        _thread.Join();
+        _full.Dispose();
+        _stop.Dispose();
+    }
+
+    private void Run(Action<BatchPipe> make)
+    {
+        try
+        {
+            make(this);
+        }
+        catch (OperationCanceledException)
+        {
+            // Whoever stopped the pipe knows.
+        }
+#pragma warning disable CA1031 // Handed over to the thread that asks for the batches, and thrown there.
+        catch (Exception error)
+        {
+            _fault = ExceptionDispatchInfo.Capture(error);
+        }
+#pragma warning restore CA1031
+        finally
+        {
+            _full.CompleteAdding();
+        }
+    }
+}
