@@ -40,6 +40,9 @@ internal sealed class BatchPipe : IDisposable
 
         _thread.Join();
         _fault?.Throw();
+
+        // A maker that was stopped has given out less than all: that is never the end.
+        _stop.Token.ThrowIfCancellationRequested();
         return null;
     }
 
