@@ -59,7 +59,13 @@ public sealed class Catalog : IDisposable
     /// <summary>Does a piece of work in one transaction: all of it is kept, or nothing. Inside another one it joins that.</summary>
     /// <param name="work">The work.</param>
     /// <exception cref="CatalogException">The catalog is locked, full, read-only or damaged; nothing was changed.</exception>
-    public T Change<T>(Func<T> work)
+    public T Change<T>(Func<T> work) => InTransaction("BEGIN IMMEDIATE", work);
+
+    /// <summary>Reads several things as they stand at one moment, whatever another program writes meanwhile.</summary>
+    /// <param name="work">The reading.</param>
+    internal T Snapshot<T>(Func<T> work) => InTransaction("BEGIN", work);
+
+    private T InTransaction<T>(string begin, Func<T> work)
     {
         ArgumentNullException.ThrowIfNull(work);
         if (_depth > 0)
@@ -67,7 +73,7 @@ public sealed class Catalog : IDisposable
             return work();
         }
 
-        Run("BEGIN IMMEDIATE");
+        Run(begin);
         _depth++;
         try
         {

@@ -44,6 +44,6 @@ public sealed record ExperimentResult
     /// <summary>Omega squared, possibly negative; null without a result.</summary>
     public double? OmegaSquared { get; init; }
 
-    /// <summary>Reasons of the amendments by which values came in after the test; empty where there are none.</summary>
+    /// <summary>Deviations from the plan: reasons of the amendments by which values came in after the test, and a test short of the planned values; empty where there are none.</summary>
     public IReadOnlyList<string> Amendments { get; init; } = [];
 }

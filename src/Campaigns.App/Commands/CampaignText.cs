@@ -41,7 +41,7 @@ internal static class CampaignText
 
         if (standing.AmendedCount > 0)
         {
-            lines.Add(FormattableString.Invariant($"Amended: {standing.AmendedCount} experiment(s) received values after they had been tested; 'campaigns show {campaign.Code} EXPERIMENT' gives the reason."));
+            lines.Add(FormattableString.Invariant($"Deviations: {standing.AmendedCount} experiment(s) received values after they had been tested, or were tested short of their plan; 'campaigns show {campaign.Code} EXPERIMENT' gives the reason."));
         }
 
         lines.Add(ReviewLine(standing));

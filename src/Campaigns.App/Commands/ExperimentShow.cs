@@ -34,7 +34,7 @@ internal static class ExperimentShow
             [
                 $"{standing.Campaign.Code} / {result.Plan.Code}  {result.Plan.Title}",
                 $"Response: {(result.Plan.Response.Length > 0 ? result.Plan.Response : "not named")}{unit}. Status: {result.Status.Sentence()}.{Missing(detail)}",
-                .. result.Amendments.Select(reason => $"Amended after its test: {reason}."),
+                .. result.Amendments.Select(reason => $"Deviation from the plan: {reason}."),
             ],
             WhenEmpty = "No group is known yet.",
         });

@@ -25,7 +25,7 @@ internal sealed class ExportVerb : Verb
         CampaignStanding standing = new StandingReader(catalog).Read(session.Get(_code));
         var export = new CampaignExport(catalog);
         export.Write(standing, folder, writer => WriteResults(standing, writer), NumberText.RoundTrip);
-        session.Say($"Wrote {standing.Campaign.Code} to '{folder}': campaign.json, plan.csv, measurements/{CampaignExport.MeasurementsName}, {CampaignExport.ResultsName}, {CampaignExport.ReviewsName}.");
+        session.Say($"Wrote {standing.Campaign.Code} to '{folder}': campaign.json, {(standing.Campaign.IsExploratory ? "" : "plan.csv, ")}measurements/{CampaignExport.MeasurementsName}, {CampaignExport.ResultsName}, {CampaignExport.ReviewsName}.");
         session.PrintForScripts(new RowTable([new Column("campaign", null), new Column("folder", null)], [[Cell.Text(standing.Campaign.Code), Cell.Text(folder)]]));
         return ExitCode.Done;
     }

@@ -27,15 +27,15 @@ internal sealed class RunVerb : Verb
         string planPath = Path.Combine(folder, "plan.csv");
         bool hasPlan = File.Exists(planPath);
         using Catalog.Catalog catalog = session.OpenOrCreateCatalog();
-        StoredCampaign campaign = catalog.Change(() => Register(session, catalog, description, hasPlan ? planPath : null));
+        StoredCampaign campaign = session.SayAfter(() => catalog.Change(() => Register(session, catalog, description, hasPlan ? planPath : null)));
         LoadFiles(session, catalog, campaign, Path.Combine(folder, "measurements"));
         string code = description.Code;
-        bool reviewed = catalog.Change(() =>
+        bool reviewed = session.SayAfter(() => catalog.Change(() =>
         {
             SealExploratory(session, catalog, code);
             TestVerb.Test(session, catalog, code, includeIncomplete: false);
             return ReviewWhereTested(session, catalog, code);
-        });
+        }));
         if (reviewed)
         {
             PrintSurvivors(session, catalog, code);

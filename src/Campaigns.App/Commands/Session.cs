@@ -11,6 +11,8 @@ namespace Campaigns.App.Commands;
 /// <summary>One command at work: what was typed, and the world around it.</summary>
 internal sealed class Session(Host host, ParseResult typed)
 {
+    private List<string>? _held;
+
     public Host Host { get; } = host;
 
     public ParseResult Typed { get; } = typed;
@@ -37,9 +39,34 @@ internal sealed class Session(Host host, ParseResult typed)
 
     public T Get<T>(Argument<T> argument) => Typed.GetValue(argument)!;
 
+    /// <summary>Does a piece of work and says only after it what it had to say: a sentence about a change is true once the change is kept.</summary>
+    public T SayAfter<T>(Func<T> work)
+    {
+        _held = [];
+        List<string> sentences;
+        try
+        {
+            T result = work();
+            sentences = _held;
+            _held = null;
+            sentences.ForEach(Say);
+            return result;
+        }
+        finally
+        {
+            _held = null;
+        }
+    }
+
     /// <summary>Says what was done: to people on standard output, and beside rows for a script on standard error.</summary>
     public void Say(string sentence)
     {
+        if (_held is not null)
+        {
+            _held.Add(sentence);
+            return;
+        }
+
         TextWriter writer = Format == RowFormat.Table ? Host.Out : Host.Error;
         foreach (string line in CellText.Wrap(sentence, Host.Width))
         {

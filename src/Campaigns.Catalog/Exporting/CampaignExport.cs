@@ -44,7 +44,12 @@ public sealed class CampaignExport(Catalog catalog)
         {
             Directory.CreateDirectory(System.IO.Path.Combine(draft, "measurements"));
             WriteFile(draft, "campaign.json", writer => WriteCampaign(standing.Campaign, writer));
-            WriteFile(draft, "plan.csv", writer => WritePlan(standing, writer));
+            if (!standing.Campaign.IsExploratory)
+            {
+                // A plan file would make a plan of what had none.
+                WriteFile(draft, "plan.csv", writer => WritePlan(standing, writer));
+            }
+
             WriteFile(System.IO.Path.Combine(draft, "measurements"), MeasurementsName, writer => WriteMeasurements(standing, writer));
             WriteFile(draft, ReviewsName, writer => WriteReviews(standing, writer, textOfP));
             WriteFile(draft, ResultsName, writeResults);

@@ -46,6 +46,9 @@ internal sealed class AmendedExperiments
         }
     }
 
+    /// <summary>Keys of the experiments.</summary>
+    public IReadOnlyCollection<long> Ids => _experiments.Keys;
+
     public int Count => _experiments.Count;
 
     public bool Any => Count > 0;

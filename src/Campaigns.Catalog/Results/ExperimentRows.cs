@@ -24,8 +24,8 @@ internal sealed class ExperimentRows : IDisposable
         _plans = catalog.Prepare($"SELECT {PlanStore.ExperimentColumns} FROM {chosen} WHERE e.campaign_id = ?1 ORDER BY e.id");
         _results = catalog.Prepare(
             $"""
-            SELECT r.experiment_id, r.status, r.group_count, r.observation_count, r.statistic, r.df1, r.df2, r.p, r.log_p, r.eta_squared, r.omega_squared
-            FROM {chosen} CROSS JOIN test_results r ON r.experiment_id = e.id WHERE e.campaign_id = ?1 ORDER BY e.id, r.test_run_id
+            SELECT r.experiment_id, r.status, r.group_count, r.observation_count, r.statistic, r.df1, r.df2, r.p, r.log_p, r.eta_squared, r.omega_squared, t.includes_incomplete
+            FROM {chosen} CROSS JOIN test_results r ON r.experiment_id = e.id JOIN test_runs t ON t.id = r.test_run_id WHERE e.campaign_id = ?1 ORDER BY e.id, r.test_run_id
             """);
         foreach (SqliteStatement statement in (SqliteStatement[])[_plans, _results])
         {
@@ -84,5 +84,11 @@ internal sealed class ExperimentRows : IDisposable
         P = FamilyReader.ReadP(row, 7),
         EtaSquared = row.NullableReal(9),
         OmegaSquared = row.NullableReal(10),
+        Amendments = row.Integer(11) != 0 && IsShort(experiment.Plan, (int)row.Integer(2), (int)row.Integer(3))
+            ? [.. experiment.Amendments, FormattableString.Invariant($"tested short of its plan, with {row.Integer(3)} values where {experiment.Plan.Replicates} in each group were planned")]
+            : experiment.Amendments,
     };
+
+    private static bool IsShort(PlannedExperiment plan, int groups, int values) =>
+        plan.Replicates is { } replicates && (groups < plan.Groups.Count || values < replicates * plan.Groups.Count);
 }

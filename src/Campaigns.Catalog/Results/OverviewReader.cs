@@ -1,4 +1,5 @@
 using Campaigns.Catalog.Plans;
+using Campaigns.Catalog.Providers;
 using Campaigns.Domain;
 using Campaigns.Statistics.Corrections;
 using Campaigns.Statistics.Probability;
@@ -11,13 +12,16 @@ public sealed class OverviewReader(Catalog catalog)
 {
     /// <summary>One campaign in figures; O(m log m) in its tested experiments.</summary>
     /// <param name="stored">The campaign.</param>
-    public CampaignOverview Read(StoredCampaign stored) => ReadWithSurvivors(stored).Overview;
+    public CampaignOverview Read(StoredCampaign stored) => catalog.Snapshot(() => ReadWithSurvivors(stored).Overview);
 
     /// <summary>One campaign in figures with its survivors, the smallest p-value first.</summary>
     /// <param name="code">The campaign.</param>
     /// <param name="most">Survivors to read in full.</param>
     /// <exception cref="RefusedException">There is no such campaign.</exception>
-    public (CampaignOverview Overview, IReadOnlyList<ExperimentResult> Survivors) ReadSurvivors(string code, int most)
+    public (CampaignOverview Overview, IReadOnlyList<ExperimentResult> Survivors) ReadSurvivors(string code, int most) =>
+        catalog.Snapshot(() => ReadSurvivorsNow(code, most));
+
+    private (CampaignOverview Overview, IReadOnlyList<ExperimentResult> Survivors) ReadSurvivorsNow(string code, int most)
     {
         StoredCampaign stored = new CampaignStore(catalog).Get(code);
         (CampaignOverview overview, FamilyColumns family, PValue[] adjusted) = ReadWithSurvivors(stored);
@@ -46,8 +50,28 @@ public sealed class OverviewReader(Catalog catalog)
         return (
             new CampaignOverview(
                 campaign, familySize, family.Count, hits, adjusted.Count(campaign.Level.Rejects),
-                new AmendedExperiments(catalog, stored.Id).Count, latest?.Head, families.ResultsAfter(stored.Id, latest?.LastRun ?? 0)),
+                Deviating(stored.Id), latest?.Head, families.ResultsAfter(stored.Id, latest?.LastRun ?? 0)),
             family,
             adjusted);
+    }
+
+    /// <summary>Experiments that received values after their test, or whose test was run short of the planned values.</summary>
+    private int Deviating(long campaignId)
+    {
+        var ids = new HashSet<long>(new AmendedExperiments(catalog, campaignId).Ids);
+        using SqliteStatement shorter = catalog.Prepare(
+            """
+            SELECT r.experiment_id FROM test_runs t JOIN test_results r ON r.test_run_id = t.id JOIN experiments e ON e.id = r.experiment_id
+            WHERE t.campaign_id = ?1 AND t.includes_incomplete = 1 AND e.replicates IS NOT NULL
+                AND (r.group_count < (SELECT count(*) FROM groups g WHERE g.group_set_id = e.group_set_id)
+                    OR r.observation_count < e.replicates * (SELECT count(*) FROM groups g WHERE g.group_set_id = e.group_set_id))
+            """);
+        shorter.Bind(1, campaignId);
+        while (shorter.Read())
+        {
+            ids.Add(shorter.Integer(0));
+        }
+
+        return ids.Count;
     }
 }

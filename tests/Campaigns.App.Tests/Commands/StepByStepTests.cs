@@ -46,6 +46,37 @@ public sealed class StepByStepTests : IDisposable
     }
 
     [Fact]
+    public void A_test_short_of_its_plan_is_told_in_every_output()
+    {
+        _place.Run("start", "C").Well();
+        _place.Run("plan", "C", _place.Write("plan.csv", "experiment,groups,replicates\nE1,a|b,3\n")).Well();
+        _place.Run("seal", "C").Well();
+        _place.Run("load", "C", _place.Write("short.csv", "experiment,group,value\nE1,a,1.0\nE1,a,1.1\nE1,b,5.0\nE1,b,5.1\n")).Well();
+        _place.Run("test", "C", "--incomplete").Well();
+        Assert.Equal("tested short of its plan, with 4 values where 3 in each group were planned", _place.Run("results", "C", "--format", "csv").Well().Csv.Value("E1", "amendments"));
+        Assert.Contains("Deviation from the plan: tested short", _place.Run("show", "C", "E1").Well().Out, StringComparison.Ordinal);
+        Assert.Contains("Deviations: 1 experiment", _place.Run("survivors", "C").Well().Out, StringComparison.Ordinal);
+    }
+
+    [Fact]
+    public void An_exploratory_campaign_is_exported_without_a_plan()
+    {
+        _place.Run("run", _place.Campaign("C", null, Workplace.TwoExperiments)).Well();
+        string folder = Path.Combine(Path.GetDirectoryName(_place.Write("x", ""))!, "exported");
+        _place.Run("export", "C", "--out", folder).Well();
+        Assert.True(File.Exists(Path.Combine(folder, "campaign.json")));
+        Assert.False(File.Exists(Path.Combine(folder, "plan.csv")));
+    }
+
+    [Fact]
+    public void Nothing_is_said_to_be_done_that_a_refusal_took_back()
+    {
+        Ran refused = _place.Run("run", _place.Campaign("C", "experiment,replicates\nE1,1\n", Workplace.TwoExperiments));
+        refused.Refused(3, "plan.csv");
+        Assert.DoesNotContain("Opened", refused.Out, StringComparison.Ordinal);
+    }
+
+    [Fact]
     public void Values_for_a_tested_experiment_need_a_reason_and_every_output_mentions_it()
     {
         _place.Run("run", _place.Campaign("C", null, Workplace.TwoExperiments)).Well();
@@ -53,10 +84,10 @@ public sealed class StepByStepTests : IDisposable
         _place.Run("load", "C", late, "--format", "csv").Refused(3, "E1", "--amend");
         Assert.Equal(["E1"], _place.Run("load", "C", late, "--amend", "two panels found, dried late", "--format", "csv").Well().Csv.Column("amended"));
         Assert.Equal("two panels found, dried late", _place.Run("results", "C", "--format", "csv").Well().Csv.Value("E1", "amendments"));
-        Assert.Contains("Amended after its test: two panels found, dried late", _place.Run("show", "C", "E1").Well().Out, StringComparison.Ordinal);
+        Assert.Contains("Deviation from the plan: two panels found, dried late", _place.Run("show", "C", "E1").Well().Out, StringComparison.Ordinal);
         foreach (string verb in (string[])["results", "survivors", "show"])
         {
-            Assert.Contains("Amended: 1 experiment", _place.Run(verb, "C").Well().Out, StringComparison.Ordinal);
+            Assert.Contains("Deviations: 1 experiment", _place.Run(verb, "C").Well().Out, StringComparison.Ordinal);
         }
     }
 
