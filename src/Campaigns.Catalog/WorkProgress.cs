@@ -5,4 +5,5 @@ namespace Campaigns.Catalog;
 /// <param name="Done">Units done.</param>
 /// <param name="Total">Units in all; 0 where that is not known.</param>
 /// <param name="Unit">The unit, in the plural.</param>
-public readonly record struct WorkProgress(string What, long Done, long Total, string Unit);
+/// <param name="Rows">Rows of a file done so far, where the unit is another; 0 where there are none to count.</param>
+public readonly record struct WorkProgress(string What, long Done, long Total, string Unit, long Rows = 0);

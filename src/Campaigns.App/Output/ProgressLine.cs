@@ -49,12 +49,13 @@ internal sealed class ProgressLine(Host host) : IDisposable
     internal static string Describe(WorkProgress progress, TimeSpan elapsed)
     {
         double rate = progress.Done / Math.Max(elapsed.TotalSeconds, 1e-3);
+        string rows = progress.Rows > 0 ? FormattableString.Invariant($"{progress.Rows} rows, ") : "";
         string speed = progress.Unit == "bytes"
             ? FormattableString.Invariant($"{rate / 1e6:0.0} MB/s")
             : FormattableString.Invariant($"{rate:0} {progress.Unit}/s");
         return progress.Total <= 0
             ? FormattableString.Invariant($"{progress.What}: {progress.Done} {progress.Unit}, {speed}")
-            : FormattableString.Invariant($"{progress.What}: {Math.Min(100, 100.0 * progress.Done / progress.Total):0} %, {speed}, {Math.Max(0, progress.Total - progress.Done) / Math.Max(rate, 1):0} s left");
+            : FormattableString.Invariant($"{progress.What}: {rows}{Math.Min(100, 100.0 * progress.Done / progress.Total):0} %, {speed}, {Math.Max(0, progress.Total - progress.Done) / Math.Max(rate, 1):0} s left");
     }
 
     private void Show(string text)

@@ -192,7 +192,7 @@ public sealed class MeasurementLoader(Catalog catalog)
         private void Report(MeasurementFile file)
         {
             cancel.ThrowIfCancellationRequested();
-            progress(new WorkProgress($"loading {file.Name}", file.Position, size, "bytes"));
+            progress(new WorkProgress($"loading {file.Name}", file.Position, size, "bytes", file.RowCount));
         }
 
         private void Run(string sql)
