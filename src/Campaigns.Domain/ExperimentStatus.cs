@@ -26,6 +26,24 @@ public enum ExperimentStatus
 
     /// <summary>Tested; no variation inside any group while the groups differ.</summary>
     ZeroWithinVariation,
+
+    /// <summary>Tested; a group holds a single value, whose variance the test needs.</summary>
+    GroupOfOne,
+
+    /// <summary>Tested; the values of one group are all the same, and the test weights by variances.</summary>
+    ConstantGroup,
+
+    /// <summary>Tested; the test compares within blocks, and a value has none.</summary>
+    BlockNotRecorded,
+
+    /// <summary>Tested; the blocks do not connect all groups.</summary>
+    DisconnectedBlocks,
+
+    /// <summary>Tested; the test compares within blocks, and a specimen was read in several.</summary>
+    SpecimenInSeveralBlocks,
+
+    /// <summary>Tested; a specimen stands in several groups.</summary>
+    SpecimenInSeveralGroups,
 }
 
 /// <summary>The frozen words and the plain sentences of <see cref="ExperimentStatus"/>.</summary>
@@ -41,6 +59,12 @@ public static class ExperimentStatusWords
         (ExperimentStatus.NoReplication, "no-replication", "no test: no group holds more than one value"),
         (ExperimentStatus.ConstantResponse, "constant-response", "no test: all values are the same"),
         (ExperimentStatus.ZeroWithinVariation, "zero-within-variance", "no test: the values inside every group are all the same while the groups differ, so the measurement is too coarse to show its own variation"),
+        (ExperimentStatus.GroupOfOne, "group-of-one", "no test: a group holds a single value, and this test needs the variance of every group"),
+        (ExperimentStatus.ConstantGroup, "constant-group", "no test: the values of one group are all the same, and this test weights each group by its variance"),
+        (ExperimentStatus.BlockNotRecorded, "block-not-recorded", "no test: it compares within blocks, and some value has no block recorded"),
+        (ExperimentStatus.DisconnectedBlocks, "blocks-disconnected", "no test: it compares within blocks, and the blocks do not connect all groups with each other"),
+        (ExperimentStatus.SpecimenInSeveralBlocks, "specimen-in-several-blocks", "no test: it compares within blocks, and readings of one specimen stand in several of them"),
+        (ExperimentStatus.SpecimenInSeveralGroups, "specimen-in-several-groups", "no test: readings of one specimen stand in several groups, while an experimental unit belongs to one"),
     ];
 
     /// <summary>The frozen word of a status.</summary>

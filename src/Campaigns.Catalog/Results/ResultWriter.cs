@@ -43,7 +43,7 @@ internal sealed class ResultWriter(Catalog catalog, long campaignId, long? lastL
                 double p = tested.P.Value;
                 _insert.Bind(3, "tested").Bind(6, tested.Statistic).Bind(7, tested.Df1).Bind(8, tested.Df2).Bind(9, p)
                     .Bind(10, p < PackedReviewLines.LogStoredBelow ? tested.P.Log : null)
-                    .Bind(11, tested.Variation.EtaSquared).Bind(12, tested.Variation.OmegaSquared);
+                    .Bind(11, tested.Variation?.EtaSquared).Bind(12, tested.Variation?.OmegaSquared);
                 break;
             case NotTestable none:
                 NotTestable++;
@@ -85,6 +85,12 @@ internal sealed class ResultWriter(Catalog catalog, long campaignId, long? lastL
         NotTestableReason.NoReplication => ExperimentStatus.NoReplication,
         NotTestableReason.ConstantResponse => ExperimentStatus.ConstantResponse,
         NotTestableReason.ZeroWithinVariation => ExperimentStatus.ZeroWithinVariation,
+        NotTestableReason.GroupOfOne => ExperimentStatus.GroupOfOne,
+        NotTestableReason.ConstantGroup => ExperimentStatus.ConstantGroup,
+        NotTestableReason.BlockNotRecorded => ExperimentStatus.BlockNotRecorded,
+        NotTestableReason.DisconnectedBlocks => ExperimentStatus.DisconnectedBlocks,
+        NotTestableReason.SpecimenInSeveralBlocks => ExperimentStatus.SpecimenInSeveralBlocks,
+        NotTestableReason.SpecimenInSeveralGroups => ExperimentStatus.SpecimenInSeveralGroups,
         _ => throw new ArgumentOutOfRangeException(nameof(reason), reason, "No status for this reason."),
     };
 }

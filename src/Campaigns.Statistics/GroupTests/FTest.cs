@@ -31,7 +31,7 @@ public sealed class FTest : GroupTest
 
     /// <inheritdoc/>
     /// <remarks>Equal means give F = 0 and p = 1. The reason why a sample is not testable is decided by the exact values, in the order of <see cref="NotTestableReason"/>.</remarks>
-    public override TestOutcome Test(GroupedSample sample)
+    public override TestOutcome Test(GroupedSample sample, RandomDraws draws)
     {
         OneWayLayout layout = OneWayLayout.Of(sample);
         if (layout.Obstacle is NotTestableReason reason)

@@ -23,7 +23,7 @@ public static class GroupSummaries
 
         Span<GroupSums> scratch = sample.GroupCount <= GroupsOnStack ? stackalloc GroupSums[GroupsOnStack] : new GroupSums[sample.GroupCount];
         ExactMoments moments = ExactMoments.Of(sample, scratch);
-        WideReal unit = WideReal.PowerOfTen(-(long)sample.Decimals);
+        WideReal unit = sample.Unit;
         var summaries = new GroupSummary[sample.GroupCount];
         for (int i = 0; i < summaries.Length; i++)
         {

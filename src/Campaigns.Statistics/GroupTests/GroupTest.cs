@@ -1,3 +1,5 @@
+using Campaigns.Statistics.Units;
+
 namespace Campaigns.Statistics.GroupTests;
 
 /// <summary>An omnibus test of "all group means are equal": one sealed class in one file, and one line in <see cref="GroupTestRegistry"/>.</summary>
@@ -18,8 +20,16 @@ public abstract class GroupTest
     /// <summary>Where the method was published.</summary>
     public abstract string Source { get; }
 
-    /// <summary>Tests one experiment.</summary>
+    /// <summary>Whether the test compares groups within blocks, so that every value needs its block.</summary>
+    public virtual bool UsesBlocks => false;
+
+    /// <summary>Tests one experiment whose values are independent (of each specimen one; <see cref="ExperimentalUnits"/> sees to that).</summary>
     /// <param name="sample">Its observations; at least the group count must be set.</param>
+    /// <param name="draws">How many random arrangements to draw, and from which seed, where the test draws any.</param>
     /// <returns><see cref="Tested"/>, or <see cref="NotTestable"/> with the reason.</returns>
-    public abstract TestOutcome Test(GroupedSample sample);
+    public abstract TestOutcome Test(GroupedSample sample, RandomDraws draws);
+
+    /// <summary>Tests one experiment with <see cref="RandomDraws.Usual"/>.</summary>
+    /// <inheritdoc cref="Test(GroupedSample, RandomDraws)"/>
+    public TestOutcome Test(GroupedSample sample) => Test(sample, RandomDraws.Usual);
 }

@@ -15,16 +15,16 @@ public readonly struct OneWayLayout
 
     private readonly WideReal _between;
     private readonly WideReal _within;
-    private readonly int _decimals;
+    private readonly WideReal _unit;
 
-    private OneWayLayout(int groupCount, int count, NotTestableReason? obstacle, WideReal between, WideReal within, int decimals)
+    private OneWayLayout(int groupCount, int count, NotTestableReason? obstacle, WideReal between, WideReal within, WideReal unit)
     {
         GroupCount = groupCount;
         Count = count;
         Obstacle = obstacle;
         _between = between;
         _within = within;
-        _decimals = decimals;
+        _unit = unit;
     }
 
     /// <summary>Groups that hold at least one value, k.</summary>
@@ -53,13 +53,13 @@ public readonly struct OneWayLayout
     public static OneWayLayout Of(GroupedSample sample)
     {
         Span<GroupSums> scratch = sample.GroupCount <= GroupsOnStack ? stackalloc GroupSums[GroupsOnStack] : new GroupSums[sample.GroupCount];
-        return Of(ExactMoments.Of(sample, scratch), sample.Decimals);
+        return Of(ExactMoments.Of(sample, scratch), sample.Unit);
     }
 
     /// <summary>Splits the variation of a sample from its sums.</summary>
     /// <param name="moments">Its sums.</param>
-    /// <param name="decimals">Digits after the decimal point of its mantissas.</param>
-    public static OneWayLayout Of(ExactMoments moments, int decimals)
+    /// <param name="unit">One unit of its mantissas in units of the response (<see cref="GroupedSample.Unit"/>).</param>
+    public static OneWayLayout Of(ExactMoments moments, WideReal unit)
     {
         int groups = 0;
         for (int i = 0; i < moments.GroupCount; i++)
@@ -74,7 +74,7 @@ public readonly struct OneWayLayout
             : within.Sign != 0 ? null
             : between.Sign == 0 ? NotTestableReason.ConstantResponse
             : NotTestableReason.ZeroWithinVariation;
-        return new(groups, moments.Count, obstacle, between, within, decimals);
+        return new(groups, moments.Count, obstacle, between, within, unit);
     }
 
     /// <summary>The table of variation: needs <see cref="Obstacle"/> to be null.</summary>
@@ -86,8 +86,7 @@ public readonly struct OneWayLayout
         WideReal total = _between + _within;
         WideReal meanWithin = _within / WithinDegreesOfFreedom;
         WideReal omega = (_between - (meanWithin * WideReal.From((double)BetweenDegreesOfFreedom))) / (total + meanWithin);
-        WideReal unit = WideReal.PowerOfTen(-(long)_decimals);
-        WideReal squaredUnit = WideReal.PowerOfTen(-2L * _decimals);
+        WideReal squaredUnit = _unit * _unit;
         return new(
             Line(_between * squaredUnit, BetweenDegreesOfFreedom),
             Line(_within * squaredUnit, WithinDegreesOfFreedom),
@@ -95,7 +94,7 @@ public readonly struct OneWayLayout
             Math.Min(f.ToDouble(), double.MaxValue),
             (_between / total).ToDouble(),
             omega.ToDouble(),
-            (WideReal.Sqrt(meanWithin) * unit).ToDouble());
+            (WideReal.Sqrt(meanWithin) * _unit).ToDouble());
     }
 
     [MethodImpl(MethodImplOptions.AggressiveInlining)]

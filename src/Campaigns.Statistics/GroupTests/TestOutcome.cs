@@ -5,7 +5,11 @@ namespace Campaigns.Statistics.GroupTests;
 /// <summary>What an omnibus test of one experiment gave: a statistic with its p-value, or the reason why there is none.</summary>
 /// <param name="GroupCount">Groups that hold at least one value.</param>
 /// <param name="ObservationCount">Values used, missing ones left out.</param>
-public abstract record TestOutcome(int GroupCount, int ObservationCount);
+public abstract record TestOutcome(int GroupCount, int ObservationCount)
+{
+    /// <summary>Specimens, where several readings of one specimen were averaged before the test; null where every value stood for itself.</summary>
+    public int? SpecimenCount { get; init; }
+}
 
 /// <summary>A test that could be computed.</summary>
 /// <param name="GroupCount">Groups that hold at least one value.</param>
@@ -14,7 +18,7 @@ public abstract record TestOutcome(int GroupCount, int ObservationCount);
 /// <param name="Df1">First degrees of freedom; null where the test has none.</param>
 /// <param name="Df2">Second degrees of freedom; null where the test has none.</param>
 /// <param name="P">The upper-tail p-value with its logarithm.</param>
-/// <param name="Variation">The table of variation of the one-way layout.</param>
+/// <param name="Variation">The table of variation of the layout that was tested; null where the values inside every group are all the same.</param>
 public sealed record Tested(
     int GroupCount,
     int ObservationCount,
@@ -22,7 +26,11 @@ public sealed record Tested(
     double? Df1,
     double? Df2,
     PValue P,
-    VariationTable Variation) : TestOutcome(GroupCount, ObservationCount);
+    VariationTable? Variation) : TestOutcome(GroupCount, ObservationCount)
+{
+    /// <summary>The arrangements behind the p-value; null where it comes from a distribution.</summary>
+    public Resampling? Resampling { get; init; }
+}
 
 /// <summary>A test that has no result; the hypothesis stays in its family and counts there as p = 1.</summary>
 /// <param name="GroupCount">Groups that hold at least one value.</param>
@@ -44,4 +52,22 @@ public enum NotTestableReason
 
     /// <summary>The values inside every group are all the same while the groups differ: the measurement is too coarse to show its own variation.</summary>
     ZeroWithinVariation,
+
+    /// <summary>A group holds a single value, and the test needs the variance of every group.</summary>
+    GroupOfOne,
+
+    /// <summary>The values of one group are all the same, and the test weights by the variance of every group.</summary>
+    ConstantGroup,
+
+    /// <summary>The test compares within blocks, and a value has no block recorded.</summary>
+    BlockNotRecorded,
+
+    /// <summary>Some groups never share a block with the others, not even by way of a third: nothing compares them within blocks.</summary>
+    DisconnectedBlocks,
+
+    /// <summary>The test compares within blocks, and readings of one specimen stand in several blocks.</summary>
+    SpecimenInSeveralBlocks,
+
+    /// <summary>Readings of one specimen stand in several groups, while an experimental unit belongs to one.</summary>
+    SpecimenInSeveralGroups,
 }

@@ -21,4 +21,8 @@ public sealed record VariationTable(
     double F,
     double EtaSquared,
     double OmegaSquared,
-    double ResidualStandardDeviation);
+    double ResidualStandardDeviation)
+{
+    /// <summary>Between blocks, groups disregarded; null where the layout has no blocks. With it, <see cref="Between"/> is adjusted for blocks, and the lines add up to the total.</summary>
+    public VariationLine? Blocks { get; init; }
+}

@@ -82,6 +82,10 @@ public readonly struct WideReal
         return new(five._fraction, five._exponent + power);
     }
 
+    /// <summary>A power of two; exact.</summary>
+    /// <param name="power">Positive, negative or zero.</param>
+    public static WideReal PowerOfTwo(long power) => new(DoubleDouble.From(1.0), power);
+
     /// <summary>The negated number; exact.</summary>
     [MethodImpl(MethodImplOptions.AggressiveInlining)]
     public static WideReal operator -(WideReal value) => new(-value._fraction, value._exponent);

@@ -55,7 +55,7 @@ public sealed class EdgeCasesTests
         Assert.Equal(0, tested.Statistic);
         Assert.Equal(1, tested.P.Value);
         Assert.Equal(0, tested.P.Log);
-        Assert.Equal(0, tested.Variation.EtaSquared);
+        Assert.Equal(0, tested.Variation!.EtaSquared);
     }
 
     [Fact]
@@ -69,9 +69,9 @@ public sealed class EdgeCasesTests
             Tested far = Assert.IsType<Tested>(new FTest().Test(new GroupedSample(values, decimals, groups, 2)));
             Assert.Equal(plain.Statistic, far.Statistic);
             Assert.Equal(plain.P, far.P);
-            Assert.Equal(plain.Variation.EtaSquared, far.Variation.EtaSquared);
-            Assert.Equal(plain.Variation.OmegaSquared, far.Variation.OmegaSquared);
-            Assert.Equal(decimals < 0 ? double.PositiveInfinity : 0, far.Variation.Within.SumOfSquares);
+            Assert.Equal(plain.Variation!.EtaSquared, far.Variation!.EtaSquared);
+            Assert.Equal(plain.Variation!.OmegaSquared, far.Variation!.OmegaSquared);
+            Assert.Equal(decimals < 0 ? double.PositiveInfinity : 0, far.Variation!.Within.SumOfSquares);
         }
     }
 
@@ -127,8 +127,8 @@ public sealed class EdgeCasesTests
         if (Relative.Error(expected.Number("f"), tested.Statistic) < 1e-15)
         {
             Relative.AssertNear(expected.Number("p"), tested.P.Value, 1e-14, $"{name} p");
-            Relative.AssertNear(expected.Number("ss_between"), tested.Variation.Between.SumOfSquares, 1e-15, $"{name} SS between");
-            Relative.AssertNear(expected.Number("ss_within"), tested.Variation.Within.SumOfSquares, 1e-15, $"{name} SS within");
+            Relative.AssertNear(expected.Number("ss_between"), tested.Variation!.Between.SumOfSquares, 1e-15, $"{name} SS between");
+            Relative.AssertNear(expected.Number("ss_within"), tested.Variation!.Within.SumOfSquares, 1e-15, $"{name} SS within");
         }
     }
 }

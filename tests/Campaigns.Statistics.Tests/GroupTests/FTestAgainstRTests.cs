@@ -40,8 +40,8 @@ public sealed class FTestAgainstRTests(ITestOutputHelper output)
         {
             Tested tested = Assert.IsType<Tested>(TypedSample.OfText(experiments[i]).Test(new FTest()));
             double[] r = Numbers(answers[i]);
-            double within = tested.Variation.Within.SumOfSquares;
-            double between = tested.Variation.Between.SumOfSquares;
+            double within = tested.Variation!.Within.SumOfSquares;
+            double between = tested.Variation!.Between.SumOfSquares;
 
             // R reads the values as doubles and rotates the whole vector, offset included: each effect is off by a few eps times the vector's length,
             // which is 2 sqrt(SS) times that in a sum of squares. Ours is exact.

@@ -35,8 +35,8 @@ public sealed class FTestPropertiesTests
             Tested other = Assert.IsType<Tested>(scaled.Test(new FTest()));
             Assert.Equal(plain.Statistic, other.Statistic);
             Assert.Equal(plain.P, other.P);
-            Assert.Equal(plain.Variation.EtaSquared, other.Variation.EtaSquared);
-            Assert.Equal(plain.Variation.OmegaSquared, other.Variation.OmegaSquared);
+            Assert.Equal(plain.Variation!.EtaSquared, other.Variation!.EtaSquared);
+            Assert.Equal(plain.Variation!.OmegaSquared, other.Variation.OmegaSquared);
         }
     }
 
@@ -55,8 +55,8 @@ public sealed class FTestPropertiesTests
         ushort[] groups = [0, 0, 0, 0, 1, 1, 1, 1, 2, 2, 2, 2];
         VariationTable expected = OneWayLayout.Of(new GroupedSample(mantissas, 2, groups, 3)).Table();
         var sample = new GroupedSample(mantissas, 2, groups, 3);
-        Assert.Equal(expected, OneWayLayout.Of(ExactMoments.About(sample, (long)origin, new GroupSums[3]), 2).Table());
-        Assert.Equal(expected, OneWayLayout.Of(ExactMoments.About(sample, (BigInteger)origin, new GroupSums[3]), 2).Table());
+        Assert.Equal(expected, OneWayLayout.Of(ExactMoments.About(sample, (long)origin, new GroupSums[3]), sample.Unit).Table());
+        Assert.Equal(expected, OneWayLayout.Of(ExactMoments.About(sample, (BigInteger)origin, new GroupSums[3]), sample.Unit).Table());
     }
 
     [Property]

@@ -21,7 +21,7 @@ public sealed class NistReferenceDatasetsTests(ITestOutputHelper output)
         {
             string name = row.Text("experiment");
             Tested tested = Assert.IsType<Tested>(TypedSample.OfText(Data.Value[name]).Test(new FTest()));
-            VariationTable table = tested.Variation;
+            VariationTable table = tested.Variation!;
             double[] digits =
             [
                 Relative.Digits(tested.Statistic, row.Number("f")),

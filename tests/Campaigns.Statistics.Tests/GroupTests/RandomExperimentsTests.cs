@@ -16,7 +16,7 @@ public sealed class RandomExperimentsTests(ITestOutputHelper output)
         foreach ((ReferenceRow truth, Tested tested) in Results(TypedSample.OfDoubles, _ => true))
         {
             string name = truth.Text("experiment");
-            VariationTable table = tested.Variation;
+            VariationTable table = tested.Variation!;
             Assert.Equal(truth.Integer("k"), tested.GroupCount);
             Assert.Equal(truth.Integer("n_total"), tested.ObservationCount);
             foreach ((string column, double computed) in new[]
@@ -49,8 +49,8 @@ public sealed class RandomExperimentsTests(ITestOutputHelper output)
             seen++;
             string name = truth.Text("experiment");
             Relative.AssertNear(truth.Number("f"), tested.Statistic, 1e-12, $"{name} F");
-            Relative.AssertNear(truth.Number("ss_within"), tested.Variation.Within.SumOfSquares, 1e-12, $"{name} SS within");
-            Relative.AssertNear(truth.Number("ss_between"), tested.Variation.Between.SumOfSquares, 1e-12, $"{name} SS between");
+            Relative.AssertNear(truth.Number("ss_within"), tested.Variation!.Within.SumOfSquares, 1e-12, $"{name} SS within");
+            Relative.AssertNear(truth.Number("ss_between"), tested.Variation!.Between.SumOfSquares, 1e-12, $"{name} SS between");
             Relative.AssertNear(truth.Number("log_p"), tested.P.Log, 1e-11, $"{name} log p");
         }
 

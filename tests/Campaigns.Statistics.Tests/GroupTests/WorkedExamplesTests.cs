@@ -40,7 +40,7 @@ public sealed class WorkedExamplesTests
     public void The_table_of_the_NIST_handbook_example_comes_out()
     {
         // Section 7.4.3.4: sums of squares 27.897 and 17.452, mean squares 13.949 and 1.454.
-        VariationTable table = Test("NIST743").Variation;
+        VariationTable table = Test("NIST743").Variation!;
         Assert.Equal(27.897, table.Between.SumOfSquares, 0.0005);
         Assert.Equal(17.452, table.Within.SumOfSquares, 0.0005);
         Assert.Equal(45.349, table.Total.SumOfSquares, 0.0005);
@@ -61,9 +61,9 @@ public sealed class WorkedExamplesTests
 
             // The reference read the values as doubles; offsets up to a thousand times the spread cost it three digits.
             Relative.AssertNear(truth.Number("f"), tested.Statistic, 1e-12, $"{name} F");
-            Relative.AssertNear(truth.Number("ss_between"), tested.Variation.Between.SumOfSquares, 1e-12, $"{name} SS between");
-            Relative.AssertNear(truth.Number("ss_within"), tested.Variation.Within.SumOfSquares, 1e-12, $"{name} SS within");
-            Relative.AssertNear(truth.Number("omega2"), tested.Variation.OmegaSquared, 1e-12, $"{name} omega squared");
+            Relative.AssertNear(truth.Number("ss_between"), tested.Variation!.Between.SumOfSquares, 1e-12, $"{name} SS between");
+            Relative.AssertNear(truth.Number("ss_within"), tested.Variation!.Within.SumOfSquares, 1e-12, $"{name} SS within");
+            Relative.AssertNear(truth.Number("omega2"), tested.Variation!.OmegaSquared, 1e-12, $"{name} omega squared");
             Relative.AssertNear(truth.Number("p"), tested.P.Value, 1e-11, $"{name} p");
             Relative.AssertNear(truth.Number("log_p"), tested.P.Log, 1e-12, $"{name} log p");
         }
