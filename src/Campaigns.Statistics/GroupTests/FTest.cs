@@ -42,14 +42,23 @@ public sealed class FTest : GroupTest
         VariationTable table = layout.Table();
         int df1 = layout.BetweenDegreesOfFreedom;
         int df2 = layout.WithinDegreesOfFreedom;
-        FDistribution law = FDistribution.For(df1, df2);
-        PValue p = table.F < PowerLawFrom ? law.UpperTailPValue(table.F) : FarTail(law, layout.F);
-        return new Tested(layout.GroupCount, layout.Count, table.F, df1, df2, p, table);
+        return new Tested(layout.GroupCount, layout.Count, table.F, df1, df2, UpperTail(layout.F, df1, df2), table);
     }
 
-    /// <summary>The p-value of an F near or beyond the largest double: P(F > f) falls as f to the power of -df2/2.</summary>
-    private static PValue FarTail(FDistribution law, WideReal f)
+    /// <summary>The p-value of an F that may lie beyond the largest double.</summary>
+    /// <param name="f">Not negative.</param>
+    /// <param name="df1">First degrees of freedom.</param>
+    /// <param name="df2">Second degrees of freedom.</param>
+    internal static PValue UpperTail(WideReal f, double df1, double df2)
     {
+        FDistribution law = FDistribution.For(df1, df2);
+        double rounded = f.ToDouble();
+        if (rounded < PowerLawFrom)
+        {
+            return law.UpperTailPValue(rounded);
+        }
+
+        // P(F > f) falls as f to the power of -df2/2.
         double factor = (f / PowerLawFrom).Log();
         return PValue.FromLog(law.LogUpperTail(PowerLawFrom) - (law.Df2 / 2 * factor));
     }
