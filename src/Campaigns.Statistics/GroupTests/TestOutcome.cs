@@ -1,4 +1,5 @@
 using Campaigns.Statistics.Probability;
+using Campaigns.Statistics.Units;
 
 namespace Campaigns.Statistics.GroupTests;
 
@@ -9,6 +10,9 @@ public abstract record TestOutcome(int GroupCount, int ObservationCount)
 {
     /// <summary>Specimens, where several readings of one specimen were averaged before the test; null where every value stood for itself.</summary>
     public int? SpecimenCount { get; init; }
+
+    /// <summary>How the values inside groups vary between specimens and within them; null where no specimen has several readings, or one stands in several groups.</summary>
+    public SpecimenVariation? Specimens { get; init; }
 }
 
 /// <summary>A test that could be computed.</summary>
