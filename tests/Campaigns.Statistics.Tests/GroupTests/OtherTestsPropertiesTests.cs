@@ -80,6 +80,13 @@ public sealed class OtherTestsPropertiesTests
     {
         var random = new Random(seed);
         BigInteger[][] groups = [.. Enumerable.Range(0, random.Next(2, 7)).Select(_ => Values(random, random.Next(2, 9), random.Next(1, 18), BigInteger.Pow(10, random.Next(0, 20)), BigInteger.Pow(10, random.Next(0, 40))))];
+        if (seed % 2 == 0)
+        {
+            // One wide group far away, the others narrow and close to each other.
+            groups[0] = Values(random, 3, 17, BigInteger.Pow(10, 19), BigInteger.Pow(10, 39));
+            groups = [groups[0], .. groups.Skip(1).Select(g => Values(random, g.Length, 2)), Values(random, 4, 2)];
+        }
+
         TypedSample sample = new([.. groups.SelectMany(g => g)], 3, [.. groups.SelectMany((g, i) => g.Select(_ => (ushort)i))], groups.Length);
         int k = groups.Length;
         int n = sample.Count;
