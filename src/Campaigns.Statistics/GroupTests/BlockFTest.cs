@@ -1,3 +1,4 @@
+using Campaigns.Statistics.Distributions;
 namespace Campaigns.Statistics.GroupTests;
 
 /// <summary>The F test of groups within blocks: the analysis of variance of the additive two-way layout, groups adjusted for blocks.</summary>
@@ -35,6 +36,6 @@ public sealed class BlockFTest : GroupTest
         VariationTable table = layout.Table();
         int df1 = layout.BetweenDegreesOfFreedom;
         int df2 = layout.ResidualDegreesOfFreedom;
-        return new Tested(layout.GroupCount, layout.Count, table.F, df1, df2, FTest.UpperTail(layout.F, df1, df2), table);
+        return new Tested(layout.GroupCount, layout.Count, table.F, df1, df2, FDistribution.For(df1, df2).UpperTailPValue(layout.F), table);
     }
 }

@@ -1,5 +1,4 @@
 using Campaigns.Statistics.Distributions;
-using Campaigns.Statistics.Numerics;
 using Campaigns.Statistics.Probability;
 
 namespace Campaigns.Statistics.GroupTests;
@@ -11,9 +10,6 @@ namespace Campaigns.Statistics.GroupTests;
 /// </remarks>
 public sealed class FTest : GroupTest
 {
-    /// <summary>From here on the upper tail of F is a pure power of F, to far beyond double accuracy, for any degrees of freedom that an experiment can have.</summary>
-    private const double PowerLawFrom = 1e300;
-
     /// <inheritdoc/>
     public override string Key => "f";
 
@@ -42,24 +38,8 @@ public sealed class FTest : GroupTest
         VariationTable table = layout.Table();
         int df1 = layout.BetweenDegreesOfFreedom;
         int df2 = layout.WithinDegreesOfFreedom;
-        return new Tested(layout.GroupCount, layout.Count, table.F, df1, df2, UpperTail(layout.F, df1, df2), table);
-    }
-
-    /// <summary>The p-value of an F that may lie beyond the largest double.</summary>
-    /// <param name="f">Not negative.</param>
-    /// <param name="df1">First degrees of freedom.</param>
-    /// <param name="df2">Second degrees of freedom.</param>
-    internal static PValue UpperTail(WideReal f, double df1, double df2)
-    {
         FDistribution law = FDistribution.For(df1, df2);
-        double rounded = f.ToDouble();
-        if (rounded < PowerLawFrom)
-        {
-            return law.UpperTailPValue(rounded);
-        }
-
-        // P(F > f) falls as f to the power of -df2/2.
-        double factor = (f / PowerLawFrom).Log();
-        return PValue.FromLog(law.LogUpperTail(PowerLawFrom) - (law.Df2 / 2 * factor));
+        PValue p = table.F < FDistribution.PowerLawFrom ? law.UpperTailPValue(table.F) : law.UpperTailPValue(layout.F);
+        return new Tested(layout.GroupCount, layout.Count, table.F, df1, df2, p, table);
     }
 }
