@@ -40,25 +40,14 @@ public sealed class BlockFTestPropertiesTests
     public void In_complete_blocks_the_sums_of_squares_are_those_of_plain_totals(int seed)
     {
         var random = new Random(seed);
-        int k = random.Next(2, 9);
-        int b = random.Next(2, 12);
-        int r = random.Next(1, 4);
-        long[] values = [.. Enumerable.Range(0, k * b * r).Select(_ => random.NextInt64(-1_000_000_000_000, 1_000_000_000_000))];
-        ushort[] groups = [.. values.Select((_, i) => (ushort)(i % k))];
-        int[] blocks = [.. values.Select((_, i) => i / k % b)];
-        BigInteger n = values.Length;
-        BigInteger total = Total(values.Select(v => (BigInteger)v));
-        BigInteger squares = Total(values.Select(v => (BigInteger)v * v));
-        BigInteger correction = total * total;
-        BigInteger ofGroups = (k * Total(values.Select((v, i) => (v, groups[i])).GroupBy(p => p.Item2).Select(g => Square(g.Aggregate((Int128)0, (sum, p) => sum + p.v))))) - correction;
-        BigInteger ofBlocks = (b * Total(values.Select((v, i) => (v, blocks[i])).GroupBy(p => p.Item2).Select(g => Square(g.Aggregate((Int128)0, (sum, p) => sum + p.v))))) - correction;
-        BigInteger rest = (n * squares) - correction - ofGroups - ofBlocks;
-        Tested tested = Assert.IsType<Tested>(new BlockFTest().Test(new GroupedSample(values, 0, groups, k) { Blocks = blocks }));
-        Relative.AssertNear((double)ofGroups / (double)n, tested.Variation!.Between.SumOfSquares, 1e-15, "groups");
-        Relative.AssertNear((double)ofBlocks / (double)n, tested.Variation.Blocks!.Value.SumOfSquares, 1e-15, "blocks");
-        Relative.AssertNear((double)rest / (double)n, tested.Variation.Within.SumOfSquares, 1e-15, "residual");
-        Relative.AssertNear((double)ofGroups / (k - 1) / ((double)rest / (values.Length - k - b + 1)), tested.Statistic, 2e-15, "F");
+        CheckComplete(random, random.Next(2, 9), random.Next(2, 12), random.Next(1, 4));
     }
+
+    [Theory]
+    [InlineData(2, 3, 50_000)]
+    [InlineData(60, 50, 2)]
+    [InlineData(3, 20_000, 1)]
+    public void Large_complete_designs_too(int groups, int blocks, int repeats) => CheckComplete(new Random(11), groups, blocks, repeats);
 
     /// <summary>What a least-squares fit is, whatever computed it: residuals that add up to nothing in every group and every block, leverages that add up to the parameters, squares that add up to the residual line.</summary>
     [Property]
@@ -109,6 +98,25 @@ public sealed class BlockFTestPropertiesTests
         {
             Assert.Equal(plain, other);
         }
+    }
+
+    private static void CheckComplete(Random random, int k, int b, int r)
+    {
+        long[] values = [.. Enumerable.Range(0, k * b * r).Select(_ => random.NextInt64(-1_000_000_000_000, 1_000_000_000_000))];
+        ushort[] groups = [.. values.Select((_, i) => (ushort)(i % k))];
+        int[] blocks = [.. values.Select((_, i) => i / k % b)];
+        BigInteger n = values.Length;
+        BigInteger total = Total(values.Select(v => (BigInteger)v));
+        BigInteger squares = Total(values.Select(v => (BigInteger)v * v));
+        BigInteger correction = total * total;
+        BigInteger ofGroups = (k * Total(values.Select((v, i) => (v, groups[i])).GroupBy(p => p.Item2).Select(g => Square(g.Aggregate((Int128)0, (sum, p) => sum + p.v))))) - correction;
+        BigInteger ofBlocks = (b * Total(values.Select((v, i) => (v, blocks[i])).GroupBy(p => p.Item2).Select(g => Square(g.Aggregate((Int128)0, (sum, p) => sum + p.v))))) - correction;
+        BigInteger rest = (n * squares) - correction - ofGroups - ofBlocks;
+        Tested tested = Assert.IsType<Tested>(new BlockFTest().Test(new GroupedSample(values, 0, groups, k) { Blocks = blocks }));
+        Relative.AssertNear((double)ofGroups / (double)n, tested.Variation!.Between.SumOfSquares, 1e-15, "groups");
+        Relative.AssertNear((double)ofBlocks / (double)n, tested.Variation.Blocks!.Value.SumOfSquares, 1e-15, "blocks");
+        Relative.AssertNear((double)rest / (double)n, tested.Variation.Within.SumOfSquares, 1e-15, "residual");
+        Relative.AssertNear((double)ofGroups / (k - 1) / ((double)rest / (values.Length - k - b + 1)), tested.Statistic, 2e-15, "F");
     }
 
     private static void CheckFit(DesignedSample sample)
