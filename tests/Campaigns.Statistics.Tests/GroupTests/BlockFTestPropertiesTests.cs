@@ -65,6 +65,14 @@ public sealed class BlockFTestPropertiesTests
         CheckFit(RandomDesigns.Draw(random, groups, blocks, (i, j) => (i + (j * 7)) % groups <= 1 + (j % 5) ? 1 + random.Next(1 + (j % 3)) : 0));
     }
 
+    /// <summary>Links that hang by a thread: each group meets the next in one block only, with one value against hundreds.</summary>
+    [Theory]
+    [InlineData(40, 1, 400)]
+    [InlineData(40, 400, 1)]
+    [InlineData(10, 2, 5000)]
+    public void A_chain_of_very_unequal_blocks_is_fitted_too(int groups, int few, int many) =>
+        CheckFit(RandomDesigns.Draw(new Random(5), groups, groups, (i, j) => i == j ? few : i == (j + 1) % groups ? (i % 3 == 0 ? 1 : many) : 0));
+
     [Property]
     public void A_block_with_a_single_value_changes_nothing_but_the_count(int seed)
     {
