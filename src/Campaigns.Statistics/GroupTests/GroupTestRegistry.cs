@@ -10,6 +10,7 @@ public static class GroupTestRegistry
         new WelchTest(),
         new BrownForsytheTest(),
         new KruskalWallisTest(),
+        new BlockFTest(),
     ];
 
     /// <summary>The test with a key, or null.</summary>
