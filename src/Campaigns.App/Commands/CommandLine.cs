@@ -21,6 +21,7 @@ internal static class CommandLine
         () => new SurvivorsVerb(),
         () => new CorrectionsVerb(),
         () => new AdjustVerb(),
+        () => new SizeVerb(),
         () => new RiskVerb(),
         () => new ListVerb(),
         () => new ShowVerb(),
