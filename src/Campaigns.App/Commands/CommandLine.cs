@@ -22,6 +22,7 @@ internal static class CommandLine
         () => new ComparisonsVerb(),
         () => new CorrectionsVerb(),
         () => new AdjustVerb(),
+        () => new SizeVerb(),
         () => new RiskVerb(),
         () => new ExcludeVerb(),
         () => new ListVerb(),
