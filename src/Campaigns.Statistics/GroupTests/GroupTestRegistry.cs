@@ -4,7 +4,7 @@ namespace Campaigns.Statistics.GroupTests;
 public static class GroupTestRegistry
 {
     /// <summary>The tests.</summary>
-    public static IReadOnlyList<GroupTest> All { get; } = [new FTest()];
+    public static IReadOnlyList<GroupTest> All { get; } = [new FTest(), new PermutationTest()];
 
     /// <summary>The test with a key, or null.</summary>
     /// <param name="key">Exact, lower case.</param>
