@@ -27,14 +27,9 @@ internal sealed class PackedSubsetSums
     private readonly Vector512<double> _high;
     private readonly Vector512<double>[] _weights;
 
-    // Pinned, and used from the first place that is aligned to a vector: a load that straddles two cache lines takes twice the time.
-    private readonly double[] _memory;
-    private readonly int _start;
-    private readonly int _length;
+    private readonly Memory<double> _sums;
 
-    /// <summary>Makes the tables.</summary>
-    /// <param name="experiments">One to eight, all of the same design of at most 64 values.</param>
-    public PackedSubsetSums(PermutationScores[] experiments)
+    private PackedSubsetSums(PermutationScores[] experiments, Memory<double> memory)
     {
         _experiments = experiments;
         PermutationDesign design = experiments[0].Design;
@@ -42,22 +37,39 @@ internal sealed class PackedSubsetSums
         _low = Lane(e => e.Low);
         _high = Lane(e => e.High);
         _weights = [.. Enumerable.Range(0, design.Sizes.Length).Select(group => Lane(e => e.Weights[group]))];
-        _length = Math.Max(LeastTables, (design.Count + BitsPerTable - 1) / BitsPerTable) * TableLength;
-        _memory = GC.AllocateArray<double>((_length + 1) * Lanes, pinned: true);
-        _start = (int)(-Marshal.UnsafeAddrOfPinnedArrayElement(_memory, 0) & ((Lanes * sizeof(double)) - 1)) / sizeof(double);
-        Span<Vector512<double>> sums = MemoryMarshal.Cast<double, Vector512<double>>(_memory.AsSpan(_start))[.._length];
-        for (int position = 0; position < design.Count; position++)
+        _sums = memory;
+        Span<Vector512<double>> sums = MemoryMarshal.Cast<double, Vector512<double>>(memory.Span);
+        for (int position = 0; position < sums.Length / TableLength * BitsPerTable; position++)
         {
             // All subsets whose highest member this is: those without it, and it.
-            Vector512<double> value = Lane(e => e.Values[position]);
+            Vector512<double> value = position < design.Count ? Lane(e => e.Values[position]) : default;
             int subsets = 1 << (position % BitsPerTable);
             Span<Vector512<double>> table = sums.Slice(position / BitsPerTable * TableLength, TableLength);
+            table[0] = default;
             for (int i = 0; i < subsets; i++)
             {
                 table[subsets + i] = table[i] + value;
             }
         }
     }
+
+    /// <summary>Numbers that the tables of some experiments take.</summary>
+    public static int MemoryOf(PermutationDesign design, int experiments) => (PacksOf(experiments) * TablesOf(design) * TableLength * Lanes) + Lanes;
+
+    /// <summary>Makes the tables of any number of experiments.</summary>
+    /// <param name="experiments">All of the same design of at most 64 values.</param>
+    /// <param name="memory">At least <see cref="MemoryOf"/>, in use as long as the packs are. Used from the first place that is aligned to a vector, because a load that straddles two cache lines takes twice the time; should the array move, nothing but time is lost.</param>
+    /// <returns>Packs of eight; the last may hold fewer.</returns>
+    public static PackedSubsetSums[] Of(IReadOnlyList<PermutationScores> experiments, double[] memory)
+    {
+        int length = TablesOf(experiments[0].Design) * TableLength * Lanes;
+        int start = (int)(-Marshal.UnsafeAddrOfPinnedArrayElement(memory, 0) & (EntryBytes - 1)) / sizeof(double);
+        return [.. experiments.Chunk(Lanes).Select((pack, i) => new PackedSubsetSums(pack, memory.AsMemory(start + (i * length), length)))];
+    }
+
+    private static int PacksOf(int experiments) => (experiments + Lanes - 1) / Lanes;
+
+    private static int TablesOf(PermutationDesign design) => Math.Max(LeastTables, (design.Count + BitsPerTable - 1) / BitsPerTable);
 
     /// <summary>Counts, for each experiment, the arrangements that give at least the observed F.</summary>
     /// <param name="sets">Arrangements, as <see cref="SubsetDraws.Draw"/> gives them.</param>
@@ -74,9 +86,9 @@ internal sealed class PackedSubsetSums
     /// <summary>For each lane how many S are certainly, and how many may be, at least the observed one.</summary>
     private (Vector512<long> Above, Vector512<long> Near) Compare(ReadOnlySpan<ulong> sets)
     {
-        ref Vector512<double> sums = ref Unsafe.As<double, Vector512<double>>(ref _memory[_start]);
+        ref Vector512<double> sums = ref Unsafe.As<double, Vector512<double>>(ref MemoryMarshal.GetReference(_sums.Span));
         ref Vector512<double> weights = ref MemoryMarshal.GetArrayDataReference(_weights);
-        nuint end = (nuint)_length * EntryBytes;
+        nuint end = (nuint)_sums.Length * sizeof(double);
         Vector512<double> total = _total;
         Vector512<double> low = _low;
         Vector512<double> high = _high;

@@ -1,3 +1,4 @@
+using System.Buffers;
 using Campaigns.Statistics.GroupTests;
 
 namespace Campaigns.Statistics.Permutation;
@@ -47,8 +48,23 @@ public static class RandomArrangements
             return counts;
         }
 
-        Action<int, long[]> piece = experiments[0].Design.Count <= SubsetDraws.MostValues ? Sets(experiments, draws) : Orders(experiments, draws);
-        int pieces = ((draws.Count - 1) / DrawsPerPiece) + 1;
+        PermutationDesign design = experiments[0].Design;
+        if (design.Count > SubsetDraws.MostValues)
+        {
+            Run(draws.Count, Orders(experiments, draws), counts, threads, stop);
+            return counts;
+        }
+
+        double[] memory = ArrayPool<double>.Shared.Rent(PackedSubsetSums.MemoryOf(design, experiments.Count));
+        Run(draws.Count, Sets(experiments, draws, memory), counts, threads, stop);
+        ArrayPool<double>.Shared.Return(memory);
+        return counts;
+    }
+
+    /// <summary>Does all pieces of the work, which add to the counts that they are given.</summary>
+    private static void Run(int draws, Action<int, long[]> piece, long[] counts, int threads, CancellationToken stop)
+    {
+        int pieces = ((draws - 1) / DrawsPerPiece) + 1;
         if (threads == 1)
         {
             for (int i = 0; i < pieces; i++)
@@ -57,7 +73,7 @@ public static class RandomArrangements
                 piece(i, counts);
             }
 
-            return counts;
+            return;
         }
 
         Parallel.For(
@@ -80,25 +96,29 @@ public static class RandomArrangements
                     }
                 }
             });
-        return counts;
     }
 
     private static int DrawsOf(int piece, RandomDraws draws) => Math.Min(DrawsPerPiece, draws.Count - (piece * DrawsPerPiece));
 
     /// <summary>One piece of work on designs of up to 64 values.</summary>
-    private static Action<int, long[]> Sets(IReadOnlyList<PermutationScores> experiments, RandomDraws draws)
+    private static Action<int, long[]> Sets(IReadOnlyList<PermutationScores> experiments, RandomDraws draws, double[] memory)
     {
         SubsetDraws subsets = experiments[0].Design.Subsets;
-        PackedSubsetSums[] packs = experiments.Count == 1 ? [] : [.. experiments.Chunk(PackedSubsetSums.Lanes).Select(pack => new PackedSubsetSums(pack))];
-        SubsetSums? single = experiments.Count == 1 ? new SubsetSums(experiments[0]) : null;
+        SubsetSums? single = experiments.Count == 1 ? new(experiments[0]) : null;
+        PackedSubsetSums[] packs = single is null ? PackedSubsetSums.Of(experiments, memory) : [];
         return (piece, counts) =>
         {
-            ulong[] sets = subsets.Draw(new RandomNumbers(draws.Seed, (ulong)piece), DrawsOf(piece, draws));
+            int length = DrawsOf(piece, draws) * subsets.SetsPerDraw;
+            ulong[] buffer = ArrayPool<ulong>.Shared.Rent(length);
+            Span<ulong> sets = buffer.AsSpan(0, length);
+            subsets.Draw(new RandomNumbers(draws.Seed, (ulong)piece), sets);
             counts[0] += single?.CountAsExtreme(sets) ?? 0;
             for (int i = 0; i < packs.Length; i++)
             {
                 packs[i].CountAsExtreme(sets, counts.AsSpan(i * PackedSubsetSums.Lanes));
             }
+
+            ArrayPool<ulong>.Shared.Return(buffer);
         };
     }
 
