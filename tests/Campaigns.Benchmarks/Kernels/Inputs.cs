@@ -1,4 +1,6 @@
 using Campaigns.Benchmarks.Generating;
+using Campaigns.Statistics.GroupTests;
+using Campaigns.Statistics.Permutation;
 
 namespace Campaigns.Benchmarks.Kernels;
 
@@ -28,6 +30,18 @@ internal static class Inputs
         }
 
         return f;
+    }
+
+    /// <summary>Experiments of 4 groups with 6 values each, typed with 4 decimals, ready to be permuted.</summary>
+    public static PermutationScores[] Experiments(int count)
+    {
+        var campaign = new SyntheticCampaign(new CampaignSize(count, 4, 6));
+        ushort[] groups = [.. Enumerable.Range(0, 24).Select(cell => (ushort)(cell / 6))];
+        return [.. Enumerable.Range(0, count).Select(experiment =>
+        {
+            long[] mantissas = [.. Enumerable.Range(0, 24).Select(cell => campaign.Reading(experiment, cell))];
+            return PermutationScores.Of(new GroupedSample(mantissas, 4, groups, 4));
+        })];
     }
 
     /// <summary>Above 0 and below 1.</summary>

@@ -2,6 +2,8 @@ using System.Diagnostics;
 using System.Globalization;
 using Campaigns.Statistics.Corrections;
 using Campaigns.Statistics.Distributions;
+using Campaigns.Statistics.GroupTests;
+using Campaigns.Statistics.Permutation;
 
 namespace Campaigns.Benchmarks.Kernels;
 
@@ -10,6 +12,7 @@ internal static class Timings
 {
     private const int Million = 1_000_000;
     private const int Repeats = 7;
+    private const int PermutedExperiments = 200;
 
     public static void Print(TextWriter output)
     {
@@ -36,6 +39,10 @@ internal static class Timings
 
         double[] fewer = p[..100_000];
         Line("hommel", () => CorrectionRegistry.Find("hommel")!.Adjust(RankedFamily.Of(fewer, fewer.Length), new double[fewer.Length]));
+
+        PermutationScores[] experiments = Inputs.Experiments(PermutedExperiments);
+        Line("permute-one", () => RandomArrangements.CountAsExtreme(experiments[0], new RandomDraws(1, 10 * Million)));
+        Line("permute-shared", () => RandomArrangements.CountAsExtreme(experiments, new RandomDraws(1, 2 * Million / 10)));
 
         void Line(string name, Action work) =>
             output.WriteLine(string.Create(CultureInfo.InvariantCulture, $"{name} {MedianMilliseconds(work):F2}"));
