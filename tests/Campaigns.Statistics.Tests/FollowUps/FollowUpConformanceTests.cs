@@ -7,7 +7,7 @@ namespace Campaigns.Statistics.Tests.FollowUps;
 public sealed class FollowUpConformanceTests
 {
     private static readonly (string Group, string Value)[] ThreeGroups =
-        [("a", "1.5"), ("a", "2.25"), ("a", "1.75"), ("b", "3.5"), ("b", "3.25"), ("b", "4"), ("c", "2.5"), ("c", "1"), ("c", "2")];
+        [("a", "1.5"), ("a", "2.25"), ("a", "1.75"), ("b", "3.5"), ("b", "3.25"), ("b", "4"), ("c", "2.5"), ("c", "1.25"), ("c", "2")];
 
     [Fact]
     public void Every_follow_up_of_the_assembly_is_in_the_registry_once()
