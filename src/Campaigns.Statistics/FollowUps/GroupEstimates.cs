@@ -87,6 +87,39 @@ public sealed class GroupEstimates
         return new GroupEstimates(means, counts, own, factors, residual, layout.WithinDegreesOfFreedom, withinBlocks: false);
     }
 
+    /// <summary>Estimates of groups within blocks, adjusted for block effects.</summary>
+    /// <param name="units">Independent values with their blocks.</param>
+    /// <returns>Null where a value has no block, fewer than two groups hold values, no block links some of them, or no residual degree of freedom is left.</returns>
+    /// <remarks>From <see cref="BlockLayout"/>; the factors are minus half the variances of the differences, a generalised inverse from which these come back without rounding.</remarks>
+    public static GroupEstimates? InBlocks(GroupedSample units)
+    {
+        var layout = BlockLayout.Of(units);
+        if (!layout.IsFitted)
+        {
+            return null;
+        }
+
+        int groups = units.GroupCount;
+        var means = new WideReal[groups];
+        var counts = new int[groups];
+        var own = new double[groups];
+        var factors = new double[groups, groups];
+        double[,] variances = layout.Elimination.DifferenceVariances();
+        int[] numbers = layout.Design.GroupNumbers;
+        Array.Fill(own, double.NaN);
+        for (int i = 0; i < numbers.Length; i++)
+        {
+            means[numbers[i]] = layout.Fit.Effects[i] * units.Unit;
+            counts[numbers[i]] = layout.Design.GroupCounts[i];
+            for (int h = 0; h < numbers.Length; h++)
+            {
+                factors[numbers[i], numbers[h]] = -variances[i, h] / 2;
+            }
+        }
+
+        return new GroupEstimates(means, counts, own, factors, layout.ResidualStandardDeviation.ToDouble(), layout.ResidualDegreesOfFreedom, withinBlocks: true);
+    }
+
     /// <summary>Values of a group.</summary>
     /// <param name="group">0 to <see cref="GroupCount"/> - 1.</param>
     public int CountOf(int group) => _counts[group];

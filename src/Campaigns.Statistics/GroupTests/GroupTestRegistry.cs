@@ -4,7 +4,14 @@ namespace Campaigns.Statistics.GroupTests;
 public static class GroupTestRegistry
 {
     /// <summary>The tests.</summary>
-    public static IReadOnlyList<GroupTest> All { get; } = [new FTest()];
+    public static IReadOnlyList<GroupTest> All { get; } =
+    [
+        new FTest(),
+        new WelchTest(),
+        new BrownForsytheTest(),
+        new KruskalWallisTest(),
+        new BlockFTest(),
+    ];
 
     /// <summary>The test with a key, or null.</summary>
     /// <param name="key">Exact, lower case.</param>

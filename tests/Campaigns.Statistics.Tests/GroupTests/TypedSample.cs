@@ -57,6 +57,16 @@ internal sealed class TypedSample
         return new([.. order.Select(i => _mantissas[i])], _decimals, [.. order.Select(i => _groups[i])], _groupCount);
     }
 
+    /// <summary>The same groups under other numbers, one number left without a value.</summary>
+    public TypedSample Relabelled(int seed)
+    {
+        ushort[] names = [.. Enumerable.Range(0, _groupCount + 1).Select(i => (ushort)i)];
+        new Random(seed).Shuffle(names);
+        return new(_mantissas, _decimals, [.. _groups.Select(g => names[g])], _groupCount + 1);
+    }
+
+    public TypedSample Mapped(Func<BigInteger, BigInteger> map) => new([.. _mantissas.Select(map)], _decimals, _groups, _groupCount);
+
     public TypedSample Plus(BigInteger constant) => new([.. _mantissas.Select(m => m + constant)], _decimals, _groups, _groupCount);
 
     public TypedSample Times(BigInteger factor) => new([.. _mantissas.Select(m => m * factor)], _decimals, _groups, _groupCount);
