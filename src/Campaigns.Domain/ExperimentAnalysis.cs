@@ -1,4 +1,5 @@
 using Campaigns.Statistics.Checks;
+using Campaigns.Statistics.Effects;
 using Campaigns.Statistics.FollowUps;
 using Campaigns.Statistics.GroupTests;
 using Campaigns.Statistics.Probability;
@@ -27,17 +28,28 @@ public sealed record ExperimentAnalysis
     /// <summary>For each group the letters that it shares with the groups from which it is not told apart; null where the follow-up does not compare all pairs.</summary>
     public IReadOnlyList<string>? Letters { get; init; }
 
+    /// <summary>Effect sizes with intervals; null where nothing varies inside the groups, or the test has no result.</summary>
+    public EffectSizes? Effects { get; init; }
+
+    /// <summary>The smallest difference between two group means that the design would have found with a power of 0.8 at the campaign's level alone, in units of the response; null within blocks, and where nothing varies.</summary>
+    public double? Detectable { get; init; }
+
+    /// <summary>The same at the campaign's strictest threshold, its level over the size of the family.</summary>
+    public double? DetectableAtStrictest { get; init; }
+
     /// <summary>Analyses one experiment in depth.</summary>
     /// <param name="plan">What was planned.</param>
     /// <param name="labels">Label of each group.</param>
     /// <param name="readings">Its values.</param>
-    /// <param name="level">The campaign's level.</param>
-    /// <param name="hasResult">Whether its test gave a result; without one nothing is compared.</param>
-    /// <remarks>Cost: sorting, O(N log N), and a few 0.1 ms for the tails of the comparisons.</remarks>
-    public static ExperimentAnalysis Of(PlannedExperiment plan, IReadOnlyList<string> labels, GroupedSample readings, SignificanceLevel level, bool hasResult)
+    /// <param name="campaign">Names the level.</param>
+    /// <param name="familySize">Experiments in the campaign's family.</param>
+    /// <param name="tested">The result of the planned test; without one nothing is compared.</param>
+    /// <remarks>Cost: sorting, O(N log N), and some 0.1 ms for the tails of effects and comparisons.</remarks>
+    public static ExperimentAnalysis Of(PlannedExperiment plan, IReadOnlyList<string> labels, GroupedSample readings, Campaign campaign, int familySize, Tested? tested)
     {
         ArgumentNullException.ThrowIfNull(plan);
         ArgumentNullException.ThrowIfNull(labels);
+        ArgumentNullException.ThrowIfNull(campaign);
         GroupedSample units = SpecimenMeans.Of(readings) is { } means ? means.Sample : readings;
         bool withinBlocks = GroupTestRegistry.Find(plan.Test)?.UsesBlocks == true;
         IReadOnlyList<CheckLine> checks = readings.Count == 0 ? [] : CheckReport.Of(new CheckSubject
@@ -47,7 +59,8 @@ public sealed record ExperimentAnalysis
             Labels = labels,
         });
         bool spreadsDiffer = checks.Any(c => c.Key is "equal-spread" or "spread-ratio" && c.Finding.Verdict == CheckVerdict.Warns);
-        IReadOnlyList<GroupComparison> comparisons = hasResult ? PlannedFollowUp.Compare(plan, labels, readings, level) : [];
+        SignificanceLevel level = campaign.Level;
+        PlannedFollowUp? followUp = tested is null ? null : PlannedFollowUp.Of(plan, labels, readings, level);
         var specimens = SpecimenVariation.Of(readings);
         return new ExperimentAnalysis
         {
@@ -55,8 +68,30 @@ public sealed record ExperimentAnalysis
             UnitsNote = UnitsNoteOf(plan, readings, specimens),
             Checks = checks,
             Beside = spreadsDiffer && plan.Test == "f" ? new WelchTest().Test(units) : null,
-            Comparisons = comparisons,
+            Comparisons = followUp?.Comparisons ?? [],
+            Letters = followUp is { } f ? CompactLetters.Of(f.Estimates, f.Comparisons, level) : null,
+            Effects = tested?.Variation is { } table && level.Value < 0.5 ? EffectSizes.Of(table, level) : null,
+            Detectable = DetectableOf(units, tested, level),
+            DetectableAtStrictest = DetectableOf(units, tested, new SignificanceLevel(level.Value / familySize)),
         };
+    }
+
+    private static double? DetectableOf(GroupedSample units, Tested? tested, SignificanceLevel level)
+    {
+        const double Power = 0.8;
+        if (tested?.Variation is not { Blocks: null, ResidualStandardDeviation: > 0 and < double.PositiveInfinity } table || level.Value >= Power)
+        {
+            return null;
+        }
+
+        var sizes = new int[units.GroupCount];
+        foreach (ushort group in units.Groups)
+        {
+            sizes[group]++;
+        }
+
+        double smallest = DetectableDifference.Smallest(sizes, table.ResidualStandardDeviation, level, Power);
+        return double.IsFinite(smallest) ? smallest : null;
     }
 
     private static string? UnitsNoteOf(PlannedExperiment plan, GroupedSample readings, SpecimenVariation? specimens)

@@ -5,23 +5,25 @@ using Campaigns.Statistics.Units;
 
 namespace Campaigns.Domain;
 
-/// <summary>Runs the follow-up comparisons that the plan of an experiment names.</summary>
-public static class PlannedFollowUp
+/// <summary>The follow-up comparisons that the plan of an experiment names, made from its values.</summary>
+/// <param name="Estimates">What is known of the groups.</param>
+/// <param name="Comparisons">The comparisons; empty where the data allow none.</param>
+public sealed record PlannedFollowUp(GroupEstimates Estimates, IReadOnlyList<GroupComparison> Comparisons)
 {
-    /// <summary>The comparisons.</summary>
+    /// <summary>Makes the comparisons.</summary>
     /// <param name="plan">Names follow-up, test and control.</param>
     /// <param name="labels">Label of each group.</param>
     /// <param name="readings">The experiment's values.</param>
     /// <param name="level">The intervals hold simultaneously at confidence 1 - level inside the experiment.</param>
-    /// <returns>Empty where the plan names none, or the data allow none.</returns>
+    /// <returns>Null where the plan names none, or the data tell nothing of the variation.</returns>
     /// <exception cref="RefusedException">This version of the program does not have the follow-up.</exception>
-    public static IReadOnlyList<GroupComparison> Compare(PlannedExperiment plan, IReadOnlyList<string> labels, GroupedSample readings, SignificanceLevel level)
+    public static PlannedFollowUp? Of(PlannedExperiment plan, IReadOnlyList<string> labels, GroupedSample readings, SignificanceLevel level)
     {
         ArgumentNullException.ThrowIfNull(plan);
         ArgumentNullException.ThrowIfNull(labels);
-        if (plan.FollowUp == FollowUpRegistry.None || FollowUpRegistry.Find(plan.FollowUp) is null)
+        if (plan.FollowUp == FollowUpRegistry.None)
         {
-            return [];
+            return null;
         }
 
         FollowUp followUp = FollowUpRegistry.Find(plan.FollowUp)
@@ -29,7 +31,19 @@ public static class PlannedFollowUp
         GroupedSample units = SpecimenMeans.Of(readings) is { } means ? means.Sample : readings;
         bool withinBlocks = GroupTestRegistry.Find(plan.Test)?.UsesBlocks == true;
         GroupEstimates? estimates = withinBlocks ? GroupEstimates.InBlocks(units) : GroupEstimates.OneWay(units);
-        int control = plan.Control is { } name ? labels.ToList().IndexOf(name) : -1;
-        return estimates is null ? [] : followUp.Compare(estimates, control < 0 ? null : control, 1 - level.Value);
+        return estimates is null ? null : new PlannedFollowUp(estimates, followUp.Compare(estimates, ControlOf(plan, labels), 1 - level.Value));
+    }
+
+    private static int? ControlOf(PlannedExperiment plan, IReadOnlyList<string> labels)
+    {
+        for (int i = 0; i < labels.Count && plan.Control is not null; i++)
+        {
+            if (labels[i] == plan.Control)
+            {
+                return i;
+            }
+        }
+
+        return null;
     }
 }

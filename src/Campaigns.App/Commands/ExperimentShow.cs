@@ -50,7 +50,7 @@ internal static class ExperimentShow
         Section(session, "Variation", ExperimentSections.Variation(detail), []);
         Section(session, "Specimens", ExperimentSections.Specimens(detail), []);
         Section(session, "Test", ExperimentSections.Tests(detail), TestNotes(standing, detail));
-        Section(session, "Effects", EffectSection.Table(detail), EffectSection.Notes(detail));
+        Section(session, "Effects", EffectSection.Table(detail), EffectSection.Notes(standing, detail));
         ChecksForPeople(session, detail);
         Section(session, $"Comparisons ({FollowUpRegistry.Find(result.Plan.FollowUp)?.Name})", ExperimentSections.Comparisons(detail), ComparisonNotes(standing, detail));
         Section(session, "Exclusions", ExperimentSections.Exclusions(detail), []);

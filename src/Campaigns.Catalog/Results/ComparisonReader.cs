@@ -41,8 +41,8 @@ public sealed class ComparisonReader(Catalog catalog)
         {
             if (byCode.TryGetValue(rows.Code, out ExperimentResult? experiment) && experiment.P is not null)
             {
-                var found = PlannedFollowUp.Compare(experiment.Plan, rows.Labels, rows.Values.Sample(rows.Labels.Length), campaign.Level);
-                foreach (ExperimentComparison comparison in verdict.Judge(experiment, rows.Labels, found))
+                var followUp = PlannedFollowUp.Of(experiment.Plan, rows.Labels, rows.Values.Sample(rows.Labels.Length), campaign.Level);
+                foreach (ExperimentComparison comparison in verdict.Judge(experiment, rows.Labels, followUp?.Comparisons ?? []))
                 {
                     yield return comparison;
                 }

@@ -2,9 +2,9 @@ using System.Diagnostics;
 using System.Globalization;
 using Campaigns.Statistics.Corrections;
 using Campaigns.Statistics.Distributions;
+using Campaigns.Statistics.FollowUps;
 using Campaigns.Statistics.GroupTests;
 using Campaigns.Statistics.Permutation;
-using Campaigns.Statistics.FollowUps;
 
 namespace Campaigns.Benchmarks.Kernels;
 
@@ -45,6 +45,7 @@ internal static class Timings
         PermutationScores[] experiments = Inputs.Experiments(PermutedExperiments);
         Line("permute-one", () => RandomArrangements.CountAsExtreme(experiments[0], new RandomDraws(1, 10 * Million)));
         Line("permute-shared", () => RandomArrangements.CountAsExtreme(experiments, new RandomDraws(1, 2 * Million / 10)));
+
         double[] q = Inputs.RangeStatistics(Million);
         Line("range", () =>
         {
@@ -74,11 +75,11 @@ internal static class Timings
         });
 
         // Games-Howell solves for a critical value of its own for every pair: a hundredth of the experiments.
-        GroupEstimates[] experiments = Inputs.Estimates(Million / 10);
+        GroupEstimates[] estimates = Inputs.Estimates(Million / 10);
         foreach (FollowUp followUp in FollowUpRegistry.All)
         {
             bool isSlow = followUp.Key == "games-howell";
-            GroupEstimates[] compared = isSlow ? experiments[..(experiments.Length / 100)] : experiments;
+            GroupEstimates[] compared = isSlow ? estimates[..(estimates.Length / 100)] : estimates;
             Line(isSlow ? followUp.Key + "/100" : followUp.Key, () => sum += compared.Sum(e => followUp.Compare(e, 0, 0.95)[0].P!.Value.Value));
         }
 
