@@ -6,7 +6,7 @@ public static class CheckReport
     /// <summary>Makes every check of the registry.</summary>
     /// <param name="subject">The experiment's independent values and the layout fitted to them.</param>
     /// <returns>A line a check, in the order of <see cref="CheckRegistry"/>.</returns>
-    /// <remarks>Cost: sorting, so N ln N; 0.1 s for 100,000 values in a group.</remarks>
+    /// <remarks>Cost: about 0.1 ms for 50 values in 5 groups; beyond, sorting, so N ln N, 0.1 s for 100,000.</remarks>
     public static IReadOnlyList<CheckLine> Of(CheckSubject subject)
     {
         var lines = new CheckLine[CheckRegistry.All.Count];

@@ -93,15 +93,12 @@ public sealed class Outliers : ExperimentCheck
     private static WideReal MeanSquareWithout(GroupedSample units, FittedLayout fit, int without)
     {
         ushort[] groups = Without(units.Groups, without);
-        var rest = units.IsWide
-            ? new GroupedSample(Without(units.WideMantissas, without), units.Decimals, groups, units.GroupCount) { Divisor = units.Divisor, Blocks = fit.WithinBlocks ? Without(units.Blocks, without) : [] }
-            : new GroupedSample(Without(units.Mantissas, without), units.Decimals, groups, units.GroupCount) { Divisor = units.Divisor, Blocks = fit.WithinBlocks ? Without(units.Blocks, without) : [] };
-        FittedLayout? fitted = fit.WithinBlocks ? null : FittedLayout.OneWay(rest);
-        if (fitted is null)
-        {
-            return WideReal.Zero;
-        }
-
+        int[] blocks = fit.WithinBlocks ? Without(units.Blocks, without) : [];
+        GroupedSample rest = units.IsWide
+            ? new GroupedSample(Without(units.WideMantissas, without), units.Decimals, groups, units.GroupCount) { Divisor = units.Divisor, Blocks = blocks }
+            : new GroupedSample(Without(units.Mantissas, without), units.Decimals, groups, units.GroupCount) { Divisor = units.Divisor, Blocks = blocks };
+        FittedLayout fitted = (fit.WithinBlocks ? FittedLayout.InBlocks(rest) : FittedLayout.OneWay(rest))
+            ?? throw new InvalidOperationException("A value that does not fix its own fitted value was left out, and the rest could not be fitted.");
         double squares = 0;
         foreach (double residual in fitted.Residuals)
         {

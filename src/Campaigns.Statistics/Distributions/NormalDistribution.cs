@@ -65,6 +65,15 @@ public static class NormalDistribution
         return Math.Exp(-square / 2) * (1 - (rest / 2)) * InverseRootTwoPi;
     }
 
+    /// <summary>The z that is not exceeded with a given probability.</summary>
+    /// <param name="probability">In [0, 1].</param>
+    /// <returns>Right to a few units in the last place; an infinity at either end.</returns>
+    /// <exception cref="ArgumentOutOfRangeException">Outside [0, 1], or NaN.</exception>
+    public static double LowerQuantile(double probability) =>
+        probability >= 0 && probability <= 1
+            ? MathNet.Numerics.Distributions.Normal.InvCDF(0, 1, probability)
+            : throw new ArgumentOutOfRangeException(nameof(probability), probability, "A probability lies in [0, 1].");
+
     /// <summary>P(Z > z) over the density at z, for z of at least 0: about 1/z far out.</summary>
     /// <param name="z">At least 0.</param>
     public static double MillsRatio(double z)

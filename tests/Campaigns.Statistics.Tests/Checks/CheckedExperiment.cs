@@ -61,6 +61,9 @@ internal sealed class CheckedExperiment
     public CheckedExperiment InOrder(params long[] orders) =>
         new([.. _groups.Select((g, i) => (Labels[g], (_mantissas[i], -_decimals)))], Labels, orders, _blocks);
 
+    public CheckedExperiment InBlocks(params int[] blocks) =>
+        new([.. _groups.Select((g, i) => (Labels[g], (_mantissas[i], -_decimals)))], Labels, _orders, blocks);
+
     public CheckFinding Look(ExperimentCheck check)
     {
         GroupedSample units = Units();
@@ -73,7 +76,7 @@ internal sealed class CheckedExperiment
         return CheckReport.Of(new CheckSubject { Units = units, Fit = Fit(units), Labels = Labels });
     }
 
-    private static FittedLayout? Fit(GroupedSample units) => FittedLayout.OneWay(units);
+    private static FittedLayout? Fit(GroupedSample units) => units.Blocks.IsEmpty ? FittedLayout.OneWay(units) : FittedLayout.InBlocks(units);
 
     private GroupedSample Units() =>
         _mantissas.All(m => m >= long.MinValue && m <= long.MaxValue)

@@ -50,7 +50,7 @@ internal sealed class GroupSpreads
     /// <summary>Looks at the groups of an experiment.</summary>
     /// <remarks>
     /// Residuals of a layout with blocks mix the variances of all groups (with two groups they are equal and opposite), and values mix them with that of the blocks.
-    /// There is no simple sound test, so there is none here: R. G. O'Neill and K. L. Mathews, Biometrics 58 (2002) 216, show what it takes.
+    /// There is no simple sound test, so there is none here: M. E. O'Neill and K. L. Mathews, Biometrics 58 (2002) 216, show what it takes.
     /// </remarks>
     public static GroupSpreads Of(CheckSubject subject) =>
         new(subject.Units, subject.Labels, subject.Fit is { WithinBlocks: true });

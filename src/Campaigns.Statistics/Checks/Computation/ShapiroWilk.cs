@@ -7,7 +7,7 @@ namespace Campaigns.Statistics.Checks.Computation;
 /// <param name="W">The statistic, in (0, 1]; small where the values are not normal.</param>
 /// <param name="P">P(W is at most that small) for normal values; 0 only for three values of which two are equal.</param>
 /// <remarks>
-/// 1 - W is formed as (r - s)(r + s)/(SSa SSx), r = sqrt(SSa SSx), s the sum of products of weights and values, so that W close to 1 keeps its digits.
+/// W is the squared cosine c^2 between the sorted sample and the weights; 1 - W is formed as (1 - c)(1 + c) from the distance of the two as unit vectors, 2 (1 - c) being its square, so that a W close to 1 keeps the digits of what it lacks.
 /// Cost: sorting, and a normal quantile for every second value.
 /// Sources: S. S. Shapiro and M. B. Wilk, Biometrika 52 (1965) 591; J. P. Royston, algorithm AS R94, Applied Statistics 44 (1995) 547.
 /// </remarks>
@@ -39,7 +39,7 @@ public readonly record struct ShapiroWilk(double W, PValue P)
         }
 
         double rest = Math.Max(Rest(x, Weights(n)), SmallestRest);
-        double p = n == 3 ? OfThree(1 - rest) : NormalLaw.UpperTail(n <= Small ? SmallZ(n, rest) : LargeZ(n, rest));
+        double p = n == 3 ? OfThree(1 - rest) : NormalDistribution.UpperTail(n <= Small ? SmallZ(n, rest) : LargeZ(n, rest));
         return new ShapiroWilk(1 - rest, PValue.FromValue(p));
     }
 
@@ -47,31 +47,43 @@ public readonly record struct ShapiroWilk(double W, PValue P)
     private static double Rest(double[] x, double[] upper)
     {
         int n = x.Length;
-        double range = x[^1] - x[0];
+        double lowest = x[0];
+        double range = x[^1] - lowest;
         double mean = 0;
         for (int i = 0; i < n; i++)
         {
-            x[i] /= range;
+            x[i] = (x[i] - lowest) / range;
             mean += x[i];
         }
 
         mean /= n;
-        double ssa = 0;
-        double ssx = 0;
-        double products = 0;
+        double squares = 0;
+        double weightSquares = 0;
         for (int i = 0; i < n; i++)
         {
-            // Weights of the lower half are those of the upper half with the other sign; they add up to zero.
-            int fromEnd = Math.Min(i, n - 1 - i);
-            double a = 2 * i == n - 1 ? 0 : i < n / 2 ? -upper[fromEnd] : upper[fromEnd];
-            double d = x[i] - mean;
-            ssa += a * a;
-            ssx += d * d;
-            products += a * d;
+            x[i] -= mean;
+            squares += x[i] * x[i];
+            weightSquares += Weight(upper, i, n) * Weight(upper, i, n);
         }
 
-        double root = Math.Sqrt(ssa * ssx);
-        return (root - products) * (root + products) / (ssa * ssx);
+        // The sample and its weights as unit vectors of cosine c: 1 - c is half the squared distance between them.
+        double scale = 1 / Math.Sqrt(squares);
+        double weightScale = 1 / Math.Sqrt(weightSquares);
+        double distance = 0;
+        for (int i = 0; i < n; i++)
+        {
+            double d = (Weight(upper, i, n) * weightScale) - (x[i] * scale);
+            distance += d * d;
+        }
+
+        return distance * (1 - (distance / 4));
+    }
+
+    /// <summary>The weight of a place in the sorted sample: in the lower half that of the upper half with the other sign, so that the weights add up to zero.</summary>
+    private static double Weight(double[] upper, int i, int n)
+    {
+        int fromEnd = Math.Min(i, n - 1 - i);
+        return 2 * i == n - 1 ? 0 : i < n / 2 ? -upper[fromEnd] : upper[fromEnd];
     }
 
     /// <summary>The weights of the largest value, the second largest, and so on down to the middle.</summary>
@@ -87,7 +99,7 @@ public readonly record struct ShapiroWilk(double W, PValue P)
         double squares = 0;
         for (int i = 0; i < weights.Length; i++)
         {
-            double m = -NormalLaw.Quantile((i + 1 - 0.375) / (n + 0.25));
+            double m = -NormalDistribution.LowerQuantile((i + 1 - 0.375) / (n + 0.25));
             weights[i] = m;
             squares += 2 * m * m;
         }

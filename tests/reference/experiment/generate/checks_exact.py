@@ -1,9 +1,10 @@
 #!/usr/bin/env python3
 """What the checks of an experiment must give, from exact rational arithmetic on the values read as doubles; tails in 40-digit arithmetic.
-checks_exact.csv: Levene's test on means, the ratio of standard deviations, the two-sided p of von Neumann's ratio by the beta law with the exact moments.
+checks_exact.csv: Levene's test on means, the ratio of standard deviations, the two-sided p of von Neumann's ratio by the beta law with the exact moments, Shapiro and Wilk's test on residuals by AS R94.
 run_order_layouts.csv: mean and variance of that ratio for small layouts, from the full matrices; without blocks where the column is empty.
 normal_law.csv: upper tail and quantile of the normal law."""
 import csv, random
+from statistics import NormalDist
 from collections import OrderedDict
 from fractions import Fraction as Fr
 from mpf import *
@@ -42,9 +43,34 @@ def dense_moments(blocks, groups):
     tr = sum(MA[i][i] for i in range(N)); tr2 = sum(MA[i][j]*MA[j][i] for i in range(N) for j in range(N))
     return v, m(tr/v), m(2*(tr2-tr*tr/v)/(v*(v+2)))
 
+def quantile(p): return mp.findroot(lambda t: mp.erfc(-t/mp.sqrt(2))/2-p, float(NormalDist().inv_cdf(float(p)))) if p != mpf(1)/2 else mpf(0)
+_weights = {}
+def weights(n):
+    """The weights of Royston's AS R94 (Applied Statistics 1995, 44:547) for the upper half, largest value first."""
+    if n not in _weights:
+        q = [-quantile((mpf(i)-mpf('0.375'))/(n+mpf('0.25'))) for i in range(1, n//2+1)]; S = 2*sum(x*x for x in q); u = 1/mp.sqrt(n)
+        poly = lambda x, c: sum(mpf(v)*x**j for j, v in enumerate(c))
+        a1 = poly(u, ('0', '.221157', '-.147981', '-2.07119', '4.434685', '-2.706056'))+q[0]/mp.sqrt(S)
+        if n > 5:
+            a2 = poly(u, ('0', '.042981', '-.293762', '-1.752461', '5.682633', '-3.582633'))+q[1]/mp.sqrt(S)
+            phi = mp.sqrt((S-2*q[0]**2-2*q[1]**2)/(1-2*a1**2-2*a2**2)); a = [a1, a2]+[x/phi for x in q[2:]]
+        else: phi = mp.sqrt((S-2*q[0]**2)/(1-2*a1**2)); a = [a1]+[x/phi for x in q[1:]]
+        _weights[n] = a
+    return _weights[n]
+
+def shapiro(e):
+    """W and p of residuals (rationals); 4 to 5000 of them."""
+    n = len(e); x = [m(v) for v in sorted(e)]; a = weights(n); mean = m(sum(e)/n); ssx = sum((v-mean)**2 for v in x); ssa = 2*sum(v*v for v in a)
+    s = sum(a[i]*(x[n-1-i]-x[i]) for i in range(n//2)); rest = 1-s*s/(ssa*ssx); y = mp.log(rest); poly = lambda t, c: sum(mpf(v)*t**j for j, v in enumerate(c))
+    if n <= 11:
+        z = (-mp.log(poly(n, ('-2.273', '.459'))-y)-poly(n, ('.544', '-.39978', '.025054', '-.0006714')))/mp.exp(poly(n, ('1.3822', '-.77857', '.062767', '-.0020322')))
+    else:
+        L = mp.log(n); z = (y-poly(L, ('-1.5861', '-.31082', '-.083751', '.0038915')))/mp.exp(poly(L, ('-.4803', '-.082676', '.0030302')))
+    return 1-rest, mp.erfc(z/mp.sqrt(2))/2
+
 if __name__ == '__main__':
     with open('checks_exact.csv', 'w', newline='') as fh:
-        w = csv.writer(fh, lineterminator='\n'); w.writerow(['experiment', 'levene_mean_f', 'levene_mean_p', 'spread_ratio', 'run_order_p'])
+        w = csv.writer(fh, lineterminator='\n'); w.writerow(['experiment', 'levene_mean_f', 'levene_mean_p', 'spread_ratio', 'run_order_p', 'shapiro_w', 'shapiro_p'])
         for nm, rows in load('experiments_data.csv').items():
             gr = OrderedDict()
             for g, o, v in rows: gr.setdefault(g, []).append((o, v))
@@ -55,7 +81,7 @@ if __name__ == '__main__':
             res = sorted((o, v-means[g], names.index(g)) for g, o, v in rows); e = [x for _, x, _ in res]; N = len(e); df = N-len(G)
             d = m(sum((e[i+1]-e[i])**2 for i in range(N-1))/sum(x*x for x in e)); tr, tr2 = dw_traces([g for _, _, g in res], [len(g) for g in G], N)
             p2 = beta_two_sided(d, m(tr/df), m(2*(tr2-tr*tr/df)/(df*(df+2))))
-            w.writerow([nm]+['' if x is None else s17(x) for x in (f, p, ratio, p2)])
+            w.writerow([nm]+['' if x is None else s17(x) for x in (f, p, ratio, p2)+shapiro(e)])
     rnd = random.Random(20261201); lay = []
     for k, b in ((3, 4), (2, 6), (4, 5), (3, 8)):                       # complete blocks, in random and in block order
         cells = [(j, i) for j in range(b) for i in range(k)]
