@@ -11,7 +11,7 @@ internal static class SizeTable
         new("effect", "effect f", true), new("noncentrality", "lambda", true, 1), new("power", "power", true), new("largest_difference", "difference", true),
     ];
 
-    public static RowTable Of(SizeQuestion question, IReadOnlyList<SizeAnswer> answers) => new(Columns, answers.Select(Row))
+    public static RowTable Of(SizeQuestion question, IReadOnlyList<SizeAnswer> answers) => new(Columns, answers.Select(a => Row(question, a)))
     {
         Above = [answers.Count == 1 ? Sentence(question, answers[0]) : Heading(question)],
         Below =
@@ -21,9 +21,9 @@ internal static class SizeTable
         ],
     };
 
-    private static Cell[] Row(SizeAnswer a) =>
+    private static Cell[] Row(SizeQuestion question, SizeAnswer a) =>
     [
-        Cell.Whole(a.Groups), Cell.Whole(a.Replicates), Cell.Whole(a.Observations), Cell.Number(a.Level),
+        Cell.Whole(a.Groups), Cell.Whole(a.Replicates), Cell.Whole(a.Observations), question.Tests == 1 ? Cell.Setting(a.Level) : Cell.Number(a.Level),
         Cell.Number(a.Effect), Cell.Number(a.Noncentrality), Cell.Number(a.Power), Cell.Number(a.LargestDifference),
     ];
 
@@ -37,11 +37,14 @@ internal static class SizeTable
         string design = a.Replicates is { } n
             ? FormattableString.Invariant($"{n} replicates in each of {a.Groups} groups, {a.Observations} observations in all,")
             : FormattableString.Invariant($"{a.Observations} observations in {a.Groups} groups of the sizes {string.Join(", ", question.Sizes!)}");
-        string effect = $"f = {Text(a.Effect)}{(a.LargestDifference is { } d ? $" (two means up to {Text(d)} apart)" : "")}";
+        string effect = $"f = {Text(a.Effect)}";
+        string apart = a.LargestDifference is { } d ? Text(d) : "";
+        string upTo = apart.Length > 0 ? $" (two means up to {apart} apart)" : "";
+        string whenever = apart.Length > 0 ? $", and whenever two means lie {apart} or more apart," : "";
         string test = $"by the F test at level {Text(a.Level)}";
-        return question.AsksPower ? $"{design} find an effect of {effect} {test} with power {Power(a.Power)}."
-            : question.AsksReplicates ? $"{design} find an effect of {effect} {test} with power {Power(a.Power)}; {NumberText.RoundTrip(a.WantedPower!.Value)} was wanted{(a.Replicates > 2 ? ", and one replicate less in each group does not reach it" : ", and fewer than two replicates cannot be tested")}."
-            : $"{design} find an effect of {effect} or more {test} with power {NumberText.RoundTrip(a.WantedPower!.Value)} or more.";
+        return question.AsksPower ? $"{design} find an effect of {effect}{upTo} {test} with power {Power(a.Power)}."
+            : question.AsksReplicates ? $"{design} find an effect of {effect}{upTo} {test} with power {Power(a.Power)}; {NumberText.RoundTrip(a.WantedPower!.Value)} was wanted{(a.Replicates > 2 ? ", and one replicate less in each group does not reach it" : ", and fewer than two replicates cannot be tested")}."
+            : $"{design} find an effect of {effect} or more{whenever} {test} with power {NumberText.RoundTrip(a.WantedPower!.Value)} or more.";
     }
 
     private static IEnumerable<string> Below(SizeQuestion question, IReadOnlyList<SizeAnswer> answers)
@@ -61,5 +64,10 @@ internal static class SizeTable
     /// <summary>Never a rounded 1 for what is less.</summary>
     private static string Power(double power) => power > 0.9999 ? "above 0.9999" : NumberText.Screen(power, 4);
 
-    private static string Text(double value) => NumberText.Screen(value, 4);
+    /// <summary>Four digits, without the zeros at their end.</summary>
+    private static string Text(double value)
+    {
+        string text = NumberText.Screen(value, 4);
+        return text.Contains('.', StringComparison.Ordinal) && !text.Contains('e', StringComparison.Ordinal) ? text.TrimEnd('0').TrimEnd('.') : text;
+    }
 }

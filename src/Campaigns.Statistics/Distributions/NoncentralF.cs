@@ -5,8 +5,8 @@ namespace Campaigns.Statistics.Distributions;
 /// <summary>The noncentral F law with (df1, df2) degrees of freedom, whole or fractional, and noncentrality lambda: both tails with their logarithms, and the lambda at which a tail has a given probability.</summary>
 /// <remarks>
 /// It is what F follows when the group means differ: lambda is the sum of n_i (mu_i - mu)^2/sigma^2. Each tail is its own sum of positive terms, a Poisson mixture of beta tails (<see cref="PoissonMixture"/>); neither is one minus the other.
-/// Seen against 40-digit arithmetic: relative error of a tail at most 1e-13 down to 1e-300; below, the logarithm keeps its digits.
-/// Cost of a tail: about 1.5 us up to lambda = 10, 4 us up to 200, 60 us beyond, whatever lambda. Objects are immutable.
+/// Seen against 40-digit arithmetic: relative error of a tail at most 1e-13 down to 1e-15 and 3.2e-13 down to 1e-300, of its logarithm at most 1.2e-13 there and below.
+/// Cost of a tail: about 1 us at lambda = 10, 10 to 20 us at 200, 0.3 ms from 256 on, whatever lambda. Objects are immutable.
 /// Source of the mixture: Johnson, Kotz and Balakrishnan (1995), Continuous Univariate Distributions, volume 2, chapter 30.
 /// </remarks>
 public sealed class NoncentralF

@@ -61,7 +61,7 @@ public sealed record EffectSizes
     /// <param name="df2">Degrees of freedom within groups, positive and finite. N is taken as df1 + df2 + 1, which it is in a one-way layout.</param>
     /// <param name="level">The level of the F test that the intervals match; below 0.5.</param>
     /// <exception cref="ArgumentOutOfRangeException">An argument is outside its range.</exception>
-    /// <remarks>Cost: two noncentral F tails inverted, about 30 us, ten times that for lambda above 200. Sums of squares do not enter, so that responses of 1e-300 or 1e300 are as good as others.</remarks>
+    /// <remarks>Cost: two noncentral F tails inverted, 15 to 65 us, and about 2 ms where lambda exceeds 256. Sums of squares do not enter, so that responses of 1e-300 or 1e300 are as good as others.</remarks>
     public static EffectSizes Of(double f, double df1, double df2, SignificanceLevel level)
     {
         if (!(f >= 0 && double.IsFinite(f)))

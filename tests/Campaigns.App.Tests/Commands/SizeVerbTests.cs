@@ -97,7 +97,7 @@ public sealed class SizeVerbTests : IDisposable
     public void People_read_the_answer_its_assumptions_and_that_it_is_no_guarantee()
     {
         string text = _place.Run("size", "--groups", "3", "--effect", "0.25").Well().Out.ReplaceLineEndings(" ");
-        Assert.StartsWith("53 replicates in each of 3 groups, 159 observations in all, find an effect of f = 0.2500 by the F test at level 0.05", text, StringComparison.Ordinal);
+        Assert.StartsWith("53 replicates in each of 3 groups, 159 observations in all, find an effect of f = 0.25 by the F test at level 0.05 with power 0.8049", text, StringComparison.Ordinal);
         Assert.Contains("0.8 was wanted, and one replicate less in each group does not reach it.", text, StringComparison.Ordinal);
         Assert.Contains("Assumed: the F test", text, StringComparison.Ordinal);
         Assert.Contains("same standard deviation in every group", text, StringComparison.Ordinal);
@@ -106,7 +106,9 @@ public sealed class SizeVerbTests : IDisposable
         string power = _place.Run("size", "--difference", "30", "--sd", "1", "--groups", "3", "--replicates", "9").Well().Out.ReplaceLineEndings(" ");
         Assert.Contains("with power above 0.9999.", power, StringComparison.Ordinal);
         Assert.Contains("finds hardest", power, StringComparison.Ordinal);
-        Assert.Contains("or more", _place.Run("size", "--sizes", "4,5,6").Well().Out, StringComparison.Ordinal);
+        string effect = _place.Run("size", "--groups", "4", "--replicates", "8", "--sd", "2").Well().Out.ReplaceLineEndings(" ");
+        Assert.Contains("f = 0.6261 or more, and whenever two means lie 3.542 or more apart, by the F test", effect, StringComparison.Ordinal);
+        Assert.Contains("observations in 3 groups of the sizes 4, 5, 6 find", _place.Run("size", "--sizes", "4,5,6").Well().Out, StringComparison.Ordinal);
         Assert.Contains("fewer than two replicates", _place.Run("size", "--groups", "3", "--effect", "9").Well().Out.ReplaceLineEndings(" "), StringComparison.Ordinal);
         Assert.False(File.Exists(_place.Catalog));
     }
