@@ -30,6 +30,9 @@ public sealed class CatalogContext(DbContextOptions<CatalogContext> options) : D
     /// <summary>Test results.</summary>
     public DbSet<TestResultRow> TestResults => Set<TestResultRow>();
 
+    /// <summary>Observations left out, and taken in again.</summary>
+    public DbSet<ExclusionRow> Exclusions => Set<ExclusionRow>();
+
     /// <summary>Reviews.</summary>
     public DbSet<ReviewRow> Reviews => Set<ReviewRow>();
 

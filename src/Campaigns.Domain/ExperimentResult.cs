@@ -1,3 +1,4 @@
+using Campaigns.Statistics.GroupTests;
 using Campaigns.Statistics.Probability;
 
 namespace Campaigns.Domain;
@@ -44,6 +45,12 @@ public sealed record ExperimentResult
     /// <summary>Omega squared, possibly negative; null without a result.</summary>
     public double? OmegaSquared { get; init; }
 
-    /// <summary>Deviations from the plan: reasons of the amendments by which values came in after the test, and a test short of the planned values; empty where there are none.</summary>
+    /// <summary>Specimens whose means were tested; null where every value stood for itself.</summary>
+    public int? SpecimenCount { get; init; }
+
+    /// <summary>The arrangements behind a permutation p-value; null for other tests.</summary>
+    public Resampling? Resampling { get; init; }
+
+    /// <summary>Deviations from the plan: reasons of the amendments by which values came in after the test, values left out, and a test short of the planned values; empty where there are none.</summary>
     public IReadOnlyList<string> Amendments { get; init; } = [];
 }

@@ -210,7 +210,9 @@ class Comparison:
 
     def kernels(self):
         a, b = in_turn(lambda _: self.figures([self.benchmarks, "time"]), lambda _: self.figures(["Rscript", "--vanilla", PEERS / "kernels.R"]), 3)
-        for key, what, target, reach in [("adjust", "Bonferroni + Holm + BH of 1e6 / p.adjust", 0.25, 0.10), ("tails", "F tails with log / pf", 0.5, 0.1)]:
+        for key, what, target, reach in [("adjust", "Bonferroni + Holm + BH of 1e6 / p.adjust", 0.25, 0.10), ("tails", "F tails with log / pf", 0.5, 0.1),
+                                          ("range", "1e6 tails of the studentized range with log, one law / ptukey", 0.05, 0.005),
+                                          ("range-df", "1e4 such tails, each with its own df / ptukey", 0.05, 0.02)]:
             ratio = statistics.median(x[key] / y[key] for x, y in zip(a, b))
             self.row(what, ratio, target, reach, f"{statistics.median(x[key] for x in a):.0f} ms / {statistics.median(y[key] for y in b):.0f} ms")
         self.row("Hommel of 1e5, s", statistics.median(x["hommel"] for x in a) / 1000, 0.1, 0.03, "")

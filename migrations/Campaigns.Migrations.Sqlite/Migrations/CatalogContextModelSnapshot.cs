@@ -97,6 +97,72 @@ namespace Campaigns.Migrations.Sqlite.Migrations
                         });
                 });
 
+            modelBuilder.Entity("Campaigns.Catalog.Rows.ExclusionRow", b =>
+                {
+                    b.Property<long>("Id")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("id");
+
+                    b.Property<long>("ExperimentId")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("experiment_id");
+
+                    b.Property<string>("GroupLabel")
+                        .IsRequired()
+                        .HasColumnType("TEXT")
+                        .HasColumnName("group_label");
+
+                    b.Property<bool>("IsExcluded")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("is_excluded");
+
+                    b.Property<long>("Line")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("line");
+
+                    b.Property<long>("LoadId")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("load_id");
+
+                    b.Property<long>("MadeAt")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("made_at");
+
+                    b.Property<string>("NamedBy")
+                        .IsRequired()
+                        .HasColumnType("TEXT")
+                        .HasColumnName("named_by");
+
+                    b.Property<string>("ProgramVersion")
+                        .IsRequired()
+                        .HasColumnType("TEXT")
+                        .HasColumnName("program_version");
+
+                    b.Property<string>("Reason")
+                        .IsRequired()
+                        .HasColumnType("TEXT")
+                        .HasColumnName("reason");
+
+                    b.Property<string>("Value")
+                        .IsRequired()
+                        .HasColumnType("TEXT")
+                        .HasColumnName("value");
+
+                    b.HasKey("Id");
+
+                    b.HasIndex("ExperimentId", "LoadId")
+                        .HasDatabaseName("ix_exclusions_measurement");
+
+                    b.ToTable("exclusions", null, t =>
+                        {
+                            t.HasCheckConstraint("ck_exclusions_is_excluded", "is_excluded in (0, 1)");
+
+                            t.HasCheckConstraint("ck_exclusions_line", "line > 0");
+
+                            t.HasCheckConstraint("ck_exclusions_words", "length(reason) > 0 and length(named_by) > 0");
+                        });
+                });
+
             modelBuilder.Entity("Campaigns.Catalog.Rows.ExperimentRow", b =>
                 {
                     b.Property<long>("Id")
@@ -417,6 +483,14 @@ namespace Campaigns.Migrations.Sqlite.Migrations
                         .HasColumnType("INTEGER")
                         .HasColumnName("test_run_id");
 
+                    b.Property<long?>("Arrangements")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("arrangements");
+
+                    b.Property<long?>("AsExtreme")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("as_extreme");
+
                     b.Property<double?>("Df1")
                         .HasColumnType("REAL")
                         .HasColumnName("df1");
@@ -448,6 +522,14 @@ namespace Campaigns.Migrations.Sqlite.Migrations
                     b.Property<double?>("P")
                         .HasColumnType("REAL")
                         .HasColumnName("p");
+
+                    b.Property<long?>("Seed")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("seed");
+
+                    b.Property<int?>("SpecimenCount")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("specimen_count");
 
                     b.Property<double?>("Statistic")
                         .HasColumnType("REAL")
@@ -487,6 +569,10 @@ namespace Campaigns.Migrations.Sqlite.Migrations
                         .HasColumnType("INTEGER")
                         .HasColumnName("includes_incomplete");
 
+                    b.Property<long?>("LastExclusionId")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("last_exclusion_id");
+
                     b.Property<long?>("LastLoadId")
                         .HasColumnType("INTEGER")
                         .HasColumnName("last_load_id");
@@ -506,6 +592,15 @@ namespace Campaigns.Migrations.Sqlite.Migrations
                         {
                             t.HasCheckConstraint("ck_test_runs_includes_incomplete", "includes_incomplete in (0, 1)");
                         });
+                });
+
+            modelBuilder.Entity("Campaigns.Catalog.Rows.ExclusionRow", b =>
+                {
+                    b.HasOne("Campaigns.Catalog.Rows.MeasurementRow", null)
+                        .WithMany()
+                        .HasForeignKey("ExperimentId", "LoadId")
+                        .OnDelete(DeleteBehavior.Restrict)
+                        .IsRequired();
                 });
 
             modelBuilder.Entity("Campaigns.Catalog.Rows.ExperimentRow", b =>

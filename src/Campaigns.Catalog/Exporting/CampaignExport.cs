@@ -1,5 +1,6 @@
 using System.Text;
 using System.Text.Json;
+using Campaigns.Catalog.Excluding;
 using Campaigns.Catalog.Measurements;
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Providers;
@@ -21,6 +22,9 @@ public sealed class CampaignExport(Catalog catalog)
 
     /// <summary>Name of the file of results.</summary>
     public const string ResultsName = "results.csv";
+
+    /// <summary>Name of the file of observations left out of the analysis.</summary>
+    public const string ExclusionsName = "exclusions.csv";
 
     /// <summary>Writes the folder whole: it is made beside its place and moved there when it is finished.</summary>
     /// <param name="standing">The campaign as it stands.</param>
@@ -51,6 +55,11 @@ public sealed class CampaignExport(Catalog catalog)
             }
 
             WriteFile(System.IO.Path.Combine(draft, "measurements"), MeasurementsName, writer => WriteMeasurements(standing, writer));
+            if (new ExclusionStore(catalog).All(standing.Campaign.Code) is { Count: > 0 } decisions)
+            {
+                WriteFile(draft, ExclusionsName, writer => WriteExclusions(decisions, writer));
+            }
+
             WriteFile(draft, ReviewsName, writer => WriteReviews(standing, writer, textOfP));
             WriteFile(draft, ResultsName, writeResults);
             if (Directory.Exists(folder))
@@ -142,6 +151,19 @@ public sealed class CampaignExport(Catalog catalog)
                     values.Orders[i] == ObservationColumns.NoOrder ? "" : CsvLine.Number(values.Orders[i]),
                     file, CsvLine.Number(values.Lines[i]));
             }
+        }
+    }
+
+    /// <summary>Every decision about an observation, the latest about it last; the values themselves stand among the measurements.</summary>
+    private static void WriteExclusions(IReadOnlyList<ExcludedObservation> decisions, TextWriter writer)
+    {
+        var csv = new CsvLine(writer);
+        csv.Write("experiment", "file", "line", "group", "value", "excluded", "reason", "by", "at");
+        foreach (ExcludedObservation d in decisions)
+        {
+            csv.Write(
+                d.Experiment, d.File, CsvLine.Number(d.Line), d.Group, d.Value, d.IsExcluded ? "true" : "false", d.Reason, d.NamedBy,
+                d.At.UtcDateTime.ToString("yyyy-MM-dd'T'HH:mm:ss'Z'", System.Globalization.CultureInfo.InvariantCulture));
         }
     }
 

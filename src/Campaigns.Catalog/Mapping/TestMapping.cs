@@ -14,6 +14,7 @@ internal sealed class TestRunMapping : IEntityTypeConfiguration<TestRunRow>
         builder.Property(r => r.Id).HasColumnName("id").ValueGeneratedNever();
         builder.Property(r => r.CampaignId).HasColumnName("campaign_id");
         builder.Property(r => r.LastLoadId).HasColumnName("last_load_id");
+        builder.Property(r => r.LastExclusionId).HasColumnName("last_exclusion_id");
         builder.Property(r => r.RanAt).HasColumnName("ran_at");
         builder.Property(r => r.IncludesIncomplete).HasColumnName("includes_incomplete");
         builder.Property(r => r.ProgramVersion).HasColumnName("program_version");
@@ -45,6 +46,10 @@ internal sealed class TestResultMapping : IEntityTypeConfiguration<TestResultRow
         builder.Property(r => r.LogP).HasColumnName("log_p");
         builder.Property(r => r.EtaSquared).HasColumnName("eta_squared");
         builder.Property(r => r.OmegaSquared).HasColumnName("omega_squared");
+        builder.Property(r => r.SpecimenCount).HasColumnName("specimen_count");
+        builder.Property(r => r.Arrangements).HasColumnName("arrangements");
+        builder.Property(r => r.AsExtreme).HasColumnName("as_extreme");
+        builder.Property(r => r.Seed).HasColumnName("seed");
         builder.HasOne<ExperimentRow>().WithMany().HasForeignKey(r => r.ExperimentId).OnDelete(DeleteBehavior.Restrict);
         builder.HasOne<TestRunRow>().WithMany().HasForeignKey(r => r.TestRunId).OnDelete(DeleteBehavior.Restrict);
         builder.HasIndex(r => r.TestRunId).HasDatabaseName("ix_test_results_run");

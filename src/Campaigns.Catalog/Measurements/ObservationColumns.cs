@@ -154,9 +154,48 @@ internal sealed class ObservationColumns
             }
         }
 
+        ReadOnlySpan<int> specimens = SpecimenNames.Count > 0 ? Specimens : default;
+        ReadOnlySpan<int> blocks = BlockNames.Count > 0 ? Blocks : default;
+        ReadOnlySpan<long> orders = HasOrder ? Orders : default;
         return IsWide
-            ? new GroupedSample(WideMantissas, Decimals, Groups, groupCount)
-            : new GroupedSample(Mantissas, Decimals, Groups, groupCount);
+            ? new GroupedSample(WideMantissas, Decimals, Groups, groupCount) { Specimens = specimens, Blocks = blocks, Orders = orders }
+            : new GroupedSample(Mantissas, Decimals, Groups, groupCount) { Specimens = specimens, Blocks = blocks, Orders = orders };
+    }
+
+    /// <summary>Takes values out of the columns, the others keeping their order.</summary>
+    /// <param name="positions">Their positions, ascending.</param>
+    public void RemoveAt(IReadOnlyList<int> positions)
+    {
+        if (positions.Count == 0)
+        {
+            return;
+        }
+
+        int next = 0;
+        int kept = 0;
+        for (int i = 0; i < Count; i++)
+        {
+            if (next < positions.Count && positions[next] == i)
+            {
+                next++;
+                continue;
+            }
+
+            _mantissas[kept] = _mantissas[i];
+            _groups[kept] = _groups[i];
+            _lines[kept] = _lines[i];
+            _orders[kept] = _orders[i];
+            _specimens[kept] = _specimens[i];
+            _blocks[kept] = _blocks[i];
+            if (IsWide)
+            {
+                _wide![kept] = _wide[i];
+            }
+
+            kept++;
+        }
+
+        Count = kept;
     }
 
     /// <summary>The typed text of a value: its mantissa with the shared count of decimals.</summary>

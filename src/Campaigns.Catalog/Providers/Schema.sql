@@ -200,3 +200,42 @@ VALUES ('20261201000000_First', '10.0.15');
 
 COMMIT;
 
+BEGIN TRANSACTION;
+ALTER TABLE "test_runs" ADD "last_exclusion_id" INTEGER NULL;
+
+ALTER TABLE "test_results" ADD "arrangements" INTEGER NULL;
+
+ALTER TABLE "test_results" ADD "as_extreme" INTEGER NULL;
+
+ALTER TABLE "test_results" ADD "seed" INTEGER NULL;
+
+ALTER TABLE "test_results" ADD "specimen_count" INTEGER NULL;
+
+CREATE TABLE "exclusions" (
+    "id" INTEGER NOT NULL CONSTRAINT "PK_exclusions" PRIMARY KEY,
+    "experiment_id" INTEGER NOT NULL,
+    "load_id" INTEGER NOT NULL,
+    "line" INTEGER NOT NULL,
+    "is_excluded" INTEGER NOT NULL,
+    "group_label" TEXT NOT NULL,
+    "value" TEXT NOT NULL,
+    "reason" TEXT NOT NULL,
+    "named_by" TEXT NOT NULL,
+    "made_at" INTEGER NOT NULL,
+    "program_version" TEXT NOT NULL,
+    CONSTRAINT "ck_exclusions_is_excluded" CHECK (is_excluded in (0, 1)),
+    CONSTRAINT "ck_exclusions_line" CHECK (line > 0),
+    CONSTRAINT "ck_exclusions_words" CHECK (length(reason) > 0 and length(named_by) > 0),
+    CONSTRAINT "FK_exclusions_measurements_experiment_id_load_id" FOREIGN KEY ("experiment_id", "load_id") REFERENCES "measurements" ("experiment_id", "load_id") ON DELETE RESTRICT
+);
+
+CREATE INDEX "ix_exclusions_measurement" ON "exclusions" ("experiment_id", "load_id");
+
+CREATE TRIGGER exclusions_are_kept BEFORE UPDATE ON exclusions BEGIN SELECT RAISE(ABORT, 'an exclusion is never changed; another one takes it back'); END;
+CREATE TRIGGER exclusions_stay BEFORE DELETE ON exclusions BEGIN SELECT RAISE(ABORT, 'an exclusion is never deleted; another one takes it back'); END;
+
+INSERT INTO "__EFMigrationsHistory" ("MigrationId", "ProductVersion")
+VALUES ('20261201000001_Exclusions', '10.0.15');
+
+COMMIT;
+

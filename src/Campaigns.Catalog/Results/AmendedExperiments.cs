@@ -1,14 +1,30 @@
+using Campaigns.Catalog.Excluding;
 using Campaigns.Catalog.Providers;
 
 namespace Campaigns.Catalog.Results;
 
-/// <summary>The experiments of a campaign to which values were added after their test, with the reasons given.</summary>
-/// <remarks>Campaigns without an amendment, which is nearly all, cost one look at the list of loads.</remarks>
+/// <summary>The experiments of a campaign to which values were added after their test, or of which values were left out, with the reasons given.</summary>
+/// <remarks>Campaigns without any, which is nearly all, cost a look at the list of loads and one at the list of exclusions.</remarks>
 internal sealed class AmendedExperiments
 {
     private readonly Dictionary<long, Amended> _experiments = [];
 
     public AmendedExperiments(Catalog catalog, long campaignId)
+    {
+        Exclusions = new StandingExclusions(catalog, campaignId);
+        AddLoads(catalog, campaignId);
+        foreach (long id in Exclusions.Ids)
+        {
+            Amended amended = Of(id);
+            amended.Reasons.AddRange(Exclusions.Decisions(id).Select(d => d.Sentence));
+            amended.AwaitsTest |= Exclusions.AwaitsTest(id);
+        }
+    }
+
+    /// <summary>What is left out of the analysis.</summary>
+    public StandingExclusions Exclusions { get; }
+
+    private void AddLoads(Catalog catalog, long campaignId)
     {
         using SqliteStatement loads = catalog.Prepare("SELECT count(*) FROM loads WHERE campaign_id = ?1 AND amendment_reason IS NOT NULL");
         loads.Bind(1, campaignId).Read();
@@ -36,11 +52,7 @@ internal sealed class AmendedExperiments
                 continue;
             }
 
-            if (!_experiments.TryGetValue(select.Integer(0), out Amended? amended))
-            {
-                _experiments[select.Integer(0)] = amended = new Amended();
-            }
-
+            Amended amended = Of(select.Integer(0));
             amended.Reasons.Add(select.Text(2));
             amended.AwaitsTest |= select.Integer(4) < load;
         }
@@ -53,12 +65,22 @@ internal sealed class AmendedExperiments
 
     public bool Any => Count > 0;
 
-    /// <summary>Whether values came in after the latest test, which is then no longer the experiment's result.</summary>
+    /// <summary>Whether values came in or were left out after the latest test, which is then no longer the experiment's result.</summary>
     public bool AwaitsTest(long experimentId) => _experiments.TryGetValue(experimentId, out Amended? amended) && amended.AwaitsTest;
 
     /// <summary>The reasons of the amendments, oldest first.</summary>
     public IReadOnlyList<string> Reasons(long experimentId) =>
         _experiments.TryGetValue(experimentId, out Amended? amended) ? amended.Reasons : [];
+
+    private Amended Of(long experimentId)
+    {
+        if (!_experiments.TryGetValue(experimentId, out Amended? amended))
+        {
+            _experiments[experimentId] = amended = new Amended();
+        }
+
+        return amended;
+    }
 
     private sealed class Amended
     {

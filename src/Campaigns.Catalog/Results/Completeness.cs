@@ -1,41 +1,52 @@
+using Campaigns.Catalog.Measurements;
+
 namespace Campaigns.Catalog.Results;
 
-/// <summary>Whether an experiment has the values that its plan asks for.</summary>
-internal static class Completeness
+/// <summary>Whether experiments have the values that their plans ask for.</summary>
+internal sealed class Completeness
 {
-    /// <summary>With a planned number: every group holds at least that many values (all groups of the plan, or all that came with the data where the plan names none, and at least two). Without: there is a value.</summary>
-    /// <param name="groups">Group of each value.</param>
+    private readonly HashSet<int> _seen = [];
+    private int[] _counts = new int[16];
+
+    /// <summary>With a planned number: every group holds at least that many replicates (all groups of the plan, or all that came with the data where the plan names none, and at least two). Without: there is a value.</summary>
+    /// <remarks>A replicate is a specimen where specimens are recorded, a value elsewhere: further readings of a specimen add none.</remarks>
+    /// <param name="values">The experiment's values.</param>
     /// <param name="groupCount">Groups of the experiment.</param>
     /// <param name="groupsArePlanned">Whether the plan named them.</param>
-    /// <param name="replicates">Planned values in each group; null where the plan gives no number.</param>
-    /// <param name="counts">Scratch, grown where needed.</param>
-    public static bool IsComplete(ReadOnlySpan<ushort> groups, int groupCount, bool groupsArePlanned, int? replicates, ref int[] counts)
+    /// <param name="replicates">Planned replicates in each group; null where the plan gives no number.</param>
+    public bool IsComplete(ObservationColumns values, int groupCount, bool groupsArePlanned, int? replicates)
     {
         if (replicates is not { } needed)
         {
-            return !groups.IsEmpty;
+            return values.Count > 0;
         }
 
-        if (counts.Length < groupCount)
+        if (_counts.Length < groupCount)
         {
-            counts = new int[groupCount];
+            _counts = new int[groupCount];
         }
 
-        Array.Clear(counts);
-        foreach (ushort group in groups)
+        Array.Clear(_counts);
+        _seen.Clear();
+        ReadOnlySpan<ushort> groups = values.Groups;
+        ReadOnlySpan<int> specimens = values.SpecimenNames.Count > 0 ? values.Specimens : default;
+        for (int i = 0; i < groups.Length; i++)
         {
-            if (group >= groupCount)
+            if (groups[i] >= groupCount)
             {
-                throw Measurements.PackReader.Damaged();
+                throw PackReader.Damaged();
             }
 
-            counts[group]++;
+            if (specimens.IsEmpty || specimens[i] < 0 || _seen.Add(specimens[i]))
+            {
+                _counts[groups[i]]++;
+            }
         }
 
         int full = 0;
         for (int group = 0; group < groupCount; group++)
         {
-            full += counts[group] >= needed ? 1 : 0;
+            full += _counts[group] >= needed ? 1 : 0;
         }
 
         return full == groupCount && (groupsArePlanned || groupCount >= 2);

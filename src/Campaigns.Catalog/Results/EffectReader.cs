@@ -1,8 +1,7 @@
-using System.Text.Json;
-using Campaigns.Catalog.Measurements;
+using Campaigns.Catalog.Excluding;
 using Campaigns.Catalog.Plans;
-using Campaigns.Catalog.Providers;
 using Campaigns.Statistics.GroupTests;
+using Campaigns.Statistics.Units;
 
 namespace Campaigns.Catalog.Results;
 
@@ -28,46 +27,23 @@ public sealed class EffectReader(Catalog catalog)
     public IReadOnlyDictionary<string, WidestGap> WidestGaps(string campaignCode, IEnumerable<string> experiments)
     {
         long campaignId = new CampaignStore(catalog).Get(campaignCode).Id;
-        using var sets = new GroupSets(catalog, campaignId);
-        using SqliteStatement select = catalog.Prepare(
-            """
-            SELECT e.code, e.group_set_id, m.packed FROM (SELECT value AS wanted FROM json_each(?2)) w
-            CROSS JOIN experiments e ON e.campaign_id = ?1 AND e.code = w.wanted
-            CROSS JOIN measurements m ON m.experiment_id = e.id ORDER BY e.id, m.load_id
-            """);
-        select.Bind(1, campaignId).Bind(2, JsonSerializer.Serialize([.. experiments], JsonArrays.Default.StringArray));
+        using var rows = new ValueRows(catalog, campaignId, new StandingExclusions(catalog, campaignId), experiments);
         var gaps = new Dictionary<string, WidestGap>(StringComparer.Ordinal);
-        var values = new ObservationColumns();
-        string code = "";
-        string[] labels = [];
-        while (select.Read())
+        while (rows.Next())
         {
-            if (!select.TextEquals(0, code))
+            if (Gap(rows.Values.Sample(rows.Labels.Length), rows.Labels) is { } gap)
             {
-                Finish();
-                values.Clear();
-                code = select.Text(0);
-                labels = sets.Labels(select.NullableInteger(1));
+                gaps[rows.Code] = gap;
             }
-
-            PackedMeasurements.Read(select.Blob(2), values);
         }
 
-        Finish();
         return gaps;
-
-        void Finish()
-        {
-            if (Gap(values.Sample(labels.Length), labels) is { } gap)
-            {
-                gaps[code] = gap;
-            }
-        }
     }
 
     private static WidestGap? Gap(GroupedSample sample, string[] labels)
     {
-        GroupSummary[] groups = GroupSummaries.Of(sample, DetailReader.Confidence);
+        // The means of the values that were tested: of the specimens, where readings of one were averaged.
+        GroupSummary[] groups = GroupSummaries.Of(SpecimenMeans.Of(sample) is { } means ? means.Sample : sample, DetailReader.Confidence);
         int high = -1, low = -1;
         for (int group = 0; group < groups.Length; group++)
         {

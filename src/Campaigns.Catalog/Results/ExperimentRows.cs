@@ -2,6 +2,7 @@ using System.Text.Json;
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Providers;
 using Campaigns.Domain;
+using Campaigns.Statistics.GroupTests;
 
 namespace Campaigns.Catalog.Results;
 
@@ -24,7 +25,7 @@ internal sealed class ExperimentRows : IDisposable
         _plans = catalog.Prepare($"SELECT {PlanStore.ExperimentColumns} FROM {chosen} WHERE e.campaign_id = ?1 ORDER BY e.id");
         _results = catalog.Prepare(
             $"""
-            SELECT r.experiment_id, r.status, r.group_count, r.observation_count, r.statistic, r.df1, r.df2, r.p, r.log_p, r.eta_squared, r.omega_squared, t.includes_incomplete
+            SELECT r.experiment_id, r.status, r.group_count, r.observation_count, r.statistic, r.df1, r.df2, r.p, r.log_p, r.eta_squared, r.omega_squared, t.includes_incomplete, r.specimen_count, r.arrangements, r.as_extreme, r.seed
             FROM {chosen} CROSS JOIN test_results r ON r.experiment_id = e.id JOIN test_runs t ON t.id = r.test_run_id WHERE e.campaign_id = ?1 ORDER BY e.id, r.test_run_id
             """);
         foreach (SqliteStatement statement in (SqliteStatement[])[_plans, _results])
@@ -84,8 +85,10 @@ internal sealed class ExperimentRows : IDisposable
         P = FamilyReader.ReadP(row, 7),
         EtaSquared = row.NullableReal(9),
         OmegaSquared = row.NullableReal(10),
-        Amendments = row.Integer(11) != 0 && IsShort(experiment.Plan, (int)row.Integer(2), (int)row.Integer(3))
-            ? [.. experiment.Amendments, FormattableString.Invariant($"tested short of its plan, with {row.Integer(3)} values where {experiment.Plan.Replicates} in each group were planned")]
+        SpecimenCount = (int?)row.NullableInteger(12),
+        Resampling = row.IsNull(13) ? null : new Resampling(row.Integer(13), row.Integer(14), unchecked((ulong?)row.NullableInteger(15))),
+        Amendments = row.Integer(11) != 0 && IsShort(experiment.Plan, (int)row.Integer(2), (int)(row.NullableInteger(12) ?? row.Integer(3)))
+            ? [.. experiment.Amendments, FormattableString.Invariant($"tested short of its plan, with {row.NullableInteger(12) ?? row.Integer(3)} {(row.IsNull(12) ? "values" : "specimens")} where {experiment.Plan.Replicates} in each group were planned")]
             : experiment.Amendments,
     };
 

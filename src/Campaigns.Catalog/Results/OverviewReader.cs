@@ -55,7 +55,7 @@ public sealed class OverviewReader(Catalog catalog)
             adjusted);
     }
 
-    /// <summary>Experiments that received values after their test, or whose test was run short of the planned values.</summary>
+    /// <summary>Experiments that received values after their test, of which values were left out, or whose test was run short of the planned values.</summary>
     private int Deviating(long campaignId)
     {
         var ids = new HashSet<long>(new AmendedExperiments(catalog, campaignId).Ids);
@@ -64,7 +64,7 @@ public sealed class OverviewReader(Catalog catalog)
             SELECT r.experiment_id FROM test_runs t JOIN test_results r ON r.test_run_id = t.id JOIN experiments e ON e.id = r.experiment_id
             WHERE t.campaign_id = ?1 AND t.includes_incomplete = 1 AND e.replicates IS NOT NULL
                 AND (r.group_count < (SELECT count(*) FROM groups g WHERE g.group_set_id = e.group_set_id)
-                    OR r.observation_count < e.replicates * (SELECT count(*) FROM groups g WHERE g.group_set_id = e.group_set_id))
+                    OR coalesce(r.specimen_count, r.observation_count) < e.replicates * (SELECT count(*) FROM groups g WHERE g.group_set_id = e.group_set_id))
             """);
         shorter.Bind(1, campaignId);
         while (shorter.Read())

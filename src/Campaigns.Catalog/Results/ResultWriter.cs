@@ -5,7 +5,7 @@ using Campaigns.Statistics.GroupTests;
 namespace Campaigns.Catalog.Results;
 
 /// <summary>Writes the outcomes of one test run; the run itself is stored with its first outcome, so that a run without any leaves no trace.</summary>
-internal sealed class ResultWriter(Catalog catalog, long campaignId, long? lastLoadId, bool includesIncomplete) : IDisposable
+internal sealed class ResultWriter(Catalog catalog, long campaignId, long? lastLoadId, long? lastExclusionId, bool includesIncomplete) : IDisposable
 {
     private SqliteStatement? _insert;
     private long _runId;
@@ -35,7 +35,10 @@ internal sealed class ResultWriter(Catalog catalog, long campaignId, long? lastL
     private void Write(long experimentId, TestOutcome outcome)
     {
         _insert ??= Begin();
-        _insert.Bind(1, experimentId).Bind(2, _runId).Bind(4, (long)outcome.GroupCount).Bind(5, (long)outcome.ObservationCount);
+        _insert.Bind(1, experimentId).Bind(2, _runId).Bind(4, (long)outcome.GroupCount).Bind(5, (long)outcome.ObservationCount)
+            .Bind(13, outcome.SpecimenCount is { } specimens ? (long?)specimens : null);
+        Resampling? resampling = (outcome as Tested)?.Resampling;
+        _insert.Bind(14, resampling?.Arrangements).Bind(15, resampling?.AsExtreme).Bind(16, unchecked((long?)resampling?.Seed));
         switch (outcome)
         {
             case Tested tested:
@@ -47,7 +50,7 @@ internal sealed class ResultWriter(Catalog catalog, long campaignId, long? lastL
                 break;
             case NotTestable none:
                 NotTestable++;
-                _insert.Bind(3, StatusOf(none.Reason).Word());
+                _insert.Bind(3, ExperimentStatusWords.Of(none.Reason).Word());
                 for (int parameter = 6; parameter <= 12; parameter++)
                 {
                     _insert.BindNull(parameter);
@@ -69,28 +72,13 @@ internal sealed class ResultWriter(Catalog catalog, long campaignId, long? lastL
         next.Read();
         _runId = next.Integer(0);
         next.Reset();
-        using SqliteStatement run = catalog.Prepare("INSERT INTO test_runs (id, campaign_id, last_load_id, ran_at, includes_incomplete, program_version) VALUES (?1, ?2, ?3, ?4, ?5, ?6)");
+        using SqliteStatement run = catalog.Prepare("INSERT INTO test_runs (id, campaign_id, last_load_id, ran_at, includes_incomplete, program_version, last_exclusion_id) VALUES (?1, ?2, ?3, ?4, ?5, ?6, ?7)");
         run.Bind(1, _runId).Bind(2, campaignId).Bind(3, lastLoadId).Bind(4, catalog.Now)
-            .Bind(5, includesIncomplete ? 1L : 0L).Bind(6, ProgramVersion.Current).Run();
+            .Bind(5, includesIncomplete ? 1L : 0L).Bind(6, ProgramVersion.Current).Bind(7, lastExclusionId).Run();
         return catalog.Prepare(
             """
-            INSERT INTO test_results (experiment_id, test_run_id, status, group_count, observation_count, statistic, df1, df2, p, log_p, eta_squared, omega_squared)
-            VALUES (?1, ?2, ?3, ?4, ?5, ?6, ?7, ?8, ?9, ?10, ?11, ?12)
+            INSERT INTO test_results (experiment_id, test_run_id, status, group_count, observation_count, statistic, df1, df2, p, log_p, eta_squared, omega_squared, specimen_count, arrangements, as_extreme, seed)
+            VALUES (?1, ?2, ?3, ?4, ?5, ?6, ?7, ?8, ?9, ?10, ?11, ?12, ?13, ?14, ?15, ?16)
             """);
     }
-
-    private static ExperimentStatus StatusOf(NotTestableReason reason) => reason switch
-    {
-        NotTestableReason.TooFewGroups => ExperimentStatus.TooFewGroups,
-        NotTestableReason.NoReplication => ExperimentStatus.NoReplication,
-        NotTestableReason.ConstantResponse => ExperimentStatus.ConstantResponse,
-        NotTestableReason.ZeroWithinVariation => ExperimentStatus.ZeroWithinVariation,
-        NotTestableReason.GroupOfOne => ExperimentStatus.GroupOfOne,
-        NotTestableReason.ConstantGroup => ExperimentStatus.ConstantGroup,
-        NotTestableReason.BlockNotRecorded => ExperimentStatus.BlockNotRecorded,
-        NotTestableReason.DisconnectedBlocks => ExperimentStatus.DisconnectedBlocks,
-        NotTestableReason.SpecimenInSeveralBlocks => ExperimentStatus.SpecimenInSeveralBlocks,
-        NotTestableReason.SpecimenInSeveralGroups => ExperimentStatus.SpecimenInSeveralGroups,
-        _ => throw new ArgumentOutOfRangeException(nameof(reason), reason, "No status for this reason."),
-    };
 }

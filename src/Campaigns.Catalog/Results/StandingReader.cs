@@ -75,47 +75,54 @@ public sealed class StandingReader(Catalog catalog)
             FROM experiments e JOIN measurements m ON m.experiment_id = e.id
             WHERE e.campaign_id = ?1 AND NOT EXISTS (
                 SELECT 1 FROM test_results r JOIN test_runs t ON t.id = r.test_run_id
-                WHERE r.experiment_id = e.id AND coalesce(t.last_load_id, 0) >= (SELECT max(load_id) FROM measurements WHERE experiment_id = e.id))
+                WHERE r.experiment_id = e.id AND coalesce(t.last_load_id, 0) >= (SELECT max(load_id) FROM measurements WHERE experiment_id = e.id)
+                    AND coalesce(t.last_exclusion_id, 0) >= (SELECT coalesce(max(id), 0) FROM exclusions WHERE experiment_id = e.id))
             ORDER BY e.id, m.load_id
             """);
         using var sets = new GroupSets(catalog, campaignId);
         select.Bind(1, campaignId);
         var data = new Dictionary<long, DataAtHand>();
         var values = new ObservationColumns();
-        while (select.Read())
+        var completeness = new Completeness();
+        bool more = select.Read();
+        while (more)
         {
             long id = select.Integer(0);
-            if (!data.TryGetValue(id, out DataAtHand? at))
+            int groupCount = sets.Labels(select.NullableInteger(1)).Length;
+            bool planned = select.Integer(2) != 0;
+            var replicates = (int?)select.NullableInteger(3);
+            values.Clear();
+            for (; more && select.Integer(0) == id; more = select.Read())
             {
-                data[id] = at = new DataAtHand(sets.Labels(select.NullableInteger(1)).Length, select.Integer(2) != 0, (int?)select.NullableInteger(3));
+                PackedMeasurements.Read(select.Blob(4), values);
             }
 
-            values.Clear();
-            PackedMeasurements.Read(select.Blob(4), values);
-            at.Add(values.Groups);
+            ExperimentStatus status =
+                completeness.IsComplete(values, groupCount, planned, replicates) ? ExperimentStatus.Ready
+                : values.Count == 0 ? ExperimentStatus.Planned
+                : ExperimentStatus.Incomplete;
+            data[id] = new DataAtHand(status, CountGroups(values.Groups, groupCount), values.Count);
         }
 
         return data;
     }
 
-    /// <summary>Values of an experiment by group, against what its plan asks for.</summary>
-    private sealed class DataAtHand(int groupCount, bool groupsArePlanned, int? replicates)
+    private static int CountGroups(ReadOnlySpan<ushort> groups, int groupCount)
     {
-        private readonly List<ushort> _groups = [];
-
-        public void Add(ReadOnlySpan<ushort> groups) => _groups.AddRange(groups);
-
-        public ExperimentResult Describe(ExperimentResult experiment)
+        var seen = new bool[groupCount];
+        foreach (ushort group in groups)
         {
-            int[] counts = [];
-            bool complete = Completeness.IsComplete(
-                System.Runtime.InteropServices.CollectionsMarshal.AsSpan(_groups), groupCount, groupsArePlanned, replicates, ref counts);
-            return experiment with
-            {
-                Status = complete ? ExperimentStatus.Ready : _groups.Count == 0 ? ExperimentStatus.Planned : ExperimentStatus.Incomplete,
-                GroupCount = _groups.Distinct().Count(),
-                ObservationCount = _groups.Count,
-            };
+            // Completeness has seen to it that the numbers are the set's, unless the plan gives no number of replicates.
+            seen[group < groupCount ? group : throw PackReader.Damaged()] = true;
         }
+
+        return seen.Count(s => s);
+    }
+
+    /// <summary>Values of an experiment against what its plan asks for.</summary>
+    private sealed record DataAtHand(ExperimentStatus Status, int GroupCount, int ObservationCount)
+    {
+        public ExperimentResult Describe(ExperimentResult experiment) =>
+            experiment with { Status = Status, GroupCount = GroupCount, ObservationCount = ObservationCount };
     }
 }

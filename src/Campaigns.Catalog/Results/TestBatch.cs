@@ -1,5 +1,7 @@
+using Campaigns.Catalog.Excluding;
 using Campaigns.Catalog.Measurements;
 using Campaigns.Statistics.GroupTests;
+using Campaigns.Statistics.Units;
 
 namespace Campaigns.Catalog.Results;
 
@@ -9,7 +11,16 @@ namespace Campaigns.Catalog.Results;
 /// <param name="GroupsArePlanned">Whether the plan named them.</param>
 /// <param name="Replicates">Planned values in each group; null where the plan gives no number.</param>
 /// <param name="Test">The planned test.</param>
-internal readonly record struct ExperimentToTest(long Id, int GroupCount, bool GroupsArePlanned, int? Replicates, GroupTest Test);
+/// <param name="Draws">Random arrangements that the test may draw.</param>
+/// <param name="Excluded">Observations that are left out.</param>
+internal readonly record struct ExperimentToTest(
+    long Id,
+    int GroupCount,
+    bool GroupsArePlanned,
+    int? Replicates,
+    GroupTest Test,
+    RandomDraws Draws,
+    IReadOnlySet<StandingExclusions.Place> Excluded);
 
 /// <summary>Some hundred experiments on their way from the catalog through their tests and back: packed values in, outcomes out.</summary>
 internal sealed class TestBatch
@@ -18,7 +29,7 @@ internal sealed class TestBatch
 
     private readonly List<ExperimentToTest> _experiments = new(Size);
     private readonly List<TestOutcome?> _outcomes = new(Size);
-    private readonly List<(int Experiment, int End)> _parts = new(Size);
+    private readonly List<(int Experiment, long LoadId, int End)> _parts = new(Size);
     private byte[] _packed = new byte[1 << 16];
     private int _length;
 
@@ -44,7 +55,7 @@ internal sealed class TestBatch
     public void Begin(in ExperimentToTest experiment) => _experiments.Add(experiment);
 
     /// <summary>Adds what one load brought to the experiment begun last.</summary>
-    public void Add(ReadOnlySpan<byte> packed)
+    public void Add(long loadId, ReadOnlySpan<byte> packed)
     {
         if (_length + packed.Length > _packed.Length)
         {
@@ -53,7 +64,7 @@ internal sealed class TestBatch
 
         packed.CopyTo(_packed.AsSpan(_length));
         _length += packed.Length;
-        _parts.Add((Count - 1, _length));
+        _parts.Add((Count - 1, loadId, _length));
     }
 
     /// <summary>Runs the tests.</summary>
@@ -61,21 +72,26 @@ internal sealed class TestBatch
     /// <param name="values">Scratch.</param>
     public void Test(bool includeIncomplete, ObservationColumns values)
     {
-        int[] counts = new int[16];
+        var completeness = new Completeness();
+        var leftOut = new ExcludedPositions();
         int start = 0;
         int part = 0;
         for (int i = 0; i < Count; i++)
         {
+            ExperimentToTest e = _experiments[i];
             values.Clear();
+            leftOut.Begin(e.Excluded);
             for (; part < _parts.Count && _parts[part].Experiment == i; part++)
             {
                 PackedMeasurements.Read(_packed.AsSpan(start, _parts[part].End - start), values);
+                leftOut.Find(_parts[part].LoadId, values);
                 start = _parts[part].End;
             }
 
-            ExperimentToTest e = _experiments[i];
-            bool ready = includeIncomplete || Completeness.IsComplete(values.Groups, e.GroupCount, e.GroupsArePlanned, e.Replicates, ref counts);
-            _outcomes.Add(ready ? e.Test.Test(values.Sample(e.GroupCount)) : null);
+            // A value that was measured and is left out was planned for: it keeps the experiment complete.
+            bool ready = includeIncomplete || completeness.IsComplete(values, e.GroupCount, e.GroupsArePlanned, e.Replicates);
+            values.RemoveAt(leftOut.Positions);
+            _outcomes.Add(ready ? ExperimentalUnits.Test(e.Test, values.Sample(e.GroupCount), e.Draws) : null);
         }
     }
 }

@@ -1,3 +1,4 @@
+using Campaigns.Catalog.Excluding;
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Providers;
 using Campaigns.Domain;
@@ -17,15 +18,15 @@ public sealed record TestRunSummary(int Tested, int NotTestable, int Incomplete,
 public sealed class TestRunner(Catalog catalog)
 {
     private const string Columns =
-        "e.id, e.code, e.group_set_id, e.groups_are_planned, e.replicates, e.test, m.packed";
+        "e.id, e.code, e.group_set_id, e.groups_are_planned, e.replicates, e.test, m.packed, m.load_id";
 
     private const string All =
         $"SELECT {Columns} FROM experiments e JOIN measurements m ON m.experiment_id = e.id WHERE e.campaign_id = ?1 ORDER BY e.id, m.load_id";
 
     // A cross join is SQLite's way of being told where to begin: at the few experiments that received data, not at all there are.
-    private const string WithDataAfterRun =
+    private const string WithNewsAfterRun =
         $"""
-        SELECT {Columns} FROM (SELECT DISTINCT experiment_id FROM measurements WHERE load_id > ?2) n
+        SELECT {Columns} FROM (SELECT experiment_id FROM measurements WHERE load_id > ?2 UNION SELECT experiment_id FROM exclusions WHERE id > ?3) n
         CROSS JOIN experiments e ON e.id = n.experiment_id CROSS JOIN measurements m ON m.experiment_id = e.id
         WHERE e.campaign_id = ?1 ORDER BY e.id, m.load_id
         """;
@@ -35,7 +36,8 @@ public sealed class TestRunner(Catalog catalog)
         SELECT {Columns} FROM experiments e JOIN measurements m ON m.experiment_id = e.id
         WHERE e.campaign_id = ?1 AND NOT EXISTS (
             SELECT 1 FROM test_results r JOIN test_runs t ON t.id = r.test_run_id
-            WHERE r.experiment_id = e.id AND coalesce(t.last_load_id, 0) >= (SELECT max(load_id) FROM measurements WHERE experiment_id = e.id))
+            WHERE r.experiment_id = e.id AND coalesce(t.last_load_id, 0) >= (SELECT max(load_id) FROM measurements WHERE experiment_id = e.id)
+                AND coalesce(t.last_exclusion_id, 0) >= (SELECT coalesce(max(id), 0) FROM exclusions WHERE experiment_id = e.id))
         ORDER BY e.id, m.load_id
         """;
 
@@ -58,20 +60,21 @@ public sealed class TestRunner(Catalog catalog)
 
     private TestRunSummary Run(StoredCampaign stored, bool includeIncomplete, Action<WorkProgress> progress, CancellationToken cancel)
     {
-        (long? lastRunLoad, bool ranBefore) = LastRun(stored.Id);
+        (long LoadId, long ExclusionId, bool RanBefore) last = LastRun(stored.Id);
         long? lastLoad = LastLoad(stored.Id);
-        string sql = !ranBefore ? All : includeIncomplete ? Untested : WithDataAfterRun;
+        string sql = !last.RanBefore ? All : includeIncomplete ? Untested : WithNewsAfterRun;
         using SqliteStatement select = catalog.Prepare(sql);
         select.Bind(1, stored.Id);
-        if (sql == WithDataAfterRun)
+        if (sql == WithNewsAfterRun)
         {
-            select.Bind(2, lastRunLoad ?? 0);
+            select.Bind(2, last.LoadId).Bind(3, last.ExclusionId);
         }
 
+        var exclusions = new StandingExclusions(catalog, stored.Id);
         using var sets = new GroupSets(catalog, stored.Id);
-        using var results = new ResultWriter(catalog, stored.Id, lastLoad, includeIncomplete);
+        using var results = new ResultWriter(catalog, stored.Id, lastLoad, exclusions.LastId, includeIncomplete);
         using var pipeline = new TestPipeline(includeIncomplete, results.Write);
-        var plans = new PlannedTests(sets);
+        var plans = new PlannedTests(stored.Campaign, new FamilyReader(catalog).FamilySize(stored.Id), sets, exclusions);
         TestBatch batch = pipeline.Fresh();
         long done = 0;
         while (select.Read())
@@ -89,20 +92,20 @@ public sealed class TestRunner(Catalog catalog)
                 batch.Begin(plans.Of(select));
             }
 
-            batch.Add(select.Blob(6));
+            batch.Add(select.Integer(7), select.Blob(6));
         }
 
         pipeline.Give(batch);
         pipeline.Finish();
         cancel.ThrowIfCancellationRequested();
         bool ran = results.Tested + results.NotTestable > 0;
-        return new TestRunSummary(results.Tested, results.NotTestable, ran || !ranBefore ? results.Incomplete : Waiting(stored.Id), ran);
+        return new TestRunSummary(results.Tested, results.NotTestable, ran || !last.RanBefore ? results.Incomplete : Waiting(stored.Id), ran);
     }
 
-    private (long? LastLoad, bool Ran) LastRun(long campaignId)
+    private (long LoadId, long ExclusionId, bool RanBefore) LastRun(long campaignId)
     {
-        using SqliteStatement select = catalog.Prepare("SELECT last_load_id FROM test_runs WHERE campaign_id = ?1 ORDER BY id DESC LIMIT 1");
-        return select.Bind(1, campaignId).Read() ? (select.NullableInteger(0), true) : (null, false);
+        using SqliteStatement select = catalog.Prepare("SELECT coalesce(last_load_id, 0), coalesce(last_exclusion_id, 0) FROM test_runs WHERE campaign_id = ?1 ORDER BY id DESC LIMIT 1");
+        return select.Bind(1, campaignId).Read() ? (select.Integer(0), select.Integer(1), true) : (0, 0, false);
     }
 
     /// <summary>Experiments that have values and no result: those that were left alone before and received nothing since.</summary>
@@ -126,8 +129,9 @@ public sealed class TestRunner(Catalog catalog)
     }
 
     /// <summary>Reads what the plan says of the test of an experiment.</summary>
-    private sealed class PlannedTests(GroupSets sets)
+    private sealed class PlannedTests(Campaign campaign, int familySize, GroupSets sets, StandingExclusions exclusions)
     {
+        private readonly int _draws = PermutationDraws.Count(campaign.Level, familySize);
         private GroupTest? _test;
         private string _key = "";
 
@@ -140,7 +144,15 @@ public sealed class TestRunner(Catalog catalog)
                     ?? throw new RefusedException($"The plan of experiment '{row.Text(1)}' names the test '{_key}', which this version of the program does not have.");
             }
 
-            return new ExperimentToTest(row.Integer(0), sets.Labels(row.NullableInteger(2)).Length, row.Integer(3) != 0, (int?)row.NullableInteger(4), _test);
+            long id = row.Integer(0);
+            return new ExperimentToTest(
+                id,
+                sets.Labels(row.NullableInteger(2)).Length,
+                row.Integer(3) != 0,
+                (int?)row.NullableInteger(4),
+                _test,
+                _test.DrawsAtRandom ? new RandomDraws(PermutationDraws.Seed(campaign.Code, row.Text(1)), _draws) : default,
+                exclusions.Of(id));
         }
     }
 }

@@ -12,6 +12,9 @@ public sealed class TestRunRow
     /// <summary>The latest load whose data the run saw; null where there was none.</summary>
     public long? LastLoadId { get; set; }
 
+    /// <summary>The latest exclusion that the run heeded; null where there was none.</summary>
+    public long? LastExclusionId { get; set; }
+
     /// <summary>Microseconds since 1970 UTC.</summary>
     public long RanAt { get; set; }
 
@@ -60,4 +63,16 @@ public sealed class TestResultRow
 
     /// <summary>Omega squared, possibly negative.</summary>
     public double? OmegaSquared { get; set; }
+
+    /// <summary>Specimens whose means were tested; null where every value stood for itself.</summary>
+    public int? SpecimenCount { get; set; }
+
+    /// <summary>Arrangements behind a permutation p-value: all there are, or the random draws; null for other tests.</summary>
+    public long? Arrangements { get; set; }
+
+    /// <summary>How many of them were at least as extreme as the data.</summary>
+    public long? AsExtreme { get; set; }
+
+    /// <summary>Seed of the random draws, as 64 bits with a sign; null for a complete enumeration and for other tests.</summary>
+    public long? Seed { get; set; }
 }

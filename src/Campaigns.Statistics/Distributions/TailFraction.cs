@@ -9,20 +9,27 @@ namespace Campaigns.Statistics.Distributions;
 /// </remarks>
 internal sealed class TailFraction
 {
-    private const int TabledSteps = 32;
+    /// <summary>Steps worth a table for a law that is asked often.</summary>
+    public const int UsualSteps = 32;
+
     private const int MostSteps = 1_000_000;
     private const double Tolerance = 1.2e-16;
     private const double Big = 1e100;
 
     private readonly double _a;
     private readonly double _b;
-    private readonly Coefficients[] _tabled = new Coefficients[TabledSteps];
+    private readonly Coefficients[] _tabled;
 
-    public TailFraction(double a, double b)
+    /// <summary>Makes the fraction.</summary>
+    /// <param name="a">Positive.</param>
+    /// <param name="b">Positive.</param>
+    /// <param name="tabledSteps">Steps whose coefficients are computed now; those of others are computed whenever they are needed, to the same bits.</param>
+    public TailFraction(double a, double b, int tabledSteps = UsualSteps)
     {
         _a = a;
         _b = b;
-        for (int j = 1; j <= TabledSteps; j++)
+        _tabled = tabledSteps == 0 ? [] : new Coefficients[tabledSteps];
+        for (int j = 1; j <= tabledSteps; j++)
         {
             _tabled[j - 1] = At(j);
         }
@@ -45,13 +52,13 @@ internal sealed class TailFraction
         double oddBottom = 1;
         for (int j = 1; j <= MostSteps; j += 2)
         {
-            Coefficients c = j <= TabledSteps ? _tabled[j - 1] : At(j);
+            Coefficients c = j <= _tabled.Length ? _tabled[j - 1] : At(j);
             double numerator = c.Square * square;
             double denominator = c.At(x, shifted, slope);
             evenTop = Math.FusedMultiplyAdd(denominator, oddTop, numerator * evenTop);
             evenBottom = Math.FusedMultiplyAdd(denominator, oddBottom, numerator * evenBottom);
 
-            c = j < TabledSteps ? _tabled[j] : At(j + 1);
+            c = j < _tabled.Length ? _tabled[j] : At(j + 1);
             numerator = c.Square * square;
             denominator = c.At(x, shifted, slope);
             oddTop = Math.FusedMultiplyAdd(denominator, evenTop, numerator * oddTop);

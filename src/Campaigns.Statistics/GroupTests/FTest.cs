@@ -1,5 +1,4 @@
 using Campaigns.Statistics.Distributions;
-using Campaigns.Statistics.Numerics;
 using Campaigns.Statistics.Probability;
 
 namespace Campaigns.Statistics.GroupTests;
@@ -11,9 +10,6 @@ namespace Campaigns.Statistics.GroupTests;
 /// </remarks>
 public sealed class FTest : GroupTest
 {
-    /// <summary>From here on the upper tail of F is a pure power of F, to far beyond double accuracy, for any degrees of freedom that an experiment can have.</summary>
-    private const double PowerLawFrom = 1e300;
-
     /// <inheritdoc/>
     public override string Key => "f";
 
@@ -43,14 +39,7 @@ public sealed class FTest : GroupTest
         int df1 = layout.BetweenDegreesOfFreedom;
         int df2 = layout.WithinDegreesOfFreedom;
         FDistribution law = FDistribution.For(df1, df2);
-        PValue p = table.F < PowerLawFrom ? law.UpperTailPValue(table.F) : FarTail(law, layout.F);
+        PValue p = table.F < FDistribution.PowerLawFrom ? law.UpperTailPValue(table.F) : law.UpperTailPValue(layout.F);
         return new Tested(layout.GroupCount, layout.Count, table.F, df1, df2, p, table);
-    }
-
-    /// <summary>The p-value of an F near or beyond the largest double: P(F > f) falls as f to the power of -df2/2.</summary>
-    private static PValue FarTail(FDistribution law, WideReal f)
-    {
-        double factor = (f / PowerLawFrom).Log();
-        return PValue.FromLog(law.LogUpperTail(PowerLawFrom) - (law.Df2 / 2 * factor));
     }
 }

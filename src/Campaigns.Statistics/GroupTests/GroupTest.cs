@@ -23,6 +23,9 @@ public abstract class GroupTest
     /// <summary>Whether the test compares groups within blocks, so that every value needs its block.</summary>
     public virtual bool UsesBlocks => false;
 
+    /// <summary>Whether the test may draw random arrangements, so that it needs a seed.</summary>
+    public virtual bool DrawsAtRandom => false;
+
     /// <summary>Tests one experiment whose values are independent (of each specimen one; <see cref="ExperimentalUnits"/> sees to that).</summary>
     /// <param name="sample">Its observations; at least the group count must be set.</param>
     /// <param name="draws">How many random arrangements to draw, and from which seed, where the test draws any.</param>

@@ -4,7 +4,15 @@ namespace Campaigns.Statistics.GroupTests;
 public static class GroupTestRegistry
 {
     /// <summary>The tests.</summary>
-    public static IReadOnlyList<GroupTest> All { get; } = [new FTest(), new PermutationTest()];
+    public static IReadOnlyList<GroupTest> All { get; } =
+    [
+        new FTest(),
+        new WelchTest(),
+        new BrownForsytheTest(),
+        new KruskalWallisTest(),
+        new PermutationTest(),
+        new BlockFTest(),
+    ];
 
     /// <summary>The test with a key, or null.</summary>
     /// <param name="key">Exact, lower case.</param>

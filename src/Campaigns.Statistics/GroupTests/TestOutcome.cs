@@ -1,4 +1,5 @@
 using Campaigns.Statistics.Probability;
+using Campaigns.Statistics.Units;
 
 namespace Campaigns.Statistics.GroupTests;
 
@@ -9,6 +10,9 @@ public abstract record TestOutcome(int GroupCount, int ObservationCount)
 {
     /// <summary>Specimens, where several readings of one specimen were averaged before the test; null where every value stood for itself.</summary>
     public int? SpecimenCount { get; init; }
+
+    /// <summary>How the values inside groups vary between specimens and within them; null where no specimen has several readings, or one stands in several groups.</summary>
+    public SpecimenVariation? Specimens { get; init; }
 }
 
 /// <summary>A test that could be computed.</summary>
@@ -44,13 +48,13 @@ public enum NotTestableReason
     /// <summary>Fewer than two groups hold values.</summary>
     TooFewGroups,
 
-    /// <summary>No group holds more than one value, so nothing tells the variation within groups.</summary>
+    /// <summary>No group holds more than one value, so nothing tells the variation within groups; within blocks: no residual degree of freedom is left.</summary>
     NoReplication,
 
-    /// <summary>All values of the experiment are the same.</summary>
+    /// <summary>All values of the experiment are the same; for a test within blocks, all values of every block.</summary>
     ConstantResponse,
 
-    /// <summary>The values inside every group are all the same while the groups differ: the measurement is too coarse to show its own variation.</summary>
+    /// <summary>The values inside every group are all the same while the groups differ (within blocks: groups and blocks together account for every value exactly): the measurement is too coarse to show its own variation.</summary>
     ZeroWithinVariation,
 
     /// <summary>A group holds a single value, and the test needs the variance of every group.</summary>

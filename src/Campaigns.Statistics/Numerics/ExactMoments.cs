@@ -154,6 +154,18 @@ public readonly ref struct ExactMoments
             ? WideReal.From(Math.BigMul(_origin, _narrow[group].Count) + _narrow[group].Sum)
             : WideReal.From((_wideOrigin * _wide[group].Count) + _wide[group].Sum);
 
+    /// <summary>Mean of group b less mean of group a, in units of the last typed decimal: (n_a S_b - n_b S_a)/(n_a n_b), whose numerator is an exact integer, so that nothing cancels, whatever the offset of the values.</summary>
+    /// <param name="a">The group that is taken away; it holds a value.</param>
+    /// <param name="b">The group that it is taken from; it holds a value.</param>
+    /// <exception cref="DivideByZeroException">A group is empty.</exception>
+    public WideReal MeanDifference(int a, int b)
+    {
+        WideReal above = _wide is null
+            ? WideReal.From(Math.BigMul(_narrow[b].Sum, _narrow[a].Count) - Math.BigMul(_narrow[a].Sum, _narrow[b].Count))
+            : WideReal.From((_wide[b].Sum * _wide[a].Count) - (_wide[a].Sum * _wide[b].Count));
+        return above / CountOf(a) / CountOf(b);
+    }
+
     /// <summary>Adds up with 64-bit sums and 128-bit sums of squares.</summary>
     /// <returns>Whether nothing that is derived from the sums can leave 127 bits; if not, the sums mean nothing.</returns>
     private static bool TryAdd(GroupedSample sample, long origin, Span<GroupSums> sums)

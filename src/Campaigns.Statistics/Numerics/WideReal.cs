@@ -153,6 +153,23 @@ public readonly struct WideReal
     /// <returns>Negative infinity at zero, NaN for a negative number.</returns>
     public double Log() => Math.Log(_fraction.High) + (_exponent * 0.693147180559945309417232121458);
 
+    /// <summary>A whole number next to this one: right to 53 bits, and the nearest one where they suffice for that.</summary>
+    internal BigInteger ToWhole()
+    {
+        if (Sign == 0)
+        {
+            return BigInteger.Zero;
+        }
+
+        const int FractionBits = 52;
+        int shift = Math.ILogB(_fraction.High) - FractionBits;
+        long digits = (long)Math.ScaleB(_fraction.High, -shift);
+        long power = _exponent + shift;
+        return power >= 0 ? (BigInteger)digits << (int)power
+            : power < -FractionBits - 2 ? BigInteger.Zero
+            : (digits + (1L << (int)(-power - 1))) >> (int)-power;
+    }
+
     private static WideReal AddSmaller(WideReal larger, WideReal smaller)
     {
         // Beyond 2^-400 of the larger the smaller cannot touch a bit of the sum.

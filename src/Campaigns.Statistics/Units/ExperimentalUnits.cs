@@ -13,7 +13,7 @@ public static class ExperimentalUnits
     /// <param name="test">The planned test.</param>
     /// <param name="readings">All its values, with their specimens where these are recorded.</param>
     /// <param name="draws">As in <see cref="GroupTest.Test(GroupedSample, RandomDraws)"/>.</param>
-    /// <returns>The outcome; <see cref="TestOutcome.ObservationCount"/> counts the readings, <see cref="TestOutcome.SpecimenCount"/> the means that were tested.</returns>
+    /// <returns>The outcome; <see cref="TestOutcome.ObservationCount"/> counts the readings, <see cref="TestOutcome.SpecimenCount"/> the means that were tested, and <see cref="TestOutcome.Specimens"/> says how readings and specimens vary.</returns>
     public static TestOutcome Test(GroupTest test, GroupedSample readings, RandomDraws draws)
     {
         ArgumentNullException.ThrowIfNull(test);
@@ -27,8 +27,19 @@ public static class ExperimentalUnits
             : means.InSeveralBlocks && test.UsesBlocks ? NotTestableReason.SpecimenInSeveralBlocks
             : null;
         TestOutcome outcome = obstacle is { } reason
-            ? new NotTestable(OneWayLayout.Of(means.Sample).GroupCount, means.Count, reason)
+            ? new NotTestable(GroupsWithValues(readings), means.Count, reason)
             : test.Test(means.Sample, draws);
-        return outcome with { ObservationCount = readings.Count, SpecimenCount = means.Count };
+        return outcome with { ObservationCount = readings.Count, SpecimenCount = means.Count, Specimens = SpecimenVariation.Of(readings) };
+    }
+
+    private static int GroupsWithValues(GroupedSample readings)
+    {
+        var seen = new HashSet<ushort>();
+        foreach (ushort group in readings.Groups)
+        {
+            seen.Add(group);
+        }
+
+        return seen.Count;
     }
 }

@@ -8,6 +8,7 @@ public sealed class DatabaseRulesTests(SealedCatalog catalog) : IClassFixture<Se
     private const string NewExperiment = "INSERT INTO experiments (id, campaign_id, code, groups_are_planned, test, follow_up, replicates, smallest_effect, assumed_sd, weight, group_set_id) VALUES ";
     private const string NewLoad = "INSERT INTO loads (id, campaign_id, file_name, sha256, byte_count, row_count, missing_count, experiment_count, loaded_at, amendment_reason) VALUES ";
     private const string NewResult = "INSERT INTO test_results (experiment_id, test_run_id, status, group_count, observation_count, statistic, p, log_p) VALUES ";
+    private const string NewExclusion = "INSERT INTO exclusions (id, experiment_id, load_id, line, is_excluded, group_label, value, reason, named_by, made_at, program_version) VALUES ";
     private const string NewReview = "INSERT INTO reviews (id, campaign_id, number, taken_at, correction, level, family_size, tested_count, survivor_count, is_interim, program_version, lines) VALUES ";
     private const string NewCampaign = "INSERT INTO campaigns (id, code, title, purpose, error_rate, level, correction, default_test, default_follow_up, is_exploratory, opened_at, sealed_at, plan_digest) VALUES ";
     private const string Hash = "'0000000000000000000000000000000000000000000000000000000000000000'";
@@ -21,6 +22,8 @@ public sealed class DatabaseRulesTests(SealedCatalog catalog) : IClassFixture<Se
     [InlineData("DELETE FROM test_runs", "a test run is never deleted")]
     [InlineData("UPDATE test_results SET p = 0.5", "a test result is never changed")]
     [InlineData("DELETE FROM test_results", "a test result is never deleted")]
+    [InlineData("UPDATE exclusions SET is_excluded = 0", "an exclusion is never changed")]
+    [InlineData("DELETE FROM exclusions", "an exclusion is never deleted")]
     [InlineData("UPDATE reviews SET survivor_count = 0", "a review is never changed")]
     [InlineData("DELETE FROM reviews", "a review is never deleted")]
     [InlineData("DELETE FROM campaigns WHERE code = 'O'", "a campaign is never deleted")]
@@ -65,12 +68,16 @@ public sealed class DatabaseRulesTests(SealedCatalog catalog) : IClassFixture<Se
     [InlineData(NewLoad + "(99, 1, 'f', " + Hash + ", 1, 1, 2, 1, 1, NULL)", "ck_loads_counts")]
     [InlineData(NewLoad + "(99, 1, 'f', " + Hash + ", 1, 1, 0, 1, 1, '')", "ck_loads_reason")]
     [InlineData("INSERT INTO measurements VALUES (50, 1, 0, 0, x'01')", "ck_measurements_counts")]
-    [InlineData("INSERT INTO test_runs VALUES (99, 1, 1, 1, 2, 'v')", "ck_test_runs_includes_incomplete")]
+    [InlineData("INSERT INTO test_runs VALUES (99, 1, 1, 1, 2, 'v', NULL)", "ck_test_runs_includes_incomplete")]
     [InlineData(NewResult + "(50, 1, 'tested', 2, 6, NULL, NULL, NULL)", "ck_test_results_status")]
     [InlineData(NewResult + "(50, 1, 'no-replication', 2, 6, 1.0, 0.5, NULL)", "ck_test_results_status")]
     [InlineData(NewResult + "(50, 1, 'tested', 2, 6, 1.0, 1.5, NULL)", "ck_test_results_p")]
     [InlineData(NewResult + "(50, 1, 'tested', 2, 6, 1.0, 0.0, NULL)", "ck_test_results_p")]
     [InlineData(NewResult + "(50, 1, 'tested', 2, 6, 1.0, 0.5, 0.1)", "ck_test_results_log_p")]
+    [InlineData(NewExclusion + "(99, 50, 1, 0, 1, 'A', '1', 'why', 'who', 1, 'v')", "ck_exclusions_line")]
+    [InlineData(NewExclusion + "(99, 50, 1, 2, 2, 'A', '1', 'why', 'who', 1, 'v')", "ck_exclusions_is_excluded")]
+    [InlineData(NewExclusion + "(99, 50, 1, 2, 1, 'A', '1', '', 'who', 1, 'v')", "ck_exclusions_words")]
+    [InlineData(NewExclusion + "(99, 50, 1, 2, 1, 'A', '1', 'why', '', 1, 'v')", "ck_exclusions_words")]
     [InlineData(NewReview + "(99, 1, 0, 1, 'bh', 0.05, 2, 1, 1, 0, 'v', x'')", "ck_reviews_number")]
     [InlineData(NewReview + "(99, 1, 9, 1, 'bh', 0.0, 2, 1, 1, 0, 'v', x'')", "ck_reviews_level")]
     [InlineData(NewReview + "(99, 1, 9, 1, 'bh', 0.05, 2, 3, 1, 0, 'v', x'')", "ck_reviews_counts")]
@@ -86,10 +93,12 @@ public sealed class DatabaseRulesTests(SealedCatalog catalog) : IClassFixture<Se
     [InlineData(NewLoad + "(99, 77, 'f', " + Hash + ", 1, 1, 0, 1, 1, NULL)")]
     [InlineData("INSERT INTO measurements VALUES (50, 77, 1, 0, x'01')")]
     [InlineData("INSERT INTO measurements VALUES (77, 1, 1, 0, x'01')")]
-    [InlineData("INSERT INTO test_runs VALUES (99, 77, 1, 1, 0, 'v')")]
-    [InlineData("INSERT INTO test_runs VALUES (99, 1, 77, 1, 0, 'v')")]
+    [InlineData("INSERT INTO test_runs VALUES (99, 77, 1, 1, 0, 'v', NULL)")]
+    [InlineData("INSERT INTO test_runs VALUES (99, 1, 77, 1, 0, 'v', NULL)")]
     [InlineData(NewResult + "(77, 1, 'tested', 2, 6, 1.0, 0.5, NULL)")]
     [InlineData(NewResult + "(50, 77, 'tested', 2, 6, 1.0, 0.5, NULL)")]
+    [InlineData(NewExclusion + "(99, 77, 1, 2, 1, 'A', '1', 'why', 'who', 1, 'v')")]
+    [InlineData(NewExclusion + "(99, 50, 77, 2, 1, 'A', '1', 'why', 'who', 1, 'v')")]
     [InlineData(NewReview + "(99, 77, 9, 1, 'bh', 0.05, 2, 1, 1, 0, 'v', x'')")]
     [InlineData("DELETE FROM group_sets WHERE id = 1")]
     [InlineData("UPDATE group_sets SET id = 99 WHERE id = 1")]

@@ -39,17 +39,23 @@ public sealed partial class SchemaTests
         ("measurements", new() { ["experiment_id"] = 9L, ["load_id"] = 10L, ["value_count"] = 10L, ["missing_count"] = 2L, ["packed"] = new byte[] { 1, 2, 255 } }),
         ("test_runs", new()
         {
-            ["id"] = 11L, ["campaign_id"] = 7L, ["last_load_id"] = 10L, ["ran_at"] = 1_764_576_000_000_004L, ["includes_incomplete"] = 1L, ["program_version"] = "9.8.7",
+            ["id"] = 11L, ["campaign_id"] = 7L, ["last_load_id"] = 10L, ["last_exclusion_id"] = 13L, ["ran_at"] = 1_764_576_000_000_004L, ["includes_incomplete"] = 1L, ["program_version"] = "9.8.7",
         }),
         ("test_results", new()
         {
             ["experiment_id"] = 9L, ["test_run_id"] = 11L, ["status"] = "tested", ["group_count"] = 2L, ["observation_count"] = 10L, ["statistic"] = 5.5,
             ["df1"] = 1.5, ["df2"] = 8.25, ["p"] = 4.9406564584124654e-324, ["log_p"] = -744.4400719213812, ["eta_squared"] = 0.5, ["omega_squared"] = -0.125,
+            ["specimen_count"] = 6L, ["arrangements"] = 99_999L, ["as_extreme"] = 17L, ["seed"] = -5L,
         }),
         ("reviews", new()
         {
             ["id"] = 12L, ["campaign_id"] = 7L, ["number"] = 1L, ["taken_at"] = 1_764_576_000_000_005L, ["correction"] = "holm", ["level"] = 0.01, ["family_size"] = 5L,
             ["tested_count"] = 4L, ["survivor_count"] = 3L, ["is_interim"] = 1L, ["last_test_run_id"] = 11L, ["program_version"] = "9.8.7", ["lines"] = new byte[] { 9 },
+        }),
+        ("exclusions", new()
+        {
+            ["id"] = 13L, ["experiment_id"] = 9L, ["load_id"] = 10L, ["line"] = 4L, ["is_excluded"] = 1L, ["group_label"] = "80 °C", ["value"] = "1.50",
+            ["reason"] = "spilled", ["named_by"] = "Ada", ["made_at"] = 1_764_576_000_000_006L, ["program_version"] = "9.8.7",
         }),
     ];
 
@@ -117,7 +123,7 @@ public sealed partial class SchemaTests
         [
             context.Campaigns.Single(c => c.Code == "c"), context.Set<GroupSetRow>().Single(), context.Groups.Single(g => g.Label.StartsWith("80")),
             context.Experiments.Single(e => e.Replicates == 6), context.Loads.Single(l => l.AmendmentReason != null), context.Measurements.Single(m => m.ValueCount == 10),
-            context.TestRuns.Single(r => r.IncludesIncomplete), context.TestResults.Single(r => r.P < 1e-300), context.Reviews.Single(r => r.IsInterim),
+            context.TestRuns.Single(r => r.IncludesIncomplete), context.TestResults.Single(r => r.P < 1e-300), context.Reviews.Single(r => r.IsInterim), context.Exclusions.Single(x => x.IsExcluded),
         ];
         for (int i = 0; i < read.Length; i++)
         {

@@ -1,6 +1,6 @@
 namespace Campaigns.Catalog.Tests.Providers;
 
-/// <summary>One catalog with a sealed, loaded, tested and reviewed campaign C, an open one O with a plan, and a sealed exploratory one X.</summary>
+/// <summary>One catalog with a sealed, loaded, tested and reviewed campaign C, with an exclusion, an open one O with a plan, and a sealed exploratory one X.</summary>
 public sealed class SealedCatalog : IDisposable
 {
     private readonly TestCatalog _catalog = new();
@@ -16,6 +16,7 @@ public sealed class SealedCatalog : IDisposable
             INSERT INTO campaigns SELECT 2, 'O', title, purpose, error_rate, level, correction, default_test, default_follow_up, 0, opened_at, NULL, NULL FROM campaigns;
             INSERT INTO campaigns SELECT 3, 'X', title, purpose, error_rate, level, correction, default_test, default_follow_up, 1, opened_at, 5, 'd' FROM campaigns WHERE id = 1;
             INSERT INTO experiments (id, campaign_id, code, groups_are_planned, test, follow_up) VALUES (50, 2, 'P', 0, 'f', 'none');
+            INSERT INTO exclusions SELECT 1, experiment_id, load_id, 2, 1, 'A', '1.0', 'spilled', 'Ada', 6, 'v' FROM measurements LIMIT 1;
             """);
     }
 

@@ -1,5 +1,10 @@
+using System.IO.Compression;
+using Campaigns.Catalog.Excluding;
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Providers;
+using Campaigns.Catalog.Results;
+using Campaigns.Domain;
+using Campaigns.Statistics.Tests.External;
 using Microsoft.Data.Sqlite;
 
 namespace Campaigns.Catalog.Tests.Providers;
@@ -28,6 +33,36 @@ public sealed class UpgradeTests
         }
 
         Assert.False(CatalogUpgrade.Run(folder[Name], Migrations));
+    }
+
+    [Fact]
+    public void A_catalog_that_the_first_schema_wrote_keeps_every_result_and_takes_new_work()
+    {
+        // schema-1.db.gz was written by the program when its schema was 1: ten experiments of published data, tested and reviewed.
+        using var folder = new TestFolder();
+        using (var packed = new GZipStream(File.OpenRead(Path.Combine(ReferenceTable.Folder(), "catalog", "schema-1.db.gz")), CompressionMode.Decompress))
+        using (FileStream file = File.Create(folder[Name]))
+        {
+            packed.CopyTo(file);
+        }
+
+        List<string> before;
+        using (SqliteConnection old = Raw.Open(folder[Name]))
+        {
+            before = Facts(old);
+        }
+
+        Assert.True(CatalogUpgrade.Run(folder[Name], Migrations));
+        using Catalog catalog = Catalog.Open(folder[Name], TimeProvider.System);
+        Assert.Equal(before, Facts(catalog.Connection));
+        CampaignStanding standing = new StandingReader(catalog).Read("published-classics");
+        Assert.Equal((10, 9), (standing.TestedCount, standing.SurvivorCount));
+        Assert.Equal(new TestRunSummary(0, 0, 0, false), new TestRunner(catalog).Run("published-classics", false, _ => { }, TestContext.Current.CancellationToken));
+
+        // PlantGrowth, first data line: leave it out, test again.
+        new ExclusionStore(catalog).Decide("published-classics", "PlantGrowth", new ObservationPlace(2, null), true, "a trial", "the test");
+        Assert.Equal(new TestRunSummary(1, 0, 0, true), new TestRunner(catalog).Run("published-classics", false, _ => { }, TestContext.Current.CancellationToken));
+        Assert.Equal(29, new StandingReader(catalog).Read("published-classics").Experiments.Single(e => e.Plan.Code == "PlantGrowth").ObservationCount);
     }
 
     [Fact]
@@ -65,7 +100,7 @@ public sealed class UpgradeTests
     }
 
     [Theory]
-    [InlineData("PRAGMA user_version = 2", "newer version")]
+    [InlineData("PRAGMA user_version = 3", "newer version")]
     [InlineData("PRAGMA application_id = 5", "is no catalog")]
     public void Files_that_cannot_be_upgraded_are_left_as_they_are(string change, string reason)
     {
@@ -90,6 +125,13 @@ public sealed class UpgradeTests
         Raw.Execute(other, "ROLLBACK");
         Assert.Equal([Name], folder.Files);
     }
+
+    /// <summary>Counts of the tables, and every result to its last bit.</summary>
+    private static List<string> Facts(SqliteConnection connection) =>
+    [
+        .. new[] { "campaigns", "experiments", "groups", "loads", "measurements", "reviews" }.Select(t => FormattableString.Invariant($"{t} {Raw.Integer(connection, $"SELECT count(*) FROM {t}")}")),
+        .. Raw.Rows(connection, "SELECT experiment_id || ' ' || quote(p) || ' ' || quote(statistic) || ' ' || quote(eta_squared) FROM test_results ORDER BY 1"),
+    ];
 
     /// <summary>A catalog of schema 0: the mark in the header, and whatever is given.</summary>
     private static TestFolder Older(string content)

@@ -160,7 +160,8 @@ public sealed class MeasurementLoaderTests
         [
             .. from e in Enumerable.Range(1, 40)
                from r in Enumerable.Range(1, 25)
-               select FormattableString.Invariant($"E{e:D2},g{random.Next(5)},{Value(random)},{(random.Next(3) == 0 ? "" : $"S{random.Next(9)}")},{(random.Next(2) == 0 ? $"day {random.Next(3)}" : "")},{(random.Next(4) == 0 ? "" : r)}"),
+               let g = random.Next(5)
+               select FormattableString.Invariant($"E{e:D2},g{g},{Value(random)},{(random.Next(3) == 0 ? "" : $"S{g}{random.Next(3)}")},{(random.Next(2) == 0 ? $"day {random.Next(3)}" : "")},{(random.Next(4) == 0 ? "" : r)}"),
         ];
 
         // Rows of one experiment keep their order; those of several are dealt out in turn.

@@ -1,4 +1,5 @@
 using Campaigns.Statistics.Distributions;
+using Campaigns.Statistics.Numerics;
 using Campaigns.Statistics.Tests.External;
 using Campaigns.Statistics.Tests.GroupTests;
 
@@ -139,6 +140,30 @@ public sealed class FDistributionTests(ITestOutputHelper output)
             Assert.Equal((df1, df2), (law.Df1, law.Df2));
         });
         Assert.Same(FDistribution.For(4, 45), FDistribution.For(4, 45));
+    }
+
+    [Fact]
+    public void A_law_made_for_one_question_answers_with_the_same_bits()
+    {
+        foreach (ReferenceRow row in ReferenceTable.Read("experiment/f_tail.csv").Rows)
+        {
+            (double df1, double df2, double f) = (row.Number("df1"), row.Number("df2"), row.Number("f"));
+            Assert.Equal(new FDistribution(df1, df2).UpperTailPValue(f), FDistribution.Once(df1, df2).UpperTailPValue(f));
+            Assert.Equal(new FDistribution(df1, df2).UpperTailPValue(f), FDistribution.Once(df1, df2).UpperTailPValue(WideReal.From(f)));
+        }
+    }
+
+    /// <remarks>With (2, df2) degrees of freedom ln P(F > f) = -df2/2 ln(1 + 2f/df2), by integration of the density.</remarks>
+    [Theory]
+    [InlineData(299)]
+    [InlineData(301)]
+    [InlineData(308)]
+    [InlineData(309)]
+    [InlineData(5000)]
+    public void The_upper_tail_goes_on_beyond_the_doubles(int power)
+    {
+        double expected = -3.65 * ((power * Math.Log(10)) + Math.Log(2 / 7.3));
+        Relative.AssertNear(expected, new FDistribution(2, 7.3).UpperTailPValue(WideReal.PowerOfTen(power)).Log, 1e-14, "ln p");
     }
 
     private static void Collect(SortedDictionary<string, List<double>> errors, string tail, double truth, double computed, double logTruth, double logComputed)

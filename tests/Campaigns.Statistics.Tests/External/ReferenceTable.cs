@@ -58,4 +58,12 @@ internal sealed class ReferenceRow(ReferenceTable table, string[] cells)
     public int Integer(string column) => int.Parse(Text(column), CultureInfo.InvariantCulture);
 
     public double Number(string column) => double.Parse(Text(column), CultureInfo.InvariantCulture);
+
+    /// <summary>The natural logarithm of a positive number that may lie below the range of doubles.</summary>
+    public double LogarithmOf(string column)
+    {
+        string[] parts = Text(column).Split('e');
+        double exponent = parts.Length == 1 ? 0 : double.Parse(parts[1], CultureInfo.InvariantCulture);
+        return Math.Log(double.Parse(parts[0], CultureInfo.InvariantCulture)) + (exponent * Math.Log(10));
+    }
 }

@@ -1,5 +1,6 @@
 using System.Globalization;
 using System.Numerics;
+using Campaigns.Statistics.FollowUps;
 using Campaigns.Statistics.GroupTests;
 
 namespace Campaigns.Statistics.Tests.GroupTests;
@@ -42,6 +43,11 @@ internal sealed class TypedSample
             ? GroupSummaries.Of(new GroupedSample(Narrow(), _decimals, _groups, _groupCount), confidence)
             : GroupSummaries.Of(new GroupedSample(_mantissas, _decimals, _groups, _groupCount), confidence);
 
+    public GroupEstimates? Estimates() =>
+        IsNarrow
+            ? GroupEstimates.OneWay(new GroupedSample(Narrow(), _decimals, _groups, _groupCount))
+            : GroupEstimates.OneWay(new GroupedSample(_mantissas, _decimals, _groups, _groupCount));
+
     public bool IsNarrow => _mantissas.All(m => m >= long.MinValue && m <= long.MaxValue);
 
     public TypedSample Shuffled(int seed)
@@ -50,6 +56,16 @@ internal sealed class TypedSample
         new Random(seed).Shuffle(order);
         return new([.. order.Select(i => _mantissas[i])], _decimals, [.. order.Select(i => _groups[i])], _groupCount);
     }
+
+    /// <summary>The same groups under other numbers, one number left without a value.</summary>
+    public TypedSample Relabelled(int seed)
+    {
+        ushort[] names = [.. Enumerable.Range(0, _groupCount + 1).Select(i => (ushort)i)];
+        new Random(seed).Shuffle(names);
+        return new(_mantissas, _decimals, [.. _groups.Select(g => names[g])], _groupCount + 1);
+    }
+
+    public TypedSample Mapped(Func<BigInteger, BigInteger> map) => new([.. _mantissas.Select(map)], _decimals, _groups, _groupCount);
 
     public TypedSample Plus(BigInteger constant) => new([.. _mantissas.Select(m => m + constant)], _decimals, _groups, _groupCount);
 

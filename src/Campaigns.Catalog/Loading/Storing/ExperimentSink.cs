@@ -21,6 +21,7 @@ internal sealed class ExperimentSink : IDisposable
     private readonly NameComplaints _complaints;
     private readonly PackWriter _packed = new();
     private readonly ExperimentLabels _labels = new();
+    private readonly SpecimenRule _specimens;
     private readonly Utf8Interner _names;
     private IReadOnlyList<string>? _codes;
     private KnownExperiment? _experiment;
@@ -40,6 +41,7 @@ internal sealed class ExperimentSink : IDisposable
         _options = options;
         _loadId = loadId;
         _complaints = complaints;
+        _specimens = new SpecimenRule(complaints);
         _names = labels;
         _directory = new ExperimentDirectory(catalog, campaign.Id, fileSize);
         _takesNewExperiments = campaign.Campaign.IsExploratory || (!campaign.Campaign.IsSealed && _directory.Count == 0);
@@ -90,8 +92,18 @@ internal sealed class ExperimentSink : IDisposable
         return true;
     }
 
+    /// <summary>Ends the last experiment, and looks at what can only be seen of all together.</summary>
+    public void Finish()
+    {
+        EndLast();
+        if (_specimens.SawSpecimens && _complaints.IsEmpty)
+        {
+            _specimens.LookAtEarlierLoads(_catalog, _campaign.Id, _loadId);
+        }
+    }
+
     /// <summary>Ends the experiment at hand, if there is one.</summary>
-    public void EndLast()
+    private void EndLast()
     {
         if (_experiment is not null)
         {
@@ -151,6 +163,7 @@ internal sealed class ExperimentSink : IDisposable
             return;
         }
 
+        _specimens.Look(experiment.Code, Values, group => _names.Text(_labels.Ids[group]));
         if (_complaints.IsEmpty)
         {
             Store(experiment, placement);

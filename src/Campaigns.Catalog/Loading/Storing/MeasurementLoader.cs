@@ -149,7 +149,7 @@ public sealed class MeasurementLoader(Catalog catalog)
 
         private LoadSummary Finish(MeasurementFile file, ExperimentSink sink)
         {
-            sink.EndLast();
+            sink.Finish();
             _complaints.ReportTo(file.Problems, file.Name);
             if (!file.Problems.IsEmpty)
             {

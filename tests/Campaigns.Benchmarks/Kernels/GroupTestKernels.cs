@@ -4,15 +4,18 @@ using Campaigns.Statistics.GroupTests;
 
 namespace Campaigns.Benchmarks.Kernels;
 
-/// <summary>The F test of one experiment, from typed decimals to the p-value.</summary>
+/// <summary>Omnibus tests of one experiment, from typed decimals to the p-value.</summary>
 [InProcess]
 [MemoryDiagnoser]
-public class FTestKernels
+public class GroupTestKernels
 {
     private const int GroupCount = 5;
     private long[] _mantissas = [];
     private ushort[] _groups = [];
     private GroupTest? _test;
+
+    [Params("f", "welch", "brown-forsythe", "kruskal-wallis")]
+    public string Key { get; set; } = "";
 
     [Params(10, 200, 2_000)]
     public int Replicates { get; set; }
@@ -23,7 +26,7 @@ public class FTestKernels
         var campaign = new SyntheticCampaign(new CampaignSize(1, GroupCount, Replicates));
         _mantissas = [.. Enumerable.Range(0, GroupCount * Replicates).Select(cell => campaign.Reading(0, cell))];
         _groups = [.. Enumerable.Range(0, GroupCount * Replicates).Select(cell => (ushort)(cell / Replicates))];
-        _test = GroupTestRegistry.Find("f");
+        _test = GroupTestRegistry.Find(Key);
     }
 
     [Benchmark]

@@ -1,0 +1,35 @@
+using Campaigns.Statistics.Distributions;
+using Campaigns.Statistics.Tests.External;
+using Campaigns.Statistics.Tests.GroupTests;
+
+namespace Campaigns.Statistics.Tests.Distributions;
+
+public sealed class NormalLawTests(ITestOutputHelper output)
+{
+    [Fact]
+    public void Tails_and_quantiles_agree_with_forty_digit_arithmetic()
+    {
+        double quantile = 0;
+        foreach (ReferenceRow row in ReferenceTable.Read("experiment/normal_law.csv").Rows)
+        {
+            double tail = Relative.Error(NormalLaw.UpperTail(row.Number("z")), row.Number("upper"));
+            Assert.True(tail <= 1e-15 + (2e-16 * -Math.Log(row.Number("upper"))), FormattableString.Invariant($"{row.Text("z")}: {tail:E1}"));
+            quantile = Math.Max(quantile, Relative.Error(NormalLaw.Quantile(row.Number("probability")), row.Number("quantile")));
+        }
+
+        output.WriteLine(FormattableString.Invariant($"quantile off by at most {quantile:E1}"));
+        Assert.True(quantile < 1e-14);
+    }
+
+    [Fact]
+    public void Ends_are_what_they_must_be()
+    {
+        Assert.Equal(0.5, NormalLaw.UpperTail(0));
+        Assert.Equal(1, NormalLaw.UpperTail(double.NegativeInfinity));
+        Assert.Equal(0, NormalLaw.UpperTail(double.PositiveInfinity));
+        Assert.Equal(double.NegativeInfinity, NormalLaw.Quantile(0));
+        Assert.Equal(double.PositiveInfinity, NormalLaw.Quantile(1));
+        Assert.Throws<ArgumentOutOfRangeException>(() => NormalLaw.Quantile(-0.1));
+        Assert.Throws<ArgumentOutOfRangeException>(() => NormalLaw.Quantile(double.NaN));
+    }
+}
