@@ -1,8 +1,7 @@
 using Campaigns.Benchmarks.Generating;
-using Campaigns.Statistics.GroupTests;
-using Campaigns.Statistics.Permutation;
 using Campaigns.Statistics.FollowUps;
 using Campaigns.Statistics.GroupTests;
+using Campaigns.Statistics.Permutation;
 
 namespace Campaigns.Benchmarks.Kernels;
 
@@ -44,6 +43,8 @@ internal static class Inputs
             long[] mantissas = [.. Enumerable.Range(0, 24).Select(cell => campaign.Reading(experiment, cell))];
             return PermutationScores.Of(new GroupedSample(mantissas, 4, groups, 4));
         })];
+    }
+
     /// <summary>Studentized ranges between 0 and 12.</summary>
     public static double[] RangeStatistics(int count)
     {

@@ -2,9 +2,9 @@ using System.Diagnostics;
 using System.Globalization;
 using Campaigns.Statistics.Corrections;
 using Campaigns.Statistics.Distributions;
+using Campaigns.Statistics.FollowUps;
 using Campaigns.Statistics.GroupTests;
 using Campaigns.Statistics.Permutation;
-using Campaigns.Statistics.FollowUps;
 
 namespace Campaigns.Benchmarks.Kernels;
 
@@ -42,9 +42,10 @@ internal static class Timings
         double[] fewer = p[..100_000];
         Line("hommel", () => CorrectionRegistry.Find("hommel")!.Adjust(RankedFamily.Of(fewer, fewer.Length), new double[fewer.Length]));
 
-        PermutationScores[] experiments = Inputs.Experiments(PermutedExperiments);
-        Line("permute-one", () => RandomArrangements.CountAsExtreme(experiments[0], new RandomDraws(1, 10 * Million)));
-        Line("permute-shared", () => RandomArrangements.CountAsExtreme(experiments, new RandomDraws(1, 2 * Million / 10)));
+        PermutationScores[] permuted = Inputs.Experiments(PermutedExperiments);
+        Line("permute-one", () => RandomArrangements.CountAsExtreme(permuted[0], new RandomDraws(1, 10 * Million)));
+        Line("permute-shared", () => RandomArrangements.CountAsExtreme(permuted, new RandomDraws(1, 2 * Million / 10)));
+
         double[] q = Inputs.RangeStatistics(Million);
         Line("range", () =>
         {
