@@ -72,7 +72,7 @@ internal sealed class PackedSubsetSums
     private static int TablesOf(PermutationDesign design) => Math.Max(LeastTables, (design.Count + BitsPerTable - 1) / BitsPerTable);
 
     /// <summary>Counts, for each experiment, the arrangements that give at least the observed F.</summary>
-    /// <param name="sets">Arrangements, as <see cref="SubsetDraws.Draw"/> gives them.</param>
+    /// <param name="sets">Arrangements, as <see cref="SubsetDraws.Sets"/> gives them.</param>
     /// <param name="counts">For each experiment the count to add to.</param>
     public void CountAsExtreme(ReadOnlySpan<ulong> sets, Span<long> counts)
     {

@@ -94,12 +94,13 @@ public sealed class PermutationDesign : IEquatable<PermutationDesign>
         long placed = 0;
         foreach (int size in sizes)
         {
-            // times (placed + 1)(placed + 2).../(1 2 ...): a binomial coefficient, whole after every factor, and never smaller than before.
+            // A binomial coefficient, whole after every factor, and never smaller than before.
+            long larger = Math.Max(size, placed);
             UInt128 before = ways;
             UInt128 chosen = 1;
-            for (int i = 1; i <= size && placed > 0; i++)
+            for (long i = 1; i <= Math.Min(size, placed); i++)
             {
-                chosen = chosen * (UInt128)(placed + i) / (UInt128)i;
+                chosen = chosen * (UInt128)(larger + i) / (UInt128)i;
                 if (chosen > long.MaxValue || before * chosen > long.MaxValue)
                 {
                     return null;

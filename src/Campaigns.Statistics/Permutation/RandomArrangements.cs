@@ -108,17 +108,12 @@ public static class RandomArrangements
         PackedSubsetSums[] packs = single is null ? PackedSubsetSums.Of(experiments, memory) : [];
         return (piece, counts) =>
         {
-            int length = DrawsOf(piece, draws) * subsets.SetsPerDraw;
-            ulong[] buffer = ArrayPool<ulong>.Shared.Rent(length);
-            Span<ulong> sets = buffer.AsSpan(0, length);
-            subsets.Draw(new RandomNumbers(draws.Seed, (ulong)piece), sets);
+            ReadOnlySpan<ulong> sets = subsets.Sets(draws.Seed, piece, DrawsOf(piece, draws));
             counts[0] += single?.CountAsExtreme(sets) ?? 0;
             for (int i = 0; i < packs.Length; i++)
             {
                 packs[i].CountAsExtreme(sets, counts.AsSpan(i * PackedSubsetSums.Lanes));
             }
-
-            ArrayPool<ulong>.Shared.Return(buffer);
         };
     }
 

@@ -31,7 +31,7 @@ internal sealed class SubsetSums
     }
 
     /// <summary>How many arrangements give at least the observed F.</summary>
-    /// <param name="sets">Arrangements, as <see cref="SubsetDraws.Draw"/> gives them.</param>
+    /// <param name="sets">Arrangements, as <see cref="SubsetDraws.Sets"/> gives them.</param>
     public int CountAsExtreme(ReadOnlySpan<ulong> sets)
     {
         ref double sums = ref MemoryMarshal.GetArrayDataReference(_sums);

@@ -42,9 +42,9 @@ internal static class Timings
         double[] fewer = p[..100_000];
         Line("hommel", () => CorrectionRegistry.Find("hommel")!.Adjust(RankedFamily.Of(fewer, fewer.Length), new double[fewer.Length]));
 
-        PermutationScores[] experiments = Inputs.Experiments(PermutedExperiments);
-        Line("permute-one", () => RandomArrangements.CountAsExtreme(experiments[0], new RandomDraws(1, 10 * Million)));
-        Line("permute-shared", () => RandomArrangements.CountAsExtreme(experiments, new RandomDraws(1, 2 * Million / 10)));
+        PermutationScores[] permuted = Inputs.Experiments(PermutedExperiments);
+        Line("permute-one", () => RandomArrangements.CountAsExtreme(permuted[0], new RandomDraws(1, 10 * Million)));
+        Line("permute-shared", () => RandomArrangements.CountAsExtreme(permuted, new RandomDraws(1, 2 * Million / 10)));
 
         double[] q = Inputs.RangeStatistics(Million);
         Line("range", () =>
@@ -75,11 +75,11 @@ internal static class Timings
         });
 
         // Games-Howell solves for a critical value of its own for every pair: a hundredth of the experiments.
-        GroupEstimates[] estimates = Inputs.Estimates(Million / 10);
+        GroupEstimates[] experiments = Inputs.Estimates(Million / 10);
         foreach (FollowUp followUp in FollowUpRegistry.All)
         {
             bool isSlow = followUp.Key == "games-howell";
-            GroupEstimates[] compared = isSlow ? estimates[..(estimates.Length / 100)] : estimates;
+            GroupEstimates[] compared = isSlow ? experiments[..(experiments.Length / 100)] : experiments;
             Line(isSlow ? followUp.Key + "/100" : followUp.Key, () => sum += compared.Sum(e => followUp.Compare(e, 0, 0.95)[0].P!.Value.Value));
         }
 

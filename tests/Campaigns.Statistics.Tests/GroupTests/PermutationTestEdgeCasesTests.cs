@@ -143,6 +143,10 @@ public sealed class PermutationTestEdgeCasesTests
             Assert.Equal(once, Permutation.Test(new GroupedSample(values, 2, groups, 4), Draws));
             Assert.Equal(once, Permutation.Test(new GroupedSample(values, 2, groups, 4), Draws, 2, TestContext.Current.CancellationToken));
             Assert.NotEqual(once, Permutation.Test(new GroupedSample(values, 2, groups, 4), Draws with { Seed = 13 }));
+            foreach (RandomDraws other in new[] { Draws, Draws with { Count = 1500 }, Draws, Draws with { Seed = 13, Count = 9000 }, Draws with { Count = 9000 } })
+            {
+                Assert.Equal(new PermutationTest().Test(new GroupedSample(values, 2, groups, 4), other), Permutation.Test(new GroupedSample(values, 2, groups, 4), other));
+            }
         }
     }
 
