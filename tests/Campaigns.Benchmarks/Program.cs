@@ -3,11 +3,13 @@ using BenchmarkDotNet.Running;
 using Campaigns.Benchmarks;
 using Campaigns.Benchmarks.Generating;
 using Campaigns.Benchmarks.Kernels;
+using Campaigns.Benchmarks.Simulating;
 
 const string Usage = """
     generate SIZE FOLDER [--shuffled] [--plan]   write a synthetic campaign folder; SIZE is S, M, L or EXPERIMENTSxGROUPSxREPLICATES
     arrive CATALOG CODE N                        milliseconds of N arrivals of one more experiment, inside one process
     time                                         milliseconds of a few large kernels
+    errors [REPLICATES]                          how often each omnibus test rejects where all means are equal (20000 experiments a design); Markdown
     kernels [BENCHMARKDOTNET OPTION ...]         careful benchmarks of the hot kernels; --filter '*' runs them all
     """;
 
@@ -24,6 +26,13 @@ switch (args)
         return 0;
     case ["time"]:
         Timings.Print(Console.Out);
+        return 0;
+    case ["errors"]:
+        ErrorRates.Print(ErrorRates.UsualReplicates, Console.Out);
+        return 0;
+    case ["errors", string replicatesText]
+        when int.TryParse(replicatesText, NumberStyles.None, CultureInfo.InvariantCulture, out int replicates) && replicates > 0:
+        ErrorRates.Print(replicates, Console.Out);
         return 0;
     case ["kernels", .. string[] options]:
         BenchmarkSwitcher.FromAssembly(typeof(CorrectionKernels).Assembly).Run(options);

@@ -1,4 +1,6 @@
 using Campaigns.Benchmarks.Generating;
+using Campaigns.Statistics.GroupTests;
+using Campaigns.Statistics.Permutation;
 using Campaigns.Statistics.FollowUps;
 using Campaigns.Statistics.GroupTests;
 
@@ -32,6 +34,16 @@ internal static class Inputs
         return f;
     }
 
+    /// <summary>Experiments of 4 groups with 6 values each, typed with 4 decimals, ready to be permuted.</summary>
+    public static PermutationScores[] Experiments(int count)
+    {
+        var campaign = new SyntheticCampaign(new CampaignSize(count, 4, 6));
+        ushort[] groups = [.. Enumerable.Range(0, 24).Select(cell => (ushort)(cell / 6))];
+        return [.. Enumerable.Range(0, count).Select(experiment =>
+        {
+            long[] mantissas = [.. Enumerable.Range(0, 24).Select(cell => campaign.Reading(experiment, cell))];
+            return PermutationScores.Of(new GroupedSample(mantissas, 4, groups, 4));
+        })];
     /// <summary>Studentized ranges between 0 and 12.</summary>
     public static double[] RangeStatistics(int count)
     {

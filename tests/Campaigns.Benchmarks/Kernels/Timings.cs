@@ -2,6 +2,8 @@ using System.Diagnostics;
 using System.Globalization;
 using Campaigns.Statistics.Corrections;
 using Campaigns.Statistics.Distributions;
+using Campaigns.Statistics.GroupTests;
+using Campaigns.Statistics.Permutation;
 using Campaigns.Statistics.FollowUps;
 
 namespace Campaigns.Benchmarks.Kernels;
@@ -12,6 +14,7 @@ internal static class Timings
     private const int Million = 1_000_000;
     private const int Hundredth = 10_000;
     private const int Repeats = 7;
+    private const int PermutedExperiments = 200;
 
     public static void Print(TextWriter output)
     {
@@ -39,6 +42,9 @@ internal static class Timings
         double[] fewer = p[..100_000];
         Line("hommel", () => CorrectionRegistry.Find("hommel")!.Adjust(RankedFamily.Of(fewer, fewer.Length), new double[fewer.Length]));
 
+        PermutationScores[] experiments = Inputs.Experiments(PermutedExperiments);
+        Line("permute-one", () => RandomArrangements.CountAsExtreme(experiments[0], new RandomDraws(1, 10 * Million)));
+        Line("permute-shared", () => RandomArrangements.CountAsExtreme(experiments, new RandomDraws(1, 2 * Million / 10)));
         double[] q = Inputs.RangeStatistics(Million);
         Line("range", () =>
         {
