@@ -74,7 +74,7 @@ internal sealed class MaximumOfNormals : NormalExtreme
     {
         if (_lambdas is [0.0])
         {
-            return LogOfAny(Ln2 + NormalDistribution.LogUpperTail(w), _times[0]) + (w * w / 2);
+            return LogOfAny(Ln2 + NormalLaw.LogUpperTail(w), _times[0]) + (w * w / 2);
         }
 
         double end = (_lambdas[^1] * w) + 10;
@@ -108,7 +108,7 @@ internal sealed class MaximumOfNormals : NormalExtreme
         for (int i = 0; i < _lambdas.Length; i++)
         {
             double shift = _lambdas[i] * z;
-            double u = NormalDistribution.UpperTail((w - shift) / _rests[i]) + NormalDistribution.UpperTail((w + shift) / _rests[i]);
+            double u = NormalLaw.UpperTail((w - shift) / _rests[i]) + NormalLaw.UpperTail((w + shift) / _rests[i]);
             log += _times[i] * Accurate.Log1p(-Math.Min(u, 1));
         }
 
@@ -121,8 +121,8 @@ internal sealed class MaximumOfNormals : NormalExtreme
         for (int i = 0; i < _lambdas.Length; i++)
         {
             double shift = _lambdas[i] * z;
-            double near = NormalDistribution.LogUpperTail((w - shift) / _rests[i]);
-            double far = NormalDistribution.LogUpperTail((w + shift) / _rests[i]);
+            double near = NormalLaw.LogUpperTail((w - shift) / _rests[i]);
+            double far = NormalLaw.LogUpperTail((w + shift) / _rests[i]);
             double both = Math.Log(_times[i]) + near + Accurate.Log1p(Math.Exp(far - near));
             double larger = Math.Max(log, both);
             log = larger + Accurate.Log1p(Math.Exp(Math.Min(log, both) - larger));

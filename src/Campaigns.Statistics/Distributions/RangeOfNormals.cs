@@ -25,7 +25,7 @@ internal sealed class RangeOfNormals : NormalExtreme
 
     /// <summary>ln Phi(j/16), from -8 on.</summary>
     private static readonly double[] LogLower = [.. Enumerable.Range(-Reach * GridPerUnit, ((2 * Reach) + (ClosedFrom / 2) + 1) * GridPerUnit)
-        .Select(j => NormalDistribution.LogUpperTail(-(double)j / GridPerUnit))];
+        .Select(j => NormalLaw.LogUpperTail(-(double)j / GridPerUnit))];
 
     private readonly int _k;
     private readonly double _logPairs;
@@ -68,14 +68,14 @@ internal sealed class RangeOfNormals : NormalExtreme
             double logLower = LogLower[Math.Max(0, j + (Reach * GridPerUnit))];
             if (z < w)
             {
-                double ratio = NormalDistribution.LowerTail(z - w) / Math.Exp(logLower);
+                double ratio = NormalLaw.LowerTail(z - w) / Math.Exp(logLower);
                 double bracket = ratio > 0 ? -Accurate.Expm1((_k - 1) * Accurate.Log1p(-Math.Min(ratio, 1))) / ratio : _k - 1;
-                sum += Math.Exp(((_k - 2) * logLower) - ((z - middle) * (z - middle))) * InverseTwoPi * NormalDistribution.MillsRatio(w - z) * bracket;
+                sum += Math.Exp(((_k - 2) * logLower) - ((z - middle) * (z - middle))) * InverseTwoPi * NormalLaw.MillsRatio(w - z) * bracket;
             }
             else
             {
-                double logRatio = NormalDistribution.LogUpperTail(w - z) - logLower;
-                sum += NormalDistribution.Density(z) * Math.Exp(((_k - 1) * logLower) + (w * w / 4)) * -Accurate.Expm1((_k - 1) * Accurate.Log1mExp(Math.Min(logRatio, 0)));
+                double logRatio = NormalLaw.LogUpperTail(w - z) - logLower;
+                sum += NormalLaw.Density(z) * Math.Exp(((_k - 1) * logLower) + (w * w / 4)) * -Accurate.Expm1((_k - 1) * Accurate.Log1mExp(Math.Min(logRatio, 0)));
             }
         }
 
@@ -84,5 +84,5 @@ internal sealed class RangeOfNormals : NormalExtreme
 
     /// <inheritdoc/>
     protected override double ScaledLogBeyond(double w) =>
-        _logPairs + Math.Log(NormalDistribution.MillsRatio(w * RootHalf)) - LogRootTwoPi;
+        _logPairs + Math.Log(NormalLaw.MillsRatio(w * RootHalf)) - LogRootTwoPi;
 }

@@ -39,7 +39,7 @@ public readonly record struct ShapiroWilk(double W, PValue P)
         }
 
         double rest = Math.Max(Rest(x, Weights(n)), SmallestRest);
-        double p = n == 3 ? OfThree(1 - rest) : NormalDistribution.UpperTail(n <= Small ? SmallZ(n, rest) : LargeZ(n, rest));
+        double p = n == 3 ? OfThree(1 - rest) : NormalLaw.UpperTail(n <= Small ? SmallZ(n, rest) : LargeZ(n, rest));
         return new ShapiroWilk(1 - rest, PValue.FromValue(p));
     }
 
@@ -99,7 +99,7 @@ public readonly record struct ShapiroWilk(double W, PValue P)
         double squares = 0;
         for (int i = 0; i < weights.Length; i++)
         {
-            double m = -NormalDistribution.LowerQuantile((i + 1 - 0.375) / (n + 0.25));
+            double m = -NormalLaw.Quantile((i + 1 - 0.375) / (n + 0.25));
             weights[i] = m;
             squares += 2 * m * m;
         }
