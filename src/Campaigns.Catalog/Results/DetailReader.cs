@@ -27,7 +27,7 @@ public sealed class DetailReader(Catalog catalog)
         IReadOnlyList<string> labels = result.Plan.Groups;
         GroupedSample sample = values.Sample(labels.Count);
         GroupSummary[] summaries = GroupSummaries.Of(sample, Confidence);
-        VariationTable? variation = result.P is null ? null : OneWayLayout.Of(sample).Table();
+        VariationTable? variation = result.P is not null && OneWayLayout.Of(sample) is { Obstacle: null } layout ? layout.Table() : null;
         var groups = new List<GroupDetail>();
         for (int group = 0; group < labels.Count; group++)
         {
