@@ -63,7 +63,7 @@ public sealed class Catalog : IDisposable
 
     /// <summary>Reads several things as they stand at one moment, whatever another program writes meanwhile.</summary>
     /// <param name="work">The reading.</param>
-    internal T Snapshot<T>(Func<T> work) => InTransaction("BEGIN", work);
+    public T Snapshot<T>(Func<T> work) => InTransaction("BEGIN", work);
 
     private T InTransaction<T>(string begin, Func<T> work)
     {

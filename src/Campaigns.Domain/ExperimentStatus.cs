@@ -1,3 +1,5 @@
+using Campaigns.Statistics.GroupTests;
+
 namespace Campaigns.Domain;
 
 /// <summary>Where an experiment stands. The words in <see cref="ExperimentStatusWords"/> are frozen: files and scripts rely on them.</summary>
@@ -87,6 +89,22 @@ public static class ExperimentStatusWords
 
         throw new ArgumentException($"'{word}' is no status of an experiment.", nameof(word));
     }
+
+    /// <summary>The status of an experiment whose test found no result.</summary>
+    public static ExperimentStatus Of(NotTestableReason reason) => reason switch
+    {
+        NotTestableReason.TooFewGroups => ExperimentStatus.TooFewGroups,
+        NotTestableReason.NoReplication => ExperimentStatus.NoReplication,
+        NotTestableReason.ConstantResponse => ExperimentStatus.ConstantResponse,
+        NotTestableReason.ZeroWithinVariation => ExperimentStatus.ZeroWithinVariation,
+        NotTestableReason.GroupOfOne => ExperimentStatus.GroupOfOne,
+        NotTestableReason.ConstantGroup => ExperimentStatus.ConstantGroup,
+        NotTestableReason.BlockNotRecorded => ExperimentStatus.BlockNotRecorded,
+        NotTestableReason.DisconnectedBlocks => ExperimentStatus.DisconnectedBlocks,
+        NotTestableReason.SpecimenInSeveralBlocks => ExperimentStatus.SpecimenInSeveralBlocks,
+        NotTestableReason.SpecimenInSeveralGroups => ExperimentStatus.SpecimenInSeveralGroups,
+        _ => throw new ArgumentOutOfRangeException(nameof(reason), reason, "No status for this reason."),
+    };
 
     /// <summary>Whether the experiment's test was run, with or without a result; it is then closed to more data.</summary>
     public static bool WasTested(this ExperimentStatus status) => status >= ExperimentStatus.Tested;

@@ -5,7 +5,7 @@ usage: compare.py [--install] [--pairs N] [--work FOLDER] [MODE ...]
   --install   first install the Debian packages that the peers need (as root)
   --pairs     runs of each side, one after the other, A B A B (default 5); ratios are medians over the pairs
   --work      where campaigns and catalogs are written (default artifacts/compare; the large ones take 1 GB)
-Modes (default: large stored shuffled small growth size arrival results kernels):
+Modes (default: large stored shuffled small growth size arrival results kernels permutations):
   large     run on 100,000 experiments, against data.table that stores nothing
   stored    the same against data.table that stores every reading in SQLite
   usual     the same against aov() per experiment (takes minutes; one run of the peer)
@@ -16,6 +16,7 @@ Modes (default: large stored shuffled small growth size arrival results kernels)
   arrival   one more experiment into 100,000: load, test and review inside one process
   results   results of 200 experiments, against the start of Rscript with data.table
   kernels   adjustments and F tails inside the process, against p.adjust and pf
+  permutations  permutation F tests inside the process, against NumPy (peers/permutations.py)
 
 Every run starts with no catalog. Only ratios count: single times drift with the machine.
 """
@@ -34,8 +35,10 @@ import time
 HERE = pathlib.Path(__file__).resolve().parent
 ROOT = HERE.parent.parent
 PEERS = HERE / "peers"
-PACKAGES = ["r-base-core", "r-cran-data.table", "r-cran-rsqlite"]
-DEFAULT_MODES = ["large", "stored", "shuffled", "small", "growth", "size", "arrival", "results", "kernels"]
+PACKAGES = ["r-base-core", "r-cran-data.table", "r-cran-rsqlite", "python3-numpy", "libopenblas0-pthread"]
+# The one that has the NumPy of the packages; another python3 may stand first on the path.
+DEBIAN_PYTHON = "/usr/bin/python3"
+DEFAULT_MODES = ["large", "stored", "shuffled", "small", "growth", "size", "arrival", "results", "kernels", "permutations"]
 
 
 class Run:
@@ -207,10 +210,19 @@ class Comparison:
 
     def kernels(self):
         a, b = in_turn(lambda _: self.figures([self.benchmarks, "time"]), lambda _: self.figures(["Rscript", "--vanilla", PEERS / "kernels.R"]), 3)
-        for key, what, target, reach in [("adjust", "Bonferroni + Holm + BH of 1e6 / p.adjust", 0.25, 0.10), ("tails", "F tails with log / pf", 0.5, 0.1)]:
+        for key, what, target, reach in [("adjust", "Bonferroni + Holm + BH of 1e6 / p.adjust", 0.25, 0.10), ("tails", "F tails with log / pf", 0.5, 0.1),
+                                          ("range", "1e6 tails of the studentized range with log, one law / ptukey", 0.05, 0.005),
+                                          ("range-df", "1e4 such tails, each with its own df / ptukey", 0.05, 0.02)]:
             ratio = statistics.median(x[key] / y[key] for x, y in zip(a, b))
             self.row(what, ratio, target, reach, f"{statistics.median(x[key] for x in a):.0f} ms / {statistics.median(y[key] for y in b):.0f} ms")
         self.row("Hommel of 1e5, s", statistics.median(x["hommel"] for x in a) / 1000, 0.1, 0.03, "")
+
+    def permutations(self):
+        a, b = in_turn(lambda _: self.figures([self.benchmarks, "time"]), lambda _: self.figures([DEBIAN_PYTHON, PEERS / "permutations.py"]), 3)
+        for key, what, target, reach in [("permute-one", "permutation F of one experiment / the same in NumPy", 0.2, 0.025),
+                                         ("permute-shared", "permutation F of 200 experiments / matrix products in NumPy", 0.2, 0.02)]:
+            ratio = statistics.median(x[key] / y[key] for x, y in zip(a, b))
+            self.row(what, ratio, target, reach, f"{statistics.median(x[key] for x in a):.0f} ms / {statistics.median(y[key] for y in b):.0f} ms")
 
     @staticmethod
     def figures(command):

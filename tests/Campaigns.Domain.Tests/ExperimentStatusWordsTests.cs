@@ -1,10 +1,13 @@
+using Campaigns.Statistics.GroupTests;
+
 namespace Campaigns.Domain.Tests;
 
 public sealed class ExperimentStatusWordsTests
 {
     /// <summary>Catalogs and scripts hold these words: they never change, and new ones are only added.</summary>
     private static readonly string[] Frozen =
-        ["planned", "incomplete", "ready", "tested", "too-few-groups", "no-replication", "constant-response", "zero-within-variance"];
+        ["planned", "incomplete", "ready", "tested", "too-few-groups", "no-replication", "constant-response", "zero-within-variance",
+         "group-of-one", "constant-group", "block-not-recorded", "blocks-disconnected", "specimen-in-several-blocks", "specimen-in-several-groups"];
 
     [Fact]
     public void The_words_are_frozen_and_read_back()
@@ -21,8 +24,13 @@ public sealed class ExperimentStatusWordsTests
 
     [Fact]
     public void Only_a_test_that_was_run_closes_an_experiment() => Assert.Equal(
-        [ExperimentStatus.Tested, ExperimentStatus.TooFewGroups, ExperimentStatus.NoReplication, ExperimentStatus.ConstantResponse, ExperimentStatus.ZeroWithinVariation],
-        Enum.GetValues<ExperimentStatus>().Where(s => s.WasTested()));
+        [ExperimentStatus.Planned, ExperimentStatus.Incomplete, ExperimentStatus.Ready],
+        Enum.GetValues<ExperimentStatus>().Where(s => !s.WasTested()));
+
+    [Fact]
+    public void Every_reason_why_there_is_no_result_has_a_status() => Assert.Equal(
+        Enum.GetValues<NotTestableReason>().Select(r => r.ToString()),
+        Enum.GetValues<NotTestableReason>().Select(r => ExperimentStatusWords.Of(r).ToString()));
 
     [Fact]
     public void The_words_of_follow_ups_are_frozen() =>

@@ -25,14 +25,16 @@ internal static class CampaignText
         $"{RateWords(campaign.ErrorRate)} at {campaign.Level} by {FamilyVerdict.CorrectionOf(campaign).Name}";
 
     /// <summary>The lines under every table of results: what was assumed, which procedure, what it promises.</summary>
-    public static IReadOnlyList<string> Footnotes(CampaignOverview standing)
+    /// <param name="standing">The campaign in figures.</param>
+    /// <param name="tests">Keys of the tests behind the rows shown.</param>
+    public static IReadOnlyList<string> Footnotes(CampaignOverview standing, IEnumerable<string> tests)
     {
         Campaign campaign = standing.Campaign;
         Correction correction = FamilyVerdict.CorrectionOf(campaign);
         List<string> lines =
         [
             FormattableString.Invariant($"{correction.Name} at {campaign.Level} over a family of {standing.FamilySize} ({standing.TestedCount} with a result; the others count as p = 1). {correction.Guarantee}"),
-            .. GroupTestRegistry.Find(campaign.DefaultTest) is { } test ? [$"{test.Name}, assumes: {char.ToLowerInvariant(test.Assumes[0])}{test.Assumes[1..]}"] : (string[])[],
+            .. TestsOf(tests).Select(test => $"{test.Name}, assumes: {char.ToLowerInvariant(test.Assumes[0])}{test.Assumes[1..]}"),
         ];
         if (campaign.IsExploratory)
         {
@@ -41,11 +43,17 @@ internal static class CampaignText
 
         if (standing.AmendedCount > 0)
         {
-            lines.Add(FormattableString.Invariant($"Deviations: {standing.AmendedCount} experiment(s) received values after they had been tested, or were tested short of their plan; 'campaigns show {campaign.Code} EXPERIMENT' gives the reason."));
+            lines.Add(FormattableString.Invariant($"Deviations: {standing.AmendedCount} experiment(s) received values after they had been tested, had values left out, or were tested short of their plan; 'campaigns show {campaign.Code} EXPERIMENT' gives the reason."));
         }
 
         lines.Add(ReviewLine(standing));
         return lines;
+    }
+
+    private static IEnumerable<GroupTest> TestsOf(IEnumerable<string> keys)
+    {
+        string[] used = [.. keys.Distinct()];
+        return GroupTestRegistry.All.Where(t => used.Contains(t.Key));
     }
 
     /// <summary>Whether the latest review is up to date.</summary>

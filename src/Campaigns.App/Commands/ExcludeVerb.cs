@@ -1,5 +1,4 @@
 using System.CommandLine;
-using Campaigns.App.Output;
 using Campaigns.Catalog.Excluding;
 using Campaigns.Catalog.Results;
 using Campaigns.Domain;
@@ -37,7 +36,7 @@ internal sealed class ExcludeVerb : Verb
         session.Say($"Recorded: {decision.Sentence}.");
         CampaignStanding standing = new StandingReader(catalog).Read(code);
         ExperimentDetail detail = new DetailReader(catalog).Read(standing, decision.Experiment);
-        session.Print(WithAndWithout.Table(detail));
+        session.Print(ExperimentSections.Tests(detail) with { WhenEmpty = "No value is left to test." });
         if (standing.Campaign.IsSealed)
         {
             session.Say($"'campaigns test {code}' and 'campaigns review {code}' put this in force; until then the experiment counts as not tested.");

@@ -1,73 +1,84 @@
 using Campaigns.App.Output;
 using Campaigns.Domain;
+using Campaigns.Statistics.Checks;
+using Campaigns.Statistics.FollowUps;
 using Campaigns.Statistics.GroupTests;
 
 namespace Campaigns.App.Commands;
 
-/// <summary>One experiment in full: for people as tables, for scripts as one row a group (csv) with the experiment's figures beside it.</summary>
+/// <summary>One experiment in full: for people as tables and sentences, for scripts as one JSON object, or (csv) one row a group with the experiment's figures beside it.</summary>
 internal static class ExperimentShow
 {
-    private static IReadOnlyList<Column> GroupColumns { get; } =
-    [
-        new("group", "group"), new("control", "control"), new("n", "n", true), new("mean", "mean", true), new("standard_deviation", "sd", true),
-        new("standard_error", "se", true), new("lower", "lower", true), new("upper", "upper", true),
-    ];
-
-    private static IReadOnlyList<Column> VariationColumns { get; } =
-    [
-        new("source", "source"), new("sum_of_squares", "sum of squares", true), new("df", "df", true), new("mean_square", "mean square", true), new("f", "F", true), new("p", "p", true),
-    ];
-
     public static void Write(Session session, CampaignStanding standing, ExperimentDetail detail)
     {
-        ExperimentResult result = detail.Result;
-        if (session.Format != RowFormat.Table)
+        switch (session.Format)
         {
-            session.Print(ForScripts(detail));
-            return;
+            case RowFormat.Json:
+                JsonRows.WriteObject(
+                    ExperimentSections.Experiment(detail),
+                    [
+                        ("groups", ExperimentSections.Groups(detail)), ("variation", ExperimentSections.Variation(detail)), ("specimen_variation", ExperimentSections.Specimens(detail)),
+                        ("tests", ExperimentSections.Tests(detail)), ("effects", EffectSection.Table(detail)), ("checks", ExperimentSections.Checks(detail)),
+                        ("comparisons", ExperimentSections.Comparisons(detail)), ("exclusions", ExperimentSections.Exclusions(detail)),
+                    ],
+                    session.Host.Out);
+                break;
+            case RowFormat.Csv:
+                session.Print(GroupsBesideExperiment(detail));
+                break;
+            default:
+                ForPeople(session, standing, detail);
+                break;
         }
+    }
 
+    private static void ForPeople(Session session, CampaignStanding standing, ExperimentDetail detail)
+    {
+        ExperimentResult result = detail.Result;
         string unit = result.Plan.Unit.Length > 0 ? $" [{result.Plan.Unit}]" : "";
-        session.Print(new RowTable(GroupColumns, detail.Groups.Select(GroupRow))
+        session.Print(ExperimentSections.Groups(detail) with
         {
             Above =
             [
                 $"{standing.Campaign.Code} / {result.Plan.Code}  {result.Plan.Title}",
                 $"Response: {(result.Plan.Response.Length > 0 ? result.Plan.Response : "not named")}{unit}. Status: {result.Status.Sentence()}.{Missing(detail)}",
                 .. result.Amendments.Select(reason => $"Deviation from the plan: {reason}."),
+                .. detail.Analysis.UnitsNote is { } note ? [note] : (string[])[],
             ],
-            WhenEmpty = "No group is known yet.",
+            Below = GroupNotes(detail),
         });
+        Section(session, "Variation", ExperimentSections.Variation(detail), []);
+        Section(session, "Specimens", ExperimentSections.Specimens(detail), []);
+        Section(session, "Test", ExperimentSections.Tests(detail), TestNotes(standing, detail));
+        Section(session, "Effects", EffectSection.Table(detail), EffectSection.Notes(detail));
+        ChecksForPeople(session, detail);
+        Section(session, $"Comparisons ({FollowUpRegistry.Find(result.Plan.FollowUp)?.Name})", ExperimentSections.Comparisons(detail), ComparisonNotes(standing, detail));
+        Section(session, "Exclusions", ExperimentSections.Exclusions(detail), []);
         session.Host.Out.WriteLine();
-        if (detail.Variation is { } variation)
-        {
-            session.Print(new RowTable(VariationColumns, VariationRows(variation, result)));
-            session.Host.Out.WriteLine();
-        }
+        TextTable.Sentences(session.Host, [.. CampaignText.Footnotes(standing.Overview, []), CampaignText.Caution]);
+    }
 
-        TextTable.Sentences(session.Host, Conclusion(standing, detail));
+    private static void Section(Session session, string title, RowTable rows, IEnumerable<string> below)
+    {
+        if (rows.Rows.Any())
+        {
+            session.Host.Out.WriteLine();
+            session.Print(rows with { Above = [title], Below = [.. below] });
+        }
     }
 
     private static string Missing(ExperimentDetail detail) =>
         detail.MissingCount > 0 ? FormattableString.Invariant($" Marked as missing and left out: {detail.MissingCount}.") : "";
 
-    private static Cell[] GroupRow(GroupDetail group) =>
+    private static string[] GroupNotes(ExperimentDetail detail) =>
     [
-        Cell.Text(group.Label), group.IsControl ? Cell.Truth(true) : Cell.Empty, Cell.Whole(group.Summary.Count), Cell.Number(group.Summary.Mean),
-        Cell.Number(group.Summary.StandardDeviation), Cell.Number(group.Summary.StandardError), Cell.Number(group.Summary.Lower), Cell.Number(group.Summary.Upper),
+        .. detail.Groups.Any(g => g.Summary.Lower is not null)
+            ? [FormattableString.Invariant($"Intervals: {100 * detail.Confidence:0.#} % for each mean alone, from the group's own standard deviation and Student's t.")]
+            : (string[])[],
+        .. detail.Analysis.Letters is not null ? ["Letters: groups that share one are not told apart by the follow-up, which is not the same as alike."] : (string[])[],
     ];
 
-    private static Cell[][] VariationRows(VariationTable v, ExperimentResult result) =>
-    [
-        [Cell.Text("between groups"), .. Line(v.Between), Cell.Number(v.F), Cell.P(result.P)],
-        [Cell.Text("within groups"), .. Line(v.Within), Cell.Empty, Cell.Empty],
-        [Cell.Text("total"), Cell.Number(v.Total.SumOfSquares), Cell.Whole(v.Total.DegreesOfFreedom), Cell.Empty, Cell.Empty, Cell.Empty],
-    ];
-
-    private static Cell[] Line(VariationLine line) =>
-        [Cell.Number(line.SumOfSquares), Cell.Whole(line.DegreesOfFreedom), Cell.Number(line.MeanSquare)];
-
-    private static IEnumerable<string> Conclusion(CampaignStanding standing, ExperimentDetail detail)
+    private static IEnumerable<string> TestNotes(CampaignStanding standing, ExperimentDetail detail)
     {
         ExperimentResult result = detail.Result;
         if (result.P is not { } p)
@@ -78,41 +89,54 @@ internal static class ExperimentShow
         {
             string verdict = result.Survives == true ? "It survives: evidence that not all group means are equal." : "It does not survive: no difference shown, which is not the same as no difference.";
             yield return $"p = {NumberText.P(p)}, adjusted p = {NumberText.P(result.AdjustedP!.Value)}. {verdict}";
-            if (detail.Variation is { } v)
+        }
+
+        if (GroupTestRegistry.Find(result.Plan.Test) is { } test)
+        {
+            yield return $"{test.Name}, assumes: {char.ToLowerInvariant(test.Assumes[0])}{test.Assumes[1..]} Source: {test.Source}";
+        }
+
+        if (result.Resampling is { } resampling)
+        {
+            yield return ResamplingText.Sentence(resampling);
+            if (ResamplingText.TooCoarse(resampling, standing) is { } warning)
             {
-                yield return $"Eta squared {NumberText.Screen(v.EtaSquared, 4)}, omega squared {NumberText.Screen(v.OmegaSquared, 4)}, residual standard deviation {NumberText.Screen(v.ResidualStandardDeviation, 5)}.";
+                yield return warning;
             }
         }
 
-        if (detail.Groups.Any(g => g.Summary.Lower is not null))
+        if (detail.Analysis.Beside is not null)
         {
-            yield return FormattableString.Invariant($"Intervals: {100 * detail.Confidence:0.#} % for each mean alone, from the group's own standard deviation and Student's t.");
+            yield return "Welch's F does not assume equal spreads; it is shown, not chosen: the plan names the test. Ranks do not cure unequal spreads.";
         }
-
-        foreach (string line in CampaignText.Footnotes(standing.Overview))
-        {
-            yield return line;
-        }
-
-        yield return CampaignText.Caution;
     }
 
-    private static RowTable ForScripts(ExperimentDetail detail)
+    private static IEnumerable<string> ComparisonNotes(CampaignStanding standing, ExperimentDetail detail) =>
+        ComparisonsVerb.Footnotes(standing.Overview, [detail.Result.Plan.FollowUp]);
+
+    private static void ChecksForPeople(Session session, ExperimentDetail detail)
     {
-        ExperimentResult r = detail.Result;
-        VariationTable? v = detail.Variation;
-        (string Name, Cell Value)[] experiment =
-        [
-            ("experiment", Cell.Text(r.Plan.Code)), ("title", Cell.Text(r.Plan.Title)), ("response", Cell.Text(r.Plan.Response)), ("unit", Cell.Text(r.Plan.Unit)),
-            ("status", Cell.Text(r.Status.Word())), ("test", Cell.Text(r.Plan.Test)), ("statistic", Cell.Number(r.Statistic)), ("df1", Cell.Degrees(r.Df1)), ("df2", Cell.Degrees(r.Df2)),
-            ("p", Cell.P(r.P)), ("adjusted_p", Cell.P(r.AdjustedP)), ("survives", Cell.Truth(r.Survives)),
-            ("between_sum_of_squares", Cell.Number(v?.Between.SumOfSquares)), ("within_sum_of_squares", Cell.Number(v?.Within.SumOfSquares)), ("total_sum_of_squares", Cell.Number(v?.Total.SumOfSquares)),
-            ("between_mean_square", Cell.Number(v?.Between.MeanSquare)), ("within_mean_square", Cell.Number(v?.Within.MeanSquare)),
-            ("eta_squared", Cell.Number(v?.EtaSquared)), ("omega_squared", Cell.Number(v?.OmegaSquared)), ("residual_standard_deviation", Cell.Number(v?.ResidualStandardDeviation)),
-            ("missing", Cell.Whole(detail.MissingCount)), ("amendments", Cell.Text(string.Join("; ", r.Amendments))),
-        ];
-        return new RowTable(
-            [.. GroupColumns, .. experiment.Select(e => new Column(e.Name, null))],
-            detail.Groups.Select(g => (Cell[])[.. GroupRow(g), .. experiment.Select(e => e.Value)]));
+        if (detail.Analysis.Checks.Count == 0)
+        {
+            return;
+        }
+
+        session.Host.Out.WriteLine();
+        TextTable.Sentences(session.Host, ["Checks (advice; none changes the test)"]);
+        foreach (CheckLine line in detail.Analysis.Checks)
+        {
+            ExperimentCheck check = CheckRegistry.Find(line.Key)!;
+            string word = line.Finding.Verdict switch { CheckVerdict.Warns => "WARNS", CheckVerdict.Quiet => "quiet", _ => "not possible" };
+            string rest = line.Finding.Verdict == CheckVerdict.NotPossible ? "" : $" {check.CannotSee}{(line.Finding.Verdict == CheckVerdict.Warns ? $" {check.Advice}" : "")}";
+            TextTable.Sentences(session.Host, [$"- {line.Name} ({word}): {line.Finding.Saw}{rest}"]);
+        }
+    }
+
+    private static RowTable GroupsBesideExperiment(ExperimentDetail detail)
+    {
+        RowTable groups = ExperimentSections.Groups(detail);
+        RowTable experiment = ExperimentSections.Experiment(detail);
+        Cell[] facts = experiment.Rows.Single();
+        return new RowTable([.. groups.Columns, .. experiment.Columns], groups.Rows.Select(g => (Cell[])[.. g, .. facts]));
     }
 }

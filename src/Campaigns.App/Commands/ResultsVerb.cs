@@ -23,7 +23,7 @@ internal sealed class ResultsVerb : Verb
         session.Print(new RowTable(Columns, standing.Experiments.Select(Row))
         {
             Above = [$"{standing.Campaign.Code}: {CampaignText.Goal(standing.Campaign)}"],
-            Below = CampaignText.Footnotes(standing.Overview),
+            Below = CampaignText.Footnotes(standing.Overview, standing.Experiments.Select(e => e.Plan.Test)),
         });
         return ExitCode.Done;
     }
@@ -34,6 +34,7 @@ internal sealed class ResultsVerb : Verb
         new("statistic", "statistic", true, 1), new("df1", "df1", true, 1), new("df2", "df2", true, 1), new("p", "p", true), new("adjusted_p", "adjusted p", true),
         new("survives", "survives"), new("status", "status", GivesWay: 1),
         new("ln_p", null, true), new("eta_squared", "eta squared", true, 4), new("omega_squared", null, true), new("title", "title", GivesWay: 3), new("amendments", null),
+        new("specimens", null, true), new("epsilon_squared", null, true), new("cohen_f", null, true), new("arrangements", null, true), new("seed", null), new("follow_up", null),
     ];
 
     public static Cell[] Row(ExperimentResult result) =>
@@ -43,5 +44,7 @@ internal sealed class ResultsVerb : Verb
         Cell.Truth(result.Survives), Cell.Text(result.Status.Word()),
         Cell.Number(result.P?.Log), Cell.Number(result.EtaSquared), Cell.Number(result.OmegaSquared), Cell.Text(result.Plan.Title),
         Cell.Text(string.Join("; ", result.Amendments)),
+        Cell.Whole(result.SpecimenCount), Cell.Number(EffectSection.EpsilonSquared(result)), Cell.Number(EffectSection.CohenF(result)),
+        Cell.Whole(result.Resampling?.Arrangements), ExperimentSections.Seed(result), Cell.Text(result.Plan.FollowUp),
     ];
 }

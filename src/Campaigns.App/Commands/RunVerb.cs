@@ -182,16 +182,16 @@ internal sealed class RunVerb : Verb
     private static void PrintSurvivors(Session session, Catalog.Catalog catalog, string code)
     {
         bool forPeople = session.Format == RowFormat.Table;
-        (RowTable rows, CampaignOverview overview) = SurvivorsVerb.Table(catalog, code, forPeople ? SurvivorsShown : int.MaxValue);
+        SurvivorsVerb.Survivors survivors = SurvivorsVerb.Read(catalog, code, forPeople ? SurvivorsShown : int.MaxValue);
         if (!forPeople)
         {
-            session.Print(rows);
+            session.Print(survivors.Rows);
             return;
         }
 
         session.Host.Out.WriteLine();
-        session.Print(rows);
+        SurvivorsVerb.Print(session, survivors);
         session.Host.Out.WriteLine();
-        TextTable.Sentences(session.Host, RiskTable.Sentences(overview));
+        TextTable.Sentences(session.Host, RiskTable.Sentences(survivors.Overview));
     }
 }

@@ -85,7 +85,7 @@ internal sealed class ShowVerb : Verb
             new ReviewStore(catalog).All(id).Select(r => (Cell[])[Cell.Whole(r.Number), Cell.Text(Words.Instant(r.At)), Cell.Text(r.Correction), Cell.Setting(r.Level.Value), Cell.Whole(r.FamilySize), Cell.Whole(r.TestedCount), Cell.Whole(r.SurvivorCount), Cell.Truth(r.IsInterim)]))
         {
             WhenEmpty = "No review was taken yet.",
-            Below = [.. CampaignText.Footnotes(standing.Overview), CampaignText.Caution],
+            Below = [.. CampaignText.Footnotes(standing.Overview, standing.Experiments.Select(e => e.Plan.Test)), CampaignText.Caution],
         });
     }
 

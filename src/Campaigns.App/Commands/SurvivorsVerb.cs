@@ -10,7 +10,7 @@ internal sealed class SurvivorsVerb : Verb
 {
     private readonly Argument<string> _code = SharedOptions.Code();
 
-    public override Command Build() => new("survivors", Describe("The experiments that survive the campaign's correction, the smallest adjusted p first, with the widest gap between group means in its unit.",
+    public override Command Build() => new("survivors", Describe("The experiments that survive the campaign's correction, the smallest adjusted p first, with the widest gap between group means in its unit, and the comparisons inside them that are claimed, with their intervals.",
         "survivors PRIMERS"))
     {
         _code,
@@ -19,28 +19,53 @@ internal sealed class SurvivorsVerb : Verb
     public override int Run(Session session)
     {
         using Catalog.Catalog catalog = session.OpenCatalog();
-        session.Print(Table(catalog, session.Get(_code), int.MaxValue).Rows);
+        Print(session, Read(catalog, session.Get(_code), int.MaxValue));
         return ExitCode.Done;
+    }
+
+    /// <summary>What is shown of the survivors of a campaign.</summary>
+    /// <param name="Rows">A row a survivor.</param>
+    /// <param name="Claims">The comparisons claimed inside them; for people, below.</param>
+    /// <param name="Overview">The campaign in figures.</param>
+    public sealed record Survivors(RowTable Rows, RowTable Claims, CampaignOverview Overview);
+
+    /// <summary>Prints the survivors: for people with the comparisons claimed inside them as a second table.</summary>
+    public static void Print(Session session, Survivors survivors)
+    {
+        session.Print(survivors.Rows);
+        if (session.Format == RowFormat.Table && survivors.Claims.Rows.Any())
+        {
+            session.Host.Out.WriteLine();
+            session.Print(survivors.Claims);
+        }
     }
 
     /// <summary>The survivors, ranked by p.</summary>
     /// <param name="catalog">The open catalog.</param>
     /// <param name="code">The campaign.</param>
     /// <param name="most">Survivors to list.</param>
-    public static (RowTable Rows, CampaignOverview Overview) Table(Catalog.Catalog catalog, string code, int most)
+    public static Survivors Read(Catalog.Catalog catalog, string code, int most) => catalog.Snapshot(() => ReadNow(catalog, code, most));
+
+    private static Survivors ReadNow(Catalog.Catalog catalog, string code, int most)
     {
         (CampaignOverview overview, IReadOnlyList<ExperimentResult> listed) = new OverviewReader(catalog).ReadSurvivors(code, most);
         IReadOnlyDictionary<string, WidestGap> gaps = new EffectReader(catalog).WidestGaps(code, listed.Select(e => e.Plan.Code));
+        ILookup<string, ExperimentComparison> comparisons = new ComparisonReader(catalog).OfSurvivors(overview, listed);
         string more = listed.Count < overview.SurvivorCount
             ? FormattableString.Invariant($" The first {listed.Count} of {overview.SurvivorCount} are shown; 'campaigns survivors {code}' gives all.")
             : "";
-        var rows = new RowTable(Columns, listed.Select(e => Row(e, gaps.GetValueOrDefault(e.Plan.Code))))
+        var rows = new RowTable(Columns, listed.Select(e => Row(e, gaps.GetValueOrDefault(e.Plan.Code), comparisons[e.Plan.Code])))
         {
             Above = [FormattableString.Invariant($"{code}: {overview.SurvivorCount} of {overview.TestedCount} tested experiments survive ({CampaignText.Goal(overview.Campaign)}).{more}")],
-            Below = [.. CampaignText.Footnotes(overview), "Gap: the widest between two group means of the sample; gaps of what was selected look larger than they are.", CampaignText.Caution],
+            Below = [.. CampaignText.Footnotes(overview, listed.Select(e => e.Plan.Test).DefaultIfEmpty(overview.Campaign.DefaultTest)), "Gap: the widest between two group means of the sample; gaps of what was selected look larger than they are.", CampaignText.Caution],
             WhenEmpty = "No experiment survives: no difference shown, which is not the same as no difference.",
         };
-        return (rows, overview);
+        var claims = new RowTable(ComparisonsVerb.Columns, listed.SelectMany(e => comparisons[e.Plan.Code]).Where(c => c.Survives == true).Select(ComparisonsVerb.Row))
+        {
+            Above = ["Comparisons claimed inside the survivors"],
+            Below = [.. ComparisonsVerb.Footnotes(overview, listed.Select(e => e.Plan.FollowUp))],
+        };
+        return new Survivors(rows, claims, overview);
     }
 
     private static IReadOnlyList<Column> Columns { get; } =
@@ -48,14 +73,22 @@ internal sealed class SurvivorsVerb : Verb
         new("experiment", "experiment"), new("title", "title"), new("test", null), new("statistic", null, true), new("df1", null, true), new("df2", null, true),
         new("p", "p", true), new("adjusted_p", "adjusted p", true), new("eta_squared", null, true), new("omega_squared", null, true),
         new("highest_group", "highest"), new("highest_mean", null, true), new("lowest_group", "lowest"), new("lowest_mean", null, true),
-        new("difference", "gap", true), new("unit", "unit"), new("response", null),
+        new("difference", "gap", true), new("unit", "unit"), new("response", null), new("claimed_comparisons", null), new("amendments", null),
     ];
 
-    private static Cell[] Row(ExperimentResult e, WidestGap? gap) =>
+    private static Cell[] Row(ExperimentResult e, WidestGap? gap, IEnumerable<ExperimentComparison> comparisons) =>
     [
         Cell.Text(e.Plan.Code), Cell.Text(e.Plan.Title), Cell.Text(e.Plan.Test), Cell.Number(e.Statistic), Cell.Number(e.Df1), Cell.Number(e.Df2),
         Cell.P(e.P), Cell.P(e.AdjustedP), Cell.Number(e.EtaSquared), Cell.Number(e.OmegaSquared),
         Cell.Text(gap?.Highest), Cell.Number(gap?.HighestMean), Cell.Text(gap?.Lowest), Cell.Number(gap?.LowestMean),
         Cell.Number(gap?.Difference), Cell.Text(e.Plan.Unit), Cell.Text(e.Plan.Response),
+        Cell.Text(string.Join("; ", comparisons.Where(c => c.Survives == true).Select(Claim))), Cell.Text(string.Join("; ", e.Amendments)),
     ];
+
+    /// <summary>For example "B - A 2.5 [1.2, 3.8]".</summary>
+    private static string Claim(ExperimentComparison c)
+    {
+        string interval = c.Comparison is { Lower: { } lower, Upper: { } upper } ? $" [{NumberText.Screen(lower, 3)}, {NumberText.Screen(upper, 3)}]" : "";
+        return $"{c.GroupB} - {c.GroupA} {NumberText.Screen(c.Comparison.Difference, 3)}{interval}";
+    }
 }

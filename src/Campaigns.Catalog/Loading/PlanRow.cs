@@ -1,5 +1,7 @@
 using System.Text;
 using Campaigns.Domain;
+using Campaigns.Statistics.FollowUps;
+using Campaigns.Statistics.GroupTests;
 
 namespace Campaigns.Catalog.Loading;
 
@@ -56,7 +58,27 @@ internal sealed class PlanRow
             Weight = Number("weight", allowZero: true),
             Family = Text("family", _names) is { Length: > 0 } family ? family : null,
         };
+        CheckFollowUp(experiment);
         return _isSound ? experiment : null;
+    }
+
+    /// <summary>A follow-up that the experiment's design cannot feed would only be found out after the data.</summary>
+    private void CheckFollowUp(PlannedExperiment experiment)
+    {
+        if (!_isSound || FollowUpRegistry.Find(experiment.FollowUp) is not { } followUp)
+        {
+            return;
+        }
+
+        if (followUp.NeedsControl && experiment.Control is null)
+        {
+            Refuse("control", "missing-control", $"the follow-up {followUp.Key} holds every group against the control: name it, or plan another follow-up.");
+        }
+
+        if (!followUp.WorksWithinBlocks && GroupTestRegistry.Find(experiment.Test)?.UsesBlocks == true)
+        {
+            Refuse("follow_up", "follow-up-within-blocks", $"{followUp.Key} uses the variance of each group alone, which groups compared within blocks do not have: plan another follow-up for the test {experiment.Test}.");
+        }
     }
 
     /// <summary>Reports a problem of a column in the current row.</summary>

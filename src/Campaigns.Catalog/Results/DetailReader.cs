@@ -1,8 +1,9 @@
+using Campaigns.Catalog.Excluding;
 using Campaigns.Catalog.Measurements;
 using Campaigns.Catalog.Plans;
-using Campaigns.Catalog.Providers;
 using Campaigns.Domain;
 using Campaigns.Statistics.GroupTests;
+using Campaigns.Statistics.Units;
 
 namespace Campaigns.Catalog.Results;
 
@@ -13,7 +14,7 @@ public sealed class DetailReader(Catalog catalog)
     /// <summary>Confidence of the intervals in the group table.</summary>
     public const double Confidence = 0.95;
 
-    /// <summary>One experiment with its values, its group table and its table of variation.</summary>
+    /// <summary>One experiment with its values, its tables, checks and comparisons; the test is run anew on the values at hand.</summary>
     /// <param name="standing">The campaign as it stands.</param>
     /// <param name="code">The experiment.</param>
     /// <exception cref="RefusedException">The campaign has no such experiment.</exception>
@@ -23,37 +24,60 @@ public sealed class DetailReader(Catalog catalog)
         ExperimentResult result = standing.Experiments.FirstOrDefault(e => e.Plan.Code == code)
             ?? throw new RefusedException($"The campaign '{standing.Campaign.Code}' has no experiment '{code}'; {Hint(standing, code)}.");
         long campaignId = new CampaignStore(catalog).Get(standing.Campaign.Code).Id;
-        (ObservationColumns values, int missing) = ReadValues(campaignId, code);
-        IReadOnlyList<string> labels = result.Plan.Groups;
-        GroupedSample sample = values.Sample(labels.Count);
-        GroupSummary[] summaries = GroupSummaries.Of(sample, Confidence);
-        VariationTable? variation = result.P is not null && OneWayLayout.Of(sample) is { Obstacle: null } layout ? layout.Table() : null;
-        var groups = new List<GroupDetail>();
-        for (int group = 0; group < labels.Count; group++)
-        {
-            groups.Add(new GroupDetail(labels[group], labels[group] == result.Plan.Control, ValuesOf(values, group), summaries[group]));
-        }
-
-        return new ExperimentDetail(result, groups, Confidence, variation, missing);
+        var exclusions = new StandingExclusions(catalog, campaignId);
+        using var rows = new ValueRows(catalog, campaignId, exclusions, [code]);
+        return rows.Next() ? Describe(standing, result, rows, exclusions) : Empty(result);
     }
 
-    private (ObservationColumns Values, int Missing) ReadValues(long campaignId, string code)
+    private static ExperimentDetail Empty(ExperimentResult result)
     {
-        using SqliteStatement select = catalog.Prepare(
-            """
-            SELECT m.packed, m.missing_count FROM experiments e JOIN measurements m ON m.experiment_id = e.id
-            WHERE e.campaign_id = ?1 AND e.code = ?2 ORDER BY m.load_id
-            """);
-        select.Bind(1, campaignId).Bind(2, code);
-        var values = new ObservationColumns();
-        int missing = 0;
-        while (select.Read())
+        var none = new GroupSummary(0, null, null, null, null, null);
+        return new ExperimentDetail(result, [.. result.Plan.Groups.Select(label => new GroupDetail(label, label == result.Plan.Control, [], none))], Confidence, null, 0);
+    }
+
+    private ExperimentDetail Describe(CampaignStanding standing, ExperimentResult result, ValueRows rows, StandingExclusions exclusions)
+    {
+        string[] labels = rows.Labels;
+        GroupedSample readings = rows.Values.Sample(labels.Length);
+        GroupSummary[] summaries = GroupSummaries.Of(SpecimenMeans.Of(readings) is { } means ? means.Sample : readings, Confidence);
+        TestOutcome? outcome = OutcomeOf(standing, result, readings);
+        var groups = new List<GroupDetail>();
+        for (int group = 0; group < labels.Length; group++)
         {
-            PackedMeasurements.Read(select.Blob(0), values);
-            missing += (int)select.Integer(1);
+            groups.Add(new GroupDetail(labels[group], labels[group] == result.Plan.Control, ValuesOf(rows.Values, group), summaries[group]));
         }
 
-        return (values, missing);
+        var analysis = ExperimentAnalysis.Of(result.Plan, labels, readings, standing.Campaign.Level, result.P is not null);
+        var verdict = new ComparisonVerdict(standing.Campaign, standing.FamilySize, standing.SurvivorCount);
+        return new ExperimentDetail(result, groups, Confidence, (outcome as Tested)?.Variation, rows.MissingCount)
+        {
+            Analysis = analysis,
+            Comparisons = verdict.Judge(result, labels, analysis.Comparisons),
+            ComparisonGuarantee = verdict.Guarantee,
+            Exclusions = exclusions.Decisions(rows.Id),
+            Outcome = outcome,
+            OutcomeWithExcluded = rows.ExcludedCount > 0 ? WithExcluded(standing, result, exclusions) : null,
+        };
+    }
+
+    private TestOutcome? WithExcluded(CampaignStanding standing, ExperimentResult result, StandingExclusions exclusions)
+    {
+        using var rows = new ValueRows(catalog, new CampaignStore(catalog).Get(standing.Campaign.Code).Id, exclusions, [result.Plan.Code]);
+        rows.Next(withExcluded: true);
+        return OutcomeOf(standing, result, rows.Values.Sample(rows.Labels.Length));
+    }
+
+    private static TestOutcome? OutcomeOf(CampaignStanding standing, ExperimentResult result, GroupedSample readings)
+    {
+        if (readings.Count == 0 || GroupTestRegistry.Find(result.Plan.Test) is not { } test)
+        {
+            return null;
+        }
+
+        var draws = new RandomDraws(
+            PermutationDraws.Seed(standing.Campaign.Code, result.Plan.Code),
+            result.Resampling is { IsExact: false } drawn ? (int)drawn.Arrangements : PermutationDraws.Count(standing.Campaign.Level, standing.FamilySize));
+        return ExperimentalUnits.Test(test, readings, draws);
     }
 
     private static List<double> ValuesOf(ObservationColumns values, int group)

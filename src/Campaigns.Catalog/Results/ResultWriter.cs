@@ -50,7 +50,7 @@ internal sealed class ResultWriter(Catalog catalog, long campaignId, long? lastL
                 break;
             case NotTestable none:
                 NotTestable++;
-                _insert.Bind(3, StatusOf(none.Reason).Word());
+                _insert.Bind(3, ExperimentStatusWords.Of(none.Reason).Word());
                 for (int parameter = 6; parameter <= 12; parameter++)
                 {
                     _insert.BindNull(parameter);
@@ -81,19 +81,4 @@ internal sealed class ResultWriter(Catalog catalog, long campaignId, long? lastL
             VALUES (?1, ?2, ?3, ?4, ?5, ?6, ?7, ?8, ?9, ?10, ?11, ?12, ?13, ?14, ?15, ?16)
             """);
     }
-
-    private static ExperimentStatus StatusOf(NotTestableReason reason) => reason switch
-    {
-        NotTestableReason.TooFewGroups => ExperimentStatus.TooFewGroups,
-        NotTestableReason.NoReplication => ExperimentStatus.NoReplication,
-        NotTestableReason.ConstantResponse => ExperimentStatus.ConstantResponse,
-        NotTestableReason.ZeroWithinVariation => ExperimentStatus.ZeroWithinVariation,
-        NotTestableReason.GroupOfOne => ExperimentStatus.GroupOfOne,
-        NotTestableReason.ConstantGroup => ExperimentStatus.ConstantGroup,
-        NotTestableReason.BlockNotRecorded => ExperimentStatus.BlockNotRecorded,
-        NotTestableReason.DisconnectedBlocks => ExperimentStatus.DisconnectedBlocks,
-        NotTestableReason.SpecimenInSeveralBlocks => ExperimentStatus.SpecimenInSeveralBlocks,
-        NotTestableReason.SpecimenInSeveralGroups => ExperimentStatus.SpecimenInSeveralGroups,
-        _ => throw new ArgumentOutOfRangeException(nameof(reason), reason, "No status for this reason."),
-    };
 }

@@ -31,7 +31,7 @@ internal sealed class MaximumOfNormals : NormalExtreme
     private readonly double _step;
 
     private MaximumOfNormals(double[] sizes)
-        : base(rate: 0.5, TabledTo)
+        : base(rate: 0.5, 2 * sizes.Length, TabledTo)
     {
         _given = sizes;
         _lambdas = [.. sizes.Distinct()];

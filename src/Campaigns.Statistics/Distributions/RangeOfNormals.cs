@@ -31,7 +31,7 @@ internal sealed class RangeOfNormals : NormalExtreme
     private readonly double _logPairs;
 
     private RangeOfNormals(int k)
-        : base(rate: 0.25, k == 2 ? 0 : ClosedFrom)
+        : base(rate: 0.25, k, k == 2 ? 0 : ClosedFrom)
     {
         _k = k;
         _logPairs = Math.Log(k) + Math.Log(k - 1);

@@ -21,6 +21,9 @@ public abstract class FollowUp
     /// <summary>Whether every other group is held against the control, which the plan must then name.</summary>
     public virtual bool NeedsControl => false;
 
+    /// <summary>Whether groups that are adjusted for blocks can be compared; not where every group's own variance is used.</summary>
+    public virtual bool WorksWithinBlocks => true;
+
     /// <summary>Compares the groups of one experiment.</summary>
     /// <param name="estimates">What is known of the groups.</param>
     /// <param name="control">The control's number; null where there is none.</param>

@@ -7,7 +7,7 @@ public static class FollowUpRegistry
     public const string None = "none";
 
     /// <summary>The procedures.</summary>
-    public static IReadOnlyList<FollowUp> All { get; } = [];
+    public static IReadOnlyList<FollowUp> All { get; } = [new TukeyKramer(), new GamesHowell(), new Dunnett(), new Scheffe(), new HolmPairs()];
 
     /// <summary>The procedure with a key, or null.</summary>
     /// <param name="key">Exact, lower case.</param>

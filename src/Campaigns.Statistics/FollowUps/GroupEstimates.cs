@@ -10,6 +10,9 @@ namespace Campaigns.Statistics.FollowUps;
 /// </remarks>
 public sealed class GroupEstimates
 {
+    /// <summary>Below this share of the means a difference is the rounding error of 32 digits.</summary>
+    private const double RoundingShare = 1e-30;
+
     private readonly WideReal[] _means;
     private readonly int[] _counts;
     private readonly double[] _ownStandardErrors;
@@ -124,7 +127,21 @@ public sealed class GroupEstimates
     /// <summary>Mean of group b less mean of group a, in units of the response, rounded once.</summary>
     /// <param name="a">The group that is taken away.</param>
     /// <param name="b">The group that it is taken from.</param>
-    public double Difference(int a, int b) => (_means[b] - _means[a]).ToDouble();
+    /// <returns>Exactly 0 where the means are the same.</returns>
+    public double Difference(int a, int b) => WideDifference(a, b).ToDouble();
+
+    /// <summary>That difference over its standard error from the residual mean square: Student's t.</summary>
+    /// <param name="a">The group that is taken away.</param>
+    /// <param name="b">The group that it is taken from.</param>
+    /// <returns>0 where the difference is 0; the largest double, with the sign of the difference, where the quotient exceeds it or the residual standard deviation is 0. Never NaN.</returns>
+    public double T(int a, int b)
+    {
+        WideReal difference = WideDifference(a, b);
+        double error = Math.Sqrt(VarianceFactor(a, b));
+        return difference.Sign == 0 ? 0
+            : ResidualStandardDeviation == 0 ? double.MaxValue * difference.Sign
+            : Math.Clamp((difference / ResidualStandardDeviation / error).ToDouble(), -double.MaxValue, double.MaxValue);
+    }
 
     /// <summary>Standard error of that difference, from the residual mean square.</summary>
     /// <param name="a">One group.</param>
@@ -144,6 +161,15 @@ public sealed class GroupEstimates
     {
         double covariance = _factors[a, b] - _factors[a, from] - _factors[from, b] + _factors[from, from];
         return Math.Clamp(covariance / Math.Sqrt(VarianceFactor(a, from) * VarianceFactor(b, from)), -1, 1);
+    }
+
+    private WideReal WideDifference(int a, int b)
+    {
+        WideReal difference = _means[b] - _means[a];
+        double size = Math.Max(Magnitude(_means[a]), Magnitude(_means[b]));
+        return Magnitude(difference) <= size + Math.Log(RoundingShare) ? WideReal.Zero : difference;
+
+        static double Magnitude(WideReal value) => (value.Sign < 0 ? -value : value).Log();
     }
 
     private double VarianceFactor(int a, int b) => _factors[a, a] + _factors[b, b] - _factors[a, b] - _factors[b, a];

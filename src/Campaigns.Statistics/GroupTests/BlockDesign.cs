@@ -34,14 +34,8 @@ internal sealed class BlockDesign
         }
 
         Cofactors = [.. BlockSizes.Select(size => CommonMultiple / size)];
-        _valuesByBlock = [.. Enumerable.Range(0, groups.Length)];
-        Array.Sort([.. blocks.Select((block, i) => ((long)block * groupNumbers.Length) + groups[i])], _valuesByBlock);
-        _valueStarts = new int[blockCount + 1];
-        for (int block = 0; block < blockCount; block++)
-        {
-            _valueStarts[block + 1] = _valueStarts[block] + BlockCounts[block];
-        }
-
+        _valueStarts = Starts(BlockCounts);
+        _valuesByBlock = Sorted(Sorted([.. Enumerable.Range(0, groups.Length)], groups, Starts(GroupCounts)), blocks, _valueStarts);
         (_cellStarts, _cellGroups, _cellCounts) = Cells();
         IsConnected = Connected();
     }
@@ -173,6 +167,31 @@ internal sealed class BlockDesign
                 products[groups[a], groups[b]] += a == b ? 0 : (long)counts[a] * counts[b];
             }
         }
+    }
+
+    /// <summary>For each label the place of its first value once values are sorted by label, and the number of all values.</summary>
+    private static int[] Starts(int[] counts)
+    {
+        var starts = new int[counts.Length + 1];
+        for (int i = 0; i < counts.Length; i++)
+        {
+            starts[i + 1] = starts[i] + counts[i];
+        }
+
+        return starts;
+    }
+
+    /// <summary>Values sorted by label, those of a label in the order in which they came.</summary>
+    private static int[] Sorted(int[] values, int[] labels, int[] starts)
+    {
+        int[] next = [.. starts];
+        var sorted = new int[values.Length];
+        foreach (int value in values)
+        {
+            sorted[next[labels[value]]++] = value;
+        }
+
+        return sorted;
     }
 
     /// <summary>Counts the values of each group in each block, block after block.</summary>

@@ -7,7 +7,7 @@ namespace Campaigns.Statistics.GroupTests;
 /// C = diag(n_i) - N diag(1/n_j) N' has rows that add up to 0 and nothing positive off its diagonal: a network whose nodes are the groups and whose conductances are the ties between them.
 /// Eliminating a node only ever adds conductance between its neighbours, and the pivot is the sum of its conductances, so that pivots and multipliers keep all of their 32 digits however unequal the design is
 /// (W. K. Grassmann, M. I. Taksar and D. P. Heyman 1985, Operations Research 33:1107; C. A. O'Cinneide 1993, Numerische Mathematik 65:109).
-/// Exact integers would do as well, but grow to hundreds of digits with the number of groups, more where blocks differ in size.
+/// Exact integers would do as well, but grow to hundreds of digits with the number of groups, and to tens of thousands where blocks differ in size.
 /// Cost: k^3/3 multiplications of 32 digits.
 /// </remarks>
 internal sealed class BlockElimination

@@ -28,8 +28,7 @@ internal sealed class BlockFit
         var totals = new BlockTotals(design, values);
         BetweenBlocks = totals.BetweenBlocks();
         (WideReal[] effects, BetweenGroups) = elimination.Solve(totals.AdjustedTotals);
-        (Effects, Residuals) = Settle(values, totals, effects);
-        Residual = SumOfSquares(Residuals);
+        (Effects, Residuals, Residual) = Settle(values, totals, effects);
     }
 
     /// <summary>Effect of each group, up to a constant common to all.</summary>
@@ -48,16 +47,17 @@ internal sealed class BlockFit
     public WideReal Residual { get; }
 
     /// <summary>Takes whole numbers off until what is left is small enough.</summary>
-    private (WideReal[] Effects, WideReal[] Residuals) Settle(WholeNumbers values, BlockTotals totals, WideReal[] effects)
+    private (WideReal[] Effects, WideReal[] Residuals, WideReal SumOfSquares) Settle(WholeNumbers values, BlockTotals totals, WideReal[] effects)
     {
         var taken = new BigInteger[effects.Length];
         while (true)
         {
             WideReal[] blockEffects = totals.BlockEffects(effects);
             WideReal[] residuals = Rest(values, effects, blockEffects);
-            if (values.Largest.Sign == 0 || ((SumOfSquares(residuals) * Spare) - (values.Largest * values.Largest)).Sign >= 0)
+            WideReal squares = SumOfSquares(residuals);
+            if (values.Largest.Sign == 0 || ((squares * Spare) - (values.Largest * values.Largest)).Sign >= 0)
             {
-                return ([.. effects.Select((effect, i) => taken[i].IsZero ? effect : WideReal.From(taken[i]) + effect)], residuals);
+                return ([.. effects.Select((effect, i) => taken[i].IsZero ? effect : WideReal.From(taken[i]) + effect)], residuals, squares);
             }
 
             BigInteger[] whole = [.. effects.Select(e => e.ToWhole())];

@@ -7,7 +7,7 @@ namespace Campaigns.Statistics.GroupTests;
 /// Any counts are allowed: blocks that hold every group, blocks that hold some, several values of a group in a block. A block with a single value costs the degree of freedom that it brings.
 /// Sums of squares keep at least 25 digits before they are rounded once, whatever the offset of the values and the spread of the blocks (<see cref="BlockElimination"/>, <see cref="BlockFit"/>); what is zero is zero exactly.
 /// Groups and blocks without a value are left out and not counted.
-/// Cost, k groups, b blocks: two passes over the values of about 50 ns each, b k^2 additions, k^3/3 multiplications of 32 digits; 10 groups in 100 blocks take 0.3 ms.
+/// Cost, k groups, b blocks: about 100 ns a value, b k^2 additions, k^3/3 multiplications of 32 digits: 5 groups in 10 blocks take 10 us, 10 groups in 100 blocks 0.15 ms, 60 groups in 2,000 blocks of 5 values 2 ms.
 /// Source: R. A. Bailey, Design of Comparative Experiments, 2008, chapter 11; H. Scheffe, The Analysis of Variance, 1959, section 4.4.
 /// </remarks>
 public sealed class BlockLayout

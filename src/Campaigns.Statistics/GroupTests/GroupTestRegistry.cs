@@ -10,6 +10,7 @@ public static class GroupTestRegistry
         new WelchTest(),
         new BrownForsytheTest(),
         new KruskalWallisTest(),
+        new PermutationTest(),
         new BlockFTest(),
     ];
 

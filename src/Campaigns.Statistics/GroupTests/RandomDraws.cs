@@ -1,3 +1,5 @@
+using Campaigns.Statistics.Probability;
+
 namespace Campaigns.Statistics.GroupTests;
 
 /// <summary>How a test that draws random arrangements is to draw them: recorded with its result, so that anyone can draw the same again.</summary>
@@ -17,4 +19,7 @@ public sealed record Resampling(long Arrangements, long AsExtreme, ulong? Seed)
 {
     /// <summary>Whether every arrangement was looked at, so that the p-value is exact.</summary>
     public bool IsExact => Seed is null;
+
+    /// <summary>The p-value: the share of arrangements as extreme as the observed one, which random draws are to be counted among.</summary>
+    public PValue P => PValue.FromValue(IsExact ? AsExtreme / (double)Arrangements : (AsExtreme + 1.0) / (Arrangements + 1.0));
 }

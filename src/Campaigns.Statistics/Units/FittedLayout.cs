@@ -35,7 +35,7 @@ public sealed class FittedLayout
     /// <summary>Fits group means.</summary>
     /// <param name="units">Independent values.</param>
     /// <returns>Null where no residual degree of freedom is left.</returns>
-    /// <remarks>A residual is the exact integer n x - S over n, rounded once, whatever lies between the groups. Cost: about 50 ns a value.</remarks>
+    /// <remarks>A residual is the exact integer n x - S over n, rounded once, whatever lies between the groups. Cost: about 75 ns a value.</remarks>
     public static FittedLayout? OneWay(GroupedSample units)
     {
         var counts = new int[units.GroupCount];

@@ -16,7 +16,7 @@ namespace Campaigns.Statistics.Units;
 /// <remarks>
 /// n0 = (N - sum over groups of (sum of n_ij^2)/n_i)/(b - k) is the number of readings that counts for a specimen: the common one where all have as many.
 /// Source: S. R. Searle, G. Casella and C. E. McCulloch, Variance Components, 1992, on the nested classification; R. R. Sokal and F. J. Rohlf, Biometry, on nested analysis of variance with unequal sample sizes.
-/// Sums of squares come from exact integers and are rounded once. Cost: about 60 ns a reading.
+/// Sums of squares come from exact integers and are rounded once. Cost: about 70 ns a reading.
 /// </remarks>
 public sealed record SpecimenVariation(
     int SpecimenCount,
@@ -63,15 +63,18 @@ public sealed record SpecimenVariation(
     private static SpecimenVariation Split(GroupedSample readings, SpecimenIndex index, int[] groupOf)
     {
         var groupCounts = new int[readings.GroupCount];
+        var squaredCounts = new long[readings.GroupCount];
         for (int j = 0; j < groupOf.Length; j++)
         {
             groupCounts[groupOf[j]] += index.Counts[j];
+            squaredCounts[groupOf[j]] += (long)index.Counts[j] * index.Counts[j];
         }
 
-        double crowding = 0;
-        for (int j = 0; j < groupOf.Length; j++)
+        // What n0 leaves of the readings: N less the sum over groups of (sum of n_ij^2)/n_i.
+        WideReal spare = WideReal.From((double)readings.Count);
+        for (int i = 0; i < groupCounts.Length; i++)
         {
-            crowding += (double)index.Counts[j] * index.Counts[j] / groupCounts[groupOf[j]];
+            spare -= WideReal.From((double)squaredCounts[i]) / Math.Max(1, groupCounts[i]);
         }
 
         (WideReal within, WideReal between) = readings.IsWide
@@ -81,7 +84,7 @@ public sealed record SpecimenVariation(
         int withinDf = readings.Count - groupOf.Length;
         WideReal squaredUnit = readings.Unit * readings.Unit;
         WideReal? component = betweenDf == 0 ? null
-            : ((between / betweenDf) - (within / withinDf)) * WideReal.From((double)betweenDf) / (readings.Count - crowding);
+            : ((between / betweenDf) - (within / withinDf)) * WideReal.From((double)betweenDf) / spare;
         return new SpecimenVariation(
             groupOf.Length,
             readings.Count,

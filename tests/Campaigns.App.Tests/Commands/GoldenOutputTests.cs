@@ -57,7 +57,7 @@ public sealed partial class GoldenOutputTests : IDisposable
         (string Line, string[] Columns)[] table =
         [
             ("between groups", ["between_sum_of_squares", "between_mean_square", "df1", "statistic", "p"]), ("within groups", ["within_sum_of_squares", "within_mean_square", "df2"]), ("total", ["total_sum_of_squares"]),
-            ("p = ", ["p", "adjusted_p"]), ("Eta squared", ["eta_squared", "omega_squared", "residual_standard_deviation"]),
+            ("p = ", ["p", "adjusted_p"]), ("eta squared", ["eta_squared"]), ("omega squared", ["omega_squared"]), ("Residual", ["residual_standard_deviation"]),
         ];
         foreach ((string start, string[] columns) in table)
         {

@@ -131,7 +131,7 @@ public sealed class StepByStepTests : IDisposable
     {
         _place.Run("run", Workplace.Demo).Well();
         foreach (string[] arguments in (string[][])[["list"], ["results", "adhesion-screen"], ["survivors", "adhesion-screen"], ["corrections", "adhesion-screen"],
-            ["corrections", "adhesion-screen", "--by-experiment"], ["risk"], ["risk", "adhesion-screen"], ["show", "adhesion-screen"], ["show", "adhesion-screen", "GS-04"], ["show", "adhesion-screen", "GS-48"]])
+            ["corrections", "adhesion-screen", "--by-experiment"], ["risk"], ["risk", "adhesion-screen"], ["show", "adhesion-screen"], ["comparisons", "adhesion-screen"]])
         {
             Ran asCsv = _place.Run([.. arguments, "--format", "csv"]).Well(), asJson = _place.Run([.. arguments, "--format", "json"]).Well();
             Assert.Equal(("", ""), (asCsv.Error, asJson.Error));

@@ -1,4 +1,8 @@
 using Campaigns.Benchmarks.Generating;
+using Campaigns.Statistics.GroupTests;
+using Campaigns.Statistics.Permutation;
+using Campaigns.Statistics.FollowUps;
+using Campaigns.Statistics.GroupTests;
 
 namespace Campaigns.Benchmarks.Kernels;
 
@@ -28,6 +32,46 @@ internal static class Inputs
         }
 
         return f;
+    }
+
+    /// <summary>Experiments of 4 groups with 6 values each, typed with 4 decimals, ready to be permuted.</summary>
+    public static PermutationScores[] Experiments(int count)
+    {
+        var campaign = new SyntheticCampaign(new CampaignSize(count, 4, 6));
+        ushort[] groups = [.. Enumerable.Range(0, 24).Select(cell => (ushort)(cell / 6))];
+        return [.. Enumerable.Range(0, count).Select(experiment =>
+        {
+            long[] mantissas = [.. Enumerable.Range(0, 24).Select(cell => campaign.Reading(experiment, cell))];
+            return PermutationScores.Of(new GroupedSample(mantissas, 4, groups, 4));
+        })];
+    /// <summary>Studentized ranges between 0 and 12.</summary>
+    public static double[] RangeStatistics(int count)
+    {
+        var q = new double[count];
+        for (int i = 0; i < count; i++)
+        {
+            q[i] = 12 * Uniform(52, i);
+        }
+
+        return q;
+    }
+
+    /// <summary>Lambdas of treatments of 10, 11, ... values against a control of 10.</summary>
+    public static double[] Lambdas(int treatments) => [.. Enumerable.Range(10, treatments).Select(n => Math.Sqrt(n / (n + 10.0)))];
+
+    /// <summary>What is known of the groups of many experiments of five groups of ten values each.</summary>
+    public static GroupEstimates[] Estimates(int experiments)
+    {
+        var campaign = new SyntheticCampaign(new CampaignSize(experiments, 5, 10));
+        ushort[] groups = [.. Enumerable.Range(0, 50).Select(cell => (ushort)(cell / 10))];
+        var estimates = new GroupEstimates[experiments];
+        for (int e = 0; e < experiments; e++)
+        {
+            long[] mantissas = [.. Enumerable.Range(0, 50).Select(cell => campaign.Reading(e, cell))];
+            estimates[e] = GroupEstimates.OneWay(new GroupedSample(mantissas, 4, groups, 5))!;
+        }
+
+        return estimates;
     }
 
     /// <summary>Above 0 and below 1.</summary>

@@ -2,6 +2,9 @@ using System.Diagnostics;
 using System.Globalization;
 using Campaigns.Statistics.Corrections;
 using Campaigns.Statistics.Distributions;
+using Campaigns.Statistics.GroupTests;
+using Campaigns.Statistics.Permutation;
+using Campaigns.Statistics.FollowUps;
 
 namespace Campaigns.Benchmarks.Kernels;
 
@@ -9,7 +12,9 @@ namespace Campaigns.Benchmarks.Kernels;
 internal static class Timings
 {
     private const int Million = 1_000_000;
+    private const int Hundredth = 10_000;
     private const int Repeats = 7;
+    private const int PermutedExperiments = 200;
 
     public static void Print(TextWriter output)
     {
@@ -36,6 +41,46 @@ internal static class Timings
 
         double[] fewer = p[..100_000];
         Line("hommel", () => CorrectionRegistry.Find("hommel")!.Adjust(RankedFamily.Of(fewer, fewer.Length), new double[fewer.Length]));
+
+        PermutationScores[] experiments = Inputs.Experiments(PermutedExperiments);
+        Line("permute-one", () => RandomArrangements.CountAsExtreme(experiments[0], new RandomDraws(1, 10 * Million)));
+        Line("permute-shared", () => RandomArrangements.CountAsExtreme(experiments, new RandomDraws(1, 2 * Million / 10)));
+        double[] q = Inputs.RangeStatistics(Million);
+        Line("range", () =>
+        {
+            StudentizedRange law = StudentizedRange.For(5, 45);
+            foreach (double x in q)
+            {
+                sum += law.UpperTailPValue(x).Log;
+            }
+        });
+
+        // As Games-Howell asks: every pair its own degrees of freedom.
+        Line("range-df", () =>
+        {
+            for (int i = 0; i < Hundredth; i++)
+            {
+                sum += StudentizedRange.Direct(5, 12 + (i / 1000.0)).UpperTailPValue(q[i]).Log;
+            }
+        });
+
+        Line("dunnett-tails", () =>
+        {
+            double[] lambdas = Inputs.Lambdas(4);
+            for (int i = 0; i < Hundredth; i++)
+            {
+                sum += DunnettLaw.For(lambdas, 45).UpperTailPValue(q[i]).Log;
+            }
+        });
+
+        // Games-Howell solves for a critical value of its own for every pair: a hundredth of the experiments.
+        GroupEstimates[] experiments = Inputs.Estimates(Million / 10);
+        foreach (FollowUp followUp in FollowUpRegistry.All)
+        {
+            bool isSlow = followUp.Key == "games-howell";
+            GroupEstimates[] compared = isSlow ? experiments[..(experiments.Length / 100)] : experiments;
+            Line(isSlow ? followUp.Key + "/100" : followUp.Key, () => sum += compared.Sum(e => followUp.Compare(e, 0, 0.95)[0].P!.Value.Value));
+        }
 
         void Line(string name, Action work) =>
             output.WriteLine(string.Create(CultureInfo.InvariantCulture, $"{name} {MedianMilliseconds(work):F2}"));

@@ -1,5 +1,6 @@
 using System.Globalization;
 using System.Numerics;
+using Campaigns.Statistics.FollowUps;
 using Campaigns.Statistics.GroupTests;
 
 namespace Campaigns.Statistics.Tests.GroupTests;
@@ -41,6 +42,11 @@ internal sealed class TypedSample
         IsNarrow
             ? GroupSummaries.Of(new GroupedSample(Narrow(), _decimals, _groups, _groupCount), confidence)
             : GroupSummaries.Of(new GroupedSample(_mantissas, _decimals, _groups, _groupCount), confidence);
+
+    public GroupEstimates? Estimates() =>
+        IsNarrow
+            ? GroupEstimates.OneWay(new GroupedSample(Narrow(), _decimals, _groups, _groupCount))
+            : GroupEstimates.OneWay(new GroupedSample(_mantissas, _decimals, _groups, _groupCount));
 
     public bool IsNarrow => _mantissas.All(m => m >= long.MinValue && m <= long.MaxValue);
 

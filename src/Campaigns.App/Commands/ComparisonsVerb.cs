@@ -1,0 +1,62 @@
+using System.CommandLine;
+using Campaigns.App.Output;
+using Campaigns.Catalog.Results;
+using Campaigns.Domain;
+using Campaigns.Statistics.FollowUps;
+
+namespace Campaigns.App.Commands;
+
+/// <summary>comparisons: a row a follow-up comparison.</summary>
+internal sealed class ComparisonsVerb : Verb
+{
+    private readonly Argument<string> _code = SharedOptions.Code();
+
+    public override Command Build() => new("comparisons", Describe("A row a follow-up comparison inside an experiment: difference with its interval, p within the experiment, p adjusted for the selection of the experiment, and whether it is claimed.",
+        "comparisons PRIMERS --format csv"))
+    {
+        _code,
+    };
+
+    public override int Run(Session session)
+    {
+        using Catalog.Catalog catalog = session.OpenCatalog();
+        CampaignStanding standing = new StandingReader(catalog).Read(session.Get(_code));
+        session.Print(new RowTable(Columns, new ComparisonReader(catalog).All(standing).Select(Row))
+        {
+            Above = [$"{standing.Campaign.Code}: {CampaignText.Goal(standing.Campaign)}"],
+            Below = [.. Footnotes(standing.Overview, standing.Experiments.Select(e => e.Plan.FollowUp)), .. CampaignText.Footnotes(standing.Overview, standing.Experiments.Select(e => e.Plan.Test))],
+            WhenEmpty = "There is no comparison: no experiment with a result names a follow-up in its plan.",
+        });
+        return ExitCode.Done;
+    }
+
+    public static IReadOnlyList<Column> Columns { get; } =
+    [
+        new("experiment", "experiment"), new("group_a", "group a"), new("group_b", "group b"), new("difference", "b - a", true),
+        new("lower", "lower", true, 1), new("upper", "upper", true, 1), new("statistic", "statistic", true, 2), new("p", "p", true), new("adjusted_p", "adjusted p", true),
+        new("survives", "claimed"), new("follow_up", "follow-up", GivesWay: 3), new("df", null, true), new("unit", "unit", GivesWay: 2), new("note", "not claimed because", GivesWay: 4),
+    ];
+
+    public static Cell[] Row(ExperimentComparison c) =>
+    [
+        Cell.Text(c.Experiment.Plan.Code), Cell.Text(c.GroupA), Cell.Text(c.GroupB), Cell.Number(c.Comparison.Difference),
+        Cell.Number(c.Comparison.Lower), Cell.Number(c.Comparison.Upper), Cell.Number(c.Comparison.Statistic), Cell.P(c.Comparison.P), Cell.P(c.AdjustedP),
+        Cell.Truth(c.Survives), Cell.Text(c.Experiment.Plan.FollowUp), Cell.Degrees(c.Comparison.DegreesOfFreedom), Cell.Text(c.Experiment.Plan.Unit), Cell.Text(c.NotClaimedBecause),
+    ];
+
+    /// <summary>What the comparisons hold, and under which assumptions.</summary>
+    public static IEnumerable<string> Footnotes(CampaignOverview standing, IEnumerable<string> followUps)
+    {
+        string[] used = [.. followUps.Distinct().Order(StringComparer.Ordinal)];
+        foreach (FollowUp followUp in FollowUpRegistry.All.Where(f => used.Contains(f.Key)))
+        {
+            yield return $"{followUp.Name}: {followUp.Holds} Assumes: {char.ToLowerInvariant(followUp.Assumes[0])}{followUp.Assumes[1..]}";
+        }
+
+        if (used.Any(f => f != FollowUpRegistry.None))
+        {
+            yield return new ComparisonVerdict(standing.Campaign, standing.FamilySize, standing.SurvivorCount).Guarantee;
+            yield return FormattableString.Invariant($"Intervals hold together inside one experiment at {100 * (1 - standing.Campaign.Level.Value):0.###} %; they are not widened for the selection of the experiment.");
+        }
+    }
+}

@@ -1,0 +1,32 @@
+using Campaigns.App.Output;
+using Campaigns.Domain;
+using Campaigns.Statistics.GroupTests;
+
+namespace Campaigns.App.Commands;
+
+/// <summary>The arrangements behind a permutation p-value, in words.</summary>
+internal static class ResamplingText
+{
+    /// <summary>How p came about.</summary>
+    public static string Sentence(Resampling resampling)
+    {
+        if (resampling.IsExact)
+        {
+            return FormattableString.Invariant($"Exact: {resampling.AsExtreme} of all {resampling.Arrangements} arrangements of the values over the groups are at least as extreme.");
+        }
+
+        double p = (resampling.AsExtreme + 1.0) / (resampling.Arrangements + 1.0);
+        string error = NumberText.Screen(Math.Sqrt(p * (1 - p) / resampling.Arrangements), 2);
+        return FormattableString.Invariant($"Monte Carlo: {resampling.AsExtreme} of {resampling.Arrangements} random arrangements (seed {resampling.Seed}) are at least as extreme, p = ({resampling.AsExtreme} + 1)/({resampling.Arrangements} + 1), standard error about {error}.");
+    }
+
+    /// <summary>A warning where the smallest p-value that the arrangements can show lies above the campaign's strictest threshold; null where it does not.</summary>
+    public static string? TooCoarse(Resampling resampling, CampaignStanding standing)
+    {
+        double smallest = resampling.IsExact ? 1.0 / resampling.Arrangements : 1.0 / (resampling.Arrangements + 1.0);
+        double strictest = standing.Campaign.Level.Value / standing.FamilySize;
+        return smallest <= strictest
+            ? null
+            : $"Warning: the smallest p these arrangements can show, {NumberText.Screen(smallest, 3)}, lies above the campaign's strictest threshold, {NumberText.Screen(strictest, 3)} (level over family size): the experiment may be unable to survive whatever its data.";
+    }
+}
