@@ -177,6 +177,21 @@ public sealed class OtherTestsEdgeCasesTests
     }
 
     [Fact]
+    public void Thirds_are_tested_as_what_they_are()
+    {
+        // Means of three readings: integers over a common divisor.
+        long[] values = [1, 2, 4, 3, 5, 10];
+        ushort[] groups = [0, 0, 0, 1, 1, 1];
+        Assert.All([Welch, Star, Ranks], test =>
+        {
+            Tested whole = Assert.IsType<Tested>(test.Test(new GroupedSample(values, 0, groups, 2)));
+            Tested thirds = Assert.IsType<Tested>(test.Test(new GroupedSample(values, 0, groups, 2) { Divisor = 3 }));
+            Assert.Equal(whole with { Variation = null }, thirds with { Variation = null });
+            Relative.AssertNear(whole.Variation!.Within.SumOfSquares / 9, thirds.Variation!.Within.SumOfSquares, 2.3e-16, test.Key);
+        });
+    }
+
+    [Fact]
     public void A_value_of_an_unknown_group_is_refused() =>
         Assert.All([Welch, Star, Ranks], test => Assert.Throws<ArgumentException>(() => test.Test(new GroupedSample([1L, 2], 0, [0, 2], 2))));
 

@@ -1,5 +1,5 @@
 #!/usr/bin/env python3
-"""Chi-squared law: upper tail, lower tail and their natural logarithms, 50-digit arithmetic -> chi_squared_tail.csv.
+"""Chi-squared law: upper tail, lower tail and their natural logarithms, 80-digit arithmetic -> chi_squared_tail.csv.
 Both tails are computed apart: the lower by its power series of positive terms, the upper by mpmath's incomplete gamma function where that is the smaller, else by complement in 80 digits.
 x is the double nearest to the text; a probability may lie below the range of doubles, its logarithm is then the value to compare."""
 import csv
