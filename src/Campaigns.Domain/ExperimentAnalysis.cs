@@ -19,7 +19,7 @@ public sealed record ExperimentAnalysis
     /// <summary>The checks, in the order of their registry.</summary>
     public IReadOnlyList<CheckLine> Checks { get; init; } = [];
 
-    /// <summary>Welch's F, shown beside an F test where a check of the spreads warns; null elsewhere. It replaces nothing.</summary>
+    /// <summary>Welch's F, shown beside the planned test where a check of the spreads warns; null elsewhere. It replaces nothing.</summary>
     public TestOutcome? Beside { get; init; }
 
     /// <summary>Comparisons inside the experiment, before the campaign judges them.</summary>
@@ -69,7 +69,7 @@ public sealed record ExperimentAnalysis
             Specimens = specimens,
             UnitsNote = UnitsNoteOf(plan, readings, specimens),
             Checks = checks,
-            Beside = spreadsDiffer && plan.Test == "f" ? new WelchTest().Test(units) : null,
+            Beside = spreadsDiffer && plan.Test is not ("welch" or "block-f") ? new WelchTest().Test(units) : null,
             Comparisons = followUp?.Comparisons ?? [],
             Letters = followUp is { } f ? CompactLetters.Of(f.Estimates, f.Comparisons, level) : null,
             Effects = tested?.Variation is { } table && level.Value < 0.5 ? EffectSizes.Of(table, level) : null,
