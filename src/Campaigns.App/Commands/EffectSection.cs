@@ -33,11 +33,23 @@ internal static class EffectSection
             return null;
         }
 
-        double df1 = result.GroupCount - 1;
-        double df2 = result.Plan.Test == "block-f" ? result.Df2!.Value : (result.SpecimenCount ?? result.ObservationCount) - result.GroupCount;
+        (double df1, double df2) = DegreesOfFreedom(result);
         return eta - (df1 / df2 * (1 - eta));
     }
 
-    /// <summary>Cohen's f from the stored eta squared; null without a result.</summary>
-    public static double? CohenF(ExperimentResult result) => result.EtaSquared is { } eta ? Math.Sqrt(eta / (1 - eta)) : null;
+    /// <summary>Cohen's f, the root of the ratio of both sums of squares; null without a result.</summary>
+    /// <remarks>From F where the test's statistic is F: 1 less an eta squared near 1 has lost its digits. Elsewhere from the stored eta squared.</remarks>
+    public static double? CohenF(ExperimentResult result)
+    {
+        if (result.EtaSquared is not { } eta)
+        {
+            return null;
+        }
+
+        (double df1, double df2) = DegreesOfFreedom(result);
+        return Math.Sqrt(result is { Plan.Test: "f" or "block-f" or "permutation", Statistic: { } f } ? f * (df1 / df2) : eta / (1 - eta));
+    }
+
+    private static (double Df1, double Df2) DegreesOfFreedom(ExperimentResult result) =>
+        (result.GroupCount - 1, result.Plan.Test == "block-f" ? result.Df2!.Value : (result.SpecimenCount ?? result.ObservationCount) - result.GroupCount);
 }
