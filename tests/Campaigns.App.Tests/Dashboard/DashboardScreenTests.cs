@@ -114,7 +114,7 @@ public sealed class DashboardScreenTests
     [Fact]
     public void Paging_past_slow_experiments_computes_none_until_the_list_stands_still()
     {
-        CampaignStanding slow = Standing with { Experiments = [.. Standing.Experiments.Select(e => e with { Plan = e.Plan with { Test = "permutation" } })] };
+        CampaignStanding sample = SampleCampaign.Standing(12, withoutResult: 0), slow = sample with { Experiments = [.. sample.Experiments.Select(e => e with { Plan = e.Plan with { Test = "permutation" } })] };
         List<string> computed = [];
         DashboardSource source = SampleCampaign.Source(slow);
         using TestScreen screen = new(120, 40, source with
