@@ -19,7 +19,7 @@ public sealed record ExperimentAnalysis
     /// <summary>The checks, in the order of their registry.</summary>
     public IReadOnlyList<CheckLine> Checks { get; init; } = [];
 
-    /// <summary>Welch's F, shown beside an F test where a check of the spreads warns; null elsewhere. It replaces nothing.</summary>
+    /// <summary>Welch's F, shown beside the planned test where a check of the spreads warns; null elsewhere. It replaces nothing.</summary>
     public TestOutcome? Beside { get; init; }
 
     /// <summary>Comparisons inside the experiment, before the campaign judges them.</summary>
@@ -69,7 +69,7 @@ public sealed record ExperimentAnalysis
             Specimens = specimens,
             UnitsNote = UnitsNoteOf(plan, readings, specimens),
             Checks = checks,
-            Beside = spreadsDiffer && plan.Test == "f" ? new WelchTest().Test(units) : null,
+            Beside = spreadsDiffer && plan.Test is not ("welch" or "block-f") ? new WelchTest().Test(units) : null,
             Comparisons = followUp?.Comparisons ?? [],
             Letters = followUp is { } f ? CompactLetters.Of(f.Estimates, f.Comparisons, level) : null,
             Effects = tested?.Variation is { } table && level.Value < 0.5 ? EffectSizes.Of(table, level) : null,
@@ -101,7 +101,8 @@ public sealed record ExperimentAnalysis
         if (specimens is { } s)
         {
             string unmarked = s.UnmarkedCount > 0 ? FormattableString.Invariant($" {s.UnmarkedCount} reading(s) without a specimen were taken as one each.") : "";
-            return FormattableString.Invariant($"Readings of one specimen are not independent, so the analysis runs on the means of {s.SpecimenCount} specimens ({s.ReadingCount} readings, {s.FewestReadings} to {s.MostReadings} a specimen).{unmarked}");
+            string each = s.FewestReadings == s.MostReadings ? FormattableString.Invariant($"{s.MostReadings}") : FormattableString.Invariant($"{s.FewestReadings} to {s.MostReadings}");
+            return FormattableString.Invariant($"Readings of one specimen are not independent, so the analysis runs on the means of {s.SpecimenCount} specimens ({s.ReadingCount} readings, {each} a specimen).{unmarked}");
         }
 
         return readings.Specimens.IsEmpty ? UnitNotes.Repeats(plan, readings.Groups, readings.GroupCount) : null;

@@ -46,11 +46,14 @@ internal static class CampaignText
         return lines;
     }
 
-    /// <summary>A sentence where the record of some experiment departs from its plan; none elsewhere.</summary>
-    public static string[] Deviations(CampaignOverview standing) => standing.AmendedCount == 0 ? [] :
-    [
-        FormattableString.Invariant($"Deviations: {standing.AmendedCount} experiment(s) received values after they had been tested, had values left out, or were tested short of their plan; 'campaigns show {standing.Campaign.Code} EXPERIMENT' gives the reason."),
-    ];
+    /// <summary>A line on experiments that deviate from their plan; empty where none does.</summary>
+    public static IEnumerable<string> Deviations(CampaignOverview standing)
+    {
+        if (standing.AmendedCount > 0)
+        {
+            yield return FormattableString.Invariant($"Deviations: {standing.AmendedCount} experiment(s) received values after they had been tested, had values left out, or were tested short of their plan; 'campaigns show {standing.Campaign.Code} EXPERIMENT' gives the reason.");
+        }
+    }
 
     private static IEnumerable<GroupTest> TestsOf(IEnumerable<string> keys)
     {

@@ -20,26 +20,6 @@ internal static class EffectSection
             .. Difference("smallest detectable difference at the strictest threshold", detail.Analysis.DetectableAtStrictest),
         ]);
 
-    /// <summary>What the figures mean.</summary>
-    public static IEnumerable<string> Notes(CampaignStanding standing, ExperimentDetail detail)
-    {
-        bool isPartial = detail.Variation?.Blocks is not null;
-        if (detail.Variation is { } v)
-        {
-            yield return $"Residual standard deviation {NumberText.Screen(v.ResidualStandardDeviation, 5)} {detail.Result.Plan.Unit}".TrimEnd() + ".";
-        }
-
-        if (detail.Analysis.Effects is { } e)
-        {
-            yield return FormattableString.Invariant($"Intervals: {100 * e.Confidence:0.###} %, from the noncentral F law; they leave out 0 exactly where the F test alone would call the groups different at {standing.Campaign.Level}. Omega and epsilon squared are negative where F is below 1.{(isPartial ? " Within blocks all of them are partial: the blocks are left out." : "")}");
-        }
-
-        if (detail.Analysis.DetectableAtStrictest is not null)
-        {
-            yield return FormattableString.Invariant($"Smallest detectable difference: between any two group means, with these group sizes and this residual standard deviation, found by the F test with a power of 0.8, at level {standing.Campaign.Level} alone and at the strictest threshold {standing.Campaign.Level}/{standing.FamilySize}. A smaller difference may well be there and not be shown.");
-        }
-    }
-
     private static Cell[] Row(string name, double value, Interval? interval) =>
         [Cell.Text(name), Cell.Number(value), Cell.Number(interval?.Lower), Cell.Number(interval?.Upper)];
 
