@@ -72,7 +72,6 @@ public sealed class LongTestTests : IDisposable
         string before = Results();
         File.SetUnixFileMode(_place.Catalog, UnixFileMode.UserRead);
         _place.Run("exclude", "C", "E1", "--line", "2", "--reason", "r", "--as", "B").Refused(4);
-        _place.Run("test", "C").Refused(4);
         Assert.Equal(before, Results());
         Assert.NotEmpty(_place.Run("show", "C", "E1", "--format", "json").Well().Out);
     }
