@@ -30,9 +30,10 @@ public sealed class ExperimentAnalysisTests
 
     [Theory]
     [InlineData("f", true)]
-    [InlineData("brown-forsythe", false)]
-    [InlineData("kruskal-wallis", false)]
-    public void Welchs_test_stands_beside_an_F_test_where_spreads_differ_and_nowhere_else(string test, bool beside)
+    [InlineData("brown-forsythe", true)]
+    [InlineData("kruskal-wallis", true)]
+    [InlineData("welch", false)]
+    public void Welchs_test_stands_beside_another_one_where_spreads_differ(string test, bool beside)
     {
         ExperimentAnalysis analysis = Of(test, Wild);
         Assert.Contains(analysis.Checks, c => c.Finding.Verdict == CheckVerdict.Warns && c.Key is "equal-spread" or "spread-ratio");
