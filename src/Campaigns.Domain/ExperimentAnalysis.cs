@@ -19,7 +19,7 @@ public sealed record ExperimentAnalysis
     /// <summary>The checks, in the order of their registry.</summary>
     public IReadOnlyList<CheckLine> Checks { get; init; } = [];
 
-    /// <summary>Welch's F, shown beside an F test where a check of the spreads warns; null elsewhere. It replaces nothing.</summary>
+    /// <summary>Welch's F, shown beside the planned test where a check of the spreads warns; null elsewhere. It replaces nothing.</summary>
     public TestOutcome? Beside { get; init; }
 
     /// <summary>Comparisons inside the experiment, before the campaign judges them.</summary>
@@ -44,8 +44,9 @@ public sealed record ExperimentAnalysis
     /// <param name="campaign">Names the level.</param>
     /// <param name="familySize">Experiments in the campaign's family.</param>
     /// <param name="tested">The result of the planned test; without one nothing is compared.</param>
+    /// <param name="places">Where each value came from, in words; null where that is not known.</param>
     /// <remarks>Cost: sorting, O(N log N), and some 0.1 ms for the tails of effects and comparisons.</remarks>
-    public static ExperimentAnalysis Of(PlannedExperiment plan, IReadOnlyList<string> labels, GroupedSample readings, Campaign campaign, int familySize, Tested? tested)
+    public static ExperimentAnalysis Of(PlannedExperiment plan, IReadOnlyList<string> labels, GroupedSample readings, Campaign campaign, int familySize, Tested? tested, IReadOnlyList<string>? places = null)
     {
         ArgumentNullException.ThrowIfNull(plan);
         ArgumentNullException.ThrowIfNull(labels);
@@ -57,6 +58,7 @@ public sealed record ExperimentAnalysis
             Units = units,
             Fit = withinBlocks ? FittedLayout.InBlocks(units) : FittedLayout.OneWay(units),
             Labels = labels,
+            Places = units.Count == readings.Count ? places : null,
         });
         bool spreadsDiffer = checks.Any(c => c.Key is "equal-spread" or "spread-ratio" && c.Finding.Verdict == CheckVerdict.Warns);
         SignificanceLevel level = campaign.Level;
@@ -67,7 +69,7 @@ public sealed record ExperimentAnalysis
             Specimens = specimens,
             UnitsNote = UnitsNoteOf(plan, readings, specimens),
             Checks = checks,
-            Beside = spreadsDiffer && plan.Test == "f" ? new WelchTest().Test(units) : null,
+            Beside = spreadsDiffer && plan.Test is not ("welch" or "block-f") ? new WelchTest().Test(units) : null,
             Comparisons = followUp?.Comparisons ?? [],
             Letters = followUp is { } f ? CompactLetters.Of(f.Estimates, f.Comparisons, level) : null,
             Effects = tested?.Variation is { } table && level.Value < 0.5 ? EffectSizes.Of(table, level) : null,
@@ -102,19 +104,6 @@ public sealed record ExperimentAnalysis
             return FormattableString.Invariant($"Readings of one specimen are not independent, so the analysis runs on the means of {s.SpecimenCount} specimens ({s.ReadingCount} readings, {s.FewestReadings} to {s.MostReadings} a specimen).{unmarked}");
         }
 
-        if (!readings.Specimens.IsEmpty || plan.Replicates is not { } replicates)
-        {
-            return null;
-        }
-
-        Span<int> counts = readings.GroupCount <= 64 ? stackalloc int[readings.GroupCount] : new int[readings.GroupCount];
-        foreach (ushort group in readings.Groups)
-        {
-            counts[group]++;
-        }
-
-        return RepeatedReadings.AreLikely(counts, replicates)
-            ? FormattableString.Invariant($"Warning: {readings.Count} values where {replicates} in each group were planned look like repeated readings of one specimen, which are not independent and make p too small. Record the specimen of every value in a column 'specimen'.")
-            : null;
+        return readings.Specimens.IsEmpty ? UnitNotes.Repeats(plan, readings.Groups, readings.GroupCount) : null;
     }
 }

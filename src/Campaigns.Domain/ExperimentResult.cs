@@ -45,7 +45,7 @@ public sealed record ExperimentResult
     /// <summary>Omega squared, possibly negative; null without a result.</summary>
     public double? OmegaSquared { get; init; }
 
-    /// <summary>Specimens whose means were tested; null where every value stood for itself.</summary>
+    /// <summary>Specimens that were tested, readings of one averaged; null where none is recorded.</summary>
     public int? SpecimenCount { get; init; }
 
     /// <summary>The arrangements behind a permutation p-value; null for other tests.</summary>

@@ -24,7 +24,7 @@ internal sealed class ComparisonsVerb : Verb
         session.Print(new RowTable(Columns, new ComparisonReader(catalog).All(standing).Select(Row))
         {
             Above = [$"{standing.Campaign.Code}: {CampaignText.Goal(standing.Campaign)}"],
-            Below = [.. Footnotes(standing.Overview, standing.Experiments.Select(e => e.Plan.FollowUp)), .. CampaignText.Footnotes(standing.Overview, standing.Experiments.Select(e => e.Plan.Test))],
+            Below = [.. Footnotes(standing.Overview, standing.Experiments.Select(e => e.Plan.FollowUp)), .. CampaignText.Footnotes(standing.Overview, standing.Experiments.Select(e => e.Plan.Test)), .. UnitNotes.Of(standing.Experiments)],
             WhenEmpty = "There is no comparison: no experiment with a result names a follow-up in its plan.",
         });
         return ExitCode.Done;

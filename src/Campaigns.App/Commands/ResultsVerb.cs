@@ -23,7 +23,7 @@ internal sealed class ResultsVerb : Verb
         session.Print(new RowTable(Columns, standing.Experiments.Select(Row))
         {
             Above = [$"{standing.Campaign.Code}: {CampaignText.Goal(standing.Campaign)}"],
-            Below = CampaignText.Footnotes(standing.Overview, standing.Experiments.Select(e => e.Plan.Test)),
+            Below = [.. CampaignText.Footnotes(standing.Overview, standing.Experiments.Select(e => e.Plan.Test)), .. UnitNotes.Of(standing.Experiments)],
         });
         return ExitCode.Done;
     }

@@ -47,7 +47,7 @@ public sealed class DetailReader(Catalog catalog)
             groups.Add(new GroupDetail(labels[group], labels[group] == result.Plan.Control, ValuesOf(rows.Values, group), summaries[group]));
         }
 
-        var analysis = ExperimentAnalysis.Of(result.Plan, labels, readings, standing.Campaign, standing.FamilySize, result.P is null ? null : outcome as Tested);
+        var analysis = ExperimentAnalysis.Of(result.Plan, labels, readings, standing.Campaign, standing.FamilySize, result.P is null ? null : outcome as Tested, rows.Places());
         var verdict = new ComparisonVerdict(standing.Campaign, standing.FamilySize, standing.SurvivorCount);
         return new ExperimentDetail(result, groups, Confidence, (outcome as Tested)?.Variation, rows.MissingCount)
         {

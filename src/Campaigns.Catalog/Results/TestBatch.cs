@@ -27,15 +27,19 @@ internal sealed class TestBatch
 {
     public const int Size = 256;
 
+    private const int FewDrawing = 4;
+
     private readonly List<ExperimentToTest> _experiments = new(Size);
     private readonly List<TestOutcome?> _outcomes = new(Size);
     private readonly List<(int Experiment, long LoadId, int End)> _parts = new(Size);
     private byte[] _packed = new byte[1 << 16];
     private int _length;
+    private int _drawing;
 
     public int Count => _experiments.Count;
 
-    public bool IsFull => Count >= Size;
+    /// <summary>Experiments that draw random arrangements take a thousand times as long as others; a few of them make a batch, so that progress is seen and the work can be stopped.</summary>
+    public bool IsFull => Count >= Size || _drawing >= FewDrawing;
 
     public long LastId => Count == 0 ? 0 : _experiments[^1].Id;
 
@@ -50,9 +54,14 @@ internal sealed class TestBatch
         _outcomes.Clear();
         _parts.Clear();
         _length = 0;
+        _drawing = 0;
     }
 
-    public void Begin(in ExperimentToTest experiment) => _experiments.Add(experiment);
+    public void Begin(in ExperimentToTest experiment)
+    {
+        _experiments.Add(experiment);
+        _drawing += experiment.Test.DrawsAtRandom ? 1 : 0;
+    }
 
     /// <summary>Adds what one load brought to the experiment begun last.</summary>
     public void Add(long loadId, ReadOnlySpan<byte> packed)

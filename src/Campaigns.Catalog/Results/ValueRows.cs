@@ -13,6 +13,7 @@ internal sealed class ValueRows : IDisposable
     private readonly SqliteStatement _select;
     private readonly StandingExclusions _exclusions;
     private readonly ExcludedPositions _leftOut = new();
+    private readonly List<(int End, string File)> _files = [];
     private bool _more;
 
     /// <param name="catalog">The open catalog.</param>
@@ -27,8 +28,8 @@ internal sealed class ValueRows : IDisposable
         _sets = new GroupSets(catalog, campaignId);
         _select = catalog.Prepare(
             $"""
-            SELECT e.id, e.code, e.group_set_id, m.load_id, m.missing_count, m.packed FROM {chosen}
-            CROSS JOIN measurements m ON m.experiment_id = e.id WHERE e.campaign_id = ?1 ORDER BY e.id, m.load_id
+            SELECT e.id, e.code, e.group_set_id, m.load_id, m.missing_count, m.packed, l.file_name FROM {chosen}
+            CROSS JOIN measurements m ON m.experiment_id = e.id CROSS JOIN loads l ON l.id = m.load_id WHERE e.campaign_id = ?1 ORDER BY e.id, m.load_id
             """);
         _select.Bind(1, campaignId);
         if (only is not null)
@@ -71,21 +72,51 @@ internal sealed class ValueRows : IDisposable
         Labels = _sets.Labels(_select.NullableInteger(2));
         MissingCount = 0;
         Values.Clear();
+        _files.Clear();
         _leftOut.Begin(_exclusions.Of(Id));
         for (; _more && _select.Integer(0) == Id; _more = _select.Read())
         {
             PackedMeasurements.Read(_select.Blob(5), Values);
             _leftOut.Find(_select.Integer(3), Values);
             MissingCount += (int)_select.Integer(4);
+            _files.Add((Values.Count, _files.Count > 0 && _select.TextEquals(6, _files[^1].File) ? _files[^1].File : _select.Text(6)));
         }
 
         ExcludedCount = _leftOut.Positions.Count;
         if (!withExcluded)
         {
             Values.RemoveAt(_leftOut.Positions);
+            MoveFileEnds();
         }
 
         return true;
+    }
+
+    /// <summary>Where each value came from, for people: for example "line 41 of week-1.csv".</summary>
+    public IReadOnlyList<string> Places()
+    {
+        var places = new string[Values.Count];
+        int file = 0;
+        for (int i = 0; i < places.Length; i++)
+        {
+            while (i >= _files[file].End)
+            {
+                file++;
+            }
+
+            places[i] = FormattableString.Invariant($"line {Values.Lines[i]} of {_files[file].File}");
+        }
+
+        return places;
+    }
+
+    private void MoveFileEnds()
+    {
+        for (int i = 0; i < _files.Count && _leftOut.Positions.Count > 0; i++)
+        {
+            int before = _leftOut.Positions.Count(p => p < _files[i].End);
+            _files[i] = (_files[i].End - before, _files[i].File);
+        }
     }
 
     public void Dispose()

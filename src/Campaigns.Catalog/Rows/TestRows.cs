@@ -64,7 +64,7 @@ public sealed class TestResultRow
     /// <summary>Omega squared, possibly negative.</summary>
     public double? OmegaSquared { get; set; }
 
-    /// <summary>Specimens whose means were tested; null where every value stood for itself.</summary>
+    /// <summary>Specimens that were tested, readings of one averaged; null where none is recorded.</summary>
     public int? SpecimenCount { get; set; }
 
     /// <summary>Arrangements behind a permutation p-value: all there are, or the random draws; null for other tests.</summary>

@@ -14,4 +14,7 @@ public readonly ref struct CheckSubject
 
     /// <summary>Name of each group.</summary>
     public required IReadOnlyList<string> Labels { get; init; }
+
+    /// <summary>Where each value came from, in words that name it to people, as "line 41 of week-1.csv"; null where that is not known, or values are means.</summary>
+    public IReadOnlyList<string>? Places { get; init; }
 }

@@ -46,7 +46,8 @@ public sealed class Outliers : ExperimentCheck
         }
 
         (int farthest, int free) = Farthest(fit);
-        string value = $"{CheckText.ValueOf(subject.Units, farthest)} in {subject.Labels[subject.Units.Groups[farthest]]}";
+        string place = subject.Places is { } places ? $" ({places[farthest]})" : "";
+        string value = $"{CheckText.ValueOf(subject.Units, farthest)} in {subject.Labels[subject.Units.Groups[farthest]]}{place}";
         WideReal rest = MeanSquareWithout(subject.Units, fit, farthest);
         if (rest.Sign == 0)
         {

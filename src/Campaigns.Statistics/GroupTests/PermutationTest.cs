@@ -22,6 +22,9 @@ public sealed class PermutationTest : GroupTest
     public override string Name => "Permutation test of equal groups, F statistic";
 
     /// <inheritdoc/>
+    public override bool DrawsAtRandom => true;
+
+    /// <inheritdoc/>
     public override string Hypothesis => "Every value was as likely in any group: the groups share one distribution.";
 
     /// <inheritdoc/>
@@ -44,7 +47,7 @@ public sealed class PermutationTest : GroupTest
 
     /// <inheritdoc/>
     /// <exception cref="ArgumentOutOfRangeException">Fewer than one draw.</exception>
-    public override TestOutcome Test(GroupedSample sample, RandomDraws draws) => Test(sample, draws, 1, CancellationToken.None);
+    public override TestOutcome Test(GroupedSample sample, RandomDraws draws) => Test(sample, draws, 1, draws.Stop);
 
     /// <summary>Tests one experiment on several threads.</summary>
     /// <param name="sample">Its observations.</param>

@@ -9,6 +9,9 @@ public readonly record struct RandomDraws(ulong Seed, int Count)
 {
     /// <summary>99,999 draws from seed 1, for want of anything better.</summary>
     public static RandomDraws Usual { get; } = new(1, 99_999);
+
+    /// <summary>Ends the drawing early; the test then throws <see cref="OperationCanceledException"/>.</summary>
+    public CancellationToken Stop { get; init; }
 }
 
 /// <summary>The arrangements behind a permutation p-value.</summary>

@@ -8,7 +8,7 @@ namespace Campaigns.Statistics.GroupTests;
 /// <param name="ObservationCount">Values used, missing ones left out.</param>
 public abstract record TestOutcome(int GroupCount, int ObservationCount)
 {
-    /// <summary>Specimens, where several readings of one specimen were averaged before the test; null where every value stood for itself.</summary>
+    /// <summary>Specimens that were tested, readings of one averaged; null where none is recorded.</summary>
     public int? SpecimenCount { get; init; }
 
     /// <summary>How the values inside groups vary between specimens and within them; null where no specimen has several readings, or one stands in several groups.</summary>

@@ -13,13 +13,14 @@ public static class ExperimentalUnits
     /// <param name="test">The planned test.</param>
     /// <param name="readings">All its values, with their specimens where these are recorded.</param>
     /// <param name="draws">As in <see cref="GroupTest.Test(GroupedSample, RandomDraws)"/>.</param>
-    /// <returns>The outcome; <see cref="TestOutcome.ObservationCount"/> counts the readings, <see cref="TestOutcome.SpecimenCount"/> the means that were tested, and <see cref="TestOutcome.Specimens"/> says how readings and specimens vary.</returns>
+    /// <returns>The outcome; <see cref="TestOutcome.ObservationCount"/> counts the readings, <see cref="TestOutcome.SpecimenCount"/> the specimens that were tested, where any are recorded, and <see cref="TestOutcome.Specimens"/> says how readings and specimens vary.</returns>
     public static TestOutcome Test(GroupTest test, GroupedSample readings, RandomDraws draws)
     {
         ArgumentNullException.ThrowIfNull(test);
         if (SpecimenMeans.Of(readings) is not { } means)
         {
-            return test.Test(readings, draws);
+            TestOutcome plain = test.Test(readings, draws);
+            return readings.Specimens.IsEmpty ? plain : plain with { SpecimenCount = readings.Count };
         }
 
         NotTestableReason? obstacle =
