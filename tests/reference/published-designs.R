@@ -37,7 +37,7 @@ comparisons <- function(experiment, d, formula, method, control = NULL, level = 
   switch(method,
     "tukey" = { p <- ptukey(abs(t) * sqrt(2), k, df, lower.tail = FALSE); half <- qtukey(level, k, df) / sqrt(2); statistic <- t * sqrt(2) },
     "holm" = { p <- p.adjust(raw, "holm"); half <- qt(1 - (1 - level) / (2 * m), df); statistic <- t },
-    "scheffe" = { p <- pf(t^2 / (k - 1), k - 1, df, lower.tail = FALSE); half <- sqrt((k - 1) * qf(level, k - 1, df)); statistic <- t },
+    "scheffe" = { p <- pf(t^2 / (k - 1), k - 1, df, lower.tail = FALSE); half <- sqrt((k - 1) * qf(level, k - 1, df)); statistic <- t^2 / (k - 1) },
     "dunnett" = {
       n <- table(d$group)
       lambda <- as.numeric(sqrt(n[pairs[, 2]] / (n[pairs[, 2]] + n[[control]])))
