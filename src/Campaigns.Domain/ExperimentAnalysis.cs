@@ -101,7 +101,8 @@ public sealed record ExperimentAnalysis
         if (specimens is { } s)
         {
             string unmarked = s.UnmarkedCount > 0 ? FormattableString.Invariant($" {s.UnmarkedCount} reading(s) without a specimen were taken as one each.") : "";
-            return FormattableString.Invariant($"Readings of one specimen are not independent, so the analysis runs on the means of {s.SpecimenCount} specimens ({s.ReadingCount} readings, {s.FewestReadings} to {s.MostReadings} a specimen).{unmarked}");
+            string each = s.FewestReadings == s.MostReadings ? FormattableString.Invariant($"{s.MostReadings}") : FormattableString.Invariant($"{s.FewestReadings} to {s.MostReadings}");
+            return FormattableString.Invariant($"Readings of one specimen are not independent, so the analysis runs on the means of {s.SpecimenCount} specimens ({s.ReadingCount} readings, {each} a specimen).{unmarked}");
         }
 
         return readings.Specimens.IsEmpty ? UnitNotes.Repeats(plan, readings.Groups, readings.GroupCount) : null;

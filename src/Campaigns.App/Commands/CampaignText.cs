@@ -41,13 +41,18 @@ internal static class CampaignText
             lines.Add("Exploratory: the experiments were taken from the data, not from a plan made before it.");
         }
 
-        if (standing.AmendedCount > 0)
-        {
-            lines.Add(FormattableString.Invariant($"Deviations: {standing.AmendedCount} experiment(s) received values after they had been tested, had values left out, or were tested short of their plan; 'campaigns show {campaign.Code} EXPERIMENT' gives the reason."));
-        }
-
+        lines.AddRange(Deviations(standing));
         lines.Add(ReviewLine(standing));
         return lines;
+    }
+
+    /// <summary>A line on experiments that deviate from their plan; empty where none does.</summary>
+    public static IEnumerable<string> Deviations(CampaignOverview standing)
+    {
+        if (standing.AmendedCount > 0)
+        {
+            yield return FormattableString.Invariant($"Deviations: {standing.AmendedCount} experiment(s) received values after they had been tested, had values left out, or were tested short of their plan; 'campaigns show {standing.Campaign.Code} EXPERIMENT' gives the reason.");
+        }
     }
 
     private static IEnumerable<GroupTest> TestsOf(IEnumerable<string> keys)

@@ -46,7 +46,7 @@ internal sealed class CorrectionsVerb : Verb
             }))
         {
             Above = [FormattableString.Invariant($"{standing.Campaign.Code}: {standing.TestedCount} results in a family of {standing.FamilySize}, every correction at {level}")],
-            Below = ["The sealed correction alone decides what survives; choosing another after seeing this table would undo what a correction is for.", CampaignText.ReviewLine(standing.Overview)],
+            Below = ["The sealed correction alone decides what survives; choosing another after seeing this table would undo what a correction is for.", .. CampaignText.Deviations(standing.Overview), CampaignText.ReviewLine(standing.Overview)],
         };
     }
 
@@ -60,7 +60,7 @@ internal sealed class CorrectionsVerb : Verb
         return new RowTable(columns, tested.Select((e, row) => (Cell[])[Cell.Text(e.Plan.Code), Cell.P(e.P), .. adjusted.Select(a => Cell.P(a[row]))]))
         {
             Above = [FormattableString.Invariant($"{standing.Campaign.Code}: adjusted p-values in a family of {standing.FamilySize}")],
-            Below = [$"The sealed correction is {standing.Campaign.Correction}; it alone decides what survives.", CampaignText.ReviewLine(standing.Overview)],
+            Below = [$"The sealed correction is {standing.Campaign.Correction}; it alone decides what survives.", .. CampaignText.Deviations(standing.Overview), CampaignText.ReviewLine(standing.Overview)],
         };
     }
 

@@ -34,6 +34,11 @@ internal static class EffectSection
             yield return FormattableString.Invariant($"Intervals: {100 * e.Confidence:0.###} %, from the noncentral F law; they leave out 0 exactly where the F test alone would call the groups different at {standing.Campaign.Level}. Omega and epsilon squared are negative where F is below 1.{(isPartial ? " Within blocks all of them are partial: the blocks are left out." : "")}");
         }
 
+        if (detail.Analysis.Effects is not null && detail.Result.Plan.Test is not ("f" or "block-f"))
+        {
+            yield return "Effect sizes and their intervals come from the one-way table and assume equal spreads, whatever the planned test assumes.";
+        }
+
         if (detail.Analysis.DetectableAtStrictest is not null)
         {
             yield return FormattableString.Invariant($"Smallest detectable difference: between any two group means, with these group sizes and this residual standard deviation, found by the F test with a power of 0.8, at level {standing.Campaign.Level} alone and at the strictest threshold {standing.Campaign.Level}/{standing.FamilySize}. A smaller difference may well be there and not be shown.");

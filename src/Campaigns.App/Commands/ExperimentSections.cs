@@ -102,8 +102,10 @@ internal static class ExperimentSections
             ];
         }));
 
-    /// <summary>A row a comparison.</summary>
-    public static RowTable Comparisons(ExperimentDetail detail) => new(ComparisonsVerb.Columns, detail.Comparisons.Select(ComparisonsVerb.Row));
+    /// <summary>A row a comparison; people know the experiment and its follow-up from the headings above.</summary>
+    public static RowTable Comparisons(ExperimentDetail detail) => new(
+        [.. ComparisonsVerb.Columns.Select(c => c.Name is "experiment" or "follow_up" or "unit" ? c with { Heading = null } : c)],
+        detail.Comparisons.Select(ComparisonsVerb.Row));
 
     /// <summary>A row a decision about an observation.</summary>
     public static RowTable Exclusions(ExperimentDetail detail) => new(

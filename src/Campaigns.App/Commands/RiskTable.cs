@@ -28,6 +28,7 @@ internal static class RiskTable
             "Expected false: false positives to expect without any correction if nothing is real (tests times level), whatever the dependence. Risk: that there is at least one, for independent tests; at least, at most: its bounds whatever the dependence. Hits: experiments whose own p is at most the level; survive: those left by the correction.",
         };
         below.AddRange(campaigns.Select(c => $"{c.Campaign.Code}: {CampaignText.Goal(c.Campaign)}. {FamilyVerdict.CorrectionOf(c.Campaign).Guarantee}"));
+        below.AddRange(campaigns.SelectMany(c => CampaignText.Deviations(c).Select(d => $"{c.Campaign.Code}: {d}")));
         if (campaigns.Count > 1)
         {
             below.Add("What does not add up: a false discovery rate held in each campaign does not hold it for all their survivors together.");

@@ -1,6 +1,7 @@
 using System.CommandLine;
 using Campaigns.App.Dashboard.Canvas;
 using Campaigns.App.Output;
+using Campaigns.Catalog.Excluding;
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Results;
 using Campaigns.Domain;
@@ -59,6 +60,7 @@ internal sealed class ShowVerb : Verb
             ("files_loaded", "files loaded", Cell.Whole(loads.Count)),
             ("rows_loaded", "rows loaded", Cell.Whole(loads.Sum(l => l.RowCount))),
             ("amendments", "amendments", Cell.Whole(loads.Count(l => l.AmendmentReason is not null))),
+            ("exclusions", "left out", Cell.Whole(ExclusionStore.Standing(new ExclusionStore(catalog).All(campaign.Code)))),
             ("reviews", "reviews", Cell.Whole(standing.LastReview?.Number ?? 0)),
         };
         if (session.Format != RowFormat.Table)

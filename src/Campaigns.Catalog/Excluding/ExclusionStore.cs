@@ -52,6 +52,11 @@ public sealed class ExclusionStore(Catalog catalog)
         return [.. standing.Ids.Order().SelectMany(standing.Decisions)];
     }
 
+    /// <summary>How many observations are left out as things stand: of each the latest decision counts.</summary>
+    /// <param name="decisions">Decisions, oldest first.</param>
+    public static int Standing(IReadOnlyList<ExcludedObservation> decisions) =>
+        decisions.GroupBy(d => (d.Experiment, d.File, d.Line)).Count(d => d.Last().IsExcluded);
+
     private long IdOf(StoredCampaign stored, string experiment)
     {
         using SqliteStatement select = catalog.Prepare("SELECT id FROM experiments WHERE campaign_id = ?1 AND code = ?2");

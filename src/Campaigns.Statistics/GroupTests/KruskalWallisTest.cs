@@ -8,7 +8,7 @@ namespace Campaigns.Statistics.GroupTests;
 /// With midranks, rank sums R_i, and t values in each tie: H = [12/(N (N + 1)) sum of R_i^2/n_i - 3 (N + 1)]/[1 - sum of (t^3 - t)/(N^3 - N)].
 /// Formed as 3 (N - 1) sum of d_i^2/n_i over N^3 - N - sum of (t^3 - t), d_i = 2 R_i - n_i (N + 1): integers all, positive terms, one rounding at the end.
 /// The p-value is the upper tail of the chi-squared law with k - 1 degrees of freedom, which H approaches as the groups grow.
-/// Cost: sorting, about N log2 N times 10 ns, and about 1 us an experiment; allocates nothing for each value.
+/// Cost: sorting, about N log2 N times 5 ns, and about 1 us an experiment; allocates nothing for each value.
 /// </remarks>
 public sealed class KruskalWallisTest : GroupTest
 {

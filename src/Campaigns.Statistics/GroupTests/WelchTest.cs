@@ -8,7 +8,7 @@ namespace Campaigns.Statistics.GroupTests;
 /// <remarks>
 /// With w_i = n_i/s_i^2, W their sum and m = sum of w_i mean_i/W: F = [sum of w_i (mean_i - m)^2/(k - 1)]/[1 + 2 (k - 2) T/(k^2 - 1)], T = sum of (1 - w_i/W)^2/(n_i - 1), with k - 1 and (k^2 - 1)/(3T) degrees of freedom, the latter fractional.
 /// Means are taken as exact differences from that of the heaviest group: the term of that group alone is at least 1/k of W m^2, so that the sum of squares about m keeps about 31 of 32 digits whatever the weights and the offset.
-/// Cost: one pass over the values, about 2 ns each, and about 1 us an experiment; allocates nothing for each value.
+/// Cost: one pass over the values, about 2 ns each, and about 4 us an experiment of five groups; allocates nothing for each value.
 /// </remarks>
 public sealed class WelchTest : GroupTest
 {
