@@ -87,7 +87,8 @@ internal static class ExperimentShow
         }
         else
         {
-            string verdict = result.Survives == true ? "It survives: evidence that not all group means are equal." : "It does not survive: no difference shown, which is not the same as no difference.";
+            // Each test has its own hypothesis: ranks and permutations say nothing of means alone.
+            string verdict = result.Survives == true ? $"It survives: evidence against the hypothesis \"{GroupTestRegistry.Find(result.Plan.Test)?.Hypothesis}\"" : "It does not survive: no difference shown, which is not the same as no difference.";
             yield return $"p = {NumberText.P(p)}, adjusted p = {NumberText.P(result.AdjustedP!.Value)}. {verdict}";
         }
 

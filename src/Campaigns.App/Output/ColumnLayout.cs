@@ -14,7 +14,7 @@ internal sealed record ColumnLayout(IReadOnlyList<int> Shown, IReadOnlyList<int>
     /// <summary>Text columns give way down to this, before columns are left out.</summary>
     private const int LeastText = 8;
 
-    /// <summary>The first column names the row: a cut name could be another's.</summary>
+    /// <summary>The first column names the row, and others name something too: a cut name could be another's.</summary>
     private const int LeastName = 24;
 
     /// <summary>The layout for a width.</summary>
@@ -30,13 +30,21 @@ internal sealed record ColumnLayout(IReadOnlyList<int> Shown, IReadOnlyList<int>
             wanted[c] = Math.Max(CellText.Width(columns[c].Heading!), rows.Max(r => CellText.Width(r[c])));
         }
 
-        int Least(int c) => columns[c].IsNumeric ? wanted[c] : Math.Min(wanted[c], c == shown[0] ? LeastName : LeastText);
+        bool keepsNames = true;
+        int Least(int c) => columns[c].IsNumeric ? wanted[c] : Math.Min(wanted[c], c == shown[0] || (columns[c].IsName && keepsNames) ? LeastName : LeastText);
         int Room() => width - (Gap * (shown.Count - 1));
         List<int> leftOut = [];
         while (shown.Count > 1 && shown.Sum(Least) > Room())
         {
             // Of all but the first the least important goes, the last of several.
             int goes = shown.Skip(1).OrderByDescending(c => columns[c].GivesWay).ThenByDescending(c => c).First();
+            if (columns[goes].GivesWay == 0 && keepsNames)
+            {
+                // No column of weight goes for the sake of names but the first.
+                keepsNames = false;
+                continue;
+            }
+
             shown.Remove(goes);
             leftOut.Add(goes);
         }

@@ -5,7 +5,8 @@ namespace Campaigns.App.Output;
 /// <param name="Heading">Heading for people; null where the column is for scripts alone.</param>
 /// <param name="IsNumeric">Whether it is set to the right.</param>
 /// <param name="GivesWay">Where a line has no room for all columns, those with the greatest number go first; among equals the last.</param>
-internal sealed record Column(string Name, string? Heading, bool IsNumeric = false, int GivesWay = 0);
+/// <param name="IsName">Whether its text names something and is cut last, as the first column's: a cut name could be another's.</param>
+internal sealed record Column(string Name, string? Heading, bool IsNumeric = false, int GivesWay = 0, bool IsName = false);
 
 /// <summary>Rows to print, in whichever format was asked for.</summary>
 /// <param name="Columns">The columns, in order.</param>
