@@ -82,7 +82,7 @@ public sealed class SpecimenMeansTests
         Assert.Null(SpecimenMeans.Of(new GroupedSample([1L, 2, 3], 0, [0, 1, 1], 2) { Specimens = [3, 4, -1] }));
         Assert.Null(SpecimenVariation.Of(new GroupedSample([1L, 2, 3], 0, [0, 1, 1], 2) { Specimens = [3, 4, -1] }));
         TestOutcome outcome = ExperimentalUnits.Test(new FTest(), new GroupedSample([1L, 2, 3], 0, [0, 1, 1], 2) { Specimens = [3, 4, -1] }, RandomDraws.Usual);
-        Assert.Null(outcome.SpecimenCount);
+        Assert.Equal(3, outcome.SpecimenCount);
         Assert.Null(outcome.Specimens);
     }
 
