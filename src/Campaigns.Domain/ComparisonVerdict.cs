@@ -14,6 +14,7 @@ public sealed class ComparisonVerdict(Campaign campaign, int familySize, int sur
     /// <summary>What is held, in a sentence.</summary>
     public string Guarantee => campaign.ErrorRate == ErrorRate.Familywise
         ? FormattableString.Invariant($"Comparisons are claimed only inside surviving experiments, each experiment's at level {campaign.Level}/{familySize}: the probability of any false comparison in the campaign is at most {campaign.Level} (union bound).")
+        : survivors == 0 ? FormattableString.Invariant($"Comparisons are claimed only inside surviving experiments; none of the {familySize} survives.")
         : FormattableString.Invariant($"Comparisons are claimed only inside the {survivors} surviving of {familySize} experiments, at level {campaign.Level} x {survivors}/{familySize}: the expected error inside them, averaged over the survivors, is at most {campaign.Level} (Benjamini and Bogomolov 2014; for independent experiments).");
 
     /// <summary>The comparisons of one experiment, judged.</summary>

@@ -1,8 +1,8 @@
 using System.CommandLine;
 using Campaigns.App.Output;
+using Campaigns.App.Wording;
 using Campaigns.Catalog.Results;
 using Campaigns.Domain;
-using Campaigns.Statistics.FollowUps;
 
 namespace Campaigns.App.Commands;
 
@@ -24,7 +24,7 @@ internal sealed class ComparisonsVerb : Verb
         session.Print(new RowTable(Columns, new ComparisonReader(catalog).All(standing).Select(Row))
         {
             Above = [$"{standing.Campaign.Code}: {CampaignText.Goal(standing.Campaign)}"],
-            Below = [.. Footnotes(standing.Overview, standing.Experiments.Select(e => e.Plan.FollowUp)), .. CampaignText.Footnotes(standing.Overview, standing.Experiments.Select(e => e.Plan.Test)), .. UnitNotes.Of(standing.Experiments)],
+            Below = [.. ExperimentWording.Comparisons(standing.Overview, standing.Experiments.Select(e => e.Plan.FollowUp)), .. CampaignText.Footnotes(standing.Overview, standing.Experiments.Select(e => e.Plan.Test)), .. UnitNotes.Of(standing.Experiments)],
             WhenEmpty = "There is no comparison: no experiment with a result names a follow-up in its plan.",
         });
         return ExitCode.Done;
@@ -43,20 +43,4 @@ internal sealed class ComparisonsVerb : Verb
         Cell.Number(c.Comparison.Lower), Cell.Number(c.Comparison.Upper), Cell.Number(c.Comparison.Statistic), Cell.P(c.Comparison.P), Cell.P(c.AdjustedP),
         Cell.Truth(c.Survives), Cell.Text(c.Experiment.Plan.FollowUp), Cell.Degrees(c.Comparison.DegreesOfFreedom), Cell.Text(c.Experiment.Plan.Unit), Cell.Text(c.NotClaimedBecause),
     ];
-
-    /// <summary>What the comparisons hold, and under which assumptions.</summary>
-    public static IEnumerable<string> Footnotes(CampaignOverview standing, IEnumerable<string> followUps)
-    {
-        string[] used = [.. followUps.Distinct().Order(StringComparer.Ordinal)];
-        foreach (FollowUp followUp in FollowUpRegistry.All.Where(f => used.Contains(f.Key)))
-        {
-            yield return $"{followUp.Name}: {followUp.Holds} Assumes: {char.ToLowerInvariant(followUp.Assumes[0])}{followUp.Assumes[1..]}";
-        }
-
-        if (used.Any(f => f != FollowUpRegistry.None))
-        {
-            yield return new ComparisonVerdict(standing.Campaign, standing.FamilySize, standing.SurvivorCount).Guarantee;
-            yield return FormattableString.Invariant($"Intervals hold together inside one experiment at {100 * (1 - standing.Campaign.Level.Value):0.###} %; they are not widened for the selection of the experiment.");
-        }
-    }
 }

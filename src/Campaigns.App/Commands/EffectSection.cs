@@ -20,31 +20,6 @@ internal static class EffectSection
             .. Difference("smallest detectable difference at the strictest threshold", detail.Analysis.DetectableAtStrictest),
         ]);
 
-    /// <summary>What the figures mean.</summary>
-    public static IEnumerable<string> Notes(CampaignStanding standing, ExperimentDetail detail)
-    {
-        bool isPartial = detail.Variation?.Blocks is not null;
-        if (detail.Variation is { } v)
-        {
-            yield return $"Residual standard deviation {NumberText.Screen(v.ResidualStandardDeviation, 5)} {detail.Result.Plan.Unit}".TrimEnd() + ".";
-        }
-
-        if (detail.Analysis.Effects is { } e)
-        {
-            yield return FormattableString.Invariant($"Intervals: {100 * e.Confidence:0.###} %, from the noncentral F law; they leave out 0 exactly where the F test alone would call the groups different at {standing.Campaign.Level}. Omega and epsilon squared are negative where F is below 1.{(isPartial ? " Within blocks all of them are partial: the blocks are left out." : "")}");
-        }
-
-        if (detail.Analysis.Effects is not null && detail.Result.Plan.Test is not ("f" or "block-f"))
-        {
-            yield return "Effect sizes and their intervals come from the one-way table and assume equal spreads, whatever the planned test assumes.";
-        }
-
-        if (detail.Analysis.DetectableAtStrictest is not null)
-        {
-            yield return FormattableString.Invariant($"Smallest detectable difference: between any two group means, with these group sizes and this residual standard deviation, found by the F test with a power of 0.8, at level {standing.Campaign.Level} alone and at the strictest threshold {standing.Campaign.Level}/{standing.FamilySize}. A smaller difference may well be there and not be shown.");
-        }
-    }
-
     private static Cell[] Row(string name, double value, Interval? interval) =>
         [Cell.Text(name), Cell.Number(value), Cell.Number(interval?.Lower), Cell.Number(interval?.Upper)];
 
@@ -58,11 +33,23 @@ internal static class EffectSection
             return null;
         }
 
-        double df1 = result.GroupCount - 1;
-        double df2 = result.Plan.Test == "block-f" ? result.Df2!.Value : (result.SpecimenCount ?? result.ObservationCount) - result.GroupCount;
+        (double df1, double df2) = DegreesOfFreedom(result);
         return eta - (df1 / df2 * (1 - eta));
     }
 
-    /// <summary>Cohen's f from the stored eta squared; null without a result.</summary>
-    public static double? CohenF(ExperimentResult result) => result.EtaSquared is { } eta ? Math.Sqrt(eta / (1 - eta)) : null;
+    /// <summary>Cohen's f, the root of the ratio of both sums of squares; null without a result.</summary>
+    /// <remarks>From F where the test's statistic is F: 1 less an eta squared near 1 has lost its digits. Elsewhere from the stored eta squared.</remarks>
+    public static double? CohenF(ExperimentResult result)
+    {
+        if (result.EtaSquared is not { } eta)
+        {
+            return null;
+        }
+
+        (double df1, double df2) = DegreesOfFreedom(result);
+        return Math.Sqrt(result is { Plan.Test: "f" or "block-f" or "permutation", Statistic: { } f } ? f * (df1 / df2) : eta / (1 - eta));
+    }
+
+    private static (double Df1, double Df2) DegreesOfFreedom(ExperimentResult result) =>
+        (result.GroupCount - 1, result.Plan.Test == "block-f" ? result.Df2!.Value : (result.SpecimenCount ?? result.ObservationCount) - result.GroupCount);
 }

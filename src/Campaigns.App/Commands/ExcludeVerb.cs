@@ -10,11 +10,13 @@ internal sealed class ExcludeVerb : Verb
 {
     private readonly Argument<string> _code = SharedOptions.Code();
     private readonly Argument<string> _experiment = TypedOptions.NotBlank(new Argument<string>("EXPERIMENT") { Description = "The experiment." });
-    private readonly Option<int> _line = new("--line") { Description = "Line of the observation in the file that brought it, as 'campaigns export' and the checks of 'campaigns show' name it.", HelpName = "N", Required = true };
+    private readonly Option<int> _line = TypedOptions.Whole("--line", 1, "Line of the observation in the file that brought it, as 'campaigns export' and the checks of 'campaigns show' name it.");
     private readonly Option<string?> _file = TypedOptions.NotBlank(new Option<string?>("--file") { Description = "That file, where several hold a value of the experiment on this line.", HelpName = "NAME" });
     private readonly Option<string> _reason = TypedOptions.NotBlank(new Option<string>("--reason") { Description = "Why; recorded and shown wherever the experiment is.", HelpName = "TEXT", Required = true });
     private readonly Option<string> _as = TypedOptions.NotBlank(new Option<string>("--as") { Description = "Who says so; recorded and shown.", HelpName = "NAME", Required = true });
     private readonly Option<bool> _takeBack = new("--take-back") { Description = "Take an excluded observation in again; that too is recorded." };
+
+    public ExcludeVerb() => _line.Required = true;
 
     public override Command Build() => new("exclude", Describe("Leave one observation out of the analysis, with a reason and a name. The value is kept, results with and without it are shown, and every output of the experiment says so.",
         "exclude PRIMERS E07 --line 41 --reason \"panel dropped\" --as \"A. Moss\""))

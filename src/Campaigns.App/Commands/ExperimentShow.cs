@@ -1,4 +1,5 @@
 using Campaigns.App.Output;
+using Campaigns.App.Wording;
 using Campaigns.Domain;
 using Campaigns.Statistics.Checks;
 using Campaigns.Statistics.FollowUps;
@@ -42,7 +43,7 @@ internal static class ExperimentShow
             [
                 $"{standing.Campaign.Code} / {result.Plan.Code}  {result.Plan.Title}",
                 $"Response: {(result.Plan.Response.Length > 0 ? result.Plan.Response : "not named")}{unit}. Status: {result.Status.Sentence()}.{Missing(detail)}",
-                .. result.Amendments.Select(reason => $"Deviation from the plan: {reason}."),
+                .. result.Amendments.Select(ExperimentWording.Deviation),
                 .. detail.Analysis.UnitsNote is { } note ? [note] : (string[])[],
             ],
             Below = GroupNotes(detail),
@@ -50,9 +51,9 @@ internal static class ExperimentShow
         Section(session, "Variation", ExperimentSections.Variation(detail), []);
         Section(session, "Specimens", ExperimentSections.Specimens(detail), []);
         Section(session, "Test", ExperimentSections.Tests(detail), TestNotes(standing, detail));
-        Section(session, "Effects", EffectSection.Table(detail), EffectSection.Notes(standing, detail));
+        Section(session, "Effects", EffectSection.Table(detail), ExperimentWording.Effects(standing, detail));
         ChecksForPeople(session, detail);
-        Section(session, $"Comparisons ({FollowUpRegistry.Find(result.Plan.FollowUp)?.Name})", ExperimentSections.Comparisons(detail), ComparisonNotes(standing, detail));
+        Section(session, $"Comparisons ({FollowUpRegistry.Find(result.Plan.FollowUp)?.Name})", ExperimentSections.Comparisons(detail), ExperimentWording.Comparisons(standing.Overview, [result.Plan.FollowUp]));
         Section(session, "Exclusions", ExperimentSections.Exclusions(detail), []);
         session.Host.Out.WriteLine();
         TextTable.Sentences(session.Host, [.. CampaignText.Footnotes(standing.Overview, []), CampaignText.Caution]);
@@ -72,10 +73,8 @@ internal static class ExperimentShow
 
     private static string[] GroupNotes(ExperimentDetail detail) =>
     [
-        .. detail.Groups.Any(g => g.Summary.Lower is not null)
-            ? [FormattableString.Invariant($"Intervals: {100 * detail.Confidence:0.#} % for each mean alone, from the group's own standard deviation and Student's t.")]
-            : (string[])[],
-        .. detail.Analysis.Letters is not null ? ["Letters: groups that share one are not told apart by the follow-up, which is not the same as alike."] : (string[])[],
+        .. ExperimentWording.MeanIntervals(detail) is { } intervals ? [intervals] : (string[])[],
+        .. detail.Analysis.Letters is not null ? [ExperimentWording.Letters] : (string[])[],
     ];
 
     private static IEnumerable<string> TestNotes(CampaignStanding standing, ExperimentDetail detail)
@@ -83,18 +82,16 @@ internal static class ExperimentShow
         ExperimentResult result = detail.Result;
         if (result.P is not { } p)
         {
-            yield return "No result: the experiment counts as p = 1 in its family.";
+            yield return ExperimentWording.NoResult;
         }
         else
         {
-            // Each test has its own hypothesis: ranks and permutations say nothing of means alone.
-            string verdict = result.Survives == true ? $"It survives: evidence against the hypothesis \"{GroupTestRegistry.Find(result.Plan.Test)?.Hypothesis}\"" : "It does not survive: no difference shown, which is not the same as no difference.";
-            yield return $"p = {NumberText.P(p)}, adjusted p = {NumberText.P(result.AdjustedP!.Value)}. {verdict}";
+            yield return $"p = {NumberText.P(p)}, adjusted p = {NumberText.P(result.AdjustedP!.Value)}. {ExperimentWording.Verdict(result)}";
         }
 
         if (GroupTestRegistry.Find(result.Plan.Test) is { } test)
         {
-            yield return $"{test.Name}, assumes: {char.ToLowerInvariant(test.Assumes[0])}{test.Assumes[1..]} Source: {test.Source}";
+            yield return ExperimentWording.Assumptions(test);
         }
 
         if (result.Resampling is { } resampling)
@@ -108,12 +105,9 @@ internal static class ExperimentShow
 
         if (detail.Analysis.Beside is not null)
         {
-            yield return "Welch's F does not assume equal spreads; it is shown, not chosen: the plan names the test. Ranks do not cure unequal spreads.";
+            yield return ExperimentWording.Beside;
         }
     }
-
-    private static IEnumerable<string> ComparisonNotes(CampaignStanding standing, ExperimentDetail detail) =>
-        ComparisonsVerb.Footnotes(standing.Overview, [detail.Result.Plan.FollowUp]);
 
     private static void ChecksForPeople(Session session, ExperimentDetail detail)
     {
@@ -123,11 +117,11 @@ internal static class ExperimentShow
         }
 
         session.Host.Out.WriteLine();
-        TextTable.Sentences(session.Host, ["Checks (advice; none changes the test)"]);
+        TextTable.Sentences(session.Host, [$"Checks ({ExperimentWording.ChecksAreAdvice})"]);
         foreach (CheckLine line in detail.Analysis.Checks)
         {
             ExperimentCheck check = CheckRegistry.Find(line.Key)!;
-            string word = line.Finding.Verdict switch { CheckVerdict.Warns => "WARNS", CheckVerdict.Quiet => "quiet", _ => "not possible" };
+            string word = line.Finding.Verdict == CheckVerdict.Warns ? "WARNS" : ExperimentWording.Word(line.Finding.Verdict);
             string rest = line.Finding.Verdict == CheckVerdict.NotPossible ? "" : $" {check.CannotSee}{(line.Finding.Verdict == CheckVerdict.Warns ? $" {check.Advice}" : "")}";
             TextTable.Sentences(session.Host, [$"- {line.Name} ({word}): {line.Finding.Saw}{rest}"]);
         }

@@ -25,7 +25,13 @@ internal sealed class ExportVerb : Verb
         CampaignStanding standing = new StandingReader(catalog).Read(session.Get(_code));
         var export = new CampaignExport(catalog);
         export.Write(standing, folder, writer => WriteResults(standing, writer), NumberText.RoundTrip);
-        session.Say($"Wrote {standing.Campaign.Code} to '{folder}': campaign.json, {(standing.Campaign.IsExploratory ? "" : "plan.csv, ")}measurements/{CampaignExport.MeasurementsName}, {CampaignExport.ResultsName}, {CampaignExport.ReviewsName}.");
+        bool hasExclusions = File.Exists(Path.Combine(folder, CampaignExport.ExclusionsName));
+        session.Say($"Wrote {standing.Campaign.Code} to '{folder}': campaign.json, {(standing.Campaign.IsExploratory ? "" : "plan.csv, ")}measurements/{CampaignExport.MeasurementsName}, {(hasExclusions ? $"{CampaignExport.ExclusionsName}, " : "")}{CampaignExport.ResultsName}, {CampaignExport.ReviewsName}.");
+        if (hasExclusions)
+        {
+            session.Say($"The measurements hold the excluded values too; 'campaigns run' does not exclude them again, {CampaignExport.ExclusionsName} tells which they are.");
+        }
+
         session.PrintForScripts(new RowTable([new Column("campaign", null), new Column("folder", null)], [[Cell.Text(standing.Campaign.Code), Cell.Text(folder)]]));
         return ExitCode.Done;
     }

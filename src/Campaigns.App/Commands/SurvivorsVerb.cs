@@ -1,5 +1,6 @@
 using System.CommandLine;
 using Campaigns.App.Output;
+using Campaigns.App.Wording;
 using Campaigns.Catalog.Results;
 using Campaigns.Domain;
 
@@ -63,7 +64,7 @@ internal sealed class SurvivorsVerb : Verb
         var claims = new RowTable(ComparisonsVerb.Columns, listed.SelectMany(e => comparisons[e.Plan.Code]).Where(c => c.Survives == true).Select(ComparisonsVerb.Row))
         {
             Above = ["Comparisons claimed inside the survivors"],
-            Below = [.. ComparisonsVerb.Footnotes(overview, listed.Select(e => e.Plan.FollowUp))],
+            Below = [.. ExperimentWording.Comparisons(overview, listed.Select(e => e.Plan.FollowUp))],
         };
         return new Survivors(rows, claims, overview);
     }

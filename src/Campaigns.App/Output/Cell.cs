@@ -58,8 +58,8 @@ internal readonly struct Cell
     /// <summary>A count; exact up to 2^53.</summary>
     public static Cell Whole(long? value) => value is { } given ? new Cell(CellKind.Whole, given) : Empty;
 
-    /// <summary>A number; one beyond the range of doubles is left out.</summary>
-    public static Cell Number(double? value) => value is { } given && double.IsFinite(given) ? new Cell(CellKind.Number, given) : Empty;
+    /// <summary>A number; one beyond the range of doubles, for which the largest double stands, is left out.</summary>
+    public static Cell Number(double? value) => value is { } given && Math.Abs(given) < double.MaxValue ? new Cell(CellKind.Number, given) : Empty;
 
     /// <summary>A number that somebody chose, such as a level: people see it as it was typed, not rounded to a column's digits.</summary>
     public static Cell Setting(double value) => new(CellKind.Number, value, NumberText.RoundTrip(value));

@@ -28,6 +28,9 @@ public sealed class GamesHowell : FollowUp
     public override string Source => "P. A. Games and J. F. Howell (1976), Journal of Educational Statistics 1:113-125; degrees of freedom: B. L. Welch (1938), Biometrika 29:350-362.";
 
     /// <inheritdoc/>
+    public override bool WorksWithinBlocks => false;
+
+    /// <inheritdoc/>
     public override IReadOnlyList<GroupComparison> Compare(GroupEstimates estimates, int? control, double confidence)
     {
         double risk = Pairing.Risk(confidence);

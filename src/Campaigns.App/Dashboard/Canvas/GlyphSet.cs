@@ -16,6 +16,7 @@ public sealed record GlyphSet
         Left = "[",
         Right = "]",
         Across = "-",
+        Crossing = "+",
         Upright = "|",
         Corner = "+",
         TickDown = "+",
@@ -53,6 +54,9 @@ public sealed record GlyphSet
     /// <summary>A horizontal line.</summary>
     public string Across { get; private init; } = "─";
 
+    /// <summary>A horizontal line that crosses a vertical one.</summary>
+    public string Crossing { get; private init; } = "┼";
+
     /// <summary>A vertical line.</summary>
     public string Upright { get; private init; } = "│";
 
@@ -88,6 +92,9 @@ public sealed record GlyphSet
 
     /// <summary>Between two facts on a line.</summary>
     public string Between { get; private init; } = "·";
+
+    /// <summary>Something that warns.</summary>
+    public string Warns { get; private init; } = "!";
 
     /// <summary>Multiplication.</summary>
     public string Times { get; private init; } = "×";

@@ -1,5 +1,6 @@
 using Campaigns.Domain;
 using Campaigns.Statistics.Corrections;
+using Campaigns.Statistics.GroupTests;
 
 namespace Campaigns.App.Dashboard.Model;
 
@@ -8,6 +9,9 @@ namespace Campaigns.App.Dashboard.Model;
 public sealed class DashboardModel
 {
     private const int KeptDetails = 64;
+
+    // Some 0.02 s of checks and sorting.
+    private const int ManyValues = 20_000;
     private readonly DashboardSource _source;
     private readonly Func<string, Correction?> _findCorrection;
     private readonly Dictionary<string, ExperimentDetail> _details = [];
@@ -75,6 +79,13 @@ public sealed class DashboardModel
     /// <summary>The experiment in a row.</summary>
     /// <param name="row">Row from 0.</param>
     public ExperimentResult RowAt(int row) => Standing.Experiments[_rows[row]];
+
+    /// <summary>Whether the selected experiment in full must first be computed, and that may take a good part of a second: a permutation test draws up to millions of arrangements, and checks sort every value.</summary>
+    public bool IsSelectedDetailSlow =>
+        Selected is { } selected
+        && !_details.ContainsKey(selected.Plan.Code)
+        && selected.ObservationCount > 0
+        && (selected.ObservationCount > ManyValues || GroupTestRegistry.Find(selected.Plan.Test)?.DrawsAtRandom == true);
 
     /// <summary>The selected experiment in full; null where no row is shown.</summary>
     public ExperimentDetail? SelectedDetail()

@@ -21,6 +21,7 @@ public sealed class ExperimentsPage : DashboardPage
     private const int FilterLabel = 7;
     private const int FilterWidth = 22;
     private const int NoteRows = 2;
+    private static readonly TimeSpan Standstill = TimeSpan.FromMilliseconds(250);
 
     private readonly Label _filterName = new() { Text = "filter", Width = FilterLabel };
     private readonly TextField _filter = new() { X = FilterLabel, Width = FilterWidth, Height = 1 };
@@ -36,6 +37,7 @@ public sealed class ExperimentsPage : DashboardPage
     private int _top;
     private int _listHeight = 1;
     private int _detailOf = -1;
+    private int _awaited = -1;
     private bool _isDetailOpen;
 
     /// <summary>Makes the page.</summary>
@@ -303,13 +305,45 @@ public sealed class ExperimentsPage : DashboardPage
             _scroll.ToTop();
         }
 
+        if (Model.IsSelectedDetailSlow)
+        {
+            AwaitStandstill();
+            return DetailPainter.PaintBefore(Model.Selected!, Model.Heading, Math.Max(20, width), Glyphs);
+        }
+
         if (Model.SelectedDetail() is { } detail)
         {
-            return DetailPainter.Paint(detail, Model.Heading, Math.Max(20, width), Glyphs);
+            return DetailPainter.Paint(detail, Model.Standing, Model.Heading, Math.Max(20, width), Glyphs);
         }
 
         TextCanvas canvas = new(width, 1);
         canvas.Write(0, 0, "No experiment is selected.", Ink.Quiet);
         return canvas;
+    }
+
+    // Who pages through the list is not kept waiting for details that nobody reads.
+    private void AwaitStandstill()
+    {
+        int position = Model.SelectedPosition;
+        if (_awaited == position)
+        {
+            return;
+        }
+
+        _awaited = position;
+        App?.AddTimeout(Standstill, () =>
+        {
+            if (_awaited == position)
+            {
+                _awaited = -1;
+                if (Model.SelectedPosition == position && _detail.Visible)
+                {
+                    Model.SelectedDetail();
+                    ShowChange();
+                }
+            }
+
+            return false;
+        });
     }
 }

@@ -2,7 +2,7 @@ using Campaigns.App.Output;
 using Campaigns.Domain;
 using Campaigns.Statistics.GroupTests;
 
-namespace Campaigns.App.Commands;
+namespace Campaigns.App.Wording;
 
 /// <summary>The arrangements behind a permutation p-value, in words.</summary>
 internal static class ResamplingText
