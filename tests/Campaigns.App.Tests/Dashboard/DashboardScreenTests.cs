@@ -1,4 +1,5 @@
 using System.Globalization;
+using Campaigns.App.Dashboard;
 using Campaigns.App.Dashboard.Model;
 using Campaigns.App.Dashboard.Paint;
 using Campaigns.Domain;
@@ -57,7 +58,7 @@ public sealed class DashboardScreenTests
     [Fact]
     public void Every_number_in_the_detail_reads_back_as_the_models()
     {
-        using TestScreen screen = new(120, 60, Standing);
+        using TestScreen screen = new(120, 200, Standing);
         ExperimentDetail detail = SampleCampaign.Detail(Standing.Experiments[1]);
         screen.Press(Key.CursorDown);
         string[] lines = [.. screen.Lines.Select(l => l.Contains('│', StringComparison.Ordinal) ? l[(l.IndexOf('│', StringComparison.Ordinal) + 1)..].Trim() : l)];
@@ -108,6 +109,35 @@ public sealed class DashboardScreenTests
         Assert.Equal(1, screen.Model.Page);
         screen.Press(Key.Q);
         Assert.True(screen.IsStopped);
+    }
+
+    [Fact]
+    public void Paging_past_slow_experiments_computes_none_until_the_list_stands_still()
+    {
+        CampaignStanding sample = SampleCampaign.Standing(12, withoutResult: 0), slow = sample with { Experiments = [.. sample.Experiments.Select(e => e with { Plan = e.Plan with { Test = "permutation" } })] };
+        List<string> computed = [];
+        DashboardSource source = SampleCampaign.Source(slow);
+        using TestScreen screen = new(120, 40, source with
+        {
+            Detail = code =>
+            {
+                computed.Add(code);
+                return source.Detail(code);
+            },
+        });
+        for (int i = 0; i < 9; i++)
+        {
+            screen.Press(Key.CursorDown).Wait(TimeSpan.FromMilliseconds(30));
+        }
+
+        Assert.Empty(computed);
+        Assert.Contains("│ E10: ", screen.Text, StringComparison.Ordinal);
+        Assert.Contains("it follows once", screen.Text, StringComparison.Ordinal);
+        Assert.Contains("values by group", screen.Wait(TimeSpan.FromSeconds(1)).Text, StringComparison.Ordinal);
+        Assert.Equal(["E10"], computed);
+        screen.Press(Key.CursorUp).Wait(TimeSpan.FromSeconds(1)).Press(Key.CursorDown);
+        Assert.Equal(["E10", "E9"], computed);
+        Assert.Contains("values by group", screen.Text, StringComparison.Ordinal);
     }
 
     [Fact]

@@ -83,7 +83,7 @@ public sealed class PictureTests
         DashboardModel model = new(SampleCampaign.Source(standing), SampleCampaign.Find);
         Assert.Equal((width, height), Size(RankingPlot.Paint(model.Ranking, 1, false, width, height, GlyphSet.Full)));
         Assert.Equal((width, height), Size(ListPainter.Paint(model, new ListLayout(standing.Experiments), 0, width, height, GlyphSet.Full)));
-        Assert.Equal(width, DetailPainter.Paint(model.SelectedDetail()!, model.Heading, width, GlyphSet.Full).Width);
+        Assert.Equal(width, DetailPainter.Paint(model.SelectedDetail()!, model.Standing, model.Heading, width, GlyphSet.Full).Width);
         Assert.Equal(width, HeadingPainter.Paint(model.Heading, width, GlyphSet.Full).Width);
         Assert.Equal(width, HelpPainter.Paint(model, width, GlyphSet.Full).Width);
     }
@@ -103,7 +103,7 @@ public sealed class PictureTests
     {
         DashboardModel model = new(SampleCampaign.Source(SampleCampaign.Standing(3)), SampleCampaign.Find);
         string all = RankingPlot.Paint(model.Ranking, 1, false, 80, 20, GlyphSet.Ascii) + RankingPlot.Key(model.Ranking, GlyphSet.Ascii)
-            + DetailPainter.Paint(model.SelectedDetail()!, model.Heading, 80, GlyphSet.Ascii) + HelpPainter.Paint(model, 80, GlyphSet.Ascii)
+            + DetailPainter.Paint(model.SelectedDetail()!, model.Standing, model.Heading, 80, GlyphSet.Ascii) + HelpPainter.Paint(model, 80, GlyphSet.Ascii)
             + ListPainter.Paint(model, new ListLayout(model.Standing.Experiments), 0, 80, 10, GlyphSet.Ascii);
         Assert.DoesNotContain(all, c => c > '~');
     }

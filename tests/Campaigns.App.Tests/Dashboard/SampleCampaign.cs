@@ -4,13 +4,19 @@ using Campaigns.Domain;
 using Campaigns.Statistics.Corrections;
 using Campaigns.Statistics.GroupTests;
 using Campaigns.Statistics.Probability;
+using Campaigns.Statistics.Units;
 
 namespace Campaigns.App.Tests.Dashboard;
 
-/// <summary>Invented campaigns put together by hand: their figures are whole and plausible, not computed by the product.</summary>
+/// <summary>Invented campaigns put together by hand: the results in the list are plausible, not computed by the product; the analysis in the detail is computed from invented values.</summary>
 internal static class SampleCampaign
 {
     public const string Hostile = "evil\u001b[31m\u202egpj_name\r\n";
+
+    /// <summary>Experiments of the campaign that the details belong to.</summary>
+    public const int Family = 48;
+
+    private const int Survivors = 8;
 
     private static readonly ExperimentStatus[] NoResults =
         [ExperimentStatus.Planned, ExperimentStatus.Incomplete, ExperimentStatus.Ready, ExperimentStatus.TooFewGroups, ExperimentStatus.NoReplication, ExperimentStatus.ConstantResponse, ExperimentStatus.ZeroWithinVariation];
@@ -59,10 +65,55 @@ internal static class SampleCampaign
             groups.Add(new GroupDetail(result.Plan.Groups[g], result.Plan.Groups[g] == result.Plan.Control, values, Summary(values)));
         }
 
-        VariationTable? variation = result.Statistic is { } f
-            ? new VariationTable(new VariationLine(3 * f, 3, f), new VariationLine(28, 28, 1), new VariationLine((3 * f) + 28, 31, 0), f, result.EtaSquared!.Value, result.OmegaSquared!.Value, 1)
-            : null;
-        return new ExperimentDetail(result, groups, 0.95, variation, result.Position % 4 == 0 ? 2 : 0);
+        GroupedSample sample = Sample(groups);
+        Tested? tested = result.P is null ? null : new FTest().Test(sample) as Tested;
+        Campaign campaign = Campaign("rising");
+        ExperimentAnalysis analysis = ExperimentAnalysis.Of(result.Plan, result.Plan.Groups, sample, campaign, Family, tested);
+        var verdict = new ComparisonVerdict(campaign, Family, Survivors);
+        return new ExperimentDetail(result, groups, 0.95, tested?.Variation, result.Position % 4 == 0 ? 2 : 0)
+        {
+            Analysis = analysis,
+            Comparisons = verdict.Judge(result, result.Plan.Groups, analysis.Comparisons),
+            ComparisonGuarantee = verdict.Guarantee,
+            Outcome = tested,
+        };
+    }
+
+    /// <summary>A surviving experiment of which there is something to say in every section: readings of specimens, spreads that differ, blocks, a permutation, exclusions.</summary>
+    public static ExperimentDetail Eventful()
+    {
+        ExperimentResult result = Standing(Family).Experiments[10];
+        ExperimentDetail plain = Detail(result with { Resampling = new Resampling(999, 4, 20_260_501) });
+        GroupDetail[] groups = [.. plain.Groups.Select((g, i) => g with { Values = [.. g.Values.Select((v, k) => Math.Round(i == 3 ? v + (k % 4 * 6) : v, 1))] })];
+        GroupedSample sample = Sample(groups, perSpecimen: 2);
+        var tested = (Tested)ExperimentalUnits.Test(new FTest(), sample, RandomDraws.Usual);
+        Campaign campaign = Campaign("rising");
+        ExperimentAnalysis analysis = ExperimentAnalysis.Of(result.Plan, result.Plan.Groups, sample, campaign, Family, tested);
+        return plain with
+        {
+            Groups = [.. groups.Select(g => g with { Summary = Summary([.. g.Values]) })],
+            Variation = tested.Variation! with { Blocks = new VariationLine(2.5, 3, 2.5 / 3) },
+            Analysis = analysis,
+            Comparisons = new ComparisonVerdict(campaign, Family, Survivors).Judge(result, result.Plan.Groups, analysis.Comparisons),
+            Outcome = tested,
+            OutcomeWithExcluded = tested with { Statistic = 1.25, P = PValue.FromValue(0.3125) },
+            Exclusions =
+            [
+                new ExcludedObservation("E11", "oven-7.csv", 14, "zinc", "91.0", true, "the film had blistered", "M. Ferrer", new DateTimeOffset(2026, 4, 20, 10, 0, 0, TimeSpan.Zero)),
+                new ExcludedObservation("E11", "oven-7.csv", 15, "zinc", "13.1", false, "the film was sound after all", "M. Ferrer", new DateTimeOffset(2026, 4, 21, 10, 0, 0, TimeSpan.Zero)),
+            ],
+        };
+    }
+
+    private static GroupedSample Sample(IReadOnlyList<GroupDetail> groups, int perSpecimen = 1)
+    {
+        long[] mantissas = [.. groups.SelectMany(g => g.Values).Select(v => (long)Math.Round(v * 10))];
+        ushort[] numbers = [.. groups.SelectMany((g, i) => Enumerable.Repeat((ushort)i, g.Values.Count))];
+        int[] specimens = perSpecimen == 1 ? [] : [.. Enumerable.Range(0, mantissas.Length).Select(i => i / perSpecimen)];
+        return new GroupedSample(mantissas, 1, numbers, groups.Count)
+        {
+            Specimens = specimens,
+        };
     }
 
     private static double Value(ExperimentStatus status, int group, Random random) => status switch
@@ -107,7 +158,7 @@ internal static class SampleCampaign
                 Groups = ["base", "zinc", "resin 2", "resin 3"],
                 Control = "base",
                 Test = "f",
-                FollowUp = "none",
+                FollowUp = (i % 3) switch { 1 => "tukey-kramer", 2 => "dunnett", _ => "none" },
                 Replicates = 8,
             },
             Position = i + 1,
@@ -120,7 +171,7 @@ internal static class SampleCampaign
             P = has ? PValue.FromLog(log) : null,
             EtaSquared = has ? 3 * statistic / ((3 * statistic) + 28) : null,
             OmegaSquared = has ? 3 * (statistic - 1) / ((3 * statistic) + 29) : null,
-            Amendments = i == 10 ? ["oven run 7 was repeated after a power cut"] : [],
+            Amendments = i == 10 ? ["values came in after the test: oven run 7 was repeated after a power cut"] : [],
         };
     }
 

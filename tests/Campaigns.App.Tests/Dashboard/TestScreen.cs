@@ -17,6 +17,7 @@ namespace Campaigns.App.Tests.Dashboard;
 /// <summary>The dashboard on a terminal in memory.</summary>
 internal sealed class TestScreen : IDisposable
 {
+    private readonly VirtualTimeProvider _time = new();
     private readonly IApplication _app;
     private readonly DashboardWindow _window;
     private readonly SessionToken _session;
@@ -30,7 +31,7 @@ internal sealed class TestScreen : IDisposable
     {
         Theme theme = Theme.For(name => name == "NO_COLOR" && !colour ? "1" : null);
         theme.Apply();
-        _app = Application.Create(new VirtualTimeProvider());
+        _app = Application.Create(_time);
         _app.Init(DriverRegistry.Names.ANSI);
         _app.Driver!.SetScreenSize(width, height);
         Model = new DashboardModel(source, SampleCampaign.Find);
@@ -64,6 +65,15 @@ internal sealed class TestScreen : IDisposable
             _app.InjectKey(key);
         }
 
+        _app.LayoutAndDraw();
+        return this;
+    }
+
+    /// <summary>Lets time pass, and what was put off happen.</summary>
+    public TestScreen Wait(TimeSpan time)
+    {
+        _time.Advance(time);
+        _app.TimedEvents!.RunTimers();
         _app.LayoutAndDraw();
         return this;
     }

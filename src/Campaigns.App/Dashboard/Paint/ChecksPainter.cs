@@ -36,7 +36,7 @@ internal static class ChecksPainter
 
         if (checks.Any(c => c.Finding.Verdict == CheckVerdict.Quiet))
         {
-            sheet.Line("Quiet means that nothing was seen, not that nothing is there.", Ink.Quiet);
+            sheet.Line("A quiet check gives no warning; it does not show that all is well.", Ink.Quiet);
         }
     }
 }

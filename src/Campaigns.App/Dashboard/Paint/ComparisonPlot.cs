@@ -25,7 +25,7 @@ internal static class ComparisonPlot
         }
 
         int longest = comparisons.Max(c => CellText.Width(c.GroupA) + CellText.Width(c.GroupB) + 3);
-        int label = Math.Min(longest, Math.Min(LongestLabel, (width * 2 / 5) - SignWidth));
+        int label = Math.Min(longest, Math.Min(LongestLabel, (width * 9 / 20) - SignWidth));
         int start = SignWidth + label + 1;
         LinearScale scale = new(all.Min(), all.Max(), width - start - 1);
         int zero = start + scale.PlaceOf(0, scale.Cells);

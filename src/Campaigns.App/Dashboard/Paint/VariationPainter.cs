@@ -46,8 +46,8 @@ internal static class VariationPainter
     {
         sheet.Title("specimens and their readings, inside groups");
         Row(sheet, "between", ["df", "sum of sq.", "mean sq.", "variance"], Ink.Heading);
-        Row(sheet, "specimens", [.. Figures(s.BetweenSpecimens), sheet.Number(s.Component)], Ink.Text);
-        Row(sheet, "readings", [.. Figures(s.WithinSpecimens), sheet.Number(s.ReadingComponent)], Ink.Text);
+        Row(sheet, "specimen", [.. Figures(s.BetweenSpecimens), sheet.Number(s.Component)], Ink.Text);
+        Row(sheet, "reading", [.. Figures(s.WithinSpecimens), sheet.Number(s.ReadingComponent)], Ink.Text);
     }
 
     private static string[] Figures(VariationLine line) => [DetailSheet.Whole(line.DegreesOfFreedom), DetailSheet.Number(line.SumOfSquares), DetailSheet.Number(line.MeanSquare)];
