@@ -1,0 +1,104 @@
+using Campaigns.Statistics.Corrections;
+using Campaigns.Statistics.FollowUps;
+using Campaigns.Statistics.Probability;
+using Campaigns.Statistics.Tests.External;
+
+namespace Campaigns.Domain.Tests;
+
+public sealed class ComparisonVerdictTests
+{
+    private static readonly string[] Labels = ["a", "b", "c", "d", "e"];
+
+    // Six experiments of which three are selected: 40-digit arithmetic (mpmath), tests/reference/campaign/generate/10_selective.py.
+    [Fact]
+    public void A_campaign_that_holds_the_false_discovery_rate_claims_what_the_reference_claims()
+    {
+        var verdict = new ComparisonVerdict(Campaign(ErrorRate.FalseDiscovery), 6, 3);
+        foreach (ReferenceRow pair in ReferenceTable.Read("campaign/selective_pairs.csv").Rows)
+        {
+            bool selected = pair.Integer("experiment_selected") == 1;
+            ExperimentComparison judged = Judge(verdict, selected, new GroupComparison(pair.Integer("group_a") - 1, pair.Integer("group_b") - 1, 1) { P = PValue.FromValue(pair.Number("holm_within")) });
+            Assert.Equal(pair.Integer("bb_holm_reject_q0.05") == 1, judged.Survives);
+            Assert.Equal(selected, judged.AdjustedP is not null);
+            Assert.Equal(judged.Survives == true, judged.NotClaimedBecause is null);
+            Assert.Equal((Labels[pair.Integer("group_a") - 1], Labels[pair.Integer("group_b") - 1]), (judged.GroupA, judged.GroupB));
+            if (selected)
+            {
+                double expected = pair.Number("bb_holm_adjusted");
+                Assert.Equal(expected, judged.AdjustedP!.Value.Value, 4e-16 * expected);
+            }
+        }
+    }
+
+    // Six hypotheses: 6 x 0.008 = 0.048, 6 x 0.009 = 0.054.
+    [Theory]
+    [InlineData(0.008, true, 0.048, true, null)]
+    [InlineData(0.009, true, 0.054, false, "its adjusted p is above the level")]
+    [InlineData(0.5, true, 1.0, false, "its adjusted p is above the level")]
+    [InlineData(0.001, false, 0.006, false, "its experiment does not survive")]
+    public void A_familywise_campaign_multiplies_by_its_whole_family(double p, bool selected, double adjusted, bool claimed, string? because)
+    {
+        ExperimentComparison judged = Judge(new ComparisonVerdict(Campaign(ErrorRate.Familywise), 6, 2), selected, new GroupComparison(0, 1, 1) { P = PValue.FromValue(p) });
+        Assert.Equal(adjusted, judged.AdjustedP!.Value.Value, 1e-15);
+        Assert.Equal((claimed, because), (judged.Survives!.Value, judged.NotClaimedBecause));
+    }
+
+    [Theory]
+    [InlineData(ErrorRate.Familywise)]
+    [InlineData(ErrorRate.FalseDiscovery)]
+    public void A_comparison_that_cannot_be_made_is_neither_claimed_nor_denied_and_keeps_its_obstacle(ErrorRate rate)
+    {
+        ExperimentComparison judged = Judge(new ComparisonVerdict(Campaign(rate), 6, 2), true, new GroupComparison(0, 1, 1) { Obstacle = "a group with one value has no variance of its own" });
+        Assert.Null(judged.Survives);
+        Assert.Null(judged.AdjustedP);
+        Assert.Equal("a group with one value has no variance of its own", judged.NotClaimedBecause);
+    }
+
+    [Theory]
+    [InlineData(ErrorRate.Familywise)]
+    [InlineData(ErrorRate.FalseDiscovery)]
+    public void Where_nothing_survives_nothing_is_claimed_and_nothing_is_divided_by_nought(ErrorRate rate)
+    {
+        var verdict = new ComparisonVerdict(Campaign(rate), 6, 0);
+        ExperimentComparison judged = Judge(verdict, false, new GroupComparison(0, 1, 1) { P = PValue.FromValue(1e-9) });
+        Assert.False(judged.Survives);
+        Assert.DoesNotContain("0/6", verdict.Guarantee, StringComparison.Ordinal);
+        Assert.EndsWith(".", verdict.Guarantee, StringComparison.Ordinal);
+    }
+
+    [Fact]
+    public void An_experiment_without_a_verdict_claims_nothing()
+    {
+        ExperimentResult untested = Experiment(null);
+        var verdict = new ComparisonVerdict(Campaign(ErrorRate.FalseDiscovery), 6, 2);
+        Assert.False(Assert.Single(verdict.Judge(untested, Labels, [new GroupComparison(0, 1, 1) { P = PValue.FromValue(1e-9) }])).Survives);
+        Assert.Empty(verdict.Judge(untested, Labels, []));
+    }
+
+    [Fact]
+    public void What_is_held_is_told_with_its_figures()
+    {
+        Assert.Contains("level 0.05 x 2/6", new ComparisonVerdict(Campaign(ErrorRate.FalseDiscovery), 6, 2).Guarantee, StringComparison.Ordinal);
+        Assert.Contains("level 0.05/6", new ComparisonVerdict(Campaign(ErrorRate.Familywise), 6, 2).Guarantee, StringComparison.Ordinal);
+    }
+
+    private static ExperimentComparison Judge(ComparisonVerdict verdict, bool survives, GroupComparison comparison) =>
+        Assert.Single(verdict.Judge(Experiment(survives), Labels, [comparison]));
+
+    private static ExperimentResult Experiment(bool? survives) => new()
+    {
+        Plan = new PlannedExperiment { Code = "E", Test = "f", FollowUp = "holm-pairs" },
+        Position = 1,
+        Status = survives is null ? ExperimentStatus.Ready : ExperimentStatus.Tested,
+        Survives = survives,
+    };
+
+    private static Campaign Campaign(ErrorRate rate) => new()
+    {
+        Code = "C",
+        ErrorRate = rate,
+        Level = new SignificanceLevel(0.05),
+        Correction = rate == ErrorRate.Familywise ? "holm" : "bh",
+        OpenedAt = DateTimeOffset.UnixEpoch,
+    };
+}
