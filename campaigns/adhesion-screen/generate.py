@@ -178,9 +178,10 @@ def write(path, lines):
 def plan_row(e):
     control = "control" if "control" in e.groups else ""
     replicates = str(min(e.sizes)) if e.planned else ""
+    follow_up = "dunnett" if control else ""             # else the campaign's own: all pairs
     smallest = e.text(e.smallest) if e.smallest else ""
     assumed = e.text(e.sd) if e.smallest else ""
-    cells = [e.code, e.title, e.response, e.unit, "|".join(e.groups), control, "", "", replicates, smallest, assumed, "", ""]
+    cells = [e.code, e.title, e.response, e.unit, "|".join(e.groups), control, "", follow_up, replicates, smallest, assumed, "", ""]
     return ",".join(quoted(c) for c in cells)
 
 

@@ -1,9 +1,4 @@
-using Campaigns.Catalog.Loading;
-using Campaigns.Catalog.Plans;
-using Campaigns.Catalog.Results;
 using Campaigns.Domain;
-using Campaigns.Statistics.Corrections;
-using Campaigns.Statistics.GroupTests;
 using Campaigns.Statistics.Tests.External;
 
 namespace Campaigns.Catalog.Tests;
@@ -28,7 +23,7 @@ public sealed class ShippedCampaignsTests
     public void Every_result_agrees_with_R_and_NIST(string name, int planned, int tested)
     {
         using var catalog = new TestCatalog();
-        CampaignStanding standing = Run(catalog, name);
+        CampaignStanding standing = ShippedCampaign.Run(catalog, name);
         Assert.Equal((planned, planned, tested), (standing.Experiments.Count, standing.FamilySize, standing.TestedCount));
         ReferenceRow[] rows = [.. ReferenceTable.Read("shipped-campaigns.csv").Rows.Where(r => r.Text("campaign") == name)];
         Assert.Equal(rows.Select(r => r.Text("experiment")), standing.Experiments.Select(e => e.Plan.Code));
@@ -52,54 +47,13 @@ public sealed class ShippedCampaignsTests
     public void The_demo_keeps_as_many_survivors_as_R_counts_under_every_correction(string correction, int? counted)
     {
         using var catalog = new TestCatalog();
-        CampaignStanding standing = Run(catalog, "adhesion-screen");
+        CampaignStanding standing = ShippedCampaign.Run(catalog, "adhesion-screen");
         ReferenceRow[] rows = [.. ReferenceTable.Read("shipped-campaigns.csv").Rows.Where(r => r.Text("campaign") == "adhesion-screen")];
         string column = correction == "none" ? "p" : correction;
         string[] byR = [.. rows.Where(r => r.Has(column) && r.Number(column) <= 0.05).Select(r => r.Text("experiment"))];
         IReadOnlyList<ExperimentResult> judged = FamilyVerdict.Apply(standing.Campaign with { Correction = correction }, standing.Experiments, standing.FamilySize);
         Assert.Equal(byR, judged.Where(e => e.Survives == true).Select(e => e.Plan.Code));
         Assert.Equal(counted ?? byR.Length, byR.Length);
-    }
-
-    /// <summary>What the command that runs a folder does, step by step.</summary>
-    private static CampaignStanding Run(TestCatalog test, string name)
-    {
-        string folder = Path.Combine(ReferenceTable.Folder(), "..", "..", "campaigns", name);
-        var known = new KnownKeys([.. GroupTestRegistry.All.Select(t => t.Key)], FollowUpKeys.All, [.. CorrectionRegistry.All.Select(c => c.Key)]);
-        CampaignFileResult file = CampaignFile.Read(Path.Combine(folder, "campaign.json"), known);
-        Assert.Empty(file.Problems.Sentences());
-        CampaignDescription description = file.Campaign!;
-        test.Campaigns.Open(new Campaign
-        {
-            Code = name,
-            ErrorRate = description.ErrorRate,
-            Level = description.Level,
-            Correction = description.Correction,
-            OpenedAt = test.Clock.GetUtcNow(),
-        });
-        PlanFileResult plan = PlanFile.Read(Path.Combine(folder, "plan.csv"), DelimitedFileOptions.Default, new PlanDefaults(description.Test, description.FollowUp), known);
-        Assert.Empty(plan.Problems.Sentences());
-        new PlanStore(test.Catalog).Register(name, plan.Experiments);
-        test.Campaigns.Seal(name);
-        foreach (string measurements in Directory.EnumerateFiles(Path.Combine(folder, "measurements")).Order(NaturalOrder.Instance))
-        {
-            new MeasurementLoader(test.Catalog).Load(name, measurements, new LoadOptions(DelimitedFileOptions.Default), _ => { }, default);
-        }
-
-        new TestRunner(test.Catalog).Run(name, includeIncomplete: false, _ => { }, default);
-        ReviewHead review = new ReviewStore(test.Catalog).Take(name, testedOnly: false).Review;
-        CampaignStanding standing = new StandingReader(test.Catalog).Read(name);
-        Assert.Equal(standing.SurvivorCount, review.SurvivorCount);
-        Assert.Equal((review.SurvivorCount, review.TestedCount, review.FamilySize), Overview(test, name));
-        return standing;
-    }
-
-    private static (int, int, int) Overview(TestCatalog test, string name)
-    {
-        (CampaignOverview overview, IReadOnlyList<ExperimentResult> survivors) = new OverviewReader(test.Catalog).ReadSurvivors(name, int.MaxValue);
-        IEnumerable<ExperimentResult> expected = new StandingReader(test.Catalog).Read(name).Experiments.Where(e => e.Survives == true).OrderBy(e => e.P);
-        Assert.Equal(expected.Select(e => (e.Plan.Code, e.P, e.AdjustedP)), survivors.Select(e => (e.Plan.Code, e.P, e.AdjustedP)));
-        return (overview.SurvivorCount, overview.TestedCount, overview.FamilySize);
     }
 
     private static void AssertAgrees(ReferenceRow row, ExperimentResult result)

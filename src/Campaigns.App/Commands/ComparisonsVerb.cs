@@ -32,9 +32,9 @@ internal sealed class ComparisonsVerb : Verb
 
     public static IReadOnlyList<Column> Columns { get; } =
     [
-        new("experiment", "experiment"), new("group_a", "group a"), new("group_b", "group b"), new("difference", "b - a", true),
-        new("lower", "lower", true, 1), new("upper", "upper", true, 1), new("statistic", "statistic", true, 2), new("p", "p", true), new("adjusted_p", "adjusted p", true),
-        new("survives", "claimed"), new("follow_up", "follow-up", GivesWay: 3), new("df", null, true), new("unit", "unit", GivesWay: 2), new("note", "not claimed because", GivesWay: 4),
+        new("experiment", "experiment"), new("group_a", "group a", CutLast: true), new("group_b", "group b", CutLast: true), new("difference", "b - a", true),
+        new("lower", "lower", true, 1, NotWithout: "upper"), new("upper", "upper", true, 1), new("statistic", "statistic", true, 2), new("p", "p", true), new("adjusted_p", "adjusted p", true),
+        new("survives", "claimed"), new("follow_up", "follow-up", GivesWay: 3), new("df", null, true), new("unit", "unit", GivesWay: 2), new("note", "not claimed because", GivesWay: 4, CutLast: true),
     ];
 
     public static Cell[] Row(ExperimentComparison c) =>

@@ -86,7 +86,7 @@ internal static class ExperimentShow
         }
         else
         {
-            yield return $"p = {NumberText.P(p)}, adjusted p = {NumberText.P(result.AdjustedP!.Value)}. {ExperimentWording.Verdict(result.Survives == true)}";
+            yield return $"p = {NumberText.P(p)}, adjusted p = {NumberText.P(result.AdjustedP!.Value)}. {ExperimentWording.Verdict(result)}";
         }
 
         if (GroupTestRegistry.Find(result.Plan.Test) is { } test)

@@ -79,7 +79,8 @@ internal sealed class LoadVerb : Verb
     {
         string missing = load.MissingCount > 0 ? FormattableString.Invariant($", {load.MissingCount} marked as missing and left out") : "";
         string fresh = load.NewExperimentCount > 0 ? FormattableString.Invariant($" ({load.NewExperimentCount} of them new)") : "";
-        session.Say(FormattableString.Invariant($"Loaded {load.FileName}: {load.RowCount} rows for {load.ExperimentCount} experiments{fresh}{missing}."));
+        string experiments = load.ExperimentCount == 1 ? "experiment" : "experiments";
+        session.Say(FormattableString.Invariant($"Loaded {load.FileName}: {load.RowCount} rows for {load.ExperimentCount} {experiments}{fresh}{missing}."));
         Notices.IgnoredColumns(session.Host, load.FileName, load.IgnoredColumns);
         if (load.RespelledNames.Count > 0)
         {

@@ -73,7 +73,7 @@ internal sealed class SurvivorsVerb : Verb
     [
         new("experiment", "experiment"), new("title", "title"), new("test", null), new("statistic", null, true), new("df1", null, true), new("df2", null, true),
         new("p", "p", true), new("adjusted_p", "adjusted p", true), new("eta_squared", null, true), new("omega_squared", null, true),
-        new("highest_group", "highest"), new("highest_mean", null, true), new("lowest_group", "lowest"), new("lowest_mean", null, true),
+        new("highest_group", "highest", CutLast: true), new("highest_mean", null, true), new("lowest_group", "lowest", CutLast: true), new("lowest_mean", null, true),
         new("difference", "gap", true), new("unit", "unit"), new("response", null), new("claimed_comparisons", null), new("amendments", null),
     ];
 

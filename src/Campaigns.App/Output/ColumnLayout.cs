@@ -14,8 +14,8 @@ internal sealed record ColumnLayout(IReadOnlyList<int> Shown, IReadOnlyList<int>
     /// <summary>Text columns give way down to this, before columns are left out.</summary>
     private const int LeastText = 8;
 
-    /// <summary>The first column names the row: a cut name could be another's.</summary>
-    private const int LeastName = 24;
+    /// <summary>The first column, which names the row, and others that are cut last keep this much where they can.</summary>
+    private const int LeastKept = 24;
 
     /// <summary>The layout for a width.</summary>
     /// <param name="columns">All columns; those without a heading are for scripts alone.</param>
@@ -30,15 +30,24 @@ internal sealed record ColumnLayout(IReadOnlyList<int> Shown, IReadOnlyList<int>
             wanted[c] = Math.Max(CellText.Width(columns[c].Heading!), rows.Max(r => CellText.Width(r[c])));
         }
 
-        int Least(int c) => columns[c].IsNumeric ? wanted[c] : Math.Min(wanted[c], c == shown[0] ? LeastName : LeastText);
+        bool keepsText = true;
+        int Least(int c) => columns[c].IsNumeric ? wanted[c] : Math.Min(wanted[c], c == shown[0] || (columns[c].CutLast && keepsText) ? LeastKept : LeastText);
         int Room() => width - (Gap * (shown.Count - 1));
         List<int> leftOut = [];
         while (shown.Count > 1 && shown.Sum(Least) > Room())
         {
             // Of all but the first the least important goes, the last of several.
             int goes = shown.Skip(1).OrderByDescending(c => columns[c].GivesWay).ThenByDescending(c => c).First();
-            shown.Remove(goes);
-            leftOut.Add(goes);
+            if (columns[goes].GivesWay == 0 && keepsText)
+            {
+                // No column of weight goes for the sake of another's text but the first's.
+                keepsText = false;
+                continue;
+            }
+
+            int[] together = [.. shown.Where(c => c == goes || columns[c].NotWithout == columns[goes].Name)];
+            shown.RemoveAll(together.Contains);
+            leftOut.AddRange(together);
         }
 
         while (shown.Sum(c => wanted[c]) > Room() && shown.Where(c => wanted[c] > Least(c)).OrderByDescending(c => wanted[c]).ThenBy(c => c).FirstOrDefault(-1) is >= 0 and int widest)

@@ -25,9 +25,11 @@ internal static class ExperimentWording
     /// <param name="clause">What was done and why, in a clause without a full stop.</param>
     public static string Deviation(string clause) => $"Deviation from the plan: {clause}.";
 
-    /// <summary>What a verdict means, in a sentence.</summary>
-    public static string Verdict(bool survives) =>
-        survives ? "It survives: evidence that not all group means are equal." : "It does not survive: no difference shown, which is not the same as no difference.";
+    /// <summary>What a verdict means, in a sentence: each test has its own hypothesis, and ranks and permutations say nothing of means alone.</summary>
+    /// <param name="result">A result with a p-value.</param>
+    public static string Verdict(ExperimentResult result) => result.Survives == true
+        ? $"It survives: evidence against the hypothesis \"{GroupTestRegistry.Find(result.Plan.Test)?.Hypothesis}\""
+        : "It does not survive: no difference shown, which is not the same as no difference.";
 
     /// <summary>What the intervals of the group table hold; null where there are none.</summary>
     public static string? MeanIntervals(ExperimentDetail detail) => detail.Groups.Any(g => g.Summary.Lower is not null)

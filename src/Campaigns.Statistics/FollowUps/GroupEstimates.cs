@@ -1,3 +1,4 @@
+using Campaigns.Statistics.Blocks;
 using Campaigns.Statistics.GroupTests;
 using Campaigns.Statistics.Numerics;
 

@@ -1,3 +1,4 @@
+using Campaigns.Statistics.Blocks;
 using Campaigns.Statistics.Distributions;
 namespace Campaigns.Statistics.GroupTests;
 

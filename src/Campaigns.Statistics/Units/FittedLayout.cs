@@ -1,4 +1,5 @@
 using System.Numerics;
+using Campaigns.Statistics.Blocks;
 using Campaigns.Statistics.GroupTests;
 using Campaigns.Statistics.Numerics;
 

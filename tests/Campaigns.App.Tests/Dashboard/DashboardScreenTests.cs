@@ -132,7 +132,7 @@ public sealed class DashboardScreenTests
 
         Assert.Empty(computed);
         Assert.Contains("│ E10: ", screen.Text, StringComparison.Ordinal);
-        Assert.Contains("it follows once", screen.Text, StringComparison.Ordinal);
+        Assert.Contains("takes a moment", screen.Text, StringComparison.Ordinal);
         Assert.Contains("values by group", screen.Wait(TimeSpan.FromSeconds(1)).Text, StringComparison.Ordinal);
         Assert.Equal(["E10"], computed);
         screen.Press(Key.CursorUp).Wait(TimeSpan.FromSeconds(1)).Press(Key.CursorDown);

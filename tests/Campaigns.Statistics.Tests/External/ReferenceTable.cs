@@ -16,9 +16,12 @@ internal sealed class ReferenceTable
     public IReadOnlyList<ReferenceRow> Rows { get; }
 
     /// <summary>Reads tests/reference/<paramref name="path"/>, found from the test's own folder upwards.</summary>
-    public static ReferenceTable Read(string path)
+    public static ReferenceTable Read(string path) => Of(File.ReadLines(Path.Combine(Folder(), path)));
+
+    /// <summary>A table from its lines, such as an outside program has just printed.</summary>
+    public static ReferenceTable Of(IEnumerable<string> text)
     {
-        string[] lines = [.. File.ReadLines(Path.Combine(Folder(), path)).Where(l => l.Length > 0 && l[0] != '#')];
+        string[] lines = [.. text.Where(l => l.Length > 0 && l[0] != '#')];
         string[] columns = lines[0].Split(',');
         var rows = new List<ReferenceRow>();
         var table = new ReferenceTable(columns, rows);

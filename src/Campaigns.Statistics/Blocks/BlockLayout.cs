@@ -1,6 +1,7 @@
+using Campaigns.Statistics.GroupTests;
 using Campaigns.Statistics.Numerics;
 
-namespace Campaigns.Statistics.GroupTests;
+namespace Campaigns.Statistics.Blocks;
 
 /// <summary>The additive layout of an experiment in blocks, value = group effect + block effect + error: how its variation splits into that between blocks, that between groups adjusted for blocks, and the rest.</summary>
 /// <remarks>

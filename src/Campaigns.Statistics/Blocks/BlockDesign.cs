@@ -1,7 +1,8 @@
 using System.Numerics;
+using Campaigns.Statistics.GroupTests;
 using Campaigns.Statistics.Numerics;
 
-namespace Campaigns.Statistics.GroupTests;
+namespace Campaigns.Statistics.Blocks;
 
 /// <summary>Which groups meet in which blocks, and how often: the plan of an experiment in blocks, without its values.</summary>
 /// <remarks>Groups and blocks are numbered from 0 in the order in which they first come; those without a value have no number.</remarks>

@@ -1,7 +1,8 @@
 using System.Numerics;
+using Campaigns.Statistics.GroupTests;
 using Campaigns.Statistics.Numerics;
 
-namespace Campaigns.Statistics.GroupTests;
+namespace Campaigns.Statistics.Blocks;
 
 /// <summary>Group and block effects fitted to the values of an experiment, in units of its mantissas.</summary>
 /// <remarks>

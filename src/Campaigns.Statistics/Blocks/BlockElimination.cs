@@ -1,6 +1,6 @@
 using Campaigns.Statistics.Numerics;
 
-namespace Campaigns.Statistics.GroupTests;
+namespace Campaigns.Statistics.Blocks;
 
 /// <summary>The normal equations of group effects, blocks eliminated, solved without a single subtraction in their matrix.</summary>
 /// <remarks>

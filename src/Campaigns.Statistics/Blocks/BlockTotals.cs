@@ -1,7 +1,7 @@
 using System.Numerics;
 using Campaigns.Statistics.Numerics;
 
-namespace Campaigns.Statistics.GroupTests;
+namespace Campaigns.Statistics.Blocks;
 
 /// <summary>Exact totals of whole numbers by group and by block.</summary>
 /// <remarks>Cost: one pass over the values and one over the cells in 128-bit integers for every 62 bits of the values; integers of any size only once a group and a block.</remarks>
