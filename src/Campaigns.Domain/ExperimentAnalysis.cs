@@ -58,7 +58,7 @@ public sealed record ExperimentAnalysis
             Units = units,
             Fit = withinBlocks ? FittedLayout.InBlocks(units) : FittedLayout.OneWay(units),
             Labels = labels,
-            Places = units.Count == readings.Count ? places : null,
+            Places = places is null || units.Count == readings.Count ? places : FirstReadings(readings, places),
         });
         bool spreadsDiffer = checks.Any(c => c.Key is "equal-spread" or "spread-ratio" && c.Finding.Verdict == CheckVerdict.Warns);
         SignificanceLevel level = campaign.Level;
@@ -67,15 +67,31 @@ public sealed record ExperimentAnalysis
         return new ExperimentAnalysis
         {
             Specimens = specimens,
-            UnitsNote = UnitsNoteOf(plan, readings, specimens),
+            UnitsNote = UnitsNoteOf(plan, readings, specimens, tested is not null),
             Checks = checks,
             Beside = spreadsDiffer && plan.Test is not ("welch" or "block-f") ? new WelchTest().Test(units) : null,
             Comparisons = followUp?.Comparisons ?? [],
-            Letters = followUp is { } f ? CompactLetters.Of(f.Estimates, f.Comparisons, level) : null,
+            Letters = followUp is { } f && f.Comparisons.Any(c => c.P is not null) ? CompactLetters.Of(f.Estimates, f.Comparisons, level) : null,
             Effects = tested?.Variation is { } table && level.Value < 0.5 ? EffectSizes.Of(table, level) : null,
             Detectable = DetectableOf(units, tested, level),
             DetectableAtStrictest = DetectableOf(units, tested, new SignificanceLevel(level.Value / familySize)),
         };
+    }
+
+    /// <summary>A specimen is named by its first reading; specimens stand in the order of these.</summary>
+    private static List<string> FirstReadings(GroupedSample readings, IReadOnlyList<string> places)
+    {
+        var seen = new HashSet<int>();
+        var first = new List<string>();
+        for (int i = 0; i < readings.Count; i++)
+        {
+            if (readings.Specimens[i] < 0 || seen.Add(readings.Specimens[i]))
+            {
+                first.Add($"the specimen first read on {places[i]}");
+            }
+        }
+
+        return first;
     }
 
     private static double? DetectableOf(GroupedSample units, Tested? tested, SignificanceLevel level)
@@ -96,13 +112,13 @@ public sealed record ExperimentAnalysis
         return double.IsFinite(smallest) ? smallest : null;
     }
 
-    private static string? UnitsNoteOf(PlannedExperiment plan, GroupedSample readings, SpecimenVariation? specimens)
+    private static string? UnitsNoteOf(PlannedExperiment plan, GroupedSample readings, SpecimenVariation? specimens, bool isTested)
     {
         if (specimens is { } s)
         {
             string unmarked = s.UnmarkedCount > 0 ? FormattableString.Invariant($" {s.UnmarkedCount} reading(s) without a specimen were taken as one each.") : "";
             string each = s.FewestReadings == s.MostReadings ? FormattableString.Invariant($"{s.MostReadings}") : FormattableString.Invariant($"{s.FewestReadings} to {s.MostReadings}");
-            return FormattableString.Invariant($"Readings of one specimen are not independent, so the analysis runs on the means of {s.SpecimenCount} specimens ({s.ReadingCount} readings, {each} a specimen).{unmarked}");
+            return FormattableString.Invariant($"Readings of one specimen are not independent, so {(isTested ? "the analysis runs" : "an analysis would run")} on the means of {s.SpecimenCount} specimens ({s.ReadingCount} readings, {each} a specimen).{unmarked}");
         }
 
         return readings.Specimens.IsEmpty ? UnitNotes.Repeats(plan, readings.Groups, readings.GroupCount) : null;

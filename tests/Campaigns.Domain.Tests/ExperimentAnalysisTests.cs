@@ -2,6 +2,7 @@ using Campaigns.Statistics.Checks;
 using Campaigns.Statistics.Corrections;
 using Campaigns.Statistics.GroupTests;
 using Campaigns.Statistics.Probability;
+using Campaigns.Statistics.Units;
 
 namespace Campaigns.Domain.Tests;
 
@@ -76,7 +77,10 @@ public sealed class ExperimentAnalysisTests
     public void Several_readings_of_a_specimen_are_told_with_their_numbers()
     {
         var readings = new GroupedSample(Calm, 0, [0, 0, 0, 0, 0, 1, 1, 1, 1, 1], 2) { Specimens = new[] { 0, 0, 1, 1, 1, 2, 2, 3, 3, 3 } };
-        ExperimentAnalysis analysis = ExperimentAnalysis.Of(Plan("f"), Labels, readings, Campaign(0.05), 1, tested: null);
+        ExperimentAnalysis untested = ExperimentAnalysis.Of(Plan("f"), Labels, readings, Campaign(0.05), 1, tested: null);
+        Assert.StartsWith("Readings of one specimen are not independent, so an analysis would run on the means of 4", untested.UnitsNote, StringComparison.Ordinal);
+        var tested = (Tested)ExperimentalUnits.Test(new FTest(), readings, RandomDraws.Usual);
+        ExperimentAnalysis analysis = ExperimentAnalysis.Of(Plan("f"), Labels, readings, Campaign(0.05), 1, tested);
         Assert.Equal("Readings of one specimen are not independent, so the analysis runs on the means of 4 specimens (10 readings, 2 to 3 a specimen).", analysis.UnitsNote);
         Assert.Equal((4, 10, 2, 3), (analysis.Specimens!.SpecimenCount, analysis.Specimens.ReadingCount, analysis.Specimens.FewestReadings, analysis.Specimens.MostReadings));
     }

@@ -25,7 +25,7 @@ internal sealed class ComparisonsVerb : Verb
         {
             Above = [$"{standing.Campaign.Code}: {CampaignText.Goal(standing.Campaign)}"],
             Below = [.. ExperimentWording.Comparisons(standing.Overview, standing.Experiments.Select(e => e.Plan.FollowUp)), .. CampaignText.Footnotes(standing.Overview, standing.Experiments.Select(e => e.Plan.Test)), .. UnitNotes.Of(standing.Experiments)],
-            WhenEmpty = "There is no comparison: no experiment with a result names a follow-up in its plan.",
+            WhenEmpty = "There is no comparison: no experiment with a result names a follow-up, or its data allow none (a control that is not there, no variation inside the groups).",
         });
         return ExitCode.Done;
     }

@@ -49,7 +49,9 @@ internal static class ExperimentShow
             Below = GroupNotes(detail),
         });
         Section(session, "Variation", ExperimentSections.Variation(detail), []);
-        Section(session, "Specimens", ExperimentSections.Specimens(detail), []);
+        Section(session, "Specimens", ExperimentSections.Specimens(detail), detail.Analysis.Specimens is { RawComponent: < 0 }
+            ? ["The variance between specimens was estimated below 0, as happens where specimens differ less than their readings, and is shown as 0."]
+            : []);
         Section(session, "Test", ExperimentSections.Tests(detail), TestNotes(standing, detail));
         Section(session, "Effects", EffectSection.Table(detail), ExperimentWording.Effects(standing, detail));
         ChecksForPeople(session, detail);

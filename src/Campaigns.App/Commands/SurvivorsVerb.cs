@@ -34,7 +34,7 @@ internal sealed class SurvivorsVerb : Verb
     public static void Print(Session session, Survivors survivors)
     {
         session.Print(survivors.Rows);
-        if (session.Format == RowFormat.Table && survivors.Claims.Rows.Any())
+        if (session.Format == RowFormat.Table && (survivors.Claims.Rows.Any() || survivors.Claims.Below.Count > 0))
         {
             session.Host.Out.WriteLine();
             session.Print(survivors.Claims);
@@ -64,9 +64,20 @@ internal sealed class SurvivorsVerb : Verb
         var claims = new RowTable(ComparisonsVerb.Columns, listed.SelectMany(e => comparisons[e.Plan.Code]).Where(c => c.Survives == true).Select(ComparisonsVerb.Row))
         {
             Above = ["Comparisons claimed inside the survivors"],
-            Below = [.. ExperimentWording.Comparisons(overview, listed.Select(e => e.Plan.FollowUp))],
+            WhenEmpty = "None.",
+            Below = [.. WithoutClaim(listed, comparisons), .. ExperimentWording.Comparisons(overview, listed.Select(e => e.Plan.FollowUp))],
         };
         return new Survivors(rows, claims, overview);
+    }
+
+    /// <summary>Survivors in which groups were compared and none told apart: the test and the comparisons ask different questions.</summary>
+    private static IEnumerable<string> WithoutClaim(IReadOnlyList<ExperimentResult> listed, ILookup<string, ExperimentComparison> comparisons)
+    {
+        string[] codes = [.. listed.Select(e => e.Plan.Code).Where(code => comparisons.Contains(code) && !comparisons[code].Any(c => c.Survives == true))];
+        if (codes.Length > 0)
+        {
+            yield return $"Survives without a pair that is claimed: {string.Join(", ", codes)}. The groups differ somewhere, and no single pair stands out enough to be named.";
+        }
     }
 
     private static IReadOnlyList<Column> Columns { get; } =

@@ -3,6 +3,7 @@ using Campaigns.Catalog.Measurements;
 using Campaigns.Catalog.Plans;
 using Campaigns.Domain;
 using Campaigns.Statistics.GroupTests;
+using Campaigns.Statistics.Probability;
 using Campaigns.Statistics.Units;
 
 namespace Campaigns.Catalog.Results;
@@ -40,7 +41,7 @@ public sealed class DetailReader(Catalog catalog)
         string[] labels = rows.Labels;
         GroupedSample readings = rows.Values.Sample(labels.Length);
         GroupSummary[] summaries = GroupSummaries.Of(SpecimenMeans.Of(readings) is { } means ? means.Sample : readings, Confidence);
-        TestOutcome? outcome = OutcomeOf(standing, result, readings);
+        TestOutcome? outcome = result is { P: { } p, Resampling: not null } ? Stored(result, p, readings) : OutcomeOf(standing, result, readings);
         var groups = new List<GroupDetail>();
         for (int group = 0; group < labels.Length; group++)
         {
@@ -78,6 +79,17 @@ public sealed class DetailReader(Catalog catalog)
             PermutationDraws.Seed(standing.Campaign.Code, result.Plan.Code),
             result.Resampling is { IsExact: false } drawn ? (int)drawn.Arrangements : PermutationDraws.Count(standing.Campaign.Level, standing.FamilySize));
         return ExperimentalUnits.Test(test, readings, draws);
+    }
+
+    /// <summary>A permutation test as it was stored: drawing its arrangements again would cost up to a second and give the same.</summary>
+    private static Tested Stored(ExperimentResult result, PValue p, GroupedSample readings)
+    {
+        var layout = OneWayLayout.Of(SpecimenMeans.Of(readings) is { } means ? means.Sample : readings);
+        return new Tested(result.GroupCount, result.ObservationCount, result.Statistic!.Value, result.Df1, result.Df2, p, layout.Obstacle is null ? layout.Table() : null)
+        {
+            SpecimenCount = result.SpecimenCount,
+            Resampling = result.Resampling,
+        };
     }
 
     private static List<double> ValuesOf(ObservationColumns values, int group)

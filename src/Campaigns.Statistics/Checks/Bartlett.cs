@@ -45,7 +45,7 @@ public sealed class Bartlett : ExperimentCheck
 
         double statistic = Statistic(spreads, groups);
         PValue p = ChiSquared.UpperTailPValue(statistic, groups.Length - 1);
-        return new CheckFinding(CheckVerdict.Quiet, spreads.Words(p.Value < Level, p), statistic, p);
+        return new CheckFinding(CheckVerdict.Quiet, spreads.Words(p.Value < Level, p, forReference: true), statistic, p);
     }
 
     private static double Statistic(GroupSpreads spreads, int[] groups)

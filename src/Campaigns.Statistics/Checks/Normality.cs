@@ -12,6 +12,9 @@ public sealed class Normality : ExperimentCheck
 {
     private const double Level = 0.01;
 
+    /// <summary>Below this p-value "no sign" would be too much said.</summary>
+    private const double Slight = 0.05;
+
     /// <inheritdoc/>
     public override string Key => "normality";
 
@@ -53,7 +56,9 @@ public sealed class Normality : ExperimentCheck
         string figures = $"W = {CheckText.Figure(test.W)} from {residuals.Length} residuals ({CheckText.P(test.P)})";
         return new CheckFinding(
             warns ? CheckVerdict.Warns : CheckVerdict.Quiet,
-            warns ? $"The residuals do not look like a sample from a normal law: {figures}." : $"No sign that the residuals depart from a normal law: {figures}.",
+            warns ? $"The residuals do not look like a sample from a normal law: {figures}."
+                : test.P.Value < Slight ? $"A slight sign that the residuals depart from a normal law, as chance gives in one of twenty: {figures}."
+                : $"No sign that the residuals depart from a normal law: {figures}.",
             test.W,
             test.P);
     }

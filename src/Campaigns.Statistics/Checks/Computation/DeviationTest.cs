@@ -28,7 +28,7 @@ internal static class DeviationTest
 
         return new CheckFinding(
             tested.P.Value < warnsBelow ? CheckVerdict.Warns : CheckVerdict.Quiet,
-            spreads.Words(tested.P.Value < differsBelow, tested.P),
+            spreads.Words(tested.P.Value < differsBelow, tested.P, forReference: warnsBelow == 0),
             tested.Statistic,
             tested.P);
     }

@@ -65,14 +65,17 @@ internal sealed class GroupSpreads
     public double StandardDeviationOf(int group) => (WideReal.Sqrt(_variances[group]) * _unit).ToDouble();
 
     /// <summary>The extremes of the spread and a p-value in words.</summary>
-    public string Words(bool differ, PValue p)
+    /// <param name="differ">Whether the check calls the spreads different.</param>
+    /// <param name="p">Its p-value.</param>
+    /// <param name="forReference">Whether the check is shown for reference alone, so that its word is not the last one.</param>
+    public string Words(bool differ, PValue p, bool forReference)
     {
         string largest = CheckText.Figure(StandardDeviationOf(Largest));
         string smallest = CheckText.Figure(StandardDeviationOf(Smallest));
         string leftOut = _counts.Contains(1) ? ", groups of one value left out" : "";
         return Largest == Smallest ? $"No sign of different spreads: all standard deviations are {largest} ({CheckText.P(p)}){leftOut}."
             : differ
-            ? $"Spreads differ: standard deviation {largest} in {_labels[Largest]} against {smallest} in {_labels[Smallest]} ({CheckText.P(p)}){leftOut}."
+            ? $"{(forReference ? "By this test alone, spreads differ" : "Spreads differ")}: standard deviation {largest} in {_labels[Largest]} against {smallest} in {_labels[Smallest]} ({CheckText.P(p)}){leftOut}."
             : $"No sign of different spreads: standard deviations from {smallest} in {_labels[Smallest]} to {largest} in {_labels[Largest]} ({CheckText.P(p)}){leftOut}.";
     }
 
