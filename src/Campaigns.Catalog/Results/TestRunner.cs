@@ -74,7 +74,7 @@ public sealed class TestRunner(Catalog catalog)
         using var sets = new GroupSets(catalog, stored.Id);
         using var results = new ResultWriter(catalog, stored.Id, lastLoad, exclusions.LastId, includeIncomplete);
         using var pipeline = new TestPipeline(includeIncomplete, results.Write);
-        var plans = new PlannedTests(stored.Campaign, new FamilyReader(catalog).FamilySize(stored.Id), sets, exclusions, cancel);
+        var plans = new PlannedTests(stored.Campaign, () => new FamilyReader(catalog).FamilySize(stored.Id), sets, exclusions, cancel);
         TestBatch batch = pipeline.Fresh();
         long done = 0;
         while (select.Read())
@@ -129,9 +129,10 @@ public sealed class TestRunner(Catalog catalog)
     }
 
     /// <summary>Reads what the plan says of the test of an experiment.</summary>
-    private sealed class PlannedTests(Campaign campaign, int familySize, GroupSets sets, StandingExclusions exclusions, CancellationToken cancel)
+    private sealed class PlannedTests(Campaign campaign, Func<int> familySize, GroupSets sets, StandingExclusions exclusions, CancellationToken cancel)
     {
-        private readonly int _draws = PermutationDraws.Count(campaign.Level, familySize);
+        // Counting the family takes milliseconds, and only a test that draws wants to know.
+        private readonly Lazy<int> _draws = new(() => PermutationDraws.Count(campaign.Level, familySize()));
         private GroupTest? _test;
         private string _key = "";
 
@@ -151,7 +152,7 @@ public sealed class TestRunner(Catalog catalog)
                 row.Integer(3) != 0,
                 (int?)row.NullableInteger(4),
                 _test,
-                _test.DrawsAtRandom ? new RandomDraws(PermutationDraws.Seed(campaign.Code, row.Text(1)), _draws) { Stop = cancel } : default,
+                _test.DrawsAtRandom ? new RandomDraws(PermutationDraws.Seed(campaign.Code, row.Text(1)), _draws.Value) { Stop = cancel } : default,
                 exclusions.Of(id));
         }
     }
