@@ -17,4 +17,8 @@ public sealed record CampaignOverview(
     int SurvivorCount,
     int AmendedCount,
     ReviewHead? LastReview,
-    int ResultsSinceReview);
+    int ResultsSinceReview)
+{
+    /// <summary>Experiments whose values were changed after their test (added to, or left out), so that they have no result before a new one.</summary>
+    public int AwaitingNewTest { get; init; }
+}

@@ -28,5 +28,11 @@ public sealed record CampaignStanding(
         SurvivorCount,
         Experiments.Count(e => e.Amendments.Count > 0),
         LastReview,
-        ResultsSinceReview);
+        ResultsSinceReview)
+    {
+        AwaitingNewTest = AwaitingNewTest,
+    };
+
+    /// <summary>Experiments whose values were changed after their test, so that they have no result before a new one.</summary>
+    public int AwaitingNewTest { get; init; }
 }

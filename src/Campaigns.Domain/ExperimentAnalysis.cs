@@ -69,7 +69,7 @@ public sealed record ExperimentAnalysis
             Specimens = specimens,
             UnitsNote = UnitsNoteOf(plan, readings, specimens, tested is not null),
             Checks = checks,
-            Beside = spreadsDiffer && plan.Test is not ("welch" or "block-f") ? new WelchTest().Test(units) : null,
+            Beside = spreadsDiffer && tested is not null && plan.Test is not ("welch" or "block-f") ? new WelchTest().Test(units) : null,
             Comparisons = followUp?.Comparisons ?? [],
             Letters = followUp is { } f && f.Comparisons.Any(c => c.P is not null) ? CompactLetters.Of(f.Estimates, f.Comparisons, level) : null,
             Effects = tested?.Variation is { } table && level.Value < 0.5 ? EffectSizes.Of(table, level) : null,

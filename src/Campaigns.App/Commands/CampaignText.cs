@@ -64,6 +64,8 @@ internal static class CampaignText
     /// <summary>Whether the latest review is up to date.</summary>
     public static string ReviewLine(CampaignOverview standing) => standing.LastReview is not { } review
         ? $"No review was taken yet; 'campaigns review {standing.Campaign.Code}' takes one."
+        : standing.AwaitingNewTest > 0
+            ? FormattableString.Invariant($"Review {review.Number} of {review.At:yyyy-MM-dd HH:mm} UTC is out of date: the values of {standing.AwaitingNewTest} experiment(s) were changed after their test; 'campaigns test {standing.Campaign.Code}' and 'campaigns review {standing.Campaign.Code}' take them in.")
         : standing.ResultsSinceReview > 0
             ? FormattableString.Invariant($"Review {review.Number} of {review.At:yyyy-MM-dd HH:mm} UTC is out of date: {standing.ResultsSinceReview} result(s) came after it; 'campaigns review {standing.Campaign.Code}' takes a new one.")
             : FormattableString.Invariant($"Review {review.Number} of {review.At:yyyy-MM-dd HH:mm} UTC{(review.IsInterim ? " (interim: tested experiments only)" : "")} holds these results.");

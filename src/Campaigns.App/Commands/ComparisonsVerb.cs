@@ -20,8 +20,14 @@ internal sealed class ComparisonsVerb : Verb
     public override int Run(Session session)
     {
         using Catalog.Catalog catalog = session.OpenCatalog();
-        CampaignStanding standing = new StandingReader(catalog).Read(session.Get(_code));
-        session.Print(new RowTable(Columns, new ComparisonReader(catalog).All(standing).Select(Row))
+
+        // Read whole, at one moment, before the first line is written: a slow reader of the output then holds nobody up.
+        (CampaignStanding standing, Cell[][] rows) = catalog.Snapshot(() =>
+        {
+            CampaignStanding now = new StandingReader(catalog).Read(session.Get(_code));
+            return (now, new ComparisonReader(catalog).All(now).Select(Row).ToArray());
+        });
+        session.Print(new RowTable(Columns, rows)
         {
             Above = [$"{standing.Campaign.Code}: {CampaignText.Goal(standing.Campaign)}"],
             Below = [.. ExperimentWording.Comparisons(standing.Overview, standing.Experiments.Select(e => e.Plan.FollowUp)), .. CampaignText.Footnotes(standing.Overview, standing.Experiments.Select(e => e.Plan.Test)), .. UnitNotes.Of(standing.Experiments)],

@@ -38,7 +38,7 @@ internal sealed class ExcludeVerb : Verb
         session.Say($"Recorded: {decision.Sentence}.");
         CampaignStanding standing = new StandingReader(catalog).Read(code);
         ExperimentDetail detail = new DetailReader(catalog).Read(standing, decision.Experiment);
-        session.Print(ExperimentSections.Tests(detail) with { WhenEmpty = "No value is left to test." });
+        session.Print(ExperimentSections.Tests(detail) with { WhenEmpty = "The experiment was not tested yet, so that there is no result to show with and without it." });
         if (standing.Campaign.IsSealed)
         {
             session.Say($"'campaigns test {code}' and 'campaigns review {code}' put this in force; until then the experiment counts as not tested.");

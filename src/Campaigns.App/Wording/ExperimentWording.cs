@@ -10,7 +10,7 @@ namespace Campaigns.App.Wording;
 internal static class ExperimentWording
 {
     /// <summary>What the letters beside groups mean.</summary>
-    public const string Letters = "Letters: groups that share one are not told apart by the follow-up, which is not the same as alike.";
+    public const string Letters = "Letters: groups that share one are not told apart by the follow-up inside this experiment alone, which is not the same as alike; what is claimed stands with the comparisons.";
 
     /// <summary>Why another F stands beside the planned test.</summary>
     public const string Beside = "Welch's F does not assume equal spreads; it is shown, not chosen: the plan names the test. Ranks do not cure unequal spreads.";

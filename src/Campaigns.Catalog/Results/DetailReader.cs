@@ -41,7 +41,9 @@ public sealed class DetailReader(Catalog catalog)
         string[] labels = rows.Labels;
         GroupedSample readings = rows.Values.Sample(labels.Length);
         GroupSummary[] summaries = GroupSummaries.Of(SpecimenMeans.Of(readings) is { } means ? means.Sample : readings, Confidence);
-        TestOutcome? outcome = result is { P: { } p, Resampling: not null } ? Stored(result, p, readings) : OutcomeOf(standing, result, readings);
+        // What was never tested shows no p: looking comes after sealing and testing.
+        bool wasTested = result.Status.WasTested() || new AmendedExperiments(catalog, new CampaignStore(catalog).Get(standing.Campaign.Code).Id).AwaitsTest(rows.Id);
+        TestOutcome? outcome = !wasTested ? null : result is { P: { } p, Resampling: not null } ? Stored(result, p, readings) : OutcomeOf(standing, result, readings);
         var groups = new List<GroupDetail>();
         for (int group = 0; group < labels.Length; group++)
         {
@@ -57,7 +59,7 @@ public sealed class DetailReader(Catalog catalog)
             ComparisonGuarantee = verdict.Guarantee,
             Exclusions = exclusions.Decisions(rows.Id),
             Outcome = outcome,
-            OutcomeWithExcluded = rows.ExcludedCount > 0 ? WithExcluded(standing, result, exclusions) : null,
+            OutcomeWithExcluded = rows.ExcludedCount > 0 && wasTested ? WithExcluded(standing, result, exclusions) : null,
         };
     }
 

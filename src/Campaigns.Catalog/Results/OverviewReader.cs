@@ -47,18 +47,22 @@ public sealed class OverviewReader(Catalog catalog)
         }
 
         (ReviewHead Head, long? LastRun)? latest = new ReviewStore(catalog).Latest(stored.Id);
+        var amended = new AmendedExperiments(catalog, stored.Id);
         return (
             new CampaignOverview(
                 campaign, familySize, family.Count, hits, adjusted.Count(campaign.Level.Rejects),
-                Deviating(stored.Id), latest?.Head, families.ResultsAfter(stored.Id, latest?.LastRun ?? 0)),
+                Deviating(stored.Id, amended), latest?.Head, families.ResultsAfter(stored.Id, latest?.LastRun ?? 0))
+            {
+                AwaitingNewTest = amended.Ids.Count(amended.AwaitsTest),
+            },
             family,
             adjusted);
     }
 
     /// <summary>Experiments that received values after their test, of which values were left out, or whose test was run short of the planned values.</summary>
-    private int Deviating(long campaignId)
+    private int Deviating(long campaignId, AmendedExperiments amended)
     {
-        var ids = new HashSet<long>(new AmendedExperiments(catalog, campaignId).Ids);
+        var ids = new HashSet<long>(amended.Ids);
         using SqliteStatement shorter = catalog.Prepare(
             """
             SELECT r.experiment_id FROM test_runs t JOIN test_results r ON r.test_run_id = t.id JOIN experiments e ON e.id = r.experiment_id

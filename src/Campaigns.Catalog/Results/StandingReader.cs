@@ -26,7 +26,10 @@ public sealed class StandingReader(Catalog catalog)
             FamilyVerdict.Apply(stored.Campaign, experiments, experiments.Count),
             experiments.Count,
             latest?.Head,
-            new FamilyReader(catalog).ResultsAfter(stored.Id, latest?.LastRun ?? 0));
+            new FamilyReader(catalog).ResultsAfter(stored.Id, latest?.LastRun ?? 0))
+        {
+            AwaitingNewTest = amended.Ids.Count(amended.AwaitsTest),
+        };
     }
 
     /// <summary>Some tested experiments in full, by their keys, without the correction; one look-up for all.</summary>

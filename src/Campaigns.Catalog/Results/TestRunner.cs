@@ -20,20 +20,23 @@ public sealed class TestRunner(Catalog catalog)
     private const string Columns =
         "e.id, e.code, e.group_set_id, e.groups_are_planned, e.replicates, e.test, m.packed, m.load_id";
 
+    /// <summary>Whether the experiment was tested before and values of it were left out since: it was complete, or taken incomplete on purpose, and leaving out a value makes it no less so.</summary>
+    private const string TestedBefore = "EXISTS (SELECT 1 FROM exclusions x WHERE x.experiment_id = e.id) AND EXISTS (SELECT 1 FROM test_results r WHERE r.experiment_id = e.id)";
+
     private const string All =
-        $"SELECT {Columns} FROM experiments e JOIN measurements m ON m.experiment_id = e.id WHERE e.campaign_id = ?1 ORDER BY e.id, m.load_id";
+        $"SELECT {Columns}, 0 FROM experiments e JOIN measurements m ON m.experiment_id = e.id WHERE e.campaign_id = ?1 ORDER BY e.id, m.load_id";
 
     // A cross join is SQLite's way of being told where to begin: at the few experiments that received data, not at all there are.
     private const string WithNewsAfterRun =
         $"""
-        SELECT {Columns} FROM (SELECT experiment_id FROM measurements WHERE load_id > ?2 UNION SELECT experiment_id FROM exclusions WHERE id > ?3) n
+        SELECT {Columns}, {TestedBefore} FROM (SELECT experiment_id FROM measurements WHERE load_id > ?2 UNION SELECT experiment_id FROM exclusions WHERE id > ?3) n
         CROSS JOIN experiments e ON e.id = n.experiment_id CROSS JOIN measurements m ON m.experiment_id = e.id
         WHERE e.campaign_id = ?1 ORDER BY e.id, m.load_id
         """;
 
     private const string Untested =
         $"""
-        SELECT {Columns} FROM experiments e JOIN measurements m ON m.experiment_id = e.id
+        SELECT {Columns}, {TestedBefore} FROM experiments e JOIN measurements m ON m.experiment_id = e.id
         WHERE e.campaign_id = ?1 AND NOT EXISTS (
             SELECT 1 FROM test_results r JOIN test_runs t ON t.id = r.test_run_id
             WHERE r.experiment_id = e.id AND coalesce(t.last_load_id, 0) >= (SELECT max(load_id) FROM measurements WHERE experiment_id = e.id)
@@ -150,7 +153,7 @@ public sealed class TestRunner(Catalog catalog)
                 id,
                 sets.Labels(row.NullableInteger(2)).Length,
                 row.Integer(3) != 0,
-                (int?)row.NullableInteger(4),
+                row.Integer(8) != 0 ? null : (int?)row.NullableInteger(4),
                 _test,
                 _test.DrawsAtRandom ? new RandomDraws(PermutationDraws.Seed(campaign.Code, row.Text(1)), _draws.Value) { Stop = cancel } : default,
                 exclusions.Of(id));

@@ -30,7 +30,7 @@ public sealed class SpreadAndBalanceTests
         {
             CheckFinding finding = experiment.Look(check);
             Assert.Equal(CheckVerdict.Quiet, finding.Verdict);
-            Assert.StartsWith("Spreads differ: ", finding.Saw, StringComparison.Ordinal);
+            Assert.StartsWith("By this test alone, spreads differ: ", finding.Saw, StringComparison.Ordinal);
         });
     }
 
