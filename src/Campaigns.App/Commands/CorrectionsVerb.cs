@@ -71,6 +71,7 @@ internal sealed class CorrectionsVerb : Verb
         Dependence.Simes => "independence, or Simes' inequality",
         Dependence.PositiveRegression => "independence, or positive dependence",
         Dependence.Independent => "independence",
+        Dependence.IndependentConservative => "independence, and nulls that are uniformly conservative",
         _ => throw new ArgumentOutOfRangeException(nameof(dependence), dependence, "No words for this dependence."),
     };
 }

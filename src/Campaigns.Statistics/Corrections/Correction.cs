@@ -8,26 +8,8 @@ namespace Campaigns.Statistics.Corrections;
 /// A correction only gives adjusted p-values; whether a hypothesis is rejected is decided in one place, <see cref="SignificanceLevel.Rejects"/>.
 /// A subclass writes <see cref="AdjustSorted"/> alone: sorting, the planned but untested rest of the family, tails below the range of doubles and the order of the input are dealt with once, here.
 /// </remarks>
-public abstract class Correction
+public abstract class Correction : ErrorProcedure
 {
-    /// <summary>The short, frozen, lower-case word by which plans, files and commands name the correction.</summary>
-    public abstract string Key { get; }
-
-    /// <summary>The procedure's published name.</summary>
-    public abstract string Name { get; }
-
-    /// <summary>The error rate that the procedure holds.</summary>
-    public abstract ErrorRate Controls { get; }
-
-    /// <summary>The dependence between the p-values under which it is proved.</summary>
-    public abstract Dependence ValidUnder { get; }
-
-    /// <summary>The guarantee in one sentence for people.</summary>
-    public abstract string Guarantee { get; }
-
-    /// <summary>Where the procedure was published.</summary>
-    public abstract string Source { get; }
-
     /// <summary>Adjusted p-values of a family, logarithms included, in the order in which the family's p-values were given.</summary>
     /// <param name="family">The p-values at hand with the size of the family they belong to.</param>
     /// <returns>One adjusted p-value for each p-value given; equal p-values get equal ones, smaller ones never larger ones. Only p = 0 gives 0.</returns>

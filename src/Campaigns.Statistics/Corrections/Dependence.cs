@@ -17,4 +17,7 @@ public enum Dependence
 
     /// <summary>Independent p-values.</summary>
     Independent,
+
+    /// <summary>Independent p-values whose true nulls are uniformly conservative: P(p at most u tau, given p at most tau) is at most u for all u and tau; exactly uniform p-values are.</summary>
+    IndependentConservative,
 }
