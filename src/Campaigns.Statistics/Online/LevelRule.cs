@@ -8,7 +8,7 @@ internal abstract class LevelRule
 {
     /// <summary>The level of the next experiment to start, from what is known now.</summary>
     /// <param name="position">Its position, one more than have started.</param>
-    /// <returns>In [0, 1].</returns>
+    /// <returns>In [0, 1).</returns>
     public abstract double Next(int position);
 
     /// <summary>An experiment has started at a level.</summary>

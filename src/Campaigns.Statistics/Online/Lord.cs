@@ -4,7 +4,7 @@ using Campaigns.Statistics.Numerics;
 namespace Campaigns.Statistics.Online;
 
 /// <summary>LORD++: an initial wealth is spread over the experiments, and every rejection earns wealth that is spread over those after it.</summary>
-/// <remarks>alpha(t) = W0 gamma(t) + (alpha - W0) gamma(t - tau(1)) + alpha sum over j &gt;= 2 of gamma(t - tau(j)), tau(j) the time at which the j-th rejection became known.</remarks>
+/// <remarks>alpha(t) = W0 gamma(t) + (alpha - W0) gamma(t - tau(1)) + alpha sum over j &gt;= 2 of gamma(t - tau(j)), tau(j) the time at which the j-th rejection became known. Where many became known at once this could exceed 1; it then is the largest double below 1, so that p = 1 never survives.</remarks>
 public sealed class Lord : OnlineProcedure
 {
     /// <inheritdoc/>
@@ -32,5 +32,5 @@ public sealed class Lord : OnlineProcedure
     public override bool TakesWealth => true;
 
     private protected override LevelRule Rule(OnlineSettings settings, SpendingTable table) =>
-        new WealthRule(table, settings, DoubleDouble.From(1.0), 1, new SpentPositions(-1, 1));
+        new WealthRule(table, settings, DoubleDouble.From(1.0), Math.BitDecrement(1), new SpentPositions(-1, 1));
 }

@@ -15,7 +15,7 @@ public readonly record struct OnlineEvent
     /// <summary>The experiment's position in the stream, from 1.</summary>
     public int Position { get; }
 
-    /// <summary>The level given at the start, in [0, 1]; meaningless for a report.</summary>
+    /// <summary>The level given at the start, in [0, 1); meaningless for a report.</summary>
     internal double Level { get; }
 
     /// <summary>The p-value that became known; null for a start.</summary>
@@ -23,7 +23,7 @@ public readonly record struct OnlineEvent
 
     /// <summary>An experiment started.</summary>
     /// <param name="position">One more than had started.</param>
-    /// <param name="level">The level that it was given then, in [0, 1].</param>
+    /// <param name="level">The level that it was given then, in [0, 1).</param>
     public static OnlineEvent Started(int position, double level) => new(position, level, null);
 
     /// <summary>The p-value of a started experiment became known.</summary>

@@ -84,10 +84,10 @@ public sealed class OnlineStream
             return;
         }
 
-        if (happened.Position != Started + 1 || !(happened.Level >= 0 && happened.Level <= 1))
+        if (happened.Position != Started + 1 || !(happened.Level >= 0 && happened.Level < 1))
         {
             throw new ArgumentException(
-                FormattableString.Invariant($"After {Started} experiments the next starts at position {Started + 1} with a level in [0, 1], not at {happened.Position} with {happened.Level:R}."),
+                FormattableString.Invariant($"After {Started} experiments the next starts at position {Started + 1} with a level in [0, 1), not at {happened.Position} with {happened.Level:R}."),
                 nameof(happened));
         }
 
