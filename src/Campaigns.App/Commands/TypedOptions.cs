@@ -58,12 +58,13 @@ internal static class TypedOptions
         return null;
     }
 
-    private static int WholeOf(ArgumentResult typed, string name, int least)
+    /// <summary>The whole number typed, from a least one up; else an error.</summary>
+    public static int WholeOf(ArgumentResult typed, string name, int least, string orElse = "")
     {
         string word = typed.Tokens[0].Value;
         if (!int.TryParse(word, NumberStyles.AllowLeadingSign, CultureInfo.InvariantCulture, out int number) || number < least)
         {
-            typed.AddError(FormattableString.Invariant($"{name} takes a whole number from {least} to {int.MaxValue}, not '{word}'."));
+            typed.AddError(FormattableString.Invariant($"{name} takes a whole number from {least} to {int.MaxValue}{orElse}, not '{word}'."));
         }
 
         return number;
