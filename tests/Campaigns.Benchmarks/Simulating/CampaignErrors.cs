@@ -59,7 +59,7 @@ internal static class CampaignErrors
         }
 
         output.WriteLine();
-        output.WriteLine("Tukey-Kramer's intervals and comparisons inside the survivors");
+        output.WriteLine("Tukey-Kramer's intervals inside the survivors");
         output.WriteLine();
         output.WriteLine($"| what | {heads} |\n|---|{rule}");
         output.WriteLine("| survivors of bh whose intervals at 1 - R q/m miss a true difference, share of R | " + string.Join(" | ", coverages.Select(c => Rate(c.Selected, c.SelectedSquares, replicates))) + " |");
