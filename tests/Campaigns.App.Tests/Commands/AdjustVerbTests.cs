@@ -211,12 +211,12 @@ public sealed class AdjustVerbTests : IDisposable
     [Fact]
     public void Weighted_corrections_without_weights_and_weights_that_are_none_are_refused()
     {
-        string file = _place.Write("w.csv", "p,w,half,none\n0.01,-1,1,0\n0.02,x,,0\n");
+        string file = _place.Write("w.csv", "p,w,half,nil\n0.01,-1,1,0\n0.02,x,,0\n");
         _place.Run("adjust", file, "--correction", "holm,weighted-holm").Refused(2, "'weighted-holm' needs a weight", "--weights COLUMN");
         Assert.DoesNotContain("weighted", string.Join(' ', _place.Run("adjust", file, "--format", "csv").Well().Csv.Columns), StringComparison.Ordinal);
         _place.Run("adjust", file, "--weights", "w").Refused(3, "w.csv line 2, column w", "0 or more, not -1", "w.csv line 3, column w", "Problems: 2");
         _place.Run("adjust", file, "--weights", "half").Refused(3, "w.csv line 3, column half", "The weight is missing");
-        _place.Run("adjust", file, "--weights", "none").Refused(3, "All weights", "'none'");
+        _place.Run("adjust", file, "--weights", "nil").Refused(3, "All weights", "'nil'");
         _place.Run("adjust", file, "--weights", "hlaf").Refused(3, "\"half\" may be it");
         _place.Run("adjust", file, "--weights", "half", "--family-size", "9").Refused(2, "leave out --family-size");
     }
