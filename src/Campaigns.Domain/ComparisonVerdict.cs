@@ -1,5 +1,6 @@
 using Campaigns.Statistics.Corrections;
 using Campaigns.Statistics.FollowUps;
+using Campaigns.Statistics.Online;
 using Campaigns.Statistics.Probability;
 using Campaigns.Statistics.Selection;
 
@@ -11,7 +12,9 @@ namespace Campaigns.Domain;
 public sealed class ComparisonVerdict(Campaign campaign, IReadOnlyList<FamilyStanding> families)
 {
     /// <summary>What is held, in a sentence.</summary>
-    public string Guarantee => string.Join(" ", families.Select(GuaranteeOf));
+    public string Guarantee => OnlineVerdict.ProcedureOf(campaign) is not null
+        ? FormattableString.Invariant($"Comparisons are claimed only inside surviving experiments, each experiment's at the level that it was given on arrival (adjusted p: p x {campaign.Level} / level given): the error inside each experiment is held at its own level, and no rate over the comparisons of the campaign.")
+        : string.Join(" ", families.Select(GuaranteeOf));
 
     /// <summary>The comparisons of one experiment, judged.</summary>
     /// <param name="experiment">The experiment as it stands in the campaign.</param>
@@ -40,7 +43,8 @@ public sealed class ComparisonVerdict(Campaign campaign, IReadOnlyList<FamilySta
         FamilyStanding family = families.FirstOrDefault(f => f.Name == (comparison.Experiment.Plan.Family ?? "")) ?? families[0];
         bool selected = comparison.Experiment.Survives == true;
         PValue? adjusted =
-            campaign.ErrorRate == ErrorRate.Familywise ? SelectedFamilies.Familywise(p, family.Size)
+            OnlineVerdict.ProcedureOf(campaign) is not null ? selected ? new OnlineLevel(1, comparison.Experiment.GivenLevel ?? 0).Adjusted(p, campaign.Level) : null
+            : campaign.ErrorRate == ErrorRate.Familywise ? SelectedFamilies.Familywise(p, family.Size)
             : selected ? SelectedFamilies.FalseDiscovery(p, family.Size, family.Survivors)
             : null;
         bool survives = selected && family.Level.Rejects(adjusted!.Value);

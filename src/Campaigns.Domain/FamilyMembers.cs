@@ -17,6 +17,12 @@ public sealed record FamilyMembers
     /// <summary>For each p-value the planned weight of its experiment; empty where no correction asks for weights.</summary>
     public ReadOnlyMemory<double> Weights { get; init; }
 
+    /// <summary>In a campaign judged as experiments arrive, for each p-value the experiment's place in its stream; else empty.</summary>
+    public IReadOnlyList<StreamEntry?> Entries { get; init; } = [];
+
+    /// <summary>Standing decisions that an experiment survives, those included whose values were changed afterwards.</summary>
+    public int StandingSurvivors { get; init; }
+
     /// <summary>The members that experiments in memory make up, those without a p-value counted too.</summary>
     /// <param name="campaign">Its families.</param>
     /// <param name="experiments">Every experiment of the campaign; the p-values keep their order.</param>
@@ -25,7 +31,12 @@ public sealed record FamilyMembers
         ArgumentNullException.ThrowIfNull(campaign);
         ArgumentNullException.ThrowIfNull(experiments);
         PValue[] p = [.. experiments.Where(e => e.P is not null).Select(e => e.P!.Value)];
-        return OneFamily(p, experiments.Count);
+        FamilyMembers members = OneFamily(p, experiments.Count);
+        return OnlineVerdict.ProcedureOf(campaign) is null ? members : members with
+        {
+            Entries = [.. experiments.Where(e => e.P is not null).Select(e => e.Entry)],
+            StandingSurvivors = experiments.Count(e => e.Entry?.Survives == true),
+        };
     }
 
     /// <summary>The members of a campaign of one family.</summary>

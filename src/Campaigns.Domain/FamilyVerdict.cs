@@ -8,7 +8,7 @@ public static class FamilyVerdict
 {
     /// <summary>The procedure by which a campaign is judged: its batch correction, or its online procedure.</summary>
     /// <exception cref="RefusedException">This version of the program does not have it.</exception>
-    public static ErrorProcedure ProcedureOf(Campaign campaign) => CorrectionOf(campaign);
+    public static ErrorProcedure ProcedureOf(Campaign campaign) => OnlineVerdict.ProcedureOf(campaign) is { } online ? online : CorrectionOf(campaign);
 
     /// <summary>The batch correction that a campaign names.</summary>
     /// <exception cref="RefusedException">This version of the program does not have it.</exception>
@@ -27,6 +27,11 @@ public static class FamilyVerdict
     {
         ArgumentNullException.ThrowIfNull(campaign);
         ArgumentNullException.ThrowIfNull(members);
+        if (OnlineVerdict.ProcedureOf(campaign) is not null)
+        {
+            return OnlineVerdict.Judge(campaign, members);
+        }
+
         FamilyCount count = members.Families[0];
         PValue[] adjusted = CorrectionOf(campaign).Adjust(RankedFamily.Of(members.P.Span, count.Size));
         bool[] survives = [.. adjusted.Select(p => campaign.Level.Rejects(p))];
@@ -44,6 +49,11 @@ public static class FamilyVerdict
     {
         ArgumentNullException.ThrowIfNull(experiments);
         ArgumentNullException.ThrowIfNull(verdict);
+        if (verdict.Batch is { } batch)
+        {
+            return OnlineVerdict.Apply(experiments, verdict, batch);
+        }
+
         var judged = new ExperimentResult[experiments.Count];
         int next = 0;
         for (int i = 0; i < judged.Length; i++)

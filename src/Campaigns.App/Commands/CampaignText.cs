@@ -1,8 +1,10 @@
 using Campaigns.App.Output;
+using Campaigns.App.Wording;
 using Campaigns.Catalog.Plans;
 using Campaigns.Domain;
 using Campaigns.Statistics.Corrections;
 using Campaigns.Statistics.GroupTests;
+using Campaigns.Statistics.Online;
 
 namespace Campaigns.App.Commands;
 
@@ -33,7 +35,7 @@ internal static class CampaignText
         ErrorProcedure correction = FamilyVerdict.ProcedureOf(campaign);
         List<string> lines =
         [
-            FormattableString.Invariant($"{correction.Name} at {campaign.Level} over a family of {standing.FamilySize} ({standing.TestedCount} with a result; the others count as p = 1). {correction.Guarantee}"),
+            .. correction is OnlineProcedure online ? OnlineText.Lines(standing, online) : [FormattableString.Invariant($"{correction.Name} at {campaign.Level} over a family of {standing.FamilySize} ({standing.TestedCount} with a result; the others count as p = 1). {correction.Guarantee}")],
             .. TestsOf(tests).Select(test => $"{test.Name}, assumes: {char.ToLowerInvariant(test.Assumes[0])}{test.Assumes[1..]}"),
         ];
         if (campaign.IsExploratory)

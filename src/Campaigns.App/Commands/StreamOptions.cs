@@ -2,6 +2,7 @@ using System.CommandLine;
 using System.CommandLine.Parsing;
 using System.Text;
 using Campaigns.Catalog.Loading;
+using Campaigns.Domain;
 using Campaigns.Statistics.Online;
 using Campaigns.Statistics.Probability;
 
@@ -38,6 +39,24 @@ internal sealed class StreamOptions
         }
 
         return command;
+    }
+
+    /// <summary>What was said of a stream; null where nothing was.</summary>
+    /// <param name="session">What was typed.</param>
+    /// <param name="procedure">The procedure; null for a batch correction, which takes no such option.</param>
+    /// <param name="level">The level.</param>
+    /// <exception cref="UsageException">An option does not fit the procedure.</exception>
+    public OnlineOptions? Typed(Session session, OnlineProcedure? procedure, SignificanceLevel level)
+    {
+        Settings(session, procedure is null ? [] : [procedure], level, planned: 1);
+        return All.All(o => session.Typed.GetResult(o) is null)
+            ? null
+            : new OnlineOptions(
+                session.Typed.GetResult(_horizon) is null ? null : session.Typed.GetValue(_horizon),
+                session.Typed.GetValue(_shape),
+                session.Typed.GetValue(_initialWealth),
+                session.Typed.GetValue(_lambda),
+                session.Typed.GetValue(_tau));
     }
 
     /// <summary>The settings of each procedure chosen: an option reaches those that take it, and one that none takes is refused.</summary>

@@ -102,10 +102,39 @@ public sealed class CampaignExport(Catalog catalog)
             json.WriteString("correction", campaign.Correction);
             json.WriteString("test", campaign.DefaultTest);
             json.WriteString("followUp", campaign.DefaultFollowUp);
+            WriteOnline(campaign.Online, json);
             json.WriteEndObject();
         }
 
         writer.WriteLine(Encoding.UTF8.GetString(buffer.WrittenSpan));
+    }
+
+    private static void WriteOnline(OnlineOptions? online, Utf8JsonWriter json)
+    {
+        if (online?.Horizon is { } horizon)
+        {
+            if (horizon == 0)
+            {
+                json.WriteString("horizon", "none");
+            }
+            else
+            {
+                json.WriteNumber("horizon", horizon);
+            }
+        }
+
+        if (online?.Shape is { } shape)
+        {
+            json.WriteString("shape", shape);
+        }
+
+        foreach ((string name, double? value) in new[] { ("initialWealth", online?.InitialWealth), ("lambda", online?.Lambda), ("tau", online?.Tau) })
+        {
+            if (value is { } given)
+            {
+                json.WriteNumber(name, given);
+            }
+        }
     }
 
     private static void WritePlan(CampaignStanding standing, TextWriter writer)

@@ -1,4 +1,5 @@
 using Campaigns.Catalog.Providers;
+using Campaigns.Catalog.Streams;
 using Campaigns.Domain;
 using Campaigns.Statistics.Probability;
 
@@ -92,6 +93,12 @@ public sealed class CampaignStore(Catalog catalog)
 
         using SqliteStatement update = catalog.Prepare("UPDATE campaigns SET sealed_at = ?2, plan_digest = ?3 WHERE id = ?1");
         update.Bind(1, stored.Id).Bind(2, catalog.Now).Bind(3, PlanDigest.Of(stored.Campaign, plan)).Run();
+        if (OnlineVerdict.ProcedureOf(stored.Campaign) is { } procedure)
+        {
+            OnlineVerdict.RefuseFamilies(stored.Campaign, plan);
+            new StreamStore(catalog).StartFirst(stored, procedure);
+        }
+
         return Get(code);
     });
 
@@ -106,7 +113,12 @@ public sealed class CampaignStore(Catalog catalog)
 
     private StoredCampaign Complete(StoredCampaign stored) => stored with
     {
-        Campaign = stored.Campaign with { Families = new FamilyStore(catalog).Read(stored.Id), Online = new OnlineSettingsStore(catalog).Read(stored.Id) },
+        Campaign = stored.Campaign with
+        {
+            Families = new FamilyStore(catalog).Read(stored.Id),
+            Online = new OnlineSettingsStore(catalog).Read(stored.Id),
+            Streams = OnlineVerdict.ProcedureOf(stored.Campaign) is null ? [] : new StreamStore(catalog).Read(stored.Id),
+        },
     };
 
     private static StoredCampaign Row(SqliteStatement row) => new(row.Integer(0), new Campaign

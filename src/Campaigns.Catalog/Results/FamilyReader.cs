@@ -1,5 +1,6 @@
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Providers;
+using Campaigns.Catalog.Streams;
 using Campaigns.Domain;
 using Campaigns.Statistics.Probability;
 
@@ -60,9 +61,18 @@ internal sealed class FamilyReader(Catalog catalog)
     public FamilyMembers Members(StoredCampaign stored, FamilyColumns columns, bool testedOnly)
     {
         int planned = FamilySize(stored.Id);
-        return FamilyMembers.OneFamily(columns.PMemory, planned) is var members && testedOnly
-            ? members with { Families = [members.Families[0] with { Size = columns.Count }] }
-            : members;
+        var members = FamilyMembers.OneFamily(columns.PMemory, planned);
+        if (OnlineVerdict.ProcedureOf(stored.Campaign) is not null)
+        {
+            Dictionary<long, StreamEntry> entries = StreamEntries.Read(catalog, stored.Id);
+            members = members with
+            {
+                Entries = [.. columns.ExperimentIds.ToArray().Select(id => entries.GetValueOrDefault(id))],
+                StandingSurvivors = entries.Values.Count(e => e.Survives == true),
+            };
+        }
+
+        return testedOnly ? members with { Families = [members.Families[0] with { Size = columns.Count }] } : members;
     }
 
     private FamilyColumns ReadAll(long campaignId)

@@ -1,6 +1,7 @@
 using Campaigns.Catalog.Excluding;
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Providers;
+using Campaigns.Catalog.Streams;
 using Campaigns.Domain;
 using Campaigns.Statistics.GroupTests;
 
@@ -75,7 +76,8 @@ public sealed class TestRunner(Catalog catalog)
 
         var exclusions = new StandingExclusions(catalog, stored.Id);
         using var sets = new GroupSets(catalog, stored.Id);
-        using var results = new ResultWriter(catalog, stored.Id, lastLoad, exclusions.LastId, includeIncomplete);
+        using StreamKeeper? streams = stored.Campaign.Streams.Count == 0 ? null : new StreamKeeper(catalog, stored);
+        using var results = new ResultWriter(catalog, stored.Id, lastLoad, exclusions.LastId, includeIncomplete, streams);
         using var pipeline = new TestPipeline(includeIncomplete, results.Write);
         var plans = new PlannedTests(stored.Campaign, () => new FamilyReader(catalog).FamilySize(stored.Id), sets, exclusions, cancel);
         TestBatch batch = pipeline.Fresh();

@@ -2,6 +2,7 @@ using System.Globalization;
 using Campaigns.App.Output;
 using Campaigns.Domain;
 using Campaigns.Statistics.Corrections;
+using Campaigns.Statistics.Online;
 
 namespace Campaigns.App.Dashboard.Model;
 
@@ -11,7 +12,7 @@ public sealed class CampaignHeading
     /// <summary>Words a campaign's heading.</summary>
     /// <param name="standing">The campaign as it stands.</param>
     /// <param name="correction">Its correction; null where the program does not know it.</param>
-    public CampaignHeading(CampaignStanding standing, Correction? correction)
+    public CampaignHeading(CampaignStanding standing, ErrorProcedure? correction)
     {
         Campaign campaign = standing.Campaign;
         Code = campaign.Code;
@@ -27,7 +28,8 @@ public sealed class CampaignHeading
         ReviewTrouble = TroubleWith(standing);
         Review = standing.LastReview is not { } review ? "no review stored yet"
             : $"review {Count(review.Number)} of {review.At.UtcDateTime.ToString("yyyy-MM-dd", CultureInfo.InvariantCulture)} " + (ReviewTrouble ?? "is up to date");
-        Meaning = correction?.Guarantee ?? $"This program knows no correction named {campaign.Correction}: what it guarantees cannot be said here.";
+        string stands = correction is OnlineProcedure ? "Each experiment is decided when it arrives, and its decision stands. " : "";
+        Meaning = correction is not null ? stands + correction.Guarantee : $"This program knows no correction named {campaign.Correction}: what it guarantees cannot be said here.";
         ValidUnder = correction is null ? null : DependenceWords(correction.ValidUnder);
     }
 

@@ -13,7 +13,7 @@ public sealed class DashboardModel
     // Some 0.02 s of checks and sorting.
     private const int ManyValues = 20_000;
     private readonly DashboardSource _source;
-    private readonly Func<string, Correction?> _findCorrection;
+    private readonly Func<string, ErrorProcedure?> _findCorrection;
     private readonly Dictionary<string, ExperimentDetail> _details = [];
     private ExperimentFilter _filter = ExperimentFilter.Read("", out _)!;
     private int[] _order = [];
@@ -24,7 +24,7 @@ public sealed class DashboardModel
     /// <summary>Makes the model; the first experiment in the plan's order is selected.</summary>
     /// <param name="source">Where the campaign comes from.</param>
     /// <param name="findCorrection">The correction with a key, or null.</param>
-    public DashboardModel(DashboardSource source, Func<string, Correction?> findCorrection)
+    public DashboardModel(DashboardSource source, Func<string, ErrorProcedure?> findCorrection)
     {
         _source = source;
         _findCorrection = findCorrection;
@@ -41,7 +41,7 @@ public sealed class DashboardModel
     public CampaignStanding Standing { get; private set; }
 
     /// <summary>The campaign's correction; null where the program does not know it.</summary>
-    public Correction? Correction { get; private set; }
+    public ErrorProcedure? Correction { get; private set; }
 
     /// <summary>What every page says about the campaign.</summary>
     public CampaignHeading Heading { get; private set; }
@@ -200,9 +200,9 @@ public sealed class DashboardModel
         Changed?.Invoke();
     }
 
-    private (Correction?, CampaignHeading, Ranking) Read(CampaignStanding standing)
+    private (ErrorProcedure?, CampaignHeading, Ranking) Read(CampaignStanding standing)
     {
-        Correction? correction = _findCorrection(standing.Campaign.Correction);
+        ErrorProcedure? correction = _findCorrection(standing.Campaign.Correction);
         return (correction, new CampaignHeading(standing, correction), new Ranking(standing, correction));
     }
 

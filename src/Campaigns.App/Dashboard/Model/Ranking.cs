@@ -16,10 +16,10 @@ public sealed class Ranking
     /// <summary>Ranks the tested experiments of a campaign; equal p-values stay in the plan's order.</summary>
     /// <param name="standing">The campaign as it stands.</param>
     /// <param name="correction">Its correction; null where the program does not know it.</param>
-    public Ranking(CampaignStanding standing, Correction? correction)
+    public Ranking(CampaignStanding standing, ErrorProcedure? correction)
     {
         _standing = standing;
-        _correction = correction;
+        _correction = correction as Correction;
         Count = standing.TestedCount;
         _order = ExperimentOrder.By(standing.Experiments, ExperimentColumn.Named("p"), isFalling: false)[..Count];
         _rankOf = new int[standing.Experiments.Count];

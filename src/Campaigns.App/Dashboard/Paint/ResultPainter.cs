@@ -30,6 +30,11 @@ internal static class ResultPainter
             sheet.Line($"p {NumberText.P(p)}" + (result.AdjustedP is { } adjusted ? $", adjusted {NumberText.P(adjusted)}" : ""));
         }
 
+        if (OnlineText.Decision(result.Entry) is { } decision)
+        {
+            sheet.Line(decision);
+        }
+
         string held = string.Join(", ", heading.Held);
         (string sign, string sentence, Ink ink) = result.Survives switch
         {
