@@ -21,6 +21,7 @@ internal static class CommandLine
         () => new SurvivorsVerb(),
         () => new ComparisonsVerb(),
         () => new CorrectionsVerb(),
+        () => new PermuteVerb(),
         () => new AdjustVerb(),
         () => new SizeVerb(),
         () => new RiskVerb(),

@@ -9,7 +9,7 @@ namespace Campaigns.Statistics.CampaignPermutation;
 /// </remarks>
 internal sealed class StepDown
 {
-    private const int MostCells = 1 << 25;
+    private const int MostCells = 1 << 24;
     private const int FewQuestions = 8;
     private const double LeastLog = -690;
 
