@@ -77,7 +77,7 @@ internal sealed class PermuteTable(SpecimenFamily family, string method, Experim
         }
 
         return results.Any(r => r.Resampling is null)
-            ? $"{what} All arrangements were looked at, except for {Names([.. experiments.Where((_, i) => results[i].Resampling is null)])}: too many, or a test whose statistic is not permuted; the p of the planned test stands there as it is, which is never too small."
+            ? $"{what} All arrangements were looked at, except for {Names([.. experiments.Where((_, i) => results[i].Resampling is null)])}: too many, or a test whose statistic is not permuted; there stands the p of the planned test, under that test's assumptions, taken for one that can reach every value."
             : $"{what} All arrangements were looked at, so p is exact.";
     }
 
@@ -102,7 +102,7 @@ internal sealed class PermuteTable(SpecimenFamily family, string method, Experim
         }
 
         string tests = family.LeftOut.Count > 0 ? $" ({Names(family.LeftOut)}: tests that allow for unequal variances are not permuted, because groups are then not exchangeable)" : "";
-        yield return FormattableString.Invariant($"The other {others} of the family, without a result or not permuted{tests}, still count: wherever an experiment is adjusted, each of them is granted its p, whatever the dependence.");
+        yield return FormattableString.Invariant($"The other {others} of the family, without a result, not named or not permuted{tests}, still count: wherever an experiment is adjusted, each of them is granted its p, whatever the dependence.");
     }
 
     private static string Names(IReadOnlyList<ExperimentResult> named) => named.Count <= MostNamed
