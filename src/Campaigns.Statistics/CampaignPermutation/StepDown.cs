@@ -1,3 +1,4 @@
+using System.Buffers;
 using Campaigns.Statistics.Probability;
 
 namespace Campaigns.Statistics.CampaignPermutation;
@@ -21,6 +22,7 @@ internal sealed class StepDown
     private readonly Lock _reporting = new();
     private readonly long _work;
     private long _done;
+    private double[][] _columns = [];
 
     public StepDown(IReadOnlyList<(ArrangementColumns Columns, IReadOnlyList<SpecimenSet> Sets)> worlds, IReadOnlyList<IReadOnlyList<PValue>> given, PermutationRun run, bool byP)
     {
@@ -114,7 +116,7 @@ internal sealed class StepDown
                     Count(world, some[i], columns[i]);
                 }
 
-                running = running is null ? columns[i] : Maximum(running, columns[i]);
+                running = running is null ? [.. columns[i]] : Maximum(running, columns[i]);
                 at++;
                 int first = at < members.Length ? members[at].Position + 1 : 0;
                 Ask(running, ordered.AsSpan(first, some[i].Position + 1 - first), shares.AsSpan(first));
@@ -182,7 +184,14 @@ internal sealed class StepDown
 
     private double[][] Compute(World world, Hypothesis[] some)
     {
-        double[][] columns = [.. some.Select(_ => new double[world.Columns.Length])];
+        // The columns of the block before are used again: they are the larger part of all memory.
+        if (_columns.Length < some.Length || _columns[0].Length != world.Columns.Length)
+        {
+            _columns = [];
+            _columns = [.. some.Select(_ => new double[world.Columns.Length])];
+        }
+
+        double[][] columns = _columns[..some.Length];
         world.Columns.Fill([.. some.Select(h => (h.Set!, h.Response!))], columns, _run.Threads, Report, _run.Draws.Stop);
         return columns;
     }
@@ -203,9 +212,17 @@ internal sealed class StepDown
     /// <summary>Replaces every share by minus its p-value: how many of all arrangements reach it.</summary>
     private static void ToEvidence(double[] shares)
     {
-        int[] numbers = [.. Enumerable.Range(0, shares.Length)];
-        double[] sorted = [.. shares];
-        Array.Sort(sorted, numbers);
+        double[] sortedMemory = ArrayPool<double>.Shared.Rent(shares.Length);
+        int[] numbersMemory = ArrayPool<int>.Shared.Rent(shares.Length);
+        Span<double> sorted = sortedMemory.AsSpan(0, shares.Length);
+        Span<int> numbers = numbersMemory.AsSpan(0, shares.Length);
+        for (int i = 0; i < numbers.Length; i++)
+        {
+            numbers[i] = i;
+        }
+
+        shares.CopyTo(sorted);
+        sorted.Sort(numbers);
         for (int end = sorted.Length; end > 0;)
         {
             int first = end - 1;
@@ -215,13 +232,16 @@ internal sealed class StepDown
             }
 
             double evidence = -((sorted.Length - first) / (double)sorted.Length);
-            for (int i = first; i < end; i++)
+            foreach (int i in numbers[first..end])
             {
-                shares[numbers[i]] = evidence;
+                shares[i] = evidence;
             }
 
             end = first;
         }
+
+        ArrayPool<double>.Shared.Return(sortedMemory);
+        ArrayPool<int>.Shared.Return(numbersMemory);
     }
 
     private static double[] Maximum(double[] running, double[] column)
