@@ -24,6 +24,7 @@ internal static class CommandLine
         () => new SurvivorsVerb(),
         () => new ComparisonsVerb(),
         () => new CorrectionsVerb(),
+        () => new PermuteVerb(),
         () => new AdjustVerb(),
         () => new SizeVerb(),
         () => new RiskVerb(),
