@@ -1,3 +1,4 @@
+using Campaigns.Statistics.Corrections;
 using Campaigns.Statistics.Planning.Laws;
 using Campaigns.Statistics.Probability;
 
@@ -47,6 +48,20 @@ public static class LargeCampaign
             MixturePoint at = MixturePoint.Of(campaign, curve.At(t));
             return t <= level.Value * at.Below;
         }
+    }
+
+    /// <summary>The level at which a correction is Benjamini and Hochberg's procedure.</summary>
+    /// <param name="correction">The correction.</param>
+    /// <param name="campaign">The campaign.</param>
+    /// <param name="level">The level of the correction.</param>
+    /// <returns>q itself for that procedure, q/(1 + 1/2 + ... + 1/m) for Benjamini and Yekutieli's; null for every other.</returns>
+    public static SignificanceLevel? LevelOf(Correction correction, CampaignDesign campaign, SignificanceLevel level)
+    {
+        ArgumentNullException.ThrowIfNull(correction);
+        ArgumentNullException.ThrowIfNull(campaign);
+        return correction is BenjaminiHochberg or BenjaminiYekutieli
+            ? new SignificanceLevel(Math.Max(double.Epsilon, correction.BoundaryAt(campaign.Experiments, campaign.Experiments, level.Value)!.Value))
+            : null;
     }
 
     /// <summary>Expected true and false survivors at the effective level.</summary>

@@ -11,13 +11,16 @@ internal sealed class LevelLadder
 
     private readonly CampaignDesign _campaign;
     private readonly Correction _correction;
-    private readonly SignificanceLevel _level;
+    private readonly double _level;
     private readonly TestCurve _curve;
 
     /// <summary>The ladder of a correction with a boundary for every rank.</summary>
     public LevelLadder(CampaignDesign campaign, Correction correction, SignificanceLevel level)
     {
-        (_campaign, _correction, _level, _curve) = (campaign, correction, level, new TestCurve(campaign));
+        (_campaign, _curve) = (campaign, new TestCurve(campaign));
+
+        // Benjamini and Yekutieli's correction is Benjamini and Hochberg's at q/(1 + 1/2 + ... + 1/m); that sum is formed once.
+        (_correction, _level) = LargeCampaign.LevelOf(correction, campaign, level) is { } q ? (new BenjaminiHochberg(), q.Value) : (correction, level.Value);
         TestPoint first = At(1);
         double m = campaign.Experiments;
         double least = Math.Min(Rare(campaign.ShareNull * first.Level), Rare(campaign.ShareReal * first.Found));
@@ -31,7 +34,7 @@ internal sealed class LevelLadder
 
     /// <summary>A test at the level of a rank.</summary>
     /// <param name="rank">1 to m.</param>
-    public TestPoint At(int rank) => _curve.At(_correction.BoundaryAt(rank, _campaign.Experiments, _level.Value)!.Value);
+    public TestPoint At(int rank) => _curve.At(_correction.BoundaryAt(rank, _campaign.Experiments, _level)!.Value);
 
     /// <summary>An experiment at the level of a rank, where it has a real effect with the campaign's probability.</summary>
     /// <param name="rank">1 to m.</param>
