@@ -46,6 +46,7 @@ internal static class SizeCampaignTable
         CampaignDesign campaign = a.Campaign;
         CampaignExpectation expected = a.Expected;
         CampaignErrors? errors = expected.Errors;
+        string Probability(double p) => SizeCampaignText.Probability(p, errors?.Draws);
         return
         [
             Cell.Text(a.Correction.Key), Cell.Text(expected.IsExact ? "exact" : "simulated"),
@@ -60,10 +61,10 @@ internal static class SizeCampaignTable
             Cell.Number(expected.Survivors), Cell.Number(errors?.Survivors),
             Cell.Number(expected.TrueSurvivors), Cell.Number(errors?.TrueSurvivors),
             Cell.Number(expected.FalseSurvivors), Cell.Number(errors?.FalseSurvivors),
-            Cell.Number(expected.ShareFound), Cell.Number(errors?.ShareFound),
-            Cell.Number(expected.AnyTrue), Cell.Number(errors?.AnyTrue),
-            Cell.Number(expected.AnyFalse), Cell.Number(errors?.AnyFalse),
-            Cell.Number(expected.FalseShare), Cell.Number(errors?.FalseShare),
+            Cell.Shown(expected.ShareFound, Probability), Cell.Number(errors?.ShareFound),
+            Cell.Shown(expected.AnyTrue, Probability), Cell.Number(errors?.AnyTrue),
+            Cell.Shown(expected.AnyFalse, Probability), Cell.Number(errors?.AnyFalse),
+            Cell.Shown(expected.FalseShare, Probability), Cell.Number(errors?.FalseShare),
             Cell.Number(a.LargeCampaignTrue), Cell.Number(expected.TrueSurvivors - a.LargeCampaignTrue),
             Cell.Whole(errors?.Draws), errors is null ? Cell.Empty : Cell.Whole(question.Campaign.Seed),
         ];

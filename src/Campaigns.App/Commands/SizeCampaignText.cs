@@ -39,6 +39,14 @@ internal static class SizeCampaignText
         yield return "Choose the correction now and seal it: what is compared here holds for a choice made before the data.";
     }
 
+    /// <summary>A probability or a share, never a rounded 1 for what is less; what was seen in none or in all of n draws is bounded by 3/n, which leaves 5 % of doubt.</summary>
+    /// <param name="value">In [0, 1].</param>
+    /// <param name="draws">Campaigns that were drawn; null for an exact value.</param>
+    public static string Probability(double value, int? draws) =>
+        value > 0.9999 ? ">" + NumberText.Screen(Math.Min(0.9999, 1 - (3.0 / (draws ?? int.MaxValue))), 4)
+        : value == 0 && draws is { } none ? "<" + NumberText.Screen(3.0 / none, 2)
+        : NumberText.Screen(value, 4);
+
     private static string Campaign(IReadOnlyList<SizeCampaignAnswer> answers)
     {
         SizeCampaignAnswer first = answers[0];
@@ -67,7 +75,7 @@ internal static class SizeCampaignText
             ? FormattableString.Invariant($" with {answer.Replicates} replicates in each group, {answer.Campaign.Experiment.Observations * answer.Campaign.Experiments} observations in all")
                 + (answer.Replicates > 2 ? ", and one replicate less in each group does not reach what was wanted" : "")
             : "";
-        return $"{answer.Correction.Name} at level {answer.Level}: {found}{replicates}; about {Number(expected.Survivors)} survivors are expected, {Number(expected.FalseSurvivors)} of them false. At least one true survivor: probability {SizeTable.Power(expected.AnyTrue)}; at least one false one: {SizeTable.Power(expected.AnyFalse)}.";
+        return $"{answer.Correction.Name} at level {answer.Level}: {found}{replicates}; about {Number(expected.Survivors)} survivors are expected, {Number(expected.FalseSurvivors)} of them false. At least one true survivor: probability {Probability(expected.AnyTrue, expected.Errors?.Draws)}; at least one false one: {Probability(expected.AnyFalse, expected.Errors?.Draws)}.";
     }
 
     /// <summary>The approximation for vast campaigns, never without what it lacks.</summary>
@@ -79,16 +87,18 @@ internal static class SizeCampaignText
         }
 
         (CampaignDesign campaign, SignificanceLevel level) = (answer.Campaign, answer.Level);
-        string where = answer.Replicates is { } n ? FormattableString.Invariant($"With {n} replicates") : "With these groups";
+        string where = answer.Replicates is { } n ? FormattableString.Invariant($"with {n} replicates ") : "";
         if (LargeCampaign.SizeHelps(campaign, level))
         {
-            yield return $"If vast: in ever larger campaigns of this kind bh finds {Percent(vast / campaign.ExpectedReal)} of the real effects, in this one {Percent(found)}. Taken for this campaign, that approximation has {Number(vast)} true survivors instead of {Number(answer.Expected.TrueSurvivors)}: it leaves out that a lucky survivor lowers the bar for the next.";
+            bool isNear = Math.Abs(answer.Expected.TrueSurvivors - vast) < 0.01 * vast;
+            yield return $"If vast: {where}in ever larger campaigns of this kind bh finds {Percent(vast / campaign.ExpectedReal)} of the real effects, in this one {Percent(found)}."
+                + (isNear ? "" : $" Taken for this campaign, that approximation has {Number(vast)} true survivors instead of {Number(answer.Expected.TrueSurvivors)}: it leaves out that a lucky survivor lowers the bar for the next.");
             yield break;
         }
 
         double slope = LargeCampaign.SlopeAtZero(campaign.Experiment, campaign.Noncentrality);
         string enough = answer.Replicates is not null && LeastReplicates(answer) is { } least ? FormattableString.Invariant($" From {least} replicates on size helps.") : " Larger effects or more observations would change that.";
-        yield return $"{where} a larger campaign does not help under bh: the larger it is, the smaller the share of real effects found, down to none. A real effect is at most {Number(slope)} times as likely to pass a strict level as a false one, and more than {Number(LargeCampaign.CriticalSlope(campaign, level))} times would be needed.{enough}";
+        yield return $"If vast: {where}a larger campaign does not help under bh; the larger it is, the smaller the share of real effects found, down to none. A real effect is at most {Number(slope)} times as likely to pass a strict level as a false one, and more than {Number(LargeCampaign.CriticalSlope(campaign, level))} times would be needed.{enough}";
     }
 
     private static int? LeastReplicates(SizeCampaignAnswer answer)
