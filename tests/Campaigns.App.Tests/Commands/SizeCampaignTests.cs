@@ -119,7 +119,7 @@ public sealed class SizeCampaignTests : IDisposable
         // 30 of 100 real, f = 0.4, 3 groups of 5: a slope of 26.18 against 64.33 needed (planning.csv).
         string weak = Text("--campaign", "100", "--share-real", "0.3", "--groups", "3", "--effect", "0.4", "--replicates", "5", "--correction", "bh");
         Assert.Contains("with 5 replicates a larger campaign does not help under bh", weak, StringComparison.Ordinal);
-        // With 6 replicates the slope is 67.0 (mpmath).
+        // With 6 replicates the slope is 70.3 (mpmath).
         Assert.Contains("at most 26.2 times as likely to pass a strict level as a false one, and more than 64.3 times would be needed. From 6 replicates on size helps.", weak, StringComparison.Ordinal);
         string sure = Text("--campaign", "100", "--real", "30", "--groups", "3", "--effect", "9", "--replicates", "5", "--correction", "bh,hommel", "--draws", "200");
         Assert.DoesNotContain(" 1.0000", sure, StringComparison.Ordinal);

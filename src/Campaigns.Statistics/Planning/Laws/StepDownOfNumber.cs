@@ -1,7 +1,7 @@
 namespace Campaigns.Statistics.Planning.Laws;
 
 /// <summary>The law of a step-down procedure whose levels depend on rank alone, where the number of real effects is fixed.</summary>
-/// <remarks>The walk of <see cref="StepDownOfShare"/> with two counts, of p-values without and with an effect that lie above the level reached, each thinned with its own ratio. Derived here. Time: ranks up to the last survivor times the product of the two spreads.</remarks>
+/// <remarks>The walk of <see cref="StepDownOfShare"/> with two counts, of p-values without and with an effect that lie above the level reached, each thinned with its own ratio. This walk was derived here; exact laws by other sums: Roquain and Villers (2011), Annals of Statistics 39:584-612. Time: ranks up to the last survivor times the product of the two spreads.</remarks>
 internal static class StepDownOfNumber
 {
     public static CampaignExpectation Expect(CampaignDesign campaign, LevelLadder ladder, CancellationToken stop)

@@ -4,7 +4,7 @@ namespace Campaigns.Statistics.Planning.Laws;
 /// <remarks>
 /// R is the least i at which N_(i+1), the count of p-values up to t_(i+1), is no more than i: the first rank whose p-value lies above its level; then exactly i p-values lie up to t_(i+1), and they survive. The walk goes up from rank 1: given that L p-values lie above t_(i-1), each of them lies up to t_i with probability (H(t_i) - H(t_(i-1)))/(1 - H(t_(i-1))), independently, and is then false with probability pi0 (t_i - t_(i-1))/(H(t_i) - H(t_(i-1))). Walks with N_i = i - 1 end at rank i.
 /// Survivors are no independent draws here, since early ones had to be small. So beside the probability of each state the walk carries its expected false and true survivors and the chance of any, all as sums of positive terms.
-/// Derived here. Time: ranks up to the last survivor times the spread of N times the few that pass a step.
+/// This walk was derived here; exact laws by other sums: Roquain and Villers (2011), Annals of Statistics 39:584-612. Time: ranks up to the last survivor times the spread of N times the few that pass a step.
 /// </remarks>
 internal sealed class StepDownOfShare
 {

@@ -1,7 +1,7 @@
 namespace Campaigns.Statistics.Planning.Laws;
 
 /// <summary>The law of a step-up procedure whose levels depend on rank alone, where the number of real effects is fixed.</summary>
-/// <remarks>The walk of <see cref="StepUpOfShare"/> with two counts, of p-values without and with an effect, that are thinned each with its own ratio: t_(j-1)/t_j and G(t_(j-1))/G(t_j). Derived here. Time m times the product of the two spreads.</remarks>
+/// <remarks>The walk of <see cref="StepUpOfShare"/> with two counts, of p-values without and with an effect, that are thinned each with its own ratio: t_(j-1)/t_j and G(t_(j-1))/G(t_j). This walk was derived here; exact laws by other sums: Roquain and Villers (2011), Annals of Statistics 39:584-612. Time m times the product of the two spreads.</remarks>
 internal static class StepUpOfNumber
 {
     public static CampaignExpectation Expect(CampaignDesign campaign, LevelLadder ladder, CancellationToken stop)

@@ -4,7 +4,7 @@ namespace Campaigns.Statistics.Planning.Laws;
 /// <remarks>
 /// Levels t_1 to t_m ascend; R is the greatest j with N_j at least j, where N_j counts p-values up to t_j, and the p-values up to t_R survive. N_m is binomial; given N_j = n each of the n p-values lies below t_(j-1) with probability H(t_(j-1))/H(t_j), independently. The walk goes down from m and stops where N_j = j.
 /// Given R = j the j survivors are independent draws from what lies below t_j, so each is false with probability pi0 t_j/H(t_j): the law of R is all that is needed.
-/// Derived here; the counts of BH are those of Genovese and Wasserman (2002) for finite m. Time m times the spread of N times the few that leave at a step.
+/// This walk was derived here; exact laws of such procedures by other sums: Glueck, Mandel, Karimpour-Fard, Hunter and Muller (2008), International Journal of Biostatistics 4:11; Roquain and Villers (2011), Annals of Statistics 39:584-612. Time m times the spread of N times the few that leave at a step.
 /// </remarks>
 internal static class StepUpOfShare
 {
