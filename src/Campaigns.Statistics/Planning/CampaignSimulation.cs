@@ -6,7 +6,7 @@ using Campaigns.Statistics.Probability;
 namespace Campaigns.Statistics.Planning;
 
 /// <summary>What procedures bring over a whole campaign, by drawing campaigns, for those without an exact law.</summary>
-/// <remarks>All procedures judge the same drawn campaigns, so that their differences are known better than each alone. Time: about 0.3 us an experiment and draw, beside what the procedures take.</remarks>
+/// <remarks>All procedures judge the same drawn campaigns, so that their differences are known better than each alone. Time: about 0.3 us an experiment and draw on two cores, beside what the procedures take.</remarks>
 public static class CampaignSimulation
 {
     /// <summary>A correction as a decision over a family.</summary>
