@@ -10,4 +10,4 @@ namespace Campaigns.App.Commands;
 /// <param name="Corrections">The corrections, in the order in which people see them.</param>
 /// <param name="Draws">Campaigns to draw where no exact law is known.</param>
 /// <param name="Seed">Their seed.</param>
-internal sealed record SizeCampaign(int Experiments, IReadOnlyList<RealEffects> Real, IReadOnlyList<double> Wanted, IReadOnlyList<Correction> Corrections, int Draws, int Seed);
+internal sealed record SizeCampaign(int Experiments, IReadOnlyList<RealEffects> Real, IReadOnlyList<double> Wanted, IReadOnlyList<ErrorProcedure> Corrections, int Draws, int Seed);

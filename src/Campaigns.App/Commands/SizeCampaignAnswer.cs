@@ -15,4 +15,4 @@ namespace Campaigns.App.Commands;
 /// <param name="Expected">What is expected.</param>
 /// <param name="LargeCampaignTrue">True survivors as the approximation for large campaigns has them; null for corrections without one.</param>
 internal sealed record SizeCampaignAnswer(
-    Correction Correction, SignificanceLevel Level, CampaignDesign Campaign, int? Replicates, double Effect, double? LargestDifference, double? Wanted, CampaignExpectation Expected, double? LargeCampaignTrue);
+    ErrorProcedure Correction, SignificanceLevel Level, CampaignDesign Campaign, int? Replicates, double Effect, double? LargestDifference, double? Wanted, CampaignExpectation Expected, double? LargeCampaignTrue);

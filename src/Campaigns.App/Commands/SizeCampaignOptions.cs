@@ -1,6 +1,7 @@
 using System.CommandLine;
 using Campaigns.Domain;
 using Campaigns.Statistics.Corrections;
+using Campaigns.Statistics.Online;
 using Campaigns.Statistics.Planning;
 
 namespace Campaigns.App.Commands;
@@ -15,7 +16,7 @@ internal sealed class SizeCampaignOptions
     private readonly Option<double[]?> _shares = NumberLists.Reals("--share-real", "P,...", "With --campaign: the probability with which an experiment has the effect.", 0, 1);
     private readonly Option<int[]?> _numbers = NumberLists.Wholes("--real", "N,...", "With --campaign: the fixed number of experiments that have the effect, instead of a share.", 0, MostExperiments);
     private readonly Option<double[]?> _wanted = NumberLists.Reals("--wanted", "P,...", "With --campaign: the share of the real effects that is to be found; gives the replicates.", 0, 1);
-    private readonly Option<string?> _corrections = new("--correction") { Description = "With --campaign: keys of the corrections, separated by commas (else all).", HelpName = "KEY,KEY" };
+    private readonly Option<string?> _corrections = new("--correction") { Description = "With --campaign: keys of the corrections, separated by commas (else all batch corrections that need no weights; online procedures are drawn when named).", HelpName = "KEY,KEY" };
     private readonly Option<int?> _draws = TypedOptions.WholeOrNone("--draws", 100, "With --campaign: campaigns to draw where no exact law is known (else 2000).");
     private readonly Option<int?> _seed = TypedOptions.WholeOrNone("--seed", 0, "With --campaign: seed of the drawn campaigns (else 1).");
 
@@ -65,21 +66,22 @@ internal sealed class SizeCampaignOptions
             : [.. shares?.Select(RealEffects.OfShare) ?? numbers!.Select(RealEffects.OfNumber)];
     }
 
-    private static IReadOnlyList<Correction> Chosen(string? keys)
+    private static IReadOnlyList<ErrorProcedure> Chosen(string? keys)
     {
         if (keys is null)
         {
-            return CorrectionRegistry.All;
+            return CorrectionRegistry.FromPAlone;
         }
 
         string[] typed = keys.Split(',', StringSplitOptions.TrimEntries);
-        foreach (string key in typed.Where(k => CorrectionRegistry.Find(k) is null))
+        ErrorProcedure[] known = [.. CorrectionRegistry.FromPAlone, .. OnlineRegistry.All];
+        foreach (string key in typed.Where(k => known.All(c => c.Key != k)))
         {
-            string[] known = [.. CorrectionRegistry.All.Select(c => c.Key)];
-            string near = Nearest.Of(key, known) is { } nearest ? $" (did you mean '{nearest}'?)" : "";
-            throw new UsageException($"There is no correction '{key}' to plan with{near}; known are {string.Join(", ", known)}.");
+            string[] names = [.. known.Select(c => c.Key)];
+            string near = Nearest.Of(key, names) is { } nearest ? $" (did you mean '{nearest}'?)" : "";
+            throw new UsageException($"There is no correction '{key}' to plan with{near}; known are {string.Join(", ", names)}.");
         }
 
-        return [.. CorrectionRegistry.All.Where(c => typed.Contains(c.Key, StringComparer.Ordinal))];
+        return [.. known.Where(c => typed.Contains(c.Key, StringComparer.Ordinal))];
     }
 }

@@ -44,7 +44,7 @@ internal sealed class SizeCampaignQuestion(SizeCampaign campaign, SizeQuestion o
         return Campaign.Corrections.Zip(work.Expect(planned, Campaign.Corrections, level), (correction, expected) => Answer(correction, level, planned, design.Replicates, effect, null, expected));
     }
 
-    private SizeCampaignAnswer Replicates(SizeCampaignWork work, Correction correction, SignificanceLevel level, RealEffects real, SizeEffect effect, double wanted)
+    private SizeCampaignAnswer Replicates(SizeCampaignWork work, ErrorProcedure correction, SignificanceLevel level, RealEffects real, SizeEffect effect, double wanted)
     {
         if (real.Number == 0)
         {
@@ -67,7 +67,7 @@ internal sealed class SizeCampaignQuestion(SizeCampaign campaign, SizeQuestion o
     private CampaignDesign Planned(RealEffects real, SizeEffect effect, SizeDesign design) =>
         new(Campaign.Experiments, real, design.Design, Math.Min(double.MaxValue, OneWayPower.Noncentrality(design.Design, effect.CohenF(design.Design, One.Sizes))));
 
-    private SizeCampaignAnswer Answer(Correction correction, SignificanceLevel level, CampaignDesign planned, int? replicates, SizeEffect effect, double? wanted, CampaignExpectation expected) => new(
+    private SizeCampaignAnswer Answer(ErrorProcedure correction, SignificanceLevel level, CampaignDesign planned, int? replicates, SizeEffect effect, double? wanted, CampaignExpectation expected) => new(
         correction, level, planned, replicates, effect.CohenF(planned.Experiment, One.Sizes), effect.LargestDifference(planned.Experiment, planned.Noncentrality), wanted, expected,
-        LargeCampaign.LevelOf(correction, planned, level) is { } q ? LargeCampaign.Approximate(planned, q).TrueSurvivors : null);
+        correction is Correction batch && LargeCampaign.LevelOf(batch, planned, level) is { } q ? LargeCampaign.Approximate(planned, q).TrueSurvivors : null);
 }

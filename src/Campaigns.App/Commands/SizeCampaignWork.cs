@@ -11,14 +11,14 @@ internal sealed class SizeCampaignWork(SizeCampaign campaign, Action<WorkProgres
     private readonly Lock _telling = new();
 
     /// <summary>What corrections bring, each by its exact law where there is one; the others judge the same drawn campaigns.</summary>
-    public IReadOnlyList<CampaignExpectation> Expect(CampaignDesign planned, IReadOnlyList<Correction> corrections, SignificanceLevel level)
+    public IReadOnlyList<CampaignExpectation> Expect(CampaignDesign planned, IReadOnlyList<ErrorProcedure> corrections, SignificanceLevel level)
     {
-        Correction[] drawn = [.. corrections.Where(c => !CampaignPower.IsExact(planned, c))];
+        ErrorProcedure[] drawn = [.. corrections.Where(c => !CampaignPower.IsExact(planned, c))];
         var simulated = new Queue<CampaignExpectation>(drawn.Length == 0 ? [] : Drawn(planned, drawn, level));
-        return [.. corrections.Select(c => CampaignPower.IsExact(planned, c) ? CampaignPower.Exact(planned, c, level, stop) : simulated.Dequeue())];
+        return [.. corrections.Select(c => CampaignPower.IsExact(planned, c) ? CampaignPower.Exact(planned, (Correction)c, level, stop) : simulated.Dequeue())];
     }
 
-    private IReadOnlyList<CampaignExpectation> Drawn(CampaignDesign planned, Correction[] corrections, SignificanceLevel level)
+    private IReadOnlyList<CampaignExpectation> Drawn(CampaignDesign planned, ErrorProcedure[] corrections, SignificanceLevel level)
     {
         int done = 0;
         string what = $"drawing campaigns for {string.Join(", ", corrections.Select(c => c.Key))}";

@@ -19,11 +19,11 @@ public static class CampaignPower
 
     /// <summary>Whether an exact law is known and affordable.</summary>
     /// <param name="campaign">The campaign.</param>
-    /// <param name="correction">The correction.</param>
-    public static bool IsExact(CampaignDesign campaign, Correction correction)
+    /// <param name="procedure">The correction.</param>
+    public static bool IsExact(CampaignDesign campaign, ErrorProcedure procedure)
     {
         ArgumentNullException.ThrowIfNull(campaign);
-        return SteppingOf.Correction(correction) switch
+        return (procedure is Correction correction ? SteppingOf.Correction(correction) : Stepping.None) switch
         {
             Stepping.None => false,
             Stepping.OneLevel => true,

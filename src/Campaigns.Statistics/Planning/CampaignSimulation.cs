@@ -1,4 +1,5 @@
 using Campaigns.Statistics.Corrections;
+using Campaigns.Statistics.Online;
 using Campaigns.Statistics.Planning.Drawing;
 using Campaigns.Statistics.Planning.Laws;
 using Campaigns.Statistics.Probability;
@@ -9,12 +10,28 @@ namespace Campaigns.Statistics.Planning;
 /// <remarks>All procedures judge the same drawn campaigns, so that their differences are known better than each alone. Time: about 0.3 us an experiment and draw on two cores, beside what the procedures take.</remarks>
 public static class CampaignSimulation
 {
-    /// <summary>A correction as a decision over a family.</summary>
-    /// <param name="correction">The correction.</param>
+    /// <summary>A procedure as a decision over a family; an online one takes the experiments in the order of the plan, with its usual settings and their number as its horizon.</summary>
+    /// <param name="procedure">A batch correction or an online procedure.</param>
     /// <param name="level">Its level.</param>
-    public static FamilyDecision Decision(Correction correction, SignificanceLevel level)
+    /// <exception cref="ArgumentException">A procedure of another kind.</exception>
+    public static FamilyDecision Decision(ErrorProcedure procedure, SignificanceLevel level) => procedure switch
     {
-        ArgumentNullException.ThrowIfNull(correction);
+        Correction correction => Decision(correction, level),
+        OnlineProcedure online => Decision(online, level),
+        _ => throw new ArgumentException($"{procedure?.Name} is neither a batch correction nor an online procedure.", nameof(procedure)),
+    };
+
+    private static FamilyDecision Decision(OnlineProcedure procedure, SignificanceLevel level) => (pValues, survives) =>
+    {
+        OnlineStream stream = procedure.Start(OnlineSettings.For(procedure, level, pValues.Length));
+        for (int i = 0; i < pValues.Length; i++)
+        {
+            survives[i] = stream.Report(stream.Register().Position, PValue.FromValue(pValues[i]));
+        }
+    };
+
+    private static FamilyDecision Decision(Correction correction, SignificanceLevel level)
+    {
         return (pValues, survives) =>
         {
             double[] adjusted = new double[pValues.Length];
