@@ -10,7 +10,7 @@ namespace Campaigns.Statistics.CampaignPermutation;
 /// </remarks>
 internal sealed class ArrangementColumns
 {
-    private const int PlacesInBatch = 1 << 19;
+    private const int PlacesInBatch = 1 << 14;
 
     private readonly IReadOnlyList<SpecimenSet> _sets;
     private readonly RandomDraws? _draws;

@@ -16,9 +16,10 @@ public sealed class SpecimenSet
     /// <exception cref="ArgumentException">Fewer than two groups, a specimen without a block, or the spans differ in length.</exception>
     public SpecimenSet(ReadOnlySpan<ushort> groups, ReadOnlySpan<int> blocks)
     {
-        if (!blocks.IsEmpty && (blocks.Length != groups.Length || blocks.ContainsAnyExceptInRange(0, blocks.Length - 1)))
+        int[] numbers = [.. blocks.ToArray().Distinct().Order()];
+        if (!blocks.IsEmpty && (blocks.Length != groups.Length || numbers[0] != 0 || numbers[^1] != numbers.Length - 1))
         {
-            throw new ArgumentException("Every specimen needs its block, or none has one.", nameof(blocks));
+            throw new ArgumentException("Every specimen needs its block, numbered from 0 without gaps, or none has one.", nameof(blocks));
         }
 
         _groups = groups.ToArray();

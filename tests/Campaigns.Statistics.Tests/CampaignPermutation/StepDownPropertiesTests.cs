@@ -138,6 +138,7 @@ public sealed class StepDownPropertiesTests
         Assert.Throws<ArgumentException>(() => SetBuilder.Set([0, 1, 0, 1], [], (SetBuilder.Whole(1, 2, 3, 4), PermutedStatistic.WithinBlocks)));
         Assert.Throws<ArgumentException>(() => SetBuilder.Set([0, 1, 0, 1], [0, 0, 1, 1], (SetBuilder.Whole(1, 1, 4, 4), PermutedStatistic.WithinBlocks)));
         Assert.Throws<ArgumentException>(() => SetBuilder.Set([0, 1, 0, 1], [0, 0, -1, 0], (SetBuilder.Whole(1, 1, 4, 4), PermutedStatistic.Values)));
+        Assert.Throws<ArgumentException>(() => SetBuilder.Set([0, 1, 0, 1], [0, 0, 2, 2], (SetBuilder.Whole(1, 2, 4, 4), PermutedStatistic.Values)));
         int[] many = [.. Enumerable.Range(0, 40).Select(i => i % 2)];
         SpecimenSet drawn = SetBuilder.Set(many, [.. many.Select((g, i) => (BigInteger)i)]);
         Assert.Throws<ArgumentException>(() => StepDownPermutation.ExactMinP([drawn], [], Nothing));
