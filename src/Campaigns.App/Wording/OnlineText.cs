@@ -13,7 +13,7 @@ internal static class OnlineText
     /// <summary>The settings of a stream in one phrase, for example "shape jm over 40 experiments, initial wealth 0.025".</summary>
     public static string Of(OnlineSettings settings)
     {
-        string horizon = settings.Horizon is { } last ? FormattableString.Invariant($"over {last} experiments") : "without end";
+        string horizon = settings.Horizon is { } last ? FormattableString.Invariant($"over {last} experiment{(last == 1 ? "" : "s")}") : "without end";
         return $"shape {settings.Shape} {horizon}{Part("initial wealth", settings.InitialWealth)}{Part("lambda", settings.Lambda)}{Part("tau", settings.Tau)}";
 
         static string Part(string name, double? value) => value is { } given ? $", {name} {NumberText.RoundTrip(given)}" : "";
@@ -53,6 +53,10 @@ internal static class OnlineText
     /// <summary>A stream in a sentence without its full stop.</summary>
     public static string Named(StreamHead stream) =>
         FormattableString.Invariant($"Stream {stream.Number} since {stream.StartedAt:yyyy-MM-dd HH:mm} UTC: {stream.Procedure.Name}, {Of(stream.Settings)}{(stream.Reason is null ? "" : $" (reason: {stream.Reason})")}");
+
+    /// <summary>What a test run decided, in a sentence; empty where it decided nothing.</summary>
+    public static string Decided(int decided, int survivors) => decided == 0 ? ""
+        : FormattableString.Invariant($" {decided} decided as they arrived: {survivors} survive{(survivors == 1 ? "s" : "")}. The decisions stand.");
 
     /// <summary>A sentence on experiments that were given nothing; null where there are none.</summary>
     public static string? WithoutLevel(IEnumerable<StreamEntry> entries)

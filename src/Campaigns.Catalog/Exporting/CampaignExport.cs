@@ -5,6 +5,7 @@ using Campaigns.Catalog.Measurements;
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Providers;
 using Campaigns.Catalog.Results;
+using Campaigns.Catalog.Streams;
 using Campaigns.Domain;
 using Campaigns.Statistics.Probability;
 
@@ -25,6 +26,12 @@ public sealed class CampaignExport(Catalog catalog)
 
     /// <summary>Name of the file of observations left out of the analysis.</summary>
     public const string ExclusionsName = "exclusions.csv";
+
+    /// <summary>Name of the file of streams, where experiments are judged as they arrive.</summary>
+    public const string StreamsName = "streams.csv";
+
+    /// <summary>Name of the file of standing decisions.</summary>
+    public const string DecisionsName = "decisions.csv";
 
     /// <summary>Writes the folder whole: it is made beside its place and moved there when it is finished.</summary>
     /// <param name="standing">The campaign as it stands.</param>
@@ -58,6 +65,12 @@ public sealed class CampaignExport(Catalog catalog)
             if (new ExclusionStore(catalog).All(standing.Campaign.Code) is { Count: > 0 } decisions)
             {
                 WriteFile(draft, ExclusionsName, writer => WriteExclusions(decisions, writer));
+            }
+
+            if (standing.Campaign.Streams.Count > 0)
+            {
+                WriteFile(draft, StreamsName, writer => StreamFiles.WriteStreams(standing.Campaign, writer));
+                WriteFile(draft, DecisionsName, writer => StreamFiles.WriteDecisions(new StreamStore(catalog).Decisions(standing.Campaign.Code), writer, textOfP));
             }
 
             WriteFile(draft, ReviewsName, writer => WriteReviews(standing, writer, textOfP));

@@ -12,7 +12,14 @@ namespace Campaigns.Catalog.Results;
 /// <param name="NotTestable">Experiments whose data cannot give a result, with the reason stored.</param>
 /// <param name="Incomplete">Experiments left alone because planned values are missing.</param>
 /// <param name="Ran">Whether a run was stored; false where there was nothing to test.</param>
-public sealed record TestRunSummary(int Tested, int NotTestable, int Incomplete, bool Ran);
+public sealed record TestRunSummary(int Tested, int NotTestable, int Incomplete, bool Ran)
+{
+    /// <summary>Experiments decided for good, in a campaign that is judged as its experiments arrive.</summary>
+    public int Decided { get; init; }
+
+    /// <summary>Those of them that survive.</summary>
+    public int DecidedSurvivors { get; init; }
+}
 
 /// <summary>Runs the planned test of every experiment that is complete and not yet tested.</summary>
 /// <param name="catalog">The open catalog.</param>
@@ -104,7 +111,11 @@ public sealed class TestRunner(Catalog catalog)
         pipeline.Finish();
         cancel.ThrowIfCancellationRequested();
         bool ran = results.Tested + results.NotTestable > 0;
-        return new TestRunSummary(results.Tested, results.NotTestable, ran || !last.RanBefore ? results.Incomplete : Waiting(stored.Id), ran);
+        return new TestRunSummary(results.Tested, results.NotTestable, ran || !last.RanBefore ? results.Incomplete : Waiting(stored.Id), ran)
+        {
+            Decided = streams?.Decided ?? 0,
+            DecidedSurvivors = streams?.DecidedSurvivors ?? 0,
+        };
     }
 
     private (long LoadId, long ExclusionId, bool RanBefore) LastRun(long campaignId)

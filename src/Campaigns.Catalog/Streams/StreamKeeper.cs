@@ -46,6 +46,12 @@ internal sealed class StreamKeeper : IDisposable
         _decide = catalog.Prepare("INSERT INTO standing_decisions (stream_id, position, known_order, test_run_id, p, log_p, survives, decided_at) VALUES (?1, ?2, ?3, ?4, ?5, ?6, ?7, ?8)");
     }
 
+    /// <summary>Experiments decided by this keeper.</summary>
+    public int Decided { get; private set; }
+
+    /// <summary>Those of them that survive.</summary>
+    public int DecidedSurvivors { get; private set; }
+
     /// <summary>Whether an experiment was given a level already.</summary>
     public bool IsRegistered(long experimentId) => _places.ContainsKey(experimentId);
 
@@ -82,6 +88,8 @@ internal sealed class StreamKeeper : IDisposable
             .Bind(5, p?.Value).Bind(6, p is { } given && given.Value < PackedReviewLines.LogStoredBelow ? given.Log : null)
             .Bind(7, survives ? 1L : 0L).Bind(8, _catalog.Now).Run();
         _places[experimentId] = place with { IsDecided = true };
+        Decided++;
+        DecidedSurvivors += survives ? 1 : 0;
     }
 
     public void Dispose()
