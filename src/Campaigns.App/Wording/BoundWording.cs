@@ -21,6 +21,9 @@ internal static class BoundWording
         ? FormattableString.Invariant($"{100 * confidence:0.######}%")
         : "more than 99.999999%";
 
+    /// <summary>What the bound rests on where no choice is offered.</summary>
+    public const string SimesAlone = "The bound holds if Simes' inequality holds for the true nulls, as it does for independent and for positively dependent experiments (Goeman and Solari 2011).";
+
     /// <summary>What the dependence has to be, and who proved it.</summary>
     /// <param name="testing">The closed testing.</param>
     public static string Assumption(SimesClosedTesting testing) => testing.AnyDependence
