@@ -92,7 +92,7 @@ internal static class RiskPicture
 
     /// <summary>A per cent without its sign; what is neither 0 nor 1 never looks so.</summary>
     private static string PercentText(double risk) =>
-        risk is > 0 and < 1e-5 ? NumberText.Screen(100 * risk, 2)
+        risk is > 0 and < 1e-4 ? NumberText.Screen(100 * risk, 2)
         : risk is > 0.9999 and < 1 ? ">99.99"
-        : (100 * risk).ToString("0.##", CultureInfo.InvariantCulture);
+        : (100 * risk).ToString("0.00", CultureInfo.InvariantCulture);
 }
