@@ -14,7 +14,7 @@ internal static class RiskTable
         new("campaign", "campaign"), new("tests", "tests", true), new("level", "level", true), new("expected_false_positives", "expected false", true),
         new("risk_independent", "risk", true), new("risk_at_least", "at least", true, 3), new("risk_at_most", "at most", true, 3),
         new("uncorrected_hits", "hits", true), new("survivors", "survive", true), new("correction", "correction"), new("guarantee", null),
-        new("false_survivors_at_most", "false at most", true), new("confidence", null, true),
+        new("true_null_share", "nulls", true, 1), new("expected_false_survivors", "false est.", true, 1), new("false_survivors_at_most", "false at most", true), new("confidence", null, true),
         new("corrected_risk", "corrected", true, 2), new("corrected_risk_is", null), new("corrected_expected_false", null, true), new("family_size", null, true),
     ];
 
@@ -28,12 +28,14 @@ internal static class RiskTable
             rows.Add(Total(risks));
         }
 
-        var below = new List<string>
-        {
+        List<string> below =
+        [
             "Expected false: false positives to expect without any correction if nothing is real (tests times level), whatever the dependence. Risk: that there is at least one, for independent tests; at least, at most: its bounds whatever the dependence. Hits: experiments whose own p is at most the level; survive: those left by the correction.",
+            "Nulls: the estimated share of true nulls among the tests, from the p-values above 0.5. False est.: how many survivors may be expected to be false, that share times the tests times the largest surviving p (Storey 2002). Estimates for independent tests, no bounds; fewer than about 20 tests tell little.",
+            .. risks.Where(r => r.Overview.TestedCount > 0 && r.TrueNulls.Reason is not null).Select(r => $"{r.Overview.Campaign.Code}: {r.TrueNulls.Reason}"),
             "False at most: of the survivors, by closed testing over all planned experiments of the campaign, with the confidence of 1 - level, if Simes' inequality holds for the true nulls (Goeman and Solari 2011). " + BoundWording.NoEstimate,
             CorrectedMeans([.. risks.Select(r => r.Corrected).OfType<CorrectedRisk>()]),
-        };
+        ];
         below.AddRange(risks.Select(r => $"{r.Overview.Campaign.Code}: {CampaignText.Goal(r.Overview.Campaign)}. {FamilyVerdict.CorrectionOf(r.Overview.Campaign).Guarantee}{Numbers(r)}"));
         below.AddRange(campaigns.SelectMany(c => CampaignText.Deviations(c).Select(d => $"{c.Campaign.Code}: {d}")));
         if (campaigns.Length > 1)
@@ -94,7 +96,7 @@ internal static class RiskTable
             Cell.Number(FamilyRisk.ExpectedFalsePositives(tests, c.Campaign.Level)), Cell.Number(FamilyRisk.AtLeastOneIfIndependent(tests, c.Campaign.Level)),
             Cell.Number(FamilyRisk.AtLeastOneLowerBound(tests, c.Campaign.Level)), Cell.Number(FamilyRisk.AtLeastOneUpperBound(tests, c.Campaign.Level)),
             Cell.Whole(c.UncorrectedCount), Cell.Whole(c.SurvivorCount), Cell.Text(c.Campaign.Correction), Cell.Text(FamilyVerdict.CorrectionOf(c.Campaign).Guarantee),
-            Cell.Whole(risk.SurvivorBound.FalseAtMost), Cell.Setting(risk.Confidence),
+            Cell.Number(risk.TrueNulls.Share), Cell.Number(risk.ExpectedFalseSurvivors), Cell.Whole(risk.SurvivorBound.FalseAtMost), Cell.Setting(risk.Confidence),
             Cell.Number(risk.Corrected?.AtLeastOne), Cell.Text(Exactness(risk.Corrected)), Cell.Number(risk.Corrected?.ExpectedFalse), Cell.Whole(c.FamilySize),
         ];
     }
@@ -113,7 +115,7 @@ internal static class RiskTable
             Cell.Number(expected), Cell.Number(-Accurate.Expm1(logNone)),
             Cell.Number(campaigns.Max(c => FamilyRisk.AtLeastOneLowerBound(c.TestedCount, c.Campaign.Level))), Cell.Number(Math.Min(1, expected)),
             Cell.Whole(campaigns.Sum(c => (long)c.UncorrectedCount)), Cell.Whole(campaigns.Sum(c => (long)c.SurvivorCount)), Cell.Empty, Cell.Empty,
-            Cell.Empty, Cell.Empty,
+            Cell.Empty, risks.All(r => r.ExpectedFalseSurvivors is not null) ? Cell.Number(risks.Sum(r => r.ExpectedFalseSurvivors!.Value)) : Cell.Empty, Cell.Empty, Cell.Empty,
             allKnown ? Cell.Number(-Accurate.Expm1(logNoneCorrected)) : Cell.Empty,
             allKnown ? Cell.Text(risks.All(r => r.Corrected!.Value.IsExact) ? "exact" : "at most") : Cell.Empty,
             risks.All(r => r.Corrected?.ExpectedFalse is not null) ? Cell.Number(risks.Sum(r => r.Corrected!.Value.ExpectedFalse!.Value)) : Cell.Empty,
