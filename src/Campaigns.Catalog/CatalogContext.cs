@@ -36,6 +36,24 @@ public sealed class CatalogContext(DbContextOptions<CatalogContext> options) : D
     /// <summary>Reviews.</summary>
     public DbSet<ReviewRow> Reviews => Set<ReviewRow>();
 
+    /// <summary>Families of campaigns that have several.</summary>
+    public DbSet<FamilyRow> Families => Set<FamilyRow>();
+
+    /// <summary>Families as reviews found them.</summary>
+    public DbSet<ReviewFamilyRow> ReviewFamilies => Set<ReviewFamilyRow>();
+
+    /// <summary>What campaigns say of their online procedure before the seal.</summary>
+    public DbSet<OnlineSettingsRow> OnlineSettings => Set<OnlineSettingsRow>();
+
+    /// <summary>Online procedures with their settings.</summary>
+    public DbSet<StreamRow> Streams => Set<StreamRow>();
+
+    /// <summary>Levels given to experiments before their p-values were seen.</summary>
+    public DbSet<StreamEntryRow> StreamEntries => Set<StreamEntryRow>();
+
+    /// <summary>Standing decisions.</summary>
+    public DbSet<StandingDecisionRow> StandingDecisions => Set<StandingDecisionRow>();
+
     /// <summary>Makes a context on a connection that is open already and stays its owner's.</summary>
     /// <remarks>The model that was compiled ahead (CompiledModel) is found by its attribute and used, except where migrations are made or compared.</remarks>
     /// <param name="connection">An open SQLite connection.</param>

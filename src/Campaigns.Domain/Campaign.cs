@@ -21,8 +21,14 @@ public sealed record Campaign
     /// <summary>Alpha or q, as <see cref="ErrorRate"/> says.</summary>
     public required SignificanceLevel Level { get; init; }
 
-    /// <summary>Key of the correction.</summary>
+    /// <summary>Key of the correction, or of the online procedure by which experiments are judged as they arrive.</summary>
     public required string Correction { get; init; }
+
+    /// <summary>The families that the plan names, in its order; empty where all experiments are one family.</summary>
+    public IReadOnlyList<Family> Families { get; init; } = [];
+
+    /// <summary>Settings of an online procedure; null for a batch correction, and where all are left at their defaults.</summary>
+    public OnlineOptions? Online { get; init; }
 
     /// <summary>Key of the test for experiments whose plan names none.</summary>
     public string DefaultTest { get; init; } = "f";

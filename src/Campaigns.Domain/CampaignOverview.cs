@@ -21,4 +21,7 @@ public sealed record CampaignOverview(
 {
     /// <summary>Experiments whose values were changed after their test (added to, or left out), so that they have no result before a new one.</summary>
     public int AwaitingNewTest { get; init; }
+
+    /// <summary>The families in figures; one for a campaign of one family.</summary>
+    public required IReadOnlyList<FamilyStanding> Families { get; init; }
 }

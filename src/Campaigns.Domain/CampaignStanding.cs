@@ -31,7 +31,11 @@ public sealed record CampaignStanding(
         ResultsSinceReview)
     {
         AwaitingNewTest = AwaitingNewTest,
+        Families = Families,
     };
+
+    /// <summary>The families in figures; one for a campaign of one family.</summary>
+    public required IReadOnlyList<FamilyStanding> Families { get; init; }
 
     /// <summary>Experiments whose values were changed after their test, so that they have no result before a new one.</summary>
     public int AwaitingNewTest { get; init; }

@@ -16,14 +16,14 @@ namespace Campaigns.Domain;
 public readonly record struct CorrectedRisk(double AtLeastOne, bool IsExact, double? ExpectedFalse)
 {
     /// <summary>The risk after some tests.</summary>
-    /// <param name="correction">The correction.</param>
+    /// <param name="procedure">The correction, or an online procedure.</param>
     /// <param name="level">Its level.</param>
     /// <param name="familySize">Hypotheses that it counts, at least 1 where there are tests.</param>
     /// <param name="tests">Those tested so far; the others count as p = 1.</param>
     /// <exception cref="ArgumentOutOfRangeException">More tests than the family has hypotheses, or fewer than none.</exception>
-    public static CorrectedRisk Of(Correction correction, SignificanceLevel level, int familySize, int tests)
+    public static CorrectedRisk Of(ErrorProcedure procedure, SignificanceLevel level, int familySize, int tests)
     {
-        ArgumentNullException.ThrowIfNull(correction);
+        ArgumentNullException.ThrowIfNull(procedure);
         ArgumentOutOfRangeException.ThrowIfNegative(tests);
         ArgumentOutOfRangeException.ThrowIfGreaterThan(tests, familySize);
         if (tests == 0)
@@ -31,7 +31,7 @@ public readonly record struct CorrectedRisk(double AtLeastOne, bool IsExact, dou
             return new CorrectedRisk(0, true, 0);
         }
 
-        return correction.Key switch
+        return procedure.Key switch
         {
             "none" or "bonferroni" or "sidak" => SingleStep(First(), FamilyRisk.ExpectedFalsePositives(tests, First())),
             "holm" or "holm-sidak" => SingleStep(First(), null),
@@ -40,7 +40,7 @@ public readonly record struct CorrectedRisk(double AtLeastOne, bool IsExact, dou
             _ => new CorrectedRisk(level.Value, false, null),
         };
 
-        SignificanceLevel First() => new(correction.BoundaryAt(1, familySize, level.Value)!.Value);
+        SignificanceLevel First() => new(((Correction)procedure).BoundaryAt(1, familySize, level.Value)!.Value);
 
         CorrectedRisk SingleStep(SignificanceLevel each, double? expected) => new(FamilyRisk.AtLeastOneIfIndependent(tests, each), true, expected);
     }

@@ -36,8 +36,20 @@ public sealed record ExperimentResult
     /// <summary>The p-value adjusted over the family; null without a result.</summary>
     public PValue? AdjustedP { get; init; }
 
-    /// <summary>Whether the adjusted p-value is at most the level; null without a result.</summary>
+    /// <summary>Whether the adjusted p-value is at most the level; null without a result. In an online campaign, the standing decision.</summary>
     public bool? Survives { get; init; }
+
+    /// <summary>The family in which it is corrected, in figures; null where it was read without its campaign.</summary>
+    public FamilyStanding? Family { get; init; }
+
+    /// <summary>The level that an online procedure gave it before its p-value was seen; null for a batch correction, and before it was registered.</summary>
+    public double? GivenLevel { get; init; }
+
+    /// <summary>In an online campaign, the p-value adjusted over the family by the batch view, which may change as experiments arrive; else null.</summary>
+    public PValue? BatchAdjustedP { get; init; }
+
+    /// <summary>In an online campaign, whether it survives in the batch view; else null.</summary>
+    public bool? BatchSurvives { get; init; }
 
     /// <summary>Eta squared of the sample; null without a result.</summary>
     public double? EtaSquared { get; init; }

@@ -41,7 +41,7 @@ public static class PlanComparison
             ("title", a.Title, b.Title), ("response", a.Response, b.Response), ("unit", a.Unit, b.Unit), ("control", a.Control, b.Control),
             ("test", a.Test, b.Test), ("follow_up", a.FollowUp, b.FollowUp), ("replicates", a.Replicates, b.Replicates),
             ("smallest_effect", a.SmallestEffect, b.SmallestEffect), ("assumed_sd", a.AssumedStandardDeviation, b.AssumedStandardDeviation),
-            ("weight", a.Weight, b.Weight), ("family", a.Family, b.Family), ("groups", string.Join('|', a.Groups), string.Join('|', b.Groups)),
+            ("weight", a.Weight, b.Weight), ("family", a.Family, b.Family), ("confirms", a.Confirms, b.Confirms), ("shared_control", a.SharedControl, b.SharedControl), ("groups", string.Join('|', a.Groups), string.Join('|', b.Groups)),
         ];
         return fields.Where(f => !Equals(f.A, f.B)).Select(f => FormattableString.Invariant($"{f.Name} '{f.A}' against '{f.B}'"));
     }

@@ -41,4 +41,10 @@ public sealed record PlannedExperiment
 
     /// <summary>Name of the family it is corrected in; null for the campaign's one family.</summary>
     public string? Family { get; init; }
+
+    /// <summary>The earlier experiment that this one confirms, on new data: a code of the same campaign, or CAMPAIGN/EXPERIMENT; null for none.</summary>
+    public string? Confirms { get; init; }
+
+    /// <summary>Name of the control, batch or instrument that it shares with other experiments, which are then not independent; null where it shares none.</summary>
+    public string? SharedControl { get; init; }
 }

@@ -43,8 +43,12 @@ public static class RiskCurve
     /// <summary>What the campaign's correction risks after some tests; null where it is applied to several families.</summary>
     internal static Func<int, CorrectedRisk?> Corrected(CampaignStanding standing)
     {
-        Correction correction = FamilyVerdict.CorrectionOf(standing.Campaign);
-        bool hasFamilies = standing.Experiments.Select(e => e.Plan.Family).Distinct().Skip(1).Any();
-        return tests => hasFamilies ? null : CorrectedRisk.Of(correction, standing.Campaign.Level, standing.FamilySize, tests);
+        if (standing.Families is not [FamilyStanding family])
+        {
+            return _ => null;
+        }
+
+        ErrorProcedure procedure = CorrectionRegistry.Find(family.Correction) ?? FamilyVerdict.ProcedureOf(standing.Campaign);
+        return tests => CorrectedRisk.Of(procedure, family.Level, family.Size, tests);
     }
 }

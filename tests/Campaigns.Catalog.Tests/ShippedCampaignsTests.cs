@@ -51,7 +51,7 @@ public sealed class ShippedCampaignsTests
         ReferenceRow[] rows = [.. ReferenceTable.Read("shipped-campaigns.csv").Rows.Where(r => r.Text("campaign") == "adhesion-screen")];
         string column = correction == "none" ? "p" : correction;
         string[] byR = [.. rows.Where(r => r.Has(column) && r.Number(column) <= 0.05).Select(r => r.Text("experiment"))];
-        IReadOnlyList<ExperimentResult> judged = FamilyVerdict.Apply(standing.Campaign with { Correction = correction }, standing.Experiments, standing.FamilySize);
+        IReadOnlyList<ExperimentResult> judged = FamilyVerdict.Apply(standing.Campaign with { Correction = correction }, standing.Experiments);
         Assert.Equal(byR, judged.Where(e => e.Survives == true).Select(e => e.Plan.Code));
         Assert.Equal(counted ?? byR.Length, byR.Length);
     }

@@ -13,7 +13,7 @@ public sealed class ComparisonVerdictTests
     [Fact]
     public void A_campaign_that_holds_the_false_discovery_rate_claims_what_the_reference_claims()
     {
-        var verdict = new ComparisonVerdict(Campaign(ErrorRate.FalseDiscovery), 6, 3);
+        var verdict = Verdict(ErrorRate.FalseDiscovery, 6, 3);
         foreach (ReferenceRow pair in ReferenceTable.Read("campaign/selective_pairs.csv").Rows)
         {
             bool selected = pair.Integer("experiment_selected") == 1;
@@ -38,7 +38,7 @@ public sealed class ComparisonVerdictTests
     [InlineData(0.001, false, 0.006, false, "its experiment does not survive")]
     public void A_familywise_campaign_multiplies_by_its_whole_family(double p, bool selected, double adjusted, bool claimed, string? because)
     {
-        ExperimentComparison judged = Judge(new ComparisonVerdict(Campaign(ErrorRate.Familywise), 6, 2), selected, new GroupComparison(0, 1, 1) { P = PValue.FromValue(p) });
+        ExperimentComparison judged = Judge(Verdict(ErrorRate.Familywise, 6, 2), selected, new GroupComparison(0, 1, 1) { P = PValue.FromValue(p) });
         Assert.Equal(adjusted, judged.AdjustedP!.Value.Value, 1e-15);
         Assert.Equal((claimed, because), (judged.Survives!.Value, judged.NotClaimedBecause));
     }
@@ -48,7 +48,7 @@ public sealed class ComparisonVerdictTests
     [InlineData(ErrorRate.FalseDiscovery)]
     public void A_comparison_that_cannot_be_made_is_neither_claimed_nor_denied_and_keeps_its_obstacle(ErrorRate rate)
     {
-        ExperimentComparison judged = Judge(new ComparisonVerdict(Campaign(rate), 6, 2), true, new GroupComparison(0, 1, 1) { Obstacle = "a group with one value has no variance of its own" });
+        ExperimentComparison judged = Judge(Verdict(rate, 6, 2), true, new GroupComparison(0, 1, 1) { Obstacle = "a group with one value has no variance of its own" });
         Assert.Null(judged.Survives);
         Assert.Null(judged.AdjustedP);
         Assert.Equal("a group with one value has no variance of its own", judged.NotClaimedBecause);
@@ -59,7 +59,7 @@ public sealed class ComparisonVerdictTests
     [InlineData(ErrorRate.FalseDiscovery)]
     public void Where_nothing_survives_nothing_is_claimed_and_nothing_is_divided_by_nought(ErrorRate rate)
     {
-        var verdict = new ComparisonVerdict(Campaign(rate), 6, 0);
+        var verdict = Verdict(rate, 6, 0);
         ExperimentComparison judged = Judge(verdict, false, new GroupComparison(0, 1, 1) { P = PValue.FromValue(1e-9) });
         Assert.False(judged.Survives);
         Assert.DoesNotContain("0/6", verdict.Guarantee, StringComparison.Ordinal);
@@ -70,7 +70,7 @@ public sealed class ComparisonVerdictTests
     public void An_experiment_without_a_verdict_claims_nothing()
     {
         ExperimentResult untested = Experiment(null);
-        var verdict = new ComparisonVerdict(Campaign(ErrorRate.FalseDiscovery), 6, 2);
+        var verdict = Verdict(ErrorRate.FalseDiscovery, 6, 2);
         Assert.False(Assert.Single(verdict.Judge(untested, Labels, [new GroupComparison(0, 1, 1) { P = PValue.FromValue(1e-9) }])).Survives);
         Assert.Empty(verdict.Judge(untested, Labels, []));
     }
@@ -78,8 +78,8 @@ public sealed class ComparisonVerdictTests
     [Fact]
     public void What_is_held_is_told_with_its_figures()
     {
-        Assert.Contains("level 0.05 x 2/6", new ComparisonVerdict(Campaign(ErrorRate.FalseDiscovery), 6, 2).Guarantee, StringComparison.Ordinal);
-        Assert.Contains("level 0.05/6", new ComparisonVerdict(Campaign(ErrorRate.Familywise), 6, 2).Guarantee, StringComparison.Ordinal);
+        Assert.Contains("level 0.05 x 2/6", Verdict(ErrorRate.FalseDiscovery, 6, 2).Guarantee, StringComparison.Ordinal);
+        Assert.Contains("level 0.05/6", Verdict(ErrorRate.Familywise, 6, 2).Guarantee, StringComparison.Ordinal);
     }
 
     private static ExperimentComparison Judge(ComparisonVerdict verdict, bool survives, GroupComparison comparison) =>
@@ -101,4 +101,7 @@ public sealed class ComparisonVerdictTests
         Correction = rate == ErrorRate.Familywise ? "holm" : "bh",
         OpenedAt = DateTimeOffset.UnixEpoch,
     };
+
+    private static ComparisonVerdict Verdict(ErrorRate rate, int size, int survivors) =>
+        new(Campaign(rate), [new FamilyStanding("", "bh", Campaign(rate).Level, size, size, size, survivors)]);
 }

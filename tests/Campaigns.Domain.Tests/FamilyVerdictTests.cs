@@ -22,9 +22,9 @@ public sealed class FamilyVerdictTests
     public void Untested_experiments_count_and_get_no_verdict(string correction, double[] adjusted, int survivors)
     {
         ExperimentResult[] experiments = [Result("b", 0.5), Result("untested", null), Result("a", 0.03), Result("d", 0.01), Result("c", 0.02)];
-        IReadOnlyList<ExperimentResult> judged = FamilyVerdict.Apply(Family with { Correction = correction }, experiments, 5);
+        IReadOnlyList<ExperimentResult> judged = FamilyVerdict.Apply(Family with { Correction = correction }, experiments);
         Assert.Equal(experiments.Select(e => e.Plan.Code), judged.Select(e => e.Plan.Code));
-        Assert.Same(experiments[1], judged[1]);
+        Assert.Equal(experiments[1] with { Family = judged[1].Family }, judged[1]);
         Assert.Null(judged[1].Survives);
         Assert.Equal(adjusted, judged.Where(e => e.P is not null).OrderBy(e => e.P).Select(e => Math.Round(e.AdjustedP!.Value.Value, 15)));
         Assert.Equal(survivors, judged.Count(e => e.Survives == true));
@@ -35,17 +35,17 @@ public sealed class FamilyVerdictTests
     public void An_adjusted_p_value_equal_to_the_level_survives()
     {
         // 3 times 0.05/3, rounded once, is 0.05 again.
-        IReadOnlyList<ExperimentResult> judged = FamilyVerdict.Apply(Family with { Correction = "bonferroni" }, [Result("a", 0.05 / 3)], 3);
+        IReadOnlyList<ExperimentResult> judged = FamilyVerdict.Apply(Family with { Correction = "bonferroni" }, [Result("a", 0.05 / 3), Result("b", null), Result("c", null)]);
         Assert.True(judged[0].Survives);
         Assert.Equal(0.05, judged[0].AdjustedP!.Value.Value);
     }
 
     [Fact]
     public void A_family_smaller_than_its_results_is_a_fault_of_the_caller() =>
-        Assert.ThrowsAny<ArgumentException>(() => FamilyVerdict.Apply(Family, [Result("a", 0.1), Result("b", 0.2)], 1));
+        Assert.ThrowsAny<ArgumentException>(() => FamilyVerdict.Judge(Family, FamilyMembers.OneFamily(new[] { PValue.FromValue(0.1), PValue.FromValue(0.2) }, 1)));
 
     [Fact]
-    public void An_empty_family_is_judged() => Assert.Empty(FamilyVerdict.Apply(Family, [], 0));
+    public void An_empty_family_is_judged() => Assert.Empty(FamilyVerdict.Apply(Family, []));
 
     [Fact]
     public void A_correction_that_this_version_lacks_is_refused_with_the_campaign()

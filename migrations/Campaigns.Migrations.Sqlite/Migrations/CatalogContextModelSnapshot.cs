@@ -182,6 +182,10 @@ namespace Campaigns.Migrations.Sqlite.Migrations
                         .HasColumnType("TEXT")
                         .HasColumnName("code");
 
+                    b.Property<string>("Confirms")
+                        .HasColumnType("TEXT")
+                        .HasColumnName("confirms");
+
                     b.Property<string>("Control")
                         .HasColumnType("TEXT")
                         .HasColumnName("control");
@@ -210,6 +214,10 @@ namespace Campaigns.Migrations.Sqlite.Migrations
                     b.Property<string>("Response")
                         .HasColumnType("TEXT")
                         .HasColumnName("response");
+
+                    b.Property<string>("SharedControl")
+                        .HasColumnType("TEXT")
+                        .HasColumnName("shared_control");
 
                     b.Property<double?>("SmallestEffect")
                         .HasColumnType("REAL")
@@ -254,6 +262,56 @@ namespace Campaigns.Migrations.Sqlite.Migrations
                             t.HasCheckConstraint("ck_experiments_smallest_effect", "smallest_effect is null or smallest_effect > 0");
 
                             t.HasCheckConstraint("ck_experiments_weight", "weight is null or weight >= 0");
+                        });
+                });
+
+            modelBuilder.Entity("Campaigns.Catalog.Rows.FamilyRow", b =>
+                {
+                    b.Property<long>("CampaignId")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("campaign_id");
+
+                    b.Property<int>("Position")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("position");
+
+                    b.Property<string>("Correction")
+                        .HasColumnType("TEXT")
+                        .HasColumnName("correction");
+
+                    b.Property<double?>("Level")
+                        .HasColumnType("REAL")
+                        .HasColumnName("level");
+
+                    b.Property<string>("Name")
+                        .IsRequired()
+                        .HasColumnType("TEXT")
+                        .HasColumnName("name");
+
+                    b.Property<string>("OpensAfter")
+                        .HasColumnType("TEXT")
+                        .HasColumnName("opens_after");
+
+                    b.Property<string>("OpensWhen")
+                        .IsRequired()
+                        .HasColumnType("TEXT")
+                        .HasColumnName("opens_when");
+
+                    b.HasKey("CampaignId", "Position");
+
+                    b.HasIndex("CampaignId", "Name")
+                        .IsUnique()
+                        .HasDatabaseName("ux_families_name");
+
+                    b.ToTable("families", null, t =>
+                        {
+                            t.HasCheckConstraint("ck_families_level", "level is null or (level > 0 and level < 1)");
+
+                            t.HasCheckConstraint("ck_families_name", "length(name) > 0");
+
+                            t.HasCheckConstraint("ck_families_opens", "opens_when in ('any', 'all') and opens_after is not name");
+
+                            t.HasCheckConstraint("ck_families_position", "position > 0");
                         });
                 });
 
@@ -398,6 +456,96 @@ namespace Campaigns.Migrations.Sqlite.Migrations
                         });
                 });
 
+            modelBuilder.Entity("Campaigns.Catalog.Rows.OnlineSettingsRow", b =>
+                {
+                    b.Property<long>("CampaignId")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("campaign_id");
+
+                    b.Property<int?>("Horizon")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("horizon");
+
+                    b.Property<double?>("InitialWealth")
+                        .HasColumnType("REAL")
+                        .HasColumnName("initial_wealth");
+
+                    b.Property<double?>("Lambda")
+                        .HasColumnType("REAL")
+                        .HasColumnName("lambda");
+
+                    b.Property<string>("Shape")
+                        .HasColumnType("TEXT")
+                        .HasColumnName("shape");
+
+                    b.Property<double?>("Tau")
+                        .HasColumnType("REAL")
+                        .HasColumnName("tau");
+
+                    b.HasKey("CampaignId");
+
+                    b.ToTable("online_settings", null, t =>
+                        {
+                            t.HasCheckConstraint("ck_online_settings_horizon", "horizon is null or horizon >= 0");
+                        });
+                });
+
+            modelBuilder.Entity("Campaigns.Catalog.Rows.ReviewFamilyRow", b =>
+                {
+                    b.Property<long>("ReviewId")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("review_id");
+
+                    b.Property<int>("Position")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("position");
+
+                    b.Property<string>("Correction")
+                        .IsRequired()
+                        .HasColumnType("TEXT")
+                        .HasColumnName("correction");
+
+                    b.Property<int>("FamilySize")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("family_size");
+
+                    b.Property<bool>("IsOpen")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("is_open");
+
+                    b.Property<double>("Level")
+                        .HasColumnType("REAL")
+                        .HasColumnName("level");
+
+                    b.Property<string>("Name")
+                        .IsRequired()
+                        .HasColumnType("TEXT")
+                        .HasColumnName("name");
+
+                    b.Property<int>("PlannedCount")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("planned_count");
+
+                    b.Property<int>("SurvivorCount")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("survivor_count");
+
+                    b.Property<int>("TestedCount")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("tested_count");
+
+                    b.HasKey("ReviewId", "Position");
+
+                    b.ToTable("review_families", null, t =>
+                        {
+                            t.HasCheckConstraint("ck_review_families_counts", "tested_count between 0 and family_size and family_size <= planned_count and survivor_count between 0 and tested_count");
+
+                            t.HasCheckConstraint("ck_review_families_level", "level > 0 and level < 1");
+
+                            t.HasCheckConstraint("ck_review_families_open", "is_open in (0, 1) and (is_open = 1 or survivor_count = 0)");
+                        });
+                });
+
             modelBuilder.Entity("Campaigns.Catalog.Rows.ReviewRow", b =>
                 {
                     b.Property<long>("Id")
@@ -470,6 +618,171 @@ namespace Campaigns.Migrations.Sqlite.Migrations
                             t.HasCheckConstraint("ck_reviews_level", "level > 0 and level < 1");
 
                             t.HasCheckConstraint("ck_reviews_number", "number > 0");
+                        });
+                });
+
+            modelBuilder.Entity("Campaigns.Catalog.Rows.StandingDecisionRow", b =>
+                {
+                    b.Property<long>("StreamId")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("stream_id");
+
+                    b.Property<int>("Position")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("position");
+
+                    b.Property<long>("DecidedAt")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("decided_at");
+
+                    b.Property<int>("KnownOrder")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("known_order");
+
+                    b.Property<double?>("LogP")
+                        .HasColumnType("REAL")
+                        .HasColumnName("log_p");
+
+                    b.Property<double?>("P")
+                        .HasColumnType("REAL")
+                        .HasColumnName("p");
+
+                    b.Property<bool>("Survives")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("survives");
+
+                    b.Property<long>("TestRunId")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("test_run_id");
+
+                    b.HasKey("StreamId", "Position");
+
+                    b.HasIndex("StreamId", "KnownOrder")
+                        .IsUnique()
+                        .HasDatabaseName("ux_standing_decisions_order");
+
+                    b.ToTable("standing_decisions", null, t =>
+                        {
+                            t.HasCheckConstraint("ck_standing_decisions_order", "known_order > 0");
+
+                            t.HasCheckConstraint("ck_standing_decisions_p", "(p is null or (p >= 0 and p <= 1 and (p > 0 or log_p is not null))) and (log_p is null or (p is not null and log_p <= 0))");
+
+                            t.HasCheckConstraint("ck_standing_decisions_survives", "survives in (0, 1) and (survives = 0 or p is not null)");
+                        });
+                });
+
+            modelBuilder.Entity("Campaigns.Catalog.Rows.StreamEntryRow", b =>
+                {
+                    b.Property<long>("StreamId")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("stream_id");
+
+                    b.Property<int>("Position")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("position");
+
+                    b.Property<long>("ExperimentId")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("experiment_id");
+
+                    b.Property<int>("KnownCount")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("known_count");
+
+                    b.Property<double>("Level")
+                        .HasColumnType("REAL")
+                        .HasColumnName("level");
+
+                    b.Property<long>("RegisteredAt")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("registered_at");
+
+                    b.HasKey("StreamId", "Position");
+
+                    b.HasIndex("ExperimentId")
+                        .IsUnique()
+                        .HasDatabaseName("ux_stream_entries_experiment");
+
+                    b.ToTable("stream_entries", null, t =>
+                        {
+                            t.HasCheckConstraint("ck_stream_entries_level", "level >= 0 and level < 1");
+
+                            t.HasCheckConstraint("ck_stream_entries_position", "position > 0 and known_count between 0 and position - 1");
+                        });
+                });
+
+            modelBuilder.Entity("Campaigns.Catalog.Rows.StreamRow", b =>
+                {
+                    b.Property<long>("Id")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("id");
+
+                    b.Property<long>("CampaignId")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("campaign_id");
+
+                    b.Property<int?>("Horizon")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("horizon");
+
+                    b.Property<double?>("InitialWealth")
+                        .HasColumnType("REAL")
+                        .HasColumnName("initial_wealth");
+
+                    b.Property<double?>("Lambda")
+                        .HasColumnType("REAL")
+                        .HasColumnName("lambda");
+
+                    b.Property<double>("Level")
+                        .HasColumnType("REAL")
+                        .HasColumnName("level");
+
+                    b.Property<int>("Number")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("number");
+
+                    b.Property<string>("Procedure")
+                        .IsRequired()
+                        .HasColumnType("TEXT")
+                        .HasColumnName("procedure");
+
+                    b.Property<string>("ProgramVersion")
+                        .IsRequired()
+                        .HasColumnType("TEXT")
+                        .HasColumnName("program_version");
+
+                    b.Property<string>("Reason")
+                        .HasColumnType("TEXT")
+                        .HasColumnName("reason");
+
+                    b.Property<string>("Shape")
+                        .IsRequired()
+                        .HasColumnType("TEXT")
+                        .HasColumnName("shape");
+
+                    b.Property<long>("StartedAt")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("started_at");
+
+                    b.Property<double?>("Tau")
+                        .HasColumnType("REAL")
+                        .HasColumnName("tau");
+
+                    b.HasKey("Id");
+
+                    b.HasIndex("CampaignId", "Number")
+                        .IsUnique()
+                        .HasDatabaseName("ux_streams_number");
+
+                    b.ToTable("streams", null, t =>
+                        {
+                            t.HasCheckConstraint("ck_streams_horizon", "horizon is null or horizon > 0");
+
+                            t.HasCheckConstraint("ck_streams_level", "level > 0 and level < 1");
+
+                            t.HasCheckConstraint("ck_streams_number", "number > 0");
+
+                            t.HasCheckConstraint("ck_streams_reason", "(reason is null) = (number = 1) and (reason is null or length(reason) > 0)");
                         });
                 });
 
@@ -617,6 +930,15 @@ namespace Campaigns.Migrations.Sqlite.Migrations
                         .OnDelete(DeleteBehavior.Restrict);
                 });
 
+            modelBuilder.Entity("Campaigns.Catalog.Rows.FamilyRow", b =>
+                {
+                    b.HasOne("Campaigns.Catalog.Rows.CampaignRow", null)
+                        .WithMany()
+                        .HasForeignKey("CampaignId")
+                        .OnDelete(DeleteBehavior.Restrict)
+                        .IsRequired();
+                });
+
             modelBuilder.Entity("Campaigns.Catalog.Rows.GroupRow", b =>
                 {
                     b.HasOne("Campaigns.Catalog.Rows.GroupSetRow", null)
@@ -659,6 +981,24 @@ namespace Campaigns.Migrations.Sqlite.Migrations
                         .IsRequired();
                 });
 
+            modelBuilder.Entity("Campaigns.Catalog.Rows.OnlineSettingsRow", b =>
+                {
+                    b.HasOne("Campaigns.Catalog.Rows.CampaignRow", null)
+                        .WithMany()
+                        .HasForeignKey("CampaignId")
+                        .OnDelete(DeleteBehavior.Restrict)
+                        .IsRequired();
+                });
+
+            modelBuilder.Entity("Campaigns.Catalog.Rows.ReviewFamilyRow", b =>
+                {
+                    b.HasOne("Campaigns.Catalog.Rows.ReviewRow", null)
+                        .WithMany()
+                        .HasForeignKey("ReviewId")
+                        .OnDelete(DeleteBehavior.Restrict)
+                        .IsRequired();
+                });
+
             modelBuilder.Entity("Campaigns.Catalog.Rows.ReviewRow", b =>
                 {
                     b.HasOne("Campaigns.Catalog.Rows.CampaignRow", null)
@@ -671,6 +1011,45 @@ namespace Campaigns.Migrations.Sqlite.Migrations
                         .WithMany()
                         .HasForeignKey("LastTestRunId")
                         .OnDelete(DeleteBehavior.Restrict);
+                });
+
+            modelBuilder.Entity("Campaigns.Catalog.Rows.StandingDecisionRow", b =>
+                {
+                    b.HasOne("Campaigns.Catalog.Rows.TestRunRow", null)
+                        .WithMany()
+                        .HasForeignKey("TestRunId")
+                        .OnDelete(DeleteBehavior.Restrict)
+                        .IsRequired();
+
+                    b.HasOne("Campaigns.Catalog.Rows.StreamEntryRow", null)
+                        .WithMany()
+                        .HasForeignKey("StreamId", "Position")
+                        .OnDelete(DeleteBehavior.Restrict)
+                        .IsRequired();
+                });
+
+            modelBuilder.Entity("Campaigns.Catalog.Rows.StreamEntryRow", b =>
+                {
+                    b.HasOne("Campaigns.Catalog.Rows.ExperimentRow", null)
+                        .WithMany()
+                        .HasForeignKey("ExperimentId")
+                        .OnDelete(DeleteBehavior.Restrict)
+                        .IsRequired();
+
+                    b.HasOne("Campaigns.Catalog.Rows.StreamRow", null)
+                        .WithMany()
+                        .HasForeignKey("StreamId")
+                        .OnDelete(DeleteBehavior.Restrict)
+                        .IsRequired();
+                });
+
+            modelBuilder.Entity("Campaigns.Catalog.Rows.StreamRow", b =>
+                {
+                    b.HasOne("Campaigns.Catalog.Rows.CampaignRow", null)
+                        .WithMany()
+                        .HasForeignKey("CampaignId")
+                        .OnDelete(DeleteBehavior.Restrict)
+                        .IsRequired();
                 });
 
             modelBuilder.Entity("Campaigns.Catalog.Rows.TestResultRow", b =>

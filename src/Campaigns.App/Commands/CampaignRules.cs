@@ -24,7 +24,7 @@ internal static class CampaignRules
     /// <summary>Warns where the correction does not hold the error rate that the campaign is judged by.</summary>
     public static void WarnOfMismatch(Host host, Campaign campaign)
     {
-        Correction correction = FamilyVerdict.CorrectionOf(campaign);
+        ErrorProcedure correction = FamilyVerdict.ProcedureOf(campaign);
         bool holds = correction.Controls == campaign.ErrorRate
             || (correction.Controls == ErrorRate.Familywise && campaign.ErrorRate == ErrorRate.FalseDiscovery);
         if (!holds)

@@ -22,7 +22,7 @@ internal static class CampaignText
 
     /// <summary>For example "false discovery rate at 0.05 by Benjamini-Hochberg".</summary>
     public static string Goal(Campaign campaign) =>
-        $"{RateWords(campaign.ErrorRate)} at {campaign.Level} by {FamilyVerdict.CorrectionOf(campaign).Name}";
+        $"{RateWords(campaign.ErrorRate)} at {campaign.Level} by {FamilyVerdict.ProcedureOf(campaign).Name}";
 
     /// <summary>The lines under every table of results: what was assumed, which procedure, what it promises.</summary>
     /// <param name="standing">The campaign in figures.</param>
@@ -30,7 +30,7 @@ internal static class CampaignText
     public static IReadOnlyList<string> Footnotes(CampaignOverview standing, IEnumerable<string> tests)
     {
         Campaign campaign = standing.Campaign;
-        Correction correction = FamilyVerdict.CorrectionOf(campaign);
+        ErrorProcedure correction = FamilyVerdict.ProcedureOf(campaign);
         List<string> lines =
         [
             FormattableString.Invariant($"{correction.Name} at {campaign.Level} over a family of {standing.FamilySize} ({standing.TestedCount} with a result; the others count as p = 1). {correction.Guarantee}"),

@@ -85,7 +85,7 @@ internal static class ExperimentWording
 
         if (used.Any(f => f != FollowUpRegistry.None))
         {
-            yield return new ComparisonVerdict(standing.Campaign, standing.FamilySize, standing.SurvivorCount).Guarantee;
+            yield return new ComparisonVerdict(standing.Campaign, standing.Families).Guarantee;
             yield return FormattableString.Invariant($"Intervals hold together inside one experiment at {100 * (1 - standing.Campaign.Level.Value):0.###} %; they are not widened for the selection of the experiment.");
         }
     }

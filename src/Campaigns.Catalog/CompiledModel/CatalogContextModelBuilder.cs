@@ -11,7 +11,7 @@ namespace Campaigns.Catalog.CompiledModel
     public partial class CatalogContextModel
     {
         private CatalogContextModel()
-            : base(skipDetectChanges: false, modelId: new Guid("1d992779-5396-44a2-aa8a-d07c5456e6e0"), entityTypeCount: 10)
+            : base(skipDetectChanges: false, modelId: new Guid("f6ace358-faf4-42db-8f68-6f320b122c81"), entityTypeCount: 16)
         {
         }
 
@@ -20,24 +20,38 @@ namespace Campaigns.Catalog.CompiledModel
             var campaignRow = CampaignRowEntityType.Create(this);
             var exclusionRow = ExclusionRowEntityType.Create(this);
             var experimentRow = ExperimentRowEntityType.Create(this);
+            var familyRow = FamilyRowEntityType.Create(this);
             var groupRow = GroupRowEntityType.Create(this);
             var groupSetRow = GroupSetRowEntityType.Create(this);
             var loadRow = LoadRowEntityType.Create(this);
             var measurementRow = MeasurementRowEntityType.Create(this);
+            var onlineSettingsRow = OnlineSettingsRowEntityType.Create(this);
+            var reviewFamilyRow = ReviewFamilyRowEntityType.Create(this);
             var reviewRow = ReviewRowEntityType.Create(this);
+            var standingDecisionRow = StandingDecisionRowEntityType.Create(this);
+            var streamEntryRow = StreamEntryRowEntityType.Create(this);
+            var streamRow = StreamRowEntityType.Create(this);
             var testResultRow = TestResultRowEntityType.Create(this);
             var testRunRow = TestRunRowEntityType.Create(this);
 
             ExclusionRowEntityType.CreateForeignKey1(exclusionRow, measurementRow);
             ExperimentRowEntityType.CreateForeignKey1(experimentRow, campaignRow);
             ExperimentRowEntityType.CreateForeignKey2(experimentRow, groupSetRow);
+            FamilyRowEntityType.CreateForeignKey1(familyRow, campaignRow);
             GroupRowEntityType.CreateForeignKey1(groupRow, groupSetRow);
             GroupSetRowEntityType.CreateForeignKey1(groupSetRow, campaignRow);
             LoadRowEntityType.CreateForeignKey1(loadRow, campaignRow);
             MeasurementRowEntityType.CreateForeignKey1(measurementRow, experimentRow);
             MeasurementRowEntityType.CreateForeignKey2(measurementRow, loadRow);
+            OnlineSettingsRowEntityType.CreateForeignKey1(onlineSettingsRow, campaignRow);
+            ReviewFamilyRowEntityType.CreateForeignKey1(reviewFamilyRow, reviewRow);
             ReviewRowEntityType.CreateForeignKey1(reviewRow, campaignRow);
             ReviewRowEntityType.CreateForeignKey2(reviewRow, testRunRow);
+            StandingDecisionRowEntityType.CreateForeignKey1(standingDecisionRow, testRunRow);
+            StandingDecisionRowEntityType.CreateForeignKey2(standingDecisionRow, streamEntryRow);
+            StreamEntryRowEntityType.CreateForeignKey1(streamEntryRow, experimentRow);
+            StreamEntryRowEntityType.CreateForeignKey2(streamEntryRow, streamRow);
+            StreamRowEntityType.CreateForeignKey1(streamRow, campaignRow);
             TestResultRowEntityType.CreateForeignKey1(testResultRow, experimentRow);
             TestResultRowEntityType.CreateForeignKey2(testResultRow, testRunRow);
             TestRunRowEntityType.CreateForeignKey1(testRunRow, campaignRow);
@@ -46,11 +60,17 @@ namespace Campaigns.Catalog.CompiledModel
             CampaignRowEntityType.CreateAnnotations(campaignRow);
             ExclusionRowEntityType.CreateAnnotations(exclusionRow);
             ExperimentRowEntityType.CreateAnnotations(experimentRow);
+            FamilyRowEntityType.CreateAnnotations(familyRow);
             GroupRowEntityType.CreateAnnotations(groupRow);
             GroupSetRowEntityType.CreateAnnotations(groupSetRow);
             LoadRowEntityType.CreateAnnotations(loadRow);
             MeasurementRowEntityType.CreateAnnotations(measurementRow);
+            OnlineSettingsRowEntityType.CreateAnnotations(onlineSettingsRow);
+            ReviewFamilyRowEntityType.CreateAnnotations(reviewFamilyRow);
             ReviewRowEntityType.CreateAnnotations(reviewRow);
+            StandingDecisionRowEntityType.CreateAnnotations(standingDecisionRow);
+            StreamEntryRowEntityType.CreateAnnotations(streamEntryRow);
+            StreamRowEntityType.CreateAnnotations(streamRow);
             TestResultRowEntityType.CreateAnnotations(testResultRow);
             TestRunRowEntityType.CreateAnnotations(testRunRow);
 

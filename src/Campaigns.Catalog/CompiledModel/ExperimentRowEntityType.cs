@@ -20,7 +20,7 @@ namespace Campaigns.Catalog.CompiledModel
                 "Campaigns.Catalog.Rows.ExperimentRow",
                 typeof(ExperimentRow),
                 baseEntityType,
-                propertyCount: 16,
+                propertyCount: 18,
                 foreignKeyCount: 2,
                 unnamedIndexCount: 2,
                 keyCount: 1);
@@ -56,6 +56,14 @@ namespace Campaigns.Catalog.CompiledModel
                 propertyInfo: typeof(ExperimentRow).GetProperty("Code", BindingFlags.Public | BindingFlags.Instance | BindingFlags.DeclaredOnly),
                 fieldInfo: typeof(ExperimentRow).GetField("<Code>k__BackingField", BindingFlags.NonPublic | BindingFlags.Instance | BindingFlags.DeclaredOnly));
             code.AddAnnotation("Relational:ColumnName", "code");
+
+            var confirms = runtimeEntityType.AddProperty(
+                "Confirms",
+                typeof(string),
+                propertyInfo: typeof(ExperimentRow).GetProperty("Confirms", BindingFlags.Public | BindingFlags.Instance | BindingFlags.DeclaredOnly),
+                fieldInfo: typeof(ExperimentRow).GetField("<Confirms>k__BackingField", BindingFlags.NonPublic | BindingFlags.Instance | BindingFlags.DeclaredOnly),
+                nullable: true);
+            confirms.AddAnnotation("Relational:ColumnName", "confirms");
 
             var control = runtimeEntityType.AddProperty(
                 "Control",
@@ -111,6 +119,14 @@ namespace Campaigns.Catalog.CompiledModel
                 fieldInfo: typeof(ExperimentRow).GetField("<Response>k__BackingField", BindingFlags.NonPublic | BindingFlags.Instance | BindingFlags.DeclaredOnly),
                 nullable: true);
             response.AddAnnotation("Relational:ColumnName", "response");
+
+            var sharedControl = runtimeEntityType.AddProperty(
+                "SharedControl",
+                typeof(string),
+                propertyInfo: typeof(ExperimentRow).GetProperty("SharedControl", BindingFlags.Public | BindingFlags.Instance | BindingFlags.DeclaredOnly),
+                fieldInfo: typeof(ExperimentRow).GetField("<SharedControl>k__BackingField", BindingFlags.NonPublic | BindingFlags.Instance | BindingFlags.DeclaredOnly),
+                nullable: true);
+            sharedControl.AddAnnotation("Relational:ColumnName", "shared_control");
 
             var smallestEffect = runtimeEntityType.AddProperty(
                 "SmallestEffect",

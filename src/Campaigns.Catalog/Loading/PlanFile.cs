@@ -9,7 +9,7 @@ public static class PlanFile
     public static IReadOnlyList<string> ColumnNames { get; } =
     [
         "experiment", "title", "response", "unit", "groups", "control", "test", "follow_up",
-        "replicates", "smallest_effect", "assumed_sd", "weight", "family",
+        "replicates", "smallest_effect", "assumed_sd", "weight", "family", "confirms", "shared_control",
     ];
 
     /// <summary>Reads a whole plan, and collects everything that is wrong with it.</summary>

@@ -56,7 +56,9 @@ internal sealed class PlanRow
             SmallestEffect = Number("smallest_effect", allowZero: false),
             AssumedStandardDeviation = Number("assumed_sd", allowZero: false),
             Weight = Number("weight", allowZero: true),
-            Family = Text("family", _names) is { Length: > 0 } family ? family : null,
+            Family = Name("family"),
+            Confirms = Name("confirms"),
+            SharedControl = Name("shared_control"),
         };
         CheckFollowUp(experiment);
         return _isSound ? experiment : null;
@@ -100,6 +102,8 @@ internal sealed class PlanRow
 
         return Encoding.UTF8.GetString(text);
     }
+
+    private string? Name(string column) => Text(column, _names) is { Length: > 0 } name ? name : null;
 
     private string[] Groups()
     {

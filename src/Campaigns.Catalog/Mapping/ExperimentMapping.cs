@@ -34,6 +34,8 @@ internal sealed class ExperimentMapping : IEntityTypeConfiguration<ExperimentRow
         builder.Property(e => e.AssumedStandardDeviation).HasColumnName("assumed_sd");
         builder.Property(e => e.Weight).HasColumnName("weight");
         builder.Property(e => e.Family).HasColumnName("family");
+        builder.Property(e => e.Confirms).HasColumnName("confirms");
+        builder.Property(e => e.SharedControl).HasColumnName("shared_control");
         builder.HasOne<CampaignRow>().WithMany().HasForeignKey(e => e.CampaignId).OnDelete(DeleteBehavior.Restrict);
         builder.HasOne<GroupSetRow>().WithMany().HasForeignKey(e => e.GroupSetId).OnDelete(DeleteBehavior.Restrict);
         builder.HasIndex(e => e.CampaignId).HasDatabaseName("ix_experiments_campaign");

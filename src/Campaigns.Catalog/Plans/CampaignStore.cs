@@ -21,15 +21,14 @@ public sealed class CampaignStore(Catalog catalog)
             campaigns.Add(Row(select));
         }
 
-        return campaigns;
+        return [.. campaigns.Select(Complete)];
     }
 
     /// <summary>The campaign with a code; null where there is none.</summary>
     public StoredCampaign? Find(string code)
     {
         using SqliteStatement select = catalog.Prepare($"SELECT {Columns} FROM campaigns WHERE code = ?1");
-        select.Bind(1, code);
-        return select.Read() ? Row(select) : null;
+        return select.Bind(1, code).Read() ? Complete(Row(select)) : null;
     }
 
     /// <summary>The campaign with a code.</summary>
@@ -57,6 +56,11 @@ public sealed class CampaignStore(Catalog catalog)
                 .Bind(5, campaign.ErrorRate.Word()).Bind(6, campaign.Level.Value).Bind(7, campaign.Correction)
                 .Bind(8, campaign.DefaultTest).Bind(9, campaign.DefaultFollowUp)
                 .Bind(10, campaign.IsExploratory ? 1L : 0L).Bind(11, catalog.Now).Run();
+            if (campaign.Online is { } online)
+            {
+                new OnlineSettingsStore(catalog).Add(id, online);
+            }
+
             return Get(campaign.Code);
         });
     }
@@ -99,6 +103,11 @@ public sealed class CampaignStore(Catalog catalog)
             : "'campaigns list' shows those there are";
         return new RefusedException($"There is no campaign '{code}' in the catalog '{catalog.Path}'; {hint}.");
     }
+
+    private StoredCampaign Complete(StoredCampaign stored) => stored with
+    {
+        Campaign = stored.Campaign with { Families = new FamilyStore(catalog).Read(stored.Id), Online = new OnlineSettingsStore(catalog).Read(stored.Id) },
+    };
 
     private static StoredCampaign Row(SqliteStatement row) => new(row.Integer(0), new Campaign
     {

@@ -15,7 +15,7 @@ internal sealed class ExperimentWriter : IDisposable
     public ExperimentWriter(Catalog catalog, long campaignId)
     {
         _campaignId = campaignId;
-        _insert = catalog.Prepare($"INSERT INTO experiments ({PlanStore.ExperimentColumns}) VALUES (?1, ?2, ?3, ?4, ?5, ?6, ?7, ?8, ?9, ?10, ?11, ?12, ?13, ?14, ?15, ?16)");
+        _insert = catalog.Prepare($"INSERT INTO experiments ({PlanStore.ExperimentColumns}) VALUES (?1, ?2, ?3, ?4, ?5, ?6, ?7, ?8, ?9, ?10, ?11, ?12, ?13, ?14, ?15, ?16, ?17, ?18)");
         _regroup = catalog.Prepare("UPDATE experiments SET group_set_id = ?2 WHERE id = ?1");
         _delete = new Lazy<SqliteStatement>(() => catalog.Prepare("DELETE FROM experiments WHERE id = ?1"));
         using SqliteStatement last = catalog.Prepare("SELECT coalesce(max(id), 0) FROM experiments");
@@ -58,7 +58,8 @@ internal sealed class ExperimentWriter : IDisposable
             .Bind(7, groupSetId).Bind(8, groupsArePlanned ? 1L : 0L).Bind(9, experiment.Control)
             .Bind(10, experiment.Test).Bind(11, experiment.FollowUp).Bind(12, (long?)experiment.Replicates)
             .Bind(13, experiment.SmallestEffect).Bind(14, experiment.AssumedStandardDeviation)
-            .Bind(15, experiment.Weight).Bind(16, experiment.Family).Run();
+            .Bind(15, experiment.Weight).Bind(16, experiment.Family)
+            .Bind(17, experiment.Confirms).Bind(18, experiment.SharedControl).Run();
 
     private static string? OrNull(string text) => text.Length == 0 ? null : text;
 }

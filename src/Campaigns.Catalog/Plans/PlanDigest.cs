@@ -27,12 +27,40 @@ internal static class PlanDigest
         Add(hash, campaign.DefaultTest);
         Add(hash, campaign.DefaultFollowUp);
         Add(hash, campaign.IsExploratory ? "exploratory" : "planned");
+        AddFamilies(hash, campaign);
+        AddOnline(hash, campaign.Online);
         foreach (PlannedExperiment experiment in experiments)
         {
             Add(hash, experiment);
         }
 
         return Convert.ToHexStringLower(hash.GetHashAndReset());
+    }
+
+    private static void AddFamilies(IncrementalHash hash, Campaign campaign)
+    {
+        foreach (Family family in campaign.Families)
+        {
+            Add(hash, "family");
+            Add(hash, family.Name);
+            Add(hash, family.Correction ?? "");
+            Add(hash, Number(family.Level?.Value));
+            Add(hash, family.OpensAfter ?? "");
+            Add(hash, family.Gate == FamilyGate.AllSurvive ? "all" : "any");
+        }
+    }
+
+    private static void AddOnline(IncrementalHash hash, OnlineOptions? online)
+    {
+        if (online is not null)
+        {
+            Add(hash, "online");
+            Add(hash, FormattableString.Invariant($"{online.Horizon}"));
+            Add(hash, online.Shape ?? "");
+            Add(hash, Number(online.InitialWealth));
+            Add(hash, Number(online.Lambda));
+            Add(hash, Number(online.Tau));
+        }
     }
 
     private static void Add(IncrementalHash hash, PlannedExperiment experiment)
@@ -56,6 +84,19 @@ internal static class PlanDigest
         Add(hash, Number(experiment.AssumedStandardDeviation));
         Add(hash, Number(experiment.Weight));
         Add(hash, experiment.Family ?? "");
+
+        // Fields that came later go in, with their names, only where they say something: the digests of earlier plans stay as they are.
+        AddIfSaid(hash, "confirms", experiment.Confirms);
+        AddIfSaid(hash, "shared control", experiment.SharedControl);
+    }
+
+    private static void AddIfSaid(IncrementalHash hash, string name, string? text)
+    {
+        if (text is not null)
+        {
+            Add(hash, name);
+            Add(hash, text);
+        }
     }
 
     private static string Number(double? value) => FormattableString.Invariant($"{value:R}");

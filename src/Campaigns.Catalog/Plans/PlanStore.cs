@@ -14,7 +14,7 @@ public sealed record PlanChange(int Added, int Changed, int Unchanged);
 public sealed class PlanStore(Catalog catalog)
 {
     internal const string ExperimentColumns =
-        "id, campaign_id, code, title, response, unit, group_set_id, groups_are_planned, control, test, follow_up, replicates, smallest_effect, assumed_sd, weight, family";
+        "id, campaign_id, code, title, response, unit, group_set_id, groups_are_planned, control, test, follow_up, replicates, smallest_effect, assumed_sd, weight, family, confirms, shared_control";
 
     /// <summary>The planned experiments of a campaign, in the plan's order; where the plan names no groups, those that came with the data are given.</summary>
     /// <param name="campaignId">The campaign.</param>
@@ -127,5 +127,7 @@ public sealed class PlanStore(Catalog catalog)
         AssumedStandardDeviation = row.NullableReal(13),
         Weight = row.NullableReal(14),
         Family = row.NullableText(15),
+        Confirms = row.NullableText(16),
+        SharedControl = row.NullableText(17),
     };
 }

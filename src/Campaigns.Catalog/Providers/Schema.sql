@@ -239,3 +239,149 @@ VALUES ('20261201000001_Exclusions', '10.0.15');
 
 COMMIT;
 
+BEGIN TRANSACTION;
+ALTER TABLE "experiments" ADD "confirms" TEXT NULL;
+
+ALTER TABLE "experiments" ADD "shared_control" TEXT NULL;
+
+CREATE TABLE "families" (
+    "campaign_id" INTEGER NOT NULL,
+    "position" INTEGER NOT NULL,
+    "name" TEXT NOT NULL,
+    "correction" TEXT NULL,
+    "level" REAL NULL,
+    "opens_after" TEXT NULL,
+    "opens_when" TEXT NOT NULL,
+    CONSTRAINT "PK_families" PRIMARY KEY ("campaign_id", "position"),
+    CONSTRAINT "ck_families_level" CHECK (level is null or (level > 0 and level < 1)),
+    CONSTRAINT "ck_families_name" CHECK (length(name) > 0),
+    CONSTRAINT "ck_families_opens" CHECK (opens_when in ('any', 'all') and opens_after is not name),
+    CONSTRAINT "ck_families_position" CHECK (position > 0),
+    CONSTRAINT "FK_families_campaigns_campaign_id" FOREIGN KEY ("campaign_id") REFERENCES "campaigns" ("id") ON DELETE RESTRICT
+);
+
+CREATE TABLE "online_settings" (
+    "campaign_id" INTEGER NOT NULL CONSTRAINT "PK_online_settings" PRIMARY KEY,
+    "horizon" INTEGER NULL,
+    "shape" TEXT NULL,
+    "initial_wealth" REAL NULL,
+    "lambda" REAL NULL,
+    "tau" REAL NULL,
+    CONSTRAINT "ck_online_settings_horizon" CHECK (horizon is null or horizon >= 0),
+    CONSTRAINT "FK_online_settings_campaigns_campaign_id" FOREIGN KEY ("campaign_id") REFERENCES "campaigns" ("id") ON DELETE RESTRICT
+);
+
+CREATE TABLE "review_families" (
+    "review_id" INTEGER NOT NULL,
+    "position" INTEGER NOT NULL,
+    "name" TEXT NOT NULL,
+    "correction" TEXT NOT NULL,
+    "level" REAL NOT NULL,
+    "family_size" INTEGER NOT NULL,
+    "planned_count" INTEGER NOT NULL,
+    "tested_count" INTEGER NOT NULL,
+    "survivor_count" INTEGER NOT NULL,
+    "is_open" INTEGER NOT NULL,
+    CONSTRAINT "PK_review_families" PRIMARY KEY ("review_id", "position"),
+    CONSTRAINT "ck_review_families_counts" CHECK (tested_count between 0 and family_size and family_size <= planned_count and survivor_count between 0 and tested_count),
+    CONSTRAINT "ck_review_families_level" CHECK (level > 0 and level < 1),
+    CONSTRAINT "ck_review_families_open" CHECK (is_open in (0, 1) and (is_open = 1 or survivor_count = 0)),
+    CONSTRAINT "FK_review_families_reviews_review_id" FOREIGN KEY ("review_id") REFERENCES "reviews" ("id") ON DELETE RESTRICT
+);
+
+CREATE TABLE "streams" (
+    "id" INTEGER NOT NULL CONSTRAINT "PK_streams" PRIMARY KEY,
+    "campaign_id" INTEGER NOT NULL,
+    "number" INTEGER NOT NULL,
+    "procedure" TEXT NOT NULL,
+    "level" REAL NOT NULL,
+    "horizon" INTEGER NULL,
+    "shape" TEXT NOT NULL,
+    "initial_wealth" REAL NULL,
+    "lambda" REAL NULL,
+    "tau" REAL NULL,
+    "reason" TEXT NULL,
+    "started_at" INTEGER NOT NULL,
+    "program_version" TEXT NOT NULL,
+    CONSTRAINT "ck_streams_horizon" CHECK (horizon is null or horizon > 0),
+    CONSTRAINT "ck_streams_level" CHECK (level > 0 and level < 1),
+    CONSTRAINT "ck_streams_number" CHECK (number > 0),
+    CONSTRAINT "ck_streams_reason" CHECK ((reason is null) = (number = 1) and (reason is null or length(reason) > 0)),
+    CONSTRAINT "FK_streams_campaigns_campaign_id" FOREIGN KEY ("campaign_id") REFERENCES "campaigns" ("id") ON DELETE RESTRICT
+);
+
+CREATE TABLE "stream_entries" (
+    "stream_id" INTEGER NOT NULL,
+    "position" INTEGER NOT NULL,
+    "experiment_id" INTEGER NOT NULL,
+    "level" REAL NOT NULL,
+    "known_count" INTEGER NOT NULL,
+    "registered_at" INTEGER NOT NULL,
+    CONSTRAINT "PK_stream_entries" PRIMARY KEY ("stream_id", "position"),
+    CONSTRAINT "ck_stream_entries_level" CHECK (level >= 0 and level < 1),
+    CONSTRAINT "ck_stream_entries_position" CHECK (position > 0 and known_count between 0 and position - 1),
+    CONSTRAINT "FK_stream_entries_experiments_experiment_id" FOREIGN KEY ("experiment_id") REFERENCES "experiments" ("id") ON DELETE RESTRICT,
+    CONSTRAINT "FK_stream_entries_streams_stream_id" FOREIGN KEY ("stream_id") REFERENCES "streams" ("id") ON DELETE RESTRICT
+);
+
+CREATE TABLE "standing_decisions" (
+    "stream_id" INTEGER NOT NULL,
+    "position" INTEGER NOT NULL,
+    "known_order" INTEGER NOT NULL,
+    "test_run_id" INTEGER NOT NULL,
+    "p" REAL NULL,
+    "log_p" REAL NULL,
+    "survives" INTEGER NOT NULL,
+    "decided_at" INTEGER NOT NULL,
+    CONSTRAINT "PK_standing_decisions" PRIMARY KEY ("stream_id", "position"),
+    CONSTRAINT "ck_standing_decisions_order" CHECK (known_order > 0),
+    CONSTRAINT "ck_standing_decisions_p" CHECK ((p is null or (p >= 0 and p <= 1 and (p > 0 or log_p is not null))) and (log_p is null or (p is not null and log_p <= 0))),
+    CONSTRAINT "ck_standing_decisions_survives" CHECK (survives in (0, 1) and (survives = 0 or p is not null)),
+    CONSTRAINT "FK_standing_decisions_stream_entries_stream_id_position" FOREIGN KEY ("stream_id", "position") REFERENCES "stream_entries" ("stream_id", "position") ON DELETE RESTRICT,
+    CONSTRAINT "FK_standing_decisions_test_runs_test_run_id" FOREIGN KEY ("test_run_id") REFERENCES "test_runs" ("id") ON DELETE RESTRICT
+);
+
+CREATE UNIQUE INDEX "ux_families_name" ON "families" ("campaign_id", "name");
+
+CREATE UNIQUE INDEX "ux_standing_decisions_order" ON "standing_decisions" ("stream_id", "known_order");
+
+CREATE UNIQUE INDEX "ux_stream_entries_experiment" ON "stream_entries" ("experiment_id");
+
+CREATE UNIQUE INDEX "ux_streams_number" ON "streams" ("campaign_id", "number");
+
+DROP TRIGGER experiments_are_kept;
+CREATE TRIGGER experiments_are_kept BEFORE UPDATE ON experiments
+WHEN EXISTS (SELECT 1 FROM campaigns WHERE id = old.campaign_id AND sealed_at IS NOT NULL)
+    AND (old.groups_are_planned = 1 OR new.id IS NOT old.id OR new.campaign_id IS NOT old.campaign_id OR new.code IS NOT old.code
+        OR new.title IS NOT old.title OR new.response IS NOT old.response OR new.unit IS NOT old.unit
+        OR new.groups_are_planned IS NOT old.groups_are_planned OR new.control IS NOT old.control OR new.test IS NOT old.test
+        OR new.follow_up IS NOT old.follow_up OR new.replicates IS NOT old.replicates OR new.smallest_effect IS NOT old.smallest_effect
+        OR new.assumed_sd IS NOT old.assumed_sd OR new.weight IS NOT old.weight OR new.family IS NOT old.family
+        OR new.confirms IS NOT old.confirms OR new.shared_control IS NOT old.shared_control)
+BEGIN SELECT RAISE(ABORT, 'an experiment of a sealed plan is never changed; only groups that come with the data may be added'); END;
+CREATE TRIGGER families_are_kept BEFORE UPDATE ON families
+WHEN EXISTS (SELECT 1 FROM campaigns WHERE id = old.campaign_id AND sealed_at IS NOT NULL)
+BEGIN SELECT RAISE(ABORT, 'a family of a sealed plan is never changed'); END;
+CREATE TRIGGER families_stay BEFORE DELETE ON families
+WHEN EXISTS (SELECT 1 FROM campaigns WHERE id = old.campaign_id AND sealed_at IS NOT NULL)
+BEGIN SELECT RAISE(ABORT, 'a family of a sealed plan is never deleted'); END;
+CREATE TRIGGER online_settings_are_kept BEFORE UPDATE ON online_settings
+WHEN EXISTS (SELECT 1 FROM campaigns WHERE id = old.campaign_id AND sealed_at IS NOT NULL)
+BEGIN SELECT RAISE(ABORT, 'the settings of a sealed plan are never changed; a new stream takes others'); END;
+CREATE TRIGGER online_settings_stay BEFORE DELETE ON online_settings
+WHEN EXISTS (SELECT 1 FROM campaigns WHERE id = old.campaign_id AND sealed_at IS NOT NULL)
+BEGIN SELECT RAISE(ABORT, 'the settings of a sealed plan are never deleted'); END;
+CREATE TRIGGER review_families_are_kept BEFORE UPDATE ON review_families BEGIN SELECT RAISE(ABORT, 'a review is never changed'); END;
+CREATE TRIGGER review_families_stay BEFORE DELETE ON review_families BEGIN SELECT RAISE(ABORT, 'a review is never deleted'); END;
+CREATE TRIGGER streams_are_kept BEFORE UPDATE ON streams BEGIN SELECT RAISE(ABORT, 'a stream is never changed; a new one takes other settings'); END;
+CREATE TRIGGER streams_stay BEFORE DELETE ON streams BEGIN SELECT RAISE(ABORT, 'a stream is never deleted'); END;
+CREATE TRIGGER stream_entries_are_kept BEFORE UPDATE ON stream_entries BEGIN SELECT RAISE(ABORT, 'a level once given is never changed'); END;
+CREATE TRIGGER stream_entries_stay BEFORE DELETE ON stream_entries BEGIN SELECT RAISE(ABORT, 'a level once given is never taken back'); END;
+CREATE TRIGGER standing_decisions_are_kept BEFORE UPDATE ON standing_decisions BEGIN SELECT RAISE(ABORT, 'a standing decision is never changed'); END;
+CREATE TRIGGER standing_decisions_stay BEFORE DELETE ON standing_decisions BEGIN SELECT RAISE(ABORT, 'a standing decision is never revoked'); END;
+
+INSERT INTO "__EFMigrationsHistory" ("MigrationId", "ProductVersion")
+VALUES ('20261201000002_ErrorControl', '10.0.15');
+
+COMMIT;
+

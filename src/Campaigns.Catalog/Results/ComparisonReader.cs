@@ -15,7 +15,7 @@ public sealed class ComparisonReader(Catalog catalog)
     public IEnumerable<ExperimentComparison> All(CampaignStanding standing)
     {
         ArgumentNullException.ThrowIfNull(standing);
-        return Read(standing.Campaign, standing.Experiments, only: null, standing.FamilySize, standing.SurvivorCount);
+        return Read(standing.Campaign, standing.Experiments, only: null, standing.Families);
     }
 
     /// <summary>The comparisons of a few surviving experiments.</summary>
@@ -26,14 +26,14 @@ public sealed class ComparisonReader(Catalog catalog)
         ArgumentNullException.ThrowIfNull(overview);
         ArgumentNullException.ThrowIfNull(survivors);
         string[] followed = [.. survivors.Where(s => s.Plan.FollowUp != FollowUpRegistry.None).Select(s => s.Plan.Code)];
-        return Read(overview.Campaign, survivors, followed, overview.FamilySize, overview.SurvivorCount)
+        return Read(overview.Campaign, survivors, followed, overview.Families)
             .ToLookup(c => c.Experiment.Plan.Code, StringComparer.Ordinal);
     }
 
-    private IEnumerable<ExperimentComparison> Read(Campaign campaign, IReadOnlyList<ExperimentResult> experiments, IEnumerable<string>? only, int familySize, int survivors)
+    private IEnumerable<ExperimentComparison> Read(Campaign campaign, IReadOnlyList<ExperimentResult> experiments, IEnumerable<string>? only, IReadOnlyList<FamilyStanding> families)
     {
         long campaignId = new CampaignStore(catalog).Get(campaign.Code).Id;
-        var verdict = new ComparisonVerdict(campaign, familySize, survivors);
+        var verdict = new ComparisonVerdict(campaign, families);
         var byCode = experiments.ToDictionary(e => e.Plan.Code, StringComparer.Ordinal);
         var exclusions = new StandingExclusions(catalog, campaignId);
         using var rows = new ValueRows(catalog, campaignId, exclusions, only);

@@ -51,7 +51,7 @@ public sealed class DetailReader(Catalog catalog)
         }
 
         var analysis = ExperimentAnalysis.Of(result.Plan, labels, readings, standing.Campaign, standing.FamilySize, result.P is null ? null : outcome as Tested, rows.Places());
-        var verdict = new ComparisonVerdict(standing.Campaign, standing.FamilySize, standing.SurvivorCount);
+        var verdict = new ComparisonVerdict(standing.Campaign, standing.Families);
         return new ExperimentDetail(result, groups, Confidence, (outcome as Tested)?.Variation, rows.MissingCount)
         {
             Analysis = analysis,

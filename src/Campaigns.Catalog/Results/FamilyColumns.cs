@@ -32,6 +32,9 @@ internal sealed class FamilyColumns
     /// <summary>One p-value for each.</summary>
     public ReadOnlySpan<PValue> P => _p.AsSpan(0, Count);
 
+    /// <summary>The p-values as memory that may be kept.</summary>
+    public ReadOnlyMemory<PValue> PMemory => _p.AsMemory(0, Count);
+
     public void Add(long experimentId, PValue p)
     {
         if (Count == _p.Length)

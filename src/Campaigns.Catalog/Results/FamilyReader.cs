@@ -1,4 +1,6 @@
+using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Providers;
+using Campaigns.Domain;
 using Campaigns.Statistics.Probability;
 
 namespace Campaigns.Catalog.Results;
@@ -49,6 +51,18 @@ internal sealed class FamilyReader(Catalog catalog)
         FamilyColumns columns = PackedReviewLines.UnpackFamily(latest.Blob(1));
         List<(long, PValue?)> newer = TestedAfter(campaignId, latest.Integer(0));
         return newer.Count == 0 ? columns : columns.With(newer);
+    }
+
+    /// <summary>The family as the correction takes it, with what was planned and not tested.</summary>
+    /// <param name="stored">The campaign.</param>
+    /// <param name="columns">Its tested experiments.</param>
+    /// <param name="testedOnly">Whether the tested ones alone are counted.</param>
+    public FamilyMembers Members(StoredCampaign stored, FamilyColumns columns, bool testedOnly)
+    {
+        int planned = FamilySize(stored.Id);
+        return FamilyMembers.OneFamily(columns.PMemory, planned) is var members && testedOnly
+            ? members with { Families = [members.Families[0] with { Size = columns.Count }] }
+            : members;
     }
 
     private FamilyColumns ReadAll(long campaignId)

@@ -1,7 +1,6 @@
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Providers;
 using Campaigns.Domain;
-using Campaigns.Statistics.Corrections;
 using Campaigns.Statistics.Probability;
 
 namespace Campaigns.Catalog.Results;
@@ -24,22 +23,21 @@ public sealed class OverviewReader(Catalog catalog)
     private (CampaignOverview Overview, IReadOnlyList<ExperimentResult> Survivors) ReadSurvivorsNow(string code, int most)
     {
         StoredCampaign stored = new CampaignStore(catalog).Get(code);
-        (CampaignOverview overview, FamilyColumns family, PValue[] adjusted) = ReadWithSurvivors(stored);
-        int[] survivors = [.. Enumerable.Range(0, adjusted.Length).Where(i => stored.Campaign.Level.Rejects(adjusted[i]))];
+        (CampaignOverview overview, FamilyColumns family, CampaignVerdict verdict) = ReadWithSurvivors(stored);
+        int[] survivors = [.. Enumerable.Range(0, family.Count).Where(i => verdict.Survives[i])];
         Array.Sort(survivors, (a, b) => family.P[a].CompareTo(family.P[b]) is var order && order != 0 ? order : a.CompareTo(b));
         int[] listed = most < survivors.Length ? survivors[..most] : survivors;
         Dictionary<long, ExperimentResult> experiments = new StandingReader(catalog).ReadSome(stored.Id, listed.Select(i => family.ExperimentIds[i]));
-        return (overview, [.. listed.Select(i => experiments[family.ExperimentIds[i]] with { AdjustedP = adjusted[i], Survives = true })]);
+        return (overview, [.. listed.Select(i => experiments[family.ExperimentIds[i]] with { AdjustedP = verdict.Adjusted[i], Survives = true, Family = verdict.FamilyAt(i) })]);
     }
 
-    private (CampaignOverview Overview, FamilyColumns Family, PValue[] Adjusted) ReadWithSurvivors(StoredCampaign stored)
+    private (CampaignOverview Overview, FamilyColumns Family, CampaignVerdict Verdict) ReadWithSurvivors(StoredCampaign stored)
     {
         ArgumentNullException.ThrowIfNull(stored);
         Campaign campaign = stored.Campaign;
         var families = new FamilyReader(catalog);
         FamilyColumns family = families.Read(stored.Id);
-        int familySize = families.FamilySize(stored.Id);
-        PValue[] adjusted = FamilyVerdict.CorrectionOf(campaign).Adjust(RankedFamily.Of(family.P, familySize));
+        CampaignVerdict verdict = FamilyVerdict.Judge(campaign, families.Members(stored, family, testedOnly: false));
         int hits = 0;
         foreach (PValue p in family.P)
         {
@@ -50,13 +48,14 @@ public sealed class OverviewReader(Catalog catalog)
         var amended = new AmendedExperiments(catalog, stored.Id);
         return (
             new CampaignOverview(
-                campaign, familySize, family.Count, hits, adjusted.Count(campaign.Level.Rejects),
+                campaign, verdict.Size, family.Count, hits, verdict.SurvivorCount,
                 Deviating(stored.Id, amended), latest?.Head, families.ResultsAfter(stored.Id, latest?.LastRun ?? 0))
             {
                 AwaitingNewTest = amended.Ids.Count(amended.AwaitsTest),
+                Families = verdict.Families,
             },
             family,
-            adjusted);
+            verdict);
     }
 
     /// <summary>Experiments that received values after their test, of which values were left out, or whose test was run short of the planned values.</summary>

@@ -1,7 +1,6 @@
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Providers;
 using Campaigns.Domain;
-using Campaigns.Statistics.Corrections;
 using Campaigns.Statistics.Probability;
 
 namespace Campaigns.Catalog.Results;
@@ -47,7 +46,7 @@ public sealed class ReviewStore(Catalog catalog)
             return new ReviewTaken(latest.Head, false);
         }
 
-        return new ReviewTaken(Store(stored, families.Read(stored.Id), planned, testedOnly, lastRun.Value), true);
+        return new ReviewTaken(Store(stored, families.Read(stored.Id), testedOnly, lastRun.Value), true);
     });
 
     /// <summary>Whether anything of a campaign was tested, so that a review has something to hold.</summary>
@@ -76,12 +75,10 @@ public sealed class ReviewStore(Catalog catalog)
         return reviews;
     }
 
-    private ReviewHead Store(StoredCampaign stored, FamilyColumns columns, int planned, bool testedOnly, long lastRun)
+    private ReviewHead Store(StoredCampaign stored, FamilyColumns columns, bool testedOnly, long lastRun)
     {
         Campaign campaign = stored.Campaign;
-        int familySize = testedOnly ? columns.Count : planned;
-        PValue[] adjusted = FamilyVerdict.CorrectionOf(campaign).Adjust(RankedFamily.Of(columns.P, familySize));
-        int survivors = adjusted.Count(campaign.Level.Rejects);
+        CampaignVerdict verdict = FamilyVerdict.Judge(campaign, new FamilyReader(catalog).Members(stored, columns, testedOnly));
         int number = (Latest(stored.Id)?.Head.Number ?? 0) + 1;
         using SqliteStatement next = catalog.Prepare("SELECT coalesce(max(id), 0) + 1 FROM reviews");
         next.Read();
@@ -89,9 +86,9 @@ public sealed class ReviewStore(Catalog catalog)
         next.Reset();
         using SqliteStatement insert = catalog.Prepare($"INSERT INTO reviews (id, campaign_id, {Columns}, lines) VALUES (?1, ?2, ?3, ?4, ?5, ?6, ?7, ?8, ?9, ?10, ?11, ?12, ?13)");
         insert.Bind(1, id).Bind(2, stored.Id).Bind(3, (long)number).Bind(4, catalog.Now).Bind(5, campaign.Correction)
-            .Bind(6, campaign.Level.Value).Bind(7, (long)familySize).Bind(8, (long)columns.Count).Bind(9, (long)survivors)
+            .Bind(6, campaign.Level.Value).Bind(7, (long)verdict.Size).Bind(8, (long)columns.Count).Bind(9, (long)verdict.SurvivorCount)
             .Bind(10, testedOnly ? 1L : 0L).Bind(11, ProgramVersion.Current).Bind(12, lastRun)
-            .BindBlob(13, PackedReviewLines.Pack(columns.ExperimentIds, columns.P, adjusted).Written).Run();
+            .BindBlob(13, PackedReviewLines.Pack(columns.ExperimentIds, columns.P, [.. verdict.Adjusted]).Written).Run();
         return Latest(stored.Id)!.Value.Head;
     }
 

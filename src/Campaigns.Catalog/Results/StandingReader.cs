@@ -21,14 +21,16 @@ public sealed class StandingReader(Catalog catalog)
         Dictionary<long, DataAtHand> untested = UntestedData(stored.Id);
         List<ExperimentResult> experiments = ReadExperiments(stored, amended, untested);
         (ReviewHead Head, long? LastRun)? latest = new ReviewStore(catalog).Latest(stored.Id);
+        CampaignVerdict verdict = FamilyVerdict.Judge(stored.Campaign, FamilyMembers.Of(stored.Campaign, experiments));
         return new CampaignStanding(
             stored.Campaign,
-            FamilyVerdict.Apply(stored.Campaign, experiments, experiments.Count),
+            FamilyVerdict.Apply(experiments, verdict),
             experiments.Count,
             latest?.Head,
             new FamilyReader(catalog).ResultsAfter(stored.Id, latest?.LastRun ?? 0))
         {
             AwaitingNewTest = amended.Ids.Count(amended.AwaitsTest),
+            Families = verdict.Families,
         };
     }
 

@@ -50,4 +50,10 @@ public sealed class ExperimentRow
 
     /// <summary>Name of the family; null for the campaign's one family.</summary>
     public string? Family { get; set; }
+
+    /// <summary>Code of the earlier experiment that this one confirms: of the same campaign, or CAMPAIGN/EXPERIMENT; null for none.</summary>
+    public string? Confirms { get; set; }
+
+    /// <summary>Name of the control, batch or instrument that it shares with other experiments; null where it shares none.</summary>
+    public string? SharedControl { get; set; }
 }

@@ -33,7 +33,10 @@ internal static class SampleCampaign
         }
 
         Adjust(experiments, planned);
-        return new CampaignStanding(Campaign(correction), experiments, planned, Review(experiments, planned, correction), 0);
+        return new CampaignStanding(Campaign(correction), experiments, planned, Review(experiments, planned, correction), 0)
+        {
+            Families = [Figures(Campaign(correction)) with { Size = planned, Planned = planned, Tested = experiments.Count(e => e.P is not null), Survivors = experiments.Count(e => e.Survives == true) }],
+        };
     }
 
     public static Campaign Campaign(string correction) => new()
@@ -46,6 +49,8 @@ internal static class SampleCampaign
         OpenedAt = new DateTimeOffset(2026, 4, 1, 8, 0, 0, TimeSpan.Zero),
         SealedAt = new DateTimeOffset(2026, 4, 3, 8, 0, 0, TimeSpan.Zero),
     };
+
+    private static FamilyStanding Figures(Campaign campaign) => new("", campaign.Correction, campaign.Level, Family, Family, Family, Survivors);
 
     public static DashboardSource Source(CampaignStanding standing) =>
         new(standing, code => Detail(standing.Experiments.First(e => e.Plan.Code == code)), () => standing);
@@ -69,7 +74,7 @@ internal static class SampleCampaign
         Tested? tested = result.P is null ? null : new FTest().Test(sample) as Tested;
         Campaign campaign = Campaign("rising");
         ExperimentAnalysis analysis = ExperimentAnalysis.Of(result.Plan, result.Plan.Groups, sample, campaign, Family, tested);
-        var verdict = new ComparisonVerdict(campaign, Family, Survivors);
+        var verdict = new ComparisonVerdict(campaign, [Figures(campaign)]);
         return new ExperimentDetail(result, groups, 0.95, tested?.Variation, result.Position % 4 == 0 ? 2 : 0)
         {
             Analysis = analysis,
@@ -94,7 +99,7 @@ internal static class SampleCampaign
             Groups = [.. groups.Select(g => g with { Summary = Summary([.. g.Values]) })],
             Variation = tested.Variation! with { Blocks = new VariationLine(2.5, 3, 2.5 / 3) },
             Analysis = analysis,
-            Comparisons = new ComparisonVerdict(campaign, Family, Survivors).Judge(result, result.Plan.Groups, analysis.Comparisons),
+            Comparisons = new ComparisonVerdict(campaign, [Figures(campaign)]).Judge(result, result.Plan.Groups, analysis.Comparisons),
             Outcome = tested,
             OutcomeWithExcluded = tested with { Statistic = 1.25, P = PValue.FromValue(0.3125) },
             Exclusions =

@@ -29,7 +29,7 @@ public sealed partial class SchemaTests
         {
             ["id"] = 9L, ["campaign_id"] = 7L, ["code"] = "e", ["title"] = "t", ["response"] = "r", ["unit"] = "MPa", ["group_set_id"] = 8L,
             ["groups_are_planned"] = 1L, ["control"] = "k", ["test"] = "f", ["follow_up"] = "scheffe", ["replicates"] = 6L, ["smallest_effect"] = 0.25,
-            ["assumed_sd"] = 0.5, ["weight"] = 2.0, ["family"] = "main",
+            ["assumed_sd"] = 0.5, ["weight"] = 2.0, ["family"] = "main", ["confirms"] = "early/e", ["shared_control"] = "panel 3",
         }),
         ("loads", new()
         {
@@ -56,6 +56,30 @@ public sealed partial class SchemaTests
         {
             ["id"] = 13L, ["experiment_id"] = 9L, ["load_id"] = 10L, ["line"] = 4L, ["is_excluded"] = 1L, ["group_label"] = "80 °C", ["value"] = "1.50",
             ["reason"] = "spilled", ["named_by"] = "Ada", ["made_at"] = 1_764_576_000_000_006L, ["program_version"] = "9.8.7",
+        }),
+        ("families", new()
+        {
+            ["campaign_id"] = 7L, ["position"] = 2L, ["name"] = "main", ["correction"] = "hommel", ["level"] = 0.02, ["opens_after"] = "first", ["opens_when"] = "all",
+        }),
+        ("review_families", new()
+        {
+            ["review_id"] = 12L, ["position"] = 2L, ["name"] = "main", ["correction"] = "hommel", ["level"] = 0.02, ["family_size"] = 5L, ["planned_count"] = 6L,
+            ["tested_count"] = 4L, ["survivor_count"] = 3L, ["is_open"] = 1L,
+        }),
+        ("online_settings", new() { ["campaign_id"] = 7L, ["horizon"] = 40L, ["shape"] = "p2", ["initial_wealth"] = 0.004, ["lambda"] = 0.3, ["tau"] = 0.6 }),
+        ("streams", new()
+        {
+            ["id"] = 14L, ["campaign_id"] = 7L, ["number"] = 2L, ["procedure"] = "addis", ["level"] = 0.03, ["horizon"] = 50L, ["shape"] = "p1.6", ["initial_wealth"] = 0.015,
+            ["lambda"] = 0.25, ["tau"] = 0.5, ["reason"] = "more experiments", ["started_at"] = 1_764_576_000_000_007L, ["program_version"] = "9.8.7",
+        }),
+        ("stream_entries", new()
+        {
+            ["stream_id"] = 14L, ["position"] = 3L, ["experiment_id"] = 9L, ["level"] = 0.00125, ["known_count"] = 2L, ["registered_at"] = 1_764_576_000_000_008L,
+        }),
+        ("standing_decisions", new()
+        {
+            ["stream_id"] = 14L, ["position"] = 3L, ["known_order"] = 4L, ["test_run_id"] = 11L, ["p"] = 4.9406564584124654e-324, ["log_p"] = -744.4400719213812,
+            ["survives"] = 1L, ["decided_at"] = 1_764_576_000_000_009L,
         }),
     ];
 
@@ -124,6 +148,8 @@ public sealed partial class SchemaTests
             context.Campaigns.Single(c => c.Code == "c"), context.Set<GroupSetRow>().Single(), context.Groups.Single(g => g.Label.StartsWith("80")),
             context.Experiments.Single(e => e.Replicates == 6), context.Loads.Single(l => l.AmendmentReason != null), context.Measurements.Single(m => m.ValueCount == 10),
             context.TestRuns.Single(r => r.IncludesIncomplete), context.TestResults.Single(r => r.P < 1e-300), context.Reviews.Single(r => r.IsInterim), context.Exclusions.Single(x => x.IsExcluded),
+            context.Families.Single(f => f.Level != null), context.ReviewFamilies.Single(f => f.IsOpen), context.OnlineSettings.Single(o => o.Horizon == 40),
+            context.Streams.Single(x => x.Reason != null), context.StreamEntries.Single(e => e.KnownCount == 2), context.StandingDecisions.Single(d => d.Survives),
         ];
         for (int i = 0; i < read.Length; i++)
         {

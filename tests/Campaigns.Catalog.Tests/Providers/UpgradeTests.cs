@@ -66,6 +66,33 @@ public sealed class UpgradeTests
     }
 
     [Fact]
+    public void A_catalog_of_the_second_schema_keeps_its_results_its_exclusion_and_its_plan_digest()
+    {
+        // schema-2.db.gz was written by the program when its schema was 2: twelve experiments of published designs, one value of warpbreaks left out, tested again, reviewed twice.
+        using var folder = new TestFolder();
+        using (var packed = new GZipStream(File.OpenRead(Path.Combine(ReferenceTable.Folder(), "catalog", "schema-2.db.gz")), CompressionMode.Decompress))
+        using (FileStream file = File.Create(folder[Name]))
+        {
+            packed.CopyTo(file);
+        }
+
+        List<string> before;
+        using (SqliteConnection old = Raw.Open(folder[Name]))
+        {
+            before = Facts(old);
+        }
+
+        Assert.True(CatalogUpgrade.Run(folder[Name], Migrations));
+        using Catalog catalog = Catalog.Open(folder[Name], TimeProvider.System);
+        Assert.Equal(before, Facts(catalog.Connection));
+        CampaignStanding standing = new StandingReader(catalog).Read("published-designs");
+        Assert.Equal((12, 12, 53), (standing.TestedCount, standing.SurvivorCount, standing.Experiments.Single(e => e.Plan.Code == "warpbreaks").ObservationCount));
+        StoredCampaign stored = new CampaignStore(catalog).Get("published-designs");
+        Assert.Equal(stored.Campaign.PlanDigest, PlanDigest.Of(stored.Campaign, new PlanStore(catalog).Read(stored.Id)));
+        Assert.False(new ReviewStore(catalog).Take("published-designs", testedOnly: false).IsNew);
+    }
+
+    [Fact]
     public void A_catalog_of_today_is_left_as_it_is()
     {
         using var folder = new TestFolder();
@@ -100,7 +127,7 @@ public sealed class UpgradeTests
     }
 
     [Theory]
-    [InlineData("PRAGMA user_version = 3", "newer version")]
+    [InlineData("PRAGMA user_version = 4", "newer version")]
     [InlineData("PRAGMA application_id = 5", "is no catalog")]
     public void Files_that_cannot_be_upgraded_are_left_as_they_are(string change, string reason)
     {

@@ -80,6 +80,7 @@ public sealed class CampaignHeading
         Dependence.Simes => "supposes tests independent or positively dependent",
         Dependence.PositiveRegression => "supposes tests independent or positively dependent",
         Dependence.Independent => "supposes independent tests",
+        Dependence.IndependentConservative => "supposes independent tests with conservative nulls",
         _ => throw new ArgumentOutOfRangeException(nameof(dependence), dependence, "No words for this dependence."),
     };
 

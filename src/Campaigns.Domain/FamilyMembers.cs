@@ -1,0 +1,35 @@
+using Campaigns.Statistics.Probability;
+
+namespace Campaigns.Domain;
+
+/// <summary>The hypotheses of a campaign as columns: the p-values at hand in the plan's order, and what is planned of each family.</summary>
+public sealed record FamilyMembers
+{
+    /// <summary>P-values of the tested experiments, in the plan's order.</summary>
+    public required ReadOnlyMemory<PValue> P { get; init; }
+
+    /// <summary>What is counted of each family; one entry for a campaign of one family.</summary>
+    public required IReadOnlyList<FamilyCount> Families { get; init; }
+
+    /// <summary>For each p-value the place of its family in <see cref="Families"/>, from 0; empty where there is one family.</summary>
+    public ReadOnlyMemory<int> FamilyOf { get; init; }
+
+    /// <summary>For each p-value the planned weight of its experiment; empty where no correction asks for weights.</summary>
+    public ReadOnlyMemory<double> Weights { get; init; }
+
+    /// <summary>The members that experiments in memory make up, those without a p-value counted too.</summary>
+    /// <param name="campaign">Its families.</param>
+    /// <param name="experiments">Every experiment of the campaign; the p-values keep their order.</param>
+    public static FamilyMembers Of(Campaign campaign, IReadOnlyList<ExperimentResult> experiments)
+    {
+        ArgumentNullException.ThrowIfNull(campaign);
+        ArgumentNullException.ThrowIfNull(experiments);
+        PValue[] p = [.. experiments.Where(e => e.P is not null).Select(e => e.P!.Value)];
+        return OneFamily(p, experiments.Count);
+    }
+
+    /// <summary>The members of a campaign of one family.</summary>
+    /// <param name="p">P-values of the tested experiments.</param>
+    /// <param name="size">Hypotheses counted, tested or not.</param>
+    public static FamilyMembers OneFamily(ReadOnlyMemory<PValue> p, int size) => new() { P = p, Families = [new FamilyCount(new Family(""), size, size)] };
+}
