@@ -24,7 +24,7 @@ internal static class RiskCurveTable
             "In the order of testing: by test run, inside a run in the plan's order; an experiment tested again stands where its latest test stands. Without correction, if nothing is real: risk, that there is at least one false positive, for independent tests; at least, at most: its bounds whatever the dependence; expected false: whatever the dependence.",
             "Hits: tests so far whose own p is at most the level. Survive: those of them that survive the correction over the whole family as the campaign stands today.",
             RiskTable.CorrectedMeans([.. points.Select(p => p.Corrected).OfType<CorrectedRisk>()]),
-            $"{CampaignText.Goal(standing.Campaign)}. {FamilyVerdict.ProcedureOf(standing.Campaign).Guarantee}",
+            $"{standing.Campaign.Code}: {CampaignText.Goal(standing.Campaign)}. {FamilyVerdict.ProcedureOf(standing.Campaign).Guarantee}",
             .. CampaignText.Deviations(standing.Overview),
         ],
         WhenEmpty = "No experiment has a result yet.",

@@ -12,9 +12,9 @@ internal static class RiskTable
     private static IReadOnlyList<Column> Columns { get; } =
     [
         new("campaign", "campaign"), new("tests", "tests", true), new("level", "level", true), new("expected_false_positives", "expected false", true),
-        new("risk_independent", "risk", true), new("risk_at_least", "at least", true, 3), new("risk_at_most", "at most", true, 3),
+        new("risk_independent", "risk", true), new("risk_at_least", "at least", true), new("risk_at_most", "at most", true),
         new("uncorrected_hits", "hits", true), new("survivors", "survive", true), new("correction", "correction"), new("guarantee", null),
-        new("true_null_share", "nulls", true, 1), new("expected_false_survivors", "false est.", true, 1), new("false_survivors_at_most", "false at most", true), new("confidence", null, true),
+        new("true_null_share", "nulls", true, 2), new("expected_false_survivors", "false est.", true, 2), new("false_survivors_at_most", "false at most", true, 1), new("confidence", null, true),
         new("corrected_risk", "corrected", true, 2), new("corrected_risk_is", null), new("corrected_expected_false", null, true), new("family_size", null, true),
     ];
 
@@ -74,16 +74,29 @@ internal static class RiskTable
     /// <summary>"exact" or "at most"; null for no risk.</summary>
     public static string? Exactness(CorrectedRisk? risk) => risk is { } given ? given.IsExact ? "exact" : "at most" : null;
 
-    /// <summary>What the correction holds in numbers, where a law gives them.</summary>
+    /// <summary>What the correction holds and what of the survivors may be false, in numbers, where a law gives them.</summary>
     private static string Numbers(CampaignRisk risk)
     {
         CampaignOverview c = risk.Overview;
-        string expected = risk.Corrected is { ExpectedFalse: { } number } && c.TestedCount > 0
-            ? $" If nothing is real, {NumberText.Screen(number, 3)} false survivors are to be expected{(FamilyVerdict.ProcedureOf(c.Campaign).Key is "bh" or "by" ? " (independent tests)" : ", whatever the dependence")}."
-            : "";
-        return expected + (FamilyVerdict.ProcedureOf(c.Campaign).Controls == ErrorRate.FalseDiscovery && c.SurvivorCount > 0
-            ? " With effects the number of false survivors grows with the survivors, about their number times the rate."
-            : "");
+        ErrorProcedure procedure = FamilyVerdict.ProcedureOf(c.Campaign);
+        var sentences = new List<string>();
+        if (c.TestedCount > 0 && risk.Corrected is { } corrected)
+        {
+            string expected = corrected.ExpectedFalse is { } number ? $", and {NumberText.Screen(number, 3)} false survivors are to be expected" : "";
+            sentences.Add($"If nothing is real and the tests are independent, the risk of a false survivor is {(corrected.IsExact ? "" : "at most ")}{Words.Percent(corrected.AtLeastOne)}{expected}.");
+        }
+
+        if (c.SurvivorCount > 0)
+        {
+            string estimate = risk.ExpectedFalseSurvivors is { } number ? $", by estimate {NumberText.Screen(number, 2)} (share of true nulls {NumberText.Screen(risk.TrueNulls.Share ?? 0, 2)})" : "";
+            sentences.Add(FormattableString.Invariant($"Of its {c.SurvivorCount} survivors at most {risk.SurvivorBound.FalseAtMost} are false ({BoundWording.ConfidenceText(risk.Confidence)} confidence){estimate}."));
+            if (procedure.Controls == ErrorRate.FalseDiscovery)
+            {
+                sentences.Add("With effects the number of false survivors grows with the survivors, about their number times the rate.");
+            }
+        }
+
+        return string.Concat(sentences.Select(sentence => " " + sentence));
     }
 
     private static Cell[] Row(CampaignRisk risk)

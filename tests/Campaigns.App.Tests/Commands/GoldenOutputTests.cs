@@ -42,7 +42,7 @@ public sealed partial class GoldenOutputTests : IDisposable
     {
         string text = Kept("bound", "bound", "adhesion-screen", "GS-09", "GS-04", "GS-30", "GS-48");
         CsvText csv = Csv("bound", "adhesion-screen", "GS-09", "GS-04", "GS-30", "GS-48");
-        string line = text.Split('\n').Single(l => l.StartsWith(" ", StringComparison.Ordinal));
+        string line = text.Split('\n').Single(l => l.StartsWith(' '));
         Assert.All(new[] { "marked", "real_at_least", "false_at_most", "confidence", "level", "family_size" }, column => Assert.True(Shows(line, csv.Numbers(column)[0]), $"{column}: {line}"));
     }
 

@@ -35,6 +35,7 @@ public sealed class RiskVerbTests : IDisposable
     {
         _place.Run("start", "LATER").Well();
         _place.Run("plan", "LATER", _place.Write("plan.csv", "experiment,replicates\nA,2\nB,2\nC,2\nD,2\n")).Well();
+        _place.Run("seal", "LATER").Well();
         _place.Run("load", "LATER", _place.Write("first.csv", "experiment,group,value\nC,x,1\nC,x,2\nC,y,11\nC,y,12.5\nD,x,1\nD,x,2\nD,y,1.2\nD,y,2.1\n")).Well();
         _place.Run("test", "LATER").Well();
         _place.Run("load", "LATER", _place.Write("second.csv", "experiment,group,value\nA,x,1\nA,x,2\nA,y,1\nA,y,2.5\n")).Well();
