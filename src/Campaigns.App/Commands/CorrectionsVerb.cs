@@ -25,7 +25,7 @@ internal sealed class CorrectionsVerb : Verb
         CampaignStanding standing = new StandingReader(catalog).Read(session.Get(_code));
         ExperimentResult[] tested = [.. standing.Experiments.Where(e => e.P is not null)];
         var family = RankedFamily.Of(tested.Select(e => e.P!.Value).ToArray(), standing.FamilySize);
-        PValue[][] adjusted = [.. CorrectionRegistry.All.Select(c => c.Adjust(family))];
+        PValue[][] adjusted = [.. CorrectionRegistry.FromPAlone.Select(c => c.Adjust(family))];
         session.Print(session.Get(_byExperiment) ? ByExperiment(standing, tested, adjusted) : ByCorrection(standing, adjusted));
         return ExitCode.Done;
     }
@@ -38,7 +38,7 @@ internal sealed class CorrectionsVerb : Verb
                 new("correction", "key"), new("name", "name"), new("controls", "holds", GivesWay: 1), new("valid_under", "under", GivesWay: 1), new("survivors", "survivors", true),
                 new("level", "level", true, 2), new("family_size", "family", true, 2), new("sealed", "sealed"), new("guarantee", null), new("source", null),
             ],
-            CorrectionRegistry.All.Select((c, i) => new[]
+            CorrectionRegistry.FromPAlone.Select((c, i) => new[]
             {
                 Cell.Text(c.Key), Cell.Text(c.Name), Cell.Text(CampaignText.RateWords(c.Controls)), Cell.Text(DependenceWords(c.ValidUnder)),
                 Cell.Whole(adjusted[i].Count(level.Rejects)), Cell.Setting(level.Value), Cell.Whole(standing.FamilySize),
@@ -55,7 +55,7 @@ internal sealed class CorrectionsVerb : Verb
         Column[] columns =
         [
             new("experiment", "experiment"), new("p", "p", true),
-            .. CorrectionRegistry.All.Select(c => new Column(c.Key, c.Key, true)),
+            .. CorrectionRegistry.FromPAlone.Select(c => new Column(c.Key, c.Key, true)),
         ];
         return new RowTable(columns, tested.Select((e, row) => (Cell[])[Cell.Text(e.Plan.Code), Cell.P(e.P), .. adjusted.Select(a => Cell.P(a[row]))]))
         {

@@ -17,7 +17,7 @@ internal sealed class RiskVerb : Verb
     private readonly Option<bool> _curve = new("--curve") { Description = "A row for each test of the campaign in the order of testing, with a picture for people." };
     private readonly Option<bool> _ascii = new("--ascii") { Description = "Draw the picture with ASCII signs alone." };
     private readonly Option<bool> _pooled = new("--pooled") { Description = "Correct the experiments of all campaigns as one family: an exploration beside the sealed choices." };
-    private readonly Option<string?> _correction = TypedOptions.Word("--correction", "The pooled correction (else that of the campaigns where they share one, else bh).", "KEY", [.. CorrectionRegistry.All.Select(c => c.Key)]);
+    private readonly Option<string?> _correction = TypedOptions.Word("--correction", "The pooled correction (else that of the campaigns where they share one, else bh).", "KEY", [.. CorrectionRegistry.FromPAlone.Select(c => c.Key)]);
     private readonly Option<double?> _level = TypedOptions.LevelOrNone("The pooled level (else that of the campaigns where they share one, else 0.05).");
 
     public override Command Build() => new("risk", Describe("What many tests at once risk: false positives without correction if nothing is real, what the correction holds, and how many survivors may be false.",
@@ -80,8 +80,11 @@ internal sealed class RiskVerb : Verb
     {
         string[] keys = [.. standings.Select(s => s.Campaign.Correction).Distinct()];
         SignificanceLevel[] levels = [.. standings.Select(s => s.Campaign.Level).Distinct()];
-        Correction correction = CorrectionRegistry.Find(session.Typed.GetValue(_correction) ?? (keys is [string shared] ? shared : "bh")) ?? new BenjaminiHochberg();
+        Correction correction = Named(session.Typed.GetValue(_correction) ?? (keys is [string shared] ? shared : "bh"));
         SignificanceLevel level = session.Typed.GetValue(_level) is { } typed ? new SignificanceLevel(typed) : levels is [SignificanceLevel same] ? same : new SignificanceLevel(0.05);
         return PooledTable.Of(standings, correction, level);
     }
+
+    // A shared procedure that needs weights, or an order of arrival, says nothing of pooled p-values alone.
+    private static Correction Named(string key) => CorrectionRegistry.FromPAlone.FirstOrDefault(c => c.Key == key) ?? new BenjaminiHochberg();
 }
