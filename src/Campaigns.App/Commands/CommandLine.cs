@@ -28,6 +28,8 @@ internal static class CommandLine
         () => new AdjustVerb(),
         () => new SizeVerb(),
         () => new RiskVerb(),
+        () => new BoundVerb(),
+        () => new OverallVerb(),
         () => new ExcludeVerb(),
         () => new ListVerb(),
         () => new ShowVerb(),
