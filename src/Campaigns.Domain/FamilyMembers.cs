@@ -24,8 +24,18 @@ public sealed record FamilyMembers
     {
         ArgumentNullException.ThrowIfNull(campaign);
         ArgumentNullException.ThrowIfNull(experiments);
-        PValue[] p = [.. experiments.Where(e => e.P is not null).Select(e => e.P!.Value)];
-        return OneFamily(p, experiments.Count);
+        if (!FamilyTally.IsNeeded(campaign))
+        {
+            return OneFamily(experiments.Where(e => e.P is not null).Select(e => e.P!.Value).ToArray(), experiments.Count);
+        }
+
+        var tally = new FamilyTally(campaign);
+        foreach (ExperimentResult experiment in experiments)
+        {
+            tally.Add(experiment.Plan.Family, experiment.Plan.Weight, experiment.Plan.SharedControl, experiment.P);
+        }
+
+        return tally.Members(testedOnly: false);
     }
 
     /// <summary>The members of a campaign of one family.</summary>

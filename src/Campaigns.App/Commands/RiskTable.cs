@@ -1,4 +1,5 @@
 using Campaigns.App.Output;
+using Campaigns.App.Wording;
 using Campaigns.Domain;
 using Campaigns.Statistics.Numerics;
 
@@ -27,7 +28,7 @@ internal static class RiskTable
         {
             "Expected false: false positives to expect without any correction if nothing is real (tests times level), whatever the dependence. Risk: that there is at least one, for independent tests; at least, at most: its bounds whatever the dependence. Hits: experiments whose own p is at most the level; survive: those left by the correction.",
         };
-        below.AddRange(campaigns.Select(c => $"{c.Campaign.Code}: {CampaignText.Goal(c.Campaign)}. {FamilyVerdict.ProcedureOf(c.Campaign).Guarantee}"));
+        below.AddRange(campaigns.Select(c => $"{c.Campaign.Code}: {CampaignText.Goal(c.Campaign)}. {Held(c)}"));
         below.AddRange(campaigns.SelectMany(c => CampaignText.Deviations(c).Select(d => $"{c.Campaign.Code}: {d}")));
         if (campaigns.Count > 1)
         {
@@ -49,7 +50,7 @@ internal static class RiskTable
         return
         [
             FormattableString.Invariant($"Cumulative risk: {tests} tests at {c.Campaign.Level} each. Without a correction, if nothing is real, {NumberText.Screen(FamilyRisk.ExpectedFalsePositives(tests, c.Campaign.Level), 3)} false positives are to be expected, and the risk of at least one is {Words.Percent(FamilyRisk.AtLeastOneIfIndependent(tests, c.Campaign.Level))} for independent tests (between {Words.Percent(FamilyRisk.AtLeastOneLowerBound(tests, c.Campaign.Level))} and {Words.Percent(FamilyRisk.AtLeastOneUpperBound(tests, c.Campaign.Level))} whatever the dependence). {c.UncorrectedCount} experiments would count as hits; {c.SurvivorCount} survive the correction."),
-            $"What the correction holds: {FamilyVerdict.ProcedureOf(c.Campaign).Guarantee}",
+            $"What the correction holds: {Held(c)}",
         ];
     }
 
@@ -61,9 +62,13 @@ internal static class RiskTable
             Cell.Text(c.Campaign.Code), Cell.Whole(tests), Cell.Setting(c.Campaign.Level.Value),
             Cell.Number(FamilyRisk.ExpectedFalsePositives(tests, c.Campaign.Level)), Cell.Number(FamilyRisk.AtLeastOneIfIndependent(tests, c.Campaign.Level)),
             Cell.Number(FamilyRisk.AtLeastOneLowerBound(tests, c.Campaign.Level)), Cell.Number(FamilyRisk.AtLeastOneUpperBound(tests, c.Campaign.Level)),
-            Cell.Whole(c.UncorrectedCount), Cell.Whole(c.SurvivorCount), Cell.Text(c.Campaign.Correction), Cell.Text(FamilyVerdict.ProcedureOf(c.Campaign).Guarantee),
+            Cell.Whole(c.UncorrectedCount), Cell.Whole(c.SurvivorCount), Cell.Text(c.Campaign.Correction), Cell.Text(Held(c)),
         ];
     }
+
+    private static string Held(CampaignOverview c) => c.Campaign.JudgedFamilies.Count == 0
+        ? FamilyVerdict.ProcedureOf(c.Campaign).Guarantee
+        : string.Join(" ", [.. FamilyText.Guarantees(c), FamilyText.Together(c)]);
 
     /// <summary>All campaigns together: expectations add up, and for independent tests the chances of no false positive multiply.</summary>
     private static Cell[] Total(IReadOnlyList<CampaignOverview> campaigns)
