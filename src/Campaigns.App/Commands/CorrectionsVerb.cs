@@ -25,12 +25,13 @@ internal sealed class CorrectionsVerb : Verb
         using Catalog.Catalog catalog = session.OpenCatalog();
         CampaignStanding standing = new StandingReader(catalog).Read(session.Get(_code));
         ExperimentResult[] tested = [.. standing.Experiments.Where(e => e.P is not null)];
-        CampaignVerdict[] verdicts = [.. CorrectionRegistry.All.Select(c => FamilyVerdict.JudgeBy(standing.Campaign, standing.Experiments, c))];
-        session.Print(session.Get(_byExperiment) ? ByExperiment(standing, tested, verdicts) : ByCorrection(standing, verdicts));
+        IReadOnlyList<Correction> shown = Shown(standing);
+        CampaignVerdict[] verdicts = [.. shown.Select(c => FamilyVerdict.JudgeBy(standing.Campaign, standing.Experiments, c))];
+        session.Print(session.Get(_byExperiment) ? ByExperiment(standing, tested, shown, verdicts) : ByCorrection(standing, shown, verdicts));
         return ExitCode.Done;
     }
 
-    private static RowTable ByCorrection(CampaignStanding standing, CampaignVerdict[] verdicts)
+    private static RowTable ByCorrection(CampaignStanding standing, IReadOnlyList<Correction> shown, CampaignVerdict[] verdicts)
     {
         SignificanceLevel level = standing.Campaign.Level;
         return new RowTable(
@@ -38,7 +39,7 @@ internal sealed class CorrectionsVerb : Verb
                 new("correction", "key"), new("name", "name"), new("controls", "holds", GivesWay: 1), new("valid_under", "under", GivesWay: 1), new("survivors", "survivors", true),
                 new("level", "level", true, 2), new("family_size", "family", true, 2), new("sealed", "sealed"), new("guarantee", null), new("source", null),
             ],
-            CorrectionRegistry.All.Select((c, i) => new[]
+            shown.Select((c, i) => new[]
             {
                 Cell.Text(c.Key), Cell.Text(c.Name), Cell.Text(CampaignText.RateWords(c.Controls)), Cell.Text(DependenceWords(c.ValidUnder)),
                 Cell.Whole(verdicts[i].SurvivorCount), Cell.Setting(level.Value), Cell.Whole(standing.FamilySize),
@@ -50,12 +51,12 @@ internal sealed class CorrectionsVerb : Verb
         };
     }
 
-    private static RowTable ByExperiment(CampaignStanding standing, ExperimentResult[] tested, CampaignVerdict[] verdicts)
+    private static RowTable ByExperiment(CampaignStanding standing, ExperimentResult[] tested, IReadOnlyList<Correction> shown, CampaignVerdict[] verdicts)
     {
         Column[] columns =
         [
             new("experiment", "experiment"), new("p", "p", true),
-            .. CorrectionRegistry.All.Select(c => new Column(c.Key, c.Key, true)),
+            .. shown.Select(c => new Column(c.Key, c.Key, true)),
         ];
         return new RowTable(columns, tested.Select((e, row) => (Cell[])[Cell.Text(e.Plan.Code), Cell.P(e.P), .. verdicts.Select(v => Cell.P(v.Adjusted[row]))]))
         {
@@ -63,6 +64,10 @@ internal sealed class CorrectionsVerb : Verb
             Below = [$"The sealed correction is {standing.Campaign.Correction}; it alone decides what survives.", .. InFamilies(standing), .. CampaignText.Deviations(standing.Overview), CampaignText.ReviewLine(standing.Overview)],
         };
     }
+
+    /// <summary>Those that need nothing but p, and those with weights where the plan gives some.</summary>
+    private static IReadOnlyList<Correction> Shown(CampaignStanding standing) =>
+        standing.Experiments.Any(e => e.Plan.Weight is not null) ? CorrectionRegistry.All : CorrectionRegistry.FromPAlone;
 
     private static IEnumerable<string> InFamilies(CampaignStanding standing) => standing.Campaign.JudgedFamilies.Count == 0
         ? []

@@ -23,7 +23,7 @@ public sealed class WeightedBonferroni : WeightedCorrection
         "The probability of at least one false survivor is at most the level, whatever the dependence between experiments, if the weights were fixed before the data.";
 
     /// <inheritdoc/>
-    public override string Source => "R. Rosenthal and D. B. Rubin (1983), Journal of Educational Psychology 75:540-541; inequality: O. J. Dunn (1961), Journal of the American Statistical Association 56:52-64";
+    public override string Source => "R. Rosenthal and D. B. Rubin (1983), Psychological Bulletin 94:540-541; inequality: O. J. Dunn (1961), Journal of the American Statistical Association 56:52-64";
 
     private protected override bool IsStepUp => true;
 
