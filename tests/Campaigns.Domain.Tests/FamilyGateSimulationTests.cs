@@ -21,7 +21,7 @@ public sealed class FamilyGateSimulationTests
     [InlineData("a=0.06 b<a c<<a d<<c", "a:1 b:0 c:1 d:0")]
     public void Is_at_most_the_level(string families, string truth)
     {
-        (double rate, _) = Simulate(families, truth, correction: "holm", equicorrelated: false);
+        (double rate, _) = Simulate(families, truth, disjoint: false);
         Assert.True(rate <= Level + (3.5 * Math.Sqrt(Level * (1 - Level) / Runs)), FormattableString.Invariant($"{rate}"));
     }
 
@@ -32,7 +32,7 @@ public sealed class FamilyGateSimulationTests
     [InlineData("a b<<a c<<a", "a:1 b:0 c:0")]
     public void Is_reached_where_gates_are_open_and_rejections_disjoint(string families, string truth)
     {
-        (double rate, double open) = Simulate(families, truth, correction: "holm", equicorrelated: true);
+        (double rate, double open) = Simulate(families, truth, disjoint: true);
         Assert.Equal(1, open);
         Assert.InRange(rate, Level - (3.5 * Math.Sqrt(Level * (1 - Level) / Runs)), Level + (3.5 * Math.Sqrt(Level * (1 - Level) / Runs)));
     }
@@ -45,10 +45,9 @@ public sealed class FamilyGateSimulationTests
         Assert.InRange(Rate(campaign, "a:10 b:0", disjoint: false).Rate, 0.17, 0.21);
     }
 
-    private static (double Rate, double Open) Simulate(string families, string truth, string correction, bool equicorrelated) =>
-        Rate(Campaign(families) with { Correction = correction }, truth, equicorrelated);
+    private static (double Rate, double Open) Simulate(string families, string truth, bool disjoint) => Rate(Campaign(families), truth, disjoint);
 
-    /// <param name="disjoint">Whether the true nulls share one uniform number, shifted around the unit interval, so that at most one of them is small at a time.</param>
+    // Disjoint: the true nulls share one uniform number, shifted around the unit interval, so that at most one of them is small at a time.
     private static (double Rate, double Open) Rate(Campaign campaign, string truth, bool disjoint)
     {
         (string Family, bool IsNull)[] hypotheses = [.. truth.Split(' ').SelectMany(f => f[2..].Select(c => (f[..1], c == '0')))];

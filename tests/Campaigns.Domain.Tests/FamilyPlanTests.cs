@@ -1,6 +1,3 @@
-using Campaigns.Statistics.Corrections;
-using Campaigns.Statistics.Probability;
-
 namespace Campaigns.Domain.Tests;
 
 public sealed class FamilyPlanTests

@@ -28,7 +28,8 @@ internal static class FamilyText
     {
         string gate = family.Waits is { } waits ? $" ({waits})" : "";
         string state = family.IsOpen ? $"open{gate}" : $"closed{gate}, so that none of its experiments survives before, and every adjusted p is 1";
-        return FormattableString.Invariant($"Family {family.Name}: {ProcedureOf(campaign, family).Name} at {Level(family.Level)} over {family.Planned} planned, {family.Tested} tested (the others count as p = 1); {state}.");
+        string others = family.Tested == family.Planned ? "" : family.Size == family.Planned ? " (the others count as p = 1)" : " (interim: the others are not counted)";
+        return FormattableString.Invariant($"Family {family.Name}: {ProcedureOf(campaign, family).Name} at {Level(family.Level)} over {family.Planned} planned, {family.Tested} tested{others}; {state}.");
     }
 
     /// <summary>What each procedure promises for the family in which it is used.</summary>
