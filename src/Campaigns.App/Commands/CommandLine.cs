@@ -13,6 +13,7 @@ internal static class CommandLine
         () => new RunVerb(),
         () => new StartVerb(),
         () => new PlanVerb(),
+        () => new FamiliesVerb(),
         () => new SealVerb(),
         () => new LoadVerb(),
         () => new RegisterVerb(),

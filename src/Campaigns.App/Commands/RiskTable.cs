@@ -36,7 +36,7 @@ internal static class RiskTable
             "False at most: of the survivors, by closed testing over all planned experiments of the campaign, with the confidence of 1 - level, if Simes' inequality holds for the true nulls (Goeman and Solari 2011). " + BoundWording.NoEstimate,
             CorrectedMeans([.. risks.Select(r => r.Corrected).OfType<CorrectedRisk>()]),
         ];
-        below.AddRange(risks.Select(r => $"{r.Overview.Campaign.Code}: {CampaignText.Goal(r.Overview.Campaign)}. {FamilyVerdict.ProcedureOf(r.Overview.Campaign).Guarantee}{Numbers(r)}"));
+        below.AddRange(risks.Select(r => $"{r.Overview.Campaign.Code}: {CampaignText.Goal(r.Overview.Campaign)}. {Held(r.Overview)}{Numbers(r)}"));
         below.AddRange(campaigns.SelectMany(c => CampaignText.Deviations(c).Select(d => $"{c.Campaign.Code}: {d}")));
         if (campaigns.Length > 1)
         {
@@ -58,7 +58,7 @@ internal static class RiskTable
         return
         [
             FormattableString.Invariant($"Cumulative risk: {tests} tests at {c.Campaign.Level} each. Without a correction, if nothing is real, {NumberText.Screen(FamilyRisk.ExpectedFalsePositives(tests, c.Campaign.Level), 3)} false positives are to be expected, and the risk of at least one is {Words.Percent(FamilyRisk.AtLeastOneIfIndependent(tests, c.Campaign.Level))} for independent tests (between {Words.Percent(FamilyRisk.AtLeastOneLowerBound(tests, c.Campaign.Level))} and {Words.Percent(FamilyRisk.AtLeastOneUpperBound(tests, c.Campaign.Level))} whatever the dependence). {c.UncorrectedCount} experiments would count as hits; {c.SurvivorCount} survive the correction."),
-            $"What the correction holds: {FamilyVerdict.ProcedureOf(c.Campaign).Guarantee}",
+            $"What the correction holds: {Held(c)}",
         ];
     }
 
@@ -108,11 +108,15 @@ internal static class RiskTable
             Cell.Text(c.Campaign.Code), Cell.Whole(tests), Cell.Setting(c.Campaign.Level.Value),
             Cell.Number(FamilyRisk.ExpectedFalsePositives(tests, c.Campaign.Level)), Cell.Number(FamilyRisk.AtLeastOneIfIndependent(tests, c.Campaign.Level)),
             Cell.Number(FamilyRisk.AtLeastOneLowerBound(tests, c.Campaign.Level)), Cell.Number(FamilyRisk.AtLeastOneUpperBound(tests, c.Campaign.Level)),
-            Cell.Whole(c.UncorrectedCount), Cell.Whole(c.SurvivorCount), Cell.Text(c.Campaign.Correction), Cell.Text(FamilyVerdict.ProcedureOf(c.Campaign).Guarantee),
+            Cell.Whole(c.UncorrectedCount), Cell.Whole(c.SurvivorCount), Cell.Text(c.Campaign.Correction), Cell.Text(Held(c)),
             Cell.Number(risk.TrueNulls.Share), Cell.Number(risk.ExpectedFalseSurvivors), Cell.Whole(risk.SurvivorBound.FalseAtMost), Cell.Setting(risk.Confidence),
             Cell.Number(risk.Corrected?.AtLeastOne), Cell.Text(Exactness(risk.Corrected)), Cell.Number(risk.Corrected?.ExpectedFalse), Cell.Whole(c.FamilySize),
         ];
     }
+
+    private static string Held(CampaignOverview c) => c.Campaign.JudgedFamilies.Count == 0
+        ? FamilyVerdict.ProcedureOf(c.Campaign).Guarantee
+        : string.Join(" ", [.. FamilyText.Guarantees(c), FamilyText.Together(c)]);
 
     /// <summary>All campaigns together: expectations add up, and for independent tests the chances of no false positive multiply. Bounds with a confidence of their own do not add up.</summary>
     private static Cell[] Total(IReadOnlyList<CampaignRisk> risks)
