@@ -51,7 +51,7 @@ internal static class ResultPainter
         if (detail.Result.Resampling is { } resampling)
         {
             sheet.Line(ResamplingText.Sentence(resampling));
-            if (ResamplingText.TooCoarse(resampling, standing) is { } warning)
+            if (ResamplingText.TooCoarse(resampling, standing, detail.Result.GivenLevel) is { } warning)
             {
                 sheet.Marked(sheet.Glyphs.Warns, warning, Ink.Warning);
             }
