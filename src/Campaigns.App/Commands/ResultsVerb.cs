@@ -1,5 +1,6 @@
 using System.CommandLine;
 using Campaigns.App.Output;
+using Campaigns.App.Wording;
 using Campaigns.Catalog.Results;
 using Campaigns.Domain;
 
@@ -20,13 +21,25 @@ internal sealed class ResultsVerb : Verb
     {
         using Catalog.Catalog catalog = session.OpenCatalog();
         CampaignStanding standing = new StandingReader(catalog).Read(session.Get(_code));
-        session.Print(new RowTable(Columns, standing.Experiments.Select(Row))
+        session.Print(new RowTable(ColumnsFor(standing), standing.Experiments.Select(Row))
         {
             Above = [$"{standing.Campaign.Code}: {CampaignText.Goal(standing.Campaign)}"],
-            Below = [.. CampaignText.Footnotes(standing.Overview, standing.Experiments.Select(e => e.Plan.Test)), .. UnitNotes.Of(standing.Experiments)],
+            Below = [.. ConfirmationText.Footnotes(standing.Campaign, standing.Experiments), .. CampaignText.Footnotes(standing.Overview, standing.Experiments.Select(e => e.Plan.Test)), .. UnitNotes.Of(standing.Experiments)],
         });
         return ExitCode.Done;
     }
+
+    /// <summary>The columns, those on confirmations for people too where there are any.</summary>
+    private static IReadOnlyList<Column> ColumnsFor(CampaignStanding standing) => standing.Experiments.All(e => e.Plan.Confirms is null) ? Columns :
+    [
+        .. Columns.Select(c => c.Name switch
+        {
+            "confirms" => c with { Heading = "confirms" },
+            "replicability_adjusted_p" => c with { Heading = "adjusted p of both" },
+            "replicated" => c with { Heading = "replicated" },
+            _ => c,
+        }),
+    ];
 
     public static IReadOnlyList<Column> Columns { get; } =
     [
@@ -35,6 +48,7 @@ internal sealed class ResultsVerb : Verb
         new("survives", "survives"), new("status", "status", GivesWay: 1),
         new("ln_p", null, true), new("eta_squared", "eta squared", true, 4), new("omega_squared", null, true), new("title", "title", GivesWay: 3), new("amendments", null),
         new("specimens", null, true), new("epsilon_squared", null, true), new("cohen_f", null, true), new("arrangements", null, true), new("seed", null), new("follow_up", null),
+        new("confirms", null, GivesWay: 5), new("replicability_p", null, true, 4), new("replicability_adjusted_p", null, true, 4), new("replicated", null, GivesWay: 4),
     ];
 
     public static Cell[] Row(ExperimentResult result) =>
@@ -46,5 +60,6 @@ internal sealed class ResultsVerb : Verb
         Cell.Text(string.Join("; ", result.Amendments)),
         Cell.Whole(result.SpecimenCount), Cell.Number(EffectSection.EpsilonSquared(result)), Cell.Number(EffectSection.CohenF(result)),
         Cell.Whole(result.Resampling?.Arrangements), ExperimentSections.Seed(result), Cell.Text(result.Plan.FollowUp),
+        Cell.Text(result.Plan.Confirms), Cell.P(result.Confirmation?.P), Cell.P(result.Confirmation?.AdjustedP), Cell.Truth(result.Confirmation?.IsReplicated),
     ];
 }

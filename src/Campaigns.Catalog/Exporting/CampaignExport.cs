@@ -111,12 +111,12 @@ public sealed class CampaignExport(Catalog catalog)
     private static void WritePlan(CampaignStanding standing, TextWriter writer)
     {
         var csv = new CsvLine(writer);
-        csv.Write("experiment", "title", "response", "unit", "groups", "control", "test", "follow_up", "replicates", "smallest_effect", "assumed_sd", "weight", "family");
+        csv.Write("experiment", "title", "response", "unit", "groups", "control", "test", "follow_up", "replicates", "smallest_effect", "assumed_sd", "weight", "family", "confirms", "shared_control");
         foreach (PlannedExperiment e in standing.Experiments.Select(e => e.Plan))
         {
             csv.Write(
                 e.Code, e.Title, e.Response, e.Unit, string.Join('|', e.Groups), e.Control ?? "", e.Test, e.FollowUp,
-                CsvLine.Number(e.Replicates), CsvLine.Number(e.SmallestEffect), CsvLine.Number(e.AssumedStandardDeviation), CsvLine.Number(e.Weight), e.Family ?? "");
+                CsvLine.Number(e.Replicates), CsvLine.Number(e.SmallestEffect), CsvLine.Number(e.AssumedStandardDeviation), CsvLine.Number(e.Weight), e.Family ?? "", e.Confirms ?? "", e.SharedControl ?? "");
         }
     }
 
