@@ -34,9 +34,9 @@ internal sealed class ResultsVerb : Verb
     [
         .. Columns.Select(c => c.Name switch
         {
-            "confirms" => c with { Heading = "confirms" },
-            "replicability_adjusted_p" => c with { Heading = "adjusted p of both" },
-            "replicated" => c with { Heading = "replicated" },
+            "confirms" => c with { Heading = "confirms", GivesWay = 1 },
+            "replicability_adjusted_p" => c with { Heading = "adjusted p of both", GivesWay = 0 },
+            "replicated" => c with { Heading = "replicated", GivesWay = 0 },
             _ => c,
         }),
     ];

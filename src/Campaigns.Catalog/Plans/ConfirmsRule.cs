@@ -35,11 +35,14 @@ internal sealed class ConfirmsRule(Catalog catalog, StoredCampaign stored)
         }
 
         return first.Id == own.Id ? $"{experiment.Code}: an experiment cannot confirm itself; name the earlier one."
-            : first.Confirms is { } firsts ? $"{experiment.Code}: '{reference}' confirms '{firsts}' itself; name '{firsts}', so that every confirmation is held against the first experiment."
+            : first.Confirms is not null && known.Find(first.CampaignId, first.Confirms) is { } origin ? $"{experiment.Code}: '{reference}' confirms '{Name(origin)}' itself; name '{Name(origin)}', so that every confirmation is held against the first experiment."
             : confirmed.Contains(own.Id) ? $"{experiment.Code}: it is confirmed by another experiment, so it cannot confirm '{reference}'; let that one name '{reference}'."
             : first.CampaignId == own.CampaignId && first.Id > own.Id ? $"{experiment.Code}: '{reference}' is registered after it; put the row of the experiment that is confirmed above the row of the one that confirms it."
             : null;
     }
+
+    /// <summary>As a plan of this campaign would name it.</summary>
+    private string Name(ConfirmedExperiment experiment) => experiment.CampaignId == stored.Id ? experiment.Code : $"{experiment.Campaign}/{experiment.Code}";
 
     private string Hint(string reference, ConfirmedExperiments known)
     {
