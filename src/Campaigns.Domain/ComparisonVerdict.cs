@@ -1,4 +1,5 @@
 using Campaigns.Statistics.Corrections;
+using Campaigns.Statistics.Effects;
 using Campaigns.Statistics.FollowUps;
 using Campaigns.Statistics.Online;
 using Campaigns.Statistics.Probability;
@@ -23,6 +24,50 @@ public sealed class ComparisonVerdict(Campaign campaign, IReadOnlyList<FamilySta
     public string Guarantee => OnlineVerdict.ProcedureOf(campaign) is not null
         ? FormattableString.Invariant($"Comparisons are claimed only inside surviving experiments, each experiment's at the level that it was given on arrival (adjusted p: p x {campaign.Level} / level given): the error inside each experiment is held at its own level, and no rate over the comparisons of the campaign.")
         : string.Join(" ", families.Select(GuaranteeOf));
+
+    /// <summary>What the intervals of comparisons inside survivors hold, in a sentence; empty where nothing survives.</summary>
+    public string SelectedGuarantee => OnlineVerdict.ProcedureOf(campaign) is not null && families.Any(f => f.Survivors > 0)
+        ? "Selected intervals hold together inside each survivor at 1 less the level that it was given on arrival: each experiment's miss with at most that probability, and no rate over the campaign is promised."
+        : string.Join(" ", families.Where(f => f.Survivors > 0).Select(SelectedGuaranteeOf));
+
+    /// <summary>The probability with which any interval inside a surviving experiment may miss, so that the campaign's level pays for the selection too.</summary>
+    /// <param name="experiment">The experiment as it stands in the campaign.</param>
+    /// <returns>
+    /// level R/m under false discovery control; its share of the level (level/m, or by its weight) under familywise control; the level that it was given where experiments are judged as they arrive;
+    /// null for an experiment that does not survive.
+    /// </returns>
+    public double? SelectedRisk(ExperimentResult experiment)
+    {
+        ArgumentNullException.ThrowIfNull(experiment);
+        FamilyStanding family = FamilyOf(experiment);
+        return experiment.Survives != true ? null
+            : OnlineVerdict.ProcedureOf(campaign) is not null ? experiment.GivenLevel
+            : campaign.ErrorRate == ErrorRate.Familywise ? Share(family, experiment.Plan)
+            : SelectedIntervals.FalseCoverageRisk(family.Level, family.Size, family.Survivors);
+    }
+
+    /// <summary>The comparisons of one experiment, judged, with the intervals that account for its selection.</summary>
+    /// <param name="experiment">The experiment as it stands in the campaign.</param>
+    /// <param name="labels">Label of each group.</param>
+    /// <param name="followUp">Its follow-up; null where there is none.</param>
+    public IReadOnlyList<ExperimentComparison> Judge(ExperimentResult experiment, IReadOnlyList<string> labels, PlannedFollowUp? followUp)
+    {
+        IReadOnlyList<ExperimentComparison> judged = Judge(experiment, labels, followUp?.Comparisons ?? []);
+        if (followUp is null || SelectedRisk(experiment) is not { } risk)
+        {
+            return judged;
+        }
+
+        double confidence = 1 - risk;
+        if (confidence == 1)
+        {
+            // A level below the grain of doubles: there is no such interval.
+            return judged;
+        }
+
+        IReadOnlyList<GroupComparison> selected = followUp.At(confidence);
+        return [.. judged.Select((c, i) => selected[i] is { Lower: { } lower, Upper: { } upper } ? c with { SelectedInterval = new Interval(lower, upper), SelectedConfidence = confidence } : c)];
+    }
 
     /// <summary>The comparisons of one experiment, judged.</summary>
     /// <param name="experiment">The experiment as it stands in the campaign.</param>
@@ -62,6 +107,17 @@ public sealed class ComparisonVerdict(Campaign campaign, IReadOnlyList<FamilySta
         ? SelectedFamilies.Weighted(p, total * _crowding, plan.Weight ?? 1)
         : _crowding == 1 ? SelectedFamilies.Familywise(p, family.Size) : SelectedFamilies.Weighted(p, family.Size * _crowding, 1);
 
+    private double Share(FamilyStanding family, PlannedExperiment plan) => family.WeightTotal is { } total
+        ? family.Level.Value * (plan.Weight ?? 1) / (total * _crowding)
+        : _crowding == 1 ? SelectedIntervals.FamilywiseRisk(family.Level, family.Size) : family.Level.Value / (family.Size * _crowding);
+
+    private string SelectedGuaranteeOf(FamilyStanding family) => campaign.ErrorRate == ErrorRate.Familywise
+        ? FormattableString.Invariant($"Selected intervals hold together inside each survivor at 1 less {ShareOf(family)}: {(families.Count > 1 ? "over all families " : "")}the probability that any of them misses is at most {campaign.Level} (union bound).")
+        : FormattableString.Invariant($"Selected intervals hold together inside each survivor at 1 - {family.Level} x {family.Survivors}/{family.Size}: the expected share of survivors in which any of them misses is at most {family.Level} (after Benjamini and Yekutieli 2005; for independent experiments).");
+
+    private FamilyStanding FamilyOf(ExperimentResult experiment) =>
+        families.Count == 1 ? families[0] : _byName[experiment.Plan.Family ?? ""];
+
     private ExperimentComparison Judge(ExperimentComparison comparison)
     {
         if (comparison.Comparison.P is not { } p)
@@ -69,7 +125,7 @@ public sealed class ComparisonVerdict(Campaign campaign, IReadOnlyList<FamilySta
             return comparison with { NotClaimedBecause = comparison.Comparison.Obstacle };
         }
 
-        FamilyStanding family = families.Count == 1 ? families[0] : _byName[comparison.Experiment.Plan.Family ?? ""];
+        FamilyStanding family = FamilyOf(comparison.Experiment);
         bool selected = comparison.Experiment.Survives == true;
         PValue? adjusted =
             OnlineVerdict.ProcedureOf(campaign) is not null ? selected ? new OnlineLevel(1, comparison.Experiment.GivenLevel ?? 0).Adjusted(p, campaign.Level) : null

@@ -25,6 +25,9 @@ public sealed record ExperimentAnalysis
     /// <summary>Comparisons inside the experiment, before the campaign judges them.</summary>
     public IReadOnlyList<GroupComparison> Comparisons { get; init; } = [];
 
+    /// <summary>The follow-up behind the comparisons, which gives their intervals at other confidences too; null where there is none.</summary>
+    public PlannedFollowUp? FollowUp { get; init; }
+
     /// <summary>For each group the letters that it shares with the groups from which it is not told apart; null where the follow-up does not compare all pairs.</summary>
     public IReadOnlyList<string>? Letters { get; init; }
 
@@ -72,6 +75,7 @@ public sealed record ExperimentAnalysis
             Checks = checks,
             Beside = spreadsDiffer && tested is not null && plan.Test is not ("welch" or "block-f") ? new WelchTest().Test(units) : null,
             Comparisons = followUp?.Comparisons ?? [],
+            FollowUp = followUp,
             Letters = followUp is { } f && f.Comparisons.Any(c => c.P is not null) ? CompactLetters.Of(f.Estimates, f.Comparisons, level) : null,
             Effects = tested?.Variation is { } table && level.Value < 0.5 ? EffectSizes.Of(table, level) : null,
             Detectable = DetectableOf(units, tested, level),

@@ -1,3 +1,4 @@
+using Campaigns.Statistics.Effects;
 using Campaigns.Statistics.FollowUps;
 using Campaigns.Statistics.Probability;
 
@@ -15,6 +16,12 @@ public sealed record ExperimentComparison(ExperimentResult Experiment, string Gr
 
     /// <summary>Whether the comparison is claimed: its experiment survives, and its own adjusted p-value is at most the level. Null where it has no p-value.</summary>
     public bool? Survives { get; init; }
+
+    /// <summary>The interval that also accounts for the selection of the experiment: it holds together with the others of the experiment at <see cref="SelectedConfidence"/>; null where the experiment does not survive, or the follow-up gives none.</summary>
+    public Interval? SelectedInterval { get; init; }
+
+    /// <summary>The confidence of that interval, in (0, 1): 1 - level R/m under false discovery control, 1 - level/m under familywise control; null without one.</summary>
+    public double? SelectedConfidence { get; init; }
 
     /// <summary>Why it is not claimed, in a clause without a full stop; null where it is.</summary>
     public string? NotClaimedBecause { get; init; }

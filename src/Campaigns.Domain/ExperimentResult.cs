@@ -66,6 +66,9 @@ public sealed record ExperimentResult
     /// <summary>The arrangements behind a permutation p-value; null for other tests.</summary>
     public Resampling? Resampling { get; init; }
 
+    /// <summary>What came of it as the confirmation of an earlier experiment; null where it confirms none, or was read without its campaign.</summary>
+    public Confirmation? Confirmation { get; init; }
+
     /// <summary>Deviations from the plan: reasons of the amendments by which values came in after the test, values left out, and a test short of the planned values; empty where there are none.</summary>
     public IReadOnlyList<string> Amendments { get; init; } = [];
 }

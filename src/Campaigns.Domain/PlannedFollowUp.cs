@@ -8,8 +8,14 @@ namespace Campaigns.Domain;
 /// <summary>The follow-up comparisons that the plan of an experiment names, made from its values.</summary>
 /// <param name="Estimates">What is known of the groups.</param>
 /// <param name="Comparisons">The comparisons; empty where the data allow none.</param>
-public sealed record PlannedFollowUp(GroupEstimates Estimates, IReadOnlyList<GroupComparison> Comparisons)
+/// <param name="Procedure">The follow-up.</param>
+/// <param name="Control">Number of the control's group; null where there is none.</param>
+public sealed record PlannedFollowUp(GroupEstimates Estimates, IReadOnlyList<GroupComparison> Comparisons, FollowUp Procedure, int? Control)
 {
+    /// <summary>The same comparisons with intervals that hold together at another confidence.</summary>
+    /// <param name="confidence">In (0, 1).</param>
+    public IReadOnlyList<GroupComparison> At(double confidence) => Procedure.Compare(Estimates, Control, confidence);
+
     /// <summary>Makes the comparisons.</summary>
     /// <param name="plan">Names follow-up, test and control.</param>
     /// <param name="labels">Label of each group.</param>
@@ -31,7 +37,8 @@ public sealed record PlannedFollowUp(GroupEstimates Estimates, IReadOnlyList<Gro
         GroupedSample units = SpecimenMeans.Of(readings) is { } means ? means.Sample : readings;
         bool withinBlocks = GroupTestRegistry.Find(plan.Test)?.UsesBlocks == true;
         GroupEstimates? estimates = withinBlocks ? GroupEstimates.InBlocks(units) : GroupEstimates.OneWay(units);
-        return estimates is null ? null : new PlannedFollowUp(estimates, followUp.Compare(estimates, ControlOf(plan, labels), 1 - level.Value));
+        int? control = ControlOf(plan, labels);
+        return estimates is null ? null : new PlannedFollowUp(estimates, followUp.Compare(estimates, control, 1 - level.Value), followUp, control);
     }
 
     private static int? ControlOf(PlannedExperiment plan, IReadOnlyList<string> labels)

@@ -8,79 +8,119 @@ using Campaigns.Statistics.Probability;
 
 namespace Campaigns.App.Commands;
 
-/// <summary>corrections: every correction side by side.</summary>
+/// <summary>corrections: every correction side by side, and what hangs on the choice.</summary>
 internal sealed class CorrectionsVerb : Verb
 {
+    private const string NeverToChoose = "The sealed correction alone decides what survives; choosing another after seeing this table would undo what a correction is for.";
+
     private readonly Argument<string> _code = SharedOptions.Code();
     private readonly Option<bool> _byExperiment = new("--by-experiment") { Description = "A row an experiment with its adjusted p under every correction, instead of a row a correction." };
+    private readonly Option<bool> _hanging = new("--hanging") { Description = "Of these, only the experiments that survive under some corrections of the campaign's kind and not under others." };
+    private readonly Option<bool> _nearMisses = new("--near-misses") { Description = "What would survive at another level, in a family of the tested alone, or under another correction." };
+    private readonly Option<double?> _level = TypedOptions.LevelOrNone("With --near-misses, the other level to look at (else 0.01, 0.05 and 0.1).");
 
-    public override Command Build() => new("corrections", Describe("Every correction side by side on the campaign's family; the sealed one alone decides.",
-        "corrections PRIMERS --by-experiment --format csv"))
+    public override Command Build() => new("corrections", Describe("Every correction side by side on the campaign's family, and what hangs on the choice; the sealed one alone decides.",
+        "corrections PRIMERS --hanging"))
     {
-        _code, _byExperiment,
+        _code, _byExperiment, _hanging, _nearMisses, _level,
     };
 
     public override int Run(Session session)
     {
+        bool nearMisses = session.Get(_nearMisses);
+        bool byExperiment = session.Get(_byExperiment) || session.Get(_hanging);
+        double? level = session.Typed.GetValue(_level);
+        if (nearMisses && byExperiment)
+        {
+            throw new UsageException("--near-misses gives a row a change; ask for --by-experiment or --hanging in a command of its own.");
+        }
+
+        if (level is not null && !nearMisses)
+        {
+            throw new UsageException("--level goes with --near-misses: the corrections are shown at the sealed level.");
+        }
+
         using Catalog.Catalog catalog = session.OpenCatalog();
         CampaignStanding standing = new StandingReader(catalog).Read(session.Get(_code));
-        ExperimentResult[] tested = [.. standing.Experiments.Where(e => e.P is not null)];
-        IReadOnlyList<Correction> shown = Shown(standing);
-        CampaignVerdict[] verdicts = [.. shown.Select(c => FamilyVerdict.JudgeBy(standing.Campaign, standing.Experiments, c))];
-        session.Print(session.Get(_byExperiment) ? ByExperiment(standing, tested, shown, verdicts) : ByCorrection(standing, shown, verdicts));
+        session.Print(
+            nearMisses ? NearMisses(standing, level)
+            : byExperiment ? ByExperiment(standing, session.Get(_hanging))
+            : ByCorrection(standing));
         return ExitCode.Done;
     }
 
-    private static RowTable ByCorrection(CampaignStanding standing, IReadOnlyList<Correction> shown, CampaignVerdict[] verdicts)
+    private static RowTable ByCorrection(CampaignStanding standing)
     {
-        SignificanceLevel level = standing.Campaign.Level;
+        IReadOnlyList<CorrectionOutcome> outcomes = CorrectionsBeside.Of(standing);
+        int hanging = HangingPlaces(standing, outcomes).Count();
         return new RowTable(
             [
                 new("correction", "key"), new("name", "name"), new("controls", "holds", GivesWay: 1), new("valid_under", "under", GivesWay: 1), new("survivors", "survivors", true),
                 new("level", "level", true, 2), new("family_size", "family", true, 2), new("sealed", "sealed"), new("guarantee", null), new("source", null),
             ],
-            shown.Select((c, i) => new[]
-            {
-                Cell.Text(c.Key), Cell.Text(c.Name), Cell.Text(CampaignText.RateWords(c.Controls)), Cell.Text(DependenceWords(c.ValidUnder)),
-                Cell.Whole(verdicts[i].SurvivorCount), Cell.Setting(level.Value), Cell.Whole(standing.FamilySize),
-                Cell.Truth(c.Key == standing.Campaign.Correction), Cell.Text(c.Guarantee), Cell.Text(c.Source),
-            }).Concat(StandingRow(standing)))
+            outcomes.Select(o => (Cell[])
+            [
+                Cell.Text(o.Procedure.Key), Cell.Text(o.Procedure.Name), Cell.Text(CampaignText.RateWords(o.Procedure.Controls)), Cell.Text(DependenceWords(o.Procedure.ValidUnder)),
+                Cell.Whole(o.SurvivorCount), Cell.Setting(standing.Campaign.Level.Value), Cell.Whole(standing.FamilySize),
+                Cell.Truth(o.IsSealed), Cell.Text(o.Procedure.Guarantee), Cell.Text(o.Procedure.Source),
+            ]))
         {
-            Above = [FormattableString.Invariant($"{standing.Campaign.Code}: {standing.TestedCount} results in a family of {standing.FamilySize}, every correction at {level}")],
-            Below = ["The sealed correction alone decides what survives; choosing another after seeing this table would undo what a correction is for.", .. InFamilies(standing), .. CampaignText.Deviations(standing.Overview), CampaignText.ReviewLine(standing.Overview)],
+            Above = [FormattableString.Invariant($"{standing.Campaign.Code}: {standing.TestedCount} results in a family of {standing.FamilySize}, every correction at {standing.Campaign.Level}")],
+            Below =
+            [
+                FormattableString.Invariant($"Hanging on the choice among those that hold the {CampaignText.RateWords(standing.Campaign.ErrorRate)}: {hanging} experiment(s){(hanging > 0 ? "; --hanging lists them" : "")}."),
+                NeverToChoose, .. Ending(standing),
+            ],
         };
     }
 
-    /// <summary>In a campaign judged as its experiments arrive, the decisions that stand, below the batch corrections.</summary>
-    private static IEnumerable<Cell[]> StandingRow(CampaignStanding standing)
+    private static RowTable ByExperiment(CampaignStanding standing, bool hangingOnly)
     {
-        if (OnlineVerdict.ProcedureOf(standing.Campaign) is { } c)
-        {
-            yield return
-            [
-                Cell.Text(c.Key), Cell.Text(c.Name), Cell.Text(CampaignText.RateWords(c.Controls)), Cell.Text(DependenceWords(c.ValidUnder)),
-                Cell.Whole(standing.SurvivorCount), Cell.Setting(standing.Campaign.Level.Value), Cell.Whole(standing.FamilySize), Cell.Truth(true), Cell.Text(c.Guarantee), Cell.Text(c.Source),
-            ];
-        }
-    }
-
-    private static RowTable ByExperiment(CampaignStanding standing, ExperimentResult[] tested, IReadOnlyList<Correction> shown, CampaignVerdict[] verdicts)
-    {
+        IReadOnlyList<CorrectionOutcome> outcomes = CorrectionsBeside.Of(standing);
+        ErrorRate rate = standing.Campaign.ErrorRate;
+        HashSet<int> hanging = [.. HangingPlaces(standing, outcomes)];
         Column[] columns =
         [
             new("experiment", "experiment"), new("p", "p", true),
-            .. shown.Select(c => new Column(c.Key, c.Key, true)),
+            .. outcomes.Select(o => new Column(o.Procedure.Key, o.IsSealed ? $"{o.Procedure.Key} (sealed)" : o.Procedure.Key, true, o.IsSealed ? 0 : 2)),
+            new("hangs", "hangs"), new("survives_under", hangingOnly ? "survives under" : null, GivesWay: 1, CutLast: true),
         ];
-        return new RowTable(columns, tested.Select((e, row) => (Cell[])[Cell.Text(e.Plan.Code), Cell.P(e.P), .. verdicts.Select(v => Cell.P(v.Adjusted[row]))]))
+        ExperimentResult[] tested = [.. standing.Experiments.Where(e => e.P is not null)];
+        IEnumerable<int> places = Enumerable.Range(0, tested.Length).Where(i => !hangingOnly || hanging.Contains(i));
+        return new RowTable(columns, places.Select(i => (Cell[])
+        [
+            Cell.Text(tested[i].Plan.Code), Cell.P(tested[i].P), .. outcomes.Select(o => Cell.P(o.Adjusted[i])),
+            Cell.Truth(hanging.Contains(i)), Cell.Text(string.Join('|', CorrectionsBeside.SurvivesUnder(outcomes, rate, i))),
+        ]))
         {
-            Above = [FormattableString.Invariant($"{standing.Campaign.Code}: adjusted p-values in a family of {standing.FamilySize}")],
-            Below = [$"The sealed correction is {standing.Campaign.Correction}; it alone decides what survives.", .. InFamilies(standing), .. CampaignText.Deviations(standing.Overview), CampaignText.ReviewLine(standing.Overview)],
+            Above = [FormattableString.Invariant($"{standing.Campaign.Code}: adjusted p-values in a family of {standing.FamilySize}, to be held against {standing.Campaign.Level}")],
+            WhenEmpty = hangingOnly ? "No experiment hangs on the choice." : "There is nothing to show.",
+            Below = [$"Hangs: survives under some of the corrections that hold the {CampaignText.RateWords(rate)}, each under its own assumptions, and not under others.", NeverToChoose, .. Ending(standing)],
         };
     }
 
-    /// <summary>Those that need nothing but p, and those with weights where the plan gives some.</summary>
-    private static IReadOnlyList<Correction> Shown(CampaignStanding standing) =>
-        standing.Experiments.Any(e => e.Plan.Weight is not null) ? CorrectionRegistry.All : CorrectionRegistry.FromPAlone;
+    private static RowTable NearMisses(CampaignStanding standing, double? level)
+    {
+        SignificanceLevel[] levels = [.. (level is { } one ? [one] : PlanScenarios.UsualLevels).Select(l => new SignificanceLevel(l))];
+        return new RowTable(
+            [
+                new("scenario", "scenario"), new("changed", "changed to", CutLast: true), new("survivors", "survivors", true),
+                new("gained", "gained"), new("lost", "lost"),
+            ],
+            PlanScenarios.Of(standing, levels).Select(s => (Cell[])
+            [
+                Cell.Text(s.Kind), Cell.Text(s.Changed), Cell.Whole(s.SurvivorCount), Cell.Text(string.Join('|', s.Gained)), Cell.Text(string.Join('|', s.Lost)),
+            ]))
+        {
+            Above = [$"{standing.Campaign.Code}: {CampaignText.Goal(standing.Campaign)}, and what would survive with one thing changed"],
+            Below = ["Gained and lost are against the sealed plan. It alone decides: a plan that is changed after its results were seen holds no error rate.", .. Ending(standing)],
+        };
+    }
+
+    private static IEnumerable<int> HangingPlaces(CampaignStanding standing, IReadOnlyList<CorrectionOutcome> outcomes) =>
+        Enumerable.Range(0, standing.TestedCount).Where(i => CorrectionsBeside.Hangs(outcomes, standing.Campaign.ErrorRate, i));
+
+    private static IEnumerable<string> Ending(CampaignStanding standing) => [.. InFamilies(standing), .. CampaignText.Deviations(standing.Overview), CampaignText.ReviewLine(standing.Overview)];
 
     private static IEnumerable<string> InFamilies(CampaignStanding standing) => standing.Campaign.JudgedFamilies.Count == 0
         ? []

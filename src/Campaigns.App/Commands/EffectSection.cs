@@ -1,6 +1,7 @@
 using Campaigns.App.Output;
 using Campaigns.Domain;
 using Campaigns.Statistics.Effects;
+using Campaigns.Statistics.Probability;
 
 namespace Campaigns.App.Commands;
 
@@ -48,6 +49,21 @@ internal static class EffectSection
 
         (double df1, double df2) = DegreesOfFreedom(result);
         return Math.Sqrt(result is { Plan.Test: "f" or "block-f" or "permutation", Statistic: { } f } ? f * (df1 / df2) : eta / (1 - eta));
+    }
+
+    /// <summary>The interval of a selected experiment's eta squared, at confidence 1 - risk; null without a result, and where nothing varies inside the groups.</summary>
+    /// <param name="result">The experiment.</param>
+    /// <param name="risk">The probability with which the interval may miss, in (0, 1); half of it on either side, so that the lower bound may be 0 for an experiment that only just survives.</param>
+    public static Interval? SelectedEtaSquared(ExperimentResult result, double risk)
+    {
+        if (CohenF(result) is not { } effect || !(risk > 0))
+        {
+            return null;
+        }
+
+        (double df1, double df2) = DegreesOfFreedom(result);
+        double f = effect * effect * (df2 / df1);
+        return double.IsFinite(f) ? EffectSizes.Of(f, df1, df2, new SignificanceLevel(risk / 2)).EtaSquaredInterval : null;
     }
 
     private static (double Df1, double Df2) DegreesOfFreedom(ExperimentResult result) =>

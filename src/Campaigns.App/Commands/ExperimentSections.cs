@@ -25,6 +25,7 @@ internal static class ExperimentSections
             ("observations", Cell.Whole(r.ObservationCount)), ("specimens", Cell.Whole(r.SpecimenCount)),
             ("arrangements", Cell.Whole(r.Resampling?.Arrangements)), ("as_extreme", Cell.Whole(r.Resampling?.AsExtreme)), ("seed", Seed(r)),
             ("follow_up", Cell.Text(r.Plan.FollowUp)), ("units_note", Cell.Text(detail.Analysis.UnitsNote)),
+            ("confirms", Cell.Text(r.Plan.Confirms)), ("replicability_p", Cell.P(r.Confirmation?.P)), ("replicability_adjusted_p", Cell.P(r.Confirmation?.AdjustedP)), ("replicated", Cell.Truth(r.Confirmation?.IsReplicated)),
         ];
         return new RowTable([.. facts.Select(f => new Column(f.Name, null))], [[.. facts.Select(f => f.Value)]]);
     }

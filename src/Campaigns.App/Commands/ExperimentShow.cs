@@ -92,6 +92,15 @@ internal static class ExperimentShow
             yield return $"p = {NumberText.P(p)}, adjusted p = {NumberText.P(result.AdjustedP!.Value)}. {ExperimentWording.Verdict(result)}";
         }
 
+        if (result.Confirmation is not null)
+        {
+            yield return ConfirmationText.Sentence(result);
+            foreach (string note in ConfirmationText.Footnotes(standing.Campaign, standing.Experiments))
+            {
+                yield return note;
+            }
+        }
+
         if (GroupTestRegistry.Find(result.Plan.Test) is { } test)
         {
             yield return ExperimentWording.Assumptions(test);

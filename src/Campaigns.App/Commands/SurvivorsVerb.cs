@@ -3,6 +3,7 @@ using Campaigns.App.Output;
 using Campaigns.App.Wording;
 using Campaigns.Catalog.Results;
 using Campaigns.Domain;
+using Campaigns.Statistics.Effects;
 
 namespace Campaigns.App.Commands;
 
@@ -55,20 +56,33 @@ internal sealed class SurvivorsVerb : Verb
         string more = listed.Count < overview.SurvivorCount
             ? FormattableString.Invariant($" The first {listed.Count} of {overview.SurvivorCount} are shown; 'campaigns survivors {code}' gives all.")
             : "";
-        var rows = new RowTable(Columns, listed.Select(e => Row(e, gaps.GetValueOrDefault(e.Plan.Code), comparisons[e.Plan.Code])))
+        var verdict = new ComparisonVerdict(overview.Campaign, overview.Families);
+        var rows = new RowTable(Columns, listed.Select(e => Row(e, gaps.GetValueOrDefault(e.Plan.Code), [.. comparisons[e.Plan.Code]], verdict.SelectedRisk(e)!.Value)))
         {
             Above = [FormattableString.Invariant($"{code}: {overview.SurvivorCount} of {overview.TestedCount} tested experiments survive ({CampaignText.Goal(overview.Campaign)}).{more}")],
-            Below = [.. CampaignText.Footnotes(overview, listed.Select(e => e.Plan.Test).DefaultIfEmpty(overview.Campaign.DefaultTest)), .. UnitNotes.Of(listed), "Gap: the widest between two group means of the sample; gaps of what was selected look larger than they are.", CampaignText.Caution],
+            Below = [.. CampaignText.Footnotes(overview, listed.Select(e => e.Plan.Test).DefaultIfEmpty(overview.Campaign.DefaultTest)), .. UnitNotes.Of(listed), "Gap: the widest between two group means of the sample; gaps of what was selected look larger than they are, and its selected interval is the follow-up's.", CampaignText.Caution],
             WhenEmpty = "No experiment survives: no difference shown, which is not the same as no difference.",
         };
-        var claims = new RowTable(ComparisonsVerb.Columns, listed.SelectMany(e => comparisons[e.Plan.Code]).Where(c => c.Survives == true).Select(ComparisonsVerb.Row))
+        var claims = new RowTable(ClaimColumns, listed.SelectMany(e => comparisons[e.Plan.Code]).Where(c => c.Survives == true).Select(ComparisonsVerb.Row))
         {
             Above = ["Comparisons claimed inside the survivors"],
             WhenEmpty = "None.",
-            Below = [.. WithoutClaim(listed, comparisons), .. ExperimentWording.Comparisons(overview, listed.Select(e => e.Plan.FollowUp))],
+            Below = [.. WithoutClaim(listed, comparisons), .. ExperimentWording.NotClaimed(listed.SelectMany(e => comparisons[e.Plan.Code])), .. ExperimentWording.Comparisons(overview, listed.Select(e => e.Plan.FollowUp))],
         };
         return new Survivors(rows, claims, overview);
     }
+
+    /// <summary>Claims stand inside selected experiments, so people see the intervals that account for it before the others; that all are claimed they know from the heading.</summary>
+    private static IReadOnlyList<Column> ClaimColumns { get; } =
+    [
+        .. ComparisonsVerb.Columns.Select(c => c.Name switch
+        {
+            "selected_lower" or "selected_upper" => c with { GivesWay = 1 },
+            "lower" or "upper" => c with { GivesWay = 5 },
+            "survives" or "note" => c with { Heading = null },
+            _ => c,
+        }),
+    ];
 
     /// <summary>Survivors in which groups were compared and none told apart: the test and the comparisons ask different questions.</summary>
     private static IEnumerable<string> WithoutClaim(IReadOnlyList<ExperimentResult> listed, ILookup<string, ExperimentComparison> comparisons)
@@ -86,9 +100,11 @@ internal sealed class SurvivorsVerb : Verb
         new("p", "p", true), new("adjusted_p", "adjusted p", true), new("eta_squared", null, true), new("omega_squared", null, true),
         new("highest_group", "highest", CutLast: true), new("highest_mean", null, true), new("lowest_group", "lowest", CutLast: true), new("lowest_mean", null, true),
         new("difference", "gap", true), new("unit", "unit"), new("response", null), new("claimed_comparisons", null), new("amendments", null), new("family", null), new("level", null, true),
+        new("selected_lower", "selected lower", true, 1, NotWithout: "selected_upper"), new("selected_upper", "selected upper", true, 1), new("selected_confidence", null, true),
+        new("eta_squared_lower", null, true), new("eta_squared_upper", null, true), new("not_claimed", null),
     ];
 
-    private static Cell[] Row(ExperimentResult e, WidestGap? gap, IEnumerable<ExperimentComparison> comparisons) =>
+    private static Cell[] Row(ExperimentResult e, WidestGap? gap, ExperimentComparison[] comparisons, double risk) =>
     [
         Cell.Text(e.Plan.Code), Cell.Text(e.Plan.Title), Cell.Text(e.Plan.Test), Cell.Number(e.Statistic), Cell.Number(e.Df1), Cell.Number(e.Df2),
         Cell.P(e.P), Cell.P(e.AdjustedP), Cell.Number(e.EtaSquared), Cell.Number(e.OmegaSquared),
@@ -96,7 +112,33 @@ internal sealed class SurvivorsVerb : Verb
         Cell.Number(gap?.Difference), Cell.Text(e.Plan.Unit), Cell.Text(e.Plan.Response),
         Cell.Text(string.Join("; ", comparisons.Where(c => c.Survives == true).Select(Claim))), Cell.Text(string.Join("; ", e.Amendments)),
         Cell.Text(e.Family?.Name), e.Family is { } family ? Cell.Setting(family.Level.Value) : Cell.Empty,
+        .. Intervals(e, gap, comparisons, risk),
+        Cell.Text(string.Join("; ", comparisons.Where(c => c.NotClaimedBecause is not null).Select(c => $"{c.GroupB} - {c.GroupA}: {c.NotClaimedBecause}"))),
     ];
+
+    /// <summary>The intervals that account for the selection: of the gap, from the follow-up, and of eta squared.</summary>
+    private static Cell[] Intervals(ExperimentResult e, WidestGap? gap, ExperimentComparison[] comparisons, double risk)
+    {
+        Interval? ofGap = gap is null ? null : OfGap(gap, comparisons);
+        Interval? ofEta = EffectSection.SelectedEtaSquared(e, risk);
+        return [Cell.Number(ofGap?.Lower), Cell.Number(ofGap?.Upper), Cell.Number(1 - risk), Cell.Number(ofEta?.Lower), Cell.Number(ofEta?.Upper)];
+    }
+
+    /// <summary>The selected interval of highest less lowest mean; null where the follow-up does not compare these two, or estimates another difference, as within incomplete blocks.</summary>
+    private static Interval? OfGap(WidestGap gap, ExperimentComparison[] comparisons)
+    {
+        const double Rounding = 1e-9;
+        foreach (ExperimentComparison c in comparisons)
+        {
+            bool upwards = (c.GroupA, c.GroupB) == (gap.Lowest, gap.Highest);
+            if ((upwards || (c.GroupB, c.GroupA) == (gap.Lowest, gap.Highest)) && Math.Abs(Math.Abs(c.Comparison.Difference) - gap.Difference) <= Rounding * gap.Difference)
+            {
+                return upwards || c.SelectedInterval is not { } downwards ? c.SelectedInterval : new Interval(-downwards.Upper, -downwards.Lower);
+            }
+        }
+
+        return null;
+    }
 
     /// <summary>For example "B - A 2.5 [1.2, 3.8]".</summary>
     private static string Claim(ExperimentComparison c)

@@ -73,6 +73,17 @@ internal static class ExperimentWording
         }
     }
 
+    /// <summary>How many comparisons are not claimed, and why: a narrow table has no room for the reasons beside the rows.</summary>
+    public static IEnumerable<string> NotClaimed(IEnumerable<ExperimentComparison> comparisons)
+    {
+        string[] reasons = [.. comparisons.Where(c => c.NotClaimedBecause is not null).GroupBy(c => c.NotClaimedBecause!)
+            .OrderByDescending(g => g.Count()).ThenBy(g => g.Key, StringComparer.Ordinal).Select(g => FormattableString.Invariant($"{g.Count()} because {g.Key}"))];
+        if (reasons.Length > 0)
+        {
+            yield return $"Not claimed: {string.Join("; ", reasons)}.";
+        }
+    }
+
     /// <summary>What comparisons hold, and under which assumptions.</summary>
     /// <param name="standing">The campaign in figures.</param>
     /// <param name="followUps">Keys of the follow-ups behind the comparisons shown.</param>
@@ -86,8 +97,13 @@ internal static class ExperimentWording
 
         if (used.Any(f => f != FollowUpRegistry.None))
         {
-            yield return new ComparisonVerdict(standing.Campaign, standing.Families).Guarantee;
+            var verdict = new ComparisonVerdict(standing.Campaign, standing.Families);
+            yield return verdict.Guarantee;
             yield return FormattableString.Invariant($"Intervals hold together inside one experiment at {100 * (1 - standing.Campaign.Level.Value):0.###} %; they are not widened for the selection of the experiment.");
+            if (verdict.SelectedGuarantee is { Length: > 0 } selected)
+            {
+                yield return selected;
+            }
         }
     }
 

@@ -64,7 +64,9 @@ public sealed class PlanStore(Catalog catalog)
         }
 
         OnlineVerdict.RefuseFamilies(stored.Campaign, experiments);
-        return Write(stored.Id, experiments);
+        PlanChange change = Write(stored.Id, experiments);
+        new ConfirmsRule(catalog, stored).Check(experiments);
+        return change;
     });
 
     private PlanChange Write(long campaignId, IReadOnlyList<PlannedExperiment> experiments)

@@ -42,7 +42,7 @@ public sealed class ComparisonReader(Catalog catalog)
             if (byCode.TryGetValue(rows.Code, out ExperimentResult? experiment) && experiment.P is not null)
             {
                 var followUp = PlannedFollowUp.Of(experiment.Plan, rows.Labels, rows.Values.Sample(rows.Labels.Length), campaign.Level);
-                foreach (ExperimentComparison comparison in verdict.Judge(experiment, rows.Labels, followUp?.Comparisons ?? []))
+                foreach (ExperimentComparison comparison in verdict.Judge(experiment, rows.Labels, followUp))
                 {
                     yield return comparison;
                 }

@@ -56,7 +56,7 @@ public sealed class DetailReader(Catalog catalog)
         return new ExperimentDetail(result, groups, Confidence, (outcome as Tested)?.Variation, rows.MissingCount)
         {
             Analysis = analysis,
-            Comparisons = verdict.Judge(result, labels, analysis.Comparisons),
+            Comparisons = verdict.Judge(result, labels, analysis.FollowUp),
             ComparisonGuarantee = verdict.Guarantee,
             Exclusions = exclusions.Decisions(rows.Id),
             Outcome = outcome,

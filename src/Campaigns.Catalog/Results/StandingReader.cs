@@ -13,7 +13,12 @@ public sealed class StandingReader(Catalog catalog)
     /// <summary>The campaign as it stands. A handful of scans whatever the number of experiments; O(m log m) for the correction.</summary>
     /// <param name="code">The campaign.</param>
     /// <exception cref="RefusedException">There is no such campaign.</exception>
-    public CampaignStanding Read(string code) => catalog.Snapshot(() => ReadNow(code));
+    public CampaignStanding Read(string code) => catalog.Snapshot(() =>
+    {
+        StoredCampaign stored = new CampaignStore(catalog).Get(code);
+        CampaignStanding standing = ReadNow(code);
+        return standing with { Experiments = new ConfirmationReader(catalog, ReadNow).Apply(stored, standing) };
+    });
 
     private CampaignStanding ReadNow(string code)
     {

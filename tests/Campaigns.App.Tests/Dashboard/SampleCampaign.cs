@@ -78,7 +78,7 @@ internal static class SampleCampaign
         return new ExperimentDetail(result, groups, 0.95, tested?.Variation, result.Position % 4 == 0 ? 2 : 0)
         {
             Analysis = analysis,
-            Comparisons = verdict.Judge(result, result.Plan.Groups, analysis.Comparisons),
+            Comparisons = verdict.Judge(result, result.Plan.Groups, analysis.FollowUp),
             ComparisonGuarantee = verdict.Guarantee,
             Outcome = tested,
         };
@@ -99,7 +99,7 @@ internal static class SampleCampaign
             Groups = [.. groups.Select(g => g with { Summary = Summary([.. g.Values]) })],
             Variation = tested.Variation! with { Blocks = new VariationLine(2.5, 3, 2.5 / 3) },
             Analysis = analysis,
-            Comparisons = new ComparisonVerdict(campaign, [Figures(campaign)]).Judge(result, result.Plan.Groups, analysis.Comparisons),
+            Comparisons = new ComparisonVerdict(campaign, [Figures(campaign)]).Judge(result, result.Plan.Groups, analysis.FollowUp),
             Outcome = tested,
             OutcomeWithExcluded = tested with { Statistic = 1.25, P = PValue.FromValue(0.3125) },
             Exclusions =

@@ -11,6 +11,7 @@ internal static class ComparisonsPainter
 {
     private const int NumberWidth = 11;
     private const int OneRowWidth = 70;
+    private const int SelectedWidth = OneRowWidth + (2 * NumberWidth);
     private const int TwoRowsWidth = 4 * NumberWidth;
 
     /// <summary>Adds the comparisons; nothing where the plan names no follow-up.</summary>
@@ -57,7 +58,17 @@ internal static class ComparisonsPainter
 
     private static void Figures(DetailSheet sheet, IReadOnlyList<ExperimentComparison> comparisons)
     {
-        if (sheet.Width >= OneRowWidth)
+        if (sheet.Width >= SelectedWidth && comparisons.Any(c => c.SelectedInterval is not null))
+        {
+            int label = sheet.Width - (7 * NumberWidth);
+            sheet.Row(label, "pair", Columns("difference", "lower", "upper", "p", "adjusted p", "sel. lower", "sel. upper"), Ink.Heading);
+            foreach (ExperimentComparison c in comparisons)
+            {
+                string[] numbers = [.. Numbers(sheet, c), sheet.Number(c.SelectedInterval?.Lower), sheet.Number(c.SelectedInterval?.Upper)];
+                sheet.Row(label, $"{Sign(c, sheet.Glyphs)} {PairText(c, label - 2, sheet.Glyphs)}", Columns(numbers), InkOf(c));
+            }
+        }
+        else if (sheet.Width >= OneRowWidth)
         {
             int label = sheet.Width - (5 * NumberWidth);
             sheet.Row(label, "pair", Columns("difference", "lower", "upper", "p", "adjusted p"), Ink.Heading);

@@ -68,6 +68,12 @@ internal static class ResultPainter
             sheet.Marked(detail.Analysis.Specimens is null ? sheet.Glyphs.Warns : sheet.Glyphs.Between, note, detail.Analysis.Specimens is null ? Ink.Warning : Ink.Text);
         }
 
+        if (detail.Result.Confirmation is { } confirmation)
+        {
+            (string sign, Ink ink) = confirmation.IsReplicated switch { true => (sheet.Glyphs.Survivor, Ink.Survivor), false => (sheet.Glyphs.Other, Ink.Text), null => (sheet.Glyphs.Open, Ink.Open) };
+            sheet.Marked(sign, ConfirmationText.Sentence(detail.Result), ink);
+        }
+
         foreach (string clause in detail.Result.Amendments)
         {
             sheet.Marked(sheet.Glyphs.Warns, ExperimentWording.Deviation(clause), Ink.Warning);

@@ -229,7 +229,7 @@ internal sealed class ExperimentSink : IDisposable
         $"{ShownText.Quote(code)} is no experiment of the campaign '{_campaign.Campaign.Code}'{Suggest(code, _codes ??= ExperimentDirectory.Codes(_catalog, _campaign.Id))}; correct the file, or plan the experiment in another campaign.";
 
     private static string Closed(string code) =>
-        $"experiment {ShownText.Quote(code)} was tested already and is closed to more data: looking, then adding, then looking again is another way to a false positive. Put new data into a new experiment, or give --amend REASON to have it recorded as an amendment.";
+        $"experiment {ShownText.Quote(code)} was tested already and is closed to more data: looking, then adding, then looking again is another way to a false positive. Register a new experiment that confirms it (plan column confirms) and put the new data there, or give --amend REASON to have them recorded as an amendment.";
 
     private static string Suggest(string word, IReadOnlyList<string> known) =>
         Nearest.Of(word, known) is { } near ? $" (did you mean '{near}'?)" : "";

@@ -150,6 +150,11 @@ public sealed class MeasurementLoader(Catalog catalog)
         private LoadSummary Finish(MeasurementFile file, ExperimentSink sink)
         {
             sink.Finish();
+            if (_complaints.IsEmpty && file.Problems.IsEmpty)
+            {
+                new NewDataRule(catalog, _loadId, _complaints).Look(() => Result(digesting).Hex);
+            }
+
             _complaints.ReportTo(file.Problems, file.Name);
             if (!file.Problems.IsEmpty)
             {

@@ -1,0 +1,51 @@
+using Campaigns.Catalog.Plans;
+using Campaigns.Catalog.Providers;
+using Campaigns.Domain;
+
+namespace Campaigns.Catalog.Results;
+
+/// <summary>Finds the experiments that those of a campaign confirm, and judges the pairs.</summary>
+/// <param name="catalog">The open catalog.</param>
+/// <param name="read">Reads another campaign as it stands, without its confirmations.</param>
+internal sealed class ConfirmationReader(Catalog catalog, Func<string, CampaignStanding> read)
+{
+    private readonly Dictionary<string, CampaignStanding> _others = new(StringComparer.Ordinal);
+
+    /// <summary>The experiments with what came of their confirmations; as they are where none confirms another.</summary>
+    /// <param name="stored">The campaign.</param>
+    /// <param name="standing">The campaign as it stands.</param>
+    /// <remarks>Every other campaign that is confirmed is read once.</remarks>
+    public IReadOnlyList<ExperimentResult> Apply(StoredCampaign stored, CampaignStanding standing)
+    {
+        IReadOnlyList<ExperimentResult> experiments = standing.Experiments;
+        if (experiments.All(e => e.Plan.Confirms is null))
+        {
+            return experiments;
+        }
+
+        _others[stored.Campaign.Code] = standing;
+        using var known = new ConfirmedExperiments(catalog);
+        return Replicability.Apply(stored.Campaign, experiments, [.. experiments.Select(e => e.Plan.Confirms is { } reference ? Earlier(stored, known, reference) : null)]);
+    }
+
+    private EarlierExperiment? Earlier(StoredCampaign stored, ConfirmedExperiments known, string reference)
+    {
+        if (known.Find(stored.Id, reference) is not { } found)
+        {
+            return null;
+        }
+
+        CampaignStanding standing = _others.TryGetValue(found.Campaign, out CampaignStanding? other) ? other : _others[found.Campaign] = read(found.Campaign);
+        ExperimentResult first = standing.Experiments.First(e => e.Plan.Code == found.Code);
+        FamilyStanding family = first.Family ?? standing.Families[0];
+        bool before = found.CampaignId != stored.Id && FirstTestOf(found.Id) is { } tested && !(stored.Campaign.SealedAt < tested);
+        return new EarlierExperiment(found.Campaign, found.Code, first.P, family.Name, family.Size, before);
+    }
+
+    private DateTimeOffset? FirstTestOf(long experimentId)
+    {
+        using SqliteStatement select = catalog.Prepare("SELECT min(t.ran_at) FROM test_results r JOIN test_runs t ON t.id = r.test_run_id WHERE r.experiment_id = ?1");
+        select.Bind(1, experimentId).Read();
+        return select.NullableInteger(0) is { } at ? Instants.FromMicroseconds(at) : null;
+    }
+}

@@ -1,0 +1,15 @@
+using Campaigns.Statistics.Corrections;
+using Campaigns.Statistics.Probability;
+
+namespace Campaigns.Domain;
+
+/// <summary>What one procedure makes of the tested experiments of a campaign.</summary>
+/// <param name="Procedure">The procedure.</param>
+/// <param name="IsSealed">Whether it is the one that the plan fixed, and that alone decides.</param>
+/// <param name="Adjusted">Adjusted p-values of the tested experiments in the plan's order; null where the procedure gives none.</param>
+/// <param name="Survives">Whether each of these survives.</param>
+public sealed record CorrectionOutcome(ErrorProcedure Procedure, bool IsSealed, IReadOnlyList<PValue?> Adjusted, IReadOnlyList<bool> Survives)
+{
+    /// <summary>Experiments that survive.</summary>
+    public int SurvivorCount => Survives.Count(s => s);
+}
