@@ -36,7 +36,7 @@ internal sealed class ResultsVerb : Verb
         {
             "confirms" => c with { Heading = "confirms", GivesWay = 1 },
             "replicability_adjusted_p" => c with { Heading = "adjusted p of both", GivesWay = 0 },
-            "replicated" => c with { Heading = "replicated", GivesWay = 0 },
+            "replicated" => c with { Heading = "replicated", GivesWay = 0, CutLast = true },
             _ => c,
         }),
     ];
