@@ -45,6 +45,7 @@ internal static class ExperimentShow
                 $"Response: {(result.Plan.Response.Length > 0 ? result.Plan.Response : "not named")}{unit}. Status: {result.Status.Sentence()}.{Missing(detail)}",
                 .. result.Amendments.Select(ExperimentWording.Deviation),
                 .. OnlineText.Decision(result.Entry) is { } decision ? [decision] : (string[])[],
+                .. result.Confirmation is null ? (string[])[] : [ConfirmationText.Sentence(result)],
                 .. detail.Analysis.UnitsNote is { } note ? [note] : (string[])[],
             ],
             Below = GroupNotes(detail),
@@ -59,7 +60,7 @@ internal static class ExperimentShow
         Section(session, $"Comparisons ({FollowUpRegistry.Find(result.Plan.FollowUp)?.Name})", ExperimentSections.Comparisons(detail), ExperimentWording.Comparisons(standing.Overview, [result.Plan.FollowUp]));
         Section(session, "Exclusions", ExperimentSections.Exclusions(detail), []);
         session.Host.Out.WriteLine();
-        TextTable.Sentences(session.Host, [.. CampaignText.Footnotes(standing.Overview, []), CampaignText.Caution]);
+        TextTable.Sentences(session.Host, [.. result.Confirmation is null ? [] : ConfirmationText.Footnotes(standing.Campaign, standing.Experiments), .. CampaignText.Footnotes(standing.Overview, []), CampaignText.Caution]);
     }
 
     private static void Section(Session session, string title, RowTable rows, IEnumerable<string> below)
@@ -90,15 +91,6 @@ internal static class ExperimentShow
         else
         {
             yield return $"p = {NumberText.P(p)}, adjusted p = {NumberText.P(result.AdjustedP!.Value)}. {ExperimentWording.Verdict(result)}";
-        }
-
-        if (result.Confirmation is not null)
-        {
-            yield return ConfirmationText.Sentence(result);
-            foreach (string note in ConfirmationText.Footnotes(standing.Campaign, standing.Experiments))
-            {
-                yield return note;
-            }
         }
 
         if (GroupTestRegistry.Find(result.Plan.Test) is { } test)

@@ -47,7 +47,7 @@ internal sealed class ResultsVerb : Verb
                 "family" when hasFamilies => c with { Heading = "family", GivesWay = 1 },
                 "confirms" when confirms => c with { Heading = "confirms", GivesWay = 1 },
                 "replicability_adjusted_p" when confirms => c with { Heading = "adjusted p of both", GivesWay = 0 },
-                "replicated" when confirms => c with { Heading = "replicated", GivesWay = 0 },
+                "replicated" when confirms => c with { Heading = "replicated", GivesWay = 0, CutLast = true },
                 _ => c,
             }),
         ];

@@ -77,7 +77,7 @@ internal static class ExperimentWording
     public static IEnumerable<string> NotClaimed(IEnumerable<ExperimentComparison> comparisons)
     {
         string[] reasons = [.. comparisons.Where(c => c.NotClaimedBecause is not null).GroupBy(c => c.NotClaimedBecause!)
-            .OrderByDescending(g => g.Count()).ThenBy(g => g.Key, StringComparer.Ordinal).Select(g => FormattableString.Invariant($"{g.Count()} because {g.Key}"))];
+            .OrderByDescending(g => g.Count()).ThenBy(g => g.Key, StringComparer.Ordinal).Select(g => FormattableString.Invariant($"{g.Count()} ({g.Key})"))];
         if (reasons.Length > 0)
         {
             yield return $"Not claimed: {string.Join("; ", reasons)}.";
@@ -99,7 +99,7 @@ internal static class ExperimentWording
         {
             var verdict = new ComparisonVerdict(standing.Campaign, standing.Families);
             yield return verdict.Guarantee;
-            yield return FormattableString.Invariant($"Intervals hold together inside one experiment at {100 * (1 - standing.Campaign.Level.Value):0.###} %; they are not widened for the selection of the experiment.");
+            yield return FormattableString.Invariant($"Intervals (lower, upper) hold together inside one experiment at {100 * (1 - standing.Campaign.Level.Value):0.###} %; they are not widened for the selection of the experiment.");
             if (verdict.SelectedGuarantee is { Length: > 0 } selected)
             {
                 yield return selected;
