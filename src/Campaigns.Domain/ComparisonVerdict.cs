@@ -11,6 +11,14 @@ namespace Campaigns.Domain;
 /// <param name="families">Its families in figures: each with its size m and its survivors R.</param>
 public sealed class ComparisonVerdict(Campaign campaign, IReadOnlyList<FamilyStanding> families)
 {
+    /// <summary>
+    /// By how much the levels of the families exceed the campaign's, at least 1. A gate that opens when all of a family survives costs nothing for experiments, but a family without a true null may still
+    /// hold groups that are alike, so that comparisons pay for every family: their levels are lowered to add up to the campaign's.
+    /// </summary>
+    private readonly double _crowding = Crowding(campaign, families);
+
+    private readonly Dictionary<string, FamilyStanding> _byName = families.ToDictionary(f => f.Name, StringComparer.Ordinal);
+
     /// <summary>What is held, in a sentence.</summary>
     public string Guarantee => OnlineVerdict.ProcedureOf(campaign) is not null
         ? FormattableString.Invariant($"Comparisons are claimed only inside surviving experiments, each experiment's at the level that it was given on arrival (adjusted p: p x {campaign.Level} / level given): the error inside each experiment is held at its own level, and no rate over the comparisons of the campaign.")
@@ -28,10 +36,31 @@ public sealed class ComparisonVerdict(Campaign campaign, IReadOnlyList<FamilySta
         return [.. comparisons.Select(c => Judge(new ExperimentComparison(experiment, labels[c.GroupA], labels[c.GroupB], c)))];
     }
 
-    private string GuaranteeOf(FamilyStanding family) => campaign.ErrorRate == ErrorRate.Familywise
-        ? FormattableString.Invariant($"Comparisons are claimed only inside surviving experiments, each experiment's at level {family.Level}/{family.Size}: the probability of any false comparison in the campaign is at most {family.Level} (union bound).")
-        : family.Survivors == 0 ? FormattableString.Invariant($"Comparisons are claimed only inside surviving experiments; none of the {family.Size} survives.")
-        : FormattableString.Invariant($"Comparisons are claimed only inside the {family.Survivors} surviving of {family.Size} experiments, at level {family.Level} x {family.Survivors}/{family.Size}: the expected error inside them, averaged over the survivors, is at most {family.Level} (Benjamini and Bogomolov 2014; for independent experiments).");
+    private static double Crowding(Campaign campaign, IReadOnlyList<FamilyStanding> families)
+    {
+        const double rounding = 1e-12;
+        double ratio = families.Sum(f => f.Level.Value) / campaign.Level.Value;
+        return ratio <= 1 + rounding ? 1 : ratio;
+    }
+
+    private string GuaranteeOf(FamilyStanding family)
+    {
+        string inside = family.Name.Length == 0 ? "Comparisons are claimed only inside" : $"In the family '{family.Name}' comparisons are claimed only inside";
+        return campaign.ErrorRate == ErrorRate.Familywise ? FormattableString.Invariant($"{inside} surviving experiments, each experiment's at {ShareOf(family)}: {(families.Count > 1 ? "over all families " : "")}the probability of any false comparison in the campaign is at most {campaign.Level} (union bound).")
+            : family.Survivors == 0 ? FormattableString.Invariant($"{inside} surviving experiments; none of the {family.Size} survives.")
+            : FormattableString.Invariant($"{inside} the {family.Survivors} surviving of {family.Size} experiments, at level {family.Level} x {family.Survivors}/{family.Size}: the expected error inside them, averaged over the survivors, is at most {family.Level} (Benjamini and Bogomolov 2014; for independent experiments).");
+    }
+
+    private string ShareOf(FamilyStanding family)
+    {
+        string level = _crowding == 1 ? FormattableString.Invariant($"level {family.Level}") : FormattableString.Invariant($"level {family.Level}/{_crowding:0.####}");
+        return family.WeightTotal is { } total ? FormattableString.Invariant($"{level} times its weight over {total:0.######}") : FormattableString.Invariant($"{level}/{family.Size}");
+    }
+
+    /// <summary>The share of an experiment's comparisons in its family's level: one hypothesis of the family's size, or its weight of their sum.</summary>
+    private PValue Familywise(PValue p, FamilyStanding family, PlannedExperiment plan) => family.WeightTotal is { } total
+        ? SelectedFamilies.Weighted(p, total * _crowding, plan.Weight ?? 1)
+        : _crowding == 1 ? SelectedFamilies.Familywise(p, family.Size) : SelectedFamilies.Weighted(p, family.Size * _crowding, 1);
 
     private ExperimentComparison Judge(ExperimentComparison comparison)
     {
@@ -40,11 +69,11 @@ public sealed class ComparisonVerdict(Campaign campaign, IReadOnlyList<FamilySta
             return comparison with { NotClaimedBecause = comparison.Comparison.Obstacle };
         }
 
-        FamilyStanding family = families.FirstOrDefault(f => f.Name == (comparison.Experiment.Plan.Family ?? "")) ?? families[0];
+        FamilyStanding family = families.Count == 1 ? families[0] : _byName[comparison.Experiment.Plan.Family ?? ""];
         bool selected = comparison.Experiment.Survives == true;
         PValue? adjusted =
             OnlineVerdict.ProcedureOf(campaign) is not null ? selected ? new OnlineLevel(1, comparison.Experiment.GivenLevel ?? 0).Adjusted(p, campaign.Level) : null
-            : campaign.ErrorRate == ErrorRate.Familywise ? SelectedFamilies.Familywise(p, family.Size)
+            : campaign.ErrorRate == ErrorRate.Familywise ? Familywise(p, family, comparison.Experiment.Plan)
             : selected ? SelectedFamilies.FalseDiscovery(p, family.Size, family.Survivors)
             : null;
         bool survives = selected && family.Level.Rejects(adjusted!.Value);

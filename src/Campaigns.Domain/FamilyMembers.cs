@@ -30,8 +30,7 @@ public sealed record FamilyMembers
     {
         ArgumentNullException.ThrowIfNull(campaign);
         ArgumentNullException.ThrowIfNull(experiments);
-        PValue[] p = [.. experiments.Where(e => e.P is not null).Select(e => e.P!.Value)];
-        FamilyMembers members = OneFamily(p, experiments.Count);
+        FamilyMembers members = Counted(campaign, experiments);
         return OnlineVerdict.ProcedureOf(campaign) is null ? members : members with
         {
             Entries = [.. experiments.Where(e => e.P is not null).Select(e => e.Entry)],
@@ -43,4 +42,20 @@ public sealed record FamilyMembers
     /// <param name="p">P-values of the tested experiments.</param>
     /// <param name="size">Hypotheses counted, tested or not.</param>
     public static FamilyMembers OneFamily(ReadOnlyMemory<PValue> p, int size) => new() { P = p, Families = [new FamilyCount(new Family(""), size, size)] };
+
+    private static FamilyMembers Counted(Campaign campaign, IReadOnlyList<ExperimentResult> experiments)
+    {
+        if (!FamilyTally.IsNeeded(campaign))
+        {
+            return OneFamily(experiments.Where(e => e.P is not null).Select(e => e.P!.Value).ToArray(), experiments.Count);
+        }
+
+        var tally = new FamilyTally(campaign);
+        foreach (ExperimentResult experiment in experiments)
+        {
+            tally.Add(experiment.Plan.Family, experiment.Plan.Weight, experiment.Plan.SharedControl, experiment.P);
+        }
+
+        return tally.Members(testedOnly: false);
+    }
 }

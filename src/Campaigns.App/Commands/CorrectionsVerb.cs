@@ -1,5 +1,6 @@
 using System.CommandLine;
 using Campaigns.App.Output;
+using Campaigns.App.Wording;
 using Campaigns.Catalog.Results;
 using Campaigns.Domain;
 using Campaigns.Statistics.Corrections;
@@ -24,13 +25,13 @@ internal sealed class CorrectionsVerb : Verb
         using Catalog.Catalog catalog = session.OpenCatalog();
         CampaignStanding standing = new StandingReader(catalog).Read(session.Get(_code));
         ExperimentResult[] tested = [.. standing.Experiments.Where(e => e.P is not null)];
-        var family = RankedFamily.Of(tested.Select(e => e.P!.Value).ToArray(), standing.FamilySize);
-        PValue[][] adjusted = [.. CorrectionRegistry.All.Select(c => c.Adjust(family))];
-        session.Print(session.Get(_byExperiment) ? ByExperiment(standing, tested, adjusted) : ByCorrection(standing, adjusted));
+        IReadOnlyList<Correction> shown = Shown(standing);
+        CampaignVerdict[] verdicts = [.. shown.Select(c => FamilyVerdict.JudgeBy(standing.Campaign, standing.Experiments, c))];
+        session.Print(session.Get(_byExperiment) ? ByExperiment(standing, tested, shown, verdicts) : ByCorrection(standing, shown, verdicts));
         return ExitCode.Done;
     }
 
-    private static RowTable ByCorrection(CampaignStanding standing, PValue[][] adjusted)
+    private static RowTable ByCorrection(CampaignStanding standing, IReadOnlyList<Correction> shown, CampaignVerdict[] verdicts)
     {
         SignificanceLevel level = standing.Campaign.Level;
         return new RowTable(
@@ -38,15 +39,15 @@ internal sealed class CorrectionsVerb : Verb
                 new("correction", "key"), new("name", "name"), new("controls", "holds", GivesWay: 1), new("valid_under", "under", GivesWay: 1), new("survivors", "survivors", true),
                 new("level", "level", true, 2), new("family_size", "family", true, 2), new("sealed", "sealed"), new("guarantee", null), new("source", null),
             ],
-            CorrectionRegistry.All.Select((c, i) => new[]
+            shown.Select((c, i) => new[]
             {
                 Cell.Text(c.Key), Cell.Text(c.Name), Cell.Text(CampaignText.RateWords(c.Controls)), Cell.Text(DependenceWords(c.ValidUnder)),
-                Cell.Whole(adjusted[i].Count(level.Rejects)), Cell.Setting(level.Value), Cell.Whole(standing.FamilySize),
+                Cell.Whole(verdicts[i].SurvivorCount), Cell.Setting(level.Value), Cell.Whole(standing.FamilySize),
                 Cell.Truth(c.Key == standing.Campaign.Correction), Cell.Text(c.Guarantee), Cell.Text(c.Source),
             }).Concat(StandingRow(standing)))
         {
             Above = [FormattableString.Invariant($"{standing.Campaign.Code}: {standing.TestedCount} results in a family of {standing.FamilySize}, every correction at {level}")],
-            Below = ["The sealed correction alone decides what survives; choosing another after seeing this table would undo what a correction is for.", .. CampaignText.Deviations(standing.Overview), CampaignText.ReviewLine(standing.Overview)],
+            Below = ["The sealed correction alone decides what survives; choosing another after seeing this table would undo what a correction is for.", .. InFamilies(standing), .. CampaignText.Deviations(standing.Overview), CampaignText.ReviewLine(standing.Overview)],
         };
     }
 
@@ -63,19 +64,27 @@ internal sealed class CorrectionsVerb : Verb
         }
     }
 
-    private static RowTable ByExperiment(CampaignStanding standing, ExperimentResult[] tested, PValue[][] adjusted)
+    private static RowTable ByExperiment(CampaignStanding standing, ExperimentResult[] tested, IReadOnlyList<Correction> shown, CampaignVerdict[] verdicts)
     {
         Column[] columns =
         [
             new("experiment", "experiment"), new("p", "p", true),
-            .. CorrectionRegistry.All.Select(c => new Column(c.Key, c.Key, true)),
+            .. shown.Select(c => new Column(c.Key, c.Key, true)),
         ];
-        return new RowTable(columns, tested.Select((e, row) => (Cell[])[Cell.Text(e.Plan.Code), Cell.P(e.P), .. adjusted.Select(a => Cell.P(a[row]))]))
+        return new RowTable(columns, tested.Select((e, row) => (Cell[])[Cell.Text(e.Plan.Code), Cell.P(e.P), .. verdicts.Select(v => Cell.P(v.Adjusted[row]))]))
         {
             Above = [FormattableString.Invariant($"{standing.Campaign.Code}: adjusted p-values in a family of {standing.FamilySize}")],
-            Below = [$"The sealed correction is {standing.Campaign.Correction}; it alone decides what survives.", .. CampaignText.Deviations(standing.Overview), CampaignText.ReviewLine(standing.Overview)],
+            Below = [$"The sealed correction is {standing.Campaign.Correction}; it alone decides what survives.", .. InFamilies(standing), .. CampaignText.Deviations(standing.Overview), CampaignText.ReviewLine(standing.Overview)],
         };
     }
+
+    /// <summary>Those that need nothing but p, and those with weights where the plan gives some.</summary>
+    private static IReadOnlyList<Correction> Shown(CampaignStanding standing) =>
+        standing.Experiments.Any(e => e.Plan.Weight is not null) ? CorrectionRegistry.All : CorrectionRegistry.FromPAlone;
+
+    private static IEnumerable<string> InFamilies(CampaignStanding standing) => standing.Campaign.JudgedFamilies.Count == 0
+        ? []
+        : [FormattableString.Invariant($"Each correction is applied in each of the {standing.Families.Count} families, at the family's level and behind its gate; an adjusted p of a closed family is 1. The sealed ones are: {string.Join("; ", standing.Families.Select(f => $"{f.Name} {f.Correction} at {FamilyText.Level(f.Level)}"))}.")];
 
     private static string DependenceWords(Dependence dependence) => dependence switch
     {

@@ -100,7 +100,7 @@ internal static class ExperimentShow
         if (result.Resampling is { } resampling)
         {
             yield return ResamplingText.Sentence(resampling);
-            if (ResamplingText.TooCoarse(resampling, standing, result.GivenLevel) is { } warning)
+            if (ResamplingText.TooCoarse(resampling, standing.FamilyOf(result), result.GivenLevel) is { } warning)
             {
                 yield return warning;
             }

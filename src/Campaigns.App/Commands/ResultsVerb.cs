@@ -21,7 +21,7 @@ internal sealed class ResultsVerb : Verb
     {
         using Catalog.Catalog catalog = session.OpenCatalog();
         CampaignStanding standing = new StandingReader(catalog).Read(session.Get(_code));
-        session.Print(new RowTable(Columns, standing.Experiments.Select(Row))
+        session.Print(new RowTable([.. WithFamily(standing.Campaign)], standing.Experiments.Select(Row))
         {
             Above = [$"{standing.Campaign.Code}: {CampaignText.Goal(standing.Campaign)}"],
             Below = [.. OnlineText.WithoutLevel(standing.Experiments.Select(e => e.Entry).OfType<StreamEntry>()) is { } late ? [late] : (string[])[], .. CampaignText.Footnotes(standing.Overview, standing.Experiments.Select(e => e.Plan.Test)), .. UnitNotes.Of(standing.Experiments)],
@@ -37,7 +37,12 @@ internal sealed class ResultsVerb : Verb
         new("ln_p", null, true), new("eta_squared", "eta squared", true, 4), new("omega_squared", null, true), new("title", "title", GivesWay: 3), new("amendments", null),
         new("specimens", null, true), new("epsilon_squared", null, true), new("cohen_f", null, true), new("arrangements", null, true), new("seed", null), new("follow_up", null),
         new("standing_level", null, true), new("batch_adjusted_p", null, true), new("batch_survives", null),
+        new("family", null), new("family_size", null, true), new("family_tested", null, true), new("level", null, true),
     ];
+
+    /// <summary>The columns, with the family for people where there are several to tell apart.</summary>
+    private static IEnumerable<Column> WithFamily(Campaign campaign) =>
+        Columns.Select(c => c.Name == "family" && campaign.JudgedFamilies.Count > 0 ? c with { Heading = "family", GivesWay = 1 } : c);
 
     public static Cell[] Row(ExperimentResult result) =>
     [
@@ -49,5 +54,6 @@ internal sealed class ResultsVerb : Verb
         Cell.Whole(result.SpecimenCount), Cell.Number(EffectSection.EpsilonSquared(result)), Cell.Number(EffectSection.CohenF(result)),
         Cell.Whole(result.Resampling?.Arrangements), ExperimentSections.Seed(result), Cell.Text(result.Plan.FollowUp),
         Cell.Number(result.GivenLevel), Cell.P(result.BatchAdjustedP), Cell.Truth(result.BatchSurvives),
+        Cell.Text(result.Family?.Name), Cell.Whole(result.Family?.Size), Cell.Whole(result.Family?.Tested), result.Family is { } family ? Cell.Setting(family.Level.Value) : Cell.Empty,
     ];
 }

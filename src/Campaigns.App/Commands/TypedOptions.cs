@@ -22,6 +22,10 @@ internal static class TypedOptions
     public static Option<double> Level(string description, double usual = 0.05) =>
         WithUsual(new Option<double>("--level") { Description = description, HelpName = "NUMBER", CustomParser = LevelOf }, (double?)usual);
 
+    /// <summary>A level where one is given.</summary>
+    public static Option<double?> LevelOrNone(string description) =>
+        new("--level") { Description = description, HelpName = "NUMBER", CustomParser = typed => LevelOf(typed) };
+
     /// <summary>One of a few words.</summary>
     public static Option<string?> Word(string name, string description, string helpName, params string[] words)
     {

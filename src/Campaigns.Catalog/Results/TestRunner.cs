@@ -86,7 +86,7 @@ public sealed class TestRunner(Catalog catalog)
         using StreamKeeper? streams = stored.Campaign.Streams.Count == 0 ? null : new StreamKeeper(catalog, stored);
         using var results = new ResultWriter(catalog, stored.Id, lastLoad, exclusions.LastId, includeIncomplete, streams);
         using var pipeline = new TestPipeline(includeIncomplete, results.Write);
-        var plans = new PlannedTests(stored.Campaign, () => new FamilyReader(catalog).FamilySize(stored.Id), sets, exclusions, cancel);
+        var plans = new PlannedTests(stored.Campaign, () => new FamilyReader(catalog).PermutationDrawCount(stored), sets, exclusions, cancel);
         TestBatch batch = pipeline.Fresh();
         long done = 0;
         while (select.Read())
@@ -145,10 +145,10 @@ public sealed class TestRunner(Catalog catalog)
     }
 
     /// <summary>Reads what the plan says of the test of an experiment.</summary>
-    private sealed class PlannedTests(Campaign campaign, Func<int> familySize, GroupSets sets, StandingExclusions exclusions, CancellationToken cancel)
+    private sealed class PlannedTests(Campaign campaign, Func<int> drawCount, GroupSets sets, StandingExclusions exclusions, CancellationToken cancel)
     {
         // Counting the family takes milliseconds, and only a test that draws wants to know.
-        private readonly Lazy<int> _draws = new(() => PermutationDraws.Count(campaign.Level, familySize()));
+        private readonly Lazy<int> _draws = new(drawCount);
         private GroupTest? _test;
         private string _key = "";
 

@@ -29,6 +29,7 @@ public sealed class DashboardModel
         _source = source;
         _findCorrection = findCorrection;
         Standing = source.Standing;
+        Marks = new Marks(Standing);
         (Correction, Heading, Ranking) = Read(Standing);
         Sort();
         Narrow(keep: -1);
@@ -48,6 +49,9 @@ public sealed class DashboardModel
 
     /// <summary>The ranked p-values.</summary>
     public Ranking Ranking { get; private set; }
+
+    /// <summary>The experiments that are marked.</summary>
+    public Marks Marks { get; }
 
     /// <summary>The column sorted by; null for the plan's order.</summary>
     public ExperimentColumn? SortColumn { get; private set; }
@@ -79,6 +83,10 @@ public sealed class DashboardModel
     /// <summary>The experiment in a row.</summary>
     /// <param name="row">Row from 0.</param>
     public ExperimentResult RowAt(int row) => Standing.Experiments[_rows[row]];
+
+    /// <summary>Position in the campaign's list of the experiment in a row.</summary>
+    /// <param name="row">Row from 0.</param>
+    public int PositionAt(int row) => _rows[row];
 
     /// <summary>Whether the selected experiment in full must first be computed, and that may take a good part of a second: a permutation test draws up to millions of arrangements, and checks sort every value.</summary>
     public bool IsSelectedDetailSlow =>
@@ -131,6 +139,23 @@ public sealed class DashboardModel
         }
 
         Select(Array.IndexOf(_rows, position));
+    }
+
+    /// <summary>Marks the selected experiment, or takes its mark off.</summary>
+    public void MarkSelected()
+    {
+        if (_rows.Length > 0)
+        {
+            Marks.Turn(_rows[_selectedRow]);
+            Changed?.Invoke();
+        }
+    }
+
+    /// <summary>Marks every experiment shown, or, where all of them are marked, takes their marks off.</summary>
+    public void MarkShown()
+    {
+        Marks.TurnAll(_rows);
+        Changed?.Invoke();
     }
 
     /// <summary>Sorts by a column, the smallest first; by the same column again, the other way round. The selected experiment stays selected.</summary>
@@ -192,6 +217,7 @@ public sealed class DashboardModel
     {
         string? code = Selected?.Plan.Code;
         Standing = _source.Reload();
+        Marks.Follow(Standing);
         _details.Clear();
         _searchable = null;
         (Correction, Heading, Ranking) = Read(Standing);

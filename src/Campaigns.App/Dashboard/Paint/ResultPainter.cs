@@ -35,6 +35,11 @@ internal static class ResultPainter
             sheet.Line(decision);
         }
 
+        if (result.Family is { Name.Length: > 0 } family)
+        {
+            sheet.Line($"family {family.Name}: level {FamilyText.Level(family.Level)}" + (family.Waits is { } waits ? $", {(family.IsOpen ? "open" : "closed")}, {waits}" : ""), Ink.Quiet);
+        }
+
         string held = string.Join(", ", heading.Held);
         (string sign, string sentence, Ink ink) = result.Survives switch
         {
@@ -51,7 +56,7 @@ internal static class ResultPainter
         if (detail.Result.Resampling is { } resampling)
         {
             sheet.Line(ResamplingText.Sentence(resampling));
-            if (ResamplingText.TooCoarse(resampling, standing, detail.Result.GivenLevel) is { } warning)
+            if (ResamplingText.TooCoarse(resampling, standing.FamilyOf(detail.Result), detail.Result.GivenLevel) is { } warning)
             {
                 sheet.Marked(sheet.Glyphs.Warns, warning, Ink.Warning);
             }
