@@ -35,7 +35,8 @@ public sealed record CampaignRisk(
         PValue? largest = null;
         foreach (int i in survivors)
         {
-            PValue p = experiments[i].P!.Value;
+            // A standing decision outlives the result on which it was made.
+            PValue p = (experiments[i].P ?? experiments[i].Entry?.P)!.Value;
             largest = largest is { } before && before > p ? before : p;
         }
 
