@@ -43,10 +43,10 @@ internal sealed class CorrectionsVerb : Verb
             {
                 Cell.Text(c.Key), Cell.Text(c.Name), Cell.Text(CampaignText.RateWords(c.Controls)), Cell.Text(DependenceWords(c.ValidUnder)),
                 Cell.Whole(verdicts[i].SurvivorCount), Cell.Setting(level.Value), Cell.Whole(standing.FamilySize),
-                Cell.Truth(c.Key == standing.Campaign.Correction), Cell.Text(c.Guarantee), Cell.Text(c.Source),
+                Cell.Truth(standing.Families.Any(f => f.Correction == c.Key)), Cell.Text(c.Guarantee), Cell.Text(c.Source),
             }))
         {
-            Above = [FormattableString.Invariant($"{standing.Campaign.Code}: {standing.TestedCount} results in a family of {standing.FamilySize}, every correction at {level}")],
+            Above = [FormattableString.Invariant($"{standing.Campaign.Code}: {standing.TestedCount} results in {Of(standing)}, every correction at {(standing.Campaign.JudgedFamilies.Count == 0 ? level.ToString() : "the level of each family")}")],
             Below = ["The sealed correction alone decides what survives; choosing another after seeing this table would undo what a correction is for.", .. InFamilies(standing), .. CampaignText.Deviations(standing.Overview), CampaignText.ReviewLine(standing.Overview)],
         };
     }
@@ -60,14 +60,18 @@ internal sealed class CorrectionsVerb : Verb
         ];
         return new RowTable(columns, tested.Select((e, row) => (Cell[])[Cell.Text(e.Plan.Code), Cell.P(e.P), .. verdicts.Select(v => Cell.P(v.Adjusted[row]))]))
         {
-            Above = [FormattableString.Invariant($"{standing.Campaign.Code}: adjusted p-values in a family of {standing.FamilySize}")],
-            Below = [$"The sealed correction is {standing.Campaign.Correction}; it alone decides what survives.", .. InFamilies(standing), .. CampaignText.Deviations(standing.Overview), CampaignText.ReviewLine(standing.Overview)],
+            Above = [FormattableString.Invariant($"{standing.Campaign.Code}: adjusted p-values in {Of(standing)}")],
+            Below = [standing.Campaign.JudgedFamilies.Count == 0 ? $"The sealed correction is {standing.Campaign.Correction}; it alone decides what survives." : "The sealed corrections alone decide what survives.", .. InFamilies(standing), .. CampaignText.Deviations(standing.Overview), CampaignText.ReviewLine(standing.Overview)],
         };
     }
 
     /// <summary>Those that need nothing but p, and those with weights where the plan gives some.</summary>
     private static IReadOnlyList<Correction> Shown(CampaignStanding standing) =>
         standing.Experiments.Any(e => e.Plan.Weight is not null) ? CorrectionRegistry.All : CorrectionRegistry.FromPAlone;
+
+    private static string Of(CampaignStanding standing) => standing.Campaign.JudgedFamilies.Count == 0
+        ? FormattableString.Invariant($"a family of {standing.FamilySize}")
+        : FormattableString.Invariant($"{standing.Families.Count} families of {standing.FamilySize} together");
 
     private static IEnumerable<string> InFamilies(CampaignStanding standing) => standing.Campaign.JudgedFamilies.Count == 0
         ? []

@@ -114,7 +114,7 @@ public sealed class FamilyCampaignTests : IDisposable
     [Fact]
     public void Families_that_only_the_plan_names_get_the_campaigns_correction_and_rate()
     {
-        string run = _place.Run("run", _place.Campaign("C", "experiment,family\nE1,a\nE2,b\n", Workplace.TwoExperiments)).Well().Out.ReplaceLineEndings(" ");
+        string run = _place.Run("run", _place.Campaign("C", "experiment,groups,family\nE1,a|b,a\nE2,a|b,b\n", Workplace.TwoExperiments)).Well().Out.ReplaceLineEndings(" ");
         Assert.Contains("with 2 families", run, StringComparison.Ordinal);
         Assert.Contains("rates held in families do not bound the share of false ones among all their survivors together", run, StringComparison.Ordinal);
         Assert.Equal(["bh,0.05", "bh,0.05"], _place.Run("families", "C", "--format", "csv").Well().Csv.Rows.Select(r => $"{r[1]},{r[2]}"));
