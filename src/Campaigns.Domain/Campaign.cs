@@ -33,6 +33,9 @@ public sealed record Campaign
     /// <summary>Settings of an online procedure; null for a batch correction, and where all are left at their defaults.</summary>
     public OnlineOptions? Online { get; init; }
 
+    /// <summary>The streams of a campaign that is judged as experiments arrive, oldest first; empty before its seal and for a batch correction.</summary>
+    public IReadOnlyList<StreamHead> Streams { get; init; } = [];
+
     /// <summary>Key of the test for experiments whose plan names none.</summary>
     public string DefaultTest { get; init; } = "f";
 

@@ -1,5 +1,6 @@
 using Campaigns.Statistics.Corrections;
 using Campaigns.Statistics.FollowUps;
+using Campaigns.Statistics.Online;
 using Campaigns.Statistics.Probability;
 using Campaigns.Statistics.Selection;
 
@@ -19,7 +20,9 @@ public sealed class ComparisonVerdict(Campaign campaign, IReadOnlyList<FamilySta
     private readonly Dictionary<string, FamilyStanding> _byName = families.ToDictionary(f => f.Name, StringComparer.Ordinal);
 
     /// <summary>What is held, in a sentence.</summary>
-    public string Guarantee => string.Join(" ", [.. families.Select(GuaranteeOf), .. campaign.ErrorRate == ErrorRate.Familywise && families.Count > 1 ? [Together] : (string[])[]]);
+    public string Guarantee => OnlineVerdict.ProcedureOf(campaign) is not null
+        ? FormattableString.Invariant($"Comparisons are claimed only inside surviving experiments, each experiment's at the level that it was given on arrival (adjusted p: p x {campaign.Level} / level given): the error inside each experiment is held at its own level, and no rate over the comparisons of the campaign.")
+        : string.Join(" ", [.. families.Select(GuaranteeOf), .. campaign.ErrorRate == ErrorRate.Familywise && families.Count > 1 ? [Together] : (string[])[]]);
 
     private string Bound => $"the probability of any false comparison in the campaign is at most {campaign.Level} (union bound).";
 
@@ -69,7 +72,8 @@ public sealed class ComparisonVerdict(Campaign campaign, IReadOnlyList<FamilySta
         FamilyStanding family = families.Count == 1 ? families[0] : _byName[comparison.Experiment.Plan.Family ?? ""];
         bool selected = comparison.Experiment.Survives == true;
         PValue? adjusted =
-            campaign.ErrorRate == ErrorRate.Familywise ? Familywise(p, family, comparison.Experiment.Plan)
+            OnlineVerdict.ProcedureOf(campaign) is not null ? selected ? new OnlineLevel(1, comparison.Experiment.GivenLevel ?? 0).Adjusted(p, campaign.Level) : null
+            : campaign.ErrorRate == ErrorRate.Familywise ? Familywise(p, family, comparison.Experiment.Plan)
             : selected ? SelectedFamilies.FalseDiscovery(p, family.Size, family.Survivors)
             : null;
         bool survives = selected && family.Level.Rejects(adjusted!.Value);

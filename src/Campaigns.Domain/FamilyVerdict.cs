@@ -7,7 +7,7 @@ public static class FamilyVerdict
 {
     /// <summary>The procedure by which a campaign is judged: its batch correction, or its online procedure.</summary>
     /// <exception cref="RefusedException">This version of the program does not have it.</exception>
-    public static ErrorProcedure ProcedureOf(Campaign campaign) => CorrectionOf(campaign);
+    public static ErrorProcedure ProcedureOf(Campaign campaign) => OnlineVerdict.ProcedureOf(campaign) is { } online ? online : CorrectionOf(campaign);
 
     /// <summary>The procedure of one of its families: the family's own, or else the campaign's.</summary>
     /// <exception cref="RefusedException">This version of the program does not have it.</exception>
@@ -35,7 +35,7 @@ public static class FamilyVerdict
     {
         ArgumentNullException.ThrowIfNull(campaign);
         ArgumentNullException.ThrowIfNull(members);
-        return new FamilyJudgement(campaign, members).Verdict();
+        return OnlineVerdict.ProcedureOf(campaign) is not null ? OnlineVerdict.Judge(campaign, members) : new FamilyJudgement(campaign, members).Verdict();
     }
 
     /// <summary>What a campaign would look like if every family of it had one correction: for comparison, since the sealed ones alone decide.</summary>
@@ -58,6 +58,11 @@ public static class FamilyVerdict
     {
         ArgumentNullException.ThrowIfNull(experiments);
         ArgumentNullException.ThrowIfNull(verdict);
+        if (verdict.Batch is { } batch)
+        {
+            return OnlineVerdict.Apply(experiments, verdict, batch);
+        }
+
         Func<ExperimentResult, FamilyStanding> familyOf = FamiliesOf(verdict);
         var judged = new ExperimentResult[experiments.Count];
         int next = 0;

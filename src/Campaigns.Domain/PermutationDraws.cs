@@ -43,4 +43,8 @@ public static class PermutationDraws
         byte[] hash = SHA256.HashData(Encoding.UTF8.GetBytes($"{campaign}\n{experiment}"));
         return System.Buffers.Binary.BinaryPrimitives.ReadUInt64BigEndian(hash);
     }
+
+    /// <summary>The seed where a whole campaign is permuted at once: as that of an experiment, without one.</summary>
+    /// <param name="campaign">Code of the campaign.</param>
+    public static ulong Seed(string campaign) => Seed(campaign, "");
 }

@@ -4,6 +4,7 @@ using Campaigns.Catalog.Plans;
 using Campaigns.Domain;
 using Campaigns.Statistics.Corrections;
 using Campaigns.Statistics.GroupTests;
+using Campaigns.Statistics.Online;
 
 namespace Campaigns.App.Commands;
 
@@ -33,7 +34,7 @@ internal static class CampaignText
         Campaign campaign = standing.Campaign;
         List<string> lines =
         [
-            .. FamilyText.Lines(standing),
+            .. FamilyVerdict.ProcedureOf(campaign) is OnlineProcedure online ? [.. OnlineText.Lines(standing, online), .. FamilyText.Warnings(standing)] : FamilyText.Lines(standing),
             .. TestsOf(tests).Select(test => $"{test.Name}, assumes: {char.ToLowerInvariant(test.Assumes[0])}{test.Assumes[1..]}"),
         ];
         if (campaign.IsExploratory)

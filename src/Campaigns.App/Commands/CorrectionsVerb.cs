@@ -44,11 +44,24 @@ internal sealed class CorrectionsVerb : Verb
                 Cell.Text(c.Key), Cell.Text(c.Name), Cell.Text(CampaignText.RateWords(c.Controls)), Cell.Text(DependenceWords(c.ValidUnder)),
                 Cell.Whole(verdicts[i].SurvivorCount), Cell.Setting(level.Value), Cell.Whole(standing.FamilySize),
                 Cell.Truth(standing.Families.Any(f => f.Correction == c.Key)), Cell.Text(c.Guarantee), Cell.Text(c.Source),
-            }))
+            }).Concat(StandingRow(standing)))
         {
             Above = [FormattableString.Invariant($"{standing.Campaign.Code}: {standing.TestedCount} results in {Of(standing)}, every correction at {(standing.Campaign.JudgedFamilies.Count == 0 ? level.ToString() : "the level of each family")}")],
             Below = ["The sealed correction alone decides what survives; choosing another after seeing this table would undo what a correction is for.", .. InFamilies(standing), .. CampaignText.Deviations(standing.Overview), CampaignText.ReviewLine(standing.Overview)],
         };
+    }
+
+    /// <summary>In a campaign judged as its experiments arrive, the decisions that stand, below the batch corrections.</summary>
+    private static IEnumerable<Cell[]> StandingRow(CampaignStanding standing)
+    {
+        if (OnlineVerdict.ProcedureOf(standing.Campaign) is { } c)
+        {
+            yield return
+            [
+                Cell.Text(c.Key), Cell.Text(c.Name), Cell.Text(CampaignText.RateWords(c.Controls)), Cell.Text(DependenceWords(c.ValidUnder)),
+                Cell.Whole(standing.SurvivorCount), Cell.Setting(standing.Campaign.Level.Value), Cell.Whole(standing.FamilySize), Cell.Truth(true), Cell.Text(c.Guarantee), Cell.Text(c.Source),
+            ];
+        }
     }
 
     private static RowTable ByExperiment(CampaignStanding standing, ExperimentResult[] tested, IReadOnlyList<Correction> shown, CampaignVerdict[] verdicts)

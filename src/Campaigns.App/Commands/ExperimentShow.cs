@@ -44,6 +44,7 @@ internal static class ExperimentShow
                 $"{standing.Campaign.Code} / {result.Plan.Code}  {result.Plan.Title}",
                 $"Response: {(result.Plan.Response.Length > 0 ? result.Plan.Response : "not named")}{unit}. Status: {result.Status.Sentence()}.{Missing(detail)}",
                 .. result.Amendments.Select(ExperimentWording.Deviation),
+                .. OnlineText.Decision(result.Entry) is { } decision ? [decision] : (string[])[],
                 .. detail.Analysis.UnitsNote is { } note ? [note] : (string[])[],
             ],
             Below = GroupNotes(detail),

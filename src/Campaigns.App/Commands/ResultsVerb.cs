@@ -1,5 +1,6 @@
 using System.CommandLine;
 using Campaigns.App.Output;
+using Campaigns.App.Wording;
 using Campaigns.Catalog.Results;
 using Campaigns.Domain;
 
@@ -23,7 +24,7 @@ internal sealed class ResultsVerb : Verb
         session.Print(new RowTable([.. WithFamily(standing.Campaign)], standing.Experiments.Select(Row))
         {
             Above = [$"{standing.Campaign.Code}: {CampaignText.Goal(standing.Campaign)}"],
-            Below = [.. CampaignText.Footnotes(standing.Overview, standing.Experiments.Select(e => e.Plan.Test)), .. UnitNotes.Of(standing.Experiments)],
+            Below = [.. OnlineText.WithoutLevel(standing.Experiments.Select(e => e.Entry).OfType<StreamEntry>()) is { } late ? [late] : (string[])[], .. CampaignText.Footnotes(standing.Overview, standing.Experiments.Select(e => e.Plan.Test)), .. UnitNotes.Of(standing.Experiments)],
         });
         return ExitCode.Done;
     }
@@ -35,6 +36,7 @@ internal sealed class ResultsVerb : Verb
         new("survives", "survives"), new("status", "status", GivesWay: 1),
         new("ln_p", null, true), new("eta_squared", "eta squared", true, 4), new("omega_squared", null, true), new("title", "title", GivesWay: 3), new("amendments", null),
         new("specimens", null, true), new("epsilon_squared", null, true), new("cohen_f", null, true), new("arrangements", null, true), new("seed", null), new("follow_up", null),
+        new("standing_level", null, true), new("batch_adjusted_p", null, true), new("batch_survives", null),
         new("family", null), new("family_size", null, true), new("family_tested", null, true), new("level", null, true),
     ];
 
@@ -51,6 +53,7 @@ internal sealed class ResultsVerb : Verb
         Cell.Text(string.Join("; ", result.Amendments)),
         Cell.Whole(result.SpecimenCount), Cell.Number(EffectSection.EpsilonSquared(result)), Cell.Number(EffectSection.CohenF(result)),
         Cell.Whole(result.Resampling?.Arrangements), ExperimentSections.Seed(result), Cell.Text(result.Plan.FollowUp),
+        Cell.Number(result.GivenLevel), Cell.P(result.BatchAdjustedP), Cell.Truth(result.BatchSurvives),
         Cell.Text(result.Family?.Name), Cell.Whole(result.Family?.Size), Cell.Whole(result.Family?.Tested), result.Family is { } family ? Cell.Setting(family.Level.Value) : Cell.Empty,
     ];
 }

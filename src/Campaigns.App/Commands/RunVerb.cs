@@ -1,5 +1,6 @@
 using System.CommandLine;
 using Campaigns.App.Output;
+using Campaigns.App.Wording;
 using Campaigns.Catalog.Exporting;
 using Campaigns.Catalog.Loading;
 using Campaigns.Catalog.Plans;
@@ -121,6 +122,7 @@ internal sealed class RunVerb : Verb
         ErrorRate = description.ErrorRate,
         Level = description.Level,
         Correction = description.Correction,
+        Online = description.Online,
         DefaultTest = description.Test,
         DefaultFollowUp = description.FollowUp,
         OpenedAt = now,
@@ -133,6 +135,7 @@ internal sealed class RunVerb : Verb
             ("errorRate", known.ErrorRate.Word(), description.ErrorRate.Word()),
             ("level", known.Level.ToString(), description.Level.ToString()),
             ("correction", known.Correction, description.Correction),
+            .. OnlineText.Facts(known.Online).Zip(OnlineText.Facts(description.Online), (a, b) => (a.Key, a.Text, b.Text)),
             ("test", known.DefaultTest, description.Test),
             ("followUp", known.DefaultFollowUp, description.FollowUp),
         ];

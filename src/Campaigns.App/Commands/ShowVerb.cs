@@ -62,6 +62,7 @@ internal sealed class ShowVerb : Verb
             ("amendments", "amendments", Cell.Whole(loads.Count(l => l.AmendmentReason is not null))),
             ("exclusions", "left out", Cell.Whole(ExclusionStore.Standing(new ExclusionStore(catalog).All(campaign.Code)))),
             ("reviews", "reviews", Cell.Whole(standing.LastReview?.Number ?? 0)),
+            ("streams", "streams", Cell.Whole(campaign.Streams.Count == 0 ? null : campaign.Streams.Count)),
             ("families", "families", Cell.Whole(standing.Families.Count)),
             ("review_interim", "", Cell.Truth(standing.LastReview?.IsInterim)),
         };

@@ -5,6 +5,7 @@ using Campaigns.Catalog.Measurements;
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Providers;
 using Campaigns.Catalog.Results;
+using Campaigns.Catalog.Streams;
 using Campaigns.Domain;
 using Campaigns.Statistics.Probability;
 
@@ -28,6 +29,12 @@ public sealed class CampaignExport(Catalog catalog)
 
     /// <summary>Name of the file of observations left out of the analysis.</summary>
     public const string ExclusionsName = "exclusions.csv";
+
+    /// <summary>Name of the file of streams, where experiments are judged as they arrive.</summary>
+    public const string StreamsName = "streams.csv";
+
+    /// <summary>Name of the file of standing decisions.</summary>
+    public const string DecisionsName = "decisions.csv";
 
     /// <summary>Writes the folder whole: it is made beside its place and moved there when it is finished.</summary>
     /// <param name="standing">The campaign as it stands.</param>
@@ -66,6 +73,12 @@ public sealed class CampaignExport(Catalog catalog)
             if (new ExclusionStore(catalog).All(standing.Campaign.Code) is { Count: > 0 } decisions)
             {
                 WriteFile(draft, ExclusionsName, writer => WriteExclusions(decisions, writer));
+            }
+
+            if (standing.Campaign.Streams.Count > 0)
+            {
+                WriteFile(draft, StreamsName, writer => StreamFiles.WriteStreams(standing.Campaign, writer));
+                WriteFile(draft, DecisionsName, writer => StreamFiles.WriteDecisions(new StreamStore(catalog).Decisions(standing.Campaign.Code), writer, textOfP));
             }
 
             WriteFile(draft, ReviewsName, writer => WriteReviews(standing, writer, textOfP));
@@ -110,10 +123,39 @@ public sealed class CampaignExport(Catalog catalog)
             json.WriteString("correction", campaign.Correction);
             json.WriteString("test", campaign.DefaultTest);
             json.WriteString("followUp", campaign.DefaultFollowUp);
+            WriteOnline(campaign.Online, json);
             json.WriteEndObject();
         }
 
         writer.WriteLine(Encoding.UTF8.GetString(buffer.WrittenSpan));
+    }
+
+    private static void WriteOnline(OnlineOptions? online, Utf8JsonWriter json)
+    {
+        if (online?.Horizon is { } horizon)
+        {
+            if (horizon == 0)
+            {
+                json.WriteString("horizon", "none");
+            }
+            else
+            {
+                json.WriteNumber("horizon", horizon);
+            }
+        }
+
+        if (online?.Shape is { } shape)
+        {
+            json.WriteString("shape", shape);
+        }
+
+        foreach ((string name, double? value) in new[] { ("initialWealth", online?.InitialWealth), ("lambda", online?.Lambda), ("tau", online?.Tau) })
+        {
+            if (value is { } given)
+            {
+                json.WriteNumber(name, given);
+            }
+        }
     }
 
     private static void WritePlan(CampaignStanding standing, TextWriter writer)

@@ -1,4 +1,5 @@
 using Campaigns.Catalog.Providers;
+using Campaigns.Catalog.Streams;
 using Campaigns.Domain;
 using Campaigns.Statistics.Probability;
 
@@ -95,9 +96,15 @@ public sealed class CampaignStore(Catalog catalog)
             throw new RefusedException($"The campaign '{code}' has no experiments to seal; register them with 'campaigns plan {code} FILE', or load measurements to explore without a plan.");
         }
 
+        OnlineVerdict.RefuseFamilies(stored.Campaign, plan);
         Campaign campaign = stored.Campaign with { Families = new FamilyStore(catalog).Settle(stored, plan) };
         using SqliteStatement update = catalog.Prepare("UPDATE campaigns SET sealed_at = ?2, plan_digest = ?3 WHERE id = ?1");
         update.Bind(1, stored.Id).Bind(2, catalog.Now).Bind(3, PlanDigest.Of(campaign, plan)).Run();
+        if (OnlineVerdict.ProcedureOf(stored.Campaign) is { } procedure)
+        {
+            new StreamStore(catalog).StartFirst(stored, procedure);
+        }
+
         return Get(code);
     });
 
@@ -112,7 +119,12 @@ public sealed class CampaignStore(Catalog catalog)
 
     private StoredCampaign Complete(StoredCampaign stored) => stored with
     {
-        Campaign = stored.Campaign with { Families = new FamilyStore(catalog).Read(stored.Id), Online = new OnlineSettingsStore(catalog).Read(stored.Id) },
+        Campaign = stored.Campaign with
+        {
+            Families = new FamilyStore(catalog).Read(stored.Id),
+            Online = new OnlineSettingsStore(catalog).Read(stored.Id),
+            Streams = OnlineVerdict.ProcedureOf(stored.Campaign) is null ? [] : new StreamStore(catalog).Read(stored.Id),
+        },
     };
 
     private static StoredCampaign Row(SqliteStatement row) => new(row.Integer(0), new Campaign

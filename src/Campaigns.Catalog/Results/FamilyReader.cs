@@ -1,5 +1,6 @@
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Providers;
+using Campaigns.Catalog.Streams;
 using Campaigns.Domain;
 using Campaigns.Statistics.Probability;
 
@@ -59,13 +60,18 @@ internal sealed class FamilyReader(Catalog catalog)
     /// <param name="testedOnly">Whether the tested ones alone are counted.</param>
     public FamilyMembers Members(StoredCampaign stored, FamilyColumns columns, bool testedOnly)
     {
-        if (FamilyTally.IsNeeded(stored.Campaign))
+        FamilyMembers members = Counted(stored, columns, testedOnly);
+        if (OnlineVerdict.ProcedureOf(stored.Campaign) is null)
         {
-            return Tally(stored, columns).Members(testedOnly);
+            return members;
         }
 
-        FamilyMembers members = FamilyMembers.OneFamily(columns.PMemory, FamilySize(stored.Id));
-        return testedOnly ? members with { Families = [members.Families[0] with { Size = columns.Count }] } : members;
+        Dictionary<long, StreamEntry> entries = StreamEntries.Read(catalog, stored.Id);
+        return members with
+        {
+            Entries = [.. columns.ExperimentIds.ToArray().Select(id => entries.GetValueOrDefault(id))],
+            StandingSurvivors = entries.Values.Count(e => e.Survives == true),
+        };
     }
 
     /// <summary>Draws of the campaign's permutation tests: as many as the strictest threshold of its families asks for.</summary>
@@ -79,6 +85,17 @@ internal sealed class FamilyReader(Catalog catalog)
 
         CampaignVerdict planned = FamilyVerdict.Judge(campaign, Tally(stored, new FamilyColumns(0)).Members(testedOnly: false));
         return PermutationDraws.Count(planned.Families);
+    }
+
+    private FamilyMembers Counted(StoredCampaign stored, FamilyColumns columns, bool testedOnly)
+    {
+        if (FamilyTally.IsNeeded(stored.Campaign))
+        {
+            return Tally(stored, columns).Members(testedOnly);
+        }
+
+        FamilyMembers members = FamilyMembers.OneFamily(columns.PMemory, FamilySize(stored.Id));
+        return testedOnly ? members with { Families = [members.Families[0] with { Size = columns.Count }] } : members;
     }
 
     /// <summary>One scan of the plan, in step with the columns: O(m).</summary>

@@ -3,6 +3,7 @@ using Campaigns.App.Output;
 using Campaigns.App.Wording;
 using Campaigns.Domain;
 using Campaigns.Statistics.Corrections;
+using Campaigns.Statistics.Online;
 
 namespace Campaigns.App.Dashboard.Model;
 
@@ -12,7 +13,7 @@ public sealed class CampaignHeading
     /// <summary>Words a campaign's heading.</summary>
     /// <param name="standing">The campaign as it stands.</param>
     /// <param name="correction">Its correction; null where the program does not know it.</param>
-    public CampaignHeading(CampaignStanding standing, Correction? correction)
+    public CampaignHeading(CampaignStanding standing, ErrorProcedure? correction)
     {
         Campaign campaign = standing.Campaign;
         Code = campaign.Code;
@@ -28,7 +29,10 @@ public sealed class CampaignHeading
         ReviewTrouble = TroubleWith(standing);
         Review = standing.LastReview is not { } review ? "no review stored yet"
             : $"review {Count(review.Number)} of {review.At.UtcDateTime.ToString("yyyy-MM-dd", CultureInfo.InvariantCulture)} " + (ReviewTrouble ?? "is up to date");
-        Meaning = campaign.JudgedFamilies.Count > 0 ? string.Join(" ", [.. FamilyText.Guarantees(standing.Overview), FamilyText.Together(standing.Overview)]) : correction?.Guarantee ?? $"This program knows no correction named {campaign.Correction}: what it guarantees cannot be said here.";
+        string stands = correction is OnlineProcedure ? "Each experiment is decided when it arrives, and its decision stands. " : "";
+        Meaning = campaign.JudgedFamilies.Count > 0 ? string.Join(" ", [.. FamilyText.Guarantees(standing.Overview), FamilyText.Together(standing.Overview)])
+            : correction is not null ? stands + correction.Guarantee
+            : $"This program knows no correction named {campaign.Correction}: what it guarantees cannot be said here.";
         ValidUnder = correction is null ? null : DependenceWords(correction.ValidUnder);
     }
 

@@ -30,6 +30,11 @@ internal static class ResultPainter
             sheet.Line($"p {NumberText.P(p)}" + (result.AdjustedP is { } adjusted ? $", adjusted {NumberText.P(adjusted)}" : ""));
         }
 
+        if (OnlineText.Decision(result.Entry) is { } decision)
+        {
+            sheet.Line(decision);
+        }
+
         if (result.Family is { Name.Length: > 0 } family)
         {
             sheet.Line($"family {family.Name}: level {FamilyText.Level(family.Level)}" + (family.Waits is { } waits ? $", {(family.IsOpen ? "open" : "closed")}, {waits}" : ""), Ink.Quiet);
