@@ -1,5 +1,10 @@
 using System.Globalization;
+using Campaigns.App.Dashboard.Model;
+using Campaigns.App.Dashboard.Paint;
 using Campaigns.App.Tests.Dashboard;
+using Campaigns.Catalog.Results;
+using Campaigns.Domain;
+using Campaigns.Statistics.Corrections;
 
 namespace Campaigns.App.Tests.Commands;
 
@@ -98,6 +103,21 @@ public sealed class FamilyCampaignTests : IDisposable
         _place.Run("families", "F", families).Refused(3, "is sealed since");
         _place.Run("families", "G").Refused(3, "no campaign 'G'");
         _place.Run("families", "G", families).Refused(3, "no campaign 'G'");
+    }
+
+    [Fact]
+    public void The_dashboard_tells_families_and_draws_no_boundary_for_all_of_them()
+    {
+        _place.Run("run", Folder(0.2)).Well();
+        using var catalog = Campaigns.Catalog.Catalog.Open(_place.Catalog, _place.Clock);
+        CampaignStanding standing = new StandingReader(catalog).Read("F");
+        var heading = new CampaignHeading(standing, CorrectionRegistry.Find("holm"));
+        Assert.Equal(["familywise error rate", "level 0.05", "Holm, Weighted Holm and Hommel, in 3 families"], heading.Held);
+        Assert.Equal("3 families, 1 closed", heading.Family);
+        Assert.Contains("Over all families together", heading.Meaning, StringComparison.Ordinal);
+        var ranking = new Ranking(standing, CorrectionRegistry.Find("holm"));
+        Assert.False(ranking.HasBoundary);
+        Assert.StartsWith("Each family has a boundary of its own", RankingPlot.BoundaryText(ranking), StringComparison.Ordinal);
     }
 
     [Fact]
