@@ -35,9 +35,11 @@ public sealed record CampaignRisk(
         PValue? largest = null;
         foreach (int i in survivors)
         {
-            // A standing decision outlives the result on which it was made.
-            PValue p = (experiments[i].P ?? experiments[i].Entry?.P)!.Value;
-            largest = largest is { } before && before > p ? before : p;
+            // A decision that stands survives a change of its data, which takes the result away: then the p counts on which it was made.
+            if ((experiments[i].P ?? experiments[i].Entry?.P) is { } p)
+            {
+                largest = largest is { } before && before > p ? before : p;
+            }
         }
 
         PValue[] tested = [.. experiments.Where(e => e.P is not null).Select(e => e.P!.Value)];
