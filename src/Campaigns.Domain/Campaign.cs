@@ -27,8 +27,14 @@ public sealed record Campaign
     /// <summary>The families that the plan names, in its order; empty where all experiments are one family.</summary>
     public IReadOnlyList<Family> Families { get; init; } = [];
 
+    /// <summary>The families by which its experiments are judged: those of the sealed plan. Empty for one family, and before the seal, when nothing is judged yet.</summary>
+    public IReadOnlyList<Family> JudgedFamilies => IsSealed ? Families : [];
+
     /// <summary>Settings of an online procedure; null for a batch correction, and where all are left at their defaults.</summary>
     public OnlineOptions? Online { get; init; }
+
+    /// <summary>The streams of a campaign that is judged as experiments arrive, oldest first; empty before its seal and for a batch correction.</summary>
+    public IReadOnlyList<StreamHead> Streams { get; init; } = [];
 
     /// <summary>Key of the test for experiments whose plan names none.</summary>
     public string DefaultTest { get; init; } = "f";

@@ -37,6 +37,14 @@ public sealed record CampaignStanding(
     /// <summary>The families in figures; one for a campaign of one family.</summary>
     public required IReadOnlyList<FamilyStanding> Families { get; init; }
 
+    /// <summary>The family of one of its experiments.</summary>
+    /// <param name="experiment">The experiment.</param>
+    public FamilyStanding FamilyOf(ExperimentResult experiment)
+    {
+        ArgumentNullException.ThrowIfNull(experiment);
+        return experiment.Family ?? Families[0];
+    }
+
     /// <summary>Experiments whose values were changed after their test, so that they have no result before a new one.</summary>
     public int AwaitingNewTest { get; init; }
 }

@@ -11,6 +11,9 @@ public sealed record CampaignVerdict(IReadOnlyList<PValue> Adjusted, IReadOnlyLi
     /// <summary>For each p-value the place of its family, from 0; empty where there is one.</summary>
     public ReadOnlyMemory<int> FamilyOf { get; init; }
 
+    /// <summary>Where standing decisions make the verdict, the batch view beside them; else null.</summary>
+    public CampaignVerdict? Batch { get; init; }
+
     /// <summary>Survivors of all families.</summary>
     public int SurvivorCount => Families.Sum(f => f.Survivors);
 

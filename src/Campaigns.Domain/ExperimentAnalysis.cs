@@ -37,7 +37,7 @@ public sealed record ExperimentAnalysis
     /// <summary>The smallest difference between two group means that the design would have found with a power of 0.8 at the campaign's level alone, in units of the response; null within blocks, and where nothing varies.</summary>
     public double? Detectable { get; init; }
 
-    /// <summary>The same at the campaign's strictest threshold, its level over the size of the family.</summary>
+    /// <summary>The same at the strictest threshold, the level of its family over the family's size.</summary>
     public double? DetectableAtStrictest { get; init; }
 
     /// <summary>Analyses one experiment in depth.</summary>
@@ -45,11 +45,12 @@ public sealed record ExperimentAnalysis
     /// <param name="labels">Label of each group.</param>
     /// <param name="readings">Its values.</param>
     /// <param name="campaign">Names the level.</param>
-    /// <param name="familySize">Experiments in the campaign's family.</param>
+    /// <param name="familySize">Experiments in its family.</param>
     /// <param name="tested">The result of the planned test; without one nothing is compared.</param>
     /// <param name="places">Where each value came from, in words; null where that is not known.</param>
+    /// <param name="familyLevel">The level of its family; null for the campaign's.</param>
     /// <remarks>Cost: sorting, O(N log N), and some 0.1 ms for the tails of effects and comparisons.</remarks>
-    public static ExperimentAnalysis Of(PlannedExperiment plan, IReadOnlyList<string> labels, GroupedSample readings, Campaign campaign, int familySize, Tested? tested, IReadOnlyList<string>? places = null)
+    public static ExperimentAnalysis Of(PlannedExperiment plan, IReadOnlyList<string> labels, GroupedSample readings, Campaign campaign, int familySize, Tested? tested, IReadOnlyList<string>? places = null, SignificanceLevel? familyLevel = null)
     {
         ArgumentNullException.ThrowIfNull(plan);
         ArgumentNullException.ThrowIfNull(labels);
@@ -78,7 +79,7 @@ public sealed record ExperimentAnalysis
             Letters = followUp is { } f && f.Comparisons.Any(c => c.P is not null) ? CompactLetters.Of(f.Estimates, f.Comparisons, level) : null,
             Effects = tested?.Variation is { } table && level.Value < 0.5 ? EffectSizes.Of(table, level) : null,
             Detectable = DetectableOf(units, tested, level),
-            DetectableAtStrictest = DetectableOf(units, tested, new SignificanceLevel(level.Value / familySize)),
+            DetectableAtStrictest = DetectableOf(units, tested, new SignificanceLevel((familyLevel ?? level).Value / familySize)),
         };
     }
 

@@ -42,6 +42,9 @@ public sealed record ExperimentResult
     /// <summary>The family in which it is corrected, in figures; null where it was read without its campaign.</summary>
     public FamilyStanding? Family { get; init; }
 
+    /// <summary>Its place in a stream; null for a batch correction, and before it was registered.</summary>
+    public StreamEntry? Entry { get; init; }
+
     /// <summary>The level that an online procedure gave it before its p-value was seen; null for a batch correction, and before it was registered.</summary>
     public double? GivenLevel { get; init; }
 

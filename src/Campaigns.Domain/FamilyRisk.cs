@@ -69,7 +69,6 @@ public static class FamilyRisk
     /// <exception cref="ArgumentOutOfRangeException">A negative number of tests.</exception>
     /// <remarks>
     /// The terms on the side of the tail that is the smaller are added up from the one nearest to the middle, whose value comes without cancellation from its deviance.
-    /// Source of the first term: C. Loader (2000), Fast and Accurate Computation of Binomial Probabilities.
     /// </remarks>
     public static double AtLeastIfIndependent(int count, int tests, SignificanceLevel level)
     {
@@ -83,7 +82,7 @@ public static class FamilyRisk
         double sum = 0;
         if (count > tests * level.Value)
         {
-            double term = Exactly(count, tests, level.Value);
+            double term = BinomialTerm.Of(count, tests, level.Value);
             for (int k = count; term > sum * 1e-18; k++)
             {
                 sum += term;
@@ -93,7 +92,7 @@ public static class FamilyRisk
             return Math.Min(1, sum);
         }
 
-        double below = Exactly(count - 1, tests, level.Value);
+        double below = BinomialTerm.Of(count - 1, tests, level.Value);
         for (int k = count - 1; below > sum * 1e-18; k--)
         {
             sum += below;
@@ -101,44 +100,5 @@ public static class FamilyRisk
         }
 
         return Math.Max(0, 1 - sum);
-    }
-
-    /// <summary>The probability of exactly k false positives, for 0 &lt; k; Loader's saddle-point form.</summary>
-    private static double Exactly(int k, int tests, double level)
-    {
-        if (k == tests)
-        {
-            return Math.Pow(level, tests);
-        }
-
-        double failures = tests - k;
-        double exponent = StirlingError.Of(tests) - StirlingError.Of(k) - StirlingError.Of(failures)
-            - Deviance(k, tests * level) - Deviance(failures, tests * (1 - level));
-        return Math.Sqrt(tests / (2 * Math.PI * k * failures)) * Math.Exp(exponent);
-    }
-
-    /// <summary>x ln(x / mean) + mean - x, without cancellation where x is near the mean.</summary>
-    private static double Deviance(double x, double mean)
-    {
-        if (Math.Abs(x - mean) >= 0.1 * (x + mean))
-        {
-            return (x * Math.Log(x / mean)) + mean - x;
-        }
-
-        // With v = (x - mean) / (x + mean), ln(x / mean) = 2 (v + v^3 / 3 + v^5 / 5 + ...).
-        double v = (x - mean) / (x + mean);
-        double sum = (x - mean) * v;
-        double power = 2 * x * v;
-        for (int j = 1; ; j++)
-        {
-            power *= v * v;
-            double next = sum + (power / ((2 * j) + 1));
-            if (next == sum)
-            {
-                return sum;
-            }
-
-            sum = next;
-        }
     }
 }

@@ -18,6 +18,9 @@ public sealed record FamilyStanding(string Name, string Correction, Significance
     /// <summary>What it waits on, in a clause; null for a family that is open from the start.</summary>
     public string? Waits { get; init; }
 
-    /// <summary>Experiments of the family that share a control, batch or instrument with another one.</summary>
+    /// <summary>Sum of the weights of its experiments; null where its correction takes none.</summary>
+    public double? WeightTotal { get; init; }
+
+    /// <summary>Experiments of the family that share a control, batch or instrument with another one; counted where its procedure is proved for independent experiments alone, else 0.</summary>
     public int Sharing { get; init; }
 }

@@ -1,5 +1,4 @@
 using Campaigns.Statistics.Corrections;
-using Campaigns.Statistics.Probability;
 
 namespace Campaigns.Domain;
 
@@ -8,7 +7,16 @@ public static class FamilyVerdict
 {
     /// <summary>The procedure by which a campaign is judged: its batch correction, or its online procedure.</summary>
     /// <exception cref="RefusedException">This version of the program does not have it.</exception>
-    public static ErrorProcedure ProcedureOf(Campaign campaign) => CorrectionOf(campaign);
+    public static ErrorProcedure ProcedureOf(Campaign campaign) => OnlineVerdict.ProcedureOf(campaign) is { } online ? online : CorrectionOf(campaign);
+
+    /// <summary>The procedure of one of its families: the family's own, or else the campaign's.</summary>
+    /// <exception cref="RefusedException">This version of the program does not have it.</exception>
+    public static ErrorProcedure ProcedureOf(Campaign campaign, Family family)
+    {
+        ArgumentNullException.ThrowIfNull(campaign);
+        ArgumentNullException.ThrowIfNull(family);
+        return family.Correction is { } own ? CorrectionOf(campaign with { Correction = own }) : ProcedureOf(campaign);
+    }
 
     /// <summary>The batch correction that a campaign names.</summary>
     /// <exception cref="RefusedException">This version of the program does not have it.</exception>
@@ -22,18 +30,24 @@ public static class FamilyVerdict
     /// <summary>Adjusted p-values and survivors of a campaign.</summary>
     /// <param name="campaign">Level, correction, families.</param>
     /// <param name="members">Its hypotheses.</param>
-    /// <returns>The verdict. O(m log m).</returns>
+    /// <returns>The verdict: each family corrected at its level; in one that its gate keeps closed nothing survives and every adjusted p-value is 1. O(m log m).</returns>
     public static CampaignVerdict Judge(Campaign campaign, FamilyMembers members)
     {
         ArgumentNullException.ThrowIfNull(campaign);
         ArgumentNullException.ThrowIfNull(members);
-        FamilyCount count = members.Families[0];
-        PValue[] adjusted = CorrectionOf(campaign).Adjust(RankedFamily.Of(members.P.Span, count.Size));
-        bool[] survives = [.. adjusted.Select(p => campaign.Level.Rejects(p))];
-        return new CampaignVerdict(
-            adjusted,
-            survives,
-            [new FamilyStanding("", campaign.Correction, campaign.Level, count.Size, count.Planned, adjusted.Length, survives.Count(s => s))]);
+        return OnlineVerdict.ProcedureOf(campaign) is not null ? OnlineVerdict.Judge(campaign, members) : new FamilyJudgement(campaign, members).Verdict();
+    }
+
+    /// <summary>What a campaign would look like if every family of it had one correction: for comparison, since the sealed ones alone decide.</summary>
+    /// <param name="campaign">Level, families.</param>
+    /// <param name="experiments">Every experiment of the campaign.</param>
+    /// <param name="correction">The correction in the place of the sealed ones.</param>
+    public static CampaignVerdict JudgeBy(Campaign campaign, IReadOnlyList<ExperimentResult> experiments, Correction correction)
+    {
+        ArgumentNullException.ThrowIfNull(campaign);
+        ArgumentNullException.ThrowIfNull(correction);
+        Campaign other = campaign with { Correction = correction.Key, Families = [.. campaign.Families.Select(f => f with { Correction = null })] };
+        return Judge(other, FamilyMembers.Of(other, experiments));
     }
 
     /// <summary>The experiments with their adjusted p-values, their families and whether they survive.</summary>
@@ -44,13 +58,19 @@ public static class FamilyVerdict
     {
         ArgumentNullException.ThrowIfNull(experiments);
         ArgumentNullException.ThrowIfNull(verdict);
+        if (verdict.Batch is { } batch)
+        {
+            return OnlineVerdict.Apply(experiments, verdict, batch);
+        }
+
+        Func<ExperimentResult, FamilyStanding> familyOf = FamiliesOf(verdict);
         var judged = new ExperimentResult[experiments.Count];
         int next = 0;
         for (int i = 0; i < judged.Length; i++)
         {
             ExperimentResult experiment = experiments[i];
             judged[i] = experiment.P is null
-                ? experiment with { Family = FamilyOf(experiment, verdict) }
+                ? experiment with { Family = familyOf(experiment) }
                 : experiment with { AdjustedP = verdict.Adjusted[next], Survives = verdict.Survives[next], Family = verdict.FamilyAt(next++) };
         }
 
@@ -64,6 +84,14 @@ public static class FamilyVerdict
     public static IReadOnlyList<ExperimentResult> Apply(Campaign campaign, IReadOnlyList<ExperimentResult> experiments) =>
         Apply(experiments, Judge(campaign, FamilyMembers.Of(campaign, experiments)));
 
-    private static FamilyStanding FamilyOf(ExperimentResult experiment, CampaignVerdict verdict) =>
-        verdict.Families.FirstOrDefault(f => f.Name == (experiment.Plan.Family ?? "")) ?? verdict.Families[0];
+    private static Func<ExperimentResult, FamilyStanding> FamiliesOf(CampaignVerdict verdict)
+    {
+        if (verdict.Families.Count == 1)
+        {
+            return _ => verdict.Families[0];
+        }
+
+        var byName = verdict.Families.ToDictionary(f => f.Name, StringComparer.Ordinal);
+        return experiment => byName[experiment.Plan.Family ?? ""];
+    }
 }

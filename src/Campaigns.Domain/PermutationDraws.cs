@@ -27,6 +27,14 @@ public static class PermutationDraws
         return (int)draws;
     }
 
+    /// <summary>Draws a test in a campaign of families: as many as the strictest of their thresholds asks for.</summary>
+    /// <param name="families">Its families.</param>
+    public static int Count(IReadOnlyList<FamilyStanding> families)
+    {
+        ArgumentNullException.ThrowIfNull(families);
+        return families.Max(f => Count(f.Level, f.Planned));
+    }
+
     /// <summary>The seed of an experiment: the first 64 bits of SHA-256 of the campaign's and the experiment's names, so that it is the same on every day and on every machine.</summary>
     /// <param name="campaign">Code of the campaign.</param>
     /// <param name="experiment">Code of the experiment.</param>
@@ -35,4 +43,8 @@ public static class PermutationDraws
         byte[] hash = SHA256.HashData(Encoding.UTF8.GetBytes($"{campaign}\n{experiment}"));
         return System.Buffers.Binary.BinaryPrimitives.ReadUInt64BigEndian(hash);
     }
+
+    /// <summary>The seed where a whole campaign is permuted at once: as that of an experiment, without one.</summary>
+    /// <param name="campaign">Code of the campaign.</param>
+    public static ulong Seed(string campaign) => Seed(campaign, "");
 }

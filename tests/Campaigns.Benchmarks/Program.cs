@@ -10,6 +10,7 @@ const string Usage = """
     arrive CATALOG CODE N                        milliseconds of N arrivals of one more experiment, inside one process
     time                                         milliseconds of a few large kernels
     errors [REPLICATES]                          how often each omnibus test rejects where all means are equal (20000 experiments a design); Markdown
+    campaign-errors [REPLICATES]                 the error rates that every procedure over a campaign really has (20000 campaigns a scenario); Markdown
     kernels [BENCHMARKDOTNET OPTION ...]         careful benchmarks of the hot kernels; --filter '*' runs them all
     """;
 
@@ -33,6 +34,13 @@ switch (args)
     case ["errors", string replicatesText]
         when int.TryParse(replicatesText, NumberStyles.None, CultureInfo.InvariantCulture, out int replicates) && replicates > 0:
         ErrorRates.Print(replicates, Console.Out);
+        return 0;
+    case ["campaign-errors"]:
+        CampaignErrors.Print(CampaignErrors.UsualReplicates, Console.Out);
+        return 0;
+    case ["campaign-errors", string campaignsText]
+        when int.TryParse(campaignsText, NumberStyles.None, CultureInfo.InvariantCulture, out int campaigns) && campaigns > 0:
+        CampaignErrors.Print(campaigns, Console.Out);
         return 0;
     case ["kernels", .. string[] options]:
         BenchmarkSwitcher.FromAssembly(typeof(CorrectionKernels).Assembly).Run(options);

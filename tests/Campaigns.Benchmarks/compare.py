@@ -220,7 +220,9 @@ class Comparison:
     def permutations(self):
         a, b = in_turn(lambda _: self.figures([self.benchmarks, "time"]), lambda _: self.figures([DEBIAN_PYTHON, PEERS / "permutations.py"]), 3)
         for key, what, target, reach in [("permute-one", "permutation F of one experiment / the same in NumPy", 0.2, 0.025),
-                                         ("permute-shared", "permutation F of 200 experiments / matrix products in NumPy", 0.2, 0.02)]:
+                                         ("permute-shared", "permutation F of 200 experiments / matrix products in NumPy", 0.2, 0.02),
+                                         ("permute-max-t", "step-down maxT of 200 responses, one core / matrix products in NumPy", 0.5, 0.1),
+                                         ("permute-min-p", "step-down minP of 200 responses, one core / sorted columns in NumPy", 1, 0.3)]:
             ratio = statistics.median(x[key] / y[key] for x, y in zip(a, b))
             self.row(what, ratio, target, reach, f"{statistics.median(x[key] for x in a):.0f} ms / {statistics.median(y[key] for y in b):.0f} ms")
 

@@ -82,6 +82,47 @@ public sealed class ComparisonVerdictTests
         Assert.Contains("level 0.05/6", Verdict(ErrorRate.Familywise, 6, 2).Guarantee, StringComparison.Ordinal);
     }
 
+    // By hand: family a 0.01 x 3/2 = 0.015, family b 0.01 x 4/1 = 0.04.
+    [Fact]
+    public void Under_false_discovery_control_a_family_pays_for_its_own_selection()
+    {
+        var verdict = new ComparisonVerdict(Campaign(ErrorRate.FalseDiscovery), [Standing("a", 0.05, 3, 2), Standing("b", 0.02, 4, 1)]);
+        Assert.Equal((0.015, true), Judged(verdict, "a", 0.01));
+        Assert.Equal((0.04, false), Judged(verdict, "b", 0.01));
+        Assert.Contains("In the family 'b' comparisons are claimed only inside the 1 surviving of 4 experiments, at level 0.02 x 1/4", verdict.Guarantee, StringComparison.Ordinal);
+    }
+
+    // By hand: 0.002 x 3, and in b by the weights 0.002 x 8/2.
+    [Fact]
+    public void Under_familywise_control_an_experiment_has_the_share_of_its_weight()
+    {
+        var verdict = new ComparisonVerdict(Campaign(ErrorRate.Familywise), [Standing("a", 0.03, 3, 2), Standing("b", 0.02, 4, 1) with { WeightTotal = 8 }]);
+        Assert.Equal((0.006, true), Judged(verdict, "a", 0.002, weight: 2));
+        Assert.Equal((0.008, true), Judged(verdict, "b", 0.002, weight: 2));
+        Assert.Equal((0.016, true), Judged(verdict, "b", 0.002));
+        Assert.Equal((1.0, false), Judged(verdict, "b", 1e-300, weight: 0));
+        Assert.Contains("each experiment's at level 0.02 times its weight over 8", verdict.Guarantee, StringComparison.Ordinal);
+    }
+
+    // Two families at 0.05 each, the second behind a gate "all": the levels of comparisons are halved, 0.002 x 3 x 2.
+    [Fact]
+    public void Comparisons_pay_for_families_behind_a_gate_too()
+    {
+        var verdict = new ComparisonVerdict(Campaign(ErrorRate.Familywise), [Standing("a", 0.05, 3, 3), Standing("b", 0.05, 3, 1)]);
+        Assert.Equal((0.012, true), Judged(verdict, "a", 0.002));
+        Assert.Equal((0.06, false), Judged(verdict, "b", 0.01));
+        Assert.Contains("each experiment's at level 0.05/2/3: over all families the probability of any false comparison in the campaign is at most 0.05", verdict.Guarantee, StringComparison.Ordinal);
+    }
+
+    private static FamilyStanding Standing(string name, double level, int size, int survivors) => new(name, "holm", new SignificanceLevel(level), size, size, size, survivors);
+
+    private static (double, bool) Judged(ComparisonVerdict verdict, string family, double p, double? weight = null)
+    {
+        ExperimentResult experiment = Experiment(true) with { Plan = new PlannedExperiment { Code = "E", Test = "f", FollowUp = "holm-pairs", Family = family, Weight = weight } };
+        ExperimentComparison judged = Assert.Single(verdict.Judge(experiment, Labels, [new GroupComparison(0, 1, 1) { P = PValue.FromValue(p) }]));
+        return (Math.Round(judged.AdjustedP!.Value.Value, 15), judged.Survives!.Value);
+    }
+
     private static ExperimentComparison Judge(ComparisonVerdict verdict, bool survives, GroupComparison comparison) =>
         Assert.Single(verdict.Judge(Experiment(survives), Labels, [comparison]));
 

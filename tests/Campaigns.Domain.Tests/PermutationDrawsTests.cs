@@ -25,6 +25,10 @@ public sealed class PermutationDrawsTests
     public void The_seed_is_the_hash_of_both_names(string campaign, string experiment, ulong seed) =>
         Assert.Equal(seed, PermutationDraws.Seed(campaign, experiment));
 
+    // As above, of "X\n".
+    [Fact]
+    public void A_whole_campaign_has_a_seed_of_its_own() => Assert.Equal(8095266055078174663UL, PermutationDraws.Seed("X"));
+
     [Fact]
     public void Names_that_run_together_alike_have_seeds_of_their_own() =>
         Assert.NotEqual(PermutationDraws.Seed("AB", "C"), PermutationDraws.Seed("A", "BC"));

@@ -1,8 +1,10 @@
 using System.CommandLine;
 using Campaigns.App.Output;
+using Campaigns.App.Wording;
 using Campaigns.Catalog.Loading;
 using Campaigns.Domain;
 using Campaigns.Statistics.Corrections;
+using Campaigns.Statistics.Online;
 using Campaigns.Statistics.Probability;
 
 namespace Campaigns.App.Commands;
@@ -12,52 +14,74 @@ internal sealed class AdjustVerb : Verb
 {
     private readonly Argument<string> _file = TypedOptions.NotBlank(new Argument<string>("FILE") { Description = "A table with a header and a column of p-values." });
     private readonly Option<string> _column = TypedOptions.NotBlank(new Option<string>("--column") { Description = "The column of p-values.", HelpName = "NAME", DefaultValueFactory = _ => "p" });
-    private readonly Option<string?> _corrections = new("--correction") { Description = "Keys of the corrections, separated by commas (else all).", HelpName = "KEY,KEY" };
+    private readonly Option<string?> _corrections = new("--correction") { Description = "Keys of the corrections, separated by commas (else all that the file allows).", HelpName = "KEY,KEY" };
     private readonly Option<int?> _familySize = TypedOptions.WholeOrNone("--family-size", 1, "Hypotheses in the family, those without a p-value included (else the rows of the file).");
-    private readonly Option<double> _level = TypedOptions.Level("The level at which survivors are counted for people.");
+    private readonly Option<double> _level = TypedOptions.Level("The level of online procedures, and at which survivors are counted for people.");
+    private readonly StreamOptions _online = new();
+    private readonly AdjustWeights _weights = new();
+    private readonly Option<bool> _qValues = new("--q-values") { Description = "A column of Storey's q-values, with the estimated share of true nulls." };
 
-    public override Command Build() => new("adjust", Describe("Corrections on a column of p-values in a file; needs no catalog. Rows without a p-value count in the family as p = 1.",
+    public override Command Build() => _online.AddTo(new("adjust", Describe("Corrections on a column of p-values in a file; needs no catalog. Rows without a p-value count in the family as p = 1.",
         "adjust pvalues.csv --correction holm,bh --format csv"))
     {
-        _file, _column, _corrections, _familySize, _level, SharedOptions.DecimalMark, SharedOptions.Separator,
-    };
+        _file, _column, _corrections, _familySize, _level, _weights.Column, _qValues, SharedOptions.DecimalMark, SharedOptions.Separator,
+    });
 
     public override int Run(Session session)
     {
-        Correction[] corrections = Chosen(session);
+        ErrorProcedure[] procedures = Chosen(session);
+        OnlineProcedure[] online = [.. procedures.OfType<OnlineProcedure>()];
+        var level = new SignificanceLevel(session.Get(_level));
         DelimitedFileOptions reading = SharedOptions.Reading(session, []);
         DelimitedTable table = DelimitedTable.Read(session.Get(_file), reading);
-        RefuseRepeatedNames(session, table, corrections);
+        RefuseRepeatedNames(session, table, procedures);
         (int[] rows, PValue[] p) = ReadPValues(session, table, reading.DecimalMark);
-        int familySize = FamilySize(session, table.RowCount, p.Length);
-        var family = RankedFamily.Of(p, familySize);
-        PValue[][] adjusted = [.. corrections.Select(c => c.Adjust(family))];
-        session.Print(Table(table, corrections, rows, adjusted, familySize, new SignificanceLevel(session.Get(_level))));
+        int familySize = FamilySize(session, table.RowCount, p.Length, procedures);
+        OnlineSettings[] settings = _online.Settings(session, online, level, Math.Max(1, familySize));
+        RankedFamily family = _weights.Family(session, table, reading.DecimalMark, rows, p, familySize);
+        AdjustQValues? qValues = session.Get(_qValues) ? new AdjustQValues(p) : null;
+        string[] cautions = [.. AdaptiveText.Cautions(procedures, p.Length)];
+        if (session.Format != RowFormat.Table)
+        {
+            // Rows alone go to scripts; the table has these sentences below it.
+            string[] told = [.. session.Typed.GetValue(_corrections) is null ? [] : cautions, .. qValues?.Sentences ?? []];
+            Array.ForEach(told, sentence => session.Host.Notice($"Note: {sentence}"));
+        }
+
+        AdjustColumns[] added =
+        [
+            .. procedures.Select(one => one is OnlineProcedure arriving
+                ? AdjustColumns.Of(arriving, settings[Array.IndexOf(online, arriving)], p)
+                : AdjustColumns.Of((Correction)one, family, level)),
+        ];
+        session.Print(Table(table, added, rows, familySize, level, qValues, cautions));
         return ExitCode.Done;
     }
 
-    private Correction[] Chosen(Session session)
+    private ErrorProcedure[] Chosen(Session session)
     {
         string? keys = session.Typed.GetValue(_corrections);
         if (keys is null)
         {
-            return [.. CorrectionRegistry.All];
+            return [.. _weights.Usual(session)];
         }
 
-        return [.. keys.Split(',', StringSplitOptions.TrimEntries).Distinct(StringComparer.Ordinal).Select(key => CorrectionRegistry.Find(key) ?? throw NoCorrection(key))];
+        ErrorProcedure[] chosen = [.. keys.Split(',', StringSplitOptions.TrimEntries).Distinct(StringComparer.Ordinal).Select(key => (ErrorProcedure?)CorrectionRegistry.Find(key) ?? OnlineRegistry.Find(key) ?? throw NoCorrection(key))];
+        _weights.RefuseWithout(session, [.. chosen.OfType<Correction>()]);
+        return chosen;
     }
 
     private static UsageException NoCorrection(string key)
     {
-        string[] known = [.. CorrectionRegistry.All.Select(c => c.Key)];
+        string[] known = [.. CorrectionRegistry.All.Select(c => c.Key), .. StreamOptions.Keys];
         string near = Nearest.Of(key, known) is { } nearest ? $" (did you mean '{nearest}'?)" : "";
         return new UsageException($"There is no correction '{key}'{near}; known are {string.Join(", ", known)}.");
     }
 
     /// <summary>Two columns of one name could not be told apart in what is written: none may be named as a correction, and for JSON none twice.</summary>
-    private static void RefuseRepeatedNames(Session session, DelimitedTable table, Correction[] corrections)
+    private void RefuseRepeatedNames(Session session, DelimitedTable table, ErrorProcedure[] procedures)
     {
-        IEnumerable<string> taken = corrections.Select(c => c.Key);
+        IEnumerable<string> taken = procedures.SelectMany(AdjustColumns.Names).Concat(session.Get(_qValues) ? [AdjustQValues.Column] : []);
         string? repeated = table.Headers.FirstOrDefault(h => taken.Contains(h, StringComparer.Ordinal))
             ?? (session.Format == RowFormat.Json ? table.Headers.GroupBy(h => h, StringComparer.Ordinal).FirstOrDefault(g => g.Count() > 1)?.Key : null);
         if (repeated is not null)
@@ -66,13 +90,15 @@ internal sealed class AdjustVerb : Verb
         }
     }
 
-    private int FamilySize(Session session, int rows, int given)
+    private int FamilySize(Session session, int rows, int given, ErrorProcedure[] procedures)
     {
         if (session.Typed.GetValue(_familySize) is not { } size)
         {
             if (given < rows)
             {
-                session.Host.Notice(FormattableString.Invariant($"Note: {rows - given} row(s) have no p-value; they count as p = 1 in the family of {rows}. --family-size sets another size."));
+                string batch = procedures.Any(c => c is Correction) ? FormattableString.Invariant($"; they count as p = 1 in the family of {rows}. --family-size sets another size.") : ".";
+                string online = procedures.Any(c => c is OnlineProcedure) ? " In an online procedure they take no step, and their cells stay empty." : "";
+                session.Host.Notice(FormattableString.Invariant($"Note: {rows - given} row(s) have no p-value{batch}{online}"));
             }
 
             return rows;
@@ -112,19 +138,22 @@ internal sealed class AdjustVerb : Verb
             : throw new RefusedException(FormattableString.Invariant($"The file '{session.Get(_file)}' was refused. Problems: {table.Problems.Count}."), [.. table.Problems.Sentences()]);
     }
 
-    private static RowTable Table(DelimitedTable table, Correction[] corrections, int[] rows, PValue[][] adjusted, int familySize, SignificanceLevel level)
+    private static RowTable Table(DelimitedTable table, AdjustColumns[] added, int[] rows, int familySize, SignificanceLevel level, AdjustQValues? qValues, string[] cautions)
     {
         Column[] columns =
         [
             .. table.Headers.Select(h => new Column(h, SafeText.Escape(h))),
-            .. corrections.Select(c => new Column(c.Key, c.Key, true)),
+            .. added.SelectMany(a => a.Columns),
+            .. qValues is null ? [] : new[] { new Column(AdjustQValues.Column, AdjustQValues.Column, true) },
         ];
         return new RowTable(columns, Rows())
         {
             Below =
             [
-                FormattableString.Invariant($"Family of {familySize}. At {level}: ") + string.Join(", ", corrections.Select((c, i) => FormattableString.Invariant($"{c.Key} {adjusted[i].Count(level.Rejects)}"))) + " survive.",
-                .. corrections.Select(c => $"{c.Key}: {c.Name}. {c.Guarantee}"),
+                FormattableString.Invariant($"Family of {familySize}. At {level}: ") + string.Join(", ", added.Select(a => FormattableString.Invariant($"{a.Key} {a.Survivors}"))) + " survive.",
+                .. added.Select(a => a.Note),
+                .. cautions,
+                .. qValues?.Sentences ?? [],
             ],
             WhenEmpty = "The file has no rows.",
         };
@@ -140,12 +169,16 @@ internal sealed class AdjustVerb : Verb
                     cells[c] = Cell.Text(table.Cell(row, c));
                 }
 
-                for (int c = 0; given && c < corrections.Length; c++)
+                if (given)
                 {
-                    cells[table.Headers.Count + c] = Cell.P(adjusted[c][next]);
+                    int place = next++;
+                    added.SelectMany(a => a.Cells(place)).ToArray().CopyTo(cells, table.Headers.Count);
+                    if (qValues is not null)
+                    {
+                        cells[^1] = Cell.P(qValues.At(place));
+                    }
                 }
 
-                next += given ? 1 : 0;
                 yield return cells;
             }
         }

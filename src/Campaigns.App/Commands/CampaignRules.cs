@@ -21,6 +21,15 @@ internal static class CampaignRules
         }
     }
 
+    /// <summary>Says what should be known of a plan that is being sealed.</summary>
+    public static void SayNotes(Host host, Campaign campaign, IReadOnlyList<PlannedExperiment> plan)
+    {
+        foreach (string note in FamilyPlan.Notes(campaign, plan))
+        {
+            host.Notice(note);
+        }
+    }
+
     /// <summary>Warns where the correction does not hold the error rate that the campaign is judged by.</summary>
     public static void WarnOfMismatch(Host host, Campaign campaign)
     {

@@ -1,8 +1,10 @@
 using Campaigns.App.Output;
+using Campaigns.App.Wording;
 using Campaigns.Catalog.Plans;
 using Campaigns.Domain;
 using Campaigns.Statistics.Corrections;
 using Campaigns.Statistics.GroupTests;
+using Campaigns.Statistics.Online;
 
 namespace Campaigns.App.Commands;
 
@@ -22,7 +24,7 @@ internal static class CampaignText
 
     /// <summary>For example "false discovery rate at 0.05 by Benjamini-Hochberg".</summary>
     public static string Goal(Campaign campaign) =>
-        $"{RateWords(campaign.ErrorRate)} at {campaign.Level} by {FamilyVerdict.ProcedureOf(campaign).Name}";
+        $"{RateWords(campaign.ErrorRate)} at {campaign.Level} by {FamilyText.Procedures(campaign)}";
 
     /// <summary>The lines under every table of results: what was assumed, which procedure, what it promises.</summary>
     /// <param name="standing">The campaign in figures.</param>
@@ -30,10 +32,9 @@ internal static class CampaignText
     public static IReadOnlyList<string> Footnotes(CampaignOverview standing, IEnumerable<string> tests)
     {
         Campaign campaign = standing.Campaign;
-        ErrorProcedure correction = FamilyVerdict.ProcedureOf(campaign);
         List<string> lines =
         [
-            FormattableString.Invariant($"{correction.Name} at {campaign.Level} over a family of {standing.FamilySize} ({standing.TestedCount} with a result; the others count as p = 1). {correction.Guarantee}"),
+            .. FamilyVerdict.ProcedureOf(campaign) is OnlineProcedure online ? OnlineText.Lines(standing, online) : FamilyText.Lines(standing),
             .. TestsOf(tests).Select(test => $"{test.Name}, assumes: {char.ToLowerInvariant(test.Assumes[0])}{test.Assumes[1..]}"),
         ];
         if (campaign.IsExploratory)
@@ -62,13 +63,22 @@ internal static class CampaignText
     }
 
     /// <summary>Whether the latest review is up to date.</summary>
-    public static string ReviewLine(CampaignOverview standing) => standing.LastReview is not { } review
-        ? $"No review was taken yet; 'campaigns review {standing.Campaign.Code}' takes one."
-        : standing.AwaitingNewTest > 0
-            ? FormattableString.Invariant($"Review {review.Number} of {review.At:yyyy-MM-dd HH:mm} UTC is out of date: the values of {standing.AwaitingNewTest} experiment(s) were changed after their test; 'campaigns test {standing.Campaign.Code}' and 'campaigns review {standing.Campaign.Code}' take them in.")
-        : standing.ResultsSinceReview > 0
-            ? FormattableString.Invariant($"Review {review.Number} of {review.At:yyyy-MM-dd HH:mm} UTC is out of date: {standing.ResultsSinceReview} result(s) came after it; 'campaigns review {standing.Campaign.Code}' takes a new one.")
-            : FormattableString.Invariant($"Review {review.Number} of {review.At:yyyy-MM-dd HH:mm} UTC{(review.IsInterim ? " (interim: tested experiments only)" : "")} holds these results.");
+    public static string ReviewLine(CampaignOverview standing)
+    {
+        if (standing.LastReview is not { } review)
+        {
+            return $"No review was taken yet; 'campaigns review {standing.Campaign.Code}' takes one.";
+        }
+
+        string which = FormattableString.Invariant($"Review {review.Number} of {review.At:yyyy-MM-dd HH:mm} UTC{(review.IsInterim ? " (interim: tested experiments only)" : "")}");
+        return standing.AwaitingNewTest > 0
+                ? FormattableString.Invariant($"{which} is out of date: the values of {standing.AwaitingNewTest} experiment(s) were changed after their test; 'campaigns test {standing.Campaign.Code}' and 'campaigns review {standing.Campaign.Code}' take them in.")
+            : standing.ResultsSinceReview > 0
+                ? FormattableString.Invariant($"{which} is out of date: {standing.ResultsSinceReview} result(s) came after it; 'campaigns review {standing.Campaign.Code}' takes a new one.")
+            : review.IsInterim && review.FamilySize != standing.FamilySize
+                ? FormattableString.Invariant($"{which} counted {review.FamilySize} of {standing.FamilySize} hypotheses, these results count all of them; 'campaigns review {standing.Campaign.Code}' takes a review that does.")
+            : $"{which} holds these results.";
+    }
 
     /// <summary>A campaign as one row for scripts.</summary>
     public static RowTable Row(Campaign campaign) => new(

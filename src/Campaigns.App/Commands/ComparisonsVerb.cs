@@ -40,7 +40,7 @@ internal sealed class ComparisonsVerb : Verb
     [
         new("experiment", "experiment"), new("group_a", "group a", CutLast: true), new("group_b", "group b", CutLast: true), new("difference", "b - a", true),
         new("lower", "lower", true, 1, NotWithout: "upper"), new("upper", "upper", true, 1), new("statistic", "statistic", true, 2), new("p", "p", true), new("adjusted_p", "adjusted p", true),
-        new("survives", "claimed"), new("follow_up", "follow-up", GivesWay: 3), new("df", null, true), new("unit", "unit", GivesWay: 2), new("note", "not claimed because", GivesWay: 4, CutLast: true), new("amendments", null),
+        new("survives", "claimed"), new("follow_up", "follow-up", GivesWay: 3), new("df", null, true), new("unit", "unit", GivesWay: 2), new("note", "not claimed because", GivesWay: 4, CutLast: true), new("amendments", null), new("family", null),
         new("selected_lower", "selected lower", true, 5, NotWithout: "selected_upper"), new("selected_upper", "selected upper", true, 5), new("selected_confidence", null, true),
     ];
 
@@ -48,7 +48,7 @@ internal sealed class ComparisonsVerb : Verb
     [
         Cell.Text(c.Experiment.Plan.Code), Cell.Text(c.GroupA), Cell.Text(c.GroupB), Cell.Number(c.Comparison.Difference),
         Cell.Number(c.Comparison.Lower), Cell.Number(c.Comparison.Upper), Cell.Number(c.Comparison.Statistic), Cell.P(c.Comparison.P), Cell.P(c.AdjustedP),
-        Cell.Truth(c.Survives), Cell.Text(c.Experiment.Plan.FollowUp), Cell.Degrees(c.Comparison.DegreesOfFreedom), Cell.Text(c.Experiment.Plan.Unit), Cell.Text(c.NotClaimedBecause), Cell.Text(string.Join("; ", c.Experiment.Amendments)),
+        Cell.Truth(c.Survives), Cell.Text(c.Experiment.Plan.FollowUp), Cell.Degrees(c.Comparison.DegreesOfFreedom), Cell.Text(c.Experiment.Plan.Unit), Cell.Text(c.NotClaimedBecause), Cell.Text(string.Join("; ", c.Experiment.Amendments)), Cell.Text(c.Experiment.Family?.Name),
         Cell.Number(c.SelectedInterval?.Lower), Cell.Number(c.SelectedInterval?.Upper), Cell.Number(c.SelectedConfidence),
     ];
 }

@@ -1,5 +1,6 @@
 using System.CommandLine;
 using Campaigns.App.Output;
+using Campaigns.App.Wording;
 using Campaigns.Catalog.Results;
 using Campaigns.Domain;
 using Campaigns.Statistics.Corrections;
@@ -68,7 +69,7 @@ internal sealed class CorrectionsVerb : Verb
             Below =
             [
                 FormattableString.Invariant($"Hanging on the choice among those that hold the {CampaignText.RateWords(standing.Campaign.ErrorRate)}: {hanging} experiment(s){(hanging > 0 ? "; --hanging lists them" : "")}."),
-                NeverToChoose, .. Ending(standing),
+                NeverToChoose, .. InFamilies(standing), .. Ending(standing),
             ],
         };
     }
@@ -94,7 +95,7 @@ internal sealed class CorrectionsVerb : Verb
         {
             Above = [FormattableString.Invariant($"{standing.Campaign.Code}: adjusted p-values in a family of {standing.FamilySize}, to be held against {standing.Campaign.Level}")],
             WhenEmpty = hangingOnly ? "No experiment hangs on the choice." : "There is nothing to show.",
-            Below = [$"Hangs: survives under some of the corrections that hold the {CampaignText.RateWords(rate)}, each under its own assumptions, and not under others.", NeverToChoose, .. Ending(standing)],
+            Below = [$"Hangs: survives under some of the corrections that hold the {CampaignText.RateWords(rate)}, each under its own assumptions, and not under others.", NeverToChoose, .. InFamilies(standing), .. Ending(standing)],
         };
     }
 
@@ -118,6 +119,10 @@ internal sealed class CorrectionsVerb : Verb
 
     private static IEnumerable<int> HangingPlaces(CampaignStanding standing, IReadOnlyList<CorrectionOutcome> outcomes) =>
         Enumerable.Range(0, standing.TestedCount).Where(i => CorrectionsBeside.Hangs(outcomes, standing.Campaign.ErrorRate, i));
+
+    private static IEnumerable<string> InFamilies(CampaignStanding standing) => standing.Campaign.JudgedFamilies.Count == 0
+        ? []
+        : [FormattableString.Invariant($"Each correction is applied in each of the {standing.Families.Count} families, at the family's level and behind its gate; an adjusted p of a closed family is 1. The sealed ones are: {string.Join("; ", standing.Families.Select(f => $"{f.Name} {f.Correction} at {FamilyText.Level(f.Level)}"))}.")];
 
     private static IEnumerable<string> Ending(CampaignStanding standing) => [.. CampaignText.Deviations(standing.Overview), CampaignText.ReviewLine(standing.Overview)];
 

@@ -44,6 +44,7 @@ internal static class ExperimentShow
                 $"{standing.Campaign.Code} / {result.Plan.Code}  {result.Plan.Title}",
                 $"Response: {(result.Plan.Response.Length > 0 ? result.Plan.Response : "not named")}{unit}. Status: {result.Status.Sentence()}.{Missing(detail)}",
                 .. result.Amendments.Select(ExperimentWording.Deviation),
+                .. OnlineText.Decision(result.Entry) is { } decision ? [decision] : (string[])[],
                 .. result.Confirmation is null ? (string[])[] : [ConfirmationText.Sentence(result)],
                 .. detail.Analysis.UnitsNote is { } note ? [note] : (string[])[],
             ],
@@ -100,7 +101,7 @@ internal static class ExperimentShow
         if (result.Resampling is { } resampling)
         {
             yield return ResamplingText.Sentence(resampling);
-            if (ResamplingText.TooCoarse(resampling, standing) is { } warning)
+            if (ResamplingText.TooCoarse(resampling, standing.FamilyOf(result)) is { } warning)
             {
                 yield return warning;
             }

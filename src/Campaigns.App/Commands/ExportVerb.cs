@@ -26,7 +26,12 @@ internal sealed class ExportVerb : Verb
         var export = new CampaignExport(catalog);
         export.Write(standing, folder, writer => WriteResults(standing, writer), NumberText.RoundTrip);
         bool hasExclusions = File.Exists(Path.Combine(folder, CampaignExport.ExclusionsName));
-        session.Say($"Wrote {standing.Campaign.Code} to '{folder}': campaign.json, {(standing.Campaign.IsExploratory ? "" : "plan.csv, ")}measurements/{CampaignExport.MeasurementsName}, {(hasExclusions ? $"{CampaignExport.ExclusionsName}, " : "")}{CampaignExport.ResultsName}, {CampaignExport.ReviewsName}.");
+        session.Say($"Wrote {standing.Campaign.Code} to '{folder}': campaign.json, {(standing.Campaign.IsExploratory ? "" : "plan.csv, ")}{(standing.Campaign.Families.Count > 0 ? $"{CampaignExport.FamiliesName}, " : "")}measurements/{CampaignExport.MeasurementsName}, {(hasExclusions ? $"{CampaignExport.ExclusionsName}, " : "")}{CampaignExport.ResultsName}, {CampaignExport.ReviewsName}.");
+        if (standing.Campaign.Streams.Count > 0)
+        {
+            session.Say($"{CampaignExport.StreamsName} and {CampaignExport.DecisionsName} hold the streams and the decisions that stand; 'campaigns run' on the folder starts one stream of its own and decides in the plan's order.");
+        }
+
         if (hasExclusions)
         {
             session.Say($"The measurements hold the excluded values too; 'campaigns run' does not exclude them again, {CampaignExport.ExclusionsName} tells which they are.");

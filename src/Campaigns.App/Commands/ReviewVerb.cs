@@ -1,5 +1,7 @@
 using System.CommandLine;
 using Campaigns.App.Output;
+using Campaigns.App.Wording;
+using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Results;
 using Campaigns.Domain;
 
@@ -45,6 +47,28 @@ internal sealed class ReviewVerb : Verb
         session.Say(taken.IsNew
             ? FormattableString.Invariant($"Review {review.Number} of {code}: {review.SurvivorCount} of {review.TestedCount} tested experiments survive, in a family of {review.FamilySize}.{interim}")
             : FormattableString.Invariant($"Nothing changed since review {review.Number} of {code}, which stands: {review.SurvivorCount} survivors in a family of {review.FamilySize}.{interim}"));
+        SayFamilies(session, catalog, code);
         return review;
+    }
+
+    /// <summary>What a review of several families, or of experiments that share a control, should not leave unsaid.</summary>
+    private static void SayFamilies(Session session, Catalog.Catalog catalog, string code)
+    {
+        StoredCampaign stored = new CampaignStore(catalog).Get(code);
+        if (!FamilyTally.IsNeeded(stored.Campaign))
+        {
+            return;
+        }
+
+        IReadOnlyList<FamilyStanding> families = new ReviewStore(catalog).Families(stored);
+        foreach (FamilyStanding family in families.Where(_ => stored.Campaign.JudgedFamilies.Count > 0))
+        {
+            session.Say(FormattableString.Invariant($"{FamilyText.Line(stored.Campaign, family)} Survivors: {family.Survivors}."));
+        }
+
+        foreach (string warning in FamilyText.Warnings(stored.Campaign, families))
+        {
+            session.Host.Notice(warning);
+        }
     }
 }

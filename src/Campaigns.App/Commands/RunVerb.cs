@@ -1,5 +1,7 @@
 using System.CommandLine;
 using Campaigns.App.Output;
+using Campaigns.App.Wording;
+using Campaigns.Catalog.Exporting;
 using Campaigns.Catalog.Loading;
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Results;
@@ -12,7 +14,7 @@ internal sealed class RunVerb : Verb
 {
     private const int SurvivorsShown = 20;
 
-    private readonly Argument<string> _folder = new("FOLDER") { Description = "A campaign folder: campaign.json, plan.csv (without it the experiments are taken from the data), measurements/*.csv." };
+    private readonly Argument<string> _folder = new("FOLDER") { Description = "A campaign folder: campaign.json, plan.csv (without it the experiments are taken from the data), families.csv where there are several, measurements/*.csv." };
 
     public override Command Build() => new("run", Describe("Do everything for a campaign folder: open, plan, seal, load, test, review, and print the survivors and the risk.",
         "run campaigns/adhesion-screen"))
@@ -25,9 +27,9 @@ internal sealed class RunVerb : Verb
         string folder = session.Get(_folder);
         CampaignDescription description = ReadDescription(folder);
         string planPath = Path.Combine(folder, "plan.csv");
-        bool hasPlan = File.Exists(planPath);
+        string familiesPath = Path.Combine(folder, CampaignExport.FamiliesName);
         using Catalog.Catalog catalog = session.OpenOrCreateCatalog();
-        StoredCampaign campaign = session.SayAfter(() => catalog.Change(() => Register(session, catalog, description, hasPlan ? planPath : null)));
+        StoredCampaign campaign = session.SayAfter(() => catalog.Change(() => Register(session, catalog, description, Existing(planPath), Existing(familiesPath))));
         LoadFiles(session, catalog, campaign, Path.Combine(folder, "measurements"));
         string code = description.Code;
         bool reviewed = session.SayAfter(() => catalog.Change(() =>
@@ -57,7 +59,7 @@ internal sealed class RunVerb : Verb
     }
 
     /// <summary>Opens, plans and seals what is not yet; where it is, the folder must say the same.</summary>
-    private static StoredCampaign Register(Session session, Catalog.Catalog catalog, CampaignDescription description, string? planPath)
+    private static StoredCampaign Register(Session session, Catalog.Catalog catalog, CampaignDescription description, string? planPath, string? familiesPath)
     {
         var campaigns = new CampaignStore(catalog);
         StoredCampaign? known = campaigns.Find(description.Code);
@@ -74,22 +76,42 @@ internal sealed class RunVerb : Verb
 
         if (planPath is null)
         {
-            return stored;
+            return familiesPath is null ? stored : throw new RefusedException($"'{familiesPath}' names families, and there is no plan.csv whose experiments they hold; nothing was changed. Add the plan, or take families.csv away.");
         }
 
         IReadOnlyList<PlannedExperiment> plan = PlanVerb.Read(session, stored.Campaign, planPath);
+        IReadOnlyList<Family>? families = familiesPath is null ? null : FamiliesVerb.Read(session, familiesPath);
         if (stored.Campaign.IsSealed)
         {
             RefuseOtherPlan(catalog, stored, plan, planPath);
+            RefuseOtherFamilies(stored.Campaign, families, plan);
             session.Say($"The plan of {description.Code} is sealed already, and plan.csv says the same.");
             return stored;
         }
 
         PlanChange change = new PlanStore(catalog).Register(description.Code, plan);
         session.Say(FormattableString.Invariant($"Registered the plan: {change.Added} experiment(s) added, {change.Changed} changed, {change.Unchanged} as before."));
+        if (families is not null)
+        {
+            new FamilyStore(catalog).Register(description.Code, families);
+        }
+
         stored = campaigns.Seal(description.Code);
-        session.Say($"Sealed it; plan digest (SHA-256): {stored.Campaign.PlanDigest}.");
+        session.Say($"Sealed it{(stored.Campaign.Families.Count > 0 ? FormattableString.Invariant($", with {stored.Campaign.Families.Count} families") : "")}; plan digest (SHA-256): {stored.Campaign.PlanDigest}.");
+        CampaignRules.SayNotes(session.Host, stored.Campaign, plan);
         return stored;
+    }
+
+    private static string? Existing(string path) => File.Exists(path) ? path : null;
+
+    /// <summary>Without a file of families those that the plan names are meant; a plan that an earlier version sealed as one family stays one.</summary>
+    private static void RefuseOtherFamilies(Campaign campaign, IReadOnlyList<Family>? families, IReadOnlyList<PlannedExperiment> plan)
+    {
+        IReadOnlyList<Family> asked = families ?? (campaign.Families.Count == 0 ? [] : FamilyPlan.NamedIn(plan));
+        if (FamilyPlan.Differences(campaign.Families, asked) is { Count: > 0 } differences)
+        {
+            throw new RefusedException($"The folder's families differ from those of the sealed plan of '{campaign.Code}'; nothing was changed. A sealed plan stays as it is: open a new campaign for other families.", differences);
+        }
     }
 
     private static Campaign Describe(CampaignDescription description, DateTimeOffset now) => new()
@@ -100,6 +122,7 @@ internal sealed class RunVerb : Verb
         ErrorRate = description.ErrorRate,
         Level = description.Level,
         Correction = description.Correction,
+        Online = description.Online,
         DefaultTest = description.Test,
         DefaultFollowUp = description.FollowUp,
         OpenedAt = now,
@@ -112,6 +135,7 @@ internal sealed class RunVerb : Verb
             ("errorRate", known.ErrorRate.Word(), description.ErrorRate.Word()),
             ("level", known.Level.ToString(), description.Level.ToString()),
             ("correction", known.Correction, description.Correction),
+            .. OnlineText.Facts(known.Online).Zip(OnlineText.Facts(description.Online), (a, b) => (a.Key, a.Text, b.Text)),
             ("test", known.DefaultTest, description.Test),
             ("followUp", known.DefaultFollowUp, description.FollowUp),
         ];

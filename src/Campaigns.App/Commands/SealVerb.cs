@@ -10,7 +10,7 @@ internal sealed class SealVerb : Verb
 {
     private readonly Argument<string> _code = SharedOptions.Code();
 
-    public override Command Build() => new("seal", Describe("Fix the plan: level, correction and family stay as they are from here on.", "seal PRIMERS"))
+    public override Command Build() => new("seal", Describe("Fix the plan: level, correction and families stay as they are from here on.", "seal PRIMERS"))
     {
         _code,
     };
@@ -19,8 +19,10 @@ internal sealed class SealVerb : Verb
     {
         string code = session.Get(_code);
         using Catalog.Catalog catalog = session.OpenCatalog();
-        Campaign campaign = new CampaignStore(catalog).Seal(code).Campaign;
+        StoredCampaign stored = new CampaignStore(catalog).Seal(code);
+        Campaign campaign = stored.Campaign;
         session.Say($"Sealed {code}: {CampaignText.Goal(campaign)}. Plan digest (SHA-256): {campaign.PlanDigest}.");
+        CampaignRules.SayNotes(session.Host, campaign, campaign.IsExploratory ? [] : new PlanStore(catalog).Read(stored.Id));
         session.PrintForScripts(new RowTable(
             [new Column("campaign", null), new Column("sealed_at", null), new Column("plan_digest", null)],
             [[Cell.Text(code), Cell.Text(Words.Instant(campaign.SealedAt!.Value)), Cell.Text(campaign.PlanDigest)]]));

@@ -29,7 +29,7 @@ internal sealed class Session(Host host, ParseResult typed)
     public static KnownKeys KnownKeys => new(
         [.. GroupTestRegistry.All.Select(t => t.Key)],
         FollowUpKeys.All,
-        [.. CorrectionRegistry.All.Select(c => c.Key)]);
+        [.. CorrectionRegistry.All.Select(c => c.Key), .. StreamOptions.Keys]);
 
     public Catalog.Catalog OpenCatalog() => Catalog.Catalog.Open(CatalogPath, Host.Clock);
 

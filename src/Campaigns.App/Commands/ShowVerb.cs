@@ -62,6 +62,9 @@ internal sealed class ShowVerb : Verb
             ("amendments", "amendments", Cell.Whole(loads.Count(l => l.AmendmentReason is not null))),
             ("exclusions", "left out", Cell.Whole(ExclusionStore.Standing(new ExclusionStore(catalog).All(campaign.Code)))),
             ("reviews", "reviews", Cell.Whole(standing.LastReview?.Number ?? 0)),
+            ("streams", "streams", Cell.Whole(campaign.Streams.Count == 0 ? null : campaign.Streams.Count)),
+            ("families", "families", Cell.Whole(standing.Families.Count)),
+            ("review_interim", "", Cell.Truth(standing.LastReview?.IsInterim)),
         };
         if (session.Format != RowFormat.Table)
         {
@@ -69,12 +72,18 @@ internal sealed class ShowVerb : Verb
             return;
         }
 
-        foreach ((_, string label, Cell value) in facts.Where(f => f.Value.Kind != CellKind.Empty))
+        foreach ((_, string label, Cell value) in facts.Where(f => f.Value.Kind != CellKind.Empty && f.Label.Length > 0 && (f.Name != "families" || campaign.JudgedFamilies.Count > 0)))
         {
             WriteFact(session.Host, label, TextTable.Text(value));
         }
 
         session.Host.Out.WriteLine();
+        if (campaign.JudgedFamilies.Count > 0)
+        {
+            session.Print(FamilyTable.Of(campaign, standing.Families));
+            session.Host.Out.WriteLine();
+        }
+
         session.Print(new RowTable(
             [new("file", "file"), new("rows", "rows", true), new("missing", "missing", true), new("loaded_at", "loaded"), new("sha256", "sha256"), new("amendment", "amendment")],
             loads.Select(l => (Cell[])[Cell.Text(l.FileName), Cell.Whole(l.RowCount), Cell.Whole(l.MissingCount), Cell.Text(Words.Instant(DateTimeOffset.UnixEpoch.AddTicks(l.LoadedAt * TimeSpan.TicksPerMicrosecond))), Cell.Text(l.Sha256[..12]), Cell.Text(l.AmendmentReason)]))

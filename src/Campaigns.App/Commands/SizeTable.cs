@@ -58,16 +58,16 @@ internal static class SizeTable
 
         yield return question.Tests == 1
             ? "The level is that of this one test. Among many tests each has less: --tests N takes the Nth part, as Bonferroni's correction does."
-            : FormattableString.Invariant($"The level of each of {question.Tests} tests is {string.Join(", ", question.Levels.Select(l => NumberText.RoundTrip(l)))} over {question.Tests}, as under Bonferroni's correction. The campaign's own correction may be milder, and then fewer replicates do; planning a whole campaign with its own correction is another question than this one.");
+            : FormattableString.Invariant($"The level of each of {question.Tests} tests is {string.Join(", ", question.Levels.Select(l => NumberText.RoundTrip(l)))} over {question.Tests}, as under Bonferroni's correction. The campaign's own correction may be milder, and then fewer replicates do; --campaign N plans the whole campaign with the correction itself.");
     }
 
     /// <summary>Never a rounded 1 for what is less.</summary>
-    private static string Power(double power) => power > 0.9999 ? "above 0.9999" : NumberText.Screen(power, 4);
+    public static string Power(double power) => power > 0.9999 ? "above 0.9999" : NumberText.Screen(power, 4);
 
-    /// <summary>Four digits, without the zeros at their end.</summary>
-    private static string Text(double value)
+    /// <summary>A few digits, without the zeros at their end.</summary>
+    public static string Text(double value, int digits = 4)
     {
-        string text = NumberText.Screen(value, 4);
+        string text = NumberText.Screen(value, digits);
         return text.Contains('.', StringComparison.Ordinal) && !text.Contains('e', StringComparison.Ordinal) ? text.TrimEnd('0').TrimEnd('.') : text;
     }
 }

@@ -5,7 +5,7 @@ using Campaigns.Statistics.Planning;
 
 namespace Campaigns.App.Commands;
 
-/// <summary>size: replicates, power or smallest detectable effect of one experiment.</summary>
+/// <summary>size: replicates, power or smallest detectable effect of one experiment; with --campaign, what a whole campaign finds after correction.</summary>
 internal sealed class SizeVerb : Verb
 {
     private const int MostGroups = 10_000;
@@ -21,20 +21,35 @@ internal sealed class SizeVerb : Verb
     private readonly Option<double[]?> _levels = NumberLists.Reals("--level", "A,...", "Levels of the F test (else 0.05).", 0, 1);
     private readonly Option<int?> _tests = TypedOptions.WholeOrNone("--tests", 1, "Tests that share the level: each is made at level/N, as under Bonferroni's correction.");
 
-    public override Command Build() => new("size", Describe("Replicates, power or smallest detectable effect of one experiment: give two of effect, replicates and power, and the third is computed. Several values give a table. Needs no catalog.",
-        "size --groups 4 --difference 1.5 --sd 1.1 --power 0.8,0.9 --tests 47"))
+    private readonly SizeCampaignOptions _campaign = new();
+
+    public override Command Build()
     {
-        _groups, _effects, _means, _differences, _deviations, _replicates, _sizes, _powers, _levels, _tests,
-    };
+        var command = new Command("size", Describe("Replicates, power or smallest detectable effect of one experiment: give two of effect, replicates and power, and the third is computed. With --campaign, what a whole campaign finds under each correction, or the replicates that it needs. Several values give a table. Needs no catalog.",
+            "size --campaign 100 --share-real 0.3 --groups 4 --difference 1.5 --sd 1.1 --replicates 6,8 --correction bh,holm"))
+        {
+            _groups, _effects, _means, _differences, _deviations, _replicates, _sizes, _powers, _levels, _tests,
+        };
+        _campaign.AddTo(command);
+        return command;
+    }
 
     public override int Run(Session session)
     {
-        SizeQuestion question = Question(session);
+        SizeCampaign? campaign = _campaign.Read(session);
+        SizeQuestion question = Question(session, campaign is not null);
+        if (campaign is not null)
+        {
+            SizeCampaignQuestion asked = new(campaign, question);
+            session.Print(SizeCampaignTable.Of(asked, asked.Answers(session)));
+            return ExitCode.Done;
+        }
+
         session.Print(SizeTable.Of(question, [.. question.Answers()]));
         return ExitCode.Done;
     }
 
-    private SizeQuestion Question(Session session)
+    private SizeQuestion Question(Session session, bool ofCampaign)
     {
         double[]? deviations = NumberLists.Given(session, _deviations);
         int[]? sizes = NumberLists.Given(session, _sizes);
@@ -49,6 +64,11 @@ internal sealed class SizeVerb : Verb
         int groups = Groups(session.Typed.GetValue(_groups), means?.Length, sizes?.Length);
         IReadOnlyList<SizeEffect> effects = Effects(session, groups, means, deviations);
         bool hasDesign = sizes is not null || replicates is not null;
+        if (ofCampaign)
+        {
+            RefuseForCampaign(session, effects.Count > 0);
+        }
+
         if (effects.Count == 0 && !hasDesign)
         {
             throw new UsageException("Two of effect, replicates and power are needed: give an effect with --effect, --means or --difference, or observations with --replicates or --sizes.");
@@ -70,6 +90,19 @@ internal sealed class SizeVerb : Verb
             Levels = NumberLists.Given(session, _levels) ?? [0.05],
             Tests = session.Typed.GetValue(_tests) ?? 1,
         };
+    }
+
+    private void RefuseForCampaign(Session session, bool hasEffect)
+    {
+        if (session.Typed.GetResult(_powers) is not null || session.Typed.GetResult(_tests) is not null)
+        {
+            throw new UsageException("--power and --tests are for one experiment; with --campaign, --wanted takes the share of real effects to find, and --correction the corrections.");
+        }
+
+        if (!hasEffect)
+        {
+            throw new UsageException("A campaign is planned for an effect: give it with --effect, --means or --difference.");
+        }
     }
 
     private static int Groups(int? groups, int? means, int? sizes)

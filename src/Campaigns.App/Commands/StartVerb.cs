@@ -3,6 +3,7 @@ using Campaigns.Catalog.Plans;
 using Campaigns.Domain;
 using Campaigns.Statistics.Corrections;
 using Campaigns.Statistics.GroupTests;
+using Campaigns.Statistics.Online;
 using Campaigns.Statistics.Probability;
 
 namespace Campaigns.App.Commands;
@@ -17,23 +18,27 @@ internal sealed class StartVerb : Verb
         "--error-rate", "What is held at the level: the risk of any false survivor, or the share of false ones (the default).", "familywise|false-discovery", [.. ErrorRateWords.All]);
     private readonly Option<double> _level = TypedOptions.Level("The level, between 0 and 1.");
     private readonly Option<string?> _correction = TypedOptions.Word(
-        "--correction", "The correction (else holm for familywise, bh for false discovery).", "KEY", [.. CorrectionRegistry.All.Select(c => c.Key)]);
+        "--correction", "The correction, or the online procedure that decides experiments as they arrive (else holm for familywise, bh for false discovery).", "KEY",
+        [.. CorrectionRegistry.All.Select(c => c.Key), .. StreamOptions.Keys]);
+    private readonly StreamOptions _online = new();
     private readonly Option<string?> _test = TypedOptions.Word(
         "--test", "The test of experiments whose plan names none (else f).", "KEY", [.. GroupTestRegistry.All.Select(t => t.Key)]);
     private readonly Option<string?> _followUp = TypedOptions.Word(
         "--follow-up", "The comparisons of experiments whose plan names none (else none).", "KEY", [.. FollowUpKeys.All]);
 
-    public override Command Build() => new("start", Describe("Open a campaign, with its error rate, level and correction.",
+    public override Command Build() => _online.AddTo(new("start", Describe("Open a campaign, with its error rate, level and correction.",
         "start PRIMERS --title \"Primer screen\" --error-rate false-discovery --level 0.05 --correction bh"))
     {
         _code, _title, _purpose, _errorRate, _level, _correction, _test, _followUp,
-    };
+    });
 
     public override int Run(Session session)
     {
         string code = session.Get(_code);
         CampaignRules.CheckCode(code);
         ErrorRate rate = ErrorRateWords.Parse(session.Get(_errorRate) ?? "false-discovery")!.Value;
+        string correction = session.Get(_correction) ?? CampaignRules.UsualCorrection(rate);
+        OnlineOptions? online = _online.Typed(session, OnlineRegistry.Find(correction), new SignificanceLevel(session.Get(_level)));
         using Catalog.Catalog catalog = session.OpenOrCreateCatalog();
         Campaign campaign = new CampaignStore(catalog).Open(new Campaign
         {
@@ -42,7 +47,8 @@ internal sealed class StartVerb : Verb
             Purpose = session.Get(_purpose),
             ErrorRate = rate,
             Level = new SignificanceLevel(session.Get(_level)),
-            Correction = session.Get(_correction) ?? CampaignRules.UsualCorrection(rate),
+            Correction = correction,
+            Online = online,
             DefaultTest = session.Get(_test) ?? "f",
             DefaultFollowUp = session.Get(_followUp) ?? "none",
             OpenedAt = session.Host.Clock.GetUtcNow(),

@@ -99,7 +99,7 @@ internal sealed class SurvivorsVerb : Verb
         new("experiment", "experiment"), new("title", "title"), new("test", null), new("statistic", null, true), new("df1", null, true), new("df2", null, true),
         new("p", "p", true), new("adjusted_p", "adjusted p", true), new("eta_squared", null, true), new("omega_squared", null, true),
         new("highest_group", "highest", CutLast: true), new("highest_mean", null, true), new("lowest_group", "lowest", CutLast: true), new("lowest_mean", null, true),
-        new("difference", "gap", true), new("unit", "unit"), new("response", null), new("claimed_comparisons", null), new("amendments", null),
+        new("difference", "gap", true), new("unit", "unit"), new("response", null), new("claimed_comparisons", null), new("amendments", null), new("family", null), new("level", null, true),
         new("selected_lower", "selected lower", true, 1, NotWithout: "selected_upper"), new("selected_upper", "selected upper", true, 1), new("selected_confidence", null, true),
         new("eta_squared_lower", null, true), new("eta_squared_upper", null, true), new("not_claimed", null),
     ];
@@ -111,6 +111,7 @@ internal sealed class SurvivorsVerb : Verb
         Cell.Text(gap?.Highest), Cell.Number(gap?.HighestMean), Cell.Text(gap?.Lowest), Cell.Number(gap?.LowestMean),
         Cell.Number(gap?.Difference), Cell.Text(e.Plan.Unit), Cell.Text(e.Plan.Response),
         Cell.Text(string.Join("; ", comparisons.Where(c => c.Survives == true).Select(Claim))), Cell.Text(string.Join("; ", e.Amendments)),
+        Cell.Text(e.Family?.Name), e.Family is { } family ? Cell.Setting(family.Level.Value) : Cell.Empty,
         .. Intervals(e, gap, comparisons, risk),
         Cell.Text(string.Join("; ", comparisons.Where(c => c.NotClaimedBecause is not null).Select(c => $"{c.GroupB} - {c.GroupA}: {c.NotClaimedBecause}"))),
     ];

@@ -22,7 +22,7 @@ internal static class TypedOptions
     public static Option<double> Level(string description, double usual = 0.05) =>
         WithUsual(new Option<double>("--level") { Description = description, HelpName = "NUMBER", CustomParser = LevelOf }, (double?)usual);
 
-    /// <inheritdoc cref="Level"/>
+    /// <summary>A level where one is given.</summary>
     public static Option<double?> LevelOrNone(string description) =>
         new("--level") { Description = description, HelpName = "NUMBER", CustomParser = typed => LevelOf(typed) };
 
@@ -62,12 +62,13 @@ internal static class TypedOptions
         return null;
     }
 
-    private static int WholeOf(ArgumentResult typed, string name, int least)
+    /// <summary>The whole number typed, from a least one up; else an error.</summary>
+    public static int WholeOf(ArgumentResult typed, string name, int least, string orElse = "")
     {
         string word = typed.Tokens[0].Value;
         if (!int.TryParse(word, NumberStyles.AllowLeadingSign, CultureInfo.InvariantCulture, out int number) || number < least)
         {
-            typed.AddError(FormattableString.Invariant($"{name} takes a whole number from {least} to {int.MaxValue}, not '{word}'."));
+            typed.AddError(FormattableString.Invariant($"{name} takes a whole number from {least} to {int.MaxValue}{orElse}, not '{word}'."));
         }
 
         return number;

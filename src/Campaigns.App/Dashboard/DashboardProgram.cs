@@ -2,6 +2,7 @@ using Campaigns.App.Dashboard.Canvas;
 using Campaigns.App.Dashboard.Model;
 using Campaigns.App.Dashboard.Screen;
 using Campaigns.Statistics.Corrections;
+using Campaigns.Statistics.Online;
 using Terminal.Gui.App;
 
 namespace Campaigns.App.Dashboard;
@@ -28,7 +29,7 @@ public static class DashboardProgram
 
         Theme theme = Theme.For(Environment.GetEnvironmentVariable);
         theme.Apply();
-        DashboardModel model = new(source, CorrectionRegistry.Find);
+        DashboardModel model = new(source, key => (ErrorProcedure?)CorrectionRegistry.Find(key) ?? OnlineRegistry.Find(key));
         IApplication app = Application.Create();
         using TerminalGuard guard = new(app);
         app.Init();

@@ -64,6 +64,9 @@ internal readonly struct Cell
     /// <summary>A number that somebody chose, such as a level: people see it as it was typed, not rounded to a column's digits.</summary>
     public static Cell Setting(double value) => new(CellKind.Number, value, NumberText.RoundTrip(value));
 
+    /// <summary>A number with the text that people see in its place, where its digits would claim too much.</summary>
+    public static Cell Shown(double? value, Func<double, string> text) => value is { } given ? new Cell(CellKind.Number, given, text(given)) : Empty;
+
     /// <summary>Degrees of freedom: whole ones without decimals.</summary>
     public static Cell Degrees(double? value) => value is { } given && double.IsInteger(given) ? Setting(given) : Number(value);
 

@@ -27,7 +27,8 @@ internal static class ExperimentWording
 
     /// <summary>What a verdict means, in a sentence: each test has its own hypothesis, and ranks and permutations say nothing of means alone.</summary>
     /// <param name="result">A result with a p-value.</param>
-    public static string Verdict(ExperimentResult result) => result.Survives == true
+    public static string Verdict(ExperimentResult result) => result.Family is { IsOpen: false } closed ? $"Its family {closed.Name} is closed ({closed.Waits}): it does not survive before, whatever its p."
+        : result.Survives == true
         ? $"It survives: evidence against the hypothesis \"{GroupTestRegistry.Find(result.Plan.Test)?.Hypothesis}\""
         : "It does not survive: no difference shown, which is not the same as no difference.";
 
@@ -68,7 +69,7 @@ internal static class ExperimentWording
 
         if (detail.Analysis.DetectableAtStrictest is not null)
         {
-            yield return FormattableString.Invariant($"Smallest detectable difference: between any two group means, with these group sizes and this residual standard deviation, found by the F test with a power of 0.8, at level {standing.Campaign.Level} alone and at the strictest threshold {standing.Campaign.Level}/{standing.FamilySize}. A smaller difference may well be there and not be shown.");
+            yield return FormattableString.Invariant($"Smallest detectable difference: between any two group means, with these group sizes and this residual standard deviation, found by the F test with a power of 0.8, at level {standing.Campaign.Level} alone and at the strictest threshold {FamilyText.Level(standing.FamilyOf(detail.Result).Level)}/{standing.FamilyOf(detail.Result).Size}. A smaller difference may well be there and not be shown.");
         }
     }
 

@@ -5,6 +5,7 @@ using Campaigns.Catalog.Measurements;
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Providers;
 using Campaigns.Catalog.Results;
+using Campaigns.Catalog.Streams;
 using Campaigns.Domain;
 using Campaigns.Statistics.Probability;
 
@@ -23,8 +24,17 @@ public sealed class CampaignExport(Catalog catalog)
     /// <summary>Name of the file of results.</summary>
     public const string ResultsName = "results.csv";
 
+    /// <summary>Name of the file of families.</summary>
+    public const string FamiliesName = "families.csv";
+
     /// <summary>Name of the file of observations left out of the analysis.</summary>
     public const string ExclusionsName = "exclusions.csv";
+
+    /// <summary>Name of the file of streams, where experiments are judged as they arrive.</summary>
+    public const string StreamsName = "streams.csv";
+
+    /// <summary>Name of the file of standing decisions.</summary>
+    public const string DecisionsName = "decisions.csv";
 
     /// <summary>Writes the folder whole: it is made beside its place and moved there when it is finished.</summary>
     /// <param name="standing">The campaign as it stands.</param>
@@ -54,10 +64,21 @@ public sealed class CampaignExport(Catalog catalog)
                 WriteFile(draft, "plan.csv", writer => WritePlan(standing, writer));
             }
 
+            if (standing.Campaign.Families.Count > 0)
+            {
+                WriteFile(draft, FamiliesName, writer => WriteFamilies(standing.Campaign.Families, writer));
+            }
+
             WriteFile(System.IO.Path.Combine(draft, "measurements"), MeasurementsName, writer => WriteMeasurements(standing, writer));
             if (new ExclusionStore(catalog).All(standing.Campaign.Code) is { Count: > 0 } decisions)
             {
                 WriteFile(draft, ExclusionsName, writer => WriteExclusions(decisions, writer));
+            }
+
+            if (standing.Campaign.Streams.Count > 0)
+            {
+                WriteFile(draft, StreamsName, writer => StreamFiles.WriteStreams(standing.Campaign, writer));
+                WriteFile(draft, DecisionsName, writer => StreamFiles.WriteDecisions(new StreamStore(catalog).Decisions(standing.Campaign.Code), writer, textOfP));
             }
 
             WriteFile(draft, ReviewsName, writer => WriteReviews(standing, writer, textOfP));
@@ -102,21 +123,63 @@ public sealed class CampaignExport(Catalog catalog)
             json.WriteString("correction", campaign.Correction);
             json.WriteString("test", campaign.DefaultTest);
             json.WriteString("followUp", campaign.DefaultFollowUp);
+            WriteOnline(campaign.Online, json);
             json.WriteEndObject();
         }
 
         writer.WriteLine(Encoding.UTF8.GetString(buffer.WrittenSpan));
     }
 
+    private static void WriteOnline(OnlineOptions? online, Utf8JsonWriter json)
+    {
+        if (online?.Horizon is { } horizon)
+        {
+            if (horizon == 0)
+            {
+                json.WriteString("horizon", "none");
+            }
+            else
+            {
+                json.WriteNumber("horizon", horizon);
+            }
+        }
+
+        if (online?.Shape is { } shape)
+        {
+            json.WriteString("shape", shape);
+        }
+
+        foreach ((string name, double? value) in new[] { ("initialWealth", online?.InitialWealth), ("lambda", online?.Lambda), ("tau", online?.Tau) })
+        {
+            if (value is { } given)
+            {
+                json.WriteNumber(name, given);
+            }
+        }
+    }
+
     private static void WritePlan(CampaignStanding standing, TextWriter writer)
     {
         var csv = new CsvLine(writer);
         csv.Write("experiment", "title", "response", "unit", "groups", "control", "test", "follow_up", "replicates", "smallest_effect", "assumed_sd", "weight", "family", "confirms", "shared_control");
+
+        // A plan that an earlier version sealed may name families that never counted as such: named again, they would.
+        bool namesFamilies = !standing.Campaign.IsSealed || standing.Campaign.Families.Count > 0;
         foreach (PlannedExperiment e in standing.Experiments.Select(e => e.Plan))
         {
             csv.Write(
                 e.Code, e.Title, e.Response, e.Unit, string.Join('|', e.Groups), e.Control ?? "", e.Test, e.FollowUp,
-                CsvLine.Number(e.Replicates), CsvLine.Number(e.SmallestEffect), CsvLine.Number(e.AssumedStandardDeviation), CsvLine.Number(e.Weight), e.Family ?? "", e.Confirms ?? "", e.SharedControl ?? "");
+                CsvLine.Number(e.Replicates), CsvLine.Number(e.SmallestEffect), CsvLine.Number(e.AssumedStandardDeviation), CsvLine.Number(e.Weight), (namesFamilies ? e.Family : null) ?? "", e.Confirms ?? "", e.SharedControl ?? "");
+        }
+    }
+
+    private static void WriteFamilies(IReadOnlyList<Family> families, TextWriter writer)
+    {
+        var csv = new CsvLine(writer);
+        csv.Write("family", "correction", "level", "opens_after", "opens_when");
+        foreach (Family f in families)
+        {
+            csv.Write(f.Name, f.Correction ?? "", CsvLine.Number(f.Level?.Value), f.OpensAfter ?? "", f.OpensAfter is null ? "" : f.Gate == FamilyGate.AllSurvive ? "all" : "any");
         }
     }
 
@@ -167,25 +230,30 @@ public sealed class CampaignExport(Catalog catalog)
         }
     }
 
-    /// <summary>Every line of every review as it was stored on its day.</summary>
+    /// <summary>Every line of every review as it was stored on its day; correction, level and size are those of the experiment's family.</summary>
     private void WriteReviews(CampaignStanding standing, TextWriter writer, Func<PValue, string> textOfP)
     {
         long campaignId = new CampaignStore(catalog).Get(standing.Campaign.Code).Id;
-        using SqliteStatement select = catalog.Prepare("SELECT number, taken_at, correction, level, family_size, is_interim, lines FROM reviews WHERE campaign_id = ?1 ORDER BY number");
+        using SqliteStatement select = catalog.Prepare("SELECT number, taken_at, correction, level, family_size, is_interim, lines, id FROM reviews WHERE campaign_id = ?1 ORDER BY number");
         Dictionary<long, string> codes = new PlanStore(catalog).Codes(campaignId);
+        Dictionary<string, string> familyOf = standing.Experiments.ToDictionary(e => e.Plan.Code, e => e.Plan.Family ?? "", StringComparer.Ordinal);
+        var families = new ReviewFamilies(catalog);
         select.Bind(1, campaignId);
         var csv = new CsvLine(writer);
-        csv.Write("review", "taken_at", "correction", "level", "family_size", "interim", "experiment", "p", "adjusted_p", "survives");
+        csv.Write("review", "taken_at", "correction", "level", "family_size", "interim", "experiment", "p", "adjusted_p", "survives", "family");
         while (select.Read())
         {
             string taken = Instants.FromMicroseconds(select.Integer(1)).UtcDateTime.ToString("yyyy-MM-dd'T'HH:mm:ss'Z'", System.Globalization.CultureInfo.InvariantCulture);
-            var level = new SignificanceLevel(select.Real(3));
-            (FamilyColumns family, PValue[] adjusted) = PackedReviewLines.Unpack(select.Blob(6));
-            for (int i = 0; i < family.Count; i++)
+            var whole = new FamilyStanding("", select.Text(2), new SignificanceLevel(select.Real(3)), (int)select.Integer(4), 0, 0, 0);
+            var byName = families.Read(select.Integer(7)).ToDictionary(f => f.Name, StringComparer.Ordinal);
+            (FamilyColumns columns, PValue[] adjusted) = PackedReviewLines.Unpack(select.Blob(6));
+            for (int i = 0; i < columns.Count; i++)
             {
+                string code = codes[columns.ExperimentIds[i]];
+                FamilyStanding family = byName.GetValueOrDefault(familyOf[code], whole);
                 csv.Write(
-                    CsvLine.Number(select.Integer(0)), taken, select.Text(2), CsvLine.Number(level.Value), CsvLine.Number(select.Integer(4)), select.Integer(5) != 0 ? "true" : "false",
-                    codes[family.ExperimentIds[i]], textOfP(family.P[i]), textOfP(adjusted[i]), level.Rejects(adjusted[i]) ? "true" : "false");
+                    CsvLine.Number(select.Integer(0)), taken, family.Correction, CsvLine.Number(family.Level.Value), CsvLine.Number(family.Size), select.Integer(5) != 0 ? "true" : "false",
+                    code, textOfP(columns.P[i]), textOfP(adjusted[i]), family.Level.Rejects(adjusted[i]) ? "true" : "false", family.Name);
             }
         }
     }

@@ -1,3 +1,4 @@
+using Campaigns.Domain;
 using Campaigns.Statistics.Corrections;
 using Campaigns.Statistics.Probability;
 
@@ -23,6 +24,9 @@ public sealed record CampaignDescription
 
     /// <summary>Key of the correction; holm or bh, by the error rate, where the file says nothing.</summary>
     public required string Correction { get; init; }
+
+    /// <summary>Settings of an online procedure; null where the file says nothing of them.</summary>
+    public OnlineOptions? Online { get; init; }
 
     /// <summary>Key of the test for experiments whose plan names none; f where the file says nothing.</summary>
     public required string Test { get; init; }

@@ -10,7 +10,7 @@ public static class CampaignFile
     public const int LargestSize = 1 << 20;
 
     /// <summary>The keys of the object; only the first is required.</summary>
-    public static IReadOnlyList<string> Keys { get; } = ["code", "title", "purpose", "errorRate", "level", "correction", "test", "followUp"];
+    public static IReadOnlyList<string> Keys { get; } = ["code", "title", "purpose", "errorRate", "level", "correction", "test", "followUp", .. CampaignOnline.Keys];
 
     /// <summary>Reads the file, and collects everything that is wrong with it.</summary>
     /// <param name="path">The file.</param>
@@ -35,6 +35,7 @@ public static class CampaignFile
         ErrorRate errorRate = ErrorRateOf(json);
         string code = CodeOf(json);
         double level = json.Number("level", 0.05, n => n is > 0 and < 1, "a level lies between 0 and 1, both excluded, such as 0.05");
+        string correction = json.Key("correction", "correction", known.Corrections, errorRate == ErrorRate.Familywise ? "holm" : "bh");
         CampaignDescription description = new()
         {
             Code = code,
@@ -42,7 +43,8 @@ public static class CampaignFile
             Purpose = json.Text("purpose", 10_000),
             ErrorRate = errorRate,
             Level = new SignificanceLevel(level),
-            Correction = json.Key("correction", "correction", known.Corrections, errorRate == ErrorRate.Familywise ? "holm" : "bh"),
+            Correction = correction,
+            Online = CampaignOnline.Read(json, correction, new SignificanceLevel(level)),
             Test = json.Key("test", "test", known.Tests, "f"),
             FollowUp = json.Key("followUp", "follow-up", known.FollowUps, "none"),
         };

@@ -1,4 +1,5 @@
 using Campaigns.Catalog.Providers;
+using Campaigns.Catalog.Streams;
 using Campaigns.Domain;
 using Campaigns.Statistics.Probability;
 
@@ -68,13 +69,18 @@ public sealed class CampaignStore(Catalog catalog)
     /// <summary>Marks an open campaign as one whose experiments come from its data.</summary>
     internal void MarkExploratory(long id)
     {
+        if (new FamilyStore(catalog).Read(id).Count > 0)
+        {
+            throw new RefusedException("Families were registered for this campaign and no plan: register the plan that names them before loading, or open a new campaign to explore without a plan.");
+        }
+
         using SqliteStatement update = catalog.Prepare("UPDATE campaigns SET is_exploratory = 1 WHERE id = ?1");
         update.Bind(1, id).Run();
     }
 
     /// <summary>Fixes the plan: level, correction and family stay as they are from here on.</summary>
     /// <returns>The sealed campaign.</returns>
-    /// <exception cref="RefusedException">Sealed already, or without experiments.</exception>
+    /// <exception cref="RefusedException">Sealed already, without experiments, or with families that do not fit.</exception>
     public StoredCampaign Seal(string code) => catalog.Change(() =>
     {
         StoredCampaign stored = Get(code);
@@ -90,8 +96,15 @@ public sealed class CampaignStore(Catalog catalog)
             throw new RefusedException($"The campaign '{code}' has no experiments to seal; register them with 'campaigns plan {code} FILE', or load measurements to explore without a plan.");
         }
 
+        OnlineVerdict.RefuseFamilies(stored.Campaign, plan);
+        Campaign campaign = stored.Campaign with { Families = new FamilyStore(catalog).Settle(stored, plan) };
         using SqliteStatement update = catalog.Prepare("UPDATE campaigns SET sealed_at = ?2, plan_digest = ?3 WHERE id = ?1");
-        update.Bind(1, stored.Id).Bind(2, catalog.Now).Bind(3, PlanDigest.Of(stored.Campaign, plan)).Run();
+        update.Bind(1, stored.Id).Bind(2, catalog.Now).Bind(3, PlanDigest.Of(campaign, plan)).Run();
+        if (OnlineVerdict.ProcedureOf(stored.Campaign) is { } procedure)
+        {
+            new StreamStore(catalog).StartFirst(stored, procedure);
+        }
+
         return Get(code);
     });
 
@@ -106,7 +119,12 @@ public sealed class CampaignStore(Catalog catalog)
 
     private StoredCampaign Complete(StoredCampaign stored) => stored with
     {
-        Campaign = stored.Campaign with { Families = new FamilyStore(catalog).Read(stored.Id), Online = new OnlineSettingsStore(catalog).Read(stored.Id) },
+        Campaign = stored.Campaign with
+        {
+            Families = new FamilyStore(catalog).Read(stored.Id),
+            Online = new OnlineSettingsStore(catalog).Read(stored.Id),
+            Streams = OnlineVerdict.ProcedureOf(stored.Campaign) is null ? [] : new StreamStore(catalog).Read(stored.Id),
+        },
     };
 
     private static StoredCampaign Row(SqliteStatement row) => new(row.Integer(0), new Campaign

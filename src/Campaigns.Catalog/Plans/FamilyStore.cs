@@ -5,12 +5,49 @@ using Campaigns.Statistics.Probability;
 namespace Campaigns.Catalog.Plans;
 
 /// <summary>The families of campaigns that have several.</summary>
-internal sealed class FamilyStore(Catalog catalog)
+/// <param name="catalog">The open catalog.</param>
+public sealed class FamilyStore(Catalog catalog)
 {
     private const string Columns = "name, correction, level, opens_after, opens_when";
 
+    /// <summary>Registers the families of a campaign, in the place of those that were registered before, while its plan is open; whether they fit the plan is found out at the seal.</summary>
+    /// <param name="code">The campaign.</param>
+    /// <param name="families">Its families, each name once.</param>
+    /// <exception cref="RefusedException">The campaign is sealed, its experiments come from its data, or its procedure decides as experiments arrive.</exception>
+    public void Register(string code, IReadOnlyList<Family> families) => catalog.Change(() =>
+    {
+        StoredCampaign stored = new CampaignStore(catalog).Get(code);
+        if (stored.Campaign.IsSealed)
+        {
+            throw new RefusedException(FormattableString.Invariant($"The plan of '{code}' is sealed since {stored.Campaign.SealedAt:yyyy-MM-dd HH:mm:ss} UTC, its families with it; open a new campaign for others."));
+        }
+
+        if (stored.Campaign.IsExploratory)
+        {
+            throw new RefusedException($"The experiments of '{code}' come from measurements that are loaded already, so families would come after the data; open a new campaign for families.");
+        }
+
+        Replace(stored.Id, families);
+        return true;
+    });
+
+    /// <summary>The families with which a campaign may be sealed: those registered, or else those that its plan names, which are registered here; inside a transaction.</summary>
+    /// <exception cref="RefusedException">They do not fit the plan or the campaign.</exception>
+    internal IReadOnlyList<Family> Settle(StoredCampaign stored, IReadOnlyList<PlannedExperiment> plan)
+    {
+        IReadOnlyList<Family> registered = stored.Campaign.Families;
+        IReadOnlyList<Family> families = registered.Count > 0 ? registered : FamilyPlan.NamedIn(plan);
+        FamilyPlan.Check(stored.Campaign, families, plan);
+        if (registered.Count == 0 && families.Count > 0)
+        {
+            Replace(stored.Id, families);
+        }
+
+        return families;
+    }
+
     /// <summary>A campaign's families in the plan's order; empty for a campaign of one family.</summary>
-    public IReadOnlyList<Family> Read(long campaignId)
+    internal IReadOnlyList<Family> Read(long campaignId)
     {
         using SqliteStatement select = catalog.Prepare($"SELECT {Columns} FROM families WHERE campaign_id = ?1 ORDER BY position");
         select.Bind(1, campaignId);
@@ -30,7 +67,7 @@ internal sealed class FamilyStore(Catalog catalog)
     }
 
     /// <summary>Puts families in the place of those that were there; inside a transaction, before the seal.</summary>
-    public void Replace(long campaignId, IReadOnlyList<Family> families)
+    private void Replace(long campaignId, IReadOnlyList<Family> families)
     {
         using SqliteStatement delete = catalog.Prepare("DELETE FROM families WHERE campaign_id = ?1");
         delete.Bind(1, campaignId).Run();

@@ -63,6 +63,7 @@ public sealed class PlanStore(Catalog catalog)
             throw new RefusedException($"The experiments of '{code}' come from measurements that are loaded already, so a plan would come after the data; open a new campaign for a plan.");
         }
 
+        OnlineVerdict.RefuseFamilies(stored.Campaign, experiments);
         PlanChange change = Write(stored.Id, experiments);
         new ConfirmsRule(catalog, stored).Check(experiments);
         return change;

@@ -50,7 +50,8 @@ public sealed class DetailReader(Catalog catalog)
             groups.Add(new GroupDetail(labels[group], labels[group] == result.Plan.Control, ValuesOf(rows.Values, group), summaries[group]));
         }
 
-        var analysis = ExperimentAnalysis.Of(result.Plan, labels, readings, standing.Campaign, standing.FamilySize, result.P is null ? null : outcome as Tested, rows.Places());
+        FamilyStanding family = standing.FamilyOf(result);
+        var analysis = ExperimentAnalysis.Of(result.Plan, labels, readings, standing.Campaign, family.Size, result.P is null ? null : outcome as Tested, rows.Places(), family.Level);
         var verdict = new ComparisonVerdict(standing.Campaign, standing.Families);
         return new ExperimentDetail(result, groups, Confidence, (outcome as Tested)?.Variation, rows.MissingCount)
         {
@@ -79,7 +80,7 @@ public sealed class DetailReader(Catalog catalog)
 
         var draws = new RandomDraws(
             PermutationDraws.Seed(standing.Campaign.Code, result.Plan.Code),
-            result.Resampling is { IsExact: false } drawn ? (int)drawn.Arrangements : PermutationDraws.Count(standing.Campaign.Level, standing.FamilySize));
+            result.Resampling is { IsExact: false } drawn ? (int)drawn.Arrangements : PermutationDraws.Count(standing.Families));
         return ExperimentalUnits.Test(test, readings, draws);
     }
 

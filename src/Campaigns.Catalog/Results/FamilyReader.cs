@@ -1,5 +1,6 @@
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Providers;
+using Campaigns.Catalog.Streams;
 using Campaigns.Domain;
 using Campaigns.Statistics.Probability;
 
@@ -59,10 +60,59 @@ internal sealed class FamilyReader(Catalog catalog)
     /// <param name="testedOnly">Whether the tested ones alone are counted.</param>
     public FamilyMembers Members(StoredCampaign stored, FamilyColumns columns, bool testedOnly)
     {
-        int planned = FamilySize(stored.Id);
-        return FamilyMembers.OneFamily(columns.PMemory, planned) is var members && testedOnly
-            ? members with { Families = [members.Families[0] with { Size = columns.Count }] }
-            : members;
+        FamilyMembers members = Counted(stored, columns, testedOnly);
+        if (OnlineVerdict.ProcedureOf(stored.Campaign) is null)
+        {
+            return members;
+        }
+
+        Dictionary<long, StreamEntry> entries = StreamEntries.Read(catalog, stored.Id);
+        return members with
+        {
+            Entries = [.. columns.ExperimentIds.ToArray().Select(id => entries.GetValueOrDefault(id))],
+            StandingSurvivors = entries.Values.Count(e => e.Survives == true),
+        };
+    }
+
+    /// <summary>Draws of the campaign's permutation tests: as many as the strictest threshold of its families asks for.</summary>
+    public int PermutationDrawCount(StoredCampaign stored)
+    {
+        Campaign campaign = stored.Campaign;
+        if (campaign.JudgedFamilies.Count == 0)
+        {
+            return PermutationDraws.Count(campaign.Level, FamilySize(stored.Id));
+        }
+
+        CampaignVerdict planned = FamilyVerdict.Judge(campaign, Tally(stored, new FamilyColumns(0)).Members(testedOnly: false));
+        return PermutationDraws.Count(planned.Families);
+    }
+
+    private FamilyMembers Counted(StoredCampaign stored, FamilyColumns columns, bool testedOnly)
+    {
+        if (FamilyTally.IsNeeded(stored.Campaign))
+        {
+            return Tally(stored, columns).Members(testedOnly);
+        }
+
+        FamilyMembers members = FamilyMembers.OneFamily(columns.PMemory, FamilySize(stored.Id));
+        return testedOnly ? members with { Families = [members.Families[0] with { Size = columns.Count }] } : members;
+    }
+
+    /// <summary>One scan of the plan, in step with the columns: O(m).</summary>
+    private FamilyTally Tally(StoredCampaign stored, FamilyColumns columns)
+    {
+        using SqliteStatement select = catalog.Prepare("SELECT id, family, weight, shared_control FROM experiments WHERE campaign_id = ?1 ORDER BY id");
+        select.Bind(1, stored.Id);
+        var tally = new FamilyTally(stored.Campaign);
+        int next = 0;
+        while (select.Read())
+        {
+            bool isTested = next < columns.Count && columns.ExperimentIds[next] == select.Integer(0);
+            tally.Add(select.NullableText(1), select.NullableReal(2), select.NullableText(3), isTested ? columns.P[next] : null);
+            next += isTested ? 1 : 0;
+        }
+
+        return tally;
     }
 
     private FamilyColumns ReadAll(long campaignId)

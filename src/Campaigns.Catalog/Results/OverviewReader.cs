@@ -1,5 +1,6 @@
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Providers;
+using Campaigns.Catalog.Streams;
 using Campaigns.Domain;
 using Campaigns.Statistics.Probability;
 
@@ -24,11 +25,24 @@ public sealed class OverviewReader(Catalog catalog)
     {
         StoredCampaign stored = new CampaignStore(catalog).Get(code);
         (CampaignOverview overview, FamilyColumns family, CampaignVerdict verdict) = ReadWithSurvivors(stored);
+        if (stored.Campaign.Streams.Count > 0)
+        {
+            return (overview, StandingSurvivors(stored, overview, most));
+        }
+
         int[] survivors = [.. Enumerable.Range(0, family.Count).Where(i => verdict.Survives[i])];
         Array.Sort(survivors, (a, b) => family.P[a].CompareTo(family.P[b]) is var order && order != 0 ? order : a.CompareTo(b));
         int[] listed = most < survivors.Length ? survivors[..most] : survivors;
         Dictionary<long, ExperimentResult> experiments = new StandingReader(catalog).ReadSome(stored.Id, listed.Select(i => family.ExperimentIds[i]));
         return (overview, [.. listed.Select(i => experiments[family.ExperimentIds[i]] with { AdjustedP = verdict.Adjusted[i], Survives = true, Family = verdict.FamilyAt(i) })]);
+    }
+
+    /// <summary>What survives by its decision, the smallest p-value of the decision first, whatever happened to its values since.</summary>
+    private List<ExperimentResult> StandingSurvivors(StoredCampaign stored, CampaignOverview overview, int most)
+    {
+        KeyValuePair<long, StreamEntry>[] survivors = [.. StreamEntries.Read(catalog, stored.Id).Where(e => e.Value.Survives == true).OrderBy(e => e.Value.P!.Value).ThenBy(e => e.Key).Take(most)];
+        Dictionary<long, ExperimentResult> experiments = new StandingReader(catalog).ReadSome(stored.Id, survivors.Select(e => e.Key));
+        return [.. survivors.Select(e => OnlineVerdict.Apply(experiments[e.Key] with { Entry = e.Value }, overview.Families[0]))];
     }
 
     private (CampaignOverview Overview, FamilyColumns Family, CampaignVerdict Verdict) ReadWithSurvivors(StoredCampaign stored)

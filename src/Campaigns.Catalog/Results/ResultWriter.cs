@@ -1,11 +1,12 @@
 using Campaigns.Catalog.Providers;
+using Campaigns.Catalog.Streams;
 using Campaigns.Domain;
 using Campaigns.Statistics.GroupTests;
 
 namespace Campaigns.Catalog.Results;
 
 /// <summary>Writes the outcomes of one test run; the run itself is stored with its first outcome, so that a run without any leaves no trace.</summary>
-internal sealed class ResultWriter(Catalog catalog, long campaignId, long? lastLoadId, long? lastExclusionId, bool includesIncomplete) : IDisposable
+internal sealed class ResultWriter(Catalog catalog, long campaignId, long? lastLoadId, long? lastExclusionId, bool includesIncomplete, StreamKeeper? streams) : IDisposable
 {
     private SqliteStatement? _insert;
     private long _runId;
@@ -62,6 +63,7 @@ internal sealed class ResultWriter(Catalog catalog, long campaignId, long? lastL
         }
 
         _insert.Run();
+        streams?.Decide(experimentId, (outcome as Tested)?.P, _runId);
     }
 
     public void Dispose() => _insert?.Dispose();

@@ -60,6 +60,17 @@ public sealed class ReviewStore(Catalog catalog)
         return select.Bind(1, campaignId).Read() ? (Head(select), select.NullableInteger(9)) : null;
     }
 
+    /// <summary>The families of a campaign as its latest review counts them; interim or not as the review is.</summary>
+    /// <param name="stored">The campaign.</param>
+    /// <exception cref="RefusedException">It has no review.</exception>
+    public IReadOnlyList<FamilyStanding> Families(StoredCampaign stored)
+    {
+        ArgumentNullException.ThrowIfNull(stored);
+        (ReviewHead head, _) = Latest(stored.Id) ?? throw new RefusedException($"The campaign '{stored.Campaign.Code}' has no review yet; run 'campaigns review {stored.Campaign.Code}'.");
+        var families = new FamilyReader(catalog);
+        return FamilyVerdict.Judge(stored.Campaign, families.Members(stored, families.Read(stored.Id), head.IsInterim)).Families;
+    }
+
     /// <summary>Every review of a campaign, oldest first.</summary>
     /// <param name="campaignId">The campaign.</param>
     public IReadOnlyList<ReviewHead> All(long campaignId)
@@ -89,6 +100,11 @@ public sealed class ReviewStore(Catalog catalog)
             .Bind(6, campaign.Level.Value).Bind(7, (long)verdict.Size).Bind(8, (long)columns.Count).Bind(9, (long)verdict.SurvivorCount)
             .Bind(10, testedOnly ? 1L : 0L).Bind(11, ProgramVersion.Current).Bind(12, lastRun)
             .BindBlob(13, PackedReviewLines.Pack(columns.ExperimentIds, columns.P, [.. verdict.Adjusted]).Written).Run();
+        if (campaign.JudgedFamilies.Count > 0)
+        {
+            new ReviewFamilies(catalog).Add(id, verdict.Families);
+        }
+
         return Latest(stored.Id)!.Value.Head;
     }
 

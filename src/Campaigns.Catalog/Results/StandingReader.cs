@@ -1,6 +1,7 @@
 using Campaigns.Catalog.Measurements;
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Providers;
+using Campaigns.Catalog.Streams;
 using Campaigns.Domain;
 
 namespace Campaigns.Catalog.Results;
@@ -56,9 +57,11 @@ public sealed class StandingReader(Catalog catalog)
     private List<ExperimentResult> ReadExperiments(StoredCampaign stored, AmendedExperiments amended, Dictionary<long, DataAtHand> untested)
     {
         using var rows = new ExperimentRows(catalog, stored.Id, only: null);
+        Dictionary<long, StreamEntry> entries = stored.Campaign.Streams.Count == 0 ? [] : StreamEntries.Read(catalog, stored.Id);
         var experiments = new List<ExperimentResult>();
         while (rows.Next(amended) is { } experiment)
         {
+            experiment = experiment with { Entry = entries.GetValueOrDefault(rows.Id) };
             experiments.Add(untested.TryGetValue(rows.Id, out DataAtHand? data) ? data.Describe(experiment) : experiment);
         }
 

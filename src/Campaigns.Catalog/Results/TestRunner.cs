@@ -1,6 +1,7 @@
 using Campaigns.Catalog.Excluding;
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Providers;
+using Campaigns.Catalog.Streams;
 using Campaigns.Domain;
 using Campaigns.Statistics.GroupTests;
 
@@ -11,7 +12,14 @@ namespace Campaigns.Catalog.Results;
 /// <param name="NotTestable">Experiments whose data cannot give a result, with the reason stored.</param>
 /// <param name="Incomplete">Experiments left alone because planned values are missing.</param>
 /// <param name="Ran">Whether a run was stored; false where there was nothing to test.</param>
-public sealed record TestRunSummary(int Tested, int NotTestable, int Incomplete, bool Ran);
+public sealed record TestRunSummary(int Tested, int NotTestable, int Incomplete, bool Ran)
+{
+    /// <summary>Experiments decided for good, in a campaign that is judged as its experiments arrive.</summary>
+    public int Decided { get; init; }
+
+    /// <summary>Those of them that survive.</summary>
+    public int DecidedSurvivors { get; init; }
+}
 
 /// <summary>Runs the planned test of every experiment that is complete and not yet tested.</summary>
 /// <param name="catalog">The open catalog.</param>
@@ -75,9 +83,10 @@ public sealed class TestRunner(Catalog catalog)
 
         var exclusions = new StandingExclusions(catalog, stored.Id);
         using var sets = new GroupSets(catalog, stored.Id);
-        using var results = new ResultWriter(catalog, stored.Id, lastLoad, exclusions.LastId, includeIncomplete);
+        using StreamKeeper? streams = stored.Campaign.Streams.Count == 0 ? null : new StreamKeeper(catalog, stored);
+        using var results = new ResultWriter(catalog, stored.Id, lastLoad, exclusions.LastId, includeIncomplete, streams);
         using var pipeline = new TestPipeline(includeIncomplete, results.Write);
-        var plans = new PlannedTests(stored.Campaign, () => new FamilyReader(catalog).FamilySize(stored.Id), sets, exclusions, cancel);
+        var plans = new PlannedTests(stored.Campaign, () => new FamilyReader(catalog).PermutationDrawCount(stored), sets, exclusions, cancel);
         TestBatch batch = pipeline.Fresh();
         long done = 0;
         while (select.Read())
@@ -102,7 +111,11 @@ public sealed class TestRunner(Catalog catalog)
         pipeline.Finish();
         cancel.ThrowIfCancellationRequested();
         bool ran = results.Tested + results.NotTestable > 0;
-        return new TestRunSummary(results.Tested, results.NotTestable, ran || !last.RanBefore ? results.Incomplete : Waiting(stored.Id), ran);
+        return new TestRunSummary(results.Tested, results.NotTestable, ran || !last.RanBefore ? results.Incomplete : Waiting(stored.Id), ran)
+        {
+            Decided = streams?.Decided ?? 0,
+            DecidedSurvivors = streams?.DecidedSurvivors ?? 0,
+        };
     }
 
     private (long LoadId, long ExclusionId, bool RanBefore) LastRun(long campaignId)
@@ -132,10 +145,10 @@ public sealed class TestRunner(Catalog catalog)
     }
 
     /// <summary>Reads what the plan says of the test of an experiment.</summary>
-    private sealed class PlannedTests(Campaign campaign, Func<int> familySize, GroupSets sets, StandingExclusions exclusions, CancellationToken cancel)
+    private sealed class PlannedTests(Campaign campaign, Func<int> drawCount, GroupSets sets, StandingExclusions exclusions, CancellationToken cancel)
     {
         // Counting the family takes milliseconds, and only a test that draws wants to know.
-        private readonly Lazy<int> _draws = new(() => PermutationDraws.Count(campaign.Level, familySize()));
+        private readonly Lazy<int> _draws = new(drawCount);
         private GroupTest? _test;
         private string _key = "";
 

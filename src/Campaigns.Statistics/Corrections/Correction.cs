@@ -10,22 +10,29 @@ namespace Campaigns.Statistics.Corrections;
 /// </remarks>
 public abstract class Correction : ErrorProcedure
 {
+    /// <summary>Whether the procedure uses the weights of a family. Without them all hypotheses weigh 1, and it is its unweighted counterpart.</summary>
+    public virtual bool NeedsWeights => false;
+
+    /// <summary>Whether an adjusted p-value may lie below its p-value, so that a p-value above the level can survive: where the procedure estimates how many nulls are true, or weighs.</summary>
+    public virtual bool MayGoBelowP => false;
+
     /// <summary>Adjusted p-values of a family, logarithms included, in the order in which the family's p-values were given.</summary>
     /// <param name="family">The p-values at hand with the size of the family they belong to.</param>
     /// <returns>One adjusted p-value for each p-value given; equal p-values get equal ones, smaller ones never larger ones. Only p = 0 gives 0.</returns>
     public PValue[] Adjust(RankedFamily family)
     {
-        double[] values = ArrayPool<double>.Shared.Rent(family.Count);
-        double[] tailLogs = new double[family.TailCount];
-        AdjustRanked(family, values.AsSpan(0, family.Count), tailLogs);
-        var adjusted = new PValue[family.Count];
-        ReadOnlySpan<int> order = family.Order;
+        RankedFamily ranked = RanksOf(family);
+        double[] values = ArrayPool<double>.Shared.Rent(ranked.Count);
+        double[] tailLogs = new double[ranked.TailCount];
+        AdjustRanked(ranked, values.AsSpan(0, ranked.Count), tailLogs);
+        var adjusted = new PValue[ranked.Count];
+        ReadOnlySpan<int> order = ranked.Order;
         for (int rank = 0; rank < order.Length; rank++)
         {
             double value = values[rank];
             adjusted[order[rank]] =
                 rank < tailLogs.Length && value < RankedFamily.TailBound ? PValue.FromValueAndLog(value, tailLogs[rank])
-                : value == family.Sorted[rank] ? PValue.FromValueAndLog(value, family.Log(rank))
+                : value == ranked.Sorted[rank] ? PValue.FromValueAndLog(value, ranked.Log(rank))
                 : PValue.FromValue(value);
         }
 
@@ -46,9 +53,10 @@ public abstract class Correction : ErrorProcedure
                 nameof(adjusted));
         }
 
-        double[] values = ArrayPool<double>.Shared.Rent(family.Count);
-        AdjustRanked(family, values.AsSpan(0, family.Count), new double[family.TailCount]);
-        ReadOnlySpan<int> order = family.Order;
+        RankedFamily ranked = RanksOf(family);
+        double[] values = ArrayPool<double>.Shared.Rent(ranked.Count);
+        AdjustRanked(ranked, values.AsSpan(0, ranked.Count), new double[ranked.TailCount]);
+        ReadOnlySpan<int> order = ranked.Order;
         for (int rank = 0; rank < order.Length; rank++)
         {
             adjusted[order[rank]] = values[rank];
@@ -70,7 +78,14 @@ public abstract class Correction : ErrorProcedure
     /// <param name="adjusted">Takes the adjusted p-values, ascending; values above 1 are cut to 1 afterwards.</param>
     protected abstract void AdjustSorted(ReadOnlySpan<double> sorted, int familySize, Span<double> adjusted);
 
-    private void AdjustRanked(RankedFamily family, Span<double> values, Span<double> tailLogs)
+    /// <summary>The ranks that the procedure goes by.</summary>
+    private protected virtual RankedFamily RanksOf(RankedFamily family) => family;
+
+    /// <summary>The procedure as it runs on rescaled tails, where p-values that are not far down act as 1.</summary>
+    private protected virtual FarTail.Procedure InTail(RankedFamily family) => AdjustSorted;
+
+    /// <summary>Adjusted p-values by rank, and the logarithms of the family's tail.</summary>
+    private protected virtual void AdjustRanked(RankedFamily family, Span<double> values, Span<double> tailLogs)
     {
         AdjustSorted(family.Sorted, family.FamilySize, values);
         foreach (ref double value in values)
@@ -80,7 +95,7 @@ public abstract class Correction : ErrorProcedure
 
         if (tailLogs.Length > 0)
         {
-            FarTail.Logs(family, AdjustSorted, tailLogs);
+            FarTail.Logs(family, InTail(family), tailLogs);
             FarTail.Restore(values, tailLogs);
         }
     }

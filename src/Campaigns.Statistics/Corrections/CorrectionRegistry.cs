@@ -3,7 +3,7 @@ namespace Campaigns.Statistics.Corrections;
 /// <summary>Every batch correction that the program offers, in the order in which people see them.</summary>
 public static class CorrectionRegistry
 {
-    /// <summary>The corrections: none, then familywise error, then false discovery.</summary>
+    /// <summary>The corrections, in the order in which they came into the program.</summary>
     public static IReadOnlyList<Correction> All { get; } =
     [
         new Uncorrected(),
@@ -15,7 +15,16 @@ public static class CorrectionRegistry
         new Hommel(),
         new BenjaminiHochberg(),
         new BenjaminiYekutieli(),
+        new HommelAnyDependence(),
+        new TwoStageBenjaminiHochberg(),
+        new Storey(),
+        new WeightedBonferroni(),
+        new WeightedHolm(),
+        new WeightedBenjaminiHochberg(),
     ];
+
+    /// <summary>Those that need nothing but p-values, for callers that show every correction of a family without weights.</summary>
+    public static IReadOnlyList<Correction> FromPAlone { get; } = [.. All.Where(c => !c.NeedsWeights)];
 
     /// <summary>The correction with a key, or null.</summary>
     /// <param name="key">Exact, lower case.</param>

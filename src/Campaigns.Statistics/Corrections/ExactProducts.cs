@@ -31,36 +31,37 @@ internal static class ExactProducts
             : Math.FusedMultiplyAdd(p, m, -left) < Math.FusedMultiplyAdd(q, n, -right);
     }
 
-    /// <summary>p (factor + factorRest) / divisor, correctly rounded where factorRest is 0.</summary>
+    /// <summary>p (factor + factorRest) / (divisor + divisorRest), correctly rounded where both rests are 0 and the others whole; else to about 30 digits before it is rounded.</summary>
     /// <param name="p">In [0, 1].</param>
-    /// <param name="factor">A whole number below 2^50, or the leading part of any factor of at least 1.</param>
+    /// <param name="factor">A whole number below 2^50, or the leading part of any factor from 10^-30 to 2^50.</param>
     /// <param name="factorRest">What the leading part leaves out.</param>
-    /// <param name="divisor">A whole number from 1 to 2^50.</param>
-    /// <returns>In [0, factor], in the subnormal range as well rounded once.</returns>
+    /// <param name="divisor">A whole number from 1 to 2^50, or the leading part of any divisor from 10^-30 to 2^50.</param>
+    /// <param name="divisorRest">What the leading part leaves out.</param>
+    /// <returns>At least 0; in the subnormal range as well rounded once.</returns>
     /// <remarks>
     /// One division and one remainder step. With whole factors the exact quotient is either halfway between two doubles, which the remainder step meets exactly, or further from
     /// halfway than 1/divisor half units, which exceeds the error of the step, 2^-52 units.
     /// </remarks>
-    public static double Quotient(double p, double factor, double factorRest, double divisor)
+    public static double Quotient(double p, double factor, double factorRest, double divisor, double divisorRest = 0)
     {
         if (p < ScaleBelow)
         {
-            return TinyQuotient(p, factor, factorRest, divisor);
+            return TinyQuotient(p, factor, factorRest, divisor, divisorRest);
         }
 
         double product = p * factor;
         double rest = Math.FusedMultiplyAdd(p, factor, -product) + (p * factorRest);
         double quotient = product / divisor;
-        return quotient + ((Math.FusedMultiplyAdd(-quotient, divisor, product) + rest) / divisor);
+        return quotient + ((Math.FusedMultiplyAdd(-quotient, divisor, product) + (rest - (quotient * divisorRest))) / divisor);
     }
 
-    private static double TinyQuotient(double p, double factor, double factorRest, double divisor)
+    private static double TinyQuotient(double p, double factor, double factorRest, double divisor, double divisorRest)
     {
         double scaled = p * Up;
         double product = scaled * factor;
         double rest = Math.FusedMultiplyAdd(scaled, factor, -product) + (scaled * factorRest);
         double first = product / divisor;
-        double correction = (Math.FusedMultiplyAdd(-first, divisor, product) + rest) / divisor;
+        double correction = (Math.FusedMultiplyAdd(-first, divisor, product) + (rest - (first * divisorRest))) / divisor;
         double quotient = first + correction;
         double left = correction - (quotient - first);
         double result = quotient * Down;

@@ -48,7 +48,10 @@ internal static class FarTail
             for (; rank < logs.Length && family.Log(rank) - first <= Width; rank++)
             {
                 double raw = family.Log(rank);
-                double log = adjusted[rank] == scaled[rank] ? raw : Math.Min(0, Math.Max(raw, shift + Math.Log(adjusted[rank])));
+                double moved = shift + Math.Log(adjusted[rank]);
+
+                // Rounding the logarithm must not move an adjusted p-value to the other side of its p-value.
+                double log = adjusted[rank] == scaled[rank] ? raw : adjusted[rank] > scaled[rank] ? Math.Min(0, Math.Max(raw, moved)) : Math.Min(raw, moved);
 
                 // Two windows round differently; the order holds across them all the same.
                 lowest = Math.Max(lowest, log);

@@ -29,7 +29,10 @@ public sealed class Hommel : Correction
     public override string Source => "G. Hommel (1988), Biometrika 75:383-386";
 
     /// <inheritdoc/>
-    protected override void AdjustSorted(ReadOnlySpan<double> sorted, int familySize, Span<double> adjusted)
+    protected override void AdjustSorted(ReadOnlySpan<double> sorted, int familySize, Span<double> adjusted) => Fill(sorted, familySize, adjusted);
+
+    /// <summary>The adjusted p-values of ascending p-values.</summary>
+    internal static void Fill(ReadOnlySpan<double> sorted, int familySize, Span<double> adjusted)
     {
         int untested = familySize - sorted.Length;
         double[] simes = ArrayPool<double>.Shared.Rent(sorted.Length);

@@ -13,17 +13,20 @@ public sealed class RankedFamily
     /// <summary>Below this p-value ranks and corrections go by the logarithm, because doubles soon lose digits there and then end.</summary>
     internal const double TailBound = 1e-290;
 
+    /// <summary>Below this p-value a double lacks digits.</summary>
+    internal const double SmallestNormal = 2.2250738585072014e-308; // 2^-1022
+
     private readonly double[] _sorted;
     private readonly int[] _order;
     private readonly double[]? _logs;
 
-    private RankedFamily(double[] sorted, int[] order, double[]? logs, int familySize)
+    private RankedFamily(double[] sorted, int[] order, double[]? logs, int familySize, int tailCount)
     {
         _sorted = sorted;
         _order = order;
         _logs = logs;
         FamilySize = familySize;
-        TailCount = LowerBound(sorted, TailBound);
+        TailCount = tailCount;
     }
 
     /// <summary>P-values at hand.</summary>
@@ -38,8 +41,17 @@ public sealed class RankedFamily
     /// <summary>For each rank, counted from 0, the position at which that p-value was given.</summary>
     public ReadOnlySpan<int> Order => _order;
 
+    /// <summary>Whether the hypotheses of the family weigh differently for the corrections that ask.</summary>
+    public bool HasWeights => ByWeight is not null;
+
     /// <summary>How many of the p-values lie below <see cref="TailBound"/>: the first ranks.</summary>
     internal int TailCount { get; }
+
+    /// <summary>The same family ranked by p/w, hypotheses of weight 0 last; null without weights. Its p-values need not ascend, and its tail is one of p/w.</summary>
+    internal RankedFamily? ByWeight { get; private init; }
+
+    /// <summary>The weights in the order of the ranks, in a family that is ranked by them; else null.</summary>
+    internal FamilyWeights? Weights { get; private init; }
 
     /// <summary>Ranks p-values.</summary>
     /// <param name="pValues">The p-values at hand, in any order.</param>
@@ -60,16 +72,24 @@ public sealed class RankedFamily
         int tail = LowerBound(sorted, TailBound);
         if (tail > 1)
         {
-            RankTailByLog(pValues, sorted.AsSpan(0, tail), order.AsSpan(0, tail));
+            RankTailByLog(LogsInOrder(pValues, order.AsSpan(0, tail)), sorted.AsSpan(0, tail), order.AsSpan(0, tail));
         }
 
-        double[] logs = new double[order.Length];
-        for (int rank = 0; rank < order.Length; rank++)
-        {
-            logs[rank] = pValues[order[rank]].Log;
-        }
+        return new RankedFamily(sorted, order, LogsInOrder(pValues, order), familySize, tail);
+    }
 
-        return new RankedFamily(sorted, order, logs, familySize);
+    /// <summary>Ranks p-values of hypotheses that weigh differently. Corrections that do not ask for weights see the same family as without.</summary>
+    /// <param name="pValues">The p-values at hand, in any order.</param>
+    /// <param name="familySize">Hypotheses in the family, tested or not; at least the number of p-values.</param>
+    /// <param name="weights">One weight for each p-value, fixed before the data: 0 or more, on any scale. At weight 0 a hypothesis is never rejected, even at p = 0; a weight below 10^-30 of the largest is taken for 0.</param>
+    /// <param name="weightOfRest">The sum of the weights of the hypotheses that were planned and not tested, on the same scale; 0 where there are none.</param>
+    /// <exception cref="ArgumentException">The family is smaller than the number of p-values; not one weight a p-value; a weight that is negative, infinite or NaN; all 0; a rest where nothing is untested.</exception>
+    /// <exception cref="InvalidOperationException">One of the p-values was never given.</exception>
+    public static RankedFamily Of(ReadOnlySpan<PValue> pValues, int familySize, ReadOnlySpan<double> weights, double weightOfRest)
+    {
+        RankedFamily byP = Of(pValues, familySize);
+        (double[] scaled, double rest) = FamilyWeights.Scaled(weights, weightOfRest, pValues.Length, familySize);
+        return new RankedFamily(byP._sorted, byP._order, byP._logs, familySize, byP.TailCount) { ByWeight = OfWeighted(pValues, familySize, scaled, rest) };
     }
 
     /// <summary>Ranks p-values given as doubles in [0, 1].</summary>
@@ -94,11 +114,66 @@ public sealed class RankedFamily
 
         (double[] sorted, int[] order) = Ranking.Ascending(values.AsSpan(0, pValues.Length));
         ArrayPool<double>.Shared.Return(values);
-        return new RankedFamily(sorted, order, null, familySize);
+        return new RankedFamily(sorted, order, null, familySize, LowerBound(sorted, TailBound));
     }
 
     /// <summary>The natural logarithm of the p-value of a rank, as it was given or else of its double.</summary>
     internal double Log(int rank) => _logs is null ? Math.Log(_sorted[rank]) : _logs[rank];
+
+    private static RankedFamily OfWeighted(ReadOnlySpan<PValue> pValues, int familySize, double[] weights, double rest)
+    {
+        var quotients = new (double High, double Low, int Position)[pValues.Length];
+        for (int i = 0; i < quotients.Length; i++)
+        {
+            double high = weights[i] == 0 ? double.PositiveInfinity : OverWeight(pValues[i], weights[i]);
+
+            // What the rounded quotient leaves out ranks those that are equal only by rounding.
+            double low = weights[i] == 0 ? 0 : Math.FusedMultiplyAdd(-high, weights[i], pValues[i].Value) / weights[i];
+            quotients[i] = (high, low, i);
+        }
+
+        Array.Sort(quotients, static (a, b) => a.High != b.High ? a.High.CompareTo(b.High) : a.Low != b.Low ? a.Low.CompareTo(b.Low) : a.Position.CompareTo(b.Position));
+        double[] keys = [.. quotients.Select(q => q.High)];
+        int[] order = [.. quotients.Select(q => q.Position)];
+        int tail = LowerBound(keys, TailBound);
+        double[] logs = LogsInOrder(pValues, order.AsSpan(0, tail));
+        for (int rank = 0; rank < tail; rank++)
+        {
+            logs[rank] -= Math.Log(weights[order[rank]]);
+        }
+
+        RankTailByLog(logs, keys.AsSpan(0, tail), order.AsSpan(0, tail));
+        double[] inOrder = new double[order.Length];
+        for (int rank = 0; rank < order.Length; rank++)
+        {
+            inOrder[rank] = pValues[order[rank]].Value + 0.0;
+        }
+
+        return new RankedFamily(inOrder, order, LogsInOrder(pValues, order), familySize, tail) { Weights = FamilyWeights.InOrder(weights, rest, order) };
+    }
+
+    /// <summary>p/w as a double, from the logarithm where p has lost digits and a small weight brings the quotient back into the range.</summary>
+    private static double OverWeight(PValue p, double weight)
+    {
+        if (p.Value >= SmallestNormal)
+        {
+            return p.Value / weight;
+        }
+
+        double log = p.Log - Math.Log(weight);
+        return Math.Exp(log) >= TailBound ? Math.Exp(log) : (p.Value + 0.0) / weight;
+    }
+
+    private static double[] LogsInOrder(ReadOnlySpan<PValue> pValues, ReadOnlySpan<int> order)
+    {
+        double[] logs = new double[order.Length];
+        for (int rank = 0; rank < order.Length; rank++)
+        {
+            logs[rank] = pValues[order[rank]].Log;
+        }
+
+        return logs;
+    }
 
     private static void CheckSize(int count, int familySize)
     {
@@ -110,12 +185,12 @@ public sealed class RankedFamily
         }
     }
 
-    private static void RankTailByLog(ReadOnlySpan<PValue> pValues, Span<double> sorted, Span<int> order)
+    private static void RankTailByLog(ReadOnlySpan<double> logs, Span<double> sorted, Span<int> order)
     {
         var keys = new (double Log, int Position, double Value)[order.Length];
         for (int rank = 0; rank < keys.Length; rank++)
         {
-            keys[rank] = (pValues[order[rank]].Log, order[rank], sorted[rank]);
+            keys[rank] = (logs[rank], order[rank], sorted[rank]);
         }
 
         Array.Sort(keys, static (a, b) => a.Log != b.Log ? a.Log.CompareTo(b.Log) : a.Position.CompareTo(b.Position));

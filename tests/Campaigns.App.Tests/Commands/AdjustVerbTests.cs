@@ -106,7 +106,9 @@ public sealed class AdjustVerbTests : IDisposable
         CsvText csv = _place.Run("adjust", Column("0", "1", "1e-400", "5e-324"), "--format", "csv").Well().Csv;
         Assert.Equal(["0", "1", "1e-400", "5e-324"], csv.Column("p"));
         Assert.All(csv.Columns.Skip(1), key => Assert.Equal("0", csv.Column(key)[0]));
-        Assert.All(csv.Columns.Skip(1), key => Assert.Equal("1", csv.Column(key)[1]));
+
+        // The two-stage procedure rejects three at 0.25/1.25 and then compares the last with 4 times the level of that stage: p = 1 survives from 1/3 on.
+        Assert.All(csv.Columns.Skip(1), key => Assert.Equal(key == "bky" ? 1.0 / 3 : 1, csv.Numbers(key)[1], 1e-15));
         Assert.Matches("^[34]\\.?[0-9]*E-400$", csv.Column("bonferroni")[2]);
         Assert.All(csv.Columns.Skip(1), key => Assert.EndsWith("E-400", csv.Column(key)[2], StringComparison.Ordinal));
         Assert.Equal(2e-323, csv.Numbers("bonferroni")[3]);
@@ -188,6 +190,64 @@ public sealed class AdjustVerbTests : IDisposable
         {
             Assert.All(csv.Column(key), text => Assert.Equal(text, CsvText.Number(text).ToString("R", CultureInfo.InvariantCulture)));
         }
+    }
+
+    [Fact]
+    public void Weights_come_from_a_column_and_untested_rows_keep_theirs()
+    {
+        // Weights 2, 1, 1, 0.5, 0.5 and p = 0.01 ... 0.05: Genovese, Roeder and Wasserman's and Holm's worked out by hand.
+        string file = _place.Write("w.csv", "p,importance\n0.01,4\n0.02,2\n0.03,2\n0.04,1\n0.05,1\n");
+        CsvText csv = _place.Run("adjust", file, "--weights", "importance", "--correction", "weighted-bonferroni,weighted-holm,weighted-bh", "--format", "csv").Well().Csv;
+        Assert.Equal([0.025, 0.1, 0.15, 0.4, 0.5], csv.Numbers("weighted-bonferroni"), (a, b) => Math.Abs(a - b) < 1e-15);
+        Assert.Equal([0.025, 0.06, 0.06, 0.08, 0.08], csv.Numbers("weighted-holm"), (a, b) => Math.Abs(a - b) < 1e-15);
+        Assert.Equal([0.025, 0.05, 0.05, 0.1, 0.1], csv.Numbers("weighted-bh"), (a, b) => Math.Abs(a - b) < 1e-15);
+
+        string untested = _place.Write("w.csv", "p,w\n0.01,1\nNA,3\n0,0\n");
+        csv = _place.Run("adjust", untested, "--weights", "w", "--format", "csv").Well().Csv;
+        Assert.Equal(["0.04", "", "1"], csv.Column("weighted-bonferroni"));
+        Assert.Equal(["0.015", "", "0"], csv.Column("bh"));
+    }
+
+    [Fact]
+    public void Weighted_corrections_without_weights_and_weights_that_are_none_are_refused()
+    {
+        string file = _place.Write("w.csv", "p,w,half,nil\n0.01,-1,1,0\n0.02,x,,0\n");
+        _place.Run("adjust", file, "--correction", "holm,weighted-holm").Refused(2, "'weighted-holm' needs a weight", "--weights COLUMN");
+        Assert.DoesNotContain("weighted", string.Join(' ', _place.Run("adjust", file, "--format", "csv").Well().Csv.Columns), StringComparison.Ordinal);
+        _place.Run("adjust", file, "--weights", "w").Refused(3, "w.csv line 2, column w", "0 or more, not -1", "w.csv line 3, column w", "Problems: 2");
+        _place.Run("adjust", file, "--weights", "half").Refused(3, "w.csv line 3, column half", "The weight is missing");
+        _place.Run("adjust", file, "--weights", "nil").Refused(3, "All weights", "'nil'");
+        _place.Run("adjust", file, "--weights", "hlaf").Refused(3, "\"half\" may be it");
+        _place.Run("adjust", file, "--weights", "half", "--family-size", "9").Refused(2, "leave out --family-size");
+    }
+
+    [Fact]
+    public void Q_values_come_with_the_share_of_true_nulls_they_rest_on()
+    {
+        // Four of fifteen lie above 1/2: 4 / (15 * 0.5) = 0.533, and times the adjusted p of Benjamini and Hochberg.
+        Ran table = _place.Run("adjust", Column(Published), "--q-values").Well();
+        Assert.Contains("share of true nulls of 0.533 (lambda 0.5) among the 15 tested; other estimates: 0.421 (bootstrap choice of lambda), 0.795 (smoothing spline over lambda)", table.Out.ReplaceLineEndings(" "), StringComparison.Ordinal);
+        Ran csv = _place.Run("adjust", Column(Published), "--q-values", "--correction", "bh", "--format", "csv").Well();
+        Assert.Equal(["p", "bh", "q_value"], csv.Csv.Columns);
+        Assert.All(csv.Csv.Numbers("bh").Zip(csv.Csv.Numbers("q_value")), pair => Assert.Equal(pair.First * 8 / 15, pair.Second, 1e-15));
+        Assert.Contains("0.533", csv.Error, StringComparison.Ordinal);
+        Assert.Contains("15 p-values are few", csv.Error, StringComparison.Ordinal);
+
+        Ran none = _place.Run("adjust", Column("0.01", "0.02"), "--q-values", "--correction", "bh", "--format", "csv").Well();
+        Assert.Equal(["", ""], none.Csv.Column("q_value"));
+        Assert.Contains("not estimable", none.Error, StringComparison.Ordinal);
+        _place.Run("adjust", _place.Write("p.csv", "p,q_value\n0.1,0.2\n"), "--q-values", "--format", "csv").Refused(3, "two columns 'q_value'");
+    }
+
+    [Fact]
+    public void Adaptive_corrections_say_what_they_do_not_cover()
+    {
+        Ran chosen = _place.Run("adjust", Column(Published), "--correction", "bky,storey", "--format", "csv").Well();
+        Assert.Contains("bky and storey: proved for independent p-values only", chosen.Error, StringComparison.Ordinal);
+        Assert.Contains("storey: 15 p-values are few", chosen.Error, StringComparison.Ordinal);
+        Assert.Equal(8, chosen.Csv.Numbers("bky").Count(p => p <= 0.05));
+        Assert.DoesNotContain("independent p-values only", _place.Run("adjust", Column(Published), "--format", "csv").Well().Error, StringComparison.Ordinal);
+        Assert.Contains("independent p-values only", _place.Run("adjust", Column(Published)).Well().Out, StringComparison.Ordinal);
     }
 
     [Fact]

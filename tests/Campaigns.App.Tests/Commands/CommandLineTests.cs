@@ -17,7 +17,7 @@ public sealed class CommandLineTests : IDisposable
     [Fact]
     public void The_commands_of_a_whole_job_are_there() =>
         Assert.Superset(
-            new HashSet<string>(["run", "start", "plan", "seal", "load", "test", "review", "results", "survivors", "corrections", "adjust", "size", "risk", "list", "show", "export", "dashboard", "upgrade", "completion"]),
+            new HashSet<string>(["run", "start", "plan", "seal", "load", "test", "review", "results", "survivors", "corrections", "adjust", "size", "risk", "bound", "overall", "list", "show", "export", "dashboard", "upgrade", "completion"]),
             new HashSet<string>(CommandNames()));
 
     [Theory]

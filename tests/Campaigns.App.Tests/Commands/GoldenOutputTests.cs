@@ -35,6 +35,21 @@ public sealed partial class GoldenOutputTests : IDisposable
         Kept("risk", "risk"), Csv("risk"), "tests", "level", "expected_false_positives", "risk_independent", "risk_at_least", "risk_at_most", "uncorrected_hits", "survivors");
 
     [Fact]
+    public void Risk_curve() => Golden.Match("risk-curve", _place.Run("risk", "adhesion-screen", "--curve", "--top", "3").Well().Out);
+
+    [Fact]
+    public void Bound()
+    {
+        string text = Kept("bound", "bound", "adhesion-screen", "GS-09", "GS-04", "GS-30", "GS-48");
+        CsvText csv = Csv("bound", "adhesion-screen", "GS-09", "GS-04", "GS-30", "GS-48");
+        string line = text.Split('\n').Single(l => l.StartsWith(' '));
+        Assert.All(new[] { "marked", "real_at_least", "false_at_most", "confidence", "level", "family_size" }, column => Assert.True(Shows(line, csv.Numbers(column)[0]), $"{column}: {line}"));
+    }
+
+    [Fact]
+    public void Overall() => AssertRows(Kept("overall", "overall", "adhesion-screen"), Csv("overall", "adhesion-screen"), "statistic", "p", "experiments");
+
+    [Fact]
     public void List() => AssertRows(Kept("list", "list"), Csv("list"), "level", "experiments", "tested", "survivors");
 
     [Fact]

@@ -130,7 +130,8 @@ public sealed class OutputHonestyTests : IDisposable
         string[][] commands =
         [
             ["run", Workplace.Demo], ["results", "adhesion-screen"], ["survivors", "adhesion-screen"], ["corrections", "adhesion-screen"], ["corrections", "adhesion-screen", "--by-experiment"],
-            ["risk"], ["list"], ["show", "adhesion-screen"], ["show", "adhesion-screen", "GS-04"], ["show", "adhesion-screen", "GS-48"],
+            ["risk"], ["risk", "--pooled"], ["risk", "adhesion-screen", "--curve"], ["bound", "adhesion-screen", "--all-survivors"], ["bound", "adhesion-screen", "--curve"], ["overall", "adhesion-screen"],
+            ["list"], ["show", "adhesion-screen"], ["show", "adhesion-screen", "GS-04"], ["show", "adhesion-screen", "GS-48"],
         ];
         foreach (string[] arguments in commands)
         {
@@ -244,7 +245,8 @@ public sealed class OutputHonestyTests : IDisposable
         string[][] commands =
         [
             ["run", Workplace.Demo], ["results", "adhesion-screen"], ["results", "adhesion-screen", "--format", "csv"], ["results", "adhesion-screen", "--format", "json"],
-            ["survivors", "adhesion-screen"], ["corrections", "adhesion-screen"], ["risk"], ["risk", "--format", "csv"], ["list"], ["show", "adhesion-screen"],
+            ["survivors", "adhesion-screen"], ["corrections", "adhesion-screen"], ["risk"], ["risk", "--format", "csv"],
+            ["risk", "adhesion-screen", "--curve"], ["risk", "--pooled"], ["bound", "adhesion-screen", "--all-survivors"], ["bound", "adhesion-screen", "--curve", "--format", "csv"], ["overall", "adhesion-screen", "--format", "json"], ["list"], ["show", "adhesion-screen"],
             ["show", "adhesion-screen", "GS-04"], ["show", "adhesion-screen", "GS-04", "--format", "csv"], ["review", "adhesion-screen", "--family", "tested", "--format", "csv"], ["adjust", p, "--format", "csv"], ["adjust", p],
             ["export", "adhesion-screen", "--out", place.At("out")],
         ];

@@ -100,6 +100,33 @@ public sealed class DashboardScreenTests
         Assert.False(screen.IsStopped);
     }
 
+    [Theory]
+    [InlineData(80, 24)]
+    [InlineData(120, 40)]
+    public void Marked_experiments_carry_a_sign_and_their_bound_stands_below_the_list(int width, int height)
+    {
+        using TestScreen screen = new(width, height, Standing, colour: false);
+        Assert.DoesNotContain("marked ", screen.Text, StringComparison.Ordinal);
+        screen.Press(Key.M, Key.CursorDown, Key.CursorDown, Key.M);
+        Golden.Match($"marked-{width}x{height}", screen.Text);
+        int first = screen.Lines.ToList().FindIndex(line => line.StartsWith("experiment", StringComparison.Ordinal)) + 1;
+        Assert.Equal(["▪", " ", "▪"], new[] { 0, 1, 2 }.Select(row => screen.CellsOf(first + row)["experiment".Length]));
+        MarkedBound bound = screen.Model.Marks.Bound;
+        Assert.Equal(2, bound.Marked);
+        Assert.Contains(FormattableString.Invariant($"marked 2: at least {bound.RealAtLeast} real, at most {bound.FalseAtMost} false (95% confidence)"), screen.Text, StringComparison.Ordinal);
+
+        // The last row can still be reached, and the text of the filter takes the key as a letter.
+        screen.Press(Key.End);
+        Assert.Contains(screen.Lines, l => l.StartsWith("E48 ", StringComparison.Ordinal));
+        screen.Press(new Key('/'), Key.M, Key.Esc, Key.Esc);
+        Assert.Equal(2, screen.Model.Marks.Count);
+        screen.Press(Key.M.WithShift);
+        Assert.Equal(48, screen.Model.Marks.Count);
+        Assert.DoesNotContain("marked ", screen.Press(Key.M.WithShift).Text, StringComparison.Ordinal);
+        screen.Press(Key.Enter, Key.M);
+        Assert.Equal(1, screen.Model.Marks.Count);
+    }
+
     [Fact]
     public void Escape_never_quits_and_q_does()
     {

@@ -1,4 +1,5 @@
 using Campaigns.Benchmarks.Generating;
+using Campaigns.Statistics.CampaignPermutation;
 using Campaigns.Statistics.FollowUps;
 using Campaigns.Statistics.GroupTests;
 using Campaigns.Statistics.Permutation;
@@ -43,6 +44,21 @@ internal static class Inputs
             long[] mantissas = [.. Enumerable.Range(0, 24).Select(cell => campaign.Reading(experiment, cell))];
             return PermutationScores.Of(new GroupedSample(mantissas, 4, groups, 4));
         })];
+    }
+
+    /// <summary>Responses on the same 4 groups of 6 specimens, typed with 4 decimals.</summary>
+    public static SpecimenSet Responses(int count)
+    {
+        var campaign = new SyntheticCampaign(new CampaignSize(count, 4, 6));
+        ushort[] groups = [.. Enumerable.Range(0, 24).Select(cell => (ushort)(cell / 6))];
+        var set = new SpecimenSet(groups, []);
+        for (int response = 0; response < count; response++)
+        {
+            long[] mantissas = [.. Enumerable.Range(0, 24).Select(cell => campaign.Reading(response, cell))];
+            set.Add(new GroupedSample(mantissas, 4, groups, 4), PermutedStatistic.Values);
+        }
+
+        return set;
     }
 
     /// <summary>Studentized ranges between 0 and 12.</summary>

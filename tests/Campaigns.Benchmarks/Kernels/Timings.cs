@@ -1,5 +1,6 @@
 using System.Diagnostics;
 using System.Globalization;
+using Campaigns.Statistics.CampaignPermutation;
 using Campaigns.Statistics.Corrections;
 using Campaigns.Statistics.Distributions;
 using Campaigns.Statistics.FollowUps;
@@ -45,6 +46,11 @@ internal static class Timings
         PermutationScores[] permuted = Inputs.Experiments(PermutedExperiments);
         Line("permute-one", () => RandomArrangements.CountAsExtreme(permuted[0], new RandomDraws(1, 10 * Million)));
         Line("permute-shared", () => RandomArrangements.CountAsExtreme(permuted, new RandomDraws(1, 2 * Million / 10)));
+
+        SpecimenSet responses = Inputs.Responses(PermutedExperiments);
+        var campaign = new PermutationRun(new RandomDraws(1, Hundredth));
+        Line("permute-max-t", () => StepDownPermutation.MaxT([responses], campaign));
+        Line("permute-min-p", () => StepDownPermutation.MinP([responses], campaign));
 
         double[] q = Inputs.RangeStatistics(Million);
         Line("range", () =>

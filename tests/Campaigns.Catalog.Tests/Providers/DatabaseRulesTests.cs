@@ -11,6 +11,8 @@ public sealed class DatabaseRulesTests(SealedCatalog catalog) : IClassFixture<Se
     private const string NewExclusion = "INSERT INTO exclusions (id, experiment_id, load_id, line, is_excluded, group_label, value, reason, named_by, made_at, program_version) VALUES ";
     private const string NewReview = "INSERT INTO reviews (id, campaign_id, number, taken_at, correction, level, family_size, tested_count, survivor_count, is_interim, program_version, lines) VALUES ";
     private const string NewCampaign = "INSERT INTO campaigns (id, code, title, purpose, error_rate, level, correction, default_test, default_follow_up, is_exploratory, opened_at, sealed_at, plan_digest) VALUES ";
+    private const string NewFamily = "INSERT INTO families (campaign_id, position, name, correction, level, opens_after, opens_when) VALUES ";
+    private const string NewReviewFamily = "INSERT INTO review_families (review_id, position, name, correction, level, family_size, planned_count, tested_count, survivor_count, is_open) VALUES ";
     private const string Hash = "'0000000000000000000000000000000000000000000000000000000000000000'";
 
     [Theory]
@@ -36,6 +38,15 @@ public sealed class DatabaseRulesTests(SealedCatalog catalog) : IClassFixture<Se
     [InlineData("UPDATE experiments SET campaign_id = 2 WHERE code = 'E2'", "an experiment of a sealed plan is never changed")]
     [InlineData("UPDATE experiments SET replicates = 2 WHERE code = 'E2'", "an experiment of a sealed plan is never changed")]
     [InlineData("UPDATE experiments SET groups_are_planned = 1 WHERE code = 'E2'", "an experiment of a sealed plan is never changed")]
+    [InlineData("UPDATE experiments SET family = 'a' WHERE code = 'E2'", "an experiment of a sealed plan is never changed")]
+    [InlineData("UPDATE experiments SET weight = 2 WHERE code = 'E2'", "an experiment of a sealed plan is never changed")]
+    [InlineData("UPDATE experiments SET confirms = 'E1' WHERE code = 'E2'", "an experiment of a sealed plan is never changed")]
+    [InlineData("UPDATE experiments SET shared_control = 'oven' WHERE code = 'E2'", "an experiment of a sealed plan is never changed")]
+    [InlineData("UPDATE families SET level = 0.04 WHERE campaign_id = 1", "a family of a sealed plan is never changed")]
+    [InlineData("UPDATE families SET opens_after = 'b' WHERE campaign_id = 1", "a family of a sealed plan is never changed")]
+    [InlineData("DELETE FROM families WHERE campaign_id = 1", "a family of a sealed plan is never deleted")]
+    [InlineData("UPDATE review_families SET survivor_count = 0", "a review is never changed")]
+    [InlineData("DELETE FROM review_families", "a review is never deleted")]
     public void The_record_is_only_added_to(string sql, string message) => Refused(sql, message);
 
     [Theory]
@@ -47,6 +58,9 @@ public sealed class DatabaseRulesTests(SealedCatalog catalog) : IClassFixture<Se
     [InlineData("INSERT INTO measurements SELECT * FROM measurements", "measurements.experiment_id")]
     [InlineData("INSERT INTO test_results SELECT * FROM test_results", "test_results.experiment_id")]
     [InlineData("INSERT INTO reviews SELECT 99, campaign_id, number, taken_at, correction, level, family_size, tested_count, survivor_count, is_interim, last_test_run_id, program_version, lines FROM reviews", "reviews.number")]
+    [InlineData(NewFamily + "(2, 2, 'a', NULL, NULL, NULL, 'any')", "families.campaign_id, families.name")]
+    [InlineData(NewFamily + "(2, 1, 'b', NULL, NULL, NULL, 'any')", "families.campaign_id, families.position")]
+    [InlineData(NewReviewFamily + "(1, 1, 'b', 'bh', 0.03, 2, 2, 1, 1, 1)", "review_families.review_id")]
     public void What_is_unique_stays_so(string sql, string message) => Refused(sql, "UNIQUE constraint failed: " + message[..message.IndexOf('.', StringComparison.Ordinal)], message);
 
     [Theory]
@@ -83,6 +97,18 @@ public sealed class DatabaseRulesTests(SealedCatalog catalog) : IClassFixture<Se
     [InlineData(NewReview + "(99, 1, 9, 1, 'bh', 0.05, 2, 3, 1, 0, 'v', x'')", "ck_reviews_counts")]
     [InlineData(NewReview + "(99, 1, 9, 1, 'bh', 0.05, 2, 1, 2, 0, 'v', x'')", "ck_reviews_counts")]
     [InlineData(NewReview + "(99, 1, 9, 1, 'bh', 0.05, 2, 1, 1, 3, 'v', x'')", "ck_reviews_interim")]
+    [InlineData(NewFamily + "(2, 0, 'b', NULL, NULL, NULL, 'any')", "ck_families_position")]
+    [InlineData(NewFamily + "(2, 2, '', NULL, NULL, NULL, 'any')", "ck_families_name")]
+    [InlineData(NewFamily + "(2, 2, 'b', NULL, 0.0, NULL, 'any')", "ck_families_level")]
+    [InlineData(NewFamily + "(2, 2, 'b', NULL, 1.0, NULL, 'any')", "ck_families_level")]
+    [InlineData(NewFamily + "(2, 2, 'b', NULL, NULL, 'b', 'any')", "ck_families_opens")]
+    [InlineData(NewFamily + "(2, 2, 'b', NULL, NULL, 'a', 'some')", "ck_families_opens")]
+    [InlineData(NewReviewFamily + "(1, 2, 'b', 'bh', 1.0, 2, 2, 1, 1, 1)", "ck_review_families_level")]
+    [InlineData(NewReviewFamily + "(1, 2, 'b', 'bh', 0.03, 1, 2, 2, 1, 1)", "ck_review_families_counts")]
+    [InlineData(NewReviewFamily + "(1, 2, 'b', 'bh', 0.03, 3, 2, 1, 1, 1)", "ck_review_families_counts")]
+    [InlineData(NewReviewFamily + "(1, 2, 'b', 'bh', 0.03, 2, 2, 1, 2, 1)", "ck_review_families_counts")]
+    [InlineData(NewReviewFamily + "(1, 2, 'b', 'bh', 0.03, 2, 2, 1, 1, 0)", "ck_review_families_open")]
+    [InlineData(NewReviewFamily + "(1, 2, 'b', 'bh', 0.03, 2, 2, 1, 1, 2)", "ck_review_families_open")]
     public void Values_out_of_range_are_refused(string sql, string check) => Refused(sql, "CHECK constraint failed: " + check);
 
     [Theory]
@@ -102,6 +128,8 @@ public sealed class DatabaseRulesTests(SealedCatalog catalog) : IClassFixture<Se
     [InlineData(NewReview + "(99, 77, 9, 1, 'bh', 0.05, 2, 1, 1, 0, 'v', x'')")]
     [InlineData("DELETE FROM group_sets WHERE id = 1")]
     [InlineData("UPDATE group_sets SET id = 99 WHERE id = 1")]
+    [InlineData(NewFamily + "(77, 1, 'b', NULL, NULL, NULL, 'any')")]
+    [InlineData(NewReviewFamily + "(77, 1, 'b', 'bh', 0.03, 2, 2, 1, 1, 1)")]
     public void Keys_point_to_rows_that_exist(string sql) => Refused(sql, "FOREIGN KEY constraint failed");
 
     [Theory]
@@ -116,6 +144,8 @@ public sealed class DatabaseRulesTests(SealedCatalog catalog) : IClassFixture<Se
     [InlineData("UPDATE campaigns SET title = 'x' WHERE code = 'O'")]
     [InlineData("UPDATE experiments SET group_set_id = 1 WHERE code = 'E2'")]
     [InlineData(NewExperiment + "(90, 3, 'new', 0, 'f', 'none', NULL, NULL, NULL, NULL, NULL)")]
+    [InlineData("UPDATE families SET level = 0.04 WHERE campaign_id = 2")]
+    [InlineData("DELETE FROM families WHERE campaign_id = 2")]
     public void What_is_open_can_be_changed(string sql)
     {
         using SqliteTransaction transaction = catalog.Connection.BeginTransaction();

@@ -90,6 +90,8 @@ public sealed class UpgradeTests
         StoredCampaign stored = new CampaignStore(catalog).Get("published-designs");
         Assert.Equal(stored.Campaign.PlanDigest, PlanDigest.Of(stored.Campaign, new PlanStore(catalog).Read(stored.Id)));
         Assert.False(new ReviewStore(catalog).Take("published-designs", testedOnly: false).IsNew);
+        Assert.Equal(["families 0", "review_families 0"], new[] { "families", "review_families" }.Select(t => FormattableString.Invariant($"{t} {Raw.Integer(catalog.Connection, $"SELECT count(*) FROM {t}")}")));
+        Assert.Equal(("", 12, 12), (standing.Families.Single().Name, standing.Families[0].Size, standing.Families[0].Survivors));
     }
 
     [Fact]

@@ -42,6 +42,20 @@ public sealed class ExactOracleTests
 
     [Theory]
     [MemberData(nameof(SmallFamilies))]
+    public void Hommel_for_any_dependence_is_closed_testing_with_Simes_times_the_harmonic_sum(int count, int untested) =>
+        CheckClosed(
+            "hommel-any",
+            count,
+            untested,
+            sorted =>
+            {
+                Rational harmonic = Enumerable.Range(1, count + untested).Select(k => Rational.One / k).Aggregate((a, b) => a + b);
+                return Rational.Min(Rational.One, sorted.Select((p, j) => harmonic * (sorted.Length * p) / (j + 1)).Aggregate(Rational.Min));
+            },
+            1);
+
+    [Theory]
+    [MemberData(nameof(SmallFamilies))]
     public void Hochberg_rejects_up_to_the_largest_rank_that_passes(int count, int untested) =>
         CheckStepUp("hochberg", count, untested, static (p, m, rank) => (m - rank + 1) * p);
 
@@ -78,7 +92,7 @@ public sealed class ExactOracleTests
         }
     }
 
-    private static void CheckClosed(string key, int count, int untested, Func<Rational[], Rational> local)
+    private static void CheckClosed(string key, int count, int untested, Func<Rational[], Rational> local, long units = 0)
     {
         int m = count + untested;
         foreach (double[] p in Cases(count, m))
@@ -97,7 +111,7 @@ public sealed class ExactOracleTests
                 }
             }
 
-            Assert.Equal(worst.Take(count).Select(w => w.Round()), Families.Adjust(key, p, m));
+            Assert.Equal(worst.Take(count).Select(w => w.Round()), Families.Adjust(key, p, m), (a, b) => Families.UlpsApart(a, b) <= units);
         }
     }
 

@@ -12,7 +12,9 @@ public sealed class PropertyTests
         foreach (Correction correction in CorrectionRegistry.All)
         {
             double[] adjusted = Families.Adjust(correction.Key, family.P, family.FamilySize);
-            Assert.All(family.P.Zip(adjusted), pair => Assert.InRange(pair.Second, pair.First, 1));
+            bool mayGoBelow = correction.MayGoBelowP && !correction.NeedsWeights;
+            Assert.All(family.P.Zip(adjusted), pair => Assert.InRange(pair.Second, mayGoBelow ? 0 : pair.First, 1));
+            Assert.All(family.P.Zip(adjusted), pair => Assert.True(pair.First == 0 || pair.Second > 0, correction.Key));
         }
     }
 
@@ -48,7 +50,7 @@ public sealed class PropertyTests
     public void The_procedures_keep_their_published_order(Drawn family)
     {
         (string Lower, string Upper)[] pairs =
-            [("hommel", "hochberg"), ("hochberg", "holm"), ("holm", "bonferroni"), ("holm-sidak", "holm"), ("holm-sidak", "sidak"), ("sidak", "bonferroni"), ("bh", "by"), ("bh", "hommel"), ("none", "bh")];
+            [("hommel", "hochberg"), ("hochberg", "holm"), ("holm", "bonferroni"), ("holm-sidak", "holm"), ("holm-sidak", "sidak"), ("sidak", "bonferroni"), ("bh", "by"), ("bh", "hommel"), ("none", "bh"), ("hommel", "hommel-any")];
         foreach ((string lower, string upper) in pairs)
         {
             double[] smaller = Families.Adjust(lower, family.P, family.FamilySize);

@@ -8,18 +8,20 @@ public sealed class ReferenceTableTests
 {
     private static readonly ReferenceTable Exact = ReferenceTable.Read("campaign/adjust_exact.csv");
 
-    public static TheoryData<string> Keys => [.. CorrectionRegistry.All.Select(c => c.Key)];
+    public static TheoryData<string> Keys => [.. CorrectionRegistry.FromPAlone.Select(c => c.Key)];
 
     [Theory]
     [MemberData(nameof(Keys))]
     public void Every_adjusted_p_value_is_the_exact_one_rounded_once(string key)
     {
+        // Hommel's for any dependence is a rounded value times a sum: rounded twice.
+        long units = key == "hommel-any" ? 1 : 0;
         string column = key == "none" ? "p" : key.Replace('-', '_');
         foreach (IGrouping<string, ReferenceRow> set in Exact.Rows.GroupBy(r => r.Text("set")))
         {
             double[] p = [.. set.Select(r => r.Number("p"))];
             double[] expected = [.. set.Select(r => r.Number(column))];
-            Assert.Equal(expected, Families.Adjust(key, p, p.Length));
+            Assert.Equal(expected, Families.Adjust(key, p, p.Length), (a, b) => Families.UlpsApart(a, b) <= units);
         }
     }
 

@@ -30,6 +30,7 @@ public sealed record GlyphSet
         Cut = "~",
         Between = "|",
         Times = "*",
+        Marked = "=",
         HasDots = false,
     };
 
@@ -95,6 +96,9 @@ public sealed record GlyphSet
 
     /// <summary>Something that warns.</summary>
     public string Warns { get; private init; } = "!";
+
+    /// <summary>Marked by the user.</summary>
+    public string Marked { get; private init; } = "▪";
 
     /// <summary>Multiplication.</summary>
     public string Times { get; private init; } = "×";

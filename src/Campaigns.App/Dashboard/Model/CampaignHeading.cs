@@ -1,7 +1,9 @@
 using System.Globalization;
 using Campaigns.App.Output;
+using Campaigns.App.Wording;
 using Campaigns.Domain;
 using Campaigns.Statistics.Corrections;
+using Campaigns.Statistics.Online;
 
 namespace Campaigns.App.Dashboard.Model;
 
@@ -11,23 +13,26 @@ public sealed class CampaignHeading
     /// <summary>Words a campaign's heading.</summary>
     /// <param name="standing">The campaign as it stands.</param>
     /// <param name="correction">Its correction; null where the program does not know it.</param>
-    public CampaignHeading(CampaignStanding standing, Correction? correction)
+    public CampaignHeading(CampaignStanding standing, ErrorProcedure? correction)
     {
         Campaign campaign = standing.Campaign;
         Code = campaign.Code;
         Title = campaign.Title;
-        Held = [ErrorRateWords(campaign.ErrorRate), "level " + NumberText.RoundTrip(campaign.Level.Value), correction?.Name ?? campaign.Correction];
+        Held = [ErrorRateWords(campaign.ErrorRate), "level " + NumberText.RoundTrip(campaign.Level.Value), correction is null ? campaign.Correction : FamilyText.Procedures(campaign)];
         Plan = campaign.IsExploratory ? "no plan before the data" : campaign.IsSealed ? "plan sealed" : "plan still open";
         Progress =
         [
             $"{Count(standing.TestedCount)} of {Count(standing.Experiments.Count)} planned tested",
             standing.SurvivorCount == 1 ? "1 survivor" : Count(standing.SurvivorCount) + " survivors",
         ];
-        Family = standing.FamilySize == standing.Experiments.Count ? null : "family of " + Count(standing.FamilySize);
+        Family = campaign.JudgedFamilies.Count > 0 ? FamiliesOf(standing.Families) : standing.FamilySize == standing.Experiments.Count ? null : "family of " + Count(standing.FamilySize);
         ReviewTrouble = TroubleWith(standing);
         Review = standing.LastReview is not { } review ? "no review stored yet"
             : $"review {Count(review.Number)} of {review.At.UtcDateTime.ToString("yyyy-MM-dd", CultureInfo.InvariantCulture)} " + (ReviewTrouble ?? "is up to date");
-        Meaning = correction?.Guarantee ?? $"This program knows no correction named {campaign.Correction}: what it guarantees cannot be said here.";
+        string stands = correction is OnlineProcedure ? "Each experiment is decided when it arrives, and its decision stands. " : "";
+        Meaning = campaign.JudgedFamilies.Count > 0 ? string.Join(" ", [.. FamilyText.Guarantees(standing.Overview), FamilyText.Together(standing.Overview)])
+            : correction is not null ? stands + correction.Guarantee
+            : $"This program knows no correction named {campaign.Correction}: what it guarantees cannot be said here.";
         ValidUnder = correction is null ? null : DependenceWords(correction.ValidUnder);
     }
 
@@ -84,6 +89,12 @@ public sealed class CampaignHeading
         _ => throw new ArgumentOutOfRangeException(nameof(dependence), dependence, "No words for this dependence."),
     };
 
+    private static string FamiliesOf(IReadOnlyList<FamilyStanding> families)
+    {
+        int closed = families.Count(f => !f.IsOpen);
+        return (families.Count == 1 ? "1 family" : Count(families.Count) + " families") + (closed == 0 ? "" : ", " + Count(closed) + " closed");
+    }
+
     private static string? TroubleWith(CampaignStanding standing)
     {
         if (standing.LastReview is not { } review)
@@ -91,7 +102,7 @@ public sealed class CampaignHeading
             return null;
         }
 
-        return standing.ResultsSinceReview > 0 ? "is behind by " + (standing.ResultsSinceReview == 1 ? "1 result" : Count(standing.ResultsSinceReview) + " results")
+        return standing.ResultsSinceReview > 0 ? (review.IsInterim ? "is interim and behind by " : "is behind by ") + (standing.ResultsSinceReview == 1 ? "1 result" : Count(standing.ResultsSinceReview) + " results")
             : review.Correction != standing.Campaign.Correction ? "used " + review.Correction
             : review.Level != standing.Campaign.Level ? "used level " + NumberText.RoundTrip(review.Level.Value)
             : review.IsInterim ? "is interim: tested ones only"

@@ -13,7 +13,7 @@ public sealed class DashboardModel
     // Some 0.02 s of checks and sorting.
     private const int ManyValues = 20_000;
     private readonly DashboardSource _source;
-    private readonly Func<string, Correction?> _findCorrection;
+    private readonly Func<string, ErrorProcedure?> _findCorrection;
     private readonly Dictionary<string, ExperimentDetail> _details = [];
     private ExperimentFilter _filter = ExperimentFilter.Read("", out _)!;
     private int[] _order = [];
@@ -24,11 +24,12 @@ public sealed class DashboardModel
     /// <summary>Makes the model; the first experiment in the plan's order is selected.</summary>
     /// <param name="source">Where the campaign comes from.</param>
     /// <param name="findCorrection">The correction with a key, or null.</param>
-    public DashboardModel(DashboardSource source, Func<string, Correction?> findCorrection)
+    public DashboardModel(DashboardSource source, Func<string, ErrorProcedure?> findCorrection)
     {
         _source = source;
         _findCorrection = findCorrection;
         Standing = source.Standing;
+        Marks = new Marks(Standing);
         (Correction, Heading, Ranking) = Read(Standing);
         Sort();
         Narrow(keep: -1);
@@ -41,13 +42,16 @@ public sealed class DashboardModel
     public CampaignStanding Standing { get; private set; }
 
     /// <summary>The campaign's correction; null where the program does not know it.</summary>
-    public Correction? Correction { get; private set; }
+    public ErrorProcedure? Correction { get; private set; }
 
     /// <summary>What every page says about the campaign.</summary>
     public CampaignHeading Heading { get; private set; }
 
     /// <summary>The ranked p-values.</summary>
     public Ranking Ranking { get; private set; }
+
+    /// <summary>The experiments that are marked.</summary>
+    public Marks Marks { get; }
 
     /// <summary>The column sorted by; null for the plan's order.</summary>
     public ExperimentColumn? SortColumn { get; private set; }
@@ -79,6 +83,10 @@ public sealed class DashboardModel
     /// <summary>The experiment in a row.</summary>
     /// <param name="row">Row from 0.</param>
     public ExperimentResult RowAt(int row) => Standing.Experiments[_rows[row]];
+
+    /// <summary>Position in the campaign's list of the experiment in a row.</summary>
+    /// <param name="row">Row from 0.</param>
+    public int PositionAt(int row) => _rows[row];
 
     /// <summary>Whether the selected experiment in full must first be computed, and that may take a good part of a second: a permutation test draws up to millions of arrangements, and checks sort every value.</summary>
     public bool IsSelectedDetailSlow =>
@@ -131,6 +139,23 @@ public sealed class DashboardModel
         }
 
         Select(Array.IndexOf(_rows, position));
+    }
+
+    /// <summary>Marks the selected experiment, or takes its mark off.</summary>
+    public void MarkSelected()
+    {
+        if (_rows.Length > 0)
+        {
+            Marks.Turn(_rows[_selectedRow]);
+            Changed?.Invoke();
+        }
+    }
+
+    /// <summary>Marks every experiment shown, or, where all of them are marked, takes their marks off.</summary>
+    public void MarkShown()
+    {
+        Marks.TurnAll(_rows);
+        Changed?.Invoke();
     }
 
     /// <summary>Sorts by a column, the smallest first; by the same column again, the other way round. The selected experiment stays selected.</summary>
@@ -192,6 +217,7 @@ public sealed class DashboardModel
     {
         string? code = Selected?.Plan.Code;
         Standing = _source.Reload();
+        Marks.Follow(Standing);
         _details.Clear();
         _searchable = null;
         (Correction, Heading, Ranking) = Read(Standing);
@@ -200,9 +226,9 @@ public sealed class DashboardModel
         Changed?.Invoke();
     }
 
-    private (Correction?, CampaignHeading, Ranking) Read(CampaignStanding standing)
+    private (ErrorProcedure?, CampaignHeading, Ranking) Read(CampaignStanding standing)
     {
-        Correction? correction = _findCorrection(standing.Campaign.Correction);
+        ErrorProcedure? correction = _findCorrection(standing.Campaign.Correction);
         return (correction, new CampaignHeading(standing, correction), new Ranking(standing, correction));
     }
 

@@ -16,10 +16,12 @@ public sealed class Ranking
     /// <summary>Ranks the tested experiments of a campaign; equal p-values stay in the plan's order.</summary>
     /// <param name="standing">The campaign as it stands.</param>
     /// <param name="correction">Its correction; null where the program does not know it.</param>
-    public Ranking(CampaignStanding standing, Correction? correction)
+    public Ranking(CampaignStanding standing, ErrorProcedure? correction)
     {
         _standing = standing;
-        _correction = correction;
+
+        // Ranks run over all experiments, while each family has a boundary of its own; an online procedure has none.
+        _correction = standing.Families.Count > 1 ? null : correction as Correction;
         Count = standing.TestedCount;
         _order = ExperimentOrder.By(standing.Experiments, ExperimentColumn.Named("p"), isFalling: false)[..Count];
         _rankOf = new int[standing.Experiments.Count];
@@ -42,6 +44,9 @@ public sealed class Ranking
 
     /// <summary>Hypotheses in the family; those beyond <see cref="Count"/> count as p = 1.</summary>
     public int FamilySize { get; }
+
+    /// <summary>Whether there are several families, each with a boundary of its own.</summary>
+    public bool HasFamilies => _standing.Families.Count > 1;
 
     /// <summary>Survivors.</summary>
     public int SurvivorCount { get; }

@@ -28,6 +28,7 @@ public sealed class ExperimentsPage : DashboardPage
     private readonly CanvasView _caption;
     private readonly CanvasView _list;
     private readonly CanvasView _note;
+    private readonly CanvasView _marks;
     private readonly CanvasView _divider;
     private readonly CanvasView _detail;
     private readonly ScrollPane _scroll;
@@ -39,6 +40,7 @@ public sealed class ExperimentsPage : DashboardPage
     private int _detailOf = -1;
     private int _awaited = -1;
     private bool _isDetailOpen;
+    private bool _hasMarks;
 
     /// <summary>Makes the page.</summary>
     /// <param name="context">What it shows, and with what.</param>
@@ -49,9 +51,10 @@ public sealed class ExperimentsPage : DashboardPage
         _caption = Part(PaintCaption);
         _list = Part(PaintList, takesKeys: true, () => Model.SelectedRow < 0 ? null : Model.SelectedRow - _top + ListPainter.HeaderRows);
         _note = Part(PaintNote);
+        _marks = Part((width, height) => MarksPainter.Paint(Model.Marks, width, height, Glyphs));
         _divider = Part(PaintDivider);
         _detail = Part(_scroll.Paint, takesKeys: true);
-        Add(_filterName, _filter, _caption, _list, _note, _divider, _detail);
+        Add(_filterName, _filter, _caption, _list, _marks, _note, _divider, _detail);
         _listKeys = new()
         {
             [Key.CursorDown] = () => Model.Select(Model.SelectedRow + 1),
@@ -64,6 +67,8 @@ public sealed class ExperimentsPage : DashboardPage
             [Key.S] = () => Model.SortByNeighbour(1),
             [Key.S.WithShift] = () => Model.SortByNeighbour(-1),
             [Key.R] = () => Model.SortBy(Model.SortColumn),
+            [Key.M] = Model.MarkSelected,
+            [Key.M.WithShift] = Model.MarkShown,
         };
         _filter.ValueChanged += (_, e) => Model.SetFilter(e.NewValue ?? "");
         _list.Clicked += ClickList;
@@ -80,8 +85,8 @@ public sealed class ExperimentsPage : DashboardPage
 
     /// <inheritdoc/>
     public override IReadOnlyList<(string Key, string Does)> Keys => _isDetailOpen
-        ? [("Esc", "list"), ("Up/Down", "scroll"), ("Left/Right", "previous/next"), ("F1", "help"), ("q", "quit")]
-        : [("Enter", "detail"), ("/", "filter"), ("s", "sort"), ("r", "reverse"), TurnKeys, ("F5", "reload"), ("F1", "help"), ("q", "quit")];
+        ? [("Esc", "list"), ("Up/Down", "scroll"), ("Left/Right", "previous/next"), ("m", "mark"), ("F1", "help"), ("q", "quit")]
+        : [("Enter", "detail"), ("/", "filter"), ("s", "sort"), ("r", "reverse"), ("m", "mark"), TurnKeys, ("F1", "help"), ("q", "quit"), ("F5", "reload")];
 
     /// <inheritdoc/>
     public override View Entrance => _isDetailOpen ? _detail : _list;
@@ -187,6 +192,12 @@ public sealed class ExperimentsPage : DashboardPage
             return Back();
         }
 
+        if (key == Key.M)
+        {
+            Model.MarkSelected();
+            return true;
+        }
+
         bool isScrolled = _scroll.Obey(key);
         ShowChange();
         return isScrolled;
@@ -231,9 +242,14 @@ public sealed class ExperimentsPage : DashboardPage
         }
     }
 
-    // A filter may also be taken off by the model itself.
+    // A filter may also be taken off by the model itself, and the first mark takes room from the list.
     private void FollowModel()
     {
+        if (_hasMarks != Model.Marks.Count > 0)
+        {
+            Arrange();
+        }
+
         if (_filter.Text != Model.FilterText)
         {
             _filter.Text = Model.FilterText;
@@ -248,12 +264,17 @@ public sealed class ExperimentsPage : DashboardPage
             part.Visible = isListShown;
         }
 
+        _hasMarks = Model.Marks.Count > 0;
+        _marks.Visible = isListShown && _hasMarks;
         _note.Visible = !IsWide && isListShown;
         _divider.Visible = IsWide;
         _detail.Visible = IsWide || _isDetailOpen;
         int captionX = FilterLabel + FilterWidth + 1;
         (_caption.X, _caption.Width, _caption.Height) = (captionX, Math.Max(0, ListWidth - captionX), 1);
-        (_list.Y, _list.Width, _list.Height) = (1, ListWidth, Dim.Fill(IsWide ? 0 : NoteRows));
+        int below = IsWide ? 0 : NoteRows;
+        int marks = _hasMarks ? MarksPainter.Rows : 0;
+        (_list.Y, _list.Width, _list.Height) = (1, ListWidth, Dim.Fill(below + marks));
+        (_marks.Y, _marks.Width, _marks.Height) = (Pos.AnchorEnd(below + MarksPainter.Rows), ListWidth, MarksPainter.Rows);
         (_note.Y, _note.Width, _note.Height) = (Pos.AnchorEnd(NoteRows), Dim.Fill(), NoteRows);
         (_divider.X, _divider.Width, _divider.Height) = (ListWidth, 1, Dim.Fill());
         (_detail.X, _detail.Width, _detail.Height) = (IsWide ? ListWidth + 2 : 1, Dim.Fill(), Dim.Fill());

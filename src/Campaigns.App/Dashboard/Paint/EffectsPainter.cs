@@ -50,7 +50,7 @@ internal static class EffectsPainter
 
         if (detail.Analysis.DetectableAtStrictest is { } strictest)
         {
-            thresholds.Add($"{DetailSheet.Number(strictest)}{unit} at the strictest threshold {standing.Campaign.Level}/{DetailSheet.Whole(standing.FamilySize)}");
+            thresholds.Add($"{DetailSheet.Number(strictest)}{unit} at the strictest threshold {FamilyText.Level(standing.FamilyOf(detail.Result).Level)}/{DetailSheet.Whole(standing.FamilyOf(detail.Result).Size)}");
         }
 
         if (thresholds.Count > 0)

@@ -17,6 +17,8 @@ public static class HelpPainter
         ("Left Right", "in an open experiment the one before and after; in the ranking a rank"),
         ("s, Shift+s", "sort by the next column, by the one before (or click a column's name)"),
         ("r", "reverse the order"),
+        ("m", "mark the selected experiment, or take its mark off; below the list, at most how many of the marked are false"),
+        ("Shift+m", "mark all rows shown, or take their marks off"),
         ("/ or F3", "type a filter; Enter or Esc goes back to the list, Esc once more takes it off"),
         ("z", "in the ranking: the whole family, or near the boundary"),
         ("F5", "load the campaign again"),
@@ -47,6 +49,7 @@ public static class HelpPainter
         rows.Add((ListPainter.SurvivalText(true, glyphs), "survives: its adjusted p-value is at most the level", Ink.Survivor));
         rows.Add((ListPainter.SurvivalText(false, glyphs), "does not survive", Ink.Text));
         rows.Add((ListPainter.SurvivalText(null, glyphs), "has no result (the status says why) and counts as p = 1 in the family", Ink.Open));
+        rows.Add((glyphs.Marked + " behind a code", "marked by you: " + MarksPainter.Meaning, Ink.Text));
         rows.Add(("numbers", "p with four decimals, below 0.0001 as 3.2e-7; others with four significant digits", Ink.Text));
         rows.Add(("", "", Ink.Text));
         rows.Add(("this campaign", "", Ink.Heading));

@@ -40,6 +40,12 @@ public static class ListPainter
         {
             int row = top + y - HeaderRows;
             Row(canvas, columns, model.RowAt(row), y, glyphs);
+            if (model.Marks.Has(model.PositionAt(row)))
+            {
+                // In the gap behind the code.
+                canvas.Put(columns[0].X + columns[0].Width, y, glyphs.Marked, Ink.Heading);
+            }
+
             if (row == model.SelectedRow)
             {
                 canvas.InkRow(y, Ink.Selected);

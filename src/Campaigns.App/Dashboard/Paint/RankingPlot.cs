@@ -65,9 +65,10 @@ public sealed class RankingPlot
 
         if (ranking is { HasBoundary: false })
         {
+            string why = ranking.HasFamilies ? "Each family has a boundary of its own" : "This correction has no simple boundary";
             return ranking.LargestSurvivor is { } largest
-                ? $"This correction has no simple boundary; the line stands at the largest p that survives, {NumberText.P(largest)}."
-                : "This correction has no simple boundary, and no p-value survives.";
+                ? $"{why}; the line stands at the largest p that survives, {NumberText.P(largest)}."
+                : $"{why}, and no p-value survives.";
         }
 
         double first = ranking.BoundaryAt(1)!.Value, last = ranking.BoundaryAt(ranking.FamilySize)!.Value;

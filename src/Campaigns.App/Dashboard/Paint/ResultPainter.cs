@@ -30,6 +30,16 @@ internal static class ResultPainter
             sheet.Line($"p {NumberText.P(p)}" + (result.AdjustedP is { } adjusted ? $", adjusted {NumberText.P(adjusted)}" : ""));
         }
 
+        if (OnlineText.Decision(result.Entry) is { } decision)
+        {
+            sheet.Line(decision);
+        }
+
+        if (result.Family is { Name.Length: > 0 } family)
+        {
+            sheet.Line($"family {family.Name}: level {FamilyText.Level(family.Level)}" + (family.Waits is { } waits ? $", {(family.IsOpen ? "open" : "closed")}, {waits}" : ""), Ink.Quiet);
+        }
+
         string held = string.Join(", ", heading.Held);
         (string sign, string sentence, Ink ink) = result.Survives switch
         {
@@ -46,7 +56,7 @@ internal static class ResultPainter
         if (detail.Result.Resampling is { } resampling)
         {
             sheet.Line(ResamplingText.Sentence(resampling));
-            if (ResamplingText.TooCoarse(resampling, standing) is { } warning)
+            if (ResamplingText.TooCoarse(resampling, standing.FamilyOf(detail.Result)) is { } warning)
             {
                 sheet.Marked(sheet.Glyphs.Warns, warning, Ink.Warning);
             }

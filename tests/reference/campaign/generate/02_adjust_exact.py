@@ -64,12 +64,30 @@ def bky_adj(ps, bh):
         out.append(min(ONE, qp/(1-qp)) if qp < ONE else ONE)
     return out
 
+def bky_decide(ps, q):
+    """the two stages themselves: first-stage rejections, true nulls estimated, level of the second stage, rejections"""
+    m = len(ps); qp = q/(1+q)
+    reach = lambda level: max([k+1 for k in range(m) if ps[k] <= level*(k+1)/m], default=0)
+    r1 = reach(qp)
+    if r1 in (0, m): return r1, m-r1, None, r1
+    qs = qp*m/(m-r1)
+    return r1, m-r1, qs, reach(qs)
+
+def storey_adj(ps):
+    """Storey, Taylor and Siegmund 2004, lambda = 1/2: least level at which some t in [p, lambda] has (W+1)/(1-lambda) t <= level R(t); 1 above lambda"""
+    L = F(1, 2); W = sum(1 for x in ps if x > L)
+    est = {t: F(W+1)/(1-L)*t/sum(1 for x in ps if x <= t) for t in set(ps) if t <= L}
+    least, c = {}, ONE
+    for t in sorted(est, reverse=True):
+        c = min(c, est[t]); least[t] = c
+    return [least.get(x, ONE) for x in ps]
+
 def sidak(x, n):                     # 1-(1-x)^n exactly rounded
     X = mpmath.mpf(x.numerator)/x.denominator
     return 1-(1-X)**n
 
 if __name__ == '__main__':
-    rows = []
+    rows, brow = [], []
     for name, p in read_pvectors().items():
         t0 = time.time()
         m = len(p); P = [fr(x) for x in p]; o = order(P); ps = [P[i] for i in o]
@@ -90,10 +108,18 @@ if __name__ == '__main__':
         res['bh'] = bh
         res['by'] = stepup([H*m*ps[k]/(k+1) for k in range(m)])
         res['bky'] = bky_adj(ps, bh)
-        cols = ['bonferroni','sidak','holm','holm_sidak','hochberg','hommel','bh','by','bky']
+        for q in (F(5,100), F(1,10)):
+            r1, m0, qs, r2 = bky_decide(ps, q)
+            assert r2 == sum(1 for x in res['bky'] if x <= q), (name, q, r2)
+            brow.append((name, m, float(q), float(q/(1+q)), r1, m0, float(qs) if qs else 'all' if r1 else float(q/(1+q)), r2))
+        res['hommel_any'] = [min(ONE, H*x) for x in res['hommel']]
+        res['storey'] = storey_adj(ps)
+        cols = ['bonferroni','sidak','holm','holm_sidak','hochberg','hommel','bh','by','bky','hommel_any','storey']
         un = {c: unsort(o, res[c]) for c in cols}
         for i in range(m):
             rows.append([name, i+1, p[i]] + [float(un[c][i]) for c in cols])
         print(name, m, '%.1fs' % (time.time()-t0), flush=True)
     write('adjust_exact.csv', 'adjusted p-values in exact rational arithmetic (Sidak and Holm-Sidak: mpmath, 4000 bits), rounded once to a double; generator: generate/02_adjust_exact.py',
           ['set','index','p']+cols, rows)
+    write('bky_stages.csv', 'the two stages of Benjamini, Krieger and Yekutieli 2006, definition 6, in exact rational arithmetic; generator: generate/02_adjust_exact.py',
+          ['set','m','q','q_prime','r1','m0','q_star','rejected'], brow)

@@ -1,0 +1,42 @@
+using Campaigns.App.Output;
+using Campaigns.App.Wording;
+using Campaigns.Catalog.Streams;
+using Campaigns.Domain;
+
+namespace Campaigns.App.Commands;
+
+/// <summary>Standing decisions as rows.</summary>
+internal static class DecisionRows
+{
+    /// <summary>A row an experiment that was given a level, stream by stream in the order of starting.</summary>
+    public static RowTable Of(IReadOnlyList<StreamStore.Line> lines) => new(
+        [
+            new("stream", "stream", true), new("position", "position", true), new("experiment", "experiment"), new("level", "level given", true), new("p", "p", true), new("survives", "survives"),
+            new("registered_at", "registered", GivesWay: 2), new("decided_at", "decided", GivesWay: 1), new("overlaps", "overlaps", GivesWay: 3),
+        ],
+        lines.Select(l => (Cell[])
+        [
+            Cell.Whole(l.Entry.Stream), Cell.Whole(l.Entry.Position), Cell.Text(l.Experiment), Cell.Number(l.Entry.Level), Cell.P(l.Entry.P), Cell.Truth(l.Entry.Survives),
+            Cell.Text(Words.Instant(l.Entry.RegisteredAt)), Cell.Text(l.Entry.DecidedAt is { } at ? Words.Instant(at) : null), Cell.Truth(l.Entry.Overlaps),
+        ]))
+    {
+        WhenEmpty = "No experiment was given a level yet.",
+    };
+
+    /// <summary>What goes below such rows.</summary>
+    public static IReadOnlyList<string> Below(CampaignOverview overview, IReadOnlyList<StreamStore.Line> lines)
+    {
+        List<string> below = [.. CampaignText.Footnotes(overview, [])];
+        if (OnlineText.WithoutLevel(lines.Select(l => l.Entry)) is { } late)
+        {
+            below.Insert(0, late);
+        }
+
+        if (lines.Any(l => l.Entry.Overlaps))
+        {
+            below.Insert(0, "Overlaps: ran at the same time as another experiment of its stream; what was not known at its start was counted as the worst.");
+        }
+
+        return below;
+    }
+}

@@ -1,0 +1,37 @@
+using Campaigns.Domain;
+using Campaigns.Statistics.ClosedTesting;
+
+namespace Campaigns.App.Wording;
+
+/// <summary>What is said about the bound of a set of experiments, the same on paper and on screen.</summary>
+internal static class BoundWording
+{
+    /// <summary>What the bound is not.</summary>
+    public const string NoEstimate = "It is an upper confidence bound on how many are false, no estimate of it; 'at least 0 real' does not mean that nothing is real.";
+
+    /// <summary>For example "marked 7: at least 4 real, at most 3 false (95% confidence)".</summary>
+    /// <param name="bound">The bound.</param>
+    /// <param name="confidence">In (0, 1).</param>
+    public static string Line(MarkedBound bound, double confidence) =>
+        FormattableString.Invariant($"marked {bound.Marked}: at least {bound.RealAtLeast} real, at most {bound.FalseAtMost} false ({ConfidenceText(confidence)} confidence)");
+
+    /// <summary>For example "95%".</summary>
+    /// <param name="confidence">In (0, 1).</param>
+    public static string ConfidenceText(double confidence) => confidence < 0.99999999
+        ? FormattableString.Invariant($"{100 * confidence:0.######}%")
+        : "more than 99.999999%";
+
+    /// <summary>What the bound rests on where no choice is offered.</summary>
+    public const string SimesAlone = "The bound holds if Simes' inequality holds for the true nulls, as it does for independent and for positively dependent experiments (Goeman and Solari 2011).";
+
+    /// <summary>What the dependence has to be, and who proved it.</summary>
+    /// <param name="testing">The closed testing.</param>
+    public static string Assumption(SimesClosedTesting testing) => testing.AnyDependence
+        ? "Holds whatever the dependence between experiments: closed testing with Simes' tests at the level over 1 + 1/2 + ... + 1/m (Hommel 1983; Goeman and Solari 2011)."
+        : "Holds if Simes' inequality holds for the true nulls, as it does for independent and for positively dependent experiments: closed testing with Simes' tests (Goeman and Solari 2011; Goeman, Meijer, Krebs and Solari 2019). '--dependence any' holds under any.";
+
+    /// <summary>What the confidence is of, and why the set may be chosen freely.</summary>
+    /// <param name="bounds">The bounds of a campaign.</param>
+    public static string Simultaneous(CampaignBounds bounds) =>
+        FormattableString.Invariant($"With {ConfidenceText(bounds.Confidence)} confidence the bounds of all sets of experiments hold together, so a set may be chosen after looking at everything. They are computed once over all {bounds.Testing.FamilySize} planned experiments of the campaign, never over the set alone: at most {bounds.Testing.LargestUnrejected} of the {bounds.Testing.FamilySize} are false.");
+}

@@ -1,0 +1,81 @@
+using Campaigns.App.Output;
+using Campaigns.Domain;
+using Campaigns.Statistics.Online;
+
+namespace Campaigns.App.Wording;
+
+/// <summary>Procedures that decide as experiments arrive, in words.</summary>
+internal static class OnlineText
+{
+    /// <summary>What streams in a row hold together.</summary>
+    private const string SeveralStreams = "Each stream's guarantee holds for its own experiments; they do not add up to one for all.";
+
+    /// <summary>The settings of a stream in one phrase, for example "shape jm over 40 experiments, initial wealth 0.025".</summary>
+    public static string Of(OnlineSettings settings)
+    {
+        string horizon = settings.Horizon is { } last ? FormattableString.Invariant($"over {last} experiment{(last == 1 ? "" : "s")}") : "without end";
+        return $"shape {settings.Shape} {horizon}{Part("initial wealth", settings.InitialWealth)}{Part("lambda", settings.Lambda)}{Part("tau", settings.Tau)}";
+
+        static string Part(string name, double? value) => value is { } given ? $", {name} {NumberText.RoundTrip(given)}" : "";
+    }
+
+    /// <summary>What a campaign says of its online procedure, key by key as in campaign.json.</summary>
+    public static IReadOnlyList<(string Key, string Text)> Facts(OnlineOptions? options) =>
+    [
+        ("horizon", options?.Horizon switch { null => "(nothing)", 0 => "none", var given => FormattableString.Invariant($"{given}") }),
+        ("shape", options?.Shape ?? "(nothing)"),
+        ("initialWealth", Number(options?.InitialWealth)),
+        ("lambda", Number(options?.Lambda)),
+        ("tau", Number(options?.Tau)),
+    ];
+
+    /// <summary>The lines under tables of a campaign that is judged as its experiments arrive.</summary>
+    /// <param name="overview">The campaign in figures.</param>
+    /// <param name="procedure">The procedure that it was sealed with.</param>
+    public static IEnumerable<string> Lines(CampaignOverview overview, OnlineProcedure procedure)
+    {
+        Campaign campaign = overview.Campaign;
+        yield return FormattableString.Invariant($"{procedure.Name} at {campaign.Level} decides each experiment when it arrives, at the level that it was given before its p-value was seen; {overview.TestedCount} of {overview.FamilySize} have a result. A decision stands, whatever comes after it. Adjusted p: p x {campaign.Level} / level given. The batch view beside it may change with every experiment and decides nothing.");
+        foreach (string warning in FamilyText.Warnings(overview))
+        {
+            yield return warning;
+        }
+
+        if (campaign.Streams.Count <= 1)
+        {
+            yield return campaign.Streams.Count == 0 ? procedure.Guarantee : $"Its stream: {Of(campaign.Streams[0].Settings)}. {procedure.Guarantee}";
+            yield break;
+        }
+
+        foreach (StreamHead stream in campaign.Streams)
+        {
+            yield return $"{Named(stream)}. {stream.Procedure.Guarantee}";
+        }
+
+        yield return SeveralStreams;
+    }
+
+    /// <summary>A stream in a sentence without its full stop.</summary>
+    public static string Named(StreamHead stream) =>
+        FormattableString.Invariant($"Stream {stream.Number} since {stream.StartedAt:yyyy-MM-dd HH:mm} UTC: {stream.Procedure.Name}, {Of(stream.Settings)}{(stream.Reason is null ? "" : $" (reason: {stream.Reason})")}");
+
+    /// <summary>What a test run decided, in a sentence; empty where it decided nothing.</summary>
+    public static string Decided(int decided, int survivors) => decided == 0 ? ""
+        : FormattableString.Invariant($" {decided} decided as they arrived: {survivors} survive{(survivors == 1 ? "s" : "")}. The decisions stand.");
+
+    /// <summary>A sentence on experiments that were given nothing; null where there are none.</summary>
+    public static string? WithoutLevel(IEnumerable<StreamEntry> entries)
+    {
+        int count = entries.Count(e => e.Level == 0);
+        return count == 0 ? null : FormattableString.Invariant($"{count} experiment(s) came after the horizon and were given the level 0: they cannot survive. 'campaigns restream' starts a new stream for those to come.");
+    }
+
+    /// <summary>A decision in a sentence; null before the experiment is registered.</summary>
+    public static string? Decision(StreamEntry? entry) => entry is null ? null
+        : FormattableString.Invariant($"Experiment {entry.Position} of stream {entry.Stream}, at the level {NumberText.RoundTrip(entry.Level)}")
+            + (entry.Survives is not { } survives ? ", given before its p-value is seen; not decided yet."
+                : FormattableString.Invariant($": {(survives ? "survives" : "does not survive")} by the decision of {entry.DecidedAt:yyyy-MM-dd HH:mm} UTC on {(entry.P is { } p ? $"p = {NumberText.P(p)}" : "data that gave no p-value")}, which stands."))
+            + (entry.Overlaps ? " Other experiments ran at the same time: what was not known at its start was counted as the worst." : "");
+
+    private static string Number(double? value) => value is { } given ? NumberText.RoundTrip(given) : "(nothing)";
+}
