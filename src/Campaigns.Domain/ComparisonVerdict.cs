@@ -32,24 +32,24 @@ public sealed class ComparisonVerdict(Campaign campaign, IReadOnlyList<FamilySta
         : FormattableString.Invariant($"Since a family behind a gate costs nothing for experiments but does for comparisons, these levels are divided by {_crowding:0.####}: over all families {Bound}");
 
     /// <summary>What the intervals of comparisons inside survivors hold, in a sentence; empty where nothing survives.</summary>
-    public string SelectedGuarantee => OnlineVerdict.ProcedureOf(campaign) is not null && families.Any(f => f.Survivors > 0)
-        ? "Selected intervals hold together inside each survivor at 1 less the level that it was given on arrival: each experiment's miss with at most that probability, and no rate over the campaign is promised."
-        : string.Join(" ", families.Where(f => f.Survivors > 0).Select(SelectedGuaranteeOf));
+    public string SelectedGuarantee => string.Join(" ", families.Where(f => f.Survivors > 0).Select(SelectedGuaranteeOf));
 
     /// <summary>The probability with which any interval inside a surviving experiment may miss, so that the campaign's level pays for the selection too.</summary>
     /// <param name="experiment">The experiment as it stands in the campaign.</param>
-    /// <returns>
-    /// level R/m under false discovery control; its share of the level (level/m, or by its weight) under familywise control; the level that it was given where experiments are judged as they arrive;
-    /// null for an experiment that does not survive.
-    /// </returns>
+    /// <returns>level R/m under false discovery control, level/m (or its weight's share) under familywise control, the level given on arrival in a campaign judged as its experiments arrive; null for an experiment that does not survive.</returns>
     public double? SelectedRisk(ExperimentResult experiment)
     {
         ArgumentNullException.ThrowIfNull(experiment);
+        if (experiment.Survives != true)
+        {
+            return null;
+        }
+
         FamilyStanding family = FamilyOf(experiment);
-        return experiment.Survives != true ? null
-            : OnlineVerdict.ProcedureOf(campaign) is not null ? experiment.GivenLevel
-            : campaign.ErrorRate == ErrorRate.Familywise ? Share(family, experiment.Plan)
-            : SelectedIntervals.FalseCoverageRisk(family.Level, family.Size, family.Survivors);
+        return OnlineVerdict.ProcedureOf(campaign) is not null ? experiment.GivenLevel
+            : campaign.ErrorRate != ErrorRate.Familywise ? SelectedIntervals.FalseCoverageRisk(family.Level, family.Size, family.Survivors)
+            : family.WeightTotal is { } total ? family.Level.Value * (experiment.Plan.Weight ?? 1) / (total * _crowding)
+            : SelectedIntervals.FamilywiseRisk(family.Level, family.Size) / _crowding;
     }
 
     /// <summary>The comparisons of one experiment, judged, with the intervals that account for its selection.</summary>
@@ -102,21 +102,26 @@ public sealed class ComparisonVerdict(Campaign campaign, IReadOnlyList<FamilySta
             : FormattableString.Invariant($"{inside} the {family.Survivors} surviving of {family.Size} experiments, at level {family.Level} x {family.Survivors}/{family.Size}: the expected error inside them, averaged over the survivors, is at most {family.Level} (Benjamini and Bogomolov 2014; for independent experiments).");
     }
 
+    private string ShareOf(FamilyStanding family)
+    {
+        string level = _crowding == 1 ? FormattableString.Invariant($"{family.Level}") : FormattableString.Invariant($"{family.Level}/{_crowding:0.####}");
+        return family.WeightTotal is { } total ? FormattableString.Invariant($"{level} times its weight over {total:0.######}") : FormattableString.Invariant($"{level}/{family.Size}");
+    }
+
     /// <summary>The share of an experiment's comparisons in its family's level: one hypothesis of the family's size, or its weight of their sum.</summary>
     private PValue Familywise(PValue p, FamilyStanding family, PlannedExperiment plan) => family.WeightTotal is { } total
         ? SelectedFamilies.Weighted(p, total * _crowding, plan.Weight ?? 1)
         : _crowding == 1 ? SelectedFamilies.Familywise(p, family.Size) : SelectedFamilies.Weighted(p, family.Size * _crowding, 1);
 
-    private double Share(FamilyStanding family, PlannedExperiment plan) => family.WeightTotal is { } total
-        ? family.Level.Value * (plan.Weight ?? 1) / (total * _crowding)
-        : _crowding == 1 ? SelectedIntervals.FamilywiseRisk(family.Level, family.Size) : family.Level.Value / (family.Size * _crowding);
+    private string SelectedGuaranteeOf(FamilyStanding family)
+    {
+        string inside = family.Name.Length == 0 ? "Selected intervals hold together inside each survivor" : $"In the family '{family.Name}' selected intervals hold together inside each survivor";
+        return OnlineVerdict.ProcedureOf(campaign) is not null ? $"{inside} at 1 less the level that it was given on arrival: each experiment's error is held at its own level, and no rate over the campaign."
+            : campaign.ErrorRate == ErrorRate.Familywise ? FormattableString.Invariant($"{inside} at 1 - {ShareOf(family)}: {(families.Count > 1 ? "over all families " : "")}the probability that any of them misses is at most {campaign.Level} (union bound).")
+            : FormattableString.Invariant($"{inside} at 1 - {family.Level} x {family.Survivors}/{family.Size}: the expected share of survivors in which any of them misses is at most {family.Level} (after Benjamini and Yekutieli 2005; for independent experiments).");
+    }
 
-    private string SelectedGuaranteeOf(FamilyStanding family) => campaign.ErrorRate == ErrorRate.Familywise
-        ? FormattableString.Invariant($"Selected intervals hold together inside each survivor at 1 less {ShareOf(family)}: {(families.Count > 1 ? "over all families " : "")}the probability that any of them misses is at most {campaign.Level} (union bound).")
-        : FormattableString.Invariant($"Selected intervals hold together inside each survivor at 1 - {family.Level} x {family.Survivors}/{family.Size}: the expected share of survivors in which any of them misses is at most {family.Level} (after Benjamini and Yekutieli 2005; for independent experiments).");
-
-    private FamilyStanding FamilyOf(ExperimentResult experiment) =>
-        families.Count == 1 ? families[0] : _byName[experiment.Plan.Family ?? ""];
+    private FamilyStanding FamilyOf(ExperimentResult experiment) => families.Count == 1 ? families[0] : _byName[experiment.Plan.Family ?? ""];
 
     private ExperimentComparison Judge(ExperimentComparison comparison)
     {

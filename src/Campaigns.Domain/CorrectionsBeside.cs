@@ -6,7 +6,7 @@ namespace Campaigns.Domain;
 /// <summary>A campaign under every correction: to see how much hangs on the choice, never to choose by it.</summary>
 public static class CorrectionsBeside
 {
-    /// <summary>The sealed procedure first, then every other batch correction in the order of the registry.</summary>
+    /// <summary>The sealed procedure first, then every other batch correction in the order of the registry; those with weights where the plan gives some.</summary>
     /// <param name="standing">The campaign as it stands. Procedures that decide as experiments arrive need the order of arrival and are shown only where one is sealed.</param>
     /// <remarks>O(m log m) for each correction.</remarks>
     public static IReadOnlyList<CorrectionOutcome> Of(CampaignStanding standing)
@@ -14,10 +14,11 @@ public static class CorrectionsBeside
         ArgumentNullException.ThrowIfNull(standing);
         ErrorProcedure chosen = FamilyVerdict.ProcedureOf(standing.Campaign);
         ExperimentResult[] tested = [.. standing.Experiments.Where(e => e.P is not null)];
+        IReadOnlyList<Correction> others = standing.Experiments.Any(e => e.Plan.Weight is not null) ? CorrectionRegistry.All : CorrectionRegistry.FromPAlone;
         return
         [
             new CorrectionOutcome(chosen, IsSealed: true, [.. tested.Select(e => e.AdjustedP)], [.. tested.Select(e => e.Survives == true)]),
-            .. Shown(standing).Where(c => c.Key != chosen.Key).Select(c => Under(standing, c)),
+            .. others.Where(c => c.Key != chosen.Key).Select(c => Under(standing, c)),
         ];
     }
 
@@ -37,11 +38,6 @@ public static class CorrectionsBeside
         return alike.Any(o => o.Survives[place]) && !alike.All(o => o.Survives[place]);
     }
 
-    /// <summary>Those that need nothing but p, and those with weights where the plan gives some.</summary>
-    private static IReadOnlyList<Correction> Shown(CampaignStanding standing) =>
-        standing.Experiments.Any(e => e.Plan.Weight is not null) ? CorrectionRegistry.All : CorrectionRegistry.FromPAlone;
-
-    /// <summary>The campaign with another correction in all its families.</summary>
     private static CorrectionOutcome Under(CampaignStanding standing, Correction correction)
     {
         CampaignVerdict verdict = FamilyVerdict.JudgeBy(standing.Campaign, standing.Experiments, correction);

@@ -14,7 +14,7 @@ public sealed class CorrectionsBesideTests
         IReadOnlyList<CorrectionOutcome> outcomes = CorrectionsBeside.Of(standing);
         Assert.Equal((correction, true), (outcomes[0].Procedure.Key, outcomes[0].IsSealed));
         Assert.All(outcomes.Skip(1), o => Assert.False(o.IsSealed));
-        Assert.Equal(CorrectionRegistry.All.Select(c => c.Key).Order(StringComparer.Ordinal), outcomes.Select(o => o.Procedure.Key).Order(StringComparer.Ordinal));
+        Assert.Equal(CorrectionRegistry.FromPAlone.Select(c => c.Key).Order(StringComparer.Ordinal), outcomes.Select(o => o.Procedure.Key).Order(StringComparer.Ordinal));
         Assert.Equal(standing.Experiments.Where(e => e.P is not null).Select(e => e.AdjustedP), outcomes[0].Adjusted);
         Assert.All(outcomes, o => Assert.Equal(2, o.Adjusted.Count));
     }

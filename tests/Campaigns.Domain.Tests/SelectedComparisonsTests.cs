@@ -44,6 +44,37 @@ public sealed class SelectedComparisonsTests
         Assert.Null(Verdict(ErrorRate.Familywise).SelectedRisk(Experiment("none", false)));
     }
 
+    // Weight 2 of 10; two families that together have 0.08 where the campaign has 0.05; an experiment that arrived with 0.004.
+    [Fact]
+    public void Weights_families_and_levels_given_on_arrival_have_their_shares()
+    {
+        Campaign campaign = Campaign(ErrorRate.Familywise, 0.05);
+        FamilyStanding one = new("", "weighted-holm", campaign.Level, 8, 8, 8, 3) { WeightTotal = 10 };
+        ExperimentResult experiment = Experiment("tukey-kramer", true);
+        Assert.Equal(0.05 * 2 / 10, new ComparisonVerdict(campaign, [one]).SelectedRisk(experiment with { Plan = experiment.Plan with { Weight = 2 } })!.Value, 1e-17);
+
+        FamilyStanding[] two = [new("x", "holm", campaign.Level, 5, 5, 5, 1), new("y", "holm", new SignificanceLevel(0.03), 4, 4, 4, 1)];
+        Assert.Equal(0.05 / 5 * 5 / 8, new ComparisonVerdict(campaign, two).SelectedRisk(experiment with { Plan = experiment.Plan with { Family = "x" } })!.Value, 1e-16);
+
+        var online = new ComparisonVerdict(campaign with { Correction = "alpha-spending" }, [one with { WeightTotal = null }]);
+        Assert.Equal(0.004, online.SelectedRisk(experiment with { GivenLevel = 0.004 }));
+        Assert.Contains("given on arrival", online.SelectedGuarantee, StringComparison.Ordinal);
+    }
+
+    // What is claimed and what its selected interval says agree for a weight too.
+    [Fact]
+    public void With_weights_claims_leave_out_zero()
+    {
+        FamilyStanding family = new("", "weighted-holm", new SignificanceLevel(0.05), 8, 8, 8, 3) { WeightTotal = 10 };
+        ExperimentResult experiment = Experiment("tukey-kramer", true);
+        foreach (double weight in (double[])[1e-9, 0.5, 3, 9])
+        {
+            IReadOnlyList<ExperimentComparison> judged = new ComparisonVerdict(Campaign(ErrorRate.Familywise, 0.05), [family])
+                .Judge(experiment with { Plan = experiment.Plan with { Weight = weight } }, Labels, FollowUp("tukey-kramer"));
+            Assert.All(judged, c => Assert.Equal(c.Survives, c.SelectedInterval!.Value.Lower > 0 || c.SelectedInterval.Value.Upper < 0));
+        }
+    }
+
     [Fact]
     public void A_level_below_the_grain_of_doubles_has_none() =>
         Assert.All(Verdict(ErrorRate.Familywise, 1e-16).Judge(Experiment("scheffe", true), Labels, FollowUp("scheffe")), c => Assert.Null(c.SelectedInterval));

@@ -69,7 +69,7 @@ internal sealed class CorrectionsVerb : Verb
             Below =
             [
                 FormattableString.Invariant($"Hanging on the choice among those that hold the {CampaignText.RateWords(standing.Campaign.ErrorRate)}: {hanging} experiment(s){(hanging > 0 ? "; --hanging lists them" : "")}."),
-                NeverToChoose, .. Ending(standing),
+                NeverToChoose, .. InFamilies(standing), .. Ending(standing),
             ],
         };
     }
@@ -95,7 +95,7 @@ internal sealed class CorrectionsVerb : Verb
         {
             Above = [FormattableString.Invariant($"{standing.Campaign.Code}: adjusted p-values in {Of(standing)}, to be held against {(standing.Campaign.JudgedFamilies.Count == 0 ? standing.Campaign.Level.ToString() : "the level of each family")}")],
             WhenEmpty = hangingOnly ? "No experiment hangs on the choice." : "There is nothing to show.",
-            Below = [$"Hangs: survives under some of the corrections that hold the {CampaignText.RateWords(rate)}, each under its own assumptions, and not under others.", NeverToChoose, .. Ending(standing)],
+            Below = [$"Hangs: survives under some of the corrections that hold the {CampaignText.RateWords(rate)}, each under its own assumptions, and not under others.", NeverToChoose, .. InFamilies(standing), .. Ending(standing)],
         };
     }
 
@@ -120,7 +120,7 @@ internal sealed class CorrectionsVerb : Verb
     private static IEnumerable<int> HangingPlaces(CampaignStanding standing, IReadOnlyList<CorrectionOutcome> outcomes) =>
         Enumerable.Range(0, standing.TestedCount).Where(i => CorrectionsBeside.Hangs(outcomes, standing.Campaign.ErrorRate, i));
 
-    private static IEnumerable<string> Ending(CampaignStanding standing) => [.. InFamilies(standing), .. CampaignText.Deviations(standing.Overview), CampaignText.ReviewLine(standing.Overview)];
+    private static IEnumerable<string> Ending(CampaignStanding standing) => [.. CampaignText.Deviations(standing.Overview), CampaignText.ReviewLine(standing.Overview)];
 
     private static string Of(CampaignStanding standing) => standing.Campaign.JudgedFamilies.Count == 0
         ? FormattableString.Invariant($"a family of {standing.FamilySize}")

@@ -21,36 +21,12 @@ internal sealed class ResultsVerb : Verb
     {
         using Catalog.Catalog catalog = session.OpenCatalog();
         CampaignStanding standing = new StandingReader(catalog).Read(session.Get(_code));
-        session.Print(new RowTable(ColumnsFor(standing), standing.Experiments.Select(Row))
+        session.Print(new RowTable([.. ColumnsFor(standing)], standing.Experiments.Select(Row))
         {
             Above = [$"{standing.Campaign.Code}: {CampaignText.Goal(standing.Campaign)}"],
-            Below =
-            [
-                .. OnlineText.WithoutLevel(standing.Experiments.Select(e => e.Entry).OfType<StreamEntry>()) is { } late ? [late] : (string[])[],
-                .. ConfirmationText.Footnotes(standing.Campaign, standing.Experiments),
-                .. CampaignText.Footnotes(standing.Overview, standing.Experiments.Select(e => e.Plan.Test)),
-                .. UnitNotes.Of(standing.Experiments),
-            ],
+            Below = [.. OnlineText.WithoutLevel(standing.Experiments.Select(e => e.Entry).OfType<StreamEntry>()) is { } late ? [late] : (string[])[], .. ConfirmationText.Footnotes(standing.Campaign, standing.Experiments), .. CampaignText.Footnotes(standing.Overview, standing.Experiments.Select(e => e.Plan.Test)), .. UnitNotes.Of(standing.Experiments)],
         });
         return ExitCode.Done;
-    }
-
-    /// <summary>The columns, those on confirmations for people too where there are any.</summary>
-    private static IReadOnlyList<Column> ColumnsFor(CampaignStanding standing)
-    {
-        bool hasFamilies = standing.Campaign.JudgedFamilies.Count > 0;
-        bool confirms = standing.Experiments.Any(e => e.Plan.Confirms is not null);
-        return
-        [
-            .. Columns.Select(c => c.Name switch
-            {
-                "family" when hasFamilies => c with { Heading = "family", GivesWay = 1 },
-                "confirms" when confirms => c with { Heading = "confirms", GivesWay = 1 },
-                "replicability_adjusted_p" when confirms => c with { Heading = "adjusted p of both", GivesWay = 0 },
-                "replicated" when confirms => c with { Heading = "replicated", GivesWay = 0, CutLast = true },
-                _ => c,
-            }),
-        ];
     }
 
     public static IReadOnlyList<Column> Columns { get; } =
@@ -62,8 +38,22 @@ internal sealed class ResultsVerb : Verb
         new("specimens", null, true), new("epsilon_squared", null, true), new("cohen_f", null, true), new("arrangements", null, true), new("seed", null), new("follow_up", null),
         new("standing_level", null, true), new("batch_adjusted_p", null, true), new("batch_survives", null),
         new("family", null), new("family_size", null, true), new("family_tested", null, true), new("level", null, true),
-        new("confirms", null, GivesWay: 5), new("replicability_p", null, true, 4), new("replicability_adjusted_p", null, true, 4), new("replicated", null, GivesWay: 4),
+        new("confirms", null), new("replicability_p", null, true), new("replicability_adjusted_p", null, true), new("replicated", null),
     ];
+
+    /// <summary>The columns, for people with the family where there are several to tell apart, and with confirmations where there are any.</summary>
+    private static IEnumerable<Column> ColumnsFor(CampaignStanding standing)
+    {
+        bool confirms = standing.Experiments.Any(e => e.Plan.Confirms is not null);
+        return Columns.Select(c => c.Name switch
+        {
+            "family" when standing.Campaign.JudgedFamilies.Count > 0 => c with { Heading = "family", GivesWay = 1 },
+            "confirms" when confirms => c with { Heading = "confirms", GivesWay = 1 },
+            "replicability_adjusted_p" when confirms => c with { Heading = "adjusted p of both", GivesWay = 0 },
+            "replicated" when confirms => c with { Heading = "replicated", GivesWay = 0, CutLast = true },
+            _ => c,
+        });
+    }
 
     public static Cell[] Row(ExperimentResult result) =>
     [
