@@ -49,8 +49,8 @@ public sealed class FamilyCampaignTests : IDisposable
         Assert.Equal(["secondary", "weighted-holm", "0.02", "primary", "any", "2", "2", "1", "true"], families.Rows[1]);
         Assert.Equal(["extra", "hommel", "0.02", "secondary", "all", "2", "2", "0", "false"], families.Rows[2]);
         CsvText results = _place.Run("results", "F", "--format", "csv").Well().Csv;
-        Assert.Equal(["family", "family_size", "family_tested", "level"], results.Columns[^4..]);
-        Assert.Equal(["primary", "3", "2", "0.03"], results.Rows[2][^4..]);
+        Assert.Equal(["family", "family_size", "family_tested", "level"], results.Columns[^8..^4]);
+        Assert.Equal(["primary", "3", "2", "0.03"], results.Rows[2][^8..^4]);
         Assert.Equal(("extra", "2", "2", "0.02", "1", "false"), (results.Value("X1", "family"), results.Value("X1", "family_size"), results.Value("X1", "family_tested"), results.Value("X1", "level"), results.Value("X1", "adjusted_p"), results.Value("X1", "survives")));
 
         // Weighted Holm by hand: S1 weighs 3 of 4, so that its p counts 4/3 times, that of S2 once.
