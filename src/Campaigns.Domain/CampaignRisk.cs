@@ -35,8 +35,11 @@ public sealed record CampaignRisk(
         PValue? largest = null;
         foreach (int i in survivors)
         {
-            PValue p = experiments[i].P!.Value;
-            largest = largest is { } before && before > p ? before : p;
+            // A decision that stands survives a change of its data, which takes the result away: then the p counts on which it was made.
+            if ((experiments[i].P ?? experiments[i].Entry?.P) is { } p)
+            {
+                largest = largest is { } before && before > p ? before : p;
+            }
         }
 
         PValue[] tested = [.. experiments.Where(e => e.P is not null).Select(e => e.P!.Value)];

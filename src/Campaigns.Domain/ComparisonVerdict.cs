@@ -23,7 +23,13 @@ public sealed class ComparisonVerdict(Campaign campaign, IReadOnlyList<FamilySta
     /// <summary>What is held, in a sentence.</summary>
     public string Guarantee => OnlineVerdict.ProcedureOf(campaign) is not null
         ? FormattableString.Invariant($"Comparisons are claimed only inside surviving experiments, each experiment's at the level that it was given on arrival (adjusted p: p x {campaign.Level} / level given): the error inside each experiment is held at its own level, and no rate over the comparisons of the campaign.")
-        : string.Join(" ", families.Select(GuaranteeOf));
+        : string.Join(" ", [.. families.Select(GuaranteeOf), .. campaign.ErrorRate == ErrorRate.Familywise && families.Count > 1 ? [Together] : (string[])[]]);
+
+    private string Bound => $"the probability of any false comparison in the campaign is at most {campaign.Level} (union bound).";
+
+    private string Together => _crowding == 1
+        ? $"Over all families {Bound}"
+        : FormattableString.Invariant($"Since a family behind a gate costs nothing for experiments but does for comparisons, these levels are divided by {_crowding:0.####}: over all families {Bound}");
 
     /// <summary>What the intervals of comparisons inside survivors hold, in a sentence; empty where nothing survives.</summary>
     public string SelectedGuarantee => string.Join(" ", families.Where(f => f.Survivors > 0).Select(SelectedGuaranteeOf));
@@ -91,7 +97,7 @@ public sealed class ComparisonVerdict(Campaign campaign, IReadOnlyList<FamilySta
     private string GuaranteeOf(FamilyStanding family)
     {
         string inside = family.Name.Length == 0 ? "Comparisons are claimed only inside" : $"In the family '{family.Name}' comparisons are claimed only inside";
-        return campaign.ErrorRate == ErrorRate.Familywise ? FormattableString.Invariant($"{inside} surviving experiments, each experiment's at level {ShareOf(family)}: {(families.Count > 1 ? "over all families " : "")}the probability of any false comparison in the campaign is at most {campaign.Level} (union bound).")
+        return campaign.ErrorRate == ErrorRate.Familywise ? FormattableString.Invariant($"{inside} surviving experiments, each experiment's at level {family.Level}{(family.WeightTotal is { } total ? FormattableString.Invariant($" times its weight over {total:0.######}") : FormattableString.Invariant($"/{family.Size}"))}{(families.Count == 1 ? $": {Bound}" : ".")}")
             : family.Survivors == 0 ? FormattableString.Invariant($"{inside} surviving experiments; none of the {family.Size} survives.")
             : FormattableString.Invariant($"{inside} the {family.Survivors} surviving of {family.Size} experiments, at level {family.Level} x {family.Survivors}/{family.Size}: the expected error inside them, averaged over the survivors, is at most {family.Level} (Benjamini and Bogomolov 2014; for independent experiments).");
     }

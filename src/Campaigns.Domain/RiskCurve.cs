@@ -40,10 +40,10 @@ public static class RiskCurve
         return points;
     }
 
-    /// <summary>What the campaign's correction risks after some tests; null where it is applied to several families.</summary>
+    /// <summary>What the campaign's correction risks after some tests; null where it is applied to several families or streams.</summary>
     internal static Func<int, CorrectedRisk?> Corrected(CampaignStanding standing)
     {
-        if (standing.Families is not [FamilyStanding family])
+        if (standing.Families is not [FamilyStanding family] || standing.Campaign.Streams.Count > 1)
         {
             return _ => null;
         }

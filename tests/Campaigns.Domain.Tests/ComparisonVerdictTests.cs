@@ -111,7 +111,7 @@ public sealed class ComparisonVerdictTests
         var verdict = new ComparisonVerdict(Campaign(ErrorRate.Familywise), [Standing("a", 0.05, 3, 3), Standing("b", 0.05, 3, 1)]);
         Assert.Equal((0.012, true), Judged(verdict, "a", 0.002));
         Assert.Equal((0.06, false), Judged(verdict, "b", 0.01));
-        Assert.Contains("each experiment's at level 0.05/2/3: over all families the probability of any false comparison in the campaign is at most 0.05", verdict.Guarantee, StringComparison.Ordinal);
+        Assert.Contains("each experiment's at level 0.05/3. Since a family behind a gate costs nothing for experiments but does for comparisons, these levels are divided by 2: over all families the probability of any false comparison in the campaign is at most 0.05", verdict.Guarantee, StringComparison.Ordinal);
     }
 
     private static FamilyStanding Standing(string name, double level, int size, int survivors) => new(name, "holm", new SignificanceLevel(level), size, size, size, survivors);

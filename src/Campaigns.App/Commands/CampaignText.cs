@@ -34,7 +34,7 @@ internal static class CampaignText
         Campaign campaign = standing.Campaign;
         List<string> lines =
         [
-            .. FamilyVerdict.ProcedureOf(campaign) is OnlineProcedure online ? OnlineText.Lines(standing, online) : FamilyText.Lines(standing),
+            .. FamilyVerdict.ProcedureOf(campaign) is OnlineProcedure online ? [.. OnlineText.Lines(standing, online), .. FamilyText.Warnings(standing)] : FamilyText.Lines(standing),
             .. TestsOf(tests).Select(test => $"{test.Name}, assumes: {char.ToLowerInvariant(test.Assumes[0])}{test.Assumes[1..]}"),
         ];
         if (campaign.IsExploratory)

@@ -65,7 +65,7 @@ internal sealed class CorrectionsVerb : Verb
                 Cell.Truth(o.IsSealed), Cell.Text(o.Procedure.Guarantee), Cell.Text(o.Procedure.Source),
             ]))
         {
-            Above = [FormattableString.Invariant($"{standing.Campaign.Code}: {standing.TestedCount} results in a family of {standing.FamilySize}, every correction at {standing.Campaign.Level}")],
+            Above = [FormattableString.Invariant($"{standing.Campaign.Code}: {standing.TestedCount} results in {Of(standing)}, every correction at {(standing.Campaign.JudgedFamilies.Count == 0 ? standing.Campaign.Level.ToString() : "the level of each family")}")],
             Below =
             [
                 FormattableString.Invariant($"Hanging on the choice among those that hold the {CampaignText.RateWords(standing.Campaign.ErrorRate)}: {hanging} experiment(s){(hanging > 0 ? "; --hanging lists them" : "")}."),
@@ -93,7 +93,7 @@ internal sealed class CorrectionsVerb : Verb
             Cell.Truth(hanging.Contains(i)), Cell.Text(string.Join('|', CorrectionsBeside.SurvivesUnder(outcomes, rate, i))),
         ]))
         {
-            Above = [FormattableString.Invariant($"{standing.Campaign.Code}: adjusted p-values in a family of {standing.FamilySize}, to be held against {standing.Campaign.Level}")],
+            Above = [FormattableString.Invariant($"{standing.Campaign.Code}: adjusted p-values in {Of(standing)}, to be held against {(standing.Campaign.JudgedFamilies.Count == 0 ? standing.Campaign.Level.ToString() : "the level of each family")}")],
             WhenEmpty = hangingOnly ? "No experiment hangs on the choice." : "There is nothing to show.",
             Below = [$"Hangs: survives under some of the corrections that hold the {CampaignText.RateWords(rate)}, each under its own assumptions, and not under others.", NeverToChoose, .. InFamilies(standing), .. Ending(standing)],
         };
@@ -120,11 +120,15 @@ internal sealed class CorrectionsVerb : Verb
     private static IEnumerable<int> HangingPlaces(CampaignStanding standing, IReadOnlyList<CorrectionOutcome> outcomes) =>
         Enumerable.Range(0, standing.TestedCount).Where(i => CorrectionsBeside.Hangs(outcomes, standing.Campaign.ErrorRate, i));
 
+    private static IEnumerable<string> Ending(CampaignStanding standing) => [.. CampaignText.Deviations(standing.Overview), CampaignText.ReviewLine(standing.Overview)];
+
+    private static string Of(CampaignStanding standing) => standing.Campaign.JudgedFamilies.Count == 0
+        ? FormattableString.Invariant($"a family of {standing.FamilySize}")
+        : FormattableString.Invariant($"{standing.Families.Count} families of {standing.FamilySize} together");
+
     private static IEnumerable<string> InFamilies(CampaignStanding standing) => standing.Campaign.JudgedFamilies.Count == 0
         ? []
         : [FormattableString.Invariant($"Each correction is applied in each of the {standing.Families.Count} families, at the family's level and behind its gate; an adjusted p of a closed family is 1. The sealed ones are: {string.Join("; ", standing.Families.Select(f => $"{f.Name} {f.Correction} at {FamilyText.Level(f.Level)}"))}.")];
-
-    private static IEnumerable<string> Ending(CampaignStanding standing) => [.. CampaignText.Deviations(standing.Overview), CampaignText.ReviewLine(standing.Overview)];
 
     private static string DependenceWords(Dependence dependence) => dependence switch
     {

@@ -9,10 +9,11 @@ namespace Campaigns.App.Commands;
 internal static class DecisionRows
 {
     /// <summary>A row an experiment that was given a level, stream by stream in the order of starting.</summary>
+    /// <remarks>Instants are set like numbers: a cut one could be another's.</remarks>
     public static RowTable Of(IReadOnlyList<StreamStore.Line> lines) => new(
         [
             new("stream", "stream", true), new("position", "position", true), new("experiment", "experiment"), new("level", "level given", true), new("p", "p", true), new("survives", "survives"),
-            new("registered_at", "registered", GivesWay: 2), new("decided_at", "decided", GivesWay: 1), new("overlaps", "overlaps", GivesWay: 3),
+            new("registered_at", "registered", true, 3), new("decided_at", "decided", true, 2), new("overlaps", "overlaps", GivesWay: 1),
         ],
         lines.Select(l => (Cell[])
         [

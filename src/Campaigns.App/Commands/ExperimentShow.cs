@@ -101,7 +101,7 @@ internal static class ExperimentShow
         if (result.Resampling is { } resampling)
         {
             yield return ResamplingText.Sentence(resampling);
-            if (ResamplingText.TooCoarse(resampling, standing.FamilyOf(result)) is { } warning)
+            if (ResamplingText.TooCoarse(resampling, standing.FamilyOf(result), result.GivenLevel) is { } warning)
             {
                 yield return warning;
             }

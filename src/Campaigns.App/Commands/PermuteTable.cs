@@ -37,7 +37,7 @@ internal sealed class PermuteTable(SpecimenFamily family, string method, Experim
                 Arrangements(), Sets(), .. Rest(),
                 FormattableString.Invariant($"Holds the familywise error rate at {campaign.Level}, whichever hypotheses are true, if groups are exchangeable wherever their hypothesis holds, whatever the others do, and different sets were assigned independently. A difference in spread alone may also give a small p."),
                 "Source: P. H. Westfall and S. S. Young, Resampling-Based Multiple Testing, 1993.",
-                $"Survives here is no decision: the sealed correction ({FamilyVerdict.CorrectionOf(campaign).Name}) alone decides, as the last columns show; choosing after seeing this table would undo what a correction is for.",
+                $"Survives here is no decision: the sealed correction ({FamilyVerdict.ProcedureOf(campaign).Name}) alone decides, as the last columns show; choosing after seeing this table would undo what a correction is for.",
                 .. CampaignText.Deviations(Standing.Overview), CampaignText.ReviewLine(Standing.Overview),
             ],
         };

@@ -46,7 +46,7 @@ internal static class FamilyText
         }
 
         return standing.Families.All(f => ProcedureOf(campaign, f).Controls == ErrorRate.Familywise)
-            ? $"Over all families together the probability of at least one false survivor is at most {campaign.Level}: their levels add up to no more, where a family that waits for all of another to survive shares that one's level."
+            ? $"Over all families together the probability of at least one false survivor is at most {campaign.Level}, where what each procedure assumes holds: their levels add up to no more, where a family that waits for all of another to survive shares that one's level."
             : "Not every family is corrected by a procedure that holds the familywise error rate, so that nothing is held over all families together.";
     }
 

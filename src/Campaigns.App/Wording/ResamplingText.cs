@@ -20,13 +20,15 @@ internal static class ResamplingText
         return FormattableString.Invariant($"Monte Carlo: {resampling.AsExtreme} of {resampling.Arrangements} random arrangements (seed {resampling.Seed}) are at least as extreme, p = ({resampling.AsExtreme} + 1)/({resampling.Arrangements} + 1), standard error about {error}.");
     }
 
-    /// <summary>A warning where the smallest p-value that the arrangements can show lies above the strictest threshold of its family; null where it does not.</summary>
-    public static string? TooCoarse(Resampling resampling, FamilyStanding family)
+    /// <summary>A warning where the smallest p-value that the arrangements can show lies above the strictest threshold of its family, or above the level that the experiment was given; null where it does not.</summary>
+    public static string? TooCoarse(Resampling resampling, FamilyStanding family, double? givenLevel)
     {
         double smallest = resampling.IsExact ? 1.0 / resampling.Arrangements : 1.0 / (resampling.Arrangements + 1.0);
-        double strictest = family.Level.Value / family.Size;
+        double strictest = givenLevel ?? family.Level.Value / family.Size;
+        string threshold = givenLevel is null ? "the campaign's strictest threshold" : "the level that the experiment was given";
+        string origin = givenLevel is null ? " (level over family size)" : "";
         return smallest <= strictest
             ? null
-            : $"Warning: the smallest p these arrangements can show, {NumberText.Screen(smallest, 3)}, lies above the campaign's strictest threshold, {NumberText.Screen(strictest, 3)} (level over family size): the experiment may be unable to survive whatever its data.";
+            : $"Warning: the smallest p these arrangements can show, {NumberText.Screen(smallest, 3)}, lies above {threshold}, {NumberText.Screen(strictest, 3)}{origin}: the experiment may be unable to survive whatever its data.";
     }
 }

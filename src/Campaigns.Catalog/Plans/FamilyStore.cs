@@ -27,6 +27,7 @@ public sealed class FamilyStore(Catalog catalog)
             throw new RefusedException($"The experiments of '{code}' come from measurements that are loaded already, so families would come after the data; open a new campaign for families.");
         }
 
+        OnlineVerdict.RefuseFamilies(stored.Campaign with { Families = families }, []);
         Replace(stored.Id, families);
         return true;
     });

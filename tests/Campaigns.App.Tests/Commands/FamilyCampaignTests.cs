@@ -1,5 +1,10 @@
 using System.Globalization;
+using Campaigns.App.Dashboard.Model;
+using Campaigns.App.Dashboard.Paint;
 using Campaigns.App.Tests.Dashboard;
+using Campaigns.Catalog.Results;
+using Campaigns.Domain;
+using Campaigns.Statistics.Corrections;
 
 namespace Campaigns.App.Tests.Commands;
 
@@ -101,6 +106,21 @@ public sealed class FamilyCampaignTests : IDisposable
     }
 
     [Fact]
+    public void The_dashboard_tells_families_and_draws_no_boundary_for_all_of_them()
+    {
+        _place.Run("run", Folder(0.2)).Well();
+        using var catalog = Campaigns.Catalog.Catalog.Open(_place.Catalog, _place.Clock);
+        CampaignStanding standing = new StandingReader(catalog).Read("F");
+        var heading = new CampaignHeading(standing, CorrectionRegistry.Find("holm"));
+        Assert.Equal(["familywise error rate", "level 0.05", "Holm, Weighted Holm and Hommel, in 3 families"], heading.Held);
+        Assert.Equal("3 families, 1 closed", heading.Family);
+        Assert.Contains("Over all families together", heading.Meaning, StringComparison.Ordinal);
+        var ranking = new Ranking(standing, CorrectionRegistry.Find("holm"));
+        Assert.False(ranking.HasBoundary);
+        Assert.StartsWith("Each family has a boundary of its own", RankingPlot.BoundaryText(ranking), StringComparison.Ordinal);
+    }
+
+    [Fact]
     public void Families_need_a_plan()
     {
         string folder = _place.Campaign("C", null, Workplace.TwoExperiments);
@@ -114,7 +134,7 @@ public sealed class FamilyCampaignTests : IDisposable
     [Fact]
     public void Families_that_only_the_plan_names_get_the_campaigns_correction_and_rate()
     {
-        string run = _place.Run("run", _place.Campaign("C", "experiment,family\nE1,a\nE2,b\n", Workplace.TwoExperiments)).Well().Out.ReplaceLineEndings(" ");
+        string run = _place.Run("run", _place.Campaign("C", "experiment,groups,family\nE1,a|b,a\nE2,a|b,b\n", Workplace.TwoExperiments)).Well().Out.ReplaceLineEndings(" ");
         Assert.Contains("with 2 families", run, StringComparison.Ordinal);
         Assert.Contains("rates held in families do not bound the share of false ones among all their survivors together", run, StringComparison.Ordinal);
         Assert.Equal(["bh,0.05", "bh,0.05"], _place.Run("families", "C", "--format", "csv").Well().Csv.Rows.Select(r => $"{r[1]},{r[2]}"));

@@ -219,6 +219,8 @@ public sealed class OnlineCampaignTests : IDisposable
             Assert.Equal(row[5] == "true", stream.Report(given.Position, PValue.FromValue(CsvText.Number(row[4]))));
         }
 
+        _place.Run("risk", "C").Well();
+        _place.Run("risk").Well();
         string text = _place.Run("results", "C").Well().Out.Replace('\n', ' ');
         Assert.Contains("Stream 1 since 2026-03-02 09:30 UTC: Alpha-spending, shape jm over 16 experiments.", text, StringComparison.Ordinal);
         Assert.Contains("(reason: the rest counts as screening)", text, StringComparison.Ordinal);

@@ -49,7 +49,7 @@ public sealed class SizeCampaignTests : IDisposable
     {
         string[] typed = ["--campaign", "30", "--real", "9", "--groups", "3", "--effect", "0.8", "--replicates", "5", "--draws", "400", "--seed", "7"];
         CsvText csv = Csv(typed);
-        Assert.Equal(Statistics.Corrections.CorrectionRegistry.All.Select(c => c.Key), csv.Column("correction"));
+        Assert.Equal(Statistics.Corrections.CorrectionRegistry.FromPAlone.Select(c => c.Key), csv.Column("correction"));
         Assert.Equal("exact", csv.Column("method")[Row("holm")]);
         int hommel = Row("hommel");
         Assert.Equal("simulated", csv.Column("method")[hommel]);

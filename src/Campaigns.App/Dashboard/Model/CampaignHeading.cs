@@ -18,7 +18,7 @@ public sealed class CampaignHeading
         Campaign campaign = standing.Campaign;
         Code = campaign.Code;
         Title = campaign.Title;
-        Held = [ErrorRateWords(campaign.ErrorRate), "level " + NumberText.RoundTrip(campaign.Level.Value), correction is null ? campaign.Correction : campaign.JudgedFamilies.Count == 0 ? correction.Name : FamilyText.Procedures(campaign)];
+        Held = [ErrorRateWords(campaign.ErrorRate), "level " + NumberText.RoundTrip(campaign.Level.Value), campaign.JudgedFamilies.Count > 0 ? FamilyText.Procedures(campaign) : correction?.Name ?? campaign.Correction];
         Plan = campaign.IsExploratory ? "no plan before the data" : campaign.IsSealed ? "plan sealed" : "plan still open";
         Progress =
         [

@@ -56,7 +56,7 @@ internal static class ResultPainter
         if (detail.Result.Resampling is { } resampling)
         {
             sheet.Line(ResamplingText.Sentence(resampling));
-            if (ResamplingText.TooCoarse(resampling, standing.FamilyOf(detail.Result)) is { } warning)
+            if (ResamplingText.TooCoarse(resampling, standing.FamilyOf(detail.Result), detail.Result.GivenLevel) is { } warning)
             {
                 sheet.Marked(sheet.Glyphs.Warns, warning, Ink.Warning);
             }
