@@ -61,7 +61,7 @@ internal sealed class CorrectionsVerb : Verb
             outcomes.Select(o => (Cell[])
             [
                 Cell.Text(o.Procedure.Key), Cell.Text(o.IsSealed && standing.Campaign.JudgedFamilies.Count > 0 ? "as sealed, family by family" : o.Procedure.Name), Cell.Text(CampaignText.RateWords(o.Procedure.Controls)), Cell.Text(DependenceWords(o.Procedure.ValidUnder)),
-                Cell.Whole(o.SurvivorCount), Cell.Setting(standing.Campaign.Level.Value), Cell.Whole(standing.FamilySize),
+                Cell.Whole(o.IsSealed ? standing.SurvivorCount : o.SurvivorCount), Cell.Setting(standing.Campaign.Level.Value), Cell.Whole(standing.FamilySize),
                 Cell.Truth(o.IsSealed || standing.Families.Any(f => f.Correction == o.Procedure.Key)), Cell.Text(o.Procedure.Guarantee), Cell.Text(o.Procedure.Source),
             ]))
         {

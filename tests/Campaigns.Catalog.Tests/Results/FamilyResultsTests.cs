@@ -9,7 +9,7 @@ namespace Campaigns.Catalog.Tests.Results;
 
 public sealed class FamilyResultsTests
 {
-    private const string Apart = "1.0 1.1 1.2 1.3", Beside = "5.0 5.1 5.2 5.3", Alike = "1.02 1.11 1.19 1.31";
+    private const string Apart = "1.0 1.1 1.2 1.3", Beside = "5.0 5.1 5.2 5.3", Alike = "1.02 1.11 1.19 1.31", BesideAgain = "5.0 5.1 5.2 5.31";
 
     [Fact]
     public void Counts_in_the_file_and_in_memory_give_one_verdict()
@@ -99,7 +99,7 @@ public sealed class FamilyResultsTests
             new Family("three") { OpensAfter = "two", Gate = FamilyGate.AllSurvive },
         ]);
         catalog.Campaigns.Seal(TestCatalog.Code);
-        catalog.Load(string.Concat(new[] { ("E1", Beside), ("E2", Alike), ("E4", Beside), ("E5", Alike), ("E6", Beside) }.Select(e => TestCatalog.Rows(e.Item1, "A", Apart) + TestCatalog.Rows(e.Item1, "B", e.Item2))));
+        catalog.Load(string.Concat(new[] { ("E1", Beside), ("E2", Alike), ("E4", BesideAgain), ("E5", Alike), ("E6", Beside) }.Select(e => TestCatalog.Rows(e.Item1, "A", Apart) + TestCatalog.Rows(e.Item1, "B", e.Item2))));
         catalog.Test();
         return catalog;
     }

@@ -21,14 +21,11 @@ internal sealed class NewDataRule(Catalog catalog, long loadId, NameComplaints c
         using SqliteStatement brought = catalog.Prepare("SELECT EXISTS (SELECT 1 FROM measurements WHERE experiment_id = ?1 AND load_id = ?2)");
         foreach ((ConfirmedExperiment confirming, ConfirmedExperiment first) in Pairs())
         {
-            if (Brought(brought, confirming.Id))
+            bool isNew = !Brought(brought, confirming.Id)
+                || IsNew(confirming, first, sha256, $"the experiment {ShownText.Quote(Name(confirming, first))} confirms {ShownText.Quote(Name(first, confirming))} on new data");
+            if (isNew && Brought(brought, first.Id))
             {
-                Look(confirming, first, sha256, $"the experiment {ShownText.Quote(Name(confirming, first))} confirms {ShownText.Quote(Name(first, confirming))} on new data");
-            }
-
-            if (Brought(brought, first.Id))
-            {
-                Look(first, confirming, sha256, $"the experiment {ShownText.Quote(Name(first, confirming))} is confirmed by {ShownText.Quote(Name(confirming, first))} on new data");
+                IsNew(first, confirming, sha256, $"the experiment {ShownText.Quote(Name(first, confirming))} is confirmed by {ShownText.Quote(Name(confirming, first))} on new data");
             }
         }
     }
@@ -63,24 +60,28 @@ internal sealed class NewDataRule(Catalog catalog, long loadId, NameComplaints c
         return pairs;
     }
 
-    private void Look(ConfirmedExperiment receiving, ConfirmedExperiment other, Func<string> sha256, string why)
+    /// <summary>Whether what the load brought to an experiment is new against another; where it is not, that is put among the complaints.</summary>
+    private bool IsNew(ConfirmedExperiment receiving, ConfirmedExperiment other, Func<string> sha256, string why)
     {
         if (FileOf(other.Id, sha256()) is { } file)
         {
             complaints.Add("experiment", "same-file", $"{receiving.Code}\n{other.Campaign}\n{other.Code}", 1, 0, () =>
                 $"{why}, and this file has the same bytes as '{file}', which brought values to {ShownText.Quote(Name(other, receiving))}. Load measurements of its own.");
-            return;
+            return false;
         }
 
         var fresh = new ObservationColumns();
         var others = new ObservationColumns();
         string[] freshLabels = Read(receiving, onlyThisLoad: true, fresh);
         string[] otherLabels = Read(other, onlyThisLoad: false, others);
-        if (StandsIn(fresh, freshLabels, others, otherLabels))
+        bool isNew = !StandsIn(fresh, freshLabels, others, otherLabels);
+        if (!isNew)
         {
             complaints.Add("value", "no-new-data", $"{receiving.Code}\n{other.Campaign}\n{other.Code}", fresh.Lines[0], fresh.Count, () =>
                 $"{why}, and every row stands in {ShownText.Quote(Name(other, receiving))} with the same group and value. Load measurements of its own.");
         }
+
+        return isNew;
     }
 
     private string? FileOf(long experimentId, string sha256)
