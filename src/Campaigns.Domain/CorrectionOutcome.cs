@@ -10,6 +10,12 @@ namespace Campaigns.Domain;
 /// <param name="Survives">Whether each of these survives.</param>
 public sealed record CorrectionOutcome(ErrorProcedure Procedure, bool IsSealed, IReadOnlyList<PValue?> Adjusted, IReadOnlyList<bool> Survives)
 {
+    /// <summary>Whether families of the sealed plan have corrections of their own, so that it is no one procedure in all of them.</summary>
+    public bool IsMixed { get; init; }
+
+    /// <summary>Key of the procedure; "as-sealed" for a sealed plan with several.</summary>
+    public string Key => IsMixed ? "as-sealed" : Procedure.Key;
+
     /// <summary>Experiments that survive.</summary>
     public int SurvivorCount => Survives.Count(s => s);
 }

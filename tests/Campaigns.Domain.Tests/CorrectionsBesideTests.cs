@@ -47,6 +47,16 @@ public sealed class CorrectionsBesideTests
     }
 
     [Fact]
+    public void A_sealed_plan_of_several_corrections_stands_beside_each_of_them()
+    {
+        CampaignStanding one = JudgedCampaign.Of(ErrorRate.Familywise, "holm", 0.001, 0.3);
+        IReadOnlyList<CorrectionOutcome> outcomes = CorrectionsBeside.Of(one with { Families = [one.Families[0], one.Families[0] with { Name = "b", Correction = "hommel" }] });
+        Assert.Equal(("as-sealed", true), (outcomes[0].Key, outcomes[0].IsSealed));
+        Assert.Single(outcomes, o => o.Key == "holm");
+        Assert.Single(outcomes, o => o.IsSealed);
+    }
+
+    [Fact]
     public void A_campaign_without_results_is_shown_too() =>
         Assert.All(CorrectionsBeside.Of(JudgedCampaign.Of(ErrorRate.Familywise, "holm", null, null)), o => Assert.Equal((0, 0), (o.Adjusted.Count, o.SurvivorCount)));
 

@@ -60,9 +60,9 @@ internal sealed class CorrectionsVerb : Verb
             ],
             outcomes.Select(o => (Cell[])
             [
-                Cell.Text(o.Procedure.Key), Cell.Text(o.IsSealed && standing.Campaign.JudgedFamilies.Count > 0 ? "as sealed, family by family" : o.Procedure.Name), Cell.Text(CampaignText.RateWords(o.Procedure.Controls)), Cell.Text(DependenceWords(o.Procedure.ValidUnder)),
+                Cell.Text(o.Key), Cell.Text(o.IsMixed ? FamilyText.Procedures(standing.Campaign) : o.Procedure.Name), Cell.Text(CampaignText.RateWords(o.Procedure.Controls)), Cell.Text(o.IsMixed ? null : DependenceWords(o.Procedure.ValidUnder)),
                 Cell.Whole(o.IsSealed ? standing.SurvivorCount : o.SurvivorCount), Cell.Setting(standing.Campaign.Level.Value), Cell.Whole(standing.FamilySize),
-                Cell.Truth(o.IsSealed || standing.Families.Any(f => f.Correction == o.Procedure.Key)), Cell.Text(o.Procedure.Guarantee), Cell.Text(o.Procedure.Source),
+                Cell.Truth(o.IsSealed || standing.Families.Any(f => f.Correction == o.Key)), Cell.Text(o.IsMixed ? string.Join(" ", FamilyText.Guarantees(standing.Overview)) : o.Procedure.Guarantee), Cell.Text(o.IsMixed ? null : o.Procedure.Source),
             ]))
         {
             Above = [FormattableString.Invariant($"{standing.Campaign.Code}: {standing.TestedCount} results in {Of(standing)}, every correction at {(standing.Campaign.JudgedFamilies.Count == 0 ? standing.Campaign.Level.ToString() : "the level of each family")}")],
@@ -82,7 +82,7 @@ internal sealed class CorrectionsVerb : Verb
         Column[] columns =
         [
             new("experiment", "experiment"), new("p", "p", true),
-            .. outcomes.Select(o => new Column(o.Procedure.Key, o.IsSealed ? $"{o.Procedure.Key} (sealed)" : o.Procedure.Key, true, o.IsSealed ? 0 : 2)),
+            .. outcomes.Select(o => new Column(o.Key, o.IsSealed && !o.IsMixed ? $"{o.Key} (sealed)" : o.Key, true, o.IsSealed ? 0 : 2)),
             new("hangs", "hangs"), new("survives_under", hangingOnly ? "survives under" : null, GivesWay: 1, CutLast: true),
         ];
         ExperimentResult[] tested = [.. standing.Experiments.Where(e => e.P is not null)];
