@@ -248,6 +248,10 @@ namespace Campaigns.Migrations.Sqlite.Migrations
                     b.HasIndex("CampaignId")
                         .HasDatabaseName("ix_experiments_campaign");
 
+                    b.HasIndex("Confirms")
+                        .HasDatabaseName("ix_experiments_confirms")
+                        .HasFilter("confirms is not null");
+
                     b.HasIndex("CampaignId", "Code")
                         .IsUnique()
                         .HasDatabaseName("ux_experiments_code");

@@ -198,6 +198,12 @@ namespace Campaigns.Migrations.Sqlite.Migrations
                 });
 
             migrationBuilder.CreateIndex(
+                name: "ix_experiments_confirms",
+                table: "experiments",
+                column: "confirms",
+                filter: "confirms is not null");
+
+            migrationBuilder.CreateIndex(
                 name: "ux_families_name",
                 table: "families",
                 columns: new[] { "campaign_id", "name" },
@@ -244,6 +250,10 @@ namespace Campaigns.Migrations.Sqlite.Migrations
 
             migrationBuilder.DropTable(
                 name: "streams");
+
+            migrationBuilder.DropIndex(
+                name: "ix_experiments_confirms",
+                table: "experiments");
 
             migrationBuilder.DropColumn(
                 name: "confirms",

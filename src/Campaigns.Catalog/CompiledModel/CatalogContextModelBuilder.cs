@@ -11,7 +11,7 @@ namespace Campaigns.Catalog.CompiledModel
     public partial class CatalogContextModel
     {
         private CatalogContextModel()
-            : base(skipDetectChanges: false, modelId: new Guid("f6ace358-faf4-42db-8f68-6f320b122c81"), entityTypeCount: 16)
+            : base(skipDetectChanges: false, modelId: new Guid("f460cffd-3749-40ff-a2c5-e51bc9fc7eff"), entityTypeCount: 16)
         {
         }
 

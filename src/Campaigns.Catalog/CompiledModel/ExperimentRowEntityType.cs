@@ -22,7 +22,7 @@ namespace Campaigns.Catalog.CompiledModel
                 baseEntityType,
                 propertyCount: 18,
                 foreignKeyCount: 2,
-                unnamedIndexCount: 2,
+                unnamedIndexCount: 3,
                 keyCount: 1);
 
             var id = runtimeEntityType.AddProperty(
@@ -176,9 +176,14 @@ namespace Campaigns.Catalog.CompiledModel
             index.AddAnnotation("Relational:Name", "ix_experiments_campaign");
 
             var index0 = runtimeEntityType.AddIndex(
+                new[] { confirms });
+            index0.AddAnnotation("Relational:Filter", "confirms is not null");
+            index0.AddAnnotation("Relational:Name", "ix_experiments_confirms");
+
+            var index1 = runtimeEntityType.AddIndex(
                 new[] { campaignId, code },
                 unique: true);
-            index0.AddAnnotation("Relational:Name", "ux_experiments_code");
+            index1.AddAnnotation("Relational:Name", "ux_experiments_code");
 
             return runtimeEntityType;
         }

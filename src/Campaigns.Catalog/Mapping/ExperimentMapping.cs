@@ -39,6 +39,9 @@ internal sealed class ExperimentMapping : IEntityTypeConfiguration<ExperimentRow
         builder.HasOne<CampaignRow>().WithMany().HasForeignKey(e => e.CampaignId).OnDelete(DeleteBehavior.Restrict);
         builder.HasOne<GroupSetRow>().WithMany().HasForeignKey(e => e.GroupSetId).OnDelete(DeleteBehavior.Restrict);
         builder.HasIndex(e => e.CampaignId).HasDatabaseName("ix_experiments_campaign");
+
+        // Few experiments confirm another one, and every load asks for them.
+        builder.HasIndex(e => e.Confirms).HasFilter("confirms is not null").HasDatabaseName("ix_experiments_confirms");
         builder.HasIndex(e => new { e.CampaignId, e.Code }).IsUnique().HasDatabaseName("ux_experiments_code");
     }
 }

@@ -341,6 +341,8 @@ CREATE TABLE "standing_decisions" (
     CONSTRAINT "FK_standing_decisions_test_runs_test_run_id" FOREIGN KEY ("test_run_id") REFERENCES "test_runs" ("id") ON DELETE RESTRICT
 );
 
+CREATE INDEX "ix_experiments_confirms" ON "experiments" ("confirms") WHERE confirms is not null;
+
 CREATE UNIQUE INDEX "ux_families_name" ON "families" ("campaign_id", "name");
 
 CREATE UNIQUE INDEX "ux_standing_decisions_order" ON "standing_decisions" ("stream_id", "known_order");
