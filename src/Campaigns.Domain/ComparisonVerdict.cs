@@ -99,7 +99,7 @@ public sealed class ComparisonVerdict(Campaign campaign, IReadOnlyList<FamilySta
         string inside = family.Name.Length == 0 ? "Comparisons are claimed only inside" : $"In the family '{family.Name}' comparisons are claimed only inside";
         return campaign.ErrorRate == ErrorRate.Familywise ? FormattableString.Invariant($"{inside} surviving experiments, each experiment's at level {family.Level}{(family.WeightTotal is { } total ? FormattableString.Invariant($" times its weight over {total:0.######}") : FormattableString.Invariant($"/{family.Size}"))}{(families.Count == 1 ? $": {Bound}" : ".")}")
             : family.Survivors == 0 ? FormattableString.Invariant($"{inside} surviving experiments; none of the {family.Size} survives.")
-            : FormattableString.Invariant($"{inside} the {family.Survivors} surviving of {family.Size} experiments, at level {family.Level} x {family.Survivors}/{family.Size}: the expected error inside them, averaged over the survivors, is at most {family.Level} (Benjamini and Bogomolov 2014; for independent experiments).");
+            : FormattableString.Invariant($"{inside} the {family.Survivors} surviving of {family.Size} experiments, at level {family.Level} x {family.Survivors}/{family.Size}: the expected error inside them, averaged over the survivors, is at most {family.Level} (Benjamini and Bogomolov 2014; for independent experiments).{Unproved(family)}");
     }
 
     private string ShareOf(FamilyStanding family)
@@ -113,13 +113,22 @@ public sealed class ComparisonVerdict(Campaign campaign, IReadOnlyList<FamilySta
         ? SelectedFamilies.Weighted(p, total * _crowding, plan.Weight ?? 1)
         : _crowding == 1 ? SelectedFamilies.Familywise(p, family.Size) : SelectedFamilies.Weighted(p, family.Size * _crowding, 1);
 
+    /// <summary>Inside an experiment that does not survive, a comparison cannot be claimed at a smaller level than the experiment itself.</summary>
+    private static PValue Sequential(PValue adjusted, ExperimentResult experiment, bool selected) =>
+        !selected && experiment.AdjustedP is { } own && own > adjusted ? own : adjusted;
+
     private string SelectedGuaranteeOf(FamilyStanding family)
     {
         string inside = family.Name.Length == 0 ? "Selected intervals hold together inside each survivor" : $"In the family '{family.Name}' selected intervals hold together inside each survivor";
         return OnlineVerdict.ProcedureOf(campaign) is not null ? $"{inside} at 1 less the level that it was given on arrival: each experiment's error is held at its own level, and no rate over the campaign."
             : campaign.ErrorRate == ErrorRate.Familywise ? FormattableString.Invariant($"{inside} at 1 - {ShareOf(family)}: {(families.Count > 1 ? "over all families " : "")}the probability that any of them misses is at most {campaign.Level} (union bound).")
-            : FormattableString.Invariant($"{inside} at 1 - {family.Level} x {family.Survivors}/{family.Size}: the expected share of survivors in which any of them misses is at most {family.Level} (after Benjamini and Yekutieli 2005; for independent experiments).");
+            : FormattableString.Invariant($"{inside} at 1 - {family.Level} x {family.Survivors}/{family.Size}: the expected share of survivors in which any of them misses is at most {family.Level} (after Benjamini and Yekutieli 2005; for independent experiments).{Unproved(family)}");
     }
+
+    /// <summary>What is said where the number of survivors can change with the data of one of them.</summary>
+    private static string Unproved(FamilyStanding family) => CorrectionRegistry.Find(family.Correction) is { IsSimpleSelection: false } correction
+        ? $" That is proved for procedures under which an experiment's own data cannot change the number of survivors while it survives; under {correction.Name} they can, so that here it is not proved."
+        : "";
 
     private FamilyStanding FamilyOf(ExperimentResult experiment) => families.Count == 1 ? families[0] : _byName[experiment.Plan.Family ?? ""];
 
@@ -134,7 +143,7 @@ public sealed class ComparisonVerdict(Campaign campaign, IReadOnlyList<FamilySta
         bool selected = comparison.Experiment.Survives == true;
         PValue? adjusted =
             OnlineVerdict.ProcedureOf(campaign) is not null ? selected ? new OnlineLevel(1, comparison.Experiment.GivenLevel ?? 0).Adjusted(p, campaign.Level) : null
-            : campaign.ErrorRate == ErrorRate.Familywise ? Familywise(p, family, comparison.Experiment.Plan)
+            : campaign.ErrorRate == ErrorRate.Familywise ? Sequential(Familywise(p, family, comparison.Experiment.Plan), comparison.Experiment, selected)
             : selected ? SelectedFamilies.FalseDiscovery(p, family.Size, family.Survivors)
             : null;
         bool survives = selected && family.Level.Rejects(adjusted!.Value);

@@ -24,7 +24,7 @@ public static class FamilyPlan
         string[] problems = [.. families.Count == 0 ? [] : Rules(campaign, families).Concat(Members(families, plan)), .. WithoutWeight(campaign, families, plan)];
         if (problems.Length > 0)
         {
-            throw new RefusedException($"The families of '{campaign.Code}' were refused; nothing was changed.", problems.Length <= MostTold ? problems : [.. problems.Take(MostTold), FormattableString.Invariant($"... and {problems.Length - MostTold} more")]);
+            throw new RefusedException($"{(families.Count == 0 ? "The weights" : "The families")} of '{campaign.Code}' were refused; nothing was changed.", problems.Length <= MostTold ? problems : [.. problems.Take(MostTold), FormattableString.Invariant($"... and {problems.Length - MostTold} more")]);
         }
 
         FamilyLevels.Of(campaign, families);

@@ -114,6 +114,32 @@ public sealed class ComparisonVerdictTests
         Assert.Contains("each experiment's at level 0.05/3. Since a family behind a gate costs nothing for experiments but does for comparisons, these levels are divided by 2: over all families the probability of any false comparison in the campaign is at most 0.05", verdict.Guarantee, StringComparison.Ordinal);
     }
 
+    [Theory]
+    [InlineData(0.001, 0.2, 0.2)]
+    [InlineData(0.1, 0.2, 0.6)]
+    public void Inside_an_experiment_that_does_not_survive_no_comparison_has_a_smaller_adjusted_p_than_the_experiment(double p, double ofExperiment, double adjusted)
+    {
+        ExperimentResult experiment = Experiment(false) with { AdjustedP = PValue.FromValue(ofExperiment) };
+        ExperimentComparison judged = Assert.Single(Verdict(ErrorRate.Familywise, 6, 2).Judge(experiment, Labels, [new GroupComparison(0, 1, 1) { P = PValue.FromValue(p) }]));
+        Assert.Equal((adjusted, false), (Math.Round(judged.AdjustedP!.Value.Value, 12), judged.Survives!.Value));
+    }
+
+    // Under the two-stage procedure an experiment's own p can change the number of survivors: .069 .009 .057 .057 .005 .033 at 0.05 gives six, with .016 for .009 two, that one among them.
+    [Fact]
+    public void What_is_not_proved_under_a_procedure_whose_survivors_hang_on_one_of_them_is_said()
+    {
+        double[] six = [0.069, 0.009, 0.057, 0.057, 0.005, 0.033];
+        Correction twoStage = CorrectionRegistry.Find("bky")!;
+        Assert.Equal(6, twoStage.Adjust(RankedFamily.Of([.. six.Select(PValue.FromValue)], 6)).Count(p => p.Value <= 0.05));
+        six[1] = 0.016;
+        PValue[] changed = twoStage.Adjust(RankedFamily.Of([.. six.Select(PValue.FromValue)], 6));
+        Assert.Equal((2, true), (changed.Count(p => p.Value <= 0.05), changed[1].Value <= 0.05));
+        Assert.False(twoStage.IsSimpleSelection);
+        string text = new ComparisonVerdict(Campaign(ErrorRate.FalseDiscovery), [new FamilyStanding("", "bky", new SignificanceLevel(0.05), 6, 6, 6, 6)]).Guarantee;
+        Assert.EndsWith("so that here it is not proved.", text, StringComparison.Ordinal);
+        Assert.DoesNotContain("not proved", Verdict(ErrorRate.FalseDiscovery, 6, 6).Guarantee, StringComparison.Ordinal);
+    }
+
     private static FamilyStanding Standing(string name, double level, int size, int survivors) => new(name, "holm", new SignificanceLevel(level), size, size, size, survivors);
 
     private static (double, bool) Judged(ComparisonVerdict verdict, string family, double p, double? weight = null)

@@ -36,6 +36,7 @@ internal sealed class AdjustVerb : Verb
         DelimitedTable table = DelimitedTable.Read(session.Get(_file), reading);
         RefuseRepeatedNames(session, table, procedures);
         (int[] rows, PValue[] p) = ReadPValues(session, table, reading.DecimalMark);
+        TellOfBlankLines(session, table);
         int familySize = FamilySize(session, table.RowCount, p.Length, procedures);
         OnlineSettings[] settings = _online.Settings(session, online, level, Math.Max(1, familySize));
         RankedFamily family = _weights.Family(session, table, reading.DecimalMark, rows, p, familySize);
@@ -54,8 +55,19 @@ internal sealed class AdjustVerb : Verb
                 ? AdjustColumns.Of(arriving, settings[Array.IndexOf(online, arriving)], p)
                 : AdjustColumns.Of((Correction)one, family, level)),
         ];
-        session.Print(Table(table, added, rows, familySize, level, qValues, cautions));
+        session.Print(Table(table, added, rows, familySize, level, qValues, cautions, table.FindColumn(session.Get(_column))));
         return ExitCode.Done;
+    }
+
+    /// <summary>In a file of one column a blank line may be meant as a hypothesis without a p-value, which would make the family larger.</summary>
+    private static void TellOfBlankLines(Session session, DelimitedTable table)
+    {
+        const int headerLines = 1;
+        long blank = table.RowCount == 0 || table.Headers.Count > 1 ? 0 : table.Line(table.RowCount - 1) - headerLines - table.RowCount;
+        if (blank > 0)
+        {
+            session.Host.Notice(FormattableString.Invariant($"Note: {blank} blank line(s) were passed over and are not counted in the family; write NA for a hypothesis that has no p-value."));
+        }
     }
 
     private ErrorProcedure[] Chosen(Session session)
@@ -67,7 +79,7 @@ internal sealed class AdjustVerb : Verb
         }
 
         ErrorProcedure[] chosen = [.. keys.Split(',', StringSplitOptions.TrimEntries).Distinct(StringComparer.Ordinal).Select(key => (ErrorProcedure?)CorrectionRegistry.Find(key) ?? OnlineRegistry.Find(key) ?? throw NoCorrection(key))];
-        _weights.RefuseWithout(session, [.. chosen.OfType<Correction>()]);
+        _weights.RefuseMismatch(session, [.. chosen.OfType<Correction>()]);
         return chosen;
     }
 
@@ -138,11 +150,11 @@ internal sealed class AdjustVerb : Verb
             : throw new RefusedException(FormattableString.Invariant($"The file '{session.Get(_file)}' was refused. Problems: {table.Problems.Count}."), [.. table.Problems.Sentences()]);
     }
 
-    private static RowTable Table(DelimitedTable table, AdjustColumns[] added, int[] rows, int familySize, SignificanceLevel level, AdjustQValues? qValues, string[] cautions)
+    private static RowTable Table(DelimitedTable table, AdjustColumns[] added, int[] rows, int familySize, SignificanceLevel level, AdjustQValues? qValues, string[] cautions, int pColumn)
     {
         Column[] columns =
         [
-            .. table.Headers.Select(h => new Column(h, SafeText.Escape(h))),
+            .. table.Headers.Select((h, i) => new Column(h, SafeText.Escape(h), i == pColumn)),
             .. added.SelectMany(a => a.Columns),
             .. qValues is null ? [] : new[] { new Column(AdjustQValues.Column, AdjustQValues.Column, true) },
         ];

@@ -18,13 +18,18 @@ internal sealed class AdjustWeights
     /// <summary>The corrections that are shown where none is chosen: with weights all of them.</summary>
     public IReadOnlyList<Correction> Usual(Session session) => session.Typed.GetValue(Column) is null ? CorrectionRegistry.FromPAlone : CorrectionRegistry.All;
 
-    /// <summary>Refuses corrections that need weights where none are named.</summary>
-    /// <exception cref="UsageException">One of them does.</exception>
-    public void RefuseWithout(Session session, IReadOnlyList<Correction> corrections)
+    /// <summary>Refuses corrections that need weights where none are named, and weights that none of the chosen takes.</summary>
+    /// <exception cref="UsageException">They do not fit.</exception>
+    public void RefuseMismatch(Session session, IReadOnlyList<Correction> corrections)
     {
         if (session.Typed.GetValue(Column) is null && corrections.FirstOrDefault(c => c.NeedsWeights) is { } weighted)
         {
             throw new UsageException($"The correction '{weighted.Key}' needs a weight for every hypothesis: name their column with --weights COLUMN.");
+        }
+
+        if (session.Typed.GetValue(Column) is not null && !corrections.Any(c => c.NeedsWeights))
+        {
+            throw new UsageException("None of the chosen corrections takes weights: leave out --weights, or choose weighted-bonferroni, weighted-holm or weighted-bh.");
         }
     }
 

@@ -34,9 +34,7 @@ internal static class CampaignRules
     public static void WarnOfMismatch(Host host, Campaign campaign)
     {
         ErrorProcedure correction = FamilyVerdict.ProcedureOf(campaign);
-        bool holds = correction.Controls == campaign.ErrorRate
-            || (correction.Controls == ErrorRate.Familywise && campaign.ErrorRate == ErrorRate.FalseDiscovery);
-        if (!holds)
+        if (!CampaignText.Holds(campaign))
         {
             host.Notice($"Note: {correction.Name} does not hold the {CampaignText.RateWords(campaign.ErrorRate)} that '{campaign.Code}' names as its goal. {correction.Guarantee}");
         }

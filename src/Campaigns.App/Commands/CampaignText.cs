@@ -23,8 +23,18 @@ internal static class CampaignText
     };
 
     /// <summary>For example "false discovery rate at 0.05 by Benjamini-Hochberg".</summary>
-    public static string Goal(Campaign campaign) =>
-        $"{RateWords(campaign.ErrorRate)} at {campaign.Level} by {FamilyText.Procedures(campaign)}";
+    public static string Goal(Campaign campaign) => Holds(campaign)
+        ? $"{RateWords(campaign.ErrorRate)} at {campaign.Level} by {FamilyText.Procedures(campaign)}"
+        : $"goal: {RateWords(campaign.ErrorRate)} at {campaign.Level}, which {FamilyText.Procedures(campaign)} {(campaign.JudgedFamilies.Count > 1 ? "do" : "does")} not hold";
+
+    /// <summary>Whether every procedure of a campaign holds the error rate that is its goal; one that holds the familywise rate holds the false discovery rate too.</summary>
+    public static bool Holds(Campaign campaign)
+    {
+        IEnumerable<ErrorProcedure> procedures = campaign.JudgedFamilies.Count == 0
+            ? [FamilyVerdict.ProcedureOf(campaign)]
+            : campaign.JudgedFamilies.Select(f => FamilyVerdict.ProcedureOf(campaign, f));
+        return procedures.All(p => p.Controls == campaign.ErrorRate || (p.Controls == ErrorRate.Familywise && campaign.ErrorRate == ErrorRate.FalseDiscovery));
+    }
 
     /// <summary>The lines under every table of results: what was assumed, which procedure, what it promises.</summary>
     /// <param name="standing">The campaign in figures.</param>

@@ -60,7 +60,7 @@ internal sealed class SurvivorsVerb : Verb
         var rows = new RowTable(Columns, listed.Select(e => Row(e, gaps.GetValueOrDefault(e.Plan.Code), [.. comparisons[e.Plan.Code]], verdict.SelectedRisk(e)!.Value)))
         {
             Above = [FormattableString.Invariant($"{code}: {overview.SurvivorCount} of {overview.TestedCount} tested experiments survive ({CampaignText.Goal(overview.Campaign)}).{more}")],
-            Below = [.. CampaignText.Footnotes(overview, listed.Select(e => e.Plan.Test).DefaultIfEmpty(overview.Campaign.DefaultTest)), .. UnitNotes.Of(listed), "Gap: the widest between two group means of the sample; gaps of what was selected look larger than they are. Its selected interval comes from the follow-up.", CampaignText.Caution],
+            Below = [.. OnlineText.OnOtherData(listed), .. CampaignText.Footnotes(overview, listed.Select(e => e.Plan.Test).DefaultIfEmpty(overview.Campaign.DefaultTest)), .. UnitNotes.Of(listed), "Gap: the widest between two group means of the sample; gaps of what was selected look larger than they are. Its selected interval comes from the follow-up.", CampaignText.Caution],
             WhenEmpty = "No experiment survives: no difference shown, which is not the same as no difference.",
         };
         var claims = new RowTable(ClaimColumns, listed.SelectMany(e => comparisons[e.Plan.Code]).Where(c => c.Survives == true).Select(ComparisonsVerb.Row))

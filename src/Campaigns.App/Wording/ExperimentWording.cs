@@ -28,6 +28,7 @@ internal static class ExperimentWording
     /// <summary>What a verdict means, in a sentence: each test has its own hypothesis, and ranks and permutations say nothing of means alone.</summary>
     /// <param name="result">A result with a p-value.</param>
     public static string Verdict(ExperimentResult result) => result.Family is { IsOpen: false } closed ? $"Its family {closed.Name} is closed ({closed.Waits}): it does not survive before, whatever its p."
+        : OnlineText.IsOnOtherData(result) ? $"It {(result.Survives == true ? "survives" : "does not survive")} by a decision that {OnlineText.MadeOn(result)} and stands. Its values were changed since: the p-value here is another one, and the decision says nothing of it."
         : result.Survives == true
         ? $"It survives: evidence against the hypothesis \"{GroupTestRegistry.Find(result.Plan.Test)?.Hypothesis}\""
         : "It does not survive: no difference shown, which is not the same as no difference.";

@@ -42,7 +42,9 @@ internal static class FamilyText
         Campaign campaign = standing.Campaign;
         if (campaign.ErrorRate != ErrorRate.Familywise)
         {
-            return "Each family holds a false discovery rate of its own: rates held in families do not bound the share of false ones among all their survivors together.";
+            return standing.Families.Any(f => ProcedureOf(campaign, f).Controls == ErrorRate.PerTest)
+                ? "A family without a correction holds no rate, so that nothing is held over all families together."
+                : "Each family holds a false discovery rate of its own: rates held in families do not bound the share of false ones among all their survivors together.";
         }
 
         return standing.Families.All(f => ProcedureOf(campaign, f).Controls == ErrorRate.Familywise)

@@ -7,6 +7,8 @@ namespace Campaigns.App.Wording;
 /// <summary>Procedures that decide as experiments arrive, in words.</summary>
 internal static class OnlineText
 {
+    private const int MostNamed = 10;
+
     /// <summary>What streams in a row hold together.</summary>
     private const string SeveralStreams = "Each stream's guarantee holds for its own experiments; they do not add up to one for all.";
 
@@ -68,6 +70,23 @@ internal static class OnlineText
     {
         int count = entries.Count(e => e.Level == 0);
         return count == 0 ? null : FormattableString.Invariant($"{count} experiment(s) came after the horizon and were given the level 0: they cannot survive. 'campaigns restream' starts a new stream for those to come.");
+    }
+
+    /// <summary>Whether the decision on an experiment was made on other data than those that stand now.</summary>
+    public static bool IsOnOtherData(ExperimentResult result) => result.Entry is { DecidedAt: not null } entry && entry.P != result.P;
+
+    /// <summary>On what the decision on an experiment was made, in a clause.</summary>
+    public static string MadeOn(ExperimentResult result) => $"was made on {(result.Entry?.P is { } p ? $"p = {NumberText.P(p)}" : "data that gave no p-value")}";
+
+    /// <summary>A sentence that names experiments whose values were changed after their decision; none where there are none.</summary>
+    public static IEnumerable<string> OnOtherData(IEnumerable<ExperimentResult> experiments)
+    {
+        string[] told = [.. experiments.Where(IsOnOtherData).Select(e => $"{e.Plan.Code} {MadeOn(e)}")];
+        if (told.Length > 0)
+        {
+            string more = told.Length > MostNamed ? FormattableString.Invariant($"; ... and {told.Length - MostNamed} more") : "";
+            yield return $"Values were changed after the decision, which stands; adjusted p and survives belong to the p on which it was made, not to the p of the row: {string.Join("; ", told.Take(MostNamed))}{more}.";
+        }
     }
 
     /// <summary>A decision in a sentence; null before the experiment is registered.</summary>

@@ -50,7 +50,7 @@ public sealed class StreamStore(Catalog catalog)
 
                 if (keeper.IsRegistered(id))
                 {
-                    throw new RefusedException($"The experiment '{experiment}' of '{code}' was given its level already, or is named twice; nothing was registered. 'campaigns decisions {code}' shows it.");
+                    throw new RefusedException($"The experiment '{experiment}' of '{code}' {(experiments.Count(e => e == experiment) > 1 ? "is named twice" : "was given its level already")}; nothing was registered. 'campaigns decisions {code}' shows those that have one.");
                 }
 
                 keeper.Register(id);

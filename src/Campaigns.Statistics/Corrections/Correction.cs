@@ -16,6 +16,12 @@ public abstract class Correction : ErrorProcedure
     /// <summary>Whether an adjusted p-value may lie below its p-value, so that a p-value above the level can survive: where the procedure estimates how many nulls are true, or weighs.</summary>
     public virtual bool MayGoBelowP => false;
 
+    /// <summary>
+    /// Whether an experiment's own p-value, as long as it is rejected, cannot change how many are: then selection by this procedure is a "simple" rule in the sense of Benjamini and Bogomolov (2014),
+    /// Journal of the Royal Statistical Society B 76:297-318, as selection by any step-up or step-down procedure is.
+    /// </summary>
+    public virtual bool IsSimpleSelection => true;
+
     /// <summary>Adjusted p-values of a family, logarithms included, in the order in which the family's p-values were given.</summary>
     /// <param name="family">The p-values at hand with the size of the family they belong to.</param>
     /// <returns>One adjusted p-value for each p-value given; equal p-values get equal ones, smaller ones never larger ones. Only p = 0 gives 0.</returns>

@@ -29,6 +29,9 @@ public sealed class Hommel : Correction
     public override string Source => "G. Hommel (1988), Biometrika 75:383-386";
 
     /// <inheritdoc/>
+    public override bool IsSimpleSelection => false;
+
+    /// <inheritdoc/>
     protected override void AdjustSorted(ReadOnlySpan<double> sorted, int familySize, Span<double> adjusted) => Fill(sorted, familySize, adjusted);
 
     /// <summary>The adjusted p-values of ascending p-values.</summary>

@@ -28,6 +28,9 @@ public sealed class HommelAnyDependence : Correction
     public override string Source => "G. Hommel (1983), Biometrical Journal 25:423-430, with G. Hommel (1988), Biometrika 75:383-386";
 
     /// <inheritdoc/>
+    public override bool IsSimpleSelection => false;
+
+    /// <inheritdoc/>
     protected override void AdjustSorted(ReadOnlySpan<double> sorted, int familySize, Span<double> adjusted)
     {
         Hommel.Fill(sorted, familySize, adjusted);

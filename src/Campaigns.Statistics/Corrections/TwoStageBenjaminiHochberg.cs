@@ -35,6 +35,9 @@ public sealed class TwoStageBenjaminiHochberg : Correction
     public override bool MayGoBelowP => true;
 
     /// <inheritdoc/>
+    public override bool IsSimpleSelection => false;
+
+    /// <inheritdoc/>
     protected override void AdjustSorted(ReadOnlySpan<double> sorted, int familySize, Span<double> adjusted)
     {
         Quotient[] stepUp = ArrayPool<Quotient>.Shared.Rent(sorted.Length);

@@ -87,6 +87,18 @@ public sealed class AdjustVerbTests : IDisposable
     }
 
     [Fact]
+    public void Blank_lines_of_a_single_column_are_told_and_weights_without_a_weighted_correction_are_refused()
+    {
+        string blank = _place.Write("blank.csv", "p\n0.001\n\n0.002\n");
+        Ran ran = _place.Run("adjust", blank, "--correction", "bonferroni", "--format", "csv").Well();
+        Assert.Equal(["0.002", "0.004"], ran.Csv.Column("bonferroni"));
+        Assert.Contains("1 blank line(s) were passed over", ran.Error, StringComparison.Ordinal);
+        Assert.DoesNotContain("blank", _place.Run("adjust", Column("0.001", "0.002"), "--correction", "bonferroni", "--format", "csv").Well().Error, StringComparison.Ordinal);
+        string weighted = _place.Write("w.csv", "p,w\n0.001,1\n0.002,2\n");
+        Assert.Contains("takes weights", _place.Run("adjust", weighted, "--correction", "holm,lord", "--weights", "w").Refused(2), StringComparison.Ordinal);
+    }
+
+    [Fact]
     public void A_family_of_a_thousand_million_is_corrected()
     {
         string file = Column("1e-12", "0.01");

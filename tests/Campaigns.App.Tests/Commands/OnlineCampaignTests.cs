@@ -119,7 +119,7 @@ public sealed class OnlineCampaignTests : IDisposable
         {
             if (again)
             {
-                Assert.Contains("Tested 1 experiments of C.", _place.Run("test", "C").Well().Out, StringComparison.Ordinal);
+                Assert.Contains("Tested 1 experiment of C.", _place.Run("test", "C").Well().Out, StringComparison.Ordinal);
             }
 
             Assert.Equal(before.Rows, _place.Run("decisions", "C", "--format", "csv").Well().Csv.Rows);
@@ -131,6 +131,18 @@ public sealed class OnlineCampaignTests : IDisposable
             {
                 string text = _place.Run(command).Well().Out.Replace('\n', ' ');
                 Assert.True(text.Contains("Deviations: 1 experiment(s)", StringComparison.Ordinal) || text.Contains("Deviation from the plan", StringComparison.Ordinal), string.Join(' ', command) + text);
+            }
+
+            foreach (string command in (string[])["results", "survivors"])
+            {
+                Assert.Contains($"{survivor} was made on p = ", _place.Run(command, "C").Well().Out.Replace('\n', ' '), StringComparison.Ordinal);
+            }
+
+            if (again)
+            {
+                string shown = _place.Run("show", "C", survivor).Well().Out.Replace('\n', ' ');
+                Assert.Contains("It survives by a decision that was made on p = ", shown, StringComparison.Ordinal);
+                Assert.DoesNotContain("evidence against the hypothesis", shown, StringComparison.Ordinal);
             }
 
             Assert.Contains("its decision was made on p = ", _place.Run("show", "C", survivor).Well().Out.Replace('\n', ' '), StringComparison.Ordinal);
