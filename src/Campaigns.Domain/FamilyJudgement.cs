@@ -78,8 +78,8 @@ internal sealed class FamilyJudgement
         Family family = count.Family;
         (bool isOpen, string? waits) = GateOf(family);
         Correction correction = FamilyVerdict.CorrectionOf(_campaign with { Correction = family.Correction ?? _campaign.Correction });
-        PValue[] p = Taken(_members.P.Span, index);
-        double[] weights = _members.Weights.IsEmpty ? [] : Taken(_members.Weights.Span, index);
+        ReadOnlySpan<PValue> p = Taken(_members.P.Span, index);
+        ReadOnlySpan<double> weights = _members.Weights.IsEmpty ? [] : Taken(_members.Weights.Span, index);
         PValue[] adjusted = isOpen ? Adjust(correction, p, count, weights) : [.. Enumerable.Repeat(PValue.FromValue(1), p.Length)];
         int survivors = 0;
         for (int i = 0; i < adjusted.Length; i++)
@@ -95,15 +95,26 @@ internal sealed class FamilyJudgement
             IsOpen = isOpen,
             Waits = waits,
             Sharing = count.Sharing,
-            WeightTotal = correction.NeedsWeights && weights.Length == p.Length ? weights.Sum() + count.WeightOfRest : null,
+            WeightTotal = correction.NeedsWeights && weights.Length == p.Length ? Sum(weights) + count.WeightOfRest : null,
         };
     }
 
-    private T[] Taken<T>(ReadOnlySpan<T> column, int family)
+    private static double Sum(ReadOnlySpan<double> weights)
+    {
+        double sum = 0;
+        foreach (double weight in weights)
+        {
+            sum += weight;
+        }
+
+        return sum;
+    }
+
+    private ReadOnlySpan<T> Taken<T>(ReadOnlySpan<T> column, int family)
     {
         if (_places.Length == 0)
         {
-            return column.ToArray();
+            return column;
         }
 
         int[] places = _places[family];
