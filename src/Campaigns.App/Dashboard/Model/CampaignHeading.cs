@@ -33,7 +33,7 @@ public sealed class CampaignHeading
         Meaning = campaign.JudgedFamilies.Count > 0 ? string.Join(" ", [.. FamilyText.Guarantees(standing.Overview), FamilyText.Together(standing.Overview)])
             : correction is not null ? stands + correction.Guarantee
             : $"This program knows no correction named {campaign.Correction}: what it guarantees cannot be said here.";
-        ValidUnder = correction is null ? null : DependenceWords(correction.ValidUnder);
+        ValidUnder = correction is null || campaign.JudgedFamilies.Count > 0 ? null : DependenceWords(correction.ValidUnder);
     }
 
     /// <summary>The campaign's code, as it was given.</summary>
@@ -63,7 +63,7 @@ public sealed class CampaignHeading
     /// <summary>What the correction guarantees, in one sentence.</summary>
     public string Meaning { get; }
 
-    /// <summary>What the guarantee supposes of the p-values' dependence; null where the correction is not known.</summary>
+    /// <summary>What the guarantee supposes of the p-values' dependence; null where the correction is not known, and where families may have several.</summary>
     public string? ValidUnder { get; }
 
     /// <summary>An error rate in words.</summary>

@@ -98,7 +98,7 @@ public sealed class RankingPage : DashboardPage
     }
 
     private string AssumptionText() =>
-        Model.Correction is null ? "" : $"{Model.Correction.Name} {Model.Heading.ValidUnder}.";
+        Model.Correction is null || Model.Heading.ValidUnder is null ? "" : $"{Model.Correction.Name} {Model.Heading.ValidUnder}.";
 
     private string SelectedText()
     {

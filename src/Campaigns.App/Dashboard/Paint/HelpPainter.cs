@@ -55,9 +55,9 @@ public static class HelpPainter
         rows.Add(("this campaign", "", Ink.Heading));
         rows.Add(("holds", string.Join(", ", model.Heading.Held), Ink.Text));
         rows.Add(("guarantee", model.Heading.Meaning, Ink.Text));
-        if (model.Correction is { } correction)
+        if (model.Correction is { } correction && model.Heading.ValidUnder is { } dependence)
         {
-            rows.Add(("dependence", model.Heading.ValidUnder ?? "", Ink.Text));
+            rows.Add(("dependence", dependence, Ink.Text));
             rows.Add(("published in", correction.Source, Ink.Text));
         }
 
