@@ -30,7 +30,7 @@ public static class FamilyPlan
         FamilyLevels.Of(campaign, families);
     }
 
-    /// <summary>What should be known before the seal, in sentences: weights that are missing or idle, corrections that do not hold the campaign's error rate, shared controls.</summary>
+    /// <summary>What should be known before the seal, in sentences: weights that are missing or idle, corrections that do not hold the campaign's error rate, shared controls, families too small for their correction.</summary>
     /// <param name="campaign">The campaign with its families.</param>
     /// <param name="plan">Its experiments.</param>
     public static IEnumerable<string> Notes(Campaign campaign, IReadOnlyList<PlannedExperiment> plan)
@@ -60,6 +60,11 @@ public static class FamilyPlan
             if (SharedControls.Warning(procedure, family.Name, SharedControls.Count(members[family.Name].Select(e => e.SharedControl))) is { } warning)
             {
                 yield return warning;
+            }
+
+            if (FewExperiments.Warning(procedure, family.Name, members[family.Name].Count()) is { } few && plan.Count > 0)
+            {
+                yield return few;
             }
         }
     }

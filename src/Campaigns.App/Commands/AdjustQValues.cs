@@ -3,7 +3,7 @@ using Campaigns.Statistics.TrueNulls;
 
 namespace Campaigns.App.Commands;
 
-/// <summary>The q-values of adjust, with what is said about them.</summary>
+/// <summary>Q-values beside adjusted p-values, with what is said about them.</summary>
 internal sealed class AdjustQValues
 {
     /// <summary>The name of their column.</summary>

@@ -33,7 +33,7 @@ internal static class CampaignText
         IEnumerable<ErrorProcedure> procedures = campaign.JudgedFamilies.Count == 0
             ? [FamilyVerdict.ProcedureOf(campaign)]
             : campaign.JudgedFamilies.Select(f => FamilyVerdict.ProcedureOf(campaign, f));
-        return procedures.All(p => p.Controls == campaign.ErrorRate || (p.Controls == ErrorRate.Familywise && campaign.ErrorRate == ErrorRate.FalseDiscovery));
+        return procedures.All(p => FamilyPlan.Holds(p, campaign.ErrorRate));
     }
 
     /// <summary>The lines under every table of results: what was assumed, which procedure, what it promises.</summary>

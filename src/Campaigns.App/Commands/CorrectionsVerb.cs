@@ -84,18 +84,20 @@ internal sealed class CorrectionsVerb : Verb
             new("experiment", "experiment"), new("p", "p", true),
             .. outcomes.Select(o => new Column(o.Key, o.IsSealed && !o.IsMixed ? $"{o.Key} (sealed)" : o.Key, true, o.IsSealed ? 0 : 2)),
             new("hangs", "hangs"), new("survives_under", hangingOnly ? "survives under" : null, GivesWay: 1, CutLast: true),
+            new(AdjustQValues.Column, null, true),
         ];
         ExperimentResult[] tested = [.. standing.Experiments.Where(e => e.P is not null)];
+        var qValues = new AdjustQValues([.. tested.Select(e => e.P!.Value)]);
         IEnumerable<int> places = Enumerable.Range(0, tested.Length).Where(i => !hangingOnly || hanging.Contains(i));
         return new RowTable(columns, places.Select(i => (Cell[])
         [
             Cell.Text(tested[i].Plan.Code), Cell.P(tested[i].P), .. outcomes.Select(o => Cell.P(o.Adjusted[i])),
-            Cell.Truth(hanging.Contains(i)), Cell.Text(string.Join('|', CorrectionsBeside.SurvivesUnder(outcomes, rate, i))),
+            Cell.Truth(hanging.Contains(i)), Cell.Text(string.Join('|', CorrectionsBeside.SurvivesUnder(outcomes, rate, i))), Cell.P(qValues.At(i)),
         ]))
         {
             Above = [FormattableString.Invariant($"{standing.Campaign.Code}: adjusted p-values in {Of(standing)}, to be held against {(standing.Campaign.JudgedFamilies.Count == 0 ? standing.Campaign.Level.ToString() : "the level of each family")}")],
             WhenEmpty = hangingOnly ? "No experiment hangs on the choice." : "There is nothing to show.",
-            Below = [$"Hangs: survives under some of the corrections that hold the {CampaignText.RateWords(rate)}, each under its own assumptions, and not under others.", NeverToChoose, .. InFamilies(standing), .. Ending(standing)],
+            Below = [$"Hangs: survives under some of the corrections that hold the {CampaignText.RateWords(rate)}, each under its own assumptions, and not under others.", NeverToChoose, .. qValues.Sentences, .. InFamilies(standing), .. Ending(standing)],
         };
     }
 

@@ -52,12 +52,12 @@ internal static class FamilyText
             : "Not every family is corrected by a procedure that holds the familywise error rate, so that nothing is held over all families together.";
     }
 
-    /// <summary>A warning for every family whose procedure does not cover experiments that share a control, batch or instrument.</summary>
+    /// <summary>A warning for every family whose procedure does not cover experiments that share a control, batch or instrument, or needs more experiments.</summary>
     public static IEnumerable<string> Warnings(CampaignOverview standing) => Warnings(standing.Campaign, standing.Families);
 
-    /// <summary>A warning for every family whose procedure does not cover experiments that share a control, batch or instrument.</summary>
+    /// <summary>A warning for every family whose procedure does not cover experiments that share a control, batch or instrument, or needs more experiments.</summary>
     public static IEnumerable<string> Warnings(Campaign campaign, IReadOnlyList<FamilyStanding> families) =>
-        families.Select(f => SharedControls.Warning(ProcedureOf(campaign, f), f.Name, f.Sharing)).OfType<string>();
+        families.SelectMany(f => (string?[])[SharedControls.Warning(ProcedureOf(campaign, f), f.Name, f.Sharing), FewExperiments.Warning(ProcedureOf(campaign, f), f.Name, f.Planned)]).OfType<string>();
 
     /// <summary>The procedures of a campaign by name, each once, for example "Holm and Hommel, in 3 families".</summary>
     public static string Procedures(Campaign campaign)

@@ -38,11 +38,6 @@ internal static class OnlineText
     {
         Campaign campaign = overview.Campaign;
         yield return FormattableString.Invariant($"{procedure.Name} at {campaign.Level} decides each experiment when it arrives, at the level that it was given before its p-value was seen; {overview.TestedCount} of {overview.FamilySize} have a result. A decision stands, whatever comes after it. Adjusted p: p x {campaign.Level} / level given. The batch view beside it may change with every experiment and decides nothing.");
-        foreach (string warning in FamilyText.Warnings(overview))
-        {
-            yield return warning;
-        }
-
         if (campaign.Streams.Count <= 1)
         {
             yield return campaign.Streams.Count == 0 ? procedure.Guarantee : $"Its stream: {Of(campaign.Streams[0].Settings)}. {procedure.Guarantee}";
