@@ -59,7 +59,8 @@ public sealed class FamilyPlanTests
     {
         Campaign campaign = SeveralFamiliesTests.Sealed("a b") with { Families = [new Family("a") { Correction = "storey" }, new Family("b")] };
         string[] notes = [.. FamilyPlan.Notes(campaign, [Planned("1", "a") with { SharedControl = "oven 2" }, Planned("2", "a") with { SharedControl = "oven 2" }, Planned("3", "b") with { SharedControl = "oven 2" }])];
-        Assert.Equal(2, notes.Length);
+        Assert.Equal(3, notes.Length);
+        Assert.StartsWith("Warning: 2 experiments are few in the family 'a' for Storey", notes[2], StringComparison.Ordinal);
         Assert.StartsWith("Note: Storey", notes[0], StringComparison.Ordinal);
         Assert.StartsWith("Warning: 2 experiments of the family 'a' share a control, batch or instrument, so that their p-values are dependent", notes[1], StringComparison.Ordinal);
     }
