@@ -1,3 +1,4 @@
+using Campaigns.Catalog.Ledger;
 using Campaigns.Catalog.Providers;
 using Microsoft.Data.Sqlite;
 
@@ -12,12 +13,14 @@ public sealed class Catalog : IDisposable
 {
     private CatalogContext? _context;
     private int _depth;
+    private int _recordedChanges;
 
-    private Catalog(SqliteConnection connection, string path, TimeProvider clock)
+    private Catalog(SqliteConnection connection, string path, TimeProvider clock, Actor actor)
     {
         Connection = connection;
         Path = path;
         Clock = clock;
+        Actor = actor;
     }
 
     /// <summary>The file.</summary>
@@ -25,6 +28,9 @@ public sealed class Catalog : IDisposable
 
     /// <summary>Where instants come from.</summary>
     public TimeProvider Clock { get; }
+
+    /// <summary>Who acts.</summary>
+    public Actor Actor { get; }
 
     /// <summary>The catalog through EF Core, on the same connection.</summary>
     public CatalogContext Context => _context ??= CatalogContext.On(Connection);
@@ -37,29 +43,39 @@ public sealed class Catalog : IDisposable
     /// <summary>Opens a catalog that exists.</summary>
     /// <param name="path">The file.</param>
     /// <param name="clock">Where instants come from.</param>
+    /// <param name="actor">Who acts; null for the account of the process.</param>
     /// <exception cref="CatalogException">Missing, unreadable, locked, damaged, foreign, older or newer.</exception>
-    public static Catalog Open(string path, TimeProvider clock)
+    public static Catalog Open(string path, TimeProvider clock, Actor? actor = null)
     {
         ArgumentNullException.ThrowIfNull(path);
-        return new Catalog(SqliteCatalogFile.Open(path), path, clock);
+        return new Catalog(SqliteCatalogFile.Open(path), path, clock, actor ?? Actor.OfProcess);
     }
 
     /// <summary>Opens a catalog, creating an empty one where there is no file.</summary>
     /// <inheritdoc cref="Open"/>
-    public static Catalog OpenOrCreate(string path, TimeProvider clock)
+    public static Catalog OpenOrCreate(string path, TimeProvider clock, Actor? actor = null)
     {
         if (!File.Exists(path) && !Directory.Exists(path))
         {
             SqliteCatalogFile.Create(path);
         }
 
-        return Open(path, clock);
+        return Open(path, clock, actor);
     }
 
     /// <summary>Does a piece of work in one transaction: all of it is kept, or nothing. Inside another one it joins that.</summary>
+    /// <remarks>Whatever it changes must have been recorded in the ledger when it ends.</remarks>
     /// <param name="work">The work.</param>
     /// <exception cref="CatalogException">The catalog is locked, full, read-only or damaged; nothing was changed.</exception>
     public T Change<T>(Func<T> work) => InTransaction("BEGIN IMMEDIATE", work);
+
+    /// <summary>Writes an entry for the action at hand, after its rows and inside its transaction.</summary>
+    internal LedgerHead Record(LedgerAct act)
+    {
+        LedgerHead head = LedgerWriter.Append(this, act);
+        _recordedChanges = TotalChanges;
+        return head;
+    }
 
     /// <summary>Reads several things as they stand at one moment, whatever another program writes meanwhile.</summary>
     /// <param name="work">The reading.</param>
@@ -75,9 +91,15 @@ public sealed class Catalog : IDisposable
 
         Run(begin);
         _depth++;
+        _recordedChanges = TotalChanges;
         try
         {
             T result = work();
+            if (TotalChanges != _recordedChanges)
+            {
+                throw new InvalidOperationException("The catalog was changed without an entry in the ledger.");
+            }
+
             Run("COMMIT");
             return result;
         }
@@ -100,6 +122,8 @@ public sealed class Catalog : IDisposable
     }
 
     internal SqliteStatement Prepare(string sql) => new(Connection, sql);
+
+    private int TotalChanges => SQLitePCL.raw.sqlite3_total_changes(Connection.Handle);
 
     private void Run(string sql)
     {

@@ -54,6 +54,30 @@ public sealed class CatalogContext(DbContextOptions<CatalogContext> options) : D
     /// <summary>Standing decisions.</summary>
     public DbSet<StandingDecisionRow> StandingDecisions => Set<StandingDecisionRow>();
 
+    /// <summary>The record of everything that was done.</summary>
+    public DbSet<LedgerRow> Ledger => Set<LedgerRow>();
+
+    /// <summary>Values before and after the actions in the record.</summary>
+    public DbSet<LedgerChangeRow> LedgerChanges => Set<LedgerChangeRow>();
+
+    /// <summary>Digests of the rows that the actions wrote.</summary>
+    public DbSet<LedgerEvidenceRow> LedgerEvidence => Set<LedgerEvidenceRow>();
+
+    /// <summary>How the bytes of loaded files are kept.</summary>
+    public DbSet<OriginalRow> Originals => Set<OriginalRow>();
+
+    /// <summary>The bytes of loaded files.</summary>
+    public DbSet<OriginalPieceRow> OriginalPieces => Set<OriginalPieceRow>();
+
+    /// <summary>Changes of plans after their seal.</summary>
+    public DbSet<PlanAmendmentRow> PlanAmendments => Set<PlanAmendmentRow>();
+
+    /// <summary>What those changed.</summary>
+    public DbSet<PlanAmendmentChangeRow> PlanAmendmentChanges => Set<PlanAmendmentChangeRow>();
+
+    /// <summary>Experiments taken out, or back in.</summary>
+    public DbSet<WithdrawalRow> Withdrawals => Set<WithdrawalRow>();
+
     /// <summary>Makes a context on a connection that is open already and stays its owner's.</summary>
     /// <remarks>The model that was compiled ahead (CompiledModel) is found by its attribute and used, except where migrations are made or compared.</remarks>
     /// <param name="connection">An open SQLite connection.</param>

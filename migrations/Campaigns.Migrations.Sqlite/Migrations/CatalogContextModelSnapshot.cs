@@ -169,6 +169,10 @@ namespace Campaigns.Migrations.Sqlite.Migrations
                         .HasColumnType("INTEGER")
                         .HasColumnName("id");
 
+                    b.Property<long?>("AmendmentId")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("amendment_id");
+
                     b.Property<double?>("AssumedStandardDeviation")
                         .HasColumnType("REAL")
                         .HasColumnName("assumed_sd");
@@ -193,6 +197,10 @@ namespace Campaigns.Migrations.Sqlite.Migrations
                     b.Property<string>("Family")
                         .HasColumnType("TEXT")
                         .HasColumnName("family");
+
+                    b.Property<long?>("FirstLoadId")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("first_load_id");
 
                     b.Property<string>("FollowUp")
                         .IsRequired()
@@ -366,6 +374,134 @@ namespace Campaigns.Migrations.Sqlite.Migrations
                     b.ToTable("group_sets", (string)null);
                 });
 
+            modelBuilder.Entity("Campaigns.Catalog.Rows.LedgerChangeRow", b =>
+                {
+                    b.Property<long>("Sequence")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("sequence");
+
+                    b.Property<int>("Position")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("position");
+
+                    b.Property<string>("After")
+                        .HasColumnType("TEXT")
+                        .HasColumnName("after");
+
+                    b.Property<string>("Before")
+                        .HasColumnType("TEXT")
+                        .HasColumnName("before");
+
+                    b.Property<string>("What")
+                        .IsRequired()
+                        .HasColumnType("TEXT")
+                        .HasColumnName("what");
+
+                    b.HasKey("Sequence", "Position");
+
+                    b.ToTable("ledger_changes", (string)null);
+                });
+
+            modelBuilder.Entity("Campaigns.Catalog.Rows.LedgerEvidenceRow", b =>
+                {
+                    b.Property<long>("Sequence")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("sequence");
+
+                    b.Property<int>("Position")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("position");
+
+                    b.Property<string>("Digest")
+                        .IsRequired()
+                        .HasColumnType("TEXT")
+                        .HasColumnName("digest");
+
+                    b.Property<long>("First")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("first");
+
+                    b.Property<string>("Kind")
+                        .IsRequired()
+                        .HasColumnType("TEXT")
+                        .HasColumnName("kind");
+
+                    b.Property<long>("Last")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("last");
+
+                    b.Property<long>("Owner")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("owner");
+
+                    b.HasKey("Sequence", "Position");
+
+                    b.ToTable("ledger_evidence", null, t =>
+                        {
+                            t.HasCheckConstraint("ck_ledger_evidence_digest", "length(digest) = 64");
+
+                            t.HasCheckConstraint("ck_ledger_evidence_range", "first between 0 and last");
+                        });
+                });
+
+            modelBuilder.Entity("Campaigns.Catalog.Rows.LedgerRow", b =>
+                {
+                    b.Property<long>("Sequence")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("sequence");
+
+                    b.Property<string>("Account")
+                        .IsRequired()
+                        .HasColumnType("TEXT")
+                        .HasColumnName("account");
+
+                    b.Property<string>("ActingAs")
+                        .HasColumnType("TEXT")
+                        .HasColumnName("acting_as");
+
+                    b.Property<string>("Action")
+                        .IsRequired()
+                        .HasColumnType("TEXT")
+                        .HasColumnName("action");
+
+                    b.Property<long>("At")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("at");
+
+                    b.Property<string>("Campaign")
+                        .HasColumnType("TEXT")
+                        .HasColumnName("campaign");
+
+                    b.Property<string>("Hash")
+                        .IsRequired()
+                        .HasColumnType("TEXT")
+                        .HasColumnName("hash");
+
+                    b.Property<string>("ProgramVersion")
+                        .IsRequired()
+                        .HasColumnType("TEXT")
+                        .HasColumnName("program_version");
+
+                    b.Property<string>("Reason")
+                        .HasColumnType("TEXT")
+                        .HasColumnName("reason");
+
+                    b.Property<string>("Subject")
+                        .HasColumnType("TEXT")
+                        .HasColumnName("subject");
+
+                    b.HasKey("Sequence");
+
+                    b.ToTable("ledger", null, t =>
+                        {
+                            t.HasCheckConstraint("ck_ledger_hash", "length(hash) = 64");
+
+                            t.HasCheckConstraint("ck_ledger_sequence", "sequence > 0");
+
+                            t.HasCheckConstraint("ck_ledger_words", "length(account) > 0 and length(program_version) > 0 and length(action) > 0");
+                        });
+                });
+
             modelBuilder.Entity("Campaigns.Catalog.Rows.LoadRow", b =>
                 {
                     b.Property<long>("Id")
@@ -436,6 +572,10 @@ namespace Campaigns.Migrations.Sqlite.Migrations
                         .HasColumnType("INTEGER")
                         .HasColumnName("load_id");
 
+                    b.Property<long?>("GroupSetId")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("group_set_id");
+
                     b.Property<int>("MissingCount")
                         .HasColumnType("INTEGER")
                         .HasColumnName("missing_count");
@@ -491,6 +631,150 @@ namespace Campaigns.Migrations.Sqlite.Migrations
                     b.ToTable("online_settings", null, t =>
                         {
                             t.HasCheckConstraint("ck_online_settings_horizon", "horizon is null or horizon >= 0");
+                        });
+                });
+
+            modelBuilder.Entity("Campaigns.Catalog.Rows.OriginalPieceRow", b =>
+                {
+                    b.Property<long>("LoadId")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("load_id");
+
+                    b.Property<int>("Position")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("position");
+
+                    b.Property<int>("ByteCount")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("byte_count");
+
+                    b.Property<byte[]>("Content")
+                        .IsRequired()
+                        .HasColumnType("BLOB")
+                        .HasColumnName("content");
+
+                    b.HasKey("LoadId", "Position");
+
+                    b.ToTable("original_pieces", null, t =>
+                        {
+                            t.HasCheckConstraint("ck_original_pieces_counts", "position > 0 and byte_count > 0");
+                        });
+                });
+
+            modelBuilder.Entity("Campaigns.Catalog.Rows.OriginalRow", b =>
+                {
+                    b.Property<long>("LoadId")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("load_id");
+
+                    b.Property<string>("Columns")
+                        .IsRequired()
+                        .HasColumnType("TEXT")
+                        .HasColumnName("columns");
+
+                    b.Property<string>("Compression")
+                        .IsRequired()
+                        .HasColumnType("TEXT")
+                        .HasColumnName("compression");
+
+                    b.Property<string>("DecimalMark")
+                        .IsRequired()
+                        .HasColumnType("TEXT")
+                        .HasColumnName("decimal_mark");
+
+                    b.Property<string>("Encoding")
+                        .IsRequired()
+                        .HasColumnType("TEXT")
+                        .HasColumnName("encoding");
+
+                    b.Property<int>("PieceCount")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("piece_count");
+
+                    b.Property<string>("Separator")
+                        .IsRequired()
+                        .HasColumnType("TEXT")
+                        .HasColumnName("separator");
+
+                    b.HasKey("LoadId");
+
+                    b.ToTable("originals", null, t =>
+                        {
+                            t.HasCheckConstraint("ck_originals_pieces", "piece_count > 0");
+                        });
+                });
+
+            modelBuilder.Entity("Campaigns.Catalog.Rows.PlanAmendmentChangeRow", b =>
+                {
+                    b.Property<long>("AmendmentId")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("amendment_id");
+
+                    b.Property<long>("ExperimentId")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("experiment_id");
+
+                    b.Property<string>("Field")
+                        .HasColumnType("TEXT")
+                        .HasColumnName("field");
+
+                    b.Property<string>("After")
+                        .HasColumnType("TEXT")
+                        .HasColumnName("after");
+
+                    b.Property<string>("Before")
+                        .HasColumnType("TEXT")
+                        .HasColumnName("before");
+
+                    b.HasKey("AmendmentId", "ExperimentId", "Field");
+
+                    b.ToTable("plan_amendment_changes", (string)null);
+                });
+
+            modelBuilder.Entity("Campaigns.Catalog.Rows.PlanAmendmentRow", b =>
+                {
+                    b.Property<long>("Id")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("id");
+
+                    b.Property<long>("CampaignId")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("campaign_id");
+
+                    b.Property<long>("MadeAt")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("made_at");
+
+                    b.Property<string>("NamedBy")
+                        .IsRequired()
+                        .HasColumnType("TEXT")
+                        .HasColumnName("named_by");
+
+                    b.Property<int>("Number")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("number");
+
+                    b.Property<string>("ProgramVersion")
+                        .IsRequired()
+                        .HasColumnType("TEXT")
+                        .HasColumnName("program_version");
+
+                    b.Property<string>("Reason")
+                        .IsRequired()
+                        .HasColumnType("TEXT")
+                        .HasColumnName("reason");
+
+                    b.HasKey("Id");
+
+                    b.HasIndex("CampaignId", "Number")
+                        .IsUnique()
+                        .HasDatabaseName("ux_plan_amendments_number");
+
+                    b.ToTable("plan_amendments", null, t =>
+                        {
+                            t.HasCheckConstraint("ck_plan_amendments_number", "number > 0");
+
+                            t.HasCheckConstraint("ck_plan_amendments_words", "length(reason) > 0 and length(named_by) > 0");
                         });
                 });
 
@@ -573,9 +857,25 @@ namespace Campaigns.Migrations.Sqlite.Migrations
                         .HasColumnType("INTEGER")
                         .HasColumnName("is_interim");
 
+                    b.Property<long?>("LastAmendmentId")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("last_amendment_id");
+
+                    b.Property<long?>("LastExclusionId")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("last_exclusion_id");
+
+                    b.Property<long?>("LastLoadId")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("last_load_id");
+
                     b.Property<long?>("LastTestRunId")
                         .HasColumnType("INTEGER")
                         .HasColumnName("last_test_run_id");
+
+                    b.Property<long?>("LastWithdrawalId")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("last_withdrawal_id");
 
                     b.Property<double>("Level")
                         .HasColumnType("REAL")
@@ -886,6 +1186,10 @@ namespace Campaigns.Migrations.Sqlite.Migrations
                         .HasColumnType("INTEGER")
                         .HasColumnName("includes_incomplete");
 
+                    b.Property<long?>("LastAmendmentId")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("last_amendment_id");
+
                     b.Property<long?>("LastExclusionId")
                         .HasColumnType("INTEGER")
                         .HasColumnName("last_exclusion_id");
@@ -893,6 +1197,10 @@ namespace Campaigns.Migrations.Sqlite.Migrations
                     b.Property<long?>("LastLoadId")
                         .HasColumnType("INTEGER")
                         .HasColumnName("last_load_id");
+
+                    b.Property<long?>("LastWithdrawalId")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("last_withdrawal_id");
 
                     b.Property<string>("ProgramVersion")
                         .IsRequired()
@@ -908,6 +1216,56 @@ namespace Campaigns.Migrations.Sqlite.Migrations
                     b.ToTable("test_runs", null, t =>
                         {
                             t.HasCheckConstraint("ck_test_runs_includes_incomplete", "includes_incomplete in (0, 1)");
+                        });
+                });
+
+            modelBuilder.Entity("Campaigns.Catalog.Rows.WithdrawalRow", b =>
+                {
+                    b.Property<long>("Id")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("id");
+
+                    b.Property<long>("ExperimentId")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("experiment_id");
+
+                    b.Property<bool>("HadData")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("had_data");
+
+                    b.Property<bool>("IsWithdrawn")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("is_withdrawn");
+
+                    b.Property<long>("MadeAt")
+                        .HasColumnType("INTEGER")
+                        .HasColumnName("made_at");
+
+                    b.Property<string>("NamedBy")
+                        .IsRequired()
+                        .HasColumnType("TEXT")
+                        .HasColumnName("named_by");
+
+                    b.Property<string>("ProgramVersion")
+                        .IsRequired()
+                        .HasColumnType("TEXT")
+                        .HasColumnName("program_version");
+
+                    b.Property<string>("Reason")
+                        .IsRequired()
+                        .HasColumnType("TEXT")
+                        .HasColumnName("reason");
+
+                    b.HasKey("Id");
+
+                    b.HasIndex("ExperimentId")
+                        .HasDatabaseName("ix_withdrawals_experiment");
+
+                    b.ToTable("withdrawals", null, t =>
+                        {
+                            t.HasCheckConstraint("ck_withdrawals_truths", "is_withdrawn in (0, 1) and had_data in (0, 1)");
+
+                            t.HasCheckConstraint("ck_withdrawals_words", "length(reason) > 0 and length(named_by) > 0");
                         });
                 });
 
@@ -961,6 +1319,24 @@ namespace Campaigns.Migrations.Sqlite.Migrations
                         .IsRequired();
                 });
 
+            modelBuilder.Entity("Campaigns.Catalog.Rows.LedgerChangeRow", b =>
+                {
+                    b.HasOne("Campaigns.Catalog.Rows.LedgerRow", null)
+                        .WithMany()
+                        .HasForeignKey("Sequence")
+                        .OnDelete(DeleteBehavior.Restrict)
+                        .IsRequired();
+                });
+
+            modelBuilder.Entity("Campaigns.Catalog.Rows.LedgerEvidenceRow", b =>
+                {
+                    b.HasOne("Campaigns.Catalog.Rows.LedgerRow", null)
+                        .WithMany()
+                        .HasForeignKey("Sequence")
+                        .OnDelete(DeleteBehavior.Restrict)
+                        .IsRequired();
+                });
+
             modelBuilder.Entity("Campaigns.Catalog.Rows.LoadRow", b =>
                 {
                     b.HasOne("Campaigns.Catalog.Rows.CampaignRow", null)
@@ -986,6 +1362,48 @@ namespace Campaigns.Migrations.Sqlite.Migrations
                 });
 
             modelBuilder.Entity("Campaigns.Catalog.Rows.OnlineSettingsRow", b =>
+                {
+                    b.HasOne("Campaigns.Catalog.Rows.CampaignRow", null)
+                        .WithMany()
+                        .HasForeignKey("CampaignId")
+                        .OnDelete(DeleteBehavior.Restrict)
+                        .IsRequired();
+                });
+
+            modelBuilder.Entity("Campaigns.Catalog.Rows.OriginalPieceRow", b =>
+                {
+                    b.HasOne("Campaigns.Catalog.Rows.LoadRow", null)
+                        .WithMany()
+                        .HasForeignKey("LoadId")
+                        .OnDelete(DeleteBehavior.Restrict)
+                        .IsRequired();
+                });
+
+            modelBuilder.Entity("Campaigns.Catalog.Rows.OriginalRow", b =>
+                {
+                    b.HasOne("Campaigns.Catalog.Rows.LoadRow", null)
+                        .WithMany()
+                        .HasForeignKey("LoadId")
+                        .OnDelete(DeleteBehavior.Restrict)
+                        .IsRequired();
+                });
+
+            modelBuilder.Entity("Campaigns.Catalog.Rows.PlanAmendmentChangeRow", b =>
+                {
+                    b.HasOne("Campaigns.Catalog.Rows.PlanAmendmentRow", null)
+                        .WithMany()
+                        .HasForeignKey("AmendmentId")
+                        .OnDelete(DeleteBehavior.Restrict)
+                        .IsRequired();
+
+                    b.HasOne("Campaigns.Catalog.Rows.ExperimentRow", null)
+                        .WithMany()
+                        .HasForeignKey("ExperimentId")
+                        .OnDelete(DeleteBehavior.Restrict)
+                        .IsRequired();
+                });
+
+            modelBuilder.Entity("Campaigns.Catalog.Rows.PlanAmendmentRow", b =>
                 {
                     b.HasOne("Campaigns.Catalog.Rows.CampaignRow", null)
                         .WithMany()
@@ -1083,6 +1501,15 @@ namespace Campaigns.Migrations.Sqlite.Migrations
                         .WithMany()
                         .HasForeignKey("LastLoadId")
                         .OnDelete(DeleteBehavior.Restrict);
+                });
+
+            modelBuilder.Entity("Campaigns.Catalog.Rows.WithdrawalRow", b =>
+                {
+                    b.HasOne("Campaigns.Catalog.Rows.ExperimentRow", null)
+                        .WithMany()
+                        .HasForeignKey("ExperimentId")
+                        .OnDelete(DeleteBehavior.Restrict)
+                        .IsRequired();
                 });
 #pragma warning restore 612, 618
         }

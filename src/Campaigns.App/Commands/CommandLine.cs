@@ -69,6 +69,7 @@ internal static class CommandLine
         {
             SharedOptions.Catalog,
             SharedOptions.Format,
+            SharedOptions.ActingAs,
             SharedOptions.Top,
         };
         var verbs = new Dictionary<Command, Verb>();

@@ -13,7 +13,6 @@ internal sealed class ExcludeVerb : Verb
     private readonly Option<int> _line = TypedOptions.Whole("--line", 1, "Line of the observation in the file that brought it, as 'campaigns export' and the checks of 'campaigns show' name it.");
     private readonly Option<string?> _file = TypedOptions.NotBlank(new Option<string?>("--file") { Description = "That file, where several hold a value of the experiment on this line.", HelpName = "NAME" });
     private readonly Option<string> _reason = TypedOptions.NotBlank(new Option<string>("--reason") { Description = "Why; recorded and shown wherever the experiment is.", HelpName = "TEXT", Required = true });
-    private readonly Option<string> _as = TypedOptions.NotBlank(new Option<string>("--as") { Description = "Who says so; recorded and shown.", HelpName = "NAME", Required = true });
     private readonly Option<bool> _takeBack = new("--take-back") { Description = "Take an excluded observation in again; that too is recorded." };
 
     public ExcludeVerb() => _line.Required = true;
@@ -21,7 +20,7 @@ internal sealed class ExcludeVerb : Verb
     public override Command Build() => new("exclude", Describe("Leave one observation out of the analysis, with a reason and a name. The value is kept, results with and without it are shown, and every output of the experiment says so.",
         "exclude PRIMERS E07 --line 41 --reason \"panel dropped\" --as \"A. Moss\""))
     {
-        _code, _experiment, _line, _file, _reason, _as, _takeBack,
+        _code, _experiment, _line, _file, _reason, _takeBack,
     };
 
     public override int Run(Session session)
@@ -34,7 +33,7 @@ internal sealed class ExcludeVerb : Verb
             new ObservationPlace(session.Get(_line), session.Typed.GetValue(_file)),
             exclude: !session.Get(_takeBack),
             session.Get(_reason).Trim(),
-            session.Get(_as).Trim());
+            session.Actor.Name);
         session.Say($"Recorded: {decision.Sentence}.");
         CampaignStanding standing = new StandingReader(catalog).Read(code);
         ExperimentDetail detail = new DetailReader(catalog).Read(standing, decision.Experiment);

@@ -1,6 +1,7 @@
 using System.CommandLine;
 using Campaigns.App.Dashboard.Canvas;
 using Campaigns.App.Output;
+using Campaigns.Catalog.Ledger;
 using Campaigns.Catalog.Loading;
 using Campaigns.Domain;
 using Campaigns.Statistics.Corrections;
@@ -31,9 +32,12 @@ internal sealed class Session(Host host, ParseResult typed)
         FollowUpKeys.All,
         [.. CorrectionRegistry.All.Select(c => c.Key), .. StreamOptions.Keys]);
 
-    public Catalog.Catalog OpenCatalog() => Catalog.Catalog.Open(CatalogPath, Host.Clock);
+    /// <summary>Who acts: the account, and the name given with --as.</summary>
+    public Actor Actor => Actor.OfProcess with { ActingAs = Typed.GetValue(SharedOptions.ActingAs)?.Trim() };
 
-    public Catalog.Catalog OpenOrCreateCatalog() => Catalog.Catalog.OpenOrCreate(CatalogPath, Host.Clock);
+    public Catalog.Catalog OpenCatalog() => Catalog.Catalog.Open(CatalogPath, Host.Clock, Actor);
+
+    public Catalog.Catalog OpenOrCreateCatalog() => Catalog.Catalog.OpenOrCreate(CatalogPath, Host.Clock, Actor);
 
     public T Get<T>(Option<T> option) => Typed.GetValue(option)!;
 

@@ -16,6 +16,13 @@ internal static class SharedOptions
         Recursive = true,
     });
 
+    public static Option<string?> ActingAs { get; } = TypedOptions.NotBlank(new Option<string?>("--as")
+    {
+        Description = "Who acts; the ledger keeps this name beside the account.",
+        HelpName = "NAME",
+        Recursive = true,
+    });
+
     public static Option<RowFormat> Format { get; } = NewFormat();
 
     public static Option<int> Top { get; } = NewTop();

@@ -11,7 +11,7 @@ internal sealed class UpgradeVerb : Verb
 
     public override int Run(Session session)
     {
-        bool done = CatalogUpgrade.Run(session.CatalogPath, typeof(DesignTimeContext).Assembly.GetName().Name!);
+        bool done = CatalogUpgrade.Run(session.CatalogPath, typeof(DesignTimeContext).Assembly.GetName().Name!, session.Host.Clock, session.Actor);
         session.Say(done ? $"Upgraded the catalog '{session.CatalogPath}'." : $"The catalog '{session.CatalogPath}' is up to date.");
         return ExitCode.Done;
     }

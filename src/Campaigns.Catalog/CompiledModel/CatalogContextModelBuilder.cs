@@ -11,7 +11,7 @@ namespace Campaigns.Catalog.CompiledModel
     public partial class CatalogContextModel
     {
         private CatalogContextModel()
-            : base(skipDetectChanges: false, modelId: new Guid("f460cffd-3749-40ff-a2c5-e51bc9fc7eff"), entityTypeCount: 16)
+            : base(skipDetectChanges: false, modelId: new Guid("10d85d9c-7b30-4a51-9031-65345188c4fb"), entityTypeCount: 24)
         {
         }
 
@@ -23,9 +23,16 @@ namespace Campaigns.Catalog.CompiledModel
             var familyRow = FamilyRowEntityType.Create(this);
             var groupRow = GroupRowEntityType.Create(this);
             var groupSetRow = GroupSetRowEntityType.Create(this);
+            var ledgerChangeRow = LedgerChangeRowEntityType.Create(this);
+            var ledgerEvidenceRow = LedgerEvidenceRowEntityType.Create(this);
+            var ledgerRow = LedgerRowEntityType.Create(this);
             var loadRow = LoadRowEntityType.Create(this);
             var measurementRow = MeasurementRowEntityType.Create(this);
             var onlineSettingsRow = OnlineSettingsRowEntityType.Create(this);
+            var originalPieceRow = OriginalPieceRowEntityType.Create(this);
+            var originalRow = OriginalRowEntityType.Create(this);
+            var planAmendmentChangeRow = PlanAmendmentChangeRowEntityType.Create(this);
+            var planAmendmentRow = PlanAmendmentRowEntityType.Create(this);
             var reviewFamilyRow = ReviewFamilyRowEntityType.Create(this);
             var reviewRow = ReviewRowEntityType.Create(this);
             var standingDecisionRow = StandingDecisionRowEntityType.Create(this);
@@ -33,6 +40,7 @@ namespace Campaigns.Catalog.CompiledModel
             var streamRow = StreamRowEntityType.Create(this);
             var testResultRow = TestResultRowEntityType.Create(this);
             var testRunRow = TestRunRowEntityType.Create(this);
+            var withdrawalRow = WithdrawalRowEntityType.Create(this);
 
             ExclusionRowEntityType.CreateForeignKey1(exclusionRow, measurementRow);
             ExperimentRowEntityType.CreateForeignKey1(experimentRow, campaignRow);
@@ -40,10 +48,17 @@ namespace Campaigns.Catalog.CompiledModel
             FamilyRowEntityType.CreateForeignKey1(familyRow, campaignRow);
             GroupRowEntityType.CreateForeignKey1(groupRow, groupSetRow);
             GroupSetRowEntityType.CreateForeignKey1(groupSetRow, campaignRow);
+            LedgerChangeRowEntityType.CreateForeignKey1(ledgerChangeRow, ledgerRow);
+            LedgerEvidenceRowEntityType.CreateForeignKey1(ledgerEvidenceRow, ledgerRow);
             LoadRowEntityType.CreateForeignKey1(loadRow, campaignRow);
             MeasurementRowEntityType.CreateForeignKey1(measurementRow, experimentRow);
             MeasurementRowEntityType.CreateForeignKey2(measurementRow, loadRow);
             OnlineSettingsRowEntityType.CreateForeignKey1(onlineSettingsRow, campaignRow);
+            OriginalPieceRowEntityType.CreateForeignKey1(originalPieceRow, loadRow);
+            OriginalRowEntityType.CreateForeignKey1(originalRow, loadRow);
+            PlanAmendmentChangeRowEntityType.CreateForeignKey1(planAmendmentChangeRow, planAmendmentRow);
+            PlanAmendmentChangeRowEntityType.CreateForeignKey2(planAmendmentChangeRow, experimentRow);
+            PlanAmendmentRowEntityType.CreateForeignKey1(planAmendmentRow, campaignRow);
             ReviewFamilyRowEntityType.CreateForeignKey1(reviewFamilyRow, reviewRow);
             ReviewRowEntityType.CreateForeignKey1(reviewRow, campaignRow);
             ReviewRowEntityType.CreateForeignKey2(reviewRow, testRunRow);
@@ -56,6 +71,7 @@ namespace Campaigns.Catalog.CompiledModel
             TestResultRowEntityType.CreateForeignKey2(testResultRow, testRunRow);
             TestRunRowEntityType.CreateForeignKey1(testRunRow, campaignRow);
             TestRunRowEntityType.CreateForeignKey2(testRunRow, loadRow);
+            WithdrawalRowEntityType.CreateForeignKey1(withdrawalRow, experimentRow);
 
             CampaignRowEntityType.CreateAnnotations(campaignRow);
             ExclusionRowEntityType.CreateAnnotations(exclusionRow);
@@ -63,9 +79,16 @@ namespace Campaigns.Catalog.CompiledModel
             FamilyRowEntityType.CreateAnnotations(familyRow);
             GroupRowEntityType.CreateAnnotations(groupRow);
             GroupSetRowEntityType.CreateAnnotations(groupSetRow);
+            LedgerChangeRowEntityType.CreateAnnotations(ledgerChangeRow);
+            LedgerEvidenceRowEntityType.CreateAnnotations(ledgerEvidenceRow);
+            LedgerRowEntityType.CreateAnnotations(ledgerRow);
             LoadRowEntityType.CreateAnnotations(loadRow);
             MeasurementRowEntityType.CreateAnnotations(measurementRow);
             OnlineSettingsRowEntityType.CreateAnnotations(onlineSettingsRow);
+            OriginalPieceRowEntityType.CreateAnnotations(originalPieceRow);
+            OriginalRowEntityType.CreateAnnotations(originalRow);
+            PlanAmendmentChangeRowEntityType.CreateAnnotations(planAmendmentChangeRow);
+            PlanAmendmentRowEntityType.CreateAnnotations(planAmendmentRow);
             ReviewFamilyRowEntityType.CreateAnnotations(reviewFamilyRow);
             ReviewRowEntityType.CreateAnnotations(reviewRow);
             StandingDecisionRowEntityType.CreateAnnotations(standingDecisionRow);
@@ -73,6 +96,7 @@ namespace Campaigns.Catalog.CompiledModel
             StreamRowEntityType.CreateAnnotations(streamRow);
             TestResultRowEntityType.CreateAnnotations(testResultRow);
             TestRunRowEntityType.CreateAnnotations(testRunRow);
+            WithdrawalRowEntityType.CreateAnnotations(withdrawalRow);
 
             AddAnnotation("ProductVersion", "10.0.15");
         }

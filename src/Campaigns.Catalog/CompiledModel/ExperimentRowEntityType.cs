@@ -20,7 +20,7 @@ namespace Campaigns.Catalog.CompiledModel
                 "Campaigns.Catalog.Rows.ExperimentRow",
                 typeof(ExperimentRow),
                 baseEntityType,
-                propertyCount: 18,
+                propertyCount: 20,
                 foreignKeyCount: 2,
                 unnamedIndexCount: 3,
                 keyCount: 1);
@@ -33,6 +33,14 @@ namespace Campaigns.Catalog.CompiledModel
                 afterSaveBehavior: PropertySaveBehavior.Throw,
                 sentinel: 0L);
             id.AddAnnotation("Relational:ColumnName", "id");
+
+            var amendmentId = runtimeEntityType.AddProperty(
+                "AmendmentId",
+                typeof(long?),
+                propertyInfo: typeof(ExperimentRow).GetProperty("AmendmentId", BindingFlags.Public | BindingFlags.Instance | BindingFlags.DeclaredOnly),
+                fieldInfo: typeof(ExperimentRow).GetField("<AmendmentId>k__BackingField", BindingFlags.NonPublic | BindingFlags.Instance | BindingFlags.DeclaredOnly),
+                nullable: true);
+            amendmentId.AddAnnotation("Relational:ColumnName", "amendment_id");
 
             var assumedStandardDeviation = runtimeEntityType.AddProperty(
                 "AssumedStandardDeviation",
@@ -80,6 +88,14 @@ namespace Campaigns.Catalog.CompiledModel
                 fieldInfo: typeof(ExperimentRow).GetField("<Family>k__BackingField", BindingFlags.NonPublic | BindingFlags.Instance | BindingFlags.DeclaredOnly),
                 nullable: true);
             family.AddAnnotation("Relational:ColumnName", "family");
+
+            var firstLoadId = runtimeEntityType.AddProperty(
+                "FirstLoadId",
+                typeof(long?),
+                propertyInfo: typeof(ExperimentRow).GetProperty("FirstLoadId", BindingFlags.Public | BindingFlags.Instance | BindingFlags.DeclaredOnly),
+                fieldInfo: typeof(ExperimentRow).GetField("<FirstLoadId>k__BackingField", BindingFlags.NonPublic | BindingFlags.Instance | BindingFlags.DeclaredOnly),
+                nullable: true);
+            firstLoadId.AddAnnotation("Relational:ColumnName", "first_load_id");
 
             var followUp = runtimeEntityType.AddProperty(
                 "FollowUp",

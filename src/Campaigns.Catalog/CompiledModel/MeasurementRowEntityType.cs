@@ -20,7 +20,7 @@ namespace Campaigns.Catalog.CompiledModel
                 "Campaigns.Catalog.Rows.MeasurementRow",
                 typeof(MeasurementRow),
                 baseEntityType,
-                propertyCount: 5,
+                propertyCount: 6,
                 foreignKeyCount: 2,
                 unnamedIndexCount: 1,
                 keyCount: 1);
@@ -42,6 +42,14 @@ namespace Campaigns.Catalog.CompiledModel
                 afterSaveBehavior: PropertySaveBehavior.Throw,
                 sentinel: 0L);
             loadId.AddAnnotation("Relational:ColumnName", "load_id");
+
+            var groupSetId = runtimeEntityType.AddProperty(
+                "GroupSetId",
+                typeof(long?),
+                propertyInfo: typeof(MeasurementRow).GetProperty("GroupSetId", BindingFlags.Public | BindingFlags.Instance | BindingFlags.DeclaredOnly),
+                fieldInfo: typeof(MeasurementRow).GetField("<GroupSetId>k__BackingField", BindingFlags.NonPublic | BindingFlags.Instance | BindingFlags.DeclaredOnly),
+                nullable: true);
+            groupSetId.AddAnnotation("Relational:ColumnName", "group_set_id");
 
             var missingCount = runtimeEntityType.AddProperty(
                 "MissingCount",

@@ -20,7 +20,7 @@ namespace Campaigns.Catalog.CompiledModel
                 "Campaigns.Catalog.Rows.ReviewRow",
                 typeof(ReviewRow),
                 baseEntityType,
-                propertyCount: 13,
+                propertyCount: 17,
                 foreignKeyCount: 2,
                 unnamedIndexCount: 1,
                 keyCount: 1);
@@ -65,6 +65,30 @@ namespace Campaigns.Catalog.CompiledModel
                 sentinel: false);
             isInterim.AddAnnotation("Relational:ColumnName", "is_interim");
 
+            var lastAmendmentId = runtimeEntityType.AddProperty(
+                "LastAmendmentId",
+                typeof(long?),
+                propertyInfo: typeof(ReviewRow).GetProperty("LastAmendmentId", BindingFlags.Public | BindingFlags.Instance | BindingFlags.DeclaredOnly),
+                fieldInfo: typeof(ReviewRow).GetField("<LastAmendmentId>k__BackingField", BindingFlags.NonPublic | BindingFlags.Instance | BindingFlags.DeclaredOnly),
+                nullable: true);
+            lastAmendmentId.AddAnnotation("Relational:ColumnName", "last_amendment_id");
+
+            var lastExclusionId = runtimeEntityType.AddProperty(
+                "LastExclusionId",
+                typeof(long?),
+                propertyInfo: typeof(ReviewRow).GetProperty("LastExclusionId", BindingFlags.Public | BindingFlags.Instance | BindingFlags.DeclaredOnly),
+                fieldInfo: typeof(ReviewRow).GetField("<LastExclusionId>k__BackingField", BindingFlags.NonPublic | BindingFlags.Instance | BindingFlags.DeclaredOnly),
+                nullable: true);
+            lastExclusionId.AddAnnotation("Relational:ColumnName", "last_exclusion_id");
+
+            var lastLoadId = runtimeEntityType.AddProperty(
+                "LastLoadId",
+                typeof(long?),
+                propertyInfo: typeof(ReviewRow).GetProperty("LastLoadId", BindingFlags.Public | BindingFlags.Instance | BindingFlags.DeclaredOnly),
+                fieldInfo: typeof(ReviewRow).GetField("<LastLoadId>k__BackingField", BindingFlags.NonPublic | BindingFlags.Instance | BindingFlags.DeclaredOnly),
+                nullable: true);
+            lastLoadId.AddAnnotation("Relational:ColumnName", "last_load_id");
+
             var lastTestRunId = runtimeEntityType.AddProperty(
                 "LastTestRunId",
                 typeof(long?),
@@ -72,6 +96,14 @@ namespace Campaigns.Catalog.CompiledModel
                 fieldInfo: typeof(ReviewRow).GetField("<LastTestRunId>k__BackingField", BindingFlags.NonPublic | BindingFlags.Instance | BindingFlags.DeclaredOnly),
                 nullable: true);
             lastTestRunId.AddAnnotation("Relational:ColumnName", "last_test_run_id");
+
+            var lastWithdrawalId = runtimeEntityType.AddProperty(
+                "LastWithdrawalId",
+                typeof(long?),
+                propertyInfo: typeof(ReviewRow).GetProperty("LastWithdrawalId", BindingFlags.Public | BindingFlags.Instance | BindingFlags.DeclaredOnly),
+                fieldInfo: typeof(ReviewRow).GetField("<LastWithdrawalId>k__BackingField", BindingFlags.NonPublic | BindingFlags.Instance | BindingFlags.DeclaredOnly),
+                nullable: true);
+            lastWithdrawalId.AddAnnotation("Relational:ColumnName", "last_withdrawal_id");
 
             var level = runtimeEntityType.AddProperty(
                 "Level",

@@ -20,7 +20,7 @@ namespace Campaigns.Catalog.CompiledModel
                 "Campaigns.Catalog.Rows.TestRunRow",
                 typeof(TestRunRow),
                 baseEntityType,
-                propertyCount: 7,
+                propertyCount: 9,
                 foreignKeyCount: 2,
                 keyCount: 1);
 
@@ -49,6 +49,14 @@ namespace Campaigns.Catalog.CompiledModel
                 sentinel: false);
             includesIncomplete.AddAnnotation("Relational:ColumnName", "includes_incomplete");
 
+            var lastAmendmentId = runtimeEntityType.AddProperty(
+                "LastAmendmentId",
+                typeof(long?),
+                propertyInfo: typeof(TestRunRow).GetProperty("LastAmendmentId", BindingFlags.Public | BindingFlags.Instance | BindingFlags.DeclaredOnly),
+                fieldInfo: typeof(TestRunRow).GetField("<LastAmendmentId>k__BackingField", BindingFlags.NonPublic | BindingFlags.Instance | BindingFlags.DeclaredOnly),
+                nullable: true);
+            lastAmendmentId.AddAnnotation("Relational:ColumnName", "last_amendment_id");
+
             var lastExclusionId = runtimeEntityType.AddProperty(
                 "LastExclusionId",
                 typeof(long?),
@@ -64,6 +72,14 @@ namespace Campaigns.Catalog.CompiledModel
                 fieldInfo: typeof(TestRunRow).GetField("<LastLoadId>k__BackingField", BindingFlags.NonPublic | BindingFlags.Instance | BindingFlags.DeclaredOnly),
                 nullable: true);
             lastLoadId.AddAnnotation("Relational:ColumnName", "last_load_id");
+
+            var lastWithdrawalId = runtimeEntityType.AddProperty(
+                "LastWithdrawalId",
+                typeof(long?),
+                propertyInfo: typeof(TestRunRow).GetProperty("LastWithdrawalId", BindingFlags.Public | BindingFlags.Instance | BindingFlags.DeclaredOnly),
+                fieldInfo: typeof(TestRunRow).GetField("<LastWithdrawalId>k__BackingField", BindingFlags.NonPublic | BindingFlags.Instance | BindingFlags.DeclaredOnly),
+                nullable: true);
+            lastWithdrawalId.AddAnnotation("Relational:ColumnName", "last_withdrawal_id");
 
             var programVersion = runtimeEntityType.AddProperty(
                 "ProgramVersion",

@@ -1,3 +1,4 @@
+using Campaigns.Catalog.Ledger;
 using Campaigns.Catalog.Measurements;
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Providers;
@@ -39,7 +40,14 @@ public sealed class ExclusionStore(Catalog catalog)
             }
 
             var decision = new ExcludedObservation(experiment, found.File, place.Line, found.Group, found.Value, exclude, reason, name, Instants.FromMicroseconds(catalog.Now));
-            Insert(experimentId, found.LoadId, decision);
+            long id = Insert(experimentId, found.LoadId, decision);
+            catalog.Record(new LedgerAct(exclude ? LedgerAction.Exclude : LedgerAction.Include, code)
+            {
+                Subject = FormattableString.Invariant($"{experiment}: line {place.Line} of {found.File}"),
+                Reason = reason,
+                Changes = [new LedgerChange($"{experiment}: value {found.Value} of {found.Group}", exclude ? "counted" : "left out", exclude ? "left out" : "counted")],
+                Evidence = [EvidenceRegistry.Exclusion.Of(id)],
+            });
             return decision;
         });
     }
@@ -111,7 +119,7 @@ public sealed class ExclusionStore(Catalog catalog)
         };
     }
 
-    private void Insert(long experimentId, long loadId, ExcludedObservation decision)
+    private long Insert(long experimentId, long loadId, ExcludedObservation decision)
     {
         using SqliteStatement next = catalog.Prepare("SELECT coalesce(max(id), 0) + 1 FROM exclusions");
         next.Read();
@@ -125,6 +133,7 @@ public sealed class ExclusionStore(Catalog catalog)
         insert.Bind(1, id).Bind(2, experimentId).Bind(3, loadId).Bind(4, decision.Line).Bind(5, decision.IsExcluded ? 1L : 0L)
             .Bind(6, decision.Group).Bind(7, decision.Value).Bind(8, decision.Reason).Bind(9, decision.NamedBy)
             .Bind(10, catalog.Now).Bind(11, ProgramVersion.Current).Run();
+        return id;
     }
 
     private sealed record Found(long LoadId, string File, string Group, string Value);

@@ -36,6 +36,8 @@ internal sealed class ExperimentMapping : IEntityTypeConfiguration<ExperimentRow
         builder.Property(e => e.Family).HasColumnName("family");
         builder.Property(e => e.Confirms).HasColumnName("confirms");
         builder.Property(e => e.SharedControl).HasColumnName("shared_control");
+        builder.Property(e => e.FirstLoadId).HasColumnName("first_load_id");
+        builder.Property(e => e.AmendmentId).HasColumnName("amendment_id");
         builder.HasOne<CampaignRow>().WithMany().HasForeignKey(e => e.CampaignId).OnDelete(DeleteBehavior.Restrict);
         builder.HasOne<GroupSetRow>().WithMany().HasForeignKey(e => e.GroupSetId).OnDelete(DeleteBehavior.Restrict);
         builder.HasIndex(e => e.CampaignId).HasDatabaseName("ix_experiments_campaign");

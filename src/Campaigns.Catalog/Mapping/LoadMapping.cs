@@ -42,6 +42,7 @@ internal sealed class MeasurementMapping : IEntityTypeConfiguration<MeasurementR
         builder.Property(m => m.ValueCount).HasColumnName("value_count");
         builder.Property(m => m.MissingCount).HasColumnName("missing_count");
         builder.Property(m => m.Packed).HasColumnName("packed");
+        builder.Property(m => m.GroupSetId).HasColumnName("group_set_id");
         builder.HasOne<ExperimentRow>().WithMany().HasForeignKey(m => m.ExperimentId).OnDelete(DeleteBehavior.Restrict);
         builder.HasOne<LoadRow>().WithMany().HasForeignKey(m => m.LoadId).OnDelete(DeleteBehavior.Restrict);
         builder.HasIndex(m => m.LoadId).HasDatabaseName("ix_measurements_load");

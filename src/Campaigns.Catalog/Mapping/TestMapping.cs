@@ -15,6 +15,8 @@ internal sealed class TestRunMapping : IEntityTypeConfiguration<TestRunRow>
         builder.Property(r => r.CampaignId).HasColumnName("campaign_id");
         builder.Property(r => r.LastLoadId).HasColumnName("last_load_id");
         builder.Property(r => r.LastExclusionId).HasColumnName("last_exclusion_id");
+        builder.Property(r => r.LastAmendmentId).HasColumnName("last_amendment_id");
+        builder.Property(r => r.LastWithdrawalId).HasColumnName("last_withdrawal_id");
         builder.Property(r => r.RanAt).HasColumnName("ran_at");
         builder.Property(r => r.IncludesIncomplete).HasColumnName("includes_incomplete");
         builder.Property(r => r.ProgramVersion).HasColumnName("program_version");
@@ -79,6 +81,10 @@ internal sealed class ReviewMapping : IEntityTypeConfiguration<ReviewRow>
         builder.Property(r => r.SurvivorCount).HasColumnName("survivor_count");
         builder.Property(r => r.IsInterim).HasColumnName("is_interim");
         builder.Property(r => r.LastTestRunId).HasColumnName("last_test_run_id");
+        builder.Property(r => r.LastLoadId).HasColumnName("last_load_id");
+        builder.Property(r => r.LastExclusionId).HasColumnName("last_exclusion_id");
+        builder.Property(r => r.LastAmendmentId).HasColumnName("last_amendment_id");
+        builder.Property(r => r.LastWithdrawalId).HasColumnName("last_withdrawal_id");
         builder.Property(r => r.ProgramVersion).HasColumnName("program_version");
         builder.Property(r => r.Lines).HasColumnName("lines");
         builder.HasOne<CampaignRow>().WithMany().HasForeignKey(r => r.CampaignId).OnDelete(DeleteBehavior.Restrict);

@@ -1,4 +1,6 @@
+using Campaigns.Catalog.Ledger;
 using Campaigns.Catalog.Providers;
+using Campaigns.Catalog.Results;
 using Campaigns.Catalog.Streams;
 using Campaigns.Domain;
 using Campaigns.Statistics.Probability;
@@ -62,6 +64,15 @@ public sealed class CampaignStore(Catalog catalog)
                 new OnlineSettingsStore(catalog).Add(id, online);
             }
 
+            catalog.Record(new LedgerAct(LedgerAction.Start, campaign.Code)
+            {
+                Changes =
+                [
+                    new LedgerChange("title", null, campaign.Title), new LedgerChange("error rate", null, campaign.ErrorRate.Word()), new LedgerChange("level", null, campaign.Level.ToString()),
+                    new LedgerChange("correction", null, campaign.Correction), new LedgerChange("usual test", null, campaign.DefaultTest), new LedgerChange("usual follow-up", null, campaign.DefaultFollowUp),
+                ],
+                Evidence = [EvidenceRegistry.Campaign.Of(id)],
+            });
             return Get(campaign.Code);
         });
     }
@@ -98,12 +109,20 @@ public sealed class CampaignStore(Catalog catalog)
 
         OnlineVerdict.RefuseFamilies(stored.Campaign, plan);
         Campaign campaign = stored.Campaign with { Families = new FamilyStore(catalog).Settle(stored, plan) };
+        string digest = PlanDigest.Of(campaign, plan);
         using SqliteStatement update = catalog.Prepare("UPDATE campaigns SET sealed_at = ?2, plan_digest = ?3 WHERE id = ?1");
-        update.Bind(1, stored.Id).Bind(2, catalog.Now).Bind(3, PlanDigest.Of(campaign, plan)).Run();
+        update.Bind(1, stored.Id).Bind(2, catalog.Now).Bind(3, digest).Run();
+        var evidence = new List<EvidenceRequest> { EvidenceRegistry.Campaign.Of(stored.Id) };
         if (OnlineVerdict.ProcedureOf(stored.Campaign) is { } procedure)
         {
-            new StreamStore(catalog).StartFirst(stored, procedure);
+            evidence.Add(EvidenceRegistry.Stream.Of(new StreamStore(catalog).StartFirst(stored, procedure)));
         }
+
+        catalog.Record(new LedgerAct(LedgerAction.Seal, code)
+        {
+            Changes = [new LedgerChange("plan digest", null, digest), new LedgerChange("experiments", null, FormattableString.Invariant($"{new FamilyReader(catalog).FamilySize(stored.Id)}"))],
+            Evidence = evidence,
+        });
 
         return Get(code);
     });

@@ -1,3 +1,4 @@
+using Campaigns.Catalog.Ledger;
 using Campaigns.Catalog.Providers;
 using Campaigns.Domain;
 using Campaigns.Statistics.Probability;
@@ -28,7 +29,17 @@ public sealed class FamilyStore(Catalog catalog)
         }
 
         OnlineVerdict.RefuseFamilies(stored.Campaign with { Families = families }, []);
-        Replace(stored.Id, families);
+        if (!stored.Campaign.Families.SequenceEqual(families))
+        {
+            Replace(stored.Id, families);
+            catalog.Record(new LedgerAct(LedgerAction.Families, code)
+            {
+                Subject = FormattableString.Invariant($"{families.Count} families"),
+                Changes = Differences(stored.Campaign.Families, families),
+                Evidence = [EvidenceRegistry.Campaign.Of(stored.Id)],
+            });
+        }
+
         return true;
     });
 
@@ -66,6 +77,18 @@ public sealed class FamilyStore(Catalog catalog)
 
         return families.Count == 0 ? Array.Empty<Family>() : families;
     }
+
+    private static List<LedgerChange> Differences(IReadOnlyList<Family> before, IReadOnlyList<Family> after)
+    {
+        Dictionary<string, string> old = before.ToDictionary(f => f.Name, Words, StringComparer.Ordinal);
+        Dictionary<string, string> now = after.ToDictionary(f => f.Name, Words, StringComparer.Ordinal);
+        return [.. old.Keys.Union(now.Keys).Select(name => new LedgerChange($"family {name}", old.GetValueOrDefault(name), now.GetValueOrDefault(name))).Where(c => c.Before != c.After)];
+    }
+
+    private static string Words(Family family) => string.Join(
+        ", ",
+        (string[])[family.Correction ?? "the campaign's correction", family.Level is { } level ? $"level {level}" : "level by share",
+            .. family.OpensAfter is { } first ? [$"opens after {(family.Gate == FamilyGate.AllSurvive ? "all" : "any")} of {first}"] : Array.Empty<string>()]);
 
     /// <summary>Puts families in the place of those that were there; inside a transaction, before the seal.</summary>
     private void Replace(long campaignId, IReadOnlyList<Family> families)

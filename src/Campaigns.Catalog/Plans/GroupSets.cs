@@ -1,3 +1,4 @@
+using Campaigns.Catalog.Ledger;
 using Campaigns.Catalog.Providers;
 
 namespace Campaigns.Catalog.Plans;
@@ -39,6 +40,18 @@ internal sealed class GroupSets : IDisposable
             Remember(current, [.. labels]);
         }
     }
+
+    /// <summary>The latest key of all sets; 0 before the first.</summary>
+    public static long LastId(Catalog catalog)
+    {
+        using SqliteStatement last = catalog.Prepare("SELECT coalesce(max(id), 0) FROM group_sets");
+        last.Read();
+        return last.Integer(0);
+    }
+
+    /// <summary>What was added to a campaign's sets in this transaction, for the ledger: none or one range.</summary>
+    public static IEnumerable<EvidenceRequest> Since(Catalog catalog, long campaignId, long lastIdBefore) =>
+        LastId(catalog) is var last && last > lastIdBefore ? [EvidenceRegistry.GroupSets.Of(campaignId, lastIdBefore + 1, last)] : [];
 
     /// <summary>The labels of a set, in the order of their positions.</summary>
     public string[] Labels(long? id) => id is { } key ? _labels[key] : [];

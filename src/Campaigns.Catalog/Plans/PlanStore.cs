@@ -1,3 +1,4 @@
+using Campaigns.Catalog.Ledger;
 using Campaigns.Catalog.Providers;
 using Campaigns.Domain;
 
@@ -64,12 +65,24 @@ public sealed class PlanStore(Catalog catalog)
         }
 
         OnlineVerdict.RefuseFamilies(stored.Campaign, experiments);
-        PlanChange change = Write(stored.Id, experiments);
+        long setsBefore = GroupSets.LastId(catalog);
+        var changes = new List<LedgerChange>();
+        PlanChange change = Write(stored.Id, experiments, changes);
         new ConfirmsRule(catalog, stored).Check(experiments);
+        if (change.Added + change.Changed > 0)
+        {
+            catalog.Record(new LedgerAct(LedgerAction.Plan, code)
+            {
+                Subject = FormattableString.Invariant($"{change.Added} added, {change.Changed} changed"),
+                Changes = changes,
+                Evidence = [EvidenceRegistry.Plan.Of(stored.Id), .. GroupSets.Since(catalog, stored.Id, setsBefore)],
+            });
+        }
+
         return change;
     });
 
-    private PlanChange Write(long campaignId, IReadOnlyList<PlannedExperiment> experiments)
+    private PlanChange Write(long campaignId, IReadOnlyList<PlannedExperiment> experiments, List<LedgerChange> changes)
     {
         Dictionary<string, (long Id, PlannedExperiment Plan)> known = Known(campaignId);
         using var sets = new GroupSets(catalog, campaignId);
@@ -90,6 +103,7 @@ public sealed class PlanStore(Catalog catalog)
             else
             {
                 writer.Replace(old.Id, experiment, set);
+                changes.AddRange(PlanFields.Differences(old.Plan, experiment).Select(f => new LedgerChange($"{experiment.Code}: {f.Name}", f.Before, f.After)));
                 changed++;
             }
         }

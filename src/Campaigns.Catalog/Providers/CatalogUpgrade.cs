@@ -1,3 +1,4 @@
+using Campaigns.Catalog.Ledger;
 using Microsoft.Data.Sqlite;
 using Microsoft.EntityFrameworkCore;
 
@@ -10,9 +11,11 @@ public static class CatalogUpgrade
     /// <summary>Upgrades a catalog.</summary>
     /// <param name="path">The file.</param>
     /// <param name="migrationsAssembly">Name of the assembly that holds the migrations.</param>
+    /// <param name="clock">Where instants come from.</param>
+    /// <param name="actor">Who acts; null for the account of the process.</param>
     /// <returns>Whether there was anything to do.</returns>
     /// <exception cref="CatalogException">The file is no catalog, is newer than this program, is in use, or the copy did not pass its checks; the old file stands.</exception>
-    public static bool Run(string path, string migrationsAssembly)
+    public static bool Run(string path, string migrationsAssembly, TimeProvider clock, Actor? actor = null)
     {
         int version = SqliteCatalogFile.ReadVersion(path);
         if (version == SqliteCatalogFile.SchemaVersion)
@@ -34,6 +37,7 @@ public static class CatalogUpgrade
             SqliteCatalogFile.Execute(old, "BEGIN IMMEDIATE");
             CopyTo(path, copy);
             Migrate(copy, migrationsAssembly);
+            Record(copy, version, clock, actor);
             File.Move(copy, path, overwrite: true);
             return true;
         }
@@ -70,6 +74,17 @@ public static class CatalogUpgrade
         Demand(connection, "PRAGMA journal_mode = DELETE", answer: "delete", copy);
         Demand(connection, "PRAGMA integrity_check", answer: "ok", copy);
         Demand(connection, "PRAGMA foreign_key_check", answer: null, copy);
+    }
+
+    /// <summary>Everything that the catalog holds is spoken for from here on; a catalog from before the ledger begins its chain with this entry.</summary>
+    private static void Record(string copy, int version, TimeProvider clock, Actor? actor)
+    {
+        using Catalog catalog = Catalog.Open(copy, clock, actor);
+        catalog.Change(() => catalog.Record(new LedgerAct(LedgerAction.Upgrade, null)
+        {
+            Changes = [new LedgerChange("schema", FormattableString.Invariant($"{version}"), FormattableString.Invariant($"{SqliteCatalogFile.SchemaVersion}"))],
+            Evidence = EvidenceRegistry.Everything(catalog),
+        }));
     }
 
     private static void Demand(SqliteConnection connection, string pragma, string? answer, string copy)

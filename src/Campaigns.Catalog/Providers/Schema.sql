@@ -387,3 +387,170 @@ VALUES ('20261201000002_ErrorControl', '10.0.15');
 
 COMMIT;
 
+BEGIN TRANSACTION;
+ALTER TABLE "test_runs" ADD "last_amendment_id" INTEGER NULL;
+
+ALTER TABLE "test_runs" ADD "last_withdrawal_id" INTEGER NULL;
+
+ALTER TABLE "reviews" ADD "last_amendment_id" INTEGER NULL;
+
+ALTER TABLE "reviews" ADD "last_exclusion_id" INTEGER NULL;
+
+ALTER TABLE "reviews" ADD "last_load_id" INTEGER NULL;
+
+ALTER TABLE "reviews" ADD "last_withdrawal_id" INTEGER NULL;
+
+ALTER TABLE "measurements" ADD "group_set_id" INTEGER NULL;
+
+ALTER TABLE "experiments" ADD "amendment_id" INTEGER NULL;
+
+ALTER TABLE "experiments" ADD "first_load_id" INTEGER NULL;
+
+CREATE TABLE "ledger" (
+    "sequence" INTEGER NOT NULL CONSTRAINT "PK_ledger" PRIMARY KEY,
+    "at" INTEGER NOT NULL,
+    "account" TEXT NOT NULL,
+    "acting_as" TEXT NULL,
+    "program_version" TEXT NOT NULL,
+    "action" TEXT NOT NULL,
+    "campaign" TEXT NULL,
+    "subject" TEXT NULL,
+    "reason" TEXT NULL,
+    "hash" TEXT NOT NULL,
+    CONSTRAINT "ck_ledger_hash" CHECK (length(hash) = 64),
+    CONSTRAINT "ck_ledger_sequence" CHECK (sequence > 0),
+    CONSTRAINT "ck_ledger_words" CHECK (length(account) > 0 and length(program_version) > 0 and length(action) > 0)
+);
+
+CREATE TABLE "original_pieces" (
+    "load_id" INTEGER NOT NULL,
+    "position" INTEGER NOT NULL,
+    "byte_count" INTEGER NOT NULL,
+    "content" BLOB NOT NULL,
+    CONSTRAINT "PK_original_pieces" PRIMARY KEY ("load_id", "position"),
+    CONSTRAINT "ck_original_pieces_counts" CHECK (position > 0 and byte_count > 0),
+    CONSTRAINT "FK_original_pieces_loads_load_id" FOREIGN KEY ("load_id") REFERENCES "loads" ("id") ON DELETE RESTRICT
+);
+
+CREATE TABLE "originals" (
+    "load_id" INTEGER NOT NULL CONSTRAINT "PK_originals" PRIMARY KEY,
+    "encoding" TEXT NOT NULL,
+    "separator" TEXT NOT NULL,
+    "decimal_mark" TEXT NOT NULL,
+    "columns" TEXT NOT NULL,
+    "compression" TEXT NOT NULL,
+    "piece_count" INTEGER NOT NULL,
+    CONSTRAINT "ck_originals_pieces" CHECK (piece_count > 0),
+    CONSTRAINT "FK_originals_loads_load_id" FOREIGN KEY ("load_id") REFERENCES "loads" ("id") ON DELETE RESTRICT
+);
+
+CREATE TABLE "plan_amendments" (
+    "id" INTEGER NOT NULL CONSTRAINT "PK_plan_amendments" PRIMARY KEY,
+    "campaign_id" INTEGER NOT NULL,
+    "number" INTEGER NOT NULL,
+    "reason" TEXT NOT NULL,
+    "named_by" TEXT NOT NULL,
+    "made_at" INTEGER NOT NULL,
+    "program_version" TEXT NOT NULL,
+    CONSTRAINT "ck_plan_amendments_number" CHECK (number > 0),
+    CONSTRAINT "ck_plan_amendments_words" CHECK (length(reason) > 0 and length(named_by) > 0),
+    CONSTRAINT "FK_plan_amendments_campaigns_campaign_id" FOREIGN KEY ("campaign_id") REFERENCES "campaigns" ("id") ON DELETE RESTRICT
+);
+
+CREATE TABLE "withdrawals" (
+    "id" INTEGER NOT NULL CONSTRAINT "PK_withdrawals" PRIMARY KEY,
+    "experiment_id" INTEGER NOT NULL,
+    "is_withdrawn" INTEGER NOT NULL,
+    "had_data" INTEGER NOT NULL,
+    "reason" TEXT NOT NULL,
+    "named_by" TEXT NOT NULL,
+    "made_at" INTEGER NOT NULL,
+    "program_version" TEXT NOT NULL,
+    CONSTRAINT "ck_withdrawals_truths" CHECK (is_withdrawn in (0, 1) and had_data in (0, 1)),
+    CONSTRAINT "ck_withdrawals_words" CHECK (length(reason) > 0 and length(named_by) > 0),
+    CONSTRAINT "FK_withdrawals_experiments_experiment_id" FOREIGN KEY ("experiment_id") REFERENCES "experiments" ("id") ON DELETE RESTRICT
+);
+
+CREATE TABLE "ledger_changes" (
+    "sequence" INTEGER NOT NULL,
+    "position" INTEGER NOT NULL,
+    "what" TEXT NOT NULL,
+    "before" TEXT NULL,
+    "after" TEXT NULL,
+    CONSTRAINT "PK_ledger_changes" PRIMARY KEY ("sequence", "position"),
+    CONSTRAINT "FK_ledger_changes_ledger_sequence" FOREIGN KEY ("sequence") REFERENCES "ledger" ("sequence") ON DELETE RESTRICT
+);
+
+CREATE TABLE "ledger_evidence" (
+    "sequence" INTEGER NOT NULL,
+    "position" INTEGER NOT NULL,
+    "kind" TEXT NOT NULL,
+    "owner" INTEGER NOT NULL,
+    "first" INTEGER NOT NULL,
+    "last" INTEGER NOT NULL,
+    "digest" TEXT NOT NULL,
+    CONSTRAINT "PK_ledger_evidence" PRIMARY KEY ("sequence", "position"),
+    CONSTRAINT "ck_ledger_evidence_digest" CHECK (length(digest) = 64),
+    CONSTRAINT "ck_ledger_evidence_range" CHECK (first between 0 and last),
+    CONSTRAINT "FK_ledger_evidence_ledger_sequence" FOREIGN KEY ("sequence") REFERENCES "ledger" ("sequence") ON DELETE RESTRICT
+);
+
+CREATE TABLE "plan_amendment_changes" (
+    "amendment_id" INTEGER NOT NULL,
+    "experiment_id" INTEGER NOT NULL,
+    "field" TEXT NOT NULL,
+    "before" TEXT NULL,
+    "after" TEXT NULL,
+    CONSTRAINT "PK_plan_amendment_changes" PRIMARY KEY ("amendment_id", "experiment_id", "field"),
+    CONSTRAINT "FK_plan_amendment_changes_experiments_experiment_id" FOREIGN KEY ("experiment_id") REFERENCES "experiments" ("id") ON DELETE RESTRICT,
+    CONSTRAINT "FK_plan_amendment_changes_plan_amendments_amendment_id" FOREIGN KEY ("amendment_id") REFERENCES "plan_amendments" ("id") ON DELETE RESTRICT
+);
+
+CREATE UNIQUE INDEX "ux_plan_amendments_number" ON "plan_amendments" ("campaign_id", "number");
+
+CREATE INDEX "ix_withdrawals_experiment" ON "withdrawals" ("experiment_id");
+
+DROP TRIGGER measurements_are_kept;
+UPDATE measurements SET group_set_id = (SELECT group_set_id FROM experiments e WHERE e.id = experiment_id);
+CREATE TRIGGER measurements_are_kept BEFORE UPDATE ON measurements BEGIN SELECT RAISE(ABORT, 'measurements are never changed'); END;
+DROP TRIGGER reviews_are_kept;
+UPDATE reviews SET
+    last_load_id = (SELECT max(id) FROM loads l WHERE l.campaign_id = reviews.campaign_id AND l.loaded_at <= taken_at),
+    last_exclusion_id = (SELECT max(id) FROM exclusions x WHERE x.made_at <= taken_at);
+CREATE TRIGGER reviews_are_kept BEFORE UPDATE ON reviews BEGIN SELECT RAISE(ABORT, 'a review is never changed'); END;
+
+DROP TRIGGER experiments_are_kept;
+CREATE TRIGGER experiments_are_kept BEFORE UPDATE ON experiments
+WHEN EXISTS (SELECT 1 FROM campaigns WHERE id = old.campaign_id AND sealed_at IS NOT NULL)
+    AND (new.id IS NOT old.id OR new.campaign_id IS NOT old.campaign_id OR new.code IS NOT old.code OR new.first_load_id IS NOT old.first_load_id
+        OR ((new.group_set_id IS NOT old.group_set_id AND old.groups_are_planned = 1
+                OR new.title IS NOT old.title OR new.response IS NOT old.response OR new.unit IS NOT old.unit
+                OR new.groups_are_planned IS NOT old.groups_are_planned OR new.control IS NOT old.control OR new.test IS NOT old.test
+                OR new.follow_up IS NOT old.follow_up OR new.replicates IS NOT old.replicates OR new.smallest_effect IS NOT old.smallest_effect
+                OR new.assumed_sd IS NOT old.assumed_sd OR new.weight IS NOT old.weight OR new.family IS NOT old.family
+                OR new.confirms IS NOT old.confirms OR new.shared_control IS NOT old.shared_control OR new.amendment_id IS NOT old.amendment_id)
+            AND (new.amendment_id IS NULL OR new.amendment_id <= coalesce(old.amendment_id, 0) OR NOT EXISTS (
+                SELECT 1 FROM plan_amendment_changes c WHERE c.amendment_id = new.amendment_id AND c.experiment_id = old.id))))
+BEGIN SELECT RAISE(ABORT, 'an experiment of a sealed plan is changed by an amendment alone; only groups that come with the data may be added'); END;
+CREATE TRIGGER plan_amendments_are_kept BEFORE UPDATE ON plan_amendments BEGIN SELECT RAISE(ABORT, 'an amendment is never changed; another one follows it'); END;
+CREATE TRIGGER plan_amendments_stay BEFORE DELETE ON plan_amendments BEGIN SELECT RAISE(ABORT, 'an amendment is never deleted'); END;
+CREATE TRIGGER plan_amendment_changes_are_kept BEFORE UPDATE ON plan_amendment_changes BEGIN SELECT RAISE(ABORT, 'an amendment is never changed; another one follows it'); END;
+CREATE TRIGGER plan_amendment_changes_stay BEFORE DELETE ON plan_amendment_changes BEGIN SELECT RAISE(ABORT, 'an amendment is never deleted'); END;
+CREATE TRIGGER withdrawals_are_kept BEFORE UPDATE ON withdrawals BEGIN SELECT RAISE(ABORT, 'a withdrawal is never changed; another one takes it back'); END;
+CREATE TRIGGER withdrawals_stay BEFORE DELETE ON withdrawals BEGIN SELECT RAISE(ABORT, 'a withdrawal is never deleted; another one takes it back'); END;
+CREATE TRIGGER originals_are_kept BEFORE UPDATE ON originals BEGIN SELECT RAISE(ABORT, 'an original is never changed'); END;
+CREATE TRIGGER originals_stay BEFORE DELETE ON originals BEGIN SELECT RAISE(ABORT, 'an original is never deleted'); END;
+CREATE TRIGGER original_pieces_are_kept BEFORE UPDATE ON original_pieces BEGIN SELECT RAISE(ABORT, 'an original is never changed'); END;
+CREATE TRIGGER original_pieces_stay BEFORE DELETE ON original_pieces BEGIN SELECT RAISE(ABORT, 'an original is never deleted'); END;
+CREATE TRIGGER ledger_is_kept BEFORE UPDATE ON ledger BEGIN SELECT RAISE(ABORT, 'the ledger is never changed'); END;
+CREATE TRIGGER ledger_stays BEFORE DELETE ON ledger BEGIN SELECT RAISE(ABORT, 'the ledger is never shortened'); END;
+CREATE TRIGGER ledger_changes_are_kept BEFORE UPDATE ON ledger_changes BEGIN SELECT RAISE(ABORT, 'the ledger is never changed'); END;
+CREATE TRIGGER ledger_changes_stay BEFORE DELETE ON ledger_changes BEGIN SELECT RAISE(ABORT, 'the ledger is never shortened'); END;
+CREATE TRIGGER ledger_evidence_is_kept BEFORE UPDATE ON ledger_evidence BEGIN SELECT RAISE(ABORT, 'the ledger is never changed'); END;
+CREATE TRIGGER ledger_evidence_stays BEFORE DELETE ON ledger_evidence BEGIN SELECT RAISE(ABORT, 'the ledger is never shortened'); END;
+
+INSERT INTO "__EFMigrationsHistory" ("MigrationId", "ProductVersion")
+VALUES ('20261201000003_Record', '10.0.15');
+
+COMMIT;
+

@@ -10,7 +10,7 @@ internal static class SqliteCatalogFile
     public const int ApplicationId = 0x43414D50;
 
     /// <summary>The schema that this program writes: the number of migrations.</summary>
-    public const int SchemaVersion = 3;
+    public const int SchemaVersion = 4;
 
     private const int HeaderLength = 100;
     private const byte WriteAheadLog = 2;

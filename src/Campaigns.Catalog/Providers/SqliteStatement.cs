@@ -1,3 +1,4 @@
+using Campaigns.Catalog.Ledger;
 using Microsoft.Data.Sqlite;
 using SQLitePCL;
 using static SQLitePCL.raw;
@@ -139,6 +140,34 @@ internal sealed class SqliteStatement : IDisposable
         System.Text.Ascii.Equals(sqlite3_column_blob(_statement, column), ascii);
 
     public string? NullableText(int column) => IsNull(column) ? null : Text(column);
+
+    /// <summary>Parameters of the statement.</summary>
+    public int ParameterCount => _isNull.Length - 1;
+
+    /// <summary>Adds every cell of the row at hand to a digest, with its type, so that no two rows share an encoding.</summary>
+    public void AddRowTo(ChainHash hash)
+    {
+        int count = sqlite3_column_count(_statement);
+        for (int i = 0; i < count; i++)
+        {
+            int type = sqlite3_column_type(_statement, i);
+            hash.Byte((byte)type);
+            switch (type)
+            {
+                case SQLITE_INTEGER:
+                    hash.Integer(sqlite3_column_int64(_statement, i));
+                    break;
+                case SQLITE_FLOAT:
+                    hash.Integer(BitConverter.DoubleToInt64Bits(sqlite3_column_double(_statement, i)));
+                    break;
+                case SQLITE_TEXT or SQLITE_BLOB:
+                    hash.Bytes(sqlite3_column_blob(_statement, i));
+                    break;
+                default:
+                    break;
+            }
+        }
+    }
 
     /// <summary>The bytes of a cell; valid until the next call on this statement.</summary>
     public ReadOnlySpan<byte> Blob(int column) => sqlite3_column_blob(_statement, column);

@@ -6,10 +6,13 @@ using Campaigns.Statistics.GroupTests;
 namespace Campaigns.Catalog.Results;
 
 /// <summary>Writes the outcomes of one test run; the run itself is stored with its first outcome, so that a run without any leaves no trace.</summary>
-internal sealed class ResultWriter(Catalog catalog, long campaignId, long? lastLoadId, long? lastExclusionId, bool includesIncomplete, StreamKeeper? streams) : IDisposable
+internal sealed class ResultWriter(Catalog catalog, long campaignId, RecordPosition seen, bool includesIncomplete, StreamKeeper? streams) : IDisposable
 {
     private SqliteStatement? _insert;
     private long _runId;
+
+    /// <summary>Key of the run; 0 before its first outcome.</summary>
+    public long RunId => _runId;
 
     public int Tested { get; private set; }
 
@@ -74,9 +77,10 @@ internal sealed class ResultWriter(Catalog catalog, long campaignId, long? lastL
         next.Read();
         _runId = next.Integer(0);
         next.Reset();
-        using SqliteStatement run = catalog.Prepare("INSERT INTO test_runs (id, campaign_id, last_load_id, ran_at, includes_incomplete, program_version, last_exclusion_id) VALUES (?1, ?2, ?3, ?4, ?5, ?6, ?7)");
-        run.Bind(1, _runId).Bind(2, campaignId).Bind(3, lastLoadId).Bind(4, catalog.Now)
-            .Bind(5, includesIncomplete ? 1L : 0L).Bind(6, ProgramVersion.Current).Bind(7, lastExclusionId).Run();
+        using SqliteStatement run = catalog.Prepare("INSERT INTO test_runs (id, campaign_id, last_load_id, ran_at, includes_incomplete, program_version, last_exclusion_id, last_amendment_id, last_withdrawal_id) VALUES (?1, ?2, ?3, ?4, ?5, ?6, ?7, ?8, ?9)");
+        run.Bind(1, _runId).Bind(2, campaignId).Bind(3, seen.LastLoadId).Bind(4, catalog.Now)
+            .Bind(5, includesIncomplete ? 1L : 0L).Bind(6, ProgramVersion.Current).Bind(7, seen.LastExclusionId)
+            .Bind(8, seen.LastAmendmentId).Bind(9, seen.LastWithdrawalId).Run();
         return catalog.Prepare(
             """
             INSERT INTO test_results (experiment_id, test_run_id, status, group_count, observation_count, statistic, df1, df2, p, log_p, eta_squared, omega_squared, specimen_count, arrangements, as_extreme, seed)

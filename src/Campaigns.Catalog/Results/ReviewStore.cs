@@ -1,3 +1,4 @@
+using Campaigns.Catalog.Ledger;
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Providers;
 using Campaigns.Domain;
@@ -16,6 +17,8 @@ public sealed class ReviewStore(Catalog catalog)
 {
     private const string Columns =
         "number, taken_at, correction, level, family_size, tested_count, survivor_count, is_interim, program_version, last_test_run_id";
+
+    private const string DataHead = "last_load_id, last_exclusion_id, last_amendment_id, last_withdrawal_id";
 
     /// <summary>Applies the sealed correction to the family and stores the outcome; where nothing changed since the latest review, that one stands.</summary>
     /// <param name="code">The campaign.</param>
@@ -95,7 +98,9 @@ public sealed class ReviewStore(Catalog catalog)
         next.Read();
         long id = next.Integer(0);
         next.Reset();
-        using SqliteStatement insert = catalog.Prepare($"INSERT INTO reviews (id, campaign_id, {Columns}, lines) VALUES (?1, ?2, ?3, ?4, ?5, ?6, ?7, ?8, ?9, ?10, ?11, ?12, ?13)");
+        using SqliteStatement insert = catalog.Prepare($"INSERT INTO reviews (id, campaign_id, {Columns}, lines, {DataHead}) VALUES (?1, ?2, ?3, ?4, ?5, ?6, ?7, ?8, ?9, ?10, ?11, ?12, ?13, ?14, ?15, ?16, ?17)");
+        RecordPosition seen = RecordPosition.Of(catalog, stored.Id);
+        insert.Bind(14, seen.LastLoadId).Bind(15, seen.LastExclusionId).Bind(16, seen.LastAmendmentId).Bind(17, seen.LastWithdrawalId);
         insert.Bind(1, id).Bind(2, stored.Id).Bind(3, (long)number).Bind(4, catalog.Now).Bind(5, campaign.Correction)
             .Bind(6, campaign.Level.Value).Bind(7, (long)verdict.Size).Bind(8, (long)columns.Count).Bind(9, (long)verdict.SurvivorCount)
             .Bind(10, testedOnly ? 1L : 0L).Bind(11, ProgramVersion.Current).Bind(12, lastRun)
@@ -104,6 +109,18 @@ public sealed class ReviewStore(Catalog catalog)
         {
             new ReviewFamilies(catalog).Add(id, verdict.Families);
         }
+
+        catalog.Record(new LedgerAct(LedgerAction.Review, campaign.Code)
+        {
+            Subject = FormattableString.Invariant($"review {number}"),
+            Changes =
+            [
+                new LedgerChange("correction", null, campaign.Correction), new LedgerChange("level", null, campaign.Level.ToString()),
+                new LedgerChange("family", null, FormattableString.Invariant($"{verdict.Size}{(testedOnly ? " (interim: tested experiments only)" : "")}")),
+                new LedgerChange("tested", null, FormattableString.Invariant($"{columns.Count}")), new LedgerChange("survivors", null, FormattableString.Invariant($"{verdict.SurvivorCount}")),
+            ],
+            Evidence = [EvidenceRegistry.Review.Of(id)],
+        });
 
         return Latest(stored.Id)!.Value.Head;
     }

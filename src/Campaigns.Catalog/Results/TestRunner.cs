@@ -1,4 +1,5 @@
 using Campaigns.Catalog.Excluding;
+using Campaigns.Catalog.Ledger;
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Providers;
 using Campaigns.Catalog.Streams;
@@ -72,7 +73,7 @@ public sealed class TestRunner(Catalog catalog)
     private TestRunSummary Run(StoredCampaign stored, bool includeIncomplete, Action<WorkProgress> progress, CancellationToken cancel)
     {
         (long LoadId, long ExclusionId, bool RanBefore) last = LastRun(stored.Id);
-        long? lastLoad = LastLoad(stored.Id);
+        RecordPosition seen = RecordPosition.Of(catalog, stored.Id);
         string sql = !last.RanBefore ? All : includeIncomplete ? Untested : WithNewsAfterRun;
         using SqliteStatement select = catalog.Prepare(sql);
         select.Bind(1, stored.Id);
@@ -84,7 +85,7 @@ public sealed class TestRunner(Catalog catalog)
         var exclusions = new StandingExclusions(catalog, stored.Id);
         using var sets = new GroupSets(catalog, stored.Id);
         using StreamKeeper? streams = stored.Campaign.Streams.Count == 0 ? null : new StreamKeeper(catalog, stored);
-        using var results = new ResultWriter(catalog, stored.Id, lastLoad, exclusions.LastId, includeIncomplete, streams);
+        using var results = new ResultWriter(catalog, stored.Id, seen, includeIncomplete, streams);
         using var pipeline = new TestPipeline(includeIncomplete, results.Write);
         var plans = new PlannedTests(stored.Campaign, () => new FamilyReader(catalog).PermutationDrawCount(stored), sets, exclusions, cancel);
         TestBatch batch = pipeline.Fresh();
@@ -111,6 +112,20 @@ public sealed class TestRunner(Catalog catalog)
         pipeline.Finish();
         cancel.ThrowIfCancellationRequested();
         bool ran = results.Tested + results.NotTestable > 0;
+        if (ran)
+        {
+            catalog.Record(new LedgerAct(LedgerAction.Test, stored.Campaign.Code)
+            {
+                Subject = FormattableString.Invariant($"test run {results.RunId}"),
+                Changes =
+                [
+                    new LedgerChange("tested", null, FormattableString.Invariant($"{results.Tested}")), new LedgerChange("not testable", null, FormattableString.Invariant($"{results.NotTestable}")),
+                    .. includeIncomplete ? [new LedgerChange("incomplete experiments", "left alone", "taken")] : Array.Empty<LedgerChange>(),
+                ],
+                Evidence = [EvidenceRegistry.TestRun.Of(results.RunId), .. streams?.Evidence ?? []],
+            });
+        }
+
         return new TestRunSummary(results.Tested, results.NotTestable, ran || !last.RanBefore ? results.Incomplete : Waiting(stored.Id), ran)
         {
             Decided = streams?.Decided ?? 0,
@@ -135,13 +150,6 @@ public sealed class TestRunner(Catalog catalog)
             """);
         count.Bind(1, campaignId).Read();
         return (int)count.Integer(0);
-    }
-
-    private long? LastLoad(long campaignId)
-    {
-        using SqliteStatement select = catalog.Prepare("SELECT max(id) FROM loads WHERE campaign_id = ?1");
-        select.Bind(1, campaignId).Read();
-        return select.NullableInteger(0);
     }
 
     /// <summary>Reads what the plan says of the test of an experiment.</summary>

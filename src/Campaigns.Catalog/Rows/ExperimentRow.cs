@@ -56,4 +56,10 @@ public sealed class ExperimentRow
 
     /// <summary>Name of the control, batch or instrument that it shares with other experiments; null where it shares none.</summary>
     public string? SharedControl { get; set; }
+
+    /// <summary>The load that brought the experiment; null where it was planned.</summary>
+    public long? FirstLoadId { get; set; }
+
+    /// <summary>The latest amendment after the seal that added or changed it; null where there was none.</summary>
+    public long? AmendmentId { get; set; }
 }

@@ -49,6 +49,9 @@ public sealed class MeasurementRow
     /// <summary>Rows whose value is marked as missing.</summary>
     public int MissingCount { get; set; }
 
+    /// <summary>The group set to which the packed groups refer: the experiment's when the load was stored; null in rows without one.</summary>
+    public long? GroupSetId { get; set; }
+
     /// <summary>The columns; see PackedMeasurements.</summary>
     public byte[] Packed { get; set; } = [];
 }

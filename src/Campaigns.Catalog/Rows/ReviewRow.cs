@@ -36,6 +36,18 @@ public sealed class ReviewRow
     /// <summary>The latest test run seen; null where there was none.</summary>
     public long? LastTestRunId { get; set; }
 
+    /// <summary>The latest load of the campaign at that moment; null where there was none.</summary>
+    public long? LastLoadId { get; set; }
+
+    /// <summary>The latest exclusion in the catalog at that moment; null where there was none.</summary>
+    public long? LastExclusionId { get; set; }
+
+    /// <summary>The latest plan amendment of the campaign at that moment; null where there was none.</summary>
+    public long? LastAmendmentId { get; set; }
+
+    /// <summary>The latest withdrawal in the catalog at that moment; null where there was none.</summary>
+    public long? LastWithdrawalId { get; set; }
+
     /// <summary>Version of the program.</summary>
     public string ProgramVersion { get; set; } = "";
 

@@ -15,6 +15,12 @@ public sealed class TestRunRow
     /// <summary>The latest exclusion that the run heeded; null where there was none.</summary>
     public long? LastExclusionId { get; set; }
 
+    /// <summary>The latest plan amendment of the campaign that the run heeded; null where there was none.</summary>
+    public long? LastAmendmentId { get; set; }
+
+    /// <summary>The latest withdrawal that the run heeded; null where there was none.</summary>
+    public long? LastWithdrawalId { get; set; }
+
     /// <summary>Microseconds since 1970 UTC.</summary>
     public long RanAt { get; set; }
 

@@ -1,3 +1,4 @@
+using Campaigns.Catalog.Ledger;
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Providers;
 using Campaigns.Catalog.Results;
@@ -16,6 +17,8 @@ internal sealed class StreamKeeper : IDisposable
     private readonly Dictionary<int, long> _streamIds = [];
     private readonly Dictionary<int, int> _known = [];
     private readonly Dictionary<long, Place> _places = [];
+    private readonly Dictionary<int, (long First, long Last)> _given = [];
+    private readonly Dictionary<int, (long First, long Last)> _made = [];
     private readonly SqliteStatement _register;
     private readonly SqliteStatement _decide;
 
@@ -46,6 +49,13 @@ internal sealed class StreamKeeper : IDisposable
         _decide = catalog.Prepare("INSERT INTO standing_decisions (stream_id, position, known_order, test_run_id, p, log_p, survives, decided_at) VALUES (?1, ?2, ?3, ?4, ?5, ?6, ?7, ?8)");
     }
 
+    /// <summary>What this keeper wrote, for the ledger: levels given and decisions made, stream by stream.</summary>
+    public IReadOnlyList<EvidenceRequest> Evidence =>
+    [
+        .. _given.OrderBy(g => g.Key).Select(g => EvidenceRegistry.Levels.Of(_streamIds[g.Key], g.Value.First, g.Value.Last)),
+        .. _made.OrderBy(g => g.Key).Select(g => EvidenceRegistry.Decisions.Of(_streamIds[g.Key], g.Value.First, g.Value.Last)),
+    ];
+
     /// <summary>Experiments decided by this keeper.</summary>
     public int Decided { get; private set; }
 
@@ -62,6 +72,7 @@ internal sealed class StreamKeeper : IDisposable
         OnlineLevel given = _stream.Register();
         _register.Bind(1, _streamIds[_latest]).Bind(2, (long)given.Position).Bind(3, experimentId).Bind(4, given.Level).Bind(5, (long)known).Bind(6, _catalog.Now).Run();
         _places.Add(experimentId, new Place(_latest, given.Position, given.Level, false));
+        _given[_latest] = (_given.TryGetValue(_latest, out (long First, long Last) range) ? range.First : given.Position, given.Position);
     }
 
     /// <summary>Decides an experiment on its first test, once and for all; one that was not registered is so just before. A later test changes nothing.</summary>
@@ -87,6 +98,7 @@ internal sealed class StreamKeeper : IDisposable
         _decide.Bind(1, _streamIds[place.Stream]).Bind(2, (long)place.Position).Bind(3, (long)order).Bind(4, testRunId)
             .Bind(5, p?.Value).Bind(6, p is { } given && given.Value < PackedReviewLines.LogStoredBelow ? given.Log : null)
             .Bind(7, survives ? 1L : 0L).Bind(8, _catalog.Now).Run();
+        _made[place.Stream] = (_made.TryGetValue(place.Stream, out (long First, long Last) range) ? range.First : order, order);
         _places[experimentId] = place with { IsDecided = true };
         Decided++;
         DecidedSurvivors += survives ? 1 : 0;

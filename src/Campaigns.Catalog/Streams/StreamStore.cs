@@ -1,3 +1,4 @@
+using Campaigns.Catalog.Ledger;
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Providers;
 using Campaigns.Catalog.Results;
@@ -57,6 +58,12 @@ public sealed class StreamStore(Catalog catalog)
             }
 
             Dictionary<long, StreamEntry> entries = StreamEntries.Read(catalog, stored.Id);
+            catalog.Record(new LedgerAct(LedgerAction.Register, code)
+            {
+                Subject = experiments.Count == 1 ? experiments[0] : FormattableString.Invariant($"{experiments.Count} experiments"),
+                Changes = [.. experiments.Select(e => new LedgerChange($"{e}: level", null, FormattableString.Invariant($"{entries[ids[e]].Level:R}")))],
+                Evidence = keeper.Evidence,
+            });
             return (IReadOnlyList<Line>)[.. experiments.Select(e => new Line(e, entries[ids[e]]))];
         });
     }
@@ -74,15 +81,26 @@ public sealed class StreamStore(Catalog catalog)
         {
             StoredCampaign stored = Sealed(code);
             int left = new FamilyReader(catalog).FamilySize(stored.Id) - StreamEntries.Stored(catalog, stored.Id).Count;
-            Start(stored, procedure, OnlineVerdict.Settings(procedure, stored.Campaign.Level, options, left), reason);
-            return Read(stored.Id)[^1];
+            OnlineSettings settings = OnlineVerdict.Settings(procedure, stored.Campaign.Level, options, left);
+            long id = Start(stored, procedure, settings, reason);
+            StreamHead before = stored.Campaign.Streams[^1];
+            StreamHead stream = Read(stored.Id)[^1];
+            catalog.Record(new LedgerAct(LedgerAction.Restream, code)
+            {
+                Subject = FormattableString.Invariant($"stream {stream.Number}"),
+                Reason = reason,
+                Changes = [new LedgerChange("procedure", before.Procedure.Key, procedure.Key), new LedgerChange("horizon", FormattableString.Invariant($"{before.Settings.Horizon}"), FormattableString.Invariant($"{settings.Horizon}"))],
+                Evidence = [EvidenceRegistry.Stream.Of(id)],
+            });
+            return stream;
         });
     }
 
     /// <summary>Starts the first stream of a campaign that is being sealed; inside its transaction.</summary>
     /// <param name="stored">The campaign.</param>
     /// <param name="procedure">Its procedure.</param>
-    internal void StartFirst(StoredCampaign stored, OnlineProcedure procedure) =>
+    /// <returns>Key of the stream.</returns>
+    internal long StartFirst(StoredCampaign stored, OnlineProcedure procedure) =>
         Start(stored, procedure, OnlineVerdict.Settings(procedure, stored.Campaign.Level, stored.Campaign.Online, new FamilyReader(catalog).FamilySize(stored.Id)), null);
 
     /// <summary>The streams of a campaign, oldest first.</summary>
@@ -104,7 +122,7 @@ public sealed class StreamStore(Catalog catalog)
         return streams;
     }
 
-    private void Start(StoredCampaign stored, OnlineProcedure procedure, OnlineSettings settings, string? reason)
+    private long Start(StoredCampaign stored, OnlineProcedure procedure, OnlineSettings settings, string? reason)
     {
         using SqliteStatement next = catalog.Prepare("SELECT coalesce(max(id), 0) + 1, coalesce(max(number) FILTER (WHERE campaign_id = ?1), 0) + 1 FROM streams");
         next.Bind(1, stored.Id).Read();
@@ -113,6 +131,7 @@ public sealed class StreamStore(Catalog catalog)
         using SqliteStatement insert = catalog.Prepare($"INSERT INTO streams (id, campaign_id, {Columns}, program_version) VALUES (?1, ?2, ?3, ?4, ?5, ?6, ?7, ?8, ?9, ?10, ?11, ?12, ?13)");
         insert.Bind(1, id).Bind(2, stored.Id).Bind(3, number).Bind(4, procedure.Key).Bind(5, settings.Level.Value).Bind(6, (long?)settings.Horizon).Bind(7, settings.Shape)
             .Bind(8, settings.InitialWealth).Bind(9, settings.Lambda).Bind(10, settings.Tau).Bind(11, reason).Bind(12, catalog.Now).Bind(13, ProgramVersion.Current).Run();
+        return id;
     }
 
     private StoredCampaign Sealed(string code)

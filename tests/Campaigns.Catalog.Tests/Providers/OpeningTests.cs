@@ -44,7 +44,7 @@ public sealed class OpeningTests
     [Theory]
     [InlineData("PRAGMA application_id = 1", "is no catalog")]
     [InlineData("PRAGMA application_id = 0", "is no catalog")]
-    [InlineData("PRAGMA user_version = 4", "newer version")]
+    [InlineData("PRAGMA user_version = 5", "newer version")]
     [InlineData("PRAGMA user_version = 2147483647", "newer version")]
     [InlineData("PRAGMA user_version = 0", "older version")]
     [InlineData("PRAGMA journal_mode = WAL", "write-ahead log")]

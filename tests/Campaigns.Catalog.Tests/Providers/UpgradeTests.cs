@@ -21,7 +21,7 @@ public sealed class UpgradeTests
     {
         using TestFolder folder = Older(content);
         Assert.Throws<CatalogException>(() => Catalog.Open(folder[Name], TimeProvider.System));
-        Assert.True(CatalogUpgrade.Run(folder[Name], Migrations));
+        Assert.True(CatalogUpgrade.Run(folder[Name], Migrations, TimeProvider.System));
         Assert.Equal([Name], folder.Files);
         using (Catalog catalog = Catalog.Open(folder[Name], TimeProvider.System))
         {
@@ -32,7 +32,7 @@ public sealed class UpgradeTests
             Assert.Equal(content.Length > 0 ? ["kept"] : [], content.Length > 0 ? Raw.Rows(catalog.Connection, "SELECT text FROM notes") : []);
         }
 
-        Assert.False(CatalogUpgrade.Run(folder[Name], Migrations));
+        Assert.False(CatalogUpgrade.Run(folder[Name], Migrations, TimeProvider.System));
     }
 
     [Fact]
@@ -52,7 +52,7 @@ public sealed class UpgradeTests
             before = Facts(old);
         }
 
-        Assert.True(CatalogUpgrade.Run(folder[Name], Migrations));
+        Assert.True(CatalogUpgrade.Run(folder[Name], Migrations, TimeProvider.System));
         using Catalog catalog = Catalog.Open(folder[Name], TimeProvider.System);
         Assert.Equal(before, Facts(catalog.Connection));
         CampaignStanding standing = new StandingReader(catalog).Read("published-classics");
@@ -82,7 +82,7 @@ public sealed class UpgradeTests
             before = Facts(old);
         }
 
-        Assert.True(CatalogUpgrade.Run(folder[Name], Migrations));
+        Assert.True(CatalogUpgrade.Run(folder[Name], Migrations, TimeProvider.System));
         using Catalog catalog = Catalog.Open(folder[Name], TimeProvider.System);
         Assert.Equal(before, Facts(catalog.Connection));
         CampaignStanding standing = new StandingReader(catalog).Read("published-designs");
@@ -100,7 +100,7 @@ public sealed class UpgradeTests
         using var folder = new TestFolder();
         SqliteCatalogFile.Create(folder[Name]);
         byte[] before = File.ReadAllBytes(folder[Name]);
-        Assert.False(CatalogUpgrade.Run(folder[Name], Migrations));
+        Assert.False(CatalogUpgrade.Run(folder[Name], Migrations, TimeProvider.System));
         Assert.Equal(before, File.ReadAllBytes(folder[Name]));
         Assert.Equal([Name], folder.Files);
     }
@@ -111,11 +111,11 @@ public sealed class UpgradeTests
         // The migration cannot create a table that somebody else made.
         using TestFolder folder = Older("CREATE TABLE reviews (text TEXT);");
         byte[] before = File.ReadAllBytes(folder[Name]);
-        Assert.ThrowsAny<Exception>(() => CatalogUpgrade.Run(folder[Name], Migrations));
+        Assert.ThrowsAny<Exception>(() => CatalogUpgrade.Run(folder[Name], Migrations, TimeProvider.System));
         Assert.Equal(before, File.ReadAllBytes(folder[Name]));
         Assert.Equal([Name], folder.Files);
         Raw.Execute(folder[Name], "DROP TABLE reviews");
-        Assert.True(CatalogUpgrade.Run(folder[Name], Migrations));
+        Assert.True(CatalogUpgrade.Run(folder[Name], Migrations, TimeProvider.System));
     }
 
     [Fact]
@@ -124,12 +124,12 @@ public sealed class UpgradeTests
         using TestFolder folder = Older("");
         string copy = FormattableString.Invariant($"{folder[Name]}.upgrade-{Environment.ProcessId}");
         File.WriteAllText(copy, "half a catalog");
-        Assert.True(CatalogUpgrade.Run(folder[Name], Migrations));
+        Assert.True(CatalogUpgrade.Run(folder[Name], Migrations, TimeProvider.System));
         Assert.Equal([Name], folder.Files);
     }
 
     [Theory]
-    [InlineData("PRAGMA user_version = 4", "newer version")]
+    [InlineData("PRAGMA user_version = 5", "newer version")]
     [InlineData("PRAGMA application_id = 5", "is no catalog")]
     public void Files_that_cannot_be_upgraded_are_left_as_they_are(string change, string reason)
     {
@@ -137,7 +137,7 @@ public sealed class UpgradeTests
         SqliteCatalogFile.Create(folder[Name]);
         Raw.Execute(folder[Name], change);
         byte[] before = File.ReadAllBytes(folder[Name]);
-        Assert.Contains(reason, Assert.Throws<CatalogException>(() => CatalogUpgrade.Run(folder[Name], Migrations)).Message, StringComparison.Ordinal);
+        Assert.Contains(reason, Assert.Throws<CatalogException>(() => CatalogUpgrade.Run(folder[Name], Migrations, TimeProvider.System)).Message, StringComparison.Ordinal);
         Assert.Equal(before, File.ReadAllBytes(folder[Name]));
         Assert.Equal([Name], folder.Files);
     }
@@ -149,7 +149,7 @@ public sealed class UpgradeTests
         using SqliteConnection other = Raw.Open(folder[Name]);
         Raw.Execute(other, "BEGIN IMMEDIATE");
         byte[] before = File.ReadAllBytes(folder[Name]);
-        Assert.Contains("locked", Assert.Throws<CatalogException>(() => CatalogUpgrade.Run(folder[Name], Migrations)).Message, StringComparison.Ordinal);
+        Assert.Contains("locked", Assert.Throws<CatalogException>(() => CatalogUpgrade.Run(folder[Name], Migrations, TimeProvider.System)).Message, StringComparison.Ordinal);
         Assert.Equal(before, File.ReadAllBytes(folder[Name]));
         Raw.Execute(other, "ROLLBACK");
         Assert.Equal([Name], folder.Files);

@@ -72,7 +72,7 @@ public sealed class FamilyResultsTests
         catalog.Campaigns.Seal(TestCatalog.Code);
         Raw.Execute(catalog.Catalog.Connection,
             """
-            INSERT INTO test_runs VALUES (1, 1, NULL, 1, 0, 'v', NULL);
+            INSERT INTO test_runs VALUES (1, 1, NULL, 1, 0, 'v', NULL, NULL, NULL);
             INSERT INTO test_results (experiment_id, test_run_id, status, group_count, observation_count, statistic, p, log_p)
             SELECT id, 1, 'tested', 2, 10, 1.0, ((id * 7919) % 100003) / 100003.0 + 1e-9, NULL FROM experiments;
             """);

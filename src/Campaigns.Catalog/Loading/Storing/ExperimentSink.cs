@@ -48,7 +48,7 @@ internal sealed class ExperimentSink : IDisposable
         _sets = new GroupSets(catalog, campaign.Id);
         _placement = new GroupPlacement(_sets, labels);
         _experiments = new ExperimentWriter(catalog, campaign.Id);
-        _insert = catalog.Prepare("INSERT INTO measurements (experiment_id, load_id, value_count, missing_count, packed) VALUES (?1, ?2, ?3, ?4, ?5)");
+        _insert = catalog.Prepare("INSERT INTO measurements (experiment_id, load_id, value_count, missing_count, packed, group_set_id) VALUES (?1, ?2, ?3, ?4, ?5, ?6)");
     }
 
     /// <summary>The columns of the experiment at hand.</summary>
@@ -190,7 +190,8 @@ internal sealed class ExperimentSink : IDisposable
             experiment.Id = _experiments.Insert(
                 new PlannedExperiment { Code = experiment.Code, Test = _campaign.Campaign.DefaultTest, FollowUp = _campaign.Campaign.DefaultFollowUp },
                 placement.SetId,
-                groupsArePlanned: false);
+                groupsArePlanned: false,
+                _loadId);
             NewExperimentCount++;
         }
         else if (experiment.GroupSetId != placement.SetId)
@@ -206,7 +207,7 @@ internal sealed class ExperimentSink : IDisposable
         _packed.Clear();
         PackedMeasurements.Write(Values, _packed);
         _insert.Bind(1, experiment.Id).Bind(2, _loadId).Bind(3, (long)Values.Count).Bind(4, (long)Values.MissingCount)
-            .BindBlob(5, _packed.Written).Run();
+            .BindBlob(5, _packed.Written).Bind(6, placement.SetId).Run();
     }
 
     private void ComplainOfGroups(KnownExperiment experiment, GroupPlacement.Placement placement)

@@ -1,3 +1,4 @@
+using Campaigns.Catalog.Ledger;
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Providers;
 using Campaigns.Domain;
@@ -91,6 +92,7 @@ public sealed class MeasurementLoader(Catalog catalog)
     private sealed class OneFile(Catalog catalog, StoredCampaign campaign, string path, long size, Task<FileDigest> digesting, LoadOptions options, Action<WorkProgress> progress, CancellationToken cancel)
     {
         private readonly long _loadId = NextId(catalog);
+        private readonly long _setsBefore = GroupSets.LastId(catalog);
         private readonly NameComplaints _complaints = new();
 
         public LoadSummary Load()
@@ -169,12 +171,14 @@ public sealed class MeasurementLoader(Catalog catalog)
                 throw new RefusedException($"The file '{path}' changed while it was read; nothing of it was loaded. Load it again when it is finished.");
             }
 
-            if (!campaign.Campaign.IsExploratory && !campaign.Campaign.IsSealed)
+            bool becomesExploratory = !campaign.Campaign.IsExploratory && !campaign.Campaign.IsSealed;
+            if (becomesExploratory)
             {
                 new CampaignStore(catalog).MarkExploratory(campaign.Id);
             }
 
             InsertLoad(file, sink, digest);
+            Record(file, sink, digest, becomesExploratory);
             return new LoadSummary(
                 System.IO.Path.GetFileName(path), digest.Hex, file.RowCount, sink.MissingCount, sink.ExperimentCount,
                 sink.NewExperimentCount, sink.Amended, file.IgnoredColumns, file.RespelledNames);
@@ -191,6 +195,25 @@ public sealed class MeasurementLoader(Catalog catalog)
                 .Bind(6, file.RowCount).Bind(7, sink.MissingCount).Bind(8, (long)sink.ExperimentCount).Bind(9, catalog.Now)
                 .Bind(10, sink.Amended.Count > 0 ? options.AmendmentReason : null).Run();
         }
+
+        private void Record(MeasurementFile file, ExperimentSink sink, FileDigest digest, bool becameExploratory) => catalog.Record(new LedgerAct(LedgerAction.Load, campaign.Campaign.Code)
+        {
+            Subject = System.IO.Path.GetFileName(path),
+            Reason = sink.Amended.Count > 0 ? options.AmendmentReason : null,
+            Changes =
+            [
+                new LedgerChange("sha256", null, digest.Hex), new LedgerChange("rows", null, FormattableString.Invariant($"{file.RowCount}")),
+                new LedgerChange("experiments", null, FormattableString.Invariant($"{sink.ExperimentCount}")),
+                .. becameExploratory ? [new LedgerChange("exploratory", "no", "yes")] : Array.Empty<LedgerChange>(),
+                .. sink.Amended.Select(e => new LedgerChange($"{e}: result", "stands", "awaits a new test")),
+            ],
+            Evidence =
+            [
+                EvidenceRegistry.Load.Of(_loadId),
+                .. becameExploratory ? [EvidenceRegistry.Campaign.Of(campaign.Id)] : Array.Empty<EvidenceRequest>(),
+                .. GroupSets.Since(catalog, campaign.Id, _setsBefore),
+            ],
+        });
 
         private ExperimentSink NewSink(RowSource rows) => new(catalog, campaign, options, _loadId, size, rows.Labels, _complaints);
 
