@@ -5,6 +5,10 @@ internal static class TortureRegistry
 {
     public static IReadOnlyList<Func<TortureTest>> All { get; } =
     [
+        () => new Catalogs.TwoEditors(),
+        () => new Catalogs.TamperedCells(),
+        () => new Catalogs.BlindDamage(),
+        () => new Catalogs.ClockWalks(),
         () => new Incoming.NumberForms(),
     ];
 }

@@ -30,7 +30,7 @@ internal static class UnchangedSince
         if (since.Count > 0)
         {
             throw new RefusedException(
-                FormattableString.Invariant($"The campaign '{campaign}' was changed since the head that you gave (entry {seen.Sequence}); nothing was changed now. Look at what was done, and repeat the command with the new head, {LedgerWriter.Last(catalog).Head}, if you still want it. Done since:"),
+                FormattableString.Invariant($"The campaign '{campaign}' was changed since the head that you gave (entry {seen.Sequence}); nothing was changed now. Below stands what was done since; if you still want your change, repeat the command with --head {LedgerWriter.Last(catalog).Head}."),
                 since);
         }
     }

@@ -1,4 +1,5 @@
 using System.Globalization;
+using System.Text.RegularExpressions;
 
 namespace Campaigns.App.Tests.Commands;
 
@@ -27,11 +28,14 @@ public sealed class InDepthDeterminismTests : IDisposable
         _place.Run("run", _place.At("C"), "--catalog", _place.At("shuffled.db")).Well();
         foreach (string[] command in (string[][])[["results", "C"], ["comparisons", "C"], ["survivors", "C"], .. experiments.Select(e => (string[])["show", "C", e])])
         {
-            string straight = _place.Run([.. command, "--format", "csv"]).Well().Out;
-            Assert.Equal(straight, _place.Run([.. command, "--format", "csv", "--catalog", _place.At("shuffled.db")]).Well().Out);
+            string straight = WithoutHead(_place.Run([.. command, "--format", "csv"]).Well().Out);
+            Assert.Equal(straight, WithoutHead(_place.Run([.. command, "--format", "csv", "--catalog", _place.At("shuffled.db")]).Well().Out));
             Assert.NotEmpty(CsvText.Read(straight).Columns);
         }
     }
+
+    /// <summary>The ledger knows the bytes of the file that was loaded, so its head is another for shuffled rows.</summary>
+    private static string WithoutHead(string csv) => Regex.Replace(csv, "(?<=[0-9]:)[0-9a-f]{64}", "<hash>");
 
     [Fact]
     public void Twice_the_same_gives_the_same_bytes_in_every_format()

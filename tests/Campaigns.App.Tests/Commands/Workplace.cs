@@ -11,6 +11,9 @@ internal sealed class Workplace : IDisposable
 {
     public static readonly DateTimeOffset Now = new(2026, 3, 2, 9, 30, 0, TimeSpan.Zero);
 
+    /// <summary>The account that the ledger names, whoever runs the tests.</summary>
+    public const string Account = "lab";
+
     public Workplace() => Variables["CAMPAIGNS_CATALOG"] = Catalog;
 
     public string Folder { get; } = Directory.CreateTempSubdirectory("campaigns-test-").FullName;
@@ -41,6 +44,7 @@ internal sealed class Workplace : IDisposable
             Out = standardOutput,
             Error = standardError,
             Clock = Clock,
+            Account = Account,
             Variable = name => Variables.GetValueOrDefault(name),
             Width = Width,
             OutIsTerminal = IsTerminal,
