@@ -1,4 +1,5 @@
 using System.Buffers.Binary;
+using System.Runtime.InteropServices;
 using System.Security.Cryptography;
 using System.Text;
 
@@ -80,9 +81,13 @@ internal sealed class ChainHash : IDisposable
 
     public void Integer(long value)
     {
-        Span<byte> bytes = stackalloc byte[8];
-        BinaryPrimitives.WriteInt64LittleEndian(bytes, value);
-        Raw(bytes);
+        if (_buffer.Length - _length < sizeof(long))
+        {
+            Flush();
+        }
+
+        BinaryPrimitives.WriteInt64LittleEndian(_buffer.AsSpan(_length), value);
+        _length += sizeof(long);
     }
 
     /// <summary>A text: 0 for none, else 1, the length of its UTF-8 form and that form.</summary>
@@ -119,6 +124,24 @@ internal sealed class ChainHash : IDisposable
     {
         Integer(bytes.Length);
         Raw(bytes);
+    }
+
+    /// <summary>Bytes that stand outside of managed memory, after their count.</summary>
+    public void Bytes(nint start, int count)
+    {
+        Integer(count);
+        for (int done = 0; done < count;)
+        {
+            if (_length == _buffer.Length)
+            {
+                Flush();
+            }
+
+            int some = Math.Min(count - done, _buffer.Length - _length);
+            Marshal.Copy(start + done, _buffer, _length, some);
+            _length += some;
+            done += some;
+        }
     }
 
     /// <summary>The digest in lower-case hexadecimal.</summary>

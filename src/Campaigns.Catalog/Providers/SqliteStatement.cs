@@ -152,25 +152,29 @@ internal sealed class SqliteStatement : IDisposable
     public void AddRowTo(ChainHash hash)
     {
         int count = sqlite3_column_count(_statement);
+        nint statement = _statement.DangerousGetHandle();
         for (int i = 0; i < count; i++)
         {
-            int type = sqlite3_column_type(_statement, i);
+            int type = NativeCells.Type(statement, i);
             hash.Byte((byte)type);
             switch (type)
             {
                 case SQLITE_INTEGER:
-                    hash.Integer(sqlite3_column_int64(_statement, i));
+                    hash.Integer(NativeCells.Integer(statement, i));
                     break;
                 case SQLITE_FLOAT:
-                    hash.Integer(BitConverter.DoubleToInt64Bits(sqlite3_column_double(_statement, i)));
+                    hash.Integer(BitConverter.DoubleToInt64Bits(NativeCells.Real(statement, i)));
                     break;
                 case SQLITE_TEXT or SQLITE_BLOB:
-                    hash.Bytes(sqlite3_column_blob(_statement, i));
+                    nint bytes = NativeCells.Bytes(statement, i);
+                    hash.Bytes(bytes, NativeCells.ByteCount(statement, i));
                     break;
                 default:
                     break;
             }
         }
+
+        GC.KeepAlive(_statement);
     }
 
     /// <summary>The bytes of a cell; valid until the next call on this statement.</summary>
