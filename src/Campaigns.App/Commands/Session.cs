@@ -12,6 +12,8 @@ namespace Campaigns.App.Commands;
 /// <summary>One command at work: what was typed, and the world around it.</summary>
 internal sealed class Session(Host host, ParseResult typed)
 {
+    private const int LongestName = 200;
+
     private List<string>? _held;
 
     public Host Host { get; } = host;
@@ -33,7 +35,13 @@ internal sealed class Session(Host host, ParseResult typed)
         [.. CorrectionRegistry.All.Select(c => c.Key), .. StreamOptions.Keys]);
 
     /// <summary>Who acts: the account, and the name given with --as.</summary>
-    public Actor Actor => Actor.OfProcess with { ActingAs = Typed.GetValue(SharedOptions.ActingAs)?.Trim() };
+    public Actor Actor => Actor.OfProcess with { ActingAs = Named(Typed.GetValue(SharedOptions.ActingAs)?.Trim()) };
+
+    private static string? Named(string? name)
+    {
+        CampaignRules.CheckLength("--as", name ?? "", LongestName);
+        return name;
+    }
 
     public Catalog.Catalog OpenCatalog() => Catalog.Catalog.Open(CatalogPath, Host.Clock, Actor);
 
