@@ -16,7 +16,7 @@ internal static class Complaint
     public static string? Of(ParseResult typed, RootCommand root)
     {
         Command command = typed.CommandResult.Command;
-        string help = command == root ? "'campaigns --help' lists the commands" : $"'campaigns {command.Name} --help' explains it";
+        string help = command == root ? "'campaigns --help' lists the commands" : $"'campaigns {NameOf(command, root)} --help' explains it";
         if (typed.Tokens.Select(t => Unwritable(t.Value)).FirstOrDefault(c => c is not null) is { } unwritable)
         {
             return unwritable;
@@ -75,8 +75,12 @@ internal static class Complaint
 
         return command == root
             ? $"There is no command '{word}'{Meant(Nearest.Of(word, root.Subcommands.Select(c => c.Name)))}; {help}."
-            : $"'{word}' is too much for 'campaigns {command.Name}'; {help}.";
+            : $"'{word}' is too much for 'campaigns {NameOf(command, root)}'; {help}.";
     }
+
+    /// <summary>The words that call a command: its own, after that of the command it stands under.</summary>
+    private static string NameOf(Command command, RootCommand root) =>
+        command.Parents.OfType<Command>().FirstOrDefault() is { } parent && parent != root ? $"{NameOf(parent, root)} {command.Name}" : command.Name;
 
     private static string Meant(string? nearest) => nearest is null ? "" : $" (did you mean '{nearest}'?)";
 

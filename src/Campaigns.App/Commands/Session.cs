@@ -35,7 +35,7 @@ internal sealed class Session(Host host, ParseResult typed)
         [.. CorrectionRegistry.All.Select(c => c.Key), .. StreamOptions.Keys]);
 
     /// <summary>Who acts: the account, and the name given with --as.</summary>
-    public Actor Actor => Actor.OfProcess with { ActingAs = Named(Typed.GetValue(SharedOptions.ActingAs)?.Trim()) };
+    public Actor Actor => new(Host.Account, Named(Typed.GetValue(SharedOptions.ActingAs)?.Trim()));
 
     private static string? Named(string? name)
     {
@@ -43,9 +43,12 @@ internal sealed class Session(Host host, ParseResult typed)
         return name;
     }
 
-    public Catalog.Catalog OpenCatalog() => Catalog.Catalog.Open(CatalogPath, Host.Clock, Actor);
+    /// <summary>The head of the ledger that whoever typed the command has seen; null where none was given, or the command changes nothing.</summary>
+    private LedgerHead? Seen => Typed.GetValue(SharedOptions.Seen);
 
-    public Catalog.Catalog OpenOrCreateCatalog() => Catalog.Catalog.OpenOrCreate(CatalogPath, Host.Clock, Actor);
+    public Catalog.Catalog OpenCatalog() => Catalog.Catalog.Open(CatalogPath, Host.Clock, Actor, Seen);
+
+    public Catalog.Catalog OpenOrCreateCatalog() => Catalog.Catalog.OpenOrCreate(CatalogPath, Host.Clock, Actor, Seen);
 
     public T Get<T>(Option<T> option) => Typed.GetValue(option)!;
 
