@@ -21,6 +21,8 @@ internal static class CommandLine
         () => new DecisionsVerb(),
         () => new RestreamVerb(),
         () => new ReviewVerb(),
+        () => new ReviewsVerb(),
+        () => new HistoryVerb(),
         () => new ResultsVerb(),
         () => new SurvivorsVerb(),
         () => new ComparisonsVerb(),
