@@ -9,7 +9,7 @@ internal static class ProofText
     public static IEnumerable<string> Whole(LedgerProof proof)
     {
         ArgumentNullException.ThrowIfNull(proof);
-        yield return FormattableString.Invariant($"The record is whole: {proof.Entries} entries, head {proof.Head}.");
+        yield return FormattableString.Invariant($"The record is whole: {proof.Entries} {(proof.Entries == 1 ? "entry" : "entries")}, head {proof.Head}.");
         yield return FormattableString.Invariant($"Proved: every entry follows from the one before it, from 1 to {proof.Head.Sequence} without a gap; {proof.Digests} digests of what the entries recorded (plans, loaded files, measurements, results, reviews, decisions) recompute from the tables; no row stands in the tables without an entry; the sealed plans are those that were sealed; the file, its keys and its triggers are sound.");
         if (proof.ClockSteps > 0)
         {

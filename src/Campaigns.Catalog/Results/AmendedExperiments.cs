@@ -24,7 +24,7 @@ internal sealed class AmendedExperiments
             amended.AwaitsTest |= Exclusions.AwaitsTest(id);
         }
 
-        Withdrawals = new StandingWithdrawals(catalog, campaignId);
+        Withdrawals = new StandingWithdrawals(catalog, campaignId, asOf);
         foreach (long id in Withdrawals.Ids)
         {
             Amended amended = Of(id);

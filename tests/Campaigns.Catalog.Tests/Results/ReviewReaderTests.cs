@@ -1,5 +1,4 @@
 using Campaigns.Catalog.Excluding;
-using Campaigns.Catalog.Providers;
 using Campaigns.Catalog.Results;
 using Campaigns.Catalog.Reviewing;
 using Campaigns.Domain;

@@ -7,7 +7,7 @@ namespace Campaigns.Catalog.Ledger.Verifying;
 /// <remarks>Cells are taken as the bytes and types that stand in the file and never decoded, so that a text that only looks the same, or an instant beyond all calendars, is seen and stops nothing.</remarks>
 /// <param name="catalog">The open catalog, in a snapshot.</param>
 /// <param name="findings">Takes what is wrong.</param>
-internal sealed class ChainProof(Catalog catalog, Findings findings)
+internal sealed class ChainProof(Catalog catalog, Findings findings) : IDisposable
 {
     private static readonly string[] Cells = ["instant", "account", "name acted as", "program version", "action", "campaign", "subject", "reason"];
 
@@ -27,7 +27,6 @@ internal sealed class ChainProof(Catalog catalog, Findings findings)
     /// <param name="known">A head that must be part of it; null for none.</param>
     public void Run(LedgerHead? known)
     {
-        using ChainHash hash = _hash;
         using SqliteStatement entries = catalog.Prepare(
             """
             SELECT sequence, at, account, acting_as, program_version, action, campaign, subject, reason, hash,
@@ -77,6 +76,9 @@ internal sealed class ChainProof(Catalog catalog, Findings findings)
         LookForOrphans("ledger_changes", "SELECT DISTINCT sequence FROM ledger_changes c WHERE NOT EXISTS (SELECT 1 FROM ledger l WHERE l.sequence = c.sequence)");
         LookForOrphans("ledger_evidence", "SELECT DISTINCT sequence FROM ledger_evidence e WHERE NOT EXISTS (SELECT 1 FROM ledger l WHERE l.sequence = e.sequence)");
     }
+
+    /// <inheritdoc/>
+    public void Dispose() => _hash.Dispose();
 
     private void LookAtSequence(long expected, long sequence)
     {

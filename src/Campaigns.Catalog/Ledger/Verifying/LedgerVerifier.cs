@@ -17,7 +17,7 @@ public sealed class LedgerVerifier(Catalog catalog)
     {
         BeginReading();
         var findings = new Findings();
-        var chain = new ChainProof(catalog, findings);
+        using var chain = new ChainProof(catalog, findings);
         var evidence = new EvidenceProof(catalog, findings);
         findings.Look("The file", () => new FileProof(catalog, findings).Run());
         findings.Look("The ledger", () => chain.Run(known));
