@@ -122,12 +122,15 @@ public sealed class MeasurementFile : IDisposable
 
     private ReadOnlySpan<byte> RequiredName(int column, scoped ref bool isSound)
     {
-        ReadOnlySpan<byte> name = CleanName(column, ref isSound);
-        if (name.IsEmpty && AsciiText.Trim(_file.Field(column)).IsEmpty)
+        bool isClean = true;
+        ReadOnlySpan<byte> name = CleanName(column, ref isClean);
+        if (name.IsEmpty && isClean)
         {
             _file.Report(column, "empty-name", "the field is empty: every value belongs to an experiment and a group.");
-            isSound = false;
+            isClean = false;
         }
+
+        isSound &= isClean;
 
         return name;
     }
