@@ -9,6 +9,11 @@ internal static class TortureRegistry
         () => new Catalogs.TamperedCells(),
         () => new Catalogs.BlindDamage(),
         () => new Catalogs.ClockWalks(),
+        () => new Catalogs.HostileNames(),
+        () => new Incoming.DamagedFiles(),
+        () => new Incoming.FileForms(),
+        () => new Incoming.Bombs(),
         () => new Incoming.NumberForms(),
+        () => new Outgoing.TerminalEscapes(),
     ];
 }

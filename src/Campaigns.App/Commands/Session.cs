@@ -12,6 +12,8 @@ namespace Campaigns.App.Commands;
 /// <summary>One command at work: what was typed, and the world around it.</summary>
 internal sealed class Session(Host host, ParseResult typed)
 {
+    private const int LongestName = 200;
+
     private List<string>? _held;
 
     public Host Host { get; } = host;
@@ -33,7 +35,13 @@ internal sealed class Session(Host host, ParseResult typed)
         [.. CorrectionRegistry.All.Select(c => c.Key), .. StreamOptions.Keys]);
 
     /// <summary>Who acts: the account, and the name given with --as.</summary>
-    public Actor Actor => new(Host.Account, Typed.GetValue(SharedOptions.ActingAs)?.Trim());
+    public Actor Actor => new(Host.Account, Named(Typed.GetValue(SharedOptions.ActingAs)?.Trim()));
+
+    private static string? Named(string? name)
+    {
+        CampaignRules.CheckLength("--as", name ?? "", LongestName);
+        return name;
+    }
 
     /// <summary>The head of the ledger that whoever typed the command has seen; null where none was given, or the command changes nothing.</summary>
     private LedgerHead? Seen => Typed.GetValue(SharedOptions.Seen);

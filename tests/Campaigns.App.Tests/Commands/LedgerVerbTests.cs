@@ -20,7 +20,7 @@ public sealed partial class LedgerVerbTests : IDisposable
         string text = _place.Run("ledger").Well().Out;
         Golden.Match("ledger", Versionless(text));
         string[] actions = [.. _place.Run("ledger", "--format", "csv").Well().Csv.Column("action").Distinct()];
-        Assert.Equal(["upgrade", "start", "families", "plan", "seal", "load", "test", "review", "exclude", "register", "restream", "include"], actions);
+        Assert.Equal(["upgrade", "start", "families", "plan", "seal", "load", "test", "review", "exclude", "register", "restream", "include", "withdraw", "restore"], actions);
         Assert.Contains("the computer's clock had gone back", text, StringComparison.Ordinal);
         Assert.DoesNotContain("no words for", text, StringComparison.Ordinal);
     }
@@ -49,9 +49,10 @@ public sealed partial class LedgerVerbTests : IDisposable
         Assert.Equal(["plan", "seal", "load", "test", "exclude", "include", "test"], Actions("ledger", "A", "--experiment", "E1"));
         Assert.Equal(["plan", "seal", "load", "test"], Actions("ledger", "A", "--experiment", "E2"));
         Assert.Equal(["plan", "seal", "register", "load", "test"], Actions("ledger", "B", "--experiment", "E01"));
-        Assert.Equal(["exclude"], Actions("ledger", "--by", "A. Moss"));
+        Assert.Equal(["plan", "seal", "withdraw", "restore"], Actions("ledger", "B", "--experiment", "E04"));
+        Assert.Equal(["exclude", "withdraw"], Actions("ledger", "--by", "A. Moss"));
         Assert.Equal(["include"], Actions("ledger", "--by", "B. Reed"));
-        Assert.Equal(["seal", "register", "load", "test", "restream"], Actions("ledger", "B", "--from", "12"));
+        Assert.Equal(["seal", "register", "load", "test", "restream", "withdraw", "restore"], Actions("ledger", "B", "--from", "12"));
         Assert.Equal(["include", "test"], Actions("ledger", "A", "--since", "2026-03-03"));
         Assert.Equal(["upgrade"], Actions("ledger", "--until", "2026-03-01"));
         Assert.Empty(Actions("ledger", "--since", "2030-01-01"));
@@ -68,7 +69,7 @@ public sealed partial class LedgerVerbTests : IDisposable
     {
         Live();
         string text = OneLine(_place.Run("ledger", "verify").Well().Out);
-        Assert.Contains($"The record is whole: 18 entries, head {Head}.", text, StringComparison.Ordinal);
+        Assert.Contains($"The record is whole: 20 entries, head {Head}.", text, StringComparison.Ordinal);
         Assert.Contains("Without a head from outside it cannot be seen whether the end of the record was cut off, or the whole file was replaced by an older copy", text, StringComparison.Ordinal);
         string with = OneLine(_place.Run("ledger", "verify", "--head", Head).Well().Out);
         Assert.Contains($"The chain holds the head {Head}, and has 0 entries after it", with, StringComparison.Ordinal);
@@ -96,8 +97,8 @@ public sealed partial class LedgerVerbTests : IDisposable
         Ran csv = _place.Run("ledger", "verify", "--format", "csv");
         Assert.Equal(5, csv.Code);
         Assert.Equal(["9", ""], csv.Csv.Column("sequence"));
-        _place.Run("ledger", "verify", "--head", $"18:{new string('a', 64)}").Refused(5, "Entry 18", "not the one of the head given");
-        _place.Run("ledger", "verify", "--head", $"19:{head[^64..]}").Refused(5, "The record was cut, or this is an older copy");
+        _place.Run("ledger", "verify", "--head", $"20:{new string('a', 64)}").Refused(5, "Entry 20", "not the one of the head given");
+        _place.Run("ledger", "verify", "--head", $"21:{head[^64..]}").Refused(5, "The record was cut, or this is an older copy");
         _place.Run("ledger", "verify", "--head", "20").Refused(2, "SEQUENCE:HASH");
         _place.Run("ledger", "verify", "--hed", "20").Refused(2, "'campaigns ledger verify --help' explains it");
     }
@@ -185,5 +186,7 @@ public sealed partial class LedgerVerbTests : IDisposable
         _place.Clock.AdjustTime(Workplace.Now.AddDays(2));
         _place.Run("exclude", "A", "E1", "--line", "2", "--take-back", "--reason", "it was another", "--as", "B. Reed").Well();
         _place.Run("test", "A").Well();
+        _place.Run("withdraw", "B", "E04", "--reason", "resin no longer made", "--as", "A. Moss").Well();
+        _place.Run("withdraw", "B", "E04", "--take-back", "--reason", "found a drum").Well();
     }
 }
