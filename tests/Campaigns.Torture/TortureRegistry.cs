@@ -6,5 +6,6 @@ internal static class TortureRegistry
     public static IReadOnlyList<Func<TortureTest>> All { get; } =
     [
         () => new Incoming.NumberForms(),
+        () => new Outgoing.FamilyBookkeeping(),
     ];
 }
