@@ -90,7 +90,7 @@ internal sealed class ShowVerb : Verb
             return;
         }
 
-        foreach ((_, string label, Cell value) in facts.Where(f => f.Value.Kind != CellKind.Empty && f.Label.Length > 0 && (f.Name != "families" || campaign.JudgedFamilies.Count > 0)))
+        foreach ((_, string label, Cell value) in facts.Where(f => f.Value.Kind != CellKind.Empty && f.Label.Length > 0 && !IsIdle(f.Name, standing)))
         {
             WriteFact(session.Host, label, TextTable.Text(value));
         }
@@ -127,6 +127,15 @@ internal sealed class ShowVerb : Verb
             Below = [.. CampaignText.Footnotes(standing.Overview, standing.Experiments.Select(e => e.Plan.Test)), CampaignText.Caution],
         });
     }
+
+    /// <summary>Facts that say something only about a few campaigns.</summary>
+    private static bool IsIdle(string fact, CampaignStanding standing) => fact switch
+    {
+        "families" => standing.Campaign.JudgedFamilies.Count == 0,
+        "plan_amendments" => standing.AmendedPlan.Amendments == 0,
+        "withdrawn" => standing.Withdrawn.All == 0,
+        _ => false,
+    };
 
     /// <summary>A label, and beside it the value, wrapped: a purpose may be long, and nothing of it is cut.</summary>
     private static void WriteFact(Host host, string label, string value)
