@@ -5,7 +5,12 @@ internal static class TortureRegistry
 {
     public static IReadOnlyList<Func<TortureTest>> All { get; } =
     [
+        () => new Catalogs.HostileNames(),
+        () => new Incoming.DamagedFiles(),
+        () => new Incoming.FileForms(),
+        () => new Incoming.Bombs(),
         () => new Incoming.NumberForms(),
         () => new Outgoing.FamilyBookkeeping(),
+        () => new Outgoing.TerminalEscapes(),
     ];
 }

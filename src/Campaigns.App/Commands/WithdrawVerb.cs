@@ -17,7 +17,7 @@ internal sealed class WithdrawVerb : Verb
     public override Command Build() => new("withdraw", Describe("Take experiments out of a campaign, with a reason and a name. One that has no data leaves the family; one whose data came stays in it and counts with p = 1. Nothing is deleted, and every output says so.",
         "withdraw PRIMERS E07 E08 --reason \"resin no longer made\" --as \"A. Moss\""))
     {
-        _code, _experiments, _reason, _takeBack,
+        _code, _experiments, _reason, _takeBack, SharedOptions.Seen,
     };
 
     public override int Run(Session session)

@@ -1,5 +1,6 @@
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Providers;
+using Campaigns.Catalog.Results;
 using Campaigns.Domain;
 
 namespace Campaigns.Catalog.Amending;
@@ -13,7 +14,10 @@ internal sealed class PlanAmendments
     private readonly Dictionary<long, DateTimeOffset> _addedAt = [];
     private readonly HashSet<long> _changed = [];
 
-    public PlanAmendments(Catalog catalog, long campaignId)
+    /// <param name="catalog">The open catalog.</param>
+    /// <param name="campaignId">The campaign.</param>
+    /// <param name="asOf">The position of the record up to which amendments count; null for all of them.</param>
+    public PlanAmendments(Catalog catalog, long campaignId, RecordPosition? asOf = null)
     {
         using SqliteStatement any = catalog.Prepare("SELECT EXISTS (SELECT 1 FROM plan_amendments WHERE campaign_id = ?1)");
         any.Bind(1, campaignId).Read();
@@ -28,9 +32,9 @@ internal sealed class PlanAmendments
             """
             SELECT a.number, a.reason, a.named_by, a.made_at, c.experiment_id, e.code, c.field, c.before, c.after
             FROM plan_amendments a JOIN plan_amendment_changes c ON c.amendment_id = a.id JOIN experiments e ON e.id = c.experiment_id
-            WHERE a.campaign_id = ?1 ORDER BY a.number, c.experiment_id, c.field
+            WHERE a.campaign_id = ?1 AND a.id <= ?2 ORDER BY a.number, c.experiment_id, c.field
             """);
-        select.Bind(1, campaignId);
+        select.Bind(1, campaignId).Bind(2, asOf is null ? long.MaxValue : asOf.LastAmendmentId ?? 0);
         List<PlanAmendmentChange> changes = [];
         while (select.Read())
         {

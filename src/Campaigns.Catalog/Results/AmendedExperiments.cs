@@ -11,10 +11,13 @@ internal sealed class AmendedExperiments
 {
     private readonly Dictionary<long, Amended> _experiments = [];
 
-    public AmendedExperiments(Catalog catalog, long campaignId)
+    /// <param name="catalog">The open catalog.</param>
+    /// <param name="campaignId">The campaign.</param>
+    /// <param name="asOf">The position of the record up to which all this counts; null for all of it.</param>
+    public AmendedExperiments(Catalog catalog, long campaignId, RecordPosition? asOf = null)
     {
-        Exclusions = new StandingExclusions(catalog, campaignId);
-        AddLoads(catalog, campaignId);
+        Exclusions = new StandingExclusions(catalog, campaignId, asOf);
+        AddLoads(catalog, campaignId, asOf);
         foreach (long id in Exclusions.Ids)
         {
             Amended amended = Of(id);
@@ -22,8 +25,8 @@ internal sealed class AmendedExperiments
             amended.AwaitsTest |= Exclusions.AwaitsTest(id);
         }
 
-        Plan = new PlanAmendments(catalog, campaignId);
-        Withdrawals = new StandingWithdrawals(catalog, campaignId);
+        Plan = new PlanAmendments(catalog, campaignId, asOf);
+        Withdrawals = new StandingWithdrawals(catalog, campaignId, asOf);
         foreach (long id in Withdrawals.Ids)
         {
             Amended amended = Of(id);
@@ -44,7 +47,7 @@ internal sealed class AmendedExperiments
     /// <summary>Experiments that a new test would give a result again: those that are withdrawn stay without one.</summary>
     public int AwaitingTest => _experiments.Keys.Count(id => AwaitsTest(id) && !Withdrawals.IsWithdrawn(id));
 
-    private void AddLoads(Catalog catalog, long campaignId)
+    private void AddLoads(Catalog catalog, long campaignId, RecordPosition? asOf)
     {
         using SqliteStatement loads = catalog.Prepare("SELECT count(*) FROM loads WHERE campaign_id = ?1 AND amendment_reason IS NOT NULL");
         loads.Bind(1, campaignId).Read();
@@ -58,12 +61,12 @@ internal sealed class AmendedExperiments
         using SqliteStatement select = catalog.Prepare(
             """
             SELECT m.experiment_id, l.id, l.amendment_reason,
-                (SELECT min(coalesce(t.last_load_id, 0)) FROM test_results r JOIN test_runs t ON t.id = r.test_run_id WHERE r.experiment_id = m.experiment_id),
-                (SELECT max(coalesce(t.last_load_id, 0)) FROM test_results r JOIN test_runs t ON t.id = r.test_run_id WHERE r.experiment_id = m.experiment_id)
+                (SELECT min(coalesce(t.last_load_id, 0)) FROM test_results r JOIN test_runs t ON t.id = r.test_run_id WHERE r.experiment_id = m.experiment_id AND t.id <= ?3),
+                (SELECT max(coalesce(t.last_load_id, 0)) FROM test_results r JOIN test_runs t ON t.id = r.test_run_id WHERE r.experiment_id = m.experiment_id AND t.id <= ?3)
             FROM loads l JOIN measurements m ON m.load_id = l.id
-            WHERE l.campaign_id = ?1 AND l.amendment_reason IS NOT NULL ORDER BY m.experiment_id, l.id
+            WHERE l.campaign_id = ?1 AND l.amendment_reason IS NOT NULL AND l.id <= ?2 ORDER BY m.experiment_id, l.id
             """);
-        select.Bind(1, campaignId);
+        select.Bind(1, campaignId).Bind(2, asOf is null ? long.MaxValue : asOf.LastLoadId ?? 0).Bind(3, asOf?.LastTestRunId ?? long.MaxValue);
         while (select.Read())
         {
             long load = select.Integer(1);
