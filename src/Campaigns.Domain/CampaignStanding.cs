@@ -32,6 +32,7 @@ public sealed record CampaignStanding(
     {
         AwaitingNewTest = AwaitingNewTest,
         Withdrawn = Withdrawn,
+        AmendedPlan = AmendedPlan,
         DecisionsSinceReview = DecisionsSinceReview,
         Families = Families,
     };
@@ -49,6 +50,9 @@ public sealed record CampaignStanding(
 
     /// <summary>Experiments that are withdrawn.</summary>
     public WithdrawnCounts Withdrawn { get; init; }
+
+    /// <summary>How far the sealed plan was amended.</summary>
+    public AmendedPlan AmendedPlan { get; init; }
 
     /// <summary>Decisions to withdraw experiments or take them in again, and amendments of the plan, that came after the latest review.</summary>
     public int DecisionsSinceReview { get; init; }

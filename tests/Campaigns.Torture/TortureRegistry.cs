@@ -14,6 +14,7 @@ internal static class TortureRegistry
         () => new Incoming.FileForms(),
         () => new Incoming.Bombs(),
         () => new Incoming.NumberForms(),
+        () => new Outgoing.FamilyBookkeeping(),
         () => new Outgoing.TerminalEscapes(),
     ];
 }

@@ -65,9 +65,14 @@ internal static class CampaignText
             yield return line;
         }
 
+        if (standing.AmendedPlan is { Amendments: > 0 } plan)
+        {
+            yield return FormattableString.Invariant($"The sealed plan was amended {plan.Amendments} time(s): {plan.Added} experiment(s) added, {plan.Changed} changed; 'campaigns show {standing.Campaign.Code}' tells what, who, when and why.");
+        }
+
         if (standing.AmendedCount > 0)
         {
-            yield return FormattableString.Invariant($"Deviations: {standing.AmendedCount} experiment(s) received values after they had been tested, had values left out, were withdrawn at some time, or were tested short of their plan; 'campaigns show {standing.Campaign.Code} EXPERIMENT' gives the reason.");
+            yield return FormattableString.Invariant($"Deviations: {standing.AmendedCount} experiment(s) received values after they had been tested, had values left out, were withdrawn at some time, were added or changed by an amendment of the sealed plan, or were tested short of their plan; 'campaigns show {standing.Campaign.Code} EXPERIMENT' gives the reason.");
         }
     }
 

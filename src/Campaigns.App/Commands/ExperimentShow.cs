@@ -87,7 +87,7 @@ internal static class ExperimentShow
         ExperimentResult result = detail.Result;
         if (result.P is not { } p)
         {
-            yield return result.LeftFamily ? WithdrawalText.NotCounted : ExperimentWording.NoResult;
+            yield return ExperimentWording.WithoutResult(result);
         }
         else
         {

@@ -16,7 +16,10 @@ internal static class ExperimentWording
     public const string Beside = "Welch's F does not assume equal spreads; it is shown, not chosen: the plan names the test. Ranks do not cure unequal spreads.";
 
     /// <summary>What an experiment without a result counts as.</summary>
-    public const string NoResult = "No result: the experiment counts as p = 1 in its family.";
+    private const string NoResult = "No result: the experiment counts as p = 1 in its family.";
+
+    /// <summary>What an experiment without a result counts as, or that it does not count.</summary>
+    public static string WithoutResult(ExperimentResult result) => result.LeftFamily ? WithdrawalText.NotCounted : NoResult;
 
     /// <summary>What checks are for.</summary>
     public const string ChecksAreAdvice = "advice; none changes the test";

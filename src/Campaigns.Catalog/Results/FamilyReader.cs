@@ -76,14 +76,14 @@ internal sealed class FamilyReader(Catalog catalog)
         return members with
         {
             Entries = [.. columns.ExperimentIds.ToArray().Select(id => entries.GetValueOrDefault(id))],
-            StandingSurvivors = StandingSurvivors(stored.Id, entries).Count(),
+            StandingSurvivors = StandingSurvivors(stored.Id, entries, asOf).Count(),
         };
     }
 
     /// <summary>Experiments that survive by their standing decisions and are not withdrawn.</summary>
-    public IEnumerable<KeyValuePair<long, StreamEntry>> StandingSurvivors(long campaignId, Dictionary<long, StreamEntry> entries)
+    public IEnumerable<KeyValuePair<long, StreamEntry>> StandingSurvivors(long campaignId, Dictionary<long, StreamEntry> entries, RecordPosition? asOf = null)
     {
-        var withdrawals = new StandingWithdrawals(catalog, campaignId);
+        var withdrawals = new StandingWithdrawals(catalog, campaignId, asOf);
         return entries.Where(e => e.Value.Survives == true && !withdrawals.IsWithdrawn(e.Key));
     }
 

@@ -67,6 +67,7 @@ public sealed class OverviewReader(Catalog catalog)
             {
                 AwaitingNewTest = amended.AwaitingTest,
                 Withdrawn = amended.Withdrawals.Counts,
+                AmendedPlan = amended.Plan.Counts,
                 DecisionsSinceReview = new ReviewStore(catalog).DecisionsSince(stored.Id, amended.Withdrawals),
                 Families = verdict.Families,
             },
@@ -74,7 +75,7 @@ public sealed class OverviewReader(Catalog catalog)
             verdict);
     }
 
-    /// <summary>Experiments that received values after their test, of which values were left out, that were withdrawn, or whose test was run short of the planned values.</summary>
+    /// <summary>Experiments that received values after their test, of which values were left out, that were withdrawn, whose plan was amended, or whose test was run short of the planned values.</summary>
     private int Deviating(long campaignId, AmendedExperiments amended)
     {
         var ids = new HashSet<long>(amended.Ids);

@@ -37,6 +37,7 @@ public sealed class StandingReader(Catalog catalog)
         {
             AwaitingNewTest = amended.AwaitingTest,
             Withdrawn = amended.Withdrawals.Counts,
+            AmendedPlan = amended.Plan.Counts,
             DecisionsSinceReview = new ReviewStore(catalog).DecisionsSince(stored.Id, amended.Withdrawals),
             Families = verdict.Families,
         };
@@ -87,8 +88,8 @@ public sealed class StandingReader(Catalog catalog)
     private Dictionary<long, DataAtHand> UntestedData(long campaignId)
     {
         using SqliteStatement select = catalog.Prepare(
-            """
-            SELECT e.id, e.group_set_id, e.groups_are_planned, e.replicates, m.packed
+            $"""
+            SELECT e.id, e.group_set_id, e.groups_are_planned, CASE WHEN {TestRunner.TestedBefore} THEN NULL ELSE e.replicates END, m.packed
             FROM experiments e JOIN measurements m ON m.experiment_id = e.id
             WHERE e.campaign_id = ?1 AND NOT EXISTS (
                 SELECT 1 FROM test_results r JOIN test_runs t ON t.id = r.test_run_id

@@ -31,7 +31,7 @@ public sealed class TestRunner(Catalog catalog)
         "e.id, e.code, e.group_set_id, e.groups_are_planned, e.replicates, e.test, m.packed, m.load_id";
 
     /// <summary>Whether the experiment was tested before, and values of it were left out or it was withdrawn since: it was complete, or taken incomplete on purpose, and neither makes it less so.</summary>
-    private const string TestedBefore =
+    internal const string TestedBefore =
         """
         (EXISTS (SELECT 1 FROM exclusions x WHERE x.experiment_id = e.id) OR EXISTS (SELECT 1 FROM withdrawals w WHERE w.experiment_id = e.id))
             AND EXISTS (SELECT 1 FROM test_results r WHERE r.experiment_id = e.id)

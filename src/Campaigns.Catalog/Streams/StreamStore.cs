@@ -18,7 +18,11 @@ public sealed class StreamStore(Catalog catalog)
     /// <summary>An experiment's code with its place in a stream.</summary>
     /// <param name="Experiment">The code.</param>
     /// <param name="Entry">Its place.</param>
-    public sealed record Line(string Experiment, StreamEntry Entry);
+    public sealed record Line(string Experiment, StreamEntry Entry)
+    {
+        /// <summary>Whether the experiment is withdrawn: its decision stands in the stream, but it is no survivor.</summary>
+        public bool IsWithdrawn { get; init; }
+    }
 
     /// <summary>The experiments that were given a level, stream by stream in the order of starting.</summary>
     /// <param name="code">The campaign.</param>
@@ -27,7 +31,8 @@ public sealed class StreamStore(Catalog catalog)
     {
         StoredCampaign stored = Online(code);
         Dictionary<long, string> codes = new PlanStore(catalog).Codes(stored.Id);
-        return (IReadOnlyList<Line>)[.. StreamEntries.Lines(catalog, stored.Id).Select(l => new Line(codes[l.ExperimentId], l.Entry))];
+        var withdrawals = new StandingWithdrawals(catalog, stored.Id);
+        return (IReadOnlyList<Line>)[.. StreamEntries.Lines(catalog, stored.Id).Select(l => new Line(codes[l.ExperimentId], l.Entry) { IsWithdrawn = withdrawals.IsWithdrawn(l.ExperimentId) })];
     });
 
     /// <summary>Gives experiments their levels when they start, before their p-values are seen; all of them or none.</summary>

@@ -37,7 +37,7 @@ public sealed class OnlineCampaignTests : IDisposable
 
         Assert.InRange(stream.Rejections, 2, 12);
         CsvText decisions = _place.Run("decisions", "C", "--format", "csv").Well().Csv;
-        Assert.Equal(["stream", "position", "experiment", "level", "p", "survives", "registered_at", "decided_at", "overlaps"], decisions.Columns);
+        Assert.Equal(["stream", "position", "experiment", "level", "p", "survives", "registered_at", "decided_at", "overlaps", "withdrawn"], decisions.Columns);
         Assert.Equal(results.Column("standing_level"), decisions.Column("level"));
         Assert.Equal(results.Column("p"), decisions.Column("p"));
         Assert.Equal(results.Column("survives"), decisions.Column("survives"));

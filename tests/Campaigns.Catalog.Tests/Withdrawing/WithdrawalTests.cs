@@ -198,9 +198,10 @@ public sealed class WithdrawalTests
         catalog.Load(Rows("E1", Apart, Beside));
         catalog.Test();
         Assert.Equal(1, catalog.Standing.SurvivorCount);
-        string decisions = string.Join('\n', streams.Decisions(TestCatalog.Code));
+        string decisions = string.Join('\n', streams.Decisions(TestCatalog.Code).Select(l => l.Entry));
         Decide(catalog, ["E1", "E2", "E3"], takeBack: false);
-        Assert.Equal(decisions, string.Join('\n', streams.Decisions(TestCatalog.Code)));
+        Assert.Equal(decisions, string.Join('\n', streams.Decisions(TestCatalog.Code).Select(l => l.Entry)));
+        Assert.Equal([true, true], streams.Decisions(TestCatalog.Code).Select(l => l.IsWithdrawn));
         Assert.Equal((0, ExperimentStatus.Withdrawn, null), (catalog.Standing.SurvivorCount, catalog.Result("E1").Status, catalog.Result("E1").Survives));
         Assert.Contains(catalog.Result("E1").Amendments, a => a.Contains("its decision (survives) stays", StringComparison.Ordinal));
         (CampaignOverview overview, IReadOnlyList<ExperimentResult> survivors) = new OverviewReader(catalog.Catalog).ReadSurvivors(TestCatalog.Code, 9);
@@ -208,7 +209,7 @@ public sealed class WithdrawalTests
         Assert.Contains("is withdrawn", Assert.Throws<RefusedException>(() => streams.Register(TestCatalog.Code, ["E3"])).Message, StringComparison.Ordinal);
         Decide(catalog, ["E1"], takeBack: true);
         catalog.Test();
-        Assert.Equal((1, decisions), (catalog.Standing.SurvivorCount, string.Join('\n', streams.Decisions(TestCatalog.Code))));
+        Assert.Equal((1, decisions), (catalog.Standing.SurvivorCount, string.Join('\n', streams.Decisions(TestCatalog.Code).Select(l => l.Entry))));
     }
 
     [Fact]

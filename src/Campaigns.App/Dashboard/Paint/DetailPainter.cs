@@ -60,7 +60,7 @@ public static class DetailPainter
 
         if (detail.Result.P is null)
         {
-            notes.Add(ExperimentWording.NoResult);
+            notes.Add(ExperimentWording.WithoutResult(detail.Result));
         }
 
         if (notes.Count > 0)
