@@ -14,6 +14,8 @@ public sealed class Catalog : IDisposable
     private CatalogContext? _context;
     private int _depth;
     private int _recordedChanges;
+    private CancellationToken _stop;
+    private CancellationTokenRegistration _interrupt;
 
     private Catalog(SqliteConnection connection, string path, TimeProvider clock, Actor actor)
     {
@@ -51,6 +53,14 @@ public sealed class Catalog : IDisposable
         return new Catalog(SqliteCatalogFile.Open(path), path, clock, actor ?? Actor.OfProcess);
     }
 
+    /// <summary>Opens a catalog that exists for reading alone: not one byte of it, nor of its folder, is written.</summary>
+    /// <inheritdoc cref="Open"/>
+    public static Catalog OpenReadOnly(string path, TimeProvider clock)
+    {
+        ArgumentNullException.ThrowIfNull(path);
+        return new Catalog(SqliteCatalogFile.Open(path, Microsoft.Data.Sqlite.SqliteOpenMode.ReadOnly), path, clock, Actor.OfProcess);
+    }
+
     /// <summary>Opens a catalog, creating an empty one where there is no file.</summary>
     /// <inheritdoc cref="Open"/>
     public static Catalog OpenOrCreate(string path, TimeProvider clock, Actor? actor = null)
@@ -63,11 +73,21 @@ public sealed class Catalog : IDisposable
         return Open(path, clock, actor);
     }
 
+    /// <summary>Ends what is under way when somebody asks to stop: a statement that runs is interrupted, and no other is begun.</summary>
+    /// <param name="stop">The wish to stop.</param>
+    public void StopOn(CancellationToken stop)
+    {
+        _stop = stop;
+        _interrupt = stop.Register(() => SQLitePCL.raw.sqlite3_interrupt(Connection.Handle));
+    }
+
+    internal void ThrowIfStopped() => _stop.ThrowIfCancellationRequested();
+
     /// <summary>Does a piece of work in one transaction: all of it is kept, or nothing. Inside another one it joins that.</summary>
     /// <remarks>Whatever it changes must have been recorded in the ledger when it ends.</remarks>
     /// <param name="work">The work.</param>
     /// <exception cref="CatalogException">The catalog is locked, full, read-only or damaged; nothing was changed.</exception>
-    public T Change<T>(Func<T> work) => InTransaction("BEGIN IMMEDIATE", work);
+    public T Change<T>(Func<T> work) => InTransaction(() => WriteLock.Begin(Connection, Path, _stop), work);
 
     /// <summary>Writes an entry for the action at hand, after its rows and inside its transaction.</summary>
     internal LedgerHead Record(LedgerAct act)
@@ -79,9 +99,9 @@ public sealed class Catalog : IDisposable
 
     /// <summary>Reads several things as they stand at one moment, whatever another program writes meanwhile.</summary>
     /// <param name="work">The reading.</param>
-    public T Snapshot<T>(Func<T> work) => InTransaction("BEGIN", work);
+    public T Snapshot<T>(Func<T> work) => InTransaction(() => Run("BEGIN"), work);
 
-    private T InTransaction<T>(string begin, Func<T> work)
+    private T InTransaction<T>(Action begin, Func<T> work)
     {
         ArgumentNullException.ThrowIfNull(work);
         if (_depth > 0)
@@ -89,7 +109,7 @@ public sealed class Catalog : IDisposable
             return work();
         }
 
-        Run(begin);
+        begin();
         _depth++;
         _recordedChanges = TotalChanges;
         try
@@ -117,17 +137,22 @@ public sealed class Catalog : IDisposable
     /// <inheritdoc/>
     public void Dispose()
     {
+        _interrupt.Dispose();
         _context?.Dispose();
         Connection.Dispose();
     }
 
-    internal SqliteStatement Prepare(string sql) => new(Connection, sql);
+    internal SqliteStatement Prepare(string sql)
+    {
+        ThrowIfStopped();
+        return new SqliteStatement(Connection, sql);
+    }
 
     private int TotalChanges => SQLitePCL.raw.sqlite3_total_changes(Connection.Handle);
 
     private void Run(string sql)
     {
-        using SqliteStatement statement = Prepare(sql);
+        using var statement = new SqliteStatement(Connection, sql);
         statement.Run();
     }
 

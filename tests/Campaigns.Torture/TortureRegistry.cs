@@ -5,6 +5,14 @@ internal static class TortureRegistry
 {
     public static IReadOnlyList<Func<TortureTest>> All { get; } =
     [
+        () => new Catalogs.KillWhileWriting(),
+        () => new Catalogs.KillWhileUpgrading(),
+        () => new Catalogs.FullDisk(),
+        () => new Catalogs.ShutOut(),
+        () => new Catalogs.TwoWriters(),
+        () => new Catalogs.ForeignFiles(),
+        () => new Catalogs.EarlierSchemas(),
+        () => new Catalogs.BackupWhileWriting(),
         () => new Incoming.NumberForms(),
     ];
 }

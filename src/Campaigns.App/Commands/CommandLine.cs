@@ -36,6 +36,8 @@ internal static class CommandLine
         () => new ShowVerb(),
         () => new ExportVerb(),
         () => new DashboardVerb(),
+        () => new BackupVerb(),
+        () => new RestoreCheckVerb(),
         () => new UpgradeVerb(),
         () => new CompletionVerb(),
     ];

@@ -35,9 +35,9 @@ internal sealed class Session(Host host, ParseResult typed)
     /// <summary>Who acts: the account, and the name given with --as.</summary>
     public Actor Actor => Actor.OfProcess with { ActingAs = Typed.GetValue(SharedOptions.ActingAs)?.Trim() };
 
-    public Catalog.Catalog OpenCatalog() => Catalog.Catalog.Open(CatalogPath, Host.Clock, Actor);
+    public Catalog.Catalog OpenCatalog() => Stoppable(Catalog.Catalog.Open(CatalogPath, Host.Clock, Actor));
 
-    public Catalog.Catalog OpenOrCreateCatalog() => Catalog.Catalog.OpenOrCreate(CatalogPath, Host.Clock, Actor);
+    public Catalog.Catalog OpenOrCreateCatalog() => Stoppable(Catalog.Catalog.OpenOrCreate(CatalogPath, Host.Clock, Actor));
 
     public T Get<T>(Option<T> option) => Typed.GetValue(option)!;
 
@@ -79,6 +79,12 @@ internal sealed class Session(Host host, ParseResult typed)
     }
 
     public void Print(RowTable table) => RowPrinter.Print(Host, Format, table, Typed.GetValue(SharedOptions.Top));
+
+    private Catalog.Catalog Stoppable(Catalog.Catalog catalog)
+    {
+        catalog.StopOn(Host.Cancel);
+        return catalog;
+    }
 
     /// <summary>Prints rows only where a script asked for them; people have read the sentence.</summary>
     public void PrintForScripts(RowTable table)
