@@ -103,6 +103,6 @@ public static class BackupWriter
     private static string RealPath(string path)
     {
         string full = Path.GetFullPath(path);
-        return File.ResolveLinkTarget(full, returnFinalTarget: true)?.FullName ?? full;
+        return File.Exists(full) ? File.ResolveLinkTarget(full, returnFinalTarget: true)?.FullName ?? full : full;
     }
 }

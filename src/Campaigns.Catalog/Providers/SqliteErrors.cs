@@ -24,10 +24,17 @@ internal static class SqliteErrors
         _ => new InvalidOperationException($"SQLite refused a statement of the program (code {code}: {detail}).", inner),
     };
 
-    /// <summary>Whether a killed program left a journal that SQLite has not rolled back.</summary>
+    /// <summary>Whether a killed program left a journal that SQLite has to roll back. By SQLite's own rule one that is empty, or begins with zero, was never used, and goes away with the next change.</summary>
     public static bool WaitsForRollback(string path)
     {
-        var journal = new FileInfo(path + "-journal");
-        return journal.Exists && journal.Length > 0;
+        try
+        {
+            using var journal = new FileStream(path + "-journal", FileMode.Open, FileAccess.Read, FileShare.ReadWrite | FileShare.Delete, 1);
+            return journal.ReadByte() > 0;
+        }
+        catch (Exception error) when (error is IOException or UnauthorizedAccessException)
+        {
+            return error is UnauthorizedAccessException;
+        }
     }
 }

@@ -22,9 +22,12 @@ internal static class Inspection
         return integrity is not ["ok"] ? integrity[0]
             : dangling.Length > 0 ? $"dangling: {dangling[0]}"
             : Texts(connection, "SELECT 'load ' || l.id FROM loads l WHERE l.row_count <> l.missing_count + coalesce((SELECT sum(m.value_count) FROM measurements m WHERE m.load_id = l.id), 0)") is [var partial, ..] ? $"half a file: {partial}"
+            : Number(connection, "SELECT coalesce(max(sequence), 0) - count(*) FROM ledger") != 0 ? "the sequence has gaps"
+
+            // What came before an upgrade has no entries of its own.
+            : Number(connection, "SELECT count(*) FROM ledger WHERE action = 'upgrade'") > 0 ? null
             : Number(connection, "SELECT count(*) FROM ledger WHERE action = 'start'") != Number(connection, "SELECT count(*) FROM campaigns") ? "campaigns and their entries differ in number"
             : Number(connection, "SELECT count(*) FROM ledger WHERE action = 'load'") != Number(connection, "SELECT count(*) FROM loads") ? "loads and their entries differ in number"
-            : Number(connection, "SELECT coalesce(max(sequence), 0) - count(*) FROM ledger") != 0 ? "the sequence has gaps"
             : null;
     }
 
