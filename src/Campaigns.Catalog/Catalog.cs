@@ -11,14 +11,21 @@ namespace Campaigns.Catalog;
 /// </remarks>
 public sealed class Catalog : IDisposable
 {
+    private const string BeginChange = "BEGIN IMMEDIATE";
+
     private CatalogContext? _context;
     private int _depth;
     private int _recordedChanges;
     private CancellationToken _stop;
     private CancellationTokenRegistration _interrupt;
 
-    private Catalog(SqliteConnection connection, string path, TimeProvider clock, Actor actor)
+    // What the caller has seen of the ledger, where changes are to be refused that others outran; and what it will have seen once the transaction at hand is kept.
+    private LedgerHead? _seen;
+    private LedgerHead? _willHaveSeen;
+
+    private Catalog(SqliteConnection connection, string path, TimeProvider clock, Actor actor, LedgerHead? seen)
     {
+        _seen = seen;
         Connection = connection;
         Path = path;
         Clock = clock;
@@ -46,11 +53,12 @@ public sealed class Catalog : IDisposable
     /// <param name="path">The file.</param>
     /// <param name="clock">Where instants come from.</param>
     /// <param name="actor">Who acts; null for the account of the process.</param>
+    /// <param name="seen">The head of the ledger that the caller has seen: a change of a campaign that others changed after it is refused; null to take any.</param>
     /// <exception cref="CatalogException">Missing, unreadable, locked, damaged, foreign, older or newer.</exception>
-    public static Catalog Open(string path, TimeProvider clock, Actor? actor = null)
+    public static Catalog Open(string path, TimeProvider clock, Actor? actor = null, LedgerHead? seen = null)
     {
         ArgumentNullException.ThrowIfNull(path);
-        return new Catalog(SqliteCatalogFile.Open(path), path, clock, actor ?? Actor.OfProcess);
+        return new Catalog(SqliteCatalogFile.Open(path), path, clock, actor ?? Actor.OfProcess, seen);
     }
 
     /// <summary>Opens a catalog that exists for reading alone: not one byte of it, nor of its folder, is written.</summary>
@@ -58,19 +66,33 @@ public sealed class Catalog : IDisposable
     public static Catalog OpenReadOnly(string path, TimeProvider clock)
     {
         ArgumentNullException.ThrowIfNull(path);
-        return new Catalog(SqliteCatalogFile.Open(path, Microsoft.Data.Sqlite.SqliteOpenMode.ReadOnly), path, clock, Actor.OfProcess);
+        return On(SqliteCatalogFile.Open(path, SqliteOpenMode.ReadOnly), path, clock, Actor.OfProcess);
     }
+
+    /// <summary>Opens a catalog for a proof, which names what another program changed in it; every other way of opening refuses such a one.</summary>
+    /// <param name="path">The file.</param>
+    /// <param name="clock">Where instants come from.</param>
+    /// <param name="isReadOnly">Whether not one byte may be written, not even to roll back what was interrupted.</param>
+    /// <exception cref="CatalogException">Missing, unreadable, locked, damaged, of another program, older or newer.</exception>
+    public static Catalog OpenForProof(string path, TimeProvider clock, bool isReadOnly)
+    {
+        ArgumentNullException.ThrowIfNull(path);
+        return On(SqliteCatalogFile.OpenAsItIs(path, isReadOnly ? SqliteOpenMode.ReadOnly : SqliteOpenMode.ReadWrite), path, clock, Actor.OfProcess);
+    }
+
+    /// <summary>A catalog on a connection that is open already.</summary>
+    internal static Catalog On(SqliteConnection connection, string path, TimeProvider clock, Actor actor) => new(connection, path, clock, actor, null);
 
     /// <summary>Opens a catalog, creating an empty one where there is no file.</summary>
     /// <inheritdoc cref="Open"/>
-    public static Catalog OpenOrCreate(string path, TimeProvider clock, Actor? actor = null)
+    public static Catalog OpenOrCreate(string path, TimeProvider clock, Actor? actor = null, LedgerHead? seen = null)
     {
         if (!File.Exists(path) && !Directory.Exists(path))
         {
             SqliteCatalogFile.Create(path);
         }
 
-        return Open(path, clock, actor);
+        return Open(path, clock, actor, seen);
     }
 
     /// <summary>Ends what is under way when somebody asks to stop: a statement that runs is interrupted, and no other is begun.</summary>
@@ -87,21 +109,28 @@ public sealed class Catalog : IDisposable
     /// <remarks>Whatever it changes must have been recorded in the ledger when it ends.</remarks>
     /// <param name="work">The work.</param>
     /// <exception cref="CatalogException">The catalog is locked, full, read-only or damaged; nothing was changed.</exception>
-    public T Change<T>(Func<T> work) => InTransaction(() => WriteLock.Begin(Connection, Path, _stop), work);
+    /// <exception cref="Campaigns.Domain.RefusedException">Others changed the campaign after the head that the caller has seen; nothing was changed.</exception>
+    public T Change<T>(Func<T> work) => InTransaction(BeginChange, work);
 
     /// <summary>Writes an entry for the action at hand, after its rows and inside its transaction.</summary>
     internal LedgerHead Record(LedgerAct act)
     {
+        if (_willHaveSeen is { } seen)
+        {
+            UnchangedSince.Demand(this, seen, act.Campaign);
+        }
+
         LedgerHead head = LedgerWriter.Append(this, act);
+        _willHaveSeen = _seen is null ? null : head;
         _recordedChanges = TotalChanges;
         return head;
     }
 
     /// <summary>Reads several things as they stand at one moment, whatever another program writes meanwhile.</summary>
     /// <param name="work">The reading.</param>
-    public T Snapshot<T>(Func<T> work) => InTransaction(() => Run("BEGIN"), work);
+    public T Snapshot<T>(Func<T> work) => InTransaction("BEGIN", work);
 
-    private T InTransaction<T>(Action begin, Func<T> work)
+    private T InTransaction<T>(string begin, Func<T> work)
     {
         ArgumentNullException.ThrowIfNull(work);
         if (_depth > 0)
@@ -109,11 +138,25 @@ public sealed class Catalog : IDisposable
             return work();
         }
 
-        begin();
+        if (begin == BeginChange)
+        {
+            WriteLock.Begin(Connection, Path, _stop);
+        }
+        else
+        {
+            Run(begin);
+        }
+
         _depth++;
         _recordedChanges = TotalChanges;
+        _willHaveSeen = _seen;
         try
         {
+            if (_seen is { } seen && begin == BeginChange)
+            {
+                UnchangedSince.DemandHeld(this, seen);
+            }
+
             T result = work();
             if (TotalChanges != _recordedChanges)
             {
@@ -121,6 +164,7 @@ public sealed class Catalog : IDisposable
             }
 
             Run("COMMIT");
+            _seen = _willHaveSeen;
             return result;
         }
         catch

@@ -13,6 +13,11 @@ internal static class TortureRegistry
         () => new Catalogs.ForeignFiles(),
         () => new Catalogs.EarlierSchemas(),
         () => new Catalogs.BackupWhileWriting(),
+        () => new Catalogs.HostileNames(),
+        () => new Incoming.DamagedFiles(),
+        () => new Incoming.FileForms(),
+        () => new Incoming.Bombs(),
         () => new Incoming.NumberForms(),
+        () => new Outgoing.TerminalEscapes(),
     ];
 }

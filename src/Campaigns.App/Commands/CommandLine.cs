@@ -21,6 +21,8 @@ internal static class CommandLine
         () => new DecisionsVerb(),
         () => new RestreamVerb(),
         () => new ReviewVerb(),
+        () => new ReviewsVerb(),
+        () => new HistoryVerb(),
         () => new ResultsVerb(),
         () => new SurvivorsVerb(),
         () => new ComparisonsVerb(),
@@ -32,9 +34,11 @@ internal static class CommandLine
         () => new BoundVerb(),
         () => new OverallVerb(),
         () => new ExcludeVerb(),
+        () => new WithdrawVerb(),
         () => new ListVerb(),
         () => new ShowVerb(),
         () => new ExportVerb(),
+        () => new LedgerVerb(),
         () => new DashboardVerb(),
         () => new BackupVerb(),
         () => new RestoreCheckVerb(),
@@ -77,11 +81,7 @@ internal static class CommandLine
         var verbs = new Dictionary<Command, Verb>();
         foreach (Func<Verb> make in Verbs)
         {
-            Verb verb = make();
-            Command command = verb.Build();
-            command.SetAction(_ => ExitCode.Done);
-            root.Add(command);
-            verbs.Add(command, verb);
+            Add(root, make(), verbs);
         }
 
         HelpOption help = root.Options.OfType<HelpOption>().Single();
@@ -89,5 +89,17 @@ internal static class CommandLine
         help.Aliases.Add("-h");
         help.Action = new HelpWithExample((HelpAction)help.Action!, verbs);
         return (root, verbs);
+    }
+
+    private static void Add(Command parent, Verb verb, Dictionary<Command, Verb> verbs)
+    {
+        Command command = verb.Build();
+        command.SetAction(_ => ExitCode.Done);
+        parent.Add(command);
+        verbs.Add(command, verb);
+        foreach (Verb under in verb.Under)
+        {
+            Add(command, under, verbs);
+        }
     }
 }

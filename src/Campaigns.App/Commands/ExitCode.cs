@@ -9,8 +9,8 @@ internal static class ExitCode
     public const int Refused = 3;
     public const int NoCatalog = 4;
 
-    /// <summary>The record is not whole: ledger, digests or pages do not match.</summary>
-    public const int NotWhole = 5;
+    /// <summary>The record is not whole: the ledger, or a digest in it, does not match the catalog.</summary>
+    public const int RecordBroken = 5;
 
     /// <summary>Stopped by Ctrl-C, as shells know it: 128 and the number of the signal. Other signals have their own number.</summary>
     public const int Stopped = 130;

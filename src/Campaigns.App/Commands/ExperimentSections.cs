@@ -1,4 +1,5 @@
 using Campaigns.App.Output;
+using Campaigns.Catalog.Ledger;
 using Campaigns.Domain;
 using Campaigns.Statistics.Checks;
 using Campaigns.Statistics.GroupTests;
@@ -8,8 +9,8 @@ namespace Campaigns.App.Commands;
 /// <summary>One experiment in full as tables: people see them one below the other, scripts as the parts of one JSON object.</summary>
 internal static class ExperimentSections
 {
-    /// <summary>The experiment itself: one row.</summary>
-    public static RowTable Experiment(ExperimentDetail detail)
+    /// <summary>The experiment itself, and the head of the ledger at which it was read: one row.</summary>
+    public static RowTable Experiment(ExperimentDetail detail, LedgerHead head)
     {
         ExperimentResult r = detail.Result;
         VariationTable? v = detail.Variation;
@@ -26,6 +27,7 @@ internal static class ExperimentSections
             ("arrangements", Cell.Whole(r.Resampling?.Arrangements)), ("as_extreme", Cell.Whole(r.Resampling?.AsExtreme)), ("seed", Seed(r)),
             ("follow_up", Cell.Text(r.Plan.FollowUp)), ("units_note", Cell.Text(detail.Analysis.UnitsNote)),
             ("confirms", Cell.Text(r.Plan.Confirms)), ("replicability_p", Cell.P(r.Confirmation?.P)), ("replicability_adjusted_p", Cell.P(r.Confirmation?.AdjustedP)), ("replicated", Cell.Truth(r.Confirmation?.IsReplicated)),
+            ("ledger_sequence", Cell.Whole(head.Sequence)), ("ledger_head", Cell.Text(head.ToString())),
         ];
         return new RowTable([.. facts.Select(f => new Column(f.Name, null))], [[.. facts.Select(f => f.Value)]]);
     }
@@ -83,7 +85,7 @@ internal static class ExperimentSections
             new("values", "values"), new("test", "test"), new("statistic", "statistic", true), new("df1", "df1", true), new("df2", "df2", true), new("p", "p", true), new("outcome", "note"),
         ],
         [
-            .. detail.Outcome is { } outcome ? [Test(detail.OutcomeWithExcluded is null ? "all" : "without the excluded", detail.Result.Plan.Test, outcome, detail.Result.Status.WasTested() ? "the planned test" : "not in force before a new test")] : (Cell[][])[],
+            .. detail.Outcome is { } outcome ? [Test(detail.OutcomeWithExcluded is null ? "all" : "without the excluded", detail.Result.Plan.Test, outcome, detail.Result.Status.WasTested() ? "the planned test" : detail.Result.Status == ExperimentStatus.Withdrawn ? "withdrawn: does not count" : "not in force before a new test")] : (Cell[][])[],
             .. detail.OutcomeWithExcluded is { } all ? [Test("with the excluded", detail.Result.Plan.Test, all, "for comparison")] : (Cell[][])[],
             .. detail.Analysis.Beside is { } beside ? [Test(detail.OutcomeWithExcluded is null ? "all" : "without the excluded", "welch", beside, "for comparison, because spreads differ")] : (Cell[][])[],
         ]);

@@ -15,7 +15,7 @@ internal sealed class PlanVerb : Verb
     public override Command Build() => new("plan", Describe("Register experiments from a plan file, or change registered ones, before sealing.",
         "plan PRIMERS plan.csv"))
     {
-        _code, _file, SharedOptions.DecimalMark, SharedOptions.Separator, SharedOptions.Columns,
+        _code, _file, SharedOptions.DecimalMark, SharedOptions.Separator, SharedOptions.Columns, SharedOptions.Seen,
     };
 
     public override int Run(Session session)

@@ -41,7 +41,7 @@ internal sealed class RestoreCheckVerb : Verb
                     Cell.Text(check.Head?.ToString() ?? ""), Cell.Text(check.LastAt is { } at ? Instant(at) : ""),
                 ],
             ]));
-        return check.Faults.Count == 0 ? ExitCode.Done : ExitCode.NotWhole;
+        return check.Faults.Count == 0 ? ExitCode.Done : ExitCode.RecordBroken;
     }
 
     private static void Tell(Session session, string file, CheckedCatalog check, bool wasHeld)

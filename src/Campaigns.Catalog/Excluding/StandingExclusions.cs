@@ -1,4 +1,5 @@
 using Campaigns.Catalog.Providers;
+using Campaigns.Catalog.Results;
 using Campaigns.Domain;
 
 namespace Campaigns.Catalog.Excluding;
@@ -11,7 +12,10 @@ internal sealed class StandingExclusions
 
     private readonly Dictionary<long, Experiment> _experiments = [];
 
-    public StandingExclusions(Catalog catalog, long campaignId)
+    /// <param name="catalog">The open catalog.</param>
+    /// <param name="campaignId">The campaign.</param>
+    /// <param name="asOf">The position of the record up to which decisions and test runs count; null for all of them.</param>
+    public StandingExclusions(Catalog catalog, long campaignId, RecordPosition? asOf = null)
     {
         using SqliteStatement any = catalog.Prepare("SELECT EXISTS (SELECT 1 FROM exclusions)");
         any.Read();
@@ -25,11 +29,11 @@ internal sealed class StandingExclusions
         using SqliteStatement select = catalog.Prepare(
             """
             SELECT x.experiment_id, x.id, x.load_id, x.line, x.is_excluded, x.group_label, x.value, x.reason, x.named_by, x.made_at, l.file_name, e.code,
-                (SELECT max(coalesce(t.last_exclusion_id, 0)) FROM test_results r JOIN test_runs t ON t.id = r.test_run_id WHERE r.experiment_id = x.experiment_id)
+                (SELECT max(coalesce(t.last_exclusion_id, 0)) FROM test_results r JOIN test_runs t ON t.id = r.test_run_id WHERE r.experiment_id = x.experiment_id AND t.id <= ?3)
             FROM exclusions x JOIN experiments e ON e.id = x.experiment_id JOIN loads l ON l.id = x.load_id
-            WHERE e.campaign_id = ?1 ORDER BY x.experiment_id, x.id
+            WHERE e.campaign_id = ?1 AND x.id <= ?2 ORDER BY x.experiment_id, x.id
             """);
-        select.Bind(1, campaignId);
+        select.Bind(1, campaignId).Bind(2, asOf is null ? long.MaxValue : asOf.LastExclusionId ?? 0).Bind(3, asOf?.LastTestRunId ?? long.MaxValue);
         while (select.Read())
         {
             Add(select);
@@ -47,6 +51,25 @@ internal sealed class StandingExclusions
 
     /// <summary>Observations of an experiment that are left out.</summary>
     public IReadOnlySet<Place> Of(long experimentId) => _experiments.TryGetValue(experimentId, out Experiment? found) ? found.Excluded : Nothing;
+
+    /// <summary>Observations of an experiment that were left out once a decision had been made, and before the next one.</summary>
+    /// <param name="experimentId">The experiment.</param>
+    /// <param name="lastId">Key of that decision; null for the time before the first.</param>
+    public IReadOnlySet<Place> Of(long experimentId, long? lastId)
+    {
+        if (!_experiments.TryGetValue(experimentId, out Experiment? found))
+        {
+            return Nothing;
+        }
+
+        var excluded = new HashSet<Place>();
+        foreach ((_, Place place, bool isExcluded) in found.Places.TakeWhile(p => p.Id <= (lastId ?? 0)))
+        {
+            _ = isExcluded ? excluded.Add(place) : excluded.Remove(place);
+        }
+
+        return excluded;
+    }
 
     /// <summary>Every decision about an experiment, oldest first.</summary>
     public IReadOnlyList<ExcludedObservation> Decisions(long experimentId) =>
@@ -67,6 +90,7 @@ internal sealed class StandingExclusions
         var place = new Place(row.Integer(2), row.Integer(3));
         bool excluded = row.Integer(4) != 0;
         _ = excluded ? experiment.Excluded.Add(place) : experiment.Excluded.Remove(place);
+        experiment.Places.Add((id, place, excluded));
         experiment.Decisions.Add(new ExcludedObservation(
             row.Text(11), row.Text(10), place.Line, row.Text(5), row.Text(6), excluded, row.Text(7), row.Text(8), Instants.FromMicroseconds(row.Integer(9))));
         experiment.AwaitsTest |= !row.IsNull(12) && row.Integer(12) < id;
@@ -75,6 +99,8 @@ internal sealed class StandingExclusions
     private sealed class Experiment
     {
         public HashSet<Place> Excluded { get; } = [];
+
+        public List<(long Id, Place Place, bool IsExcluded)> Places { get; } = [];
 
         public List<ExcludedObservation> Decisions { get; } = [];
 

@@ -1,5 +1,5 @@
-using System.Globalization;
 using Campaigns.Catalog.Ledger;
+using Campaigns.Catalog.Ledger.Verifying;
 using Microsoft.Data.Sqlite;
 
 namespace Campaigns.Catalog.Providers;
@@ -21,9 +21,6 @@ public sealed record CheckedCatalog(int Version, IReadOnlyList<CheckedCampaign> 
 /// <summary>Reads a catalog's file from one end to the other and says whether it may be relied on; not one byte is written.</summary>
 public static class CatalogCheck
 {
-    /// <summary>The first schema with a ledger.</summary>
-    private const int LedgerSince = 4;
-
     private const int MostFaults = 20;
 
     /// <summary>Checks a file: header, structure, pages, references, ledger.</summary>
@@ -45,69 +42,42 @@ public static class CatalogCheck
             throw new CatalogException($"Beside '{path}' stands a journal: an action was interrupted there, or a program is writing. A backup has none; any command on the catalog rolls the action back.");
         }
 
+        return version < SqliteCatalogFile.SchemaVersion ? Earlier(path, version, expected, stop) : Today(path, expected, clock, stop);
+    }
+
+    private static CheckedCatalog Today(string path, LedgerHead? expected, TimeProvider clock, CancellationToken stop)
+    {
+        using Catalog catalog = Catalog.OpenForProof(path, clock, isReadOnly: true);
+        catalog.StopOn(stop);
+        LedgerProof proof = new LedgerVerifier(catalog).Verify(expected);
+        string[] faults = [.. proof.Findings.Select(f => f.What)];
+        bool isReadable = faults.Length == 0;
+        DateTimeOffset? last = isReadable && proof.Head.Sequence > 0 ? new LedgerReader(catalog).Entries(new LedgerFilter { From = proof.Head.Sequence }).Single().At : null;
+        return new CheckedCatalog(SqliteCatalogFile.SchemaVersion, isReadable ? Held(catalog.Connection) : [], proof.Head, last, faults);
+    }
+
+    /// <summary>Pages and references alone: an earlier schema has no ledger that this program could follow.</summary>
+    private static CheckedCatalog Earlier(string path, int version, LedgerHead? expected, CancellationToken stop)
+    {
         using SqliteConnection connection = SqliteCatalogFile.Connect(path, SqliteOpenMode.ReadOnly);
         using CancellationTokenRegistration interrupt = stop.Register(() => SQLitePCL.raw.sqlite3_interrupt(connection.Handle));
-        var faults = new List<string>();
-        faults.AddRange(Rows(connection, "PRAGMA integrity_check(20)", row => row.Text(0)).Where(line => line != "ok").Select(line => $"The file's pages are damaged: {line}."));
-        faults.AddRange(Rows(connection, "PRAGMA foreign_key_check", row => FormattableString.Invariant($"A row of '{row.Text(0)}' refers to one of '{row.Text(2)}' that is not there.")).Take(MostFaults));
-        if (version == SqliteCatalogFile.SchemaVersion)
+        List<string> faults =
+        [
+            .. Rows(connection, "PRAGMA integrity_check(20)", row => row.Text(0)).Where(line => line != "ok").Select(line => $"The file is damaged: {line}."),
+            .. Rows(connection, "PRAGMA foreign_key_check", row => $"A row of the table {row.Text(0)} belongs to a row of {row.Text(2)} that is not there.").Take(MostFaults),
+        ];
+        if (expected is not null)
         {
-            faults.AddRange(SchemaFingerprint.Differences(connection).Select(difference => $"The structure was changed by another program: {difference}."));
+            faults.Add(FormattableString.Invariant($"A catalog of schema {version} has no ledger, so that nothing can be held against the head."));
         }
 
-        List<CheckedCampaign> campaigns = faults.Count > 0 ? [] : Rows(
-            connection,
-            "SELECT c.code, c.title, (SELECT count(*) FROM experiments e WHERE e.campaign_id = c.id) FROM campaigns c ORDER BY c.id",
-            row => new CheckedCampaign(row.Text(0), row.Text(1), (int)row.Integer(2)));
-        if (version < LedgerSince)
-        {
-            if (expected is not null)
-            {
-                faults.Add($"A catalog of schema {version.ToString(CultureInfo.InvariantCulture)} has no ledger, so that nothing can be held against the head.");
-            }
-
-            return new CheckedCatalog(version, campaigns, null, null, faults);
-        }
-
-        if (faults.Count > 0)
-        {
-            return new CheckedCatalog(version, campaigns, null, null, faults);
-        }
-
-        using Catalog catalog = Catalog.OpenReadOnly(path, clock);
-        catalog.StopOn(stop);
-        (LedgerHead head, DateTimeOffset? at) = Walk(catalog, expected, faults);
-        return new CheckedCatalog(version, campaigns, head, at, faults);
+        return new CheckedCatalog(version, faults.Count == 0 ? Held(connection) : [], null, null, faults);
     }
 
-    /// <summary>Follows the chain, with the digests of all rows that its entries speak for.</summary>
-    private static (LedgerHead Head, DateTimeOffset? At) Walk(Catalog catalog, LedgerHead? expected, List<string> faults)
-    {
-        LedgerHead head = LedgerHead.Empty;
-        DateTimeOffset? at = null;
-        bool isMet = expected is null || expected == head;
-        foreach (LedgerEntry entry in new LedgerReader(catalog).Entries(new LedgerFilter()))
-        {
-            if (entry.Sequence != head.Sequence + 1 || ChainHash.Of(head.Hash, entry) != entry.Hash)
-            {
-                faults.Add(FormattableString.Invariant($"The ledger is not whole from entry {head.Sequence + 1} on."));
-                return (head, at);
-            }
-
-            head = new LedgerHead(entry.Sequence, entry.Hash);
-            at = entry.At;
-            isMet |= head == expected;
-        }
-
-        if (!isMet)
-        {
-            faults.Add(expected!.Sequence > head.Sequence
-                ? FormattableString.Invariant($"The head given is that of entry {expected.Sequence}, but the ledger ends with entry {head.Sequence}: the file is older than the head, or its end was cut off.")
-                : FormattableString.Invariant($"Entry {expected.Sequence} is another one than the head given: the ledger was written anew, or belongs to another catalog."));
-        }
-
-        return (head, at);
-    }
+    private static List<CheckedCampaign> Held(SqliteConnection connection) => Rows(
+        connection,
+        "SELECT c.code, c.title, (SELECT count(*) FROM experiments e WHERE e.campaign_id = c.id) FROM campaigns c ORDER BY c.id",
+        row => new CheckedCampaign(row.Text(0), row.Text(1), (int)row.Integer(2)));
 
     private static List<T> Rows<T>(SqliteConnection connection, string sql, Func<SqliteStatement, T> make)
     {

@@ -6,7 +6,7 @@ namespace Campaigns.Catalog.Providers;
 /// <summary>Tells a catalog whose tables another program changed, although its header names this program's schema.</summary>
 /// <remarks>
 /// Opening compares one digest over the texts of tables and indexes and over the migrations, which costs a fraction of a millisecond.
-/// Tables and views that somebody added beside ours are nobody's harm. Triggers are left to the full check: without one, nothing that is stored means anything else.
+/// Tables and views that somebody added beside ours are nobody's harm. Triggers are left to the proof of the record: without one, nothing that is stored means anything else.
 /// </remarks>
 internal static class SchemaFingerprint
 {
@@ -24,7 +24,8 @@ internal static class SchemaFingerprint
     /// <summary>The digest of a catalog.</summary>
     public static string Of(SqliteConnection connection)
     {
-        using var hash = new ChainHash(1);
+        using var hash = new ChainHash();
+        hash.Begin(1);
         Add(hash, connection, $"SELECT type, name, tbl_name, sql FROM sqlite_schema WHERE type IN ('table', 'index') AND tbl_name IN {Ours} ORDER BY type, name");
         if (HasMigrations(connection))
         {
@@ -45,12 +46,10 @@ internal static class SchemaFingerprint
         }
     }
 
-    /// <summary>Everything in which the structure, triggers included, differs from that of an untouched catalog; builds one in memory, for the full check alone.</summary>
-    public static IReadOnlyList<string> Differences(SqliteConnection connection)
+    /// <summary>Everything in which the structure differs from that of an untouched catalog; builds one in memory, where the digest is not what it should be.</summary>
+    private static List<string> Differences(SqliteConnection connection)
     {
-        using var fresh = new SqliteConnection("Data Source=:memory:;Pooling=False");
-        fresh.Open();
-        SqliteCatalogFile.Execute(fresh, SqliteCatalogFile.ReadSchema());
+        using SqliteConnection fresh = SqliteCatalogFile.InMemory();
         Dictionary<string, string> expected = Objects(fresh), found = Objects(connection);
         return
         [
@@ -62,7 +61,7 @@ internal static class SchemaFingerprint
 
     private static Dictionary<string, string> Objects(SqliteConnection connection)
     {
-        using var select = new SqliteStatement(connection, $"SELECT type || ' ' || name, coalesce(sql, '') FROM sqlite_schema WHERE tbl_name IN {Ours} ORDER BY type DESC, name");
+        using var select = new SqliteStatement(connection, $"SELECT type || ' ' || name, coalesce(sql, '') FROM sqlite_schema WHERE type IN ('table', 'index') AND tbl_name IN {Ours} ORDER BY type DESC, name");
         var objects = new Dictionary<string, string>(StringComparer.Ordinal);
         while (select.Read())
         {

@@ -45,6 +45,23 @@ internal static class SqliteCatalogFile
     /// <exception cref="CatalogException">Missing, unreadable, foreign, older, newer or damaged.</exception>
     public static SqliteConnection Open(string path, SqliteOpenMode mode = SqliteOpenMode.ReadWrite)
     {
+        SqliteConnection connection = OpenAsItIs(path, mode);
+        try
+        {
+            SchemaFingerprint.Demand(connection, path);
+            return connection;
+        }
+        catch
+        {
+            connection.Dispose();
+            throw;
+        }
+    }
+
+    /// <summary>Opens a catalog of this program's schema by its header alone; for the proofs, which name what was changed in it.</summary>
+    /// <exception cref="CatalogException">Missing, unreadable, foreign, older, newer or damaged.</exception>
+    public static SqliteConnection OpenAsItIs(string path, SqliteOpenMode mode)
+    {
         int version = ReadVersion(path);
         if (version > SchemaVersion)
         {
@@ -56,17 +73,7 @@ internal static class SqliteCatalogFile
             throw new CatalogException($"The catalog '{path}' was written by an older version of this program (schema {version}, this program writes {SchemaVersion}); run 'campaigns upgrade' to bring it up to date. The file was not touched.");
         }
 
-        SqliteConnection connection = Connect(path, mode);
-        try
-        {
-            SchemaFingerprint.Demand(connection, path);
-            return connection;
-        }
-        catch
-        {
-            connection.Dispose();
-            throw;
-        }
+        return Connect(path, mode);
     }
 
     /// <summary>Creates an empty catalog: a complete file is made beside the place and then moved there, so that nobody ever sees half a catalog. Where somebody else was quicker, theirs stays.</summary>
@@ -106,6 +113,16 @@ internal static class SqliteCatalogFile
         {
             DraftFiles.Remove(draft);
         }
+    }
+
+    /// <summary>An empty catalog in memory: what the schema of this program looks like.</summary>
+    public static SqliteConnection InMemory()
+    {
+        var connection = new SqliteConnection(new SqliteConnectionStringBuilder { DataSource = ":memory:", Pooling = false }.ToString());
+        connection.Open();
+        Execute(connection, $"PRAGMA application_id = {ApplicationId}; PRAGMA user_version = {SchemaVersion};");
+        Execute(connection, ReadSchema());
+        return connection;
     }
 
     /// <summary>Connects with the settings of every catalog, whatever its schema. A file that cannot be written is opened for reading.</summary>
@@ -179,8 +196,7 @@ internal static class SqliteCatalogFile
     private static string ConnectionString(string path, SqliteOpenMode mode) =>
         new SqliteConnectionStringBuilder { DataSource = path, Mode = mode, Pooling = false, DefaultTimeout = 1 }.ToString();
 
-    /// <summary>The statements that make an empty catalog.</summary>
-    public static string ReadSchema()
+    private static string ReadSchema()
     {
         using Stream stream = typeof(SqliteCatalogFile).Assembly.GetManifestResourceStream("Campaigns.Catalog.Providers.Schema.sql")!;
         using var reader = new StreamReader(stream);

@@ -1,30 +1,48 @@
 using Campaigns.Catalog.Excluding;
 using Campaigns.Catalog.Providers;
+using Campaigns.Catalog.Withdrawing;
 
 namespace Campaigns.Catalog.Results;
 
-/// <summary>The experiments of a campaign to which values were added after their test, or of which values were left out, with the reasons given.</summary>
-/// <remarks>Campaigns without any, which is nearly all, cost a look at the list of loads and one at the list of exclusions.</remarks>
+/// <summary>The experiments of a campaign to which values were added after their test, of which values were left out, or that were withdrawn, with the reasons given.</summary>
+/// <remarks>Campaigns without any, which is nearly all, cost a look at the list of loads, one at the list of exclusions and one at that of withdrawals.</remarks>
 internal sealed class AmendedExperiments
 {
     private readonly Dictionary<long, Amended> _experiments = [];
 
-    public AmendedExperiments(Catalog catalog, long campaignId)
+    /// <param name="catalog">The open catalog.</param>
+    /// <param name="campaignId">The campaign.</param>
+    /// <param name="asOf">The position of the record up to which all this counts; null for all of it.</param>
+    public AmendedExperiments(Catalog catalog, long campaignId, RecordPosition? asOf = null)
     {
-        Exclusions = new StandingExclusions(catalog, campaignId);
-        AddLoads(catalog, campaignId);
+        Exclusions = new StandingExclusions(catalog, campaignId, asOf);
+        AddLoads(catalog, campaignId, asOf);
         foreach (long id in Exclusions.Ids)
         {
             Amended amended = Of(id);
             amended.Reasons.AddRange(Exclusions.Decisions(id).Select(d => d.Sentence));
             amended.AwaitsTest |= Exclusions.AwaitsTest(id);
         }
+
+        Withdrawals = new StandingWithdrawals(catalog, campaignId, asOf);
+        foreach (long id in Withdrawals.Ids)
+        {
+            Amended amended = Of(id);
+            amended.Reasons.AddRange(Withdrawals.Reasons(id));
+            amended.AwaitsTest |= Withdrawals.AwaitsTest(id);
+        }
     }
 
     /// <summary>What is left out of the analysis.</summary>
     public StandingExclusions Exclusions { get; }
 
-    private void AddLoads(Catalog catalog, long campaignId)
+    /// <summary>What is withdrawn.</summary>
+    public StandingWithdrawals Withdrawals { get; }
+
+    /// <summary>Experiments that a new test would give a result again: those that are withdrawn stay without one.</summary>
+    public int AwaitingTest => Ids.Count(id => AwaitsTest(id) && !Withdrawals.IsWithdrawn(id));
+
+    private void AddLoads(Catalog catalog, long campaignId, RecordPosition? asOf)
     {
         using SqliteStatement loads = catalog.Prepare("SELECT count(*) FROM loads WHERE campaign_id = ?1 AND amendment_reason IS NOT NULL");
         loads.Bind(1, campaignId).Read();
@@ -38,12 +56,12 @@ internal sealed class AmendedExperiments
         using SqliteStatement select = catalog.Prepare(
             """
             SELECT m.experiment_id, l.id, l.amendment_reason,
-                (SELECT min(coalesce(t.last_load_id, 0)) FROM test_results r JOIN test_runs t ON t.id = r.test_run_id WHERE r.experiment_id = m.experiment_id),
-                (SELECT max(coalesce(t.last_load_id, 0)) FROM test_results r JOIN test_runs t ON t.id = r.test_run_id WHERE r.experiment_id = m.experiment_id)
+                (SELECT min(coalesce(t.last_load_id, 0)) FROM test_results r JOIN test_runs t ON t.id = r.test_run_id WHERE r.experiment_id = m.experiment_id AND t.id <= ?3),
+                (SELECT max(coalesce(t.last_load_id, 0)) FROM test_results r JOIN test_runs t ON t.id = r.test_run_id WHERE r.experiment_id = m.experiment_id AND t.id <= ?3)
             FROM loads l JOIN measurements m ON m.load_id = l.id
-            WHERE l.campaign_id = ?1 AND l.amendment_reason IS NOT NULL ORDER BY m.experiment_id, l.id
+            WHERE l.campaign_id = ?1 AND l.amendment_reason IS NOT NULL AND l.id <= ?2 ORDER BY m.experiment_id, l.id
             """);
-        select.Bind(1, campaignId);
+        select.Bind(1, campaignId).Bind(2, asOf is null ? long.MaxValue : asOf.LastLoadId ?? 0).Bind(3, asOf?.LastTestRunId ?? long.MaxValue);
         while (select.Read())
         {
             long load = select.Integer(1);
@@ -65,7 +83,7 @@ internal sealed class AmendedExperiments
 
     public bool Any => Count > 0;
 
-    /// <summary>Whether values came in or were left out after the latest test, which is then no longer the experiment's result.</summary>
+    /// <summary>Whether values came in or were left out, or the experiment was withdrawn, after the latest test, which is then no longer its result.</summary>
     public bool AwaitsTest(long experimentId) => _experiments.TryGetValue(experimentId, out Amended? amended) && amended.AwaitsTest;
 
     /// <summary>The reasons of the amendments, oldest first.</summary>

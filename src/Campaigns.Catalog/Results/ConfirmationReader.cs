@@ -25,7 +25,7 @@ internal sealed class ConfirmationReader(Catalog catalog, Func<string, CampaignS
 
         _others[stored.Campaign.Code] = standing;
         using var known = new ConfirmedExperiments(catalog);
-        return Replicability.Apply(stored.Campaign, experiments, [.. experiments.Select(e => e.Plan.Confirms is { } reference ? Earlier(stored, known, reference) : null)]);
+        return Replicability.Apply(stored.Campaign, experiments, [.. experiments.Select(e => e is { Plan.Confirms: { } reference, LeftFamily: false } ? Earlier(stored, known, reference) : null)]);
     }
 
     private EarlierExperiment? Earlier(StoredCampaign stored, ConfirmedExperiments known, string reference)
@@ -39,7 +39,7 @@ internal sealed class ConfirmationReader(Catalog catalog, Func<string, CampaignS
         ExperimentResult first = standing.Experiments.First(e => e.Plan.Code == found.Code);
         FamilyStanding family = first.Family ?? standing.Families[0];
         bool before = found.CampaignId != stored.Id && FirstTestOf(found.Id) is { } tested && !(stored.Campaign.SealedAt < tested);
-        return new EarlierExperiment(found.Campaign, found.Code, first.P, family.Name, family.Size, before);
+        return new EarlierExperiment(found.Campaign, found.Code, first.P, family.Name, family.Size, before) { IsInFamily = !first.LeftFamily };
     }
 
     private DateTimeOffset? FirstTestOf(long experimentId)

@@ -1,6 +1,8 @@
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Providers;
+using Campaigns.Catalog.Reviewing;
 using Campaigns.Catalog.Streams;
+using Campaigns.Catalog.Withdrawing;
 using Campaigns.Domain;
 using Campaigns.Statistics.Probability;
 
@@ -9,17 +11,20 @@ namespace Campaigns.Catalog.Results;
 /// <summary>Collects a campaign's family: every tested experiment with its p-value, and how many hypotheses there are.</summary>
 /// <remarks>
 /// The latest review's lines are the base and only what was tested after it is read, so that one more experiment among 100,000 costs one packed vector, not a scan of all results.
-/// Without a review, or after an amendment, all results are read: O(m).
+/// Without a review, or after an amendment or a withdrawal, all results are read: O(m).
 /// </remarks>
 internal sealed class FamilyReader(Catalog catalog)
 {
-    /// <summary>Hypotheses in the family: every experiment of the campaign.</summary>
+    /// <summary>Hypotheses in the family: every experiment of the campaign, those left out that were withdrawn before any data.</summary>
     public int FamilySize(long campaignId)
     {
         using SqliteStatement count = catalog.Prepare("SELECT count(*) FROM experiments WHERE campaign_id = ?1");
         count.Bind(1, campaignId).Read();
-        return (int)count.Integer(0);
+        return (int)count.Integer(0) - new StandingWithdrawals(catalog, campaignId).Counts.Left;
     }
+
+    /// <summary>The same at a position of the record.</summary>
+    public int FamilySize(StoredCampaign stored, RecordPosition? asOf) => asOf is null ? FamilySize(stored.Id) : new PastFamily(catalog, stored, asOf).Size;
 
     /// <summary>The latest test run; null before the first.</summary>
     public long? LastTestRun(long campaignId)
@@ -58,55 +63,76 @@ internal sealed class FamilyReader(Catalog catalog)
     /// <param name="stored">The campaign.</param>
     /// <param name="columns">Its tested experiments.</param>
     /// <param name="testedOnly">Whether the tested ones alone are counted.</param>
-    public FamilyMembers Members(StoredCampaign stored, FamilyColumns columns, bool testedOnly)
+    /// <param name="asOf">The position of the record at which the family is counted; null for today.</param>
+    public FamilyMembers Members(StoredCampaign stored, FamilyColumns columns, bool testedOnly, RecordPosition? asOf = null)
     {
-        FamilyMembers members = Counted(stored, columns, testedOnly);
+        FamilyMembers members = Counted(stored, columns, testedOnly, asOf);
         if (OnlineVerdict.ProcedureOf(stored.Campaign) is null)
         {
             return members;
         }
 
-        Dictionary<long, StreamEntry> entries = StreamEntries.Read(catalog, stored.Id);
+        Dictionary<long, StreamEntry> entries = StreamEntries.Read(catalog, stored.Id, asOf?.LastTestRunId);
         return members with
         {
             Entries = [.. columns.ExperimentIds.ToArray().Select(id => entries.GetValueOrDefault(id))],
-            StandingSurvivors = entries.Values.Count(e => e.Survives == true),
+            StandingSurvivors = StandingSurvivors(stored.Id, entries).Count(),
         };
     }
 
+    /// <summary>Experiments that survive by their standing decisions and are not withdrawn.</summary>
+    public IEnumerable<KeyValuePair<long, StreamEntry>> StandingSurvivors(long campaignId, Dictionary<long, StreamEntry> entries)
+    {
+        var withdrawals = new StandingWithdrawals(catalog, campaignId);
+        return entries.Where(e => e.Value.Survives == true && !withdrawals.IsWithdrawn(e.Key));
+    }
+
     /// <summary>Draws of the campaign's permutation tests: as many as the strictest threshold of its families asks for.</summary>
-    public int PermutationDrawCount(StoredCampaign stored)
+    /// <param name="stored">The campaign.</param>
+    /// <param name="asOf">The position of the record at which the families are counted; null for today.</param>
+    public int PermutationDrawCount(StoredCampaign stored, RecordPosition? asOf = null)
     {
         Campaign campaign = stored.Campaign;
         if (campaign.JudgedFamilies.Count == 0)
         {
-            return PermutationDraws.Count(campaign.Level, FamilySize(stored.Id));
+            return PermutationDraws.Count(campaign.Level, FamilySize(stored, asOf));
         }
 
-        CampaignVerdict planned = FamilyVerdict.Judge(campaign, Tally(stored, new FamilyColumns(0)).Members(testedOnly: false));
+        CampaignVerdict planned = FamilyVerdict.Judge(campaign, Tally(stored, new FamilyColumns(0), asOf).Members(testedOnly: false));
         return PermutationDraws.Count(planned.Families);
     }
 
-    private FamilyMembers Counted(StoredCampaign stored, FamilyColumns columns, bool testedOnly)
+    private FamilyMembers Counted(StoredCampaign stored, FamilyColumns columns, bool testedOnly, RecordPosition? asOf)
     {
         if (FamilyTally.IsNeeded(stored.Campaign))
         {
-            return Tally(stored, columns).Members(testedOnly);
+            return Tally(stored, columns, asOf).Members(testedOnly);
         }
 
-        FamilyMembers members = FamilyMembers.OneFamily(columns.PMemory, FamilySize(stored.Id));
+        FamilyMembers members = FamilyMembers.OneFamily(columns.PMemory, FamilySize(stored, asOf));
         return testedOnly ? members with { Families = [members.Families[0] with { Size = columns.Count }] } : members;
     }
 
     /// <summary>One scan of the plan, in step with the columns: O(m).</summary>
-    private FamilyTally Tally(StoredCampaign stored, FamilyColumns columns)
+    private FamilyTally Tally(StoredCampaign stored, FamilyColumns columns, RecordPosition? asOf)
     {
+        if (asOf is not null)
+        {
+            return new PastFamily(catalog, stored, asOf).Tally(columns);
+        }
+
         using SqliteStatement select = catalog.Prepare("SELECT id, family, weight, shared_control FROM experiments WHERE campaign_id = ?1 ORDER BY id");
         select.Bind(1, stored.Id);
         var tally = new FamilyTally(stored.Campaign);
+        var withdrawals = new StandingWithdrawals(catalog, stored.Id);
         int next = 0;
         while (select.Read())
         {
+            if (withdrawals.LeavesFamily(select.Integer(0)))
+            {
+                continue;
+            }
+
             bool isTested = next < columns.Count && columns.ExperimentIds[next] == select.Integer(0);
             tally.Add(select.NullableText(1), select.NullableReal(2), select.NullableText(3), isTested ? columns.P[next] : null);
             next += isTested ? 1 : 0;

@@ -9,6 +9,9 @@ namespace Campaigns.Catalog.Results;
 /// <param name="LastWithdrawalId">The latest withdrawal in the catalog; null where there was none.</param>
 internal sealed record RecordPosition(long? LastLoadId, long? LastExclusionId, long? LastAmendmentId, long? LastWithdrawalId)
 {
+    /// <summary>The latest test run of the campaign that a review saw; null where every run counts.</summary>
+    public long? LastTestRunId { get; init; }
+
     /// <summary>The position now. Four look-ups at the ends of keys, and one at the campaign's loads.</summary>
     public static RecordPosition Of(Catalog catalog, long campaignId)
     {

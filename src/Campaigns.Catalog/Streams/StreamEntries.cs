@@ -10,13 +10,16 @@ namespace Campaigns.Catalog.Streams;
 internal static class StreamEntries
 {
     /// <summary>Every entry of a campaign's streams by the key of its experiment; one scan.</summary>
-    public static Dictionary<long, StreamEntry> Read(Catalog catalog, long campaignId) =>
-        Lines(catalog, campaignId).ToDictionary(l => l.ExperimentId, l => l.Entry);
+    /// <param name="catalog">The open catalog.</param>
+    /// <param name="campaignId">The campaign.</param>
+    /// <param name="lastTestRunId">The latest test run whose decisions count, as they were known then; null for all.</param>
+    public static Dictionary<long, StreamEntry> Read(Catalog catalog, long campaignId, long? lastTestRunId = null) =>
+        Lines(catalog, campaignId, lastTestRunId).ToDictionary(l => l.ExperimentId, l => l.Entry);
 
     /// <summary>Every entry of a campaign's streams, stream by stream in the order of the positions.</summary>
-    public static IReadOnlyList<(long ExperimentId, StreamEntry Entry)> Lines(Catalog catalog, long campaignId)
+    public static IReadOnlyList<(long ExperimentId, StreamEntry Entry)> Lines(Catalog catalog, long campaignId, long? lastTestRunId = null)
     {
-        List<StoredEntry> stored = Stored(catalog, campaignId);
+        List<StoredEntry> stored = Stored(catalog, campaignId, lastTestRunId);
         var lines = new List<(long, StreamEntry)>(stored.Count);
         for (int i = 0; i < stored.Count; i++)
         {
@@ -36,16 +39,16 @@ internal static class StreamEntries
     }
 
     /// <summary>The entries as they were stored.</summary>
-    public static List<StoredEntry> Stored(Catalog catalog, long campaignId)
+    public static List<StoredEntry> Stored(Catalog catalog, long campaignId, long? lastTestRunId = null)
     {
         using SqliteStatement select = catalog.Prepare(
             """
             SELECT e.experiment_id, s.number, e.position, e.level, e.registered_at, e.known_count, d.known_order, d.p, d.log_p, d.survives, d.decided_at
             FROM streams s JOIN stream_entries e ON e.stream_id = s.id
-            LEFT JOIN standing_decisions d ON d.stream_id = e.stream_id AND d.position = e.position
+            LEFT JOIN standing_decisions d ON d.stream_id = e.stream_id AND d.position = e.position AND d.test_run_id <= ?2
             WHERE s.campaign_id = ?1 ORDER BY s.number, e.position
             """);
-        select.Bind(1, campaignId);
+        select.Bind(1, campaignId).Bind(2, lastTestRunId ?? long.MaxValue);
         var entries = new List<StoredEntry>();
         while (select.Read())
         {
