@@ -16,6 +16,8 @@ public sealed class Catalog : IDisposable
     private CatalogContext? _context;
     private int _depth;
     private int _recordedChanges;
+    private CancellationToken _stop;
+    private CancellationTokenRegistration _interrupt;
 
     // What the caller has seen of the ledger, where changes are to be refused that others outran; and what it will have seen once the transaction at hand is kept.
     private LedgerHead? _seen;
@@ -59,6 +61,25 @@ public sealed class Catalog : IDisposable
         return new Catalog(SqliteCatalogFile.Open(path), path, clock, actor ?? Actor.OfProcess, seen);
     }
 
+    /// <summary>Opens a catalog that exists for reading alone: not one byte of it, nor of its folder, is written.</summary>
+    /// <inheritdoc cref="Open"/>
+    public static Catalog OpenReadOnly(string path, TimeProvider clock)
+    {
+        ArgumentNullException.ThrowIfNull(path);
+        return On(SqliteCatalogFile.Open(path, SqliteOpenMode.ReadOnly), path, clock, Actor.OfProcess);
+    }
+
+    /// <summary>Opens a catalog for a proof, which names what another program changed in it; every other way of opening refuses such a one.</summary>
+    /// <param name="path">The file.</param>
+    /// <param name="clock">Where instants come from.</param>
+    /// <param name="isReadOnly">Whether not one byte may be written, not even to roll back what was interrupted.</param>
+    /// <exception cref="CatalogException">Missing, unreadable, locked, damaged, of another program, older or newer.</exception>
+    public static Catalog OpenForProof(string path, TimeProvider clock, bool isReadOnly)
+    {
+        ArgumentNullException.ThrowIfNull(path);
+        return On(SqliteCatalogFile.OpenAsItIs(path, isReadOnly ? SqliteOpenMode.ReadOnly : SqliteOpenMode.ReadWrite), path, clock, Actor.OfProcess);
+    }
+
     /// <summary>A catalog on a connection that is open already.</summary>
     internal static Catalog On(SqliteConnection connection, string path, TimeProvider clock, Actor actor) => new(connection, path, clock, actor, null);
 
@@ -73,6 +94,16 @@ public sealed class Catalog : IDisposable
 
         return Open(path, clock, actor, seen);
     }
+
+    /// <summary>Ends what is under way when somebody asks to stop: a statement that runs is interrupted, and no other is begun.</summary>
+    /// <param name="stop">The wish to stop.</param>
+    public void StopOn(CancellationToken stop)
+    {
+        _stop = stop;
+        _interrupt = stop.Register(() => SQLitePCL.raw.sqlite3_interrupt(Connection.Handle));
+    }
+
+    internal void ThrowIfStopped() => _stop.ThrowIfCancellationRequested();
 
     /// <summary>Does a piece of work in one transaction: all of it is kept, or nothing. Inside another one it joins that.</summary>
     /// <remarks>Whatever it changes must have been recorded in the ledger when it ends.</remarks>
@@ -107,7 +138,15 @@ public sealed class Catalog : IDisposable
             return work();
         }
 
-        Run(begin);
+        if (begin == BeginChange)
+        {
+            WriteLock.Begin(Connection, Path, _stop);
+        }
+        else
+        {
+            Run(begin);
+        }
+
         _depth++;
         _recordedChanges = TotalChanges;
         _willHaveSeen = _seen;
@@ -142,17 +181,22 @@ public sealed class Catalog : IDisposable
     /// <inheritdoc/>
     public void Dispose()
     {
+        _interrupt.Dispose();
         _context?.Dispose();
         Connection.Dispose();
     }
 
-    internal SqliteStatement Prepare(string sql) => new(Connection, sql);
+    internal SqliteStatement Prepare(string sql)
+    {
+        ThrowIfStopped();
+        return new SqliteStatement(Connection, sql);
+    }
 
     private int TotalChanges => SQLitePCL.raw.sqlite3_total_changes(Connection.Handle);
 
     private void Run(string sql)
     {
-        using SqliteStatement statement = Prepare(sql);
+        using var statement = new SqliteStatement(Connection, sql);
         statement.Run();
     }
 

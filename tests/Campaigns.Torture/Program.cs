@@ -4,6 +4,11 @@ using Campaigns.Torture;
 
 const string Usage = "usage: Campaigns.Torture full|short [KEY...] [--seed N] [--tries N]";
 string[] words = args;
+if (words is [Campaigns.Torture.Catalogs.Worker.Word, ..])
+{
+    return Campaigns.Torture.Catalogs.Worker.Run(words);
+}
+
 int seed = Number("--seed") ?? 20261201;
 int? tries = Number("--tries");
 if (words.Length == 0 || words[0] is not ("full" or "short"))

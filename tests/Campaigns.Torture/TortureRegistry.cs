@@ -5,10 +5,18 @@ internal static class TortureRegistry
 {
     public static IReadOnlyList<Func<TortureTest>> All { get; } =
     [
+        () => new Catalogs.KillWhileWriting(),
+        () => new Catalogs.KillWhileUpgrading(),
+        () => new Catalogs.FullDisk(),
+        () => new Catalogs.ShutOut(),
+        () => new Catalogs.TwoWriters(),
         () => new Catalogs.TwoEditors(),
         () => new Catalogs.TamperedCells(),
         () => new Catalogs.BlindDamage(),
         () => new Catalogs.ClockWalks(),
+        () => new Catalogs.ForeignFiles(),
+        () => new Catalogs.EarlierSchemas(),
+        () => new Catalogs.BackupWhileWriting(),
         () => new Catalogs.HostileNames(),
         () => new Incoming.DamagedFiles(),
         () => new Incoming.FileForms(),

@@ -40,6 +40,8 @@ internal static class CommandLine
         () => new ExportVerb(),
         () => new LedgerVerb(),
         () => new DashboardVerb(),
+        () => new BackupVerb(),
+        () => new RestoreCheckVerb(),
         () => new UpgradeVerb(),
         () => new CompletionVerb(),
     ];

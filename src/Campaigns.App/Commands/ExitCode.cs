@@ -12,6 +12,6 @@ internal static class ExitCode
     /// <summary>The record is not whole: the ledger, or a digest in it, does not match the catalog.</summary>
     public const int RecordBroken = 5;
 
-    /// <summary>Stopped by the user, as shells know it: 128 and the number of the interrupt signal.</summary>
+    /// <summary>Stopped by Ctrl-C, as shells know it: 128 and the number of the signal. Other signals have their own number.</summary>
     public const int Stopped = 130;
 }

@@ -19,7 +19,7 @@ internal sealed class LedgerVerifyVerb : Verb
 
     public override int Run(Session session)
     {
-        using Catalog.Catalog catalog = session.OpenCatalog();
+        using Catalog.Catalog catalog = session.OpenCatalogForProof();
         LedgerProof proof = new LedgerVerifier(catalog).Verify(session.Typed.GetValue(_head));
         if (session.Format != RowFormat.Table)
         {

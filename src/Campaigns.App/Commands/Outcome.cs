@@ -2,6 +2,7 @@ using Campaigns.App.Output;
 using Campaigns.Catalog;
 using Campaigns.Catalog.Ledger;
 using Campaigns.Catalog.Loading;
+using Campaigns.Catalog.Providers;
 using Campaigns.Domain;
 using Microsoft.Data.Sqlite;
 
@@ -12,6 +13,7 @@ internal static class Outcome
 {
     private const int Busy = 5;
     private const int Locked = 6;
+    private const int Interrupted = 9;
 
     public static int Of(Host host, Func<int> work)
     {
@@ -41,19 +43,23 @@ internal static class Outcome
         {
             return Fail(host, ExitCode.NoCatalog, error.Message);
         }
+        catch (Exception error) when (error is OperationCanceledException || error.GetBaseException() is SqliteException { SqliteErrorCode: Interrupted })
+        {
+            return Fail(host, host.StoppedCode(), "Stopped. Steps that were done are kept; the one that was under way left nothing behind.");
+        }
         catch (Exception error) when (error.GetBaseException() is SqliteException beneath)
         {
             return Fail(host, ExitCode.NoCatalog, beneath.SqliteErrorCode is Busy or Locked
                 ? "The catalog is locked by another program; wait until that one is done, or close it, and try again."
                 : $"The catalog cannot be used: {beneath.Message}");
         }
-        catch (OperationCanceledException)
-        {
-            return Fail(host, ExitCode.Stopped, "Stopped; the step that was under way left nothing behind.");
-        }
         catch (IOException error) when (IsClosedPipe(error))
         {
             return ExitCode.Done;
+        }
+        catch (IOException error) when (FileTrouble.IsDiskFull(error))
+        {
+            return Fail(host, ExitCode.Refused, "The output could not be written: its disk is full. What the catalog holds is as the sentences before say; make room and ask again.");
         }
         catch (Exception error) when (error is IOException or UnauthorizedAccessException)
         {

@@ -46,9 +46,12 @@ internal sealed class Session(Host host, ParseResult typed)
     /// <summary>The head of the ledger that whoever typed the command has seen; null where none was given, or the command changes nothing.</summary>
     private LedgerHead? Seen => Typed.GetValue(SharedOptions.Seen);
 
-    public Catalog.Catalog OpenCatalog() => Catalog.Catalog.Open(CatalogPath, Host.Clock, Actor, Seen);
+    public Catalog.Catalog OpenCatalog() => Stoppable(Catalog.Catalog.Open(CatalogPath, Host.Clock, Actor, Seen));
 
-    public Catalog.Catalog OpenOrCreateCatalog() => Catalog.Catalog.OpenOrCreate(CatalogPath, Host.Clock, Actor, Seen);
+    public Catalog.Catalog OpenOrCreateCatalog() => Stoppable(Catalog.Catalog.OpenOrCreate(CatalogPath, Host.Clock, Actor, Seen));
+
+    /// <summary>Opens the catalog for a proof of it, which also looks at one that somebody changed in ways for which every other command refuses it.</summary>
+    public Catalog.Catalog OpenCatalogForProof() => Stoppable(Catalog.Catalog.OpenForProof(CatalogPath, Host.Clock, isReadOnly: false));
 
     public T Get<T>(Option<T> option) => Typed.GetValue(option)!;
 
@@ -90,6 +93,12 @@ internal sealed class Session(Host host, ParseResult typed)
     }
 
     public void Print(RowTable table) => RowPrinter.Print(Host, Format, table, Typed.GetValue(SharedOptions.Top));
+
+    private Catalog.Catalog Stoppable(Catalog.Catalog catalog)
+    {
+        catalog.StopOn(Host.Cancel);
+        return catalog;
+    }
 
     /// <summary>Prints rows only where a script asked for them; people have read the sentence.</summary>
     public void PrintForScripts(RowTable table)

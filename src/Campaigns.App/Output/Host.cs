@@ -35,11 +35,14 @@ internal sealed class Host
     /// <summary>Asks long work to stop.</summary>
     public CancellationToken Cancel { get; init; }
 
+    /// <summary>What the program ends with when it was asked to stop: 128 and the number of the signal.</summary>
+    public Func<int> StoppedCode { get; init; } = () => Commands.ExitCode.Stopped;
+
     /// <summary>Writes a notice: something that people should know and that changes no result.</summary>
     public void Notice(string sentence) => Error.WriteLine(SafeText.Escape(sentence));
 
     /// <summary>The host of a real process.</summary>
-    public static Host OfProcess(CancellationToken cancel)
+    public static Host OfProcess(Func<int> stoppedCode, CancellationToken cancel)
     {
         bool outIsTerminal = !Console.IsOutputRedirected;
         return new Host
@@ -52,6 +55,7 @@ internal sealed class Host
             ErrorIsTerminal = !Console.IsErrorRedirected,
             Width = outIsTerminal ? TerminalWidth() : RedirectedWidth(Environment.GetEnvironmentVariable("COLUMNS")),
             Cancel = cancel,
+            StoppedCode = stoppedCode,
         };
     }
 

@@ -10,6 +10,7 @@ internal static class RowPrinter
     /// <param name="mostRows">Rows to show to people; 0 for all. Files get all.</param>
     public static void Print(Host host, RowFormat format, RowTable table, int mostRows = TextTable.UsualRows)
     {
+        table = table with { Rows = Stoppable(table.Rows, host.Cancel) };
         switch (format)
         {
             case RowFormat.Csv:
@@ -21,6 +22,16 @@ internal static class RowPrinter
             default:
                 TextTable.Write(table, host, mostRows);
                 break;
+        }
+    }
+
+    /// <summary>A million rows take a while; whoever asks to stop need not wait for the last.</summary>
+    private static IEnumerable<Cell[]> Stoppable(IEnumerable<Cell[]> rows, CancellationToken stop)
+    {
+        foreach (Cell[] row in rows)
+        {
+            stop.ThrowIfCancellationRequested();
+            yield return row;
         }
     }
 }

@@ -92,7 +92,7 @@ public sealed class CampaignExport(Catalog catalog)
         }
         catch (Exception error) when (error is IOException or UnauthorizedAccessException)
         {
-            throw new RefusedException($"The folder '{folder}' cannot be written: {error.Message}");
+            throw new RefusedException($"The folder '{folder}' cannot be written: {Providers.FileTrouble.Reason(error, draft, folder)}");
         }
         finally
         {

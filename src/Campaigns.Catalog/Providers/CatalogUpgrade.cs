@@ -8,14 +8,19 @@ namespace Campaigns.Catalog.Providers;
 /// <remarks>Migrations never run on the live file: killed in the middle, they leave a lock behind for which every later start would wait for ever.</remarks>
 public static class CatalogUpgrade
 {
+    private const string Purpose = "upgrade";
+
     /// <summary>Upgrades a catalog.</summary>
     /// <param name="path">The file.</param>
     /// <param name="migrationsAssembly">Name of the assembly that holds the migrations.</param>
     /// <param name="clock">Where instants come from.</param>
     /// <param name="actor">Who acts; null for the account of the process.</param>
+    /// <param name="keep">A file that does not exist yet, in which the catalog is kept as it was; null to keep none.</param>
+    /// <param name="stop">The wish to stop; heeded until the files are exchanged.</param>
     /// <returns>Whether there was anything to do.</returns>
     /// <exception cref="CatalogException">The file is no catalog, is newer than this program, is in use, or the copy did not pass its checks; the old file stands.</exception>
-    public static bool Run(string path, string migrationsAssembly, TimeProvider clock, Actor? actor = null)
+    /// <exception cref="Campaigns.Domain.RefusedException">The file to keep exists or cannot be written; the old file stands.</exception>
+    public static bool Run(string path, string migrationsAssembly, TimeProvider clock, Actor? actor = null, string? keep = null, CancellationToken stop = default)
     {
         int version = SqliteCatalogFile.ReadVersion(path);
         if (version == SqliteCatalogFile.SchemaVersion)
@@ -28,38 +33,72 @@ public static class CatalogUpgrade
             throw new CatalogException($"The catalog '{path}' was written by a newer version of this program; use that version. The file was not touched.");
         }
 
-        string copy = $"{path}.upgrade-{Environment.ProcessId}";
+        // A link stays a link: what it points to is exchanged.
+        string place = File.ResolveLinkTarget(path, returnFinalTarget: true)?.FullName ?? path;
+        string? copy = null;
         try
         {
-            using SqliteConnection old = SqliteCatalogFile.Connect(path);
+            using SqliteConnection old = SqliteCatalogFile.Connect(place);
 
             // Held to the end, so that nobody writes between the copy and the exchange of the files.
-            SqliteCatalogFile.Execute(old, "BEGIN IMMEDIATE");
-            CopyTo(path, copy);
+            WriteLock.Begin(old, path, stop);
+            DraftFiles.RemoveAbandoned(place, held: Purpose);
+            using (SqliteConnection reader = SqliteCatalogFile.Connect(place))
+            {
+                // Whoever held the lock before may have exchanged the file: then the lock at hand is one on a file that nobody sees any more.
+                if (Version(reader) != version)
+                {
+                    return Run(path, migrationsAssembly, clock, actor, keep, stop);
+                }
+
+                using CancellationTokenRegistration interrupt = stop.Register(() => SQLitePCL.raw.sqlite3_interrupt(reader.Handle));
+                if (keep is not null)
+                {
+                    BackupWriter.Write(reader, path, keep, replace: false);
+                }
+
+                copy = DraftFiles.Name(place, Purpose);
+                BackupWriter.CopyTo(reader, copy);
+            }
+
+            stop.ThrowIfCancellationRequested();
             Migrate(copy, migrationsAssembly);
             Record(copy, version, clock, actor);
-            File.Move(copy, path, overwrite: true);
+            KeepPermissions(place, copy);
+            stop.ThrowIfCancellationRequested();
+            DraftFiles.Place(copy, place, overwrite: true);
             return true;
         }
         catch (SqliteException error)
         {
             throw SqliteErrors.Translate(error.SqliteExtendedErrorCode, error.Message, path, error);
         }
+        catch (Exception error) when (error is IOException or UnauthorizedAccessException)
+        {
+            throw new CatalogException($"The catalog '{path}' was not upgraded, and is as it was: {FileTrouble.Reason(error, copy, path)}", error);
+        }
         finally
         {
-            File.Delete(copy);
-            File.Delete(copy + "-journal");
+            if (copy is not null)
+            {
+                DraftFiles.Remove(copy);
+            }
         }
     }
 
-    private static void CopyTo(string path, string copy)
+    /// <summary>Through the connection, not through a file of its own: closing any other handle on a file would give up this process's locks on it.</summary>
+    private static int Version(SqliteConnection connection)
     {
-        File.Delete(copy);
-        using SqliteConnection reader = SqliteCatalogFile.Connect(path);
-        using SqliteCommand vacuum = reader.CreateCommand();
-        vacuum.CommandText = "VACUUM INTO $copy";
-        vacuum.Parameters.AddWithValue("$copy", copy);
-        vacuum.ExecuteNonQuery();
+        using var version = new SqliteStatement(connection, "PRAGMA user_version");
+        return version.Read() ? (int)version.Integer(0) : 0;
+    }
+
+    private static void KeepPermissions(string place, string copy)
+    {
+        if (!OperatingSystem.IsWindows())
+        {
+            File.SetUnixFileMode(copy, File.GetUnixFileMode(place));
+        }
     }
 
     private static void Migrate(string copy, string migrationsAssembly)
@@ -95,7 +134,7 @@ public static class CatalogUpgrade
 #pragma warning restore CA2100
         if (command.ExecuteScalar() as string != answer)
         {
-            throw new CatalogException($"The upgraded copy '{copy}' did not pass its checks; the catalog itself was not touched.");
+            throw new CatalogException($"The upgraded copy of the catalog did not pass its checks ({pragma} of '{copy}'); the catalog itself was not touched.");
         }
     }
 }

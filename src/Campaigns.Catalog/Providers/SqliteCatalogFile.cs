@@ -32,8 +32,6 @@ internal static class SqliteCatalogFile
         "PRAGMA journal_mode = DELETE",
     ];
 
-    private static int _drafts;
-
     private static ReadOnlySpan<byte> Signature => "SQLite format 3\0"u8;
 
     /// <summary>One connection is used by one thread at a time, so SQLite need not lock itself at every call.</summary>
@@ -45,7 +43,24 @@ internal static class SqliteCatalogFile
 
     /// <summary>Opens a catalog that exists and is of this program's schema; every other file is left as it is.</summary>
     /// <exception cref="CatalogException">Missing, unreadable, foreign, older, newer or damaged.</exception>
-    public static SqliteConnection Open(string path)
+    public static SqliteConnection Open(string path, SqliteOpenMode mode = SqliteOpenMode.ReadWrite)
+    {
+        SqliteConnection connection = OpenAsItIs(path, mode);
+        try
+        {
+            SchemaFingerprint.Demand(connection, path);
+            return connection;
+        }
+        catch
+        {
+            connection.Dispose();
+            throw;
+        }
+    }
+
+    /// <summary>Opens a catalog of this program's schema by its header alone; for the proofs, which name what was changed in it.</summary>
+    /// <exception cref="CatalogException">Missing, unreadable, foreign, older, newer or damaged.</exception>
+    public static SqliteConnection OpenAsItIs(string path, SqliteOpenMode mode)
     {
         int version = ReadVersion(path);
         if (version > SchemaVersion)
@@ -58,22 +73,22 @@ internal static class SqliteCatalogFile
             throw new CatalogException($"The catalog '{path}' was written by an older version of this program (schema {version}, this program writes {SchemaVersion}); run 'campaigns upgrade' to bring it up to date. The file was not touched.");
         }
 
-        return Connect(path);
+        return Connect(path, mode);
     }
 
     /// <summary>Creates an empty catalog: a complete file is made beside the place and then moved there, so that nobody ever sees half a catalog. Where somebody else was quicker, theirs stays.</summary>
     /// <exception cref="CatalogException">The folder cannot be written.</exception>
     public static void Create(string path)
     {
-        string draft = FormattableString.Invariant($"{path}.new-{Environment.ProcessId}-{Interlocked.Increment(ref _drafts)}");
         if (!Directory.Exists(Path.GetDirectoryName(Path.GetFullPath(path))))
         {
             throw new CatalogException($"The catalog '{path}' cannot be created: its folder is not there. Make the folder, or name another with --catalog.");
         }
 
+        DraftFiles.RemoveAbandoned(path);
+        string draft = DraftFiles.Name(path, "new");
         try
         {
-            File.Delete(draft);
             using (var connection = new SqliteConnection(ConnectionString(draft, SqliteOpenMode.ReadWriteCreate)))
             {
                 connection.Open();
@@ -81,7 +96,7 @@ internal static class SqliteCatalogFile
                 Execute(connection, ReadSchema());
             }
 
-            File.Move(draft, path, overwrite: false);
+            DraftFiles.Place(draft, path, overwrite: false);
         }
         catch (IOException) when (File.Exists(path))
         {
@@ -92,14 +107,11 @@ internal static class SqliteCatalogFile
         }
         catch (Exception error) when (error is IOException or UnauthorizedAccessException)
         {
-            throw new CatalogException($"The catalog '{path}' cannot be created: {error.Message}", error);
+            throw new CatalogException($"The catalog '{path}' cannot be created: {FileTrouble.Reason(error, draft, path)}", error);
         }
         finally
         {
-            if (File.Exists(draft))
-            {
-                File.Delete(draft);
-            }
+            DraftFiles.Remove(draft);
         }
     }
 
@@ -113,10 +125,10 @@ internal static class SqliteCatalogFile
         return connection;
     }
 
-    /// <summary>Connects with the settings of every catalog, whatever its schema.</summary>
-    public static SqliteConnection Connect(string path)
+    /// <summary>Connects with the settings of every catalog, whatever its schema. A file that cannot be written is opened for reading.</summary>
+    public static SqliteConnection Connect(string path, SqliteOpenMode mode = SqliteOpenMode.ReadWrite)
     {
-        var connection = new SqliteConnection(ConnectionString(path, SqliteOpenMode.ReadWrite));
+        var connection = new SqliteConnection(ConnectionString(path, mode));
         try
         {
             connection.Open();
@@ -152,7 +164,7 @@ internal static class SqliteCatalogFile
         }
         catch (Exception error) when (error is IOException or UnauthorizedAccessException)
         {
-            throw new CatalogException($"The catalog '{path}' cannot be read: {(Directory.Exists(path) ? "it is a folder." : error.Message)}", error);
+            throw new CatalogException($"The catalog '{path}' cannot be read: {(Directory.Exists(path) ? "it is a folder." : FileTrouble.Reason(error))}", error);
         }
 
         if (length < HeaderLength || !header[..Signature.Length].SequenceEqual(Signature)
@@ -166,7 +178,8 @@ internal static class SqliteCatalogFile
             throw new CatalogException($"The catalog '{path}' was switched to a write-ahead log by another program, so that its file alone may not be all of it; switch it back there (PRAGMA journal_mode = DELETE) and close that program. The file was not touched.");
         }
 
-        return BinaryPrimitives.ReadInt32BigEndian(header[60..]);
+        int version = BinaryPrimitives.ReadInt32BigEndian(header[60..]);
+        return version >= 0 ? version : throw new CatalogException($"The file '{path}' is no catalog of this program: it says that it is of schema {version}. It was not touched.");
     }
 
     /// <summary>Runs a fixed text of one or more statements.</summary>

@@ -47,7 +47,12 @@ public sealed class OpeningTests
     [InlineData("PRAGMA user_version = 5", "newer version")]
     [InlineData("PRAGMA user_version = 2147483647", "newer version")]
     [InlineData("PRAGMA user_version = 0", "older version")]
+    [InlineData("PRAGMA user_version = -1", "is no catalog")]
     [InlineData("PRAGMA journal_mode = WAL", "write-ahead log")]
+    [InlineData("ALTER TABLE campaigns ADD COLUMN unknown TEXT", "table campaigns is not as this program made it")]
+    [InlineData("CREATE INDEX mine ON campaigns (title)", "index mine is not this program's")]
+    [InlineData("DROP TABLE withdrawals", "table withdrawals is missing")]
+    [InlineData("INSERT INTO \"__EFMigrationsHistory\" VALUES ('20990101000000_Later', '99')", "list of migrations")]
     public void A_database_that_is_not_this_programs_is_refused_and_left_as_it_is(string change, string reason)
     {
         using TestFolder folder = WithCatalog();
@@ -120,6 +125,36 @@ public sealed class OpeningTests
             await Task.WhenAll(openers);
             Assert.Equal([Name], folder.Files);
         }
+    }
+
+    [Fact]
+    public void What_others_keep_beside_the_tables_is_no_harm()
+    {
+        using TestFolder folder = WithCatalog();
+        Raw.Execute(folder[Name], "CREATE TABLE notes (text TEXT); CREATE VIEW titles AS SELECT title FROM campaigns");
+        Catalog.Open(folder[Name], TimeProvider.System).Dispose();
+    }
+
+    [Fact]
+    public void The_fingerprint_is_that_of_the_schema()
+    {
+        using SqliteConnection fresh = SqliteCatalogFile.InMemory();
+        Assert.Equal(SchemaFingerprint.Expected, SchemaFingerprint.Of(fresh));
+        Raw.Execute(fresh, "DROP INDEX IF EXISTS none; ALTER TABLE loads ADD COLUMN unknown TEXT");
+        Assert.NotEqual(SchemaFingerprint.Expected, SchemaFingerprint.Of(fresh));
+    }
+
+    [Fact]
+    public void Leftovers_of_processes_that_are_gone_are_removed_and_those_of_living_ones_stay()
+    {
+        using var folder = new TestFolder();
+        using System.Diagnostics.Process gone = System.Diagnostics.Process.Start(new System.Diagnostics.ProcessStartInfo("dotnet", "--version") { RedirectStandardOutput = true })!;
+        gone.WaitForExit();
+        string[] stay = [FormattableString.Invariant($"{Name}.draft-backup-{Environment.ProcessId}-7"), $"{Name}.draft-2024-1-1", $"{Name}.draft-new-x-1", $"{Name}.new-1"];
+        string[] go = [FormattableString.Invariant($"{Name}.draft-new-{gone.Id}-1"), FormattableString.Invariant($"{Name}.draft-upgrade-{gone.Id}-2-journal")];
+        Array.ForEach([.. stay, .. go], file => File.WriteAllText(folder[file], ""));
+        Catalog.OpenOrCreate(folder[Name], TimeProvider.System).Dispose();
+        Assert.Equal([.. new[] { Name }.Concat(stay).Order(StringComparer.Ordinal)], folder.Files);
     }
 
     [Fact]

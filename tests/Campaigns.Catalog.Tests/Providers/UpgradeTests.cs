@@ -22,7 +22,7 @@ public sealed class UpgradeTests
     {
         using TestFolder folder = Older(content);
         Assert.Throws<CatalogException>(() => Catalog.Open(folder[Name], TimeProvider.System));
-        Assert.True(CatalogUpgrade.Run(folder[Name], Migrations, TimeProvider.System));
+        Assert.True(CatalogUpgrade.Run(folder[Name], Migrations, TimeProvider.System, stop: TestContext.Current.CancellationToken));
         Assert.Equal([Name], folder.Files);
         using (Catalog catalog = Catalog.Open(folder[Name], TimeProvider.System))
         {
@@ -33,7 +33,7 @@ public sealed class UpgradeTests
             Assert.Equal(content.Length > 0 ? ["kept"] : [], content.Length > 0 ? Raw.Rows(catalog.Connection, "SELECT text FROM notes") : []);
         }
 
-        Assert.False(CatalogUpgrade.Run(folder[Name], Migrations, TimeProvider.System));
+        Assert.False(CatalogUpgrade.Run(folder[Name], Migrations, TimeProvider.System, stop: TestContext.Current.CancellationToken));
     }
 
     [Fact]
@@ -47,7 +47,7 @@ public sealed class UpgradeTests
             before = Facts(old);
         }
 
-        Assert.True(CatalogUpgrade.Run(folder[Name], Migrations, TimeProvider.System));
+        Assert.True(CatalogUpgrade.Run(folder[Name], Migrations, TimeProvider.System, stop: TestContext.Current.CancellationToken));
         using Catalog catalog = Catalog.Open(folder[Name], TimeProvider.System);
         Assert.Equal(before, Facts(catalog.Connection));
         CampaignStanding standing = new StandingReader(catalog).Read("published-classics");
@@ -71,7 +71,7 @@ public sealed class UpgradeTests
             before = Facts(old);
         }
 
-        Assert.True(CatalogUpgrade.Run(folder[Name], Migrations, TimeProvider.System));
+        Assert.True(CatalogUpgrade.Run(folder[Name], Migrations, TimeProvider.System, stop: TestContext.Current.CancellationToken));
         using Catalog catalog = Catalog.Open(folder[Name], TimeProvider.System);
         Assert.Equal(before, Facts(catalog.Connection));
         CampaignStanding standing = new StandingReader(catalog).Read("published-designs");
@@ -96,7 +96,7 @@ public sealed class UpgradeTests
             beforeThem = OfSchema3(old);
         }
 
-        Assert.True(CatalogUpgrade.Run(folder[Name], Migrations, TimeProvider.System));
+        Assert.True(CatalogUpgrade.Run(folder[Name], Migrations, TimeProvider.System, stop: TestContext.Current.CancellationToken));
         using Catalog catalog = Catalog.Open(folder[Name], TimeProvider.System);
         Assert.Equal(before, Facts(catalog.Connection));
         Assert.Equal(beforeThem, OfSchema3(catalog.Connection));
@@ -121,7 +121,7 @@ public sealed class UpgradeTests
     public void Reviews_of_older_catalogs_come_out_of_their_record_to_the_byte(string fixture, string code, int reviews)
     {
         using TestFolder folder = Unpacked(fixture);
-        Assert.True(CatalogUpgrade.Run(folder[Name], Migrations, TimeProvider.System));
+        Assert.True(CatalogUpgrade.Run(folder[Name], Migrations, TimeProvider.System, stop: TestContext.Current.CancellationToken));
         using Catalog catalog = Catalog.Open(folder[Name], TimeProvider.System);
         IReadOnlyList<ReviewRerun.Outcome> outcomes = new ReviewRerun(catalog).Run(code, null, _ => { }, TestContext.Current.CancellationToken);
         Assert.Equal(reviews, outcomes.Count);
@@ -135,7 +135,7 @@ public sealed class UpgradeTests
         using var folder = new TestFolder();
         SqliteCatalogFile.Create(folder[Name]);
         byte[] before = File.ReadAllBytes(folder[Name]);
-        Assert.False(CatalogUpgrade.Run(folder[Name], Migrations, TimeProvider.System));
+        Assert.False(CatalogUpgrade.Run(folder[Name], Migrations, TimeProvider.System, stop: TestContext.Current.CancellationToken));
         Assert.Equal(before, File.ReadAllBytes(folder[Name]));
         Assert.Equal([Name], folder.Files);
     }
@@ -146,21 +146,48 @@ public sealed class UpgradeTests
         // The migration cannot create a table that somebody else made.
         using TestFolder folder = Older("CREATE TABLE reviews (text TEXT);");
         byte[] before = File.ReadAllBytes(folder[Name]);
-        Assert.ThrowsAny<Exception>(() => CatalogUpgrade.Run(folder[Name], Migrations, TimeProvider.System));
+        Assert.ThrowsAny<Exception>(() => CatalogUpgrade.Run(folder[Name], Migrations, TimeProvider.System, stop: TestContext.Current.CancellationToken));
         Assert.Equal(before, File.ReadAllBytes(folder[Name]));
         Assert.Equal([Name], folder.Files);
         Raw.Execute(folder[Name], "DROP TABLE reviews");
-        Assert.True(CatalogUpgrade.Run(folder[Name], Migrations, TimeProvider.System));
+        Assert.True(CatalogUpgrade.Run(folder[Name], Migrations, TimeProvider.System, stop: TestContext.Current.CancellationToken));
     }
 
     [Fact]
     public void A_copy_that_a_killed_upgrade_left_is_no_obstacle()
     {
         using TestFolder folder = Older("");
-        string copy = FormattableString.Invariant($"{folder[Name]}.upgrade-{Environment.ProcessId}");
+        string copy = FormattableString.Invariant($"{folder[Name]}.draft-upgrade-{Environment.ProcessId}-99");
         File.WriteAllText(copy, "half a catalog");
-        Assert.True(CatalogUpgrade.Run(folder[Name], Migrations, TimeProvider.System));
+        File.WriteAllText(copy + "-journal", "half a journal");
+        Assert.True(CatalogUpgrade.Run(folder[Name], Migrations, TimeProvider.System, stop: TestContext.Current.CancellationToken));
         Assert.Equal([Name], folder.Files);
+    }
+
+    [Fact]
+    public void An_upgrade_keeps_the_old_catalog_where_that_is_asked_for_and_never_over_another_file()
+    {
+        using TestFolder folder = Older("CREATE TABLE notes (text TEXT); INSERT INTO notes VALUES ('kept');");
+        byte[] before = File.ReadAllBytes(folder[Name]);
+        File.WriteAllText(folder["taken"], "mine");
+        Assert.Throws<RefusedException>(() => CatalogUpgrade.Run(folder[Name], Migrations, TimeProvider.System, keep: folder["taken"], stop: TestContext.Current.CancellationToken));
+        Assert.Equal("mine", File.ReadAllText(folder["taken"]));
+        Assert.Equal(before, File.ReadAllBytes(folder[Name]));
+        Assert.True(CatalogUpgrade.Run(folder[Name], Migrations, TimeProvider.System, keep: folder["old.db"], stop: TestContext.Current.CancellationToken));
+        Assert.Equal(0, SqliteCatalogFile.ReadVersion(folder["old.db"]));
+        using SqliteConnection old = Raw.Open(folder["old.db"]);
+        Assert.Equal(["kept"], Raw.Rows(old, "SELECT text FROM notes"));
+        Assert.Equal([Name, "old.db", "taken"], folder.Files);
+    }
+
+    [Fact]
+    public void A_link_to_a_catalog_stays_a_link()
+    {
+        using TestFolder folder = Older("");
+        File.CreateSymbolicLink(folder["link.db"], folder[Name]);
+        Assert.True(CatalogUpgrade.Run(folder["link.db"], Migrations, TimeProvider.System, stop: TestContext.Current.CancellationToken));
+        Assert.NotNull(new FileInfo(folder["link.db"]).LinkTarget);
+        Assert.Equal(SqliteCatalogFile.SchemaVersion, SqliteCatalogFile.ReadVersion(folder[Name]));
     }
 
     [Theory]
@@ -172,7 +199,7 @@ public sealed class UpgradeTests
         SqliteCatalogFile.Create(folder[Name]);
         Raw.Execute(folder[Name], change);
         byte[] before = File.ReadAllBytes(folder[Name]);
-        Assert.Contains(reason, Assert.Throws<CatalogException>(() => CatalogUpgrade.Run(folder[Name], Migrations, TimeProvider.System)).Message, StringComparison.Ordinal);
+        Assert.Contains(reason, Assert.Throws<CatalogException>(() => CatalogUpgrade.Run(folder[Name], Migrations, TimeProvider.System, stop: TestContext.Current.CancellationToken)).Message, StringComparison.Ordinal);
         Assert.Equal(before, File.ReadAllBytes(folder[Name]));
         Assert.Equal([Name], folder.Files);
     }
@@ -184,7 +211,7 @@ public sealed class UpgradeTests
         using SqliteConnection other = Raw.Open(folder[Name]);
         Raw.Execute(other, "BEGIN IMMEDIATE");
         byte[] before = File.ReadAllBytes(folder[Name]);
-        Assert.Contains("locked", Assert.Throws<CatalogException>(() => CatalogUpgrade.Run(folder[Name], Migrations, TimeProvider.System)).Message, StringComparison.Ordinal);
+        Assert.Contains("locked", Assert.Throws<CatalogException>(() => CatalogUpgrade.Run(folder[Name], Migrations, TimeProvider.System, stop: TestContext.Current.CancellationToken)).Message, StringComparison.Ordinal);
         Assert.Equal(before, File.ReadAllBytes(folder[Name]));
         Raw.Execute(other, "ROLLBACK");
         Assert.Equal([Name], folder.Files);

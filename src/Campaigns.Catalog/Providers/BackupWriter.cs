@@ -1,0 +1,108 @@
+using Campaigns.Catalog.Ledger;
+using Campaigns.Domain;
+using Microsoft.Data.Sqlite;
+
+namespace Campaigns.Catalog.Providers;
+
+/// <summary>What a backup became.</summary>
+/// <param name="Bytes">Its size.</param>
+/// <param name="Head">The end of its ledger.</param>
+public sealed record BackupSummary(long Bytes, LedgerHead Head);
+
+/// <summary>Makes a consistent copy of a catalog that is in use.</summary>
+/// <remarks>
+/// By VACUUM INTO: one reading transaction sees the catalog as it stands at one moment, whatever others write meanwhile, and every row is read through its tables, so that a damaged page ends the copy with an error.
+/// A copy of pages (SQLite's backup interface) would carry such a page over unseen, and begins anew whenever somebody writes. The catalog is only read: a backup is no change, and has no entry in the ledger.
+/// </remarks>
+public static class BackupWriter
+{
+    private const string Purpose = "backup";
+
+    /// <summary>Writes a backup: beside its place first, then moved there whole.</summary>
+    /// <param name="catalog">The open catalog.</param>
+    /// <param name="target">The file to write.</param>
+    /// <param name="replace">Whether it may take the place of a file that is there.</param>
+    /// <exception cref="RefusedException">The target exists or cannot be written; nothing was left behind.</exception>
+    /// <exception cref="CatalogException">The catalog is locked or damaged; nothing was left behind.</exception>
+    public static BackupSummary Write(Catalog catalog, string target, bool replace)
+    {
+        ArgumentNullException.ThrowIfNull(catalog);
+        catalog.ThrowIfStopped();
+        Write(catalog.Connection, catalog.Path, target, replace);
+        using Catalog copy = Catalog.OpenReadOnly(target, catalog.Clock);
+        return new BackupSummary(new FileInfo(target).Length, new LedgerReader(copy).Head);
+    }
+
+    internal static void Write(SqliteConnection connection, string path, string target, bool replace)
+    {
+        Refuse(path, target, replace);
+        DraftFiles.RemoveAbandoned(target);
+        string draft = DraftFiles.Name(target, Purpose);
+        try
+        {
+            CopyTo(connection, draft);
+            DraftFiles.Place(draft, target, replace);
+        }
+        catch (SqliteException error) when (error.SqliteErrorCode is SQLitePCL.raw.SQLITE_FULL or SQLitePCL.raw.SQLITE_CANTOPEN or SQLitePCL.raw.SQLITE_READONLY or SQLitePCL.raw.SQLITE_IOERR)
+        {
+            string reason = error.SqliteErrorCode == SQLitePCL.raw.SQLITE_FULL ? "the disk is full; make room and try again" : "check the disk, and that you may write to its folder";
+            throw new RefusedException($"The copy '{target}' could not be written: {reason}. Nothing of it was left behind.");
+        }
+        catch (SqliteException error)
+        {
+            throw SqliteErrors.Translate(error.SqliteExtendedErrorCode, error.Message, path, error);
+        }
+        catch (Exception error) when (error is IOException or UnauthorizedAccessException)
+        {
+            throw new RefusedException($"The copy '{target}' could not be written: {FileTrouble.Reason(error, draft, target)} Nothing of it was left behind.");
+        }
+        finally
+        {
+            DraftFiles.Remove(draft);
+        }
+    }
+
+    /// <summary>Copies what a connection sees into a file that does not exist, in one reading transaction.</summary>
+    internal static void CopyTo(SqliteConnection connection, string copy)
+    {
+        using SqliteCommand vacuum = connection.CreateCommand();
+        vacuum.CommandText = "VACUUM INTO $copy";
+        vacuum.Parameters.AddWithValue("$copy", copy);
+        vacuum.ExecuteNonQuery();
+    }
+
+    private static void Refuse(string path, string target, bool replace)
+    {
+        if (Directory.Exists(target))
+        {
+            throw new RefusedException($"'{target}' is a folder; name a file for the copy.");
+        }
+
+        if (!Directory.Exists(Path.GetDirectoryName(Path.GetFullPath(target))))
+        {
+            throw new RefusedException($"The copy '{target}' cannot be written: its folder is not there. Make the folder, or name another.");
+        }
+
+        if (RealPath(target) == RealPath(path))
+        {
+            throw new RefusedException($"'{target}' is the catalog itself; name another file for the copy.");
+        }
+
+        if (File.Exists(target) && !replace)
+        {
+            throw new RefusedException($"'{target}' exists; nothing was written. Name another file, or say --replace.");
+        }
+
+        // SQLite would take it for a journal of the new file, and roll it back into that.
+        if (File.Exists(target + "-journal"))
+        {
+            throw new RefusedException($"Beside '{target}' stands '{Path.GetFileName(target)}-journal', so that a program is at work there or was interrupted; name another file for the copy.");
+        }
+    }
+
+    private static string RealPath(string path)
+    {
+        string full = Path.GetFullPath(path);
+        return File.Exists(full) ? File.ResolveLinkTarget(full, returnFinalTarget: true)?.FullName ?? full : full;
+    }
+}
