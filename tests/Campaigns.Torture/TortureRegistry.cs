@@ -6,5 +6,7 @@ internal static class TortureRegistry
     public static IReadOnlyList<Func<TortureTest>> All { get; } =
     [
         () => new Incoming.NumberForms(),
+        () => new Incoming.Locales(),
+        () => new Outgoing.SameEveryTime(),
     ];
 }
