@@ -8,6 +8,9 @@ namespace Campaigns.Domain;
 /// <remarks>Bounds of confidence for sets that may be chosen after looking at everything; see <see cref="SimesClosedTesting"/>.</remarks>
 public sealed class CampaignBounds
 {
+    /// <summary>The place of an experiment that was withdrawn before any data.</summary>
+    private const int LeftFamily = -1;
+
     private readonly IReadOnlyList<ExperimentResult> _experiments;
     private readonly int[] _members;
     private readonly RankedFamily _family;
@@ -21,10 +24,10 @@ public sealed class CampaignBounds
         int untested = p.Length;
         for (int i = 0; i < _members.Length; i++)
         {
-            _members[i] = experiments[i].P is null ? untested++ : tested++;
+            _members[i] = experiments[i].LeftFamily ? LeftFamily : experiments[i].P is null ? untested++ : tested++;
         }
 
-        _family = RankedFamily.Of(p, experiments.Count);
+        _family = RankedFamily.Of(p, untested);
         Testing = SimesClosedTesting.Of(_family, level, anyDependence);
     }
 
@@ -35,7 +38,7 @@ public sealed class CampaignBounds
     public double Confidence => ConfidenceOf(Testing.Level);
 
     /// <summary>Prepares the bounds of all sets; O(m log m).</summary>
-    /// <param name="experiments">Every planned experiment of the campaign; those without a result count as p = 1.</param>
+    /// <param name="experiments">Every planned experiment of the campaign; those without a result count as p = 1, those that left the family do not count.</param>
     /// <param name="level">One less the confidence.</param>
     /// <param name="anyDependence">Whether the bounds are to hold under any dependence instead of where Simes' inequality holds.</param>
     public static CampaignBounds Of(IReadOnlyList<ExperimentResult> experiments, SignificanceLevel level, bool anyDependence = false)
@@ -49,13 +52,13 @@ public sealed class CampaignBounds
     public static double ConfidenceOf(SignificanceLevel level) =>
         level.Value < 1e-12 ? 1 - level.Value : (double)(1m - (decimal)level.Value);
 
-    /// <summary>The bound of a set of experiments.</summary>
+    /// <summary>The bound of a set of experiments; those that left the family are passed over.</summary>
     /// <param name="indices">Distinct places in the list of experiments, from 0, in any order.</param>
     /// <exception cref="ArgumentException">A place stands twice.</exception>
     public MarkedBound Mark(IReadOnlyCollection<int> indices)
     {
         ArgumentNullException.ThrowIfNull(indices);
-        int[] members = [.. indices.Select(i => _members[i])];
+        int[] members = [.. indices.Select(i => _members[i]).Where(m => m != LeftFamily)];
         return new MarkedBound(members.Length, Testing.RealAtLeast(members), members.Count(m => m >= _family.Count));
     }
 

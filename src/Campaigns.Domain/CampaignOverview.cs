@@ -6,7 +6,7 @@ namespace Campaigns.Domain;
 /// <param name="TestedCount">Experiments with a result.</param>
 /// <param name="UncorrectedCount">Experiments whose own p-value is at most the level.</param>
 /// <param name="SurvivorCount">Experiments that survive the correction.</param>
-/// <param name="AmendedCount">Experiments that received values after they had been tested.</param>
+/// <param name="AmendedCount">Experiments that deviate from their plan.</param>
 /// <param name="LastReview">The latest review; null before the first.</param>
 /// <param name="ResultsSinceReview">Experiments tested after the latest review.</param>
 public sealed record CampaignOverview(
@@ -19,6 +19,15 @@ public sealed record CampaignOverview(
     ReviewHead? LastReview,
     int ResultsSinceReview)
 {
+    /// <summary>Experiments that are withdrawn.</summary>
+    public WithdrawnCounts Withdrawn { get; init; }
+
+    /// <summary>How far the sealed plan was amended.</summary>
+    public AmendedPlan AmendedPlan { get; init; }
+
+    /// <summary>Decisions to withdraw experiments or take them in again, and amendments of the plan, that came after the latest review.</summary>
+    public int DecisionsSinceReview { get; init; }
+
     /// <summary>Experiments whose values were changed after their test (added to, or left out), so that they have no result before a new one.</summary>
     public int AwaitingNewTest { get; init; }
 

@@ -31,6 +31,9 @@ public sealed record CampaignStanding(
         ResultsSinceReview)
     {
         AwaitingNewTest = AwaitingNewTest,
+        Withdrawn = Withdrawn,
+        AmendedPlan = AmendedPlan,
+        DecisionsSinceReview = DecisionsSinceReview,
         Families = Families,
     };
 
@@ -45,6 +48,15 @@ public sealed record CampaignStanding(
         return experiment.Family ?? Families[0];
     }
 
-    /// <summary>Experiments whose values were changed after their test, so that they have no result before a new one.</summary>
+    /// <summary>Experiments that are withdrawn.</summary>
+    public WithdrawnCounts Withdrawn { get; init; }
+
+    /// <summary>How far the sealed plan was amended.</summary>
+    public AmendedPlan AmendedPlan { get; init; }
+
+    /// <summary>Decisions to withdraw experiments or take them in again, and amendments of the plan, that came after the latest review.</summary>
+    public int DecisionsSinceReview { get; init; }
+
+    /// <summary>Experiments whose values were changed after their test, or that were taken in again, so that they have no result before a new one.</summary>
     public int AwaitingNewTest { get; init; }
 }

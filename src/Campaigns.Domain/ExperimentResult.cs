@@ -15,6 +15,9 @@ public sealed record ExperimentResult
     /// <summary>Where the experiment stands.</summary>
     public required ExperimentStatus Status { get; init; }
 
+    /// <summary>Whether it was withdrawn before any data, so that its family does not count it.</summary>
+    public bool LeftFamily { get; init; }
+
     /// <summary>Groups with at least one value.</summary>
     public int GroupCount { get; init; }
 
@@ -69,6 +72,6 @@ public sealed record ExperimentResult
     /// <summary>What came of it as the confirmation of an earlier experiment; null where it confirms none, or was read without its campaign.</summary>
     public Confirmation? Confirmation { get; init; }
 
-    /// <summary>Deviations from the plan: reasons of the amendments by which values came in after the test, values left out, and a test short of the planned values; empty where there are none.</summary>
+    /// <summary>Deviations from the plan: reasons of the amendments by which values came in after the test, values left out, decisions to withdraw it, changes of its sealed plan, and a test short of the planned values; empty where there are none.</summary>
     public IReadOnlyList<string> Amendments { get; init; } = [];
 }

@@ -46,6 +46,9 @@ public enum ExperimentStatus
 
     /// <summary>Tested; a specimen stands in several groups.</summary>
     SpecimenInSeveralGroups,
+
+    /// <summary>Withdrawn: not tested, and without a result that counts where it was tested before.</summary>
+    Withdrawn,
 }
 
 /// <summary>The frozen words and the plain sentences of <see cref="ExperimentStatus"/>.</summary>
@@ -67,6 +70,7 @@ public static class ExperimentStatusWords
         (ExperimentStatus.DisconnectedBlocks, "blocks-disconnected", "no test: it compares within blocks, and the blocks do not connect all groups with each other"),
         (ExperimentStatus.SpecimenInSeveralBlocks, "specimen-in-several-blocks", "no test: it compares within blocks, and readings of one specimen stand in several of them"),
         (ExperimentStatus.SpecimenInSeveralGroups, "specimen-in-several-groups", "no test: readings of one specimen stand in several groups, while an experimental unit belongs to one"),
+        (ExperimentStatus.Withdrawn, "withdrawn", "withdrawn, so that it has no result that counts"),
     ];
 
     /// <summary>The frozen word of a status.</summary>
@@ -106,6 +110,6 @@ public static class ExperimentStatusWords
         _ => throw new ArgumentOutOfRangeException(nameof(reason), reason, "No status for this reason."),
     };
 
-    /// <summary>Whether the experiment's test was run, with or without a result; it is then closed to more data.</summary>
-    public static bool WasTested(this ExperimentStatus status) => status >= ExperimentStatus.Tested;
+    /// <summary>Whether the experiment's test was run, with or without a result, and stands; it is then closed to more data.</summary>
+    public static bool WasTested(this ExperimentStatus status) => status is >= ExperimentStatus.Tested and not ExperimentStatus.Withdrawn;
 }

@@ -20,12 +20,12 @@ public sealed record FamilyMembers
     /// <summary>In a campaign judged as experiments arrive, for each p-value the experiment's place in its stream; else empty.</summary>
     public IReadOnlyList<StreamEntry?> Entries { get; init; } = [];
 
-    /// <summary>Standing decisions that an experiment survives, those included whose values were changed afterwards.</summary>
+    /// <summary>Standing decisions that an experiment survives, those included whose values were changed afterwards, those not that were withdrawn.</summary>
     public int StandingSurvivors { get; init; }
 
     /// <summary>The members that experiments in memory make up, those without a p-value counted too.</summary>
     /// <param name="campaign">Its families.</param>
-    /// <param name="experiments">Every experiment of the campaign; the p-values keep their order.</param>
+    /// <param name="experiments">Every experiment of the campaign; the p-values keep their order. Those that left their family are not counted.</param>
     public static FamilyMembers Of(Campaign campaign, IReadOnlyList<ExperimentResult> experiments)
     {
         ArgumentNullException.ThrowIfNull(campaign);
@@ -34,7 +34,7 @@ public sealed record FamilyMembers
         return OnlineVerdict.ProcedureOf(campaign) is null ? members : members with
         {
             Entries = [.. experiments.Where(e => e.P is not null).Select(e => e.Entry)],
-            StandingSurvivors = experiments.Count(e => e.Entry?.Survives == true),
+            StandingSurvivors = experiments.Count(e => e.Entry?.Survives == true && e.Status != ExperimentStatus.Withdrawn),
         };
     }
 
@@ -47,11 +47,11 @@ public sealed record FamilyMembers
     {
         if (!FamilyTally.IsNeeded(campaign))
         {
-            return OneFamily(experiments.Where(e => e.P is not null).Select(e => e.P!.Value).ToArray(), experiments.Count);
+            return OneFamily(experiments.Where(e => e.P is not null).Select(e => e.P!.Value).ToArray(), experiments.Count(e => !e.LeftFamily));
         }
 
         var tally = new FamilyTally(campaign);
-        foreach (ExperimentResult experiment in experiments)
+        foreach (ExperimentResult experiment in experiments.Where(e => !e.LeftFamily))
         {
             tally.Add(experiment.Plan.Family, experiment.Plan.Weight, experiment.Plan.SharedControl, experiment.P);
         }

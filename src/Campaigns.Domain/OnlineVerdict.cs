@@ -104,6 +104,11 @@ public static class OnlineVerdict
         ArgumentNullException.ThrowIfNull(experiment);
         ArgumentNullException.ThrowIfNull(family);
         StreamEntry? entry = experiment.Entry;
+        if (experiment.Status == ExperimentStatus.Withdrawn)
+        {
+            return Withdrawn(experiment, entry, family);
+        }
+
         bool neverGaveP = entry?.P is null && experiment.P is null;
         return experiment with
         {
@@ -116,4 +121,15 @@ public static class OnlineVerdict
                 : experiment.Amendments,
         };
     }
+    /// <summary>A decision is never revoked, but an experiment that was withdrawn is no survivor.</summary>
+    private static ExperimentResult Withdrawn(ExperimentResult experiment, StreamEntry? entry, FamilyStanding family) => experiment with
+    {
+        Family = family,
+        GivenLevel = entry?.Level,
+        AdjustedP = null,
+        Survives = null,
+        Amendments = entry?.Survives is { } survives
+            ? [.. experiment.Amendments, $"its decision ({(survives ? "survives" : "does not survive")}) stays in the stream, but it does not count while it is withdrawn"]
+            : experiment.Amendments,
+    };
 }

@@ -17,7 +17,7 @@ public static class Replicability
     /// <param name="campaign">Level and correction. Where it is judged by a procedure that decides as experiments arrive, Holm's correction holds the familywise error rate and Benjamini and Hochberg's the false discovery rate of its confirmations.</param>
     /// <param name="experiments">Its experiments.</param>
     /// <param name="earlier">For each of them the experiment that it confirms; null where it confirms none.</param>
-    /// <returns>The same experiments in the same order. O(m log m).</returns>
+    /// <returns>The same experiments in the same order. One that was withdrawn before any data is no confirmation any more; one that was withdrawn after its data came counts as p = 1. O(m log m).</returns>
     public static IReadOnlyList<ExperimentResult> Apply(Campaign campaign, IReadOnlyList<ExperimentResult> experiments, IReadOnlyList<EarlierExperiment?> earlier)
     {
         ArgumentNullException.ThrowIfNull(campaign);
@@ -61,7 +61,7 @@ public static class Replicability
         int size = earlier.Count;
         foreach (var family in earlier.GroupBy(e => (e.Campaign, e.Family)).Where(f => f.Any(e => e.WasTestedBefore)))
         {
-            size += Math.Max(0, family.Max(e => e.FamilySize) - family.Select(e => e.Experiment).Distinct(StringComparer.Ordinal).Count());
+            size += Math.Max(0, family.Max(e => e.FamilySize) - family.Where(e => e.IsInFamily).Select(e => e.Experiment).Distinct(StringComparer.Ordinal).Count());
         }
 
         return size;

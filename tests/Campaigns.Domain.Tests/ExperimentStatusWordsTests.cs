@@ -7,7 +7,7 @@ public sealed class ExperimentStatusWordsTests
     /// <summary>Catalogs and scripts hold these words: they never change, and new ones are only added.</summary>
     private static readonly string[] Frozen =
         ["planned", "incomplete", "ready", "tested", "too-few-groups", "no-replication", "constant-response", "zero-within-variance",
-         "group-of-one", "constant-group", "block-not-recorded", "blocks-disconnected", "specimen-in-several-blocks", "specimen-in-several-groups"];
+         "group-of-one", "constant-group", "block-not-recorded", "blocks-disconnected", "specimen-in-several-blocks", "specimen-in-several-groups", "withdrawn"];
 
     [Fact]
     public void The_words_are_frozen_and_read_back()
@@ -24,7 +24,7 @@ public sealed class ExperimentStatusWordsTests
 
     [Fact]
     public void Only_a_test_that_was_run_closes_an_experiment() => Assert.Equal(
-        [ExperimentStatus.Planned, ExperimentStatus.Incomplete, ExperimentStatus.Ready],
+        [ExperimentStatus.Planned, ExperimentStatus.Incomplete, ExperimentStatus.Ready, ExperimentStatus.Withdrawn],
         Enum.GetValues<ExperimentStatus>().Where(s => !s.WasTested()));
 
     [Fact]

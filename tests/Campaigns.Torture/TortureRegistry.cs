@@ -7,6 +7,7 @@ internal static class TortureRegistry
     [
         () => new Incoming.NumberForms(),
         () => new Incoming.Locales(),
+        () => new Outgoing.FamilyBookkeeping(),
         () => new Outgoing.SameEveryTime(),
     ];
 }

@@ -67,6 +67,11 @@ internal sealed class BoundVerb : Verb
                 throw new RefusedException($"The campaign '{standing.Campaign.Code}' has no experiment '{name.Key}'; {hint}.");
             }
 
+            if (standing.Experiments[place].LeftFamily)
+            {
+                throw new RefusedException($"The experiment '{name.Key}' was withdrawn before any data and is not in the family of '{standing.Campaign.Code}' any more, so that no bound speaks of it; leave it out.");
+            }
+
             if (name.Count() > 1)
             {
                 session.Host.Notice($"Note: '{name.Key}' is named more than once; it counts once.");
@@ -90,7 +95,7 @@ internal sealed class BoundVerb : Verb
             [
                 [
                     Cell.Whole(bound.Marked), Cell.Whole(bound.RealAtLeast), Cell.Whole(bound.FalseAtMost), Cell.Setting(bounds.Confidence), Cell.Setting(bounds.Testing.Level.Value),
-                    Cell.Whole(standing.Experiments.Count), Cell.Text(DependenceWord(bounds)), Cell.Whole(bound.Untested),
+                    Cell.Whole(standing.FamilySize), Cell.Text(DependenceWord(bounds)), Cell.Whole(bound.Untested),
                 ],
             ])
         {
@@ -107,7 +112,7 @@ internal sealed class BoundVerb : Verb
         bounds.Curve().Select(row => (Cell[])
         [
             Cell.Whole(row.Bound.Marked), Cell.Text(row.Experiment.Plan.Code), Cell.P(row.Experiment.P), Cell.Whole(row.Bound.RealAtLeast), Cell.Whole(row.Bound.FalseAtMost),
-            Cell.Setting(bounds.Confidence), Cell.Setting(bounds.Testing.Level.Value), Cell.Whole(standing.Experiments.Count), Cell.Text(DependenceWord(bounds)), Cell.Truth(row.Experiment.Survives),
+            Cell.Setting(bounds.Confidence), Cell.Setting(bounds.Testing.Level.Value), Cell.Whole(standing.FamilySize), Cell.Text(DependenceWord(bounds)), Cell.Truth(row.Experiment.Survives),
         ]))
     {
         Above = [FormattableString.Invariant($"{standing.Campaign.Code}: the k smallest of {standing.TestedCount} p-values, for every k")],

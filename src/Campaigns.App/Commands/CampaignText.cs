@@ -57,12 +57,22 @@ internal static class CampaignText
         return lines;
     }
 
-    /// <summary>A line on experiments that deviate from their plan; empty where none does.</summary>
+    /// <summary>Lines on experiments that were withdrawn or deviate from their plan; empty where none does.</summary>
     public static IEnumerable<string> Deviations(CampaignOverview standing)
     {
+        foreach (string line in WithdrawalText.Lines(standing.Withdrawn, standing.FamilySize))
+        {
+            yield return line;
+        }
+
+        if (standing.AmendedPlan is { Amendments: > 0 } plan)
+        {
+            yield return FormattableString.Invariant($"The sealed plan was amended {plan.Amendments} time(s): {plan.Added} experiment(s) added, {plan.Changed} changed; 'campaigns show {standing.Campaign.Code}' tells what, who, when and why.");
+        }
+
         if (standing.AmendedCount > 0)
         {
-            yield return FormattableString.Invariant($"Deviations: {standing.AmendedCount} experiment(s) received values after they had been tested, had values left out, or were tested short of their plan; 'campaigns show {standing.Campaign.Code} EXPERIMENT' gives the reason.");
+            yield return FormattableString.Invariant($"Deviations: {standing.AmendedCount} experiment(s) received values after they had been tested, had values left out, were withdrawn at some time, were added or changed by an amendment of the sealed plan, or were tested short of their plan; 'campaigns show {standing.Campaign.Code} EXPERIMENT' gives the reason.");
         }
     }
 
@@ -82,7 +92,9 @@ internal static class CampaignText
 
         string which = FormattableString.Invariant($"Review {review.Number} of {review.At:yyyy-MM-dd HH:mm} UTC{(review.IsInterim ? " (interim: tested experiments only)" : "")}");
         return standing.AwaitingNewTest > 0
-                ? FormattableString.Invariant($"{which} is out of date: the values of {standing.AwaitingNewTest} experiment(s) were changed after their test; 'campaigns test {standing.Campaign.Code}' and 'campaigns review {standing.Campaign.Code}' take them in.")
+                ? FormattableString.Invariant($"{which} is out of date: the values of {standing.AwaitingNewTest} experiment(s) were changed after their test, or they were taken in again; 'campaigns test {standing.Campaign.Code}' and 'campaigns review {standing.Campaign.Code}' take them in.")
+            : standing.DecisionsSinceReview > 0
+                ? FormattableString.Invariant($"{which} is out of date: {standing.DecisionsSinceReview} decision(s) to withdraw experiments, to take them in again or to amend the plan came after it; 'campaigns review {standing.Campaign.Code}' takes a new one.")
             : standing.ResultsSinceReview > 0
                 ? FormattableString.Invariant($"{which} is out of date: {standing.ResultsSinceReview} result(s) came after it; 'campaigns review {standing.Campaign.Code}' takes a new one.")
             : review.IsInterim && review.FamilySize != standing.FamilySize

@@ -34,6 +34,7 @@ internal static class CommandLine
         () => new BoundVerb(),
         () => new OverallVerb(),
         () => new ExcludeVerb(),
+        () => new WithdrawVerb(),
         () => new ListVerb(),
         () => new ShowVerb(),
         () => new ExportVerb(),

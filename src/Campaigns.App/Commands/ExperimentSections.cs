@@ -83,7 +83,7 @@ internal static class ExperimentSections
             new("values", "values"), new("test", "test"), new("statistic", "statistic", true), new("df1", "df1", true), new("df2", "df2", true), new("p", "p", true), new("outcome", "note"),
         ],
         [
-            .. detail.Outcome is { } outcome ? [Test(detail.OutcomeWithExcluded is null ? "all" : "without the excluded", detail.Result.Plan.Test, outcome, detail.Result.Status.WasTested() ? "the planned test" : "not in force before a new test")] : (Cell[][])[],
+            .. detail.Outcome is { } outcome ? [Test(detail.OutcomeWithExcluded is null ? "all" : "without the excluded", detail.Result.Plan.Test, outcome, detail.Result.Status.WasTested() ? "the planned test" : detail.Result.Status == ExperimentStatus.Withdrawn ? "withdrawn: does not count" : "not in force before a new test")] : (Cell[][])[],
             .. detail.OutcomeWithExcluded is { } all ? [Test("with the excluded", detail.Result.Plan.Test, all, "for comparison")] : (Cell[][])[],
             .. detail.Analysis.Beside is { } beside ? [Test(detail.OutcomeWithExcluded is null ? "all" : "without the excluded", "welch", beside, "for comparison, because spreads differ")] : (Cell[][])[],
         ]);

@@ -86,7 +86,7 @@ internal static class ExperimentShow
         ExperimentResult result = detail.Result;
         if (result.P is not { } p)
         {
-            yield return ExperimentWording.NoResult;
+            yield return result.LeftFamily ? WithdrawalText.NotCounted : ExperimentWording.NoResult;
         }
         else
         {

@@ -28,7 +28,7 @@ internal sealed class OverallVerb : Verb
     private static RowTable Table(CampaignStanding standing)
     {
         PValue[] p = [.. standing.Experiments.Where(e => e.P is not null).Select(e => e.P!.Value)];
-        int planned = standing.Experiments.Count;
+        int planned = standing.FamilySize;
         return new RowTable(
             [
                 new("test", "key"), new("statistic", "statistic", true), new("p", "p", true), new("assumes", null), new("source", null),

@@ -24,7 +24,8 @@ internal static class PooledTable
     {
         ExperimentResult[] all = [.. standings.SelectMany(s => s.Experiments)];
         PValue[] p = [.. all.Where(e => e.P is not null).Select(e => e.P!.Value)];
-        bool[] pooled = [.. correction.Adjust(RankedFamily.Of(p, all.Length)).Select(level.Rejects)];
+        int family = all.Count(e => !e.LeftFamily);
+        bool[] pooled = [.. correction.Adjust(RankedFamily.Of(p, family)).Select(level.Rejects)];
         CampaignBounds bounds = CampaignBounds.Of(all, level);
         var rows = new List<Cell[]>();
         int first = 0;
@@ -48,7 +49,7 @@ internal static class PooledTable
 
         return new RowTable(Columns, rows)
         {
-            Above = standings.Count == 0 ? [] : [FormattableString.Invariant($"All campaigns as one family of {all.Length} ({p.Length} with a result): {correction.Name} at {level}. An exploration: the sealed correction of each campaign alone decides what survives.")],
+            Above = standings.Count == 0 ? [] : [FormattableString.Invariant($"All campaigns as one family of {family} ({p.Length} with a result): {correction.Name} at {level}. An exploration: the sealed correction of each campaign alone decides what survives.")],
             Below =
             [
                 $"Pooled: what would survive. {correction.Guarantee}",
@@ -78,7 +79,7 @@ internal static class PooledTable
 
         return
         [
-            Cell.Text(standing.Campaign.Code), Cell.Whole(standing.Experiments.Count), Cell.Whole(standing.TestedCount), Cell.Text(standing.Campaign.Correction), Cell.Setting(standing.Campaign.Level.Value),
+            Cell.Text(standing.Campaign.Code), Cell.Whole(standing.FamilySize), Cell.Whole(standing.TestedCount), Cell.Text(standing.Campaign.Correction), Cell.Setting(standing.Campaign.Level.Value),
             Cell.Whole(standing.SurvivorCount), Cell.Empty, Cell.Empty, Cell.Whole(survivors), Cell.Whole(gained), Cell.Whole(lost),
             Cell.Whole(bounds.Mark(Survivors(standing.Experiments, first)).FalseAtMost), Cell.Empty,
         ];

@@ -48,6 +48,11 @@ internal sealed class ReviewVerb : Verb
             ? FormattableString.Invariant($"Review {review.Number} of {code}: {review.SurvivorCount} of {review.TestedCount} tested experiments survive, in a family of {review.FamilySize}.{interim}")
             : FormattableString.Invariant($"Nothing changed since review {review.Number} of {code}, which stands: {review.SurvivorCount} survivors in a family of {review.FamilySize}.{interim}"));
         SayFamilies(session, catalog, code);
+        foreach (string line in CampaignText.Deviations(new OverviewReader(catalog).Read(new CampaignStore(catalog).Get(code))))
+        {
+            session.Say(line);
+        }
+
         return review;
     }
 

@@ -1,6 +1,7 @@
 using System.CommandLine;
 using Campaigns.App.Output;
 using Campaigns.App.Wording;
+using Campaigns.Catalog.Amending;
 using Campaigns.Catalog.Exporting;
 using Campaigns.Catalog.Loading;
 using Campaigns.Catalog.Plans;
@@ -83,9 +84,9 @@ internal sealed class RunVerb : Verb
         IReadOnlyList<Family>? families = familiesPath is null ? null : FamiliesVerb.Read(session, familiesPath);
         if (stored.Campaign.IsSealed)
         {
-            RefuseOtherPlan(catalog, stored, plan, planPath);
+            string same = SameAs(catalog, stored, plan, planPath);
             RefuseOtherFamilies(stored.Campaign, families, plan);
-            session.Say($"The plan of {description.Code} is sealed already, and plan.csv says the same.");
+            session.Say($"The plan of {description.Code} is sealed already, and plan.csv says the same{same}.");
             return stored;
         }
 
@@ -146,13 +147,18 @@ internal sealed class RunVerb : Verb
         }
     }
 
-    private static void RefuseOtherPlan(Catalog.Catalog catalog, StoredCampaign stored, IReadOnlyList<PlannedExperiment> plan, string planPath)
+    /// <summary>With which state of the plan a file agrees, in a clause: with the plan that stands, or with the plan as it was sealed, whose amendments then stand.</summary>
+    private static string SameAs(Catalog.Catalog catalog, StoredCampaign stored, IReadOnlyList<PlannedExperiment> plan, string planPath)
     {
-        IReadOnlyList<string> differences = PlanComparison.Differences(new PlanStore(catalog).Read(stored.Id), plan);
-        if (differences.Count > 0)
+        IReadOnlyList<string> differences = PlanComparison.Differences(SealedPlan.Standing(catalog, stored.Id), plan);
+        if (differences.Count == 0)
         {
-            throw new RefusedException($"'{planPath}' differs from the sealed plan of '{stored.Campaign.Code}'; nothing was changed. A sealed plan stays as it is: open a new campaign for other experiments.", differences);
+            return "";
         }
+
+        return PlanComparison.Differences(SealedPlan.Read(catalog, stored.Id), plan).Count == 0
+            ? ", as it was sealed; its amendments stand"
+            : throw new RefusedException($"'{planPath}' differs from the sealed plan of '{stored.Campaign.Code}'; nothing was changed. A sealed plan stays as it is: open a new campaign for other experiments, or amend it with 'campaigns plan {stored.Campaign.Code} FILE --reason TEXT'.", differences);
     }
 
     private static void LoadFiles(Session session, Catalog.Catalog catalog, StoredCampaign campaign, string folder)

@@ -13,15 +13,31 @@ internal sealed class ShowVerb : Verb
 {
     private readonly Argument<string> _code = SharedOptions.Code();
     private readonly Argument<string?> _experiment = new("EXPERIMENT") { Description = "An experiment of it.", Arity = ArgumentArity.ZeroOrOne };
+    private readonly Option<bool> _plan = new("--plan") { Description = "The plan as it stands, in the columns of a plan file." };
+    private readonly Option<bool> _sealedPlan = new("--sealed-plan") { Description = "The plan as it was sealed, every amendment undone, in the columns of a plan file." };
+    private readonly Option<bool> _amendments = new("--amendments") { Description = "Every change of the sealed plan: number, when, who, what, before, after, why." };
+    private readonly Option<bool> _withdrawals = new("--withdrawals") { Description = "Every decision to withdraw an experiment, or to take it in again." };
 
     public override Command Build() => new("show", Describe("One campaign in full, or one of its experiments: group table, table of variation, result.", "show PRIMERS E07"))
     {
-        _code, _experiment,
+        _code, _experiment, _plan, _sealedPlan, _amendments, _withdrawals,
     };
 
     public override int Run(Session session)
     {
+        bool[] asked = [session.Get(_plan), session.Get(_sealedPlan), session.Get(_amendments), session.Get(_withdrawals)];
+        if (asked.Count(a => a) + (session.Typed.GetValue(_experiment) is null ? 0 : 1) > 1)
+        {
+            throw new UsageException("Ask for one thing at a time: an experiment, --plan, --sealed-plan, --amendments or --withdrawals.");
+        }
+
         using Catalog.Catalog catalog = session.OpenCatalog();
+        if (asked.Any(a => a))
+        {
+            session.Print(PlanHistory.Of(catalog, session.Get(_code), asked[0] ? PlanHistoryPart.Plan : asked[1] ? PlanHistoryPart.SealedPlan : asked[2] ? PlanHistoryPart.Amendments : PlanHistoryPart.Withdrawals));
+            return ExitCode.Done;
+        }
+
         CampaignStanding standing = new StandingReader(catalog).Read(session.Get(_code));
         if (session.Typed.GetValue(_experiment) is { } experiment)
         {
@@ -60,6 +76,8 @@ internal sealed class ShowVerb : Verb
             ("files_loaded", "files loaded", Cell.Whole(loads.Count)),
             ("rows_loaded", "rows loaded", Cell.Whole(loads.Sum(l => l.RowCount))),
             ("amendments", "amendments", Cell.Whole(loads.Count(l => l.AmendmentReason is not null))),
+            ("plan_amendments", "plan amended", Cell.Whole(standing.AmendedPlan.Amendments)),
+            ("withdrawn", "withdrawn", Cell.Whole(standing.Withdrawn.All)),
             ("exclusions", "left out", Cell.Whole(ExclusionStore.Standing(new ExclusionStore(catalog).All(campaign.Code)))),
             ("reviews", "reviews", Cell.Whole(standing.LastReview?.Number ?? 0)),
             ("streams", "streams", Cell.Whole(campaign.Streams.Count == 0 ? null : campaign.Streams.Count)),
@@ -91,6 +109,16 @@ internal sealed class ShowVerb : Verb
             WhenEmpty = "No file was loaded yet.",
         });
         session.Host.Out.WriteLine();
+        foreach (PlanHistoryPart part in new[] { PlanHistoryPart.Amendments, PlanHistoryPart.Withdrawals })
+        {
+            RowTable deviations = PlanHistory.Of(catalog, campaign.Code, part);
+            if (deviations.Rows.Any())
+            {
+                session.Print(deviations);
+                session.Host.Out.WriteLine();
+            }
+        }
+
         session.Print(new RowTable(
             [new("review", "review", true), new("taken_at", "taken"), new("correction", "correction"), new("level", "level", true), new("family_size", "family", true), new("tested", "tested", true), new("survivors", "survivors", true), new("interim", "interim")],
             new ReviewStore(catalog).All(id).Select(r => (Cell[])[Cell.Whole(r.Number), Cell.Text(Words.Instant(r.At)), Cell.Text(r.Correction), Cell.Setting(r.Level.Value), Cell.Whole(r.FamilySize), Cell.Whole(r.TestedCount), Cell.Whole(r.SurvivorCount), Cell.Truth(r.IsInterim)]))

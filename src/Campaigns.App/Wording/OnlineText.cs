@@ -68,7 +68,7 @@ internal static class OnlineText
     }
 
     /// <summary>Whether the decision on an experiment was made on other data than those that stand now.</summary>
-    public static bool IsOnOtherData(ExperimentResult result) => result.Entry is { DecidedAt: not null } entry && entry.P != result.P;
+    public static bool IsOnOtherData(ExperimentResult result) => result.Entry is { DecidedAt: not null } entry && entry.P != result.P && result.Status != ExperimentStatus.Withdrawn;
 
     /// <summary>On what the decision on an experiment was made, in a clause.</summary>
     public static string MadeOn(ExperimentResult result) => $"was made on {(result.Entry?.P is { } p ? $"p = {NumberText.P(p)}" : "data that gave no p-value")}";

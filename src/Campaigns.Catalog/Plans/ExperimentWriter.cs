@@ -8,7 +8,7 @@ internal sealed class ExperimentWriter : IDisposable
 {
     private readonly SqliteStatement _insert;
     private readonly SqliteStatement _regroup;
-    private readonly Lazy<SqliteStatement> _delete;
+    private readonly Lazy<SqliteStatement> _replace;
     private readonly long _campaignId;
     private long _lastId;
 
@@ -17,7 +17,12 @@ internal sealed class ExperimentWriter : IDisposable
         _campaignId = campaignId;
         _insert = catalog.Prepare($"INSERT INTO experiments ({PlanStore.ExperimentColumns}, first_load_id, amendment_id) VALUES (?1, ?2, ?3, ?4, ?5, ?6, ?7, ?8, ?9, ?10, ?11, ?12, ?13, ?14, ?15, ?16, ?17, ?18, ?19, ?20)");
         _regroup = catalog.Prepare("UPDATE experiments SET group_set_id = ?2 WHERE id = ?1");
-        _delete = new Lazy<SqliteStatement>(() => catalog.Prepare("DELETE FROM experiments WHERE id = ?1"));
+        _replace = new Lazy<SqliteStatement>(() => catalog.Prepare(
+            """
+            UPDATE experiments SET title = ?4, response = ?5, unit = ?6, group_set_id = ?7, groups_are_planned = ?8, control = ?9, test = ?10, follow_up = ?11, replicates = ?12,
+                smallest_effect = ?13, assumed_sd = ?14, weight = ?15, family = ?16, confirms = ?17, shared_control = ?18, amendment_id = ?20
+            WHERE id = ?1 AND campaign_id = ?2 AND code = ?3 AND first_load_id IS ?19
+            """));
         using SqliteStatement last = catalog.Prepare("SELECT coalesce(max(id), 0) FROM experiments");
         last.Read();
         _lastId = last.Integer(0);
@@ -33,16 +38,18 @@ internal sealed class ExperimentWriter : IDisposable
     /// <returns>Its key.</returns>
     public long Insert(PlannedExperiment experiment, long? groupSetId, bool groupsArePlanned, long? firstLoadId = null, long? amendmentId = null)
     {
-        Insert(++_lastId, experiment, groupSetId, groupsArePlanned, firstLoadId, amendmentId);
+        Run(_insert, ++_lastId, experiment, groupSetId, groupsArePlanned, firstLoadId, amendmentId);
         return _lastId;
     }
 
-    /// <summary>Puts another plan in the place of an experiment that has no data.</summary>
-    public void Replace(long id, PlannedExperiment experiment, long? groupSetId)
-    {
-        _delete.Value.Bind(1, id).Run();
-        Insert(id, experiment, groupSetId, groupSetId is not null, null, null);
-    }
+    /// <summary>Puts another plan in the place of a planned experiment's.</summary>
+    /// <param name="id">Its key.</param>
+    /// <param name="experiment">Its plan, under the same code.</param>
+    /// <param name="groupSetId">Its groups; null where neither plan nor data named any.</param>
+    /// <param name="groupsArePlanned">Whether the plan names them.</param>
+    /// <param name="amendmentId">The amendment that changes it after the seal; null before.</param>
+    public void Replace(long id, PlannedExperiment experiment, long? groupSetId, bool groupsArePlanned, long? amendmentId = null) =>
+        Run(_replace.Value, id, experiment, groupSetId, groupsArePlanned, null, amendmentId);
 
     /// <summary>Gives an experiment whose groups come with the data a larger set.</summary>
     public void Regroup(long id, long groupSetId) => _regroup.Bind(1, id).Bind(2, groupSetId).Run();
@@ -51,14 +58,14 @@ internal sealed class ExperimentWriter : IDisposable
     {
         _insert.Dispose();
         _regroup.Dispose();
-        if (_delete.IsValueCreated)
+        if (_replace.IsValueCreated)
         {
-            _delete.Value.Dispose();
+            _replace.Value.Dispose();
         }
     }
 
-    private void Insert(long id, PlannedExperiment experiment, long? groupSetId, bool groupsArePlanned, long? firstLoadId, long? amendmentId) =>
-        _insert.Bind(1, id).Bind(2, _campaignId).Bind(3, experiment.Code)
+    private void Run(SqliteStatement statement, long id, PlannedExperiment experiment, long? groupSetId, bool groupsArePlanned, long? firstLoadId, long? amendmentId) =>
+        statement.Bind(1, id).Bind(2, _campaignId).Bind(3, experiment.Code)
             .Bind(4, OrNull(experiment.Title)).Bind(5, OrNull(experiment.Response)).Bind(6, OrNull(experiment.Unit))
             .Bind(7, groupSetId).Bind(8, groupsArePlanned ? 1L : 0L).Bind(9, experiment.Control)
             .Bind(10, experiment.Test).Bind(11, experiment.FollowUp).Bind(12, (long?)experiment.Replicates)

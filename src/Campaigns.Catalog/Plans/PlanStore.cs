@@ -1,3 +1,4 @@
+using Campaigns.Catalog.Amending;
 using Campaigns.Catalog.Ledger;
 using Campaigns.Catalog.Providers;
 using Campaigns.Domain;
@@ -33,6 +34,22 @@ public sealed class PlanStore(Catalog catalog)
         return plan;
     }
 
+    /// <summary>The planned experiments of a campaign by their keys, in the plan's order, with what the plan says alone: groups that came with the data are left out.</summary>
+    internal List<(long Id, PlannedExperiment Plan)> ReadPlanned(long campaignId)
+    {
+        using var sets = new GroupSets(catalog, campaignId);
+        using SqliteStatement select = catalog.Prepare($"SELECT {ExperimentColumns} FROM experiments WHERE campaign_id = ?1 AND first_load_id IS NULL ORDER BY id");
+        select.Bind(1, campaignId);
+        var plan = new List<(long, PlannedExperiment)>();
+        while (select.Read())
+        {
+            PlannedExperiment experiment = Row(select, sets);
+            plan.Add((select.Integer(0), select.Integer(7) != 0 ? experiment : experiment with { Groups = [] }));
+        }
+
+        return plan;
+    }
+
     /// <summary>The codes of a campaign's experiments by their keys.</summary>
     internal Dictionary<long, string> Codes(long campaignId)
     {
@@ -47,21 +64,24 @@ public sealed class PlanStore(Catalog catalog)
         return codes;
     }
 
-    /// <summary>Registers experiments, or changes registered ones, while the plan is open.</summary>
+    /// <summary>Registers experiments, or changes registered ones: freely while the plan is open, and with a reason as an amendment once it is sealed.</summary>
     /// <param name="code">The campaign.</param>
     /// <param name="experiments">Those to add or to change, each code once.</param>
-    /// <exception cref="RefusedException">The campaign is sealed, or its experiments come from its data.</exception>
-    public PlanChange Register(string code, IReadOnlyList<PlannedExperiment> experiments) => catalog.Change(() =>
+    /// <param name="reason">Why; recorded. A sealed plan is amended only with one.</param>
+    /// <exception cref="RefusedException">The campaign is sealed and no reason is given, or the amendment asks for what the seal fixed, or its experiments come from its data.</exception>
+    public PlanChange Register(string code, IReadOnlyList<PlannedExperiment> experiments, string? reason = null) => catalog.Change(() =>
     {
         StoredCampaign stored = new CampaignStore(catalog).Get(code);
-        if (stored.Campaign.IsSealed)
-        {
-            throw new RefusedException(FormattableString.Invariant($"The plan of '{code}' is sealed since {stored.Campaign.SealedAt:yyyy-MM-dd HH:mm:ss} UTC and takes no changes; open a new campaign for new experiments."));
-        }
-
         if (stored.Campaign.IsExploratory)
         {
             throw new RefusedException($"The experiments of '{code}' come from measurements that are loaded already, so a plan would come after the data; open a new campaign for a plan.");
+        }
+
+        if (stored.Campaign.IsSealed)
+        {
+            return reason is not null
+                ? new PlanAmender(catalog, stored).Amend(experiments, reason)
+                : throw new RefusedException(FormattableString.Invariant($"The plan of '{code}' is sealed since {stored.Campaign.SealedAt:yyyy-MM-dd HH:mm:ss} UTC and takes no changes; open a new campaign for new experiments, or give --reason TEXT to have the change recorded as an amendment of the sealed plan."));
         }
 
         OnlineVerdict.RefuseFamilies(stored.Campaign, experiments);
@@ -74,6 +94,7 @@ public sealed class PlanStore(Catalog catalog)
             catalog.Record(new LedgerAct(LedgerAction.Plan, code)
             {
                 Subject = FormattableString.Invariant($"{change.Added} added, {change.Changed} changed"),
+                Reason = reason,
                 Changes = changes,
                 Evidence = [EvidenceRegistry.Plan.Of(stored.Id), .. GroupSets.Since(catalog, stored.Id, setsBefore)],
             });
@@ -102,7 +123,7 @@ public sealed class PlanStore(Catalog catalog)
             }
             else
             {
-                writer.Replace(old.Id, experiment, set);
+                writer.Replace(old.Id, experiment, set, groupsArePlanned: set is not null);
                 changes.AddRange(PlanFields.Differences(old.Plan, experiment).Select(f => new LedgerChange($"{experiment.Code}: {f.Name}", f.Before, f.After)));
                 changed++;
             }

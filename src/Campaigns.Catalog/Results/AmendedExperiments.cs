@@ -1,10 +1,12 @@
+using Campaigns.Catalog.Amending;
 using Campaigns.Catalog.Excluding;
 using Campaigns.Catalog.Providers;
+using Campaigns.Catalog.Withdrawing;
 
 namespace Campaigns.Catalog.Results;
 
-/// <summary>The experiments of a campaign to which values were added after their test, or of which values were left out, with the reasons given.</summary>
-/// <remarks>Campaigns without any, which is nearly all, cost a look at the list of loads and one at the list of exclusions.</remarks>
+/// <summary>The experiments of a campaign to which values were added after their test, of which values were left out, or that were withdrawn, with the reasons given.</summary>
+/// <remarks>Campaigns without any, which is nearly all, cost a look at the list of loads, one at the list of exclusions and one at that of withdrawals.</remarks>
 internal sealed class AmendedExperiments
 {
     private readonly Dictionary<long, Amended> _experiments = [];
@@ -22,10 +24,28 @@ internal sealed class AmendedExperiments
             amended.Reasons.AddRange(Exclusions.Decisions(id).Select(d => d.Sentence));
             amended.AwaitsTest |= Exclusions.AwaitsTest(id);
         }
+
+        Plan = new PlanAmendments(catalog, campaignId);
+        Withdrawals = new StandingWithdrawals(catalog, campaignId, asOf);
+        foreach (long id in Withdrawals.Ids)
+        {
+            Amended amended = Of(id);
+            amended.Reasons.AddRange(Withdrawals.Reasons(id));
+            amended.AwaitsTest |= Withdrawals.AwaitsTest(id);
+        }
     }
 
     /// <summary>What is left out of the analysis.</summary>
     public StandingExclusions Exclusions { get; }
+
+    /// <summary>What is withdrawn.</summary>
+    public StandingWithdrawals Withdrawals { get; }
+
+    /// <summary>Changes of the sealed plan; they take no result away.</summary>
+    public PlanAmendments Plan { get; }
+
+    /// <summary>Experiments that a new test would give a result again: those that are withdrawn stay without one.</summary>
+    public int AwaitingTest => _experiments.Keys.Count(id => AwaitsTest(id) && !Withdrawals.IsWithdrawn(id));
 
     private void AddLoads(Catalog catalog, long campaignId, RecordPosition? asOf)
     {
@@ -61,19 +81,18 @@ internal sealed class AmendedExperiments
         }
     }
 
-    /// <summary>Keys of the experiments.</summary>
-    public IReadOnlyCollection<long> Ids => _experiments.Keys;
+    /// <summary>Keys of the experiments, those included whose plan was amended.</summary>
+    public IEnumerable<long> Ids => _experiments.Keys.Union(Plan.Ids);
 
-    public int Count => _experiments.Count;
+    /// <summary>Whether there is an experiment whose result may not stand.</summary>
+    public bool Any => _experiments.Count > 0;
 
-    public bool Any => Count > 0;
-
-    /// <summary>Whether values came in or were left out after the latest test, which is then no longer the experiment's result.</summary>
+    /// <summary>Whether values came in or were left out, or the experiment was withdrawn, after the latest test, which is then no longer its result.</summary>
     public bool AwaitsTest(long experimentId) => _experiments.TryGetValue(experimentId, out Amended? amended) && amended.AwaitsTest;
 
-    /// <summary>The reasons of the amendments, oldest first.</summary>
+    /// <summary>Every deviation from the plan in words: changes of the sealed plan, then the reasons of amendments, exclusions and withdrawals, oldest first.</summary>
     public IReadOnlyList<string> Reasons(long experimentId) =>
-        _experiments.TryGetValue(experimentId, out Amended? amended) ? amended.Reasons : [];
+        _experiments.TryGetValue(experimentId, out Amended? amended) ? [.. Plan.Sentences(experimentId), .. amended.Reasons] : Plan.Sentences(experimentId);
 
     private Amended Of(long experimentId)
     {

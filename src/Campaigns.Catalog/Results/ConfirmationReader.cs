@@ -1,3 +1,4 @@
+using Campaigns.Catalog.Amending;
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Providers;
 using Campaigns.Domain;
@@ -25,10 +26,11 @@ internal sealed class ConfirmationReader(Catalog catalog, Func<string, CampaignS
 
         _others[stored.Campaign.Code] = standing;
         using var known = new ConfirmedExperiments(catalog);
-        return Replicability.Apply(stored.Campaign, experiments, [.. experiments.Select(e => e.Plan.Confirms is { } reference ? Earlier(stored, known, reference) : null)]);
+        var amendments = new PlanAmendments(catalog, stored.Id);
+        return Replicability.Apply(stored.Campaign, experiments, [.. experiments.Select(e => e is { Plan.Confirms: { } reference, LeftFamily: false } ? Earlier(stored, known, amendments, e.Plan.Code, reference) : null)]);
     }
 
-    private EarlierExperiment? Earlier(StoredCampaign stored, ConfirmedExperiments known, string reference)
+    private EarlierExperiment? Earlier(StoredCampaign stored, ConfirmedExperiments known, PlanAmendments amendments, string code, string reference)
     {
         if (known.Find(stored.Id, reference) is not { } found)
         {
@@ -38,8 +40,11 @@ internal sealed class ConfirmationReader(Catalog catalog, Func<string, CampaignS
         CampaignStanding standing = _others.TryGetValue(found.Campaign, out CampaignStanding? other) ? other : _others[found.Campaign] = read(found.Campaign);
         ExperimentResult first = standing.Experiments.First(e => e.Plan.Code == found.Code);
         FamilyStanding family = first.Family ?? standing.Families[0];
-        bool before = found.CampaignId != stored.Id && FirstTestOf(found.Id) is { } tested && !(stored.Campaign.SealedAt < tested);
-        return new EarlierExperiment(found.Campaign, found.Code, first.P, family.Name, family.Size, before);
+
+        // A plan that was sealed as one holds both before either was tested; one that an amendment added was planned on that day.
+        DateTimeOffset? addedAt = amendments.Counts.Added == 0 ? null : amendments.AddedAt(known.Find(stored.Id, code)!.Id);
+        bool before = (found.CampaignId != stored.Id || addedAt is not null) && FirstTestOf(found.Id) is { } tested && !((addedAt ?? stored.Campaign.SealedAt) < tested);
+        return new EarlierExperiment(found.Campaign, found.Code, first.P, family.Name, family.Size, before) { IsInFamily = !first.LeftFamily };
     }
 
     private DateTimeOffset? FirstTestOf(long experimentId)

@@ -2,6 +2,7 @@ using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Providers;
 using Campaigns.Catalog.Reviewing;
 using Campaigns.Catalog.Streams;
+using Campaigns.Catalog.Withdrawing;
 using Campaigns.Domain;
 using Campaigns.Statistics.Probability;
 
@@ -10,16 +11,16 @@ namespace Campaigns.Catalog.Results;
 /// <summary>Collects a campaign's family: every tested experiment with its p-value, and how many hypotheses there are.</summary>
 /// <remarks>
 /// The latest review's lines are the base and only what was tested after it is read, so that one more experiment among 100,000 costs one packed vector, not a scan of all results.
-/// Without a review, or after an amendment, all results are read: O(m).
+/// Without a review, or after an amendment or a withdrawal, all results are read: O(m).
 /// </remarks>
 internal sealed class FamilyReader(Catalog catalog)
 {
-    /// <summary>Hypotheses in the family: every experiment of the campaign.</summary>
+    /// <summary>Hypotheses in the family: every experiment of the campaign, those left out that were withdrawn before any data.</summary>
     public int FamilySize(long campaignId)
     {
         using SqliteStatement count = catalog.Prepare("SELECT count(*) FROM experiments WHERE campaign_id = ?1");
         count.Bind(1, campaignId).Read();
-        return (int)count.Integer(0);
+        return (int)count.Integer(0) - new StandingWithdrawals(catalog, campaignId).Counts.Left;
     }
 
     /// <summary>The same at a position of the record.</summary>
@@ -75,8 +76,15 @@ internal sealed class FamilyReader(Catalog catalog)
         return members with
         {
             Entries = [.. columns.ExperimentIds.ToArray().Select(id => entries.GetValueOrDefault(id))],
-            StandingSurvivors = entries.Values.Count(e => e.Survives == true),
+            StandingSurvivors = StandingSurvivors(stored.Id, entries, asOf).Count(),
         };
+    }
+
+    /// <summary>Experiments that survive by their standing decisions and are not withdrawn.</summary>
+    public IEnumerable<KeyValuePair<long, StreamEntry>> StandingSurvivors(long campaignId, Dictionary<long, StreamEntry> entries, RecordPosition? asOf = null)
+    {
+        var withdrawals = new StandingWithdrawals(catalog, campaignId, asOf);
+        return entries.Where(e => e.Value.Survives == true && !withdrawals.IsWithdrawn(e.Key));
     }
 
     /// <summary>Draws of the campaign's permutation tests: as many as the strictest threshold of its families asks for.</summary>
@@ -116,9 +124,15 @@ internal sealed class FamilyReader(Catalog catalog)
         using SqliteStatement select = catalog.Prepare("SELECT id, family, weight, shared_control FROM experiments WHERE campaign_id = ?1 ORDER BY id");
         select.Bind(1, stored.Id);
         var tally = new FamilyTally(stored.Campaign);
+        var withdrawals = new StandingWithdrawals(catalog, stored.Id);
         int next = 0;
         while (select.Read())
         {
+            if (withdrawals.LeavesFamily(select.Integer(0)))
+            {
+                continue;
+            }
+
             bool isTested = next < columns.Count && columns.ExperimentIds[next] == select.Integer(0);
             tally.Add(select.NullableText(1), select.NullableReal(2), select.NullableText(3), isTested ? columns.P[next] : null);
             next += isTested ? 1 : 0;

@@ -40,7 +40,7 @@ public sealed class OverviewReader(Catalog catalog)
     /// <summary>What survives by its decision, the smallest p-value of the decision first, whatever happened to its values since.</summary>
     private List<ExperimentResult> StandingSurvivors(StoredCampaign stored, CampaignOverview overview, int most)
     {
-        KeyValuePair<long, StreamEntry>[] survivors = [.. StreamEntries.Read(catalog, stored.Id).Where(e => e.Value.Survives == true).OrderBy(e => e.Value.P!.Value).ThenBy(e => e.Key).Take(most)];
+        KeyValuePair<long, StreamEntry>[] survivors = [.. new FamilyReader(catalog).StandingSurvivors(stored.Id, StreamEntries.Read(catalog, stored.Id)).OrderBy(e => e.Value.P!.Value).ThenBy(e => e.Key).Take(most)];
         Dictionary<long, ExperimentResult> experiments = new StandingReader(catalog).ReadSome(stored.Id, survivors.Select(e => e.Key));
         return [.. survivors.Select(e => OnlineVerdict.Apply(experiments[e.Key] with { Entry = e.Value }, overview.Families[0]))];
     }
@@ -65,14 +65,17 @@ public sealed class OverviewReader(Catalog catalog)
                 campaign, verdict.Size, family.Count, hits, verdict.SurvivorCount,
                 Deviating(stored.Id, amended), latest?.Head, families.ResultsAfter(stored.Id, latest?.LastRun ?? 0))
             {
-                AwaitingNewTest = amended.Ids.Count(amended.AwaitsTest),
+                AwaitingNewTest = amended.AwaitingTest,
+                Withdrawn = amended.Withdrawals.Counts,
+                AmendedPlan = amended.Plan.Counts,
+                DecisionsSinceReview = new ReviewStore(catalog).DecisionsSince(stored.Id, amended.Withdrawals),
                 Families = verdict.Families,
             },
             family,
             verdict);
     }
 
-    /// <summary>Experiments that received values after their test, of which values were left out, or whose test was run short of the planned values.</summary>
+    /// <summary>Experiments that received values after their test, of which values were left out, that were withdrawn, whose plan was amended, or whose test was run short of the planned values.</summary>
     private int Deviating(long campaignId, AmendedExperiments amended)
     {
         var ids = new HashSet<long>(amended.Ids);

@@ -1,6 +1,7 @@
 using Campaigns.Catalog.Ledger;
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Providers;
+using Campaigns.Catalog.Withdrawing;
 using Campaigns.Domain;
 using Campaigns.Statistics.Probability;
 
@@ -44,6 +45,7 @@ public sealed class ReviewStore(Catalog catalog)
         // An amendment takes a result away, and only a new run, another sign of change, brings one back: the count tells.
         if (Latest(stored.Id) is { } latest && latest.LastRun == lastRun && latest.Head.IsInterim == testedOnly
             && (testedOnly || latest.Head.FamilySize == planned)
+            && DecisionsSince(stored.Id, new StandingWithdrawals(catalog, stored.Id)) == 0
             && (!new AmendedExperiments(catalog, stored.Id).Any || latest.Head.TestedCount == families.Read(stored.Id).Count))
         {
             return new ReviewTaken(latest.Head, false);
@@ -61,6 +63,17 @@ public sealed class ReviewStore(Catalog catalog)
     {
         using SqliteStatement select = catalog.Prepare($"SELECT {Columns} FROM reviews WHERE campaign_id = ?1 ORDER BY number DESC LIMIT 1");
         return select.Bind(1, campaignId).Read() ? (Head(select), select.NullableInteger(9)) : null;
+    }
+
+    /// <summary>Decisions to withdraw experiments or to take them in again, and amendments of the plan, that came after the latest review; 0 before the first.</summary>
+    internal int DecisionsSince(long campaignId, StandingWithdrawals withdrawals)
+    {
+        using SqliteStatement select = catalog.Prepare(
+            """
+            SELECT coalesce(last_withdrawal_id, 0), (SELECT count(*) FROM plan_amendments a WHERE a.campaign_id = ?1 AND a.id > coalesce(r.last_amendment_id, 0))
+            FROM reviews r WHERE campaign_id = ?1 ORDER BY number DESC LIMIT 1
+            """);
+        return select.Bind(1, campaignId).Read() ? withdrawals.After(select.Integer(0)) + (int)select.Integer(1) : 0;
     }
 
     /// <summary>The families of a campaign as its latest review counts them; interim or not as the review is.</summary>

@@ -31,11 +31,14 @@ public sealed class StandingReader(Catalog catalog)
         return new CampaignStanding(
             stored.Campaign,
             FamilyVerdict.Apply(experiments, verdict),
-            experiments.Count,
+            experiments.Count(e => !e.LeftFamily),
             latest?.Head,
             new FamilyReader(catalog).ResultsAfter(stored.Id, latest?.LastRun ?? 0))
         {
-            AwaitingNewTest = amended.Ids.Count(amended.AwaitsTest),
+            AwaitingNewTest = amended.AwaitingTest,
+            Withdrawn = amended.Withdrawals.Counts,
+            AmendedPlan = amended.Plan.Counts,
+            DecisionsSinceReview = new ReviewStore(catalog).DecisionsSince(stored.Id, amended.Withdrawals),
             Families = verdict.Families,
         };
     }
@@ -62,7 +65,9 @@ public sealed class StandingReader(Catalog catalog)
         while (rows.Next(amended) is { } experiment)
         {
             experiment = experiment with { Entry = entries.GetValueOrDefault(rows.Id) };
-            experiments.Add(untested.TryGetValue(rows.Id, out DataAtHand? data) ? data.Describe(experiment) : experiment);
+            experiment = untested.TryGetValue(rows.Id, out DataAtHand? data) ? data.Describe(experiment) : experiment;
+            experiments.Add(!amended.Withdrawals.IsWithdrawn(rows.Id) ? experiment
+                : experiment with { Status = ExperimentStatus.Withdrawn, LeftFamily = amended.Withdrawals.LeavesFamily(rows.Id) });
         }
 
         if (stored.Campaign.IsExploratory)
@@ -83,13 +88,14 @@ public sealed class StandingReader(Catalog catalog)
     private Dictionary<long, DataAtHand> UntestedData(long campaignId)
     {
         using SqliteStatement select = catalog.Prepare(
-            """
-            SELECT e.id, e.group_set_id, e.groups_are_planned, e.replicates, m.packed
+            $"""
+            SELECT e.id, e.group_set_id, e.groups_are_planned, CASE WHEN {TestRunner.TestedBefore} THEN NULL ELSE e.replicates END, m.packed
             FROM experiments e JOIN measurements m ON m.experiment_id = e.id
             WHERE e.campaign_id = ?1 AND NOT EXISTS (
                 SELECT 1 FROM test_results r JOIN test_runs t ON t.id = r.test_run_id
                 WHERE r.experiment_id = e.id AND coalesce(t.last_load_id, 0) >= (SELECT max(load_id) FROM measurements WHERE experiment_id = e.id)
-                    AND coalesce(t.last_exclusion_id, 0) >= (SELECT coalesce(max(id), 0) FROM exclusions WHERE experiment_id = e.id))
+                    AND coalesce(t.last_exclusion_id, 0) >= (SELECT coalesce(max(id), 0) FROM exclusions WHERE experiment_id = e.id)
+                    AND coalesce(t.last_withdrawal_id, 0) >= (SELECT coalesce(max(id), 0) FROM withdrawals WHERE experiment_id = e.id))
             ORDER BY e.id, m.load_id
             """);
         using var sets = new GroupSets(catalog, campaignId);

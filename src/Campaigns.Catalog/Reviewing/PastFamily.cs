@@ -3,11 +3,12 @@ using Campaigns.Catalog.Loading;
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Providers;
 using Campaigns.Catalog.Results;
+using Campaigns.Catalog.Withdrawing;
 using Campaigns.Domain;
 
 namespace Campaigns.Catalog.Reviewing;
 
-/// <summary>The family of a campaign as it was counted at a position of the record: without what came to the plan or to an exploratory campaign later, with the plan that stood then.</summary>
+/// <summary>The family of a campaign as it was counted at a position of the record: without what came to the plan or to an exploratory campaign later or was withdrawn before any data, with the plan that stood then.</summary>
 /// <remarks>One scan of the plan.</remarks>
 internal sealed class PastFamily(Catalog catalog, StoredCampaign stored, RecordPosition asOf)
 {
@@ -51,6 +52,8 @@ internal sealed class PastFamily(Catalog catalog, StoredCampaign stored, RecordP
 
     private void Scan(Action<long, SqliteStatement> each)
     {
+        var withdrawals = new StandingWithdrawals(catalog, stored.Id, asOf);
+
         // The experiments of an exploratory campaign that an earlier version of the program loaded do not say which load brought them: their first values do.
         using SqliteStatement select = catalog.Prepare(
             """
@@ -62,7 +65,7 @@ internal sealed class PastFamily(Catalog catalog, StoredCampaign stored, RecordP
         while (select.Read())
         {
             long id = select.Integer(0);
-            if ((select.IsNull(4) || select.Integer(4) <= (asOf.LastLoadId ?? 0)) && _plan.Has(id, asOf.LastAmendmentId))
+            if ((select.IsNull(4) || select.Integer(4) <= (asOf.LastLoadId ?? 0)) && _plan.Has(id, asOf.LastAmendmentId) && !withdrawals.LeavesFamily(id))
             {
                 each(id, select);
             }

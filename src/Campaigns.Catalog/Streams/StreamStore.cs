@@ -2,6 +2,7 @@ using Campaigns.Catalog.Ledger;
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Providers;
 using Campaigns.Catalog.Results;
+using Campaigns.Catalog.Withdrawing;
 using Campaigns.Domain;
 using Campaigns.Statistics.Online;
 using Campaigns.Statistics.Probability;
@@ -41,6 +42,7 @@ public sealed class StreamStore(Catalog catalog)
             StoredCampaign stored = Sealed(code);
             Dictionary<string, long> ids = new PlanStore(catalog).Codes(stored.Id).ToDictionary(c => c.Value, c => c.Key, StringComparer.Ordinal);
             using var keeper = new StreamKeeper(catalog, stored);
+            var withdrawals = new StandingWithdrawals(catalog, stored.Id);
             foreach (string experiment in experiments)
             {
                 if (!ids.TryGetValue(experiment, out long id))
@@ -52,6 +54,11 @@ public sealed class StreamStore(Catalog catalog)
                 if (keeper.IsRegistered(id))
                 {
                     throw new RefusedException($"The experiment '{experiment}' of '{code}' {(experiments.Count(e => e == experiment) > 1 ? "is named twice" : "was given its level already")}; nothing was registered. 'campaigns decisions {code}' shows those that have one.");
+                }
+
+                if (withdrawals.IsWithdrawn(id))
+                {
+                    throw new RefusedException($"The experiment '{experiment}' of '{code}' is withdrawn, so it cannot start; nothing was registered. 'campaigns withdraw {code} {experiment} --take-back --reason TEXT' takes it in again.");
                 }
 
                 keeper.Register(id);
@@ -80,7 +87,8 @@ public sealed class StreamStore(Catalog catalog)
         return catalog.Change(() =>
         {
             StoredCampaign stored = Sealed(code);
-            int left = new FamilyReader(catalog).FamilySize(stored.Id) - StreamEntries.Stored(catalog, stored.Id).Count;
+            var withdrawals = new StandingWithdrawals(catalog, stored.Id);
+            int left = new FamilyReader(catalog).FamilySize(stored.Id) - StreamEntries.Stored(catalog, stored.Id).Count(e => !withdrawals.LeavesFamily(e.ExperimentId));
             OnlineSettings settings = OnlineVerdict.Settings(procedure, stored.Campaign.Level, options, left);
             long id = Start(stored, procedure, settings, reason);
             StreamHead before = stored.Campaign.Streams[^1];

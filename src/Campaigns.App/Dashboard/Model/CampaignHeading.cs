@@ -103,6 +103,7 @@ public sealed class CampaignHeading
         }
 
         return standing.ResultsSinceReview > 0 ? (review.IsInterim ? "is interim and behind by " : "is behind by ") + (standing.ResultsSinceReview == 1 ? "1 result" : Count(standing.ResultsSinceReview) + " results")
+            : standing.DecisionsSinceReview > 0 ? "is behind by " + (standing.DecisionsSinceReview == 1 ? "1 decision" : Count(standing.DecisionsSinceReview) + " decisions")
             : review.Correction != standing.Campaign.Correction ? "used " + review.Correction
             : review.Level != standing.Campaign.Level ? "used level " + NumberText.RoundTrip(review.Level.Value)
             : review.IsInterim ? "is interim: tested ones only"

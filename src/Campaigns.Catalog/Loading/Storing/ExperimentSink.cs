@@ -1,6 +1,7 @@
 using Campaigns.Catalog.Measurements;
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Providers;
+using Campaigns.Catalog.Withdrawing;
 using Campaigns.Domain;
 
 namespace Campaigns.Catalog.Loading;
@@ -23,6 +24,7 @@ internal sealed class ExperimentSink : IDisposable
     private readonly ExperimentLabels _labels = new();
     private readonly SpecimenRule _specimens;
     private readonly Utf8Interner _names;
+    private readonly StandingWithdrawals _withdrawals;
     private IReadOnlyList<string>? _codes;
     private KnownExperiment? _experiment;
     private long _firstLine;
@@ -43,6 +45,7 @@ internal sealed class ExperimentSink : IDisposable
         _complaints = complaints;
         _specimens = new SpecimenRule(complaints);
         _names = labels;
+        _withdrawals = new StandingWithdrawals(catalog, campaign.Id);
         _directory = new ExperimentDirectory(catalog, campaign.Id, fileSize);
         _takesNewExperiments = campaign.Campaign.IsExploratory || (!campaign.Campaign.IsSealed && _directory.Count == 0);
         _sets = new GroupSets(catalog, campaign.Id);
@@ -150,6 +153,12 @@ internal sealed class ExperimentSink : IDisposable
             return;
         }
 
+        if (_withdrawals.IsWithdrawn(experiment.Id))
+        {
+            _complaints.Add("experiment", "withdrawn-experiment", experiment.Code, _firstLine, rows, () => Withdrawn(experiment.Code));
+            return;
+        }
+
         if (experiment.IsTested && _options.AmendmentReason is null)
         {
             _complaints.Add("experiment", "closed-experiment", experiment.Code, _firstLine, rows, () => Closed(experiment.Code));
@@ -231,6 +240,9 @@ internal sealed class ExperimentSink : IDisposable
 
     private static string Closed(string code) =>
         $"experiment {ShownText.Quote(code)} was tested already and is closed to more data: looking, then adding, then looking again is another way to a false positive. Register a new experiment that confirms it (plan column confirms) and put the new data there, or give --amend REASON to have them recorded as an amendment.";
+
+    private string Withdrawn(string code) =>
+        $"experiment {ShownText.Quote(code)} is withdrawn and takes no measurements. Leave its rows out, or take it in again first: 'campaigns withdraw {_campaign.Campaign.Code} {code} --take-back --reason TEXT'.";
 
     private static string Suggest(string word, IReadOnlyList<string> known) =>
         Nearest.Of(word, known) is { } near ? $" (did you mean '{near}'?)" : "";
