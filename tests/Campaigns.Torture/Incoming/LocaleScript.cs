@@ -79,7 +79,8 @@ internal sealed partial class LocaleScript(Workbench bench, Func<string[], Ran> 
     public static IReadOnlyList<string> LeftOut(string help, IReadOnlyList<(string Command, string Text)> said)
     {
         var used = said.Select(s => s.Command.Split(' ')[0]).ToHashSet(StringComparer.Ordinal);
-        return [.. Command().Matches(help[help.IndexOf("Commands:", StringComparison.Ordinal)..]).Select(m => m.Groups[1].Value).Where(c => !used.Contains(c) && c != "dashboard")];
+        string list = help[help.IndexOf("Commands:", StringComparison.Ordinal)..help.IndexOf("Example:", StringComparison.Ordinal)];
+        return [.. Command().Matches(list).Select(m => m.Groups[1].Value).Where(c => !used.Contains(c) && c != "dashboard")];
     }
 
     private void Prepare()
@@ -115,6 +116,8 @@ internal sealed partial class LocaleScript(Workbench bench, Func<string[], Ran> 
         Say("load", "C", bench.At("late.csv"), "--amend", "iki İnce şişe", "--format", "json");
         Say("test", "C", "--incomplete");
         Say("exclude", "C", "indigo", "--line", "9", "--reason", "çizik");
+        Say("plan", "C", bench.Write("amended.csv", "experiment,title\nIĞDIR,İ\n"), "--reason", "ışık değişti");
+        Say("withdraw", "C", "IĞDIR", "--reason", "geri alındı");
         Say("test", "C", "--format", "json");
         Say("review", "C", "--format", "csv");
         Say("start", "F", "--error-rate", "familywise", "--correction", "holm");
@@ -138,7 +141,8 @@ internal sealed partial class LocaleScript(Workbench bench, Func<string[], Ran> 
     private void Say(params string[] arguments)
     {
         Ran ran = run(arguments);
-        string text = string.Create(CultureInfo.InvariantCulture, $"exit {ran.Code}\n{ran.Out}\n{ran.Error}").Replace(bench.Folder, "FOLDER", StringComparison.Ordinal);
+        string text = string.Create(CultureInfo.InvariantCulture, $"exit {ran.Code}\n{ran.Out}\n{ran.Error}").Replace(bench.Folder, "FOLDER", StringComparison.Ordinal)
+            .Replace("Campaigns.Torture", "campaigns", StringComparison.Ordinal); // The name of the process, in its help.
         _said.Add((string.Join(' ', arguments).Replace(bench.Folder, "FOLDER", StringComparison.Ordinal), Blank(text)));
     }
 

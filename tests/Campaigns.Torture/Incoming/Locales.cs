@@ -23,7 +23,7 @@ internal sealed class Locales : TortureTest
         IReadOnlyList<(string, string)> inProcess = InProcess(CultureInfo.InvariantCulture);
         tally.Try("the script uses every command", () =>
             LocaleScript.LeftOut(inProcess.Single(s => s.Item1 == "--help").Item2, inProcess) is { Count: > 0 } left ? $"it leaves out {string.Join(", ", left)}" : null);
-        foreach (string name in Names[1..])
+        foreach (string name in tries >= Full ? Names[1..] : [Names[1], Names[^1]])
         {
             tally.Try($"forms of {name}", () => Different(inProcess, InProcess(Forms(name))));
         }
