@@ -11,12 +11,19 @@ namespace Campaigns.Catalog;
 /// </remarks>
 public sealed class Catalog : IDisposable
 {
+    private const string BeginChange = "BEGIN IMMEDIATE";
+
     private CatalogContext? _context;
     private int _depth;
     private int _recordedChanges;
 
-    private Catalog(SqliteConnection connection, string path, TimeProvider clock, Actor actor)
+    // What the caller has seen of the ledger, where changes are to be refused that others outran; and what it will have seen once the transaction at hand is kept.
+    private LedgerHead? _seen;
+    private LedgerHead? _willHaveSeen;
+
+    private Catalog(SqliteConnection connection, string path, TimeProvider clock, Actor actor, LedgerHead? seen)
     {
+        _seen = seen;
         Connection = connection;
         Path = path;
         Clock = clock;
@@ -44,35 +51,46 @@ public sealed class Catalog : IDisposable
     /// <param name="path">The file.</param>
     /// <param name="clock">Where instants come from.</param>
     /// <param name="actor">Who acts; null for the account of the process.</param>
+    /// <param name="seen">The head of the ledger that the caller has seen: a change of a campaign that others changed after it is refused; null to take any.</param>
     /// <exception cref="CatalogException">Missing, unreadable, locked, damaged, foreign, older or newer.</exception>
-    public static Catalog Open(string path, TimeProvider clock, Actor? actor = null)
+    public static Catalog Open(string path, TimeProvider clock, Actor? actor = null, LedgerHead? seen = null)
     {
         ArgumentNullException.ThrowIfNull(path);
-        return new Catalog(SqliteCatalogFile.Open(path), path, clock, actor ?? Actor.OfProcess);
+        return new Catalog(SqliteCatalogFile.Open(path), path, clock, actor ?? Actor.OfProcess, seen);
     }
+
+    /// <summary>A catalog on a connection that is open already.</summary>
+    internal static Catalog On(SqliteConnection connection, string path, TimeProvider clock, Actor actor) => new(connection, path, clock, actor, null);
 
     /// <summary>Opens a catalog, creating an empty one where there is no file.</summary>
     /// <inheritdoc cref="Open"/>
-    public static Catalog OpenOrCreate(string path, TimeProvider clock, Actor? actor = null)
+    public static Catalog OpenOrCreate(string path, TimeProvider clock, Actor? actor = null, LedgerHead? seen = null)
     {
         if (!File.Exists(path) && !Directory.Exists(path))
         {
             SqliteCatalogFile.Create(path);
         }
 
-        return Open(path, clock, actor);
+        return Open(path, clock, actor, seen);
     }
 
     /// <summary>Does a piece of work in one transaction: all of it is kept, or nothing. Inside another one it joins that.</summary>
     /// <remarks>Whatever it changes must have been recorded in the ledger when it ends.</remarks>
     /// <param name="work">The work.</param>
     /// <exception cref="CatalogException">The catalog is locked, full, read-only or damaged; nothing was changed.</exception>
-    public T Change<T>(Func<T> work) => InTransaction("BEGIN IMMEDIATE", work);
+    /// <exception cref="Campaigns.Domain.RefusedException">Others changed the campaign after the head that the caller has seen; nothing was changed.</exception>
+    public T Change<T>(Func<T> work) => InTransaction(BeginChange, work);
 
     /// <summary>Writes an entry for the action at hand, after its rows and inside its transaction.</summary>
     internal LedgerHead Record(LedgerAct act)
     {
+        if (_willHaveSeen is { } seen)
+        {
+            UnchangedSince.Demand(this, seen, act.Campaign);
+        }
+
         LedgerHead head = LedgerWriter.Append(this, act);
+        _willHaveSeen = _seen is null ? null : head;
         _recordedChanges = TotalChanges;
         return head;
     }
@@ -92,8 +110,14 @@ public sealed class Catalog : IDisposable
         Run(begin);
         _depth++;
         _recordedChanges = TotalChanges;
+        _willHaveSeen = _seen;
         try
         {
+            if (_seen is { } seen && begin == BeginChange)
+            {
+                UnchangedSince.DemandHeld(this, seen);
+            }
+
             T result = work();
             if (TotalChanges != _recordedChanges)
             {
@@ -101,6 +125,7 @@ public sealed class Catalog : IDisposable
             }
 
             Run("COMMIT");
+            _seen = _willHaveSeen;
             return result;
         }
         catch

@@ -167,7 +167,12 @@ public sealed class ReviewComparisonTests
 
     private static Campaign Campaign(string correction) => new()
     {
-        Code = "C", ErrorRate = ErrorRate.Familywise, Level = new SignificanceLevel(0.05), Correction = correction, OpenedAt = DateTimeOffset.UnixEpoch, SealedAt = DateTimeOffset.UnixEpoch,
+        Code = "C",
+        ErrorRate = ErrorRate.Familywise,
+        Level = new SignificanceLevel(0.05),
+        Correction = correction,
+        OpenedAt = DateTimeOffset.UnixEpoch,
+        SealedAt = DateTimeOffset.UnixEpoch,
     };
 
     private static ReviewedFamily Review(int number, int size, params (long Key, double P)[] lines) => Review(number, size, "bh", [], lines);
@@ -198,6 +203,14 @@ public sealed class ReviewComparisonTests
 
     private static ReviewHead Head(int number, int size, int tested) => new()
     {
-        Number = number, At = DateTimeOffset.UnixEpoch, Correction = "bh", Level = new SignificanceLevel(0.05), FamilySize = size, TestedCount = tested, SurvivorCount = 0, IsInterim = false, ProgramVersion = "t",
+        Number = number,
+        At = DateTimeOffset.UnixEpoch,
+        Correction = "bh",
+        Level = new SignificanceLevel(0.05),
+        FamilySize = size,
+        TestedCount = tested,
+        SurvivorCount = 0,
+        IsInterim = false,
+        ProgramVersion = "t",
     };
 }

@@ -32,13 +32,9 @@ foreach (TortureTest test in tests.Where(t => wanted.Length == 0 || wanted.Conta
 
     var tally = new Tally(test.Key);
     long start = Stopwatch.GetTimestamp();
-    tally.Try("ran to its end", () =>
-    {
-        test.Run(tally, count, new Random(seed));
-        return null;
-    });
+    tally.Guard(() => test.Run(tally, count, new Random(seed)));
     string time = Stopwatch.GetElapsedTime(start).TotalSeconds.ToString("F0", CultureInfo.InvariantCulture);
-    string outcome = tally.NotTriable is { } why ? $"not triable here: {why}" : FormattableString.Invariant($"{tally.Tried} tried, {tally.Passed} passed");
+    string outcome = FormattableString.Invariant($"{tally.Tried} tried, {tally.Passed} passed") + (tally.NotTriable is { } why ? $", not triable here: {why}" : "");
     clean &= tally.IsClean;
     Console.WriteLine($"{test.Key,-4} {test.What}: {outcome} ({time} s)");
 }

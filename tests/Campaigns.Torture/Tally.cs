@@ -11,7 +11,7 @@ internal sealed class Tally(string key)
 
     public int Passed { get; private set; }
 
-    public bool IsClean => Tried > 0 && Tried == Passed;
+    public bool IsClean => Tried == Passed && (Tried > 0 || NotTriable is not null);
 
     /// <summary>What could not be tried here, and why; such a test does not count as failed.</summary>
     public string? NotTriable { get; private set; }
@@ -37,6 +37,21 @@ internal sealed class Tally(string key)
         }
 
         Count(what, fault);
+    }
+
+    /// <summary>Does the whole test; where it cannot go on, that is a try that failed.</summary>
+    public void Guard(Action test)
+    {
+        try
+        {
+            test();
+        }
+#pragma warning disable CA1031 // A test that breaks off must not take the others with it.
+        catch (Exception error)
+#pragma warning restore CA1031
+        {
+            Count("the test itself", error.ToString());
+        }
     }
 
     /// <summary>Counts a try whose outcome is known; may be called from several threads.</summary>

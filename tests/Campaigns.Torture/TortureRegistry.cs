@@ -5,9 +5,14 @@ internal static class TortureRegistry
 {
     public static IReadOnlyList<Func<TortureTest>> All { get; } =
     [
+        () => new Catalogs.HostileNames(),
+        () => new Incoming.DamagedFiles(),
+        () => new Incoming.FileForms(),
+        () => new Incoming.Bombs(),
         () => new Incoming.NumberForms(),
         () => new Incoming.Locales(),
         () => new Outgoing.FamilyBookkeeping(),
+        () => new Outgoing.TerminalEscapes(),
         () => new Outgoing.SameEveryTime(),
     ];
 }

@@ -55,18 +55,42 @@ internal sealed class Workbench : IDisposable
     }
 
     /// <summary>Runs the program as a process to its end; one that does not end in time is ended and counts as exit code -1.</summary>
-    public Ran RunProcess(TimeSpan most, params IEnumerable<string> arguments)
+    public Ran RunProcess(TimeSpan most, params IEnumerable<string> arguments) => RunMeasured(most, arguments).Ran;
+
+    /// <summary>Does the same, and tells the most memory that the process held, in megabytes; null where the system does not tell.</summary>
+    public (Ran Ran, long? Peak) RunMeasured(TimeSpan most, params IEnumerable<string> arguments)
     {
         using Process process = Start(arguments);
         Task<string> standardOutput = process.StandardOutput.ReadToEndAsync(), standardError = process.StandardError.ReadToEndAsync();
-        bool ended = process.WaitForExit(most);
+        long? peak = null;
+        long start = Stopwatch.GetTimestamp();
+        bool ended;
+        while (!(ended = process.WaitForExit(20)) && Stopwatch.GetElapsedTime(start) < most)
+        {
+            process.Refresh();
+            peak = Math.Max(peak ?? 0, PeakOf(process));
+        }
+
         if (!ended)
         {
             process.Kill(entireProcessTree: true);
             process.WaitForExit();
         }
 
-        return new Ran(ended ? process.ExitCode : -1, standardOutput.GetAwaiter().GetResult(), standardError.GetAwaiter().GetResult());
+        return (new Ran(ended ? process.ExitCode : -1, standardOutput.GetAwaiter().GetResult(), standardError.GetAwaiter().GetResult()), peak);
+    }
+
+    private static long PeakOf(Process process)
+    {
+        try
+        {
+            return process.PeakWorkingSet64 >> 20;
+        }
+        catch (InvalidOperationException)
+        {
+            // It has just ended.
+            return 0;
+        }
     }
 
     public void Dispose() => Directory.Delete(Folder, recursive: true);

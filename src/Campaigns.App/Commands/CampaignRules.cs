@@ -21,6 +21,15 @@ internal static class CampaignRules
         }
     }
 
+    /// <exception cref="UsageException">The text is too long.</exception>
+    public static void CheckLength(string option, string text, int most)
+    {
+        if (text.Length > most)
+        {
+            throw new UsageException(FormattableString.Invariant($"{option} takes at most {most} characters, not {text.Length}: shorten it."));
+        }
+    }
+
     /// <summary>Says what should be known of a plan that is being sealed.</summary>
     public static void SayNotes(Host host, Campaign campaign, IReadOnlyList<PlannedExperiment> plan)
     {

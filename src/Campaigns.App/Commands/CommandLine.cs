@@ -38,6 +38,7 @@ internal static class CommandLine
         () => new ListVerb(),
         () => new ShowVerb(),
         () => new ExportVerb(),
+        () => new LedgerVerb(),
         () => new DashboardVerb(),
         () => new UpgradeVerb(),
         () => new CompletionVerb(),
@@ -78,11 +79,7 @@ internal static class CommandLine
         var verbs = new Dictionary<Command, Verb>();
         foreach (Func<Verb> make in Verbs)
         {
-            Verb verb = make();
-            Command command = verb.Build();
-            command.SetAction(_ => ExitCode.Done);
-            root.Add(command);
-            verbs.Add(command, verb);
+            Add(root, make(), verbs);
         }
 
         HelpOption help = root.Options.OfType<HelpOption>().Single();
@@ -90,5 +87,17 @@ internal static class CommandLine
         help.Aliases.Add("-h");
         help.Action = new HelpWithExample((HelpAction)help.Action!, verbs);
         return (root, verbs);
+    }
+
+    private static void Add(Command parent, Verb verb, Dictionary<Command, Verb> verbs)
+    {
+        Command command = verb.Build();
+        command.SetAction(_ => ExitCode.Done);
+        parent.Add(command);
+        verbs.Add(command, verb);
+        foreach (Verb under in verb.Under)
+        {
+            Add(command, under, verbs);
+        }
     }
 }

@@ -7,13 +7,21 @@ namespace Campaigns.App.Commands;
 /// <summary>Says in one sentence what is wrong with what was typed, and what was probably meant.</summary>
 internal static class Complaint
 {
+    private const int LongestShown = 100;
+    private const int LongestWord = 10_000;
+
     /// <summary>The sentence; null where nothing is wrong.</summary>
     /// <param name="typed">What was typed, parsed.</param>
     /// <param name="root">The whole command line.</param>
     public static string? Of(ParseResult typed, RootCommand root)
     {
         Command command = typed.CommandResult.Command;
-        string help = command == root ? "'campaigns --help' lists the commands" : $"'campaigns {command.Name} --help' explains it";
+        string help = command == root ? "'campaigns --help' lists the commands" : $"'campaigns {NameOf(command, root)} --help' explains it";
+        if (typed.Tokens.Select(t => Unwritable(t.Value)).FirstOrDefault(c => c is not null) is { } unwritable)
+        {
+            return unwritable;
+        }
+
         if (FirstUnknown(typed) is { } word)
         {
             return Unknown(word, command, root, help);
@@ -22,6 +30,30 @@ internal static class Complaint
         return typed.Errors.Count == 0 ? null
             : command == root && typed.Tokens.Count == 0 ? $"A command is missing; {help}."
             : $"{typed.Errors[0].Message.TrimEnd('.')}; {help}.";
+    }
+
+    /// <summary>A text that no record should hold: with a control character, or half of a character. The name of a file that is there may have one.</summary>
+    private static string? Unwritable(string word)
+    {
+        if (word.Length > LongestWord)
+        {
+            return FormattableString.Invariant($"'{word[..LongestShown]}...' is longer than {LongestWord} characters: shorten it.");
+        }
+
+        for (int i = 0; i < word.Length; i++)
+        {
+            if (char.IsHighSurrogate(word[i]) && i + 1 < word.Length && char.IsLowSurrogate(word[i + 1]))
+            {
+                i++;
+            }
+            else if (char.IsSurrogate(word[i]) || (char.IsControl(word[i]) && !File.Exists(word) && !Directory.Exists(word)))
+            {
+                string start = word.Length <= LongestShown ? word : string.Concat(word.AsSpan(0, LongestShown), "...");
+                return FormattableString.Invariant($"'{start}' has {(char.IsSurrogate(word[i]) ? "half of a character" : "a control character")} (U+{(int)word[i]:X4}): take it out.");
+            }
+        }
+
+        return null;
     }
 
     /// <summary>A word that fits nowhere. One that looks like an option is none that we know, even where it could stand for an argument: nothing of ours begins with a hyphen, and a file's name may follow after "--".</summary>
@@ -43,8 +75,12 @@ internal static class Complaint
 
         return command == root
             ? $"There is no command '{word}'{Meant(Nearest.Of(word, root.Subcommands.Select(c => c.Name)))}; {help}."
-            : $"'{word}' is too much for 'campaigns {command.Name}'; {help}.";
+            : $"'{word}' is too much for 'campaigns {NameOf(command, root)}'; {help}.";
     }
+
+    /// <summary>The words that call a command: its own, after that of the command it stands under.</summary>
+    private static string NameOf(Command command, RootCommand root) =>
+        command.Parents.OfType<Command>().FirstOrDefault() is { } parent && parent != root ? $"{NameOf(parent, root)} {command.Name}" : command.Name;
 
     private static string Meant(string? nearest) => nearest is null ? "" : $" (did you mean '{nearest}'?)";
 

@@ -20,7 +20,7 @@ internal sealed class ExcludeVerb : Verb
     public override Command Build() => new("exclude", Describe("Leave one observation out of the analysis, with a reason and a name. The value is kept, results with and without it are shown, and every output of the experiment says so.",
         "exclude PRIMERS E07 --line 41 --reason \"panel dropped\" --as \"A. Moss\""))
     {
-        _code, _experiment, _line, _file, _reason, _takeBack,
+        _code, _experiment, _line, _file, _reason, _takeBack, SharedOptions.Seen,
     };
 
     public override int Run(Session session)

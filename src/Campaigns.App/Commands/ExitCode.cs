@@ -9,8 +9,8 @@ internal static class ExitCode
     public const int Refused = 3;
     public const int NoCatalog = 4;
 
-    /// <summary>The record is not whole: what it says does not come out of what it holds.</summary>
-    public const int RecordNotWhole = 5;
+    /// <summary>The record is not whole: the ledger, or a digest in it, does not match the catalog.</summary>
+    public const int RecordBroken = 5;
 
     /// <summary>Stopped by the user, as shells know it: 128 and the number of the interrupt signal.</summary>
     public const int Stopped = 130;

@@ -1,4 +1,5 @@
 using Campaigns.App.Output;
+using Campaigns.Catalog.Ledger;
 using Campaigns.Domain;
 using Campaigns.Statistics.Checks;
 using Campaigns.Statistics.GroupTests;
@@ -8,8 +9,8 @@ namespace Campaigns.App.Commands;
 /// <summary>One experiment in full as tables: people see them one below the other, scripts as the parts of one JSON object.</summary>
 internal static class ExperimentSections
 {
-    /// <summary>The experiment itself: one row.</summary>
-    public static RowTable Experiment(ExperimentDetail detail)
+    /// <summary>The experiment itself, and the head of the ledger at which it was read: one row.</summary>
+    public static RowTable Experiment(ExperimentDetail detail, LedgerHead head)
     {
         ExperimentResult r = detail.Result;
         VariationTable? v = detail.Variation;
@@ -26,6 +27,7 @@ internal static class ExperimentSections
             ("arrangements", Cell.Whole(r.Resampling?.Arrangements)), ("as_extreme", Cell.Whole(r.Resampling?.AsExtreme)), ("seed", Seed(r)),
             ("follow_up", Cell.Text(r.Plan.FollowUp)), ("units_note", Cell.Text(detail.Analysis.UnitsNote)),
             ("confirms", Cell.Text(r.Plan.Confirms)), ("replicability_p", Cell.P(r.Confirmation?.P)), ("replicability_adjusted_p", Cell.P(r.Confirmation?.AdjustedP)), ("replicated", Cell.Truth(r.Confirmation?.IsReplicated)),
+            ("ledger_sequence", Cell.Whole(head.Sequence)), ("ledger_head", Cell.Text(head.ToString())),
         ];
         return new RowTable([.. facts.Select(f => new Column(f.Name, null))], [[.. facts.Select(f => f.Value)]]);
     }

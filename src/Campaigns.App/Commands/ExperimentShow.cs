@@ -1,5 +1,6 @@
 using Campaigns.App.Output;
 using Campaigns.App.Wording;
+using Campaigns.Catalog.Ledger;
 using Campaigns.Domain;
 using Campaigns.Statistics.Checks;
 using Campaigns.Statistics.FollowUps;
@@ -10,13 +11,13 @@ namespace Campaigns.App.Commands;
 /// <summary>One experiment in full: for people as tables and sentences, for scripts as one JSON object, or (csv) one row a group with the experiment's figures beside it.</summary>
 internal static class ExperimentShow
 {
-    public static void Write(Session session, CampaignStanding standing, ExperimentDetail detail)
+    public static void Write(Session session, CampaignStanding standing, ExperimentDetail detail, LedgerHead head)
     {
         switch (session.Format)
         {
             case RowFormat.Json:
                 JsonRows.WriteObject(
-                    ExperimentSections.Experiment(detail),
+                    ExperimentSections.Experiment(detail, head),
                     [
                         ("groups", ExperimentSections.Groups(detail)), ("variation", ExperimentSections.Variation(detail)), ("specimen_variation", ExperimentSections.Specimens(detail)),
                         ("tests", ExperimentSections.Tests(detail)), ("effects", EffectSection.Table(detail)), ("checks", ExperimentSections.Checks(detail)),
@@ -25,15 +26,15 @@ internal static class ExperimentShow
                     session.Host.Out);
                 break;
             case RowFormat.Csv:
-                session.Print(GroupsBesideExperiment(detail));
+                session.Print(GroupsBesideExperiment(detail, head));
                 break;
             default:
-                ForPeople(session, standing, detail);
+                ForPeople(session, standing, detail, head);
                 break;
         }
     }
 
-    private static void ForPeople(Session session, CampaignStanding standing, ExperimentDetail detail)
+    private static void ForPeople(Session session, CampaignStanding standing, ExperimentDetail detail, LedgerHead head)
     {
         ExperimentResult result = detail.Result;
         string unit = result.Plan.Unit.Length > 0 ? $" [{result.Plan.Unit}]" : "";
@@ -60,7 +61,7 @@ internal static class ExperimentShow
         Section(session, $"Comparisons ({FollowUpRegistry.Find(result.Plan.FollowUp)?.Name})", ExperimentSections.Comparisons(detail), ExperimentWording.Comparisons(standing.Overview, [result.Plan.FollowUp]));
         Section(session, "Exclusions", ExperimentSections.Exclusions(detail), []);
         session.Host.Out.WriteLine();
-        TextTable.Sentences(session.Host, [.. result.Confirmation is null ? [] : ConfirmationText.Footnotes(standing.Campaign, standing.Experiments), .. CampaignText.Footnotes(standing.Overview, []), CampaignText.Caution]);
+        TextTable.Sentences(session.Host, [.. result.Confirmation is null ? [] : ConfirmationText.Footnotes(standing.Campaign, standing.Experiments), .. CampaignText.Footnotes(standing.Overview, []), CampaignText.Caution, LedgerText.HeadLine(head)]);
     }
 
     private static void Section(Session session, string title, RowTable rows, IEnumerable<string> below)
@@ -131,10 +132,10 @@ internal static class ExperimentShow
         }
     }
 
-    private static RowTable GroupsBesideExperiment(ExperimentDetail detail)
+    private static RowTable GroupsBesideExperiment(ExperimentDetail detail, LedgerHead head)
     {
         RowTable groups = ExperimentSections.Groups(detail);
-        RowTable experiment = ExperimentSections.Experiment(detail);
+        RowTable experiment = ExperimentSections.Experiment(detail, head);
         Cell[] facts = experiment.Rows.Single();
         return new RowTable([.. groups.Columns, .. experiment.Columns], groups.Rows.Select(g => (Cell[])[.. g, .. facts]));
     }

@@ -17,7 +17,7 @@ internal sealed class FamiliesVerb : Verb
     public override Command Build() => new("families", Describe("The families of a campaign, which are corrected each on its own: register them from a file before the seal, or list them with their levels and gates.",
         "families PRIMERS families.csv"))
     {
-        _code, _file, SharedOptions.DecimalMark, SharedOptions.Separator, SharedOptions.Columns,
+        _code, _file, SharedOptions.DecimalMark, SharedOptions.Separator, SharedOptions.Columns, SharedOptions.Seen,
     };
 
     public override int Run(Session session)

@@ -14,7 +14,7 @@ internal sealed class LoadVerb : Verb
     public override Command Build() => new("load", Describe("Load measurement files, each whole or not at all; the same file is never loaded twice.",
         "load PRIMERS week-01.csv week-02.csv"))
     {
-        _code, _files, _amend, SharedOptions.DecimalMark, SharedOptions.Separator, SharedOptions.Columns,
+        _code, _files, _amend, SharedOptions.DecimalMark, SharedOptions.Separator, SharedOptions.Columns, SharedOptions.Seen,
     };
 
     public override int Run(Session session)

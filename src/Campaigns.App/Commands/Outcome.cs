@@ -1,5 +1,6 @@
 using Campaigns.App.Output;
 using Campaigns.Catalog;
+using Campaigns.Catalog.Ledger;
 using Campaigns.Catalog.Loading;
 using Campaigns.Domain;
 using Microsoft.Data.Sqlite;
@@ -31,6 +32,10 @@ internal static class Outcome
         catch (LoadingException error)
         {
             return Fail(host, ExitCode.Refused, error.Message);
+        }
+        catch (RecordException error)
+        {
+            return Fail(host, ExitCode.RecordBroken, error.Message);
         }
         catch (CatalogException error)
         {

@@ -16,7 +16,7 @@ internal sealed class PlanVerb : Verb
     public override Command Build() => new("plan", Describe("Register experiments from a plan file, or change registered ones. A sealed plan is amended, with --reason: experiments may be added, and what decides over others stays.",
         "plan PRIMERS plan.csv"))
     {
-        _code, _file, _reason, SharedOptions.DecimalMark, SharedOptions.Separator, SharedOptions.Columns,
+        _code, _file, _reason, SharedOptions.DecimalMark, SharedOptions.Separator, SharedOptions.Columns, SharedOptions.Seen,
     };
 
     public override int Run(Session session)

@@ -13,7 +13,7 @@ internal sealed class RegisterVerb : Verb
     public override Command Build() => new("register", Describe("Give experiments their levels when they start at the bench, in a campaign that is judged as its experiments arrive. Those that are not registered are so just before their test.",
         "register PRIMERS E07 E08"))
     {
-        _code, _experiments,
+        _code, _experiments, SharedOptions.Seen,
     };
 
     public override int Run(Session session)

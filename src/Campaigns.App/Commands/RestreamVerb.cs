@@ -21,7 +21,7 @@ internal sealed class RestreamVerb : Verb
     public override Command Build() => _online.AddTo(new("restream", Describe("Start a new stream, with other settings, for the experiments that have no level yet. Earlier decisions stand; each stream's guarantee is its own, and they do not add up.",
         "restream PRIMERS --correction saffron --horizon 40 --reason \"twenty experiments more than planned\""))
     {
-        _code, _correction, _reason,
+        _code, _correction, _reason, SharedOptions.Seen,
     });
 
     public override int Run(Session session)

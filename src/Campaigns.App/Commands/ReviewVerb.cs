@@ -1,6 +1,7 @@
 using System.CommandLine;
 using Campaigns.App.Output;
 using Campaigns.App.Wording;
+using Campaigns.Catalog.Ledger;
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Results;
 using Campaigns.Domain;
@@ -16,7 +17,7 @@ internal sealed class ReviewVerb : Verb
 
     public override Command Build() => new("review", Describe("Apply the sealed correction to the family and store the review.", "review PRIMERS"))
     {
-        _code, _family,
+        _code, _family, SharedOptions.Seen,
     };
 
     public override int Run(Session session)
@@ -24,6 +25,7 @@ internal sealed class ReviewVerb : Verb
         string code = session.Get(_code);
         using Catalog.Catalog catalog = session.OpenCatalog();
         ReviewHead review = Review(session, catalog, code, session.Get(_family) == "tested");
+        session.Say(LedgerText.HeadLine(new LedgerReader(catalog).Head));
         session.PrintForScripts(new RowTable(
             [
                 new Column("campaign", null), new Column("review", null, true), new Column("taken_at", null), new Column("correction", null), new Column("level", null, true),

@@ -15,12 +15,16 @@ internal sealed class ReviewsVerb : Verb
     private readonly Option<bool> _families = new("--families") { Description = "A row a family of each review." };
     private readonly Option<string[]> _compare = new("--compare")
     {
-        Description = "Which experiments were gained and lost between two reviews, and why.", HelpName = "EARLIER LATER", Arity = new ArgumentArity(2, 2), AllowMultipleArgumentsPerToken = true,
+        Description = "Which experiments were gained and lost between two reviews, and why.",
+        HelpName = "EARLIER LATER",
+        Arity = new ArgumentArity(2, 2),
+        AllowMultipleArgumentsPerToken = true,
     };
 
     private readonly Option<string?> _rerun = new("--rerun")
     {
-        Description = "Take a review again from the measurements as they stood then, and hold it against the stored one; all takes every one.", HelpName = "N|all",
+        Description = "Take a review again from the measurements as they stood then, and hold it against the stored one; all takes every one.",
+        HelpName = "N|all",
     };
 
     public override Command Build() => new("reviews", Describe("The reviews of a campaign, each as it was on its day; what changed between two.", "reviews PRIMERS --compare 1 2"))
@@ -101,7 +105,7 @@ internal sealed class ReviewsVerb : Verb
             session.Print(ReviewTables.Again(outcomes));
         }
 
-        return outcomes.All(o => o.IsSame) ? ExitCode.Done : ExitCode.RecordNotWhole;
+        return outcomes.All(o => o.IsSame) ? ExitCode.Done : ExitCode.RecordBroken;
     }
 
     private static int Number(string word) => int.TryParse(word, NumberStyles.None, CultureInfo.InvariantCulture, out int number) && number > 0

@@ -20,7 +20,7 @@ internal sealed class RunVerb : Verb
     public override Command Build() => new("run", Describe("Do everything for a campaign folder: open, plan, seal, load, test, review, and print the survivors and the risk.",
         "run campaigns/adhesion-screen"))
     {
-        _folder, SharedOptions.DecimalMark, SharedOptions.Separator, SharedOptions.Columns,
+        _folder, SharedOptions.DecimalMark, SharedOptions.Separator, SharedOptions.Columns, SharedOptions.Seen,
     };
 
     public override int Run(Session session)

@@ -1,5 +1,7 @@
 using System.CommandLine;
 using Campaigns.App.Output;
+using Campaigns.App.Wording;
+using Campaigns.Catalog.Ledger;
 using Campaigns.Catalog.Plans;
 using Campaigns.Domain;
 
@@ -12,7 +14,7 @@ internal sealed class SealVerb : Verb
 
     public override Command Build() => new("seal", Describe("Fix the plan: level, correction and families stay as they are from here on.", "seal PRIMERS"))
     {
-        _code,
+        _code, SharedOptions.Seen,
     };
 
     public override int Run(Session session)
@@ -23,6 +25,7 @@ internal sealed class SealVerb : Verb
         Campaign campaign = stored.Campaign;
         session.Say($"Sealed {code}: {CampaignText.Goal(campaign)}. Plan digest (SHA-256): {campaign.PlanDigest}.");
         CampaignRules.SayNotes(session.Host, campaign, campaign.IsExploratory ? [] : new PlanStore(catalog).Read(stored.Id));
+        session.Say(LedgerText.HeadLine(new LedgerReader(catalog).Head));
         session.PrintForScripts(new RowTable(
             [new Column("campaign", null), new Column("sealed_at", null), new Column("plan_digest", null)],
             [[Cell.Text(code), Cell.Text(Words.Instant(campaign.SealedAt!.Value)), Cell.Text(campaign.PlanDigest)]]));

@@ -12,6 +12,8 @@ namespace Campaigns.App.Commands;
 /// <summary>One command at work: what was typed, and the world around it.</summary>
 internal sealed class Session(Host host, ParseResult typed)
 {
+    private const int LongestName = 200;
+
     private List<string>? _held;
 
     public Host Host { get; } = host;
@@ -33,11 +35,20 @@ internal sealed class Session(Host host, ParseResult typed)
         [.. CorrectionRegistry.All.Select(c => c.Key), .. StreamOptions.Keys]);
 
     /// <summary>Who acts: the account, and the name given with --as.</summary>
-    public Actor Actor => Actor.OfProcess with { ActingAs = Typed.GetValue(SharedOptions.ActingAs)?.Trim() };
+    public Actor Actor => new(Host.Account, Named(Typed.GetValue(SharedOptions.ActingAs)?.Trim()));
 
-    public Catalog.Catalog OpenCatalog() => Catalog.Catalog.Open(CatalogPath, Host.Clock, Actor);
+    private static string? Named(string? name)
+    {
+        CampaignRules.CheckLength("--as", name ?? "", LongestName);
+        return name;
+    }
 
-    public Catalog.Catalog OpenOrCreateCatalog() => Catalog.Catalog.OpenOrCreate(CatalogPath, Host.Clock, Actor);
+    /// <summary>The head of the ledger that whoever typed the command has seen; null where none was given, or the command changes nothing.</summary>
+    private LedgerHead? Seen => Typed.GetValue(SharedOptions.Seen);
+
+    public Catalog.Catalog OpenCatalog() => Catalog.Catalog.Open(CatalogPath, Host.Clock, Actor, Seen);
+
+    public Catalog.Catalog OpenOrCreateCatalog() => Catalog.Catalog.OpenOrCreate(CatalogPath, Host.Clock, Actor, Seen);
 
     public T Get<T>(Option<T> option) => Typed.GetValue(option)!;
 

@@ -1,5 +1,6 @@
 using System.CommandLine;
 using Campaigns.App.Output;
+using Campaigns.Catalog.Ledger;
 using Campaigns.Catalog.Loading;
 
 namespace Campaigns.App.Commands;
@@ -23,6 +24,10 @@ internal static class SharedOptions
         Recursive = true,
     });
 
+    /// <summary>For commands that change a campaign.</summary>
+    public static Option<LedgerHead?> Seen { get; } = HeadOption(
+        "Change the campaign only if nobody changed it since this head of the ledger, as 'campaigns show' prints it; otherwise it is refused, with what was done since.");
+
     public static Option<RowFormat> Format { get; } = NewFormat();
 
     public static Option<int> Top { get; } = NewTop();
@@ -39,6 +44,24 @@ internal static class SharedOptions
     };
 
     public static Argument<string> Code() => TypedOptions.NotBlank(new Argument<string>("CODE") { Description = "The campaign." });
+
+    /// <summary>An option that takes a head of the ledger.</summary>
+    public static Option<LedgerHead?> HeadOption(string description) => new("--head")
+    {
+        Description = description,
+        HelpName = "SEQUENCE:HASH",
+        CustomParser = typed =>
+        {
+            string word = typed.Tokens[0].Value;
+            if (LedgerHead.TryParse(word, out LedgerHead head))
+            {
+                return head;
+            }
+
+            typed.AddError($"--head takes a head as it was printed, SEQUENCE:HASH with 64 hexadecimal digits, not '{word}'.");
+            return null;
+        },
+    };
 
     /// <summary>How a file of measurements is read.</summary>
     public static DelimitedFileOptions Reading(Session session, IReadOnlyList<string> ourNames)

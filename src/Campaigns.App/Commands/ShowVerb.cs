@@ -1,7 +1,9 @@
 using System.CommandLine;
 using Campaigns.App.Dashboard.Canvas;
 using Campaigns.App.Output;
+using Campaigns.App.Wording;
 using Campaigns.Catalog.Excluding;
+using Campaigns.Catalog.Ledger;
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Results;
 using Campaigns.Domain;
@@ -38,20 +40,24 @@ internal sealed class ShowVerb : Verb
             return ExitCode.Done;
         }
 
-        CampaignStanding standing = new StandingReader(catalog).Read(session.Get(_code));
-        if (session.Typed.GetValue(_experiment) is { } experiment)
+        return catalog.Snapshot(() =>
         {
-            ExperimentShow.Write(session, standing, new DetailReader(catalog).Read(standing, experiment));
-        }
-        else
-        {
-            ShowCampaign(session, catalog, standing);
-        }
+            LedgerHead head = new LedgerReader(catalog).Head;
+            CampaignStanding standing = new StandingReader(catalog).Read(session.Get(_code));
+            if (session.Typed.GetValue(_experiment) is { } experiment)
+            {
+                ExperimentShow.Write(session, standing, new DetailReader(catalog).Read(standing, experiment), head);
+            }
+            else
+            {
+                ShowCampaign(session, catalog, standing, head);
+            }
 
-        return ExitCode.Done;
+            return ExitCode.Done;
+        });
     }
 
-    private static void ShowCampaign(Session session, Catalog.Catalog catalog, CampaignStanding standing)
+    private static void ShowCampaign(Session session, Catalog.Catalog catalog, CampaignStanding standing, LedgerHead head)
     {
         Campaign campaign = standing.Campaign;
         long id = new CampaignStore(catalog).Get(campaign.Code).Id;
@@ -83,6 +89,8 @@ internal sealed class ShowVerb : Verb
             ("streams", "streams", Cell.Whole(campaign.Streams.Count == 0 ? null : campaign.Streams.Count)),
             ("families", "families", Cell.Whole(standing.Families.Count)),
             ("review_interim", "", Cell.Truth(standing.LastReview?.IsInterim)),
+            ("ledger_sequence", "", Cell.Whole(head.Sequence)),
+            ("ledger_head", "", Cell.Text(head.ToString())),
         };
         if (session.Format != RowFormat.Table)
         {
@@ -124,7 +132,7 @@ internal sealed class ShowVerb : Verb
             new ReviewStore(catalog).All(id).Select(r => (Cell[])[Cell.Whole(r.Number), Cell.Text(Words.Instant(r.At)), Cell.Text(r.Correction), Cell.Setting(r.Level.Value), Cell.Whole(r.FamilySize), Cell.Whole(r.TestedCount), Cell.Whole(r.SurvivorCount), Cell.Truth(r.IsInterim)]))
         {
             WhenEmpty = "No review was taken yet.",
-            Below = [.. CampaignText.Footnotes(standing.Overview, standing.Experiments.Select(e => e.Plan.Test)), CampaignText.Caution],
+            Below = [.. CampaignText.Footnotes(standing.Overview, standing.Experiments.Select(e => e.Plan.Test)), CampaignText.Caution, LedgerText.HeadLine(head)],
         });
     }
 

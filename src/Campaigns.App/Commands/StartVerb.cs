@@ -1,4 +1,5 @@
 using System.CommandLine;
+using Campaigns.Catalog.Loading;
 using Campaigns.Catalog.Plans;
 using Campaigns.Domain;
 using Campaigns.Statistics.Corrections;
@@ -36,6 +37,8 @@ internal sealed class StartVerb : Verb
     {
         string code = session.Get(_code);
         CampaignRules.CheckCode(code);
+        CampaignRules.CheckLength("--title", session.Get(_title), CampaignFile.LongestTitle);
+        CampaignRules.CheckLength("--purpose", session.Get(_purpose), CampaignFile.LongestPurpose);
         ErrorRate rate = ErrorRateWords.Parse(session.Get(_errorRate) ?? "false-discovery")!.Value;
         string correction = session.Get(_correction) ?? CampaignRules.UsualCorrection(rate);
         OnlineOptions? online = _online.Typed(session, OnlineRegistry.Find(correction), new SignificanceLevel(session.Get(_level)));

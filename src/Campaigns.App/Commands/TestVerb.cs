@@ -14,7 +14,7 @@ internal sealed class TestVerb : Verb
     public override Command Build() => new("test", Describe("Run the planned test of every experiment that is complete and not yet tested; it is then closed to more data.",
         "test PRIMERS"))
     {
-        _code, _incomplete,
+        _code, _incomplete, SharedOptions.Seen,
     };
 
     public override int Run(Session session)

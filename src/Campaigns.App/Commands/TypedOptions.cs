@@ -26,6 +26,24 @@ internal static class TypedOptions
     public static Option<double?> LevelOrNone(string description) =>
         new("--level") { Description = description, HelpName = "NUMBER", CustomParser = typed => LevelOf(typed) };
 
+    /// <summary>A day of the calendar, YYYY-MM-DD, as the instant at which it begins in UTC, or ends.</summary>
+    public static Option<DateTimeOffset?> Day(string name, string description, bool isEnd) => new(name)
+    {
+        Description = description,
+        HelpName = "DAY",
+        CustomParser = typed =>
+        {
+            string word = typed.Tokens[0].Value;
+            if (DateOnly.TryParseExact(word, "yyyy-MM-dd", CultureInfo.InvariantCulture, DateTimeStyles.None, out DateOnly day) && day < DateOnly.MaxValue)
+            {
+                return new DateTimeOffset(day.AddDays(isEnd ? 1 : 0), TimeOnly.MinValue, TimeSpan.Zero);
+            }
+
+            typed.AddError($"{name} takes a day as YYYY-MM-DD, for example 2026-12-01, not '{word}'.");
+            return null;
+        },
+    };
+
     /// <summary>One of a few words.</summary>
     public static Option<string?> Word(string name, string description, string helpName, params string[] words)
     {

@@ -8,6 +8,9 @@ internal abstract class Verb
     /// <summary>A line that shows how the command is typed, for its help text; known once it is built.</summary>
     public string Example { get; private set; } = "";
 
+    /// <summary>Commands under this one, as in "ledger verify".</summary>
+    public virtual IReadOnlyList<Verb> Under => [];
+
     /// <summary>The command with its arguments and options, described for the help text.</summary>
     public abstract Command Build();
 

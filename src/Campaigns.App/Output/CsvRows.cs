@@ -5,7 +5,10 @@ namespace Campaigns.App.Output;
 /// <summary>Writes rows as comma-separated values.</summary>
 internal static class CsvRows
 {
-    public static void Write(RowTable table, TextWriter writer)
+    /// <param name="table">The rows.</param>
+    /// <param name="writer">Where to.</param>
+    /// <param name="forEyes">Whether a terminal shows it: then what it would obey is written as its code.</param>
+    public static void Write(RowTable table, TextWriter writer, bool forEyes = false)
     {
         var line = new CsvLine(writer);
         line.Write([.. table.Columns.Select(c => c.Name)]);
@@ -14,7 +17,7 @@ internal static class CsvRows
         {
             for (int i = 0; i < row.Length; i++)
             {
-                fields[i] = Text(row[i]);
+                fields[i] = forEyes ? SafeText.Escape(Text(row[i])) : Text(row[i]);
             }
 
             line.Write(fields);

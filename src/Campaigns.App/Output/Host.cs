@@ -1,3 +1,5 @@
+using Campaigns.Catalog.Ledger;
+
 namespace Campaigns.App.Output;
 
 /// <summary>The world around one run of the program: streams, clock, environment, and the wish to stop.</summary>
@@ -11,6 +13,9 @@ internal sealed class Host
 
     /// <summary>Where instants come from.</summary>
     public required TimeProvider Clock { get; init; }
+
+    /// <summary>The account under which the program runs, as the ledger names it.</summary>
+    public string Account { get; init; } = Actor.OfProcess.Account;
 
     /// <summary>Reads an environment variable.</summary>
     public required Func<string, string?> Variable { get; init; }

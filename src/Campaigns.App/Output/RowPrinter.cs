@@ -13,7 +13,7 @@ internal static class RowPrinter
         switch (format)
         {
             case RowFormat.Csv:
-                CsvRows.Write(table, host.Out);
+                CsvRows.Write(table, host.Out, forEyes: host.OutIsTerminal);
                 break;
             case RowFormat.Json:
                 JsonRows.Write(table, host.Out);

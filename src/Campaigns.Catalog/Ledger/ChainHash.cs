@@ -11,22 +11,33 @@ namespace Campaigns.Catalog.Ledger;
 /// </remarks>
 internal sealed class ChainHash : IDisposable
 {
+    private const byte DomainOfEntries = 0;
     private const string EntryLabel = "campaigns ledger 1";
     private readonly IncrementalHash _hash = IncrementalHash.CreateHash(HashAlgorithmName.SHA256);
     private readonly byte[] _buffer = new byte[1 << 15];
     private int _length;
+    private bool _isOpen;
 
+    /// <summary>Begins anew, whatever was added before.</summary>
     /// <param name="domain">0 for an entry, 1 for rows.</param>
-    public ChainHash(byte domain) => Byte(domain);
+    public void Begin(byte domain)
+    {
+        if (_isOpen)
+        {
+            Finish();
+        }
+
+        _isOpen = true;
+        Byte(domain);
+    }
 
     /// <summary>The hash of an entry that follows another.</summary>
     /// <param name="previous">Hash of the entry before; zeros before the first.</param>
     /// <param name="entry">The entry; its own hash does not count.</param>
     public static string Of(string previous, LedgerEntry entry)
     {
-        using var hash = new ChainHash(0);
-        hash.Text(EntryLabel);
-        hash.Text(previous);
+        using var hash = new ChainHash();
+        hash.BeginEntry(Encoding.UTF8.GetBytes(previous));
         hash.Integer(entry.Sequence);
         hash.Integer(Instants.ToMicroseconds(entry.At));
         hash.Text(entry.By.Account);
@@ -87,6 +98,22 @@ internal sealed class ChainHash : IDisposable
         Bytes(Encoding.UTF8.GetBytes(text));
     }
 
+    /// <summary>A text that is there, as its UTF-8 bytes; the same encoding as <see cref="Text"/>.</summary>
+    public void Utf8(ReadOnlySpan<byte> utf8)
+    {
+        Byte(1);
+        Bytes(utf8);
+    }
+
+    /// <summary>Begins an entry: its domain, the label, and the hash before.</summary>
+    /// <param name="previous">That hash as it is written: 64 hexadecimal digits.</param>
+    public void BeginEntry(ReadOnlySpan<byte> previous)
+    {
+        Begin(DomainOfEntries);
+        Text(EntryLabel);
+        Utf8(previous);
+    }
+
     /// <summary>Bytes after their count.</summary>
     public void Bytes(ReadOnlySpan<byte> bytes)
     {
@@ -98,6 +125,7 @@ internal sealed class ChainHash : IDisposable
     public string Finish()
     {
         Flush();
+        _isOpen = false;
         return Convert.ToHexStringLower(_hash.GetHashAndReset());
     }
 

@@ -1,5 +1,3 @@
-using Campaigns.Catalog.Providers;
-
 namespace Campaigns.Catalog.Ledger;
 
 /// <summary>A kind of rows that an entry of the ledger speaks for.</summary>
@@ -14,36 +12,6 @@ internal sealed record EvidenceKind(string Word, bool IsLatestOnly, string Owner
 
     /// <summary>Rows of an owner in a range.</summary>
     public EvidenceRequest Of(long owner, long first, long last) => new(this, owner, first, last);
-
-    /// <summary>SHA-256 of the rows: the domain of rows, the word of the kind, then of each statement its number and of each row every cell with its type. O(bytes).</summary>
-    /// <param name="catalog">The open catalog.</param>
-    /// <param name="owner">Whose rows.</param>
-    /// <param name="first">First of the range.</param>
-    /// <param name="last">Last of the range.</param>
-    public string Digest(Catalog catalog, long owner, long first, long last)
-    {
-        using var hash = new ChainHash(1);
-        hash.Text(Word);
-        hash.Integer(owner);
-        for (int i = 0; i < Rows.Length; i++)
-        {
-            hash.Integer(i);
-            using SqliteStatement rows = catalog.Prepare(Rows[i]);
-            rows.Bind(1, owner);
-            if (rows.ParameterCount == 3)
-            {
-                rows.Bind(2, first).Bind(3, last);
-            }
-
-            while (rows.Read())
-            {
-                hash.Byte((byte)'r');
-                rows.AddRowTo(hash);
-            }
-        }
-
-        return hash.Finish();
-    }
 }
 
 /// <summary>Rows whose digest an entry is to carry.</summary>

@@ -65,7 +65,7 @@ internal static class EvidenceRegistry
     public static EvidenceKind Original { get; } = new(
         "original",
         IsLatestOnly: false,
-        "SELECT load_id, 0, 0 FROM originals ORDER BY load_id",
+        "SELECT load_id, 0, 0 FROM originals UNION SELECT load_id, 0, 0 FROM original_pieces ORDER BY 1",
         [
             "SELECT load_id, encoding, separator, decimal_mark, columns, compression, piece_count FROM originals WHERE load_id = ?1",
             "SELECT position, byte_count, content FROM original_pieces WHERE load_id = ?1 ORDER BY position",

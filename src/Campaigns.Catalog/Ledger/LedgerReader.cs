@@ -13,6 +13,18 @@ public sealed record LedgerFilter
 
     /// <summary>The earliest sequence.</summary>
     public long From { get; init; } = 1;
+
+    /// <summary>Code of an experiment of <see cref="Campaign"/>: entries that planned, sealed, brought values for, tested, decided or changed it. A plan's entry is taken wherever it may have registered it.</summary>
+    public string? Experiment { get; init; }
+
+    /// <summary>Who: the account, or the name that it acted as.</summary>
+    public string? By { get; init; }
+
+    /// <summary>The earliest instant.</summary>
+    public DateTimeOffset? Since { get; init; }
+
+    /// <summary>The instant before which entries are taken.</summary>
+    public DateTimeOffset? Before { get; init; }
 }
 
 /// <summary>Reads the ledger as it stands; whether it is whole is for the verifier to say.</summary>
@@ -24,24 +36,33 @@ public sealed class LedgerReader(Catalog catalog)
 
     /// <summary>Entries in the order of the chain, with their changes and evidence. Three scans, whatever the number of entries.</summary>
     /// <param name="filter">Which.</param>
+    /// <exception cref="RecordException">An entry holds an instant that is none, so that it was not this program that wrote it.</exception>
     public IEnumerable<LedgerEntry> Entries(LedgerFilter filter)
     {
         ArgumentNullException.ThrowIfNull(filter);
         using SqliteStatement entries = catalog.Prepare(
             """
             SELECT sequence, at, account, acting_as, program_version, action, campaign, subject, reason, hash FROM ledger
-            WHERE sequence >= ?1 AND (?2 IS NULL OR campaign = ?2) AND (?3 IS NULL OR action = ?3) ORDER BY sequence
+            WHERE sequence >= ?1 AND (?2 IS NULL OR campaign = ?2) AND (?3 IS NULL OR action = ?3) AND (?4 IS NULL OR acting_as = ?4 OR account = ?4)
+                AND (?5 IS NULL OR at >= ?5) AND (?6 IS NULL OR at < ?6)
+            ORDER BY sequence
             """);
         using var changes = new Followed(catalog, "SELECT sequence, what, before, after FROM ledger_changes WHERE sequence >= ?1 ORDER BY sequence, position", filter.From);
         using var evidence = new Followed(catalog, "SELECT sequence, kind, owner, first, last, digest FROM ledger_evidence WHERE sequence >= ?1 ORDER BY sequence, position", filter.From);
-        entries.Bind(1, filter.From).Bind(2, filter.Campaign).Bind(3, filter.Action);
+        entries.Bind(1, filter.From).Bind(2, filter.Campaign).Bind(3, filter.Action).Bind(4, filter.By).Bind(5, Microseconds(filter.Since)).Bind(6, Microseconds(filter.Before));
+        HashSet<long>? about = filter.Experiment is null ? null : new ExperimentEntries(catalog).Of(filter.Campaign!, filter.Experiment);
         while (entries.Read())
         {
             long sequence = entries.Integer(0);
+            if (about?.Contains(sequence) == false)
+            {
+                continue;
+            }
+
             yield return new LedgerEntry
             {
                 Sequence = sequence,
-                At = Instants.FromMicroseconds(entries.Integer(1)),
+                At = Instant(sequence, entries.Integer(1)),
                 By = new Actor(entries.Text(2), entries.NullableText(3)),
                 ProgramVersion = entries.Text(4),
                 Action = entries.Text(5),
@@ -54,6 +75,12 @@ public sealed class LedgerReader(Catalog catalog)
             };
         }
     }
+
+    private static long? Microseconds(DateTimeOffset? instant) => instant is { } given ? Instants.ToMicroseconds(given) : null;
+
+    private static DateTimeOffset Instant(long sequence, long microseconds) => Instants.IsInstant(microseconds)
+        ? Instants.FromMicroseconds(microseconds)
+        : throw new RecordException(FormattableString.Invariant($"Entry {sequence} of the ledger holds {microseconds} for its instant, which is none: the record was tampered with. 'campaigns ledger verify' says what else was."));
 
     /// <summary>Rows of a second table, read in step with the entries.</summary>
     private sealed class Followed : IDisposable

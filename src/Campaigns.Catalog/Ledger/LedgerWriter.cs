@@ -1,4 +1,3 @@
-using System.Globalization;
 using Campaigns.Catalog.Providers;
 using Campaigns.Catalog.Results;
 
@@ -26,6 +25,7 @@ internal static class LedgerWriter
     {
         (LedgerHead head, long lastAt) = Last(catalog);
         long now = catalog.Now;
+        using var digester = new EvidenceDigester(catalog);
         var entry = new LedgerEntry
         {
             Sequence = head.Sequence + 1,
@@ -36,8 +36,8 @@ internal static class LedgerWriter
             Campaign = act.Campaign,
             Subject = act.Subject,
             Reason = act.Reason,
-            Changes = now < lastAt ? [.. act.Changes, new LedgerChange(LedgerChange.Clock, Instant(lastAt), Instant(now))] : act.Changes,
-            Evidence = [.. act.Evidence.Select(e => new LedgerEvidence(e.Kind.Word, e.Owner, e.First, e.Last, e.Kind.Digest(catalog, e.Owner, e.First, e.Last)))],
+            Changes = now < lastAt ? [.. act.Changes, new LedgerChange(LedgerChange.Clock, Instants.Text(lastAt), Instants.Text(now))] : act.Changes,
+            Evidence = [.. act.Evidence.Select(e => new LedgerEvidence(e.Kind.Word, e.Owner, e.First, e.Last, digester.Digest(e.Kind, e.Owner, e.First, e.Last)))],
             Hash = "",
         };
         entry = entry with { Hash = ChainHash.Of(head.Hash, entry) };
@@ -51,10 +51,6 @@ internal static class LedgerWriter
         using SqliteStatement last = catalog.Prepare("SELECT sequence, hash, at FROM ledger ORDER BY sequence DESC LIMIT 1");
         return last.Read() ? (new LedgerHead(last.Integer(0), last.Text(1)), last.Integer(2)) : (LedgerHead.Empty, long.MinValue);
     }
-
-    /// <summary>An instant as it stands in the ledger's texts.</summary>
-    public static string Instant(long microseconds) =>
-        Instants.FromMicroseconds(microseconds).UtcDateTime.ToString("yyyy-MM-dd'T'HH:mm:ss.ffffff'Z'", CultureInfo.InvariantCulture);
 
     private static void Insert(Catalog catalog, LedgerEntry entry, long at)
     {

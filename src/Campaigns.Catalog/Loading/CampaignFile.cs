@@ -9,6 +9,12 @@ public static class CampaignFile
     /// <summary>The largest file that is read, in bytes.</summary>
     public const int LargestSize = 1 << 20;
 
+    /// <summary>The most characters of a title.</summary>
+    public const int LongestTitle = 200;
+
+    /// <summary>The most characters of a purpose.</summary>
+    public const int LongestPurpose = 10_000;
+
     /// <summary>The keys of the object; only the first is required.</summary>
     public static IReadOnlyList<string> Keys { get; } = ["code", "title", "purpose", "errorRate", "level", "correction", "test", "followUp", .. CampaignOnline.Keys];
 
@@ -39,8 +45,8 @@ public static class CampaignFile
         CampaignDescription description = new()
         {
             Code = code,
-            Title = json.Line("title", 200),
-            Purpose = json.Text("purpose", 10_000),
+            Title = json.Line("title", LongestTitle),
+            Purpose = json.Text("purpose", LongestPurpose),
             ErrorRate = errorRate,
             Level = new SignificanceLevel(level),
             Correction = correction,

@@ -38,6 +38,11 @@ internal sealed class CampaignJson
             while (reader.Read() && reader.TokenType == JsonTokenType.PropertyName)
             {
                 ReadMember(ref reader, keys);
+                if (_problems.Count >= ImportProblems.MostKept)
+                {
+                    // Whatever follows, the file is refused; placing every problem of a huge file would take minutes.
+                    return false;
+                }
             }
 
             // Reading on finds anything that follows the object.

@@ -50,6 +50,19 @@ public sealed class PlanStore(Catalog catalog)
         return plan;
     }
 
+    /// <summary>Refuses a code that no experiment of a campaign has.</summary>
+    /// <exception cref="RefusedException">There is none; the message names the nearest.</exception>
+    public void Demand(StoredCampaign campaign, string experiment)
+    {
+        ArgumentNullException.ThrowIfNull(campaign);
+        Dictionary<long, string> codes = Codes(campaign.Id);
+        if (!codes.ContainsValue(experiment))
+        {
+            string near = Nearest.Of(experiment, [.. codes.Values]) is { } meant ? $"; '{meant}' may be meant" : "";
+            throw new RefusedException($"There is no experiment '{experiment}' in campaign '{campaign.Campaign.Code}'{near}.");
+        }
+    }
+
     /// <summary>The codes of a campaign's experiments by their keys.</summary>
     internal Dictionary<long, string> Codes(long campaignId)
     {

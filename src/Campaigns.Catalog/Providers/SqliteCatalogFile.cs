@@ -103,6 +103,16 @@ internal static class SqliteCatalogFile
         }
     }
 
+    /// <summary>An empty catalog in memory: what the schema of this program looks like.</summary>
+    public static SqliteConnection InMemory()
+    {
+        var connection = new SqliteConnection(new SqliteConnectionStringBuilder { DataSource = ":memory:", Pooling = false }.ToString());
+        connection.Open();
+        Execute(connection, $"PRAGMA application_id = {ApplicationId}; PRAGMA user_version = {SchemaVersion};");
+        Execute(connection, ReadSchema());
+        return connection;
+    }
+
     /// <summary>Connects with the settings of every catalog, whatever its schema.</summary>
     public static SqliteConnection Connect(string path)
     {

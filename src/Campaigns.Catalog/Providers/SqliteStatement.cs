@@ -123,6 +123,10 @@ internal sealed class SqliteStatement : IDisposable
     /// <summary>Makes the statement ready for the next use before its rows are at an end.</summary>
     public void Reset() => Check(sqlite3_reset(_statement));
 
+    public bool IsInteger(int column) => sqlite3_column_type(_statement, column) == SQLITE_INTEGER;
+
+    public bool IsText(int column) => sqlite3_column_type(_statement, column) == SQLITE_TEXT;
+
     public bool IsNull(int column) => sqlite3_column_type(_statement, column) == SQLITE_NULL;
 
     public long Integer(int column) => sqlite3_column_int64(_statement, column);

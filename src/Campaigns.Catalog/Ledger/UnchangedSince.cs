@@ -1,0 +1,63 @@
+using Campaigns.Catalog.Providers;
+using Campaigns.Domain;
+
+namespace Campaigns.Catalog.Ledger;
+
+/// <summary>Two editors of one campaign: whoever says which head was seen is refused where somebody else acted on the campaign after it.</summary>
+internal static class UnchangedSince
+{
+    /// <summary>Looks whether the chain holds a head, before anything is changed.</summary>
+    /// <param name="catalog">The open catalog, in a transaction.</param>
+    /// <param name="seen">The head that was seen.</param>
+    /// <exception cref="RecordException">It does not.</exception>
+    public static void DemandHeld(Catalog catalog, LedgerHead seen)
+    {
+        if (!IsHeld(catalog, seen))
+        {
+            throw new RecordException(
+                $"The ledger of '{catalog.Path}' does not hold the head {seen}: it is the head of another catalog, or the record was cut or written anew; nothing was changed. 'campaigns ledger verify --head {seen}' says more.");
+        }
+    }
+
+    /// <summary>Looks, inside the transaction of a change, whether the campaign stands as it did at a head.</summary>
+    /// <param name="catalog">The open catalog, in a transaction.</param>
+    /// <param name="seen">The head that was seen.</param>
+    /// <param name="campaign">The campaign that is about to be changed; null for the whole catalog.</param>
+    /// <exception cref="RefusedException">Something was done to the campaign since; the details say what.</exception>
+    public static void Demand(Catalog catalog, LedgerHead seen, string? campaign)
+    {
+        List<string> since = Since(catalog, seen, campaign);
+        if (since.Count > 0)
+        {
+            throw new RefusedException(
+                FormattableString.Invariant($"The campaign '{campaign}' was changed since the head that you gave (entry {seen.Sequence}); nothing was changed now. Look at what was done, and repeat the command with the new head, {LedgerWriter.Last(catalog).Head}, if you still want it. Done since:"),
+                since);
+        }
+    }
+
+    private static bool IsHeld(Catalog catalog, LedgerHead seen)
+    {
+        if (seen.Sequence == 0)
+        {
+            return seen == LedgerHead.Empty;
+        }
+
+        using SqliteStatement entry = catalog.Prepare("SELECT hash FROM ledger WHERE sequence = ?1");
+        return entry.Bind(1, seen.Sequence).Read() && entry.Text(0) == seen.Hash;
+    }
+
+    private static List<string> Since(Catalog catalog, LedgerHead seen, string? campaign)
+    {
+        using SqliteStatement later = catalog.Prepare(
+            "SELECT sequence, at, coalesce(acting_as, account), action, subject FROM ledger WHERE sequence > ?1 AND campaign = ?2 ORDER BY sequence");
+        later.Bind(1, seen.Sequence).Bind(2, campaign);
+        var since = new List<string>();
+        while (later.Read())
+        {
+            string subject = later.NullableText(4) is { } text ? $" ({text})" : "";
+            since.Add(FormattableString.Invariant($"entry {later.Integer(0)}, {Instants.Text(later.Integer(1))}, {later.Text(2)}: {later.Text(3)}{subject}"));
+        }
+
+        return since;
+    }
+}
