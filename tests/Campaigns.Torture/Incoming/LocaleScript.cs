@@ -19,7 +19,7 @@ internal sealed partial class LocaleScript(Workbench bench, Func<string[], Ran> 
     [
         "list", "show C", "show C INDIGO", "results C", "survivors C", "comparisons C", "corrections C", "corrections C --by-experiment", "corrections C --near-misses", "risk", "risk C", "risk C --curve",
         "risk --pooled --correction bh --level 0.05", "bound C --all-survivors", "bound C --curve", "overall C", "families F", "decisions O", "results O", "permute P --draws 199", "reviews C", "reviews F --families",
-        "reviews C --lines 1", "reviews C --compare 1 2", "reviews C --rerun all", "history C", "history C --changed", "ledger", "ledger --campaign C", "ledger verify", "show C --plan", "show C --amendments", "show C --withdrawals", "size --groups 3 --effect 0.25,0.4 --power 0.8", "size --campaign 20 --effect 0.4 --groups 3 --share-real 0.1",
+        "reviews C --lines 1", "reviews C --compare 1 2", "reviews C --rerun all", "history C", "history C --changed", "ledger", "ledger C", "ledger verify", "show C --plan", "show C --amendments", "show C --withdrawals", "size --groups 3 --effect 0.25,0.4 --power 0.8", "size --campaign 20 --effect 0.4 --groups 3 --share-real 0.1",
         "adjust p.csv", "adjust p.csv --correction lord --level 0.05",
     ];
 
