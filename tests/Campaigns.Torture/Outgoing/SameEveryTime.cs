@@ -93,14 +93,14 @@ internal sealed class SameEveryTime : TortureTest
     }
 
     /// <summary>Runs the whole campaign in a catalog of its own and gives back everything that must be the same.</summary>
-    private static string Read(string plan, string correction, IReadOnlyList<IEnumerable<string>> files, int? threads)
+    private static string Read(string plan, string correction, IEnumerable<string>[] files, int? threads)
     {
         using var bench = new Workbench();
         string folder = Directory.CreateDirectory(bench.At("C")).FullName;
         Directory.CreateDirectory(Path.Combine(folder, "measurements"));
         bench.Write("C/campaign.json", $$"""{"code": "C", "title": "Invented", "purpose": "", "errorRate": "{{(correction is "holm" or "hommel" ? "familywise" : "false-discovery")}}", "level": 0.05, "correction": "{{correction}}", "test": "f", "followUp": "none"}""");
         bench.Write("C/plan.csv", plan);
-        for (int f = 0; f < files.Count; f++)
+        for (int f = 0; f < files.Length; f++)
         {
             bench.Write(FormattableString.Invariant($"C/measurements/week-{f}.csv"), $"experiment,group,value,specimen,block\n{string.Join('\n', files[f])}\n");
         }
