@@ -36,8 +36,8 @@ public sealed record ReviewComparison(
     /// <param name="events">What was done to experiments between the two, by their keys.</param>
     /// <param name="whyWithoutLine">Why an experiment has no line in a review: whether in the later one, and its key; asked only of those that have none.</param>
     /// <returns>
-    /// The comparison. O(m log m) for all experiments whose own p-value and plan stayed, and as much again for each gained or lost one whose own changed.
-    /// A gate comes first, then the experiment's own p-value, its own plan, the size of the family, the p-values of others, and where none of them alone would have done it, all together.
+    /// The comparison. O(m log m) for all experiments whose own p-value stayed, and as much again for each gained or lost one whose own changed.
+    /// A gate comes first, then the experiment's own p-value, the size of the family, the p-values of others, and where none of them alone would have done it, all together.
     /// </returns>
     public static ReviewComparison Of(
         Campaign campaign, ReviewedFamily before, ReviewedFamily after, IReadOnlyDictionary<long, IReadOnlyList<ReviewEvent>> events, Func<bool, long, ReviewReason> whyWithoutLine)
@@ -75,7 +75,7 @@ public sealed record ReviewComparison(
                 int family = inAfter ? after.FamilyAt(b) : before.FamilyAt(a);
                 differences.Add(new ReviewDifference(
                     key, survives, first, second, reason, after.Members.Families[family].Family.Name, before.Members.Families[family].Size, after.Members.Families[family].Size,
-                    [.. (events.GetValueOrDefault(key) ?? []).Where(e => reason != ReviewReason.FirstTested || e.Cause == ReviewCause.AmendedIn)]));
+                    [.. (events.GetValueOrDefault(key) ?? []).Where(e => reason != ReviewReason.FirstTested || e.Cause is ReviewCause.AmendedIn or ReviewCause.PlanAmendment)]));
             }
 
             a += inBefore ? 1 : 0;
@@ -102,13 +102,9 @@ public sealed record ReviewComparison(
         }
 
         bool otherP = before.Lines[a].P != after.Lines[b].P;
-        bool otherPlan = before.FamilyAt(a) != after.FamilyAt(b)
-            || (!before.Members.Weights.IsEmpty && before.Members.Weights.Span[a] != after.Members.Weights.Span[b]);
-        return otherP && judge.LaterWithOwn(a, b, ofP: true, ofPlan: false) == was ? ReviewReason.OwnP
-            : otherPlan && judge.LaterWithOwn(a, b, ofP: false, ofPlan: true) == was ? ReviewReason.PlanAmendment
-            : otherP && otherPlan && judge.LaterWithOwn(a, b, ofP: true, ofPlan: true) == was ? ReviewReason.Together
+        return otherP && judge.LaterWithOwnP(a, b) == was ? ReviewReason.OwnP
             : judge.EarlierAtLaterSize(a) == isNow ? ReviewReason.FamilySize
-            : judge.LaterAtEarlierSize(a, b, otherP || otherPlan) == isNow ? ReviewReason.OtherP
+            : judge.LaterAtEarlierSize(a, b, otherP) == isNow ? ReviewReason.OtherP
             : ReviewReason.Together;
     }
 }

@@ -3,7 +3,10 @@ using Campaigns.Statistics.Probability;
 namespace Campaigns.Domain;
 
 /// <summary>What two reviews would have decided, had one thing been as in the other: the way to tell which of the things that changed made the difference.</summary>
-/// <remarks>Each question that concerns all experiments is judged once, O(m log m); one about a single experiment's own p-value or plan, once for that experiment.</remarks>
+/// <remarks>
+/// Weights, families and what is shared were fixed by the seal, so that p-values and sizes are all that can differ.
+/// Each question that concerns all experiments is judged once, O(m log m); one about a single experiment's own p-value, once for that experiment.
+/// </remarks>
 /// <param name="campaign">Level, correction, families; sealed, so the same in both.</param>
 /// <param name="before">The earlier review.</param>
 /// <param name="after">The later one.</param>
@@ -12,16 +15,15 @@ internal sealed class ReviewCounterfactual(Campaign campaign, ReviewedFamily bef
     private IReadOnlyList<bool>? _beforeAtLaterSize;
     private IReadOnlyList<bool>? _afterAtEarlierSize;
 
-    /// <summary>Whether an experiment on a line of both survives in the later review with its own p-value, weight and family of the earlier one, as far as they are named.</summary>
-    public bool LaterWithOwn(int placeBefore, int placeAfter, bool ofP, bool ofPlan) =>
-        Judge(WithOwn(after.Members, placeBefore, placeAfter, ofP, ofPlan))[placeAfter];
+    /// <summary>Whether an experiment on a line of both survives in the later review with its own p-value of the earlier one.</summary>
+    public bool LaterWithOwnP(int placeBefore, int placeAfter) => Judge(WithOwnP(placeBefore, placeAfter))[placeAfter];
 
     /// <summary>Whether an experiment of the earlier review survives with all p-values of that review, in families of the later size.</summary>
     public bool EarlierAtLaterSize(int placeBefore) => (_beforeAtLaterSize ??= Judge(Sized(before.Members, after.Members)))[placeBefore];
 
-    /// <summary>Whether an experiment survives with its own p-value, weight and family of the earlier review among the others of the later one, in families of the earlier size.</summary>
-    public bool LaterAtEarlierSize(int placeBefore, int placeAfter, bool ownChanged) => ownChanged
-        ? Judge(Sized(WithOwn(after.Members, placeBefore, placeAfter, true, true), before.Members))[placeAfter]
+    /// <summary>Whether an experiment survives with its own p-value of the earlier review among those of the later one, in families of the earlier size.</summary>
+    public bool LaterAtEarlierSize(int placeBefore, int placeAfter, bool otherP) => otherP
+        ? Judge(Sized(WithOwnP(placeBefore, placeAfter), before.Members))[placeAfter]
         : (_afterAtEarlierSize ??= Judge(Sized(after.Members, before.Members)))[placeAfter];
 
     /// <summary>Members in families of another review's size, never smaller than their tested experiments are many; the weight of those without a p-value follows the other's total.</summary>
@@ -69,32 +71,11 @@ internal sealed class ReviewCounterfactual(Campaign campaign, ReviewedFamily bef
         return sums;
     }
 
-    private FamilyMembers WithOwn(FamilyMembers members, int placeBefore, int placeAfter, bool ofP, bool ofPlan)
+    private FamilyMembers WithOwnP(int placeBefore, int placeAfter)
     {
-        if (ofP)
-        {
-            PValue[] p = members.P.ToArray();
-            p[placeAfter] = before.Members.P.Span[placeBefore];
-            members = members with { P = p };
-        }
-
-        if (ofPlan && !members.Weights.IsEmpty)
-        {
-            double[] weights = members.Weights.ToArray();
-            weights[placeAfter] = before.Members.Weights.Span[placeBefore];
-            members = members with { Weights = weights };
-        }
-
-        if (ofPlan && !members.FamilyOf.IsEmpty)
-        {
-            int[] families = members.FamilyOf.ToArray();
-            families[placeAfter] = before.Members.FamilyOf.Span[placeBefore];
-            members = members with { FamilyOf = families };
-            int[] tested = TestedOf(members);
-            members = members with { Families = [.. members.Families.Select((f, i) => f with { Planned = Math.Max(f.Planned, tested[i]), Size = Math.Max(f.Size, tested[i]) })] };
-        }
-
-        return members;
+        PValue[] p = after.Members.P.ToArray();
+        p[placeAfter] = before.Members.P.Span[placeBefore];
+        return after.Members with { P = p };
     }
 
     private IReadOnlyList<bool> Judge(FamilyMembers members) => FamilyVerdict.Judge(campaign, members).Survives;

@@ -9,9 +9,6 @@ public enum ReviewReason
     /// <summary>Its own p-value changed, and with the earlier one the later review would have decided as the earlier one did.</summary>
     OwnP,
 
-    /// <summary>Its weight or its family was amended, and with the earlier plan the later review would have decided as the earlier one did.</summary>
-    PlanAmendment,
-
     /// <summary>More hypotheses are counted, or fewer: the earlier p-values in a family of the later size decide as the later review did.</summary>
     FamilySize,
 
@@ -75,7 +72,6 @@ public static class ReviewReasonWords
     {
         ReviewReason.FirstTested => "first-tested",
         ReviewReason.OwnP => "own-p",
-        ReviewReason.PlanAmendment => "plan-amendment",
         ReviewReason.FamilySize => "family-size",
         ReviewReason.OtherP => "other-p",
         ReviewReason.Together => "together",

@@ -63,12 +63,15 @@ public sealed class ReviewComparisonTests
     }
 
     [Fact]
-    public void An_amended_weight_is_the_reason_where_the_earlier_one_would_have_left_it()
+    public void Weights_take_part_in_every_judgement()
     {
-        // Weighted Bonferroni: p times the sum of weights over its own: 0.03 x 2 / 1 = 0.06; 0.03 x 4 / 3 = 0.04.
-        ReviewedFamily before = Review(1, 2, "weighted-bonferroni", [1, 1], (1, 0.03), (2, 0.5));
-        ReviewedFamily after = Review(2, 2, "weighted-bonferroni", [3, 1], (1, 0.03), (2, 0.5));
-        Assert.Equal([(1L, true, ReviewReason.PlanAmendment)], Told(Compare("weighted-bonferroni", before, after)));
+        // Weighted Bonferroni: p times the sum of weights over its own: 0.03 x 4 / 3 = 0.04 with weights 3 and 1, 0.03 x 5 / 3 = 0.05 with another of 1, 0.03 x 6 / 3 = 0.06 with two.
+        FamilyCount rest = new(new Family(""), 4, 4) { WeightOfRest = 2 };
+        ReviewedFamily before = Review(1, 2, "weighted-bonferroni", [3, 1], (1, 0.03), (2, 0.5));
+        ReviewedFamily grown = before with { Members = before.Members with { Families = [rest] } };
+        Assert.Equal([(1L, false, ReviewReason.FamilySize)], Told(Compare("weighted-bonferroni", before, grown)));
+        ReviewedFamily kept = before with { Members = before.Members with { Families = [rest with { Size = 3, Planned = 3, WeightOfRest = 1 }] } };
+        Assert.Empty(Compare("weighted-bonferroni", before, kept).Differences);
     }
 
     [Fact]
@@ -144,7 +147,7 @@ public sealed class ReviewComparisonTests
     public void Every_reason_and_every_cause_has_a_word_of_its_own()
     {
         Assert.Equal(
-            ["first-tested", "own-p", "plan-amendment", "family-size", "other-p", "together", "family-opened", "family-closed", "awaits-test", "no-result", "withdrawn"],
+            ["first-tested", "own-p", "family-size", "other-p", "together", "family-opened", "family-closed", "awaits-test", "no-result", "withdrawn"],
             Enum.GetValues<ReviewReason>().Select(r => r.Word()));
         Assert.Equal(
             ["added-values", "exclusion", "exclusion-taken-back", "plan-amendment", "amended-in", "withdrawal", "withdrawal-taken-back"],

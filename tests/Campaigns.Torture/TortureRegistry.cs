@@ -22,7 +22,9 @@ internal static class TortureRegistry
         () => new Incoming.FileForms(),
         () => new Incoming.Bombs(),
         () => new Incoming.NumberForms(),
+        () => new Incoming.Locales(),
         () => new Outgoing.FamilyBookkeeping(),
         () => new Outgoing.TerminalEscapes(),
+        () => new Outgoing.SameEveryTime(),
     ];
 }

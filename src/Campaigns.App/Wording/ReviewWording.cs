@@ -56,9 +56,8 @@ internal static class ReviewWording
         string events = Events(difference);
         return difference.Reason switch
         {
-            ReviewReason.FirstTested => difference.Events.Any(e => e.Cause == ReviewCause.AmendedIn) ? $"amended into the plan and first tested since the earlier review{events}" : "first tested since the earlier review",
+            ReviewReason.FirstTested => difference.Events.Any(e => e.Cause == ReviewCause.AmendedIn) ? $"amended into the plan and first tested since the earlier review{events}" : $"first tested since the earlier review{events}",
             ReviewReason.OwnP => $"its own p went from {P(difference.Before)} to {P(difference.After)}{events}",
-            ReviewReason.PlanAmendment => $"its weight or family was amended{events}",
             ReviewReason.FamilySize => FormattableString.Invariant($"its family {(difference.SizeAfter > difference.SizeBefore ? "grew" : "shrank")} from {difference.SizeBefore} to {difference.SizeAfter} hypotheses"),
             ReviewReason.OtherP => "p-values of other experiments moved the threshold",
             ReviewReason.FamilyOpened => "the gate of its family opened",

@@ -1,14 +1,13 @@
-using System.Text;
-using Campaigns.Catalog.Loading;
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Providers;
 using Campaigns.Catalog.Results;
+using Campaigns.Catalog.Withdrawing;
 using Campaigns.Domain;
 
 namespace Campaigns.Catalog.Reviewing;
 
-/// <summary>The family of a campaign as it was counted at a position of the record: without what came to the plan or to an exploratory campaign later, with the plan that stood then.</summary>
-/// <remarks>One scan of the plan.</remarks>
+/// <summary>The family of a campaign as it was counted at a position of the record: without what came to the plan or to an exploratory campaign later or was withdrawn before any data.</summary>
+/// <remarks>One scan of the plan. Family, weight and what is shared were fixed by the seal, so that they are read as they stand.</remarks>
 internal sealed class PastFamily(Catalog catalog, StoredCampaign stored, RecordPosition asOf)
 {
     private readonly PlanThen _plan = new(catalog, stored.Id);
@@ -33,24 +32,16 @@ internal sealed class PastFamily(Catalog catalog, StoredCampaign stored, RecordP
         Scan((id, row) =>
         {
             bool isTested = next < columns.Count && columns.ExperimentIds[next] == id;
-            tally.Add(
-                _plan.Of(id, "family", row.NullableText(1), asOf.LastAmendmentId), Weight(id, row.NullableReal(2)),
-                _plan.Of(id, "shared_control", row.NullableText(3), asOf.LastAmendmentId), isTested ? columns.P[next] : null);
+            tally.Add(row.NullableText(1), row.NullableReal(2), row.NullableText(3), isTested ? columns.P[next] : null);
             next += isTested ? 1 : 0;
         });
         return tally;
     }
 
-    private double? Weight(long id, double? today)
-    {
-        const string unchanged = "\0";
-        return _plan.Of(id, "weight", unchanged, asOf.LastAmendmentId) is var text && text == unchanged ? today
-            : text is not null && DecimalText.Parse(Encoding.UTF8.GetBytes(text), DecimalMark.Point, out ParsedDecimal number) == NumberReading.Number ? number.ToDouble()
-            : null;
-    }
-
     private void Scan(Action<long, SqliteStatement> each)
     {
+        var withdrawals = new StandingWithdrawals(catalog, stored.Id, asOf);
+
         // The experiments of an exploratory campaign that an earlier version of the program loaded do not say which load brought them: their first values do.
         using SqliteStatement select = catalog.Prepare(
             """
@@ -62,7 +53,7 @@ internal sealed class PastFamily(Catalog catalog, StoredCampaign stored, RecordP
         while (select.Read())
         {
             long id = select.Integer(0);
-            if ((select.IsNull(4) || select.Integer(4) <= (asOf.LastLoadId ?? 0)) && _plan.Has(id, asOf.LastAmendmentId))
+            if ((select.IsNull(4) || select.Integer(4) <= (asOf.LastLoadId ?? 0)) && _plan.Has(id, asOf.LastAmendmentId) && !withdrawals.LeavesFamily(id))
             {
                 each(id, select);
             }

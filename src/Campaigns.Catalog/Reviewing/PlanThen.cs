@@ -1,4 +1,5 @@
 using Campaigns.Catalog.Providers;
+using Campaigns.Domain;
 
 namespace Campaigns.Catalog.Reviewing;
 
@@ -6,9 +7,6 @@ namespace Campaigns.Catalog.Reviewing;
 /// <remarks>Campaigns without an amendment, which is nearly all, cost one look.</remarks>
 internal sealed class PlanThen
 {
-    /// <summary>The field of a change that says that an amendment added the experiment.</summary>
-    public const string Added = "experiment";
-
     private readonly Dictionary<(long ExperimentId, string Field), List<(long AmendmentId, string? Before)>> _changes = [];
 
     public PlanThen(Catalog catalog, long campaignId)
@@ -43,7 +41,7 @@ internal sealed class PlanThen
         Later(experimentId, field, lastAmendmentId) is { } change ? change.Before : today;
 
     /// <summary>Whether the plan had the experiment at a position.</summary>
-    public bool Has(long experimentId, long? lastAmendmentId) => Later(experimentId, Added, lastAmendmentId) is null;
+    public bool Has(long experimentId, long? lastAmendmentId) => Later(experimentId, PlanAmendmentChange.Added, lastAmendmentId) is null;
 
     private (long AmendmentId, string? Before)? Later(long experimentId, string field, long? lastAmendmentId)
     {

@@ -1,5 +1,6 @@
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Providers;
+using Campaigns.Catalog.Withdrawing;
 using Campaigns.Domain;
 
 namespace Campaigns.Catalog.Reviewing;
@@ -28,19 +29,19 @@ public sealed class ReviewComparer(Catalog catalog)
     /// <summary>Why experiments have no line in one of the reviews; what the answers need is read when the first is asked for.</summary>
     private sealed class Missing(Catalog catalog, StoredCampaign stored, StoredReview before, StoredReview after)
     {
-        private readonly Lazy<(Dictionary<long, bool> Results, HashSet<long> Withdrawn)> _before = new(() => Read(catalog, stored, before));
-        private readonly Lazy<(Dictionary<long, bool> Results, HashSet<long> Withdrawn)> _after = new(() => Read(catalog, stored, after));
+        private readonly Lazy<(Dictionary<long, bool> Results, StandingWithdrawals Withdrawals)> _before = new(() => Read(catalog, stored, before));
+        private readonly Lazy<(Dictionary<long, bool> Results, StandingWithdrawals Withdrawals)> _after = new(() => Read(catalog, stored, after));
 
         public ReviewReason Why(bool inLater, long experiment)
         {
-            (Dictionary<long, bool> results, HashSet<long> withdrawn) = (inLater ? _after : _before).Value;
-            return withdrawn.Contains(experiment) ? ReviewReason.Withdrawn
+            (Dictionary<long, bool> results, StandingWithdrawals withdrawals) = (inLater ? _after : _before).Value;
+            return withdrawals.IsWithdrawn(experiment) ? ReviewReason.Withdrawn
                 : !results.TryGetValue(experiment, out bool hasP) ? ReviewReason.FirstTested
                 : hasP ? ReviewReason.AwaitsTest : ReviewReason.NoResult;
         }
 
         /// <summary>Whether the latest result of each experiment before a review has a p-value, and who was withdrawn then.</summary>
-        private static (Dictionary<long, bool> Results, HashSet<long> Withdrawn) Read(Catalog catalog, StoredCampaign stored, StoredReview review)
+        private static (Dictionary<long, bool> Results, StandingWithdrawals Withdrawals) Read(Catalog catalog, StoredCampaign stored, StoredReview review)
         {
             var results = new Dictionary<long, bool>();
             using SqliteStatement select = catalog.Prepare(
@@ -54,19 +55,7 @@ public sealed class ReviewComparer(Catalog catalog)
                 results[select.Integer(0)] = select.Integer(1) != 0;
             }
 
-            var withdrawn = new HashSet<long>();
-            using SqliteStatement withdrawals = catalog.Prepare(
-                """
-                SELECT w.experiment_id, w.is_withdrawn FROM withdrawals w JOIN experiments e ON e.id = w.experiment_id
-                WHERE e.campaign_id = ?1 AND w.id <= ?2 ORDER BY w.id
-                """);
-            withdrawals.Bind(1, stored.Id).Bind(2, review.Position.LastWithdrawalId ?? 0);
-            while (withdrawals.Read())
-            {
-                _ = withdrawals.Integer(1) != 0 ? withdrawn.Add(withdrawals.Integer(0)) : withdrawn.Remove(withdrawals.Integer(0));
-            }
-
-            return (results, withdrawn);
+            return (results, new StandingWithdrawals(catalog, stored.Id, review.Position));
         }
     }
 }

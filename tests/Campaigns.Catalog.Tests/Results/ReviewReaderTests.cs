@@ -1,6 +1,8 @@
 using Campaigns.Catalog.Excluding;
+using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Results;
 using Campaigns.Catalog.Reviewing;
+using Campaigns.Catalog.Withdrawing;
 using Campaigns.Domain;
 using Campaigns.Statistics.Corrections;
 using Campaigns.Statistics.Probability;
@@ -111,6 +113,27 @@ public sealed class ReviewReaderTests
         ReviewRecord record = new ReviewReader(catalog.Catalog).Records(TestCatalog.Code).Single();
         Assert.Equal([("one", 0.025, 1), ("two", 0.025, 0)], record.Families.Select(f => (f.Name, f.Level.Value, f.Survivors)));
         Assert.Equal([("E1", "one", true), ("E2", "two", false)], new ReviewReader(catalog.Catalog).Lines(TestCatalog.Code, 1).Lines.Select(l => (l.Experiment, l.Family.Name, l.Line.Survives)));
+    }
+
+    [Fact]
+    public void A_withdrawal_and_an_amendment_of_the_plan_are_told_apart()
+    {
+        using TestCatalog catalog = Reviewed();
+        new WithdrawalStore(catalog.Catalog).Decide(TestCatalog.Code, ["E1"], true, "wrong primer", "the test");
+        catalog.Review();
+        Assert.Equal(["E1 lost withdrawn withdrawal (wrong primer)"], Told(catalog, 2, 3));
+        new WithdrawalStore(catalog.Catalog).Decide(TestCatalog.Code, ["E1"], false, "the primer was right", "the test");
+        catalog.Test();
+        catalog.Review();
+        Assert.Equal(["E1 gained withdrawn withdrawal-taken-back (the primer was right)"], Told(catalog, 3, 4));
+        new PlanStore(catalog.Catalog).Register(TestCatalog.Code, [.. Enumerable.Range(5, 3).Select(i => TestCatalog.Experiment(FormattableString.Invariant($"E{i}")))], "three more shades");
+        catalog.Load(TestCatalog.Rows("E5", "A", Apart) + TestCatalog.Rows("E5", "B", Beside));
+        catalog.Test();
+        catalog.Review();
+        Assert.Equal(["E5 gained first-tested amended-in (three more shades)"], Told(catalog, 4, 5));
+        ReviewComparison compared = new ReviewComparer(catalog.Catalog).Compare(TestCatalog.Code, 4, 5).Comparison;
+        Assert.Equal((3, 6, 3), (compared.SizesBefore.Single(), compared.SizesAfter.Single(), compared.AmendedIn));
+        Assert.Equal([0, 0, 0, 0, 1], new ReviewReader(catalog.Catalog).Records(TestCatalog.Code).Select(r => r.PlanVersion));
     }
 
     private static string[] Told(TestCatalog catalog, int earlier, int later)

@@ -1,7 +1,9 @@
 using Campaigns.Catalog.Excluding;
+using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Providers;
 using Campaigns.Catalog.Results;
 using Campaigns.Catalog.Reviewing;
+using Campaigns.Catalog.Withdrawing;
 using Campaigns.Domain;
 using Campaigns.Statistics.Corrections;
 using Campaigns.Statistics.Probability;
@@ -117,7 +119,7 @@ public sealed class ReviewRerunTests
         using var catalog = new TestCatalog();
         catalog.Campaigns.Open(new Campaign { Code = TestCatalog.Code, ErrorRate = ErrorRate.Familywise, Level = new SignificanceLevel(0.05), Correction = "holm", OpenedAt = catalog.Clock.GetUtcNow() });
         catalog.Plan([.. Enumerable.Range(1, 6).Select(i => TestCatalog.Experiment(FormattableString.Invariant($"E{i}")) with { Family = i <= 3 ? "one" : "two", Weight = i })]);
-        new Campaigns.Catalog.Plans.FamilyStore(catalog.Catalog).Register(TestCatalog.Code, [new Family("one"), new Family("two") { Correction = "weighted-holm", OpensAfter = "one" }]);
+        new FamilyStore(catalog.Catalog).Register(TestCatalog.Code, [new Family("one"), new Family("two") { Correction = "weighted-holm", OpensAfter = "one" }]);
         catalog.Campaigns.Seal(TestCatalog.Code);
         foreach (int[] part in (int[][])[[2, 4], [1, 5, 6]])
         {
@@ -140,6 +142,34 @@ public sealed class ReviewRerunTests
     }
 
     [Fact]
+    public void A_test_that_was_amended_before_its_use_and_draws_for_a_smaller_family_are_those_of_the_day()
+    {
+        using var catalog = new TestCatalog();
+        catalog.Seal(TestCatalog.Experiment("E1", null, "A", "B") with { Test = "permutation" }, TestCatalog.Experiment("E2", null, "A", "B"), TestCatalog.Experiment("E3", null, "A", "B") with { Test = "permutation" });
+        var random = new Random(7);
+        string Group() => string.Join(' ', Enumerable.Range(0, 14).Select(_ => FormattableString.Invariant($"{random.NextDouble():0.0000}")));
+        foreach (string experiment in (string[])["E1", "E2", "E3"])
+        {
+            if (experiment == "E2")
+            {
+                new PlanStore(catalog.Catalog).Register(TestCatalog.Code, [TestCatalog.Experiment("E2", null, "A", "B") with { Test = "welch" }], "spreads differ");
+            }
+            else if (experiment == "E3")
+            {
+                // Draws follow from level and family size: 0.05 / 303 asks for more than 0.05 / 3.
+                new PlanStore(catalog.Catalog).Register(TestCatalog.Code, [.. Enumerable.Range(0, 300).Select(i => TestCatalog.Experiment(FormattableString.Invariant($"late {i}")))], "many more");
+            }
+
+            catalog.Load(TestCatalog.Rows(experiment, "A", Group()) + TestCatalog.Rows(experiment, "B", Group()));
+            catalog.Test();
+            catalog.Review();
+        }
+
+        Assert.Equal(["99999", "999999"], Raw.Rows(catalog.Catalog.Connection, "SELECT arrangements FROM test_results WHERE arrangements IS NOT NULL ORDER BY test_run_id"));
+        Assert.All(Again(catalog), o => Assert.True(o.IsSame, FormattableString.Invariant($"{o.Review.Number}: {string.Join("; ", o.Figures)} {string.Join(", ", o.Lines.Select(l => l.Experiment))}")));
+    }
+
+    [Fact]
     public void A_hundred_reviews_of_random_work_come_out_the_same()
     {
         const int seed = 20261201;
@@ -148,11 +178,11 @@ public sealed class ReviewRerunTests
         {
             using var catalog = new TestCatalog();
             catalog.Seal([.. Enumerable.Range(1, 8).Select(i => TestCatalog.Experiment(FormattableString.Invariant($"E{i}")))]);
-            var tested = new HashSet<int>();
+            var withdrawn = new HashSet<string>();
             var lines = new Dictionary<int, (string File, long Line)>();
             for (int step = 0; step < 10; step++)
             {
-                int[] chosen = [.. Enumerable.Range(1, 8).Where(_ => random.Next(3) == 0)];
+                int[] chosen = [.. Enumerable.Range(1, 8).Where(e => random.Next(3) == 0 && !withdrawn.Contains(FormattableString.Invariant($"E{e}")))];
                 if (chosen.Length > 0)
                 {
                     var rows = new System.Text.StringBuilder();
@@ -173,6 +203,19 @@ public sealed class ReviewRerunTests
                     (int experiment, (string file, long at)) = lines.ElementAt(random.Next(lines.Count));
                     new ExclusionStore(catalog.Catalog).Decide(TestCatalog.Code, FormattableString.Invariant($"E{experiment}"), new ObservationPlace(at, file), true, "a slip", "the test");
                     lines.Remove(experiment);
+                }
+
+                if (random.Next(3) == 0)
+                {
+                    string experiment = FormattableString.Invariant($"E{random.Next(1, 9)}");
+                    bool withdraw = !withdrawn.Remove(experiment);
+                    new WithdrawalStore(catalog.Catalog).Decide(TestCatalog.Code, [experiment], withdraw, "a doubt", "the test");
+                    _ = withdraw && withdrawn.Add(experiment);
+                }
+
+                if (random.Next(4) == 0)
+                {
+                    new PlanStore(catalog.Catalog).Register(TestCatalog.Code, [TestCatalog.Experiment(FormattableString.Invariant($"late {step}"))], "one more");
                 }
 
                 if (random.Next(4) > 0)
