@@ -12,7 +12,7 @@ internal sealed class StandingWithdrawals
 
     /// <param name="catalog">The open catalog.</param>
     /// <param name="campaignId">The campaign.</param>
-    /// <param name="asOf">The position of the record up to which decisions and test runs count; null for all of them.</param>
+    /// <param name="asOf">The position up to which decisions and test runs count; null for all of them.</param>
     public StandingWithdrawals(Catalog catalog, long campaignId, RecordPosition? asOf = null)
     {
         using SqliteStatement any = catalog.Prepare("SELECT EXISTS (SELECT 1 FROM withdrawals)");
@@ -27,7 +27,7 @@ internal sealed class StandingWithdrawals
         using SqliteStatement select = catalog.Prepare(
             """
             SELECT w.experiment_id, w.id, w.is_withdrawn, w.had_data, w.reason, w.named_by, w.made_at, e.code,
-                (SELECT max(coalesce(t.last_withdrawal_id, 0)) FROM test_results r JOIN test_runs t ON t.id = r.test_run_id WHERE r.experiment_id = w.experiment_id AND r.test_run_id <= ?3),
+                (SELECT max(coalesce(t.last_withdrawal_id, 0)) FROM test_results r JOIN test_runs t ON t.id = r.test_run_id WHERE r.experiment_id = w.experiment_id AND t.id <= ?3),
                 (SELECT coalesce(min(coalesce(t.last_withdrawal_id, 0)), w.id) < w.id FROM test_runs t WHERE t.campaign_id = ?1)
             FROM withdrawals w JOIN experiments e ON e.id = w.experiment_id
             WHERE e.campaign_id = ?1 AND w.id <= ?2 ORDER BY w.experiment_id, w.id
