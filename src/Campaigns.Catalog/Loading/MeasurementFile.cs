@@ -34,6 +34,7 @@ public sealed class MeasurementFile : IDisposable
         _block = finder.Find("block");
         _order = finder.Find("order");
         IgnoredColumns = finder.Ignored;
+        Form = FileForm.Of(file, options.DecimalMark, finder);
     }
 
     /// <summary>Our names of the columns; the first three are required.</summary>
@@ -47,6 +48,9 @@ public sealed class MeasurementFile : IDisposable
 
     /// <summary>The headers of columns that are not used, for a notice.</summary>
     public IReadOnlyList<string> IgnoredColumns { get; } = [];
+
+    /// <summary>How the file was read: encoding, separator, decimal mark and the headers taken for our columns.</summary>
+    public FileForm Form { get; } = FileForm.Unknown;
 
     /// <summary>Names that were given another spelling of the same letters, for a notice; the first hundred.</summary>
     public IReadOnlyCollection<string> RespelledNames => _names.Respelled;
@@ -70,7 +74,11 @@ public sealed class MeasurementFile : IDisposable
     /// <param name="path">The file.</param>
     /// <param name="options">How to read it.</param>
     /// <exception cref="LoadingException">The file is not there or cannot be read.</exception>
-    public static MeasurementFile Open(string path, DelimitedFileOptions options) => new(DelimitedFile.Open(path, options, ColumnNames), options);
+    public static MeasurementFile Open(string path, DelimitedFileOptions options) => Open(path, FileOpening.Open, options);
+
+    /// <summary>Opens a file by way of something that gives its bytes.</summary>
+    internal static MeasurementFile Open(string path, Func<string, Stream> open, DelimitedFileOptions options) =>
+        new(DelimitedFile.Open(path, open, options, ColumnNames), options);
 
     /// <summary>Reads the next row that has no problem.</summary>
     /// <param name="row">The row; its texts are valid until the next call.</param>
@@ -122,12 +130,15 @@ public sealed class MeasurementFile : IDisposable
 
     private ReadOnlySpan<byte> RequiredName(int column, scoped ref bool isSound)
     {
-        ReadOnlySpan<byte> name = CleanName(column, ref isSound);
-        if (name.IsEmpty && AsciiText.Trim(_file.Field(column)).IsEmpty)
+        bool isClean = true;
+        ReadOnlySpan<byte> name = CleanName(column, ref isClean);
+        if (name.IsEmpty && isClean)
         {
             _file.Report(column, "empty-name", "the field is empty: every value belongs to an experiment and a group.");
-            isSound = false;
+            isClean = false;
         }
+
+        isSound &= isClean;
 
         return name;
     }

@@ -61,6 +61,7 @@ public sealed class MeasurementFileFormsTests
     [InlineData("experiment,gr\"oup,value\nE1,A,1\n", "stray-quote@1")]
     [InlineData("experiment,group,value\n,A,1\nE1, ,1\n", "empty-name@2:experiment empty-name@3:group")]
     [InlineData("experiment,group,value\nE1,\"A\nB\",1\n", "control-character@2:group")]
+    [InlineData("experiment,group,value\nE1,\"\r\n\",1\n\u00A0,A,1\n", "empty-name@2:group empty-name@4:experiment")]
     [InlineData("experiment,group,value\nE1,A\u0007,1\n", "control-character@2:group")]
     [InlineData("experiment,group,value\nE1,A\u0085B,1\n", "control-character@2:group")]
     [InlineData("experiment,group,value\nE\u001B[2J,A,1\n", "control-character@2:experiment")]

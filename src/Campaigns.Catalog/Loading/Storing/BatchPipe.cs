@@ -1,24 +1,29 @@
 using System.Collections.Concurrent;
 using System.Runtime.ExceptionServices;
+using Campaigns.Catalog.Originals;
 
 namespace Campaigns.Catalog.Loading;
 
 /// <summary>Hands batches of rows from a thread that makes them to the one that stores them, in the order in which they were made, a few batches ahead.</summary>
+/// <remarks>Pieces of the file itself come through the same pipe, so that whoever stores them never waits for the one while the other is what blocks its maker.</remarks>
 internal sealed class BatchPipe : IDisposable
 {
-    private const int BatchesAhead = 4;
+    private const int BatchesAhead = 6;
 
-    private readonly BlockingCollection<RowBatch> _full = new(BatchesAhead);
+    private readonly BlockingCollection<Item> _full = new(BatchesAhead);
     private readonly ConcurrentBag<RowBatch> _free = [];
     private readonly CancellationTokenSource _stop;
+    private readonly Action<OriginalPiece>? _store;
     private readonly Thread _thread;
     private ExceptionDispatchInfo? _fault;
 
-    /// <param name="make">Makes the batches, on a thread of its own: takes empty ones with <see cref="Fresh"/> and gives them with <see cref="Put"/>.</param>
+    /// <param name="make">Makes the batches, on a thread of its own: takes empty ones with <see cref="Fresh"/> and gives them with <see cref="Put(RowBatch)"/>.</param>
     /// <param name="name">What the thread does.</param>
     /// <param name="cancel">Stops the making.</param>
-    public BatchPipe(Action<BatchPipe> make, string name, CancellationToken cancel)
+    /// <param name="store">Stores a piece of the file, on the thread that asks for the batches; null where none come.</param>
+    public BatchPipe(Action<BatchPipe> make, string name, CancellationToken cancel, Action<OriginalPiece>? store = null)
     {
+        _store = store;
         _stop = CancellationTokenSource.CreateLinkedTokenSource(cancel);
         _thread = new Thread(() => Run(make)) { IsBackground = true, Name = name };
         _thread.Start();
@@ -28,14 +33,25 @@ internal sealed class BatchPipe : IDisposable
     public RowBatch Fresh() => _free.TryTake(out RowBatch? batch) ? batch : new RowBatch();
 
     /// <summary>Passes a batch on, for the maker.</summary>
-    public void Put(RowBatch batch) => _full.Add(batch, _stop.Token);
+    public void Put(RowBatch batch) => _full.Add(new Item(batch, null), _stop.Token);
 
-    /// <summary>The next batch; null when all were given out.</summary>
+    /// <summary>Passes a piece of the file on, for a thread that the maker waits for.</summary>
+    public void Put(OriginalPiece piece) => _full.Add(new Item(null, piece), _stop.Token);
+
+    /// <summary>Tells the maker, and threads that it started, to stop.</summary>
+    public CancellationToken Stop => _stop.Token;
+
+    /// <summary>The next batch; null when all were given out. Pieces that come before it are stored.</summary>
     public RowBatch? Next()
     {
-        if (_full.TryTake(out RowBatch? batch, Timeout.Infinite, _stop.Token))
+        while (_full.TryTake(out Item item, Timeout.Infinite, _stop.Token))
         {
-            return batch;
+            if (item.Batch is not null)
+            {
+                return item.Batch;
+            }
+
+            _store!(item.Piece!);
         }
 
         _thread.Join();
@@ -82,4 +98,6 @@ internal sealed class BatchPipe : IDisposable
             _full.CompleteAdding();
         }
     }
+
+    private readonly record struct Item(RowBatch? Batch, OriginalPiece? Piece);
 }

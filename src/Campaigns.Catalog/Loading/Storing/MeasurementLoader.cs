@@ -1,4 +1,5 @@
 using Campaigns.Catalog.Ledger;
+using Campaigns.Catalog.Originals;
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Providers;
 using Campaigns.Domain;
@@ -34,10 +35,9 @@ public sealed class MeasurementLoader(Catalog catalog)
         {
             StoredCampaign campaign = new CampaignStore(catalog).Get(code);
             long size = SizeOf(path);
-            Task<FileDigest> digest = Task.Run(() => FileDigest.Sha256(path), cancel);
 
             // Digesting goes on while the file is read, unless a file of just this size is here already.
-            if (HoldsFileOfSize(campaign.Id, size) && LoadedAt(campaign.Id, Result(digest)) is not null)
+            if (HoldsFileOfSize(campaign.Id, size) && LoadedAt(campaign.Id, FileDigest.Sha256(path)) is not null)
             {
                 return null;
             }
@@ -47,7 +47,7 @@ public sealed class MeasurementLoader(Catalog catalog)
                 throw new RefusedException($"The plan of '{code}' is not sealed: fix it before the data come, with 'campaigns seal {code}', and load again.");
             }
 
-            return new OneFile(catalog, campaign, path, size, digest, options, progress, cancel).Load();
+            return new OneFile(catalog, campaign, path, size, options, progress, cancel).Load();
         });
     }
 
@@ -78,9 +78,6 @@ public sealed class MeasurementLoader(Catalog catalog)
         return file.Exists ? file.Length : 0;
     }
 
-    /// <summary>The digest, with the error of reading the file as it was.</summary>
-    private static FileDigest Result(Task<FileDigest> digest) => digest.GetAwaiter().GetResult();
-
     private bool HasPlan(long campaignId)
     {
         using SqliteStatement any = catalog.Prepare("SELECT EXISTS (SELECT 1 FROM experiments WHERE campaign_id = ?1)");
@@ -89,7 +86,7 @@ public sealed class MeasurementLoader(Catalog catalog)
     }
 
     /// <summary>The loading of one file.</summary>
-    private sealed class OneFile(Catalog catalog, StoredCampaign campaign, string path, long size, Task<FileDigest> digesting, LoadOptions options, Action<WorkProgress> progress, CancellationToken cancel)
+    private sealed class OneFile(Catalog catalog, StoredCampaign campaign, string path, long size, LoadOptions options, Action<WorkProgress> progress, CancellationToken cancel)
     {
         private readonly long _loadId = NextId(catalog);
         private readonly long _setsBefore = GroupSets.LastId(catalog);
@@ -105,8 +102,9 @@ public sealed class MeasurementLoader(Catalog catalog)
         /// <summary>The way for files in which the rows of an experiment come together; null where they turn out not to.</summary>
         private LoadSummary? TogetherOrNull()
         {
-            using var file = MeasurementFile.Open(path, options.Reading);
-            using var rows = new RowSource(file, cancel);
+            using MeasurementFile file = Open(out OriginalTap tap);
+            using var pieces = new OriginalPieces(catalog, _loadId);
+            using var rows = new RowSource(file, tap, pieces.Add, cancel);
             using ExperimentSink sink = NewSink(rows);
             int current = -1;
             while (rows.Next() is { } batch)
@@ -122,14 +120,15 @@ public sealed class MeasurementLoader(Catalog catalog)
                 rows.Recycle(batch);
             }
 
-            return Finish(file, sink);
+            return Finish(file, tap, pieces, sink);
         }
 
         /// <summary>The way for files in any order.</summary>
         private LoadSummary Gathered()
         {
-            using var file = MeasurementFile.Open(path, options.Reading);
-            using var rows = new RowSource(file, cancel);
+            using MeasurementFile file = Open(out OriginalTap tap);
+            using var pieces = new OriginalPieces(catalog, _loadId);
+            using var rows = new RowSource(file, tap, pieces.Add, cancel);
             var heap = new RowHeap();
             while (rows.Next() is { } batch)
             {
@@ -146,15 +145,23 @@ public sealed class MeasurementLoader(Catalog catalog)
                 ordered.Recycle(batch);
             }
 
-            return Finish(file, sink);
+            return Finish(file, tap, pieces, sink);
         }
 
-        private LoadSummary Finish(MeasurementFile file, ExperimentSink sink)
+        private MeasurementFile Open(out OriginalTap tap)
+        {
+            OriginalTap? opened = null;
+            MeasurementFile file = MeasurementFile.Open(path, name => opened = new OriginalTap(name, FileOpening.Open(name)), options.Reading);
+            tap = opened!;
+            return file;
+        }
+
+        private LoadSummary Finish(MeasurementFile file, OriginalTap tap, OriginalPieces pieces, ExperimentSink sink)
         {
             sink.Finish();
             if (_complaints.IsEmpty && file.Problems.IsEmpty)
             {
-                new NewDataRule(catalog, _loadId, _complaints).Look(() => Result(digesting).Hex);
+                new NewDataRule(catalog, _loadId, _complaints).Look(() => tap.Digest.Hex);
             }
 
             _complaints.ReportTo(file.Problems, file.Name);
@@ -165,7 +172,7 @@ public sealed class MeasurementLoader(Catalog catalog)
                     [.. file.Problems.Sentences()]);
             }
 
-            FileDigest digest = Result(digesting);
+            FileDigest digest = tap.Digest;
             if (digest.Size != size || SizeOf(path) != size)
             {
                 throw new RefusedException($"The file '{path}' changed while it was read; nothing of it was loaded. Load it again when it is finished.");
@@ -178,6 +185,7 @@ public sealed class MeasurementLoader(Catalog catalog)
             }
 
             InsertLoad(file, sink, digest);
+            pieces.Finish(file.Form);
             Record(file, sink, digest, becomesExploratory);
             return new LoadSummary(
                 System.IO.Path.GetFileName(path), digest.Hex, file.RowCount, sink.MissingCount, sink.ExperimentCount,
@@ -210,6 +218,7 @@ public sealed class MeasurementLoader(Catalog catalog)
             Evidence =
             [
                 EvidenceRegistry.Load.Of(_loadId),
+                EvidenceRegistry.Original.Of(_loadId),
                 .. becameExploratory ? [EvidenceRegistry.Campaign.Of(campaign.Id)] : Array.Empty<EvidenceRequest>(),
                 .. GroupSets.Since(catalog, campaign.Id, _setsBefore),
             ],

@@ -1,4 +1,5 @@
 using Campaigns.Catalog.Measurements;
+using Campaigns.Catalog.Originals;
 
 namespace Campaigns.Catalog.Loading;
 
@@ -12,9 +13,11 @@ internal sealed class RowSource : IDisposable
     private readonly BatchPipe _pipe;
 
     /// <param name="file">The opened file; it is read by the source's thread until that has ended.</param>
+    /// <param name="tap">The file's bytes, which <paramref name="file"/> reads through it.</param>
+    /// <param name="store">Stores a piece of the file, on the thread that asks for the batches.</param>
     /// <param name="cancel">Stops the reading.</param>
-    public RowSource(MeasurementFile file, CancellationToken cancel) =>
-        _pipe = new BatchPipe(pipe => ReadAll(file, pipe), "reading measurements", cancel);
+    public RowSource(MeasurementFile file, OriginalTap tap, Action<OriginalPiece> store, CancellationToken cancel) =>
+        _pipe = new BatchPipe(pipe => ReadAll(file, tap, pipe), "reading measurements", cancel, store);
 
     /// <summary>Experiments by their numbers in the file.</summary>
     public Utf8Interner Codes { get; } = new();
@@ -30,7 +33,24 @@ internal sealed class RowSource : IDisposable
 
     public void Dispose() => _pipe.Dispose();
 
-    private void ReadAll(MeasurementFile file, BatchPipe pipe)
+    private void ReadAll(MeasurementFile file, OriginalTap tap, BatchPipe pipe)
+    {
+        tap.Start(pipe.Put, pipe.Stop);
+        try
+        {
+            ReadRows(file, pipe);
+            if (file.Problems.IsEmpty)
+            {
+                tap.Finish();
+            }
+        }
+        finally
+        {
+            tap.Abandon();
+        }
+    }
+
+    private void ReadRows(MeasurementFile file, BatchPipe pipe)
     {
         RowBatch batch = pipe.Fresh();
         int experiment = -1;

@@ -8,12 +8,16 @@ internal sealed class ColumnFinder
     private readonly DelimitedFile _file;
     private readonly ColumnMap _map;
     private readonly HashSet<int> _used = [];
+    private readonly List<string> _found = [];
 
     public ColumnFinder(DelimitedFile file, ColumnMap map)
     {
         _file = file;
         _map = map;
     }
+
+    /// <summary>Our columns that were found, each as NAME=HEADER with the header as it stands in the file.</summary>
+    public IReadOnlyList<string> Found => _found;
 
     /// <summary>The headers that no column of ours took, for a notice; one without a name is told by its number.</summary>
     public IReadOnlyList<string> Ignored =>
@@ -48,6 +52,12 @@ internal sealed class ColumnFinder
             _file.Stop();
         }
 
-        return places.Length == 0 ? -1 : places[0];
+        if (places.Length == 0)
+        {
+            return -1;
+        }
+
+        _found.Add($"{name}={_file.Headers[places[0]]}");
+        return places[0];
     }
 }

@@ -1,4 +1,3 @@
-using System.Text;
 using CsvHelper;
 
 namespace Campaigns.Catalog.Loading;
@@ -32,7 +31,7 @@ internal sealed class DelimitedFile : IDisposable
         {
             Separator = separator,
             HasHeader = false,
-            Encoding = Encoding.UTF8,
+            Encoding = System.Text.Encoding.UTF8,
             BufferSize = 1 << 18,
             MaxRecordSize = LongestRecord,
             TrackLineNumbers = true,
@@ -59,6 +58,15 @@ internal sealed class DelimitedFile : IDisposable
     /// <summary>Whether the current row is short and all printable ASCII, so that its names need no look.</summary>
     public bool IsPlain { get; private set; }
 
+    /// <summary>The character between fields.</summary>
+    public char Separator => _separator;
+
+    /// <summary>The form of the file's text.</summary>
+    public SourceKind Encoding => _source.Kind;
+
+    /// <summary>Whether the text began with a byte-order mark.</summary>
+    public bool HasMark => _source.HasMark;
+
     /// <summary>Bytes of text that were read so far.</summary>
     public long Position => _rows.ByteOffset;
 
@@ -67,7 +75,15 @@ internal sealed class DelimitedFile : IDisposable
     /// <param name="options">How to read it.</param>
     /// <param name="ours">Our names of the columns that it may have.</param>
     /// <exception cref="LoadingException">The file is not there or cannot be read, or the separator is none that is known.</exception>
-    public static DelimitedFile Open(string path, DelimitedFileOptions options, IReadOnlyCollection<string> ours)
+    public static DelimitedFile Open(string path, DelimitedFileOptions options, IReadOnlyCollection<string> ours) => Open(path, FileOpening.Open, options, ours);
+
+    /// <summary>Opens a file by way of something that gives its bytes.</summary>
+    /// <inheritdoc cref="Open(string, DelimitedFileOptions, IReadOnlyCollection{string})"/>
+    /// <param name="path">The file.</param>
+    /// <param name="open">Opens it.</param>
+    /// <param name="options">How to read it.</param>
+    /// <param name="ours">Our names of the columns that it may have.</param>
+    public static DelimitedFile Open(string path, Func<string, Stream> open, DelimitedFileOptions options, IReadOnlyCollection<string> ours)
     {
         ArgumentNullException.ThrowIfNull(options);
         if (options.Separator is char given and not (',' or ';' or '\t'))
@@ -75,7 +91,7 @@ internal sealed class DelimitedFile : IDisposable
             throw new LoadingException($"{ShownText.Quote(given.ToString())} is no separator: use a comma, a semicolon or a tab.");
         }
 
-        Stream bytes = FileOpening.Open(path);
+        Stream bytes = open(path);
         try
         {
             SourceText source = new(bytes);

@@ -26,10 +26,14 @@ internal sealed class SourceDecoder : IDisposable
         _rawEnd = bytes.ReadAtLeast(_raw, LongestCharacter, throwOnEndOfStream: false);
         Kind = KindOf(_raw.AsSpan(0, _rawEnd), out int markLength);
         _rawStart = markLength;
+        HasMark = markLength > 0;
     }
 
     /// <summary>The form of the file.</summary>
     public SourceKind Kind { get; }
+
+    /// <summary>Whether the file began with a byte-order mark.</summary>
+    public bool HasMark { get; }
 
     /// <summary>Whether bytes were met that are no characters.</summary>
     public bool IsInvalid { get; private set; }

@@ -26,6 +26,12 @@ internal sealed class SourceText : Stream
         }
     }
 
+    /// <summary>The form of the file.</summary>
+    public SourceKind Kind => _decoder.Kind;
+
+    /// <summary>Whether the file began with a byte-order mark.</summary>
+    public bool HasMark => _decoder.HasMark;
+
     /// <summary>Why the text ends before the file does; null while none was met.</summary>
     public SourceFault? Fault { get; private set; }
 
