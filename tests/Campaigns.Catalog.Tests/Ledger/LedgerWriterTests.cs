@@ -67,6 +67,45 @@ public sealed class LedgerWriterTests
         Assert.Equal(new LedgerChange("clock", "2026-12-01T08:00:00.000000Z", "2026-12-01T07:00:00.000000Z"), Assert.Single(entry.Changes));
     }
 
+    [Fact]
+    public void The_digest_of_rows_is_that_of_every_cell_with_its_type_and_length()
+    {
+        using var catalog = new TestCatalog();
+        string reason = new('ä', 40_000);
+        Live(catalog);
+        new ExclusionStore(catalog.Catalog).Decide(TestCatalog.Code, "E1", new ObservationPlace(3, null), true, reason, "Ada");
+        LedgerEvidence evidence = Assert.Single(Entries(catalog)[^1].Evidence);
+        using var bytes = new MemoryStream();
+        bytes.WriteByte(1);
+        bytes.WriteByte(1);
+        Text("exclusion");
+        Integer(3);
+        Integer(0);
+        bytes.WriteByte((byte)'r');
+        foreach (object cell in (object[])[3L, 1L, 1L, 3L, 1L, "A", "2", reason, "Ada", Instants.ToMicroseconds(catalog.Clock.GetUtcNow()), Campaigns.Catalog.Results.ProgramVersion.Current])
+        {
+            bytes.WriteByte(cell is long ? (byte)1 : (byte)3);
+            if (cell is long number)
+            {
+                Integer(number);
+            }
+            else
+            {
+                Text((string)cell);
+            }
+        }
+
+        Assert.Equal((3, Convert.ToHexStringLower(SHA256.HashData(bytes.ToArray()))), (evidence.Owner, evidence.Digest));
+
+        void Integer(long value) => bytes.Write(BitConverter.GetBytes(value));
+
+        void Text(string text)
+        {
+            Integer(Encoding.UTF8.GetByteCount(text));
+            bytes.Write(Encoding.UTF8.GetBytes(text));
+        }
+    }
+
     [Theory]
     [InlineData("3:00000000000000000000000000000000000000000000000000000000000000Ff", true)]
     [InlineData("3:0000", false)]

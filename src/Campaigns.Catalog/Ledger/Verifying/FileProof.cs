@@ -10,8 +10,8 @@ internal sealed class FileProof(Catalog catalog, Findings findings)
 {
     private const string History = "SELECT MigrationId, ProductVersion FROM \"__EFMigrationsHistory\" ORDER BY MigrationId";
 
-    // Objects of SQLite's own, such as indexes of primary keys, have no text and follow from the tables.
-    private const string Objects = "SELECT type, name, tbl_name, sql FROM sqlite_schema WHERE name NOT LIKE 'sqlite\\_%' ESCAPE '\\' ORDER BY type, name";
+    // Indexes of SQLite's own, for primary keys, have no text; their names are looked at all the same.
+    private const string Objects = "SELECT type, name, tbl_name, sql FROM sqlite_schema ORDER BY type, name";
 
     /// <summary>Looks at the whole file. O(bytes).</summary>
     public void Run()
