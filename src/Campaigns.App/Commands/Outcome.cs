@@ -59,7 +59,7 @@ internal static class Outcome
         }
         catch (IOException error) when (FileTrouble.IsDiskFull(error))
         {
-            return Fail(host, ExitCode.Refused, "The output could not be written: its disk is full. What the catalog holds is as the sentences before say; make room and ask again.");
+            return Fail(host, ExitCode.OurFault, "Reading or writing failed: No space left on device; the output could not be written whole. Make room, check the disk, and ask again.");
         }
         catch (Exception error) when (error is IOException or UnauthorizedAccessException)
         {
