@@ -10,6 +10,9 @@ internal static class TortureRegistry
         () => new Incoming.FileForms(),
         () => new Incoming.Bombs(),
         () => new Incoming.NumberForms(),
+        () => new Incoming.SameFileTwice(),
+        () => new Outgoing.FormulasInText(),
+        () => new Outgoing.FileNamesFromData(),
         () => new Outgoing.TerminalEscapes(),
     ];
 }

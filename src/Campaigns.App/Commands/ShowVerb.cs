@@ -15,10 +15,11 @@ internal sealed class ShowVerb : Verb
 {
     private readonly Argument<string> _code = SharedOptions.Code();
     private readonly Argument<string?> _experiment = new("EXPERIMENT") { Description = "An experiment of it.", Arity = ArgumentArity.ZeroOrOne };
+    private readonly Option<bool> _observations = new("--observations") { Description = "Every observation of the experiment, with the file and the line that it came from." };
 
     public override Command Build() => new("show", Describe("One campaign in full, or one of its experiments: group table, table of variation, result.", "show PRIMERS E07"))
     {
-        _code, _experiment,
+        _code, _experiment, _observations,
     };
 
     public override int Run(Session session)
@@ -26,6 +27,12 @@ internal sealed class ShowVerb : Verb
         using Catalog.Catalog catalog = session.OpenCatalog();
         return catalog.Snapshot(() =>
         {
+            if (session.Get(_observations))
+            {
+                ObservationsTable.Print(session, catalog, session.Get(_code), session.Typed.GetValue(_experiment) ?? throw new UsageException("--observations needs the experiment: campaigns show CODE EXPERIMENT --observations."));
+                return ExitCode.Done;
+            }
+
             LedgerHead head = new LedgerReader(catalog).Head;
             CampaignStanding standing = new StandingReader(catalog).Read(session.Get(_code));
             if (session.Typed.GetValue(_experiment) is { } experiment)
