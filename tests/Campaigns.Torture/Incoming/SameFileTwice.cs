@@ -12,7 +12,7 @@ internal sealed class SameFileTwice : TortureTest
 
     public override int Full => 50;
 
-    public override int Short => 50;
+    public override int Short => 10;
 
     public override void Run(Tally tally, int tries, Random random)
     {

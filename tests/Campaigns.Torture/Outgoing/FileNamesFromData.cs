@@ -19,7 +19,7 @@ internal sealed class FileNamesFromData : TortureTest
 
     public override int Full => 200;
 
-    public override int Short => 60;
+    public override int Short => 24;
 
     public override void Run(Tally tally, int tries, Random random)
     {
