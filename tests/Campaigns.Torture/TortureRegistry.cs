@@ -23,7 +23,10 @@ internal static class TortureRegistry
         () => new Incoming.Bombs(),
         () => new Incoming.NumberForms(),
         () => new Incoming.Locales(),
+        () => new Incoming.SameFileTwice(),
         () => new Outgoing.FamilyBookkeeping(),
+        () => new Outgoing.FormulasInText(),
+        () => new Outgoing.FileNamesFromData(),
         () => new Outgoing.TerminalEscapes(),
         () => new Outgoing.SameEveryTime(),
     ];

@@ -15,6 +15,7 @@ internal sealed class ShowVerb : Verb
 {
     private readonly Argument<string> _code = SharedOptions.Code();
     private readonly Argument<string?> _experiment = new("EXPERIMENT") { Description = "An experiment of it.", Arity = ArgumentArity.ZeroOrOne };
+    private readonly Option<bool> _observations = new("--observations") { Description = "Every observation of the experiment, with the file and the line that it came from." };
     private readonly Option<bool> _plan = new("--plan") { Description = "The plan as it stands, in the columns of a plan file." };
     private readonly Option<bool> _sealedPlan = new("--sealed-plan") { Description = "The plan as it was sealed, every amendment undone, in the columns of a plan file." };
     private readonly Option<bool> _amendments = new("--amendments") { Description = "Every change of the sealed plan: number, when, who, what, before, after, why." };
@@ -22,7 +23,7 @@ internal sealed class ShowVerb : Verb
 
     public override Command Build() => new("show", Describe("One campaign in full, or one of its experiments: group table, table of variation, result.", "show PRIMERS E07"))
     {
-        _code, _experiment, _plan, _sealedPlan, _amendments, _withdrawals,
+        _code, _experiment, _observations, _plan, _sealedPlan, _amendments, _withdrawals,
     };
 
     public override int Run(Session session)
@@ -42,6 +43,12 @@ internal sealed class ShowVerb : Verb
 
         return catalog.Snapshot(() =>
         {
+            if (session.Get(_observations))
+            {
+                ObservationsTable.Print(session, catalog, session.Get(_code), session.Typed.GetValue(_experiment) ?? throw new UsageException("--observations needs the experiment: campaigns show CODE EXPERIMENT --observations."));
+                return ExitCode.Done;
+            }
+
             LedgerHead head = new LedgerReader(catalog).Head;
             CampaignStanding standing = new StandingReader(catalog).Read(session.Get(_code));
             if (session.Typed.GetValue(_experiment) is { } experiment)

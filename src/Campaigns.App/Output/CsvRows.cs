@@ -11,13 +11,14 @@ internal static class CsvRows
     public static void Write(RowTable table, TextWriter writer, bool forEyes = false)
     {
         var line = new CsvLine(writer);
-        line.Write([.. table.Columns.Select(c => c.Name)]);
-        string[] fields = new string[table.Columns.Count];
+        line.Write([.. table.Columns.Select(c => (CsvField)c.Name)]);
+        var fields = new CsvField[table.Columns.Count];
         foreach (Cell[] row in table.Rows)
         {
             for (int i = 0; i < row.Length; i++)
             {
-                fields[i] = forEyes ? SafeText.Escape(Text(row[i])) : Text(row[i]);
+                string text = forEyes ? SafeText.Escape(Text(row[i])) : Text(row[i]);
+                fields[i] = row[i].Kind == CellKind.Text && !row[i].IsPassedOn ? text : CsvField.AsItStands(text);
             }
 
             line.Write(fields);

@@ -1,6 +1,7 @@
 using System.Text;
 using System.Text.Json;
 using Campaigns.Catalog.Excluding;
+using Campaigns.Catalog.Ledger;
 using Campaigns.Catalog.Measurements;
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Providers;
@@ -36,25 +37,40 @@ public sealed class CampaignExport(Catalog catalog)
     /// <summary>Name of the file of standing decisions.</summary>
     public const string DecisionsName = "decisions.csv";
 
+    /// <summary>Name of the file of follow-up comparisons.</summary>
+    public const string ComparisonsName = "comparisons.csv";
+
+    /// <summary>Name of the file of amendments of the sealed plan.</summary>
+    public const string AmendmentsName = "amendments.csv";
+
+    /// <summary>Name of the file of withdrawn experiments.</summary>
+    public const string WithdrawalsName = "withdrawals.csv";
+
+    /// <summary>Name of the file of the campaign's entries in the ledger.</summary>
+    public const string LedgerName = "ledger.csv";
+
+    /// <summary>Name of the file that says what the export is.</summary>
+    public const string RecordName = "record.json";
+
+    /// <summary>The file of measurements, from the folder.</summary>
+    public const string MeasurementsPath = $"measurements/{MeasurementsName}";
+
     /// <summary>Writes the folder whole: it is made beside its place and moved there when it is finished.</summary>
     /// <param name="standing">The campaign as it stands.</param>
     /// <param name="folder">A folder that does not exist, or is empty.</param>
-    /// <param name="writeResults">Writes the file of results.</param>
+    /// <param name="tables">Further tables that were computed from the campaign: the name of each file, and what writes it.</param>
     /// <param name="textOfP">A p-value as it stands in files.</param>
     /// <exception cref="RefusedException">The folder holds something, or cannot be written.</exception>
-    public void Write(CampaignStanding standing, string folder, Action<TextWriter> writeResults, Func<PValue, string> textOfP)
+    /// <returns>The files written, from the folder, and the head of the ledger that they stand at.</returns>
+    public ExportedCampaign Write(CampaignStanding standing, string folder, IReadOnlyList<(string Name, Action<TextWriter> Write)> tables, Func<PValue, string> textOfP)
     {
         ArgumentNullException.ThrowIfNull(standing);
-        ArgumentNullException.ThrowIfNull(writeResults);
+        ArgumentNullException.ThrowIfNull(tables);
         ArgumentNullException.ThrowIfNull(textOfP);
-        folder = System.IO.Path.TrimEndingDirectorySeparator(System.IO.Path.GetFullPath(folder));
-        if (File.Exists(folder) || (Directory.Exists(folder) && Directory.EnumerateFileSystemEntries(folder).Any()))
-        {
-            throw new RefusedException($"'{folder}' exists and is not an empty folder; nothing was written. Name another.");
-        }
-
-        string draft = $"{folder}.new-{Environment.ProcessId}";
-        try
+        LedgerHead head = new LedgerReader(catalog).Head;
+        var records = new RecordFiles(catalog, standing.Campaign.Code, new CampaignStore(catalog).Get(standing.Campaign.Code).Id);
+        string[] written = [];
+        NewFolder.Write(folder, draft =>
         {
             Directory.CreateDirectory(System.IO.Path.Combine(draft, "measurements"));
             WriteFile(draft, "campaign.json", writer => WriteCampaign(standing.Campaign, writer));
@@ -82,24 +98,32 @@ public sealed class CampaignExport(Catalog catalog)
             }
 
             WriteFile(draft, ReviewsName, writer => WriteReviews(standing, writer, textOfP));
-            WriteFile(draft, ResultsName, writeResults);
-            if (Directory.Exists(folder))
+            foreach ((string name, Action<TextWriter> write) in tables)
             {
-                Directory.Delete(folder);
+                WriteFile(draft, name, write);
             }
 
-            Directory.Move(draft, folder);
-        }
-        catch (Exception error) when (error is IOException or UnauthorizedAccessException)
+            WriteRecords(records, draft);
+            var files = Directory.EnumerateFiles(draft, "*", SearchOption.AllDirectories).Select(f => System.IO.Path.GetRelativePath(draft, f).Replace('\\', '/')).ToHashSet(StringComparer.Ordinal);
+            files.Add(ColumnMeanings.FileName);
+            WriteFile(draft, ColumnMeanings.FileName, writer => ColumnMeanings.Write(files, writer));
+            records.WriteRecord(draft, head);
+            written = [.. files.Append(RecordName).Order(StringComparer.Ordinal)];
+        });
+        return new ExportedCampaign(written, head);
+    }
+
+    private static void WriteRecords(RecordFiles records, string draft)
+    {
+        WriteFile(draft, LedgerName, records.WriteLedger);
+        if (records.HasAmendments)
         {
-            throw new RefusedException($"The folder '{folder}' cannot be written: {Providers.FileTrouble.Reason(error, draft, folder)}");
+            WriteFile(draft, AmendmentsName, records.WriteAmendments);
         }
-        finally
+
+        if (records.HasWithdrawals)
         {
-            if (Directory.Exists(draft))
-            {
-                Directory.Delete(draft, recursive: true);
-            }
+            WriteFile(draft, WithdrawalsName, records.WriteWithdrawals);
         }
     }
 
@@ -208,10 +232,10 @@ public sealed class CampaignExport(Catalog catalog)
             for (int i = 0; i < values.Count; i++)
             {
                 csv.Write(
-                    code, labels[values.Groups[i]], values.Text(i),
+                    code, labels[values.Groups[i]], CsvField.AsItStands(values.Text(i)),
                     values.Specimens[i] < 0 ? "" : values.SpecimenNames.Text(values.Specimens[i]),
                     values.Blocks[i] < 0 ? "" : values.BlockNames.Text(values.Blocks[i]),
-                    values.Orders[i] == ObservationColumns.NoOrder ? "" : CsvLine.Number(values.Orders[i]),
+                    values.Orders[i] == ObservationColumns.NoOrder ? default : CsvLine.Number(values.Orders[i]),
                     file, CsvLine.Number(values.Lines[i]));
             }
         }
@@ -225,7 +249,7 @@ public sealed class CampaignExport(Catalog catalog)
         foreach (ExcludedObservation d in decisions)
         {
             csv.Write(
-                d.Experiment, d.File, CsvLine.Number(d.Line), d.Group, d.Value, d.IsExcluded ? "true" : "false", d.Reason, d.NamedBy,
+                d.Experiment, d.File, CsvLine.Number(d.Line), d.Group, CsvField.AsItStands(d.Value), d.IsExcluded ? "true" : "false", d.Reason, d.NamedBy,
                 d.At.UtcDateTime.ToString("yyyy-MM-dd'T'HH:mm:ss'Z'", System.Globalization.CultureInfo.InvariantCulture));
         }
     }

@@ -10,7 +10,7 @@ public sealed class CsvLine(TextWriter writer)
 
     /// <summary>Writes one line.</summary>
     /// <param name="fields">Its fields.</param>
-    public void Write(params ReadOnlySpan<string> fields)
+    public void Write(params ReadOnlySpan<CsvField> fields)
     {
         for (int i = 0; i < fields.Length; i++)
         {
@@ -19,14 +19,18 @@ public sealed class CsvLine(TextWriter writer)
                 writer.Write(',');
             }
 
-            Field(fields[i]);
+            Field(fields[i].Content);
         }
 
         writer.Write('\n');
     }
 
     /// <summary>A number as it stands in a file; empty where there is none.</summary>
-    public static string Number(double? value) => value is { } given ? given.ToString("R", System.Globalization.CultureInfo.InvariantCulture) : "";
+    public static CsvField Number(double? value) => value is { } given ? CsvField.AsItStands(given.ToString("R", System.Globalization.CultureInfo.InvariantCulture)) : default;
+
+    /// <summary>An instant as it stands in a file: UTC, to the second.</summary>
+    public static CsvField Instant(DateTimeOffset at) =>
+        CsvField.AsItStands(at.UtcDateTime.ToString("yyyy-MM-dd'T'HH:mm:ss'Z'", System.Globalization.CultureInfo.InvariantCulture));
 
     private void Field(string text)
     {

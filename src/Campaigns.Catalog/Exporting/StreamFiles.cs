@@ -1,4 +1,3 @@
-using System.Globalization;
 using Campaigns.Catalog.Streams;
 using Campaigns.Domain;
 using Campaigns.Statistics.Probability;
@@ -30,11 +29,11 @@ internal static class StreamFiles
         {
             csv.Write(
                 CsvLine.Number(entry.Stream), CsvLine.Number(entry.Position), experiment, CsvLine.Number(entry.Level), entry.P is { } p ? textOfP(p) : "",
-                entry.Survives is { } survives ? Truth(survives) : "", Instant(entry.RegisteredAt), entry.DecidedAt is { } at ? Instant(at) : "", Truth(entry.Overlaps));
+                entry.Survives is { } survives ? Truth(survives) : "", Instant(entry.RegisteredAt), entry.DecidedAt is { } at ? Instant(at) : default, Truth(entry.Overlaps));
         }
     }
 
     private static string Truth(bool value) => value ? "true" : "false";
 
-    private static string Instant(DateTimeOffset at) => at.UtcDateTime.ToString("yyyy-MM-dd'T'HH:mm:ss'Z'", CultureInfo.InvariantCulture);
+    private static CsvField Instant(DateTimeOffset at) => CsvLine.Instant(at);
 }

@@ -152,9 +152,9 @@ public sealed class MeasurementFile : IDisposable
     private ReadOnlySpan<byte> CleanName(int column, scoped ref bool isSound)
     {
         ReadOnlySpan<byte> field = _file.Field(column);
-        if (_file.IsPlain)
+        if (_file.IsPlain && AsciiText.Trim(field) is var plain && (plain.IsEmpty || plain[0] != '\''))
         {
-            return AsciiText.Trim(field);
+            return plain;
         }
 
         NameFault? fault = _names.Clean(field, out ReadOnlySpan<byte> name);

@@ -1,5 +1,6 @@
 using System.Globalization;
 using System.Security.Cryptography;
+using Campaigns.Catalog.Ledger;
 using Campaigns.Catalog.Loading;
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Providers;
@@ -33,7 +34,8 @@ public sealed class OriginalStore(Catalog catalog)
     /// <summary>Writes the bytes of a kept file, piece by piece, and holds them against the digest that was taken when it was loaded. O(bytes), memory of one piece.</summary>
     /// <param name="file">Which.</param>
     /// <param name="target">Where to; holds damaged bytes where the exception comes.</param>
-    /// <exception cref="CatalogException">What is kept is not what was loaded: the catalog is damaged or was changed by hand.</exception>
+    /// <exception cref="RecordException">What is kept is not what was loaded: the catalog is damaged or was changed by hand.</exception>
+    /// <exception cref="CatalogException">It is kept in a way that this version does not read.</exception>
     public void CopyTo(OriginalFile file, Stream target)
     {
         ArgumentNullException.ThrowIfNull(file);
@@ -78,7 +80,7 @@ public sealed class OriginalStore(Catalog catalog)
         }
     }
 
-    private CatalogException Damaged(OriginalFile file) => new(string.Create(
+    private RecordException Damaged(OriginalFile file) => new(string.Create(
         CultureInfo.InvariantCulture,
         $"The bytes of '{file.FileName}' (load {file.Number}) in the catalog '{catalog.Path}' are not those that were loaded: its SHA-256 does not match. Restore the catalog from a copy."));
 }

@@ -45,7 +45,7 @@ public sealed class FamilyResultsTests
     {
         using TestCatalog catalog = Tested();
         catalog.Review();
-        new CampaignExport(catalog.Catalog).Write(catalog.Standing, catalog.Folder["out"], _ => { }, p => p.Value > 0.5 ? "large" : "small");
+        new CampaignExport(catalog.Catalog).Write(catalog.Standing, catalog.Folder["out"], [], p => p.Value > 0.5 ? "large" : "small");
         Assert.Equal("family,correction,level,opens_after,opens_when\none,,0.02,,\ntwo,weighted-holm,0.03,one,any\nthree,,,two,all\n", File.ReadAllText(Path.Combine(catalog.Folder["out"], CampaignExport.FamiliesName)));
         string[] lines = File.ReadAllLines(Path.Combine(catalog.Folder["out"], CampaignExport.ReviewsName));
         Assert.EndsWith(",survives,family", lines[0], StringComparison.Ordinal);

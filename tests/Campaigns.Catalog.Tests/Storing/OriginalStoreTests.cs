@@ -90,11 +90,11 @@ public sealed class OriginalStoreTests
         byte[] scratch = [];
         byte[] forged = PieceCompression.Compress("experiment,group,value\nE1,a,9\nE1,b,2\n"u8, ref scratch);
         Change(catalog, $"UPDATE original_pieces SET content = x'{Convert.ToHexString(forged)}'");
-        Assert.Contains("SHA-256 does not match", Assert.Throws<CatalogException>(() => Read(catalog, file)).Message, StringComparison.Ordinal);
+        Assert.Contains("SHA-256 does not match", Assert.Throws<RecordException>(() => Read(catalog, file)).Message, StringComparison.Ordinal);
         Change(catalog, "UPDATE original_pieces SET content = x'00ff'");
-        Assert.Contains("not those that were loaded", Assert.Throws<CatalogException>(() => Read(catalog, file)).Message, StringComparison.Ordinal);
+        Assert.Contains("not those that were loaded", Assert.Throws<RecordException>(() => Read(catalog, file)).Message, StringComparison.Ordinal);
         Change(catalog, "DELETE FROM original_pieces");
-        Assert.Throws<CatalogException>(() => Read(catalog, file));
+        Assert.Throws<RecordException>(() => Read(catalog, file));
     }
 
     [Fact]
@@ -104,10 +104,9 @@ public sealed class OriginalStoreTests
         catalog.Load("E1,a,1\nE1,b,2\n");
         LedgerEntry entry = new LedgerReader(catalog.Catalog).Entries(new LedgerFilter { Action = LedgerAction.Load }).Single();
         LedgerEvidence evidence = Assert.Single(entry.Evidence, e => e.Kind == "original");
-        using var digester = new EvidenceDigester(catalog.Catalog);
-        Assert.Equal(evidence.Digest, digester.Digest(EvidenceRegistry.Original, 1, 0, 0));
+        Assert.Equal(evidence.Digest, Digest(catalog));
         Change(catalog, "UPDATE originals SET decimal_mark = 'comma'");
-        Assert.NotEqual(evidence.Digest, digester.Digest(EvidenceRegistry.Original, 1, 0, 0));
+        Assert.NotEqual(evidence.Digest, Digest(catalog));
     }
 
     [Fact]
@@ -125,6 +124,12 @@ public sealed class OriginalStoreTests
     {
         List<string> rules = Raw.Rows(catalog.Catalog.Connection, "SELECT name FROM sqlite_master WHERE type = 'trigger' AND tbl_name LIKE 'original%'");
         Raw.Execute(catalog.Catalog.Path, string.Concat(rules.Select(r => $"DROP TRIGGER \"{r}\"; ")) + sql);
+    }
+
+    private static string Digest(TestCatalog catalog)
+    {
+        using var digester = new EvidenceDigester(catalog.Catalog);
+        return digester.Digest(EvidenceRegistry.Original, 1, 0, 0);
     }
 
     private static TestCatalog Exploratory()

@@ -1,5 +1,6 @@
 using System.Diagnostics.CodeAnalysis;
 using System.Text;
+using Campaigns.Catalog.Exporting;
 
 namespace Campaigns.Catalog.Loading;
 
@@ -34,7 +35,7 @@ internal sealed class NameText
     /// <returns>Null, or the code and the sentence of a refusal.</returns>
     public NameFault? Clean(ReadOnlySpan<byte> field, out ReadOnlySpan<byte> name)
     {
-        name = AsciiText.Trim(field);
+        name = Unguarded(AsciiText.Trim(field));
         if (name.Length <= _longest && AsciiText.IsPlain(name))
         {
             return null;
@@ -57,6 +58,9 @@ internal sealed class NameText
         name = cleaned.Name;
         return cleaned.Fault;
     }
+
+    /// <summary>A text without the apostrophe that keeps spreadsheets from taking it for a formula.</summary>
+    private static ReadOnlySpan<byte> Unguarded(ReadOnlySpan<byte> name) => name.IsEmpty || name[0] != '\'' ? name : AsciiText.Trim(SpreadsheetText.Restored(name));
 
     private Cleaned CleanNew(ReadOnlySpan<byte> field)
     {

@@ -1,0 +1,125 @@
+using System.Security.Cryptography;
+using System.Text;
+using System.Text.Json;
+using Campaigns.Catalog.Exporting;
+
+namespace Campaigns.App.Tests.Commands;
+
+public sealed class ExportRecordTests : IDisposable
+{
+    private readonly Workplace _place = new();
+
+    public void Dispose() => _place.Dispose();
+
+    [Fact]
+    public void Every_column_of_every_file_is_in_the_dictionary_and_every_line_of_it_is_a_column()
+    {
+        _place.Run("run", Workplace.Demo).Well();
+        _place.Run("exclude", "adhesion-screen", "GS-01", "--line", Line("GS-01"), "--reason", "torn").Well();
+        Export("adhesion-screen", "demo");
+        AssertDescribed("demo");
+        string folder = _place.Campaign("F", "experiment,groups,family\nE1,a|b,one\nE2,a|b,two\n", Workplace.TwoExperiments, correction: "holm");
+        _place.Write("F/families.csv", "family,level\none,0.02\ntwo,0.03\n");
+        _place.Run("run", folder).Well();
+        Export("F", "families");
+        AssertDescribed("families");
+        _place.Run("run", _place.Campaign("O", "experiment,groups\nE1,a|b\nE2,a|b\n", Workplace.TwoExperiments, correction: "lord")).Well();
+        Export("O", "online");
+        AssertDescribed("online");
+        string[] seen = [.. new[] { "demo", "families", "online" }.SelectMany(f => CsvText.Read(File.ReadAllText(_place.At(f, "dictionary.csv"))).Column("file")).Distinct()];
+        Assert.Empty(ColumnMeanings.All.Select(c => c.File).Distinct().Except(seen).Except([CampaignExport.AmendmentsName, CampaignExport.WithdrawalsName]));
+    }
+
+    [Fact]
+    public void The_record_names_the_head_of_the_ledger_and_the_digest_of_every_file()
+    {
+        _place.Run("run", Workplace.Demo).Well();
+        string head = _place.Run("export", "adhesion-screen", "--out", _place.At("out"), "--format", "csv").Well().Csv.Column("ledger_head").Single();
+        using var record = JsonDocument.Parse(File.ReadAllText(_place.At("out", "record.json")));
+        Assert.Equal("adhesion-screen", record.RootElement.GetProperty("campaign").GetString());
+        Assert.Equal(head, record.RootElement.GetProperty("ledger_head").GetString());
+        Assert.StartsWith(FormattableString.Invariant($"{record.RootElement.GetProperty("ledger_sequence").GetInt64()}:"), head, StringComparison.Ordinal);
+        Assert.Equal("2026-03-02T09:30:00Z", record.RootElement.GetProperty("exported_at").GetString());
+        var files = record.RootElement.GetProperty("files").EnumerateObject().ToDictionary(p => p.Name, p => p.Value.GetString());
+        Assert.Equal(Directory.GetFiles(_place.At("out"), "*", SearchOption.AllDirectories).Length - 1, files.Count);
+        Assert.All(files, f => Assert.Equal(Convert.ToHexStringLower(SHA256.HashData(File.ReadAllBytes(_place.At(["out", .. f.Key.Split('/')])))), f.Value));
+        CsvText ledger = CsvText.Read(File.ReadAllText(_place.At("out", "ledger.csv")));
+        Assert.Equal(head, $"{ledger.Column("sequence").Last()}:{ledger.Column("hash").Last()}");
+    }
+
+    [Fact]
+    public void Loaded_files_come_back_byte_for_byte_under_safe_names()
+    {
+        _place.Run("start", "C").Well();
+        byte[] one = [0xEF, 0xBB, 0xBF, .. Encoding.UTF8.GetBytes("experiment;group;value\r\nE1;a;1,5\r\nE1;b;2\r\n")], two = Encoding.UTF8.GetBytes("experiment,group,value\nE2,a,1\nE2,b,2");
+        string first = _place.Write("x/week.csv", ""), second = _place.Write("y/week.csv", "");
+        File.WriteAllBytes(first, one);
+        File.WriteAllBytes(second, two);
+        _place.Run("load", "C", first, "--decimal", "comma").Well();
+        _place.Run("load", "C", second).Well();
+        CsvText rows = _place.Run("export", "C", "--originals", "--out", _place.At("back"), "--format", "csv").Well().Csv;
+        Assert.Equal(["week.csv", "week-2.csv"], rows.Column("written_as"));
+        Assert.Equal(one, File.ReadAllBytes(_place.At("back", "week.csv")));
+        Assert.Equal(two, File.ReadAllBytes(_place.At("back", "week-2.csv")));
+        CsvText list = CsvText.Read(File.ReadAllText(_place.At("back", "originals.csv")));
+        Assert.Equal(["utf-8 with mark", "utf-8"], list.Column("encoding"));
+        Assert.Equal(["semicolon", "comma"], list.Column("separator"));
+        Assert.Equal(["comma", "point"], list.Column("decimal"));
+        Assert.Equal("experiment=experiment,group=group,value=value", list.Column("columns")[0]);
+        _place.Run("export", "C", "--originals", "--out", _place.At("back")).Refused(3, "not an empty folder");
+    }
+
+    [Fact]
+    public void Every_observation_is_traced_to_file_and_line()
+    {
+        _place.Run("start", "C").Well();
+        _place.Run("load", "C", _place.Write("m.csv", "experiment,group,value,block,order\nE1,-a,-1.50,d1,4\nE2,b,7,,\nE1,b,2,,\n")).Well();
+        CsvText rows = _place.Run("show", "C", "E1", "--observations", "--format", "csv").Well().Csv;
+        Assert.Equal(["'-a,-1.50,m.csv,2,,d1,4,false", "b,2.00,m.csv,4,,,,false"], rows.Rows.Select(r => string.Join(',', r)));
+        _place.Run("show", "C", "--observations").Refused(2, "--observations needs the experiment");
+        _place.Run("show", "C", "E9", "--observations").Refused(3, "no experiment 'E9'");
+    }
+
+    [Theory]
+    [InlineData("=1+1", "'=1+1")]
+    [InlineData("+5", "'+5")]
+    [InlineData("-", "'-")]
+    [InlineData("@x", "'@x")]
+    [InlineData("\tx", "'\tx")]
+    [InlineData(" \"=x", "' \"=x")]
+    [InlineData("\uFF1Dx", "'\uFF1Dx")]
+    [InlineData("'=x", "''=x")]
+    [InlineData("'x", "'x")]
+    [InlineData("'", "'")]
+    [InlineData("", "")]
+    [InlineData("a-b", "a-b")]
+    public void A_text_that_would_start_a_formula_is_guarded_and_comes_back(string text, string guarded)
+    {
+        Assert.Equal(guarded, SpreadsheetText.Guarded(text));
+        Assert.Equal(text, SpreadsheetText.Restored(guarded));
+        Assert.Equal(text, Encoding.UTF8.GetString(SpreadsheetText.Restored(Encoding.UTF8.GetBytes(guarded))));
+    }
+
+    [Fact]
+    public void Numbers_of_an_adjusted_file_are_passed_on_as_they_stand_and_its_texts_are_guarded()
+    {
+        string file = _place.Write("p.csv", "name,shift,p\n=a,-1.5,0.01\n'+b,+2,0.5\n");
+        CsvText rows = _place.Run("adjust", file, "--correction", "holm", "--format", "csv").Well().Csv;
+        Assert.Equal(["'=a,-1.5", "'+b,+2"], rows.Rows.Select(r => $"{r[0]},{r[1]}"));
+    }
+
+    private void Export(string campaign, string folder) => _place.Run("export", campaign, "--out", _place.At(folder)).Well();
+
+    private string Line(string experiment) =>
+        _place.Run("show", "adhesion-screen", experiment, "--observations", "--format", "csv").Well().Csv.Column("line")[0];
+
+    private void AssertDescribed(string folder)
+    {
+        CsvText dictionary = CsvText.Read(File.ReadAllText(_place.At(folder, "dictionary.csv")));
+        var described = dictionary.Rows.ToLookup(r => r[0], r => r[1], StringComparer.Ordinal);
+        string[] files = [.. Directory.GetFiles(_place.At(folder), "*.csv", SearchOption.AllDirectories).Select(f => Path.GetRelativePath(_place.At(folder), f).Replace('\\', '/')).Order(StringComparer.Ordinal)];
+        Assert.Equal(files, described.Select(d => d.Key).Order(StringComparer.Ordinal));
+        Assert.All(files, f => Assert.Equal(CsvText.Read(File.ReadAllText(_place.At([folder, .. f.Split('/')]))).Columns, described[f]));
+        Assert.All(dictionary.Rows, r => Assert.True(r[2].Length > 0 && r[4].Length > 0, r[1]));
+    }
+}
