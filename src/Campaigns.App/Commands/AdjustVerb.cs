@@ -178,7 +178,7 @@ internal sealed class AdjustVerb : Verb
                 var cells = new Cell[columns.Length];
                 for (int c = 0; c < table.Headers.Count; c++)
                 {
-                    cells[c] = Cell.PassedOn(table.Cell(row, c));
+                    cells[c] = Cell.Text(table.Cell(row, c));
                 }
 
                 if (given)

@@ -36,8 +36,8 @@ internal sealed class ExportVerb : Verb
                 now,
                 folder,
                 [
-                    (CampaignExport.ResultsName, writer => CsvRows.Write(new RowTable(ResultsVerb.Columns, now.Experiments.Select(ResultsVerb.Row)), writer)),
-                    (CampaignExport.ComparisonsName, writer => CsvRows.Write(new RowTable(ComparisonsVerb.Columns, new ComparisonReader(catalog).All(now).Select(ComparisonsVerb.Row)), writer)),
+                    (CampaignExport.ResultsName, writer => CsvRows.WriteFile(new RowTable(ResultsVerb.Columns, now.Experiments.Select(ResultsVerb.Row)), writer)),
+                    (CampaignExport.ComparisonsName, writer => CsvRows.WriteFile(new RowTable(ComparisonsVerb.Columns, new ComparisonReader(catalog).All(now).Select(ComparisonsVerb.Row)), writer)),
                 ],
                 NumberText.RoundTrip));
         });

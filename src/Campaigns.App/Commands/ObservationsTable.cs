@@ -25,6 +25,6 @@ internal static class ObservationsTable
 
     private static Cell[] Row(TracedObservation o) =>
     [
-        Cell.Text(o.Group), Cell.PassedOn(o.Value), Cell.Text(o.File), Cell.Whole(o.Line), Cell.Text(o.Specimen), Cell.Text(o.Block), Cell.Whole(o.Order), Cell.Truth(o.IsExcluded),
+        Cell.Text(o.Group), Cell.Text(o.Value), Cell.Text(o.File), Cell.Whole(o.Line), Cell.Text(o.Specimen), Cell.Text(o.Block), Cell.Whole(o.Order), Cell.Truth(o.IsExcluded),
     ];
 }

@@ -1,6 +1,3 @@
-using System.Text;
-using Campaigns.Catalog.Exporting;
-using Campaigns.Catalog.Loading;
 using Campaigns.Statistics.Probability;
 
 namespace Campaigns.App.Output;
@@ -56,12 +53,6 @@ internal readonly struct Cell
 
     public static Cell Empty => default;
 
-    /// <summary>Whether a text is a number that was read from a file and is written as it stood there.</summary>
-    public bool IsPassedOn => Kind == CellKind.Text && _number != 0;
-
-    /// <summary>A cell of a file that is passed on; a number in it stays one.</summary>
-    public static Cell PassedOn(string text) => IsNumber(text) ? new Cell(CellKind.Text, 1, text) : Text(SpreadsheetText.Restored(text));
-
     public static Cell Text(string? text) => string.IsNullOrEmpty(text) ? Empty : new Cell(CellKind.Text, text: text);
 
     /// <summary>A count; exact up to 2^53.</summary>
@@ -82,10 +73,4 @@ internal readonly struct Cell
     public static Cell P(PValue? value) => value is { } given ? new Cell(CellKind.P, p: given) : Empty;
 
     public static Cell Truth(bool? value) => value is { } given ? new Cell(CellKind.Truth, given ? 1 : 0) : Empty;
-
-    private static bool IsNumber(string text)
-    {
-        byte[] utf8 = Encoding.UTF8.GetBytes(text);
-        return DecimalText.Parse(utf8, DecimalMark.Point, out _) == NumberReading.Number || DecimalText.Parse(utf8, DecimalMark.Comma, out _) == NumberReading.Number;
-    }
 }

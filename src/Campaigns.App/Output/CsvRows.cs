@@ -8,7 +8,16 @@ internal static class CsvRows
     /// <param name="table">The rows.</param>
     /// <param name="writer">Where to.</param>
     /// <param name="forEyes">Whether a terminal shows it: then what it would obey is written as its code.</param>
-    public static void Write(RowTable table, TextWriter writer, bool forEyes = false)
+    public static void Write(RowTable table, TextWriter writer, bool forEyes = false) =>
+        Write(table, writer, (cell, text) => CsvField.AsItStands(forEyes ? SafeText.Escape(text) : text));
+
+    /// <summary>Writes rows into a file that people may open in a spreadsheet: texts are guarded (<see cref="SpreadsheetText"/>). What goes to a script is exact.</summary>
+    /// <param name="table">The rows.</param>
+    /// <param name="writer">The file.</param>
+    public static void WriteFile(RowTable table, TextWriter writer) =>
+        Write(table, writer, (cell, text) => cell.Kind == CellKind.Text ? CsvField.FromString(text) : CsvField.AsItStands(text));
+
+    private static void Write(RowTable table, TextWriter writer, Func<Cell, string, CsvField> field)
     {
         var line = new CsvLine(writer);
         line.Write([.. table.Columns.Select(c => (CsvField)c.Name)]);
@@ -17,8 +26,7 @@ internal static class CsvRows
         {
             for (int i = 0; i < row.Length; i++)
             {
-                string text = forEyes ? SafeText.Escape(Text(row[i])) : Text(row[i]);
-                fields[i] = row[i].Kind == CellKind.Text && !row[i].IsPassedOn ? text : CsvField.AsItStands(text);
+                fields[i] = field(row[i], Text(row[i]));
             }
 
             line.Write(fields);

@@ -78,7 +78,7 @@ public sealed class LedgerVerifierTests : IDisposable
     [InlineData("INSERT INTO group_sets VALUES (9, 1)", "1 row(s) of the groups of campaign 1 ('C')")]
     [InlineData("INSERT INTO withdrawals VALUES (1, 1, 1, 0, 'r', 'n', 0, 'v')", "withdrawal 1")]
     [InlineData("INSERT INTO plan_amendments VALUES (1, 1, 1, 'r', 'n', 0, 'v')", "amendment 1")]
-    [InlineData("INSERT INTO original_pieces VALUES (1, 1, 1, x'00')", "the kept file of load 1")]
+    [InlineData("INSERT INTO original_pieces VALUES (1, 9, 1, x'00')", "the kept file of load 1")]
     [InlineData("UPDATE experiments SET first_load_id = 2 WHERE id = 1", "The experiment 'E1' is said to have come with a load")]
     [InlineData("UPDATE experiments SET groups_are_planned = 0, group_set_id = NULL WHERE id = 1", "over other groups")]
     public void A_row_beside_the_record_is_found(string tampering, string words)

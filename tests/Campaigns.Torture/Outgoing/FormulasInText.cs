@@ -91,12 +91,6 @@ internal sealed class FormulasInText : TortureTest
             return found;
         }
 
-        string rows = bench.Run("results", "C", "--format", "csv").Out;
-        if (FormulaIn("results", rows) is { } printed)
-        {
-            return printed;
-        }
-
         Ran again = bench.Run("run", bench.At("out"), "--catalog", bench.At("second.db"));
         if (again.Code != 0)
         {

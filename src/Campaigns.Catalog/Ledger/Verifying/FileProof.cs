@@ -8,7 +8,7 @@ namespace Campaigns.Catalog.Ledger.Verifying;
 /// <param name="findings">Takes what is wrong.</param>
 internal sealed class FileProof(Catalog catalog, Findings findings)
 {
-    private const string History = "SELECT MigrationId, ProductVersion FROM \"__EFMigrationsHistory\" ORDER BY MigrationId";
+    private const string History = "SELECT MigrationId FROM \"__EFMigrationsHistory\" ORDER BY MigrationId";
 
     // Indexes of SQLite's own, for primary keys, have no text; their names are looked at all the same.
     private const string Objects = "SELECT type, name, tbl_name, sql FROM sqlite_schema ORDER BY type, name";
@@ -91,13 +91,13 @@ internal sealed class FileProof(Catalog catalog, Findings findings)
         return objects;
     }
 
-    private static List<(string, string)> Rows(Catalog catalog, string sql)
+    private static List<string> Rows(Catalog catalog, string sql)
     {
         using SqliteStatement rows = catalog.Prepare(sql);
-        var all = new List<(string, string)>();
+        var all = new List<string>();
         while (rows.Read())
         {
-            all.Add((rows.Text(0), rows.Text(1)));
+            all.Add(rows.Text(0));
         }
 
         return all;

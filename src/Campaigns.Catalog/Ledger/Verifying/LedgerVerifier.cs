@@ -23,6 +23,7 @@ public sealed class LedgerVerifier(Catalog catalog)
         findings.Look("The ledger", () => chain.Run(known));
         findings.Look("The evidence of the ledger", evidence.Run);
         findings.Look("The tables", () => new CoverageProof(catalog, findings, evidence).Run());
+        findings.Look("The kept files", () => new OriginalsProof(catalog, findings, evidence).Run());
         findings.Look("The sealed plans", () => new PlanProof(catalog, findings).Run());
         return new LedgerProof
         {
