@@ -75,7 +75,7 @@ public sealed class ExportRecordTests : IDisposable
         _place.Run("start", "C").Well();
         _place.Run("load", "C", _place.Write("m.csv", "experiment,group,value,block,order\nE1,-a,-1.50,d1,4\nE2,b,7,,\nE1,b,2,,\n")).Well();
         CsvText rows = _place.Run("show", "C", "E1", "--observations", "--format", "csv").Well().Csv;
-        Assert.Equal(["'-a,-1.50,m.csv,2,,d1,4,false", "b,2.00,m.csv,4,,,,false"], rows.Rows.Select(r => string.Join(',', r)));
+        Assert.Equal(["-a,-1.50,m.csv,2,,d1,4,false", "b,2.00,m.csv,4,,,,false"], rows.Rows.Select(r => string.Join(',', r)));
         _place.Run("show", "C", "--observations").Refused(2, "--observations needs the experiment");
         _place.Run("show", "C", "E9", "--observations").Refused(3, "no experiment 'E9'");
     }
