@@ -5,7 +5,10 @@ using Campaigns.Statistics.Numerics;
 namespace Campaigns.Statistics.Blocks;
 
 /// <summary>Which groups meet in which blocks, and how often: the plan of an experiment in blocks, without its values.</summary>
-/// <remarks>Groups and blocks are numbered from 0 in the order in which they first come; those without a value have no number.</remarks>
+/// <remarks>
+/// Groups are numbered from 0 in the order of the sample's own numbers, those without a value left out: they are eliminated one after the other, and which comes first must not depend on the order of the rows.
+/// Blocks are numbered as they first come. Nothing may depend on that order: whatever is added up over blocks is an exact integer, or is sorted before.
+/// </remarks>
 internal sealed class BlockDesign
 {
     private readonly int[] _valuesByBlock;
@@ -82,33 +85,19 @@ internal sealed class BlockDesign
             return null;
         }
 
-        int[] numberOfGroup = new int[sample.GroupCount];
-        Array.Fill(numberOfGroup, -1);
-        var groupNumbers = new List<int>();
+        (int[] groupNumbers, int[] numberOfGroup) = NumberGroups(sample);
         var numberOfBlock = new Dictionary<int, int>();
         int[] groups = new int[sample.Count];
         int[] blocks = new int[sample.Count];
         for (int i = 0; i < groups.Length; i++)
         {
-            int group = sample.Groups[i];
-            if (group >= numberOfGroup.Length)
-            {
-                throw new ArgumentException(FormattableString.Invariant($"A value belongs to group {group}, which the sample does not have."));
-            }
-
             int block = sample.Blocks[i];
             if (block < 0)
             {
                 return null;
             }
 
-            if (numberOfGroup[group] < 0)
-            {
-                numberOfGroup[group] = groupNumbers.Count;
-                groupNumbers.Add(group);
-            }
-
-            groups[i] = numberOfGroup[group];
+            groups[i] = numberOfGroup[sample.Groups[i]];
             if (!numberOfBlock.TryGetValue(block, out blocks[i]))
             {
                 blocks[i] = numberOfBlock.Count;
@@ -116,7 +105,7 @@ internal sealed class BlockDesign
             }
         }
 
-        return new BlockDesign(groups, blocks, [.. groupNumbers], numberOfBlock.Count);
+        return new BlockDesign(groups, blocks, groupNumbers, numberOfBlock.Count);
     }
 
     /// <summary>The values of a block, those of a group together.</summary>
@@ -137,7 +126,7 @@ internal sealed class BlockDesign
         int k = GroupNumbers.Length;
         var ties = new DoubleDouble[k, k];
         var products = new long[k, k];
-        foreach (IGrouping<int, int> blocks in Enumerable.Range(0, BlockCounts.Length).GroupBy(j => BlockCounts[j]))
+        foreach (IGrouping<int, int> blocks in Enumerable.Range(0, BlockCounts.Length).GroupBy(j => BlockCounts[j]).OrderBy(g => g.Key))
         {
             Array.Clear(products);
             foreach (int block in blocks)
@@ -168,6 +157,31 @@ internal sealed class BlockDesign
                 products[groups[a], groups[b]] += a == b ? 0 : (long)counts[a] * counts[b];
             }
         }
+    }
+
+    /// <summary>Numbers the groups that hold a value.</summary>
+    /// <returns>For each number its group in the sample, and the other way about.</returns>
+    private static (int[] Groups, int[] Numbers) NumberGroups(GroupedSample sample)
+    {
+        var holdsValue = new bool[sample.GroupCount];
+        foreach (ushort group in sample.Groups)
+        {
+            if (group >= holdsValue.Length)
+            {
+                throw new ArgumentException(FormattableString.Invariant($"A value belongs to group {group}, which the sample does not have."));
+            }
+
+            holdsValue[group] = true;
+        }
+
+        int[] groups = [.. Enumerable.Range(0, holdsValue.Length).Where(g => holdsValue[g])];
+        var numbers = new int[holdsValue.Length];
+        for (int i = 0; i < groups.Length; i++)
+        {
+            numbers[groups[i]] = i;
+        }
+
+        return (groups, numbers);
     }
 
     /// <summary>For each label the place of its first value once values are sorted by label, and the number of all values.</summary>

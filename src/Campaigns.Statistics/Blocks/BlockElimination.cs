@@ -12,6 +12,9 @@ namespace Campaigns.Statistics.Blocks;
 /// </remarks>
 internal sealed class BlockElimination
 {
+    /// <summary>Some five units of the last of 32 digits.</summary>
+    private const double RoundingShare = 1e-30;
+
     private readonly int _last;
     private readonly DoubleDouble[] _pivots;
     private readonly DoubleDouble[,] _multipliers;
@@ -76,6 +79,15 @@ internal sealed class BlockElimination
         }
 
         return (effects, squares);
+    }
+
+    /// <summary>Bounds on the rounding errors of the effects that <see cref="Solve"/> gives.</summary>
+    /// <param name="adjustedTotals">As given to it.</param>
+    /// <returns>For each effect the effect that the totals would have without their signs, times the unit of 32 digits and the number of groups: as pivots and multipliers are positive, nothing cancels in that number, and each of its terms was rounded a few times a group.</returns>
+    public WideReal[] RoundingBounds(WideReal[] adjustedTotals)
+    {
+        WideReal share = WideReal.From(RoundingShare * adjustedTotals.Length);
+        return [.. Solve([.. adjustedTotals.Select(t => t.Size)]).Effects.Select(e => e * share)];
     }
 
     /// <summary>The variance of the difference of every two effects, over the residual variance: the resistance of the network between two nodes.</summary>

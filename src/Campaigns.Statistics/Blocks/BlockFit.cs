@@ -8,6 +8,7 @@ namespace Campaigns.Statistics.Blocks;
 /// <remarks>
 /// Adjusted totals come from exact integers. Residuals do not change when whole numbers are taken off a group or a block, which is done until the values are about as small as what the fit leaves of them:
 /// then nothing cancels that 32 digits cannot spare, however far groups and blocks lie apart, and a fit that leaves nothing at all ends in values that are exactly zero.
+/// Every number here has the same bits in whatever order the rows come: the origin is the smallest value, groups are eliminated in the order of their numbers, and squares are added in ascending order.
 /// </remarks>
 internal sealed class BlockFit
 {
@@ -25,15 +26,18 @@ internal sealed class BlockFit
     {
         _design = design;
         _elimination = elimination;
-        var values = WholeNumbers.AboutFirst(sample);
+        var values = WholeNumbers.AboutSmallest(sample);
         var totals = new BlockTotals(design, values);
         BetweenBlocks = totals.BetweenBlocks();
         (WideReal[] effects, BetweenGroups) = elimination.Solve(totals.AdjustedTotals);
-        (Effects, Residuals, Residual) = Settle(values, totals, effects);
+        (Effects, Roundings, Residuals, Residual) = Settle(values, totals, effects);
     }
 
     /// <summary>Effect of each group, up to a constant common to all.</summary>
     public WideReal[] Effects { get; }
+
+    /// <summary>For each group a bound on the rounding error of its effect: effects that differ by no more than their bounds together are equal as far as 32 digits can tell.</summary>
+    public WideReal[] Roundings { get; }
 
     /// <summary>For each value what the fit leaves of it.</summary>
     public WideReal[] Residuals { get; }
@@ -48,7 +52,7 @@ internal sealed class BlockFit
     public WideReal Residual { get; }
 
     /// <summary>Takes whole numbers off until what is left is small enough.</summary>
-    private (WideReal[] Effects, WideReal[] Residuals, WideReal SumOfSquares) Settle(WholeNumbers values, BlockTotals totals, WideReal[] effects)
+    private (WideReal[] Effects, WideReal[] Roundings, WideReal[] Residuals, WideReal SumOfSquares) Settle(WholeNumbers values, BlockTotals totals, WideReal[] effects)
     {
         var taken = new BigInteger[effects.Length];
         while (true)
@@ -58,7 +62,8 @@ internal sealed class BlockFit
             WideReal squares = SumOfSquares(residuals);
             if (values.Largest.Sign == 0 || ((squares * Spare) - (values.Largest * values.Largest)).Sign >= 0)
             {
-                return ([.. effects.Select((effect, i) => taken[i].IsZero ? effect : WideReal.From(taken[i]) + effect)], residuals, squares);
+                WideReal[] all = [.. effects.Select((effect, i) => taken[i].IsZero ? effect : WideReal.From(taken[i]) + effect)];
+                return (all, _elimination.RoundingBounds(totals.AdjustedTotals), residuals, squares);
             }
 
             BigInteger[] whole = [.. effects.Select(e => e.ToWhole())];
@@ -88,12 +93,12 @@ internal sealed class BlockFit
 
     private static WideReal SumOfSquares(WideReal[] residuals)
     {
-        WideReal sum = WideReal.Zero;
-        foreach (WideReal residual in residuals)
+        var squares = new WideReal[residuals.Length];
+        for (int i = 0; i < squares.Length; i++)
         {
-            sum += residual * residual;
+            squares[i] = residuals[i] * residuals[i];
         }
 
-        return sum;
+        return WideReal.SumSorted(squares);
     }
 }

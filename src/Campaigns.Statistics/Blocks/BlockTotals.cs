@@ -42,14 +42,14 @@ internal sealed class BlockTotals
         }
 
         double count = _design.Blocks.Length;
-        WideReal sum = WideReal.Zero;
-        for (int j = 0; j < _blockTotals.Length; j++)
+        var squares = new WideReal[_blockTotals.Length];
+        for (int j = 0; j < squares.Length; j++)
         {
             WideReal above = WideReal.From((_blockTotals[j] * _design.Blocks.Length) - (total * _design.BlockCounts[j]));
-            sum += above * above / _design.BlockCounts[j];
+            squares[j] = above * above / _design.BlockCounts[j];
         }
 
-        return sum / count / count;
+        return WideReal.SumSorted(squares) / count / count;
     }
 
     /// <summary>The effects of blocks that go with given effects of groups.</summary>

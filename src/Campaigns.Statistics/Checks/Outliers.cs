@@ -45,7 +45,7 @@ public sealed class Outliers : ExperimentCheck
             return new CheckFinding(CheckVerdict.NotPossible, "A single residual degree of freedom is left: without the value in question nothing would tell how far values scatter.");
         }
 
-        (int farthest, int free) = Farthest(fit);
+        (int farthest, int free) = Farthest(subject.Units, fit);
         string place = subject.Places is { } places ? $" ({places[farthest]})" : "";
         string value = $"{CheckText.ValueOf(subject.Units, farthest)} in {subject.Labels[subject.Units.Groups[farthest]]}{place}";
         WideReal rest = MeanSquareWithout(subject.Units, fit, farthest);
@@ -67,8 +67,8 @@ public sealed class Outliers : ExperimentCheck
             p);
     }
 
-    /// <summary>The value whose studentised residual is the largest in size, the first of several, and the number of values that leave a residual.</summary>
-    private static (int Farthest, int Free) Farthest(FittedLayout fit)
+    /// <summary>The value whose studentised residual is the largest in size, of several the one of the first group, the smallest and the one that lies lowest, and the number of values that leave a residual.</summary>
+    private static (int Farthest, int Free) Farthest(GroupedSample units, FittedLayout fit)
     {
         int farthest = -1;
         int free = 0;
@@ -79,7 +79,7 @@ public sealed class Outliers : ExperimentCheck
             {
                 free++;
                 double square = fit.Residuals[i] * fit.Residuals[i] / (1 - fit.Leverages[i]);
-                if (square > largest)
+                if (square > largest || (square == largest && IsBefore(units, fit, i, farthest)))
                 {
                     largest = square;
                     farthest = i;
@@ -89,6 +89,11 @@ public sealed class Outliers : ExperimentCheck
 
         return (farthest, free);
     }
+
+    private static bool IsBefore(GroupedSample units, FittedLayout fit, int i, int other) =>
+        units.Groups[i] != units.Groups[other] ? units.Groups[i] < units.Groups[other]
+        : units.MantissaOf(i) != units.MantissaOf(other) ? units.MantissaOf(i) < units.MantissaOf(other)
+        : fit.Residuals[i] < fit.Residuals[other];
 
     /// <summary>The residual mean square of the same layout without one value, in squared units of the response.</summary>
     private static WideReal MeanSquareWithout(GroupedSample units, FittedLayout fit, int without)
@@ -101,7 +106,7 @@ public sealed class Outliers : ExperimentCheck
         FittedLayout fitted = (fit.WithinBlocks ? FittedLayout.InBlocks(rest) : FittedLayout.OneWay(rest))
             ?? throw new InvalidOperationException("A value that does not fix its own fitted value was left out, and the rest could not be fitted.");
         double squares = 0;
-        foreach (double residual in fitted.Residuals)
+        foreach (double residual in fitted.Residuals.OrderBy(Math.Abs)) // In one order whatever that of the rows, so that no bit depends on it.
         {
             squares += residual * residual;
         }

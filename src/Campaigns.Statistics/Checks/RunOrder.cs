@@ -105,10 +105,13 @@ public sealed class RunOrder : ExperimentCheck
     {
         var groups = new int[runs.Length];
         var blocks = new int[runs.Length];
+        var numberOfBlock = new Dictionary<int, int>(); // In run order, which is the same whatever the order of the rows.
         for (int i = 0; i < runs.Length; i++)
         {
             groups[i] = units.Groups[runs[i]];
-            blocks[i] = fit.WithinBlocks ? units.Blocks[runs[i]] : 0;
+            int block = fit.WithinBlocks ? units.Blocks[runs[i]] : 0;
+            numberOfBlock.TryAdd(block, numberOfBlock.Count);
+            blocks[i] = numberOfBlock[block];
         }
 
         return fit.WithinBlocks ? SuccessiveDifferences.WithinBlocks(blocks, groups) : SuccessiveDifferences.OneWay(groups);

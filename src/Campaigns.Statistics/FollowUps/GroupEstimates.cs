@@ -19,6 +19,9 @@ public sealed class GroupEstimates
     private readonly double[] _ownStandardErrors;
     private readonly double[,] _factors;
 
+    /// <summary>For each group how far the solution of the normal equations may have left its mean off; empty where means are not solved for.</summary>
+    private WideReal[] _roundings = [];
+
     /// <summary>Collects the estimates.</summary>
     /// <param name="means">Estimated mean of each group in units of the response, up to a constant common to all; anything for groups without a value.</param>
     /// <param name="counts">Values of each group; 0 where it has none.</param>
@@ -105,12 +108,14 @@ public sealed class GroupEstimates
         var counts = new int[groups];
         var own = new double[groups];
         var factors = new double[groups, groups];
+        var roundings = new WideReal[groups];
         double[,] variances = layout.Elimination.DifferenceVariances();
         int[] numbers = layout.Design.GroupNumbers;
         Array.Fill(own, double.NaN);
         for (int i = 0; i < numbers.Length; i++)
         {
             means[numbers[i]] = layout.Fit.Effects[i] * units.Unit;
+            roundings[numbers[i]] = layout.Fit.Roundings[i] * units.Unit;
             counts[numbers[i]] = layout.Design.GroupCounts[i];
             for (int h = 0; h < numbers.Length; h++)
             {
@@ -118,7 +123,7 @@ public sealed class GroupEstimates
             }
         }
 
-        return new GroupEstimates(means, counts, own, factors, layout.ResidualStandardDeviation.ToDouble(), layout.ResidualDegreesOfFreedom, withinBlocks: true);
+        return new GroupEstimates(means, counts, own, factors, layout.ResidualStandardDeviation.ToDouble(), layout.ResidualDegreesOfFreedom, withinBlocks: true) { _roundings = roundings };
     }
 
     /// <summary>Values of a group.</summary>
@@ -167,10 +172,15 @@ public sealed class GroupEstimates
     private WideReal WideDifference(int a, int b)
     {
         WideReal difference = _means[b] - _means[a];
+        if (_roundings.Length > 0 && (difference.Size - (_roundings[a] + _roundings[b])).Sign <= 0)
+        {
+            return WideReal.Zero;
+        }
+
         double size = Math.Max(Magnitude(_means[a]), Magnitude(_means[b]));
         return Magnitude(difference) <= size + Math.Log(RoundingShare) ? WideReal.Zero : difference;
 
-        static double Magnitude(WideReal value) => (value.Sign < 0 ? -value : value).Log();
+        static double Magnitude(WideReal value) => value.Size.Log();
     }
 
     private double VarianceFactor(int a, int b) => _factors[a, a] + _factors[b, b] - _factors[a, b] - _factors[b, a];

@@ -45,24 +45,29 @@ internal sealed class WholeNumbers
     /// <param name="i">0 to <see cref="Count"/> - 1.</param>
     public WideReal this[int i] => _narrow is null ? WideReal.From(_wide[i]) : WideReal.From((Int128)_narrow[i]);
 
-    /// <summary>The mantissas of a sample less its first one.</summary>
+    /// <summary>The mantissas of a sample less the smallest of them: an origin that does not depend on which value comes first.</summary>
     /// <param name="sample">At least one value.</param>
-    public static WholeNumbers AboutFirst(GroupedSample sample)
+    public static WholeNumbers AboutSmallest(GroupedSample sample)
     {
         if (sample.IsWide)
         {
-            BigInteger first = sample.WideMantissas[0];
-            return Of([.. sample.WideMantissas.ToArray().Select(m => m - first)]);
+            BigInteger[] mantissas = sample.WideMantissas.ToArray();
+            BigInteger smallest = mantissas.Min();
+            return Of([.. mantissas.Select(m => m - smallest)]);
         }
 
-        long origin = sample.Mantissas[0];
+        long origin = long.MaxValue;
+        foreach (long mantissa in sample.Mantissas)
+        {
+            origin = Math.Min(origin, mantissa);
+        }
+
         var differences = new long[sample.Count];
         long wrapped = 0;
         for (int i = 0; i < differences.Length; i++)
         {
-            long mantissa = sample.Mantissas[i];
-            differences[i] = mantissa - origin;
-            wrapped |= (mantissa ^ origin) & (mantissa ^ differences[i]);
+            differences[i] = sample.Mantissas[i] - origin;
+            wrapped |= differences[i];
         }
 
         return wrapped >= 0 ? new(differences) : new([.. sample.Mantissas.ToArray().Select(m => m - (BigInteger)origin)]);

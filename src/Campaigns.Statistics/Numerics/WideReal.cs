@@ -41,6 +41,9 @@ public readonly struct WideReal
     /// <summary>Zero.</summary>
     public static WideReal Zero => default;
 
+    /// <summary>The number without its sign; exact.</summary>
+    public WideReal Size => Sign < 0 ? -this : this;
+
     /// <summary>-1, 0 or 1.</summary>
     public int Sign => Math.Sign(_fraction.High);
 
@@ -130,6 +133,20 @@ public readonly struct WideReal
     public static WideReal operator /(WideReal left, double right) =>
         right == 0 ? throw new DivideByZeroException() : new(left._fraction / right, left._exponent);
 
+    /// <summary>Adds up in ascending order, so that the sum has the same bits in whatever order the terms come.</summary>
+    /// <param name="terms">Any; sorted afterwards.</param>
+    public static WideReal SumSorted(Span<WideReal> terms)
+    {
+        terms.Sort(Compare);
+        WideReal sum = Zero;
+        foreach (WideReal term in terms)
+        {
+            sum += term;
+        }
+
+        return sum;
+    }
+
     /// <summary>The square root.</summary>
     /// <param name="value">Not negative.</param>
     /// <exception cref="ArgumentOutOfRangeException">Negative.</exception>
@@ -168,6 +185,17 @@ public readonly struct WideReal
         return power >= 0 ? (BigInteger)digits << (int)power
             : power < -FractionBits - 2 ? BigInteger.Zero
             : (digits + (1L << (int)(-power - 1))) >> (int)-power;
+    }
+
+    private static int Compare(WideReal left, WideReal right)
+    {
+        if (left._exponent != right._exponent)
+        {
+            return (left - right).Sign;
+        }
+
+        int high = left._fraction.High.CompareTo(right._fraction.High);
+        return high != 0 ? high : left._fraction.Low.CompareTo(right._fraction.Low);
     }
 
     private static WideReal AddSmaller(WideReal larger, WideReal smaller)

@@ -50,7 +50,7 @@ public sealed class SpecimenMeans
     /// <summary>Whether readings of one specimen stand in several blocks.</summary>
     public bool InSeveralBlocks { get; private set; }
 
-    /// <summary>The means as a sample, in the order in which their first readings come. A specimen takes its place in the run order from its first reading; its block is recorded only where it is recorded for every reading.</summary>
+    /// <summary>The means as a sample, in the order in which their first readings come. A specimen takes the earliest place in the run order that is recorded for one of its readings, whichever row comes first; its block is recorded only where it is recorded for every reading.</summary>
     public GroupedSample Sample => _narrow is null
         ? new GroupedSample(_wide, _decimals, _groups, _groupCount) { Divisor = _divisor, Blocks = _blocks, Orders = _orders }
         : new GroupedSample(_narrow, _decimals, _groups, _groupCount) { Divisor = _divisor, Blocks = _blocks, Orders = _orders };
@@ -61,34 +61,37 @@ public sealed class SpecimenMeans
     public static SpecimenMeans? Of(GroupedSample readings) =>
         SpecimenIndex.Of(readings) is { IsTrivial: false } index ? new SpecimenMeans(readings, index) : null;
 
+    /// <summary>Finds group, block and place of every specimen, from all of its readings alike: which of them comes first makes no difference.</summary>
     private void Place(GroupedSample readings, int[] specimens)
     {
         var seen = new bool[Count];
+        var unclear = new bool[_blocks.Length];
+        Array.Fill(_blocks, -1);
+        Array.Fill(_orders, GroupedSample.NoOrder);
         for (int i = 0; i < specimens.Length; i++)
         {
             int specimen = specimens[i];
-            int block = _blocks.Length == 0 ? -1 : readings.Blocks[i];
-            if (!seen[specimen])
+            InSeveralGroups |= seen[specimen] && _groups[specimen] != readings.Groups[i];
+            _groups[specimen] = seen[specimen] ? Math.Min(_groups[specimen], readings.Groups[i]) : readings.Groups[i];
+            seen[specimen] = true;
+            if (_blocks.Length > 0)
             {
-                seen[specimen] = true;
-                _groups[specimen] = readings.Groups[i];
-                if (_blocks.Length > 0)
-                {
-                    _blocks[specimen] = block;
-                }
-
-                if (_orders.Length > 0)
-                {
-                    _orders[specimen] = readings.Orders[i];
-                }
-            }
-            else if (_blocks.Length > 0 && block != _blocks[specimen])
-            {
-                InSeveralBlocks |= block >= 0 && _blocks[specimen] >= 0;
-                _blocks[specimen] = -1;
+                int block = readings.Blocks[i];
+                bool isOther = block >= 0 && _blocks[specimen] >= 0 && _blocks[specimen] != block;
+                InSeveralBlocks |= isOther;
+                unclear[specimen] |= isOther || block < 0;
+                _blocks[specimen] = Math.Max(_blocks[specimen], block);
             }
 
-            InSeveralGroups |= _groups[specimen] != readings.Groups[i];
+            if (_orders.Length > 0 && readings.Orders[i] != GroupedSample.NoOrder)
+            {
+                _orders[specimen] = _orders[specimen] == GroupedSample.NoOrder ? readings.Orders[i] : Math.Min(_orders[specimen], readings.Orders[i]);
+            }
+        }
+
+        for (int j = 0; j < unclear.Length; j++)
+        {
+            _blocks[j] = unclear[j] ? -1 : _blocks[j];
         }
     }
 

@@ -107,22 +107,22 @@ public sealed record SpecimenVariation(
             groupSums[groupOf[index.Specimens[i]]] += mantissas[i];
         }
 
-        WideReal within = WideReal.Zero;
+        var within = new WideReal[mantissas.Length];
         for (int i = 0; i < mantissas.Length; i++)
         {
             int n = index.Counts[index.Specimens[i]];
-            within += Square(WideReal.From(((Int128)mantissas[i] * n) - sums[index.Specimens[i]]) / n);
+            within[i] = Square(WideReal.From(((Int128)mantissas[i] * n) - sums[index.Specimens[i]]) / n);
         }
 
-        WideReal between = WideReal.Zero;
+        var between = new WideReal[sums.Length];
         for (int j = 0; j < sums.Length; j++)
         {
             int n = groupCounts[groupOf[j]];
             Int128 above = (sums[j] * n) - (groupSums[groupOf[j]] * index.Counts[j]);
-            between += Square(WideReal.From(above) / n) / index.Counts[j];
+            between[j] = Square(WideReal.From(above) / n) / index.Counts[j];
         }
 
-        return (within, between);
+        return (WideReal.SumSorted(within), WideReal.SumSorted(between));
     }
 
     /// <summary>As <see cref="NarrowSums"/>, in integers of any size.</summary>
@@ -136,22 +136,22 @@ public sealed record SpecimenVariation(
             groupSums[groupOf[index.Specimens[i]]] += mantissas[i];
         }
 
-        WideReal within = WideReal.Zero;
+        var within = new WideReal[mantissas.Length];
         for (int i = 0; i < mantissas.Length; i++)
         {
             int n = index.Counts[index.Specimens[i]];
-            within += Square(WideReal.From((mantissas[i] * n) - sums[index.Specimens[i]]) / n);
+            within[i] = Square(WideReal.From((mantissas[i] * n) - sums[index.Specimens[i]]) / n);
         }
 
-        WideReal between = WideReal.Zero;
+        var between = new WideReal[sums.Length];
         for (int j = 0; j < sums.Length; j++)
         {
             int n = groupCounts[groupOf[j]];
             BigInteger above = (sums[j] * n) - (groupSums[groupOf[j]] * index.Counts[j]);
-            between += Square(WideReal.From(above) / n) / index.Counts[j];
+            between[j] = Square(WideReal.From(above) / n) / index.Counts[j];
         }
 
-        return (within, between);
+        return (WideReal.SumSorted(within), WideReal.SumSorted(between));
     }
 
     private static WideReal Square(WideReal value) => value * value;

@@ -92,7 +92,7 @@ public sealed class SpecimenMeansTests
         SpecimenMeans means = SpecimenMeans.Of(new GroupedSample([1L, 3, 5, 6, 8], 0, [0, 0, 1, 1, 1], 2) { Specimens = [0, 0, 1, 1, 2], Blocks = [4, 4, 5, -1, 6], Orders = [9, 7, 1, 2, 3] })!;
         Assert.False(means.InSeveralBlocks);
         Assert.Equal([4, -1, 6], means.Sample.Blocks.ToArray());
-        Assert.Equal([9L, 1, 3], means.Sample.Orders.ToArray());
+        Assert.Equal([7L, 1, 3], means.Sample.Orders.ToArray());
         SpecimenMeans plain = SpecimenMeans.Of(new GroupedSample([1L, 3, 5], 0, [0, 0, 1], 2) { Specimens = [0, 0, 1] })!;
         Assert.True(plain.Sample.Blocks.IsEmpty);
         Assert.True(plain.Sample.Orders.IsEmpty);
