@@ -1,5 +1,6 @@
 # Recomputes a campaign from its export alone, with base R, and finds the same decisions: the F, Welch, F*, Kruskal-Wallis and block tests by R's own
-# procedures or textbook formulas, adjusted p-values by p.adjust.
+# procedures or textbook formulas, adjusted p-values by p.adjust, and by textbook formulas where experiments weigh; family by family, with the gates between
+# them. Where experiments are judged as they arrive the p-values are recomputed and the levels are not.
 # Rscript record.R FOLDER -> one line "experiment TEST agreed" or a line that begins with FAULT for each experiment; exit status 1 where one is found.
 #
 # p is compared to 1e-12 relative, as far as R's own doubles carry it: the values are read as doubles and their common leading digits are taken off as
@@ -94,19 +95,91 @@ for (i in seq_len(nrow(results))) {
   else cat(r$experiment, r$test, "agreed\n")
 }
 
-# The correction, over every hypothesis of the family: one without a result counts as p = 1.
+# The correction, family by family, over every hypothesis of it: one without a result counts as p = 1, and one withdrawn before any data has left.
 campaign <- paste(readLines(file.path(folder, "campaign.json"), warn = FALSE), collapse = "\n")
 correction <- sub('.*"correction": *"([^"]*)".*', "\\1", campaign)
 level <- as.numeric(sub('.*"level": *([0-9.eE+-]*).*', "\\1", campaign))
-method <- c(none = "none", bonferroni = "bonferroni", holm = "holm", hochberg = "hochberg", hommel = "hommel", bh = "BH", by = "BY")[correction]
-if (is.na(method)) { cat("the correction", correction, "is none of p.adjust\n") } else {
-  counted <- ifelse(is.na(recomputed), 1, recomputed)
-  adjusted <- p.adjust(counted, method)
+methods <- c(none = "none", bonferroni = "bonferroni", holm = "holm", hochberg = "hochberg", hommel = "hommel", bh = "BH", by = "BY")
+online <- c("alpha-spending", "online-fallback", "addis-spending", "lond", "lond-any", "lord", "saffron", "addis")
+weighted <- list(                                            # textbook formulas: ranks go by p/w
+  `weighted-bonferroni` = function(q, w) q * sum(w),
+  `weighted-holm` = function(q, w) cummax(q * rev(cumsum(rev(w)))),
+  `weighted-bh` = function(q, w) rev(cummin(rev(q * sum(w) / seq_along(q)))))
+adjust <- function(p, w, key) {
+  if (!is.na(methods[key])) return(p.adjust(p, methods[key]))
+  if (is.null(weighted[[key]])) return(NULL)
+  ranks <- order(p / w, is.na(recomputed[members]))          # what was not tested comes last among equals
+  adjusted <- numeric(length(p))
+  adjusted[ranks] <- pmin(1, weighted[[key]]((p / w)[ranks], w[ranks]))
+  adjusted
+}
+
+plan <- read("plan.csv")
+families <- read("families.csv")
+reviews <- read("reviews.csv")
+withdrawals <- read("withdrawals.csv")
+latest <- reviews[number(reviews$review) == max(c(0, number(reviews$review))), ]
+left <- rep(FALSE, nrow(results))
+if (!is.null(withdrawals)) {
+  last <- withdrawals[!duplicated(withdrawals$experiment, fromLast = TRUE), ]
+  left <- results$experiment %in% last$experiment[last$withdrawn == "true" & last$had_data == "false"]
+}
+at <- match(results$experiment, plan$experiment)
+weight <- if (is.null(plan)) rep(1, nrow(results)) else ifelse(is.na(at) | plan$weight[at] == "", 1, number(plan$weight[at]))
+named <- if (is.null(families)) rep("", nrow(results)) else plan$family[at]
+if (!is.null(families) && any(named != results$family)) fault("the families of the results are not those of the plan")
+interim <- nrow(latest) > 0 && latest$interim[1] == "true"
+adjusted <- rep(NA_real_, nrow(results))
+survives <- rep(NA, nrow(results))
+judged <- character(0)
+
+judge <- function(name) {                                    # a family behind a gate after the one that it waits for
+  if (name %in% judged) return(invisible())
+  members <<- which(named == name & !left & !(interim & is.na(recomputed)))
+  own <- if (is.null(families)) NULL else families[families$family == name, ]
+  before <- if (is.null(own)) "" else own$opens_after
+  open <- TRUE
+  if (before != "") {
+    judge(before)
+    members <<- which(named == name & !left & !(interim & is.na(recomputed)))
+    there <- survives[named == before & !left]               # all planned ones, tested or not
+    open <- if (own$opens_when == "all") length(there) > 0 && all(there %in% TRUE) else any(there %in% TRUE)
+  }
+  judged <<- c(judged, name)
+  key <- if (!is.null(own) && own$correction != "") own$correction else correction
+  r <- results[members, ]
+  lines <- latest[latest$experiment %in% r$experiment, ]
+  if (any(lines$correction != key)) fault("family", name, "was reviewed by", lines$correction[1], "instead of", key)
+  at_level <- unique(number(r$level[r$p != ""]))
+  if (length(at_level) == 0) return(invisible())
+  if (length(at_level) > 1 || any(number(lines$level) != at_level)) fault("family", name, "has several levels")
+  if (is.null(families) && !isTRUE(at_level == level)) fault("the level", at_level, "is not the campaign's", level)
+  if (any(number(r$family_size) != length(members))) fault("family", name, "counts", r$family_size[1], "instead of", length(members))
+  now <- if (open) adjust(ifelse(is.na(recomputed[members]), 1, recomputed[members]), weight[members], key) else rep(1, length(members))
+  if (is.null(now)) { cat("the correction", key, if (name != "") paste("of family", name), "is not recomputed: it is none of p.adjust\n"); return(invisible()) }
+  adjusted[members] <<- now
+  survives[members] <<- !is.na(recomputed[members]) & now <= at_level[1]
+  if (name != "") cat("family", name, key, if (open) "open" else "closed", "level", r$level[r$p != ""][1], "recomputed\n")
+}
+
+if (correction %in% online) {
+  decisions <- read("decisions.csv")
+  cat("the decisions are not recomputed: the campaign is judged as its experiments arrive, by", correction, "- the p-values are, and each decision is held against the level that the export gives\n")
+  for (i in seq_len(nrow(decisions))) {
+    d <- decisions[i, ]
+    p <- recomputed[results$experiment == d$experiment]
+    if (d$p == "") { if (d$survives != "") fault(d$experiment, "has no p and a decision"); next }
+    if (!near(p, number(d$p), 1e-10)) fault(d$experiment, "was decided by p", d$p, "and has", p)
+    if ((p <= number(d$level)) != (d$survives == "true")) fault(d$experiment, "decision", p <= number(d$level), "instead of", d$survives)
+  }
+} else {
+  for (name in unique(named)) judge(name)
   for (i in seq_len(nrow(results))) {
     r <- results[i, ]
     if (r$p == "") { if (r$survives != "") fault(r$experiment, "has no p and a decision"); next }
+    if (is.na(survives[i])) next
     if (!near(adjusted[i], number(r$adjusted_p), if (adjusted[i] < 1e-300) 1e-6 else 1e-12 * max(1, abs(log(max(adjusted[i], 1e-320)))))) fault(r$experiment, "adjusted p", adjusted[i], "instead of", r$adjusted_p)
-    if ((adjusted[i] <= level) != (r$survives == "true")) fault(r$experiment, "decision", adjusted[i] <= level, "instead of", r$survives)
+    if (survives[i] != (r$survives == "true")) fault(r$experiment, "decision", survives[i], "instead of", r$survives)
   }
 }
 

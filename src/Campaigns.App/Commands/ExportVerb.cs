@@ -52,6 +52,11 @@ internal sealed class ExportVerb : Verb
             session.Say($"The measurements hold the excluded values too; 'campaigns run' does not exclude them again, {CampaignExport.ExclusionsName} tells which they are.");
         }
 
+        if (exported.Files.Contains(CampaignExport.SealedPlanName))
+        {
+            session.Say($"plan.csv is the plan as amended, {CampaignExport.SealedPlanName} the plan as it was sealed, and {CampaignExport.AmendmentsName} tells what changed between them; 'campaigns run' seals the amended one.");
+        }
+
         session.Say(LedgerText.HeadLine(exported.Head));
         session.PrintForScripts(new RowTable(
             [new Column("campaign", null), new Column("folder", null), new Column("ledger_head", null)],

@@ -1,5 +1,6 @@
 using System.Text;
 using System.Text.Json;
+using Campaigns.Catalog.Amending;
 using Campaigns.Catalog.Excluding;
 using Campaigns.Catalog.Ledger;
 using Campaigns.Catalog.Measurements;
@@ -43,6 +44,9 @@ public sealed class CampaignExport(Catalog catalog)
     /// <summary>Name of the file of amendments of the sealed plan.</summary>
     public const string AmendmentsName = "amendments.csv";
 
+    /// <summary>Name of the file of the plan as it was sealed, written where amendments changed it since.</summary>
+    public const string SealedPlanName = "sealed-plan.csv";
+
     /// <summary>Name of the file of withdrawn experiments.</summary>
     public const string WithdrawalsName = "withdrawals.csv";
 
@@ -68,7 +72,8 @@ public sealed class CampaignExport(Catalog catalog)
         ArgumentNullException.ThrowIfNull(tables);
         ArgumentNullException.ThrowIfNull(textOfP);
         LedgerHead head = new LedgerReader(catalog).Head;
-        var records = new RecordFiles(catalog, standing.Campaign.Code, new CampaignStore(catalog).Get(standing.Campaign.Code).Id);
+        long campaignId = new CampaignStore(catalog).Get(standing.Campaign.Code).Id;
+        var records = new RecordFiles(catalog, standing.Campaign.Code, campaignId);
         string[] written = [];
         NewFolder.Write(folder, draft =>
         {
@@ -77,7 +82,11 @@ public sealed class CampaignExport(Catalog catalog)
             if (!standing.Campaign.IsExploratory)
             {
                 // A plan file would make a plan of what had none.
-                WriteFile(draft, "plan.csv", writer => WritePlan(standing, writer));
+                WriteFile(draft, "plan.csv", writer => WritePlan(standing.Campaign, standing.Experiments.Select(e => e.Plan), writer));
+                if (records.HasAmendments)
+                {
+                    WriteFile(draft, SealedPlanName, writer => WritePlan(standing.Campaign, SealedPlan.Read(catalog, campaignId), writer));
+                }
             }
 
             if (standing.Campaign.Families.Count > 0)
@@ -182,14 +191,14 @@ public sealed class CampaignExport(Catalog catalog)
         }
     }
 
-    private static void WritePlan(CampaignStanding standing, TextWriter writer)
+    private static void WritePlan(Campaign campaign, IEnumerable<PlannedExperiment> plan, TextWriter writer)
     {
         var csv = new CsvLine(writer);
         csv.Write("experiment", "title", "response", "unit", "groups", "control", "test", "follow_up", "replicates", "smallest_effect", "assumed_sd", "weight", "family", "confirms", "shared_control");
 
         // A plan that an earlier version sealed may name families that never counted as such: named again, they would.
-        bool namesFamilies = !standing.Campaign.IsSealed || standing.Campaign.Families.Count > 0;
-        foreach (PlannedExperiment e in standing.Experiments.Select(e => e.Plan))
+        bool namesFamilies = !campaign.IsSealed || campaign.Families.Count > 0;
+        foreach (PlannedExperiment e in plan)
         {
             csv.Write(
                 e.Code, e.Title, e.Response, e.Unit, string.Join('|', e.Groups), e.Control ?? "", e.Test, e.FollowUp,

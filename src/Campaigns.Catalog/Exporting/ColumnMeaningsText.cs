@@ -162,7 +162,7 @@ internal static class ColumnMeaningsText
         """
         amendment|whole number|1 and more|number of the amendment of the sealed plan
         experiment|text||code of the experiment
-        field|text|a column of plan.csv|what was changed
+        field|text|a column of plan.csv; added|what was changed; added: the experiment was not in the sealed plan
         before|text||the value in the plan before
         after|text||the value since
         reason|text||why
@@ -207,7 +207,7 @@ internal static class ColumnMeaningsText
     /// <summary>The files.</summary>
     public static IReadOnlyList<(string File, string Text)> Files { get; } =
     [
-        ("plan.csv", Plan), (CampaignExport.FamiliesName, Families), (CampaignExport.MeasurementsPath, Measurements), (CampaignExport.ExclusionsName, Exclusions),
+        ("plan.csv", Plan), (CampaignExport.SealedPlanName, Plan), (CampaignExport.FamiliesName, Families), (CampaignExport.MeasurementsPath, Measurements), (CampaignExport.ExclusionsName, Exclusions),
         (CampaignExport.ResultsName, Results), (CampaignExport.ComparisonsName, Comparisons), (CampaignExport.ReviewsName, Reviews), (CampaignExport.StreamsName, Streams),
         (CampaignExport.DecisionsName, Decisions), (CampaignExport.AmendmentsName, Amendments), (CampaignExport.WithdrawalsName, Withdrawals), (CampaignExport.LedgerName, Ledger),
         (ColumnMeanings.FileName, Dictionary),

@@ -1,4 +1,5 @@
 using System.Globalization;
+using Campaigns.Catalog.Providers;
 using Campaigns.Domain;
 
 namespace Campaigns.Catalog.Exporting;
@@ -36,7 +37,7 @@ public static class NewFolder
         }
         catch (Exception error) when (error is IOException or UnauthorizedAccessException)
         {
-            throw new RefusedException($"The folder '{folder}' cannot be written: {error.Message}");
+            throw new RefusedException($"The folder '{folder}' cannot be written: {FileTrouble.Reason(error, draft, folder)} Nothing was written.");
         }
         finally
         {

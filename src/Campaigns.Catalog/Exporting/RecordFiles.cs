@@ -1,9 +1,9 @@
-using System.Text;
 using System.Text.Json;
 using Campaigns.Catalog.Ledger;
 using Campaigns.Catalog.Loading;
 using Campaigns.Catalog.Providers;
 using Campaigns.Catalog.Results;
+using Campaigns.Domain;
 
 namespace Campaigns.Catalog.Exporting;
 
@@ -32,7 +32,7 @@ internal sealed class RecordFiles(Catalog catalog, string code, long campaignId)
         }
     }
 
-    /// <summary>A row a value that an amendment changed.</summary>
+    /// <summary>A row a value that an amendment changed. Numbers of a plan are not negative, so that guarding every value changes none of them.</summary>
     public void WriteAmendments(TextWriter writer)
     {
         using SqliteStatement select = catalog.Prepare(
@@ -46,8 +46,9 @@ internal sealed class RecordFiles(Catalog catalog, string code, long campaignId)
         csv.Write("amendment", "experiment", "field", "before", "after", "reason", "by", "at");
         while (select.Read())
         {
+            bool isAdded = select.TextEquals(2, PlanAmendmentChange.Added);
             csv.Write(
-                CsvLine.Number(select.Integer(0)), select.Text(1), select.Text(2), Value(select.NullableText(3)), Value(select.NullableText(4)), select.Text(5), select.Text(6),
+                CsvLine.Number(select.Integer(0)), select.Text(1), isAdded ? "added" : select.Text(2), select.NullableText(3) ?? "", isAdded ? "" : select.NullableText(4) ?? "", select.Text(5), select.Text(6),
                 CsvLine.Instant(Instants.FromMicroseconds(select.Integer(7))));
         }
     }
@@ -94,10 +95,6 @@ internal sealed class RecordFiles(Catalog catalog, string code, long campaignId)
         json.WriteEndObject();
         json.WriteEndObject();
     }
-
-    /// <summary>A value of a plan: a number stays one, a text is guarded.</summary>
-    private static CsvField Value(string? text) =>
-        text is null ? default : DecimalText.Parse(Encoding.UTF8.GetBytes(text), DecimalMark.Point, out _) == NumberReading.Number ? CsvField.AsItStands(text) : text;
 
     private bool Any(string sql)
     {

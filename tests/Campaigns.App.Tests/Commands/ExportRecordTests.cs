@@ -1,3 +1,4 @@
+using System.Globalization;
 using System.Security.Cryptography;
 using System.Text;
 using System.Text.Json;
@@ -18,6 +19,13 @@ public sealed class ExportRecordTests : IDisposable
         _place.Run("exclude", "adhesion-screen", "GS-01", "--line", Line("GS-01"), "--reason", "torn").Well();
         Export("adhesion-screen", "demo");
         AssertDescribed("demo");
+        _place.Run("plan", "adhesion-screen", _place.Write("more.csv", "experiment,groups\nGS-99,a|b\nGS-98,a|b\n"), "--reason", "a new resin").Well();
+        _place.Run("withdraw", "adhesion-screen", "GS-99", "--reason", "no resin left").Well();
+        Export("adhesion-screen", "changed");
+        AssertDescribed("changed");
+        _place.Run("run", _place.Campaign("X", null, Workplace.TwoExperiments)).Well();
+        Export("X", "exploratory");
+        AssertDescribed("exploratory");
         string folder = _place.Campaign("F", "experiment,groups,family\nE1,a|b,one\nE2,a|b,two\n", Workplace.TwoExperiments, correction: "holm");
         _place.Write("F/families.csv", "family,level\none,0.02\ntwo,0.03\n");
         _place.Run("run", folder).Well();
@@ -26,8 +34,49 @@ public sealed class ExportRecordTests : IDisposable
         _place.Run("run", _place.Campaign("O", "experiment,groups\nE1,a|b\nE2,a|b\n", Workplace.TwoExperiments, correction: "lord")).Well();
         Export("O", "online");
         AssertDescribed("online");
-        string[] seen = [.. new[] { "demo", "families", "online" }.SelectMany(f => CsvText.Read(File.ReadAllText(_place.At(f, "dictionary.csv"))).Column("file")).Distinct()];
-        Assert.Empty(ColumnMeanings.All.Select(c => c.File).Distinct().Except(seen).Except([CampaignExport.AmendmentsName, CampaignExport.WithdrawalsName]));
+        string[] seen = [.. new[] { "demo", "changed", "exploratory", "families", "online" }.SelectMany(f => CsvText.Read(File.ReadAllText(_place.At(f, "dictionary.csv"))).Column("file")).Distinct()];
+        Assert.Empty(ColumnMeanings.All.Select(c => c.File).Distinct().Except(seen));
+    }
+
+    [Fact]
+    public void The_plan_as_it_was_sealed_goes_out_beside_the_amended_one_and_has_the_digest_of_the_seal()
+    {
+        string plan = "experiment,title,groups\nE1,first,a|b\nE2,-second,a|b\n";
+        _place.Run("run", _place.Campaign("C", plan, Workplace.TwoExperiments)).Well();
+        string digest = Digest("C");
+        Export("C", "before");
+        Assert.False(File.Exists(_place.At("before", "sealed-plan.csv")));
+        _place.Run("plan", "C", _place.Write("amended.csv", plan.Replace("-second", "+later", StringComparison.Ordinal) + "E3,third,a|b\n"), "--reason", "=new resin").Well();
+        Assert.Contains("sealed-plan.csv the plan as it was sealed", _place.Run("export", "C", "--out", _place.At("after")).Well().Out.ReplaceLineEndings(" "), StringComparison.Ordinal);
+        Assert.Equal(File.ReadAllText(_place.At("before", "plan.csv")), File.ReadAllText(_place.At("after", "sealed-plan.csv")));
+        CsvText now = CsvText.Read(File.ReadAllText(_place.At("after", "plan.csv")));
+        Assert.Equal(["first", "'+later", "third"], now.Column("title"));
+        CsvText amendments = CsvText.Read(File.ReadAllText(_place.At("after", "amendments.csv")));
+        Assert.Equal(["1,E2,title,'-second,'+later,'=new resin", "1,E3,added,,,'=new resin"], amendments.Rows.Select(r => string.Join(',', r[..6])));
+
+        // The sealed plan in the place of the amended one is sealed to the same digest.
+        File.Copy(_place.At("after", "sealed-plan.csv"), _place.At("after", "plan.csv"), overwrite: true);
+        _place.Variables["CAMPAIGNS_CATALOG"] = _place.At("again.db");
+        _place.Run("run", _place.At("after")).Well();
+        Assert.Equal(digest, Digest("C"));
+    }
+
+    [Fact]
+    public void A_campaign_whose_names_begin_with_formula_signs_is_exported_and_run_to_the_same_plan_digest_and_results()
+    {
+        string[] codes = ["=1+1", "+E", "-E", "@E", "'=E", "''", "\uFF1DE", "E"];
+        string plan = "experiment,title,response,unit,groups,control,follow_up,family,shared_control\n" + string.Concat(codes.Select(c => $"{Typed(c)},-title,@response,=unit,{Typed("=a|-b|'=c")},-b,dunnett,+family,=tray\n"));
+        string values = "experiment,group,value,specimen,block\n" + string.Concat(codes.SelectMany((c, e) => Enumerable.Range(0, 12).Select(i =>
+            FormattableString.Invariant($"{Typed(c)},{Typed(((string[])["=a", "-b", "'=c"])[i % 3])},-{1 + (e * (i % 3)) + (i * i % 5 * 0.25)},=s{i},+day\n"))));
+        _place.Run("run", _place.Campaign("C", plan, values, correction: "holm")).Well();
+        Assert.Equal(codes, JsonDocument.Parse(_place.Run("results", "C", "--format", "json").Well().Out).RootElement.EnumerateArray().Select(r => r.GetProperty("experiment").GetString()));
+        string digest = Digest("C"), results = _place.Run("results", "C", "--format", "csv").Well().Out, comparisons = _place.Run("comparisons", "C", "--format", "csv").Well().Out;
+        Export("C", "out");
+        Assert.All(Directory.GetFiles(_place.At("out"), "*.csv", SearchOption.AllDirectories).SelectMany(f => CsvText.Read(File.ReadAllText(f)).Rows).SelectMany(r => r),
+            cell => Assert.True(cell.Length == 0 || !"=+@\uFF1D".Contains(cell[0], StringComparison.Ordinal) && (cell[0] != '-' || double.TryParse(cell, CultureInfo.InvariantCulture, out _)), cell));
+        _place.Variables["CAMPAIGNS_CATALOG"] = _place.At("again.db");
+        _place.Run("run", _place.At("out")).Well();
+        Assert.Equal((digest, results, comparisons), (Digest("C"), _place.Run("results", "C", "--format", "csv").Well().Out, _place.Run("comparisons", "C", "--format", "csv").Well().Out));
     }
 
     [Fact]
@@ -107,6 +156,11 @@ public sealed class ExportRecordTests : IDisposable
         CsvText rows = _place.Run("adjust", file, "--correction", "holm", "--format", "csv").Well().Csv;
         Assert.Equal(["=a,-1.5", "'+b,+2"], rows.Rows.Select(r => $"{r[0]},{r[1]}"));
     }
+
+    /// <summary>A text as a file has to have it so that it is read as it is: one that looks guarded is guarded.</summary>
+    private static string Typed(string text) => text.StartsWith("'=", StringComparison.Ordinal) ? "'" + text : text;
+
+    private string Digest(string campaign) => _place.Run("show", campaign, "--format", "csv").Well().Csv.Column("plan_digest")[0];
 
     private void Export(string campaign, string folder) => _place.Run("export", campaign, "--out", _place.At(folder)).Well();
 

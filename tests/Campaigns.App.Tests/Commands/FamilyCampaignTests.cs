@@ -1,4 +1,3 @@
-using System.Globalization;
 using Campaigns.App.Dashboard.Model;
 using Campaigns.App.Dashboard.Paint;
 using Campaigns.App.Tests.Dashboard;
@@ -8,23 +7,9 @@ using Campaigns.Statistics.Corrections;
 
 namespace Campaigns.App.Tests.Commands;
 
-/// <summary>An invented campaign of three families, one behind a gate that any survivor of the first opens, and one behind a gate that waits for all of the second; the second weighs.</summary>
+/// <summary>A campaign of several families, from the command line to every output.</summary>
 public sealed class FamilyCampaignTests : IDisposable
 {
-    private const string Families = "family,correction,level,opens_after,opens_when\nprimary,,0.03,,\nsecondary,weighted-holm,,primary,any\nextra,hommel,,secondary,all\n";
-
-    private const string Plan = """
-        experiment,title,groups,follow_up,weight,family,shared_control
-        P1,Binder,a|b|c,holm-pairs,,primary,
-        P2,Filler,a|b|c,holm-pairs,,primary,
-        P3,Not done,a|b|c,holm-pairs,,primary,
-        S1,Gloss,a|b|c,holm-pairs,3,secondary,
-        S2,Flow,a|b|c,holm-pairs,1,secondary,
-        X1,Smell,a|b|c,holm-pairs,,extra,
-        X2,Colour,a|b|c,holm-pairs,,extra,
-
-        """;
-
     private readonly Workplace _place = new();
 
     public void Dispose() => _place.Dispose();
@@ -79,7 +64,7 @@ public sealed class FamilyCampaignTests : IDisposable
         _place.Run("run", _place.At("out")).Well();
         Assert.Equal(results, _place.Run("results", "F", "--format", "csv").Well().Out);
         Assert.Equal([digest], _place.Run("show", "F", "--format", "csv").Well().Csv.Column("plan_digest"));
-        _place.Write("out/families.csv", Families.Replace("0.03", "0.02", StringComparison.Ordinal));
+        _place.Write("out/families.csv", ThreeFamilies.Families.Replace("0.03", "0.02", StringComparison.Ordinal));
         _place.Run("run", _place.At("out")).Refused(3, "The folder's families differ", "family primary: correction '', level '0.03' against correction '', level '0.02'");
         File.Delete(_place.At("out", "families.csv"));
         _place.Run("run", _place.At("out")).Refused(3, "family primary");
@@ -88,7 +73,7 @@ public sealed class FamilyCampaignTests : IDisposable
     [Fact]
     public void Families_are_registered_listed_and_refused_step_by_step()
     {
-        string plan = _place.Write("plan.csv", Plan), families = _place.Write("families.csv", Families);
+        string plan = _place.Write("plan.csv", ThreeFamilies.Plan), families = _place.Write("families.csv", ThreeFamilies.Families);
         _place.Run("start", "F", "--error-rate", "familywise").Well();
         Assert.Equal([""], _place.Run("families", "F", "--format", "csv").Well().Csv.Column("family"));
         _place.Run("families", "F", families).Well();
@@ -169,17 +154,5 @@ public sealed class FamilyCampaignTests : IDisposable
         Assert.Equal(["true"], _place.Run("show", "F", "--format", "csv").Well().Csv.Column("review_interim"));
     }
 
-    /// <summary>Six values a group; the third group lies apart from the others, in S2 by as much as is given.</summary>
-    private string Folder(double shiftOfLast)
-    {
-        double[] pattern = [1.0, 1.2, 0.8, 1.1, 0.9, 1.05];
-        (string Code, double Shift)[] shifts = [("P1", 1), ("P2", 0.05), ("S1", 0.6), ("S2", shiftOfLast), ("X1", 0.5), ("X2", 0.1)];
-        IEnumerable<string> rows = shifts.SelectMany(e => "abc".SelectMany(g => pattern.Select((v, i) =>
-            string.Create(CultureInfo.InvariantCulture, $"{e.Code},{g},{v + (g == 'c' ? e.Shift : 0) + (0.01 * ((i * 5 + g) % 7)):0.00}"))));
-        _place.Write("F/campaign.json", """{"code": "F", "title": "Three families", "errorRate": "familywise", "level": 0.05, "correction": "holm"}""");
-        _place.Write("F/plan.csv", Plan);
-        _place.Write("F/families.csv", Families);
-        _place.Write("F/measurements/week-01.csv", "experiment,group,value\n" + string.Join('\n', rows) + "\n");
-        return _place.At("F");
-    }
+    private string Folder(double shiftOfLast) => ThreeFamilies.Folder(_place, shiftOfLast);
 }

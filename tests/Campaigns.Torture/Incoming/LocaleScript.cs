@@ -17,21 +17,27 @@ internal sealed partial class LocaleScript(Workbench bench, Func<string[], Ran> 
     /// <summary>Commands that rows are asked of, in all three formats.</summary>
     private static readonly string[] Questions =
     [
-        "list", "show C", "show C INDIGO", "results C", "survivors C", "comparisons C", "corrections C", "corrections C --by-experiment", "corrections C --near-misses", "risk", "risk C", "risk C --curve",
+        "list", "show C", "show C INDIGO", "show C INDIGO --observations", "results C", "survivors C", "comparisons C", "corrections C", "corrections C --by-experiment", "corrections C --near-misses", "risk", "risk C", "risk C --curve",
         "risk --pooled --correction bh --level 0.05", "bound C --all-survivors", "bound C --curve", "overall C", "families F", "decisions O", "results O", "permute P --draws 199", "reviews C", "reviews F --families",
-        "reviews C --lines 1", "reviews C --compare 1 2", "reviews C --rerun all", "history C", "history C --changed", "ledger", "ledger C", "ledger verify", "show C --plan", "show C --amendments", "show C --withdrawals", "size --groups 3 --effect 0.25,0.4 --power 0.8", "size --campaign 20 --effect 0.4 --groups 3 --share-real 0.1",
-        "adjust p.csv", "adjust p.csv --correction lord --level 0.05",
+        "reviews C --lines 1", "reviews C --compare 1 2", "reviews C --rerun all", "history C", "history C --changed", "ledger", "ledger C", "ledger verify", "show C --plan", "show C --sealed-plan", "show C --amendments", "show C --withdrawals", "size --groups 3 --effect 0.25,0.4 --power 0.8", "size --campaign 20 --effect 0.4 --groups 3 --share-real 0.1",
+        "adjust p.csv", "adjust p.csv --correction lord --level 0.05", "restore-check copy.db",
     ];
 
     /// <summary>What was said so far.</summary>
     public IReadOnlyList<(string Command, string Text)> Said => _said;
 
-    /// <summary>Does all of it, and asks everything in all formats.</summary>
-    public IReadOnlyList<(string Command, string Text)> Run()
+    /// <summary>Does all of it, and asks everything.</summary>
+    /// <param name="inAllFormats">Whether every question is asked in every format, not in one in turn.</param>
+    public IReadOnlyList<(string Command, string Text)> Run(bool inAllFormats)
     {
         Work();
-        Ask(Formats);
-        return _said;
+        if (inAllFormats)
+        {
+            Ask(Formats);
+            return _said;
+        }
+
+        return AskInTurn();
     }
 
     /// <summary>Asks everything, the first question in the first of the formats, the next in the next, and so on where there are fewer than all; then misspelt things, and the exported files.</summary>
@@ -60,7 +66,7 @@ internal sealed partial class LocaleScript(Workbench bench, Func<string[], Ran> 
     }
 
     private void Ask(string question, string format) =>
-        Say([.. question.Split(' ').Select(w => w.EndsWith(".csv", StringComparison.Ordinal) ? bench.At(w) : w), "--format", format]);
+        Say([.. question.Split(' ').Select(w => w.EndsWith(".csv", StringComparison.Ordinal) || w.EndsWith(".db", StringComparison.Ordinal) ? bench.At(w) : w), "--format", format]);
 
     private void AskOnce()
     {
@@ -71,8 +77,11 @@ internal sealed partial class LocaleScript(Workbench bench, Func<string[], Ran> 
         Say("export", "C", "--out", bench.At("out"));
         foreach (string file in Directory.EnumerateFiles(bench.At("out"), "*", SearchOption.AllDirectories).Order(StringComparer.Ordinal))
         {
-            _said.Add((file[bench.Folder.Length..], Blank(File.ReadAllText(file))));
+            _said.Add((file[bench.Folder.Length..], Blank(ExportedAt().Replace(File.ReadAllText(file), "\"exported_at\": \"INSTANT\""))));
         }
+
+        Say("export", "C", "--originals", "--out", bench.At("loaded"));
+        _said.Add(("originals.csv", Blank(File.ReadAllText(bench.At("loaded/originals.csv")))));
     }
 
     /// <summary>Commands that the script leaves out; empty where it uses all of them.</summary>
@@ -136,6 +145,7 @@ internal sealed partial class LocaleScript(Workbench bench, Func<string[], Ran> 
         Say("review", "O");
         Say("restream", "O", "--correction", "saffron", "--reason", "yeni akış");
         Say("upgrade");
+        Say("backup", bench.At("copy.db"));
     }
 
     private void Say(params string[] arguments)
@@ -171,9 +181,13 @@ internal sealed partial class LocaleScript(Workbench bench, Func<string[], Ran> 
     [GeneratedRegex(@"\d{4}-\d\d-\d\d[T ]\d\d:\d\d(:\d\d)?(\.\d+)?(Z| UTC)?")]
     private static partial Regex Instant();
 
+    /// <summary>The clock of a process goes on; in any other form than this the text stays, and differs.</summary>
+    [GeneratedRegex("\"exported_at\": \"[0-9]{4}-[0-9]{2}-[0-9]{2}T[0-9]{2}:[0-9]{2}:[0-9]{2}Z\"")]
+    private static partial Regex ExportedAt();
+
     [GeneratedRegex("[0-9a-f]{64}")]
     private static partial Regex Hash();
 
-    [GeneratedRegex(@"^  ([a-z]+)", RegexOptions.Multiline)]
+    [GeneratedRegex(@"^  ([a-z-]+)", RegexOptions.Multiline)]
     private static partial Regex Command();
 }

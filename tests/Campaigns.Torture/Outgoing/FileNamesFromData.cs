@@ -44,7 +44,21 @@ internal sealed class FileNamesFromData : TortureTest
         string folder = bench.At("asked"), outside = bench.At("outside");
         Directory.CreateDirectory(outside);
         File.WriteAllText(Path.Combine(outside, "kept.txt"), "kept");
-        bool refused = SetTrap(trap, folder, outside);
+        if (SetTrap(trap, folder, outside))
+        {
+            if (FaultOf(bench, folder, names.Length, refused: true) is { } fault)
+            {
+                return fault;
+            }
+
+            RemoveTrap(folder);
+        }
+
+        return FaultOf(bench, folder, names.Length, refused: false);
+    }
+
+    private static string? FaultOf(Workbench bench, string folder, int files, bool refused)
+    {
         string before = Listing(bench.Folder, folder);
         foreach (string[] more in (string[][])[["--originals"], []])
         {
@@ -59,21 +73,23 @@ internal sealed class FileNamesFromData : TortureTest
                 return $"outside the folder: {Listing(bench.Folder, folder)} instead of {before}";
             }
 
-            if (!refused && FaultInside(folder, names.Length, more.Length > 0) is { } fault)
+            if (refused)
+            {
+                continue;
+            }
+
+            if (FaultInside(folder, files, more.Length > 0) is { } fault)
             {
                 return fault;
             }
 
-            if (!refused)
+            // A second export must not touch what the first wrote.
+            if (bench.Run(["export", "C", "--out", folder, .. more]).Code != 3)
             {
-                // A second export must not touch what the first wrote.
-                if (bench.Run(["export", "C", "--out", folder, .. more]).Code != 3)
-                {
-                    return "a folder was written over";
-                }
-
-                Directory.Delete(folder, recursive: true);
+                return "a folder was written over";
             }
+
+            Directory.Delete(folder, recursive: true);
         }
 
         return null;
@@ -104,6 +120,19 @@ internal sealed class FileNamesFromData : TortureTest
                 return false;
             default:
                 return false;
+        }
+    }
+
+    /// <summary>Takes away what was put in the place of the folder.</summary>
+    private static void RemoveTrap(string folder)
+    {
+        if (new FileInfo(folder).LinkTarget is not null || File.Exists(folder))
+        {
+            File.Delete(folder);
+        }
+        else
+        {
+            Directory.Delete(folder, recursive: true);
         }
     }
 
