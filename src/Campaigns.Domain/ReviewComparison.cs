@@ -23,6 +23,9 @@ public sealed record ReviewComparison(
     /// <summary>Experiments withdrawn between the two.</summary>
     public int Withdrawn { get; init; }
 
+    /// <summary>Experiments taken in again between the two.</summary>
+    public int TakenBack { get; init; }
+
     /// <summary>Hypotheses that each family counted in the earlier review.</summary>
     public IEnumerable<int> SizesBefore => Before.Members.Families.Select(f => f.Size);
 
@@ -87,6 +90,7 @@ public sealed record ReviewComparison(
             OtherP = otherP,
             AmendedIn = events.Values.Count(e => e.Any(x => x.Cause == ReviewCause.AmendedIn)),
             Withdrawn = events.Values.Count(e => e.LastOrDefault(x => x.Cause is ReviewCause.Withdrawal or ReviewCause.WithdrawalTakenBack)?.Cause == ReviewCause.Withdrawal),
+            TakenBack = events.Values.Count(e => e.LastOrDefault(x => x.Cause is ReviewCause.Withdrawal or ReviewCause.WithdrawalTakenBack)?.Cause == ReviewCause.WithdrawalTakenBack),
         };
     }
 

@@ -27,7 +27,7 @@ internal sealed class DecisionsVerb : Verb
             CampaignOverview overview = new OverviewReader(catalog).Read(new CampaignStore(catalog).Get(code));
             return DecisionRows.Of(lines) with
             {
-                Above = [FormattableString.Invariant($"{code}: {lines.Count} of {overview.FamilySize} experiments were given a level, {lines.Count(l => l.Entry.DecidedAt is not null)} are decided, {overview.SurvivorCount} survive ({CampaignText.Goal(overview.Campaign)})")],
+                Above = [FormattableString.Invariant($"{code}: {lines.Count} experiment(s) of {overview.FamilySize} in the family and {lines.Count(l => l.IsWithdrawn)} withdrawn were given a level, {lines.Count(l => l.Entry.DecidedAt is not null)} decided; {overview.SurvivorCount} survive as things stand ({CampaignText.Goal(overview.Campaign)})")],
                 Below = DecisionRows.Below(overview, lines),
             };
         }));

@@ -18,7 +18,7 @@ internal static class HistoryTables
             Above = [FormattableString.Invariant($"{code}: {shown.Count} of {history.Experiments.Count} experiments in {reviews} review(s)")],
             Below =
             [
-                "survives, no: what the review found on its day; -: no line in that review, since the experiment had no result then.",
+                "survives, no: what the review found on its day; -: no line in that review, since the experiment had no result that counted then (not tested, awaiting a new test, or withdrawn).",
                 .. history.Reviews.Select(r => $"{ReviewWording.Line(r)}."),
             ],
             WhenEmpty = "No experiment survives in one review and not in another.",

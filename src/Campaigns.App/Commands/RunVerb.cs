@@ -31,6 +31,7 @@ internal sealed class RunVerb : Verb
         string familiesPath = Path.Combine(folder, CampaignExport.FamiliesName);
         using Catalog.Catalog catalog = session.OpenOrCreateCatalog();
         StoredCampaign campaign = session.SayAfter(() => catalog.Change(() => Register(session, catalog, description, Existing(planPath), Existing(familiesPath))));
+        SayWhatIsNotDoneAgain(session, folder);
         LoadFiles(session, catalog, campaign, Path.Combine(folder, "measurements"));
         string code = description.Code;
         bool reviewed = session.SayAfter(() => catalog.Change(() =>
@@ -45,6 +46,16 @@ internal sealed class RunVerb : Verb
         }
 
         return ExitCode.Done;
+    }
+
+    /// <summary>An export tells what was decided in its catalog; a folder that is run begins a record of its own.</summary>
+    private static void SayWhatIsNotDoneAgain(Session session, string folder)
+    {
+        string[] told = [.. new[] { CampaignExport.ExclusionsName, CampaignExport.WithdrawalsName, CampaignExport.AmendmentsName }.Where(name => File.Exists(Path.Combine(folder, name)))];
+        if (told.Length > 0)
+        {
+            session.Host.Notice($"Note: {string.Join(", ", told)} of this folder tell what was decided elsewhere and are not done again; 'campaigns exclude', 'campaigns withdraw' and 'campaigns plan --reason' decide it here.");
+        }
     }
 
     private static CampaignDescription ReadDescription(string folder)

@@ -34,7 +34,7 @@ internal sealed class WithdrawVerb : Verb
         if (new CampaignStore(catalog).Get(code).Campaign.IsSealed && decisions.Any(d => d.HadData))
         {
             session.Say(decisions[0].IsWithdrawn
-                ? $"'campaigns review {code}' puts this in force."
+                ? $"Results and survivors count this from now on; 'campaigns review {code}' takes it into a review."
                 : $"'campaigns test {code}' and 'campaigns review {code}' put this in force; until then an experiment that was taken in again counts as not tested.");
         }
 

@@ -64,7 +64,7 @@ internal static class ReviewWording
             ReviewReason.FamilyClosed => "the gate of its family closed",
             ReviewReason.AwaitsTest => $"{(difference.IsGained ? "at the earlier review" : "at the later review")} its changed values awaited a new test{events}",
             ReviewReason.NoResult => $"{(difference.IsGained ? "at the earlier review" : "at the later review")} its data gave no p-value{events}",
-            ReviewReason.Withdrawn => $"{(difference.IsGained ? "taken in again" : "withdrawn")}{events}",
+            ReviewReason.Withdrawn => events.Length > 0 ? events[2..] : difference.IsGained ? "taken in again" : "withdrawn",
             _ => Together(difference, events),
         };
     }
@@ -113,9 +113,9 @@ internal static class ReviewWording
             causes.Add(FormattableString.Invariant($"{comparison.AmendedIn} amended in"));
         }
 
-        if (comparison.Withdrawn > 0)
+        if (comparison.Withdrawn + comparison.TakenBack > 0)
         {
-            causes.Add(FormattableString.Invariant($"{comparison.Withdrawn} withdrawn; one that had data stays and counts with p = 1"));
+            causes.Add(FormattableString.Invariant($"{comparison.Withdrawn} withdrawn and {comparison.TakenBack} taken in again since: without data an experiment leaves its family or comes back to it, with data it stays and counts with p = 1 meanwhile"));
         }
 
         return causes.Count == 0 ? "" : $" ({string.Join("; ", causes)})";

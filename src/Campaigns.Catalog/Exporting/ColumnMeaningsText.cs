@@ -192,7 +192,7 @@ internal static class ColumnMeaningsText
         subject|text||what in it was touched
         reason|text||why, where a reason is due
         changes|text|a line a value|what had which value before, and after the arrow which it has since
-        hash|text|64 hexadecimal digits|SHA-256 of the entry and of the hash before it
+        hash|text|64 hexadecimal digits|SHA-256 of the entry and of the hash before it; recomputed from the catalog by ledger verify (this file has words for what the entry holds, and leaves out the digests of its rows)
         """;
 
     private const string Dictionary =

@@ -90,7 +90,7 @@ public static class BackupWriter
 
         if (File.Exists(target) && !replace)
         {
-            throw new RefusedException($"'{target}' exists; nothing was written. Name another file, or say --replace.");
+            throw new RefusedException($"'{target}' exists; nothing was written. Name another file; 'campaigns backup --replace' writes over an older copy.");
         }
 
         // SQLite would take it for a journal of the new file, and roll it back into that.

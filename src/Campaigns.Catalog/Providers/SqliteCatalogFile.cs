@@ -92,8 +92,8 @@ internal static class SqliteCatalogFile
             using (var connection = new SqliteConnection(ConnectionString(draft, SqliteOpenMode.ReadWriteCreate)))
             {
                 connection.Open();
-                Execute(connection, $"PRAGMA page_size = 8192; PRAGMA application_id = {ApplicationId}; PRAGMA user_version = {SchemaVersion}; PRAGMA synchronous = FULL;");
-                Execute(connection, ReadSchema());
+                ExecuteAll(connection, $"PRAGMA page_size = 8192; PRAGMA application_id = {ApplicationId}; PRAGMA user_version = {SchemaVersion}; PRAGMA synchronous = FULL;", path);
+                ExecuteAll(connection, ReadSchema(), path);
             }
 
             DraftFiles.Place(draft, path, overwrite: false);
@@ -180,6 +180,16 @@ internal static class SqliteCatalogFile
 
         int version = BinaryPrimitives.ReadInt32BigEndian(header[60..]);
         return version >= 0 ? version : throw new CatalogException($"The file '{path}' is no catalog of this program: it says that it is of schema {version}. It was not touched.");
+    }
+
+    /// <summary>Runs a text of many statements and stops at the first that fails, which the driver may pass over: on a full disk half a schema would look like a whole one.</summary>
+    private static void ExecuteAll(SqliteConnection connection, string sql, string path)
+    {
+        int code = SQLitePCL.raw.sqlite3_exec(connection.Handle, sql, out string detail);
+        if (code != SQLitePCL.raw.SQLITE_OK)
+        {
+            throw SqliteErrors.Translate(SQLitePCL.raw.sqlite3_extended_errcode(connection.Handle), detail ?? "", path);
+        }
     }
 
     /// <summary>Runs a fixed text of one or more statements.</summary>

@@ -37,7 +37,7 @@ internal sealed class OriginalsProof(Catalog catalog, Findings findings, Evidenc
         }
         catch (Exception error) when (error is RecordException or CatalogException)
         {
-            findings.Add(null, campaign, FormattableString.Invariant($"The bytes of the loaded file '{file.FileName}' (load {file.LoadId}) are not those that were loaded: {error.Message}"));
+            findings.Add(null, campaign, error.Message);
         }
     }
 }
