@@ -14,6 +14,9 @@ public sealed record CampaignVerdict(IReadOnlyList<PValue> Adjusted, IReadOnlyLi
     /// <summary>Where standing decisions make the verdict, the batch view beside them; else null.</summary>
     public CampaignVerdict? Batch { get; init; }
 
+    /// <summary>Survivors among the p-values at hand; a standing decision whose experiment awaits a new test has none.</summary>
+    public int SurvivorLineCount => Survives.Count(s => s);
+
     /// <summary>Survivors of all families.</summary>
     public int SurvivorCount => Families.Sum(f => f.Survivors);
 

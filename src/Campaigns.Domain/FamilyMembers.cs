@@ -34,7 +34,7 @@ public sealed record FamilyMembers
         return OnlineVerdict.ProcedureOf(campaign) is null ? members : members with
         {
             Entries = [.. experiments.Where(e => e.P is not null).Select(e => e.Entry)],
-            StandingSurvivors = experiments.Count(e => e.Entry?.Survives == true && e.P is not null),
+            StandingSurvivors = experiments.Count(e => e.Entry?.Survives == true && e.Status != ExperimentStatus.Withdrawn),
         };
     }
 

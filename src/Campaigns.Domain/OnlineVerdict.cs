@@ -109,35 +109,18 @@ public static class OnlineVerdict
             return Withdrawn(experiment, entry, family);
         }
 
-        if (experiment.P is null)
-        {
-            return Waiting(experiment, entry, family);
-        }
-
+        bool neverGaveP = entry?.P is null && experiment.P is null;
         return experiment with
         {
             Family = family,
             GivenLevel = entry?.Level,
-            AdjustedP = entry?.AdjustedP(family.Level),
-            Survives = entry?.Survives,
+            AdjustedP = neverGaveP ? null : entry?.AdjustedP(family.Level),
+            Survives = neverGaveP ? null : entry?.Survives,
             Amendments = entry?.DecidedAt is not null && entry.P != experiment.P
                 ? [.. experiment.Amendments, $"its decision was made on {(entry.P is { } p ? $"p = {p}" : "data that gave no p-value")} and stands, whatever a later test says"]
                 : experiment.Amendments,
         };
     }
-
-    /// <summary>A decision is never revoked, but an experiment without a result as things stand is counted as not tested.</summary>
-    private static ExperimentResult Waiting(ExperimentResult experiment, StreamEntry? entry, FamilyStanding family) => experiment with
-    {
-        Family = family,
-        GivenLevel = entry?.Level,
-        AdjustedP = null,
-        Survives = null,
-        Amendments = entry is { Survives: { } survives, P: not null }
-            ? [.. experiment.Amendments, $"its decision ({(survives ? "survives" : "does not survive")}) stays in the stream, and counts again once its values as they stand are tested"]
-            : experiment.Amendments,
-    };
-
     /// <summary>A decision is never revoked, but an experiment that was withdrawn is no survivor.</summary>
     private static ExperimentResult Withdrawn(ExperimentResult experiment, StreamEntry? entry, FamilyStanding family) => experiment with
     {

@@ -27,10 +27,15 @@ internal sealed class DecisionsVerb : Verb
             CampaignOverview overview = new OverviewReader(catalog).Read(new CampaignStore(catalog).Get(code));
             return DecisionRows.Of(lines) with
             {
-                Above = [FormattableString.Invariant($"{code}: {lines.Count} experiment(s) of {overview.FamilySize} in the family and {lines.Count(l => l.IsWithdrawn)} withdrawn were given a level, {lines.Count(l => l.Entry.DecidedAt is not null)} decided; {overview.SurvivorCount} survive as things stand ({CampaignText.Goal(overview.Campaign)})")],
+                Above = [FormattableString.Invariant($"{code}: {Given(lines, overview)} were given a level, {lines.Count(l => l.Entry.DecidedAt is not null)} are decided, {overview.SurvivorCount} survive ({CampaignText.Goal(overview.Campaign)})")],
                 Below = DecisionRows.Below(overview, lines),
             };
         }));
         return ExitCode.Done;
     }
+
+    /// <summary>Withdrawn experiments keep their levels, and may have left the family.</summary>
+    private static string Given(IReadOnlyList<StreamStore.Line> lines, CampaignOverview overview) => lines.Count(l => l.IsWithdrawn) is var withdrawn && withdrawn > 0
+        ? FormattableString.Invariant($"{lines.Count} experiments ({withdrawn} withdrawn since; the family has {overview.FamilySize})")
+        : FormattableString.Invariant($"{lines.Count} of {overview.FamilySize} experiments");
 }

@@ -48,6 +48,11 @@ internal sealed class SurvivorsVerb : Verb
     /// <param name="most">Survivors to list.</param>
     public static Survivors Read(Catalog.Catalog catalog, string code, int most) => catalog.Snapshot(() => ReadNow(catalog, code, most));
 
+    /// <summary>A standing decision stands while the values of its experiment, changed since, await a new test.</summary>
+    private static string Counted(CampaignOverview overview) => overview.Campaign.Streams.Count > 0 && overview.AwaitingNewTest > 0
+        ? FormattableString.Invariant($"{overview.SurvivorCount} experiments, by standing decisions, {overview.TestedCount} having a result and {overview.AwaitingNewTest} awaiting a new test,")
+        : FormattableString.Invariant($"{overview.SurvivorCount} of {overview.TestedCount} tested experiments");
+
     private static Survivors ReadNow(Catalog.Catalog catalog, string code, int most)
     {
         (CampaignOverview overview, IReadOnlyList<ExperimentResult> listed) = new OverviewReader(catalog).ReadSurvivors(code, most);
@@ -59,7 +64,7 @@ internal sealed class SurvivorsVerb : Verb
         var verdict = new ComparisonVerdict(overview.Campaign, overview.Families);
         var rows = new RowTable(Columns, listed.Select(e => Row(e, gaps.GetValueOrDefault(e.Plan.Code), [.. comparisons[e.Plan.Code]], verdict.SelectedRisk(e)!.Value)))
         {
-            Above = [FormattableString.Invariant($"{code}: {overview.SurvivorCount} of {overview.TestedCount} tested experiments survive ({CampaignText.Goal(overview.Campaign)}).{more}")],
+            Above = [FormattableString.Invariant($"{code}: {Counted(overview)} survive ({CampaignText.Goal(overview.Campaign)}).{more}")],
             Below = [.. OnlineText.OnOtherData(listed), .. CampaignText.Footnotes(overview, listed.Select(e => e.Plan.Test).DefaultIfEmpty(overview.Campaign.DefaultTest)), .. UnitNotes.Of(listed), "Gap: the widest between two group means of the sample; gaps of what was selected look larger than they are. Its selected interval comes from the follow-up.", CampaignText.Caution],
             WhenEmpty = "No experiment survives: no difference shown, which is not the same as no difference.",
         };

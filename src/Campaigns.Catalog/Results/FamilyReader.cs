@@ -76,15 +76,15 @@ internal sealed class FamilyReader(Catalog catalog)
         return members with
         {
             Entries = [.. columns.ExperimentIds.ToArray().Select(id => entries.GetValueOrDefault(id))],
-            StandingSurvivors = StandingSurvivors(columns, entries).Count(),
+            StandingSurvivors = StandingSurvivors(stored.Id, entries, asOf).Count(),
         };
     }
 
-    /// <summary>Experiments that survive by their standing decisions: those that have a result as things stand, neither withdrawn nor waiting for a new test.</summary>
-    public static IEnumerable<KeyValuePair<long, StreamEntry>> StandingSurvivors(FamilyColumns tested, Dictionary<long, StreamEntry> entries)
+    /// <summary>Experiments that survive by their standing decisions and are not withdrawn.</summary>
+    public IEnumerable<KeyValuePair<long, StreamEntry>> StandingSurvivors(long campaignId, Dictionary<long, StreamEntry> entries, RecordPosition? asOf = null)
     {
-        HashSet<long> ids = [.. tested.ExperimentIds];
-        return entries.Where(e => e.Value.Survives == true && ids.Contains(e.Key));
+        var withdrawals = new StandingWithdrawals(catalog, campaignId, asOf);
+        return entries.Where(e => e.Value.Survives == true && !withdrawals.IsWithdrawn(e.Key));
     }
 
     /// <summary>Draws of the campaign's permutation tests: as many as the strictest threshold of its families asks for.</summary>

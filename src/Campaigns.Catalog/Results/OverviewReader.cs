@@ -27,7 +27,7 @@ public sealed class OverviewReader(Catalog catalog)
         (CampaignOverview overview, FamilyColumns family, CampaignVerdict verdict) = ReadWithSurvivors(stored);
         if (stored.Campaign.Streams.Count > 0)
         {
-            return (overview, StandingSurvivors(stored, overview, family, most));
+            return (overview, StandingSurvivors(stored, overview, most));
         }
 
         int[] survivors = [.. Enumerable.Range(0, family.Count).Where(i => verdict.Survives[i])];
@@ -37,10 +37,10 @@ public sealed class OverviewReader(Catalog catalog)
         return (overview, [.. listed.Select(i => experiments[family.ExperimentIds[i]] with { AdjustedP = verdict.Adjusted[i], Survives = true, Family = verdict.FamilyAt(i) })]);
     }
 
-    /// <summary>What survives by its decision, the smallest p-value of the decision first, of what has a result as things stand.</summary>
-    private List<ExperimentResult> StandingSurvivors(StoredCampaign stored, CampaignOverview overview, FamilyColumns family, int most)
+    /// <summary>What survives by its decision, the smallest p-value of the decision first, whatever happened to its values since.</summary>
+    private List<ExperimentResult> StandingSurvivors(StoredCampaign stored, CampaignOverview overview, int most)
     {
-        KeyValuePair<long, StreamEntry>[] survivors = [.. FamilyReader.StandingSurvivors(family, StreamEntries.Read(catalog, stored.Id)).OrderBy(e => e.Value.P!.Value).ThenBy(e => e.Key).Take(most)];
+        KeyValuePair<long, StreamEntry>[] survivors = [.. new FamilyReader(catalog).StandingSurvivors(stored.Id, StreamEntries.Read(catalog, stored.Id)).OrderBy(e => e.Value.P!.Value).ThenBy(e => e.Key).Take(most)];
         Dictionary<long, ExperimentResult> experiments = new StandingReader(catalog).ReadSome(stored.Id, survivors.Select(e => e.Key));
         return [.. survivors.Select(e => OnlineVerdict.Apply(experiments[e.Key] with { Entry = e.Value }, overview.Families[0]))];
     }

@@ -115,7 +115,7 @@ public sealed class ReviewStore(Catalog catalog)
         RecordPosition seen = RecordPosition.Of(catalog, stored.Id);
         insert.Bind(14, seen.LastLoadId).Bind(15, seen.LastExclusionId).Bind(16, seen.LastAmendmentId).Bind(17, seen.LastWithdrawalId);
         insert.Bind(1, id).Bind(2, stored.Id).Bind(3, (long)number).Bind(4, catalog.Now).Bind(5, campaign.Correction)
-            .Bind(6, campaign.Level.Value).Bind(7, (long)verdict.Size).Bind(8, (long)columns.Count).Bind(9, (long)verdict.SurvivorCount)
+            .Bind(6, campaign.Level.Value).Bind(7, (long)verdict.Size).Bind(8, (long)columns.Count).Bind(9, (long)verdict.SurvivorLineCount)
             .Bind(10, testedOnly ? 1L : 0L).Bind(11, ProgramVersion.Current).Bind(12, lastRun)
             .BindBlob(13, PackedReviewLines.Pack(columns.ExperimentIds, columns.P, [.. verdict.Adjusted]).Written).Run();
         if (campaign.JudgedFamilies.Count > 0)
@@ -130,7 +130,7 @@ public sealed class ReviewStore(Catalog catalog)
             [
                 new LedgerChange("correction", null, campaign.Correction), new LedgerChange("level", null, campaign.Level.ToString()),
                 new LedgerChange("family", null, FormattableString.Invariant($"{verdict.Size}{(testedOnly ? " (interim: tested experiments only)" : "")}")),
-                new LedgerChange("tested", null, FormattableString.Invariant($"{columns.Count}")), new LedgerChange("survivors", null, FormattableString.Invariant($"{verdict.SurvivorCount}")),
+                new LedgerChange("tested", null, FormattableString.Invariant($"{columns.Count}")), new LedgerChange("survivors", null, FormattableString.Invariant($"{verdict.SurvivorLineCount}")),
             ],
             Evidence = [EvidenceRegistry.Review.Of(id)],
         });

@@ -88,7 +88,7 @@ public sealed class ReviewRerun(Catalog catalog)
         ReviewHead head = review.Head;
         (string What, int Stored, int Now)[] figures =
         [
-            ("hypotheses", head.FamilySize, verdict.Size), ("tested", head.TestedCount, columns.Count), ("survivors", head.SurvivorCount, verdict.SurvivorCount),
+            ("hypotheses", head.FamilySize, verdict.Size), ("tested", head.TestedCount, columns.Count), ("survivors", head.SurvivorCount, verdict.SurvivorLineCount),
             .. stored.Zip(verdict.Families).SelectMany(f => new[]
             {
                 ($"hypotheses of {f.First.Name}", f.First.Size, f.Second.Size), ($"tested of {f.First.Name}", f.First.Tested, f.Second.Tested), ($"survivors of {f.First.Name}", f.First.Survivors, f.Second.Survivors),

@@ -105,6 +105,24 @@ public sealed class OnlineCampaignTests : IDisposable
     }
 
     [Fact]
+    public void A_review_while_a_decided_experiment_awaits_a_new_test_holds_what_has_a_result_and_comes_out_again()
+    {
+        OnlineCampaign.Open(_place, 8, "--correction", "lond");
+        _place.Run("load", "C", _place.Write("m.csv", OnlineCampaign.Measurements(Enumerable.Range(1, 8)))).Well();
+        _place.Run("test", "C").Well();
+        CsvText decisions = _place.Run("decisions", "C", "--format", "csv").Well().Csv;
+        int survivors = decisions.Rows.Count(r => r[5] == "true");
+        string survivor = decisions.Rows.First(r => r[5] == "true")[2];
+        string line = ((int.Parse(survivor[1..], System.Globalization.CultureInfo.InvariantCulture) - 1) * 10 + 2).ToString(System.Globalization.CultureInfo.InvariantCulture);
+        _place.Run("exclude", "C", survivor, "--line", line, "--reason", "dropped").Well();
+        Assert.Contains("by standing decisions", _place.Run("survivors", "C").Well().Out, StringComparison.Ordinal);
+        CsvText review = _place.Run("review", "C", "--format", "csv").Well().Csv;
+        Assert.Equal(["7", (survivors - 1).ToString(System.Globalization.CultureInfo.InvariantCulture)], [review.Column("tested")[0], review.Column("survivors")[0]]);
+        Assert.Contains("the same to the byte", _place.Run("reviews", "C", "--rerun", "all").Well().Out, StringComparison.Ordinal);
+        _place.Run("ledger", "verify").Well();
+    }
+
+    [Fact]
     public void A_decision_stands_when_values_are_left_out_and_tested_again_and_every_output_says_so()
     {
         OnlineCampaign.Open(_place, 8, "--correction", "lond");
