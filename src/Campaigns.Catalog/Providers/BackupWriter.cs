@@ -1,6 +1,8 @@
 using Campaigns.Catalog.Ledger;
 using Campaigns.Domain;
 using Microsoft.Data.Sqlite;
+using SQLitePCL;
+using static SQLitePCL.raw;
 
 namespace Campaigns.Catalog.Providers;
 
@@ -16,6 +18,9 @@ public sealed record BackupSummary(long Bytes, LedgerHead Head);
 /// </remarks>
 public static class BackupWriter
 {
+    /// <summary>Milliseconds between looks at a file that is busy.</summary>
+    private const int BetweenAttempts = 2;
+
     private const string Purpose = "backup";
 
     /// <summary>Writes a backup: beside its place first, then moved there whole.</summary>
@@ -40,12 +45,12 @@ public static class BackupWriter
         string draft = DraftFiles.Name(target, Purpose);
         try
         {
-            CopyTo(connection, draft);
+            CopyBetweenWrites(connection, draft);
             DraftFiles.Place(draft, target, replace);
         }
-        catch (SqliteException error) when (error.SqliteErrorCode is SQLitePCL.raw.SQLITE_FULL or SQLitePCL.raw.SQLITE_CANTOPEN or SQLitePCL.raw.SQLITE_READONLY or SQLitePCL.raw.SQLITE_IOERR)
+        catch (SqliteException error) when (error.SqliteErrorCode is SQLITE_FULL or SQLITE_CANTOPEN or SQLITE_READONLY or SQLITE_IOERR)
         {
-            string reason = error.SqliteErrorCode == SQLitePCL.raw.SQLITE_FULL ? "the disk is full; make room and try again" : "check the disk, and that you may write to its folder";
+            string reason = error.SqliteErrorCode == SQLITE_FULL ? "the disk is full; make room and try again" : "check the disk, and that you may write to its folder";
             throw new RefusedException($"The copy '{target}' could not be written: {reason}. Nothing of it was left behind.");
         }
         catch (SqliteException error)
@@ -59,6 +64,42 @@ public static class BackupWriter
         finally
         {
             DraftFiles.Remove(draft);
+        }
+    }
+
+    /// <summary>Copies as soon as a program that commits again and again pauses; asked every few milliseconds, the pause is found (see <see cref="WriteLock"/>).</summary>
+    private static void CopyBetweenWrites(SqliteConnection connection, string copy)
+    {
+        long start = Environment.TickCount64;
+        _ = sqlite3_busy_timeout(connection.Handle, 0);
+        try
+        {
+            while (!TryCopy(connection, copy, mayWait: Environment.TickCount64 - start < WriteLock.Patience))
+            {
+                File.Delete(copy);
+                Thread.Sleep(BetweenAttempts);
+            }
+        }
+        finally
+        {
+            _ = sqlite3_busy_timeout(connection.Handle, WriteLock.Patience);
+        }
+    }
+
+    /// <summary>Copies, or finds the file busy; every other trouble is thrown.</summary>
+    private static bool TryCopy(SqliteConnection connection, string copy, bool mayWait)
+    {
+        int code = sqlite3_prepare_v2(connection.Handle, "VACUUM INTO ?1", out sqlite3_stmt statement);
+        using (statement)
+        {
+            code = code == SQLITE_OK ? sqlite3_bind_text(statement, 1, copy) : code;
+            code = code == SQLITE_OK ? sqlite3_step(statement) : code;
+            if (code != SQLITE_DONE && !((code & 0xff) == SQLITE_BUSY && mayWait))
+            {
+                throw new SqliteException(sqlite3_errmsg(connection.Handle).utf8_to_string() ?? "", code & 0xff, sqlite3_extended_errcode(connection.Handle));
+            }
+
+            return code == SQLITE_DONE;
         }
     }
 

@@ -11,7 +11,7 @@ namespace Campaigns.Catalog.Providers;
 internal static class WriteLock
 {
     /// <summary>How long one waits for another program, in milliseconds; the same as for reading.</summary>
-    private const int Patience = 5000;
+    public const int Patience = 5000;
 
     private const int QuickAttempts = 50;
 
