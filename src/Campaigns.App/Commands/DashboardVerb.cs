@@ -1,6 +1,5 @@
 using System.CommandLine;
 using Campaigns.App.Dashboard;
-using Campaigns.Catalog.Results;
 using Campaigns.Domain;
 
 namespace Campaigns.App.Commands;
@@ -20,12 +19,7 @@ internal sealed class DashboardVerb : Verb
     {
         using Catalog.Catalog catalog = session.OpenCatalog();
         string code = session.Typed.GetValue(_code) ?? OnlyCampaign(catalog);
-        var standings = new StandingReader(catalog);
-        CampaignStanding standing = standings.Read(code);
-        var details = new DetailReader(catalog);
-        return DashboardProgram.Run(new DashboardSource(standing, experiment => details.Read(standing, experiment), Reload), session.Get(_ascii));
-
-        CampaignStanding Reload() => standing = standings.Read(code);
+        return DashboardProgram.Run(new CatalogSource(catalog), code, session.Get(_ascii));
     }
 
     private static string OnlyCampaign(Catalog.Catalog catalog)

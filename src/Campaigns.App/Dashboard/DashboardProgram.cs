@@ -13,12 +13,13 @@ public static class DashboardProgram
     private const int Done = 0;
     private const int WrongUsage = 2;
 
-    /// <summary>Shows a campaign until the user quits.</summary>
-    /// <param name="source">Where the campaign comes from.</param>
+    /// <summary>Shows the campaigns of a catalog until the user quits.</summary>
+    /// <param name="source">Where everything comes from.</param>
+    /// <param name="campaign">The campaign that is opened first.</param>
     /// <param name="ascii">Whether to draw with ASCII signs alone.</param>
     /// <returns>0 after quitting; 2, with a sentence on standard error, where standard input or output is no terminal; 128 and its number after a signal.</returns>
     /// <remarks>What <paramref name="source"/> throws passes through, after the terminal was given back.</remarks>
-    public static int Run(DashboardSource source, bool ascii)
+    public static int Run(IDashboardSource source, string campaign, bool ascii)
     {
         ArgumentNullException.ThrowIfNull(source);
         if (Console.IsInputRedirected || Console.IsOutputRedirected)
@@ -29,7 +30,7 @@ public static class DashboardProgram
 
         Theme theme = Theme.For(Environment.GetEnvironmentVariable);
         theme.Apply();
-        DashboardModel model = new(source, key => (ErrorProcedure?)CorrectionRegistry.Find(key) ?? OnlineRegistry.Find(key));
+        DashboardModel model = new(source, campaign, key => (ErrorProcedure?)CorrectionRegistry.Find(key) ?? OnlineRegistry.Find(key));
         IApplication app = Application.Create();
         using TerminalGuard guard = new(app);
         app.Init();

@@ -1,5 +1,4 @@
 using System.Diagnostics;
-using Campaigns.App.Dashboard;
 using Campaigns.App.Dashboard.Model;
 using Campaigns.Domain;
 
@@ -7,7 +6,7 @@ namespace Campaigns.App.Tests.Dashboard;
 
 public sealed class DashboardModelTests
 {
-    private readonly DashboardModel _model = new(SampleCampaign.Source(SampleCampaign.Standing(48)), SampleCampaign.Find);
+    private readonly DashboardModel _model = new(SampleCampaign.Source(SampleCampaign.Standing(48)), SampleCampaign.Code, SampleCampaign.Find);
 
     [Fact]
     public void At_the_start_every_experiment_is_there_in_the_order_of_the_plan()
@@ -157,7 +156,7 @@ public sealed class DashboardModelTests
         CampaignStanding first = SampleCampaign.Standing(48);
         int loads = 0;
         CampaignStanding next = first with { Experiments = [.. first.Experiments.Skip(2)] };
-        DashboardModel model = new(new DashboardSource(first, code => { loads++; return SampleCampaign.Detail(first.Experiments.First(e => e.Plan.Code == code)); }, () => next), SampleCampaign.Find);
+        DashboardModel model = new(new SampleSource(first, next) { OnDetail = _ => loads++ }, SampleCampaign.Code, SampleCampaign.Find);
         model.Select(5);
         model.SelectedDetail();
         model.SelectedDetail();
@@ -167,6 +166,24 @@ public sealed class DashboardModelTests
         Assert.Equal(46, model.RowCount);
         model.SelectedDetail();
         Assert.Equal(2, loads);
+    }
+
+    [Fact]
+    public void Another_campaign_opens_in_the_order_of_its_plan_and_without_filter_and_marks()
+    {
+        CampaignStanding other = SampleCampaign.Standing(5);
+        other = other with { Campaign = other.Campaign with { Code = "SEALS-26" } };
+        DashboardModel model = new(new SampleSource(SampleCampaign.Standing(48)) { Others = [other] }, SampleCampaign.Code, SampleCampaign.Find);
+        model.SortByNeighbour(1);
+        model.SetFilter("survives:yes");
+        model.MarkSelected();
+        int edition = model.Edition;
+        model.Open("SEALS-26");
+        Assert.Equal(("SEALS-26", 5, 0, "E1"), (model.Heading.Code, model.RowCount, model.Marks.Count, model.Selected!.Plan.Code));
+        Assert.Equal(("", null), (model.FilterText, model.SortColumn));
+        Assert.NotEqual(edition, model.Edition);
+        model.Open(SampleCampaign.Code);
+        Assert.Equal((SampleCampaign.Code, 48), (model.Heading.Code, model.RowCount));
     }
 
     [Fact]
@@ -201,7 +218,7 @@ public sealed class DashboardModelTests
     [Fact]
     public void A_hundred_thousand_experiments_are_sorted_and_filtered_without_a_wait()
     {
-        DashboardModel model = new(SampleCampaign.Source(SampleCampaign.Standing(100_000)), SampleCampaign.Find);
+        DashboardModel model = new(SampleCampaign.Source(SampleCampaign.Standing(100_000)), SampleCampaign.Code, SampleCampaign.Find);
         long start = Stopwatch.GetTimestamp();
         foreach (ExperimentColumn column in ExperimentColumn.All)
         {

@@ -1,6 +1,6 @@
 using System.Globalization;
-using Campaigns.App.Dashboard;
 using Campaigns.App.Dashboard.Model;
+using Campaigns.App.Dashboard.Pages;
 using Campaigns.App.Dashboard.Paint;
 using Campaigns.Domain;
 using Campaigns.Statistics.Probability;
@@ -21,7 +21,7 @@ public sealed class DashboardScreenTests
         using TestScreen screen = new(width, height, Standing);
         Golden.Match($"experiments-{width}x{height}", screen.Text);
         Golden.Match($"detail-{width}x{height}", screen.Press(Key.CursorDown, Key.Enter).Text);
-        Golden.Match($"ranking-{width}x{height}", screen.Press(Key.Esc, Key.D2).Text);
+        Golden.Match($"ranking-{width}x{height}", screen.Press(Key.Esc).Turn("Ranking").Text);
         Golden.Match($"help-{width}x{height}", screen.Press(Key.F1).Text);
     }
 
@@ -30,7 +30,7 @@ public sealed class DashboardScreenTests
     {
         using TestScreen screen = new(80, 24, SampleCampaign.Standing(3), ascii: true);
         Golden.Match("experiments-80x24-ascii", screen.Text);
-        Assert.DoesNotContain(screen.Press(Key.D2).Text, c => c > '~');
+        Assert.DoesNotContain(screen.Turn("Ranking").Text, c => c > '~');
     }
 
     [Theory]
@@ -131,9 +131,9 @@ public sealed class DashboardScreenTests
     public void Escape_never_quits_and_q_does()
     {
         using TestScreen screen = new(80, 24, Standing);
-        screen.Press(Key.Esc, Key.Esc, Key.D2, Key.Esc, Key.F1, Key.Esc, Key.Esc);
+        screen.Press(Key.Esc, Key.Esc).Turn("Ranking").Press(Key.Esc, Key.F1, Key.Esc, Key.Esc);
         Assert.False(screen.IsStopped);
-        Assert.Equal(1, screen.Model.Page);
+        Assert.Equal(PageList.PlaceOf("Ranking"), screen.Model.Page);
         screen.Press(Key.Q);
         Assert.True(screen.IsStopped);
     }
@@ -143,15 +143,7 @@ public sealed class DashboardScreenTests
     {
         CampaignStanding sample = SampleCampaign.Standing(12, withoutResult: 0), slow = sample with { Experiments = [.. sample.Experiments.Select(e => e with { Plan = e.Plan with { Test = "permutation" } })] };
         List<string> computed = [];
-        DashboardSource source = SampleCampaign.Source(slow);
-        using TestScreen screen = new(120, 40, source with
-        {
-            Detail = code =>
-            {
-                computed.Add(code);
-                return source.Detail(code);
-            },
-        });
+        using TestScreen screen = new(120, 40, new SampleSource(slow) { OnDetail = computed.Add });
         for (int i = 0; i < 9; i++)
         {
             screen.Press(Key.CursorDown).Wait(TimeSpan.FromMilliseconds(30));
@@ -181,14 +173,14 @@ public sealed class DashboardScreenTests
     public void The_ranking_walks_along_the_ranks_and_opens_the_experiment()
     {
         using TestScreen screen = new(80, 24, Standing);
-        screen.Press(new Key('/')).Type("survives:no").Press(Key.Enter, Key.D2, Key.Home, Key.CursorRight);
+        screen.Press(new Key('/')).Type("survives:no").Press(Key.Enter).Turn("Ranking").Press(Key.Home, Key.CursorRight);
         ExperimentResult second = screen.Model.Ranking.At(2);
         Assert.Same(second, screen.Model.Selected);
         Assert.Contains($"{second.Plan.Code} ◆ survives: rank 2, ", screen.Text, StringComparison.Ordinal);
         screen.Press(Key.Z);
         Assert.Contains("20 of 48", screen.Text, StringComparison.Ordinal);
         screen.Press(Key.Enter);
-        Assert.Equal(0, screen.Model.Page);
+        Assert.Equal(PageList.PlaceOf("Experiments"), screen.Model.Page);
         Assert.Same(second, screen.Model.Selected);
     }
 
@@ -205,7 +197,7 @@ public sealed class DashboardScreenTests
         screen.Wheel(3, header + 4, down: before < 20);
         Assert.Equal(3, Math.Abs(screen.Model.SelectedRow - before));
         screen.Click(screen.Lines[header - 2].IndexOf("Ranking", StringComparison.Ordinal), header - 2);
-        Assert.Equal(1, screen.Model.Page);
+        Assert.Equal(PageList.PlaceOf("Ranking"), screen.Model.Page);
     }
 
     [Fact]
@@ -246,7 +238,7 @@ public sealed class DashboardScreenTests
         Assert.Contains("No experiment is planned", screen.Text, StringComparison.Ordinal);
         Assert.Contains("0 of 0 planned tested", screen.Text, StringComparison.Ordinal);
         Assert.Contains("no review stored yet", screen.Text, StringComparison.Ordinal);
-        screen.Press(Key.CursorDown, Key.Enter, Key.End, Key.S, Key.D2, Key.CursorRight, Key.Z, Key.Enter, Key.F5, Key.F1);
+        screen.Press(Key.CursorDown, Key.Enter, Key.End, Key.S).Turn("Ranking").Press(Key.CursorRight, Key.Z, Key.Enter, Key.F5, Key.F1);
         Assert.False(screen.IsStopped);
     }
 
@@ -256,7 +248,7 @@ public sealed class DashboardScreenTests
         using TestScreen screen = new(120, 40, SampleCampaign.Standing(12, status: _ => ExperimentStatus.Planned));
         Assert.Equal(12, screen.Lines.Count(l => l.Contains("○ –      planned", StringComparison.Ordinal)));
         Assert.Contains("registered, no values yet", screen.Text, StringComparison.Ordinal);
-        Assert.Contains("Nothing is tested yet", screen.Press(Key.D2).Text, StringComparison.Ordinal);
+        Assert.Contains("Nothing is tested yet", screen.Turn("Ranking").Text, StringComparison.Ordinal);
     }
 
     [Fact]

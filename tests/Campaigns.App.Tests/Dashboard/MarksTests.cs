@@ -11,7 +11,7 @@ namespace Campaigns.App.Tests.Dashboard;
 
 public sealed partial class MarksTests
 {
-    private readonly DashboardModel _model = new(SampleCampaign.Source(SampleCampaign.Standing(48)), SampleCampaign.Find);
+    private readonly DashboardModel _model = new(SampleCampaign.Source(SampleCampaign.Standing(48)), SampleCampaign.Code, SampleCampaign.Find);
 
     [Fact]
     public void A_mark_is_put_and_taken_off_and_says_that_something_changed()
@@ -68,7 +68,7 @@ public sealed partial class MarksTests
         {
             Experiments = [.. before.Experiments.Reverse().Skip(1).Select(e => e with { P = PValue.FromValue(e.Plan.Code == "E2" ? 1e-9 : 0.9) })],
         };
-        DashboardModel model = new(SampleCampaign.Source(before) with { Reload = () => after }, SampleCampaign.Find);
+        DashboardModel model = new(new SampleSource(before, after), SampleCampaign.Code, SampleCampaign.Find);
         model.Marks.TurnAll([1, 4, 11]);
         model.Reload();
         Assert.Equal(["E5", "E2"], after.Experiments.Where((_, i) => model.Marks.Has(i)).Select(e => e.Plan.Code));
@@ -97,7 +97,7 @@ public sealed partial class MarksTests
     [Fact]
     public void Marking_in_an_empty_campaign_does_nothing()
     {
-        DashboardModel empty = new(SampleCampaign.Source(SampleCampaign.Standing(0)), SampleCampaign.Find);
+        DashboardModel empty = new(SampleCampaign.Source(SampleCampaign.Standing(0)), SampleCampaign.Code, SampleCampaign.Find);
         empty.MarkSelected();
         empty.MarkShown();
         Assert.Equal(new MarkedBound(0, 0, 0), empty.Marks.Bound);

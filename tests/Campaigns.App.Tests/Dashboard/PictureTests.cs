@@ -80,12 +80,12 @@ public sealed class PictureTests
     public void Every_size_can_be_painted(int width, int height)
     {
         CampaignStanding standing = SampleCampaign.Standing(48);
-        DashboardModel model = new(SampleCampaign.Source(standing), SampleCampaign.Find);
+        DashboardModel model = new(SampleCampaign.Source(standing), SampleCampaign.Code, SampleCampaign.Find);
         Assert.Equal((width, height), Size(RankingPlot.Paint(model.Ranking, 1, false, width, height, GlyphSet.Full)));
         Assert.Equal((width, height), Size(ListPainter.Paint(model, new ListLayout(standing.Experiments), 0, width, height, GlyphSet.Full)));
         Assert.Equal(width, DetailPainter.Paint(model.SelectedDetail()!, model.Standing, model.Heading, width, GlyphSet.Full).Width);
         Assert.Equal(width, HeadingPainter.Paint(model.Heading, width, GlyphSet.Full).Width);
-        Assert.Equal(width, HelpPainter.Paint(model, width, GlyphSet.Full).Width);
+        Assert.Equal(width, HelpPainter.Paint(model, null, width).Width);
     }
 
     [Fact]
@@ -101,9 +101,9 @@ public sealed class PictureTests
     [Fact]
     public void Ascii_pictures_hold_ascii_alone()
     {
-        DashboardModel model = new(SampleCampaign.Source(SampleCampaign.Standing(3)), SampleCampaign.Find);
+        DashboardModel model = new(SampleCampaign.Source(SampleCampaign.Standing(3)), SampleCampaign.Code, SampleCampaign.Find);
         string all = RankingPlot.Paint(model.Ranking, 1, false, 80, 20, GlyphSet.Ascii) + RankingPlot.Key(model.Ranking, GlyphSet.Ascii)
-            + DetailPainter.Paint(model.SelectedDetail()!, model.Standing, model.Heading, 80, GlyphSet.Ascii) + HelpPainter.Paint(model, 80, GlyphSet.Ascii)
+            + DetailPainter.Paint(model.SelectedDetail()!, model.Standing, model.Heading, 80, GlyphSet.Ascii) + HelpPainter.Paint(model, null, 80)
             + ListPainter.Paint(model, new ListLayout(model.Standing.Experiments), 0, 80, 10, GlyphSet.Ascii);
         Assert.DoesNotContain(all, c => c > '~');
     }

@@ -1,5 +1,4 @@
 using System.Globalization;
-using Campaigns.App.Dashboard;
 using Campaigns.Domain;
 using Campaigns.Statistics.Corrections;
 using Campaigns.Statistics.GroupTests;
@@ -11,6 +10,8 @@ namespace Campaigns.App.Tests.Dashboard;
 /// <summary>Invented campaigns put together by hand: the results in the list are plausible, not computed by the product; the analysis in the detail is computed from invented values.</summary>
 internal static class SampleCampaign
 {
+    public const string Code = "PRIMER-26";
+
     public const string Hostile = "evil\u001b[31m\u202egpj_name\r\n";
 
     /// <summary>Experiments of the campaign that the details belong to.</summary>
@@ -41,7 +42,7 @@ internal static class SampleCampaign
 
     public static Campaign Campaign(string correction) => new()
     {
-        Code = "PRIMER-26",
+        Code = Code,
         Title = "Adhesion of spring primers",
         ErrorRate = ErrorRate.FalseDiscovery,
         Level = new SignificanceLevel(0.05),
@@ -52,8 +53,7 @@ internal static class SampleCampaign
 
     private static FamilyStanding Figures(Campaign campaign) => new("", campaign.Correction, campaign.Level, Family, Family, Family, Survivors);
 
-    public static DashboardSource Source(CampaignStanding standing) =>
-        new(standing, code => Detail(standing.Experiments.First(e => e.Plan.Code == code)), () => standing);
+    public static SampleSource Source(CampaignStanding standing) => new(standing);
 
     public static Correction? Find(string key) => key switch { "rising" => new RisingCorrection(), "unbounded" => new UnboundedCorrection(), _ => null };
 

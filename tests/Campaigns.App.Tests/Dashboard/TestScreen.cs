@@ -2,6 +2,7 @@ using System.Drawing;
 using Campaigns.App.Dashboard;
 using Campaigns.App.Dashboard.Canvas;
 using Campaigns.App.Dashboard.Model;
+using Campaigns.App.Dashboard.Pages;
 using Campaigns.App.Dashboard.Screen;
 using Campaigns.Domain;
 using Terminal.Gui.App;
@@ -27,14 +28,14 @@ internal sealed class TestScreen : IDisposable
     {
     }
 
-    public TestScreen(int width, int height, DashboardSource source, bool ascii = false, bool colour = true)
+    public TestScreen(int width, int height, IDashboardSource source, bool ascii = false, bool colour = true)
     {
         Theme theme = Theme.For(name => name == "NO_COLOR" && !colour ? "1" : null);
         theme.Apply();
         _app = Application.Create(_time);
         _app.Init(DriverRegistry.Names.ANSI);
         _app.Driver!.SetScreenSize(width, height);
-        Model = new DashboardModel(source, SampleCampaign.Find);
+        Model = new DashboardModel(source, source.Campaigns()[0].Campaign.Code, SampleCampaign.Find);
         _window = new DashboardWindow(Model, ascii ? GlyphSet.Ascii : GlyphSet.Full, theme);
         _session = _app.Begin(_window)!;
         _app.LayoutAndDraw();
@@ -77,6 +78,9 @@ internal sealed class TestScreen : IDisposable
         _app.LayoutAndDraw();
         return this;
     }
+
+    /// <summary>Turns to a page by its digit.</summary>
+    public TestScreen Turn(string page) => Press(new Key((char)('1' + PageList.PlaceOf(page))));
 
     public TestScreen Type(string text) => Press([.. text.Select(c => new Key(c))]);
 

@@ -4,7 +4,7 @@ using Campaigns.Statistics.GroupTests;
 
 namespace Campaigns.App.Dashboard.Model;
 
-/// <summary>Everything the dashboard knows: the campaign, the rows shown and their order, the selected experiment, the page. It knows no terminal.</summary>
+/// <summary>Everything the dashboard knows: the campaigns, the one that is open, the rows shown and their order, the selected experiment, the page. It knows no terminal.</summary>
 /// <remarks>For one thread. Painters read it whenever they draw; <see cref="Changed"/> says that they should.</remarks>
 public sealed class DashboardModel
 {
@@ -12,7 +12,7 @@ public sealed class DashboardModel
 
     // Some 0.02 s of checks and sorting.
     private const int ManyValues = 20_000;
-    private readonly DashboardSource _source;
+    private readonly IDashboardSource _source;
     private readonly Func<string, ErrorProcedure?> _findCorrection;
     private readonly Dictionary<string, ExperimentDetail> _details = [];
     private ExperimentFilter _filter = ExperimentFilter.Read("", out _)!;
@@ -22,13 +22,15 @@ public sealed class DashboardModel
     private int _selectedRow;
 
     /// <summary>Makes the model; the first experiment in the plan's order is selected.</summary>
-    /// <param name="source">Where the campaign comes from.</param>
+    /// <param name="source">Where everything comes from.</param>
+    /// <param name="campaign">The campaign that is opened first.</param>
     /// <param name="findCorrection">The correction with a key, or null.</param>
-    public DashboardModel(DashboardSource source, Func<string, ErrorProcedure?> findCorrection)
+    public DashboardModel(IDashboardSource source, string campaign, Func<string, ErrorProcedure?> findCorrection)
     {
+        ArgumentNullException.ThrowIfNull(source);
         _source = source;
         _findCorrection = findCorrection;
-        Standing = source.Standing;
+        Standing = source.Standing(campaign);
         Marks = new Marks(Standing);
         (Correction, Heading, Ranking) = Read(Standing);
         Sort();
@@ -38,7 +40,13 @@ public sealed class DashboardModel
     /// <summary>Something that is shown has changed.</summary>
     public event Action? Changed;
 
-    /// <summary>The campaign as it stood when it was last loaded.</summary>
+    /// <summary>Where pages read what only they show.</summary>
+    public IDashboardSource Source => _source;
+
+    /// <summary>Counts how often a campaign was opened or loaded again: what was read for another count is out of date.</summary>
+    public int Edition { get; private set; }
+
+    /// <summary>The open campaign as it stood when it was last loaded.</summary>
     public CampaignStanding Standing { get; private set; }
 
     /// <summary>The campaign's correction; null where the program does not know it.</summary>
@@ -51,7 +59,7 @@ public sealed class DashboardModel
     public Ranking Ranking { get; private set; }
 
     /// <summary>The experiments that are marked.</summary>
-    public Marks Marks { get; }
+    public Marks Marks { get; private set; }
 
     /// <summary>The column sorted by; null for the plan's order.</summary>
     public ExperimentColumn? SortColumn { get; private set; }
@@ -110,7 +118,7 @@ public sealed class DashboardModel
                 _details.Clear();
             }
 
-            detail = _source.Detail(selected.Plan.Code);
+            detail = _source.Detail(Standing, selected.Plan.Code);
             _details.Add(selected.Plan.Code, detail);
         }
 
@@ -212,18 +220,42 @@ public sealed class DashboardModel
         }
     }
 
-    /// <summary>Loads the campaign again; order, filter and, where it is still there, the selected experiment are kept.</summary>
+    /// <summary>Loads the open campaign again; order, filter, marks and, where it is still there, the selected experiment are kept.</summary>
     public void Reload()
     {
         string? code = Selected?.Plan.Code;
-        Standing = _source.Reload();
+        Standing = _source.Standing(Standing.Campaign.Code);
         Marks.Follow(Standing);
+        Take();
+        Narrow(code is null ? -1 : Standing.Experiments.ToList().FindIndex(e => e.Plan.Code == code));
+        Changed?.Invoke();
+    }
+
+    /// <summary>Opens another campaign of the catalog: in the plan's order, without filter and marks, the first experiment selected. The open one is loaded again.</summary>
+    /// <param name="campaign">Its code.</param>
+    public void Open(string campaign)
+    {
+        if (campaign == Standing.Campaign.Code)
+        {
+            Reload();
+            return;
+        }
+
+        Standing = _source.Standing(campaign);
+        Marks = new Marks(Standing);
+        (FilterText, FilterProblem, SortColumn, IsFalling) = ("", null, null, false);
+        Take();
+        Narrow(keep: -1);
+        Changed?.Invoke();
+    }
+
+    private void Take()
+    {
+        Edition++;
         _details.Clear();
         _searchable = null;
         (Correction, Heading, Ranking) = Read(Standing);
         Sort();
-        Narrow(code is null ? -1 : Standing.Experiments.ToList().FindIndex(e => e.Plan.Code == code));
-        Changed?.Invoke();
     }
 
     private (ErrorProcedure?, CampaignHeading, Ranking) Read(CampaignStanding standing)

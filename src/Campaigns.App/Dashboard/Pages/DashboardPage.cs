@@ -20,11 +20,11 @@ public abstract class DashboardPage : View
         Context.Model.Changed += ShowChange;
     }
 
-    /// <summary>The page's name in the row of pages.</summary>
-    public abstract string Name { get; }
-
     /// <summary>The keys shown below the page, the most needed first.</summary>
     public abstract IReadOnlyList<(string Key, string Does)> Keys { get; }
+
+    /// <summary>Everything that keys, clicks and signs mean on this page, for the help page; what holds on every page is left out.</summary>
+    public abstract IReadOnlyList<(string Key, string Does)> Help { get; }
 
     /// <summary>The part of the page that takes the keys when the page is opened.</summary>
     public abstract View Entrance { get; }

@@ -81,12 +81,31 @@ public sealed class ExperimentsPage : DashboardPage
     }
 
     /// <inheritdoc/>
-    public override string Name => "Experiments";
-
-    /// <inheritdoc/>
     public override IReadOnlyList<(string Key, string Does)> Keys => _isDetailOpen
         ? [("Esc", "list"), ("Up/Down", "scroll"), ("Left/Right", "previous/next"), ("m", "mark"), ("F1", "help"), ("q", "quit")]
         : [("Enter", "detail"), ("/", "filter"), ("s", "sort"), ("r", "reverse"), ("m", "mark"), TurnKeys, ("F1", "help"), ("q", "quit"), ("F5", "reload")];
+
+    /// <inheritdoc/>
+    public override IReadOnlyList<(string Key, string Does)> Help =>
+    [
+        ("Up Down PgUp PgDn", "move in the list, scroll an open experiment"),
+        ("Home End", "first, last"),
+        ("Enter", "open the selected experiment; Enter or Esc closes it"),
+        ("Left Right", "in an open experiment the one before and after"),
+        ("s, Shift+s", "sort by the next column, by the one before (or click a column's name)"),
+        ("r", "reverse the order"),
+        ("m", "mark the selected experiment, or take its mark off; below the list, at most how many of the marked are false"),
+        ("Shift+m", "mark all rows shown, or take their marks off"),
+        ("/ or F3", "type a filter; Enter or Esc goes back to the list, Esc once more takes it off"),
+        ("gloss primer", "as a filter: both words in code, title, response or status"),
+        ("p<0.01 adjusted<=0.05", "also n, groups, statistic, with < <= > >= ="),
+        ("survives:yes", "or survives:no, survives:open"),
+        (ListPainter.SurvivalText(true, Glyphs), "survives: its adjusted p-value is at most the level"),
+        (ListPainter.SurvivalText(false, Glyphs), "does not survive"),
+        (ListPainter.SurvivalText(null, Glyphs), "has no result (the status says why) and counts as p = 1 in the family"),
+        (Glyphs.Marked + " behind a code", "marked by you: " + MarksPainter.Meaning),
+        ("numbers", "p with four decimals, below 0.0001 as 3.2e-7; others with four significant digits"),
+    ];
 
     /// <inheritdoc/>
     public override View Entrance => _isDetailOpen ? _detail : _list;

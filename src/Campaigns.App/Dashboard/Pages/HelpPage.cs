@@ -16,7 +16,7 @@ public sealed class HelpPage : DashboardPage
     public HelpPage(PageContext context)
         : base(context)
     {
-        _scroll = new ScrollPane(width => HelpPainter.Paint(Model, width, Glyphs));
+        _scroll = new ScrollPane(width => HelpPainter.Paint(Model, Subject, width));
         _text = Part(_scroll.Paint, takesKeys: true);
         _text.X = 1;
         _text.Width = Dim.Fill();
@@ -30,10 +30,23 @@ public sealed class HelpPage : DashboardPage
     }
 
     /// <inheritdoc/>
-    public override string Name => "Help";
+    public override IReadOnlyList<(string Key, string Does)> Keys => [("Esc", "back"), ("Up/Down", "scroll"), TurnKeys, ("q", "quit")];
 
     /// <inheritdoc/>
-    public override IReadOnlyList<(string Key, string Does)> Keys => [("Esc", "back"), ("Up/Down", "scroll"), TurnKeys, ("q", "quit")];
+    public override IReadOnlyList<(string Key, string Does)> Help => [];
+
+    /// <summary>The page that is explained first, by name; null for none.</summary>
+    public (string Name, IReadOnlyList<(string Key, string Does)> Help)? Subject { get; private set; }
+
+    /// <summary>Explains a page first, from its first line.</summary>
+    /// <param name="name">Its name.</param>
+    /// <param name="page">The page.</param>
+    public void Explain(string name, DashboardPage page)
+    {
+        ArgumentNullException.ThrowIfNull(page);
+        Subject = (name, page.Help);
+        _scroll.ToTop();
+    }
 
     /// <inheritdoc/>
     public override View Entrance => _text;

@@ -31,11 +31,17 @@ public sealed class RankingPage : DashboardPage
     }
 
     /// <inheritdoc/>
-    public override string Name => "Ranking";
-
-    /// <inheritdoc/>
     public override IReadOnlyList<(string Key, string Does)> Keys =>
         [("Left/Right", "rank"), ("Enter", "experiment"), ("z", _isNear ? "whole family" : "near the boundary"), TurnKeys, ("F1", "help"), ("q", "quit")];
+
+    /// <inheritdoc/>
+    public override IReadOnlyList<(string Key, string Does)> Help =>
+    [
+        ("Left Right", "the rank before and after"),
+        ("PgUp PgDn Home End", "a twentieth of the ranks, first, last"),
+        ("Enter", "the experiment at this rank"),
+        ("z", "the whole family, or near the boundary"),
+    ];
 
     /// <inheritdoc/>
     public override View Entrance => _picture;
@@ -71,7 +77,7 @@ public sealed class RankingPage : DashboardPage
 
         if (key == Key.Enter)
         {
-            Model.TurnTo(0);
+            Model.TurnTo(PageList.PlaceOf("Experiments"));
             return true;
         }
 

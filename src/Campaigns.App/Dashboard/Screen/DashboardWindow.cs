@@ -28,8 +28,8 @@ public sealed class DashboardWindow : Runnable
     {
         _model = model;
         PageContext context = new(model, glyphs, theme);
-        _pages = [.. PageList.All.Select(make => make(context))];
-        _names = new PageStrip([.. _pages.Select(p => p.Name)]);
+        _pages = [.. PageList.All.Select(page => page.Make(context))];
+        _names = new PageStrip([.. PageList.All.Select(p => p.Name)]);
         _heading = new CanvasView((width, _) => HeadingPainter.Paint(model.Heading, width, glyphs), theme) { Width = Dim.Fill(), Height = Dim.Func(_ => HeadingPainter.HeightOf(model.Heading, Frame.Width)) };
         _strip = new CanvasView((width, _) => _names.Paint(model.Page, width), theme) { Y = Pos.Bottom(_heading), Width = Dim.Fill(), Height = 1 };
         _keys = new CanvasView((width, _) => KeysPainter.Paint(_pages[model.Page].Keys, width), theme) { Y = Pos.AnchorEnd(1), Width = Dim.Fill(), Height = 1 };
@@ -112,6 +112,11 @@ public sealed class DashboardWindow : Runnable
         if (page != _model.Page)
         {
             _before = _model.Page;
+            if (_pages[page] is HelpPage help)
+            {
+                help.Explain(PageList.All[_before].Name, _pages[_before]);
+            }
+
             _model.TurnTo(page);
         }
     }
