@@ -75,13 +75,14 @@ internal static class ReviewTables
         [
             new("experiment", "experiment"), new("change", "change"), new("p_before", "p before", true, 1), new("p_after", "p after", true, 1), new("adjusted_p_before", "adjusted before", true),
             new("adjusted_p_after", "adjusted after", true), new("reason", null), new("events", null), new("family", hasFamilies ? "family" : null, GivesWay: 2),
-            new("family_size_before", null, true), new("family_size_after", null, true), new("because", "because", CutLast: true),
+            new("family_size_before", null, true), new("family_size_after", null, true), new("because", "because", CutLast: true), new("family_events", null),
         ],
         comparison.Differences.Select(d => (Cell[])
         [
             Cell.Text(codes[d.Key]), Cell.Text(d.IsGained ? "gained" : "lost"), Cell.P(d.Before?.P), Cell.P(d.After?.P), Cell.P(d.Before?.AdjustedP), Cell.P(d.After?.AdjustedP),
             Cell.Text(d.Reason.Word()), Cell.Text(string.Join('|', d.Events.Select(e => e.Cause.Word()).Distinct())), Cell.Text(d.Family),
             Cell.Whole(d.SizeBefore), Cell.Whole(d.SizeAfter), Cell.Text(ReviewWording.Why(d)),
+            Cell.Text(string.Join('|', d.FamilyEvents.Select(e => $"{e.Experiment} {e.Cause.Word()}"))),
         ]))
         {
             Above = [ReviewWording.Summary(comparison), .. ReviewWording.Counts(comparison)],

@@ -41,11 +41,11 @@ public sealed class ReviewsVerbTests : IDisposable
         Twice();
         Ran ran = _place.Run("reviews", "C", "--compare", "1", "2", "--format", "csv").Well();
         Assert.Equal(
-            ["experiment", "change", "p_before", "p_after", "adjusted_p_before", "adjusted_p_after", "reason", "events", "family", "family_size_before", "family_size_after", "because"], ran.Csv.Columns);
+            ["experiment", "change", "p_before", "p_after", "adjusted_p_before", "adjusted_p_after", "reason", "events", "family", "family_size_before", "family_size_after", "because", "family_events"], ran.Csv.Columns);
         Assert.Equal(["E3", "gained", "", "first-tested", "first tested since the earlier review"], [ran.Csv.Value("E3", "experiment"), ran.Csv.Value("E3", "change"), ran.Csv.Value("E3", "p_before"), ran.Csv.Value("E3", "reason"), ran.Csv.Value("E3", "because")]);
         Assert.Equal("Between review 1 and review 2: 1 gained, 0 lost, 1 survive in both.\n", ran.Error);
         string table = _place.Run("reviews", "C", "--compare", "1", "2").Well().Out;
-        Assert.Contains("1 kept their verdict with another adjusted p-value", table.ReplaceLineEndings(" "), StringComparison.Ordinal);
+        Assert.Contains("with the same verdict and another adjusted p-value: 1.", table.ReplaceLineEndings(" "), StringComparison.Ordinal);
         Assert.Contains("Level and correction are those of the sealed plan in both: bh at 0.05.", table, StringComparison.Ordinal);
 
         Assert.Contains("Nothing changed between review 2 and review 2", _place.Run("reviews", "C", "--compare", "2", "2").Well().Out, StringComparison.Ordinal);
