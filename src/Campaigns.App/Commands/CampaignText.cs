@@ -44,7 +44,7 @@ internal static class CampaignText
         Campaign campaign = standing.Campaign;
         List<string> lines =
         [
-            .. FamilyVerdict.ProcedureOf(campaign) is OnlineProcedure online ? [.. OnlineText.Lines(standing, online), .. FamilyText.Warnings(standing)] : FamilyText.Lines(standing),
+            .. Procedure(standing),
             .. TestsOf(tests).Select(test => $"{test.Name}, assumes: {char.ToLowerInvariant(test.Assumes[0])}{test.Assumes[1..]}"),
         ];
         if (campaign.IsExploratory)
@@ -56,6 +56,11 @@ internal static class CampaignText
         lines.Add(ReviewLine(standing));
         return lines;
     }
+
+    /// <summary>Which procedure decides, over what, and what it promises.</summary>
+    public static IEnumerable<string> Procedure(CampaignOverview standing) => FamilyVerdict.ProcedureOf(standing.Campaign) is OnlineProcedure online
+        ? [.. OnlineText.Lines(standing, online), .. FamilyText.Warnings(standing)]
+        : FamilyText.Lines(standing);
 
     /// <summary>Lines on experiments that were withdrawn or deviate from their plan; empty where none does.</summary>
     public static IEnumerable<string> Deviations(CampaignOverview standing)
