@@ -52,12 +52,12 @@ internal static class PlanHistory
         return Plan(SealedPlan.Read(catalog, stored.Id)) with
         {
             Above = [$"{code}: the plan as it was sealed on {Words.Instant(at)}"],
-            Below = [$"Its SHA-256 {(SealedPlan.Digest(catalog, stored) == stored.Campaign.PlanDigest ? "is the one that the seal stored" : "is NOT the one that the seal stored: the record was changed")}: {stored.Campaign.PlanDigest}."],
+            Below = [$"Its SHA-256 {(SealedPlan.Digest(catalog, stored) == stored.Campaign.PlanDigest ? "is the one that the seal stored" : "is NOT the one that the seal stored: the record was changed")}: {stored.Campaign.PlanDigest}"],
         };
     }
 
     private static RowTable Plan(IReadOnlyList<PlannedExperiment> plan) => new(
-        [new("experiment", "experiment"), .. PlanFields.All.Select(f => new Column(f.Name, f.Name.Replace('_', ' '), IsNumber(f.Name), f.Name is "groups" ? 1 : 2))],
+        [new("experiment", "experiment"), .. PlanFields.All.Select(f => new Column(f.Name, f.Name.Replace('_', ' '), IsNumber(f.Name), f.Name is "groups" ? 1 : 2, Wraps: !IsNumber(f.Name)))],
         plan.Select(e => (Cell[])[Cell.Text(e.Code), .. PlanFields.All.Select(f => CellOf(f, e))]))
     {
         WhenEmpty = "The plan names no experiments.",
@@ -65,14 +65,15 @@ internal static class PlanHistory
 
     private static RowTable Amendments(IReadOnlyList<PlanAmendment> amendments) => new(
         [
-            new("amendment", "amendment", true), new("at", "at"), new("by", "by"), new("experiment", "experiment"), new("field", "field"), new("before", "before"), new("after", "after"), new("reason", "reason"),
+            new("amendment", "amendment", true), new("at", null), new("by", null), new("experiment", "experiment", Wraps: true), new("field", "field", Wraps: true),
+            new("before", "before", Wraps: true), new("after", "after", Wraps: true), new("reason", null),
         ],
         amendments.SelectMany(a => a.Changes.Select(c => (Cell[])
         [
             Cell.Whole(a.Number), Cell.Text(Words.Instant(a.At)), Cell.Text(a.NamedBy), Cell.Text(c.Experiment), Cell.Text(c.IsAdded ? "added" : c.Field), Cell.Text(c.Before), Cell.Text(c.IsAdded ? null : c.After), Cell.Text(a.Reason),
         ])))
     {
-        Above = ["Amendments of the sealed plan"],
+        Above = ["Amendments of the sealed plan", .. amendments.Select(a => FormattableString.Invariant($"Amendment {a.Number}, {Words.Instant(a.At)}, by {a.NamedBy}: {a.Reason}"))],
         WhenEmpty = "The plan was never amended.",
     };
 

@@ -70,7 +70,7 @@ internal sealed class RestoreCheckVerb : Verb
         }
 
         session.Say(check.LastAt is { } at
-            ? FormattableString.Invariant($"The ledger has {head.Sequence} entries, the last of {Instant(at)}; it ends with {head}.")
+            ? FormattableString.Invariant($"The ledger has {head.Sequence} entries, the last of {Instant(at)}; it ends with {head}")
             : "The ledger is empty.");
         session.Say(wasHeld ? "It contains the head that was given." : "Whether its end was cut off cannot be seen without a head that was printed earlier (--head).");
     }

@@ -75,7 +75,7 @@ internal static class ReviewTables
         [
             new("experiment", "experiment"), new("change", "change"), new("p_before", "p before", true, 1), new("p_after", "p after", true, 1), new("adjusted_p_before", "adjusted before", true),
             new("adjusted_p_after", "adjusted after", true), new("reason", null), new("events", null), new("family", hasFamilies ? "family" : null, GivesWay: 2),
-            new("family_size_before", null, true), new("family_size_after", null, true), new("because", "because", CutLast: true), new("family_events", null),
+            new("family_size_before", null, true), new("family_size_after", null, true), new("because", "because", CutLast: true, Wraps: true), new("family_events", null),
         ],
         comparison.Differences.Select(d => (Cell[])
         [

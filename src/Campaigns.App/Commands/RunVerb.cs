@@ -109,7 +109,7 @@ internal sealed class RunVerb : Verb
         }
 
         stored = campaigns.Seal(description.Code);
-        session.Say($"Sealed it{(stored.Campaign.Families.Count > 0 ? FormattableString.Invariant($", with {stored.Campaign.Families.Count} families") : "")}; plan digest (SHA-256): {stored.Campaign.PlanDigest}.");
+        session.Say($"Sealed it{(stored.Campaign.Families.Count > 0 ? FormattableString.Invariant($", with {stored.Campaign.Families.Count} families") : "")}; plan digest (SHA-256): {stored.Campaign.PlanDigest}");
         CampaignRules.SayNotes(session.Host, stored.Campaign, plan);
         return stored;
     }
