@@ -68,7 +68,7 @@ internal sealed class CorrectionsVerb : Verb
             Above = [FormattableString.Invariant($"{standing.Campaign.Code}: {standing.TestedCount} results in {Of(standing)}, every correction at {(standing.Campaign.JudgedFamilies.Count == 0 ? standing.Campaign.Level.ToString() : "the level of each family")}")],
             Below =
             [
-                FormattableString.Invariant($"Hanging on the choice among those that hold the {CampaignText.RateWords(standing.Campaign.ErrorRate)}: {hanging} experiment(s){(hanging > 0 ? "; --hanging lists them" : "")}."),
+                FormattableString.Invariant($"Hanging on the choice among those that hold the {CampaignText.RateWords(standing.Campaign.ErrorRate)}: {Counted.Of(hanging, "experiment")}{(hanging > 0 ? "; --hanging lists them" : "")}."),
                 NeverToChoose, .. InFamilies(standing), .. Ending(standing),
             ],
         };

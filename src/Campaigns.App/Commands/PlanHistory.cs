@@ -57,7 +57,7 @@ internal static class PlanHistory
     }
 
     private static RowTable Plan(IReadOnlyList<PlannedExperiment> plan) => new(
-        [new("experiment", "experiment"), .. PlanFields.All.Select(f => new Column(f.Name, f.Name.Replace('_', ' '), IsNumber(f.Name), f.Name is "groups" ? 1 : 2, Wraps: !IsNumber(f.Name)))],
+        [new("experiment", "experiment"), .. PlanFields.All.Select(f => new Column(f.Name, plan.Any(e => f.Text(e) is not null) ? f.Name.Replace('_', ' ') : null, IsNumber(f.Name), f.Name is "groups" ? 1 : 2, Wraps: !IsNumber(f.Name)))],
         plan.Select(e => (Cell[])[Cell.Text(e.Code), .. PlanFields.All.Select(f => CellOf(f, e))]))
     {
         WhenEmpty = "The plan names no experiments.",

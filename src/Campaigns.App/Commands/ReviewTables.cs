@@ -22,7 +22,7 @@ internal static class ReviewTables
             Cell.Text(r.Head.ProgramVersion), Cell.Whole(r.LedgerSequence),
         ]))
     {
-        Above = [FormattableString.Invariant($"{code}: {records.Count} review(s), each as it was on its day")],
+        Above = [FormattableString.Invariant($"{code}: {Counted.Of(records.Count, "review")}, each as it was on its day")],
         Below =
         [
             .. records.SelectMany(r => r.Families.Select(f => ReviewWording.Family(r.Head, f))),
@@ -58,7 +58,7 @@ internal static class ReviewTables
         ]))
     {
         Above = [$"{ReviewWording.Line(head)}."],
-        Below = ["These are the lines that were stored on that day; experiments without a result then have none, and counted with p = 1."],
+        Below = [.. ReviewWording.Applied(head, lines.Select(l => l.Family)), "These are the lines that were stored on that day; experiments without a result then have none, and counted with p = 1."],
         WhenEmpty = "No experiment had a result.",
     };
 

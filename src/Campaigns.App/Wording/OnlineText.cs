@@ -82,7 +82,7 @@ internal static class OnlineText
     public static string? WithoutLevel(IEnumerable<StreamEntry> entries)
     {
         int count = entries.Count(e => e.Level == 0);
-        return count == 0 ? null : FormattableString.Invariant($"{count} experiment(s) came after the horizon and were given the level 0: they cannot survive. 'campaigns restream' starts a new stream for those to come.");
+        return count == 0 ? null : FormattableString.Invariant($"{Counted.Of(count, "experiment")} came after the horizon and {Counted.Word(count, "was given the level 0: it", "were given the level 0: they")} cannot survive. 'campaigns restream' starts a new stream for those to come.");
     }
 
     /// <summary>Whether the decision on an experiment was made on other data than those that stand now.</summary>

@@ -3,6 +3,8 @@ using Campaigns.App.Output;
 using Campaigns.Catalog.Results;
 using Campaigns.Catalog.Reviewing;
 using Campaigns.Domain;
+using Campaigns.Statistics.Corrections;
+using Campaigns.Statistics.Online;
 
 namespace Campaigns.App.Wording;
 
@@ -12,6 +14,18 @@ internal static class ReviewWording
     /// <summary>For example "Review 2 of 2026-12-01 09:30 UTC: 3 of 10 tested experiments survive, in a family of 12".</summary>
     public static string Line(ReviewHead review) => FormattableString.Invariant(
         $"Review {review.Number} of {review.At:yyyy-MM-dd HH:mm} UTC: {review.SurvivorCount} of {review.TestedCount} tested experiments survive, in a family of {review.FamilySize}{(review.IsInterim ? " (interim: tested experiments only)" : "")}");
+
+    /// <summary>Which corrections at which levels the lines of a review belong to, with its number and its date.</summary>
+    /// <param name="review">The review.</param>
+    /// <param name="families">The families of its lines.</param>
+    public static IEnumerable<string> Applied(ReviewHead review, IEnumerable<FamilyStanding> families)
+    {
+        string which = FormattableString.Invariant($"Review {review.Number} of {review.At:yyyy-MM-dd HH:mm} UTC");
+        FamilyStanding[] applied = [.. families.DistinctBy(f => f.Name)];
+        return applied.Length == 0
+            ? [$"{which}: {ProcedureName(review.Correction)} at {review.Level}."]
+            : applied.Select(f => FormattableString.Invariant($"{which}{(f.Name.Length > 0 ? $", family {f.Name}" : "")}: {ProcedureName(f.Correction)} at {FamilyText.Level(f.Level)} over {Counted.Of(f.Size, "hypothesis", "hypotheses")}."));
+    }
 
     /// <summary>What a family was on the day of a review.</summary>
     public static string Family(ReviewHead review, FamilyStanding family) => FormattableString.Invariant(
@@ -84,8 +98,8 @@ internal static class ReviewWording
         ReviewHead review = outcome.Review;
         string versions = review.ProgramVersion == ProgramVersion.Current ? "" : $" (taken by version {review.ProgramVersion} of the program, again by {ProgramVersion.Current})";
         return outcome.IsSame
-            ? FormattableString.Invariant($"Review {review.Number}: the same to the byte, {review.TestedCount} line(s){versions}.")
-            : FormattableString.Invariant($"Review {review.Number} does not come out of its record{versions}: {outcome.Lines.Count} line(s) differ{string.Concat(outcome.Figures.Select(f => $"; {f}"))}. 'campaigns ledger verify' says whether stored rows were changed since.");
+            ? FormattableString.Invariant($"Review {review.Number}: the same to the byte, {Counted.Of(review.TestedCount, "line")}{versions}.")
+            : FormattableString.Invariant($"Review {review.Number} does not come out of its record{versions}: {Counted.Of(outcome.Lines.Count, "line")} {Counted.Word(outcome.Lines.Count, "differs", "differ")}{string.Concat(outcome.Figures.Select(f => $"; {f}"))}. 'campaigns ledger verify' says whether stored rows were changed since.");
     }
 
     private static string Together(ReviewDifference d, string events)
@@ -125,6 +139,8 @@ internal static class ReviewWording
 
     /// <summary>A version of the plan in the middle of a sentence.</summary>
     private static string Plan(int version) => version == 0 ? "plan version 0, as it was sealed," : FormattableString.Invariant($"plan version {version}");
+
+    private static string ProcedureName(string key) => CorrectionRegistry.Find(key)?.Name ?? OnlineRegistry.Find(key)?.Name ?? key;
 
     private static string P(ReviewLine? line) => line is { } given ? NumberText.P(given.P) : "none";
 

@@ -82,7 +82,6 @@ public sealed class CampaignExport(Catalog catalog)
         string[] written = [];
         NewFolder.Write(folder, draft =>
         {
-            Directory.CreateDirectory(System.IO.Path.Combine(draft, "measurements"));
             WriteFile(draft, "campaign.json", writer => WriteCampaign(standing.Campaign, writer));
             if (!standing.Campaign.IsExploratory && standing.Experiments.Count > 0)
             {
@@ -99,7 +98,7 @@ public sealed class CampaignExport(Catalog catalog)
                 WriteFile(draft, FamiliesName, writer => WriteFamilies(standing.Campaign.Families, writer));
             }
 
-            WriteFile(System.IO.Path.Combine(draft, "measurements"), MeasurementsName, writer => WriteMeasurements(standing, writer));
+            WriteMeasurements(standing, System.IO.Path.Combine(draft, "measurements"));
             if (new ExclusionStore(catalog).All(standing.Campaign.Code) is { Count: > 0 } decisions)
             {
                 WriteFile(draft, ExclusionsName, writer => WriteExclusions(decisions, writer));
@@ -224,7 +223,19 @@ public sealed class CampaignExport(Catalog catalog)
     }
 
     /// <summary>Every value as it was typed (up to trailing zeros), with where it came from; the rows of one experiment together, in the order in which they were loaded.</summary>
-    private void WriteMeasurements(CampaignStanding standing, TextWriter writer)
+    /// <remarks>Without values there is no file: one of a header alone would be refused when the folder is run.</remarks>
+    private void WriteMeasurements(CampaignStanding standing, string folder)
+    {
+        long rows = 0;
+        Directory.CreateDirectory(folder);
+        WriteFile(folder, MeasurementsName, writer => rows = WriteMeasurements(standing, writer));
+        if (rows == 0)
+        {
+            Directory.Delete(folder, recursive: true);
+        }
+    }
+
+    private long WriteMeasurements(CampaignStanding standing, TextWriter writer)
     {
         long campaignId = new CampaignStore(catalog).Get(standing.Campaign.Code).Id;
         using var sets = new GroupSets(catalog, campaignId);
@@ -238,6 +249,7 @@ public sealed class CampaignExport(Catalog catalog)
         var csv = new CsvLine(writer);
         csv.Write("experiment", "group", "value", "specimen", "block", "order", "file", "line");
         var values = new ObservationColumns();
+        long rows = 0;
         while (select.Read())
         {
             string code = select.Text(0);
@@ -245,6 +257,7 @@ public sealed class CampaignExport(Catalog catalog)
             string file = select.Text(3);
             values.Clear();
             PackedMeasurements.Read(select.Blob(2), values);
+            rows += values.Count;
             for (int i = 0; i < values.Count; i++)
             {
                 csv.Write(
@@ -255,6 +268,8 @@ public sealed class CampaignExport(Catalog catalog)
                     file, CsvLine.Number(values.Lines[i]));
             }
         }
+
+        return rows;
     }
 
     /// <summary>Every decision about an observation, the latest about it last; the values themselves stand among the measurements.</summary>

@@ -155,7 +155,7 @@ public sealed class OnlineCampaignTests : IDisposable
             foreach (string[] command in (string[][])[["results", "C"], ["survivors", "C"], ["decisions", "C"], ["comparisons", "C"], ["corrections", "C"], ["show", "C"], ["show", "C", survivor], ["risk", "C"]])
             {
                 string text = _place.Run(command).Well().Out.Replace('\n', ' ');
-                Assert.True(text.Contains("Deviations: 1 experiment(s)", StringComparison.Ordinal) || text.Contains("Deviation from the plan", StringComparison.Ordinal), string.Join(' ', command) + text);
+                Assert.True(text.Contains("Deviations: 1 experiment.", StringComparison.Ordinal) || text.Contains("Deviation from the plan", StringComparison.Ordinal), string.Join(' ', command) + text);
             }
 
             foreach (string command in (string[])["results", "survivors"])

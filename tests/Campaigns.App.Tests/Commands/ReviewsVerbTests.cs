@@ -16,7 +16,7 @@ public sealed class ReviewsVerbTests : IDisposable
         Assert.Equal(["1", "2026-03-02T09:30:00Z", "0", "1", "10", "bh", "0.05", "3", "2", "1", "false"], reviews.Rows[0][..11]);
         Assert.Equal(["2", "2026-03-09T09:30:00Z", "0", "2", "14", "bh", "0.05", "3", "3", "2", "false"], reviews.Rows[1][..11]);
         string table = _place.Run("reviews", "C").Well().Out;
-        Assert.Contains("C: 2 review(s), each as it was on its day", table, StringComparison.Ordinal);
+        Assert.Contains("C: 2 reviews, each as it was on its day", table, StringComparison.Ordinal);
         Assert.Contains("0 as it was sealed", table, StringComparison.Ordinal);
         Assert.Equal(["", ""], _place.Run("reviews", "C", "--families", "--format", "csv").Well().Csv.Column("family"));
     }
@@ -33,6 +33,7 @@ public sealed class ReviewsVerbTests : IDisposable
         // Benjamini and Hochberg in a family of three: the smaller p-value times 3.
         Assert.Equal(3 * CsvText.Number(lines.Value("E1", "p")), CsvText.Number(lines.Value("E1", "adjusted_p")), 1e-15);
         Assert.Contains("Review 1 of 2026-03-02 09:30 UTC: 1 of 2 tested experiments survive, in a family of 3.", _place.Run("reviews", "C", "--lines", "1").Well().Out, StringComparison.Ordinal);
+        Assert.Contains("Review 1 of 2026-03-02 09:30 UTC: Benjamini-Hochberg at 0.05 over 3 hypotheses.", _place.Run("reviews", "C", "--lines", "1").Well().Out, StringComparison.Ordinal);
     }
 
     [Fact]
