@@ -76,7 +76,7 @@ public sealed partial class WordingTests : IDisposable
         else
         {
             // Where nothing was planned there is nothing to run, and that is what is said, not that a file is broken.
-            again.Refused(3, "neither a plan nor data");
+            Assert.Equal((3, "The campaign 'P' has neither a plan nor data: put a plan.csv or measurements/*.csv into its folder.\n"), (again.Code, again.Error));
         }
     }
 
