@@ -22,7 +22,10 @@ internal static class AttentionText
 
         if (of.NeverTested > 0)
         {
-            yield return FormattableString.Invariant($"Data not tested: {Experiments(of.NeverTested)} with data and no test, {of.Waiting.AsManyAsPlanned} of them with at least as many values as planned; 'campaigns test {code}' tests those that are complete.");
+            string enough = of.Waiting.AsManyAsPlanned == 0
+                ? "none holds as many values as planned, so that 'campaigns test' leaves them alone without --incomplete"
+                : FormattableString.Invariant($"{of.Waiting.AsManyAsPlanned} of them with at least as many values as planned; 'campaigns test {code}' tests those that are complete");
+            yield return FormattableString.Invariant($"Data not tested: {Experiments(of.NeverTested)} with data and no test, {enough}.");
         }
 
         if (of.AwaitingNewTest > 0 && of.Overview.LastReview is null)
@@ -102,9 +105,14 @@ internal static class AttentionText
     /// <param name="checks">What was found; null before.</param>
     public static IEnumerable<string> Checks(string campaign, int survivors, SurvivorChecks? checks)
     {
+        if (survivors == 0)
+        {
+            return ["No experiment survives, so that no checks are made here."];
+        }
+
         if (checks is null)
         {
-            return survivors == 0 ? [] : [FormattableString.Invariant($"Checks were not made here: they read every value. Key c makes them for the {survivors} survivor{(survivors == 1 ? "" : "s")} of {campaign}.")];
+            return [FormattableString.Invariant($"Checks were not made here: they read every value. Key c makes them for the {survivors} survivor{(survivors == 1 ? "" : "s")} of {campaign}.")];
         }
 
         string made = FormattableString.Invariant($"Checks made for the {checks.Checked} survivor{(checks.Checked == 1 ? "" : "s")} of {campaign} and for no other experiment: ");
@@ -113,7 +121,7 @@ internal static class AttentionText
             :
             [
                 made + FormattableString.Invariant($"in {checks.Warning.Count} of them something warns. {char.ToUpperInvariant(ExperimentWording.ChecksAreAdvice[0])}{ExperimentWording.ChecksAreAdvice[1..]}."),
-                .. checks.Warning.Take(MostNamed).Select(w => $"{w.Experiment}: {string.Join(", ", w.Warnings.Select(c => c.Name))}"),
+                .. checks.Warning.Take(MostNamed).Select(w => $"{w.Experiment}: {string.Join(" ", w.Warnings.Select(c => c.Finding.Saw))}"),
                 .. checks.Warning.Count > MostNamed ? [FormattableString.Invariant($"and {checks.Warning.Count - MostNamed} more")] : Array.Empty<string>(),
             ];
     }

@@ -136,6 +136,17 @@ public sealed class LedgerPageTests
     }
 
     [Fact]
+    public void Of_very_many_findings_the_first_are_shown_and_the_others_counted()
+    {
+        LedgerProof broken = Proof([.. Enumerable.Range(1, 5_000).Select(n => new LedgerFinding(n, null, "The rows differ from their digest."))]);
+        using TestScreen screen = new(120, 40, Proving((_, _) => broken), page: "Ledger");
+        screen.Press(Key.P);
+        ProgrammePageTests.Until(screen, "Findings: 5000.");
+        screen.Press(Key.Tab, Key.End);
+        Assert.Contains("... and 4800 more; 'campaigns ledger verify' names all.", screen.Text, StringComparison.Ordinal);
+    }
+
+    [Fact]
     public void A_proof_that_is_stopped_or_cannot_be_made_says_nothing_about_the_record()
     {
         int tries = 0;

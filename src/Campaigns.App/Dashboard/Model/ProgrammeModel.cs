@@ -46,13 +46,18 @@ public sealed class ProgrammeModel(DashboardModel model) : IDisposable
     /// <param name="row">Row from 0.</param>
     public void Select(int row) => _row = Math.Clamp(row, 0, Math.Max(0, Campaigns.Count - 1));
 
-    /// <summary>Begins to make the checks of the open campaign's survivors, on another thread, and selects that campaign.</summary>
+    /// <summary>Opens the selected campaign where another one is open, and begins to make the checks of its survivors on another thread.</summary>
     public void Check()
     {
-        if (_checking is null)
+        if (_checking is null && Selected is { } selected)
         {
+            if (!IsOpenSelected)
+            {
+                model.Open(selected.Overview.Campaign.Code);
+                Refresh();
+            }
+
             CampaignStanding standing = model.Standing;
-            _row = RowOf(Campaigns, standing.Campaign.Code);
             (Checks, Problem) = (null, null);
             _checking = new SideJob<SurvivorChecks>((progress, stop) => model.Source.Checks(standing, progress, stop));
         }

@@ -2,6 +2,7 @@ using Campaigns.App.Dashboard.Canvas;
 using Campaigns.App.Dashboard.Model;
 using Campaigns.App.Dashboard.Paint;
 using Campaigns.App.Dashboard.Screen;
+using Campaigns.Catalog;
 using Campaigns.Catalog.Ledger;
 using Terminal.Gui.Input;
 using Terminal.Gui.ViewBase;
@@ -188,11 +189,18 @@ public sealed class LedgerPage : TwoPartPage
         }
 
         _ledger.Prove();
+        WorkProgress? shown = null;
         App?.AddTimeout(Glance, () =>
         {
+            WorkProgress? before = _ledger.Proving;
             bool isAtWork = _ledger.Follow();
-            ShowChange();
-            SuperView?.SetNeedsDraw();
+            if (!isAtWork || before != shown)
+            {
+                shown = before;
+                ShowChange();
+                SuperView?.SetNeedsDraw();
+            }
+
             return isAtWork;
         });
     }

@@ -3,6 +3,7 @@ using Campaigns.App.Dashboard.Model;
 using Campaigns.App.Dashboard.Paint;
 using Campaigns.App.Dashboard.Screen;
 using Campaigns.App.Wording;
+using Campaigns.Catalog;
 using Terminal.Gui.Input;
 using Terminal.Gui.ViewBase;
 
@@ -37,7 +38,7 @@ public sealed class ProgrammePage : TwoPartPage
     [
         .. MovingHelp,
         ("Enter", "open the selected campaign and turn to its experiments (or click its row twice)"),
-        ("c", "make the checks of the survivors of the open campaign, on the side; Esc stops them"),
+        ("c", "open the selected campaign and make the checks of its survivors, on the side; Esc stops them"),
         (Glyphs.Marked + " behind a code", "the campaign that is open"),
         ("!", "how many kinds of things wait in the campaign: the text says which"),
         ("holds, level, by", "the error rate, its level, and the key of the correction"),
@@ -106,11 +107,18 @@ public sealed class ProgrammePage : TwoPartPage
         if (_programme.Checking is null)
         {
             _programme.Check();
+            WorkProgress? shown = null;
             App?.AddTimeout(Glance, () =>
             {
+                WorkProgress? before = _programme.Checking;
                 bool isAtWork = _programme.Follow();
-                ShowChange();
-                SuperView?.SetNeedsDraw();
+                if (!isAtWork || before != shown)
+                {
+                    shown = before;
+                    ShowChange();
+                    SuperView?.SetNeedsDraw();
+                }
+
                 return isAtWork;
             });
         }

@@ -11,6 +11,7 @@ namespace Campaigns.App.Dashboard.Paint;
 public static class LedgerSheet
 {
     private const int MostChanges = 500;
+    private const int MostFindings = 200;
     private const int Digest = 64;
 
     /// <summary>Paints the sheet, as high as it needs.</summary>
@@ -61,9 +62,14 @@ public static class LedgerSheet
         else
         {
             sheet.Marked(sheet.Glyphs.Warns, ProofText.Broken(proof), Ink.Warning);
-            foreach (LedgerFinding finding in proof.Findings)
+            foreach (LedgerFinding finding in proof.Findings.Take(MostFindings))
             {
                 sheet.Line(ProofText.Finding(finding), Ink.Text, indent: 2);
+            }
+
+            if (proof.Findings.Count > MostFindings)
+            {
+                sheet.Line(FormattableString.Invariant($"... and {proof.Findings.Count - MostFindings} more; 'campaigns ledger verify' names all."), Ink.Quiet, indent: 2);
             }
         }
 

@@ -81,7 +81,7 @@ public static class ProgrammeSheet
     {
         if (!programme.IsOpenSelected)
         {
-            sheet.Marked(sheet.Glyphs.Between, "Checks can be made for the survivors of the open campaign; Enter opens this one.", Ink.Quiet);
+            sheet.Marked(sheet.Glyphs.Between, "Checks are made for the survivors of the open campaign alone; key c opens this one and makes them.", Ink.Quiet);
             return;
         }
 
