@@ -38,6 +38,7 @@ internal static class CommandLine
         () => new ListVerb(),
         () => new ShowVerb(),
         () => new ReportVerb(),
+        () => new PlotVerb(),
         () => new ExportVerb(),
         () => new LedgerVerb(),
         () => new DashboardVerb(),

@@ -4,67 +4,63 @@ using Campaigns.Domain;
 
 namespace Campaigns.Catalog.Exporting;
 
-/// <summary>Writes a text file whole: it is made under another name beside its place and moved there when it is finished, so that at every moment there is the old file or the new one.</summary>
+/// <summary>Writes a file whole: it is made under another name beside its place and moved there when it is finished, so that nobody ever finds half of it.</summary>
 public static class NewFile
 {
     private const string Purpose = "new";
 
-    /// <summary>Makes the file, as UTF-8 with line feeds.</summary>
-    /// <param name="catalog">The open catalog, which is never written over.</param>
-    /// <param name="path">The file.</param>
-    /// <param name="replace">Whether it may take the place of a file that is there.</param>
-    /// <param name="fill">Writes what is in it.</param>
-    /// <returns>Its size in bytes.</returns>
-    /// <exception cref="RefusedException">Something is there already, or the file cannot be written; nothing is left behind.</exception>
-    public static long Write(Catalog catalog, string path, bool replace, Action<TextWriter> fill)
+    /// <summary>Writes text about a catalog, which itself is never written over.</summary>
+    /// <param name="catalog">The open catalog.</param>
+    /// <inheritdoc cref="Write(string, bool, Action{TextWriter})"/>
+    public static void Write(Catalog catalog, string file, bool force, Action<TextWriter> write)
     {
         ArgumentNullException.ThrowIfNull(catalog);
-        ArgumentNullException.ThrowIfNull(path);
-        ArgumentNullException.ThrowIfNull(fill);
-        Refuse(catalog, path, replace);
-        DraftFiles.RemoveAbandoned(path);
-        string draft = DraftFiles.Name(path, Purpose);
+        ArgumentNullException.ThrowIfNull(file);
+        if (RealPath(file) == RealPath(catalog.Path))
+        {
+            throw new RefusedException($"'{file}' is the catalog itself; name another file.");
+        }
+
+        Write(file, force, write);
+    }
+
+    /// <summary>Writes text as UTF-8 without a byte-order mark.</summary>
+    /// <param name="file">The file's name.</param>
+    /// <param name="force">Whether it may take the place of a file that is there.</param>
+    /// <param name="write">Writes the text.</param>
+    /// <exception cref="RefusedException">Something is there already, or the file cannot be written; what was there is untouched, and nothing is left behind.</exception>
+    public static void Write(string file, bool force, Action<TextWriter> write)
+    {
+        ArgumentNullException.ThrowIfNull(file);
+        ArgumentNullException.ThrowIfNull(write);
+        if (Directory.Exists(file))
+        {
+            throw new RefusedException($"'{file}' is a folder; name a file.");
+        }
+
+        if (!force && (File.Exists(file) || new FileInfo(file).LinkTarget is not null))
+        {
+            throw new RefusedException($"'{file}' exists; nothing was written. Name another file, or say --force to take its place.");
+        }
+
+        DraftFiles.RemoveAbandoned(file);
+        string draft = DraftFiles.Name(file, Purpose);
         try
         {
-            using (var writer = new StreamWriter(draft, append: false, new UTF8Encoding(encoderShouldEmitUTF8Identifier: false), 1 << 16) { NewLine = "\n" })
+            using (var writer = new StreamWriter(draft, append: false, new UTF8Encoding(encoderShouldEmitUTF8Identifier: false)) { NewLine = "\n" })
             {
-                fill(writer);
+                write(writer);
             }
 
-            long bytes = new FileInfo(draft).Length;
-            DraftFiles.Place(draft, path, replace);
-            return bytes;
+            DraftFiles.Place(draft, file, force);
         }
         catch (Exception error) when (error is IOException or UnauthorizedAccessException)
         {
-            throw new RefusedException($"The file '{path}' cannot be written: {FileTrouble.Reason(error, draft, path)} Nothing was written.");
+            throw new RefusedException($"The file '{file}' could not be written: {FileTrouble.Reason(error, draft, file)} Nothing of it was left behind.");
         }
         finally
         {
             DraftFiles.Remove(draft);
-        }
-    }
-
-    private static void Refuse(Catalog catalog, string path, bool replace)
-    {
-        if (Directory.Exists(path))
-        {
-            throw new RefusedException($"'{path}' is a folder; name a file.");
-        }
-
-        if (!Directory.Exists(Path.GetDirectoryName(Path.GetFullPath(path))))
-        {
-            throw new RefusedException($"The file '{path}' cannot be written: its folder is not there. Make the folder, or name another.");
-        }
-
-        if (RealPath(path) == RealPath(catalog.Path))
-        {
-            throw new RefusedException($"'{path}' is the catalog itself; name another file.");
-        }
-
-        if (!replace && (File.Exists(path) || new FileInfo(path).LinkTarget is not null))
-        {
-            throw new RefusedException($"'{path}' exists; nothing was written. Name another file, or write over it with --replace.");
         }
     }
 
