@@ -2,9 +2,7 @@ using Campaigns.App.Output;
 using Campaigns.App.Wording;
 using Campaigns.Catalog.Ledger;
 using Campaigns.Domain;
-using Campaigns.Statistics.Checks;
 using Campaigns.Statistics.FollowUps;
-using Campaigns.Statistics.GroupTests;
 
 namespace Campaigns.App.Commands;
 

@@ -1,5 +1,4 @@
 using System.CommandLine;
-using Campaigns.App.Output;
 using Campaigns.App.Report;
 using Campaigns.App.Report.Document;
 using Campaigns.App.Report.Html;

@@ -11,7 +11,10 @@ public static class NewFile
 
     /// <summary>Writes text about a catalog, which itself is never written over.</summary>
     /// <param name="catalog">The open catalog.</param>
-    /// <inheritdoc cref="Write(string, bool, Action{TextWriter})"/>
+    /// <param name="file">The file's name.</param>
+    /// <param name="force">Whether it may take the place of a file that is there.</param>
+    /// <param name="write">Writes the text.</param>
+    /// <exception cref="RefusedException">As below, or the file is the catalog.</exception>
     public static void Write(Catalog catalog, string file, bool force, Action<TextWriter> write)
     {
         ArgumentNullException.ThrowIfNull(catalog);

@@ -1,6 +1,5 @@
 using Campaigns.App.Commands;
 using Campaigns.App.Figures;
-using Campaigns.App.Output;
 using Campaigns.App.Report.Document;
 using Campaigns.App.Wording;
 using Campaigns.Domain;

@@ -1,4 +1,3 @@
-using Campaigns.App.Commands;
 using Campaigns.App.Report.Document;
 using Campaigns.App.Wording;
 using Campaigns.Domain;

@@ -2,7 +2,6 @@ using Campaigns.App.Commands;
 using Campaigns.App.Output;
 using Campaigns.App.Report.Document;
 using Campaigns.App.Wording;
-using Campaigns.Catalog.Plans;
 using Campaigns.Domain;
 
 namespace Campaigns.App.Report.Sections;
@@ -82,11 +81,13 @@ internal sealed class PlanSection : ReportSection
         ExperimentResult[] deviating = [.. data.Standing.Experiments.Where(e => e.Amendments.Count > 0)];
         if (deviating.Length > 0)
         {
-            yield return TableBlock.Of("Deviations by experiment", new RowTable(
-                [new("experiment", "experiment"), new("deviation", "deviation")],
-                deviating.SelectMany(e => e.Amendments.Select(a => (Cell[])[Cell.Text(e.Plan.Code), Cell.Text(a)])))) with { Links = Anchors.InFull(data) };
+            yield return TableBlock.Of("Deviations by experiment", ByExperiment(deviating)) with { Links = Anchors.InFull(data) };
         }
     }
+
+    private static RowTable ByExperiment(IEnumerable<ExperimentResult> deviating) => new(
+        [new("experiment", "experiment"), new("deviation", "deviation")],
+        deviating.SelectMany(e => e.Amendments.Select(a => (Cell[])[Cell.Text(e.Plan.Code), Cell.Text(a)])));
 
     private static RowTable Exclusions(IReadOnlyList<ExcludedObservation> decisions) => new(
         [

@@ -23,12 +23,13 @@ internal sealed class ResultsSection : ReportSection
         IReadOnlyList<ExperimentResult> all = data.Standing.Experiments;
         bool isCut = all.Count > TableBlock.MostRows;
         RowTable rows = ResultsVerb.Table(data.Standing, isCut ? Foremost(all) : all);
-        yield return TableBlock.Of("Results", rows with
+        rows = rows with
         {
             Above = [],
             Below = [.. isCut ? [Cut(all.Count, "that survive, then those with the smallest p, in the plan's order")] : (string[])[], "Adjusted p: over the whole family, to be held against the level. Status: where an experiment without a result stands.", .. rows.Below],
             WhenEmpty = "The campaign has no experiments yet.",
-        }).WithoutEmptyColumns() with { Links = Anchors.InFull(data) };
+        };
+        yield return TableBlock.Of("Results", rows).WithoutEmptyColumns() with { Links = Anchors.InFull(data) };
     }
 
     /// <summary>As many experiments as a table takes: survivors, then the smallest p; in the plan's order.</summary>
