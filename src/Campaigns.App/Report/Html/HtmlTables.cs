@@ -20,7 +20,7 @@ internal sealed class HtmlTables(TextWriter writer)
         else
         {
             string id = $"table-{HtmlText.Whole(++_count)}";
-            writer.Write($"<div class=\"box\"><table{(table.MaySort ? " class=\"sorts\"" : "")} aria-labelledby=\"{id}\">\n<caption id=\"{id}\">{HtmlText.Escape(table.Caption)}</caption>\n");
+            writer.Write($"<div class=\"box\"><table{(table.MaySort ? " class=\"sorts\"" : "")} aria-labelledby=\"{id}\">\n<caption id=\"{id}\"><span>{HtmlText.Escape(table.Caption)}</span></caption>\n");
             Heads(table);
             writer.Write("<tbody>\n");
             foreach (Cell[] row in table.Rows)
@@ -54,8 +54,9 @@ internal sealed class HtmlTables(TextWriter writer)
         writer.Write(isApart ? "<tr class=\"apart\">" : "<tr>");
         for (int c = 0; c < row.Length; c++)
         {
-            string text = HtmlText.Escape(TextTable.Text(row[c]));
-            string kind = table.Columns[c].IsNumeric ? " class=\"n\"" : "";
+            string plain = TextTable.Text(row[c]);
+            string text = HtmlText.Breakable(plain);
+            string kind = table.Columns[c].IsNumeric ? " class=\"n\"" : HtmlText.HasLongWord(plain) ? " class=\"long\"" : "";
             if (c > 0)
             {
                 writer.Write($"<td{kind}{ValueOf(row[c])}>{text}</td>");

@@ -7,6 +7,8 @@ namespace Campaigns.App.Report.Html;
 /// <summary>Text from files and catalogs as text of a page: no part of it is ever taken for markup, and nothing of it is hidden.</summary>
 internal static class HtmlText
 {
+    private const int LongestWord = 18;
+
     /// <summary>The text for an element or for an attribute in double quotation marks; what would reorder or break a line is shown as its code.</summary>
     /// <param name="text">Any text.</param>
     public static string Escape(string text)
@@ -27,6 +29,12 @@ internal static class HtmlText
 
         return escaped?.ToString() ?? safe;
     }
+
+    /// <summary>Whether a word of the text is so long that a narrow column cannot hold it.</summary>
+    public static bool HasLongWord(string text) => text.Length > LongestWord && text.Split(' ').Any(word => word.Length > LongestWord);
+
+    /// <summary>The text for an element, where a long list of names may be broken between them.</summary>
+    public static string Breakable(string text) => HasLongWord(text) ? Escape(text).Replace("|", "|<wbr>", StringComparison.Ordinal) : Escape(text);
 
     /// <summary>What stands in the place of a character; null where it stands for itself. A pair of surrogates is taken as one.</summary>
     private static string? Replacement(string text, ref int i, out int start)

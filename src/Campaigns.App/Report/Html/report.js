@@ -57,10 +57,10 @@
     [...table.tHead.rows[0].cells].forEach((head, place) => {
       const button = document.createElement("button");
       button.type = "button";
-      button.append(...head.childNodes);
-      head.append(button);
+      button.setAttribute("aria-label", `Sort by ${head.textContent}`);
+      head.append(" ", button);
       head.setAttribute("aria-sort", "none");
-      button.addEventListener("click", () => sort(table, place, head));
+      head.addEventListener("click", () => sort(table, place, head));
     });
   }
   scrolls();

@@ -14,7 +14,7 @@ internal sealed class PageSection : ReportSection
     private const int MostSurvivors = 10;
     private const int MostCautions = 6;
     private const int LongestName = 60;
-    private const int LongestSentence = 330;
+    private const int LongestSentence = 480;
 
     public override string Anchor => "summary";
 
@@ -52,12 +52,12 @@ internal sealed class PageSection : ReportSection
                 ? FormattableString.Invariant($"What survives, and by how much: the {shown.Length} of {data.Overview.SurvivorCount} with the smallest p; all of them stand under Survivors")
                 : "What survives, and by how much",
             [
-                new("experiment", "experiment"), new("title", "title"), new("groups", "largest difference claimed"), new("difference", "difference", true), new("selected_lower", "from", true), new("selected_upper", "to", true),
+                new("experiment", "experiment"), new("groups", "largest difference claimed"), new("difference", "difference", true), new("selected_lower", "from", true), new("selected_upper", "to", true),
                 new("unit", "unit"), new("adjusted_p", "adjusted p", true),
             ],
             [.. shown.Select(e => Row(data.Survivors, e))])
         {
-            Links = Anchors.InFull(data),
+            Links = shown.Select(e => (Name: NameOf(e), Anchor: Anchors.InFull(data).GetValueOrDefault(e.Plan.Code))).Where(l => l.Anchor is not null).DistinctBy(l => l.Name).ToDictionary(l => l.Name, l => l.Anchor!, StringComparer.Ordinal),
             MaySort = false,
             Below = ["From, to: the interval of the difference, which accounts for the selection of the survivors; none where the follow-up gives none. Differences of what was selected look larger than they are."],
         };
@@ -65,14 +65,14 @@ internal sealed class PageSection : ReportSection
 
     private static Cell[] Row(SurvivorData survivors, ExperimentResult e)
     {
-        Cell[] named = [Cell.Text(Shorten(e.Plan.Code, LongestName)), Cell.Text(Shorten(e.Plan.Title, LongestName))];
+        Cell named = Cell.Text(NameOf(e));
         Cell[] ending = [Cell.Text(Shorten(e.Plan.Unit, LongestName)), Cell.P(e.AdjustedP)];
         if (survivors.Leading(e) is { } leading)
         {
             return
             [
-                .. named, Cell.Text($"{Shorten(leading.GroupB, LongestName)} less {Shorten(leading.GroupA, LongestName)}"), Cell.Number(leading.Comparison.Difference),
-                Cell.Number(leading.SelectedInterval?.Lower), Cell.Number(leading.SelectedInterval?.Upper), .. ending,
+                named, Cell.Text($"{Shorten(leading.GroupB, LongestName)} less {Shorten(leading.GroupA, LongestName)}"), Rounded(leading.Comparison.Difference),
+                Rounded(leading.SelectedInterval?.Lower), Rounded(leading.SelectedInterval?.Upper), .. ending,
             ];
         }
 
@@ -80,10 +80,16 @@ internal sealed class PageSection : ReportSection
         Interval? interval = gap is null ? null : SurvivorData.OfGap(gap, survivors.Comparisons[e.Plan.Code]);
         return
         [
-            .. named, Cell.Text(gap is null ? null : $"no pair claimed; widest gap: {Shorten(gap.Highest, LongestName)} less {Shorten(gap.Lowest, LongestName)}"), Cell.Number(gap?.Difference),
-            Cell.Number(interval?.Lower), Cell.Number(interval?.Upper), .. ending,
+            named, Cell.Text(gap is null ? null : $"no pair claimed; widest gap: {Shorten(gap.Highest, LongestName)} less {Shorten(gap.Lowest, LongestName)}"), Rounded(gap?.Difference),
+            Rounded(interval?.Lower), Rounded(interval?.Upper), .. ending,
         ];
     }
+
+    private static string NameOf(ExperimentResult e) =>
+        e.Plan.Title.Length > 0 ? $"{Shorten(e.Plan.Code, LongestName)}: {Shorten(e.Plan.Title, LongestName)}" : Shorten(e.Plan.Code, LongestName);
+
+    /// <summary>Three digits carry what a decision needs; the full record has the others.</summary>
+    private static Cell Rounded(double? value) => value is { } given && Math.Abs(given) < double.MaxValue ? Cell.Shown(given, v => NumberText.Screen(v, 3)) : Cell.Empty;
 
     private static IEnumerable<string> Risked(ReportData data)
     {
