@@ -9,10 +9,10 @@ namespace Campaigns.App.Figures;
 public sealed record Figure(string Key, string Title, string Alternative)
 {
     /// <summary>Usual width of a figure, in the units of its drawing; letters are 12 of them high.</summary>
-    public const double UsualWidth = 520;
+    public const double UsualWidth = 460;
 
     /// <summary>Usual height of a figure's plot.</summary>
-    public const double UsualHeight = 320;
+    public const double UsualHeight = 300;
 
     /// <summary>The plot; null where the data have no picture, which <see cref="Alternative"/> then explains.</summary>
     public PlotModel? Plot { get; init; }

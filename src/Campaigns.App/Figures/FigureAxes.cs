@@ -11,6 +11,7 @@ internal static class FigureAxes
     private const double FinestSpread = 1e-11;
     private const double SmallestSpread = 1e-290;
     private const double LargestValue = 1e290;
+    private const int MostPowers = 8;
 
     /// <summary>Whether a range of numbers can be drawn to scale: its ends are finite, and lie apart by more than the last digits of a double.</summary>
     public static bool CanShow(double low, double high)
@@ -60,6 +61,40 @@ internal static class FigureAxes
         return axis;
     }
 
+    /// <summary>An axis of decimal logarithms, with the numbers themselves at its ticks.</summary>
+    /// <param name="position">Bottom or left.</param>
+    /// <param name="title">What the numbers are.</param>
+    /// <param name="low">Smallest logarithm.</param>
+    /// <param name="high">Largest one.</param>
+    /// <param name="room">Room on either side, in powers of ten.</param>
+    public static LinearAxis Powers(AxisPosition position, string title, double low, double high, double room)
+    {
+        LinearAxis axis = Plain(position, title);
+        axis.Minimum = low - room;
+        axis.Maximum = high + room;
+        axis.MajorStep = StepOf(high - low);
+        axis.MajorGridlineStyle = LineStyle.Solid;
+        axis.LabelFormatter = value => Power((int)Math.Round(value));
+        return axis;
+    }
+
+    /// <summary>An axis of counts from 0 or 1 on, with whole numbers at its ticks.</summary>
+    public static LinearAxis Counts(AxisPosition position, string title, double low, double high)
+    {
+        LinearAxis axis = Plain(position, title);
+        axis.Minimum = low;
+        axis.Maximum = high;
+        axis.MinimumMajorStep = 1;
+        axis.MajorGridlineStyle = LineStyle.Solid;
+        axis.LabelFormatter = value => Math.Abs(value - Math.Round(value)) < 1e-6 ? Math.Round(value).ToString("F0", CultureInfo.InvariantCulture) : "";
+        return axis;
+    }
+
+    /// <summary>A whole power of ten as text.</summary>
+    public static string Power(int exponent) => exponent is >= -3 and <= 6
+        ? Math.Pow(10, exponent).ToString("0.###", CultureInfo.InvariantCulture)
+        : string.Create(CultureInfo.InvariantCulture, $"1e{exponent}");
+
     /// <summary>A number of an axis as text, with the decimals that its step needs.</summary>
     /// <param name="value">The number.</param>
     /// <param name="step">From one tick to the next.</param>
@@ -80,10 +115,21 @@ internal static class FigureAxes
     /// <summary>What is measured, with its unit in brackets.</summary>
     public static string WithUnit(string what, string unit) => unit.Length > 0 ? $"{what} ({unit})" : what;
 
+    private static double StepOf(double powers)
+    {
+        double step = 1;
+        for (int i = 0; powers / step > MostPowers; i++)
+        {
+            step *= i % 3 == 1 ? 2.5 : 2;
+        }
+
+        return step;
+    }
+
     private static LinearAxis Plain(AxisPosition position, string title) => new()
     {
         Position = position,
-        Title = FigureText.Fit(FigureText.Safe(title), FigureStyle.LetterSize, position == AxisPosition.Bottom ? 360 : 240),
+        Title = FigureText.Fit(FigureText.Safe(title), FigureStyle.LetterSize, position == AxisPosition.Bottom ? 300 : 220),
         TitleColor = FigureStyle.Text,
         TextColor = FigureStyle.Quiet,
         AxislineStyle = LineStyle.Solid,
@@ -95,6 +141,7 @@ internal static class FigureAxes
         MajorGridlineColor = FigureStyle.Grid,
         MajorGridlineThickness = 1,
         AxisTitleDistance = 6,
+        IntervalLength = position == AxisPosition.Left ? 44 : 62,
         IsZoomEnabled = false,
         IsPanEnabled = false,
     };

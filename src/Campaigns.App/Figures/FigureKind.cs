@@ -1,4 +1,5 @@
 using Campaigns.Catalog.Results;
+using Campaigns.Catalog.Reviewing;
 using Campaigns.Domain;
 
 namespace Campaigns.App.Figures;
@@ -29,6 +30,12 @@ internal sealed class FigureSource(Catalog.Catalog catalog, string campaign, str
 
     /// <summary>Its observations, traced to their files.</summary>
     public IReadOnlyList<TracedObservation> Observations() => new ObservationReader(Catalog).Read(campaign, Experiment);
+
+    /// <summary>The campaign's risk, test by test.</summary>
+    public IReadOnlyList<RiskPoint> Risk() => RiskCurve.Of(Standing, new TestOrderReader(Catalog).LatestRuns(campaign));
+
+    /// <summary>Its reviews, oldest first.</summary>
+    public IReadOnlyList<ReviewHead> Reviews() => [.. new ReviewReader(Catalog).Records(campaign).Select(r => r.Head)];
 
     private string Experiment => experiment ?? throw new InvalidOperationException("This figure shows one experiment, and none is named.");
 }

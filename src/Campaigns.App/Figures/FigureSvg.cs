@@ -8,16 +8,17 @@ public static class FigureSvg
 {
     private const double Margin = 8;
     private const double TitleSize = 13;
-    private const double NoteSize = 10.5;
+    private const double NoteSize = 11;
     private const double Gap = 6;
 
     /// <summary>The figure as one svg element; the same figure gives the same bytes.</summary>
     /// <param name="figure">A figure with a picture.</param>
     /// <param name="idPrefix">What its ids begin with: a letter, then letters, digits, hyphens; different for each figure of a page.</param>
+    /// <param name="withWords">Whether the title stands above the plot and the notes below it, as in a file of its own; false for a page that sets both as its own text. Title and description for who cannot see are there in any case.</param>
     /// <returns>The element, without an XML declaration, ending in a line feed.</returns>
     /// <exception cref="ArgumentException">The prefix could not stand in an id.</exception>
     /// <exception cref="InvalidOperationException">The figure has no picture.</exception>
-    public static string Write(Figure figure, string idPrefix)
+    public static string Write(Figure figure, string idPrefix, bool withWords = true)
     {
         ArgumentNullException.ThrowIfNull(figure);
         if (string.IsNullOrEmpty(idPrefix) || !char.IsAsciiLetter(idPrefix[0]) || !idPrefix.All(c => char.IsAsciiLetterOrDigit(c) || c == '-'))
@@ -32,10 +33,11 @@ public static class FigureSvg
 
         FigureCanvas canvas = new(idPrefix);
         double across = figure.Width - (2 * Margin);
-        double y = Lines(canvas, [FigureText.Safe(figure.Title)], Margin, TitleSize, across, isBold: true) + Gap;
+        double y = withWords ? Lines(canvas, [FigureText.Safe(figure.Title)], Margin, TitleSize, across, isBold: true) + Gap : 0;
         ((IPlotModel)plot).Update(true);
         ((IPlotModel)plot).Render(canvas, new OxyRect(0, y, figure.Width, figure.PlotHeight));
-        y = Lines(canvas, figure.Notes.Select(FigureText.Safe), y + figure.PlotHeight + (figure.Notes.Count > 0 ? Gap : 0), NoteSize, across, isBold: false) + Margin;
+        y += figure.PlotHeight;
+        y = withWords && figure.Notes.Count > 0 ? Lines(canvas, figure.Notes.Select(FigureText.Safe), y + Gap, NoteSize, across, isBold: false) + Margin : y;
 
         string width = FigureCanvas.Number(figure.Width), height = FigureCanvas.Number(y);
         return new StringBuilder(canvas.Elements.Length + 1024)
