@@ -60,7 +60,7 @@ internal sealed class ExperimentsSection : ReportSection
             yield return new BulletList([.. ExperimentNotes.Checks(detail)]);
         }
 
-        foreach (Block block in Comparisons(overview, detail))
+        foreach (Block block in Comparisons(standing, overview, detail))
         {
             yield return block;
         }
@@ -79,10 +79,11 @@ internal sealed class ExperimentsSection : ReportSection
         TableBlock.Of($"{code}: effects", EffectSection.Table(detail) with { Below = [.. ExperimentWording.Effects(standing, detail)] }) with { MaySort = false },
     ];
 
-    private static IEnumerable<Block> Comparisons(CampaignOverview overview, ExperimentDetail detail)
+    private static IEnumerable<Block> Comparisons(CampaignStanding standing, CampaignOverview overview, ExperimentDetail detail)
     {
         if (detail.Comparisons.Count > 0)
         {
+            yield return new FigureBlock(ComparisonsFigure.Of(standing, detail));
             string followUp = FollowUpRegistry.Find(detail.Result.Plan.FollowUp)?.Name ?? detail.Result.Plan.FollowUp;
             yield return TableBlock.Of($"{detail.Result.Plan.Code}: comparisons{InUnit(detail.Result)}, {followUp}", ExperimentSections.Comparisons(detail) with
             {

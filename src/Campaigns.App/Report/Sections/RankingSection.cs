@@ -1,3 +1,4 @@
+using Campaigns.App.Figures;
 using Campaigns.App.Output;
 using Campaigns.App.Report.Document;
 using Campaigns.Domain;
@@ -16,6 +17,7 @@ internal sealed class RankingSection : ReportSection
     public override IEnumerable<Block> Blocks(ReportData data)
     {
         CampaignRisk risk = data.Risk;
+        yield return new FigureBlock(RankingFigure.Of(data.Standing));
         yield return new FactList(
         [
             new("Experiments with a p-value", Cell.Whole(data.Overview.TestedCount)),
@@ -24,6 +26,7 @@ internal sealed class RankingSection : ReportSection
             new("Largest p that survives", Cell.P(risk.LargestSurvivingP)),
             new("Estimated share of true nulls", Cell.Number(risk.TrueNulls.Share)),
         ]);
+        yield return new FigureBlock(HistogramFigure.Of(data.Standing));
         if (risk.TrueNulls.Reason is { } reason)
         {
             yield return new Paragraph($"No estimate of the share of true nulls: {reason}", Tone.Note);

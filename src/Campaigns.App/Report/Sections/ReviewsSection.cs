@@ -1,4 +1,5 @@
 using Campaigns.App.Commands;
+using Campaigns.App.Figures;
 using Campaigns.App.Report.Document;
 using Campaigns.Domain;
 
@@ -18,6 +19,11 @@ internal sealed class ReviewsSection : ReportSection
         if (data.Reviews.Records.Count > 0)
         {
             yield return new Paragraph(CampaignText.ReviewLine(data.Overview), Tone.Note);
+        }
+
+        if (data.Reviews.Records.Count > 1)
+        {
+            yield return new FigureBlock(ReviewsFigure.Of(data.Standing, [.. data.Reviews.Records.Select(r => r.Head)]));
         }
 
         if (data.Reviews.Changes.Count < data.Reviews.Records.Count - 1)

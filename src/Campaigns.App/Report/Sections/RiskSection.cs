@@ -1,4 +1,5 @@
 using Campaigns.App.Commands;
+using Campaigns.App.Figures;
 using Campaigns.App.Output;
 using Campaigns.App.Report.Document;
 
@@ -20,6 +21,7 @@ internal sealed class RiskSection : ReportSection
             yield return new Paragraph(sentence);
         }
 
+        yield return new FigureBlock(RiskFigure.Of(data.Standing, data.RiskCurve));
         RowTable risk = RiskTable.Of([data.Risk], withTotal: false);
         Cell[] values = risk.Rows.Single();
         yield return new FactList([.. risk.Columns.Select((c, i) => (Column: c, Value: values[i])).Where(f => f.Column.Heading is not null && f.Column.Name != "campaign").Select(f => new Fact(Capital(f.Column.Heading!), f.Value))]);

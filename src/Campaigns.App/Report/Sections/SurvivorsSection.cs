@@ -1,4 +1,5 @@
 using Campaigns.App.Commands;
+using Campaigns.App.Figures;
 using Campaigns.App.Report.Document;
 
 namespace Campaigns.App.Report.Sections;
@@ -15,6 +16,7 @@ internal sealed class SurvivorsSection : ReportSection
     public override IEnumerable<Block> Blocks(ReportData data)
     {
         IReadOnlyDictionary<string, string> links = Anchors.InFull(data);
+        yield return new FigureBlock(SurvivorsFigure.Of(data.Standing));
         yield return TableBlock.Of("Survivors, the smallest p first", SurvivorTables.Rows(data.Survivors)).WithoutEmptyColumns() with { Links = links };
         if (data.Survivors.Listed.Count > 0)
         {
