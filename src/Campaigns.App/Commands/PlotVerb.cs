@@ -53,7 +53,7 @@ internal sealed class PlotVerb : Verb
             return ExitCode.Done;
         }
 
-        NewFile.Write(file, session.Get(_force), writer => writer.Write(svg));
+        NewFile.Write(catalog, file, session.Get(_force), writer => writer.Write(svg));
         session.Say($"Wrote '{file}': {figure.Title}. {figure.Alternative}");
         session.PrintForScripts(new RowTable(
             [new("file", null), new("figure", null), new("title", null), new("alternative", null)],

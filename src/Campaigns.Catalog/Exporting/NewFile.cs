@@ -9,6 +9,24 @@ public static class NewFile
 {
     private const string Purpose = "new";
 
+    /// <summary>Writes text about a catalog, which itself is never written over.</summary>
+    /// <param name="catalog">The open catalog.</param>
+    /// <param name="file">The file's name.</param>
+    /// <param name="force">Whether it may take the place of a file that is there.</param>
+    /// <param name="write">Writes the text.</param>
+    /// <exception cref="RefusedException">As below, or the file is the catalog.</exception>
+    public static void Write(Catalog catalog, string file, bool force, Action<TextWriter> write)
+    {
+        ArgumentNullException.ThrowIfNull(catalog);
+        ArgumentNullException.ThrowIfNull(file);
+        if (RealPath(file) == RealPath(catalog.Path))
+        {
+            throw new RefusedException($"'{file}' is the catalog itself; name another file.");
+        }
+
+        Write(file, force, write);
+    }
+
     /// <summary>Writes text as UTF-8 without a byte-order mark.</summary>
     /// <param name="file">The file's name.</param>
     /// <param name="force">Whether it may take the place of a file that is there.</param>
@@ -47,5 +65,11 @@ public static class NewFile
         {
             DraftFiles.Remove(draft);
         }
+    }
+
+    private static string RealPath(string path)
+    {
+        string full = Path.GetFullPath(path);
+        return File.Exists(full) ? File.ResolveLinkTarget(full, returnFinalTarget: true)?.FullName ?? full : full;
     }
 }
