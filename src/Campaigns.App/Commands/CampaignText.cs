@@ -14,6 +14,9 @@ internal static class CampaignText
     public const string Caution =
         "Survival is evidence, under stated assumptions, that group means differ. It is no release, safety or compliance decision: those belong to the laboratory's quality system, its regulator, and a qualified statistician's review.";
 
+    /// <summary>What a campaign without a plan is.</summary>
+    public const string Exploratory = "Exploratory: the experiments were taken from the data, not from a plan made before it.";
+
     /// <summary>For example "false discovery rate".</summary>
     public static string RateWords(ErrorRate rate) => rate switch
     {
@@ -49,7 +52,7 @@ internal static class CampaignText
         ];
         if (campaign.IsExploratory)
         {
-            lines.Add("Exploratory: the experiments were taken from the data, not from a plan made before it.");
+            lines.Add(Exploratory);
         }
 
         lines.AddRange(Deviations(standing));

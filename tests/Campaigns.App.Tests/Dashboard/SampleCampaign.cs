@@ -55,7 +55,7 @@ internal static class SampleCampaign
 
     public static SampleSource Source(CampaignStanding standing) => new(standing);
 
-    public static Correction? Find(string key) => key switch { "rising" => new RisingCorrection(), "unbounded" => new UnboundedCorrection(), _ => null };
+    public static Correction? Find(string key) => key switch { "rising" => new RisingCorrection(), "unbounded" => new UnboundedCorrection(), _ => CorrectionRegistry.Find(key) };
 
     public static ExperimentDetail Detail(ExperimentResult result)
     {

@@ -177,6 +177,35 @@ public sealed class LedgerVerifierTests : IDisposable
         Assert.Equal(before, _catalog.Dump);
     }
 
+    [Fact]
+    public void Each_part_of_the_proof_is_told_before_it_begins()
+    {
+        var told = new List<WorkProgress>();
+        new LedgerVerifier(_catalog.Catalog).Verify(progress: told.Add);
+        Assert.Equal(Enumerable.Range(0, told.Count).Select(i => (long)i), told.Select(p => p.Done));
+        Assert.All(told, p => Assert.Equal(told.Count, p.Total));
+        Assert.Equal(("proving the file", "proving the sealed plans"), (told[0].What, told[^1].What));
+    }
+
+    [Theory]
+    [InlineData(0)]
+    [InlineData(2)]
+    [InlineData(5)]
+    public void A_proof_that_is_stopped_finds_no_fault_with_the_record(int part)
+    {
+        using var stop = new CancellationTokenSource();
+        using Catalog own = Catalog.OpenForProof(_catalog.Catalog.Path, _catalog.Clock, isReadOnly: false);
+        own.StopOn(stop.Token);
+        Assert.ThrowsAny<OperationCanceledException>(() => new LedgerVerifier(own).Verify(progress: p =>
+        {
+            if (p.Done == part)
+            {
+                stop.Cancel();
+            }
+        }));
+        Assert.True(Prove().IsWhole);
+    }
+
     private LedgerProof Prove(LedgerHead? known = null) => new LedgerVerifier(_catalog.Catalog).Verify(known);
 
     private string Digest(EvidenceKind kind)
