@@ -49,7 +49,8 @@ internal sealed class CorrectionsVerb : Verb
         return ExitCode.Done;
     }
 
-    private static RowTable ByCorrection(CampaignStanding standing)
+    /// <summary>A row a correction.</summary>
+    public static RowTable ByCorrection(CampaignStanding standing)
     {
         IReadOnlyList<CorrectionOutcome> outcomes = CorrectionsBeside.Of(standing);
         int hanging = HangingPlaces(standing, outcomes).Count();
@@ -68,13 +69,16 @@ internal sealed class CorrectionsVerb : Verb
             Above = [FormattableString.Invariant($"{standing.Campaign.Code}: {standing.TestedCount} results in {Of(standing)}, every correction at {(standing.Campaign.JudgedFamilies.Count == 0 ? standing.Campaign.Level.ToString() : "the level of each family")}")],
             Below =
             [
-                FormattableString.Invariant($"Hanging on the choice among those that hold the {CampaignText.RateWords(standing.Campaign.ErrorRate)}: {hanging} experiment(s){(hanging > 0 ? "; --hanging lists them" : "")}."),
+                FormattableString.Invariant($"Hanging on the choice among those that hold the {CampaignText.RateWords(standing.Campaign.ErrorRate)}: {Counted.Of(hanging, "experiment")}{(hanging > 0 ? "; --hanging lists them" : "")}."),
                 NeverToChoose, .. InFamilies(standing), .. Ending(standing),
             ],
         };
     }
 
-    private static RowTable ByExperiment(CampaignStanding standing, bool hangingOnly)
+    /// <summary>A row an experiment with its adjusted p under every correction.</summary>
+    /// <param name="standing">The campaign.</param>
+    /// <param name="hangingOnly">Whether only those are wanted that hang on the choice.</param>
+    public static RowTable ByExperiment(CampaignStanding standing, bool hangingOnly)
     {
         IReadOnlyList<CorrectionOutcome> outcomes = CorrectionsBeside.Of(standing);
         ErrorRate rate = standing.Campaign.ErrorRate;

@@ -75,7 +75,10 @@ internal static class RiskTable
     public static string? Exactness(CorrectedRisk? risk) => risk is { } given ? given.IsExact ? "exact" : "at most" : null;
 
     /// <summary>What the correction holds and what of the survivors may be false, in numbers, where a law gives them.</summary>
-    private static string Numbers(CampaignRisk risk)
+    private static string Numbers(CampaignRisk risk) => string.Concat(MayBeFalse(risk).Select(sentence => " " + sentence));
+
+    /// <summary>What the correction risks if nothing is real, and how many of the survivors may be false, in sentences; none where nothing was tested.</summary>
+    public static IReadOnlyList<string> MayBeFalse(CampaignRisk risk)
     {
         CampaignOverview c = risk.Overview;
         ErrorProcedure procedure = FamilyVerdict.ProcedureOf(c.Campaign);
@@ -96,7 +99,7 @@ internal static class RiskTable
             }
         }
 
-        return string.Concat(sentences.Select(sentence => " " + sentence));
+        return sentences;
     }
 
     private static Cell[] Row(CampaignRisk risk)
@@ -114,7 +117,8 @@ internal static class RiskTable
         ];
     }
 
-    private static string Held(CampaignOverview c) => c.Campaign.JudgedFamilies.Count == 0
+    /// <summary>What the procedures of a campaign promise.</summary>
+    public static string Held(CampaignOverview c) => c.Campaign.JudgedFamilies.Count == 0
         ? FamilyVerdict.ProcedureOf(c.Campaign).Guarantee
         : string.Join(" ", [.. FamilyText.Guarantees(c), FamilyText.Together(c)]);
 
