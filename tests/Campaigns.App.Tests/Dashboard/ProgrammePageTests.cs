@@ -94,7 +94,7 @@ public sealed partial class ProgrammePageTests
         Assert.Contains("! The plan is still open", gloss, StringComparison.Ordinal);
         Assert.Contains("! Data not tested: 5 experiments with data and no test, 4 of them with at least as many values as planned", gloss, StringComparison.Ordinal);
         string feed = Flat(screen.Press(Key.CursorDown).Text);
-        Assert.Contains("is out of date: the values of 2 experiment", feed, StringComparison.Ordinal);
+        Assert.Contains("is out of date: 2 experiments await a new test", feed, StringComparison.Ordinal);
         Assert.Contains("Withdrawn after their data came: 2 experiment", feed, StringComparison.Ordinal);
     }
 
