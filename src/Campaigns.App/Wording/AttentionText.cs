@@ -25,12 +25,12 @@ internal static class AttentionText
             string enough = of.Waiting.AsManyAsPlanned == 0
                 ? "none holds as many values as planned, so that 'campaigns test' leaves them alone without --incomplete"
                 : FormattableString.Invariant($"{of.Waiting.AsManyAsPlanned} of them with at least as many values as planned; 'campaigns test {code}' tests those that are complete");
-            yield return FormattableString.Invariant($"Data not tested: {Experiments(of.NeverTested)} with data and no test, {enough}.");
+            yield return FormattableString.Invariant($"Data not tested: {Counted.Of(of.NeverTested, "experiment")} with data and no test, {enough}.");
         }
 
         if (of.AwaitingNewTest > 0 && of.Overview.LastReview is null)
         {
-            yield return FormattableString.Invariant($"New test awaited: the values of {Experiments(of.AwaitingNewTest)} were changed after the test, or they were taken in again; 'campaigns test {code}' tests them.");
+            yield return FormattableString.Invariant($"New test awaited by {Counted.Of(of.AwaitingNewTest, "experiment")}, because values were changed after the last one or because of being taken in again; 'campaigns test {code}' runs it.");
         }
 
         if (of.LacksReview || of.IsReviewBehind)
@@ -57,7 +57,7 @@ internal static class AttentionText
         ArgumentNullException.ThrowIfNull(overview);
         return
         [
-            .. overview.Campaign.IsExploratory ? ["Exploratory: the experiments were taken from the data, not from a plan made before it."] : Array.Empty<string>(),
+            .. overview.Campaign.IsExploratory ? [CampaignText.Exploratory] : Array.Empty<string>(),
             .. CampaignText.Deviations(overview),
         ];
     }
@@ -77,14 +77,14 @@ internal static class AttentionText
             .. In("gates closed", a => a.ClosedFamilies > 0 ? 1 : 0, counts: false),
         ];
         string head = needing == 0
-            ? FormattableString.Invariant($"Nothing waits in {Campaigns(all.Count)}")
-            : FormattableString.Invariant($"{needing} of {Campaigns(all.Count)} {(needing == 1 ? "needs" : "need")} attention: {string.Join(", ", parts)}");
+            ? FormattableString.Invariant($"Nothing waits in {Counted.Of(all.Count, "campaign")}")
+            : FormattableString.Invariant($"{needing} of {Counted.Of(all.Count, "campaign")} {Counted.Word(needing, "needs", "need")} attention: {string.Join(", ", parts)}");
         int withdrawn = all.Sum(a => a.Overview.Withdrawn.All);
         int amended = all.Sum(a => a.Overview.AmendedPlan.Amendments);
         string known = string.Join(", ", (string[])
         [
             .. withdrawn > 0 ? [FormattableString.Invariant($"{withdrawn} withdrawn")] : Array.Empty<string>(),
-            .. amended > 0 ? [FormattableString.Invariant($"{amended} plan amendment{(amended == 1 ? "" : "s")}")] : Array.Empty<string>(),
+            .. amended > 0 ? [Counted.Of(amended, "plan amendment")] : Array.Empty<string>(),
         ]);
         return known.Length == 0 ? head + "." : $"{head}. To know: {known}.";
 
@@ -93,7 +93,7 @@ internal static class AttentionText
             int campaigns = all.Count(a => count(a) > 0);
             if (campaigns > 0)
             {
-                string experiments = counts ? $" ({Experiments(all.Sum(count))})" : "";
+                string experiments = counts ? $" ({Counted.Of(all.Sum(count), "experiment")})" : "";
                 yield return FormattableString.Invariant($"{what} in {campaigns}{experiments}");
             }
         }
@@ -112,10 +112,10 @@ internal static class AttentionText
 
         if (checks is null)
         {
-            return [FormattableString.Invariant($"Checks were not made here: they read every value. Key c makes them for the {survivors} survivor{(survivors == 1 ? "" : "s")} of {campaign}.")];
+            return [FormattableString.Invariant($"Checks were not made here: they read every value. Key c makes them for the {Counted.Of(survivors, "survivor")} of {campaign}.")];
         }
 
-        string made = FormattableString.Invariant($"Checks made for the {checks.Checked} survivor{(checks.Checked == 1 ? "" : "s")} of {campaign} and for no other experiment: ");
+        string made = FormattableString.Invariant($"Checks made for the {Counted.Of(checks.Checked, "survivor")} of {campaign} and for no other experiment: ");
         return checks.Warning.Count == 0
             ? [made + "none warns."]
             :
@@ -125,8 +125,4 @@ internal static class AttentionText
                 .. checks.Warning.Count > MostNamed ? [FormattableString.Invariant($"and {checks.Warning.Count - MostNamed} more")] : Array.Empty<string>(),
             ];
     }
-
-    private static string Experiments(int n) => n == 1 ? "1 experiment" : FormattableString.Invariant($"{n} experiments");
-
-    private static string Campaigns(int n) => n == 1 ? "1 campaign" : FormattableString.Invariant($"{n} campaigns");
 }

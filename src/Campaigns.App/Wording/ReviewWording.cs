@@ -140,7 +140,7 @@ internal static class ReviewWording
     /// <summary>A version of the plan in the middle of a sentence.</summary>
     private static string Plan(int version) => version == 0 ? "plan version 0, as it was sealed," : FormattableString.Invariant($"plan version {version}");
 
-    private static string ProcedureName(string key) => CorrectionRegistry.Find(key)?.Name ?? OnlineRegistry.Find(key)?.Name ?? key;
+    public static string ProcedureName(string key) => CorrectionRegistry.Find(key)?.Name ?? OnlineRegistry.Find(key)?.Name ?? key;
 
     private static string P(ReviewLine? line) => line is { } given ? NumberText.P(given.P) : "none";
 

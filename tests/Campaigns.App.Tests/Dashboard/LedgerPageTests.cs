@@ -77,6 +77,19 @@ public sealed class LedgerPageTests
     }
 
     [Fact]
+    public void A_head_that_was_printed_earlier_finds_its_entry_and_another_one_none()
+    {
+        using TestScreen screen = new(120, 40, SamplePast.Source(1), page: "Ledger");
+        LedgerEntry seventh = SamplePast.Entries(18)[6];
+        screen.Press(new Key('/')).Type($"7:{seventh.Hash}").Press(Key.Enter);
+        Assert.Contains("row 1 of 1 shown, 18 in all", screen.Text, StringComparison.Ordinal);
+        screen.Press(Key.Esc).Press(new Key('/')).Type(seventh.Hash[..12]).Press(Key.Enter);
+        Assert.Contains("row 1 of 1 shown, 18 in all", screen.Text, StringComparison.Ordinal);
+        screen.Press(Key.Esc).Press(new Key('/')).Type($"8:{seventh.Hash}").Press(Key.Enter);
+        Assert.Contains("none of 18 entries shown", screen.Text, StringComparison.Ordinal);
+    }
+
+    [Fact]
     public void An_experiment_that_the_campaign_does_not_have_is_said_to_be_none()
     {
         using TestScreen screen = new(120, 40, SamplePast.Source(1), page: "Ledger");

@@ -122,7 +122,7 @@ public sealed class ReviewsPageTests
         using TestScreen screen = new(80, 24, source, page: "Reviews");
         int changed = source.Past.Experiments.Count(e => e.HasChanged);
         Assert.InRange(changed, 1, 11);
-        Assert.Contains(FormattableString.Invariant($"{changed} of 12 experiments survive in one review and not in another"), screen.Text, StringComparison.Ordinal);
+        Assert.Contains(FormattableString.Invariant($"{changed} of 12 experiments changed over the reviews"), screen.Text, StringComparison.Ordinal);
         screen.Press(Key.End);
         string last = source.Past.Experiments.Last(e => e.HasChanged).Code;
         Assert.Contains(last + " in review 3: ", screen.Text, StringComparison.Ordinal);

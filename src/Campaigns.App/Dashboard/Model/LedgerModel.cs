@@ -11,7 +11,6 @@ public sealed class LedgerModel(DashboardModel model) : IDisposable
 {
     private IReadOnlyList<LedgerEntry> _entries = [];
     private LedgerHead _head = LedgerHead.Empty;
-    private string?[] _searchable = [];
     private int[] _rows = [];
     private int _edition = -1;
     private int _row;
@@ -162,7 +161,6 @@ public sealed class LedgerModel(DashboardModel model) : IDisposable
         bool wasFirst = _row == 0;
         _edition = model.Edition;
         (_entries, _head) = model.Source.Ledger(new LedgerFilter());
-        _searchable = new string?[_entries.Count];
         Narrow(wasFirst ? null : selected);
     }
 
@@ -178,7 +176,7 @@ public sealed class LedgerModel(DashboardModel model) : IDisposable
         for (int i = 0; i < _entries.Count; i++)
         {
             LedgerEntry entry = _entries[i];
-            if ((!IsCampaignOnly || entry.Campaign == open) && about?.Contains(entry.Sequence) != false && search.Shows(entry, () => _searchable[i] ??= LedgerSearch.Searchable(entry)))
+            if ((!IsCampaignOnly || entry.Campaign == open) && about?.Contains(entry.Sequence) != false && search.Shows(entry))
             {
                 rows.Add(i);
             }

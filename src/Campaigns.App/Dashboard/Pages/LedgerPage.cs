@@ -52,9 +52,10 @@ public sealed class LedgerPage : TwoPartPage
     [
         .. MovingHelp,
         ("/ or F3", "type a filter; Enter or Esc goes back to the list, Esc once more takes it off"),
-        ("withdraw coating", "as a filter: both words in the sentence, the changes or the action"),
+        ("withdraw coating", "as a filter: both words in what was done, to what, why, by whom, when, or in what changed"),
         ("action:exclude by:ada", "only such actions, only what an account or a name did"),
         ("experiment:E12", "what touched this experiment of the open campaign, whether or not the entry names it"),
+        ("41:6f2c...", "a head that was printed earlier, in full: its entry, where the record holds it; the first 12 digits of a hash do too"),
         ("c", "the open campaign alone, or the whole catalog"),
         ("r", "the newest first, or the oldest"),
         ("p", "prove the record whole, as 'campaigns ledger verify' does, on the side; Esc stops it"),

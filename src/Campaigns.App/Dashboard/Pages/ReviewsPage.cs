@@ -39,7 +39,7 @@ public sealed class ReviewsPage : TwoPartPage
         .. MovingHelp,
         ("Left Right", "the review before and after (or click its column); it stands in brackets"),
         ("h", "hold the review at hand, so that the one you go to is compared with it; h there again or Esc lets it go"),
-        ("c", "all experiments, or only those that survive in one review and not in another"),
+        ("c", "all experiments, or only those that changed: they survive in one review and not in another"),
         ("Enter", "turn to the selected experiment as it stands today"),
         ("v", "take a new review"),
         (ListPainter.SurvivalText(true, Glyphs), "survived in that review"),
@@ -163,8 +163,8 @@ public sealed class ReviewsPage : TwoPartPage
         }
 
         string rows = _reviews.ShowsAll
-            ? FormattableString.Invariant($"all {_reviews.Experiments.Count} experiments, {_reviews.ChangedCount} of them survive in one review and not in another")
-            : FormattableString.Invariant($"{_reviews.ChangedCount} of {_reviews.Experiments.Count} experiments survive in one review and not in another");
+            ? FormattableString.Invariant($"all {_reviews.Experiments.Count} experiments, {_reviews.ChangedCount} of them changed over the reviews")
+            : FormattableString.Invariant($"{_reviews.ChangedCount} of {_reviews.Experiments.Count} experiments changed over the reviews");
         int room = ReviewMatrix.Room(_reviews, List.Frame.Width), first = FirstReview(List.Frame.Width), all = _reviews.Reviews.Count;
         string columns = room >= all ? "" : FormattableString.Invariant($"; reviews {first + 1} to {Math.Min(all, first + room)} of {all}");
         canvas.Write(1, 0, CellText.Fit(rows + columns, width - 1, Glyphs.Cut), Ink.Quiet);
