@@ -141,7 +141,7 @@ internal static class FigureAxes
         MajorGridlineColor = FigureStyle.Grid,
         MajorGridlineThickness = 1,
         AxisTitleDistance = 6,
-        IntervalLength = position == AxisPosition.Left ? 44 : 62,
+        IntervalLength = position == AxisPosition.Left ? 36 : 62,
         IsZoomEnabled = false,
         IsPanEnabled = false,
     };

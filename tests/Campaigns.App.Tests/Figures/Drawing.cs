@@ -38,6 +38,16 @@ internal sealed partial class Drawing
     /// <summary>What stands at a height, by the ticks of the vertical axis.</summary>
     public double ValueAtY(double y) => Along([.. Ticks().GroupBy(t => t.X).MaxBy(column => column.Count())!.Select(t => (t.Y, t.Value))], y);
 
+    /// <summary>What stands at a place along a horizontal axis of powers.</summary>
+    public double LogAtX(double x) => Along([.. Ticks().GroupBy(t => t.Y).MaxBy(row => row.Count())!.Select(t => (t.X, Math.Log10(t.Value)))], x);
+
+    /// <summary>The decimal logarithm at a height, by the ticks of a vertical axis of powers.</summary>
+    public double LogAtY(double y) => Along([.. Ticks().GroupBy(t => t.X).MaxBy(column => column.Count())!.Select(t => (t.Y, t.Text.StartsWith("1e", StringComparison.Ordinal) ? double.Parse(t.Text.AsSpan(2), NumberStyles.Float, CultureInfo.InvariantCulture) : Math.Log10(t.Value)))], y);
+
+    /// <summary>The bars of a series: left, right and upper edge.</summary>
+    public IReadOnlyList<(double Left, double Right, double Top, double Bottom)> Bars(string series) =>
+        [.. Paths(series).SelectMany(d => d.Split('M', StringSplitOptions.RemoveEmptyEntries)).Select(Numbers).Select(n => (n[0], n[0] + n[2], n[1], n[1] + n[3]))];
+
     /// <summary>The names along the left side with the heights of their middles.</summary>
     public IReadOnlyDictionary<string, double> Names() =>
         _root.Descendants(Svg + "text").Where(t => (string?)t.Attribute("text-anchor") == "end").GroupBy(t => t.Value)
@@ -80,14 +90,14 @@ internal sealed partial class Drawing
     private IEnumerable<string> Paths(string series) => _root.Descendants(Svg + "g").Where(g => (string?)g.Attribute("data-series") == series)
         .SelectMany(g => g.Elements(Svg + "path")).Select(p => (string)p.Attribute("d")!);
 
-    private IEnumerable<(double X, double Y, double Value)> Ticks()
+    private IEnumerable<(double X, double Y, double Value, string Text)> Ticks()
     {
         foreach (XElement text in _root.Descendants(Svg + "text"))
         {
             // The letter size of the axes: notes have a smaller one.
             if (Number(text, "font-size") == 12 && double.TryParse(text.Value, NumberStyles.Float, CultureInfo.InvariantCulture, out double value))
             {
-                yield return (Number(text, "x"), Number(text, "y") - (0.35 * 12), value);
+                yield return (Number(text, "x"), Number(text, "y") - (0.35 * 12), value, text.Value);
             }
         }
     }

@@ -55,7 +55,7 @@ internal sealed class PageSection : ReportSection
         yield return new BulletList(risked);
         if (data.Overview.TestedCount > 1 && room.Left >= FigureLines)
         {
-            yield return new FigureBlock(RiskFigure.Of(data.Standing, data.RiskCurve));
+            yield return new FigureBlock(RiskFigure.Of(data.Standing, data.RiskCurve)) { WithNotes = false };
         }
 
         yield return new Heading(1, "careful", "What to be careful about");
