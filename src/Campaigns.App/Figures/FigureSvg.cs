@@ -39,7 +39,7 @@ public static class FigureSvg
         y += figure.PlotHeight;
         y = withWords && figure.Notes.Count > 0 ? Lines(canvas, figure.Notes.Select(FigureText.Safe), y + Gap, NoteSize, across, isBold: false) + Margin : y;
 
-        string width = FigureCanvas.Number(figure.Width), height = FigureCanvas.Number(y);
+        string width = FigureCanvas.Number(figure.Width), height = FigureCanvas.Number(Math.Ceiling(y));
         return new StringBuilder(canvas.Elements.Length + 1024)
             .Append("<svg xmlns=\"http://www.w3.org/2000/svg\" viewBox=\"0 0 ").Append(width).Append(' ').Append(height).Append("\" width=\"").Append(width).Append("\" height=\"").Append(height)
             .Append("\" role=\"img\" aria-labelledby=\"").Append(idPrefix).Append("-title ").Append(idPrefix).Append("-desc\" font-family=\"").Append(FigureText.Xml(FigureText.Fonts)).Append("\">\n")

@@ -69,11 +69,13 @@ internal static class ExperimentNotes
     }
 
     /// <summary>A sentence or more for each check: its verdict, what it saw, what it cannot see, and where it warns what to do.</summary>
-    public static IEnumerable<string> Checks(ExperimentDetail detail) => detail.Analysis.Checks.Select(line =>
+    /// <param name="detail">The experiment.</param>
+    /// <param name="isBrief">Whether what a quiet check cannot see is said elsewhere.</param>
+    public static IEnumerable<string> Checks(ExperimentDetail detail, bool isBrief = false) => detail.Analysis.Checks.Select(line =>
     {
         ExperimentCheck check = CheckRegistry.Find(line.Key)!;
         string word = line.Finding.Verdict == CheckVerdict.Warns ? "WARNS" : ExperimentWording.Word(line.Finding.Verdict);
-        string rest = line.Finding.Verdict == CheckVerdict.NotPossible ? "" : $" {check.CannotSee}{(line.Finding.Verdict == CheckVerdict.Warns ? $" {check.Advice}" : "")}";
+        string rest = line.Finding.Verdict == CheckVerdict.NotPossible || (isBrief && line.Finding.Verdict == CheckVerdict.Quiet) ? "" : $" {check.CannotSee}{(line.Finding.Verdict == CheckVerdict.Warns ? $" {check.Advice}" : "")}";
         return $"{line.Name} ({word}): {line.Finding.Saw}{rest}";
     });
 

@@ -76,7 +76,9 @@ internal sealed class HtmlBlocks(TextWriter writer)
     {
         if (block.Figure.HasPicture)
         {
-            writer.Write($"<figure>\n{FigureSvg.Write(block.Figure, $"figure-{HtmlText.Whole(++_figures)}")}</figure>\n");
+            // Title and notes are text of the page, so that they keep their size where the picture shrinks.
+            IEnumerable<string> notes = block.WithNotes ? block.Figure.Notes : [];
+            writer.Write($"<figure>\n{FigureSvg.Write(block.Figure, $"figure-{HtmlText.Whole(++_figures)}", withWords: false)}<figcaption><strong>{HtmlText.Escape(block.Figure.Title)}.</strong>{string.Concat(notes.Select(n => " " + HtmlText.Escape(n)))}</figcaption>\n</figure>\n");
             return;
         }
 

@@ -7,6 +7,9 @@ namespace Campaigns.App.Report.Html;
 /// <param name="writer">Where to.</param>
 internal sealed class HtmlTables(TextWriter writer)
 {
+    /// <summary>Rows that fit a sheet of paper together, and are then not parted.</summary>
+    private const int SmallTable = 15;
+
     private int _count;
 
     /// <summary>Writes one table, with its sentences above and below.</summary>
@@ -20,7 +23,7 @@ internal sealed class HtmlTables(TextWriter writer)
         else
         {
             string id = $"table-{HtmlText.Whole(++_count)}";
-            writer.Write($"<div class=\"box\"><table{(table.MaySort ? " class=\"sorts\"" : "")} aria-labelledby=\"{id}\">\n<caption id=\"{id}\"><span>{HtmlText.Escape(table.Caption)}</span></caption>\n");
+            writer.Write($"<div class=\"box\"><table{ClassOf(table)} aria-labelledby=\"{id}\">\n<caption id=\"{id}\"><span>{HtmlText.Escape(table.Caption)}</span></caption>\n");
             Heads(table);
             writer.Write("<tbody>\n");
             foreach (Cell[] row in table.Rows)
@@ -36,6 +39,12 @@ internal sealed class HtmlTables(TextWriter writer)
 
     /// <summary>The attribute that holds the exact value of a number; empty for what is no number.</summary>
     public static string ValueOf(in Cell cell) => cell.Kind is CellKind.Number or CellKind.P or CellKind.Whole ? $" data-value=\"{CsvRows.Text(cell)}\"" : "";
+
+    private static string ClassOf(TableBlock table)
+    {
+        string[] classes = [.. table.MaySort ? ["sorts"] : (string[])[], .. table.Rows.Count <= SmallTable ? ["small"] : (string[])[]];
+        return classes.Length == 0 ? "" : $" class=\"{string.Join(' ', classes)}\"";
+    }
 
     private void Heads(TableBlock table)
     {

@@ -10,7 +10,8 @@ internal static class MarkdownText
     /// <param name="text">Any text.</param>
     public static string Escape(string text)
     {
-        string safe = SafeText.Escape(text);
+        // Blanks before a line could make it a block of code.
+        string safe = SafeText.Escape(text).Trim();
         StringBuilder escaped = new(safe.Length + 16);
         for (int i = 0; i < safe.Length; i++)
         {
@@ -29,10 +30,13 @@ internal static class MarkdownText
     private static bool IsMarkup(string text, int i) => text[i] switch
     {
         '\\' or '`' or '*' or '_' or '[' or ']' or '<' or '>' or '&' or '|' or '~' or '$' or '!' or '^' or '{' or '}' or '@' => true,
-        '#' or '+' or '-' or '=' or ':' => i == 0 || IsOnlyBlank(text, i) || (text[i] == ':' && i + 1 < text.Length && text[i + 1] is '/' or ':') || (text[i] is '=' or '+' && Doubles(text, i)),
+        '#' or '+' or '-' or '=' or ':' => i == 0 || IsOnlyBlank(text, i) || (text[i] == ':' && EndsScheme(text, i)) || (text[i] is '=' or '+' && Doubles(text, i)),
         '.' or ')' => IsListNumber(text, i) || IsHost(text, i),
         _ => false,
     };
+
+    /// <summary>A colon between a letter and more of the same word, as in an address, or two of them.</summary>
+    private static bool EndsScheme(string text, int i) => i + 1 < text.Length && !char.IsWhiteSpace(text[i + 1]) && (char.IsAsciiLetter(text[i - 1]) || text[i + 1] == ':' || text[i - 1] == ':');
 
     private static bool IsOnlyBlank(string text, int end) => text.AsSpan(0, end).IsWhiteSpace();
 

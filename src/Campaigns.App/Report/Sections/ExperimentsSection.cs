@@ -56,8 +56,8 @@ internal sealed class ExperimentsSection : ReportSection
 
         if (detail.Analysis.Checks.Count > 0)
         {
-            yield return new Paragraph($"{code}: checks of the assumptions ({ExperimentWording.ChecksAreAdvice})");
-            yield return new BulletList([.. ExperimentNotes.Checks(detail)]);
+            yield return new Paragraph($"{code}: checks of the assumptions ({ExperimentWording.ChecksAreAdvice}; what a quiet one cannot see stands under Methods)");
+            yield return new BulletList([.. ExperimentNotes.Checks(detail, isBrief: true)]);
         }
 
         foreach (Block block in Comparisons(standing, overview, detail))
@@ -87,7 +87,7 @@ internal sealed class ExperimentsSection : ReportSection
             string followUp = FollowUpRegistry.Find(detail.Result.Plan.FollowUp)?.Name ?? detail.Result.Plan.FollowUp;
             yield return TableBlock.Of($"{detail.Result.Plan.Code}: comparisons{InUnit(detail.Result)}, {followUp}", ExperimentSections.Comparisons(detail) with
             {
-                Below = [.. ExperimentWording.Comparisons(overview, [detail.Result.Plan.FollowUp])],
+                Below = [.. ExperimentWording.Comparisons(overview, [detail.Result.Plan.FollowUp]).Take(1), "What is claimed, and what the selected intervals hold, stands below the figure and under Methods."],
             }).WithoutEmptyColumns();
         }
     }

@@ -1,4 +1,5 @@
 using Campaigns.App.Commands;
+using Campaigns.App.Figures;
 using Campaigns.App.Output;
 using Campaigns.App.Report.Document;
 using Campaigns.App.Wording;
@@ -12,9 +13,20 @@ namespace Campaigns.App.Report.Sections;
 internal sealed class PageSection : ReportSection
 {
     private const int MostSurvivors = 10;
-    private const int MostCautions = 6;
+    private const int LettersOfTitle = 55;
+    private const int LettersOfLead = 80;
+    private const double LeadHeight = 1.25;
+
+    /// <summary>Lines of headings, notes, caution and record, of the table's frame and of a figure.</summary>
+    private const int FixedLines = 16;
+    private const int TableFrame = 6;
+    private const int FigureLines = 17;
     private const int LongestName = 60;
     private const int LongestSentence = 480;
+    private const int LongestCaution = 330;
+    private const int LettersOfName = 40;
+    private const int LettersOfGroups = 30;
+    private const double RowHeight = 1.05;
 
     public override string Anchor => "summary";
 
@@ -24,16 +36,30 @@ internal sealed class PageSection : ReportSection
 
     public override IEnumerable<Block> Blocks(ReportData data)
     {
-        yield return new Paragraph(Shorten(Lead(data), LongestSentence), Tone.Lead);
+        var room = new SheetRoom();
+        room.Take(FixedLines + (2 * SheetRoom.Of(data.Standing.Campaign.Title, LettersOfTitle)));
+        string lead = Shorten(Lead(data), LongestSentence);
+        room.Take(SheetRoom.Of(lead, LettersOfLead) * LeadHeight);
+        yield return new Paragraph(lead, Tone.Lead);
         if (data.Survivors.Listed.Count > 0)
         {
-            yield return Survivors(data);
+            TableBlock survivors = Survivors(data);
+            room.Take(TableFrame + survivors.Rows.Sum(LinesOf));
+            yield return survivors;
         }
 
+        string[] risked = [.. Risked(data).Select(s => Shorten(s, LongestSentence))];
+        room.Take(risked.Sum(s => SheetRoom.Of(s)));
+        string[] careful = [.. Careful(data, room)];
         yield return new Heading(1, "risked", "What was risked");
-        yield return new BulletList([.. Risked(data).Select(s => Shorten(s, LongestSentence))]);
+        yield return new BulletList(risked);
+        if (data.Overview.TestedCount > 1 && room.Left >= FigureLines)
+        {
+            yield return new FigureBlock(RiskFigure.Of(data.Standing, data.RiskCurve)) { WithNotes = false };
+        }
+
         yield return new Heading(1, "careful", "What to be careful about");
-        yield return new BulletList([.. Careful(data)]);
+        yield return new BulletList(careful);
         yield return new Paragraph(CampaignText.Caution, Tone.Note);
         yield return new Paragraph(LedgerText.HeadLine(data.Head), Tone.Note);
     }
@@ -102,19 +128,34 @@ internal sealed class PageSection : ReportSection
         }
     }
 
-    private static IEnumerable<string> Careful(ReportData data)
+    /// <summary>Cautions as far as there is room, at least one.</summary>
+    private static IEnumerable<string> Careful(ReportData data, SheetRoom room)
     {
         IReadOnlyList<string> all = CautionsSection.All(data);
-        foreach (string caution in all.Take(MostCautions).DefaultIfEmpty(CautionText.Nothing))
+        if (all.Count == 0)
         {
-            yield return Shorten(caution, LongestSentence);
+            room.Take(SheetRoom.Of(CautionText.Nothing));
+            yield return CautionText.Nothing;
+            yield break;
         }
 
-        if (all.Count > MostCautions)
+        for (int i = 0; i < all.Count; i++)
         {
-            yield return FormattableString.Invariant($"{all.Count - MostCautions} more stand under Cautions.");
+            string caution = Shorten(all[i], LongestCaution);
+            int lines = SheetRoom.Of(caution);
+            if (i > 0 && room.Left < lines + 1)
+            {
+                yield return FormattableString.Invariant($"{all.Count - i} more stand under Cautions.");
+                yield break;
+            }
+
+            room.Take(lines);
+            yield return caution;
         }
     }
+
+    /// <summary>Lines of a row, whose first two columns may be wrapped.</summary>
+    private static double LinesOf(Cell[] row) => Math.Max(SheetRoom.Of(row[0].AsText, LettersOfName), SheetRoom.Of(row[1].AsText, LettersOfGroups)) * RowHeight;
 
     private static string Capital(string clause) => char.ToUpperInvariant(clause[0]) + clause[1..];
 
