@@ -1,0 +1,27 @@
+using Campaigns.Statistics.TrueNulls;
+
+namespace Campaigns.App.Wording;
+
+/// <summary>The estimated share of true nulls in words, the same on paper and on screen.</summary>
+internal static class TrueNullText
+{
+    /// <summary>What every estimate of it supposes, and what it is not.</summary>
+    public const string Supposes = "It supposes that true nulls spread their p-values evenly from 0 to 1, as independent tests do; it is an estimate, no bound, and not valid for strongly dependent p-values.";
+
+    /// <summary>For example "an estimated share of true nulls of 0.873 (lambda 0.5) among the 40 tested; other estimates: ..."; null without an estimate.</summary>
+    /// <param name="share">The estimate that counts.</param>
+    /// <param name="others">Estimates by other methods.</param>
+    /// <param name="tested">P-values behind them.</param>
+    public static string? Share(TrueNullShare share, IEnumerable<TrueNullShare> others, int tested) => share.Share is { } known
+        ? FormattableString.Invariant($"an estimated share of true nulls of {known:0.###} ({share.Method}) among the {tested} tested; other estimates: {string.Join(", ", others.Select(Other))}")
+        : null;
+
+    /// <summary>A caution where p-values are few; null where they are not.</summary>
+    /// <param name="tested">P-values behind the estimate.</param>
+    public static string? Few(int tested) => tested is > 0 and < TrueNullShare.FewPValues
+        ? FormattableString.Invariant($"{tested} p-values are few for an estimate of the share of true nulls; {TrueNullShare.FewPValues} or more would be better.")
+        : null;
+
+    private static string Other(TrueNullShare share) =>
+        share.Share is { } known ? FormattableString.Invariant($"{known:0.###} ({share.Method})") : $"none ({share.Method})";
+}
