@@ -75,7 +75,7 @@ internal static class RiskTable
     public static string? Exactness(CorrectedRisk? risk) => risk is { } given ? given.IsExact ? "exact" : "at most" : null;
 
     /// <summary>What the correction holds and what of the survivors may be false, in numbers, where a law gives them.</summary>
-    private static string Numbers(CampaignRisk risk)
+    public static string Numbers(CampaignRisk risk)
     {
         CampaignOverview c = risk.Overview;
         ErrorProcedure procedure = FamilyVerdict.ProcedureOf(c.Campaign);

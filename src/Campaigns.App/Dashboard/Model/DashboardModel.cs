@@ -171,6 +171,17 @@ public sealed class DashboardModel
         Changed?.Invoke();
     }
 
+    /// <summary>Marks every survivor, or, where all of them are marked, takes their marks off.</summary>
+    public void MarkSurvivors()
+    {
+        int[] survivors = [.. Enumerable.Range(0, Standing.Experiments.Count).Where(i => Standing.Experiments[i].Survives == true)];
+        if (survivors.Length > 0)
+        {
+            Marks.TurnAll(survivors);
+            Changed?.Invoke();
+        }
+    }
+
     /// <summary>Sorts by a column, the smallest first; by the same column again, the other way round. The selected experiment stays selected.</summary>
     /// <param name="column">The column; null for the plan's order.</param>
     public void SortBy(ExperimentColumn? column)

@@ -78,6 +78,10 @@ public sealed class Ranking
     /// <param name="rank">1 to <see cref="Count"/>.</param>
     public ExperimentResult At(int rank) => _standing.Experiments[_order[rank - 1]];
 
+    /// <summary>An experiment of the campaign.</summary>
+    /// <param name="position">Its position in the campaign's list, from 0.</param>
+    public ExperimentResult Experiment(int position) => _standing.Experiments[position];
+
     /// <summary>The rank of an experiment; 0 where it has no p-value here.</summary>
     /// <param name="position">Its position in the campaign's list, from 0.</param>
     public int RankOf(int position) => position >= 0 && position < _rankOf.Length ? _rankOf[position] : 0;

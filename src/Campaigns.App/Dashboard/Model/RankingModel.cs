@@ -19,7 +19,7 @@ public sealed class RankingModel(DashboardModel model)
     private FamilyMembers? _members;
     private LevelLadder? _ladder;
     private PHistogram? _histogram;
-    private Reckoning<IReadOnlyList<CorrectionOutcome>>? _outcomes;
+    private Reckoning<SideBySide>? _outcomes;
     private LevelExploration? _exploration;
     private int _pointed;
 
@@ -108,13 +108,13 @@ public sealed class RankingModel(DashboardModel model)
     }
 
     /// <summary>Every correction side by side, reckoned when it is first asked for; null where the program does not know the sealed one.</summary>
-    public Reckoning<IReadOnlyList<CorrectionOutcome>>? Outcomes
+    public Reckoning<SideBySide>? Outcomes
     {
         get
         {
             Follow();
             CampaignStanding standing = Standing;
-            return IsKnown(standing) ? _outcomes ??= new(() => CorrectionsBeside.Of(standing), standing.Experiments.Count) : null;
+            return KnownCorrections.Are(standing.Campaign) ? _outcomes ??= new(() => SideBySide.Of(standing), standing.Experiments.Count) : null;
         }
     }
 
@@ -131,9 +131,9 @@ public sealed class RankingModel(DashboardModel model)
                 return [];
             }
 
-            if (reckoning.Result is { } outcomes)
+            if (reckoning.Result is { } beside)
             {
-                return [.. outcomes.Select(o => Row(o.Key, o.Procedure, o.IsSealed, o.IsSealed ? Standing.SurvivorCount : o.SurvivorCount))];
+                return [.. beside.Outcomes.Select(o => Row(o.Key, o.Procedure, o.IsSealed, o.Survivors))];
             }
 
             ErrorProcedure own = FamilyVerdict.ProcedureOf(Standing.Campaign);
@@ -142,9 +142,7 @@ public sealed class RankingModel(DashboardModel model)
     }
 
     /// <summary>Experiments that survive under some corrections of the campaign's kind and not under others; null while that is reckoned.</summary>
-    public int? Hanging => Outcomes?.Result is { } outcomes
-        ? Enumerable.Range(0, Standing.TestedCount).Count(i => CorrectionsBeside.Hangs(outcomes, Standing.Campaign.ErrorRate, i))
-        : null;
+    public int? Hanging => Outcomes?.Result?.Hanging;
 
     /// <summary>Shows another family and selects its smallest p-value.</summary>
     /// <param name="step">1 for the next, -1 for the one before.</param>
@@ -193,18 +191,6 @@ public sealed class RankingModel(DashboardModel model)
     }
 
     private static string LetterAt(int place) => ((char)('a' + place)).ToString();
-
-    private static bool IsKnown(CampaignStanding standing)
-    {
-        try
-        {
-            return FamilyVerdict.ProcedureOf(standing.Campaign) is not null;
-        }
-        catch (RefusedException)
-        {
-            return false;
-        }
-    }
 
     private CorrectionRow Row(string key, ErrorProcedure procedure, bool isSealed, int? survivors)
     {

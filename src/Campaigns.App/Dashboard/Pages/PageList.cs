@@ -8,6 +8,7 @@ public static class PageList
     [
         ("Experiments", context => new ExperimentsPage(context)),
         ("Ranking", context => new RankingPage(context)),
+        ("Risk", context => new RiskPage(context)),
         ("Help", context => new HelpPage(context)),
     ];
 
