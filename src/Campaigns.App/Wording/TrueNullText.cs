@@ -6,7 +6,14 @@ namespace Campaigns.App.Wording;
 internal static class TrueNullText
 {
     /// <summary>What every estimate of it supposes, and what it is not.</summary>
-    public const string Supposes = "It supposes that true nulls spread their p-values evenly from 0 to 1, as independent tests do; it is an estimate, no bound, and not valid for strongly dependent p-values.";
+    public const string Supposes = "Supposes that true nulls spread p evenly, as independent tests do; an estimate, no bound.";
+
+    /// <summary>For example "Storey's estimate of their share (2002), 0.873 (lambda 0.5); others: 0.9 (bootstrap choice of lambda)"; null without an estimate.</summary>
+    /// <param name="share">The estimate that counts.</param>
+    /// <param name="others">Estimates by other methods.</param>
+    public static string? Brief(TrueNullShare share, IEnumerable<TrueNullShare> others) => share.Share is { } known
+        ? FormattableString.Invariant($"Storey's estimate of their share (2002), {known:0.###} ({share.Method}); others: {string.Join(", ", others.Select(Other))}")
+        : null;
 
     /// <summary>For example "an estimated share of true nulls of 0.873 (lambda 0.5) among the 40 tested; other estimates: ..."; null without an estimate.</summary>
     /// <param name="share">The estimate that counts.</param>

@@ -58,6 +58,9 @@ public sealed class RankingModel(DashboardModel model)
     /// <summary>Rank of the selected experiment in the family shown; 0 where it has none.</summary>
     public int Rank => Ranking.RankOf(model.SelectedPosition);
 
+    /// <summary>Whether the selected experiment is marked.</summary>
+    public bool IsSelectedMarked => model.Marks.Has(model.SelectedPosition);
+
     /// <summary>The level that is looked at; null while the sealed one is.</summary>
     public LevelExploration? Exploration
     {
@@ -74,7 +77,7 @@ public sealed class RankingModel(DashboardModel model)
     /// <summary>Why no other level can be looked at, in a sentence; null where one can.</summary>
     public string? WhyNoExploration =>
         Standing.TestedCount == 0 ? "Nothing is tested yet: no level would change anything."
-        : Ranking.IsOnline ? "An online campaign gave each experiment its level as it started; at another level it would have given others from the first one on, so none is looked at here."
+        : Ranking.IsOnline ? "Each experiment was given its level as it started; another level would have given others from the first on, so none is looked at."
         : CorrectionRegistry.Find(Standing.Campaign.Correction) is null ? $"This program knows no correction named {Standing.Campaign.Correction}: another level cannot be looked at."
         : null;
 

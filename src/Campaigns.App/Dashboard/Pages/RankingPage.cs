@@ -17,13 +17,14 @@ public sealed class RankingPage : DashboardPage
     /// <summary>See <see cref="TogetherWidth"/>.</summary>
     public const int TogetherHeight = 30;
 
-    private const int SideWidth = 50;
+    private const int SideWidth = 48;
     private const int LeastHistogram = 9;
-    private const int LeastCorrections = 17;
+    private const int LeastCorrections = 18;
     private const int MostFamilies = 7;
     private readonly RankingModel _ranking;
     private readonly CanvasView _above;
     private readonly CanvasView _plot;
+    private readonly CanvasView _onLevel;
     private readonly CanvasView _ruler;
     private readonly CanvasView _below;
     private readonly CanvasView _histogram;
@@ -33,7 +34,7 @@ public sealed class RankingPage : DashboardPage
     private readonly Awaiter _awaiter;
     private int _view;
     private bool _isNear;
-    private (bool, int, int) _arranged;
+    private (int Families, int View, bool IsLevelSaid) _arranged;
 
     /// <summary>Makes the page.</summary>
     /// <param name="context">What it shows, and with what.</param>
@@ -44,16 +45,17 @@ public sealed class RankingPage : DashboardPage
         _awaiter = new Awaiter(() => App, ShowChange);
         _above = Part((width, _) => RankingNotes.PaintAbove(_ranking, Procedure, width, Glyphs));
         _plot = Part(PaintPlot, takesKeys: true);
+        _onLevel = Part((width, _) => RankingNotes.PaintOnLevel(_ranking, width, Glyphs));
         _ruler = Part((width, _) => LevelRuler.Paint(_ranking, width, Glyphs));
         _below = Part((width, _) => RankingNotes.PaintBelow(_ranking, Model.Selected, width, Glyphs));
         _histogram = Part((width, height) => HistogramPainter.Paint(_ranking.Histogram, width, height, Glyphs), takesKeys: true);
         _corrections = Part(PaintCorrections, takesKeys: true);
         _families = Part((width, height) => FamiliesPainter.Paint(_ranking, width, height, Glyphs), takesKeys: true);
-        Add(_above, _plot, _ruler, _below, _histogram, _corrections, _families);
+        Add(_above, _plot, _onLevel, _ruler, _below, _histogram, _corrections, _families);
         _keys = KeysOf();
         _plot.Wheeled += Walk;
         _plot.Clicked += (x, _) => SelectRank(RankingPlot.RankAt(_ranking.Ranking, _isNear, _plot.Frame.Width, x));
-        _ruler.Clicked += (x, _) => LookAt(LevelRuler.LevelAt(_ranking.Ladder, _ruler.Frame.Width, x));
+        _ruler.Clicked += (x, _) => LookAt(LevelRuler.LevelAt(_ranking, _ruler.Frame.Width, x));
         _ruler.Wheeled += rows => MoveLevel(rows > 0 ? -1 : 1);
         _corrections.Clicked += (_, y) => TurnRow(y - CorrectionsPainter.HeaderRows);
         _families.Clicked += (_, y) => TurnFamily((FamiliesPainter.PlaceAt(_ranking, _families.Frame.Height, y) ?? _ranking.FamilyPlace) - _ranking.FamilyPlace);
@@ -99,6 +101,8 @@ public sealed class RankingPage : DashboardPage
     private int View => Math.Min(_view, ViewCount - 1);
 
     private string NextView => ((View + 1) % ViewCount) switch { 0 => "ranking", 1 => "bars", 2 => "corrections", _ => "families" };
+
+    private (int Families, int View, bool IsLevelSaid) State => (Model.Standing.Families.Count, View, _ranking.Exploration is not null || _ranking.WhyNoExploration is not null);
 
     private bool IsTogether => Frame.Width >= TogetherWidth && Frame.Height >= TogetherHeight;
 
@@ -183,7 +187,7 @@ public sealed class RankingPage : DashboardPage
     private void MoveLevel(int steps)
     {
         _ranking.MoveLevel(steps);
-        ShowChange();
+        ShowLevel();
     }
 
     private void LookAt(double? level)
@@ -191,7 +195,7 @@ public sealed class RankingPage : DashboardPage
         if (level is { } given)
         {
             _ranking.LookAt(given);
-            ShowChange();
+            ShowLevel();
         }
     }
 
@@ -250,29 +254,39 @@ public sealed class RankingPage : DashboardPage
     // Another campaign may have families where the last one had none.
     private void Follow()
     {
-        if (_arranged != (HasFamilies, Model.Standing.Families.Count, View))
+        if (_arranged != State)
         {
             Arrange();
         }
     }
 
+    // What a level changes is said in lines that the picture gives up.
+    private void ShowLevel()
+    {
+        Follow();
+        ShowAll();
+    }
+
     private void Arrange()
     {
-        _arranged = (HasFamilies, Model.Standing.Families.Count, View);
+        _arranged = State;
         int left = IsTogether ? Frame.Width - SideWidth - 1 : Frame.Width;
-        foreach (CanvasView part in new[] { _above, _plot, _ruler, _below })
+        foreach (CanvasView part in new[] { _above, _plot, _onLevel, _ruler, _below })
         {
             part.Visible = IsTogether || View == 0;
             part.Width = left;
         }
 
         _above.Height = RankingNotes.RowsAbove;
-        (_plot.Y, _plot.Height) = (RankingNotes.RowsAbove, Dim.Fill(RankingNotes.RowsBelow + 1));
-        (_ruler.Y, _ruler.Height) = (Pos.AnchorEnd(RankingNotes.RowsBelow + 1), 1);
+        const int Ruler = RankingNotes.RowsBelow + 1, Level = Ruler + RankingNotes.RowsOnLevel;
+        (_plot.Y, _plot.Height) = (RankingNotes.RowsAbove, Dim.Fill(State.IsLevelSaid ? Level : Ruler));
+        (_onLevel.Y, _onLevel.Height) = (Pos.AnchorEnd(Level), RankingNotes.RowsOnLevel);
+        _onLevel.Visible &= State.IsLevelSaid;
+        (_ruler.Y, _ruler.Height) = (Pos.AnchorEnd(Ruler), 1);
         (_below.Y, _below.Height) = (Pos.AnchorEnd(RankingNotes.RowsBelow), RankingNotes.RowsBelow);
         int families = HasFamilies ? Math.Min(MostFamilies, Model.Standing.Families.Count + FamiliesPainter.HeaderRows) : 0;
-        int corrections = Math.Max(LeastCorrections, (Frame.Height - families) / 2);
-        int histogram = Math.Max(LeastHistogram, Frame.Height - families - corrections);
+        int histogram = Math.Clamp(Frame.Height - families - LeastCorrections, LeastHistogram, Math.Max(LeastHistogram, Frame.Height / 2));
+        int corrections = Math.Max(0, Frame.Height - families - histogram);
         Place(_histogram, 1, 0, histogram);
         Place(_corrections, 2, histogram, corrections);
         Place(_families, 3, histogram + corrections, families);

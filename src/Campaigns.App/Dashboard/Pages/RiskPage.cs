@@ -12,7 +12,7 @@ public sealed class RiskPage : DashboardPage
 {
     private const int TogetherWidth = 110;
     private const int TogetherHeight = 30;
-    private const int SideWidth = 52;
+    private const int SideWidth = 60;
     private const int LeastBound = 17;
     private readonly RiskModel _risk;
     private readonly CanvasView _curve;
@@ -54,7 +54,7 @@ public sealed class RiskPage : DashboardPage
     public override IReadOnlyList<(string Key, string Does)> Keys =>
     [
         IsWords ? ("Up/Down", "scroll") : ("Left/Right", IsDecisions ? "decision" : "test"),
-        .. IsTogether ? Array.Empty<(string, string)>() : [("n", NextView)],
+        IsTogether ? ("Up/Down", "words") : ("n", NextView),
         ("m", "mark"), ("Shift+m", "survivors"), ("z", _isNear ? "all" : "near"), ("Enter", "experiment"), ("F1", "help"), ("q", "quit"), TurnKeys,
     ];
 
@@ -91,7 +91,8 @@ public sealed class RiskPage : DashboardPage
     /// <inheritdoc/>
     protected override bool OnKeyDown(Key key)
     {
-        if (IsWords && _scroll.Obey(key))
+        bool isScroll = IsWords || (IsTogether && (key == Key.CursorUp || key == Key.CursorDown));
+        if (isScroll && _scroll.Obey(key))
         {
             ShowChange();
             return true;

@@ -37,7 +37,7 @@ public static class BoundPainter
 
         IReadOnlyList<string> notes = CellText.Wrap(Notes(marks, glyphs), Math.Max(20, width - 2));
         int rows = height - 5 - notes.Count;
-        rows = Math.Min(Math.Max(rows, LeastRows + 3), height - 5);
+        rows = Math.Min(Math.Max(rows, LeastRows + 2), height - 5);
         if (width < Narrowest || rows < LeastRows)
         {
             canvas.Write(1, 2, "too small to draw", Ink.Quiet);
@@ -110,5 +110,5 @@ public static class BoundPainter
     }
 
     private static string Notes(Marks marks, GlyphSet glyphs) =>
-        $"{glyphs.Survivor}{glyphs.Other} the k smallest p-values, {glyphs.Marked} the marked. Closed testing with Simes' tests. {BoundWording.Simultaneous(marks.Bounds)} {BoundWording.SimesAlone} {BoundWording.NoEstimate}";
+        $"{glyphs.Survivor}{glyphs.Other} the k smallest p-values, {glyphs.Marked} the marked. {BoundWording.Brief(marks.Bounds)} {BoundWording.SimesAlone} {BoundWording.NoEstimate}";
 }

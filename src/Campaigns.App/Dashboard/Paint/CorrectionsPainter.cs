@@ -31,7 +31,7 @@ public static class CorrectionsPainter
         ArgumentNullException.ThrowIfNull(glyphs);
         TextCanvas canvas = new(width, height);
         IReadOnlyList<CorrectionRow> rows = model.Rows;
-        canvas.Write(1, 0, CellText.Fit("survivors under every correction, at the sealed level", width - 1, glyphs.Cut), Ink.Heading);
+        canvas.Write(1, 0, CellText.Fit("under every correction (c points, b draws)", width - 1, glyphs.Cut), Ink.Heading);
         if (rows.Count == 0)
         {
             canvas.Write(1, 1, CellText.Fit($"This program knows no correction named {model.Standing.Campaign.Correction}.", width - 1, glyphs.Cut), Ink.Warning);
@@ -71,7 +71,8 @@ public static class CorrectionsPainter
         CampaignStanding standing = model.Standing;
         string hanging = model.Hanging is { } count ? CorrectionsText.Hanging(count, CampaignText.RateWords(standing.Campaign.ErrorRate)) + ". " : "The others are reckoned in a moment. ";
         string families = standing.Families.Count > 1 ? "Over all families, each at its level and behind its gate. " : "";
-        return $"{hanging}{families}{CorrectionsText.NeverToChoose} A letter is the sign of its boundary, {glyphs.Marked} behind it: drawn (c and Shift+c point, b draws or not, or click).";
+        ErrorProcedure pointed = model.Rows[model.Pointed].Procedure;
+        return $"{pointed.Name}: under {CorrectionsText.Under(pointed.ValidUnder)}. {CorrectionsText.NeverToChoose} {hanging}{families}All at the sealed level. A letter is the sign of a boundary, {glyphs.Marked} behind it: drawn.";
     }
 
     private static void Notes(TextCanvas canvas, string text, int y, int width, int height, GlyphSet glyphs)

@@ -12,9 +12,9 @@ public static class DecisionsPainter
     /// <summary>Rows above the first decision.</summary>
     public const int HeaderRows = 2;
 
-    private const int PlaceEnd = 8;
-    private const int CodeColumn = 10;
-    private const int LevelWidth = 11;
+    private const int PlaceEnd = 5;
+    private const int CodeColumn = 7;
+    private const int LevelWidth = 10;
     private const int PWidth = 11;
     private const int VerdictWidth = 14;
     private const int ShortestCode = 6;

@@ -9,7 +9,7 @@ namespace Campaigns.App.Dashboard.Paint;
 /// <summary>The p-values of a campaign in bars, with the height that true nulls alone would give them.</summary>
 public static class HistogramPainter
 {
-    private const int Left = 8;
+    private const int Left = 7;
     private const int LeastRows = 3;
 
     /// <summary>Paints the bars, and below them what the line is and what the estimate rests on.</summary>
@@ -77,7 +77,15 @@ public static class HistogramPainter
         if (histogram.ExpectedNulls is { } expected)
         {
             int y = Math.Clamp(rows - (int)Math.Round(expected * rows / highest) + 1, 1, rows);
-            canvas.Repeat(Left, y, PHistogram.Bars * cell, glyphs.Across, Ink.Boundary);
+            for (int x = Left; x < Left + (PHistogram.Bars * cell); x++)
+            {
+                // Bars are higher or lower than the line: both are seen.
+                if (canvas.SignAt(x, y) == " ")
+                {
+                    canvas.Put(x, y, glyphs.Explored, Ink.Boundary);
+                }
+            }
+
             canvas.Put(Left - 1, y, glyphs.TickLeft, Ink.Boundary);
             if (y > 1)
             {
@@ -95,8 +103,8 @@ public static class HistogramPainter
 
     private static string Notes(PHistogram histogram, GlyphSet glyphs)
     {
-        string first = TrueNullText.Share(histogram.TrueNulls, histogram.Others, histogram.Tested) is { } share && histogram.ExpectedNulls is { } expected
-            ? $"{glyphs.Across}{glyphs.Across} {NumberText.Screen(expected, 3)} a bar: what true nulls alone would give, by {share}. {TrueNullText.Supposes}"
+        string first = TrueNullText.Brief(histogram.TrueNulls, histogram.Others) is { } share && histogram.ExpectedNulls is { } expected
+            ? $"{glyphs.Explored}{glyphs.Explored} {NumberText.Screen(expected, 3)} a bar: true nulls alone, by {share}. {TrueNullText.Supposes}"
             : histogram.TrueNulls.Reason ?? "";
         return TrueNullText.Few(histogram.Tested) is { } few ? few + " " + first : first;
     }

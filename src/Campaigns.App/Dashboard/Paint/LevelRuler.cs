@@ -33,22 +33,25 @@ public static class LevelRuler
         }
         else if (model.WhyNoExploration is null)
         {
-            text += "  (+ - look at another)";
+            text += "  (+ - another)";
         }
 
         canvas.Write(Start + cells + 1, 0, CellText.Fit(text, width - Start - cells - 1, glyphs.Cut), model.Exploration is null ? Ink.Quiet : Ink.Heading);
         return canvas;
     }
 
-    /// <summary>The level at a column; null beside the axis.</summary>
-    /// <param name="ladder">The levels.</param>
+    /// <summary>The level at a column, the sealed one at its own; null beside the axis.</summary>
+    /// <param name="model">As it was painted.</param>
     /// <param name="width">As it was painted.</param>
     /// <param name="x">Column from 0.</param>
-    public static double? LevelAt(LevelLadder ladder, int width, int x)
+    public static double? LevelAt(RankingModel model, int width, int x)
     {
-        ArgumentNullException.ThrowIfNull(ladder);
+        ArgumentNullException.ThrowIfNull(model);
+        LevelLadder ladder = model.Ladder;
+        double level = model.Standing.Campaign.Level.Value;
         int cells = CellsOf(width), place = x - Start;
         return place < 0 || place >= cells ? null
+            : place == PlaceOf(ladder, level, cells) ? level
             : ladder.Nearest(ladder.Lowest * Math.Pow(ladder.Highest / ladder.Lowest, (double)place / (cells - 1)));
     }
 

@@ -111,9 +111,16 @@ public sealed class RankingPlot
         ArgumentNullException.ThrowIfNull(ranking);
         ArgumentNullException.ThrowIfNull(glyphs);
         List<string> parts = [glyphs.Survivor + " survives", glyphs.Other + " does not"];
-        if (overlay?.Explored is not null || overlay?.Gained.Count > 0 || overlay?.Lost.Count > 0)
+        bool isExplored = overlay?.Explored is not null || overlay?.Gained.Count > 0 || overlay?.Lost.Count > 0;
+        if (isExplored)
         {
             parts.Add($"{glyphs.Gained} gained  {glyphs.Lost} lost");
+        }
+
+        parts.Add(glyphs.Boundary + (ranking.IsOnline ? " level given" : ranking.HasBoundary ? " boundary" : " largest survivor"));
+        if (overlay?.Explored is not null)
+        {
+            parts.Add(glyphs.Explored + " explored");
         }
 
         if (ranking.FamilySize > ranking.Count)
@@ -121,13 +128,7 @@ public sealed class RankingPlot
             parts.Add(glyphs.Open + " no result (p = 1)");
         }
 
-        parts.Add(glyphs.BelowScale + " off the scale");
-        parts.Add(glyphs.Boundary + (ranking.IsOnline ? " level given" : ranking.HasBoundary ? " boundary" : " largest survivor"));
-        if (overlay?.Explored is not null)
-        {
-            parts.Add(glyphs.Explored + " explored");
-        }
-
+        parts.Add(glyphs.BelowScale + " lower");
         return string.Join("  ", parts);
     }
 

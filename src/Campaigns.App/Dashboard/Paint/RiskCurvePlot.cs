@@ -9,13 +9,11 @@ namespace Campaigns.App.Dashboard.Paint;
 /// <summary>The risk of at least one false positive over the order of testing: without correction between its bounds, and with it.</summary>
 public static class RiskCurvePlot
 {
-    /// <summary>Rows below the picture: what the signs mean, and two on the test pointed at.</summary>
-    public const int NoteRows = 4;
-
     private const int Left = 6;
     private const int Narrowest = 30;
     private const int Lowest = 6;
     private const int LegendRows = 2;
+    private const int RoomyWidth = 70;
 
     /// <summary>Paints the picture and its notes.</summary>
     /// <param name="points">The risk test by test; null while it is reckoned.</param>
@@ -27,10 +25,11 @@ public static class RiskCurvePlot
     {
         ArgumentNullException.ThrowIfNull(glyphs);
         TextCanvas canvas = new(width, height);
-        canvas.Write(1, 0, CellText.Fit("risk of at least one false positive in per cent, if nothing is real, over the order of testing", width - 1, glyphs.Cut), Ink.Heading);
+        canvas.Write(1, 0, CellText.Fit("risk of a false positive in %, if nothing is real", width - 1, glyphs.Cut), Ink.Heading);
+        int pointedRows = width < RoomyWidth ? 3 : 2;
         string? words = points is null ? "The risk test by test is reckoned; it takes a moment."
             : points.Count == 0 ? "Nothing is tested yet: nothing is risked."
-            : width < Narrowest || height < Lowest + NoteRows + 1 ? "too small to draw"
+            : width < Narrowest || height < Lowest + LegendRows + pointedRows + 1 ? "too small to draw"
             : null;
         if (words is not null)
         {
@@ -38,7 +37,7 @@ public static class RiskCurvePlot
             return canvas;
         }
 
-        int rows = height - NoteRows - 3, columns = width - Left - 1;
+        int rows = height - LegendRows - pointedRows - 3, columns = width - Left - 1;
         Axes(canvas, points!.Count, test, rows, columns, glyphs);
         Curves(canvas, points, rows, columns, glyphs);
         IReadOnlyList<string> legend = CellText.Wrap(Legend(points, glyphs), width - 2);
@@ -48,9 +47,10 @@ public static class RiskCurvePlot
         }
 
         IReadOnlyList<string> pointed = test == 0 ? ["The selected experiment has no result; Right goes to the first test."] : CellText.Wrap(PointText(points[test - 1], points.Count), width - 2);
-        for (int i = 0; i < Math.Min(2, pointed.Count); i++)
+        for (int i = 0; i < Math.Min(pointedRows, pointed.Count); i++)
         {
-            canvas.Write(1, rows + 3 + LegendRows + i, i == 1 && pointed.Count > 2 ? CellText.Fit(pointed[1] + " " + pointed[2], width - 2, glyphs.Cut) : pointed[i], Ink.Heading);
+            bool isCut = i == pointedRows - 1 && pointed.Count > pointedRows;
+            canvas.Write(1, rows + 3 + LegendRows + i, isCut ? CellText.Fit(pointed[i] + " " + pointed[i + 1], width - 2, glyphs.Cut) : pointed[i], Ink.Heading);
         }
 
         return canvas;
@@ -73,9 +73,9 @@ public static class RiskCurvePlot
     public static string PointText(RiskPoint point, int tests)
     {
         ArgumentNullException.ThrowIfNull(point);
-        string corrected = point.Corrected is { } c ? $"; with the correction {(c.IsExact ? "" : "at most ")}{Words.Percent(c.AtLeastOne)}" : "";
+        string corrected = point.Corrected is { } c ? $", corrected {(c.IsExact ? "" : "at most ")}{Words.Percent(c.AtLeastOne)}" : "";
         return string.Create(CultureInfo.InvariantCulture,
-            $"Test {point.Tests} of {tests}, {point.Experiment.Plan.Code} (p {NumberText.P(point.Experiment.P!.Value)}): risk {Words.Percent(point.Independent)}{corrected}; {NumberText.Screen(point.ExpectedFalse, 3)} false to expect without it; so far {point.Hits} hits, of which {point.Survivors} survive");
+            $"Test {point.Tests} of {tests}, {point.Experiment.Plan.Code} (p {NumberText.P(point.Experiment.P!.Value)}): risk {Words.Percent(point.Independent)}{corrected}; {NumberText.Screen(point.ExpectedFalse, 3)} false to expect; {point.Hits} {(point.Hits == 1 ? "hit" : "hits")} so far, {point.Survivors} {(point.Survivors == 1 ? "survives" : "survive")}");
     }
 
     private static void Axes(TextCanvas canvas, int tests, int test, int rows, int columns, GlyphSet glyphs)
@@ -128,8 +128,8 @@ public static class RiskCurvePlot
     }
 
     private static string Legend(IReadOnlyList<RiskPoint> points, GlyphSet glyphs) =>
-        $"{glyphs.Mean} without correction, independent tests  {glyphs.Explored} its bounds whatever the dependence"
-        + (points[^1].Corrected is { } corrected ? $"  {glyphs.Survivor} with the correction, {(corrected.IsExact ? "exactly" : "at most")}" : "  (with corrections in several families or streams: no one figure)");
+        $"{glyphs.Mean} without correction (independent tests)  {glyphs.Explored} its bounds (any dependence)"
+        + (points[^1].Corrected is { } corrected ? $"  {glyphs.Survivor} with the correction, {(corrected.IsExact ? "exactly" : "at most")}" : "  (corrected in several families or streams: no one figure)");
 
     private static int ColumnOf(int test, int tests, int columns) => Left + (tests == 1 ? 0 : (int)Math.Round((test - 1.0) * (columns - 1) / (tests - 1)));
 
