@@ -47,7 +47,8 @@ internal sealed class CorrectionsVerb : Verb
         return ExitCode.Done;
     }
 
-    private static RowTable ByCorrection(CampaignStanding standing)
+    /// <summary>A row a correction.</summary>
+    public static RowTable ByCorrection(CampaignStanding standing)
     {
         IReadOnlyList<CorrectionOutcome> outcomes = CorrectionsBeside.Of(standing);
         int hanging = HangingPlaces(standing, outcomes).Count();
@@ -72,7 +73,10 @@ internal sealed class CorrectionsVerb : Verb
         };
     }
 
-    private static RowTable ByExperiment(CampaignStanding standing, bool hangingOnly)
+    /// <summary>A row an experiment with its adjusted p under every correction.</summary>
+    /// <param name="standing">The campaign.</param>
+    /// <param name="hangingOnly">Whether only those are wanted that hang on the choice.</param>
+    public static RowTable ByExperiment(CampaignStanding standing, bool hangingOnly)
     {
         IReadOnlyList<CorrectionOutcome> outcomes = CorrectionsBeside.Of(standing);
         ErrorRate rate = standing.Campaign.ErrorRate;

@@ -11,7 +11,7 @@ internal static class CorrectionsText
     /// <summary>What hangs on the choice, without its full stop.</summary>
     /// <param name="hanging">Experiments that survive under some corrections of the kind and not under others.</param>
     /// <param name="rate">The kind, in words.</param>
-    public static string Hanging(int hanging, string rate) => FormattableString.Invariant($"Hanging on the choice among those that hold the {rate}: {hanging} experiment(s)");
+    public static string Hanging(int hanging, string rate) => $"Hanging on the choice among those that hold the {rate}: {Counted.Of(hanging, "experiment")}";
 
     /// <summary>Under what dependence a procedure is proved, in a phrase.</summary>
     /// <param name="dependence">The condition.</param>

@@ -2,6 +2,7 @@ using System.Globalization;
 using Campaigns.App.Commands;
 using Campaigns.App.Dashboard.Canvas;
 using Campaigns.App.Output;
+using Campaigns.App.Wording;
 using Campaigns.Domain;
 
 namespace Campaigns.App.Dashboard.Paint;
@@ -75,7 +76,7 @@ public static class RiskCurvePlot
         ArgumentNullException.ThrowIfNull(point);
         string corrected = point.Corrected is { } c ? $", corrected {(c.IsExact ? "" : "at most ")}{Words.Percent(c.AtLeastOne)}" : "";
         return string.Create(CultureInfo.InvariantCulture,
-            $"Test {point.Tests} of {tests}, {point.Experiment.Plan.Code} (p {NumberText.P(point.Experiment.P!.Value)}): risk {Words.Percent(point.Independent)}{corrected}; {NumberText.Screen(point.ExpectedFalse, 3)} false to expect; {point.Hits} {(point.Hits == 1 ? "hit" : "hits")} so far, {point.Survivors} {(point.Survivors == 1 ? "survives" : "survive")}");
+            $"Test {point.Tests} of {tests}, {point.Experiment.Plan.Code} (p {NumberText.P(point.Experiment.P!.Value)}): risk {Words.Percent(point.Independent)}{corrected}; {NumberText.Screen(point.ExpectedFalse, 3)} false to expect; {Counted.Of(point.Hits, "hit")} so far, {point.Survivors} {(point.Survivors == 1 ? "survives" : "survive")}");
     }
 
     private static void Axes(TextCanvas canvas, int tests, int test, int rows, int columns, GlyphSet glyphs)

@@ -30,10 +30,9 @@ public static class RiskWordsPainter
     {
         CampaignOverview overview = risk.Overview;
         IReadOnlyList<string> cumulative = RiskTable.Sentences(overview);
-        string numbers = RiskTable.Numbers(risk);
         return
         [
-            .. cumulative, .. numbers.Length > 0 ? [numbers.Trim()] : (string[])[],
+            .. cumulative, .. RiskTable.MayBeFalse(risk),
             .. overview.TestedCount > 0 ? [RiskTable.CorrectedMeans(risk.Corrected is { } corrected ? [corrected] : [])] : (string[])[],
             .. FamilyVerdict.ProcedureOf(standing.Campaign) is OnlineProcedure procedure ? Online(standing, procedure) : [],
             .. CampaignText.Deviations(overview),

@@ -27,6 +27,7 @@ public sealed class DashboardWindow : Runnable
     public DashboardWindow(DashboardModel model, GlyphSet glyphs, Theme theme)
     {
         _model = model;
+        _shown = _before = model.Page;
         PageContext context = new(model, glyphs, theme);
         _pages = [.. PageList.All.Select(page => page.Make(context))];
         _names = new PageStrip([.. PageList.All.Select(p => p.Name)]);

@@ -1,0 +1,7 @@
+using Campaigns.App.Figures;
+
+namespace Campaigns.App.Report.Document;
+
+/// <summary>A figure; where it has no picture, its words stand in its place.</summary>
+/// <param name="Figure">The figure.</param>
+internal sealed record FigureBlock(Figure Figure) : Block;
