@@ -30,10 +30,14 @@ public sealed class CatalogSource(Catalog.Catalog catalog) : IDashboardSource
     public ExperimentDetail Detail(CampaignStanding standing, string experiment) => _details.Read(standing, experiment);
 
     /// <inheritdoc/>
-    public IReadOnlyList<RiskPoint> RiskCurve(CampaignStanding standing)
+    public IReadOnlyList<RiskPoint> RiskCurve(CampaignStanding standing) => ReadRiskCurve(standing)();
+
+    /// <inheritdoc/>
+    public Func<IReadOnlyList<RiskPoint>> ReadRiskCurve(CampaignStanding standing)
     {
         ArgumentNullException.ThrowIfNull(standing);
-        return Domain.RiskCurve.Of(standing, new TestOrderReader(catalog).LatestRuns(standing.Campaign.Code));
+        IReadOnlyDictionary<string, long> runs = new TestOrderReader(catalog).LatestRuns(standing.Campaign.Code);
+        return () => Domain.RiskCurve.Of(standing, runs);
     }
 
     /// <inheritdoc/>

@@ -29,6 +29,14 @@ public interface IDashboardSource
     /// <param name="standing">The campaign.</param>
     IReadOnlyList<RiskPoint> RiskCurve(CampaignStanding standing);
 
+    /// <summary>The same in two steps, for large campaigns: what is read is read now, and what comes back reckons the points, on any thread.</summary>
+    /// <param name="standing">The campaign.</param>
+    Func<IReadOnlyList<RiskPoint>> ReadRiskCurve(CampaignStanding standing)
+    {
+        IReadOnlyList<RiskPoint> points = RiskCurve(standing);
+        return () => points;
+    }
+
     /// <summary>The reviews of a campaign with what stood behind each, oldest first.</summary>
     /// <param name="campaign">Its code.</param>
     IReadOnlyList<ReviewRecord> Reviews(string campaign);

@@ -15,6 +15,9 @@ internal static class OnlineText
     /// <summary>What streams in a row hold together.</summary>
     private const string SeveralStreams = "Each stream's guarantee holds for its own experiments; they do not add up to one for all.";
 
+    /// <summary>What it means that an experiment overlaps.</summary>
+    public const string Overlaps = "Overlaps: ran at the same time as another experiment of its stream; what was not known at its start was counted as the worst.";
+
     /// <summary>The settings of a stream in one phrase, for example "shape jm over 40 experiments, initial wealth 0.025".</summary>
     public static string Of(OnlineSettings settings)
     {

@@ -9,6 +9,7 @@ public static class PageList
         ("Programme", context => new ProgrammePage(context)),
         ("Experiments", context => new ExperimentsPage(context)),
         ("Ranking", context => new RankingPage(context)),
+        ("Risk", context => new RiskPage(context)),
         ("Reviews", context => new ReviewsPage(context)),
         ("Ledger", context => new LedgerPage(context)),
         ("Help", context => new HelpPage(context)),
