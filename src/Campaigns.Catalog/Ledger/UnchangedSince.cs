@@ -1,5 +1,4 @@
 using Campaigns.Catalog.Providers;
-using Campaigns.Domain;
 
 namespace Campaigns.Catalog.Ledger;
 
@@ -23,13 +22,13 @@ internal static class UnchangedSince
     /// <param name="catalog">The open catalog, in a transaction.</param>
     /// <param name="seen">The head that was seen.</param>
     /// <param name="campaign">The campaign that is about to be changed; null for the whole catalog.</param>
-    /// <exception cref="RefusedException">Something was done to the campaign since; the details say what.</exception>
+    /// <exception cref="ChangedMeanwhileException">Something was done to the campaign since; the details say what.</exception>
     public static void Demand(Catalog catalog, LedgerHead seen, string? campaign)
     {
         List<string> since = Since(catalog, seen, campaign);
         if (since.Count > 0)
         {
-            throw new RefusedException(
+            throw new ChangedMeanwhileException(
                 FormattableString.Invariant($"The campaign '{campaign}' was changed since the head that you gave (entry {seen.Sequence}); nothing was changed now. Below stands what was done since; if you still want your change, repeat the command with --head {LedgerWriter.Last(catalog).Head}."),
                 since);
         }
