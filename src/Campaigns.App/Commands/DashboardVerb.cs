@@ -19,7 +19,7 @@ internal sealed class DashboardVerb : Verb
     {
         using Catalog.Catalog catalog = session.OpenCatalog();
         string code = session.Typed.GetValue(_code) ?? OnlyCampaign(catalog);
-        return DashboardProgram.Run(new CatalogSource(catalog), code, session.Get(_ascii));
+        return DashboardProgram.Run(new CatalogSource(catalog), code, session.Get(_ascii), session.Desk);
     }
 
     private static string OnlyCampaign(Catalog.Catalog catalog)

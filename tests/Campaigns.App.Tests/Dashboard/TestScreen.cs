@@ -1,6 +1,9 @@
 using System.Drawing;
+using System.Runtime.ExceptionServices;
 using Campaigns.App.Dashboard;
+using Campaigns.App.Dashboard.Actions;
 using Campaigns.App.Dashboard.Canvas;
+using Campaigns.App.Dashboard.Dialogs;
 using Campaigns.App.Dashboard.Model;
 using Campaigns.App.Dashboard.Pages;
 using Campaigns.App.Dashboard.Screen;
@@ -28,7 +31,7 @@ internal sealed class TestScreen : IDisposable
     {
     }
 
-    public TestScreen(int width, int height, IDashboardSource source, bool ascii = false, bool colour = true)
+    public TestScreen(int width, int height, IDashboardSource source, bool ascii = false, bool colour = true, ActionDesk? desk = null)
     {
         Theme theme = Theme.For(name => name == "NO_COLOR" && !colour ? "1" : null);
         theme.Apply();
@@ -36,7 +39,7 @@ internal sealed class TestScreen : IDisposable
         _app.Init(DriverRegistry.Names.ANSI);
         _app.Driver!.SetScreenSize(width, height);
         Model = new DashboardModel(source, source.Campaigns()[0].Campaign.Code, SampleCampaign.Find);
-        _window = new DashboardWindow(Model, ascii ? GlyphSet.Ascii : GlyphSet.Full, theme);
+        _window = new DashboardWindow(Model, ascii ? GlyphSet.Ascii : GlyphSet.Full, theme, desk);
         _session = _app.Begin(_window)!;
         _app.LayoutAndDraw();
     }
@@ -101,6 +104,55 @@ internal sealed class TestScreen : IDisposable
     public TestScreen Resize(int width, int height)
     {
         _app.Driver!.SetScreenSize(width, height);
+        _app.LayoutAndDraw();
+        return this;
+    }
+
+    /// <summary>Presses a key that opens a dialog, and goes through a script while it stands: a step each time round the loop.</summary>
+    /// <param name="opens">The key.</param>
+    /// <param name="script">What is done and looked at; the dialog is closed at its end, where it still stands.</param>
+    public TestScreen InDialog(Key opens, IEnumerable<int> script)
+    {
+        using IEnumerator<int> steps = script.GetEnumerator();
+        Exception? failed = null;
+        long end = Environment.TickCount64 + 30_000;
+        void Step(object? sender, EventArgs<IApplication?> e)
+        {
+            try
+            {
+                if (_app.TopRunnable is not PopUp || (steps.MoveNext() && Environment.TickCount64 < end))
+                {
+                    return;
+                }
+
+                Assert.True(Environment.TickCount64 < end, "The script did not come to its end in 30 s:\n" + Text);
+            }
+#pragma warning disable CA1031 // An exception here would leave the loop with the dialog open; it is thrown below.
+            catch (Exception error)
+            {
+                failed ??= error;
+            }
+#pragma warning restore CA1031
+            _app.RequestStop(_app.TopRunnable!);
+        }
+
+        _app.Iteration += Step;
+        Application.MaximumIterationsPerSecond = 1000;
+        try
+        {
+            _app.InjectKey(opens);
+        }
+        finally
+        {
+            _app.Iteration -= Step;
+            Application.MaximumIterationsPerSecond = Application.DefaultMaximumIterationsPerSecond;
+        }
+
+        if (failed is not null)
+        {
+            ExceptionDispatchInfo.Throw(failed);
+        }
+
         _app.LayoutAndDraw();
         return this;
     }

@@ -22,7 +22,7 @@ public sealed class UnchangedSinceTests : IDisposable
         Decide(_catalog.Catalog, 3, "Ada");
         string before = _catalog.Dump;
         using Catalog second = Open(seen);
-        RefusedException refused = Assert.Throws<RefusedException>(() => Decide(second, 4, "Ben"));
+        ChangedMeanwhileException refused = Assert.Throws<ChangedMeanwhileException>(() => Decide(second, 4, "Ben"));
         Assert.Equal(before, _catalog.Dump);
         string detail = Assert.Single(refused.Details);
         Assert.StartsWith("entry 10, 2026-12-01T08:00:00.000000Z, ", detail, StringComparison.Ordinal);
@@ -37,7 +37,7 @@ public sealed class UnchangedSinceTests : IDisposable
         Decide(second, 3, "Ben");
         Decide(second, 4, "Ben");
         Decide(_catalog.Catalog, 5, "Ada");
-        Assert.Throws<RefusedException>(() => Decide(second, 6, "Ben"));
+        Assert.Throws<ChangedMeanwhileException>(() => Decide(second, 6, "Ben"));
     }
 
     [Fact]

@@ -16,7 +16,7 @@ internal static class DecisionPreview
             : FormattableString.Invariant($"The family has {before.FamilySize} {Hypotheses(before.FamilySize)} now, and will have {after.FamilySize}.");
         if (after.Withdrawn.CountAsOne != before.Withdrawn.CountAsOne)
         {
-            yield return FormattableString.Invariant($"Withdrawn with data, so that they stay in it and count with p = 1: {before.Withdrawn.CountAsOne} now, {after.Withdrawn.CountAsOne} then.");
+            yield return FormattableString.Invariant($"Experiments withdrawn with data, which stay in the family and count with p = 1: {before.Withdrawn.CountAsOne} now, {after.Withdrawn.CountAsOne} then.");
         }
 
         if (after.AwaitingNewTest > before.AwaitingNewTest)
