@@ -8,6 +8,7 @@ using Campaigns.App.Dashboard.Model;
 using Campaigns.App.Dashboard.Pages;
 using Campaigns.App.Dashboard.Screen;
 using Campaigns.Domain;
+using Campaigns.Statistics.Corrections;
 using Terminal.Gui.App;
 using Terminal.Gui.Drawing;
 using Terminal.Gui.Drivers;
@@ -38,7 +39,7 @@ internal sealed class TestScreen : IDisposable
         _app = Application.Create(_time);
         _app.Init(DriverRegistry.Names.ANSI);
         _app.Driver!.SetScreenSize(width, height);
-        Model = new DashboardModel(source, source.Campaigns()[0].Campaign.Code, SampleCampaign.Find);
+        Model = new DashboardModel(source, source.Campaigns()[0].Campaign.Code, key => (ErrorProcedure?)SampleCampaign.Find(key) ?? CorrectionRegistry.Find(key));
         _window = new DashboardWindow(Model, ascii ? GlyphSet.Ascii : GlyphSet.Full, theme, desk);
         _session = _app.Begin(_window)!;
         _app.LayoutAndDraw();
@@ -111,11 +112,24 @@ internal sealed class TestScreen : IDisposable
     /// <summary>Presses a key that opens a dialog, and goes through a script while it stands: a step each time round the loop.</summary>
     /// <param name="opens">The key.</param>
     /// <param name="script">What is done and looked at; the dialog is closed at its end, where it still stands.</param>
-    public TestScreen InDialog(Key opens, IEnumerable<int> script)
+    public TestScreen InDialog(Key opens, IEnumerable<int> script) => InDialog(() => _app.InjectKey(opens), script);
+
+    /// <summary>Goes through a script while the dialog of an action stands.</summary>
+    /// <param name="run">The action.</param>
+    /// <param name="script">What is done and looked at.</param>
+    public TestScreen InDialog(ActionRun run, IEnumerable<int> script) => InDialog(
+        () =>
+        {
+            using ActionDialog dialog = new(run, GlyphSet.Full, Theme.For(_ => null));
+            _app.Run(dialog);
+        },
+        script);
+
+    private TestScreen InDialog(Action open, IEnumerable<int> script)
     {
         using IEnumerator<int> steps = script.GetEnumerator();
         Exception? failed = null;
-        long end = Environment.TickCount64 + 30_000;
+        long end = Environment.TickCount64 + 15_000;
         void Step(object? sender, EventArgs<IApplication?> e)
         {
             try
@@ -125,7 +139,7 @@ internal sealed class TestScreen : IDisposable
                     return;
                 }
 
-                Assert.True(Environment.TickCount64 < end, "The script did not come to its end in 30 s:\n" + Text);
+                Assert.True(Environment.TickCount64 < end, "The script did not come to its end in 15 s:\n" + Text);
             }
 #pragma warning disable CA1031 // An exception here would leave the loop with the dialog open; it is thrown below.
             catch (Exception error)
@@ -140,7 +154,7 @@ internal sealed class TestScreen : IDisposable
         Application.MaximumIterationsPerSecond = 1000;
         try
         {
-            _app.InjectKey(opens);
+            open();
         }
         finally
         {
