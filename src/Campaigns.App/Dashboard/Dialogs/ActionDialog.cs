@@ -41,9 +41,6 @@ internal sealed class ActionDialog : PopUp
         _field = Math.Max(0, run.Fields.ToList().FindIndex(f => f.Words.Count == 0 && f.Text.Length == 0));
     }
 
-    /// <summary>Whether the whole dashboard is to be left.</summary>
-    public bool IsLeaving { get; private set; }
-
     /// <inheritdoc/>
     protected override string Heading => _run.Action.Name;
 
@@ -128,14 +125,9 @@ internal sealed class ActionDialog : PopUp
     }
 
     /// <inheritdoc/>
-    protected override bool OnKeyDown(Key key)
+    protected override void Obey(Key key)
     {
-        if (key == Key.Q.WithCtrl)
-        {
-            IsLeaving = true;
-            App?.RequestStop(this);
-        }
-        else if (key == Key.Esc ? _run.Back() : key == Key.Enter && _run.Next())
+        if (key == Key.Esc ? _run.Back() : key == Key.Enter && _run.Next())
         {
             App?.RequestStop(this);
         }
@@ -149,7 +141,6 @@ internal sealed class ActionDialog : PopUp
         }
 
         Show();
-        return true;
     }
 
     private IEnumerable<(string Key, string Does, Key Pressed)> FieldKeys()

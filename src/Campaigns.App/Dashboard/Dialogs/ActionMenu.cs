@@ -47,7 +47,7 @@ internal sealed class ActionMenu : PopUp
     }
 
     /// <inheritdoc/>
-    protected override bool OnKeyDown(Key key)
+    protected override void Obey(Key key)
     {
         int last = ActionList.All.Count - 1;
         if (key == Key.Esc)
@@ -69,8 +69,6 @@ internal sealed class ActionMenu : PopUp
             _scroll.Reveal(top, bottom);
             Redraw();
         }
-
-        return true;
     }
 
     private void Choose(DashboardAction action)

@@ -35,6 +35,9 @@ internal abstract class PopUp : Runnable
         Add(Whole);
     }
 
+    /// <summary>Whether the whole dashboard is to be left.</summary>
+    public bool IsLeaving { get; private set; }
+
     /// <summary>Its name.</summary>
     protected abstract string Heading { get; }
 
@@ -55,6 +58,26 @@ internal abstract class PopUp : Runnable
     protected int BodyWidth => Math.Max(1, Frame.Width - (2 * Edge));
 
     private System.Drawing.Rectangle Room => App?.Screen ?? new System.Drawing.Rectangle(0, 0, 80, 24);
+
+    /// <inheritdoc/>
+    protected sealed override bool OnKeyDown(Key key)
+    {
+        if (key == Key.Q.WithCtrl)
+        {
+            IsLeaving = true;
+            App?.RequestStop(this);
+        }
+        else
+        {
+            Obey(key);
+        }
+
+        return true;
+    }
+
+    /// <summary>Obeys a key that no field took.</summary>
+    /// <param name="key">The key.</param>
+    protected abstract void Obey(Key key);
 
     /// <summary>Paints the body.</summary>
     /// <param name="width">Cells across.</param>

@@ -139,7 +139,7 @@ public sealed class DashboardWindow : Runnable
     private void ChooseAction()
     {
         using ActionMenu menu = new(_glyphs, _theme);
-        App!.Run(menu);
+        Show(menu);
         if (menu.Chosen is { } action)
         {
             Begin(action);
@@ -150,8 +150,13 @@ public sealed class DashboardWindow : Runnable
     {
         using ActionRun run = new(action, _model, _desk!);
         using ActionDialog dialog = new(run, _glyphs, _theme);
-        App!.Run(dialog);
-        if (dialog.IsLeaving)
+        Show(dialog);
+    }
+
+    private void Show(PopUp popUp)
+    {
+        App!.Run(popUp);
+        if (popUp.IsLeaving)
         {
             App.RequestStop(this);
         }
