@@ -112,6 +112,27 @@ public sealed class Catalog : IDisposable
     /// <exception cref="Campaigns.Domain.RefusedException">Others changed the campaign after the head that the caller has seen; nothing was changed.</exception>
     public T Change<T>(Func<T> work) => InTransaction(BeginChange, work);
 
+    /// <summary>Does a piece of work just as <see cref="Change"/> would, and takes all of it back: it shows what would come of it, every refusal among it, and not one row or entry is kept.</summary>
+    /// <remarks>The right to write is held meanwhile, as the work itself would hold it.</remarks>
+    /// <param name="work">The work.</param>
+    /// <returns>What the work gave, and the head of the ledger that it started from: a change that names this head is refused where others changed the campaign since.</returns>
+    /// <exception cref="CatalogException">The catalog is locked, full, read-only or damaged.</exception>
+    /// <exception cref="InvalidOperationException">A transaction is open, which would be taken back, too.</exception>
+    public (T Result, LedgerHead Seen) Rehearse<T>(Func<T> work)
+    {
+        ArgumentNullException.ThrowIfNull(work);
+        return _depth > 0
+            ? throw new InvalidOperationException("Nothing can be rehearsed inside a transaction.")
+            : InTransaction(
+                BeginChange,
+                () =>
+                {
+                    LedgerHead seen = LedgerWriter.Last(this).Head;
+                    return (work(), seen);
+                },
+                keep: false);
+    }
+
     /// <summary>Writes an entry for the action at hand, after its rows and inside its transaction.</summary>
     internal LedgerHead Record(LedgerAct act)
     {
@@ -130,7 +151,7 @@ public sealed class Catalog : IDisposable
     /// <param name="work">The reading.</param>
     public T Snapshot<T>(Func<T> work) => InTransaction("BEGIN", work);
 
-    private T InTransaction<T>(string begin, Func<T> work)
+    private T InTransaction<T>(string begin, Func<T> work, bool keep = true)
     {
         ArgumentNullException.ThrowIfNull(work);
         if (_depth > 0)
@@ -161,6 +182,12 @@ public sealed class Catalog : IDisposable
             if (TotalChanges != _recordedChanges)
             {
                 throw new InvalidOperationException("The catalog was changed without an entry in the ledger.");
+            }
+
+            if (!keep)
+            {
+                RollBack();
+                return result;
             }
 
             Run("COMMIT");

@@ -34,7 +34,7 @@ internal static class Complaint
     }
 
     /// <summary>A text that no record should hold: with a control character, or half of a character. The name of a file that is there may have one.</summary>
-    private static string? Unwritable(string word)
+    public static string? Unwritable(string word)
     {
         if (word.Length > LongestWord)
         {

@@ -19,7 +19,7 @@ internal sealed class DashboardVerb : Verb
     {
         using Catalog.Catalog catalog = session.OpenCatalog();
         (string code, string page) = Opening(catalog, session.Typed.GetValue(_code));
-        return DashboardProgram.Run(new CatalogSource(catalog), code, page, session.Get(_ascii));
+        return DashboardProgram.Run(new CatalogSource(catalog), code, page, session.Get(_ascii), session.Desk);
     }
 
     /// <summary>The campaign that is opened first and the page that is shown first: what was asked for, or of several campaigns the programme, the one opened last at hand.</summary>

@@ -1,4 +1,5 @@
 using System.CommandLine;
+using Campaigns.App.Wording;
 using Campaigns.Catalog.Excluding;
 using Campaigns.Catalog.Results;
 using Campaigns.Domain;
@@ -34,13 +35,13 @@ internal sealed class ExcludeVerb : Verb
             exclude: !session.Get(_takeBack),
             session.Get(_reason).Trim(),
             session.Actor.Name);
-        session.Say($"Recorded: {decision.Sentence}.");
+        session.Say(ExclusionText.Recorded(decision));
         CampaignStanding standing = new StandingReader(catalog).Read(code);
         ExperimentDetail detail = new DetailReader(catalog).Read(standing, decision.Experiment);
         session.Print(ExperimentSections.Tests(detail) with { WhenEmpty = "The experiment was not tested yet, so that there is no result to show with and without it." });
-        if (standing.Campaign.IsSealed)
+        if (ExclusionText.Next(standing.Campaign) is { } next)
         {
-            session.Say($"'campaigns test {code}' and 'campaigns review {code}' put this in force; until then the experiment counts as not tested.");
+            session.Say(next);
         }
 
         return ExitCode.Done;

@@ -1,5 +1,6 @@
 using System.CommandLine;
 using Campaigns.App.Output;
+using Campaigns.App.Wording;
 using Campaigns.Catalog.Loading;
 
 namespace Campaigns.App.Commands;
@@ -77,19 +78,15 @@ internal sealed class LoadVerb : Verb
 
     private static void Say(Session session, string code, LoadSummary load)
     {
-        string missing = load.MissingCount > 0 ? FormattableString.Invariant($", {load.MissingCount} marked as missing and left out") : "";
-        string fresh = load.NewExperimentCount > 0 ? FormattableString.Invariant($" ({load.NewExperimentCount} of them new)") : "";
-        string experiments = load.ExperimentCount == 1 ? "experiment" : "experiments";
-        session.Say(FormattableString.Invariant($"Loaded {load.FileName}: {load.RowCount} rows for {load.ExperimentCount} {experiments}{fresh}{missing}."));
-        Notices.IgnoredColumns(session.Host, load.FileName, load.IgnoredColumns);
-        if (load.RespelledNames.Count > 0)
+        session.Say(LoadWording.Loaded(load));
+        foreach (string notice in LoadWording.Notices(load))
         {
-            session.Host.Notice($"Note: names written with combining characters were stored in their composed form: {string.Join(", ", load.RespelledNames)}.");
+            session.Host.Notice(notice);
         }
 
-        if (load.AmendedExperiments.Count > 0)
+        if (LoadWording.Amended(code, load) is { } amended)
         {
-            session.Say($"Recorded as an amendment of tested experiments: {string.Join(", ", load.AmendedExperiments)}. Test them again with 'campaigns test {code}'.");
+            session.Say(amended);
         }
     }
 }

@@ -1,4 +1,5 @@
 using Campaigns.App.Output;
+using Campaigns.App.Wording;
 
 namespace Campaigns.App.Commands;
 
@@ -7,9 +8,9 @@ internal static class Notices
 {
     public static void IgnoredColumns(Host host, string path, IReadOnlyList<string> columns)
     {
-        if (columns.Count > 0)
+        if (LoadWording.IgnoredColumns(path, columns) is { } ignored)
         {
-            host.Notice($"Note: columns of '{path}' that are not used: {string.Join(", ", columns)}.");
+            host.Notice(ignored);
         }
     }
 }

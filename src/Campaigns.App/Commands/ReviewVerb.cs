@@ -44,39 +44,24 @@ internal sealed class ReviewVerb : Verb
     public static ReviewHead Review(Session session, Catalog.Catalog catalog, string code, bool testedOnly)
     {
         ReviewTaken taken = new ReviewStore(catalog).Take(code, testedOnly);
-        ReviewHead review = taken.Review;
-        string interim = review.IsInterim ? " Interim: only tested experiments were counted." : "";
-        session.Say(taken.IsNew
-            ? FormattableString.Invariant($"Review {review.Number} of {code}: {review.SurvivorCount} of {review.TestedCount} tested experiments survive, in a family of {review.FamilySize}.{interim}")
-            : FormattableString.Invariant($"Nothing changed since review {review.Number} of {code}, which stands: {review.SurvivorCount} survivors in a family of {review.FamilySize}.{interim}"));
-        SayFamilies(session, catalog, code);
+        session.Say(ReviewWording.Taken(code, taken));
+        var families = ReviewedFamilies.Read(catalog, code);
+        foreach (string line in families.Lines)
+        {
+            session.Say(line);
+        }
+
+        foreach (string warning in families.Warnings)
+        {
+            session.Host.Notice(warning);
+        }
+
         CampaignOverview overview = new OverviewReader(catalog).Read(new CampaignStore(catalog).Get(code));
         foreach (string line in CampaignText.Deviations(overview).Prepend(OnlineText.Awaiting(overview) ?? "").Where(line => line.Length > 0))
         {
             session.Say(line);
         }
 
-        return review;
-    }
-
-    /// <summary>What a review of several families, or of experiments that share a control, should not leave unsaid.</summary>
-    private static void SayFamilies(Session session, Catalog.Catalog catalog, string code)
-    {
-        StoredCampaign stored = new CampaignStore(catalog).Get(code);
-        if (!FamilyTally.IsNeeded(stored.Campaign))
-        {
-            return;
-        }
-
-        IReadOnlyList<FamilyStanding> families = new ReviewStore(catalog).Families(stored);
-        foreach (FamilyStanding family in families.Where(_ => stored.Campaign.JudgedFamilies.Count > 0))
-        {
-            session.Say(FormattableString.Invariant($"{FamilyText.Line(stored.Campaign, family)} Survivors: {family.Survivors}."));
-        }
-
-        foreach (string warning in FamilyText.Warnings(stored.Campaign, families))
-        {
-            session.Host.Notice(warning);
-        }
+        return taken.Review;
     }
 }

@@ -1,4 +1,5 @@
 using System.CommandLine;
+using Campaigns.App.Dashboard.Actions;
 using Campaigns.App.Dashboard.Canvas;
 using Campaigns.App.Output;
 using Campaigns.Catalog.Ledger;
@@ -47,6 +48,9 @@ internal sealed class Session(Host host, ParseResult typed)
     private LedgerHead? Seen => Typed.GetValue(SharedOptions.Seen);
 
     public Catalog.Catalog OpenCatalog() => Stoppable(Catalog.Catalog.Open(CatalogPath, Host.Clock, Actor, Seen));
+
+    /// <summary>Where the dashboard opens the catalog for what is done from it, in the name of whoever started it.</summary>
+    public ActionDesk Desk => new(seen => Catalog.Catalog.Open(CatalogPath, Host.Clock, Actor, seen), Actor, Host.Clock);
 
     public Catalog.Catalog OpenOrCreateCatalog() => Stoppable(Catalog.Catalog.OpenOrCreate(CatalogPath, Host.Clock, Actor, Seen));
 

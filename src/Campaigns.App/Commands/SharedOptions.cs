@@ -96,7 +96,9 @@ internal static class SharedOptions
         return option;
     }
 
-    private static ColumnMap ParseColumns(string columns, IReadOnlyList<string> ourNames)
+    /// <summary>Reads NAME=HEADER,...</summary>
+    /// <exception cref="UsageException">It cannot be read.</exception>
+    public static ColumnMap ParseColumns(string columns, IReadOnlyList<string> ourNames)
     {
         try
         {

@@ -34,11 +34,7 @@ internal sealed class TestVerb : Verb
         using var line = new ProgressLine(session.Host);
         TestRunSummary summary = new TestRunner(catalog).Run(code, includeIncomplete, line.Report, session.Host.Cancel);
         line.Dispose();
-        string none = summary.NotTestable > 0 ? FormattableString.Invariant($", {summary.NotTestable} whose data cannot give a result (they count as p = 1 and stay visible)") : "";
-        string left = summary.Incomplete > 0 ? FormattableString.Invariant($"; {summary.Incomplete} left alone because planned values are missing") : "";
-        session.Say(summary.Ran
-            ? FormattableString.Invariant($"Tested {summary.Tested} experiment{(summary.Tested == 1 ? "" : "s")} of {code}{none}{left}.") + OnlineText.Decided(summary.Decided, summary.DecidedSurvivors)
-            : $"Nothing new to test in {code}{left}.");
+        session.Say(TestWording.Summary(code, summary));
         return summary;
     }
 }

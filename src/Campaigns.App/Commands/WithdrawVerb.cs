@@ -1,5 +1,6 @@
 using System.CommandLine;
 using Campaigns.App.Output;
+using Campaigns.App.Wording;
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Withdrawing;
 using Campaigns.Domain;
@@ -27,15 +28,13 @@ internal sealed class WithdrawVerb : Verb
         IReadOnlyList<Withdrawal> decisions = new WithdrawalStore(catalog).Decide(code, session.Get(_experiments), withdraw: !session.Get(_takeBack), session.Get(_reason).Trim(), session.Actor.Name);
         foreach (Withdrawal decision in decisions)
         {
-            session.Say($"Recorded: {decision.Experiment} {decision.Sentence}.");
+            session.Say(WithdrawalText.Recorded(decision));
         }
 
         session.PrintForScripts(Rows(decisions));
-        if (new CampaignStore(catalog).Get(code).Campaign.IsSealed && decisions.Any(d => d.HadData))
+        if (WithdrawalText.Next(new CampaignStore(catalog).Get(code).Campaign, decisions) is { } next)
         {
-            session.Say(decisions[0].IsWithdrawn
-                ? $"Results and survivors count this from now on; 'campaigns review {code}' takes it into a review."
-                : $"'campaigns test {code}' and 'campaigns review {code}' put this in force; until then an experiment that was taken in again counts as not tested.");
+            session.Say(next);
         }
 
         return ExitCode.Done;

@@ -1,3 +1,4 @@
+using Campaigns.App.Dashboard.Actions;
 using Campaigns.App.Dashboard.Canvas;
 using Campaigns.App.Dashboard.Model;
 using Campaigns.App.Dashboard.Pages;
@@ -19,9 +20,10 @@ public static class DashboardProgram
     /// <param name="campaign">The campaign that is opened first.</param>
     /// <param name="page">Name of the page that is shown first.</param>
     /// <param name="ascii">Whether to draw with ASCII signs alone.</param>
+    /// <param name="desk">Where actions open the catalog; null where nothing can be done.</param>
     /// <returns>0 after quitting; 2, with a sentence on standard error, where standard input or output is no terminal; 128 and its number after a signal.</returns>
     /// <remarks>What <paramref name="source"/> throws passes through, after the terminal was given back.</remarks>
-    public static int Run(IDashboardSource source, string campaign, string page, bool ascii)
+    public static int Run(IDashboardSource source, string campaign, string page, bool ascii, ActionDesk? desk = null)
     {
         ArgumentNullException.ThrowIfNull(source);
         if (Console.IsInputRedirected || Console.IsOutputRedirected)
@@ -37,7 +39,7 @@ public static class DashboardProgram
         IApplication app = Application.Create();
         using TerminalGuard guard = new(app);
         app.Init();
-        using DashboardWindow window = new(model, ascii ? GlyphSet.Ascii : GlyphSet.Full, theme);
+        using DashboardWindow window = new(model, ascii ? GlyphSet.Ascii : GlyphSet.Full, theme, desk);
         app.Run(window);
         return guard.ExitCode is var asked && asked != 0 ? asked : Done;
     }

@@ -28,7 +28,10 @@ internal static class LedgerText
 
     /// <summary>When, and who: "2026-12-01 08:00:00 UTC, Ada (account lab)".</summary>
     public static string Who(LedgerEntry entry) =>
-        $"{entry.At.UtcDateTime.ToString("yyyy-MM-dd HH:mm:ss", CultureInfo.InvariantCulture)} UTC, {(entry.By.ActingAs is { } name ? $"{name} (account {entry.By.Account})" : entry.By.Account)}";
+        $"{entry.At.UtcDateTime.ToString("yyyy-MM-dd HH:mm:ss", CultureInfo.InvariantCulture)} UTC, {Who(entry.By)}";
+
+    /// <summary>Who acts: "Ada (account lab)".</summary>
+    public static string Who(Actor actor) => actor.ActingAs is { } name ? $"{name} (account {actor.Account})" : actor.Account;
 
     /// <summary>An entry as one sentence: number, when, who, what, and why where a reason is due.</summary>
     public static string Sentence(LedgerEntry entry)

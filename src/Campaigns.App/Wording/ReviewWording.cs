@@ -27,6 +27,20 @@ internal static class ReviewWording
             : applied.Select(f => FormattableString.Invariant($"{which}{(f.Name.Length > 0 ? $", family {f.Name}" : "")}: {ProcedureName(f.Correction)} at {FamilyText.Level(f.Level)} over {Counted.Of(f.Size, "hypothesis", "hypotheses")}."));
     }
 
+    /// <summary>What taking a review did, in a sentence.</summary>
+    public static string Taken(string code, ReviewTaken taken)
+    {
+        ReviewHead review = taken.Review;
+        string interim = review.IsInterim ? " Interim: only tested experiments were counted." : "";
+        return taken.IsNew
+            ? FormattableString.Invariant($"Review {review.Number} of {code}: {review.SurvivorCount} of {review.TestedCount} tested experiments survive, in a family of {review.FamilySize}.{interim}")
+            : FormattableString.Invariant($"Nothing changed since review {review.Number} of {code}, which stands: {review.SurvivorCount} survivors in a family of {review.FamilySize}.{interim}");
+    }
+
+    /// <summary>What a review would hold, in a sentence.</summary>
+    public static string Foreseen(string code, ReviewHead review) => FormattableString.Invariant(
+        $"Review {review.Number} of {code} will hold: {review.SurvivorCount} of {review.TestedCount} tested experiments survive {review.Correction} at level {review.Level}, in a family of {review.FamilySize}.{(review.IsInterim ? " Interim: only tested experiments are counted." : "")}");
+
     /// <summary>What a family was on the day of a review.</summary>
     public static string Family(ReviewHead review, FamilyStanding family) => FormattableString.Invariant(
         $"Review {review.Number}, family {family.Name}: {family.Correction} at {FamilyText.Level(family.Level)}, {family.Size} counted, {family.Tested} tested, {family.Survivors} {(family.Survivors == 1 ? "survives" : "survive")}{(family.IsOpen ? "" : "; closed")}.");

@@ -8,6 +8,20 @@ internal static class WithdrawalText
     /// <summary>What an experiment that left its family counts as.</summary>
     public const string NotCounted = "No result: the experiment was withdrawn before any data and is not in its family any more.";
 
+    /// <summary>A decision that was recorded, in a sentence.</summary>
+    public static string Recorded(Withdrawal decision) => $"Recorded: {decision.Experiment} {decision.Sentence}.";
+
+    /// <summary>The same decision before it is made.</summary>
+    public static string Foreseen(Withdrawal decision) => $"To be recorded: {decision.Experiment} {decision.Sentence}.";
+
+    /// <summary>What puts decisions in force, in a sentence; null where nothing has to.</summary>
+    /// <param name="campaign">The campaign.</param>
+    /// <param name="decisions">What was decided, at least one.</param>
+    public static string? Next(Campaign campaign, IReadOnlyList<Withdrawal> decisions) => !campaign.IsSealed || !decisions.Any(d => d.HadData) ? null
+        : decisions[0].IsWithdrawn
+            ? $"Results and survivors count this from now on; 'campaigns review {campaign.Code}' takes it into a review."
+            : $"'campaigns test {campaign.Code}' and 'campaigns review {campaign.Code}' put this in force; until then an experiment that was taken in again counts as not tested.";
+
     /// <summary>How many experiments are withdrawn and how they count; empty where none is.</summary>
     /// <param name="counts">How many are.</param>
     /// <param name="familySize">Hypotheses that the correction counts.</param>

@@ -88,7 +88,7 @@ public sealed class StandingReader(Catalog catalog)
     {
         using SqliteStatement select = catalog.Prepare(
             $"""
-            SELECT e.id, e.group_set_id, e.groups_are_planned, CASE WHEN {TestRunner.TestedBefore} THEN NULL ELSE e.replicates END, m.packed
+            SELECT e.id, e.group_set_id, e.groups_are_planned, CASE WHEN {TestSelection.TestedBefore} THEN NULL ELSE e.replicates END, m.packed
             FROM experiments e JOIN measurements m ON m.experiment_id = e.id
             WHERE e.campaign_id = ?1 AND NOT EXISTS (
                 SELECT 1 FROM test_results r JOIN test_runs t ON t.id = r.test_run_id

@@ -27,40 +27,6 @@ public sealed record TestRunSummary(int Tested, int NotTestable, int Incomplete,
 /// <param name="catalog">The open catalog.</param>
 public sealed class TestRunner(Catalog catalog)
 {
-    private const string Columns =
-        "e.id, e.code, e.group_set_id, e.groups_are_planned, e.replicates, e.test, m.packed, m.load_id";
-
-    /// <summary>Whether the experiment was tested before, and values of it were left out or it was withdrawn since: it was complete, or taken incomplete on purpose, and neither makes it less so.</summary>
-    internal const string TestedBefore =
-        """
-        (EXISTS (SELECT 1 FROM exclusions x WHERE x.experiment_id = e.id) OR EXISTS (SELECT 1 FROM withdrawals w WHERE w.experiment_id = e.id))
-            AND EXISTS (SELECT 1 FROM test_results r WHERE r.experiment_id = e.id)
-        """;
-
-    private const string All =
-        $"SELECT {Columns}, 0 FROM experiments e JOIN measurements m ON m.experiment_id = e.id WHERE e.campaign_id = ?1 ORDER BY e.id, m.load_id";
-
-    // A cross join is SQLite's way of being told where to begin: at the few experiments that received data, not at all there are.
-    private const string WithNewsAfterRun =
-        $"""
-        SELECT {Columns}, {TestedBefore} FROM (SELECT experiment_id FROM measurements WHERE load_id > ?2 UNION SELECT experiment_id FROM exclusions WHERE id > ?3
-            UNION SELECT experiment_id FROM withdrawals WHERE id > ?4
-            UNION SELECT experiment_id FROM plan_amendment_changes c WHERE c.amendment_id > ?5 AND NOT EXISTS (SELECT 1 FROM test_results r WHERE r.experiment_id = c.experiment_id)) n
-        CROSS JOIN experiments e ON e.id = n.experiment_id CROSS JOIN measurements m ON m.experiment_id = e.id
-        WHERE e.campaign_id = ?1 ORDER BY e.id, m.load_id
-        """;
-
-    private const string Untested =
-        $"""
-        SELECT {Columns}, {TestedBefore} FROM experiments e JOIN measurements m ON m.experiment_id = e.id
-        WHERE e.campaign_id = ?1 AND NOT EXISTS (
-            SELECT 1 FROM test_results r JOIN test_runs t ON t.id = r.test_run_id
-            WHERE r.experiment_id = e.id AND coalesce(t.last_load_id, 0) >= (SELECT max(load_id) FROM measurements WHERE experiment_id = e.id)
-                AND coalesce(t.last_exclusion_id, 0) >= (SELECT coalesce(max(id), 0) FROM exclusions WHERE experiment_id = e.id)
-                AND coalesce(t.last_withdrawal_id, 0) >= (SELECT coalesce(max(id), 0) FROM withdrawals WHERE experiment_id = e.id))
-        ORDER BY e.id, m.load_id
-        """;
-
     /// <summary>Tests, in one transaction.</summary>
     /// <param name="code">The campaign.</param>
     /// <param name="includeIncomplete">Whether experiments short of their planned values are tested too; recorded.</param>
@@ -70,25 +36,15 @@ public sealed class TestRunner(Catalog catalog)
     public TestRunSummary Run(string code, bool includeIncomplete, Action<WorkProgress> progress, CancellationToken cancel) => catalog.Change(() =>
     {
         StoredCampaign stored = new CampaignStore(catalog).Get(code);
-        if (!stored.Campaign.IsSealed)
-        {
-            throw new RefusedException($"The campaign '{code}' is not sealed: level, correction and family must be fixed before the first result is seen; run 'campaigns seal {code}'.");
-        }
-
+        TestSelection.DemandSealed(stored.Campaign);
         return Run(stored, includeIncomplete, progress, cancel);
     });
 
     private TestRunSummary Run(StoredCampaign stored, bool includeIncomplete, Action<WorkProgress> progress, CancellationToken cancel)
     {
-        RecordPosition? last = LastRun(stored.Id);
+        RecordPosition? last = TestSelection.LastRun(catalog, stored.Id);
         RecordPosition seen = RecordPosition.Of(catalog, stored.Id);
-        string sql = last is null ? All : includeIncomplete ? Untested : WithNewsAfterRun;
-        using SqliteStatement select = catalog.Prepare(sql);
-        select.Bind(1, stored.Id);
-        if (sql == WithNewsAfterRun)
-        {
-            select.Bind(2, last!.LastLoadId ?? 0).Bind(3, last.LastExclusionId ?? 0).Bind(4, last.LastWithdrawalId ?? 0).Bind(5, last.LastAmendmentId ?? 0);
-        }
+        using SqliteStatement select = TestSelection.Of(catalog, stored.Id, last, includeIncomplete);
 
         var exclusions = new StandingExclusions(catalog, stored.Id);
         var withdrawals = new StandingWithdrawals(catalog, stored.Id);
@@ -140,34 +96,11 @@ public sealed class TestRunner(Catalog catalog)
             });
         }
 
-        return new TestRunSummary(results.Tested, results.NotTestable, ran || last is null ? results.Incomplete : Waiting(stored.Id), ran)
+        return new TestRunSummary(results.Tested, results.NotTestable, ran || last is null ? results.Incomplete : TestSelection.Waiting(catalog, stored.Id).Count, ran)
         {
             Decided = streams?.Decided ?? 0,
             DecidedSurvivors = streams?.DecidedSurvivors ?? 0,
         };
-    }
-
-    /// <summary>What the latest run had seen; null before the first.</summary>
-    private RecordPosition? LastRun(long campaignId)
-    {
-        using SqliteStatement select = catalog.Prepare("SELECT last_load_id, last_exclusion_id, last_amendment_id, last_withdrawal_id FROM test_runs WHERE campaign_id = ?1 ORDER BY id DESC LIMIT 1");
-        return select.Bind(1, campaignId).Read()
-            ? new RecordPosition(select.NullableInteger(0), select.NullableInteger(1), select.NullableInteger(2), select.NullableInteger(3))
-            : null;
-    }
-
-    /// <summary>Experiments that have values and no result, and are not withdrawn: those that were left alone before and received nothing since.</summary>
-    private int Waiting(long campaignId)
-    {
-        using SqliteStatement count = catalog.Prepare(
-            """
-            SELECT count(*) FROM experiments e WHERE e.campaign_id = ?1
-                AND EXISTS (SELECT 1 FROM measurements m WHERE m.experiment_id = e.id)
-                AND NOT EXISTS (SELECT 1 FROM test_results r WHERE r.experiment_id = e.id)
-                AND coalesce((SELECT w.is_withdrawn FROM withdrawals w WHERE w.experiment_id = e.id ORDER BY w.id DESC LIMIT 1), 0) = 0
-            """);
-        count.Bind(1, campaignId).Read();
-        return (int)count.Integer(0);
     }
 
     /// <summary>Reads what the plan says of the test of an experiment.</summary>
@@ -183,8 +116,7 @@ public sealed class TestRunner(Catalog catalog)
             if (_test is null || !row.TextEquals(5, _key))
             {
                 _key = row.Text(5);
-                _test = GroupTestRegistry.Find(_key)
-                    ?? throw new RefusedException($"The plan of experiment '{row.Text(1)}' names the test '{_key}', which this version of the program does not have.");
+                _test = TestSelection.TestOf(row);
             }
 
             long id = row.Integer(0);

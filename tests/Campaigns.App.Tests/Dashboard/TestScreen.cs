@@ -1,10 +1,14 @@
 using System.Drawing;
+using System.Runtime.ExceptionServices;
 using Campaigns.App.Dashboard;
+using Campaigns.App.Dashboard.Actions;
 using Campaigns.App.Dashboard.Canvas;
+using Campaigns.App.Dashboard.Dialogs;
 using Campaigns.App.Dashboard.Model;
 using Campaigns.App.Dashboard.Pages;
 using Campaigns.App.Dashboard.Screen;
 using Campaigns.Domain;
+using Campaigns.Statistics.Corrections;
 using Terminal.Gui.App;
 using Terminal.Gui.Drawing;
 using Terminal.Gui.Drivers;
@@ -28,16 +32,16 @@ internal sealed class TestScreen : IDisposable
     {
     }
 
-    public TestScreen(int width, int height, IDashboardSource source, bool ascii = false, bool colour = true, string page = "Experiments")
+    public TestScreen(int width, int height, IDashboardSource source, bool ascii = false, bool colour = true, string page = "Experiments", ActionDesk? desk = null)
     {
         Theme theme = Theme.For(name => name == "NO_COLOR" && !colour ? "1" : null);
         theme.Apply();
         _app = Application.Create(_time);
         _app.Init(DriverRegistry.Names.ANSI);
         _app.Driver!.SetScreenSize(width, height);
-        Model = new DashboardModel(source, source.Campaigns()[0].Campaign.Code, SampleCampaign.Find);
+        Model = new DashboardModel(source, source.Campaigns()[0].Campaign.Code, key => (ErrorProcedure?)SampleCampaign.Find(key) ?? CorrectionRegistry.Find(key));
         Model.TurnTo(PageList.PlaceOf(page));
-        _window = new DashboardWindow(Model, ascii ? GlyphSet.Ascii : GlyphSet.Full, theme);
+        _window = new DashboardWindow(Model, ascii ? GlyphSet.Ascii : GlyphSet.Full, theme, desk);
         _session = _app.Begin(_window)!;
         _app.LayoutAndDraw();
     }
@@ -102,6 +106,68 @@ internal sealed class TestScreen : IDisposable
     public TestScreen Resize(int width, int height)
     {
         _app.Driver!.SetScreenSize(width, height);
+        _app.LayoutAndDraw();
+        return this;
+    }
+
+    /// <summary>Presses a key that opens a dialog, and goes through a script while it stands: a step each time round the loop.</summary>
+    /// <param name="opens">The key.</param>
+    /// <param name="script">What is done and looked at; the dialog is closed at its end, where it still stands.</param>
+    public TestScreen InDialog(Key opens, IEnumerable<int> script) => InDialog(() => _app.InjectKey(opens), script);
+
+    /// <summary>Goes through a script while the dialog of an action stands.</summary>
+    /// <param name="run">The action.</param>
+    /// <param name="script">What is done and looked at.</param>
+    public TestScreen InDialog(ActionRun run, IEnumerable<int> script) => InDialog(
+        () =>
+        {
+            using ActionDialog dialog = new(run, GlyphSet.Full, Theme.For(_ => null));
+            _app.Run(dialog);
+        },
+        script);
+
+    private TestScreen InDialog(Action open, IEnumerable<int> script)
+    {
+        using IEnumerator<int> steps = script.GetEnumerator();
+        Exception? failed = null;
+        long end = Environment.TickCount64 + 15_000;
+        void Step(object? sender, EventArgs<IApplication?> e)
+        {
+            try
+            {
+                if (_app.TopRunnable is not PopUp || (steps.MoveNext() && Environment.TickCount64 < end))
+                {
+                    return;
+                }
+
+                Assert.True(Environment.TickCount64 < end, "The script did not come to its end in 15 s:\n" + Text);
+            }
+#pragma warning disable CA1031 // An exception here would leave the loop with the dialog open; it is thrown below.
+            catch (Exception error)
+            {
+                failed ??= error;
+            }
+#pragma warning restore CA1031
+            _app.RequestStop(_app.TopRunnable!);
+        }
+
+        _app.Iteration += Step;
+        Application.MaximumIterationsPerSecond = 1000;
+        try
+        {
+            open();
+        }
+        finally
+        {
+            _app.Iteration -= Step;
+            Application.MaximumIterationsPerSecond = Application.DefaultMaximumIterationsPerSecond;
+        }
+
+        if (failed is not null)
+        {
+            ExceptionDispatchInfo.Throw(failed);
+        }
+
         _app.LayoutAndDraw();
         return this;
     }

@@ -34,6 +34,8 @@ public sealed record GlyphSet
         Between = "|",
         Times = "*",
         Marked = "=",
+        Filled = "#",
+        Unfilled = ".",
         HasDots = false,
     };
 
@@ -114,6 +116,12 @@ public sealed record GlyphSet
 
     /// <summary>Marked by the user.</summary>
     public string Marked { get; private init; } = "▪";
+
+    /// <summary>The part of a bar that is done.</summary>
+    public string Filled { get; private init; } = "█";
+
+    /// <summary>The part of a bar that is still to do.</summary>
+    public string Unfilled { get; private init; } = "░";
 
     /// <summary>Multiplication.</summary>
     public string Times { get; private init; } = "×";

@@ -30,7 +30,7 @@ public abstract class DashboardPage : View
     public abstract View Entrance { get; }
 
     /// <summary>The keys that turn to another page.</summary>
-    protected static (string Key, string Does) TurnKeys => (string.Create(CultureInfo.InvariantCulture, $"1-{PageList.All.Count}"), "page");
+    internal static (string Key, string Does) TurnKeys => (string.Create(CultureInfo.InvariantCulture, $"1-{PageList.All.Count}"), "page");
 
     /// <summary>What the page shows, and with what.</summary>
     protected PageContext Context { get; }

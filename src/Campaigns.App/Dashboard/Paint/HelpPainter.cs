@@ -11,6 +11,8 @@ public static class HelpPainter
     private static readonly (string Key, string Does)[] Everywhere =
     [
         ("1 2 3 ...", "turn to a page (or click its name)"),
+        ("a", "everything that can be done with the campaign, to choose from"),
+        ("l t v w x", "at once: load a file, test, take a review, withdraw experiments, exclude an observation; each shows first what will happen"),
         ("F5", "load the campaign again"),
         ("F1 or ?", "this page, about the one you came from; Esc goes back"),
         ("q or Ctrl+Q", "quit"),

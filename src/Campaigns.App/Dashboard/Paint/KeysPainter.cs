@@ -12,20 +12,38 @@ public static class KeysPainter
     {
         TextCanvas canvas = new(width, 1);
         canvas.InkRow(0, Ink.Bar);
+        foreach ((int x, string key, string does) in Place(keys, width))
+        {
+            canvas.Write(x, 0, key, Ink.KeyName);
+            canvas.Write(x + key.Length + 1, 0, does, Ink.Bar);
+        }
+
+        return canvas;
+    }
+
+    /// <summary>Which key stands at a cell; null beside all.</summary>
+    /// <param name="keys">The keys as they were painted.</param>
+    /// <param name="width">Cells across.</param>
+    /// <param name="at">Cell from 0.</param>
+    public static int? KeyAt(IEnumerable<(string Key, string Does)> keys, int width, int at)
+    {
+        int place = Place(keys, width).ToList().FindIndex(k => at >= k.X && at <= k.X + k.Key.Length + k.Does.Length);
+        return place < 0 ? null : place;
+    }
+
+    private static IEnumerable<(int X, string Key, string Does)> Place(IEnumerable<(string Key, string Does)> keys, int width)
+    {
         int x = 1;
         foreach ((string key, string does) in keys)
         {
             int needed = key.Length + 1 + does.Length;
             if (x + needed > width)
             {
-                break;
+                yield break;
             }
 
-            canvas.Write(x, 0, key, Ink.KeyName);
-            canvas.Write(x + key.Length + 1, 0, does, Ink.Bar);
+            yield return (x, key, does);
             x += needed + 2;
         }
-
-        return canvas;
     }
 }

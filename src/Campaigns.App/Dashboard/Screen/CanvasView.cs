@@ -72,8 +72,9 @@ public sealed class CanvasView : View
     /// <inheritdoc/>
     protected override bool OnMouseEvent(Mouse mouse)
     {
-        // The second of two quick clicks comes as a double one.
-        if ((mouse.Flags.HasFlag(MouseFlags.LeftButtonClicked) || mouse.Flags.HasFlag(MouseFlags.LeftButtonDoubleClicked)) && mouse.Position is { } at)
+        // Of two quick clicks the library calls the second a double click, and nothing else.
+        bool isClick = mouse.Flags.HasFlag(MouseFlags.LeftButtonClicked) || mouse.Flags.HasFlag(MouseFlags.LeftButtonDoubleClicked) || mouse.Flags.HasFlag(MouseFlags.LeftButtonTripleClicked);
+        if (isClick && mouse.Position is { } at)
         {
             Clicked?.Invoke(at.X, at.Y);
             return true;

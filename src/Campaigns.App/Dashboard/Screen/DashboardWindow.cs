@@ -1,4 +1,6 @@
+using Campaigns.App.Dashboard.Actions;
 using Campaigns.App.Dashboard.Canvas;
+using Campaigns.App.Dashboard.Dialogs;
 using Campaigns.App.Dashboard.Model;
 using Campaigns.App.Dashboard.Pages;
 using Campaigns.App.Dashboard.Paint;
@@ -17,6 +19,9 @@ public sealed class DashboardWindow : Runnable
     private readonly CanvasView _heading;
     private readonly CanvasView _strip;
     private readonly CanvasView _keys;
+    private readonly ActionDesk? _desk;
+    private readonly GlyphSet _glyphs;
+    private readonly Theme _theme;
     private int _shown;
     private int _before;
 
@@ -24,17 +29,26 @@ public sealed class DashboardWindow : Runnable
     /// <param name="model">What is shown.</param>
     /// <param name="glyphs">The signs.</param>
     /// <param name="theme">How meanings look.</param>
-    public DashboardWindow(DashboardModel model, GlyphSet glyphs, Theme theme)
+    /// <param name="desk">Where actions open the catalog; null where nothing can be done.</param>
+    public DashboardWindow(DashboardModel model, GlyphSet glyphs, Theme theme, ActionDesk? desk = null)
     {
-        _model = model;
+        (_model, _desk, _glyphs, _theme) = (model, desk, glyphs, theme);
         _shown = _before = model.Page;
         PageContext context = new(model, glyphs, theme);
         _pages = [.. PageList.All.Select(page => page.Make(context))];
         _names = new PageStrip([.. PageList.All.Select(p => p.Name)]);
         _heading = new CanvasView((width, _) => HeadingPainter.Paint(model.Heading, width, glyphs, Frame.Height), theme) { Width = Dim.Fill(), Height = Dim.Func(_ => HeadingPainter.HeightOf(model.Heading, Frame.Width, Frame.Height)) };
         _strip = new CanvasView((width, _) => _names.Paint(model.Page, width), theme) { Y = Pos.Bottom(_heading), Width = Dim.Fill(), Height = 1 };
-        _keys = new CanvasView((width, _) => KeysPainter.Paint(_pages[model.Page].Keys, width), theme) { Y = Pos.AnchorEnd(1), Width = Dim.Fill(), Height = 1 };
+        _keys = new CanvasView((width, _) => KeysPainter.Paint(KeysOf(_pages[model.Page]), width), theme) { Y = Pos.AnchorEnd(1), Width = Dim.Fill(), Height = 1 };
         _strip.Clicked += (x, _) => TurnTo(_names.PageAt(x) ?? model.Page);
+        _keys.Clicked += (x, _) =>
+        {
+            DashboardPage page = _pages[model.Page];
+            if (KeysPainter.KeyAt(KeysOf(page), _keys.Frame.Width, x) is { } at && KeysOf(page)[at] == ActionKeys)
+            {
+                ChooseAction();
+            }
+        };
         Add(_heading, _strip);
         foreach (DashboardPage page in _pages)
         {
@@ -75,6 +89,14 @@ public sealed class DashboardWindow : Runnable
         {
             _model.Reload();
         }
+        else if (_desk is not null && key == Key.A)
+        {
+            ChooseAction();
+        }
+        else if (_desk is not null && ActionList.Of(key.AsRune.Value) is { } action)
+        {
+            Begin(action);
+        }
         else if (key.AsRune.Value - '1' is var page && page >= 0 && page < _pages.Count)
         {
             TurnTo(page);
@@ -98,6 +120,49 @@ public sealed class DashboardWindow : Runnable
         }
 
         base.Dispose(disposing);
+    }
+
+    private static (string Key, string Does) ActionKeys => ("a", "actions");
+
+    // Before the keys that turn pages, which no page needs most.
+    private List<(string Key, string Does)> KeysOf(DashboardPage page)
+    {
+        List<(string Key, string Does)> keys = [.. page.Keys];
+        if (_desk is not null)
+        {
+            int place = keys.FindIndex(k => k.Does == DashboardPage.TurnKeys.Does);
+            keys.Insert(place < 0 ? Math.Max(0, keys.Count - 2) : place, ActionKeys);
+        }
+
+        return keys;
+    }
+
+    private void ChooseAction()
+    {
+        using ActionMenu menu = new(_glyphs, _theme);
+        Show(menu);
+        if (menu.Chosen is { } action)
+        {
+            Begin(action);
+        }
+    }
+
+    private void Begin(DashboardAction action)
+    {
+        using ActionRun run = new(action, _model, _desk!);
+        using ActionDialog dialog = new(run, _glyphs, _theme);
+        Show(dialog);
+    }
+
+    private void Show(PopUp popUp)
+    {
+        App!.Run(popUp);
+        if (popUp.IsLeaving)
+        {
+            App.RequestStop(this);
+        }
+
+        SetNeedsDraw();
     }
 
     private void Back()

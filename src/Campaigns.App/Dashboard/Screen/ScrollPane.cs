@@ -15,6 +15,14 @@ public sealed class ScrollPane(Func<int, TextCanvas> paint)
     /// <summary>Goes back to the first line.</summary>
     public void ToTop() => _top = 0;
 
+    /// <summary>The first line that is seen, from 0.</summary>
+    public int Top => _top;
+
+    /// <summary>Moves as little as can be so that some lines are seen.</summary>
+    /// <param name="first">The first of them, from 0; it is seen in any case.</param>
+    /// <param name="last">The last of them.</param>
+    public void Reveal(int first, int last) => Move(Math.Min(first, Math.Max(_top, last - _height + 1)) - _top);
+
     /// <summary>Moves by lines, not beyond the ends.</summary>
     /// <param name="lines">Down, or up where negative.</param>
     public void Move(int lines) => _top = Math.Clamp(_top + lines, 0, Math.Max(0, _lines - _height));

@@ -6,12 +6,16 @@ namespace Campaigns.App.Dashboard.Screen;
 /// <summary>Gives the terminal back however the dashboard ends: by a signal, by a fault on any thread, by the terminal going away.</summary>
 /// <remarks>
 /// Terminal.Gui 2.5.0 restores the terminal on a normal end only, and leaves the cursor keys in application mode even then.
-/// A signal asks the main loop to stop; if that has not led to the end within <see cref="Patience"/>, the process is ended here.
+/// A signal asks the main loop to stop; if that has not led to the end within <see cref="Patience"/> (or half of it, where the terminal is gone
+/// and every write to it fails), the process is ended here, and where even that does not come to its end, the system is told to end it.
 /// </remarks>
 public sealed class TerminalGuard : IDisposable
 {
     /// <summary>How long the main loop has to stop after a signal.</summary>
     public static readonly TimeSpan Patience = TimeSpan.FromSeconds(2);
+
+    private const int WatchEvery = 500;
+    private static readonly TimeSpan PatienceWithExit = TimeSpan.FromSeconds(1);
 
     // Bracketed paste, mouse reports, colours, alternate screen, cursor, cursor-key and keypad mode, in this order.
     private const string Restore = "\e[?2004l\e[?1003l\e[?1015l\e[?1006l\e[0m\e[?1049l\e[?25h\e[?1l\e>";
@@ -43,7 +47,7 @@ public sealed class TerminalGuard : IDisposable
         }
 
         AppDomain.CurrentDomain.UnhandledException += OnFault;
-        _watch = new Timer(_ => StopWhenTerminalIsGone(), null, 1000, 1000);
+        _watch = new Timer(_ => StopWhenTerminalIsGone(), null, WatchEvery, WatchEvery);
     }
 
     /// <summary>Exit code that a signal asks for; 0 where none came.</summary>
@@ -59,7 +63,7 @@ public sealed class TerminalGuard : IDisposable
         }
 
         ExitCode = exitCode;
-        _patience = new Timer(_ => EndNow(exitCode), null, (long)Patience.TotalMilliseconds, -1);
+        _patience = new Timer(_ => EndNow(exitCode), null, (long)(IsTerminalGone ? Patience / 2 : Patience).TotalMilliseconds, -1);
         _screen.Post(StopAll);
     }
 
@@ -90,10 +94,12 @@ public sealed class TerminalGuard : IDisposable
         }
     }
 
+    private static bool IsTerminalGone => !OperatingSystem.IsWindows() && IsTerminal(StandardInput) == 0;
+
     // A closed terminal need not send a signal (the starter may have had it ignored): then reads end at once, for ever.
     private void StopWhenTerminalIsGone()
     {
-        if (!OperatingSystem.IsWindows() && IsTerminal(StandardInput) == 0)
+        if (IsTerminalGone)
         {
             Stop(129);
         }
@@ -104,11 +110,28 @@ public sealed class TerminalGuard : IDisposable
     [DefaultDllImportSearchPaths(DllImportSearchPath.SafeDirectories)]
     private static extern int IsTerminal(int fileDescriptor);
 
+    [DllImport("libc", EntryPoint = "_exit")]
+    [DefaultDllImportSearchPaths(DllImportSearchPath.SafeDirectories)]
+    private static extern void EndAtOnce(int exitCode);
+
     private static void OnFault(object sender, UnhandledExceptionEventArgs e) => Write(Restore);
 
     private static void EndNow(int exitCode)
     {
         Write(Restore);
+        if (!OperatingSystem.IsWindows())
+        {
+            // What was registered for the end of the process may wait for a terminal that never answers.
+            new Thread(() =>
+            {
+                Thread.Sleep(PatienceWithExit);
+                EndAtOnce(exitCode);
+            })
+            {
+                IsBackground = true,
+            }.Start();
+        }
+
         Environment.Exit(exitCode);
     }
 
