@@ -80,7 +80,7 @@ internal static class CampaignText
 
         if (standing.AmendedCount > 0)
         {
-            yield return FormattableString.Invariant($"Deviations: {Counted.Of(standing.AmendedCount, "experiment")}. Each received values after it had been tested, had values left out, was withdrawn at some time, was added or changed by an amendment of the sealed plan, or was tested short of its plan; 'campaigns show {standing.Campaign.Code} EXPERIMENT' gives the reason.");
+            yield return FormattableString.Invariant($"Deviations: {Counted.Of(standing.AmendedCount, "experiment")}. {Counted.Word(standing.AmendedCount, "It", "Each")} received values after it had been tested, had values left out, was withdrawn at some time, was added or changed by an amendment of the sealed plan, or was tested short of its plan; 'campaigns show {standing.Campaign.Code} EXPERIMENT' gives the reason.");
         }
     }
 
