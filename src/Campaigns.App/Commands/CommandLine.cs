@@ -37,6 +37,8 @@ internal static class CommandLine
         () => new WithdrawVerb(),
         () => new ListVerb(),
         () => new ShowVerb(),
+        () => new ReportVerb(),
+        () => new PlotVerb(),
         () => new ExportVerb(),
         () => new LedgerVerb(),
         () => new DashboardVerb(),

@@ -1,3 +1,4 @@
+using Campaigns.App.Wording;
 using Campaigns.Catalog;
 using Campaigns.Catalog.Ledger;
 using Campaigns.Catalog.Loading;
@@ -21,6 +22,7 @@ internal sealed record Fault(int Code, string Sentence, IReadOnlyList<string> De
     public static Fault Of(Exception thrown) => thrown switch
     {
         UsageException error => new(ExitCode.WrongUsage, error.Message, []),
+        ChangedSinceException error => new(ExitCode.Refused, error.Message, [.. error.Since.Select(LedgerText.Sentence), $"--head {error.Head}"]),
         RefusedException error => new(ExitCode.Refused, error.Message, error.Details),
         LoadingException error => new(ExitCode.Refused, error.Message, []),
         RecordException error => new(ExitCode.RecordBroken, error.Message, []),

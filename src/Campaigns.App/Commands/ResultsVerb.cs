@@ -21,13 +21,18 @@ internal sealed class ResultsVerb : Verb
     {
         using Catalog.Catalog catalog = session.OpenCatalog();
         CampaignStanding standing = new StandingReader(catalog).Read(session.Get(_code));
-        session.Print(new RowTable([.. ColumnsFor(standing)], standing.Experiments.Select(Row))
-        {
-            Above = [$"{standing.Campaign.Code}: {CampaignText.Goal(standing.Campaign)}"],
-            Below = [.. OnlineText.WithoutLevel(standing.Experiments.Select(e => e.Entry).OfType<StreamEntry>()) is { } late ? [late] : (string[])[], .. OnlineText.OnOtherData(standing.Experiments), .. ConfirmationText.Footnotes(standing.Campaign, standing.Experiments), .. CampaignText.Footnotes(standing.Overview, standing.Experiments.Select(e => e.Plan.Test)), .. UnitNotes.Of(standing.Experiments)],
-        });
+        session.Print(Table(standing, standing.Experiments));
         return ExitCode.Done;
     }
+
+    /// <summary>A row an experiment, with what must be known to read it.</summary>
+    /// <param name="standing">The campaign.</param>
+    /// <param name="shown">The experiments wanted, in the order wanted.</param>
+    public static RowTable Table(CampaignStanding standing, IEnumerable<ExperimentResult> shown) => new([.. ColumnsFor(standing)], shown.Select(Row))
+    {
+        Above = [$"{standing.Campaign.Code}: {CampaignText.Goal(standing.Campaign)}"],
+        Below = [.. OnlineText.WithoutLevel(standing.Experiments.Select(e => e.Entry).OfType<StreamEntry>()) is { } late ? [late] : (string[])[], .. OnlineText.OnOtherData(standing.Experiments), .. ConfirmationText.Footnotes(standing.Campaign, standing.Experiments), .. CampaignText.Footnotes(standing.Overview, standing.Experiments.Select(e => e.Plan.Test)), .. UnitNotes.Of(standing.Experiments)],
+    };
 
     public static IReadOnlyList<Column> Columns { get; } =
     [

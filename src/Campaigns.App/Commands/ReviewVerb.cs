@@ -56,7 +56,8 @@ internal sealed class ReviewVerb : Verb
             session.Host.Notice(warning);
         }
 
-        foreach (string line in CampaignText.Deviations(new OverviewReader(catalog).Read(new CampaignStore(catalog).Get(code))))
+        CampaignOverview overview = new OverviewReader(catalog).Read(new CampaignStore(catalog).Get(code));
+        foreach (string line in CampaignText.Deviations(overview).Prepend(OnlineText.Awaiting(overview) ?? "").Where(line => line.Length > 0))
         {
             session.Say(line);
         }

@@ -55,10 +55,11 @@ public sealed class PlanStore(Catalog catalog)
     public void Demand(StoredCampaign campaign, string experiment)
     {
         ArgumentNullException.ThrowIfNull(campaign);
-        Dictionary<long, string> codes = Codes(campaign.Id);
-        if (!codes.ContainsValue(experiment))
+        using SqliteStatement select = catalog.Prepare("SELECT EXISTS (SELECT 1 FROM experiments WHERE campaign_id = ?1 AND code = ?2)");
+        select.Bind(1, campaign.Id).Bind(2, experiment).Read();
+        if (select.Integer(0) == 0)
         {
-            string near = Nearest.Of(experiment, [.. codes.Values]) is { } meant ? $"; '{meant}' may be meant" : "";
+            string near = Nearest.Of(experiment, [.. Codes(campaign.Id).Values]) is { } meant ? $"; '{meant}' may be meant" : "";
             throw new RefusedException($"There is no experiment '{experiment}' in campaign '{campaign.Campaign.Code}'{near}.");
         }
     }

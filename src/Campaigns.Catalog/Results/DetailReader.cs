@@ -24,10 +24,40 @@ public sealed class DetailReader(Catalog catalog)
         ArgumentNullException.ThrowIfNull(standing);
         ExperimentResult result = standing.Experiments.FirstOrDefault(e => e.Plan.Code == code)
             ?? throw new RefusedException($"The campaign '{standing.Campaign.Code}' has no experiment '{code}'; {Hint(standing, code)}.");
+        return Read(standing, [result]).Single();
+    }
+
+    /// <summary>Some experiments in full, one after the other, in the order in which they were registered; one look-up for the values of all.</summary>
+    /// <param name="standing">The campaign as it stands.</param>
+    /// <param name="experiments">Experiments of the campaign, each once; one without any value comes after the others.</param>
+    public IEnumerable<ExperimentDetail> Read(CampaignStanding standing, IReadOnlyCollection<ExperimentResult> experiments)
+    {
+        ArgumentNullException.ThrowIfNull(standing);
+        ArgumentNullException.ThrowIfNull(experiments);
+        return Walk(standing, experiments);
+    }
+
+    private IEnumerable<ExperimentDetail> Walk(CampaignStanding standing, IReadOnlyCollection<ExperimentResult> experiments)
+    {
         long campaignId = new CampaignStore(catalog).Get(standing.Campaign.Code).Id;
         var exclusions = new StandingExclusions(catalog, campaignId);
-        using var rows = new ValueRows(catalog, campaignId, exclusions, [code]);
-        return rows.Next() ? Describe(standing, result, rows, exclusions) : Empty(result);
+        var amended = new Lazy<AmendedExperiments>(() => new AmendedExperiments(catalog, campaignId));
+        Dictionary<string, ExperimentResult> left = experiments.ToDictionary(e => e.Plan.Code, StringComparer.Ordinal);
+        using (var rows = new ValueRows(catalog, campaignId, exclusions, left.Keys.ToArray()))
+        {
+            while (rows.Next())
+            {
+                if (left.Remove(rows.Code, out ExperimentResult? result))
+                {
+                    yield return Describe(standing, result, rows, exclusions, amended);
+                }
+            }
+        }
+
+        foreach (ExperimentResult result in experiments.Where(e => left.ContainsKey(e.Plan.Code)))
+        {
+            yield return Empty(result);
+        }
     }
 
     private static ExperimentDetail Empty(ExperimentResult result)
@@ -36,13 +66,13 @@ public sealed class DetailReader(Catalog catalog)
         return new ExperimentDetail(result, [.. result.Plan.Groups.Select(label => new GroupDetail(label, label == result.Plan.Control, [], none))], Confidence, null, 0);
     }
 
-    private ExperimentDetail Describe(CampaignStanding standing, ExperimentResult result, ValueRows rows, StandingExclusions exclusions)
+    private ExperimentDetail Describe(CampaignStanding standing, ExperimentResult result, ValueRows rows, StandingExclusions exclusions, Lazy<AmendedExperiments> amended)
     {
         string[] labels = rows.Labels;
         GroupedSample readings = rows.Values.Sample(labels.Length);
         GroupSummary[] summaries = GroupSummaries.Of(SpecimenMeans.Of(readings) is { } means ? means.Sample : readings, Confidence);
         // What was never tested shows no p: looking comes after sealing and testing.
-        bool wasTested = result.Status.WasTested() || new AmendedExperiments(catalog, new CampaignStore(catalog).Get(standing.Campaign.Code).Id).AwaitsTest(rows.Id);
+        bool wasTested = result.Status.WasTested() || amended.Value.AwaitsTest(rows.Id);
         TestOutcome? outcome = !wasTested ? null : result is { P: { } p, Resampling: not null } ? Stored(result, p, readings) : OutcomeOf(standing, result, readings);
         var groups = new List<GroupDetail>();
         for (int group = 0; group < labels.Length; group++)

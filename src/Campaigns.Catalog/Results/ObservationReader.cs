@@ -15,7 +15,11 @@ namespace Campaigns.Catalog.Results;
 /// <param name="Block">Its block; null where none was recorded.</param>
 /// <param name="Order">Its place in the order of measuring; null where none was recorded.</param>
 /// <param name="IsExcluded">Whether it is left out of the analysis.</param>
-public sealed record TracedObservation(string Group, string Value, string File, long Line, string? Specimen, string? Block, long? Order, bool IsExcluded);
+public sealed record TracedObservation(string Group, string Value, string File, long Line, string? Specimen, string? Block, long? Order, bool IsExcluded)
+{
+    /// <summary>The value as the nearest double.</summary>
+    public required double Number { get; init; }
+}
 
 /// <summary>Traces the observations of an experiment to file and line.</summary>
 /// <param name="catalog">The open catalog.</param>
@@ -54,7 +58,10 @@ public sealed class ObservationReader(Catalog catalog)
                     values.Specimens[i] < 0 ? null : values.SpecimenNames.Text(values.Specimens[i]),
                     values.Blocks[i] < 0 ? null : values.BlockNames.Text(values.Blocks[i]),
                     values.Orders[i] == ObservationColumns.NoOrder ? null : values.Orders[i],
-                    excluded.Contains(new StandingExclusions.Place(select.Integer(4), values.Lines[i]))));
+                    excluded.Contains(new StandingExclusions.Place(select.Integer(4), values.Lines[i])))
+                {
+                    Number = values.NearestDouble(i),
+                });
             }
         }
 

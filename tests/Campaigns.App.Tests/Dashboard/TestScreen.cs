@@ -32,7 +32,7 @@ internal sealed class TestScreen : IDisposable
     {
     }
 
-    public TestScreen(int width, int height, IDashboardSource source, bool ascii = false, bool colour = true, ActionDesk? desk = null)
+    public TestScreen(int width, int height, IDashboardSource source, bool ascii = false, bool colour = true, string page = "Experiments", ActionDesk? desk = null)
     {
         Theme theme = Theme.For(name => name == "NO_COLOR" && !colour ? "1" : null);
         theme.Apply();
@@ -40,6 +40,7 @@ internal sealed class TestScreen : IDisposable
         _app.Init(DriverRegistry.Names.ANSI);
         _app.Driver!.SetScreenSize(width, height);
         Model = new DashboardModel(source, source.Campaigns()[0].Campaign.Code, key => (ErrorProcedure?)SampleCampaign.Find(key) ?? CorrectionRegistry.Find(key));
+        Model.TurnTo(PageList.PlaceOf(page));
         _window = new DashboardWindow(Model, ascii ? GlyphSet.Ascii : GlyphSet.Full, theme, desk);
         _session = _app.Begin(_window)!;
         _app.LayoutAndDraw();

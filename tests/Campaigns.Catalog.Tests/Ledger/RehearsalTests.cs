@@ -104,8 +104,8 @@ public sealed class RehearsalTests : IDisposable
         }
 
         using Catalog late = Catalog.Open(_catalog.Catalog.Path, _catalog.Clock, null, seen);
-        ChangedMeanwhileException refused = Assert.Throws<ChangedMeanwhileException>(() => Exclude(late, 4));
-        Assert.Contains("line 3", Assert.Single(refused.Details), StringComparison.Ordinal);
+        ChangedSinceException refused = Assert.Throws<ChangedSinceException>(() => Exclude(late, 4));
+        Assert.Equal("E1: line 3 of data-1.csv", Assert.Single(refused.Since).Subject);
     }
 
     [Fact]

@@ -1,0 +1,75 @@
+using System.Text;
+using Campaigns.Catalog.Providers;
+using Campaigns.Domain;
+
+namespace Campaigns.Catalog.Exporting;
+
+/// <summary>Writes a file whole: it is made under another name beside its place and moved there when it is finished, so that nobody ever finds half of it.</summary>
+public static class NewFile
+{
+    private const string Purpose = "new";
+
+    /// <summary>Writes text about a catalog, which itself is never written over.</summary>
+    /// <param name="catalog">The open catalog.</param>
+    /// <param name="file">The file's name.</param>
+    /// <param name="force">Whether it may take the place of a file that is there.</param>
+    /// <param name="write">Writes the text.</param>
+    /// <exception cref="RefusedException">As below, or the file is the catalog.</exception>
+    public static void Write(Catalog catalog, string file, bool force, Action<TextWriter> write)
+    {
+        ArgumentNullException.ThrowIfNull(catalog);
+        ArgumentNullException.ThrowIfNull(file);
+        if (RealPath(file) == RealPath(catalog.Path))
+        {
+            throw new RefusedException($"'{file}' is the catalog itself; name another file.");
+        }
+
+        Write(file, force, write);
+    }
+
+    /// <summary>Writes text as UTF-8 without a byte-order mark.</summary>
+    /// <param name="file">The file's name.</param>
+    /// <param name="force">Whether it may take the place of a file that is there.</param>
+    /// <param name="write">Writes the text.</param>
+    /// <exception cref="RefusedException">Something is there already, or the file cannot be written; what was there is untouched, and nothing is left behind.</exception>
+    public static void Write(string file, bool force, Action<TextWriter> write)
+    {
+        ArgumentNullException.ThrowIfNull(file);
+        ArgumentNullException.ThrowIfNull(write);
+        if (Directory.Exists(file))
+        {
+            throw new RefusedException($"'{file}' is a folder; name a file.");
+        }
+
+        if (!force && (File.Exists(file) || new FileInfo(file).LinkTarget is not null))
+        {
+            throw new RefusedException($"'{file}' exists; nothing was written. Name another file, or say --force to take its place.");
+        }
+
+        DraftFiles.RemoveAbandoned(file);
+        string draft = DraftFiles.Name(file, Purpose);
+        try
+        {
+            using (var writer = new StreamWriter(draft, append: false, new UTF8Encoding(encoderShouldEmitUTF8Identifier: false)) { NewLine = "\n" })
+            {
+                write(writer);
+            }
+
+            DraftFiles.Place(draft, file, force);
+        }
+        catch (Exception error) when (error is IOException or UnauthorizedAccessException)
+        {
+            throw new RefusedException($"The file '{file}' could not be written: {FileTrouble.Reason(error, draft, file)} Nothing of it was left behind.");
+        }
+        finally
+        {
+            DraftFiles.Remove(draft);
+        }
+    }
+
+    private static string RealPath(string path)
+    {
+        string full = Path.GetFullPath(path);
+        return File.Exists(full) ? File.ResolveLinkTarget(full, returnFinalTarget: true)?.FullName ?? full : full;
+    }
+}
