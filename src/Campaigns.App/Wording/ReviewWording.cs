@@ -15,18 +15,6 @@ internal static class ReviewWording
     public static string Line(ReviewHead review) => FormattableString.Invariant(
         $"Review {review.Number} of {review.At:yyyy-MM-dd HH:mm} UTC: {review.SurvivorCount} of {review.TestedCount} tested experiments survive, in a family of {review.FamilySize}{(review.IsInterim ? " (interim: tested experiments only)" : "")}");
 
-    /// <summary>Which corrections at which levels the lines of a review belong to, with its number and its date.</summary>
-    /// <param name="review">The review.</param>
-    /// <param name="families">The families of its lines.</param>
-    public static IEnumerable<string> Applied(ReviewHead review, IEnumerable<FamilyStanding> families)
-    {
-        string which = FormattableString.Invariant($"Review {review.Number} of {review.At:yyyy-MM-dd HH:mm} UTC");
-        FamilyStanding[] applied = [.. families.DistinctBy(f => f.Name)];
-        return applied.Length == 0
-            ? [$"{which}: {ProcedureName(review.Correction)} at {review.Level}."]
-            : applied.Select(f => FormattableString.Invariant($"{which}{(f.Name.Length > 0 ? $", family {f.Name}" : "")}: {ProcedureName(f.Correction)} at {FamilyText.Level(f.Level)} over {Counted.Of(f.Size, "hypothesis", "hypotheses")}."));
-    }
-
     /// <summary>What taking a review did, in a sentence.</summary>
     public static string Taken(string code, ReviewTaken taken)
     {
@@ -40,6 +28,18 @@ internal static class ReviewWording
     /// <summary>What a review would hold, in a sentence.</summary>
     public static string Foreseen(string code, ReviewHead review) => FormattableString.Invariant(
         $"Review {review.Number} of {code} will hold: {review.SurvivorCount} of {review.TestedCount} tested experiments survive {review.Correction} at level {review.Level}, in a family of {review.FamilySize}.{(review.IsInterim ? " Interim: only tested experiments are counted." : "")}");
+
+    /// <summary>Which corrections at which levels the lines of a review belong to, with its number and its date.</summary>
+    /// <param name="review">The review.</param>
+    /// <param name="families">The families of its lines.</param>
+    public static IEnumerable<string> Applied(ReviewHead review, IEnumerable<FamilyStanding> families)
+    {
+        string which = FormattableString.Invariant($"Review {review.Number} of {review.At:yyyy-MM-dd HH:mm} UTC");
+        FamilyStanding[] applied = [.. families.DistinctBy(f => f.Name)];
+        return applied.Length == 0
+            ? [$"{which}: {ProcedureName(review.Correction)} at {review.Level}."]
+            : applied.Select(f => FormattableString.Invariant($"{which}{(f.Name.Length > 0 ? $", family {f.Name}" : "")}: {ProcedureName(f.Correction)} at {FamilyText.Level(f.Level)} over {Counted.Of(f.Size, "hypothesis", "hypotheses")}."));
+    }
 
     /// <summary>What a family was on the day of a review.</summary>
     public static string Family(ReviewHead review, FamilyStanding family) => FormattableString.Invariant(

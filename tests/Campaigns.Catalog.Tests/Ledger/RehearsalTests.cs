@@ -105,7 +105,7 @@ public sealed class RehearsalTests : IDisposable
 
         using Catalog late = Catalog.Open(_catalog.Catalog.Path, _catalog.Clock, null, seen);
         ChangedSinceException refused = Assert.Throws<ChangedSinceException>(() => Exclude(late, 4));
-        Assert.Contains("line 3", Assert.Single(refused.Since).Subject, StringComparison.Ordinal);
+        Assert.Equal("E1: line 3 of data-1.csv", Assert.Single(refused.Since).Subject);
     }
 
     [Fact]

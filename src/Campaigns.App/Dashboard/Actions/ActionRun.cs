@@ -1,6 +1,7 @@
 using Campaigns.App.Commands;
 using Campaigns.App.Dashboard.Model;
 using Campaigns.App.Output;
+using Campaigns.App.Wording;
 using Campaigns.Catalog;
 using Campaigns.Catalog.Ledger;
 
@@ -272,10 +273,11 @@ internal sealed class ActionRun : IDisposable
     {
         var fault = Fault.Of(thrown);
         Stage = ActionStage.Refused;
-        _isOutrun = thrown is ChangedSinceException;
-        if (_isOutrun)
+        _isOutrun = false;
+        if (thrown is ChangedSinceException outrun)
         {
-            Sentences = ["Somebody changed this campaign after the preview, so that it may not hold any more; nothing was changed now. What was done since:", .. fault.Details.SkipLast(1), .. ShowChange()];
+            _isOutrun = true;
+            Sentences = ["Somebody changed this campaign after the preview, so that it may not hold any more; nothing was changed now. What was done since:", .. outrun.Since.Select(LedgerText.Sentence), .. ShowChange()];
         }
         else if (fault.Code == ExitCode.Stopped)
         {

@@ -67,6 +67,7 @@ internal sealed class ReviewAction : DashboardAction
     {
         var families = ReviewedFamilies.Read(work.Catalog, work.Campaign);
         CampaignOverview overview = new OverviewReader(work.Catalog).Read(new CampaignStore(work.Catalog).Get(work.Campaign));
-        return [.. families.Lines, .. families.Warnings, .. CampaignText.Deviations(overview)];
+        string[] awaiting = OnlineText.Awaiting(overview) is { } line ? [line] : [];
+        return [.. families.Lines, .. families.Warnings, .. awaiting, .. CampaignText.Deviations(overview)];
     }
 }

@@ -5,7 +5,6 @@ using Campaigns.App.Dashboard.Screen;
 using Terminal.Gui.App;
 using Terminal.Gui.Input;
 using Terminal.Gui.ViewBase;
-using Terminal.Gui.Views;
 using Suggestion = Campaigns.App.Dashboard.Actions.Suggestion;
 
 namespace Campaigns.App.Dashboard.Dialogs;
@@ -21,7 +20,7 @@ internal sealed class ActionDialog : PopUp
     private static readonly TimeSpan PatienceAtEnd = TimeSpan.FromSeconds(1);
 
     private readonly ActionRun _run;
-    private readonly TextField?[] _texts;
+    private readonly TextBox?[] _texts;
     private readonly ScrollPane _scroll;
     private IReadOnlyList<Suggestion> _suggestions = [];
     private ActionStage _shown;
@@ -220,9 +219,9 @@ internal sealed class ActionDialog : PopUp
         taker.SetFocus();
     }
 
-    private TextField TextOf(int place, ActionField field)
+    private TextBox TextOf(int place, ActionField field)
     {
-        TextField box = new() { Text = field.Text, Height = 1 };
+        TextBox box = new() { Text = field.Text };
         box.X = Pos.Func(_ => Edge + ActionFormPainter.FieldColumn(_run));
         box.Y = Pos.Func(_ => 1 + ActionFormPainter.FirstFieldRow(_run, BodyWidth) + place);
         box.Width = Dim.Func(_ => Math.Max(0, BodyWidth - ActionFormPainter.FieldColumn(_run)));
@@ -267,7 +266,7 @@ internal sealed class ActionDialog : PopUp
         {
             (_shown, _isFilling) = (_run.Stage, isForm);
             _scroll.ToTop();
-            foreach (TextField? box in _texts)
+            foreach (TextBox? box in _texts)
             {
                 box?.Visible = isForm;
             }

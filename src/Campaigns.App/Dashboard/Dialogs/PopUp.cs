@@ -62,6 +62,11 @@ internal abstract class PopUp : Runnable
     /// <inheritdoc/>
     protected sealed override bool OnKeyDown(Key key)
     {
+        if (key == TextBox.Suspend)
+        {
+            return false;
+        }
+
         if (key == Key.Q.WithCtrl)
         {
             IsLeaving = true;

@@ -24,7 +24,7 @@ public sealed class ExperimentsPage : DashboardPage
     private static readonly TimeSpan Standstill = TimeSpan.FromMilliseconds(250);
 
     private readonly Label _filterName = new() { Text = "filter", Width = FilterLabel };
-    private readonly TextField _filter = new() { X = FilterLabel, Width = FilterWidth, Height = 1 };
+    private readonly TextBox _filter = new() { X = FilterLabel, Width = FilterWidth };
     private readonly CanvasView _caption;
     private readonly CanvasView _list;
     private readonly CanvasView _note;
