@@ -63,7 +63,10 @@ internal static class AttentionText
     }
 
     /// <summary>What needs attention over all campaigns, in one sentence.</summary>
-    public static string Total(IReadOnlyList<CampaignAttention> all)
+    /// <param name="all">The campaigns.</param>
+    /// <param name="campaign">Code of the campaign whose survivors were checked.</param>
+    /// <param name="checks">What was found there; null where no checks were made.</param>
+    public static string Total(IReadOnlyList<CampaignAttention> all, string campaign, SurvivorChecks? checks)
     {
         ArgumentNullException.ThrowIfNull(all);
         int needing = all.Count(a => a.Count > 0);
@@ -85,6 +88,7 @@ internal static class AttentionText
         [
             .. withdrawn > 0 ? [FormattableString.Invariant($"{withdrawn} withdrawn")] : Array.Empty<string>(),
             .. amended > 0 ? [Counted.Of(amended, "plan amendment")] : Array.Empty<string>(),
+            .. checks is { Warning.Count: > 0 } ? [FormattableString.Invariant($"checks warn in {checks.Warning.Count} of {Counted.Of(checks.Checked, "survivor")} of {campaign}")] : Array.Empty<string>(),
         ]);
         return known.Length == 0 ? head + "." : $"{head}. To know: {known}.";
 

@@ -60,6 +60,9 @@ public sealed class PastOfACatalogTests : IDisposable
         string reviews = ProgrammePageTests.Side(screen);
         Assert.Contains("Between review 1 and review 2: 0 gained, 1 lost", reviews, StringComparison.Ordinal);
         Assert.Contains("E1 lost: withdrawn (panel broke)", reviews, StringComparison.Ordinal);
+
+        // Both on one day, so that the time tells them apart.
+        Assert.Contains(screen.Lines, l => l.StartsWith("at, UTC    09:30      09:30", StringComparison.Ordinal));
         screen.Turn("Ledger").Press(new Key('/')).Type("experiment:E1 withdraw").Press(Key.Enter);
         Assert.Contains("Reason: panel broke.", ProgrammePageTests.Flat(screen.Text), StringComparison.Ordinal);
         screen.Press(Key.P);
@@ -119,6 +122,18 @@ public sealed class PastOfACatalogTests : IDisposable
             .Where(code => source.Detail(standing, code).Analysis.Checks.Any(c => c.Finding.Verdict == Campaigns.Statistics.Checks.CheckVerdict.Warns))];
         Assert.Equal(expected, checks.Warning.Select(w => w.Experiment));
         Assert.ThrowsAny<OperationCanceledException>(() => source.Checks(standing, _ => { }, new CancellationToken(canceled: true)));
+    }
+
+    [Fact]
+    public void Warnings_of_checks_are_counted_in_the_line_on_the_programme()
+    {
+        _place.Run("run", Workplace.Demo).Well();
+        using TestScreen screen = Screen("Programme");
+        SurvivorChecks checks = new CatalogSource(_opened!).Checks(screen.Model.Standing, _ => { }, CancellationToken.None);
+        screen.Press(Key.C);
+        ProgrammePageTests.Until(screen, FormattableString.Invariant($"To know: checks warn in {checks.Warning.Count} of {checks.Checked} survivors of adhesion-screen."));
+        (string experiment, IReadOnlyList<Campaigns.Statistics.Checks.CheckLine> warnings) = checks.Warning[0];
+        Assert.Contains($"{experiment}: {warnings[0].Finding.Saw}"[..40], ProgrammePageTests.Flat(screen.Text), StringComparison.Ordinal);
     }
 
     [Fact]

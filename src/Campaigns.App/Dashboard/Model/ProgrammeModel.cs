@@ -31,7 +31,10 @@ public sealed class ProgrammeModel(DashboardModel model) : IDisposable
     public CampaignAttention? Selected => Row < 0 ? null : _campaigns[_row];
 
     /// <summary>Whether the selected campaign is the open one.</summary>
-    public bool IsOpenSelected => Selected?.Overview.Campaign.Code == model.Standing.Campaign.Code;
+    public bool IsOpenSelected => Selected?.Overview.Campaign.Code == OpenCampaign;
+
+    /// <summary>Code of the open campaign.</summary>
+    public string OpenCampaign => model.Standing.Campaign.Code;
 
     /// <summary>The checks of the open campaign's survivors; null before they were made.</summary>
     public SurvivorChecks? Checks { get; private set; }

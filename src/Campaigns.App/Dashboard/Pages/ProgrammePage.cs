@@ -77,7 +77,7 @@ public sealed class ProgrammePage : TwoPartPage
 
     /// <inheritdoc/>
     protected override TextCanvas PaintList(int top, int width, int height) =>
-        ProgrammeList.Paint(_programme.Campaigns, Model.Standing.Campaign.Code, _programme.Row, top, width, height, Glyphs);
+        ProgrammeList.Paint(_programme.Campaigns, _programme.OpenCampaign, _programme.Row, top, width, height, Glyphs);
 
     /// <inheritdoc/>
     protected override TextCanvas PaintText(int width) => ProgrammeSheet.Paint(_programme, width, Glyphs);
@@ -143,7 +143,7 @@ public sealed class ProgrammePage : TwoPartPage
     {
         TextCanvas canvas = new(width, height);
         bool waits = _programme.Campaigns.Any(c => c.Count > 0);
-        IReadOnlyList<string> lines = CellText.Wrap(AttentionText.Total(_programme.Campaigns), Math.Max(1, width - 2));
+        IReadOnlyList<string> lines = CellText.Wrap(AttentionText.Total(_programme.Campaigns, _programme.OpenCampaign, _programme.Checks), Math.Max(1, width - 2));
         for (int y = 0; y < Math.Min(height, lines.Count); y++)
         {
             bool isCut = y == height - 1 && lines.Count > height;

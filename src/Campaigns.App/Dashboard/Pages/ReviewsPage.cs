@@ -55,7 +55,7 @@ public sealed class ReviewsPage : TwoPartPage
     protected override int RowsAbove => CaptionRows;
 
     /// <inheritdoc/>
-    protected override int HeaderRows => ReviewMatrix.HeaderRows;
+    protected override int HeaderRows => ReviewMatrix.HeaderRows(_reviews);
 
     /// <inheritdoc/>
     protected override int RowCount => _reviews.Rows.Count;

@@ -37,7 +37,7 @@ public static class ProgrammeSheet
         }
 
         sheet.Title("the whole programme");
-        string total = AttentionText.Total(programme.Campaigns);
+        string total = AttentionText.Total(programme.Campaigns, programme.OpenCampaign, programme.Checks);
         if (CellText.Wrap(total, width).Count > CaptionRows)
         {
             // Above the list there is no room for all of it.

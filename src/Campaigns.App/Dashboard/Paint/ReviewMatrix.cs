@@ -8,12 +8,14 @@ namespace Campaigns.App.Dashboard.Paint;
 /// <summary>Paints which experiment survived in which review: a row an experiment, a column a review with its day and figures above.</summary>
 public static class ReviewMatrix
 {
+    private const string Taken = "taken", Time = "at, UTC", Survive = "survive", Tested = "tested", Family = "family";
     private const int ColumnWidth = 11;
     private const int ShortestCode = 10;
     private const int LongestCode = 16;
 
-    /// <summary>Rows above the first experiment: number, day, survivors, tested, family.</summary>
-    public const int HeaderRows = 5;
+    /// <summary>Rows above the first experiment: number, day, where two reviews share a day also the time, survivors, tested, family.</summary>
+    /// <param name="reviews">What is shown.</param>
+    public static int HeaderRows(ReviewsModel reviews) => NamesOf(reviews).Length;
 
     /// <summary>How many reviews there is room for.</summary>
     /// <param name="reviews">What is shown.</param>
@@ -52,7 +54,8 @@ public static class ReviewMatrix
 
         int code = CodeWidth(reviews);
         int last = Math.Min(reviews.Reviews.Count, first + Room(reviews, width));
-        string[] names = ["review", "taken", "survive", "tested", "family"];
+        string[] names = NamesOf(reviews);
+        int header = names.Length;
         for (int y = 0; y < names.Length; y++)
         {
             canvas.Write(0, y, names[y], Ink.Heading);
@@ -60,13 +63,13 @@ public static class ReviewMatrix
 
         for (int review = first; review < last; review++)
         {
-            Head(canvas, reviews, review, code + 1 + ((review - first) * ColumnWidth), glyphs);
+            Head(canvas, reviews, review, code + 1 + ((review - first) * ColumnWidth), names, glyphs);
         }
 
         IReadOnlyList<ExperimentHistory> rows = reviews.Rows;
-        for (int y = HeaderRows; y < height && top + y - HeaderRows < rows.Count; y++)
+        for (int y = header; y < height && top + y - header < rows.Count; y++)
         {
-            ExperimentHistory experiment = rows[top + y - HeaderRows];
+            ExperimentHistory experiment = rows[top + y - header];
             canvas.Write(0, y, CellText.Fit(experiment.Code, code, glyphs.Cut));
             for (int review = first; review < last; review++)
             {
@@ -75,21 +78,21 @@ public static class ReviewMatrix
                 canvas.Write(code + 1 + ((review - first) * ColumnWidth), y, ListPainter.SurvivalText(survives, glyphs), ink);
             }
 
-            if (top + y - HeaderRows == reviews.Row)
+            if (top + y - header == reviews.Row)
             {
                 canvas.InkRow(y, Ink.Selected);
             }
         }
 
-        if (rows.Count == 0 && height > HeaderRows)
+        if (rows.Count == 0 && height > header)
         {
-            canvas.Write(1, HeaderRows, CellText.Fit("No experiment survives in one review and not in another; c shows all.", width - 2, glyphs.Cut), Ink.Open);
+            canvas.Write(1, header, CellText.Fit("No experiment survives in one review and not in another; c shows all.", width - 2, glyphs.Cut), Ink.Open);
         }
 
         return canvas;
     }
 
-    private static void Head(TextCanvas canvas, ReviewsModel reviews, int review, int x, GlyphSet glyphs)
+    private static void Head(TextCanvas canvas, ReviewsModel reviews, int review, int x, string[] names, GlyphSet glyphs)
     {
         ReviewHead head = reviews.Reviews[review].Head;
         string number = head.Number.ToString(CultureInfo.InvariantCulture);
@@ -102,14 +105,38 @@ public static class ReviewMatrix
             canvas.Put(end, 0, glyphs.Marked, Ink.Heading);
         }
 
-        canvas.Write(x, 1, head.At.UtcDateTime.ToString("yyyy-MM-dd", CultureInfo.InvariantCulture), isHere ? Ink.Heading : Ink.Text);
-        canvas.Write(x, 2, head.SurvivorCount.ToString(CultureInfo.InvariantCulture));
-        canvas.Write(x, 3, head.TestedCount.ToString(CultureInfo.InvariantCulture));
-        int after = canvas.Write(x, 4, head.FamilySize.ToString(CultureInfo.InvariantCulture));
-        if (head.IsInterim)
+        for (int y = 1; y < names.Length; y++)
         {
-            canvas.Put(after, 4, glyphs.Warns, Ink.Warning);
+            int after = canvas.Write(x, y, Figure(head, names[y]), isHere && y == 1 ? Ink.Heading : Ink.Text);
+            if (names[y] == Family && head.IsInterim)
+            {
+                canvas.Put(after, y, glyphs.Warns, Ink.Warning);
+            }
         }
+    }
+
+    private static string Figure(ReviewHead head, string name) => name switch
+    {
+        Taken => head.At.UtcDateTime.ToString("yyyy-MM-dd", CultureInfo.InvariantCulture),
+        Time => head.At.UtcDateTime.ToString("HH:mm", CultureInfo.InvariantCulture),
+        Survive => head.SurvivorCount.ToString(CultureInfo.InvariantCulture),
+        Tested => head.TestedCount.ToString(CultureInfo.InvariantCulture),
+        _ => head.FamilySize.ToString(CultureInfo.InvariantCulture),
+    };
+
+    private static string[] NamesOf(ReviewsModel reviews)
+    {
+        ArgumentNullException.ThrowIfNull(reviews);
+        IReadOnlyList<ReviewRecord> all = reviews.Reviews;
+        for (int i = 1; i < all.Count; i++)
+        {
+            if (all[i].Head.At.UtcDateTime.Date == all[i - 1].Head.At.UtcDateTime.Date)
+            {
+                return ["review", Taken, Time, Survive, Tested, Family];
+            }
+        }
+
+        return ["review", Taken, Survive, Tested, Family];
     }
 
     private static int CodeWidth(ReviewsModel reviews)
