@@ -121,7 +121,7 @@ public sealed record ExperimentAnalysis
     {
         if (specimens is { } s)
         {
-            string unmarked = s.UnmarkedCount > 0 ? FormattableString.Invariant($" {s.UnmarkedCount} reading(s) without a specimen were taken as one each.") : "";
+            string unmarked = s.UnmarkedCount > 0 ? FormattableString.Invariant($" {s.UnmarkedCount} {(s.UnmarkedCount == 1 ? "reading without a specimen was taken as one" : "readings without a specimen were taken as one each")}.") : "";
             string each = s.FewestReadings == s.MostReadings ? FormattableString.Invariant($"{s.MostReadings}") : FormattableString.Invariant($"{s.FewestReadings} to {s.MostReadings}");
             return FormattableString.Invariant($"Readings of one specimen are not independent, so {(isTested ? "the analysis runs" : "an analysis would run")} on the means of {s.SpecimenCount} specimens ({s.ReadingCount} readings, {each} a specimen).{unmarked}");
         }

@@ -39,7 +39,9 @@ public static class PlanScenarios
     }
 
     /// <summary>The campaign at another level; families that have a level of their own keep their shares of it.</summary>
-    private static Campaign At(Campaign campaign, SignificanceLevel level) => campaign with
+    /// <param name="campaign">The campaign.</param>
+    /// <param name="level">The level in the place of the sealed one.</param>
+    public static Campaign At(Campaign campaign, SignificanceLevel level) => (campaign ?? throw new ArgumentNullException(nameof(campaign))) with
     {
         Level = level,
         Families = [.. campaign.Families.Select(f => f.Level is { } own ? f with { Level = new SignificanceLevel(Math.Min(own.Value * (level.Value / campaign.Level.Value), Math.BitDecrement(1.0))) } : f)],

@@ -1,7 +1,7 @@
 namespace Campaigns.Domain;
 
 /// <summary>The data or the plan was refused and nothing was changed. The message is one sentence for people; <see cref="Details"/> lists every problem where there are several.</summary>
-public sealed class RefusedException : Exception
+public class RefusedException : Exception
 {
     /// <summary>Makes the exception.</summary>
     /// <param name="message">What was refused, where, and what to do.</param>

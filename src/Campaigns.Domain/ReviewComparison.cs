@@ -17,14 +17,14 @@ public sealed record ReviewComparison(
     /// <summary>Experiments on a line of both with another p-value.</summary>
     public int OtherP { get; init; }
 
-    /// <summary>Experiments that amendments of the plan added between the two.</summary>
-    public int AmendedIn { get; init; }
+    /// <summary>Who was amended in, withdrawn or taken in again between the two, family by family.</summary>
+    public IReadOnlyList<ReviewFamilyChange> FamilyChanges { get; init; } = [];
 
-    /// <summary>Experiments withdrawn between the two.</summary>
-    public int Withdrawn { get; init; }
+    /// <summary>Version of the plan at the earlier review: the number of its latest amendment, 0 as it was sealed.</summary>
+    public int PlanBefore { get; init; }
 
-    /// <summary>Experiments taken in again between the two.</summary>
-    public int TakenBack { get; init; }
+    /// <summary>The same at the later one.</summary>
+    public int PlanAfter { get; init; }
 
     /// <summary>Hypotheses that each family counted in the earlier review.</summary>
     public IEnumerable<int> SizesBefore => Before.Members.Families.Select(f => f.Size);
@@ -50,6 +50,7 @@ public sealed record ReviewComparison(
         ArgumentNullException.ThrowIfNull(events);
         ArgumentNullException.ThrowIfNull(whyWithoutLine);
         var judge = new ReviewCounterfactual(campaign, before, after);
+        var families = new ReviewFamilyEvents(events, before, after);
         var differences = new List<ReviewDifference>();
         (int kept, int otherAdjusted, int otherP, int added, int gone) = (0, 0, 0, 0, 0);
         int a = 0;
@@ -76,9 +77,9 @@ public sealed record ReviewComparison(
             {
                 ReviewReason reason = inBefore && inAfter ? Why(judge, before, after, a, b) : whyWithoutLine(!inAfter, key);
                 int family = inAfter ? after.FamilyAt(b) : before.FamilyAt(a);
-                differences.Add(new ReviewDifference(
+                differences.Add(families.Told(new ReviewDifference(
                     key, survives, first, second, reason, after.Members.Families[family].Family.Name, before.Members.Families[family].Size, after.Members.Families[family].Size,
-                    [.. (events.GetValueOrDefault(key) ?? []).Where(e => reason != ReviewReason.FirstTested || e.Cause is ReviewCause.AmendedIn or ReviewCause.PlanAmendment)]));
+                    [.. (events.GetValueOrDefault(key) ?? []).Where(e => reason != ReviewReason.FirstTested || e.Cause is ReviewCause.AmendedIn or ReviewCause.PlanAmendment)]), family));
             }
 
             a += inBefore ? 1 : 0;
@@ -88,9 +89,7 @@ public sealed record ReviewComparison(
         return new ReviewComparison(before, after, differences, kept, otherAdjusted, added, gone)
         {
             OtherP = otherP,
-            AmendedIn = events.Values.Count(e => e.Any(x => x.Cause == ReviewCause.AmendedIn)),
-            Withdrawn = events.Values.Count(e => e.LastOrDefault(x => x.Cause is ReviewCause.Withdrawal or ReviewCause.WithdrawalTakenBack)?.Cause == ReviewCause.Withdrawal),
-            TakenBack = events.Values.Count(e => e.LastOrDefault(x => x.Cause is ReviewCause.Withdrawal or ReviewCause.WithdrawalTakenBack)?.Cause == ReviewCause.WithdrawalTakenBack),
+            FamilyChanges = families.Changes(),
         };
     }
 

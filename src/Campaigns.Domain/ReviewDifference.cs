@@ -11,4 +11,16 @@ namespace Campaigns.Domain;
 /// <param name="SizeAfter">The same of the later one.</param>
 /// <param name="Events">What was done to it between the two, oldest first.</param>
 public sealed record ReviewDifference(
-    long Key, bool IsGained, ReviewLine? Before, ReviewLine? After, ReviewReason Reason, string Family, int SizeBefore, int SizeAfter, IReadOnlyList<ReviewEvent> Events);
+    long Key, bool IsGained, ReviewLine? Before, ReviewLine? After, ReviewReason Reason, string Family, int SizeBefore, int SizeAfter, IReadOnlyList<ReviewEvent> Events)
+{
+    /// <summary>
+    /// Where the reason is a gate: what was done to experiments of the family on which its own waits. Where it is the size of its family: the decisions that changed it. Else empty. In the plan's order.
+    /// </summary>
+    public IReadOnlyList<ReviewEvent> FamilyEvents { get; init; } = [];
+
+    /// <summary>Where the reason is a gate, the family on which its own waits; else null.</summary>
+    public string? Gate { get; init; }
+
+    /// <summary>Experiments of that family whose results came, changed or went between the two.</summary>
+    public int GateResults { get; init; }
+}

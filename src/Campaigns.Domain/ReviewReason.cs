@@ -37,7 +37,17 @@ public enum ReviewReason
 /// <summary>What was done to an experiment between two reviews.</summary>
 /// <param name="Cause">What.</param>
 /// <param name="Reason">The reason given for it; null where none is asked for.</param>
-public sealed record ReviewEvent(ReviewCause Cause, string? Reason);
+public sealed record ReviewEvent(ReviewCause Cause, string? Reason)
+{
+    /// <summary>Code of the experiment; empty where it does not matter which.</summary>
+    public string Experiment { get; init; } = "";
+
+    /// <summary>Name of its family; empty for the one family of a campaign that names none.</summary>
+    public string Family { get; init; } = "";
+
+    /// <summary>Whether its family counts another number of hypotheses for it: it was amended in, or withdrawn without data, or came back so.</summary>
+    public bool ChangesFamily { get; init; }
+}
 
 /// <summary>What can be done to an experiment between two reviews.</summary>
 public enum ReviewCause

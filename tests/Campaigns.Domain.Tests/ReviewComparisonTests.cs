@@ -87,6 +87,31 @@ public sealed class ReviewComparisonTests
     }
 
     [Fact]
+    public void What_was_done_to_the_families_on_which_one_waits_is_told_with_its_gate_and_with_no_other()
+    {
+        // c waits on b, b on a: all three gates stand or fall with a, and what was done in d has nothing to do with them.
+        Campaign campaign = Campaign("holm") with
+        {
+            Level = new SignificanceLevel(0.05),
+            Families = [new Family("a"), new Family("b") { OpensAfter = "a" }, new Family("c") { OpensAfter = "b" }, new Family("d") { Level = new SignificanceLevel(0.01) }],
+        };
+        var events = new Dictionary<long, IReadOnlyList<ReviewEvent>>
+        {
+            [1] = [new ReviewEvent(ReviewCause.Exclusion, "torn") { Experiment = "A", Family = "a" }],
+            [2] = [new ReviewEvent(ReviewCause.AddedValues, "more") { Experiment = "B", Family = "b" }],
+            [4] = [new ReviewEvent(ReviewCause.PlanAmendment, "r") { Experiment = "D", Family = "d" }],
+            [9] = [new ReviewEvent(ReviewCause.Withdrawal, "gone") { Experiment = "D2", Family = "d", ChangesFamily = true }],
+        };
+        ReviewComparison compared = ReviewComparison.Of(campaign, InFamilies(campaign, 1, 0.9, 1e-6, 1e-6, 0.5), InFamilies(campaign, 2, 1e-6, 1e-6, 1e-6, 0.5), events, NotAsked);
+        Assert.Equal([(1L, true, ReviewReason.OwnP), (2L, true, ReviewReason.FamilyOpened), (3L, true, ReviewReason.FamilyOpened)], Told(compared));
+        Assert.Equal([null, "a", "b"], compared.Differences.Select(d => d.Gate));
+        Assert.Equal([0, 1, 0], compared.Differences.Select(d => d.GateResults));
+        Assert.Equal(["", "A", "B A"], compared.Differences.Select(d => string.Join(' ', d.FamilyEvents.Select(e => e.Experiment))));
+        Assert.Equal(
+            [new ReviewFamilyChange("a", 0, 0, 0), new ReviewFamilyChange("b", 0, 0, 0), new ReviewFamilyChange("c", 0, 0, 0), new ReviewFamilyChange("d", 0, 1, 0)], compared.FamilyChanges);
+    }
+
+    [Fact]
     public void What_lost_its_line_is_told_by_what_the_record_says_of_it()
     {
         var events = new Dictionary<long, IReadOnlyList<ReviewEvent>> { [2] = [new ReviewEvent(ReviewCause.Exclusion, "a scratch")] };
@@ -183,12 +208,18 @@ public sealed class ReviewComparisonTests
         return Judged(Campaign(correction), new ReviewedFamily(Head(number, size, lines.Length), lines.Select(l => l.Key).ToArray(), members, [], []));
     }
 
-    private static ReviewedFamily InTwoFamilies(Campaign campaign, int number, double a, double b)
+    private static ReviewedFamily InTwoFamilies(Campaign campaign, int number, double a, double b) => InFamilies(campaign, number, a, b);
+
+    /// <summary>An experiment in each family, with these p-values.</summary>
+    private static ReviewedFamily InFamilies(Campaign campaign, int number, params double[] p)
     {
         var tally = new FamilyTally(campaign);
-        tally.Add("a", null, null, PValue.FromValue(a));
-        tally.Add("b", null, null, PValue.FromValue(b));
-        return Judged(campaign, new ReviewedFamily(Head(number, 2, 2), new long[] { 1, 2 }, tally.Members(testedOnly: false), [], []));
+        for (int i = 0; i < p.Length; i++)
+        {
+            tally.Add(campaign.Families[i].Name, null, null, PValue.FromValue(p[i]));
+        }
+
+        return Judged(campaign, new ReviewedFamily(Head(number, p.Length, p.Length), p.Select((_, i) => i + 1L).ToArray(), tally.Members(testedOnly: false), [], []));
     }
 
     private static ReviewedFamily Judged(Campaign campaign, ReviewedFamily review)

@@ -21,6 +21,7 @@ number <- function(x) ifelse(x == "", NA, suppressWarnings(as.numeric(x)))
 results <- read("results.csv")
 exclusions <- read("exclusions.csv")
 m <- read(file.path("measurements", "measurements.csv"))
+if (is.null(m)) m <- data.frame(experiment = character(0), group = character(0), value = character(0))   # nothing was loaded
 if (!is.null(exclusions)) {
   last <- exclusions[!duplicated(exclusions[c("experiment", "file", "line")], fromLast = TRUE), ]
   out <- last[last$excluded == "true", ]

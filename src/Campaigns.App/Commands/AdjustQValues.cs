@@ -1,3 +1,4 @@
+using Campaigns.App.Wording;
 using Campaigns.Statistics.Probability;
 using Campaigns.Statistics.TrueNulls;
 
@@ -18,11 +19,11 @@ internal sealed class AdjustQValues
         _values = QValues.Of(p, share);
         Sentences =
         [
-            share.Share is { } known
-                ? FormattableString.Invariant($"{Column}: Storey's q-value with an estimated share of true nulls of {known:0.###} ({share.Method}) among the {p.Length} tested; other estimates: {Other(TrueNullShare.EstimateByBootstrap(p))}, {Other(TrueNullShare.EstimateBySmoother(p))}.")
+            TrueNullText.Share(share, [TrueNullShare.EstimateByBootstrap(p), TrueNullShare.EstimateBySmoother(p)], p.Length) is { } known
+                ? $"{Column}: Storey's q-value with {known}."
                 : $"{Column}: not estimable. {share.Reason}",
             "A q-value estimates the false discovery rate among this row and all with smaller p; it holds no error rate, leaves untested rows out, and is not valid for strongly dependent p-values. The chosen correction alone decides.",
-            .. p.Length is > 0 and < TrueNullShare.FewPValues ? [FormattableString.Invariant($"{p.Length} p-values are few for an estimate of the share of true nulls; {TrueNullShare.FewPValues} or more would be better.")] : (string[])[],
+            .. TrueNullText.Few(p.Length) is { } few ? [few] : (string[])[],
         ];
     }
 
@@ -31,7 +32,4 @@ internal sealed class AdjustQValues
 
     /// <summary>The q-value of a p-value, by its place; null where none can be estimated.</summary>
     public PValue? At(int place) => _values?[place];
-
-    private static string Other(TrueNullShare share) =>
-        share.Share is { } known ? FormattableString.Invariant($"{known:0.###} ({share.Method})") : $"none ({share.Method})";
 }

@@ -66,7 +66,7 @@ internal sealed class AdjustVerb : Verb
         long blank = table.RowCount == 0 || table.Headers.Count > 1 ? 0 : table.Line(table.RowCount - 1) - headerLines - table.RowCount;
         if (blank > 0)
         {
-            session.Host.Notice(FormattableString.Invariant($"Note: {blank} blank line(s) were passed over and are not counted in the family; write NA for a hypothesis that has no p-value."));
+            session.Host.Notice(FormattableString.Invariant($"Note: {Counted.Of(blank, "blank line")} {Counted.Word(blank, "was passed over and is", "were passed over and are")} not counted in the family; write NA for a hypothesis that has no p-value."));
         }
     }
 
@@ -108,9 +108,9 @@ internal sealed class AdjustVerb : Verb
         {
             if (given < rows)
             {
-                string batch = procedures.Any(c => c is Correction) ? FormattableString.Invariant($"; they count as p = 1 in the family of {rows}. --family-size sets another size.") : ".";
-                string online = procedures.Any(c => c is OnlineProcedure) ? " In an online procedure they take no step, and their cells stay empty." : "";
-                session.Host.Notice(FormattableString.Invariant($"Note: {rows - given} row(s) have no p-value{batch}{online}"));
+                string batch = procedures.Any(c => c is Correction) ? FormattableString.Invariant($"; {Counted.Word(rows - given, "it counts", "they count")} as p = 1 in the family of {rows}. --family-size sets another size.") : ".";
+                string online = procedures.Any(c => c is OnlineProcedure) ? $" In an online procedure {Counted.Word(rows - given, "it takes no step, and its", "they take no step, and their")} cells stay empty." : "";
+                session.Host.Notice(FormattableString.Invariant($"Note: {Counted.Of(rows - given, "row")} {Counted.Word(rows - given, "has", "have")} no p-value{batch}{online}"));
             }
 
             return rows;

@@ -21,7 +21,7 @@ internal sealed class BackupVerb : Verb
         string file = session.Get(_file);
         using Catalog.Catalog catalog = session.OpenCatalog();
         BackupSummary backup = BackupWriter.Write(catalog, file, session.Get(_replace));
-        session.Say(FormattableString.Invariant($"Wrote '{file}': {backup.Bytes} bytes; the ledger ends with {backup.Head}. Keep that head elsewhere; 'campaigns restore-check {file} --head HEAD' holds the copy against it."));
+        session.Say(FormattableString.Invariant($"Wrote '{file}': {backup.Bytes} bytes. Keep the head of its ledger elsewhere; 'campaigns restore-check {file} --head HEAD' holds the copy against it. Head: {backup.Head}"));
         session.PrintForScripts(new RowTable(
             [new Column("file", null), new Column("bytes", null, true), new Column("head", null)],
             [[Cell.Text(file), Cell.Whole(backup.Bytes), Cell.Text(backup.Head.ToString())]]));

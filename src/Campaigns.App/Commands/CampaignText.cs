@@ -47,7 +47,7 @@ internal static class CampaignText
         Campaign campaign = standing.Campaign;
         List<string> lines =
         [
-            .. FamilyVerdict.ProcedureOf(campaign) is OnlineProcedure online ? [.. OnlineText.Lines(standing, online), .. FamilyText.Warnings(standing)] : FamilyText.Lines(standing),
+            .. Procedure(standing),
             .. TestsOf(tests).Select(test => $"{test.Name}, assumes: {char.ToLowerInvariant(test.Assumes[0])}{test.Assumes[1..]}"),
         ];
         if (campaign.IsExploratory)
@@ -60,6 +60,11 @@ internal static class CampaignText
         return lines;
     }
 
+    /// <summary>Which procedure decides, over what, and what it promises.</summary>
+    public static IEnumerable<string> Procedure(CampaignOverview standing) => FamilyVerdict.ProcedureOf(standing.Campaign) is OnlineProcedure online
+        ? [.. OnlineText.Lines(standing, online), .. FamilyText.Warnings(standing)]
+        : FamilyText.Lines(standing);
+
     /// <summary>Lines on experiments that were withdrawn or deviate from their plan; empty where none does.</summary>
     public static IEnumerable<string> Deviations(CampaignOverview standing)
     {
@@ -70,12 +75,12 @@ internal static class CampaignText
 
         if (standing.AmendedPlan is { Amendments: > 0 } plan)
         {
-            yield return FormattableString.Invariant($"The sealed plan was amended {plan.Amendments} time(s): {plan.Added} experiment(s) added, {plan.Changed} changed; 'campaigns show {standing.Campaign.Code}' tells what, who, when and why.");
+            yield return FormattableString.Invariant($"The sealed plan was amended {(plan.Amendments == 1 ? "once" : Counted.Of(plan.Amendments, "time"))}: {Counted.Of(plan.Added, "experiment")} added, {plan.Changed} changed; 'campaigns show {standing.Campaign.Code}' tells what, who, when and why.");
         }
 
         if (standing.AmendedCount > 0)
         {
-            yield return FormattableString.Invariant($"Deviations: {standing.AmendedCount} experiment(s) received values after they had been tested, had values left out, were withdrawn at some time, were added or changed by an amendment of the sealed plan, or were tested short of their plan; 'campaigns show {standing.Campaign.Code} EXPERIMENT' gives the reason.");
+            yield return FormattableString.Invariant($"Deviations: {Counted.Of(standing.AmendedCount, "experiment")}. Each received values after it had been tested, had values left out, was withdrawn at some time, was added or changed by an amendment of the sealed plan, or was tested short of its plan; 'campaigns show {standing.Campaign.Code} EXPERIMENT' gives the reason.");
         }
     }
 
@@ -95,11 +100,11 @@ internal static class CampaignText
 
         string which = FormattableString.Invariant($"Review {review.Number} of {review.At:yyyy-MM-dd HH:mm} UTC{(review.IsInterim ? " (interim: tested experiments only)" : "")}");
         return standing.AwaitingNewTest > 0
-                ? FormattableString.Invariant($"{which} is out of date: the values of {standing.AwaitingNewTest} experiment(s) were changed after their test, or they were taken in again; 'campaigns test {standing.Campaign.Code}' and 'campaigns review {standing.Campaign.Code}' take them in.")
+                ? FormattableString.Invariant($"{which} is out of date: {Counted.Of(standing.AwaitingNewTest, "experiment")} {Counted.Word(standing.AwaitingNewTest, "awaits", "await")} a new test, because values were changed after the last one or because of being taken in again; 'campaigns test {standing.Campaign.Code}' and 'campaigns review {standing.Campaign.Code}' take this in.")
             : standing.DecisionsSinceReview > 0
-                ? FormattableString.Invariant($"{which} is out of date: {standing.DecisionsSinceReview} decision(s) to withdraw experiments, to take them in again or to amend the plan came after it; 'campaigns review {standing.Campaign.Code}' takes a new one.")
+                ? FormattableString.Invariant($"{which} is out of date: {Counted.Of(standing.DecisionsSinceReview, "decision")} to withdraw experiments, to take them in again or to amend the plan came after it; 'campaigns review {standing.Campaign.Code}' takes a new one.")
             : standing.ResultsSinceReview > 0
-                ? FormattableString.Invariant($"{which} is out of date: {standing.ResultsSinceReview} result(s) came after it; 'campaigns review {standing.Campaign.Code}' takes a new one.")
+                ? FormattableString.Invariant($"{which} is out of date: {Counted.Of(standing.ResultsSinceReview, "result")} came after it; 'campaigns review {standing.Campaign.Code}' takes a new one.")
             : review.IsInterim && review.FamilySize != standing.FamilySize
                 ? FormattableString.Invariant($"{which} counted {review.FamilySize} of {standing.FamilySize} hypotheses, these results count all of them; 'campaigns review {standing.Campaign.Code}' takes a review that does.")
             : $"{which} holds these results.";

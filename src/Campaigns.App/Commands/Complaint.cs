@@ -29,6 +29,7 @@ internal static class Complaint
 
         return typed.Errors.Count == 0 ? null
             : command == root && typed.Tokens.Count == 0 ? $"A command is missing; {help}."
+            : MissingArgument(typed) is { } missing ? $"'campaigns {NameOf(command, root)}' needs {missing.Name}: {char.ToLowerInvariant(missing.Description![0])}{missing.Description[1..].TrimEnd('.')}; {help}."
             : $"{typed.Errors[0].Message.TrimEnd('.')}; {help}.";
     }
 
@@ -64,13 +65,18 @@ internal static class Complaint
         return arguments.FirstOrDefault() ?? (typed.UnmatchedTokens is [string first, ..] ? first : null);
     }
 
+    /// <summary>The first argument that is not there; what is missing first is said first, before options that are missing too.</summary>
+    private static Argument? MissingArgument(ParseResult typed) => typed.CommandResult.Command.Arguments
+        .FirstOrDefault(a => a.Arity.MinimumNumberOfValues > (typed.GetResult(a)?.Tokens.Count ?? 0) && a.Description is { Length: > 0 });
+
     private static string Unknown(string word, Command command, RootCommand root, string help)
     {
         if (LooksLikeOption(word))
         {
             IEnumerable<string> options = command.Options.Concat(root.Options.Where(o => o.Recursive)).Select(o => o.Name);
             string name = word.Split('=')[0];
-            return $"There is no option '{name}'{Meant(Nearest.Of(name, options))}; {help}.";
+            string escape = command.Arguments.Count > 0 ? ", and a name that begins with a hyphen is typed after '--'" : "";
+            return $"There is no option '{name}'{Meant(Nearest.Of(name, options))}; {help}{escape}.";
         }
 
         return command == root

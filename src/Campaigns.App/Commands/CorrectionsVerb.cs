@@ -11,8 +11,6 @@ namespace Campaigns.App.Commands;
 /// <summary>corrections: every correction side by side, and what hangs on the choice.</summary>
 internal sealed class CorrectionsVerb : Verb
 {
-    private const string NeverToChoose = "The sealed correction alone decides what survives; choosing another after seeing this table would undo what a correction is for.";
-
     private readonly Argument<string> _code = SharedOptions.Code();
     private readonly Option<bool> _byExperiment = new("--by-experiment") { Description = "A row an experiment with its adjusted p under every correction, instead of a row a correction." };
     private readonly Option<bool> _hanging = new("--hanging") { Description = "Of these, only the experiments that survive under some corrections of the campaign's kind and not under others." };
@@ -61,7 +59,7 @@ internal sealed class CorrectionsVerb : Verb
             ],
             outcomes.Select(o => (Cell[])
             [
-                Cell.Text(o.Key), Cell.Text(o.IsMixed ? FamilyText.Procedures(standing.Campaign) : o.Procedure.Name), Cell.Text(CampaignText.RateWords(o.Procedure.Controls)), Cell.Text(o.IsMixed ? null : DependenceWords(o.Procedure.ValidUnder)),
+                Cell.Text(o.Key), Cell.Text(o.IsMixed ? FamilyText.Procedures(standing.Campaign) : o.Procedure.Name), Cell.Text(CampaignText.RateWords(o.Procedure.Controls)), Cell.Text(o.IsMixed ? null : CorrectionsText.Under(o.Procedure.ValidUnder)),
                 Cell.Whole(o.IsSealed ? standing.SurvivorCount : o.SurvivorCount), Cell.Setting(standing.Campaign.Level.Value), Cell.Whole(standing.FamilySize),
                 Cell.Truth(o.IsSealed || standing.Families.Any(f => f.Correction == o.Key)), Cell.Text(o.IsMixed ? string.Join(" ", FamilyText.Guarantees(standing.Overview)) : o.Procedure.Guarantee), Cell.Text(o.IsMixed ? null : o.Procedure.Source),
             ]))
@@ -69,8 +67,8 @@ internal sealed class CorrectionsVerb : Verb
             Above = [FormattableString.Invariant($"{standing.Campaign.Code}: {standing.TestedCount} results in {Of(standing)}, every correction at {(standing.Campaign.JudgedFamilies.Count == 0 ? standing.Campaign.Level.ToString() : "the level of each family")}")],
             Below =
             [
-                FormattableString.Invariant($"Hanging on the choice among those that hold the {CampaignText.RateWords(standing.Campaign.ErrorRate)}: {hanging} experiment(s){(hanging > 0 ? "; --hanging lists them" : "")}."),
-                NeverToChoose, .. InFamilies(standing), .. Ending(standing),
+                $"{CorrectionsText.Hanging(hanging, CampaignText.RateWords(standing.Campaign.ErrorRate))}{(hanging > 0 ? "; --hanging lists them" : "")}.",
+                CorrectionsText.NeverToChoose, .. InFamilies(standing), .. Ending(standing),
             ],
         };
     }
@@ -101,7 +99,7 @@ internal sealed class CorrectionsVerb : Verb
         {
             Above = [FormattableString.Invariant($"{standing.Campaign.Code}: adjusted p-values in {Of(standing)}, to be held against {(standing.Campaign.JudgedFamilies.Count == 0 ? standing.Campaign.Level.ToString() : "the level of each family")}")],
             WhenEmpty = hangingOnly ? "No experiment hangs on the choice." : "There is nothing to show.",
-            Below = [$"Hangs: survives under some of the corrections that hold the {CampaignText.RateWords(rate)}, each under its own assumptions, and not under others.", NeverToChoose, .. qValues.Sentences, .. InFamilies(standing), .. Ending(standing)],
+            Below = [$"Hangs: survives under some of the corrections that hold the {CampaignText.RateWords(rate)}, each under its own assumptions, and not under others.", CorrectionsText.NeverToChoose, .. qValues.Sentences, .. InFamilies(standing), .. Ending(standing)],
         };
     }
 
@@ -135,15 +133,4 @@ internal sealed class CorrectionsVerb : Verb
     private static IEnumerable<string> InFamilies(CampaignStanding standing) => standing.Campaign.JudgedFamilies.Count == 0
         ? []
         : [FormattableString.Invariant($"Each correction is applied in each of the {standing.Families.Count} families, at the family's level and behind its gate; an adjusted p of a closed family is 1. The sealed ones are: {string.Join("; ", standing.Families.Select(f => $"{f.Name} {f.Correction} at {FamilyText.Level(f.Level)}"))}.")];
-
-    private static string DependenceWords(Dependence dependence) => dependence switch
-    {
-        Dependence.Any => "any dependence",
-        Dependence.Sidak => "independence, or Sidak's inequality",
-        Dependence.Simes => "independence, or Simes' inequality",
-        Dependence.PositiveRegression => "independence, or positive dependence",
-        Dependence.Independent => "independence",
-        Dependence.IndependentConservative => "independence, and nulls that are uniformly conservative",
-        _ => throw new ArgumentOutOfRangeException(nameof(dependence), dependence, "No words for this dependence."),
-    };
 }

@@ -42,7 +42,7 @@ internal static class DecisionRows
 
         if (lines.Any(l => l.Entry.Overlaps))
         {
-            below.Insert(0, "Overlaps: ran at the same time as another experiment of its stream; what was not known at its start was counted as the worst.");
+            below.Insert(0, OnlineText.Overlaps);
         }
 
         return below;

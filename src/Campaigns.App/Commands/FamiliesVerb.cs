@@ -61,7 +61,7 @@ internal sealed class FamiliesVerb : Verb
             return FamilyTable.Of(campaign, overview.Families) with
             {
                 Above = [$"{campaign.Code}: {CampaignText.Goal(campaign)}"],
-                Below = [.. FamilyText.Lines(overview)],
+                Below = [.. CampaignText.Procedure(overview), .. FamilyText.WithoutLeavers(overview), .. CampaignText.Deviations(overview)],
             };
         }
 

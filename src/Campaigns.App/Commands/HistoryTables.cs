@@ -15,7 +15,7 @@ internal static class HistoryTables
             [new("experiment", "experiment"), .. history.Reviews.Select((r, i) => new Column(ReviewWording.Number(r), $"review {ReviewWording.Number(r)}", false, reviews - i))],
             shown.Select(e => (Cell[])[Cell.Text(e.Code), .. e.Lines.Select(l => Cell.Text(l is not { } line ? "-" : line.Survives ? "survives" : "no"))]))
         {
-            Above = [FormattableString.Invariant($"{code}: {shown.Count} of {history.Experiments.Count} experiments in {reviews} review(s)")],
+            Above = [FormattableString.Invariant($"{code}: {shown.Count} of {history.Experiments.Count} experiments in {Counted.Of(reviews, "review")}")],
             Below =
             [
                 "survives, no: what the review found on its day; -: no line in that review, since the experiment had no result that counted then (not tested, awaiting a new test, or withdrawn).",

@@ -107,7 +107,7 @@ internal sealed class LedgerVerb : Verb
         ];
         TextTable.Sentences(session.Host, rest);
         session.Host.Out.WriteLine();
-        TextTable.Sentences(session.Host, [.. LedgerText.Legend, $"Head of the ledger: {head}. 'campaigns ledger verify' proves the record whole."]);
+        TextTable.Sentences(session.Host, [.. LedgerText.Legend, $"'campaigns ledger verify' proves the record whole. Head of the ledger: {head}"]);
     }
 
     private static void Indented(Host host, IEnumerable<string> sentences)

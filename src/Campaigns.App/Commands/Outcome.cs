@@ -1,4 +1,5 @@
 using Campaigns.App.Output;
+using Campaigns.App.Wording;
 using Campaigns.Catalog;
 using Campaigns.Catalog.Ledger;
 using Campaigns.Catalog.Loading;
@@ -26,6 +27,10 @@ internal static class Outcome
         catch (UsageException error)
         {
             return Fail(host, ExitCode.WrongUsage, error.Message);
+        }
+        catch (ChangedSinceException error)
+        {
+            return Fail(host, ExitCode.Refused, error.Message, [.. error.Since.Select(LedgerText.Sentence), $"--head {error.Head}"]);
         }
         catch (RefusedException error)
         {

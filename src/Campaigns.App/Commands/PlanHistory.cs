@@ -60,11 +60,11 @@ internal static class PlanHistory
     /// <param name="campaign">A sealed campaign.</param>
     /// <param name="digest">SHA-256 of its sealed plan, computed anew.</param>
     public static string DigestSentence(Campaign campaign, string? digest) =>
-        $"Its SHA-256 {(digest == campaign.PlanDigest ? "is the one that the seal stored" : "is NOT the one that the seal stored: the record was changed")}: {campaign.PlanDigest}.";
+        $"Its SHA-256 {(digest == campaign.PlanDigest ? "is the one that the seal stored" : "is NOT the one that the seal stored: the record was changed")}: {campaign.PlanDigest}";
 
     /// <summary>A row an experiment, in the columns of a plan file.</summary>
     public static RowTable Plan(IReadOnlyList<PlannedExperiment> plan) => new(
-        [new("experiment", "experiment"), .. PlanFields.All.Select(f => new Column(f.Name, f.Name.Replace('_', ' '), IsNumber(f.Name), f.Name is "groups" ? 1 : 2))],
+        [new("experiment", "experiment"), .. PlanFields.All.Select(f => new Column(f.Name, plan.Any(e => f.Text(e) is not null) ? f.Name.Replace('_', ' ') : null, IsNumber(f.Name), f.Name is "groups" ? 1 : 2, Wraps: !IsNumber(f.Name)))],
         plan.Select(e => (Cell[])[Cell.Text(e.Code), .. PlanFields.All.Select(f => CellOf(f, e))]))
     {
         WhenEmpty = "The plan names no experiments.",
@@ -73,14 +73,15 @@ internal static class PlanHistory
     /// <summary>A row a change of the sealed plan.</summary>
     public static RowTable Amendments(IReadOnlyList<PlanAmendment> amendments) => new(
         [
-            new("amendment", "amendment", true), new("at", "at"), new("by", "by"), new("experiment", "experiment"), new("field", "field"), new("before", "before"), new("after", "after"), new("reason", "reason"),
+            new("amendment", "amendment", true), new("at", null), new("by", null), new("experiment", "experiment", Wraps: true), new("field", "field", Wraps: true),
+            new("before", "before", Wraps: true), new("after", "after", Wraps: true), new("reason", null),
         ],
         amendments.SelectMany(a => a.Changes.Select(c => (Cell[])
         [
             Cell.Whole(a.Number), Cell.Text(Words.Instant(a.At)), Cell.Text(a.NamedBy), Cell.Text(c.Experiment), Cell.Text(c.IsAdded ? "added" : c.Field), Cell.Text(c.Before), Cell.Text(c.IsAdded ? null : c.After), Cell.Text(a.Reason),
         ])))
     {
-        Above = ["Amendments of the sealed plan"],
+        Above = ["Amendments of the sealed plan", .. amendments.Select(a => FormattableString.Invariant($"Amendment {a.Number}, {Words.Instant(a.At)}, by {a.NamedBy}: {a.Reason}"))],
         WhenEmpty = "The plan was never amended.",
     };
 

@@ -1,5 +1,6 @@
 using System.CommandLine;
 using Campaigns.App.Output;
+using Campaigns.App.Wording;
 using Campaigns.Catalog.Loading;
 using Campaigns.Catalog.Plans;
 using Campaigns.Domain;
@@ -29,7 +30,7 @@ internal sealed class PlanVerb : Verb
         string next = !campaign.IsSealed ? $"Next: 'campaigns seal {code}'."
             : change.Added + change.Changed == 0 ? "Nothing was amended."
             : $"Recorded as an amendment of the sealed plan; 'campaigns show {code} --amendments' lists it.";
-        session.Say(FormattableString.Invariant($"Plan of {code}: {change.Added} experiment(s) added, {change.Changed} changed, {change.Unchanged} as before. {next}"));
+        session.Say(FormattableString.Invariant($"Plan of {code}: {Counted.Of(change.Added, "experiment")} added, {change.Changed} changed, {change.Unchanged} as before. {next}"));
         session.PrintForScripts(new RowTable(
             [new Column("campaign", null), new Column("added", null, true), new Column("changed", null, true), new Column("unchanged", null, true)],
             [[Cell.Text(code), Cell.Whole(change.Added), Cell.Whole(change.Changed), Cell.Whole(change.Unchanged)]]));

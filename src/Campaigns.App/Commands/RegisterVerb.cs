@@ -23,7 +23,7 @@ internal sealed class RegisterVerb : Verb
         IReadOnlyList<StreamStore.Line> lines = new StreamStore(catalog).Register(code, session.Get(_experiments));
         session.Print(DecisionRows.Of(lines) with
         {
-            Below = [FormattableString.Invariant($"Registered {lines.Count} experiment(s) of {code}. The levels stand; 'campaigns test {code}' decides."), .. OnlineText.WithoutLevel(lines.Select(l => l.Entry)) is { } late ? [late] : (string[])[]],
+            Below = [FormattableString.Invariant($"Registered {Counted.Of(lines.Count, "experiment")} of {code}. The levels stand; 'campaigns test {code}' decides."), .. OnlineText.WithoutLevel(lines.Select(l => l.Entry)) is { } late ? [late] : (string[])[]],
         });
         return ExitCode.Done;
     }

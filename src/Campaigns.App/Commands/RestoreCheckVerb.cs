@@ -1,5 +1,6 @@
 using System.CommandLine;
 using Campaigns.App.Output;
+using Campaigns.App.Wording;
 using Campaigns.Catalog.Ledger;
 using Campaigns.Catalog.Providers;
 
@@ -48,14 +49,14 @@ internal sealed class RestoreCheckVerb : Verb
     {
         if (check.Faults.Count > 0)
         {
-            session.Say(FormattableString.Invariant($"'{file}' is not whole ({check.Faults.Count} fault(s)); do not restore it where another copy is at hand."));
+            session.Say(FormattableString.Invariant($"'{file}' is not whole ({Counted.Of(check.Faults.Count, "fault")}); do not restore it where another copy is at hand."));
             return;
         }
 
         session.Say($"'{file}' is whole: pages, references{(check.Head is null ? "" : ", structure and ledger")}.");
         foreach (CheckedCampaign campaign in check.Campaigns)
         {
-            session.Say(FormattableString.Invariant($"Campaign {campaign.Code} ({campaign.Title}): {campaign.Experiments} experiments."));
+            session.Say(FormattableString.Invariant($"Campaign {campaign.Code}{(campaign.Title.Length > 0 ? $" ({campaign.Title})" : "")}: {Counted.Of(campaign.Experiments, "experiment")}."));
         }
 
         if (check.Campaigns.Count == 0)
@@ -70,7 +71,7 @@ internal sealed class RestoreCheckVerb : Verb
         }
 
         session.Say(check.LastAt is { } at
-            ? FormattableString.Invariant($"The ledger has {head.Sequence} entries, the last of {Instant(at)}; it ends with {head}.")
+            ? FormattableString.Invariant($"The ledger has {head.Sequence} entries, the last of {Instant(at)}; it ends with {head}")
             : "The ledger is empty.");
         session.Say(wasHeld ? "It contains the head that was given." : "Whether its end was cut off cannot be seen without a head that was printed earlier (--head).");
     }

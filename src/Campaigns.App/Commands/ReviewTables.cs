@@ -22,7 +22,7 @@ internal static class ReviewTables
             Cell.Text(r.Head.ProgramVersion), Cell.Whole(r.LedgerSequence),
         ]))
     {
-        Above = [FormattableString.Invariant($"{code}: {records.Count} review(s), each as it was on its day")],
+        Above = [FormattableString.Invariant($"{code}: {Counted.Of(records.Count, "review")}, each as it was on its day")],
         Below =
         [
             .. records.SelectMany(r => r.Families.Select(f => ReviewWording.Family(r.Head, f))),
@@ -58,7 +58,7 @@ internal static class ReviewTables
         ]))
     {
         Above = [$"{ReviewWording.Line(head)}."],
-        Below = ["These are the lines that were stored on that day; experiments without a result then have none, and counted with p = 1."],
+        Below = [.. ReviewWording.Applied(head, lines.Select(l => l.Family)), "These are the lines that were stored on that day; experiments without a result then have none, and counted with p = 1."],
         WhenEmpty = "No experiment had a result.",
     };
 
@@ -75,13 +75,14 @@ internal static class ReviewTables
         [
             new("experiment", "experiment"), new("change", "change"), new("p_before", "p before", true, 1), new("p_after", "p after", true, 1), new("adjusted_p_before", "adjusted before", true),
             new("adjusted_p_after", "adjusted after", true), new("reason", null), new("events", null), new("family", hasFamilies ? "family" : null, GivesWay: 2),
-            new("family_size_before", null, true), new("family_size_after", null, true), new("because", "because", CutLast: true),
+            new("family_size_before", null, true), new("family_size_after", null, true), new("because", "because", CutLast: true, Wraps: true), new("family_events", null),
         ],
         comparison.Differences.Select(d => (Cell[])
         [
             Cell.Text(codes[d.Key]), Cell.Text(d.IsGained ? "gained" : "lost"), Cell.P(d.Before?.P), Cell.P(d.After?.P), Cell.P(d.Before?.AdjustedP), Cell.P(d.After?.AdjustedP),
             Cell.Text(d.Reason.Word()), Cell.Text(string.Join('|', d.Events.Select(e => e.Cause.Word()).Distinct())), Cell.Text(d.Family),
             Cell.Whole(d.SizeBefore), Cell.Whole(d.SizeAfter), Cell.Text(ReviewWording.Why(d)),
+            Cell.Text(string.Join('|', d.FamilyEvents.Select(e => $"{e.Experiment} {e.Cause.Word()}"))),
         ]))
         {
             Above = [ReviewWording.Summary(comparison), .. ReviewWording.Counts(comparison)],

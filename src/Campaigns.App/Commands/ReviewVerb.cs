@@ -50,7 +50,8 @@ internal sealed class ReviewVerb : Verb
             ? FormattableString.Invariant($"Review {review.Number} of {code}: {review.SurvivorCount} of {review.TestedCount} tested experiments survive, in a family of {review.FamilySize}.{interim}")
             : FormattableString.Invariant($"Nothing changed since review {review.Number} of {code}, which stands: {review.SurvivorCount} survivors in a family of {review.FamilySize}.{interim}"));
         SayFamilies(session, catalog, code);
-        foreach (string line in CampaignText.Deviations(new OverviewReader(catalog).Read(new CampaignStore(catalog).Get(code))))
+        CampaignOverview overview = new OverviewReader(catalog).Read(new CampaignStore(catalog).Get(code));
+        foreach (string line in CampaignText.Deviations(overview).Prepend(OnlineText.Awaiting(overview) ?? "").Where(line => line.Length > 0))
         {
             session.Say(line);
         }

@@ -40,7 +40,7 @@ internal static class RiskTable
         below.AddRange(campaigns.SelectMany(c => CampaignText.Deviations(c).Select(d => $"{c.Campaign.Code}: {d}")));
         if (campaigns.Length > 1)
         {
-            below.AddRange(AddingUp(risks));
+            below.AddRange(AddingUp(campaigns));
         }
 
         return new RowTable(Columns, rows) { Below = below, WhenEmpty = "The catalog holds no campaigns yet." };
@@ -126,15 +126,13 @@ internal static class RiskTable
     private static Cell[] Total(IReadOnlyList<CampaignRisk> risks)
     {
         CampaignOverview[] campaigns = [.. risks.Select(r => r.Overview)];
-        double expected = campaigns.Sum(c => FamilyRisk.ExpectedFalsePositives(c.TestedCount, c.Campaign.Level));
-        double logNone = campaigns.Sum(c => c.TestedCount * Accurate.Log1p(-c.Campaign.Level.Value));
+        (double expected, double any, double least) = Together(campaigns);
         bool allKnown = risks.All(r => r.Corrected is not null);
         double logNoneCorrected = risks.Sum(r => r.Corrected is { } corrected ? Accurate.Log1p(-corrected.AtLeastOne) : 0);
         return
         [
             Cell.Text("programme"), Cell.Whole(campaigns.Sum(c => (long)c.TestedCount)), Cell.Empty,
-            Cell.Number(expected), Cell.Number(-Accurate.Expm1(logNone)),
-            Cell.Number(campaigns.Max(c => FamilyRisk.AtLeastOneLowerBound(c.TestedCount, c.Campaign.Level))), Cell.Number(Math.Min(1, expected)),
+            Cell.Number(expected), Cell.Number(any), Cell.Number(least), Cell.Number(Math.Min(1, expected)),
             Cell.Whole(campaigns.Sum(c => (long)c.UncorrectedCount)), Cell.Whole(campaigns.Sum(c => (long)c.SurvivorCount)), Cell.Empty, Cell.Empty,
             Cell.Empty, risks.All(r => r.ExpectedFalseSurvivors is not null) ? Cell.Number(risks.Sum(r => r.ExpectedFalseSurvivors!.Value)) : Cell.Empty, Cell.Empty, Cell.Empty,
             allKnown ? Cell.Number(-Accurate.Expm1(logNoneCorrected)) : Cell.Empty,
@@ -144,11 +142,34 @@ internal static class RiskTable
         ];
     }
 
+    /// <summary>The risk of all campaigns together in sentences: the figures, and what adds up and what does not.</summary>
+    public static IReadOnlyList<string> Programme(IReadOnlyList<CampaignOverview> campaigns)
+    {
+        long tests = campaigns.Sum(c => (long)c.TestedCount);
+        if (tests == 0)
+        {
+            return ["Cumulative risk of the programme: nothing was tested yet."];
+        }
+
+        (double expected, double any, double least) = Together(campaigns);
+        return
+        [
+            FormattableString.Invariant($"Cumulative risk of the programme: {tests} tests in {campaigns.Count} campaign{(campaigns.Count == 1 ? "" : "s")}. Without a correction, if nothing is real, {NumberText.Screen(expected, 3)} false positives are to be expected, and the risk of at least one is {Words.Percent(any)} for independent tests (between {Words.Percent(least)} and {Words.Percent(Math.Min(1, expected))} whatever the dependence). {campaigns.Sum(c => (long)c.UncorrectedCount)} experiments would count as hits; {campaigns.Sum(c => (long)c.SurvivorCount)} survive the corrections of their campaigns."),
+            .. AddingUp(campaigns),
+        ];
+    }
+
+    /// <summary>Without correction: expected false positives of all campaigns, the risk of at least one for independent tests, and the least that it can be.</summary>
+    private static (double Expected, double Any, double Least) Together(IReadOnlyList<CampaignOverview> campaigns) => (
+        campaigns.Sum(c => FamilyRisk.ExpectedFalsePositives(c.TestedCount, c.Campaign.Level)),
+        -Accurate.Expm1(campaigns.Sum(c => c.TestedCount * Accurate.Log1p(-c.Campaign.Level.Value))),
+        campaigns.Max(c => FamilyRisk.AtLeastOneLowerBound(c.TestedCount, c.Campaign.Level)));
+
     /// <summary>What adds up over campaigns and what does not.</summary>
-    private static IEnumerable<string> AddingUp(IReadOnlyList<CampaignRisk> risks)
+    private static IEnumerable<string> AddingUp(IReadOnlyList<CampaignOverview> campaigns)
     {
         yield return "What adds up: expected false positives, whatever the dependence; for independent tests the chances of none multiply.";
-        CampaignOverview[] familywise = [.. risks.Select(r => r.Overview).Where(c => c.TestedCount > 0 && FamilyVerdict.ProcedureOf(c.Campaign).Controls == ErrorRate.Familywise)];
+        CampaignOverview[] familywise = [.. campaigns.Where(c => c.TestedCount > 0 && FamilyVerdict.ProcedureOf(c.Campaign).Controls == ErrorRate.Familywise)];
         if (familywise.Length > 1)
         {
             double expected = familywise.Sum(c => c.Campaign.Level.Value);

@@ -102,14 +102,14 @@ internal sealed class RunVerb : Verb
         }
 
         PlanChange change = new PlanStore(catalog).Register(description.Code, plan);
-        session.Say(FormattableString.Invariant($"Registered the plan: {change.Added} experiment(s) added, {change.Changed} changed, {change.Unchanged} as before."));
+        session.Say(FormattableString.Invariant($"Registered the plan: {Counted.Of(change.Added, "experiment")} added, {change.Changed} changed, {change.Unchanged} as before."));
         if (families is not null)
         {
             new FamilyStore(catalog).Register(description.Code, families);
         }
 
         stored = campaigns.Seal(description.Code);
-        session.Say($"Sealed it{(stored.Campaign.Families.Count > 0 ? FormattableString.Invariant($", with {stored.Campaign.Families.Count} families") : "")}; plan digest (SHA-256): {stored.Campaign.PlanDigest}.");
+        session.Say($"Sealed it{(stored.Campaign.Families.Count > 0 ? FormattableString.Invariant($", with {stored.Campaign.Families.Count} families") : "")}; plan digest (SHA-256): {stored.Campaign.PlanDigest}");
         CampaignRules.SayNotes(session.Host, stored.Campaign, plan);
         return stored;
     }
@@ -189,7 +189,7 @@ internal sealed class RunVerb : Verb
 
         if (known > 0)
         {
-            session.Say(FormattableString.Invariant($"{known} file(s) had been loaded before and were not loaded again."));
+            session.Say(FormattableString.Invariant($"{Counted.Of(known, "file")} had been loaded before and {Counted.Word(known, "was", "were")} not loaded again."));
         }
     }
 

@@ -23,7 +23,7 @@ internal sealed class SealVerb : Verb
         using Catalog.Catalog catalog = session.OpenCatalog();
         StoredCampaign stored = new CampaignStore(catalog).Seal(code);
         Campaign campaign = stored.Campaign;
-        session.Say($"Sealed {code}: {CampaignText.Goal(campaign)}. Plan digest (SHA-256): {campaign.PlanDigest}.");
+        session.Say($"Sealed {code}: {CampaignText.Goal(campaign)}. Plan digest (SHA-256): {campaign.PlanDigest}");
         CampaignRules.SayNotes(session.Host, campaign, campaign.IsExploratory ? [] : new PlanStore(catalog).Read(stored.Id));
         session.Say(LedgerText.HeadLine(new LedgerReader(catalog).Head));
         session.PrintForScripts(new RowTable(

@@ -118,7 +118,7 @@ internal sealed class ShowVerb : Verb
         }
 
         session.Print(new RowTable(
-            [new("file", "file"), new("rows", "rows", true), new("missing", "missing", true), new("loaded_at", "loaded"), new("sha256", "sha256"), new("amendment", "amendment")],
+            [new("file", "file"), new("rows", "rows", true), new("missing", "missing", true), new("loaded_at", "loaded"), new("sha256", "sha256"), new("amendment", "amendment", Wraps: true)],
             loads.Select(l => (Cell[])[Cell.Text(l.FileName), Cell.Whole(l.RowCount), Cell.Whole(l.MissingCount), Cell.Text(Words.Instant(DateTimeOffset.UnixEpoch.AddTicks(l.LoadedAt * TimeSpan.TicksPerMicrosecond))), Cell.Text(l.Sha256[..12]), Cell.Text(l.AmendmentReason)]))
         {
             WhenEmpty = "No file was loaded yet.",

@@ -1,4 +1,6 @@
+using Campaigns.Catalog;
 using Campaigns.Catalog.Ledger;
+using Campaigns.Catalog.Ledger.Verifying;
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Results;
 using Campaigns.Catalog.Reviewing;
@@ -19,16 +21,23 @@ public sealed class CatalogSource(Catalog.Catalog catalog) : IDashboardSource
     public IReadOnlyList<CampaignOverview> Campaigns() => catalog.Snapshot(() => (CampaignOverview[])[.. new CampaignStore(catalog).All().Select(_overviews.Read)]);
 
     /// <inheritdoc/>
+    public IReadOnlyDictionary<string, WaitingData> Waiting() => new WaitingDataReader(catalog).Read();
+
+    /// <inheritdoc/>
     public CampaignStanding Standing(string campaign) => _standings.Read(campaign);
 
     /// <inheritdoc/>
     public ExperimentDetail Detail(CampaignStanding standing, string experiment) => _details.Read(standing, experiment);
 
     /// <inheritdoc/>
-    public IReadOnlyList<RiskPoint> RiskCurve(CampaignStanding standing)
+    public IReadOnlyList<RiskPoint> RiskCurve(CampaignStanding standing) => ReadRiskCurve(standing)();
+
+    /// <inheritdoc/>
+    public Func<IReadOnlyList<RiskPoint>> ReadRiskCurve(CampaignStanding standing)
     {
         ArgumentNullException.ThrowIfNull(standing);
-        return Domain.RiskCurve.Of(standing, new TestOrderReader(catalog).LatestRuns(standing.Campaign.Code));
+        IReadOnlyDictionary<string, long> runs = new TestOrderReader(catalog).LatestRuns(standing.Campaign.Code);
+        return () => Domain.RiskCurve.Of(standing, runs);
     }
 
     /// <inheritdoc/>
@@ -46,4 +55,21 @@ public sealed class CatalogSource(Catalog.Catalog catalog) : IDashboardSource
         var reader = new LedgerReader(catalog);
         return ((IReadOnlyList<LedgerEntry>)[.. reader.Entries(filter)], reader.Head);
     });
+
+    /// <inheritdoc/>
+    public SurvivorChecks Checks(CampaignStanding standing, Action<WorkProgress> progress, CancellationToken stop)
+    {
+        // Two threads must not share a connection.
+        using var own = Catalog.Catalog.Open(catalog.Path, catalog.Clock);
+        own.StopOn(stop);
+        return SurvivorChecks.Of(standing, new DetailReader(own).Read, progress, stop);
+    }
+
+    /// <inheritdoc/>
+    public LedgerProof Verify(Action<WorkProgress> progress, CancellationToken stop)
+    {
+        using var own = Catalog.Catalog.OpenForProof(catalog.Path, catalog.Clock, isReadOnly: false);
+        own.StopOn(stop);
+        return new LedgerVerifier(own).Verify(known: null, progress);
+    }
 }

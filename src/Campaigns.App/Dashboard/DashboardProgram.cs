@@ -1,5 +1,6 @@
 using Campaigns.App.Dashboard.Canvas;
 using Campaigns.App.Dashboard.Model;
+using Campaigns.App.Dashboard.Pages;
 using Campaigns.App.Dashboard.Screen;
 using Campaigns.Statistics.Corrections;
 using Campaigns.Statistics.Online;
@@ -16,10 +17,11 @@ public static class DashboardProgram
     /// <summary>Shows the campaigns of a catalog until the user quits.</summary>
     /// <param name="source">Where everything comes from.</param>
     /// <param name="campaign">The campaign that is opened first.</param>
+    /// <param name="page">Name of the page that is shown first.</param>
     /// <param name="ascii">Whether to draw with ASCII signs alone.</param>
     /// <returns>0 after quitting; 2, with a sentence on standard error, where standard input or output is no terminal; 128 and its number after a signal.</returns>
     /// <remarks>What <paramref name="source"/> throws passes through, after the terminal was given back.</remarks>
-    public static int Run(IDashboardSource source, string campaign, bool ascii)
+    public static int Run(IDashboardSource source, string campaign, string page, bool ascii)
     {
         ArgumentNullException.ThrowIfNull(source);
         if (Console.IsInputRedirected || Console.IsOutputRedirected)
@@ -31,6 +33,7 @@ public static class DashboardProgram
         Theme theme = Theme.For(Environment.GetEnvironmentVariable);
         theme.Apply();
         DashboardModel model = new(source, campaign, key => (ErrorProcedure?)CorrectionRegistry.Find(key) ?? OnlineRegistry.Find(key));
+        model.TurnTo(PageList.PlaceOf(page));
         IApplication app = Application.Create();
         using TerminalGuard guard = new(app);
         app.Init();

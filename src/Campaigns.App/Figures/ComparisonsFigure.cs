@@ -104,7 +104,7 @@ internal static class ComparisonsFigure
 
         if (possible < detail.Comparisons.Count)
         {
-            yield return FormattableString.Invariant($"{detail.Comparisons.Count - possible} pair(s) cannot be compared and are left out.");
+            yield return FormattableString.Invariant($"{detail.Comparisons.Count - possible} {(detail.Comparisons.Count - possible == 1 ? "pair cannot be compared and is" : "pairs cannot be compared and are")} left out.");
         }
     }
 

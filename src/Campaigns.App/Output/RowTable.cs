@@ -7,7 +7,8 @@ namespace Campaigns.App.Output;
 /// <param name="GivesWay">Where a line has no room for all columns, those with the greatest number go first; among equals the last.</param>
 /// <param name="CutLast">Whether its text is cut last, as that of the first column is: a cut name could be another's, and a cut reason says nothing.</param>
 /// <param name="NotWithout">Name of the column that it says nothing without, as one end of an interval; null where it stands alone.</param>
-internal sealed record Column(string Name, string? Heading, bool IsNumeric = false, int GivesWay = 0, bool CutLast = false, string? NotWithout = null);
+/// <param name="Wraps">Whether its text goes on below where it does not fit, instead of being cut: a reason is said in full.</param>
+internal sealed record Column(string Name, string? Heading, bool IsNumeric = false, int GivesWay = 0, bool CutLast = false, string? NotWithout = null, bool Wraps = false);
 
 /// <summary>Rows to print, in whichever format was asked for.</summary>
 /// <param name="Columns">The columns, in order.</param>

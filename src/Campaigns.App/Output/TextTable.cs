@@ -67,7 +67,7 @@ internal static class TextTable
         ColumnLayout layout = ColumnLayout.Of(columns, rows, host.Width);
         string head = Line(columns, [.. columns.Select(c => c.Heading ?? "")], layout);
         host.Out.WriteLine(host.OutIsStyled ? $"\u001b[1m{head}\u001b[0m" : head);
-        foreach (string[] row in rows)
+        foreach (string[] row in rows.SelectMany(row => Lines(columns, row, layout)))
         {
             host.Out.WriteLine(Line(columns, row, layout));
         }
@@ -76,6 +76,24 @@ internal static class TextTable
         {
             Sentences(host, [$"No room for: {string.Join(", ", layout.LeftOut)}; a wider window shows more, --format csv writes all."]);
         }
+    }
+
+    /// <summary>A row as the lines that it takes: one, or more where a text goes on below.</summary>
+    private static IEnumerable<string[]> Lines(IReadOnlyList<Column> columns, string[] row, ColumnLayout layout)
+    {
+        var wrapped = new Dictionary<int, IReadOnlyList<string>>();
+        for (int i = 0; i < layout.Shown.Count; i++)
+        {
+            int c = layout.Shown[i];
+            if (columns[c].Wraps && CellText.Width(row[c]) > layout.Widths[i])
+            {
+                wrapped.Add(c, CellText.Wrap(row[c], layout.Widths[i]));
+            }
+        }
+
+        int count = wrapped.Count == 0 ? 1 : wrapped.Values.Max(w => w.Count);
+        return Enumerable.Range(0, count).Select(line => count == 1 ? row
+            : [.. row.Select((text, c) => wrapped.TryGetValue(c, out IReadOnlyList<string>? lines) ? lines.ElementAtOrDefault(line) ?? "" : line == 0 ? text : "")]);
     }
 
     private static string Line(IReadOnlyList<Column> columns, string[] texts, ColumnLayout layout)

@@ -24,6 +24,11 @@ internal static class BoundWording
     /// <summary>What the bound rests on where no choice is offered.</summary>
     public const string SimesAlone = "The bound holds if Simes' inequality holds for the true nulls, as it does for independent and for positively dependent experiments (Goeman and Solari 2011).";
 
+    /// <summary>How the bounds come about and why the set may be chosen freely, in short.</summary>
+    /// <param name="bounds">The bounds of a campaign.</param>
+    public static string Brief(CampaignBounds bounds) =>
+        FormattableString.Invariant($"Closed testing with Simes' tests over all {bounds.Testing.FamilySize} planned experiments, with {ConfidenceText(bounds.Confidence)} confidence for all sets together: mark after looking. Of all at most {bounds.Testing.LargestUnrejected} are false.");
+
     /// <summary>What the dependence has to be, and who proved it.</summary>
     /// <param name="testing">The closed testing.</param>
     public static string Assumption(SimesClosedTesting testing) => testing.AnyDependence

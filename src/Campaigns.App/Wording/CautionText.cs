@@ -79,7 +79,7 @@ internal static class CautionText
     {
         if (excluded.Count > 0)
         {
-            yield return FormattableString.Invariant($"Left out of the analysis, each with a reason and a name: {excluded.Sum(e => e.Count)} observation(s), of {Names([.. excluded.Select(e => e.Experiment)])}.");
+            yield return FormattableString.Invariant($"Left out of the analysis, each with a reason and a name: {Counted.Of(excluded.Sum(e => e.Count), "observation")}, of {Names([.. excluded.Select(e => e.Experiment)])}.");
         }
     }
 

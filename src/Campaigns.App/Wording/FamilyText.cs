@@ -72,6 +72,10 @@ internal static class FamilyText
         return FormattableString.Invariant($"{all}, in {campaign.JudgedFamilies.Count} {(campaign.JudgedFamilies.Count == 1 ? "family" : "families")}");
     }
 
+    /// <summary>That the planned experiments of a table are without those that left their family; empty where none did.</summary>
+    public static IEnumerable<string> WithoutLeavers(CampaignOverview standing) => standing.Withdrawn.Left == 0 ? []
+        : [$"Planned leaves out {Counted.Of(standing.Withdrawn.Left, "experiment")} that left {Counted.Word(standing.Withdrawn.Left, "its", "their")} family, withdrawn before any data."];
+
     /// <summary>A level as it was typed, or a share of one with four digits.</summary>
     public static string Level(SignificanceLevel level) => level.ToString() is { Length: <= LongestLevel } typed ? typed : NumberText.Screen(level.Value, 4);
 

@@ -23,7 +23,7 @@ internal static class LedgerText
         ArgumentNullException.ThrowIfNull(head);
         return head.Sequence == 0
             ? "Record: the ledger has no entry yet."
-            : $"Record: this is what stood in the catalog at ledger head {head}. Whoever keeps this line can prove later, with 'campaigns ledger verify --head', that the record was only continued since.";
+            : $"Record: whoever keeps the head at the end of this line can prove later, with 'campaigns ledger verify --head', that the record was only continued since. This is what stood in the catalog at ledger head {head}";
     }
 
     /// <summary>When, and who: "2026-12-01 08:00:00 UTC, Ada (account lab)".</summary>

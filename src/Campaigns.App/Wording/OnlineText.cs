@@ -9,8 +9,14 @@ internal static class OnlineText
 {
     private const int MostNamed = 10;
 
+    /// <summary>What no procedure of this kind can promise.</summary>
+    private const string Outside = "The guarantee is of all decisions as they were made: withdrawing a survivor afterwards decides by results, and is outside it.";
+
     /// <summary>What streams in a row hold together.</summary>
     private const string SeveralStreams = "Each stream's guarantee holds for its own experiments; they do not add up to one for all.";
+
+    /// <summary>What it means that an experiment overlaps.</summary>
+    public const string Overlaps = "Overlaps: ran at the same time as another experiment of its stream; what was not known at its start was counted as the worst.";
 
     /// <summary>The settings of a stream in one phrase, for example "shape jm over 40 experiments, initial wealth 0.025".</summary>
     public static string Of(OnlineSettings settings)
@@ -40,16 +46,31 @@ internal static class OnlineText
         yield return FormattableString.Invariant($"{procedure.Name} at {campaign.Level} decides each experiment when it arrives, at the level that it was given before its p-value was seen; {overview.TestedCount} of {overview.FamilySize} have a result. A decision stands, whatever comes after it. Adjusted p: p x {campaign.Level} / level given. The batch view beside it may change with every experiment and decides nothing.");
         if (campaign.Streams.Count <= 1)
         {
-            yield return campaign.Streams.Count == 0 ? procedure.Guarantee : $"Its stream: {Of(campaign.Streams[0].Settings)}. {procedure.Guarantee}";
-            yield break;
+            yield return campaign.Streams.Count == 0 ? $"{procedure.Guarantee} {Outside}" : $"Its stream: {Of(campaign.Streams[0].Settings)}. {procedure.Guarantee} {Outside}";
         }
-
-        foreach (StreamHead stream in campaign.Streams)
+        else
         {
-            yield return $"{Named(stream)}. {stream.Procedure.Guarantee}";
+            foreach (StreamHead stream in campaign.Streams)
+            {
+                yield return $"{Named(stream)}. {stream.Procedure.Guarantee}";
+            }
+
+            yield return $"{SeveralStreams} {Outside}";
         }
 
-        yield return SeveralStreams;
+        if (Awaiting(overview) is { } awaiting)
+        {
+            yield return awaiting;
+        }
+    }
+
+    /// <summary>What counts while decided experiments await a new test, in decisions and in reviews; null where none does, or where experiments are not judged as they arrive.</summary>
+    /// <param name="overview">The campaign in figures.</param>
+    public static string? Awaiting(CampaignOverview overview)
+    {
+        int count = overview.AwaitingNewTest;
+        return count == 0 || OnlineVerdict.ProcedureOf(overview.Campaign) is null ? null
+            : $"{Counted.Of(count, "decided experiment")} {Counted.Word(count, "awaits", "await")} a new test: decisions, results and survivors keep {Counted.Word(count, "its decision", "their decisions")}, a review counts only what has a result and is without {Counted.Word(count, "it", "them")} until 'campaigns test {overview.Campaign.Code}'.";
     }
 
     /// <summary>A stream in a sentence without its full stop.</summary>
@@ -64,7 +85,7 @@ internal static class OnlineText
     public static string? WithoutLevel(IEnumerable<StreamEntry> entries)
     {
         int count = entries.Count(e => e.Level == 0);
-        return count == 0 ? null : FormattableString.Invariant($"{count} experiment(s) came after the horizon and were given the level 0: they cannot survive. 'campaigns restream' starts a new stream for those to come.");
+        return count == 0 ? null : FormattableString.Invariant($"{Counted.Of(count, "experiment")} came after the horizon and {Counted.Word(count, "was given the level 0: it", "were given the level 0: they")} cannot survive. 'campaigns restream' starts a new stream for those to come.");
     }
 
     /// <summary>Whether the decision on an experiment was made on other data than those that stand now.</summary>

@@ -9,7 +9,7 @@ internal static class ProofText
     public static IEnumerable<string> Whole(LedgerProof proof)
     {
         ArgumentNullException.ThrowIfNull(proof);
-        yield return FormattableString.Invariant($"The record is whole: {proof.Entries} {(proof.Entries == 1 ? "entry" : "entries")}, head {proof.Head}.");
+        yield return FormattableString.Invariant($"The record is whole: {proof.Entries} {Counted.Word(proof.Entries, "entry", "entries")}. Its head: {proof.Head}");
         yield return FormattableString.Invariant($"Proved: every entry follows from the one before it, from 1 to {proof.Head.Sequence} without a gap; {proof.Digests} digests of what the entries recorded (plans, loaded files, measurements, results, reviews, decisions) recompute from the tables; no row stands in the tables without an entry; the sealed plans are those that were sealed; the file, its keys and its triggers are sound.");
         if (proof.ClockSteps > 0)
         {
@@ -17,7 +17,7 @@ internal static class ProofText
         }
 
         yield return proof.Known is { } known
-            ? FormattableString.Invariant($"The chain holds the head {known}, and has {proof.Head.Sequence - known.Sequence} entries after it: since that head was printed the record was only continued.")
+            ? FormattableString.Invariant($"Since the head given was printed the record was only continued: {Counted.Of(proof.Head.Sequence - known.Sequence, "entry", "entries")} came after it. The head given: {known}")
             : LedgerText.NotSeenWithoutHead;
     }
 

@@ -3,6 +3,8 @@ using Campaigns.App.Output;
 using Campaigns.Catalog.Results;
 using Campaigns.Catalog.Reviewing;
 using Campaigns.Domain;
+using Campaigns.Statistics.Corrections;
+using Campaigns.Statistics.Online;
 
 namespace Campaigns.App.Wording;
 
@@ -13,6 +15,18 @@ internal static class ReviewWording
     public static string Line(ReviewHead review) => FormattableString.Invariant(
         $"Review {review.Number} of {review.At:yyyy-MM-dd HH:mm} UTC: {review.SurvivorCount} of {review.TestedCount} tested experiments survive, in a family of {review.FamilySize}{(review.IsInterim ? " (interim: tested experiments only)" : "")}");
 
+    /// <summary>Which corrections at which levels the lines of a review belong to, with its number and its date.</summary>
+    /// <param name="review">The review.</param>
+    /// <param name="families">The families of its lines.</param>
+    public static IEnumerable<string> Applied(ReviewHead review, IEnumerable<FamilyStanding> families)
+    {
+        string which = FormattableString.Invariant($"Review {review.Number} of {review.At:yyyy-MM-dd HH:mm} UTC");
+        FamilyStanding[] applied = [.. families.DistinctBy(f => f.Name)];
+        return applied.Length == 0
+            ? [$"{which}: {ProcedureName(review.Correction)} at {review.Level}."]
+            : applied.Select(f => FormattableString.Invariant($"{which}{(f.Name.Length > 0 ? $", family {f.Name}" : "")}: {ProcedureName(f.Correction)} at {FamilyText.Level(f.Level)} over {Counted.Of(f.Size, "hypothesis", "hypotheses")}."));
+    }
+
     /// <summary>What a family was on the day of a review.</summary>
     public static string Family(ReviewHead review, FamilyStanding family) => FormattableString.Invariant(
         $"Review {review.Number}, family {family.Name}: {family.Correction} at {FamilyText.Level(family.Level)}, {family.Size} counted, {family.Tested} tested, {family.Survivors} {(family.Survivors == 1 ? "survives" : "survive")}{(family.IsOpen ? "" : "; closed")}.");
@@ -21,7 +35,9 @@ internal static class ReviewWording
     public static string Summary(ReviewComparison comparison)
     {
         int gained = comparison.Differences.Count(d => d.IsGained);
-        return comparison.NothingChanged
+        return comparison.NothingChanged && comparison.PlanBefore != comparison.PlanAfter
+            ? FormattableString.Invariant($"Between review {comparison.Before.Head.Number} and review {comparison.After.Head.Number} the plan was amended, from {Plan(comparison.PlanBefore)} to {Plan(comparison.PlanAfter)}; that changed no line: the same experiments with the same p-values, in families of the same size.")
+            : comparison.NothingChanged
             ? FormattableString.Invariant($"Nothing changed between review {comparison.Before.Head.Number} and review {comparison.After.Head.Number}: the same experiments with the same p-values, in families of the same size.")
             : FormattableString.Invariant($"Between review {comparison.Before.Head.Number} and review {comparison.After.Head.Number}: {gained} gained, {comparison.Differences.Count - gained} lost, {comparison.Kept} survive in both.");
     }
@@ -34,16 +50,23 @@ internal static class ReviewWording
             yield break;
         }
 
+        if (comparison.PlanBefore != comparison.PlanAfter)
+        {
+            yield return $"The plan was amended between the two: {Plan(comparison.PlanBefore)} at the earlier review, {Plan(comparison.PlanAfter)} at the later one.";
+        }
+
         if (!comparison.SizesBefore.SequenceEqual(comparison.SizesAfter))
         {
-            IEnumerable<string> sizes = comparison.Before.Members.Families.Zip(comparison.After.Members.Families)
-                .Where(f => f.First.Size != f.Second.Size)
-                .Select(f => FormattableString.Invariant($"{(f.First.Family.Name.Length > 0 ? $"family {f.First.Family.Name}" : "the family")} from {f.First.Size} to {f.Second.Size}"));
-            yield return $"Hypotheses counted: {string.Join(", ", sizes)}{SizeCauses(comparison)}.";
+            yield return $"Hypotheses counted: {ReviewFamilyWording.Sizes(comparison)}.";
+        }
+
+        if (ReviewFamilyWording.Decisions(comparison) is { } decisions)
+        {
+            yield return decisions;
         }
 
         yield return FormattableString.Invariant(
-            $"{comparison.Added} experiment(s) have a line in the later review alone, {comparison.Gone} in the earlier one alone; {comparison.OtherP} have another p-value; {comparison.OtherAdjusted} kept their verdict with another adjusted p-value.");
+            $"Lines in the later review alone: {comparison.Added}, in the earlier one alone: {comparison.Gone}; with another p-value: {comparison.OtherP}; with the same verdict and another adjusted p-value: {comparison.OtherAdjusted}.");
     }
 
     /// <summary>What stands below such a table.</summary>
@@ -58,10 +81,10 @@ internal static class ReviewWording
         {
             ReviewReason.FirstTested => difference.Events.Any(e => e.Cause == ReviewCause.AmendedIn) ? $"amended into the plan and first tested since the earlier review{events}" : $"first tested since the earlier review{events}",
             ReviewReason.OwnP => $"its own p went from {P(difference.Before)} to {P(difference.After)}{events}",
-            ReviewReason.FamilySize => FormattableString.Invariant($"its family {(difference.SizeAfter > difference.SizeBefore ? "grew" : "shrank")} from {difference.SizeBefore} to {difference.SizeAfter} hypotheses"),
+            ReviewReason.FamilySize => FormattableString.Invariant($"its family {(difference.SizeAfter > difference.SizeBefore ? "grew" : "shrank")} from {difference.SizeBefore} to {difference.SizeAfter} hypotheses{ReviewFamilyWording.Behind(difference)}"),
             ReviewReason.OtherP => "p-values of other experiments moved the threshold",
-            ReviewReason.FamilyOpened => "the gate of its family opened",
-            ReviewReason.FamilyClosed => "the gate of its family closed",
+            ReviewReason.FamilyOpened => $"the gate of its family opened{ReviewFamilyWording.Behind(difference)}",
+            ReviewReason.FamilyClosed => $"the gate of its family closed{ReviewFamilyWording.Behind(difference)}",
             ReviewReason.AwaitsTest => $"{(difference.IsGained ? "at the earlier review" : "at the later review")} its changed values awaited a new test{events}",
             ReviewReason.NoResult => $"{(difference.IsGained ? "at the earlier review" : "at the later review")} its data gave no p-value{events}",
             ReviewReason.Withdrawn => events.Length > 0 ? events[2..] : difference.IsGained ? "taken in again" : "withdrawn",
@@ -75,8 +98,8 @@ internal static class ReviewWording
         ReviewHead review = outcome.Review;
         string versions = review.ProgramVersion == ProgramVersion.Current ? "" : $" (taken by version {review.ProgramVersion} of the program, again by {ProgramVersion.Current})";
         return outcome.IsSame
-            ? FormattableString.Invariant($"Review {review.Number}: the same to the byte, {review.TestedCount} line(s){versions}.")
-            : FormattableString.Invariant($"Review {review.Number} does not come out of its record{versions}: {outcome.Lines.Count} line(s) differ{string.Concat(outcome.Figures.Select(f => $"; {f}"))}. 'campaigns ledger verify' says whether stored rows were changed since.");
+            ? FormattableString.Invariant($"Review {review.Number}: the same to the byte, {Counted.Of(review.TestedCount, "line")}{versions}.")
+            : FormattableString.Invariant($"Review {review.Number} does not come out of its record{versions}: {Counted.Of(outcome.Lines.Count, "line")} {Counted.Word(outcome.Lines.Count, "differs", "differ")}{string.Concat(outcome.Figures.Select(f => $"; {f}"))}. 'campaigns ledger verify' says whether stored rows were changed since.");
     }
 
     private static string Together(ReviewDifference d, string events)
@@ -89,36 +112,11 @@ internal static class ReviewWording
 
         if (d.SizeBefore != d.SizeAfter)
         {
-            parts.Add(FormattableString.Invariant($"its family went from {d.SizeBefore} to {d.SizeAfter} hypotheses"));
+            parts.Add(FormattableString.Invariant($"its family went from {d.SizeBefore} to {d.SizeAfter} hypotheses{ReviewFamilyWording.Behind(d)}"));
         }
 
         parts.Add("p-values of others changed");
         return $"only together: {string.Join(", ", parts)}{events}";
-    }
-
-    private static string SizeCauses(ReviewComparison comparison)
-    {
-        var causes = new List<string>();
-        if (comparison.Before.Head.IsInterim != comparison.After.Head.IsInterim)
-        {
-            causes.Add($"the {(comparison.Before.Head.IsInterim ? "earlier" : "later")} review is interim and counts tested experiments alone");
-        }
-        else if (comparison.After.Head.IsInterim)
-        {
-            causes.Add("interim reviews count tested experiments alone");
-        }
-
-        if (comparison.AmendedIn > 0)
-        {
-            causes.Add(FormattableString.Invariant($"{comparison.AmendedIn} amended in"));
-        }
-
-        if (comparison.Withdrawn + comparison.TakenBack > 0)
-        {
-            causes.Add(FormattableString.Invariant($"{comparison.Withdrawn} withdrawn and {comparison.TakenBack} taken in again since: without data an experiment leaves its family or comes back to it, with data it stays and counts with p = 1 meanwhile"));
-        }
-
-        return causes.Count == 0 ? "" : $" ({string.Join("; ", causes)})";
     }
 
     private static string Events(ReviewDifference difference)
@@ -127,7 +125,8 @@ internal static class ReviewWording
         return difference.Events.Count == 0 ? "" : $": {string.Join(", ", clauses)}";
     }
 
-    private static string Clause(ReviewCause cause) => cause switch
+    /// <summary>What was done, in a clause that follows the name of an experiment.</summary>
+    internal static string Clause(ReviewCause cause) => cause switch
     {
         ReviewCause.AddedValues => "values added after its test",
         ReviewCause.Exclusion => "a value left out",
@@ -137,6 +136,11 @@ internal static class ReviewWording
         ReviewCause.Withdrawal => "withdrawn",
         _ => "taken in again",
     };
+
+    /// <summary>A version of the plan in the middle of a sentence.</summary>
+    private static string Plan(int version) => version == 0 ? "plan version 0, as it was sealed," : FormattableString.Invariant($"plan version {version}");
+
+    public static string ProcedureName(string key) => CorrectionRegistry.Find(key)?.Name ?? OnlineRegistry.Find(key)?.Name ?? key;
 
     private static string P(ReviewLine? line) => line is { } given ? NumberText.P(given.P) : "none";
 

@@ -15,14 +15,14 @@ internal static class WithdrawalText
     {
         if (counts.CountAsOne > 0)
         {
-            yield return FormattableString.Invariant($"Withdrawn after their data came: {counts.CountAsOne} experiment(s); they stay in the family and count with p = 1.");
+            yield return FormattableString.Invariant($"Withdrawn after their data came: {Counted.Of(counts.CountAsOne, "experiment")}; {Counted.Word(counts.CountAsOne, "it stays in the family and counts", "they stay in the family and count")} with p = 1.");
         }
 
         if (counts.Left > 0)
         {
             string looked = counts.LeftAfterResults == 0 ? ""
                 : FormattableString.Invariant($" For {counts.LeftAfterResults} of them results of other experiments had been seen by then, and a smaller family is easier to survive in: look at the reasons.");
-            yield return FormattableString.Invariant($"Withdrawn before any data: {counts.Left} experiment(s); they left the family, which had {familySize + counts.Left} and has {familySize}.{looked}");
+            yield return FormattableString.Invariant($"Withdrawn before any data: {Counted.Of(counts.Left, "experiment")}; {Counted.Word(counts.Left, "it", "they")} left the family, which had {familySize + counts.Left} and has {familySize}.{looked}");
         }
     }
 }

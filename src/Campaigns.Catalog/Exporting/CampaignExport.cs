@@ -6,7 +6,6 @@ using Campaigns.Catalog.Ledger;
 using Campaigns.Catalog.Measurements;
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Providers;
-using Campaigns.Catalog.Results;
 using Campaigns.Catalog.Streams;
 using Campaigns.Domain;
 using Campaigns.Statistics.Probability;
@@ -53,6 +52,12 @@ public sealed class CampaignExport(Catalog catalog)
     /// <summary>Name of the file of the campaign's entries in the ledger.</summary>
     public const string LedgerName = "ledger.csv";
 
+    /// <summary>Name of the file of the values that these entries changed.</summary>
+    public const string LedgerChangesName = "ledger_changes.csv";
+
+    /// <summary>Name of the file of the digests that these entries carry.</summary>
+    public const string LedgerEvidenceName = "ledger_evidence.csv";
+
     /// <summary>Name of the file that says what the export is.</summary>
     public const string RecordName = "record.json";
 
@@ -77,11 +82,10 @@ public sealed class CampaignExport(Catalog catalog)
         string[] written = [];
         NewFolder.Write(folder, draft =>
         {
-            Directory.CreateDirectory(System.IO.Path.Combine(draft, "measurements"));
             WriteFile(draft, "campaign.json", writer => WriteCampaign(standing.Campaign, writer));
-            if (!standing.Campaign.IsExploratory)
+            if (!standing.Campaign.IsExploratory && standing.Experiments.Count > 0)
             {
-                // A plan file would make a plan of what had none.
+                // A plan file would make a plan of what had none, and one without experiments is none.
                 WriteFile(draft, "plan.csv", writer => WritePlan(standing.Campaign, standing.Experiments.Select(e => e.Plan), writer));
                 if (records.HasAmendments)
                 {
@@ -94,7 +98,7 @@ public sealed class CampaignExport(Catalog catalog)
                 WriteFile(draft, FamiliesName, writer => WriteFamilies(standing.Campaign.Families, writer));
             }
 
-            WriteFile(System.IO.Path.Combine(draft, "measurements"), MeasurementsName, writer => WriteMeasurements(standing, writer));
+            WriteMeasurements(standing, System.IO.Path.Combine(draft, "measurements"));
             if (new ExclusionStore(catalog).All(standing.Campaign.Code) is { Count: > 0 } decisions)
             {
                 WriteFile(draft, ExclusionsName, writer => WriteExclusions(decisions, writer));
@@ -106,13 +110,13 @@ public sealed class CampaignExport(Catalog catalog)
                 WriteFile(draft, DecisionsName, writer => StreamFiles.WriteDecisions(new StreamStore(catalog).Decisions(standing.Campaign.Code), writer, textOfP));
             }
 
-            WriteFile(draft, ReviewsName, writer => WriteReviews(standing, writer, textOfP));
+            WriteFile(draft, ReviewsName, writer => new ReviewFile(catalog, campaignId).Write(standing, writer, textOfP));
             foreach ((string name, Action<TextWriter> write) in tables)
             {
                 WriteFile(draft, name, write);
             }
 
-            WriteRecords(records, draft);
+            WriteRecords(records, new LedgerFiles(catalog, standing.Campaign.Code), draft);
             var files = Directory.EnumerateFiles(draft, "*", SearchOption.AllDirectories).Select(f => System.IO.Path.GetRelativePath(draft, f).Replace('\\', '/')).ToHashSet(StringComparer.Ordinal);
             files.Add(ColumnMeanings.FileName);
             WriteFile(draft, ColumnMeanings.FileName, writer => ColumnMeanings.Write(files, writer));
@@ -122,9 +126,11 @@ public sealed class CampaignExport(Catalog catalog)
         return new ExportedCampaign(written, head);
     }
 
-    private static void WriteRecords(RecordFiles records, string draft)
+    private static void WriteRecords(RecordFiles records, LedgerFiles ledger, string draft)
     {
-        WriteFile(draft, LedgerName, records.WriteLedger);
+        WriteFile(draft, LedgerName, ledger.WriteEntries);
+        WriteFile(draft, LedgerChangesName, ledger.WriteChanges);
+        WriteFile(draft, LedgerEvidenceName, ledger.WriteEvidence);
         if (records.HasAmendments)
         {
             WriteFile(draft, AmendmentsName, records.WriteAmendments);
@@ -217,7 +223,19 @@ public sealed class CampaignExport(Catalog catalog)
     }
 
     /// <summary>Every value as it was typed (up to trailing zeros), with where it came from; the rows of one experiment together, in the order in which they were loaded.</summary>
-    private void WriteMeasurements(CampaignStanding standing, TextWriter writer)
+    /// <remarks>Without values there is no file: one of a header alone would be refused when the folder is run.</remarks>
+    private void WriteMeasurements(CampaignStanding standing, string folder)
+    {
+        long rows = 0;
+        Directory.CreateDirectory(folder);
+        WriteFile(folder, MeasurementsName, writer => rows = WriteMeasurements(standing, writer));
+        if (rows == 0)
+        {
+            Directory.Delete(folder, recursive: true);
+        }
+    }
+
+    private long WriteMeasurements(CampaignStanding standing, TextWriter writer)
     {
         long campaignId = new CampaignStore(catalog).Get(standing.Campaign.Code).Id;
         using var sets = new GroupSets(catalog, campaignId);
@@ -231,6 +249,7 @@ public sealed class CampaignExport(Catalog catalog)
         var csv = new CsvLine(writer);
         csv.Write("experiment", "group", "value", "specimen", "block", "order", "file", "line");
         var values = new ObservationColumns();
+        long rows = 0;
         while (select.Read())
         {
             string code = select.Text(0);
@@ -238,6 +257,7 @@ public sealed class CampaignExport(Catalog catalog)
             string file = select.Text(3);
             values.Clear();
             PackedMeasurements.Read(select.Blob(2), values);
+            rows += values.Count;
             for (int i = 0; i < values.Count; i++)
             {
                 csv.Write(
@@ -248,6 +268,8 @@ public sealed class CampaignExport(Catalog catalog)
                     file, CsvLine.Number(values.Lines[i]));
             }
         }
+
+        return rows;
     }
 
     /// <summary>Every decision about an observation, the latest about it last; the values themselves stand among the measurements.</summary>
@@ -260,34 +282,6 @@ public sealed class CampaignExport(Catalog catalog)
             csv.Write(
                 d.Experiment, d.File, CsvLine.Number(d.Line), d.Group, CsvField.AsItStands(d.Value), d.IsExcluded ? "true" : "false", d.Reason, d.NamedBy,
                 d.At.UtcDateTime.ToString("yyyy-MM-dd'T'HH:mm:ss'Z'", System.Globalization.CultureInfo.InvariantCulture));
-        }
-    }
-
-    /// <summary>Every line of every review as it was stored on its day; correction, level and size are those of the experiment's family.</summary>
-    private void WriteReviews(CampaignStanding standing, TextWriter writer, Func<PValue, string> textOfP)
-    {
-        long campaignId = new CampaignStore(catalog).Get(standing.Campaign.Code).Id;
-        using SqliteStatement select = catalog.Prepare("SELECT number, taken_at, correction, level, family_size, is_interim, lines, id FROM reviews WHERE campaign_id = ?1 ORDER BY number");
-        Dictionary<long, string> codes = new PlanStore(catalog).Codes(campaignId);
-        Dictionary<string, string> familyOf = standing.Experiments.ToDictionary(e => e.Plan.Code, e => e.Plan.Family ?? "", StringComparer.Ordinal);
-        var families = new ReviewFamilies(catalog);
-        select.Bind(1, campaignId);
-        var csv = new CsvLine(writer);
-        csv.Write("review", "taken_at", "correction", "level", "family_size", "interim", "experiment", "p", "adjusted_p", "survives", "family");
-        while (select.Read())
-        {
-            string taken = Instants.FromMicroseconds(select.Integer(1)).UtcDateTime.ToString("yyyy-MM-dd'T'HH:mm:ss'Z'", System.Globalization.CultureInfo.InvariantCulture);
-            var whole = new FamilyStanding("", select.Text(2), new SignificanceLevel(select.Real(3)), (int)select.Integer(4), 0, 0, 0);
-            var byName = families.Read(select.Integer(7)).ToDictionary(f => f.Name, StringComparer.Ordinal);
-            (FamilyColumns columns, PValue[] adjusted) = PackedReviewLines.Unpack(select.Blob(6));
-            for (int i = 0; i < columns.Count; i++)
-            {
-                string code = codes[columns.ExperimentIds[i]];
-                FamilyStanding family = byName.GetValueOrDefault(familyOf[code], whole);
-                csv.Write(
-                    CsvLine.Number(select.Integer(0)), taken, family.Correction, CsvLine.Number(family.Level.Value), CsvLine.Number(family.Size), select.Integer(5) != 0 ? "true" : "false",
-                    code, textOfP(columns.P[i]), textOfP(adjusted[i]), family.Level.Rejects(adjusted[i]) ? "true" : "false", family.Name);
-            }
         }
     }
 }

@@ -129,6 +129,11 @@ internal static class ColumnMeaningsText
         adjusted_p|number|0 to 1|its adjusted p-value
         survives|truth|true; false|whether it survived
         family|text||the family of the experiment
+        plan_version|whole number|0 and more|version of the plan on that day: 0 as it was sealed, then the number of its latest amendment
+        files|whole number||files of measurements that had been loaded
+        rows|whole number||rows of these files
+        program_version|text||version of the program that took the review
+        ledger_sequence|whole number|1 and more|the first entry of the ledger that speaks for the review
         """;
 
     private const string Streams =
@@ -178,6 +183,7 @@ internal static class ColumnMeaningsText
         reason|text||why
         by|text||who said so
         at|instant||when
+        after_results|truth|true; false|whether results of the campaign had been seen by then
         """;
 
     private const string Ledger =
@@ -191,8 +197,31 @@ internal static class ColumnMeaningsText
         campaign|text||the campaign; empty for the whole catalog
         subject|text||what in it was touched
         reason|text||why, where a reason is due
-        changes|text|a line a value|what had which value before, and after the arrow which it has since
-        hash|text|64 hexadecimal digits|SHA-256 of the entry and of the hash before it; recomputed from the catalog by ledger verify (this file has words for what the entry holds, and leaves out the digests of its rows)
+        changes|text|a line a value|what had which value before, and after the arrow which it has since; ledger_changes.csv has them one by one
+        hash|text|64 hexadecimal digits|SHA-256 of the entry and of the hash before it; it can be recomputed from this file, ledger_changes.csv and ledger_evidence.csv
+        previous_hash|text|64 hexadecimal digits|hash of the entry before, which may be of another campaign and left out here; zeros before the first
+        """;
+
+    private const string LedgerChanges =
+        """
+        sequence|whole number|1 and more|the entry in ledger.csv
+        position|whole number|1 and more|place among its changes
+        what|text||what has the value
+        had_before|truth|true; false|whether it had a value before, which may be an empty text
+        before|text||the value before
+        has_after|truth|true; false|whether it has a value since, which may be an empty text
+        after|text||the value since
+        """;
+
+    private const string LedgerEvidence =
+        """
+        sequence|whole number|1 and more|the entry in ledger.csv
+        position|whole number|1 and more|place among its digests
+        kind|text||kind of the rows in the catalog that were written
+        owner|whole number||key in the catalog of what owns them
+        first|whole number||first of a range within the owner; 0 where there is none
+        last|whole number||last of that range
+        digest|text|64 hexadecimal digits|SHA-256 of the rows; ledger verify recomputes it from the catalog
         """;
 
     private const string Dictionary =
@@ -210,6 +239,7 @@ internal static class ColumnMeaningsText
         ("plan.csv", Plan), (CampaignExport.SealedPlanName, Plan), (CampaignExport.FamiliesName, Families), (CampaignExport.MeasurementsPath, Measurements), (CampaignExport.ExclusionsName, Exclusions),
         (CampaignExport.ResultsName, Results), (CampaignExport.ComparisonsName, Comparisons), (CampaignExport.ReviewsName, Reviews), (CampaignExport.StreamsName, Streams),
         (CampaignExport.DecisionsName, Decisions), (CampaignExport.AmendmentsName, Amendments), (CampaignExport.WithdrawalsName, Withdrawals), (CampaignExport.LedgerName, Ledger),
+        (CampaignExport.LedgerChangesName, LedgerChanges), (CampaignExport.LedgerEvidenceName, LedgerEvidence),
         (ColumnMeanings.FileName, Dictionary),
     ];
 }

@@ -3,11 +3,12 @@ using Campaigns.Catalog.Ledger;
 using Campaigns.Catalog.Loading;
 using Campaigns.Catalog.Providers;
 using Campaigns.Catalog.Results;
+using Campaigns.Catalog.Withdrawing;
 using Campaigns.Domain;
 
 namespace Campaigns.Catalog.Exporting;
 
-/// <summary>Writes the record of a campaign: its entries of the ledger, amendments of its sealed plan, withdrawals, and what the export itself is.</summary>
+/// <summary>Writes the record of a campaign: amendments of its sealed plan, withdrawals, and what the export itself is.</summary>
 internal sealed class RecordFiles(Catalog catalog, string code, long campaignId)
 {
     /// <summary>Whether the sealed plan was amended.</summary>
@@ -15,22 +16,6 @@ internal sealed class RecordFiles(Catalog catalog, string code, long campaignId)
 
     /// <summary>Whether an experiment was ever withdrawn.</summary>
     public bool HasWithdrawals => Any("SELECT EXISTS (SELECT 1 FROM withdrawals w JOIN experiments e ON e.id = w.experiment_id WHERE e.campaign_id = ?1)");
-
-    /// <summary>A row an entry: those of the campaign, and those of the whole catalog.</summary>
-    public void WriteLedger(TextWriter writer)
-    {
-        var csv = new CsvLine(writer);
-        csv.Write("sequence", "at", "account", "acting_as", "version", "action", "campaign", "subject", "reason", "changes", "hash");
-        foreach (LedgerEntry e in new LedgerReader(catalog).Entries(new LedgerFilter()))
-        {
-            if (e.Campaign is null || e.Campaign == code)
-            {
-                csv.Write(
-                    CsvLine.Number(e.Sequence), CsvField.AsItStands(Instants.Text(Instants.ToMicroseconds(e.At))), e.By.Account, e.By.ActingAs ?? "", e.ProgramVersion, e.Action,
-                    e.Campaign ?? "", e.Subject ?? "", e.Reason ?? "", string.Join('\n', e.Changes.Select(c => $"{c.What}: {c.Before ?? "(none)"} -> {c.After ?? "(none)"}")), e.Hash);
-            }
-        }
-    }
 
     /// <summary>A row a value that an amendment changed. Numbers of a plan are not negative, so that guarding every value changes none of them.</summary>
     public void WriteAmendments(TextWriter writer)
@@ -56,19 +41,11 @@ internal sealed class RecordFiles(Catalog catalog, string code, long campaignId)
     /// <summary>A row a decision about an experiment, oldest first.</summary>
     public void WriteWithdrawals(TextWriter writer)
     {
-        using SqliteStatement select = catalog.Prepare(
-            """
-            SELECT e.code, w.is_withdrawn, w.had_data, w.reason, w.named_by, w.made_at FROM withdrawals w
-            JOIN experiments e ON e.id = w.experiment_id WHERE e.campaign_id = ?1 ORDER BY w.id
-            """);
-        select.Bind(1, campaignId);
         var csv = new CsvLine(writer);
-        csv.Write("experiment", "withdrawn", "had_data", "reason", "by", "at");
-        while (select.Read())
+        csv.Write("experiment", "withdrawn", "had_data", "reason", "by", "at", "after_results");
+        foreach (Withdrawal w in new StandingWithdrawals(catalog, campaignId).InOrder())
         {
-            csv.Write(
-                select.Text(0), select.Integer(1) != 0 ? "true" : "false", select.Integer(2) != 0 ? "true" : "false", select.Text(3), select.Text(4),
-                CsvLine.Instant(Instants.FromMicroseconds(select.Integer(5))));
+            csv.Write(w.Experiment, Truth(w.IsWithdrawn), Truth(w.HadData), w.Reason, w.NamedBy, CsvLine.Instant(w.At), Truth(w.AfterResults));
         }
     }
 
@@ -95,6 +72,8 @@ internal sealed class RecordFiles(Catalog catalog, string code, long campaignId)
         json.WriteEndObject();
         json.WriteEndObject();
     }
+
+    private static CsvField Truth(bool value) => CsvField.AsItStands(value ? "true" : "false");
 
     private bool Any(string sql)
     {

@@ -1,5 +1,4 @@
 using Campaigns.Catalog.Providers;
-using Campaigns.Domain;
 
 namespace Campaigns.Catalog.Ledger;
 
@@ -23,15 +22,16 @@ internal static class UnchangedSince
     /// <param name="catalog">The open catalog, in a transaction.</param>
     /// <param name="seen">The head that was seen.</param>
     /// <param name="campaign">The campaign that is about to be changed; null for the whole catalog.</param>
-    /// <exception cref="RefusedException">Something was done to the campaign since; the details say what.</exception>
+    /// <exception cref="ChangedSinceException">Something was done to the campaign since; the details say what.</exception>
     public static void Demand(Catalog catalog, LedgerHead seen, string? campaign)
     {
-        List<string> since = Since(catalog, seen, campaign);
-        if (since.Count > 0)
+        LedgerEntry[] since = campaign is null ? [] : [.. new LedgerReader(catalog).Entries(new LedgerFilter { Campaign = campaign, From = seen.Sequence + 1 })];
+        if (since.Length > 0)
         {
-            throw new RefusedException(
-                FormattableString.Invariant($"The campaign '{campaign}' was changed since the head that you gave (entry {seen.Sequence}); nothing was changed now. Below stands what was done since; if you still want your change, repeat the command with --head {LedgerWriter.Last(catalog).Head}."),
-                since);
+            throw new ChangedSinceException(
+                FormattableString.Invariant($"The campaign '{campaign}' was changed since the head that you gave (entry {seen.Sequence}); nothing was changed now. Below stands what was done since; if you still want your change, repeat the command with the head in the last line."),
+                since,
+                LedgerWriter.Last(catalog).Head);
         }
     }
 
@@ -44,20 +44,5 @@ internal static class UnchangedSince
 
         using SqliteStatement entry = catalog.Prepare("SELECT hash FROM ledger WHERE sequence = ?1");
         return entry.Bind(1, seen.Sequence).Read() && entry.Text(0) == seen.Hash;
-    }
-
-    private static List<string> Since(Catalog catalog, LedgerHead seen, string? campaign)
-    {
-        using SqliteStatement later = catalog.Prepare(
-            "SELECT sequence, at, coalesce(acting_as, account), action, subject FROM ledger WHERE sequence > ?1 AND campaign = ?2 ORDER BY sequence");
-        later.Bind(1, seen.Sequence).Bind(2, campaign);
-        var since = new List<string>();
-        while (later.Read())
-        {
-            string subject = later.NullableText(4) is { } text ? $" ({text})" : "";
-            since.Add(FormattableString.Invariant($"entry {later.Integer(0)}, {Instants.Text(later.Integer(1))}, {later.Text(2)}: {later.Text(3)}{subject}"));
-        }
-
-        return since;
     }
 }

@@ -2,9 +2,9 @@ using System.Runtime.InteropServices;
 
 namespace Campaigns.Catalog.Providers;
 
-/// <summary>The cells of a row straight from SQLite's library, for digests that read every cell of a catalog.</summary>
+/// <summary>The cells of a row straight from SQLite's library, for what reads every cell of a catalog.</summary>
 /// <remarks>
-/// The driver guards its handle at every call, which costs several times what the call does. Here the handle is guarded once a row by whoever holds the statement,
+/// The driver guards its handle at every call, which costs several times what the call does. Here the handle is kept alive by whoever holds the statement,
 /// and the calls, which only look into a row that was already read, do not tell the garbage collector of themselves.
 /// </remarks>
 internal static class NativeCells

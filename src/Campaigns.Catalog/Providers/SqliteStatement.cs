@@ -1,3 +1,4 @@
+using System.Runtime.InteropServices;
 using Campaigns.Catalog.Ledger;
 using Microsoft.Data.Sqlite;
 using SQLitePCL;
@@ -12,6 +13,9 @@ internal sealed class SqliteStatement : IDisposable
     private readonly SqliteConnection _connection;
     private readonly sqlite3_stmt _statement;
 
+    // The same for cells, which are asked for a million times: guarding the handle at each of them costs several times what the call does. SQLite answers NULL where it is 0.
+    private nint _row;
+
     // A binding stays from one use to the next, so a parameter that is null again need not be bound again.
     private readonly bool[] _isNull;
 
@@ -19,6 +23,7 @@ internal sealed class SqliteStatement : IDisposable
     {
         _connection = connection;
         Check(sqlite3_prepare_v2(connection.Handle, sql, out _statement));
+        _row = _statement.DangerousGetHandle();
         _isNull = new bool[sqlite3_bind_parameter_count(_statement) + 1];
         Array.Fill(_isNull, true);
     }
@@ -123,21 +128,37 @@ internal sealed class SqliteStatement : IDisposable
     /// <summary>Makes the statement ready for the next use before its rows are at an end.</summary>
     public void Reset() => Check(sqlite3_reset(_statement));
 
-    public bool IsInteger(int column) => sqlite3_column_type(_statement, column) == SQLITE_INTEGER;
+    public bool IsInteger(int column) => TypeOf(column) == SQLITE_INTEGER;
 
-    public bool IsText(int column) => sqlite3_column_type(_statement, column) == SQLITE_TEXT;
+    public bool IsText(int column) => TypeOf(column) == SQLITE_TEXT;
 
-    public bool IsNull(int column) => sqlite3_column_type(_statement, column) == SQLITE_NULL;
+    public bool IsNull(int column) => TypeOf(column) == SQLITE_NULL;
 
-    public long Integer(int column) => sqlite3_column_int64(_statement, column);
+    public long Integer(int column)
+    {
+        long value = NativeCells.Integer(_row, column);
+        GC.KeepAlive(_statement);
+        return value;
+    }
 
     public long? NullableInteger(int column) => IsNull(column) ? null : Integer(column);
 
-    public double Real(int column) => sqlite3_column_double(_statement, column);
+    public double Real(int column)
+    {
+        double value = NativeCells.Real(_row, column);
+        GC.KeepAlive(_statement);
+        return value;
+    }
 
     public double? NullableReal(int column) => IsNull(column) ? null : Real(column);
 
-    public string Text(int column) => sqlite3_column_text(_statement, column).utf8_to_string() ?? "";
+    public string Text(int column)
+    {
+        nint bytes = NativeCells.Bytes(_row, column);
+        string text = bytes == 0 ? "" : Marshal.PtrToStringUTF8(bytes, NativeCells.ByteCount(_row, column));
+        GC.KeepAlive(_statement);
+        return text;
+    }
 
     /// <summary>Whether a cell holds just this ASCII text, without making a string of it.</summary>
     public bool TextEquals(int column, string ascii) =>
@@ -180,7 +201,18 @@ internal sealed class SqliteStatement : IDisposable
     /// <summary>The bytes of a cell; valid until the next call on this statement.</summary>
     public ReadOnlySpan<byte> Blob(int column) => sqlite3_column_blob(_statement, column);
 
-    public void Dispose() => _statement.Dispose();
+    public void Dispose()
+    {
+        _row = 0;
+        _statement.Dispose();
+    }
+
+    private int TypeOf(int column)
+    {
+        int type = NativeCells.Type(_row, column);
+        GC.KeepAlive(_statement);
+        return type;
+    }
 
     private void Check(int code)
     {

@@ -13,6 +13,7 @@ internal sealed class ExperimentRows : IDisposable
     private readonly SqliteStatement _plans;
     private readonly SqliteStatement _results;
     private bool _more;
+    private int _position;
 
     /// <param name="catalog">The open catalog.</param>
     /// <param name="campaignId">The campaign.</param>
@@ -43,7 +44,7 @@ internal sealed class ExperimentRows : IDisposable
     /// <summary>Key of the experiment given last.</summary>
     public long Id { get; private set; }
 
-    /// <summary>The next experiment; null at the end. Of several results the latest stands, and none where values came in after it.</summary>
+    /// <summary>The next experiment, numbered as it comes; null at the end. Of several results the latest stands, and none where values came in after it.</summary>
     public ExperimentResult? Next(AmendedExperiments amended)
     {
         if (!_plans.Read())
@@ -52,19 +53,16 @@ internal sealed class ExperimentRows : IDisposable
         }
 
         Id = _plans.Integer(0);
-        var experiment = new ExperimentResult
-        {
-            Plan = PlanStore.Row(_plans, _sets),
-            Position = 0,
-            Status = ExperimentStatus.Planned,
-            Amendments = amended.Reasons(Id),
-        };
+        _position++;
+        PlannedExperiment plan = PlanStore.Row(_plans, _sets);
+        IReadOnlyList<string> amendments = amended.Reasons(Id);
+        ExperimentResult? tested = null;
         for (; _more && _results.Integer(0) == Id; _more = _results.Read())
         {
-            experiment = amended.AwaitsTest(Id) ? experiment : WithResult(experiment, _results);
+            tested = amended.AwaitsTest(Id) ? null : Result(plan, _position, tested?.Amendments ?? amendments, _results);
         }
 
-        return experiment;
+        return tested ?? new ExperimentResult { Plan = plan, Position = _position, Status = ExperimentStatus.Planned, Amendments = amendments };
     }
 
     public void Dispose()
@@ -74,8 +72,11 @@ internal sealed class ExperimentRows : IDisposable
         _sets.Dispose();
     }
 
-    private static ExperimentResult WithResult(ExperimentResult experiment, SqliteStatement row) => experiment with
+    // Made at once instead of copied from one without a result: this is done for every experiment of a campaign.
+    private static ExperimentResult Result(PlannedExperiment plan, int position, IReadOnlyList<string> amendments, SqliteStatement row) => new()
     {
+        Plan = plan,
+        Position = position,
         Status = ExperimentStatusWords.Parse(row.Text(1)),
         GroupCount = (int)row.Integer(2),
         ObservationCount = (int)row.Integer(3),
@@ -87,9 +88,9 @@ internal sealed class ExperimentRows : IDisposable
         OmegaSquared = row.NullableReal(10),
         SpecimenCount = (int?)row.NullableInteger(12),
         Resampling = row.IsNull(13) ? null : new Resampling(row.Integer(13), row.Integer(14), unchecked((ulong?)row.NullableInteger(15))),
-        Amendments = row.Integer(11) != 0 && IsShort(experiment.Plan, (int)row.Integer(2), (int)(row.NullableInteger(12) ?? row.Integer(3)))
-            ? [.. experiment.Amendments, FormattableString.Invariant($"tested short of its plan, with {row.NullableInteger(12) ?? row.Integer(3)} {(row.IsNull(12) ? "values" : "specimens")} where {experiment.Plan.Replicates} in each group were planned")]
-            : experiment.Amendments,
+        Amendments = row.Integer(11) != 0 && IsShort(plan, (int)row.Integer(2), (int)(row.NullableInteger(12) ?? row.Integer(3)))
+            ? [.. amendments, FormattableString.Invariant($"tested short of its plan, with {row.NullableInteger(12) ?? row.Integer(3)} {(row.IsNull(12) ? "values" : "specimens")} where {plan.Replicates} in each group were planned")]
+            : amendments,
     };
 
     private static bool IsShort(PlannedExperiment plan, int groups, int values) =>

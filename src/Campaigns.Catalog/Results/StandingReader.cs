@@ -64,7 +64,7 @@ public sealed class StandingReader(Catalog catalog)
         var experiments = new List<ExperimentResult>();
         while (rows.Next(amended) is { } experiment)
         {
-            experiment = experiment with { Entry = entries.GetValueOrDefault(rows.Id) };
+            experiment = entries.Count == 0 ? experiment : experiment with { Entry = entries.GetValueOrDefault(rows.Id) };
             experiment = untested.TryGetValue(rows.Id, out DataAtHand? data) ? data.Describe(experiment) : experiment;
             experiments.Add(!amended.Withdrawals.IsWithdrawn(rows.Id) ? experiment
                 : experiment with { Status = ExperimentStatus.Withdrawn, LeftFamily = amended.Withdrawals.LeavesFamily(rows.Id) });
@@ -74,11 +74,10 @@ public sealed class StandingReader(Catalog catalog)
         {
             // Without a plan the order of the experiments is the order of their names, whatever the order of the rows that brought them.
             experiments.Sort((a, b) => NaturalOrder.Instance.Compare(a.Plan.Code, b.Plan.Code));
-        }
-
-        for (int i = 0; i < experiments.Count; i++)
-        {
-            experiments[i] = experiments[i] with { Position = i + 1 };
+            for (int i = 0; i < experiments.Count; i++)
+            {
+                experiments[i] = experiments[i] with { Position = i + 1 };
+            }
         }
 
         return experiments;

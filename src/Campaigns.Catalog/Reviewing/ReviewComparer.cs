@@ -20,9 +20,10 @@ public sealed class ReviewComparer(Catalog catalog)
         var reader = new ReviewReader(catalog);
         StoredReview before = reader.Get(stored, earlier);
         StoredReview after = reader.Get(stored, later);
-        var events = new ReviewEvents(catalog, stored.Id, before.Position, after.Position);
+        var events = new ReviewEvents(catalog, stored, before.Position, after.Position);
         var missing = new Missing(catalog, stored, before, after);
         ReviewComparison comparison = ReviewComparison.Of(stored.Campaign, reader.Whole(stored, before), reader.Whole(stored, after), events.ByExperiment, missing.Why);
+        comparison = comparison with { PlanBefore = reader.PlanVersion(stored, before), PlanAfter = reader.PlanVersion(stored, after) };
         return (comparison, (IReadOnlyDictionary<long, string>)new PlanStore(catalog).Codes(stored.Id));
     });
 

@@ -123,6 +123,14 @@ public sealed class ReviewReader(Catalog catalog)
             $"The campaign '{stored.Campaign.Code}' has no review {number}; it has {(last == 1 ? "review 1 alone" : $"reviews 1 to {last}")}, which 'campaigns reviews {stored.Campaign.Code}' lists."));
     }
 
+    /// <summary>Version of the plan at a review: the number of the latest amendment before it, 0 as it was sealed.</summary>
+    internal int PlanVersion(StoredCampaign stored, StoredReview review)
+    {
+        using SqliteStatement select = catalog.Prepare("SELECT coalesce(max(number), 0) FROM plan_amendments WHERE campaign_id = ?1 AND id <= ?2");
+        select.Bind(1, stored.Id).Bind(2, review.Position.LastAmendmentId ?? 0).Read();
+        return (int)select.Integer(0);
+    }
+
     /// <summary>A review with its lines and its family as it was counted on its day.</summary>
     internal ReviewedFamily Whole(StoredCampaign stored, StoredReview review)
     {

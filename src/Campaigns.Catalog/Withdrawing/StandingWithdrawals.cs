@@ -69,6 +69,10 @@ internal sealed class StandingWithdrawals
     /// <summary>Every decision about an experiment, oldest first.</summary>
     public IReadOnlyList<Withdrawal> Decisions(long experimentId) => _experiments.TryGetValue(experimentId, out Experiment? found) ? found.Decisions : [];
 
+    /// <summary>Every decision, in the order in which they were made.</summary>
+    public IEnumerable<Withdrawal> InOrder() =>
+        _experiments.Values.SelectMany(e => e.Keys.Zip(e.Decisions)).OrderBy(d => d.First).Select(d => d.Second);
+
     /// <summary>How many decisions came after one.</summary>
     /// <param name="id">Its key; null counts all.</param>
     public int After(long? id) => _experiments.Values.Sum(e => e.Keys.Count(k => k > (id ?? 0)));

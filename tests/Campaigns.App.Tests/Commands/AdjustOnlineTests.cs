@@ -69,7 +69,7 @@ public sealed class AdjustOnlineTests : IDisposable
         Assert.Equal(["0.5", "NA", "0.001"], ran.Csv.Column("p"));
         Assert.Equal(["0.016666666666666666", "", "0.016666666666666666"], ran.Csv.Column("alpha-spending_level"));
         Assert.Equal(["false", "", "true"], ran.Csv.Column("alpha-spending_survives"));
-        Assert.Contains("1 row(s) have no p-value. In an online procedure they take no step, and their cells stay empty.", ran.Error, StringComparison.Ordinal);
+        Assert.Contains("1 row has no p-value. In an online procedure it takes no step, and its cells stay empty.", ran.Error, StringComparison.Ordinal);
 
         CsvText larger = _place.Run("adjust", Column("0.5", "0.001"), "--correction", "alpha-spending,bonferroni", "--shape", "uniform", "--family-size", "10", "--format", "csv").Well().Csv;
         Assert.Equal([0.005, 0.005], larger.Numbers("alpha-spending_level"));

@@ -73,7 +73,7 @@ public sealed class AdjustVerbTests : IDisposable
     {
         Ran ran = _place.Run("adjust", Column("0.01", "NA", "0.2"), "--correction", "holm", "--format", "csv").Well();
         Assert.Equal(["0.03", "", "0.4"], ran.Csv.Column("holm"));
-        Assert.Contains("1 row(s) have no p-value; they count as p = 1 in the family of 3", ran.Error, StringComparison.Ordinal);
+        Assert.Contains("1 row has no p-value; it counts as p = 1 in the family of 3", ran.Error, StringComparison.Ordinal);
     }
 
     [Fact]
@@ -92,7 +92,7 @@ public sealed class AdjustVerbTests : IDisposable
         string blank = _place.Write("blank.csv", "p\n0.001\n\n0.002\n");
         Ran ran = _place.Run("adjust", blank, "--correction", "bonferroni", "--format", "csv").Well();
         Assert.Equal(["0.002", "0.004"], ran.Csv.Column("bonferroni"));
-        Assert.Contains("1 blank line(s) were passed over", ran.Error, StringComparison.Ordinal);
+        Assert.Contains("1 blank line was passed over and is not counted", ran.Error, StringComparison.Ordinal);
         Assert.DoesNotContain("blank", _place.Run("adjust", Column("0.001", "0.002"), "--correction", "bonferroni", "--format", "csv").Well().Error, StringComparison.Ordinal);
         string weighted = _place.Write("w.csv", "p,w\n0.001,1\n0.002,2\n");
         _place.Run("adjust", weighted, "--correction", "holm,lord", "--weights", "w").Refused(2, "takes weights");

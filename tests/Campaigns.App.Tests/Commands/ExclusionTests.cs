@@ -56,7 +56,7 @@ public sealed class ExclusionTests : IDisposable
         Assert.Contains($"Deviation from the plan: {Why}.", Unwrapped("show", "C", "E1"), StringComparison.Ordinal);
         foreach (string command in (string[])["results", "survivors", "comparisons", "corrections", "show"])
         {
-            Assert.Contains("Deviations: 1 experiment(s)", Unwrapped(command, "C"), StringComparison.Ordinal);
+            Assert.Contains("Deviations: 1 experiment.", Unwrapped(command, "C"), StringComparison.Ordinal);
         }
 
         using var json = JsonDocument.Parse(_place.Run("show", "C", "E1", "--format", "json").Well().Out);

@@ -43,7 +43,7 @@ public sealed class InDepthRefusalTests : IDisposable
     }
 
     [Theory]
-    [InlineData(2, "Required argument 'CODE' missing", "comparisons")]
+    [InlineData(2, "'campaigns comparisons' needs CODE", "comparisons")]
     [InlineData(2, "--format takes table, csv or json, not 'xml'", "comparisons", "C", "--format", "xml")]
     [InlineData(2, "There is no option '--all'", "comparisons", "C", "--all")]
     [InlineData(3, "There is no campaign 'D'", "comparisons", "D")]

@@ -69,10 +69,10 @@ public sealed partial class LedgerVerbTests : IDisposable
     {
         Live();
         string text = OneLine(_place.Run("ledger", "verify").Well().Out);
-        Assert.Contains($"The record is whole: 20 entries, head {Head}.", text, StringComparison.Ordinal);
+        Assert.Contains($"The record is whole: 20 entries. Its head: {Head} Proved", text, StringComparison.Ordinal);
         Assert.Contains("Without a head from outside it cannot be seen whether the end of the record was cut off, or the whole file was replaced by an older copy", text, StringComparison.Ordinal);
         string with = OneLine(_place.Run("ledger", "verify", "--head", Head).Well().Out);
-        Assert.Contains($"The chain holds the head {Head}, and has 0 entries after it", with, StringComparison.Ordinal);
+        Assert.Contains($"the record was only continued: 0 entries came after it. The head given: {Head}", with, StringComparison.Ordinal);
         Assert.DoesNotContain("cannot be seen", with, StringComparison.Ordinal);
         CsvText csv = _place.Run("ledger", "verify", "--format", "csv").Well().Csv;
         Assert.Equal(["true"], csv.Column("whole"));
@@ -104,6 +104,25 @@ public sealed partial class LedgerVerbTests : IDisposable
     }
 
     [Fact]
+    public void Levels_and_decisions_beside_the_record_are_named_by_their_experiment()
+    {
+        Live();
+        using (SqliteConnection connection = new($"Data Source={_place.Catalog};Pooling=False"))
+        {
+            connection.Open();
+            using SqliteCommand tamper = connection.CreateCommand();
+            tamper.CommandText = """
+                INSERT INTO stream_entries SELECT s.id, 3, e.id, 0.01, 0, 0 FROM streams s JOIN campaigns c ON c.id = s.campaign_id JOIN experiments e ON e.campaign_id = c.id WHERE c.code = 'B' AND s.number = 1 AND e.code = 'E03';
+                INSERT INTO standing_decisions SELECT stream_id, 3, 9, max(test_run_id), 0.5, NULL, 0, 0 FROM standing_decisions WHERE stream_id = (SELECT stream_id FROM stream_entries WHERE level = 0.01 AND position = 3);
+                """;
+            tamper.ExecuteNonQuery();
+        }
+
+        _place.Run("ledger", "verify").Refused(
+            5, "No entry of the ledger speaks for the level given to experiment 'E03' in stream 1 of campaign 'B'.", "No entry of the ledger speaks for the decision on experiment 'E03' in stream 1 of campaign 'B'.");
+    }
+
+    [Fact]
     public void Show_seal_and_review_print_the_head_that_the_ledger_has()
     {
         _place.Run("start", "C").Well();
@@ -111,7 +130,7 @@ public sealed partial class LedgerVerbTests : IDisposable
         string fixedNow = OneLine(_place.Run("seal", "C").Well().Out);
         Assert.Contains(Head, fixedNow, StringComparison.Ordinal);
         string sealing = OneLine(_place.Run("show", "C").Well().Out);
-        Assert.Contains($"Record: this is what stood in the catalog at ledger head {Head}.", sealing, StringComparison.Ordinal);
+        Assert.Contains($"This is what stood in the catalog at ledger head {Head}", sealing, StringComparison.Ordinal);
         _place.Run("load", "C", _place.Write("m.csv", Workplace.TwoExperiments)).Well();
         _place.Run("test", "C").Well();
         string review = OneLine(_place.Run("review", "C").Well().Out);
@@ -134,7 +153,7 @@ public sealed partial class LedgerVerbTests : IDisposable
         string plan = _place.Write("plan.csv", "experiment,groups\nE1,a|b\n");
         _place.Run("plan", "C", plan, "--as", "Ada", "--head", seen).Well();
         string other = _place.Write("other.csv", "experiment,groups\nE1,a|b|c\n");
-        Ran refused = _place.Run("plan", "C", other, "--as", "Ben", "--head", seen).Refused(3, "was changed since", "entry 2, 2026-03-02T09:30:00.000000Z, Ada: plan (1 added, 0 changed)", Head);
+        Ran refused = _place.Run("plan", "C", other, "--as", "Ben", "--head", seen).Refused(3, "was changed since", "  2. 2026-03-02 09:30:00 UTC, Ada (account lab): registered or changed planned experiments of C (1 added, 0 changed).\n", $"  --head {Head}\n");
         Assert.DoesNotContain("Ben", refused.Error, StringComparison.Ordinal);
         _place.Run("plan", "C", other, "--as", "Ben", "--head", Head).Well();
         _place.Run("seal", "C", "--head", $"1:{new string('0', 64)}").Refused(5, "does not hold the head 1:000");

@@ -116,7 +116,14 @@ public sealed class OnlineCampaignTests : IDisposable
         string line = ((int.Parse(survivor[1..], System.Globalization.CultureInfo.InvariantCulture) - 1) * 10 + 2).ToString(System.Globalization.CultureInfo.InvariantCulture);
         _place.Run("exclude", "C", survivor, "--line", line, "--reason", "dropped").Well();
         Assert.Contains("by standing decisions", _place.Run("survivors", "C").Well().Out, StringComparison.Ordinal);
-        CsvText review = _place.Run("review", "C", "--format", "csv").Well().Csv;
+        foreach (string command in (string[])["decisions", "results", "survivors", "review"])
+        {
+            string said = _place.Run(command, "C").Well().Out.Replace('\n', ' ');
+            Assert.Contains("1 decided experiment awaits a new test: decisions, results and survivors keep its decision, a review counts only what has a result and is without it until 'campaigns test C'.", said, StringComparison.Ordinal);
+            Assert.True(command == "review" || said.Contains("withdrawing a survivor afterwards decides by results, and is outside it.", StringComparison.Ordinal), command);
+        }
+
+        CsvText review = _place.Run("reviews", "C", "--format", "csv").Well().Csv;
         Assert.Equal(["7", (survivors - 1).ToString(System.Globalization.CultureInfo.InvariantCulture)], [review.Column("tested")[0], review.Column("survivors")[0]]);
         Assert.Contains("the same to the byte", _place.Run("reviews", "C", "--rerun", "all").Well().Out, StringComparison.Ordinal);
         _place.Run("ledger", "verify").Well();
@@ -148,7 +155,7 @@ public sealed class OnlineCampaignTests : IDisposable
             foreach (string[] command in (string[][])[["results", "C"], ["survivors", "C"], ["decisions", "C"], ["comparisons", "C"], ["corrections", "C"], ["show", "C"], ["show", "C", survivor], ["risk", "C"]])
             {
                 string text = _place.Run(command).Well().Out.Replace('\n', ' ');
-                Assert.True(text.Contains("Deviations: 1 experiment(s)", StringComparison.Ordinal) || text.Contains("Deviation from the plan", StringComparison.Ordinal), string.Join(' ', command) + text);
+                Assert.True(text.Contains("Deviations: 1 experiment.", StringComparison.Ordinal) || text.Contains("Deviation from the plan", StringComparison.Ordinal), string.Join(' ', command) + text);
             }
 
             foreach (string command in (string[])["results", "survivors"])

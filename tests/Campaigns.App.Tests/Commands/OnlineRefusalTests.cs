@@ -108,7 +108,7 @@ public sealed class OnlineRefusalTests : IDisposable
         Assert.Equal(["1", "1"], results.Column("adjusted_p")[4..]);
         foreach (string command in (string[])["results", "decisions"])
         {
-            Assert.Contains("2 experiment(s) came after the horizon and were given the level 0: they cannot survive.", _place.Run(command, "C").Well().Out.Replace('\n', ' '), StringComparison.Ordinal);
+            Assert.Contains("2 experiments came after the horizon and were given the level 0: they cannot survive.", _place.Run(command, "C").Well().Out.Replace('\n', ' '), StringComparison.Ordinal);
         }
     }
 

@@ -24,8 +24,8 @@ public sealed class PlanChangeTests : IDisposable
         foreach (string[] command in (string[][])[["results", "C"], ["survivors", "C"], ["comparisons", "C"], ["show", "C"], ["show", "C", "E2"], ["bound", "C", "E2"], ["overall", "C"], ["risk", "C"], ["corrections", "C"], ["review", "C"]])
         {
             string said = _place.Run(command).Well().Out;
-            Assert.Contains("Withdrawn after their data came: 1 experiment(s); they stay in the family and count with p = 1.", said, StringComparison.Ordinal);
-            Assert.Contains("they left the family, which had 3 and has 2. For 1 of them results of other experiments had been seen by then", said, StringComparison.Ordinal);
+            Assert.Contains("Withdrawn after their data came: 1 experiment; it stays in the family and counts with p = 1.", said, StringComparison.Ordinal);
+            Assert.Contains("it left the family, which had 3 and has 2. For 1 of them results of other experiments had been seen by then", said, StringComparison.Ordinal);
         }
 
         Assert.Contains("Deviation from the plan: withdrawn after its data came", _place.Run("show", "C", "E1").Well().Out, StringComparison.Ordinal);
@@ -48,7 +48,10 @@ public sealed class PlanChangeTests : IDisposable
         _place.Run("withdraw", "C", "E1", "E9", "--reason", "r").Refused(3, "has no experiment 'E9'", "Nothing was changed.");
         _place.Run("withdraw", "C", "E1", "--take-back", "--reason", "r").Refused(3, "is not withdrawn");
         _place.Run("withdraw", "C", "E1").Refused(2, "--reason");
-        _place.Run("withdraw", "C", "--reason", "r").Refused(2);
+        _place.Run("withdraw", "C", "--reason", "r").Refused(2, "'campaigns withdraw' needs EXPERIMENT: the experiments");
+        Assert.DoesNotContain("--reason", _place.Run("withdraw", "C").Refused(2, "'campaigns withdraw' needs EXPERIMENT").Error, StringComparison.Ordinal);
+        _place.Run("show", "C", "-E1").Refused(2, "There is no option '-E1'", "a name that begins with a hyphen is typed after '--'");
+        _place.Run("show", "C", "--", "-E1").Refused(3, "no experiment '-E1'");
         _place.Run("withdraw", "C", "E1", "--reason", " ").Refused(2, "--reason must not be empty");
         Assert.Equal(before, File.ReadAllBytes(_place.Catalog));
         _place.Run("withdraw", "C", "E3", "--reason", "r").Well();
@@ -63,10 +66,10 @@ public sealed class PlanChangeTests : IDisposable
         string file = _place.Write("amended.csv", rows.Replace("second", "second, again", StringComparison.Ordinal).Replace(",second, again,", ",\"second, again\",", StringComparison.Ordinal) + "E4,,,,a|b,,f,none,2,,,,,,\n");
         _place.Run("plan", "C", file).Refused(3, "takes no changes", "--reason TEXT");
         Ran amended = _place.Run("plan", "C", file, "--reason", "new line of resins", "--as", "A. Moss").Well();
-        Assert.Contains("1 experiment(s) added, 1 changed, 2 as before. Recorded as an amendment", amended.Out, StringComparison.Ordinal);
+        Assert.Contains("1 experiment added, 1 changed, 2 as before. Recorded as an amendment", amended.Out, StringComparison.Ordinal);
         foreach (string[] command in (string[][])[["results", "C"], ["survivors", "C"], ["comparisons", "C"], ["show", "C"], ["review", "C"]])
         {
-            Assert.Contains("The sealed plan was amended 1 time(s): 1 experiment(s) added, 1 changed", _place.Run(command).Well().Out, StringComparison.Ordinal);
+            Assert.Contains("The sealed plan was amended once: 1 experiment added, 1 changed", _place.Run(command).Well().Out, StringComparison.Ordinal);
         }
 
         Assert.Equal(("4", "second, again"), (Result("E1", "family_size"), Result("E2", "title")));

@@ -16,7 +16,7 @@ public sealed class ReviewsVerbTests : IDisposable
         Assert.Equal(["1", "2026-03-02T09:30:00Z", "0", "1", "10", "bh", "0.05", "3", "2", "1", "false"], reviews.Rows[0][..11]);
         Assert.Equal(["2", "2026-03-09T09:30:00Z", "0", "2", "14", "bh", "0.05", "3", "3", "2", "false"], reviews.Rows[1][..11]);
         string table = _place.Run("reviews", "C").Well().Out;
-        Assert.Contains("C: 2 review(s), each as it was on its day", table, StringComparison.Ordinal);
+        Assert.Contains("C: 2 reviews, each as it was on its day", table, StringComparison.Ordinal);
         Assert.Contains("0 as it was sealed", table, StringComparison.Ordinal);
         Assert.Equal(["", ""], _place.Run("reviews", "C", "--families", "--format", "csv").Well().Csv.Column("family"));
     }
@@ -33,6 +33,7 @@ public sealed class ReviewsVerbTests : IDisposable
         // Benjamini and Hochberg in a family of three: the smaller p-value times 3.
         Assert.Equal(3 * CsvText.Number(lines.Value("E1", "p")), CsvText.Number(lines.Value("E1", "adjusted_p")), 1e-15);
         Assert.Contains("Review 1 of 2026-03-02 09:30 UTC: 1 of 2 tested experiments survive, in a family of 3.", _place.Run("reviews", "C", "--lines", "1").Well().Out, StringComparison.Ordinal);
+        Assert.Contains("Review 1 of 2026-03-02 09:30 UTC: Benjamini-Hochberg at 0.05 over 3 hypotheses.", _place.Run("reviews", "C", "--lines", "1").Well().Out, StringComparison.Ordinal);
     }
 
     [Fact]
@@ -41,11 +42,11 @@ public sealed class ReviewsVerbTests : IDisposable
         Twice();
         Ran ran = _place.Run("reviews", "C", "--compare", "1", "2", "--format", "csv").Well();
         Assert.Equal(
-            ["experiment", "change", "p_before", "p_after", "adjusted_p_before", "adjusted_p_after", "reason", "events", "family", "family_size_before", "family_size_after", "because"], ran.Csv.Columns);
+            ["experiment", "change", "p_before", "p_after", "adjusted_p_before", "adjusted_p_after", "reason", "events", "family", "family_size_before", "family_size_after", "because", "family_events"], ran.Csv.Columns);
         Assert.Equal(["E3", "gained", "", "first-tested", "first tested since the earlier review"], [ran.Csv.Value("E3", "experiment"), ran.Csv.Value("E3", "change"), ran.Csv.Value("E3", "p_before"), ran.Csv.Value("E3", "reason"), ran.Csv.Value("E3", "because")]);
         Assert.Equal("Between review 1 and review 2: 1 gained, 0 lost, 1 survive in both.\n", ran.Error);
         string table = _place.Run("reviews", "C", "--compare", "1", "2").Well().Out;
-        Assert.Contains("1 kept their verdict with another adjusted p-value", table.ReplaceLineEndings(" "), StringComparison.Ordinal);
+        Assert.Contains("with the same verdict and another adjusted p-value: 1.", table.ReplaceLineEndings(" "), StringComparison.Ordinal);
         Assert.Contains("Level and correction are those of the sealed plan in both: bh at 0.05.", table, StringComparison.Ordinal);
 
         Assert.Contains("Nothing changed between review 2 and review 2", _place.Run("reviews", "C", "--compare", "2", "2").Well().Out, StringComparison.Ordinal);

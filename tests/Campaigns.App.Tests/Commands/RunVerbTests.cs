@@ -20,7 +20,7 @@ public sealed class RunVerbTests : IDisposable
         _place.Clock.Advance(TimeSpan.FromDays(7));
         string second = _place.Run("run", Workplace.Demo).Well().Out.ReplaceLineEndings(" ");
         Assert.Contains("sealed already, and plan.csv says the same", second, StringComparison.Ordinal);
-        Assert.Contains("12 file(s) had been loaded before and were not loaded again", second, StringComparison.Ordinal);
+        Assert.Contains("12 files had been loaded before and were not loaded again", second, StringComparison.Ordinal);
         Assert.Contains("Nothing new to test", second, StringComparison.Ordinal);
         Assert.Contains("Nothing changed since review 1", second, StringComparison.Ordinal);
         Assert.DoesNotContain("Opened", second, StringComparison.Ordinal);

@@ -13,8 +13,8 @@ public sealed class StepByStepTests : IDisposable
     {
         Assert.Contains("Opened campaign C: familywise error rate at 0.01 by Holm", _place.Run("start", "C", "--error-rate", "familywise", "--level", "0.01", "--title", "T").Well().Out, StringComparison.Ordinal);
         string plan = _place.Write("plan.csv", "experiment,replicates\nE1,3\nE2,3\nE3,3\n");
-        Assert.Contains("3 experiment(s) added, 0 changed, 0 as before", _place.Run("plan", "C", plan).Well().Out, StringComparison.Ordinal);
-        Assert.Contains("0 experiment(s) added, 0 changed, 3 as before", _place.Run("plan", "C", plan).Well().Out, StringComparison.Ordinal);
+        Assert.Contains("3 experiments added, 0 changed, 0 as before", _place.Run("plan", "C", plan).Well().Out, StringComparison.Ordinal);
+        Assert.Contains("0 experiments added, 0 changed, 3 as before", _place.Run("plan", "C", plan).Well().Out, StringComparison.Ordinal);
         Assert.Contains("Sealed C", _place.Run("seal", "C").Well().Out, StringComparison.Ordinal);
         _place.Run("seal", "C").Refused(3, "sealed already, since 2026-03-02");
         _place.Run("plan", "C", plan, "--format", "csv").Refused(3, "takes no changes");

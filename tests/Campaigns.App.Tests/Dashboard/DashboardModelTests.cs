@@ -200,6 +200,16 @@ public sealed class DashboardModelTests
     }
 
     [Theory]
+    [InlineData(1, "is out of date: 1 awaits a new test")]
+    [InlineData(3, "is out of date: 3 await a new test")]
+    public void A_review_is_not_up_to_date_while_experiments_await_a_new_test(int awaiting, string words)
+    {
+        CampaignHeading heading = new(SampleCampaign.Standing(12) with { AwaitingNewTest = awaiting }, new RisingCorrection());
+        Assert.EndsWith(words, heading.Review, StringComparison.Ordinal);
+        Assert.Equal(words, heading.ReviewTrouble);
+    }
+
+    [Theory]
     [InlineData(0, false, "is up to date", false)]
     [InlineData(1, false, "is behind by 1 result", true)]
     [InlineData(7, false, "is behind by 7 results", true)]

@@ -14,7 +14,7 @@ public sealed class DashboardProgramTests
         Console.SetError(error);
         try
         {
-            Assert.Equal(2, DashboardProgram.Run(SampleCampaign.Source(SampleCampaign.Standing(3)), SampleCampaign.Code, ascii: false));
+            Assert.Equal(2, DashboardProgram.Run(SampleCampaign.Source(SampleCampaign.Standing(3)), SampleCampaign.Code, "Experiments", ascii: false));
         }
         finally
         {

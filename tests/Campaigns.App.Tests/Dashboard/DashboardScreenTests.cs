@@ -176,7 +176,7 @@ public sealed class DashboardScreenTests
         screen.Press(new Key('/')).Type("survives:no").Press(Key.Enter).Turn("Ranking").Press(Key.Home, Key.CursorRight);
         ExperimentResult second = screen.Model.Ranking.At(2);
         Assert.Same(second, screen.Model.Selected);
-        Assert.Contains($"{second.Plan.Code} ◆ survives: rank 2, ", screen.Text, StringComparison.Ordinal);
+        Assert.Contains($"{second.Plan.Code} ◆ rank 2, ", screen.Text, StringComparison.Ordinal);
         screen.Press(Key.Z);
         Assert.Contains("20 of 48", screen.Text, StringComparison.Ordinal);
         screen.Press(Key.Enter);

@@ -2,6 +2,7 @@ using System.Globalization;
 using Campaigns.Domain;
 using Campaigns.Statistics.Corrections;
 using Campaigns.Statistics.GroupTests;
+using Campaigns.Statistics.Online;
 using Campaigns.Statistics.Probability;
 using Campaigns.Statistics.Units;
 
@@ -55,7 +56,12 @@ internal static class SampleCampaign
 
     public static SampleSource Source(CampaignStanding standing) => new(standing);
 
-    public static Correction? Find(string key) => key switch { "rising" => new RisingCorrection(), "unbounded" => new UnboundedCorrection(), _ => null };
+    public static ErrorProcedure? Find(string key) => key switch
+    {
+        "rising" => new RisingCorrection(),
+        "unbounded" => new UnboundedCorrection(),
+        _ => (ErrorProcedure?)CorrectionRegistry.Find(key) ?? OnlineRegistry.Find(key),
+    };
 
     public static ExperimentDetail Detail(ExperimentResult result)
     {

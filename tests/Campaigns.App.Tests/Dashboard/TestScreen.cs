@@ -28,7 +28,7 @@ internal sealed class TestScreen : IDisposable
     {
     }
 
-    public TestScreen(int width, int height, IDashboardSource source, bool ascii = false, bool colour = true)
+    public TestScreen(int width, int height, IDashboardSource source, bool ascii = false, bool colour = true, string page = "Experiments")
     {
         Theme theme = Theme.For(name => name == "NO_COLOR" && !colour ? "1" : null);
         theme.Apply();
@@ -36,6 +36,7 @@ internal sealed class TestScreen : IDisposable
         _app.Init(DriverRegistry.Names.ANSI);
         _app.Driver!.SetScreenSize(width, height);
         Model = new DashboardModel(source, source.Campaigns()[0].Campaign.Code, SampleCampaign.Find);
+        Model.TurnTo(PageList.PlaceOf(page));
         _window = new DashboardWindow(Model, ascii ? GlyphSet.Ascii : GlyphSet.Full, theme);
         _session = _app.Begin(_window)!;
         _app.LayoutAndDraw();

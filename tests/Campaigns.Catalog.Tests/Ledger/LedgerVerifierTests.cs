@@ -74,10 +74,13 @@ public sealed class LedgerVerifierTests : IDisposable
 
     [Theory]
     [InlineData("INSERT INTO loads SELECT 9, campaign_id, 'x.csv', replace(sha256, substr(sha256, 1, 1), 'x'), byte_count, row_count, missing_count, experiment_count, loaded_at, NULL FROM loads", "load 9 ('x.csv')")]
-    [InlineData("INSERT INTO exclusions SELECT 9, experiment_id, load_id, line, is_excluded, group_label, value, reason, named_by, made_at, program_version FROM exclusions WHERE id = 1", "exclusion 9")]
-    [InlineData("INSERT INTO group_sets VALUES (9, 1)", "1 row(s) of the groups of campaign 1 ('C')")]
-    [InlineData("INSERT INTO withdrawals VALUES (1, 1, 1, 0, 'r', 'n', 0, 'v')", "withdrawal 1")]
-    [InlineData("INSERT INTO plan_amendments VALUES (1, 1, 1, 'r', 'n', 0, 'v')", "amendment 1")]
+    [InlineData("INSERT INTO exclusions SELECT 9, experiment_id, load_id, line, is_excluded, group_label, value, reason, named_by, made_at, program_version FROM exclusions WHERE id = 1", "speaks for the exclusion of line 2 of 'data-1.csv', experiment 'E1' of campaign 'C'.")]
+    [InlineData("INSERT INTO group_sets VALUES (9, 1)", "speaks for groups without labels of campaign 'C'.")]
+    [InlineData("INSERT INTO group_sets VALUES (9, 1); INSERT INTO groups VALUES (9, 0, 'X'); INSERT INTO groups VALUES (9, 1, 'Y'); INSERT INTO group_sets VALUES (10, 1)", "speaks for the groups 'X', 'Y' of campaign 'C', nor for 1 more beside it.")]
+    [InlineData("INSERT INTO withdrawals VALUES (1, 1, 1, 0, 'r', 'n', 0, 'v')", "speaks for the withdrawal of experiment 'E1' of campaign 'C'.")]
+    [InlineData("INSERT INTO withdrawals VALUES (1, 99, 1, 0, 'r', 'n', 0, 'v')", "speaks for withdrawal 1 (its key in the catalog; its row does not tell more).")]
+    [InlineData("INSERT INTO test_runs (id, campaign_id, last_load_id, ran_at, includes_incomplete, program_version) SELECT 9, campaign_id, last_load_id, ran_at, includes_incomplete, program_version FROM test_runs WHERE id = 1", "speaks for the test run of campaign 'C' at 2026-12-01 08:00:00 UTC with its results.")]
+    [InlineData("INSERT INTO plan_amendments VALUES (1, 1, 1, 'r', 'n', 0, 'v')", "speaks for amendment 1 of the plan of campaign 'C'.")]
     [InlineData("INSERT INTO original_pieces VALUES (1, 9, 1, x'00')", "the kept file of load 1")]
     [InlineData("UPDATE experiments SET first_load_id = 2 WHERE id = 1", "The experiment 'E1' is said to have come with a load")]
     [InlineData("UPDATE experiments SET groups_are_planned = 0, group_set_id = NULL WHERE id = 1", "over other groups")]
@@ -172,6 +175,35 @@ public sealed class LedgerVerifierTests : IDisposable
         string before = _catalog.Dump;
         Prove();
         Assert.Equal(before, _catalog.Dump);
+    }
+
+    [Fact]
+    public void Each_part_of_the_proof_is_told_before_it_begins()
+    {
+        var told = new List<WorkProgress>();
+        new LedgerVerifier(_catalog.Catalog).Verify(progress: told.Add);
+        Assert.Equal(Enumerable.Range(0, told.Count).Select(i => (long)i), told.Select(p => p.Done));
+        Assert.All(told, p => Assert.Equal(told.Count, p.Total));
+        Assert.Equal(("proving the file", "proving the sealed plans"), (told[0].What, told[^1].What));
+    }
+
+    [Theory]
+    [InlineData(0)]
+    [InlineData(2)]
+    [InlineData(5)]
+    public void A_proof_that_is_stopped_finds_no_fault_with_the_record(int part)
+    {
+        using var stop = new CancellationTokenSource();
+        using Catalog own = Catalog.OpenForProof(_catalog.Catalog.Path, _catalog.Clock, isReadOnly: false);
+        own.StopOn(stop.Token);
+        Assert.ThrowsAny<OperationCanceledException>(() => new LedgerVerifier(own).Verify(progress: p =>
+        {
+            if (p.Done == part)
+            {
+                stop.Cancel();
+            }
+        }));
+        Assert.True(Prove().IsWhole);
     }
 
     private LedgerProof Prove(LedgerHead? known = null) => new LedgerVerifier(_catalog.Catalog).Verify(known);

@@ -22,12 +22,12 @@ public sealed class UnchangedSinceTests : IDisposable
         Decide(_catalog.Catalog, 3, "Ada");
         string before = _catalog.Dump;
         using Catalog second = Open(seen);
-        RefusedException refused = Assert.Throws<RefusedException>(() => Decide(second, 4, "Ben"));
+        ChangedSinceException refused = Assert.Throws<ChangedSinceException>(() => Decide(second, 4, "Ben"));
         Assert.Equal(before, _catalog.Dump);
-        string detail = Assert.Single(refused.Details);
-        Assert.StartsWith("entry 10, 2026-12-01T08:00:00.000000Z, ", detail, StringComparison.Ordinal);
-        Assert.EndsWith(": exclude (E1: line 3 of data-1.csv)", detail, StringComparison.Ordinal);
-        Assert.Contains(new LedgerReader(_catalog.Catalog).Head.ToString(), refused.Message, StringComparison.Ordinal);
+        LedgerEntry since = Assert.Single(refused.Since);
+        Assert.Equal((10, LedgerAction.Exclude, "E1: line 3 of data-1.csv"), (since.Sequence, since.Action, since.Subject));
+        Assert.Equal(new LedgerReader(_catalog.Catalog).Head, refused.Head);
+        Assert.Equal($"--head {refused.Head}", refused.Details[^1]);
     }
 
     [Fact]
@@ -37,7 +37,7 @@ public sealed class UnchangedSinceTests : IDisposable
         Decide(second, 3, "Ben");
         Decide(second, 4, "Ben");
         Decide(_catalog.Catalog, 5, "Ada");
-        Assert.Throws<RefusedException>(() => Decide(second, 6, "Ben"));
+        Assert.Throws<ChangedSinceException>(() => Decide(second, 6, "Ben"));
     }
 
     [Fact]

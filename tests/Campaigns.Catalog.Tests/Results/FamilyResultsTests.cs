@@ -48,10 +48,10 @@ public sealed class FamilyResultsTests
         new CampaignExport(catalog.Catalog).Write(catalog.Standing, catalog.Folder["out"], [], p => p.Value > 0.5 ? "large" : "small");
         Assert.Equal("family,correction,level,opens_after,opens_when\none,,0.02,,\ntwo,weighted-holm,0.03,one,any\nthree,,,two,all\n", File.ReadAllText(Path.Combine(catalog.Folder["out"], CampaignExport.FamiliesName)));
         string[] lines = File.ReadAllLines(Path.Combine(catalog.Folder["out"], CampaignExport.ReviewsName));
-        Assert.EndsWith(",survives,family", lines[0], StringComparison.Ordinal);
+        Assert.EndsWith(",survives,family,plan_version,files,rows,program_version,ledger_sequence", lines[0], StringComparison.Ordinal);
         Assert.Equal(
             ["holm,0.02,3,false,E1,small,small,true,one", "holm,0.02,3,false,E2,large,large,false,one", "weighted-holm,0.03,2,false,E4,small,small,true,two", "weighted-holm,0.03,2,false,E5,large,large,false,two", "holm,0.03,1,false,E6,small,large,false,three"],
-            lines[1..].Select(l => string.Join(',', l.Split(',')[2..])));
+            lines[1..].Select(l => string.Join(',', l.Split(',')[2..11])));
         Assert.Equal("E4,,,,A|B,,f,none,,,,2,two,E1,oven", File.ReadAllLines(Path.Combine(catalog.Folder["out"], "plan.csv"))[4]);
     }
 

@@ -132,7 +132,7 @@ public sealed class ReviewReaderTests
         catalog.Review();
         Assert.Equal(["E5 gained first-tested amended-in (three more shades)"], Told(catalog, 4, 5));
         ReviewComparison compared = new ReviewComparer(catalog.Catalog).Compare(TestCatalog.Code, 4, 5).Comparison;
-        Assert.Equal((3, 6, 3), (compared.SizesBefore.Single(), compared.SizesAfter.Single(), compared.AmendedIn));
+        Assert.Equal((3, 6, 3), (compared.SizesBefore.Single(), compared.SizesAfter.Single(), compared.FamilyChanges.Single().AmendedIn));
         Assert.Equal([0, 0, 0, 0, 1], new ReviewReader(catalog.Catalog).Records(TestCatalog.Code).Select(r => r.PlanVersion));
     }
 

@@ -22,6 +22,9 @@ public sealed record GlyphSet
         TickDown = "+",
         TickLeft = "+",
         Boundary = ".",
+        Explored = "-",
+        Lost = "%",
+        Bars = "#",
         BelowScale = "v",
         Here = "^",
         Rising = "^",
@@ -72,6 +75,18 @@ public sealed record GlyphSet
 
     /// <summary>A point of the boundary.</summary>
     public string Boundary { get; private init; } = "·";
+
+    /// <summary>A point of a boundary that is only looked at.</summary>
+    public string Explored { get; private init; } = "╌";
+
+    /// <summary>Would survive at the level that is looked at, and does not.</summary>
+    public string Gained { get; private init; } = "+";
+
+    /// <summary>Survives, and would not at the level that is looked at.</summary>
+    public string Lost { get; private init; } = "◈";
+
+    /// <summary>A cell of a bar, from the lowest to a full one.</summary>
+    public string Bars { get; private init; } = "▁▂▃▄▅▆▇█";
 
     /// <summary>A point below the scale.</summary>
     public string BelowScale { get; private init; } = "▽";

@@ -102,7 +102,8 @@ public sealed class CampaignHeading
             return null;
         }
 
-        return standing.ResultsSinceReview > 0 ? (review.IsInterim ? "is interim and behind by " : "is behind by ") + (standing.ResultsSinceReview == 1 ? "1 result" : Count(standing.ResultsSinceReview) + " results")
+        return standing.AwaitingNewTest > 0 ? $"is out of date: {Count(standing.AwaitingNewTest)} await{(standing.AwaitingNewTest == 1 ? "s" : "")} a new test"
+            : standing.ResultsSinceReview > 0 ? (review.IsInterim ? "is interim and behind by " : "is behind by ") + (standing.ResultsSinceReview == 1 ? "1 result" : Count(standing.ResultsSinceReview) + " results")
             : standing.DecisionsSinceReview > 0 ? "is behind by " + (standing.DecisionsSinceReview == 1 ? "1 decision" : Count(standing.DecisionsSinceReview) + " decisions")
             : review.Correction != standing.Campaign.Correction ? "used " + review.Correction
             : review.Level != standing.Campaign.Level ? "used level " + NumberText.RoundTrip(review.Level.Value)

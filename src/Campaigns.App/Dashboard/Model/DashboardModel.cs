@@ -19,6 +19,7 @@ public sealed class DashboardModel
     private int[] _order = [];
     private int[] _rows = [];
     private string[]? _searchable;
+    private Ranking? _ranking;
     private int _selectedRow;
 
     /// <summary>Makes the model; the first experiment in the plan's order is selected.</summary>
@@ -32,7 +33,7 @@ public sealed class DashboardModel
         _findCorrection = findCorrection;
         Standing = source.Standing(campaign);
         Marks = new Marks(Standing);
-        (Correction, Heading, Ranking) = Read(Standing);
+        (Correction, Heading) = Read(Standing);
         Sort();
         Narrow(keep: -1);
     }
@@ -55,8 +56,8 @@ public sealed class DashboardModel
     /// <summary>What every page says about the campaign.</summary>
     public CampaignHeading Heading { get; private set; }
 
-    /// <summary>The ranked p-values.</summary>
-    public Ranking Ranking { get; private set; }
+    /// <summary>The ranked p-values, ranked when they are first asked for.</summary>
+    public Ranking Ranking => _ranking ??= new Ranking(Standing, Correction);
 
     /// <summary>The experiments that are marked.</summary>
     public Marks Marks { get; private set; }
@@ -87,6 +88,10 @@ public sealed class DashboardModel
 
     /// <summary>The selected experiment; null where no row is shown.</summary>
     public ExperimentResult? Selected => _rows.Length == 0 ? null : Standing.Experiments[_rows[_selectedRow]];
+
+    /// <summary>The procedure with a key; null where the program does not know it.</summary>
+    /// <param name="key">Exact.</param>
+    public ErrorProcedure? Find(string key) => _findCorrection(key);
 
     /// <summary>The experiment in a row.</summary>
     /// <param name="row">Row from 0.</param>
@@ -164,6 +169,17 @@ public sealed class DashboardModel
     {
         Marks.TurnAll(_rows);
         Changed?.Invoke();
+    }
+
+    /// <summary>Marks every survivor, or, where all of them are marked, takes their marks off.</summary>
+    public void MarkSurvivors()
+    {
+        int[] survivors = [.. Enumerable.Range(0, Standing.Experiments.Count).Where(i => Standing.Experiments[i].Survives == true)];
+        if (survivors.Length > 0)
+        {
+            Marks.TurnAll(survivors);
+            Changed?.Invoke();
+        }
     }
 
     /// <summary>Sorts by a column, the smallest first; by the same column again, the other way round. The selected experiment stays selected.</summary>
@@ -253,15 +269,15 @@ public sealed class DashboardModel
     {
         Edition++;
         _details.Clear();
-        _searchable = null;
-        (Correction, Heading, Ranking) = Read(Standing);
+        (_searchable, _ranking) = (null, null);
+        (Correction, Heading) = Read(Standing);
         Sort();
     }
 
-    private (ErrorProcedure?, CampaignHeading, Ranking) Read(CampaignStanding standing)
+    private (ErrorProcedure?, CampaignHeading) Read(CampaignStanding standing)
     {
         ErrorProcedure? correction = _findCorrection(standing.Campaign.Correction);
-        return (correction, new CampaignHeading(standing, correction), new Ranking(standing, correction));
+        return (correction, new CampaignHeading(standing, correction));
     }
 
     private void Sort() => _order = ExperimentOrder.By(Standing.Experiments, SortColumn, IsFalling);

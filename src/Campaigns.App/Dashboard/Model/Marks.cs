@@ -10,6 +10,7 @@ public sealed class Marks
     private CampaignStanding _standing;
     private CampaignBounds? _bounds;
     private MarkedBound? _bound;
+    private int[]? _realAtLeast;
 
     /// <summary>Nothing marked yet.</summary>
     /// <param name="standing">The campaign.</param>
@@ -22,7 +23,17 @@ public sealed class Marks
     public double Confidence => CampaignBounds.ConfidenceOf(_standing.Campaign.Level);
 
     /// <summary>At most how many of the marked are false, by closed testing over all planned experiments of the campaign at its level.</summary>
-    public MarkedBound Bound => _bound ??= (_bounds ??= CampaignBounds.Of(_standing.Experiments, _standing.Campaign.Level)).Mark(_positions);
+    public MarkedBound Bound => _bound ??= Bounds.Mark(_positions);
+
+    /// <summary>The bounds of all sets of the campaign's experiments.</summary>
+    public CampaignBounds Bounds => _bounds ??= CampaignBounds.Of(_standing.Experiments, _standing.Campaign.Level);
+
+    /// <summary>Positions of the marked experiments in the campaign's list, from 0, in any order.</summary>
+    public IReadOnlyCollection<int> Positions => _positions;
+
+    /// <summary>At most how many of the smallest p-values are false.</summary>
+    /// <param name="count">How many of them, from 0 to the number of tested experiments.</param>
+    public int FalseAtMostOfSmallest(int count) => count - (_realAtLeast ??= Bounds.Testing.Curve())[count];
 
     /// <summary>Whether an experiment is marked.</summary>
     /// <param name="position">Its position in the campaign's list, from 0.</param>
@@ -61,7 +72,7 @@ public sealed class Marks
     public void Follow(CampaignStanding standing)
     {
         HashSet<string> codes = [.. _positions.Select(i => _standing.Experiments[i].Plan.Code)];
-        (_standing, _bounds, _bound) = (standing, null, null);
+        (_standing, _bounds, _bound, _realAtLeast) = (standing, null, null, null);
         _positions.Clear();
         for (int i = 0; codes.Count > 0 && i < standing.Experiments.Count; i++)
         {

@@ -6,8 +6,12 @@ public static class PageList
     /// <summary>The name of each page and what makes it; the last one explains the keys.</summary>
     public static IReadOnlyList<(string Name, Func<PageContext, DashboardPage> Make)> All { get; } =
     [
+        ("Programme", context => new ProgrammePage(context)),
         ("Experiments", context => new ExperimentsPage(context)),
         ("Ranking", context => new RankingPage(context)),
+        ("Risk", context => new RiskPage(context)),
+        ("Reviews", context => new ReviewsPage(context)),
+        ("Ledger", context => new LedgerPage(context)),
         ("Help", context => new HelpPage(context)),
     ];
 

@@ -1,125 +1,313 @@
-using System.Globalization;
 using Campaigns.App.Dashboard.Canvas;
 using Campaigns.App.Dashboard.Model;
 using Campaigns.App.Dashboard.Paint;
 using Campaigns.App.Dashboard.Screen;
-using Campaigns.App.Output;
-using Campaigns.Domain;
+using Campaigns.Statistics.Corrections;
 using Terminal.Gui.Input;
 using Terminal.Gui.ViewBase;
 
 namespace Campaigns.App.Dashboard.Pages;
 
-/// <summary>The ranked p-values of the campaign beside the boundary of its correction; the keys walk along the ranks.</summary>
+/// <summary>The ranked p-values of a family beside the boundaries of several corrections, a level to look at, the p-values in bars, and every correction side by side.</summary>
 public sealed class RankingPage : DashboardPage
 {
-    private const int LinesAbove = 2;
-    private const int LinesBelow = 2;
-    private readonly CanvasView _picture;
+    /// <summary>From this width and height on, all pictures stand together.</summary>
+    public const int TogetherWidth = 110;
+
+    /// <summary>See <see cref="TogetherWidth"/>.</summary>
+    public const int TogetherHeight = 30;
+
+    private const int SideWidth = 48;
+    private const int LeastHistogram = 9;
+    private const int LeastCorrections = 18;
+    private const int MostFamilies = 7;
+    private readonly RankingModel _ranking;
+    private readonly CanvasView _above;
+    private readonly CanvasView _plot;
+    private readonly CanvasView _onLevel;
+    private readonly CanvasView _ruler;
+    private readonly CanvasView _below;
+    private readonly CanvasView _histogram;
+    private readonly CanvasView _corrections;
+    private readonly CanvasView _families;
+    private readonly Dictionary<Key, Action> _keys;
+    private readonly Awaiter _awaiter;
+    private int _view;
     private bool _isNear;
+    private (int Families, int View, bool IsLevelSaid) _arranged;
 
     /// <summary>Makes the page.</summary>
     /// <param name="context">What it shows, and with what.</param>
     public RankingPage(PageContext context)
         : base(context)
     {
-        _picture = Part(Paint, takesKeys: true);
-        _picture.Width = Dim.Fill();
-        _picture.Height = Dim.Fill();
-        _picture.Wheeled += Walk;
-        Add(_picture);
+        _ranking = new RankingModel(Model);
+        _awaiter = new Awaiter(() => App, ShowChange);
+        _above = Part((width, _) => RankingNotes.PaintAbove(_ranking, Procedure, width, Glyphs));
+        _plot = Part(PaintPlot, takesKeys: true);
+        _onLevel = Part((width, _) => RankingNotes.PaintOnLevel(_ranking, width, Glyphs));
+        _ruler = Part((width, _) => LevelRuler.Paint(_ranking, width, Glyphs));
+        _below = Part((width, _) => RankingNotes.PaintBelow(_ranking, Model.Selected, width, Glyphs));
+        _histogram = Part((width, height) => HistogramPainter.Paint(_ranking.Histogram, width, height, Glyphs), takesKeys: true);
+        _corrections = Part(PaintCorrections, takesKeys: true);
+        _families = Part((width, height) => FamiliesPainter.Paint(_ranking, width, height, Glyphs), takesKeys: true);
+        Add(_above, _plot, _onLevel, _ruler, _below, _histogram, _corrections, _families);
+        _keys = KeysOf();
+        _plot.Wheeled += Walk;
+        _plot.Clicked += (x, _) => SelectRank(RankingPlot.RankAt(_ranking.Ranking, _isNear, _plot.Frame.Width, x));
+        _ruler.Clicked += (x, _) => LookAt(LevelRuler.LevelAt(_ranking, _ruler.Frame.Width, x));
+        _ruler.Wheeled += rows => MoveLevel(rows > 0 ? -1 : 1);
+        _corrections.Clicked += (_, y) => TurnRow(y - CorrectionsPainter.HeaderRows);
+        _families.Clicked += (_, y) => TurnFamily((FamiliesPainter.PlaceAt(_ranking, _families.Frame.Height, y) ?? _ranking.FamilyPlace) - _ranking.FamilyPlace);
+        Model.Changed += Follow;
+        FrameChanged += (_, _) => Arrange();
+        Arrange();
     }
 
     /// <inheritdoc/>
     public override IReadOnlyList<(string Key, string Does)> Keys =>
-        [("Left/Right", "rank"), ("Enter", "experiment"), ("z", _isNear ? "whole family" : "near the boundary"), TurnKeys, ("F1", "help"), ("q", "quit")];
+    [
+        ("Left/Right", "rank"), ("+ -", "level"),
+        .. IsTogether ? Array.Empty<(string, string)>() : [("n", NextView)],
+        .. HasFamilies ? [("f", "family")] : Array.Empty<(string, string)>(),
+        ("c b", "boundaries"), ("z", _isNear ? "whole" : "near"), ("m", "mark"), ("F1", "help"), ("q", "quit"), ("Enter", "experiment"), TurnKeys,
+    ];
 
     /// <inheritdoc/>
     public override IReadOnlyList<(string Key, string Does)> Help =>
     [
-        ("Left Right", "the rank before and after"),
+        ("Left Right", "the rank before and after (or click in the picture, or turn the wheel)"),
         ("PgUp PgDn Home End", "a twentieth of the ranks, first, last"),
         ("Enter", "the experiment at this rank"),
         ("z", "the whole family, or near the boundary"),
+        ("+ -", "look at a higher or lower level (or click on the row of levels): " + RankingNotes.NothingStored + "; Esc goes back to the sealed one"),
+        ($"{Glyphs.Gained} {Glyphs.Lost}", "at the level that is looked at: would survive and does not, and the other way round"),
+        ("n, Shift+n", "on small screens the next picture: boundaries, bars, corrections, families"),
+        ("f, Shift+f", "the next family of the plan, the one before"),
+        ("c, Shift+c", "point at the next correction, the one before; b draws its boundary with its letter or takes it off"),
+        ("m", "mark the experiment at this rank, or take its mark off"),
+        ("bars", "the p-values of all tested experiments; the line is what true nulls alone would give, by Storey's estimate of their share (2002)"),
     ];
 
     /// <inheritdoc/>
-    public override View Entrance => _picture;
+    public override View Entrance => IsTogether ? _plot : new View[] { _plot, _histogram, _corrections, _families }[View];
 
-    private Ranking Ranking => Model.Ranking;
+    private ErrorProcedure? Procedure => _ranking.Standing.Families.Count > 1 ? Model.Find(_ranking.Family.Correction) : Model.Correction;
 
-    private int Rank => Ranking.RankOf(Model.SelectedPosition);
+    private bool HasFamilies => Model.Standing.Families.Count > 1;
+
+    private int ViewCount => HasFamilies ? 4 : 3;
+
+    private int View => Math.Min(_view, ViewCount - 1);
+
+    private string NextView => ((View + 1) % ViewCount) switch { 0 => "ranking", 1 => "bars", 2 => "corrections", _ => "families" };
+
+    private (int Families, int View, bool IsLevelSaid) State => (Model.Standing.Families.Count, View, _ranking.Exploration is not null || _ranking.WhyNoExploration is not null);
+
+    private bool IsTogether => Frame.Width >= TogetherWidth && Frame.Height >= TogetherHeight;
+
+    /// <inheritdoc/>
+    public override bool Back()
+    {
+        if (_ranking.Exploration is null)
+        {
+            return false;
+        }
+
+        LookAt(Model.Standing.Campaign.Level.Value);
+        return true;
+    }
 
     /// <inheritdoc/>
     protected override bool OnKeyDown(Key key)
     {
-        int leap = Math.Max(10, Ranking.Count / 20);
-        int? step = key == Key.CursorRight || key == Key.CursorDown ? 1
-            : key == Key.CursorLeft || key == Key.CursorUp ? -1
-            : key == Key.PageDown ? leap
-            : key == Key.PageUp ? -leap
-            : key == Key.Home ? -Ranking.Count
-            : key == Key.End ? Ranking.Count
-            : null;
-        if (step is { } ranks)
+        if (!_keys.TryGetValue(key, out Action? act))
         {
-            Walk(ranks);
-            return true;
+            return false;
         }
 
-        if (key == Key.Z)
+        act();
+        return true;
+    }
+
+    /// <inheritdoc/>
+    protected override void Dispose(bool disposing)
+    {
+        if (disposing)
+        {
+            Model.Changed -= Follow;
+        }
+
+        base.Dispose(disposing);
+    }
+
+    private Dictionary<Key, Action> KeysOf() => new()
+    {
+        [Key.CursorRight] = () => Walk(1),
+        [Key.CursorDown] = () => Walk(1),
+        [Key.CursorLeft] = () => Walk(-1),
+        [Key.CursorUp] = () => Walk(-1),
+        [Key.PageDown] = () => Walk(Math.Max(10, _ranking.Ranking.Count / 20)),
+        [Key.PageUp] = () => Walk(-Math.Max(10, _ranking.Ranking.Count / 20)),
+        [Key.Home] = () => SelectRank(1),
+        [Key.End] = () => SelectRank(_ranking.Ranking.Count),
+        [Key.Enter] = () => Model.TurnTo(PageList.PlaceOf("Experiments")),
+        [Key.M] = Model.MarkSelected,
+        [Key.Z] = () =>
         {
             _isNear = !_isNear;
+            ShowAll();
+        },
+        [new Key('+')] = () => MoveLevel(1),
+        [new Key('=')] = () => MoveLevel(1),
+        [new Key('-')] = () => MoveLevel(-1),
+        [Key.N] = () => TurnView(1),
+        [Key.N.WithShift] = () => TurnView(-1),
+        [Key.F] = () => TurnFamily(1),
+        [Key.F.WithShift] = () => TurnFamily(-1),
+        [Key.C] = () => Point(1),
+        [Key.C.WithShift] = () => Point(-1),
+        [Key.B] = () =>
+        {
+            _ranking.TurnPointed();
             ShowChange();
-            SuperView?.SetNeedsDraw();
-            return true;
-        }
+        },
+    };
 
-        if (key == Key.Enter)
-        {
-            Model.TurnTo(PageList.PlaceOf("Experiments"));
-            return true;
-        }
+    private void Walk(int ranks) => SelectRank(_ranking.Rank + ranks);
 
-        return false;
-    }
-
-    private void Walk(int ranks)
+    private void SelectRank(int rank)
     {
-        if (Ranking.Count > 0)
+        if (_ranking.Ranking is { Count: > 0 } ranking)
         {
-            Model.SelectPosition(Ranking.PositionAt(Math.Clamp(Rank + ranks, 1, Ranking.Count)));
+            Model.SelectPosition(ranking.PositionAt(Math.Clamp(rank, 1, ranking.Count)));
         }
     }
 
-    private TextCanvas Paint(int width, int height)
+    private void MoveLevel(int steps)
     {
-        TextCanvas canvas = new(width, height);
-        canvas.Write(1, 0, CellText.Fit(RankingPlot.BoundaryText(Ranking), width - 1, Glyphs.Cut), Ink.Boundary);
-        canvas.Write(1, 1, CellText.Fit(AssumptionText(), width - 1, Glyphs.Cut), Ink.Quiet);
-        canvas.Paste(RankingPlot.Paint(Ranking, Rank, _isNear, width, height - LinesAbove - LinesBelow, Glyphs), 0, LinesAbove);
-        canvas.Write(1, height - 2, CellText.Fit(RankingPlot.Key(Ranking, Glyphs), width - 1, Glyphs.Cut), Ink.Quiet);
-        canvas.Write(1, height - 1, CellText.Fit(SelectedText(), width - 1, Glyphs.Cut), Ink.Heading);
-        return canvas;
+        _ranking.MoveLevel(steps);
+        ShowLevel();
     }
 
-    private string AssumptionText() =>
-        Model.Correction is null || Model.Heading.ValidUnder is null ? "" : $"{Model.Correction.Name} {Model.Heading.ValidUnder}.";
-
-    private string SelectedText()
+    private void LookAt(double? level)
     {
-        if (Model.Selected is not { } selected)
+        if (level is { } given)
         {
-            return "";
+            _ranking.LookAt(given);
+            ShowLevel();
+        }
+    }
+
+    private void TurnView(int step)
+    {
+        if (!IsTogether)
+        {
+            _view = (View + step + ViewCount) % ViewCount;
+            Arrange();
+            Entrance.SetFocus();
+            ShowAll();
+        }
+    }
+
+    private void TurnFamily(int step)
+    {
+        if (HasFamilies)
+        {
+            _ranking.TurnFamily(step);
+            ShowChange();
+        }
+    }
+
+    private void Point(int step)
+    {
+        if (!IsTogether && View != 2)
+        {
+            _view = 2;
+            Arrange();
+            Entrance.SetFocus();
+        }
+        else
+        {
+            _ranking.Point(step);
         }
 
-        if (Rank == 0 || selected.P is not { } p || selected.AdjustedP is not { } adjusted)
+        ShowAll();
+    }
+
+    private void TurnRow(int row)
+    {
+        if (row >= 0 && row < _ranking.Rows.Count)
         {
-            return $"{selected.Plan.Code}: {selected.Status.Sentence()}";
+            _ranking.PointAt(row);
+            _ranking.TurnPointed();
+            ShowChange();
+        }
+    }
+
+    private void ShowAll()
+    {
+        ShowChange();
+        SuperView?.SetNeedsDraw();
+    }
+
+    // Another campaign may have families where the last one had none.
+    private void Follow()
+    {
+        if (_arranged != State)
+        {
+            Arrange();
+        }
+    }
+
+    // What a level changes is said in lines that the picture gives up.
+    private void ShowLevel()
+    {
+        Follow();
+        ShowAll();
+    }
+
+    private void Arrange()
+    {
+        _arranged = State;
+        int left = IsTogether ? Frame.Width - SideWidth - 1 : Frame.Width;
+        foreach (CanvasView part in new[] { _above, _plot, _onLevel, _ruler, _below })
+        {
+            part.Visible = IsTogether || View == 0;
+            part.Width = left;
         }
 
-        string boundary = Ranking.BoundaryAt(Rank) is { } b ? $", boundary {NumberText.Screen(b, 3)}" : "";
-        string survives = selected.Survives == true ? Glyphs.Survivor + " survives" : Glyphs.Other + " does not survive";
-        return string.Create(CultureInfo.InvariantCulture, $"{selected.Plan.Code} {survives}: rank {Rank}, p {NumberText.P(p)}, adjusted {NumberText.P(adjusted)}{boundary}");
+        _above.Height = RankingNotes.RowsAbove;
+        const int Ruler = RankingNotes.RowsBelow + 1, Level = Ruler + RankingNotes.RowsOnLevel;
+        (_plot.Y, _plot.Height) = (RankingNotes.RowsAbove, Dim.Fill(State.IsLevelSaid ? Level : Ruler));
+        (_onLevel.Y, _onLevel.Height) = (Pos.AnchorEnd(Level), RankingNotes.RowsOnLevel);
+        _onLevel.Visible &= State.IsLevelSaid;
+        (_ruler.Y, _ruler.Height) = (Pos.AnchorEnd(Ruler), 1);
+        (_below.Y, _below.Height) = (Pos.AnchorEnd(RankingNotes.RowsBelow), RankingNotes.RowsBelow);
+        int families = HasFamilies ? Math.Min(MostFamilies, Model.Standing.Families.Count + FamiliesPainter.HeaderRows) : 0;
+        int histogram = Math.Clamp(Frame.Height - families - LeastCorrections, LeastHistogram, Math.Max(LeastHistogram, Frame.Height / 2));
+        int corrections = Math.Max(0, Frame.Height - families - histogram);
+        Place(_histogram, 1, 0, histogram);
+        Place(_corrections, 2, histogram, corrections);
+        Place(_families, 3, histogram + corrections, families);
+        _families.Visible &= HasFamilies;
+    }
+
+    private void Place(CanvasView part, int view, int y, int height)
+    {
+        part.Visible = IsTogether || View == view;
+        part.X = IsTogether ? Frame.Width - SideWidth : 0;
+        part.Y = IsTogether ? y : 0;
+        part.Width = Dim.Fill();
+        part.Height = IsTogether ? height : Dim.Fill();
+    }
+
+    private TextCanvas PaintPlot(int width, int height) =>
+        RankingPlot.Paint(_ranking.Ranking, _ranking.Rank, _isNear, width, height, Glyphs, RankingOverlay.Of(_ranking));
+
+    private TextCanvas PaintCorrections(int width, int height)
+    {
+        _awaiter.Await(() => _ranking.Outcomes?.IsDone != false);
+        return CorrectionsPainter.Paint(_ranking, takesKeys: true, width, height, Glyphs);
     }
 }

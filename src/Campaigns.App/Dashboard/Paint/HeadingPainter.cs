@@ -8,19 +8,23 @@ public static class HeadingPainter
 {
     private const int LinesOfFacts = 2;
     private const int ShortestCode = 8;
+    private const int LeastMeaning = 2;
+    private const string InFull = " (all: F1)";
 
     /// <summary>Rows that the heading needs.</summary>
     /// <param name="heading">What it says.</param>
     /// <param name="width">Cells across.</param>
-    public static int HeightOf(CampaignHeading heading, int width) => LinesOfFacts + MeaningOf(heading, width).Count;
+    /// <param name="screen">Rows of the whole screen: a long meaning takes an eighth of it, and is said in full on the help page.</param>
+    public static int HeightOf(CampaignHeading heading, int width, int screen = int.MaxValue) => LinesOfFacts + Math.Min(MeaningOf(heading, width).Count, Math.Max(LeastMeaning, screen / 8));
 
     /// <summary>Paints the heading.</summary>
     /// <param name="heading">What it says.</param>
     /// <param name="width">Cells across.</param>
     /// <param name="glyphs">The signs.</param>
-    public static TextCanvas Paint(CampaignHeading heading, int width, GlyphSet glyphs)
+    /// <param name="screen">Rows of the whole screen.</param>
+    public static TextCanvas Paint(CampaignHeading heading, int width, GlyphSet glyphs, int screen = int.MaxValue)
     {
-        TextCanvas canvas = new(width, HeightOf(heading, width));
+        TextCanvas canvas = new(width, HeightOf(heading, width, screen));
         string between = " " + glyphs.Between + " ";
         string held = string.Join(between, heading.Held);
         int room = width - CellText.Width(held) - between.Length - 1;
@@ -40,9 +44,11 @@ public static class HeadingPainter
         Ink review = heading.ReviewTrouble is null ? Ink.Text : Ink.Warning;
         canvas.Write(next, 1, CellText.Fit(heading.Review, width - next, glyphs.Cut), review);
         IReadOnlyList<string> meaning = MeaningOf(heading, width);
-        for (int i = 0; i < meaning.Count; i++)
+        int rows = canvas.Height - LinesOfFacts;
+        for (int i = 0; i < Math.Min(rows, meaning.Count); i++)
         {
-            canvas.Write(1, LinesOfFacts + i, meaning[i], Ink.Quiet);
+            bool isCut = i == rows - 1 && meaning.Count > rows;
+            canvas.Write(1, LinesOfFacts + i, isCut ? CellText.Fit(meaning[i] + " " + meaning[i + 1], width - 1 - InFull.Length, glyphs.Cut) + InFull : meaning[i], Ink.Quiet);
         }
 
         return canvas;

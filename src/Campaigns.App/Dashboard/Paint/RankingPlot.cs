@@ -10,6 +10,7 @@ public sealed class RankingPlot
 {
     private const int Left = 9;
     private const int FewestRanks = 20;
+    private const int LetterGap = 8;
     private const int PowersBelowBoundary = 12;
     private const int PowersBelowBoundaryNear = 2;
     private readonly Ranking _ranking;
@@ -19,15 +20,17 @@ public sealed class RankingPlot
     private readonly int _rows;
     private readonly int _shown;
     private readonly int _floor;
+    private readonly RankingOverlay _overlay;
 
-    private RankingPlot(Ranking ranking, bool isNear, int width, int height, GlyphSet glyphs)
+    private RankingPlot(Ranking ranking, bool isNear, int width, int height, GlyphSet glyphs, RankingOverlay overlay)
     {
         _ranking = ranking;
+        _overlay = overlay;
         _glyphs = glyphs;
         _canvas = new TextCanvas(width, height);
         _columns = width - Left - 1;
         _rows = height - 2;
-        _shown = isNear ? Math.Clamp(2 * ranking.SurvivorCount, Math.Min(FewestRanks, ranking.FamilySize), ranking.FamilySize) : ranking.FamilySize;
+        _shown = ShownOf(ranking, isNear);
         _floor = FloorOf(ranking, isNear);
     }
 
@@ -38,8 +41,10 @@ public sealed class RankingPlot
     /// <param name="width">Cells across, at least 30.</param>
     /// <param name="height">Rows, at least 6.</param>
     /// <param name="glyphs">The signs.</param>
-    public static TextCanvas Paint(Ranking ranking, int selectedRank, bool isNear, int width, int height, GlyphSet glyphs)
+    /// <param name="overlay">What else is drawn; null for nothing.</param>
+    public static TextCanvas Paint(Ranking ranking, int selectedRank, bool isNear, int width, int height, GlyphSet glyphs, RankingOverlay? overlay = null)
     {
+        ArgumentNullException.ThrowIfNull(ranking);
         if (ranking.Count == 0 || width < 30 || height < 6)
         {
             TextCanvas words = new(width, height);
@@ -47,11 +52,25 @@ public sealed class RankingPlot
             return words;
         }
 
-        RankingPlot plot = new(ranking, isNear, width, height, glyphs);
+        RankingPlot plot = new(ranking, isNear, width, height, glyphs, overlay ?? RankingOverlay.None);
         plot.Axes(selectedRank);
+        plot.Beside();
         plot.Boundary();
         plot.Points();
         return plot._canvas;
+    }
+
+    /// <summary>The rank that stands nearest to a column; 0 where nothing is ranked.</summary>
+    /// <param name="ranking">The ranked p-values.</param>
+    /// <param name="isNear">As it was painted.</param>
+    /// <param name="width">As it was painted.</param>
+    /// <param name="x">Column from 0.</param>
+    public static int RankAt(Ranking ranking, bool isNear, int width, int x)
+    {
+        ArgumentNullException.ThrowIfNull(ranking);
+        int shown = ShownOf(ranking, isNear), columns = width - Left - 1;
+        int rank = columns < 2 || shown < 2 ? 1 : 1 + (int)Math.Round((double)(x - Left) * (shown - 1) / (columns - 1));
+        return Math.Clamp(rank, Math.Min(1, ranking.Count), ranking.Count);
     }
 
     /// <summary>What the boundary is, in one line.</summary>
@@ -61,6 +80,11 @@ public sealed class RankingPlot
         if (ranking.Count == 0)
         {
             return "";
+        }
+
+        if (ranking is { IsOnline: true })
+        {
+            return "Each p was held against the level that its experiment was given when it started.";
         }
 
         if (ranking is { HasBoundary: false })
@@ -81,18 +105,35 @@ public sealed class RankingPlot
     /// <summary>What the signs mean.</summary>
     /// <param name="ranking">The ranked p-values.</param>
     /// <param name="glyphs">The signs.</param>
-    public static string Key(Ranking ranking, GlyphSet glyphs)
+    /// <param name="overlay">What else is drawn; null for nothing.</param>
+    public static string Key(Ranking ranking, GlyphSet glyphs, RankingOverlay? overlay = null)
     {
+        ArgumentNullException.ThrowIfNull(ranking);
+        ArgumentNullException.ThrowIfNull(glyphs);
         List<string> parts = [glyphs.Survivor + " survives", glyphs.Other + " does not"];
+        bool isExplored = overlay?.Explored is not null || overlay?.Gained.Count > 0 || overlay?.Lost.Count > 0;
+        if (isExplored)
+        {
+            parts.Add($"{glyphs.Gained} gained  {glyphs.Lost} lost");
+        }
+
+        parts.Add(glyphs.Boundary + (ranking.IsOnline ? " level given" : ranking.HasBoundary ? " boundary" : " largest survivor"));
+        if (overlay?.Explored is not null)
+        {
+            parts.Add(glyphs.Explored + " explored");
+        }
+
         if (ranking.FamilySize > ranking.Count)
         {
             parts.Add(glyphs.Open + " no result (p = 1)");
         }
 
-        parts.Add(glyphs.BelowScale + " off the scale");
-        parts.Add(glyphs.Boundary + (ranking.HasBoundary ? " boundary" : " largest survivor"));
+        parts.Add(glyphs.BelowScale + " lower");
         return string.Join("  ", parts);
     }
+
+    private static int ShownOf(Ranking ranking, bool isNear) =>
+        isNear ? Math.Clamp(2 * ranking.SurvivorCount, Math.Min(FewestRanks, ranking.FamilySize), ranking.FamilySize) : ranking.FamilySize;
 
     private static int FloorOf(Ranking ranking, bool isNear)
     {
@@ -143,39 +184,79 @@ public sealed class RankingPlot
         }
     }
 
+    // Boundaries beside the sealed one are dotted with their letters, each begun at another column, so that those that run together can be told apart.
+    private void Beside()
+    {
+        for (int i = 0; i < _overlay.Beside.Count; i++)
+        {
+            (string sign, BoundaryLine line) = _overlay.Beside[i];
+            Trace(rank => line.At(rank), sign, Ink.Axis, 1 + (2 * i) % LetterGap, LetterGap);
+        }
+    }
+
     private void Boundary()
     {
-        if (!_ranking.HasBoundary && _ranking.LargestSurvivor is not { Value: > 0 })
+        if (_overlay.Explored is { } explored)
         {
-            return;
+            Trace(rank => explored.At(rank), _glyphs.Explored, Ink.Mean, 0, 1);
         }
 
-        for (int column = 0; column < _columns; column++)
+        if (_ranking.IsOnline)
+        {
+            // Each point has a level of its own, which no line joins.
+            for (int rank = Math.Min(_ranking.Count, _shown); rank >= 1; rank--)
+            {
+                if (_ranking.At(rank).GivenLevel is > 0 and var given && Math.Log10(given) >= _floor)
+                {
+                    _canvas.Put(ColumnOf(rank), RowOf(Math.Log10(given)), _glyphs.Boundary, Ink.Boundary);
+                }
+            }
+        }
+        else if (_ranking.HasBoundary || _ranking.LargestSurvivor is { Value: > 0 })
+        {
+            Trace(rank => _ranking.BoundaryAt(rank) ?? _ranking.LargestSurvivor!.Value.Value, _glyphs.Boundary, Ink.Boundary, 0, 1);
+        }
+    }
+
+    private void Trace(Func<int, double?> boundaryAt, string sign, Ink ink, int first, int gap)
+    {
+        for (int column = first; column < _columns; column += gap)
         {
             int rank = _columns == 1 ? 1 : 1 + (int)Math.Round((double)column * (_shown - 1) / (_columns - 1));
-            double log = _ranking.BoundaryAt(rank) is { } boundary ? Math.Log10(boundary) : _ranking.LargestSurvivor!.Value.Log / Math.Log(10);
-            if (log >= _floor)
+            if (boundaryAt(rank) is > 0 and var boundary && Math.Log10(boundary) is var log && log >= _floor)
             {
-                _canvas.Put(Left + column, RowOf(log), _glyphs.Boundary, Ink.Boundary);
+                _canvas.Put(Left + column, RowOf(log), sign, ink);
             }
         }
     }
 
-    // The rest of the family first, survivors last: where several share a cell, the survivor is seen.
+    // The rest of the family first, survivors last: where several share a cell, the survivor is seen, and above all what another level would change.
     private void Points()
     {
-        for (int rank = _ranking.Count + 1; rank <= _shown; rank++)
+        for (int rank = Math.Max(1, _ranking.Count + 1); rank <= _shown; rank += Math.Max(1, _shown / (4 * _columns)))
         {
             _canvas.Put(ColumnOf(rank), 0, _glyphs.Open, Ink.Open);
         }
 
         for (int rank = Math.Min(_ranking.Count, _shown); rank >= 1; rank--)
         {
-            double log = _ranking.Log10At(rank);
             bool survives = _ranking.At(rank).Survives == true;
-            string sign = log < _floor ? _glyphs.BelowScale : survives ? _glyphs.Survivor : _glyphs.Other;
-            _canvas.Put(ColumnOf(rank), RowOf(log), sign, survives ? Ink.Survivor : Ink.Text);
+            Point(rank, survives ? _glyphs.Survivor : _glyphs.Other, survives ? Ink.Survivor : Ink.Text);
         }
+
+        foreach ((IReadOnlySet<int> changed, string sign) in new[] { (_overlay.Gained, _glyphs.Gained), (_overlay.Lost, _glyphs.Lost) })
+        {
+            foreach (int rank in changed.Select(_ranking.RankOf).Where(r => r >= 1 && r <= _shown))
+            {
+                Point(rank, sign, Ink.Mean);
+            }
+        }
+    }
+
+    private void Point(int rank, string sign, Ink ink)
+    {
+        double log = _ranking.Log10At(rank);
+        _canvas.Put(ColumnOf(rank), RowOf(log), log < _floor ? _glyphs.BelowScale : sign, ink);
     }
 
     private static int StepOf(double least)

@@ -1,6 +1,5 @@
 using System.Globalization;
 using Campaigns.App.Dashboard.Canvas;
-using Campaigns.App.Output;
 using Campaigns.Domain;
 
 namespace Campaigns.App.Dashboard.Paint;
@@ -70,11 +69,11 @@ internal static class RiskPicture
         canvas.Put(from, y, glyphs.Left, Ink.Axis);
         canvas.Put(to, y, glyphs.Right, Ink.Axis);
         canvas.Put(Place(point.Independent), y, glyphs.Mean, Ink.Mean);
-        canvas.WriteRight(start + scale.Cells + NumberWidth - 1, y, PercentText(point.Independent));
+        canvas.WriteRight(start + scale.Cells + NumberWidth - 1, y, ProbabilityText.Percent(point.Independent));
         if (point.Corrected is { } corrected)
         {
             canvas.Put(Place(corrected.AtLeastOne), y, glyphs.Survivor, Ink.Survivor);
-            canvas.WriteRight(start + scale.Cells + (2 * NumberWidth) - 1, y, PercentText(corrected.AtLeastOne));
+            canvas.WriteRight(start + scale.Cells + (2 * NumberWidth) - 1, y, ProbabilityText.Percent(corrected.AtLeastOne));
         }
     }
 
@@ -89,10 +88,4 @@ internal static class RiskPicture
     private static string Key(GlyphSet glyphs, bool hasCorrected) =>
         $"Risk of at least one false positive in per cent, if nothing is real: {glyphs.Left}{glyphs.Mean}{glyphs.Right} without correction, for independent tests between its bounds whatever the dependence"
         + (hasCorrected ? $"; {glyphs.Survivor} with the correction." : ".");
-
-    /// <summary>A per cent without its sign; what is neither 0 nor 1 never looks so.</summary>
-    private static string PercentText(double risk) =>
-        risk is > 0 and < 1e-4 ? NumberText.Screen(100 * risk, 2)
-        : risk is > 0.9999 and < 1 ? ">99.99"
-        : (100 * risk).ToString("0.00", CultureInfo.InvariantCulture);
 }

@@ -72,7 +72,8 @@ public sealed class CanvasView : View
     /// <inheritdoc/>
     protected override bool OnMouseEvent(Mouse mouse)
     {
-        if (mouse.Flags.HasFlag(MouseFlags.LeftButtonClicked) && mouse.Position is { } at)
+        // The second of two quick clicks comes as a double one.
+        if ((mouse.Flags.HasFlag(MouseFlags.LeftButtonClicked) || mouse.Flags.HasFlag(MouseFlags.LeftButtonDoubleClicked)) && mouse.Position is { } at)
         {
             Clicked?.Invoke(at.X, at.Y);
             return true;

@@ -27,10 +27,11 @@ public sealed class DashboardWindow : Runnable
     public DashboardWindow(DashboardModel model, GlyphSet glyphs, Theme theme)
     {
         _model = model;
+        _shown = _before = model.Page;
         PageContext context = new(model, glyphs, theme);
         _pages = [.. PageList.All.Select(page => page.Make(context))];
         _names = new PageStrip([.. PageList.All.Select(p => p.Name)]);
-        _heading = new CanvasView((width, _) => HeadingPainter.Paint(model.Heading, width, glyphs), theme) { Width = Dim.Fill(), Height = Dim.Func(_ => HeadingPainter.HeightOf(model.Heading, Frame.Width)) };
+        _heading = new CanvasView((width, _) => HeadingPainter.Paint(model.Heading, width, glyphs, Frame.Height), theme) { Width = Dim.Fill(), Height = Dim.Func(_ => HeadingPainter.HeightOf(model.Heading, Frame.Width, Frame.Height)) };
         _strip = new CanvasView((width, _) => _names.Paint(model.Page, width), theme) { Y = Pos.Bottom(_heading), Width = Dim.Fill(), Height = 1 };
         _keys = new CanvasView((width, _) => KeysPainter.Paint(_pages[model.Page].Keys, width), theme) { Y = Pos.AnchorEnd(1), Width = Dim.Fill(), Height = 1 };
         _strip.Clicked += (x, _) => TurnTo(_names.PageAt(x) ?? model.Page);

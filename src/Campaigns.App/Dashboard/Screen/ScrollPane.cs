@@ -19,6 +19,15 @@ public sealed class ScrollPane(Func<int, TextCanvas> paint)
     /// <param name="lines">Down, or up where negative.</param>
     public void Move(int lines) => _top = Math.Clamp(_top + lines, 0, Math.Max(0, _lines - _height));
 
+    /// <summary>Moves a page down.</summary>
+    /// <returns>Whether there was anything further down.</returns>
+    public bool PageDown()
+    {
+        int before = _top;
+        Move(_height);
+        return _top != before;
+    }
+
     /// <summary>Paints what is seen.</summary>
     /// <param name="width">Cells across.</param>
     /// <param name="height">Rows.</param>

@@ -10,6 +10,9 @@ internal sealed class HtmlTables(TextWriter writer)
     /// <summary>Rows that fit a sheet of paper together, and are then not parted.</summary>
     private const int SmallTable = 15;
 
+    /// <summary>From so many letters on, a text gets room to run in, rather than standing word below word.</summary>
+    private const int WideFrom = 22;
+
     private int _count;
 
     /// <summary>Writes one table, with its sentences above and below.</summary>
@@ -65,7 +68,7 @@ internal sealed class HtmlTables(TextWriter writer)
         {
             string plain = TextTable.Text(row[c]);
             string text = HtmlText.Breakable(plain);
-            string kind = table.Columns[c].IsNumeric ? " class=\"n\"" : HtmlText.HasLongWord(plain) ? " class=\"long\"" : "";
+            string kind = table.Columns[c].IsNumeric ? " class=\"n\"" : HtmlText.HasLongWord(plain) ? " class=\"long\"" : plain.Length >= WideFrom ? " class=\"wide\"" : "";
             if (c > 0)
             {
                 writer.Write($"<td{kind}{ValueOf(row[c])}>{text}</td>");

@@ -65,7 +65,8 @@ internal sealed class PlanSection : ReportSection
         yield return sentences.Length > 0 ? new BulletList(sentences) : new Paragraph("Nothing deviates from the plan.");
         if (data.Plan.Amendments.Count > 0)
         {
-            yield return TableBlock.Of("Amendments of the sealed plan", PlanHistory.Amendments(data.Plan.Amendments) with { Above = [] });
+            RowTable amendments = PlanHistory.Amendments(data.Plan.Amendments);
+            yield return TableBlock.Of("Amendments of the sealed plan", amendments with { Above = [.. amendments.Above.Skip(1)] });
         }
 
         if (data.Plan.Withdrawals.Count > 0)

@@ -23,7 +23,8 @@ internal sealed class RecordSection : ReportSection
             new("Entries about this campaign", Cell.Whole(data.EntryCount)),
             new("Program", Cell.Text($"Campaigns {ProgramVersion.Current}")),
         ]);
-        yield return new Paragraph($"{LedgerText.HeadLine(data.Head)} The whole command: campaigns ledger verify --head {data.Head}");
+        yield return new Paragraph(LedgerText.HeadLine(data.Head));
+        yield return new Paragraph($"The whole command: campaigns ledger verify --head {data.Head}");
         yield return new Paragraph(LedgerText.NotSeenWithoutHead, Tone.Note);
         if (data.EntryCount > data.Entries.Count)
         {

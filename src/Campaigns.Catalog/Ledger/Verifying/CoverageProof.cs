@@ -53,13 +53,13 @@ internal sealed class CoverageProof(Catalog catalog, Findings findings, Evidence
         using SqliteStatement keys = catalog.Prepare(sql);
         List<(long First, long Last)> ranges = [];
         long? owner = null;
-        long covered = long.MinValue, missing = 0;
+        long covered = long.MinValue, missing = 0, firstMissing = 0;
         int next = 0;
         while (keys.Read())
         {
             if (owner != keys.Integer(0))
             {
-                Tell(kind, owner, missing);
+                Tell(kind, owner, missing, firstMissing);
                 owner = keys.Integer(0);
                 ranges = evidence.RangesOf(kind, owner.Value);
                 ranges.Sort();
@@ -71,18 +71,23 @@ internal sealed class CoverageProof(Catalog catalog, Findings findings, Evidence
                 covered = Math.Max(covered, ranges[next].Last);
             }
 
-            missing += covered < keys.Integer(1) ? 1 : 0;
+            if (covered < keys.Integer(1))
+            {
+                firstMissing = missing == 0 ? keys.Integer(1) : firstMissing;
+                missing++;
+            }
         }
 
-        Tell(kind, owner, missing);
+        Tell(kind, owner, missing, firstMissing);
     }
 
-    private void Tell(EvidenceKind kind, long? owner, long missing)
+    private void Tell(EvidenceKind kind, long? owner, long missing, long firstMissing)
     {
         // Where no entry speaks for the owner at all, that was told already.
         if (owner is { } key && missing > 0 && evidence.SpeaksFor(kind, key))
         {
-            findings.Add(null, null, FormattableString.Invariant($"No entry of the ledger speaks for {missing} row(s) of {EvidenceWords.Of(catalog, kind, key)}."));
+            string others = missing > 1 ? FormattableString.Invariant($", nor for {missing - 1} more beside it") : "";
+            findings.Add(null, null, $"No entry of the ledger speaks for {EvidenceWords.Of(catalog, kind, key, firstMissing)}{others}.");
         }
     }
 

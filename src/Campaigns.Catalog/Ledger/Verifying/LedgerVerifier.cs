@@ -12,19 +12,31 @@ public sealed class LedgerVerifier(Catalog catalog)
 {
     /// <summary>Proves the record. O(bytes of the catalog).</summary>
     /// <param name="known">A head that was printed earlier and must be part of the chain; null for none.</param>
+    /// <param name="progress">Told before each part of the proof which it is; null where nobody watches.</param>
     /// <exception cref="CatalogException">The catalog is locked, or cannot be read at all.</exception>
-    public LedgerProof Verify(LedgerHead? known = null) => catalog.Snapshot(() =>
+    /// <exception cref="OperationCanceledException">Somebody asked to stop; nothing is then said about the record.</exception>
+    public LedgerProof Verify(LedgerHead? known = null, Action<WorkProgress>? progress = null) => catalog.Snapshot(() =>
     {
         BeginReading();
         var findings = new Findings();
         using var chain = new ChainProof(catalog, findings);
         var evidence = new EvidenceProof(catalog, findings);
-        findings.Look("The file", () => new FileProof(catalog, findings).Run());
-        findings.Look("The ledger", () => chain.Run(known));
-        findings.Look("The evidence of the ledger", evidence.Run);
-        findings.Look("The tables", () => new CoverageProof(catalog, findings, evidence).Run());
-        findings.Look("The kept files", () => new OriginalsProof(catalog, findings, evidence).Run());
-        findings.Look("The sealed plans", () => new PlanProof(catalog, findings).Run());
+        (string Name, Action Look)[] parts =
+        [
+            ("The file", () => new FileProof(catalog, findings).Run()),
+            ("The ledger", () => chain.Run(known)),
+            ("The evidence of the ledger", evidence.Run),
+            ("The tables", () => new CoverageProof(catalog, findings, evidence).Run()),
+            ("The kept files", () => new OriginalsProof(catalog, findings, evidence).Run()),
+            ("The sealed plans", () => new PlanProof(catalog, findings).Run()),
+        ];
+        for (int i = 0; i < parts.Length; i++)
+        {
+            (string name, Action look) = parts[i];
+            progress?.Invoke(new WorkProgress(string.Concat("proving t", name.AsSpan(1)), i, parts.Length, "parts"));
+            findings.Look(name, look);
+        }
+
         return new LedgerProof
         {
             Head = chain.Head,

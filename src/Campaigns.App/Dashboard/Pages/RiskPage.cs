@@ -1,0 +1,232 @@
+using Campaigns.App.Dashboard.Canvas;
+using Campaigns.App.Dashboard.Model;
+using Campaigns.App.Dashboard.Paint;
+using Campaigns.App.Dashboard.Screen;
+using Terminal.Gui.Input;
+using Terminal.Gui.ViewBase;
+
+namespace Campaigns.App.Dashboard.Pages;
+
+/// <summary>What the campaign has risked test by test, the standing decisions of an online campaign, and at most how many of the marked experiments are false.</summary>
+public sealed class RiskPage : DashboardPage
+{
+    private const int TogetherWidth = 110;
+    private const int TogetherHeight = 30;
+    private const int SideWidth = 60;
+    private const int LeastBound = 17;
+    private readonly RiskModel _risk;
+    private readonly CanvasView _curve;
+    private readonly CanvasView _bound;
+    private readonly CanvasView _words;
+    private readonly CanvasView _decisions;
+    private readonly ScrollPane _scroll;
+    private readonly Awaiter _awaiter;
+    private readonly Dictionary<Key, Action> _keys;
+    private int _view;
+    private bool _isNear = true;
+    private bool _wasOnline;
+
+    /// <summary>Makes the page.</summary>
+    /// <param name="context">What it shows, and with what.</param>
+    public RiskPage(PageContext context)
+        : base(context)
+    {
+        _risk = new RiskModel(Model);
+        _awaiter = new Awaiter(() => App, ShowChange);
+        _scroll = new ScrollPane(PaintWords);
+        _curve = Part(PaintCurve, takesKeys: true);
+        _bound = Part((width, height) => BoundPainter.Paint(Model.Marks, Model.Ranking, _isNear, width, height, Glyphs), takesKeys: true);
+        _words = Part(_scroll.Paint, takesKeys: true);
+        _decisions = Part((width, height) => DecisionsPainter.Paint(_risk, width, height, Glyphs), takesKeys: true);
+        Add(_curve, _bound, _words, _decisions);
+        _keys = KeysOf();
+        _curve.Wheeled += _risk.Walk;
+        _curve.Clicked += (x, _) => _risk.GoTo(RiskCurvePlot.TestAt(_risk.Points?.Count ?? 0, _curve.Frame.Width, x));
+        _words.Wheeled += ScrollWords;
+        _decisions.Wheeled += rows => _risk.GoToDecision(_risk.Decision + rows);
+        _decisions.Clicked += (_, y) => _risk.GoToDecision(DecisionsPainter.PlaceAt(_risk, _decisions.Frame.Height, y) ?? _risk.Decision);
+        Model.Changed += Follow;
+        FrameChanged += (_, _) => Arrange();
+        Arrange();
+    }
+
+    /// <inheritdoc/>
+    public override IReadOnlyList<(string Key, string Does)> Keys =>
+    [
+        IsWords ? ("Up/Down", "scroll") : ("Left/Right", IsDecisions ? "decision" : "test"),
+        IsTogether ? ("Up/Down", "words") : ("n", NextView),
+        ("m", "mark"), ("Shift+m", "survivors"), ("z", _isNear ? "all" : "near"), ("Enter", "experiment"), ("F1", "help"), ("q", "quit"), TurnKeys,
+    ];
+
+    /// <inheritdoc/>
+    public override IReadOnlyList<(string Key, string Does)> Help =>
+    [
+        ("Left Right", "the test before and after in the order of testing (or click in the picture, or turn the wheel)"),
+        ("PgUp PgDn Home End", "a twentieth of the tests, first, last"),
+        ("m", "mark the experiment pointed at, or take its mark off; the bound changes at once"),
+        ("Shift+m", "mark every survivor, or take their marks off"),
+        ("Enter", "the experiment pointed at, in full"),
+        ("n, Shift+n", "on small screens the next picture: risk, marked, words, decisions"),
+        ("z", "bounds of the smallest p-values up to twice the survivors, or of all"),
+        ("Up Down", "scroll the words; in the decisions, the one before and after"),
+        ($"{Glyphs.Mean} {Glyphs.Survivor}", "the risk of at least one false positive without and with the correction, if nothing is real"),
+        ("marked", MarksPainter.Meaning),
+    ];
+
+    /// <inheritdoc/>
+    public override View Entrance => IsTogether ? _curve : new View[] { _curve, _bound, _words, _decisions }[View];
+
+    private int ViewCount => _risk.IsOnline ? 4 : 3;
+
+    private int View => Math.Min(_view, ViewCount - 1);
+
+    private bool IsTogether => Frame.Width >= TogetherWidth && Frame.Height >= TogetherHeight;
+
+    private bool IsWords => !IsTogether && View == 2;
+
+    private bool IsDecisions => !IsTogether && View == 3;
+
+    private string NextView => ((View + 1) % ViewCount) switch { 0 => "risk", 1 => "marked", 2 => "words", _ => "decisions" };
+
+    /// <inheritdoc/>
+    protected override bool OnKeyDown(Key key)
+    {
+        bool isScroll = IsWords || (IsTogether && (key == Key.CursorUp || key == Key.CursorDown));
+        if (isScroll && _scroll.Obey(key))
+        {
+            ShowChange();
+            return true;
+        }
+
+        if (!_keys.TryGetValue(key, out Action? act))
+        {
+            return false;
+        }
+
+        act();
+        return true;
+    }
+
+    /// <inheritdoc/>
+    protected override void Dispose(bool disposing)
+    {
+        if (disposing)
+        {
+            Model.Changed -= Follow;
+        }
+
+        base.Dispose(disposing);
+    }
+
+    private Dictionary<Key, Action> KeysOf() => new()
+    {
+        [Key.CursorRight] = () => Walk(1),
+        [Key.CursorLeft] = () => Walk(-1),
+        [Key.CursorDown] = () => Walk(1),
+        [Key.CursorUp] = () => Walk(-1),
+        [Key.PageDown] = () => Walk(Leap),
+        [Key.PageUp] = () => Walk(-Leap),
+        [Key.Home] = () => Walk(-Model.Standing.Experiments.Count),
+        [Key.End] = () => Walk(Model.Standing.Experiments.Count),
+        [Key.M] = Model.MarkSelected,
+        [Key.M.WithShift] = Model.MarkSurvivors,
+        [Key.Enter] = () => Model.TurnTo(PageList.PlaceOf("Experiments")),
+        [Key.N] = () => TurnView(1),
+        [Key.N.WithShift] = () => TurnView(-1),
+        [Key.Z] = () =>
+        {
+            _isNear = !_isNear;
+            ShowAll();
+        },
+    };
+
+    private int Leap => Math.Max(10, (_risk.Points?.Count ?? 0) / 20);
+
+    private void Walk(int steps)
+    {
+        if (IsDecisions)
+        {
+            _risk.GoToDecision(_risk.Decision + steps);
+        }
+        else
+        {
+            _risk.Walk(steps);
+        }
+    }
+
+    private void TurnView(int step)
+    {
+        if (!IsTogether)
+        {
+            _view = (View + step + ViewCount) % ViewCount;
+            Arrange();
+            Entrance.SetFocus();
+            ShowAll();
+        }
+    }
+
+    private void ScrollWords(int lines)
+    {
+        _scroll.Move(lines);
+        _words.SetNeedsDraw();
+    }
+
+    private void ShowAll()
+    {
+        ShowChange();
+        SuperView?.SetNeedsDraw();
+    }
+
+    // The next campaign may be decided otherwise.
+    private void Follow()
+    {
+        if (_wasOnline != _risk.IsOnline)
+        {
+            Arrange();
+        }
+    }
+
+    private void Arrange()
+    {
+        _wasOnline = _risk.IsOnline;
+        int left = Frame.Width - SideWidth - 1, half = Frame.Height / 2;
+        int bound = _risk.IsOnline ? Math.Max(LeastBound, half) : Frame.Height;
+        Place(_curve, 0, 0, 0, left, half + 2);
+        Place(_words, 2, 0, half + 3, left, Frame.Height - half - 3);
+        Place(_bound, 1, left + 1, 0, SideWidth, bound);
+        Place(_decisions, 3, left + 1, bound, SideWidth, Frame.Height - bound);
+        _decisions.Visible &= _risk.IsOnline;
+    }
+
+    private void Place(CanvasView part, int view, int x, int y, int width, int height)
+    {
+        part.Visible = IsTogether || View == view;
+        (part.X, part.Y) = IsTogether ? (x, y) : (0, 0);
+        part.Width = IsTogether ? Math.Max(0, width) : Dim.Fill();
+        part.Height = IsTogether ? Math.Max(0, height) : Dim.Fill();
+    }
+
+    private TextCanvas PaintCurve(int width, int height)
+    {
+        _awaiter.Await(() => _risk.IsDone);
+        return RiskCurvePlot.Paint(_risk.Points, _risk.Test, width, height, Glyphs);
+    }
+
+    private TextCanvas PaintWords(int width)
+    {
+        if (_risk.Risk is not { } reckoning)
+        {
+            return OneLine($"This program knows no correction named {Model.Standing.Campaign.Correction}: what it holds cannot be said here.", width, Ink.Warning);
+        }
+
+        _awaiter.Await(() => _risk.IsDone);
+        return reckoning.Result is { } risk ? RiskWordsPainter.Paint(Model.Standing, risk, width) : OneLine("The words are reckoned in a moment.", width, Ink.Open);
+    }
+
+    private TextCanvas OneLine(string text, int width, Ink ink)
+    {
+        TextCanvas canvas = new(width, 1);
+        canvas.Write(1, 0, CellText.Fit(text, width - 1, Glyphs.Cut), ink);
+        return canvas;
+    }
+}
