@@ -49,7 +49,7 @@ public sealed class ReportNumbersTests(ShippedReports shipped) : IClassFixture<S
     {
         CsvText survivors = shipped.Csv("survivors", code), comparisons = shipped.Csv("comparisons", code);
         ReadTable page = shipped.Page(code).Table("summary", "What survives");
-        Assert.Equal(Math.Min(10, survivors.Rows.Count), page.Rows.Count);
+        Assert.Equal(Math.Min(8, survivors.Rows.Count), page.Rows.Count);
         for (int i = 0; i < page.Rows.Count; i++)
         {
             string experiment = survivors.Column("experiment")[i];

@@ -12,21 +12,25 @@ namespace Campaigns.App.Report.Sections;
 /// <summary>The one page: what survives and by how much, what was risked, what to be careful about. It fits a sheet of paper, whatever the campaign.</summary>
 internal sealed class PageSection : ReportSection
 {
-    private const int MostSurvivors = 10;
+    private const int MostSurvivors = 8;
     private const int LettersOfTitle = 55;
     private const int LettersOfLead = 80;
     private const double LeadHeight = 1.25;
 
     /// <summary>Lines of headings, notes, caution and record, of the table's frame and of a figure.</summary>
-    private const int FixedLines = 16;
+    private const int FixedLines = 15;
     private const int TableFrame = 6;
-    private const int FigureLines = 17;
+    private const int FigureLines = 14;
+
+    /// <summary>Lines that survivors leave to cautions.</summary>
+    private const int CautionLines = 9;
     private const int LongestName = 60;
     private const int LongestSentence = 480;
     private const int LongestCaution = 330;
     private const int LettersOfName = 40;
     private const int LettersOfGroups = 30;
-    private const double RowHeight = 1.05;
+    private const double RowHeight = 0.86;
+    private const double RowFrame = 0.3;
 
     public override string Anchor => "summary";
 
@@ -41,15 +45,13 @@ internal sealed class PageSection : ReportSection
         string lead = Shorten(Lead(data), LongestSentence);
         room.Take(SheetRoom.Of(lead, LettersOfLead) * LeadHeight);
         yield return new Paragraph(lead, Tone.Lead);
-        if (data.Survivors.Listed.Count > 0)
-        {
-            TableBlock survivors = Survivors(data);
-            room.Take(TableFrame + survivors.Rows.Sum(LinesOf));
-            yield return survivors;
-        }
-
         string[] risked = [.. Risked(data).Select(s => Shorten(s, LongestSentence))];
         room.Take(risked.Sum(s => SheetRoom.Of(s)));
+        if (data.Survivors.Listed.Count > 0)
+        {
+            yield return Survivors(data, room);
+        }
+
         string[] careful = [.. Careful(data, room)];
         yield return new Heading(1, "risked", "What was risked");
         yield return new BulletList(risked);
@@ -70,18 +72,34 @@ internal sealed class PageSection : ReportSection
             ? FormattableString.Invariant($"None of {data.Overview.TestedCount} tested experiments survives ({CampaignText.Goal(data.Overview.Campaign)}): no difference shown, which is not the same as no difference.")
             : $"{SurvivorTables.Counted(data.Overview)} survive ({CampaignText.Goal(data.Overview.Campaign)}).";
 
-    private static TableBlock Survivors(ReportData data)
+    private static TableBlock Survivors(ReportData data, SheetRoom room)
     {
-        ExperimentResult[] shown = [.. data.Survivors.Listed.Take(MostSurvivors)];
+        room.Take(TableFrame);
+        List<ExperimentResult> shown = [];
+        List<Cell[]> rows = [];
+        foreach (ExperimentResult survivor in data.Survivors.Listed.Take(MostSurvivors))
+        {
+            Cell[] row = Row(data.Survivors, survivor);
+            double lines = LinesOf(row);
+            if (rows.Count > 0 && room.Left < lines + CautionLines)
+            {
+                break;
+            }
+
+            room.Take(lines);
+            shown.Add(survivor);
+            rows.Add(row);
+        }
+
         return new TableBlock(
-            shown.Length < data.Overview.SurvivorCount
-                ? FormattableString.Invariant($"What survives, and by how much: the {shown.Length} of {data.Overview.SurvivorCount} with the smallest p; all of them stand under Survivors")
+            shown.Count < data.Overview.SurvivorCount
+                ? FormattableString.Invariant($"What survives, and by how much: the {shown.Count} of {data.Overview.SurvivorCount} with the smallest p; all of them stand under Survivors")
                 : "What survives, and by how much",
             [
                 new("experiment", "experiment"), new("groups", "largest difference claimed"), new("difference", "difference", true), new("selected_lower", "from", true), new("selected_upper", "to", true),
                 new("unit", "unit"), new("adjusted_p", "adjusted p", true),
             ],
-            [.. shown.Select(e => Row(data.Survivors, e))])
+            rows)
         {
             Links = shown.Select(e => (Name: NameOf(e), Anchor: Anchors.InFull(data).GetValueOrDefault(e.Plan.Code))).Where(l => l.Anchor is not null).DistinctBy(l => l.Name).ToDictionary(l => l.Name, l => l.Anchor!, StringComparer.Ordinal),
             MaySort = false,
@@ -155,7 +173,7 @@ internal sealed class PageSection : ReportSection
     }
 
     /// <summary>Lines of a row, whose first two columns may be wrapped.</summary>
-    private static double LinesOf(Cell[] row) => Math.Max(SheetRoom.Of(row[0].AsText, LettersOfName), SheetRoom.Of(row[1].AsText, LettersOfGroups)) * RowHeight;
+    private static double LinesOf(Cell[] row) => Math.Max(SheetRoom.Of(row[0].AsText, LettersOfName), SheetRoom.Of(row[1].AsText, LettersOfGroups)) * RowHeight + RowFrame;
 
     private static string Capital(string clause) => char.ToUpperInvariant(clause[0]) + clause[1..];
 
