@@ -3,6 +3,7 @@ using Campaigns.App.Dashboard.Canvas;
 using Campaigns.App.Dashboard.Model;
 using Campaigns.App.Dashboard.Pages;
 using Campaigns.App.Dashboard.Screen;
+using Campaigns.App.Output;
 using Campaigns.Statistics.Corrections;
 using Campaigns.Statistics.Online;
 using Terminal.Gui.App;
@@ -12,6 +13,7 @@ namespace Campaigns.App.Dashboard;
 /// <summary>Runs the dashboard in the terminal that the program was started from.</summary>
 public static class DashboardProgram
 {
+    private const string EraseLine = "\r\e[K";
     private const int Done = 0;
     private const int WrongUsage = 2;
 
@@ -32,11 +34,23 @@ public static class DashboardProgram
             return WrongUsage;
         }
 
+        // A large campaign takes a good part of a second to read: that is said at once, and the screen's library is loaded meanwhile.
+        Console.Out.Write($"Reading {SafeText.Escape(campaign)} ...");
+        Task<DashboardModel> reading = Task.Run(() => new DashboardModel(source, campaign, key => (ErrorProcedure?)CorrectionRegistry.Find(key) ?? OnlineRegistry.Find(key)));
         Theme theme = Theme.For(Environment.GetEnvironmentVariable);
         theme.Apply();
-        DashboardModel model = new(source, campaign, key => (ErrorProcedure?)CorrectionRegistry.Find(key) ?? OnlineRegistry.Find(key));
-        model.TurnTo(PageList.PlaceOf(page));
         IApplication app = Application.Create();
+        DashboardModel model;
+        try
+        {
+            model = reading.GetAwaiter().GetResult();
+        }
+        finally
+        {
+            Console.Out.Write(EraseLine);
+        }
+
+        model.TurnTo(PageList.PlaceOf(page));
         using TerminalGuard guard = new(app);
         app.Init();
         using DashboardWindow window = new(model, ascii ? GlyphSet.Ascii : GlyphSet.Full, theme, desk);

@@ -86,15 +86,19 @@ public sealed class StandingReader(Catalog catalog)
     /// <summary>Counts of the experiments that have data and no standing result.</summary>
     private Dictionary<long, DataAtHand> UntestedData(long campaignId)
     {
+        string stale = NothingCameAfterTests(campaignId) ? "WHERE r.experiment_id = e.id" :
+            """
+            JOIN test_runs t ON t.id = r.test_run_id
+                WHERE r.experiment_id = e.id AND coalesce(t.last_load_id, 0) >= (SELECT max(load_id) FROM measurements WHERE experiment_id = e.id)
+                    AND coalesce(t.last_exclusion_id, 0) >= (SELECT coalesce(max(id), 0) FROM exclusions WHERE experiment_id = e.id)
+                    AND coalesce(t.last_withdrawal_id, 0) >= (SELECT coalesce(max(id), 0) FROM withdrawals WHERE experiment_id = e.id)
+            """;
         using SqliteStatement select = catalog.Prepare(
             $"""
             SELECT e.id, e.group_set_id, e.groups_are_planned, CASE WHEN {TestSelection.TestedBefore} THEN NULL ELSE e.replicates END, m.packed
             FROM experiments e JOIN measurements m ON m.experiment_id = e.id
             WHERE e.campaign_id = ?1 AND NOT EXISTS (
-                SELECT 1 FROM test_results r JOIN test_runs t ON t.id = r.test_run_id
-                WHERE r.experiment_id = e.id AND coalesce(t.last_load_id, 0) >= (SELECT max(load_id) FROM measurements WHERE experiment_id = e.id)
-                    AND coalesce(t.last_exclusion_id, 0) >= (SELECT coalesce(max(id), 0) FROM exclusions WHERE experiment_id = e.id)
-                    AND coalesce(t.last_withdrawal_id, 0) >= (SELECT coalesce(max(id), 0) FROM withdrawals WHERE experiment_id = e.id))
+                SELECT 1 FROM test_results r {stale})
             ORDER BY e.id, m.load_id
             """);
         using var sets = new GroupSets(catalog, campaignId);
@@ -123,6 +127,21 @@ public sealed class StandingReader(Catalog catalog)
         }
 
         return data;
+    }
+
+    /// <summary>Whether no value of a campaign came, left or was withdrawn after any of its test runs: then every result stands, and none need be looked at.</summary>
+    private bool NothingCameAfterTests(long campaignId)
+    {
+        using SqliteStatement select = catalog.Prepare(
+            """
+            SELECT NOT EXISTS (SELECT 1 FROM exclusions x JOIN experiments e ON e.id = x.experiment_id WHERE e.campaign_id = ?1)
+                AND NOT EXISTS (SELECT 1 FROM withdrawals w JOIN experiments e ON e.id = w.experiment_id WHERE e.campaign_id = ?1)
+                AND (SELECT min(coalesce(last_load_id, 0)) FROM test_runs WHERE campaign_id = ?1) >= (SELECT max(id) FROM loads WHERE campaign_id = ?1)
+            """);
+        select.Bind(1, campaignId).Read();
+        bool nothing = select.Integer(0) == 1;
+        select.Reset();
+        return nothing;
     }
 
     private static int CountGroups(ReadOnlySpan<ushort> groups, int groupCount)

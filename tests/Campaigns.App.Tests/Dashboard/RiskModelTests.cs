@@ -12,6 +12,7 @@ public sealed class RiskModelTests
         SampleSource source = SampleCampaigns.Source(standing);
         DashboardModel model = new(source, SampleCampaign.Code, SampleCampaign.Find);
         RiskModel risk = new(model);
+        risk.Begin();
         risk.GoTo(1);
         for (int test = 1; test <= source.Risk.Count; test++)
         {
@@ -32,6 +33,7 @@ public sealed class RiskModelTests
         CampaignStanding standing = SampleCampaigns.By("bh");
         DashboardModel model = new(SampleCampaigns.Source(standing), SampleCampaign.Code, SampleCampaign.Find);
         RiskModel risk = new(model);
+        risk.Begin();
         model.SelectPosition(standing.Experiments.ToList().FindIndex(e => e.P is null));
         Assert.Equal(0, risk.Test);
         risk.Walk(1);
@@ -44,6 +46,7 @@ public sealed class RiskModelTests
         CampaignStanding standing = SampleCampaigns.InStream();
         DashboardModel model = new(SampleCampaigns.Source(standing), SampleCampaign.Code, SampleCampaign.Find);
         RiskModel risk = new(model);
+        risk.Begin();
         Assert.True(risk.IsOnline);
         Assert.Equal(Enumerable.Range(1, standing.Experiments.Count), risk.Decisions.Select(e => e.Entry!.Position));
         risk.GoToDecision(5);

@@ -5,7 +5,7 @@ namespace Campaigns.App.Dashboard.Model;
 
 /// <summary>What only the page of the risk shows: the risk test by test, the standing decisions of an online campaign, and the test pointed at.</summary>
 /// <param name="model">The dashboard.</param>
-/// <remarks>Everything is read when it is first asked for after a load; the test pointed at is the selected experiment's.</remarks>
+/// <remarks>Everything is read after a load when it is first asked for, the risk when it is begun; the test pointed at is the selected experiment's.</remarks>
 public sealed class RiskModel(DashboardModel model)
 {
     private int _edition = -1;
@@ -24,11 +24,24 @@ public sealed class RiskModel(DashboardModel model)
     /// <summary>Whether experiments are decided as they arrive.</summary>
     public bool IsOnline => model.Correction is OnlineProcedure;
 
-    /// <summary>Whether everything is reckoned.</summary>
-    public bool IsDone => Reckoned.IsDone && Risk?.IsDone != false;
+    /// <summary>Whether the reckoning was begun for the campaign as it was last loaded.</summary>
+    public bool IsBegun
+    {
+        get
+        {
+            Follow();
+            return _points is not null;
+        }
+    }
 
-    /// <summary>The risk test by test, in the order of testing; null while it is reckoned.</summary>
-    public IReadOnlyList<RiskPoint>? Points => Reckoned.Result;
+    /// <summary>Whether the campaign is so large that a page should be shown before the reckoning is begun: reading the order of testing takes a moment.</summary>
+    public bool IsLarge => Standing.Experiments.Count > Reckoning.FewExperiments;
+
+    /// <summary>Whether everything is reckoned.</summary>
+    public bool IsDone => IsBegun && _points!.IsDone && Risk?.IsDone != false;
+
+    /// <summary>The risk test by test, in the order of testing; null before it is reckoned.</summary>
+    public IReadOnlyList<RiskPoint>? Points => IsBegun ? _points!.Result : null;
 
     /// <summary>The test of the selected experiment, from 1 in the order of testing; 0 where it has none.</summary>
     public int Test
@@ -93,13 +106,11 @@ public sealed class RiskModel(DashboardModel model)
         }
     }
 
-    private Reckoning<IReadOnlyList<RiskPoint>> Reckoned
+    /// <summary>Reads the order of testing and begins to reckon.</summary>
+    public void Begin()
     {
-        get
-        {
-            Follow();
-            return _points ??= new(model.Source.ReadRiskCurve(Standing), Standing.Experiments.Count);
-        }
+        Follow();
+        _points ??= new(model.Source.ReadRiskCurve(Standing), Standing.Experiments.Count);
     }
 
     /// <summary>Selects the experiment of another test, not beyond the first and the last.</summary>

@@ -14,6 +14,7 @@ public sealed class RiskPage : DashboardPage
     private const int TogetherHeight = 30;
     private const int SideWidth = 60;
     private const int LeastBound = 17;
+    private static readonly TimeSpan Pause = TimeSpan.FromMilliseconds(20);
     private readonly RiskModel _risk;
     private readonly CanvasView _curve;
     private readonly CanvasView _bound;
@@ -25,6 +26,7 @@ public sealed class RiskPage : DashboardPage
     private int _view;
     private bool _isNear = true;
     private bool _wasOnline;
+    private bool _isBeginning;
 
     /// <summary>Makes the page.</summary>
     /// <param name="context">What it shows, and with what.</param>
@@ -35,7 +37,7 @@ public sealed class RiskPage : DashboardPage
         _awaiter = new Awaiter(() => App, ShowChange);
         _scroll = new ScrollPane(PaintWords);
         _curve = Part(PaintCurve, takesKeys: true);
-        _bound = Part((width, height) => BoundPainter.Paint(Model.Marks, Model.Ranking, _isNear, width, height, Glyphs), takesKeys: true);
+        _bound = Part(PaintBound, takesKeys: true);
         _words = Part(_scroll.Paint, takesKeys: true);
         _decisions = Part((width, height) => DecisionsPainter.Paint(_risk, width, height, Glyphs), takesKeys: true);
         Add(_curve, _bound, _words, _decisions);
@@ -206,9 +208,41 @@ public sealed class RiskPage : DashboardPage
         part.Height = IsTogether ? Math.Max(0, height) : Dim.Fill();
     }
 
+    // Of a large campaign the page is shown first: what it reads and reckons comes in steps, none of which keeps the keys waiting.
+    private void Begin()
+    {
+        if (_risk.IsBegun)
+        {
+            _awaiter.Await(() => _risk.IsDone);
+        }
+        else if (_risk.IsLarge && App is { } app)
+        {
+            _ = _isBeginning ? null : app.AddTimeout(Pause, BeginNow);
+            _isBeginning = true;
+        }
+        else
+        {
+            _risk.Begin();
+        }
+    }
+
+    private bool BeginNow()
+    {
+        _isBeginning = false;
+        _risk.Begin();
+        ShowChange();
+        return false;
+    }
+
+    private TextCanvas PaintBound(int width, int height)
+    {
+        Begin();
+        return _risk.IsBegun ? BoundPainter.Paint(Model.Marks, Model.Ranking, _isNear, width, height, Glyphs) : OneLine("The bounds are reckoned in a moment.", width, Ink.Open);
+    }
+
     private TextCanvas PaintCurve(int width, int height)
     {
-        _awaiter.Await(() => _risk.IsDone);
+        Begin();
         return RiskCurvePlot.Paint(_risk.Points, _risk.Test, width, height, Glyphs);
     }
 
@@ -219,7 +253,7 @@ public sealed class RiskPage : DashboardPage
             return OneLine($"This program knows no correction named {Model.Standing.Campaign.Correction}: what it holds cannot be said here.", width, Ink.Warning);
         }
 
-        _awaiter.Await(() => _risk.IsDone);
+        Begin();
         return reckoning.Result is { } risk ? RiskWordsPainter.Paint(Model.Standing, risk, width) : OneLine("The words are reckoned in a moment.", width, Ink.Open);
     }
 
