@@ -13,7 +13,12 @@ public sealed class ReportFiles : IDisposable
     {
         _place.Run("run", Workplace.Demo).Well();
         _place.Run("run", _place.Campaign(Odd, OddPlan, OddValues())).Well();
-        foreach (string code in new[] { Demo, Odd })
+        foreach (string folder in new[] { "nist-one-way", "published-classics", "published-designs" })
+        {
+            _place.Run("run", Path.Combine(Workplace.Repository(), "campaigns", folder)).Well();
+        }
+
+        foreach (string code in new[] { Demo, Odd, "nist-one-way", "published-classics", "published-designs" })
         {
             // As many experiments in full as tell all kinds of content apart: every one would make each look at the page slower.
             _place.Run("report", code, "--most", "12", "--out", FileOf(code)).Well();

@@ -98,11 +98,15 @@ public sealed class ReportLayoutTests(Chromium browser, ReportFiles reports)
     }
 
     [Theory]
-    [InlineData("A4")]
-    [InlineData("Letter")]
-    public async Task On_paper_the_first_page_is_the_managers_and_no_page_is_empty(string format)
+    [InlineData(ReportFiles.Demo, "A4")]
+    [InlineData(ReportFiles.Demo, "Letter")]
+    [InlineData(ReportFiles.Odd, "Letter")]
+    [InlineData("nist-one-way", "Letter")]
+    [InlineData("published-classics", "Letter")]
+    [InlineData("published-designs", "Letter")]
+    public async Task On_paper_the_first_page_is_the_managers_and_no_page_is_empty(string code, string format)
     {
-        await using OpenPage page = await browser.Open(reports.FileOf(ReportFiles.Demo));
+        await using OpenPage page = await browser.Open(reports.FileOf(code));
         string[] pages = await Paper.Pages(await page.Print(format == "A4" ? PaperFormat.A4 : PaperFormat.Letter));
         Assert.True(pages.Length > 2);
         Assert.Contains("On one page", pages[0], StringComparison.Ordinal);
