@@ -1,11 +1,6 @@
 using System.CommandLine;
 using Campaigns.App.Report;
-using Campaigns.App.Report.Document;
-using Campaigns.App.Report.Html;
-using Campaigns.App.Report.Markdown;
 using Campaigns.App.Report.Sections;
-using Campaigns.App.Wording;
-using Campaigns.Catalog.Exporting;
 
 namespace Campaigns.App.Commands;
 
@@ -33,7 +28,7 @@ internal sealed class ReportVerb : Verb
     public override int Run(Session session)
     {
         string? file = session.Get(_out);
-        bool asMarkdown = (session.Get(_format) ?? (file is not null && Path.GetExtension(file).ToUpperInvariant() is ".MD" or ".MARKDOWN" ? "markdown" : "html")) == "markdown";
+        bool asMarkdown = (session.Get(_format) ?? (file is not null && ReportFile.IsMarkdown(file) ? "markdown" : "html")) == "markdown";
         if (session.Get(_force) && file is null)
         {
             throw new UsageException("--force goes with --out: standard output takes the place of nothing.");
@@ -41,29 +36,17 @@ internal sealed class ReportVerb : Verb
 
         var question = new ReportQuestion(session.Get(_code), session.Get(_experiments) is { Length: > 0 } named ? named : null, session.Get(_most));
         using Catalog.Catalog catalog = session.OpenCatalog();
-        ReportData data = new ReportReader(catalog).Read(question);
-        ReportDocument report = SectionList.Document(data);
         if (file is null)
         {
-            Write(report, asMarkdown, session.Host.Out);
+            ReportFile.Write(SectionList.Document(new ReportReader(catalog).Read(question)), asMarkdown, session.Host.Out);
             return ExitCode.Done;
         }
 
-        NewFile.Write(catalog, file, session.Get(_force), writer => Write(report, asMarkdown, writer));
-        session.Say(FormattableString.Invariant($"Wrote the report of {report.Code} to '{file}': {new FileInfo(file).Length} bytes, {data.InFull.Count} {(data.InFull.Count == 1 ? "experiment" : "experiments")} in full."));
-        session.Say(LedgerText.HeadLine(data.Head));
-        return ExitCode.Done;
-    }
+        foreach (string sentence in ReportFile.Write(catalog, question, file, asMarkdown, session.Get(_force), session.Host.Cancel))
+        {
+            session.Say(sentence);
+        }
 
-    private static void Write(ReportDocument report, bool asMarkdown, TextWriter writer)
-    {
-        if (asMarkdown)
-        {
-            MarkdownPage.Write(report, writer);
-        }
-        else
-        {
-            HtmlPage.Write(report, writer);
-        }
+        return ExitCode.Done;
     }
 }

@@ -17,6 +17,17 @@ public static class NewFile
     /// <exception cref="RefusedException">As below, or the file is the catalog.</exception>
     public static void Write(Catalog catalog, string file, bool force, Action<TextWriter> write)
     {
+        Demand(catalog, file, force);
+        Write(file, force, write);
+    }
+
+    /// <summary>Looks, before anything is written, whether text about a catalog may go into a file.</summary>
+    /// <param name="catalog">The open catalog.</param>
+    /// <param name="file">The file's name.</param>
+    /// <param name="force">Whether it may take the place of a file that is there.</param>
+    /// <exception cref="RefusedException">It is the catalog or a folder, or something is there already.</exception>
+    public static void Demand(Catalog catalog, string file, bool force)
+    {
         ArgumentNullException.ThrowIfNull(catalog);
         ArgumentNullException.ThrowIfNull(file);
         if (RealPath(file) == RealPath(catalog.Path))
@@ -24,7 +35,7 @@ public static class NewFile
             throw new RefusedException($"'{file}' is the catalog itself; name another file.");
         }
 
-        Write(file, force, write);
+        Demand(file, force);
     }
 
     /// <summary>Writes text as UTF-8 without a byte-order mark.</summary>
@@ -36,16 +47,7 @@ public static class NewFile
     {
         ArgumentNullException.ThrowIfNull(file);
         ArgumentNullException.ThrowIfNull(write);
-        if (Directory.Exists(file))
-        {
-            throw new RefusedException($"'{file}' is a folder; name a file.");
-        }
-
-        if (!force && (File.Exists(file) || new FileInfo(file).LinkTarget is not null))
-        {
-            throw new RefusedException($"'{file}' exists; nothing was written. Name another file, or say --force to take its place.");
-        }
-
+        Demand(file, force);
         DraftFiles.RemoveAbandoned(file);
         string draft = DraftFiles.Name(file, Purpose);
         try
@@ -64,6 +66,19 @@ public static class NewFile
         finally
         {
             DraftFiles.Remove(draft);
+        }
+    }
+
+    private static void Demand(string file, bool force)
+    {
+        if (Directory.Exists(file))
+        {
+            throw new RefusedException($"'{file}' is a folder; name a file.");
+        }
+
+        if (!force && (File.Exists(file) || new FileInfo(file).LinkTarget is not null))
+        {
+            throw new RefusedException($"'{file}' exists; nothing was written. Name another file, or say --force to take its place.");
         }
     }
 

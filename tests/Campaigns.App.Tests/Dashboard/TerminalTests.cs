@@ -66,7 +66,7 @@ public sealed class TerminalTests : IDisposable
         Assert.SkipUnless(File.Exists("/usr/bin/script") && !OperatingSystem.IsMacOS(), "needs the script command of util-linux");
         string started = $"unset DisableRealDriverIO NO_COLOR; export TERM=xterm; stty rows 24 cols 80; echo $$ > '{_place.At("id")}'; exec \"$CAMPAIGNS_PROGRAM\" dashboard pty";
         Process terminal = Executable.Start("script", _place.Catalog, ["-qefc", started, _place.At("screen")]);
-        Await("[1 ");
+        Await("Experiments]");
         foreach (char key in keys)
         {
             terminal.StandardInput.Write(key);

@@ -11,6 +11,7 @@ internal static class ActionList
         new ReviewAction(),
         new WithdrawAction(),
         new ExcludeAction(),
+        new ReportAction(),
     ];
 
     /// <summary>The action of a key; null where there is none.</summary>

@@ -265,7 +265,7 @@ internal sealed class ActionRun : IDisposable
         else
         {
             (Stage, _preview, _seen) = (ActionStage.Preview, finding!.Preview, finding.Seen);
-            Sentences = HasEffect ? [.. _preview!.Sentences, _desk.Signature] : _preview!.Sentences;
+            Sentences = _preview is { HasEffect: true, IsRecorded: true } ? [.. _preview!.Sentences, _desk.Signature] : _preview!.Sentences;
         }
     }
 

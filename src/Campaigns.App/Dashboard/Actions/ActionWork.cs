@@ -21,6 +21,9 @@ internal sealed record ActionWork(Catalog.Catalog Catalog, string Campaign, Acti
 /// <param name="HasEffect">Whether carrying it out would change anything.</param>
 internal sealed record Preview(IReadOnlyList<string> Sentences, bool HasEffect = true)
 {
+    /// <summary>Whether the ledger will hold it; what changes no catalog it does not.</summary>
+    public bool IsRecorded { get; init; } = true;
+
     /// <summary>Units of work that carrying it out will take; 0 where they were not counted.</summary>
     public long Expected { get; init; }
 }

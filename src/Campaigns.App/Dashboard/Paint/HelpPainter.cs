@@ -12,7 +12,7 @@ public static class HelpPainter
     [
         ("1 2 3 ...", "turn to a page (or click its name)"),
         ("a", "everything that can be done with the campaign, to choose from"),
-        ("l t v w x", "at once: load a file, test, take a review, withdraw experiments, exclude an observation; each shows first what will happen"),
+        ("l t v w x o", "at once: load a file, test, take a review, withdraw experiments, exclude an observation, write the report; each shows first what will happen"),
         ("F5", "load the campaign again"),
         ("F1 or ?", "this page, about the one you came from; Esc goes back"),
         ("q or Ctrl+Q", "quit"),

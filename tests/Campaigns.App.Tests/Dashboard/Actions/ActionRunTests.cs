@@ -114,6 +114,30 @@ public sealed class ActionRunTests : IDisposable
     }
 
     [Fact]
+    public void The_report_is_the_one_that_the_command_writes_and_nothing_is_replaced_unasked()
+    {
+        string file = _place.Place.At("out.html"), before = _place.Digest;
+        using ActionRun run = _place.Enter(_place.Begin('o', ("file", file)));
+        Assert.True(run.Stage == ActionStage.Preview, string.Join('\n', run.Sentences));
+        Assert.False(File.Exists(file));
+        Assert.DoesNotContain(run.Sentences, s => s.StartsWith("The record names", StringComparison.Ordinal));
+        _place.Enter(run);
+        Assert.True(run.Stage == ActionStage.Done, string.Join('\n', run.Sentences));
+        Ran ran = _place.Place.Run("report", ActionPlace.Code, "--out", _place.Place.At("command.html")).Well();
+        Assert.Equal(File.ReadAllText(_place.Place.At("command.html")), File.ReadAllText(file));
+        Assert.Equal(Flat(ran.Out.Replace("command.html", "out.html", StringComparison.Ordinal)), Flat(string.Join(' ', run.Sentences)));
+        Assert.Equal(before, _place.Digest);
+
+        using ActionRun again = _place.Enter(_place.Begin('o', ("file", file)));
+        Assert.Equal(ActionStage.Refused, again.Stage);
+        Assert.Contains("exists; nothing was written", again.Sentences[0], StringComparison.Ordinal);
+        using ActionRun replacing = _place.Enter(_place.Begin('o', ("file", file), ("a file there", "is replaced")));
+        Assert.Contains("in the place of the one that is there", replacing.Sentences[0], StringComparison.Ordinal);
+        using ActionRun catalog = _place.Enter(_place.Begin('o', ("file", _place.Place.Catalog), ("a file there", "is replaced")));
+        Assert.Contains("is the catalog itself", catalog.Sentences[0], StringComparison.Ordinal);
+    }
+
+    [Fact]
     public void Marks_come_before_the_selected_experiment()
     {
         using ActionRun selected = _place.Begin('w');
@@ -182,8 +206,7 @@ public sealed class ActionRunTests : IDisposable
         _place.Enter(run);
         Assert.True(run.IsOutrun);
         Assert.Contains("Somebody changed this campaign after the preview", run.Sentences[0], StringComparison.Ordinal);
-        Assert.Contains("Ben", run.Sentences[1], StringComparison.Ordinal);
-        Assert.Contains("E3", run.Sentences[1], StringComparison.Ordinal);
+        Assert.Contains("Ben (account lab): withdrew an experiment of mini (E3)", run.Sentences[1], StringComparison.Ordinal);
         Assert.Equal(after, _place.Digest);
         Assert.Equal(ExperimentStatus.Withdrawn, _place.Model.Standing.Experiments[2].Status);
 
