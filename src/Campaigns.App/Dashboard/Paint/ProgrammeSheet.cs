@@ -33,6 +33,11 @@ public static class ProgrammeSheet
             sheet.Line(campaign.Title.Length > 0 ? $"{campaign.Code}: {campaign.Title}" : campaign.Code, Ink.Heading);
             Attention(sheet, selected);
             Checks(sheet, programme, selected.Overview);
+            foreach (string sentence in AttentionText.ToKnow(selected.Overview))
+            {
+                sheet.Marked(glyphs.Between, sentence, Ink.Text);
+            }
+
             Risk(sheet, selected.Overview);
         }
 
@@ -69,11 +74,6 @@ public static class ProgrammeSheet
         if (needs.Length == 0)
         {
             sheet.Line(AttentionText.Nothing(selected.Overview), Ink.Quiet);
-        }
-
-        foreach (string sentence in AttentionText.ToKnow(selected.Overview))
-        {
-            sheet.Marked(sheet.Glyphs.Between, sentence, Ink.Text);
         }
     }
 
