@@ -102,7 +102,7 @@ public sealed partial class ReportCasesTests : IDisposable
         Assert.Equal(["resin no longer made"], page.Table("plan", "Experiments withdrawn").Column("reason"));
         Says(page, "plan", "by C. Hale: asked for by the bench");
         Assert.Contains("Two anew", page.Table("plan", "Amendments").Column("after"));
-        Says(page, "summary", "Left out of the analysis", "1 observation(s), of E1", "Withdrawn before any data: 1");
+        Says(page, "summary", "Left out of the analysis", "1 observation, of E1", "Withdrawn before any data: 1");
         Assert.Equal(["1", "2"], page.Table("reviews", "Reviews").Column("review"));
         Assert.Contains("review 1 to review 2", page.Section("reviews").TextContent, StringComparison.OrdinalIgnoreCase);
     }
