@@ -9,7 +9,7 @@ public static class Nearest
     /// <param name="word">What was typed; case does not count.</param>
     /// <param name="candidates">The words that are known.</param>
     /// <returns>
-    /// The candidate with the fewest changes, the first of several; null if that takes more than one change in three characters of the longer word
+    /// The candidate with the fewest changes, of several the first that has the same letters (they were swapped), else the first; null if that takes more than one change in three characters of the longer word
     /// (one change is always allowed from two characters on).
     /// </returns>
     /// <remarks>Changes: one character put in, taken out or replaced, or two neighbours swapped (Damerau 1964; each stretch changed once).</remarks>
@@ -20,6 +20,7 @@ public static class Nearest
         string typed = word.Trim().ToLowerInvariant();
         string? nearest = null;
         int fewest = int.MaxValue;
+        bool isSwapped = false;
         if (typed.Length is 0 or > LongestCompared)
         {
             return null;
@@ -36,9 +37,10 @@ public static class Nearest
             }
 
             int changes = Changes(typed, known);
-            if (changes <= allowed && changes < fewest)
+            bool hasSameLetters = known.Length == typed.Length && known.Order().SequenceEqual(typed.Order());
+            if (changes <= allowed && (changes < fewest || (changes == fewest && hasSameLetters && !isSwapped)))
             {
-                (nearest, fewest) = (candidate, changes);
+                (nearest, fewest, isSwapped) = (candidate, changes, hasSameLetters);
             }
         }
 

@@ -26,5 +26,8 @@ public sealed class NearestTests
     public void The_first_of_several_equally_near_words_is_named() => Assert.Equal("ab", Nearest.Of("a", ["ab", "ac", "abc"]));
 
     [Fact]
+    public void Of_several_equally_near_words_the_one_with_swapped_letters_is_named() => Assert.Equal("export", Nearest.Of("xeport", ["report", "export"]));
+
+    [Fact]
     public void A_word_without_bounds_is_not_compared() => Assert.Null(Nearest.Of(new string('x', 1_000_000), [new string('x', 1_000_000)]));
 }

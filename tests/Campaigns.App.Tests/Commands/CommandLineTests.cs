@@ -29,7 +29,7 @@ public sealed class CommandLineTests : IDisposable
         Assert.Equal("Example:", lines[^2].Trim());
         Assert.StartsWith($"  campaigns {command}", lines[^1], StringComparison.Ordinal);
         Assert.DoesNotContain("System.", help, StringComparison.Ordinal);
-        Assert.Contains("--format <table|csv|json>", help, StringComparison.Ordinal);
+        Assert.Contains(command == "report" ? "--format <html|markdown>" : "--format <table|csv|json>", help, StringComparison.Ordinal);
     }
 
     [Theory]

@@ -6,6 +6,8 @@ namespace Campaigns.App.Tests.Dashboard;
 [Collection(ScreenTests.Name)]
 public sealed class ReadmePictureTests
 {
+    private const string Folder = "campaigns/adhesion-screen/pictures";
+
     private static readonly (string File, string[] Command)[] Pictures =
     [
         ("dashboard-experiments.svg", ["dashboard", "adhesion-screen", "--page", "experiments", "--size", "120x36", "--picture"]),
@@ -21,7 +23,7 @@ public sealed class ReadmePictureTests
     {
         using Workplace place = new();
         place.Run("run", Workplace.Demo).Well();
-        string folder = Path.Combine(Workplace.Repository(), "pictures");
+        string folder = Path.Combine(Workplace.Repository(), Folder);
         foreach ((string file, string[] command) in Pictures)
         {
             string kept = Path.Combine(folder, file), now = place.At(file);
@@ -31,7 +33,7 @@ public sealed class ReadmePictureTests
                 File.Copy(now, kept, overwrite: true);
             }
 
-            Assert.True(File.ReadAllText(now) == File.ReadAllText(kept), $"pictures/{file} is not what the program draws; CAMPAIGNS_UPDATE_GOLDEN=1 draws it anew, then look at it.");
+            Assert.True(File.ReadAllText(now) == File.ReadAllText(kept), $"{Folder}/{file} is not what the program draws; CAMPAIGNS_UPDATE_GOLDEN=1 draws it anew, then look at it.");
         }
     }
 
@@ -39,6 +41,6 @@ public sealed class ReadmePictureTests
     public void Each_picture_stands_in_the_readme()
     {
         string readme = File.ReadAllText(Path.Combine(Workplace.Repository(), "README.md"));
-        Assert.All(Pictures, p => Assert.Contains($"(pictures/{p.File})", readme, StringComparison.Ordinal));
+        Assert.All(Pictures, p => Assert.Contains($"({Folder}/{p.File})", readme, StringComparison.Ordinal));
     }
 }
