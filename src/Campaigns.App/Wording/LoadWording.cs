@@ -10,8 +10,9 @@ internal static class LoadWording
     {
         string missing = load.MissingCount > 0 ? FormattableString.Invariant($", {load.MissingCount} marked as missing and left out") : "";
         string fresh = load.NewExperimentCount > 0 ? FormattableString.Invariant($" ({load.NewExperimentCount} of them new)") : "";
+        string rows = load.RowCount == 1 ? "row" : "rows";
         string experiments = load.ExperimentCount == 1 ? "experiment" : "experiments";
-        return FormattableString.Invariant($"{load.RowCount} rows for {load.ExperimentCount} {experiments}{fresh}{missing}");
+        return FormattableString.Invariant($"{load.RowCount} {rows} for {load.ExperimentCount} {experiments}{fresh}{missing}");
     }
 
     /// <summary>What was loaded, in a sentence.</summary>

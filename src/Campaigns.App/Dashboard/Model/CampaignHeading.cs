@@ -29,6 +29,7 @@ public sealed class CampaignHeading
         ReviewTrouble = TroubleWith(standing);
         Review = standing.LastReview is not { } review ? "no review stored yet"
             : $"review {Count(review.Number)} of {review.At.UtcDateTime.ToString("yyyy-MM-dd", CultureInfo.InvariantCulture)} " + (ReviewTrouble ?? "is up to date");
+        ShortReview = standing.LastReview is { } last && ReviewTrouble is not null ? $"review {Count(last.Number)} {ReviewTrouble.Replace("out of date", "behind", StringComparison.Ordinal)}" : Review;
         string stands = correction is OnlineProcedure ? "Each experiment is decided when it arrives, and its decision stands. " : "";
         Meaning = campaign.JudgedFamilies.Count > 0 ? string.Join(" ", [.. FamilyText.Guarantees(standing.Overview), FamilyText.Together(standing.Overview)])
             : correction is not null ? stands + correction.Guarantee
@@ -56,6 +57,9 @@ public sealed class CampaignHeading
 
     /// <summary>Whether the last stored review is up to date.</summary>
     public string Review { get; }
+
+    /// <summary>The same without the day, where the review is not up to date: on a narrow screen the trouble matters more.</summary>
+    public string ShortReview { get; }
 
     /// <summary>In what the last stored review is not up to date; null where it is, and before the first.</summary>
     public string? ReviewTrouble { get; }

@@ -57,7 +57,7 @@ public sealed class RiskPage : DashboardPage
     [
         IsWords ? ("Up/Down", "scroll") : ("Left/Right", IsDecisions ? "decision" : "test"),
         IsTogether ? ("Up/Down", "words") : ("n", NextView),
-        ("m", "mark"), ("Shift+m", "survivors"), ("z", _isNear ? "all" : "near"), ("Enter", "experiment"), ("F1", "help"), ("q", "quit"), TurnKeys,
+        ("m", "mark"), ("Shift+m", "survivors"), ("z", _isNear ? "all" : "near"), ("F1", "help"), ("q", "quit"), ("Enter", "experiment"), TurnKeys,
     ];
 
     /// <inheritdoc/>

@@ -15,9 +15,10 @@ internal static class GroupsPainter
     /// <summary>Adds the picture and the table.</summary>
     public static void Paint(DetailSheet sheet, ExperimentDetail detail)
     {
-        sheet.Title("values by group, with mean and " + NumberText.RoundTrip(Math.Round(detail.Confidence * 100, 6)) + "% interval");
+        string unit = detail.Result.Plan.Unit.Length > 0 ? $" ({detail.Result.Plan.Unit})" : "";
+        sheet.Title($"values by group{unit}, mean and " + NumberText.RoundTrip(Math.Round(detail.Confidence * 100, 6)) + "% interval");
         sheet.Insert(ObservationPlot.Paint(detail.Groups, sheet.Width, sheet.Glyphs));
-        sheet.Title("groups");
+        sheet.Title("groups" + unit);
         string[]? letters = detail.Analysis.Letters is { } given ? [.. given] : null;
         bool isLettersColumn = Table(sheet, detail.Groups, letters);
         if (detail.Groups.FirstOrDefault(g => g.IsControl) is { } control)

@@ -42,7 +42,8 @@ public static class HeadingPainter
         IEnumerable<string> progress = heading.Family is { } family ? heading.Progress.Append(family) : heading.Progress;
         int next = canvas.Write(1, 1, string.Join(between, progress) + between);
         Ink review = heading.ReviewTrouble is null ? Ink.Text : Ink.Warning;
-        canvas.Write(next, 1, CellText.Fit(heading.Review, width - next, glyphs.Cut), review);
+        string state = CellText.Width(heading.Review) <= width - next ? heading.Review : heading.ShortReview;
+        canvas.Write(next, 1, CellText.Fit(state, width - next, glyphs.Cut), review);
         IReadOnlyList<string> meaning = MeaningOf(heading, width);
         int rows = canvas.Height - LinesOfFacts;
         for (int i = 0; i < Math.Min(rows, meaning.Count); i++)

@@ -9,7 +9,7 @@ public static class ObservationPlot
 {
     private const int DotsPerRow = 4;
     private const int MostDotRows = 3;
-    private const int LongestLabel = 14;
+    private const int LongestLabel = 24;
 
     /// <summary>Paints the plot.</summary>
     /// <param name="groups">The groups in the plan's order.</param>

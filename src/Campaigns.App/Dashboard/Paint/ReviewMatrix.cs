@@ -86,7 +86,11 @@ public static class ReviewMatrix
 
         if (rows.Count == 0 && height > header)
         {
-            canvas.Write(1, header, CellText.Fit("No experiment survives in one review and not in another; c shows all.", width - 2, glyphs.Cut), Ink.Open);
+            IReadOnlyList<string> lines = CellText.Wrap("No experiment survives in one review and not in another; c shows all.", Math.Max(1, width - 2));
+            for (int i = 0; i < lines.Count && header + i < height; i++)
+            {
+                canvas.Write(1, header + i, lines[i], Ink.Open);
+            }
         }
 
         return canvas;
