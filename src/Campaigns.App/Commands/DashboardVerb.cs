@@ -39,9 +39,10 @@ internal sealed class DashboardVerb : Verb
             return DashboardProgram.Run(new CatalogSource(catalog), code, page, session.Get(_ascii), session.Desk);
         }
 
+        FileEnding.Fits(file, "The picture of a page is SVG: name a .svg file.", ".svg");
         (int width, int height) = session.Typed.GetValue(_size) ?? UsualSize;
         string svg = catalog.Snapshot(() => ScreenPicture.Draw(new CatalogSource(catalog), code, page, width, height, session.Get(_ascii), session.Host.Variable));
-        NewFile.Write(file, session.Get(_force), writer => writer.Write(svg));
+        NewFile.Write(catalog, file, session.Get(_force), writer => writer.Write(svg));
         session.Say(FormattableString.Invariant($"Wrote '{file}': the page {page} of {code}, {width} by {height} cells."));
         return ExitCode.Done;
     }

@@ -39,6 +39,11 @@ internal sealed class PlotVerb : Verb
             throw new UsageException("The figure itself goes to standard output here; for rows about it (--format), name a file with --out.");
         }
 
+        if (file is not null)
+        {
+            FileEnding.Fits(file, "A figure is SVG: name a .svg file.", ".svg");
+        }
+
         using Catalog.Catalog catalog = session.OpenCatalog();
         Figure figure = catalog.Snapshot(() => kind.Make(new FigureSource(catalog, code, experiment)));
         if (!figure.HasPicture)

@@ -34,6 +34,11 @@ internal sealed class ReportVerb : Verb
             throw new UsageException("--force goes with --out: standard output takes the place of nothing.");
         }
 
+        if (file is not null)
+        {
+            FileEnding.Fits(file, "A report is HTML or Markdown: name a .html or .md file; a browser prints the page as PDF.", ".html", ".htm", ".md");
+        }
+
         var question = new ReportQuestion(session.Get(_code), session.Get(_experiments) is { Length: > 0 } named ? named : null, session.Get(_most));
         using Catalog.Catalog catalog = session.OpenCatalog();
         if (file is null)

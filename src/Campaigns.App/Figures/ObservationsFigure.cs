@@ -135,7 +135,7 @@ internal static class ObservationsFigure
         string control = groups.FirstOrDefault(g => g.IsControl) is { Summary.Mean: { } m } c && double.IsFinite(m) ? $" The mean of the control{(c.Label == "control" ? "" : $" ({c.Label})")} is {NumberText.Screen(m, 4)}{unit}." : "";
         string verdict = result is { P: { } p, AdjustedP: { } adjusted, Survives: { } survives }
             ? $" p is {NumberText.P(p)}, adjusted {NumberText.P(adjusted)}: the experiment {(survives ? "survives" : "does not survive")}."
-            : $" The experiment is {result.Status.Sentence()}.";
+            : $" Status: {result.Status.Sentence()}.";
         return values + means + control + verdict;
     }
 }

@@ -141,7 +141,12 @@ internal static class RankingFigure
     private static IEnumerable<string> NotesOf(CampaignStanding standing, Ranking ranking)
     {
         yield return RankingPlot.BoundaryText(ranking);
-        yield return "Step-down corrections stop at the first p above their line; step-up ones take the last p below it and all smaller ones. The sealed correction alone decides; the other lines are for comparison.";
+        // Without a boundary of its own (families, decisions on arrival) the figure has no line of another correction either.
+        if (ranking.HasBoundary)
+        {
+            yield return "Step-down corrections stop at the first p above their line; step-up ones take the last p below it and all smaller ones. The sealed correction alone decides; the other lines are for comparison.";
+        }
+
         yield return FigureWords.Procedure(standing);
         if (ranking.FamilySize > Thinning.FewMarks)
         {

@@ -21,6 +21,7 @@ internal static class CautionText
         CampaignStanding standing, CampaignOverview overview, IReadOnlyCollection<(string Experiment, int Count)> excluded, int looked, IReadOnlyCollection<(string Experiment, IReadOnlyList<string> Checks)> warned) =>
     [
         .. Plan(overview),
+        .. IsUpToDate(overview) ? [] : (string[])[CampaignText.ReviewLine(overview)],
         .. Untested(overview),
         .. FamilyText.Warnings(overview),
         .. Checks(looked, warned),
@@ -30,7 +31,6 @@ internal static class CautionText
         .. Arriving(standing),
         .. UnitNotes.Of(standing.Experiments),
         .. AdaptiveText.Cautions([FamilyVerdict.ProcedureOf(overview.Campaign)], overview.TestedCount),
-        .. IsUpToDate(overview) ? [] : (string[])[CampaignText.ReviewLine(overview)],
     ];
 
     /// <summary>Names, the first of them where they are many.</summary>
@@ -63,7 +63,7 @@ internal static class CautionText
         int untested = overview.FamilySize - overview.TestedCount;
         if (untested > 0)
         {
-            yield return FormattableString.Invariant($"Without a result: {untested} of {overview.FamilySize} experiments. {(overview.Campaign.Streams.Count > 0 ? "They are not decided yet, or their data gave no p-value." : "Each counts as p = 1, and the others' adjusted p may change when it is tested.")}");
+            yield return FormattableString.Invariant($"Without a result: {untested} of {overview.FamilySize} experiments. {(overview.Campaign.Streams.Count > 0 ? "They are not decided yet, or their data gave no p-value." : "Each counts as p = 1, and the others' adjusted p may change once one of them has a result.")}");
         }
     }
 

@@ -61,6 +61,19 @@ public sealed class ScreenPictureTests
         place.Run("dashboard", "lab", "--picture", place.At("x.svg"), "--page", "nowhere").Refused(2, "nowhere");
     }
 
+    [Fact]
+    public void A_picture_never_takes_the_place_of_the_catalog_nor_of_another_kind_of_file()
+    {
+        using Workplace place = Made();
+        byte[] before = File.ReadAllBytes(place.Catalog);
+        place.Run("dashboard", "lab", "--picture", place.Catalog, "--force").Refused(3, "catalog");
+        Assert.Equal(before, File.ReadAllBytes(place.Catalog));
+        place.Run("dashboard", "lab", "--picture", place.At("x.png")).Refused(2, ".png", ".svg");
+        place.Run("plot", "lab", "--out", place.At("x.pdf")).Refused(2, ".pdf", ".svg");
+        place.Run("report", "lab", "--out", place.At("x.pdf")).Refused(2, ".pdf", ".html");
+        Assert.False(File.Exists(place.At("x.png")) || File.Exists(place.At("x.pdf")));
+    }
+
     private static Workplace Made()
     {
         Workplace place = new();
@@ -68,22 +81,29 @@ public sealed class ScreenPictureTests
         return place;
     }
 
-    /// <summary>The signs by the cells in which their middles lie.</summary>
+    /// <summary>The signs by the cells in which their middles lie; a word has one place, which is its middle, so that programs without places for every letter draw it right.</summary>
     private static string[,] Read(XElement root, int width, int height)
     {
         double across = (Number(root, "width") - 16) / width, down = (Number(root, "height") - 16) / height;
         string[,] cells = new string[height, width];
         foreach (XElement text in root.Elements(Svg + "text"))
         {
-            int y = (int)((Number(text, "y") - 8) / down), at = 0;
-            double[] places = [.. ((string)text.Attribute("x")!).Split(' ').Select(p => double.Parse(p, NumberStyles.Float, CultureInfo.InvariantCulture))];
-            foreach (System.Text.Rune rune in text.Value.EnumerateRunes())
+            int y = (int)((Number(text, "y") - 8) / down);
+            double middle = Number(text, "x") - 8;
+            if (text.Attribute("textLength") is null)
             {
-                int x = (int)((places[at++] - 8) / across);
-                cells[y, x] += rune.ToString();
+                Assert.Null(cells[y, (int)(middle / across)]);
+                cells[y, (int)(middle / across)] = text.Value;
+                continue;
             }
 
-            Assert.Equal(places.Length, at);
+            Assert.Equal(text.Value.Length * across, Number(text, "textLength"), 0.1);
+            for (int i = 0; i < text.Value.Length; i++)
+            {
+                int x = (int)((middle + ((i + 0.5 - (text.Value.Length / 2.0)) * across)) / across);
+                Assert.Null(cells[y, x]);
+                cells[y, x] = text.Value[i..(i + 1)];
+            }
         }
 
         return cells;

@@ -6,7 +6,7 @@ using Terminal.Gui.Drawing;
 
 namespace Campaigns.App.Dashboard.Picture;
 
-/// <summary>Writes the cells of a text screen as SVG: every sign stands in the middle of its cell, whatever font there is, and colours are dark enough on white to be read and printed.</summary>
+/// <summary>Writes the cells of a text screen as SVG: every word stands over its cells, and every sign that is no plain letter in the middle of its own, whatever font there is, and colours are dark enough on white to be read and printed.</summary>
 internal static class CellSvg
 {
     private const double CellWidth = 7.8;
@@ -46,7 +46,7 @@ internal static class CellSvg
     private static int Run(StringBuilder svg, Cell[,] cells, int y, int start)
     {
         Look look = Look.Of(cells[y, start]);
-        StringBuilder signs = new(), places = new();
+        List<(string Signs, int Start, int Wide)> words = [];
         int x = start;
         while (x < cells.GetLength(1) && Look.Of(cells[y, x]) == look)
         {
@@ -54,12 +54,14 @@ internal static class CellSvg
             int wide = Math.Max(1, CellText.Width(sign));
             if (!string.IsNullOrWhiteSpace(sign))
             {
-                // A place for every code point: those that join the first one take no room of their own.
-                string place = Number(Margin + ((x + (wide / 2.0)) * CellWidth));
-                foreach (Rune rune in sign.EnumerateRunes())
+                // Letters that every fixed-width font has go by words; any other sign may come from another font, and stands alone.
+                if (words.Count > 0 && words[^1] is var last && last.Start + last.Wide == x && Ascii.IsValid(sign) && Ascii.IsValid(last.Signs))
                 {
-                    signs.Append(rune.ToString());
-                    places.Append(places.Length > 0 ? " " : "").Append(place);
+                    words[^1] = (last.Signs + sign, last.Start, last.Wide + wide);
+                }
+                else
+                {
+                    words.Add((sign, x, wide));
                 }
             }
 
@@ -72,9 +74,11 @@ internal static class CellSvg
             svg.Append(CultureInfo.InvariantCulture, $"<rect x=\"{Number(Margin + (start * CellWidth))}\" y=\"{Number(top)}\" width=\"{Number((x - start) * CellWidth)}\" height=\"{Number(CellHeight)}\" fill=\"{look.Back}\"/>\n");
         }
 
-        if (signs.Length > 0)
+        foreach ((string signs, int first, int wide) in words)
         {
-            svg.Append(CultureInfo.InvariantCulture, $"<text x=\"{places}\" y=\"{Number(top + Foot)}\" fill=\"{look.Fore}\"{(look.IsBold ? " font-weight=\"bold\"" : "")}{(look.IsUnderlined ? " text-decoration=\"underline\"" : "")}>{Text(signs.ToString())}</text>\n");
+            // One place for a word, since some programs that draw SVG know no place for every letter.
+            string length = Ascii.IsValid(signs) && wide > 1 ? $" textLength=\"{Number(wide * CellWidth)}\"" : "";
+            svg.Append(CultureInfo.InvariantCulture, $"<text x=\"{Number(Margin + ((first + (wide / 2.0)) * CellWidth))}\" y=\"{Number(top + Foot)}\"{length} fill=\"{look.Fore}\"{(look.IsBold ? " font-weight=\"bold\"" : "")}{(look.IsUnderlined ? " text-decoration=\"underline\"" : "")}>{Text(signs)}</text>\n");
         }
 
         return x;

@@ -25,7 +25,7 @@ internal sealed class PageSection : ReportSection
     /// <summary>Lines that survivors leave to cautions.</summary>
     private const int CautionLines = 9;
     private const int LongestName = 60;
-    private const int LongestSentence = 480;
+    private const int LongestSentence = 760;
     private const int LongestCaution = 330;
     private const int LettersOfName = 40;
     private const int LettersOfGroups = 30;
