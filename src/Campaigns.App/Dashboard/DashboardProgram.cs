@@ -24,7 +24,7 @@ public static class DashboardProgram
     /// <param name="ascii">Whether to draw with ASCII signs alone.</param>
     /// <param name="desk">Where actions open the catalog; null where nothing can be done.</param>
     /// <returns>0 after quitting; 2, with a sentence on standard error, where standard input or output is no terminal; 128 and its number after a signal.</returns>
-    /// <remarks>What <paramref name="source"/> throws passes through, after the terminal was given back.</remarks>
+    /// <remarks>What <paramref name="source"/> throws at the beginning passes through; later a catalog that cannot be read is told on the screen, and all else passes through after the terminal was given back.</remarks>
     public static int Run(IDashboardSource source, string campaign, string page, bool ascii, ActionDesk? desk = null)
     {
         ArgumentNullException.ThrowIfNull(source);
@@ -54,7 +54,7 @@ public static class DashboardProgram
         using TerminalGuard guard = new(app);
         app.Init();
         using DashboardWindow window = new(model, ascii ? GlyphSet.Ascii : GlyphSet.Full, theme, desk);
-        app.Run(window);
+        app.Run(window, window.Excuse);
         return guard.ExitCode is var asked && asked != 0 ? asked : Done;
     }
 }

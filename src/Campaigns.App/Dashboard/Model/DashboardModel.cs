@@ -1,3 +1,4 @@
+using Campaigns.Catalog;
 using Campaigns.Domain;
 using Campaigns.Statistics.Corrections;
 using Campaigns.Statistics.GroupTests;
@@ -31,6 +32,8 @@ public sealed class DashboardModel
         ArgumentNullException.ThrowIfNull(source);
         _source = source;
         _findCorrection = findCorrection;
+        Watch = new CatalogWatch(source);
+        Watch.Begin();
         Standing = source.Standing(campaign);
         Marks = new Marks(Standing);
         (Correction, Heading) = Read(Standing);
@@ -43,6 +46,9 @@ public sealed class DashboardModel
 
     /// <summary>Where pages read what only they show.</summary>
     public IDashboardSource Source => _source;
+
+    /// <summary>Whether what is shown is the catalog as it stands.</summary>
+    public CatalogWatch Watch { get; }
 
     /// <summary>Counts how often a campaign was opened or loaded again: what was read for another count is out of date.</summary>
     public int Edition { get; private set; }
@@ -108,7 +114,7 @@ public sealed class DashboardModel
         && selected.ObservationCount > 0
         && (selected.ObservationCount > ManyValues || GroupTestRegistry.Find(selected.Plan.Test)?.DrawsAtRandom == true);
 
-    /// <summary>The selected experiment in full; null where no row is shown.</summary>
+    /// <summary>The selected experiment in full; null where no row is shown, and where it could not be read.</summary>
     public ExperimentDetail? SelectedDetail()
     {
         if (Selected is not { } selected)
@@ -118,12 +124,26 @@ public sealed class DashboardModel
 
         if (!_details.TryGetValue(selected.Plan.Code, out ExperimentDetail? detail))
         {
+            if (Watch.HasFailed)
+            {
+                return null;
+            }
+
             if (_details.Count >= KeptDetails)
             {
                 _details.Clear();
             }
 
-            detail = _source.Detail(Standing, selected.Plan.Code);
+            try
+            {
+                detail = _source.Detail(Standing, selected.Plan.Code);
+            }
+            catch (CatalogException error)
+            {
+                Watch.Fail(error);
+                return null;
+            }
+
             _details.Add(selected.Plan.Code, detail);
         }
 
@@ -240,6 +260,7 @@ public sealed class DashboardModel
     public void Reload()
     {
         string? code = Selected?.Plan.Code;
+        Watch.Begin();
         Standing = _source.Standing(Standing.Campaign.Code);
         Marks.Follow(Standing);
         Take();
@@ -257,6 +278,7 @@ public sealed class DashboardModel
             return;
         }
 
+        Watch.Begin();
         Standing = _source.Standing(campaign);
         Marks = new Marks(Standing);
         (FilterText, FilterProblem, SortColumn, IsFalling) = ("", null, null, false);

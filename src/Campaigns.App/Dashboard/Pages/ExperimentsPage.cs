@@ -357,7 +357,7 @@ public sealed class ExperimentsPage : DashboardPage
         }
 
         TextCanvas canvas = new(width, 1);
-        canvas.Write(0, 0, "No experiment is selected.", Ink.Quiet);
+        canvas.Write(0, 0, Model.Watch.Sentence ?? "No experiment is selected.", Ink.Quiet);
         return canvas;
     }
 

@@ -21,6 +21,19 @@ public static class KeysPainter
         return canvas;
     }
 
+    /// <summary>Paints what is wrong in the place of the keys.</summary>
+    /// <param name="trouble">One sentence, with the key that helps first.</param>
+    /// <param name="width">Cells across.</param>
+    /// <param name="glyphs">The signs.</param>
+    public static TextCanvas Paint(string trouble, int width, GlyphSet glyphs)
+    {
+        ArgumentNullException.ThrowIfNull(glyphs);
+        TextCanvas canvas = new(width, 1);
+        canvas.InkRow(0, Ink.Bar);
+        canvas.Write(1, 0, CellText.Fit(trouble, width - 1, glyphs.Cut), Ink.KeyName);
+        return canvas;
+    }
+
     /// <summary>Which key stands at a cell; null beside all.</summary>
     /// <param name="keys">The keys as they were painted.</param>
     /// <param name="width">Cells across.</param>

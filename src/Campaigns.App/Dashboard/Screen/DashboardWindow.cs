@@ -4,6 +4,7 @@ using Campaigns.App.Dashboard.Dialogs;
 using Campaigns.App.Dashboard.Model;
 using Campaigns.App.Dashboard.Pages;
 using Campaigns.App.Dashboard.Paint;
+using Campaigns.Catalog;
 using Terminal.Gui.Input;
 using Terminal.Gui.ViewBase;
 using Terminal.Gui.Views;
@@ -39,7 +40,7 @@ public sealed class DashboardWindow : Runnable
         _names = new PageStrip([.. PageList.All.Select(p => p.Name)]);
         _heading = new CanvasView((width, _) => HeadingPainter.Paint(model.Heading, width, glyphs, Frame.Height), theme) { Width = Dim.Fill(), Height = Dim.Func(_ => HeadingPainter.HeightOf(model.Heading, Frame.Width, Frame.Height)) };
         _strip = new CanvasView((width, _) => _names.Paint(model.Page, width), theme) { Y = Pos.Bottom(_heading), Width = Dim.Fill(), Height = 1 };
-        _keys = new CanvasView((width, _) => KeysPainter.Paint(KeysOf(_pages[model.Page]), width), theme) { Y = Pos.AnchorEnd(1), Width = Dim.Fill(), Height = 1 };
+        _keys = new CanvasView((width, _) => model.Watch.Sentence is { } trouble ? KeysPainter.Paint(trouble, width, glyphs) : KeysPainter.Paint(KeysOf(_pages[model.Page]), width), theme) { Y = Pos.AnchorEnd(1), Width = Dim.Fill(), Height = 1 };
         _strip.Clicked += (x, _) => TurnTo(_names.PageAt(x) ?? model.Page);
         _keys.Clicked += (x, _) =>
         {
@@ -183,8 +184,26 @@ public sealed class DashboardWindow : Runnable
                 help.Explain(PageList.All[_before].Name, _pages[_before]);
             }
 
+            _model.Watch.Look();
             _model.TurnTo(page);
         }
+    }
+
+    /// <summary>Goes on after something could not be read: what was read before stays on the screen, with the reason and what to do.</summary>
+    /// <param name="error">What was thrown.</param>
+    /// <returns>Whether it was of that kind; all else ends the dashboard.</returns>
+    public bool Excuse(Exception error)
+    {
+        if (error is not CatalogException unread)
+        {
+            return false;
+        }
+
+        // What the experiments page shows is there already, but for single details, which it does not ask for until F5.
+        _model.Watch.Fail(unread);
+        _model.TurnTo(PageList.PlaceOf("Experiments"));
+        SetNeedsDraw();
+        return true;
     }
 
     private void ShowChange()
