@@ -50,6 +50,9 @@ public sealed class CatalogSource(Catalog.Catalog catalog) : IDashboardSource
     public (ReviewComparison Comparison, IReadOnlyDictionary<long, string> Codes) Compare(string campaign, int earlier, int later) => new ReviewComparer(catalog).Compare(campaign, earlier, later);
 
     /// <inheritdoc/>
+    public LedgerHead Head() => new LedgerReader(catalog).Head;
+
+    /// <inheritdoc/>
     public (IReadOnlyList<LedgerEntry> Entries, LedgerHead Head) Ledger(LedgerFilter filter) => catalog.Snapshot(() =>
     {
         var reader = new LedgerReader(catalog);

@@ -51,6 +51,9 @@ public interface IDashboardSource
     /// <param name="later">Number of the later one.</param>
     (ReviewComparison Comparison, IReadOnlyDictionary<long, string> Codes) Compare(string campaign, int earlier, int later);
 
+    /// <summary>The end of the ledger as it stands now.</summary>
+    LedgerHead Head();
+
     /// <summary>Entries of the ledger, oldest first, and its head at the same moment.</summary>
     /// <param name="filter">Which entries.</param>
     (IReadOnlyList<LedgerEntry> Entries, LedgerHead Head) Ledger(LedgerFilter filter);

@@ -10,6 +10,8 @@ namespace Campaigns.App.Tests.Dashboard;
 /// <summary>Counts how often the campaigns are read.</summary>
 internal sealed class CountingSource(IDashboardSource source, Action onCampaigns) : IDashboardSource
 {
+    public LedgerHead Head() => source.Head();
+
     public IReadOnlyList<CampaignOverview> Campaigns()
     {
         onCampaigns();

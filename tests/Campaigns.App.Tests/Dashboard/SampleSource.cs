@@ -82,6 +82,8 @@ internal sealed class SampleSource(params CampaignStanding[] standings) : IDashb
         Between?.Invoke(earlier, later) ?? throw new RefusedException("This sample compares no reviews.");
 
     /// <summary>Of an experiment, the entries whose subject names it.</summary>
+    public LedgerHead Head() => Entries.Count == 0 ? LedgerHead.Empty : new LedgerHead(Entries[^1].Sequence, Entries[^1].Hash);
+
     public (IReadOnlyList<LedgerEntry> Entries, LedgerHead Head) Ledger(LedgerFilter filter)
     {
         LedgerReads++;

@@ -84,6 +84,14 @@ internal sealed class TestScreen : IDisposable
         return this;
     }
 
+    /// <summary>Hands on what was thrown while the screen was drawn.</summary>
+    public bool Excuse(Exception error)
+    {
+        bool goesOn = _window.Excuse(error);
+        _app.LayoutAndDraw();
+        return goesOn;
+    }
+
     /// <summary>Turns to a page by its digit.</summary>
     public TestScreen Turn(string page) => Press(new Key((char)('1' + PageList.PlaceOf(page))));
 

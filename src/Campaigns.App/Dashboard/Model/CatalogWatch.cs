@@ -8,9 +8,6 @@ namespace Campaigns.App.Dashboard.Model;
 /// <param name="source">Where everything comes from.</param>
 public sealed class CatalogWatch(IDashboardSource source)
 {
-    // No entry comes so late: the head alone is read.
-    private static readonly LedgerFilter None = new() { From = long.MaxValue };
-
     private LedgerHead _read = LedgerHead.Empty;
 
     /// <summary>What is wrong and what to do, in one sentence; null where nothing is.</summary>
@@ -23,7 +20,7 @@ public sealed class CatalogWatch(IDashboardSource source)
     /// <exception cref="CatalogException">The catalog cannot be read.</exception>
     public void Begin()
     {
-        _read = source.Ledger(None).Head;
+        _read = source.Head();
         (Sentence, HasFailed) = (null, false);
     }
 
@@ -32,7 +29,7 @@ public sealed class CatalogWatch(IDashboardSource source)
     {
         try
         {
-            LedgerHead now = source.Ledger(None).Head;
+            LedgerHead now = source.Head();
             (Sentence, HasFailed) = (now == _read ? null : FormattableString.Invariant($"F5 reads anew: the catalog was changed since (ledger entry {now.Sequence})."), false);
         }
         catch (CatalogException error)

@@ -256,6 +256,9 @@ public sealed class DashboardModel
         }
     }
 
+    /// <summary>Lets everything be drawn again, after something was found out while it was drawn.</summary>
+    public void Announce() => Changed?.Invoke();
+
     /// <summary>Loads the open campaign again; order, filter, marks and, where it is still there, the selected experiment are kept.</summary>
     public void Reload()
     {

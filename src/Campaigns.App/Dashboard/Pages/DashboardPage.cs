@@ -63,6 +63,13 @@ public abstract class DashboardPage : View
         SetNeedsDraw();
     }
 
+    /// <summary>Lets all be drawn again: what was drawn before the page may have to tell what the page found out while it was drawn.</summary>
+    protected void AnnounceAfterDrawing() => App?.AddTimeout(TimeSpan.FromMilliseconds(1), () =>
+    {
+        Model.Announce();
+        return false;
+    });
+
     /// <inheritdoc/>
     protected override void Dispose(bool disposing)
     {

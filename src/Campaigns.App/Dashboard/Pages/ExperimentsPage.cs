@@ -351,7 +351,14 @@ public sealed class ExperimentsPage : DashboardPage
             return DetailPainter.PaintBefore(Model.Selected!, Model.Heading, Math.Max(20, width), Glyphs);
         }
 
-        if (Model.SelectedDetail() is { } detail)
+        bool hadFailed = Model.Watch.HasFailed;
+        ExperimentDetail? shown = Model.SelectedDetail();
+        if (Model.Watch.HasFailed && !hadFailed)
+        {
+            AnnounceAfterDrawing();
+        }
+
+        if (shown is { } detail)
         {
             return DetailPainter.Paint(detail, Model.Standing, Model.Heading, Math.Max(20, width), Glyphs);
         }
@@ -379,7 +386,7 @@ public sealed class ExperimentsPage : DashboardPage
                 if (Model.SelectedPosition == position && _detail.Visible)
                 {
                     Model.SelectedDetail();
-                    ShowChange();
+                    Model.Announce();
                 }
             }
 
