@@ -8,6 +8,7 @@ namespace Campaigns.Catalog.Exporting;
 public static class NewFile
 {
     private const string Purpose = "new";
+    private static readonly string[] Beside = ["-journal", "-wal", "-shm"];
 
     /// <summary>Writes text about a catalog, which itself is never written over.</summary>
     /// <param name="catalog">The open catalog.</param>
@@ -33,6 +34,12 @@ public static class NewFile
         if (RealPath(file) == RealPath(catalog.Path))
         {
             throw new RefusedException($"'{file}' is the catalog itself; name another file.");
+        }
+
+        // A journal left by a program that was killed holds what the catalog is put right with.
+        if (Beside.Any(ending => RealPath(file) == RealPath(catalog.Path) + ending))
+        {
+            throw new RefusedException($"'{file}' is the name of a file that belongs to the catalog; name another file.");
         }
 
         Demand(file, force);

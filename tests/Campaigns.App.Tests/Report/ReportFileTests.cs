@@ -46,6 +46,7 @@ public sealed class ReportFileTests : IDisposable
         byte[] before = File.ReadAllBytes(_place.Catalog);
         _place.Run("report", "C", "--out", _place.Catalog, "--force").Refused(3, "is the catalog itself");
         _place.Run("plot", "C", "--out", _place.Catalog, "--force").Refused(3, "is the catalog itself");
+        Assert.All(new[] { "-journal", "-wal", "-shm" }, ending => Assert.Equal(3, _place.Run("plot", "C", "--out", _place.Catalog + ending, "--force").Code));
         Assert.Equal(before, File.ReadAllBytes(_place.Catalog));
         _place.Run("report", "C", "--out", _place.Folder).Refused(3, "folder");
         _place.Run("report", "C", "--out", _place.At("nowhere", "c.html")).Refused(3, "nowhere");
