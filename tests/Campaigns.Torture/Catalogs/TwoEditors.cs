@@ -53,7 +53,7 @@ internal sealed class TwoEditors : TortureTest
             return RecordedLife.Text($"exit codes {first.Code} and {second.Code}: {first.Error}{second.Error}");
         }
 
-        if (head.Sequence != seen.Sequence + 1 || !lost.Error.Contains(RecordedLife.Text($"entry {head.Sequence},"), StringComparison.Ordinal) || !lost.Error.Contains(winner, StringComparison.Ordinal))
+        if (head.Sequence != seen.Sequence + 1 || !lost.Error.Contains(RecordedLife.Text($"\n  {head.Sequence}. "), StringComparison.Ordinal) || !lost.Error.Contains(winner, StringComparison.Ordinal))
         {
             return RecordedLife.Text($"the refusal does not name entry {head.Sequence} of {winner}: {lost.Error}");
         }

@@ -74,6 +74,19 @@ internal sealed partial class LocaleScript(Workbench bench, Func<string[], Ran> 
         Say("resluts", "C");
         Say("completion", "bash");
         Say("--help");
+        foreach (string campaign in new[] { "C", "F", "O" })
+        {
+            Say("report", campaign);
+            Say("report", campaign, "--format", "markdown");
+        }
+
+        Say("plot", "C", "INDIGO");
+        Say("plot", "C", "INDIGO", "--figure", "comparisons");
+        foreach (string figure in new[] { "survivors", "ranking", "p-values", "risk", "corrections", "reviews" })
+        {
+            Say("plot", "C", "--figure", figure);
+        }
+
         Say("export", "C", "--out", bench.At("out"));
         foreach (string file in Directory.EnumerateFiles(bench.At("out"), "*", SearchOption.AllDirectories).Order(StringComparer.Ordinal))
         {
