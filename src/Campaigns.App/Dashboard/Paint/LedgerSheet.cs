@@ -115,8 +115,8 @@ public static class LedgerSheet
     /// <summary>A digest in one line where there is room, so that it can be copied.</summary>
     private static void Hash(DetailSheet sheet, string hash) => sheet.Line(hash, Ink.Mean, indent: sheet.Width >= Digest + 2 ? 2 : 0);
 
-    /// <summary>The rows that a digest is of, for example "test-run 4" or "decisions 1, from 12 to 15": kind, key in the catalog, range.</summary>
+    /// <summary>The rows that a digest is of, for example "test-run (key 4 in the catalog)": kind, key, range of keys where there is one.</summary>
     private static string Rows(LedgerEvidence evidence) => evidence.First == 0 && evidence.Last == 0
-        ? FormattableString.Invariant($"{evidence.Kind} {evidence.Owner}")
-        : FormattableString.Invariant($"{evidence.Kind} {evidence.Owner}, from {evidence.First} to {evidence.Last}");
+        ? FormattableString.Invariant($"{evidence.Kind} (key {evidence.Owner} in the catalog)")
+        : FormattableString.Invariant($"{evidence.Kind} (key {evidence.Owner} in the catalog), from {evidence.First} to {evidence.Last}");
 }
