@@ -13,6 +13,9 @@ public sealed class Catalog : IDisposable
 {
     private const string BeginChange = "BEGIN IMMEDIATE";
 
+    // Statements that are not yet disposed of. Held here, none is finalized on another thread while this one works on the connection, which does not lock itself.
+    private readonly HashSet<SqliteStatement> _statements = [];
+
     private CatalogContext? _context;
     private int _depth;
     private int _recordedChanges;
@@ -210,13 +213,26 @@ public sealed class Catalog : IDisposable
     {
         _interrupt.Dispose();
         _context?.Dispose();
+        foreach (SqliteStatement statement in _statements.ToArray())
+        {
+            statement.Dispose();
+        }
+
         Connection.Dispose();
     }
 
-    internal SqliteStatement Prepare(string sql)
+    /// <summary>Statements that nobody has disposed of yet.</summary>
+    internal int OpenStatements => _statements.Count;
+
+    internal SqliteStatement Prepare(string sql) => Prepare(sql, takesAnything: false);
+
+    /// <summary>A statement whose cells are given whatever kind they are of: for the proofs, which are to read a record to its end that was tampered with.</summary>
+    internal SqliteStatement PrepareAsItIs(string sql) => Prepare(sql, takesAnything: true);
+
+    private SqliteStatement Prepare(string sql, bool takesAnything)
     {
         ThrowIfStopped();
-        return new SqliteStatement(Connection, sql);
+        return new SqliteStatement(Connection, sql, _statements, takesAnything);
     }
 
     private int TotalChanges => SQLitePCL.raw.sqlite3_total_changes(Connection.Handle);

@@ -14,6 +14,7 @@ internal static class SqliteCatalogFile
 
     private const int HeaderLength = 100;
     private const byte WriteAheadLog = 2;
+    private const int Utf16 = 2;
 
     /// <summary>One by one, because the driver loses errors that come after the first row of a text of several statements.</summary>
     private static readonly string[] Settings =
@@ -176,6 +177,11 @@ internal static class SqliteCatalogFile
         if (header[18] == WriteAheadLog)
         {
             throw new CatalogException($"The catalog '{path}' was switched to a write-ahead log by another program, so that its file alone may not be all of it; switch it back there (PRAGMA journal_mode = DELETE) and close that program. The file was not touched.");
+        }
+
+        if (BinaryPrimitives.ReadInt32BigEndian(header[56..]) >= Utf16)
+        {
+            throw new CatalogException($"The catalog '{path}' was made anew by another program, with its texts in another encoding than UTF-8; restore it from a backup. The file was not touched.");
         }
 
         int version = BinaryPrimitives.ReadInt32BigEndian(header[60..]);

@@ -20,6 +20,7 @@ internal static class SqliteErrors
         SQLITE_CORRUPT or SQLITE_NOTADB => new CatalogException($"The catalog '{path}' is damaged ({detail}); restore it from a copy.", inner),
         SQLITE_CANTOPEN or SQLITE_PERM => new CatalogException($"The catalog '{path}' or its journal cannot be opened: check that you may read and write the file and its folder.", inner),
         SQLITE_IOERR => new CatalogException($"Reading or writing the catalog '{path}' failed ({detail}); check the disk. Nothing was changed.", inner),
+        SQLITE_NOMEM => new CatalogException($"There is not enough memory left to work on the catalog '{path}'; nothing was changed. Close other programs and try again.", inner),
         SQLITE_INTERRUPT => new OperationCanceledException("The statement was stopped.", inner),
         _ => new InvalidOperationException($"SQLite refused a statement of the program (code {code}: {detail}).", inner),
     };

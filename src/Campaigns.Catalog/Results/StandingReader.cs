@@ -136,7 +136,7 @@ public sealed class StandingReader(Catalog catalog)
             """
             SELECT NOT EXISTS (SELECT 1 FROM exclusions x JOIN experiments e ON e.id = x.experiment_id WHERE e.campaign_id = ?1)
                 AND NOT EXISTS (SELECT 1 FROM withdrawals w JOIN experiments e ON e.id = w.experiment_id WHERE e.campaign_id = ?1)
-                AND (SELECT min(coalesce(last_load_id, 0)) FROM test_runs WHERE campaign_id = ?1) >= (SELECT max(id) FROM loads WHERE campaign_id = ?1)
+                AND coalesce((SELECT min(coalesce(last_load_id, 0)) FROM test_runs WHERE campaign_id = ?1) >= (SELECT max(id) FROM loads WHERE campaign_id = ?1), 0)
             """);
         select.Bind(1, campaignId).Read();
         bool nothing = select.Integer(0) == 1;

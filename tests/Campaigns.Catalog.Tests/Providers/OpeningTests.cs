@@ -41,6 +41,21 @@ public sealed class OpeningTests
         Assert.Equal(content, File.ReadAllText(folder[Name]));
     }
 
+    [Fact]
+    public void A_catalog_that_was_made_anew_in_another_encoding_is_refused_and_left_as_it_is()
+    {
+        using TestFolder folder = WithCatalog();
+        using (FileStream file = File.OpenWrite(folder[Name]))
+        {
+            // The encoding of texts, as the header of the file names it: 2 is UTF-16.
+            file.Position = 59;
+            file.WriteByte(2);
+        }
+
+        AssertUntouched(folder, "another encoding");
+        Assert.Throws<CatalogException>(() => Catalog.OpenForProof(folder[Name], TimeProvider.System, isReadOnly: true));
+    }
+
     [Theory]
     [InlineData("PRAGMA application_id = 1", "is no catalog")]
     [InlineData("PRAGMA application_id = 0", "is no catalog")]

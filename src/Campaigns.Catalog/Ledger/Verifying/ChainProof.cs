@@ -27,14 +27,14 @@ internal sealed class ChainProof(Catalog catalog, Findings findings) : IDisposab
     /// <param name="known">A head that must be part of it; null for none.</param>
     public void Run(LedgerHead? known)
     {
-        using SqliteStatement entries = catalog.Prepare(
+        using SqliteStatement entries = catalog.PrepareAsItIs(
             """
             SELECT sequence, at, account, acting_as, program_version, action, campaign, subject, reason, hash,
                 (SELECT count(*) FROM ledger_changes c WHERE c.sequence = l.sequence), (SELECT count(*) FROM ledger_evidence e WHERE e.sequence = l.sequence)
             FROM ledger l ORDER BY sequence
             """);
-        using SqliteStatement changes = catalog.Prepare("SELECT position, what, before, after FROM ledger_changes WHERE sequence = ?1 ORDER BY position");
-        using SqliteStatement evidence = catalog.Prepare("SELECT position, kind, owner, first, last, digest FROM ledger_evidence WHERE sequence = ?1 ORDER BY position");
+        using SqliteStatement changes = catalog.PrepareAsItIs("SELECT position, what, before, after FROM ledger_changes WHERE sequence = ?1 ORDER BY position");
+        using SqliteStatement evidence = catalog.PrepareAsItIs("SELECT position, kind, owner, first, last, digest FROM ledger_evidence WHERE sequence = ?1 ORDER BY position");
         byte[] previous = Encoding.ASCII.GetBytes(LedgerHead.Empty.Hash);
         long expected = 1, at = long.MinValue;
         bool isKnownHeld = known is null;
@@ -172,7 +172,7 @@ internal sealed class ChainProof(Catalog catalog, Findings findings) : IDisposab
 
     private void LookForOrphans(string table, string sql)
     {
-        using SqliteStatement orphans = catalog.Prepare(sql);
+        using SqliteStatement orphans = catalog.PrepareAsItIs(sql);
         while (orphans.Read())
         {
             findings.Add(orphans.IsInteger(0) ? orphans.Integer(0) : null, null, $"The table {table} holds rows of an entry that is not there.");

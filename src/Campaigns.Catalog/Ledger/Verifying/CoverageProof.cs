@@ -37,7 +37,7 @@ internal sealed class CoverageProof(Catalog catalog, Findings findings, Evidence
 
     private void LookAtOwners(EvidenceKind kind)
     {
-        using SqliteStatement owners = catalog.Prepare(kind.Owners);
+        using SqliteStatement owners = catalog.PrepareAsItIs(kind.Owners);
         while (owners.Read())
         {
             if (!evidence.SpeaksFor(kind, owners.Integer(0)))
@@ -50,7 +50,7 @@ internal sealed class CoverageProof(Catalog catalog, Findings findings, Evidence
     /// <summary>Keys within the owners of a kind that is divided into ranges; each must lie in one.</summary>
     private void LookAtKeys(EvidenceKind kind, string sql)
     {
-        using SqliteStatement keys = catalog.Prepare(sql);
+        using SqliteStatement keys = catalog.PrepareAsItIs(sql);
         List<(long First, long Last)> ranges = [];
         long? owner = null;
         long covered = long.MinValue, missing = 0, firstMissing = 0;
@@ -93,7 +93,7 @@ internal sealed class CoverageProof(Catalog catalog, Findings findings, Evidence
 
     private void LookAtExperiments(string sql, string what)
     {
-        using SqliteStatement rows = catalog.Prepare(sql);
+        using SqliteStatement rows = catalog.PrepareAsItIs(sql);
         rows.Read();
         if (rows.Integer(0) > 0)
         {

@@ -44,7 +44,7 @@ internal sealed class EvidenceProof(Catalog catalog, Findings findings)
 
     private List<Piece> Read()
     {
-        using SqliteStatement rows = catalog.Prepare(
+        using SqliteStatement rows = catalog.PrepareAsItIs(
             """
             SELECT e.sequence, e.kind, e.owner, e.first, e.last, e.digest, l.campaign FROM ledger_evidence e LEFT JOIN ledger l ON l.sequence = e.sequence
             ORDER BY e.sequence, e.position

@@ -90,7 +90,7 @@ internal static class EvidenceWords
     /// <summary>What a row tells of itself; null where it is not there, or refers to what is not there.</summary>
     private static string? Told(Catalog catalog, string sql, params ReadOnlySpan<long> keys)
     {
-        using SqliteStatement name = catalog.Prepare(sql);
+        using SqliteStatement name = catalog.PrepareAsItIs(sql);
         for (int i = 0; i < keys.Length; i++)
         {
             name.Bind(i + 1, keys[i]);

@@ -23,7 +23,7 @@ internal sealed class FileProof(Catalog catalog, Findings findings)
 
     private void Pages()
     {
-        using SqliteStatement check = catalog.Prepare("PRAGMA integrity_check");
+        using SqliteStatement check = catalog.PrepareAsItIs("PRAGMA integrity_check");
         while (check.Read())
         {
             if (check.Text(0) != "ok")
@@ -35,7 +35,7 @@ internal sealed class FileProof(Catalog catalog, Findings findings)
 
     private void ForeignKeys()
     {
-        using SqliteStatement check = catalog.Prepare("PRAGMA foreign_key_check");
+        using SqliteStatement check = catalog.PrepareAsItIs("PRAGMA foreign_key_check");
         while (check.Read())
         {
             findings.Add(null, null, $"A row of the table {check.Text(0)} belongs to a row of {check.Text(2)} that is not there.");
@@ -81,7 +81,7 @@ internal sealed class FileProof(Catalog catalog, Findings findings)
 
     private static Dictionary<(string Type, string Name), SchemaObject> ReadObjects(Catalog catalog)
     {
-        using SqliteStatement rows = catalog.Prepare(Objects);
+        using SqliteStatement rows = catalog.PrepareAsItIs(Objects);
         var objects = new Dictionary<(string, string), SchemaObject>();
         while (rows.Read())
         {
@@ -93,7 +93,7 @@ internal sealed class FileProof(Catalog catalog, Findings findings)
 
     private static List<string> Rows(Catalog catalog, string sql)
     {
-        using SqliteStatement rows = catalog.Prepare(sql);
+        using SqliteStatement rows = catalog.PrepareAsItIs(sql);
         var all = new List<string>();
         while (rows.Read())
         {
