@@ -50,6 +50,17 @@ public sealed class MeasurementLoaderTests
         Assert.Equal(before, catalog.Dump);
     }
 
+    [Fact]
+    public void A_link_to_a_file_is_as_good_as_the_file()
+    {
+        using TestCatalog catalog = new();
+        catalog.Start();
+        string file = catalog.Write("experiment,group,value\n" + TestCatalog.Rows("E1", "A", "1 2 3"), "week-1.csv"), link = catalog.Folder["link.csv"];
+        File.CreateSymbolicLink(link, file);
+        Assert.Equal(3, catalog.LoadFile(link).RowCount);
+        Assert.Contains("was loaded", Assert.Throws<RefusedException>(() => catalog.LoadFile(file)).Message, StringComparison.Ordinal);
+    }
+
     [Theory]
     [InlineData("E1,control,1\nE3,x,2\nE3,x,3\nE1x,treated,2\n")]
     [InlineData("E1,control,1\nE3,x,2\nE1,control,5\nE3,x,3\nE1x,treated,2\n")]

@@ -72,10 +72,11 @@ public sealed class MeasurementLoader(Catalog catalog)
         return any.Integer(0) != 0;
     }
 
+    /// <summary>Size of a file in bytes, of the one that a link points to; 0 where there is none.</summary>
     private static long SizeOf(string path)
     {
         var file = new FileInfo(path);
-        return file.Exists ? file.Length : 0;
+        return !file.Exists ? 0 : file.ResolveLinkTarget(returnFinalTarget: true) is FileInfo { Exists: true } target ? target.Length : file.Length;
     }
 
     private bool HasPlan(long campaignId)
