@@ -1,18 +1,16 @@
-using System.IO.Compression;
 using Campaigns.Catalog.Excluding;
 using Campaigns.Catalog.Plans;
 using Campaigns.Catalog.Providers;
 using Campaigns.Catalog.Results;
 using Campaigns.Catalog.Reviewing;
 using Campaigns.Domain;
-using Campaigns.Statistics.Tests.External;
 using Microsoft.Data.Sqlite;
 
 namespace Campaigns.Catalog.Tests.Providers;
 
 public sealed class UpgradeTests
 {
-    private const string Name = "campaigns.db";
+    private const string Name = KeptCatalog.Name;
     private const string Migrations = "Campaigns.Migrations.Sqlite";
 
     [Theory]
@@ -40,7 +38,7 @@ public sealed class UpgradeTests
     public void A_catalog_that_the_first_schema_wrote_keeps_every_result_and_takes_new_work()
     {
         // schema-1.db.gz was written by the program when its schema was 1: ten experiments of published data, tested and reviewed.
-        using TestFolder folder = Unpacked("schema-1");
+        using TestFolder folder = KeptCatalog.Unpack("schema-1");
         List<string> before;
         using (SqliteConnection old = Raw.Open(folder[Name]))
         {
@@ -64,7 +62,7 @@ public sealed class UpgradeTests
     public void A_catalog_of_the_second_schema_keeps_its_results_its_exclusion_and_its_plan_digest()
     {
         // schema-2.db.gz was written by the program when its schema was 2: twelve experiments of published designs, one value of warpbreaks left out, tested again, reviewed twice.
-        using TestFolder folder = Unpacked("schema-2");
+        using TestFolder folder = KeptCatalog.Unpack("schema-2");
         List<string> before;
         using (SqliteConnection old = Raw.Open(folder[Name]))
         {
@@ -87,7 +85,7 @@ public sealed class UpgradeTests
     public void A_catalog_of_the_third_schema_keeps_the_results_of_all_its_campaigns()
     {
         // schema-3.db.gz was written by the program when its schema was 3: published designs with an exclusion, two families, a stream, and an exploratory campaign.
-        using TestFolder folder = Unpacked("schema-3");
+        using TestFolder folder = KeptCatalog.Unpack("schema-3");
         List<string> before;
         List<string> beforeThem;
         using (SqliteConnection old = Raw.Open(folder[Name]))
@@ -120,7 +118,7 @@ public sealed class UpgradeTests
     [InlineData("schema-3", "onl", 1)]
     public void Reviews_of_older_catalogs_come_out_of_their_record_to_the_byte(string fixture, string code, int reviews)
     {
-        using TestFolder folder = Unpacked(fixture);
+        using TestFolder folder = KeptCatalog.Unpack(fixture);
         Assert.True(CatalogUpgrade.Run(folder[Name], Migrations, TimeProvider.System, stop: TestContext.Current.CancellationToken));
         using Catalog catalog = Catalog.Open(folder[Name], TimeProvider.System);
         IReadOnlyList<ReviewRerun.Outcome> outcomes = new ReviewRerun(catalog).Run(code, null, _ => { }, TestContext.Current.CancellationToken);
@@ -227,16 +225,6 @@ public sealed class UpgradeTests
         .. Raw.Rows(connection, "SELECT * FROM standing_decisions ORDER BY stream_id, position"),
         .. Raw.Rows(connection, "SELECT id, number, lines FROM reviews ORDER BY id"),
     ];
-
-    /// <summary>A catalog as an older version of the program wrote it.</summary>
-    private static TestFolder Unpacked(string fixture)
-    {
-        var folder = new TestFolder();
-        using var packed = new GZipStream(File.OpenRead(Path.Combine(ReferenceTable.Folder(), "catalog", $"{fixture}.db.gz")), CompressionMode.Decompress);
-        using FileStream file = File.Create(folder[Name]);
-        packed.CopyTo(file);
-        return folder;
-    }
 
     /// <summary>Counts of the tables, and every result to its last bit.</summary>
     private static List<string> Facts(SqliteConnection connection) =>
