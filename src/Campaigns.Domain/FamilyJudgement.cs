@@ -81,16 +81,19 @@ internal sealed class FamilyJudgement
         ReadOnlySpan<PValue> p = Taken(_members.P.Span, index);
         ReadOnlySpan<double> weights = _members.Weights.IsEmpty ? [] : Taken(_members.Weights.Span, index);
         PValue[] adjusted = isOpen ? Adjust(correction, p, count, weights) : [.. Enumerable.Repeat(PValue.FromValue(1), p.Length)];
+        SignificanceLevel level = _levels[index];
+        int[]? places = _places.Length == 0 ? null : _places[index];
         int survivors = 0;
         for (int i = 0; i < adjusted.Length; i++)
         {
-            int place = _places.Length == 0 ? i : _places[index][i];
+            int place = places is null ? i : places[i];
+            bool survives = isOpen && level.Rejects(adjusted[i]);
             _adjusted[place] = adjusted[i];
-            _survives[place] = isOpen && _levels[index].Rejects(adjusted[i]);
-            survivors += _survives[place] ? 1 : 0;
+            _survives[place] = survives;
+            survivors += survives ? 1 : 0;
         }
 
-        return new FamilyStanding(family.Name, correction.Key, _levels[index], count.Size, count.Planned, adjusted.Length, survivors)
+        return new FamilyStanding(family.Name, correction.Key, level, count.Size, count.Planned, adjusted.Length, survivors)
         {
             IsOpen = isOpen,
             Waits = waits,

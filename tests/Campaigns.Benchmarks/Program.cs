@@ -8,6 +8,7 @@ using Campaigns.Benchmarks.Simulating;
 const string Usage = """
     generate SIZE FOLDER [--shuffled] [--plan]   write a synthetic campaign folder; SIZE is S, M, L or EXPERIMENTSxGROUPSxREPLICATES
     arrive CATALOG CODE N                        milliseconds of N arrivals of one more experiment, inside one process
+    read CATALOG CODE N                          milliseconds of opening a catalog and of reading a campaign, inside one process
     time                                         milliseconds of a few large kernels
     errors [REPLICATES]                          how often each omnibus test rejects where all means are equal (20000 experiments a design); Markdown
     campaign-errors [REPLICATES]                 the error rates that every procedure over a campaign really has (20000 campaigns a scenario); Markdown
@@ -24,6 +25,10 @@ switch (args)
     case ["arrive", string catalog, string code, string arrivals]
         when int.TryParse(arrivals, NumberStyles.None, CultureInfo.InvariantCulture, out int count):
         Arrival.Print(catalog, code, count, Console.Out);
+        return 0;
+    case ["read", string catalog, string code, string timesText]
+        when int.TryParse(timesText, NumberStyles.None, CultureInfo.InvariantCulture, out int times) && times > 0:
+        Reading.Print(catalog, code, times, Console.Out);
         return 0;
     case ["time"]:
         Timings.Print(Console.Out);

@@ -72,6 +72,7 @@ internal static class EvidenceRegistry
         ]);
 
     /// <summary>A test run with its results.</summary>
+    /// <remarks>The results are walked through from the run's first experiment to its last: all of them for a run over a whole campaign, one for an experiment that arrived alone. Plus keeps SQLite from seeking each by the index of runs.</remarks>
     public static EvidenceKind TestRun { get; } = new(
         "test-run",
         IsLatestOnly: false,
@@ -82,7 +83,9 @@ internal static class EvidenceRegistry
             """,
             """
             SELECT experiment_id, status, group_count, observation_count, statistic, df1, df2, p, log_p, eta_squared, omega_squared, specimen_count, arrangements, as_extreme, seed
-            FROM test_results WHERE test_run_id = ?1 ORDER BY experiment_id
+            FROM test_results WHERE +test_run_id = ?1
+                AND experiment_id BETWEEN (SELECT min(experiment_id) FROM test_results WHERE test_run_id = ?1) AND (SELECT max(experiment_id) FROM test_results WHERE test_run_id = ?1)
+            ORDER BY experiment_id
             """,
         ]);
 

@@ -28,6 +28,9 @@ internal static class SqliteCatalogFile
         "PRAGMA temp_store = MEMORY",
         "PRAGMA foreign_keys = ON",
 
+        // In KiB. A review of 100,000 experiments is one value of 1.7 MB: SQLite's own 2 MB would write it to the file before the commit, with a sync of the journal, and read it again for its digest.
+        "PRAGMA cache_size = -8192",
+
         // One file that may be copied: a rollback journal, not a write-ahead log. EXTRA also syncs the folder, so an acknowledged action survives a power cut.
         "PRAGMA synchronous = EXTRA",
         "PRAGMA journal_mode = DELETE",

@@ -16,11 +16,12 @@ internal sealed class FamilyColumns
 
     /// <param name="experimentIds">Keys, ascending.</param>
     /// <param name="p">One p-value for each.</param>
-    public FamilyColumns(long[] experimentIds, PValue[] p)
+    /// <param name="count">How many of them there are; the rest of the arrays, which are of one length, is room for more.</param>
+    public FamilyColumns(long[] experimentIds, PValue[] p, int count)
     {
         _experimentIds = experimentIds;
         _p = p;
-        Count = p.Length;
+        Count = count;
     }
 
     /// <summary>Experiments with a p-value.</summary>
@@ -48,8 +49,20 @@ internal sealed class FamilyColumns
     }
 
     /// <summary>These columns with newer p-values in the place of older ones and added ones in their order; null in the newer ones takes an experiment out. O(n + m).</summary>
+    /// <remarks>Experiments that all come after those at hand are added to these very columns: then it takes O(m).</remarks>
+    /// <param name="newer">The newer ones, by ascending keys.</param>
     public FamilyColumns With(IReadOnlyList<(long ExperimentId, PValue? P)> newer)
     {
+        if (Count == 0 || newer.Count == 0 || newer[0].ExperimentId > _experimentIds[Count - 1])
+        {
+            foreach ((long id, PValue? p) in newer.Where(n => n.P is not null))
+            {
+                Add(id, p!.Value);
+            }
+
+            return this;
+        }
+
         var merged = new FamilyColumns(Count + newer.Count);
         int old = 0;
         foreach ((long id, PValue? p) in newer)

@@ -39,8 +39,8 @@ internal sealed class FamilyReader(Catalog catalog)
     {
         using SqliteStatement count = catalog.Prepare(
             """
-            SELECT count(*) FROM test_results r JOIN test_runs t ON t.id = r.test_run_id
-            WHERE r.test_run_id > ?2 AND t.campaign_id = ?1
+            SELECT count(*) FROM test_runs t CROSS JOIN test_results r ON r.test_run_id = t.id
+            WHERE t.id > ?2 AND t.campaign_id = ?1
             """);
         count.Bind(1, campaignId).Bind(2, testRunId).Read();
         return (int)count.Integer(0);
@@ -178,10 +178,11 @@ internal sealed class FamilyReader(Catalog catalog)
 
     private List<(long ExperimentId, PValue? P)> TestedAfter(long campaignId, long testRunId)
     {
+        // A cross join tells SQLite to begin at the few runs: for the order's sake it would walk through all results.
         using SqliteStatement select = catalog.Prepare(
             """
-            SELECT r.experiment_id, r.p, r.log_p FROM test_results r JOIN test_runs t ON t.id = r.test_run_id
-            WHERE r.test_run_id > ?2 AND t.campaign_id = ?1 ORDER BY r.experiment_id, r.test_run_id
+            SELECT r.experiment_id, r.p, r.log_p FROM test_runs t CROSS JOIN test_results r ON r.test_run_id = t.id
+            WHERE t.id > ?2 AND t.campaign_id = ?1 ORDER BY r.experiment_id, r.test_run_id
             """);
         select.Bind(1, campaignId).Bind(2, testRunId);
         var tested = new List<(long, PValue?)>();

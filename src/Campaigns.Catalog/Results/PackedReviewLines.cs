@@ -10,6 +10,9 @@ internal static class PackedReviewLines
     private const byte Version = 1;
     private const int BytesPerLine = 20;
 
+    // For what was tested since: a few experiments that arrive are added without copying all.
+    private const int Room = 256;
+
     public static PackWriter Pack(ReadOnlySpan<long> experimentIds, ReadOnlySpan<PValue> p, ReadOnlySpan<PValue> adjusted)
     {
         var writer = new PackWriter((experimentIds.Length * BytesPerLine) + 64);
@@ -25,9 +28,9 @@ internal static class PackedReviewLines
     public static FamilyColumns UnpackFamily(ReadOnlySpan<byte> packed)
     {
         PackReader reader = Open(packed, out int count);
-        var ids = new long[count];
-        reader.Column(ids);
-        return new FamilyColumns(ids, ReadPValues(ref reader, count));
+        var ids = new long[count + Room];
+        reader.Column(ids.AsSpan(0, count));
+        return new FamilyColumns(ids, ReadPValues(ref reader, count, Room), count);
     }
 
     /// <summary>Every line of a review.</summary>
@@ -36,7 +39,7 @@ internal static class PackedReviewLines
         PackReader reader = Open(packed, out int count);
         var ids = new long[count];
         reader.Column(ids);
-        return (new FamilyColumns(ids, ReadPValues(ref reader, count)), ReadPValues(ref reader, count));
+        return (new FamilyColumns(ids, ReadPValues(ref reader, count), count), ReadPValues(ref reader, count));
     }
 
     private static PackReader Open(ReadOnlySpan<byte> packed, out int count)
@@ -69,7 +72,7 @@ internal static class PackedReviewLines
         writer.Column(logs.ToArray());
     }
 
-    private static PValue[] ReadPValues(ref PackReader reader, int count)
+    private static PValue[] ReadPValues(ref PackReader reader, int count, int room = 0)
     {
         var bits = new long[count];
         reader.Column(bits);
@@ -81,7 +84,7 @@ internal static class PackedReviewLines
 
         var logs = new long[small];
         reader.Column(logs);
-        var values = new PValue[count];
+        var values = new PValue[count + room];
         for (int i = 0, log = 0; i < count; i++)
         {
             double value = BitConverter.Int64BitsToDouble(bits[i]);

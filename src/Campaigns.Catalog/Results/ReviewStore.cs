@@ -40,11 +40,9 @@ public sealed class ReviewStore(Catalog catalog)
             throw new RefusedException($"Nothing of the campaign '{code}' was tested yet, so there is nothing to review; run 'campaigns test {code}'.");
         }
 
-        int planned = families.FamilySize(stored.Id);
-
         // An amendment takes a result away, and only a new run, another sign of change, brings one back: the count tells.
         if (Latest(stored.Id) is { } latest && latest.LastRun == lastRun && latest.Head.IsInterim == testedOnly
-            && (testedOnly || latest.Head.FamilySize == planned)
+            && (testedOnly || latest.Head.FamilySize == families.FamilySize(stored.Id))
             && DecisionsSince(stored.Id, new StandingWithdrawals(catalog, stored.Id)) == 0
             && (!new AmendedExperiments(catalog, stored.Id).Any || latest.Head.TestedCount == families.Read(stored.Id).Count))
         {
@@ -117,7 +115,7 @@ public sealed class ReviewStore(Catalog catalog)
         insert.Bind(1, id).Bind(2, stored.Id).Bind(3, (long)number).Bind(4, catalog.Now).Bind(5, campaign.Correction)
             .Bind(6, campaign.Level.Value).Bind(7, (long)verdict.Size).Bind(8, (long)columns.Count).Bind(9, (long)verdict.SurvivorLineCount)
             .Bind(10, testedOnly ? 1L : 0L).Bind(11, ProgramVersion.Current).Bind(12, lastRun)
-            .BindBlob(13, PackedReviewLines.Pack(columns.ExperimentIds, columns.P, [.. verdict.Adjusted]).Written).Run();
+            .BindBlob(13, PackedReviewLines.Pack(columns.ExperimentIds, columns.P, verdict.Adjusted as PValue[] ?? [.. verdict.Adjusted]).Written).Run();
         if (campaign.JudgedFamilies.Count > 0)
         {
             new ReviewFamilies(catalog).Add(id, verdict.Families);

@@ -18,13 +18,15 @@ public sealed class RankedFamily
 
     private readonly double[] _sorted;
     private readonly int[] _order;
-    private readonly double[]? _logs;
 
-    private RankedFamily(double[] sorted, int[] order, double[]? logs, int familySize, int tailCount)
+    // In the order in which they were given; null where every logarithm is that of its double, which is computed when it is asked for: that is rare, and 100,000 pass through every review.
+    private readonly PValue[]? _given;
+
+    private RankedFamily(double[] sorted, int[] order, PValue[]? given, int familySize, int tailCount)
     {
         _sorted = sorted;
         _order = order;
-        _logs = logs;
+        _given = given;
         FamilySize = familySize;
         TailCount = tailCount;
     }
@@ -75,7 +77,7 @@ public sealed class RankedFamily
             RankTailByLog(LogsInOrder(pValues, order.AsSpan(0, tail)), sorted.AsSpan(0, tail), order.AsSpan(0, tail));
         }
 
-        return new RankedFamily(sorted, order, LogsInOrder(pValues, order), familySize, tail);
+        return new RankedFamily(sorted, order, WithLogs(pValues, tail), familySize, tail);
     }
 
     /// <summary>Ranks p-values of hypotheses that weigh differently. Corrections that do not ask for weights see the same family as without.</summary>
@@ -89,7 +91,7 @@ public sealed class RankedFamily
     {
         RankedFamily byP = Of(pValues, familySize);
         (double[] scaled, double rest) = FamilyWeights.Scaled(weights, weightOfRest, pValues.Length, familySize);
-        return new RankedFamily(byP._sorted, byP._order, byP._logs, familySize, byP.TailCount) { ByWeight = OfWeighted(pValues, familySize, scaled, rest) };
+        return new RankedFamily(byP._sorted, byP._order, byP._given, familySize, byP.TailCount) { ByWeight = OfWeighted(pValues, familySize, scaled, rest) };
     }
 
     /// <summary>Ranks p-values given as doubles in [0, 1].</summary>
@@ -118,7 +120,7 @@ public sealed class RankedFamily
     }
 
     /// <summary>The natural logarithm of the p-value of a rank, as it was given or else of its double.</summary>
-    internal double Log(int rank) => _logs is null ? Math.Log(_sorted[rank]) : _logs[rank];
+    internal double Log(int rank) => _given is null ? Math.Log(_sorted[rank]) : _given[_order[rank]].Log;
 
     private static RankedFamily OfWeighted(ReadOnlySpan<PValue> pValues, int familySize, double[] weights, double rest)
     {
@@ -149,7 +151,7 @@ public sealed class RankedFamily
             inOrder[rank] = pValues[order[rank]].Value + 0.0;
         }
 
-        return new RankedFamily(inOrder, order, LogsInOrder(pValues, order), familySize, tail) { Weights = FamilyWeights.InOrder(weights, rest, order) };
+        return new RankedFamily(inOrder, order, WithLogs(pValues, tail), familySize, tail) { Weights = FamilyWeights.InOrder(weights, rest, order) };
     }
 
     /// <summary>p/w as a double, from the logarithm where p has lost digits and a small weight brings the quotient back into the range.</summary>
@@ -173,6 +175,25 @@ public sealed class RankedFamily
         }
 
         return logs;
+    }
+
+    /// <summary>A copy of the p-values where one has a logarithm of its own, or lies so low that its double may be one of another rank; else null.</summary>
+    private static PValue[]? WithLogs(ReadOnlySpan<PValue> pValues, int tailCount)
+    {
+        if (tailCount > 0)
+        {
+            return pValues.ToArray();
+        }
+
+        foreach (ref readonly PValue p in pValues)
+        {
+            if (p.HasOwnLog)
+            {
+                return pValues.ToArray();
+            }
+        }
+
+        return null;
     }
 
     private static void CheckSize(int count, int familySize)

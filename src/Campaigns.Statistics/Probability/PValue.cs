@@ -32,6 +32,9 @@ public readonly struct PValue : IEquatable<PValue>, IComparable<PValue>
     /// <exception cref="InvalidOperationException">The value was never given.</exception>
     public double Log => !IsGiven ? throw NeverGiven() : double.IsNaN(_log) ? Math.Log(_value) : _log;
 
+    /// <summary>Whether the logarithm was given, and is not just that of the value.</summary>
+    internal bool HasOwnLog => !double.IsNaN(_log);
+
     /// <summary>Whether the p-value is positive but below the smallest positive double, so that only its logarithm tells it.</summary>
     public bool IsBelowDoubleRange => Value == 0 && double.IsFinite(_log);
 

@@ -57,7 +57,7 @@ public sealed class RehearsalTests : IDisposable
     public void A_rehearsal_that_outgrows_the_memory_of_a_transaction_is_taken_back_from_the_file()
     {
         var rows = new StringBuilder("experiment,group,value\n");
-        for (int i = 0; i < 10_000; i++)
+        for (int i = 0; i < 25_000; i++)
         {
             for (int v = 0; v < 40; v++)
             {
@@ -76,7 +76,7 @@ public sealed class RehearsalTests : IDisposable
             grown = new FileInfo(path).Length;
             return loaded;
         });
-        Assert.Equal(400_000, load.RowCount);
+        Assert.Equal(1_000_000, load.RowCount);
         Assert.True(grown > before.Length, $"The file did not grow ({grown} bytes): this test has to load more.");
         Assert.Equal(before, File.ReadAllBytes(path));
     }

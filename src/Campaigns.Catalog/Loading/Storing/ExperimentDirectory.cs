@@ -41,13 +41,15 @@ internal sealed class ExperimentDirectory : IDisposable
     public ExperimentDirectory(Catalog catalog, long campaignId, long fileSize)
     {
         _campaignId = campaignId;
-        Count = CountOf(catalog, campaignId);
-        if (Count == 0)
+        long most = (fileSize / BytesPerExperiment) + 1;
+        long count = CountUpTo(most, catalog, campaignId);
+        IsEmpty = count == 0;
+        if (IsEmpty)
         {
             return;
         }
 
-        if (Count * BytesPerExperiment > fileSize)
+        if (count == most)
         {
             _find = catalog.Prepare(Select + " AND code = ?2");
             return;
@@ -63,8 +65,8 @@ internal sealed class ExperimentDirectory : IDisposable
         }
     }
 
-    /// <summary>Experiments of the campaign before the load.</summary>
-    public long Count { get; }
+    /// <summary>Whether the campaign had no experiments before the load.</summary>
+    public bool IsEmpty { get; }
 
     public KnownExperiment? Find(ReadOnlySpan<byte> code)
     {
@@ -95,10 +97,11 @@ internal sealed class ExperimentDirectory : IDisposable
         return codes;
     }
 
-    private static long CountOf(Catalog catalog, long campaignId)
+    /// <summary>Experiments of the campaign, counted no further than asked: a small file need not know how many hundred thousand there are.</summary>
+    private static long CountUpTo(long most, Catalog catalog, long campaignId)
     {
-        using SqliteStatement count = catalog.Prepare("SELECT count(*) FROM experiments WHERE campaign_id = ?1");
-        count.Bind(1, campaignId).Read();
+        using SqliteStatement count = catalog.Prepare("SELECT count(*) FROM (SELECT 1 FROM experiments WHERE campaign_id = ?1 LIMIT ?2)");
+        count.Bind(1, campaignId).Bind(2, most).Read();
         return count.Integer(0);
     }
 

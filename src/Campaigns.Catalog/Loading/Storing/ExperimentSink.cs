@@ -47,7 +47,7 @@ internal sealed class ExperimentSink : IDisposable
         _names = labels;
         _withdrawals = new StandingWithdrawals(catalog, campaign.Id);
         _directory = new ExperimentDirectory(catalog, campaign.Id, fileSize);
-        _takesNewExperiments = campaign.Campaign.IsExploratory || (!campaign.Campaign.IsSealed && _directory.Count == 0);
+        _takesNewExperiments = campaign.Campaign.IsExploratory || (!campaign.Campaign.IsSealed && _directory.IsEmpty);
         _sets = new GroupSets(catalog, campaign.Id);
         _placement = new GroupPlacement(_sets, labels);
         _experiments = new ExperimentWriter(catalog, campaign.Id);
