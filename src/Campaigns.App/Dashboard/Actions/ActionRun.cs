@@ -39,7 +39,7 @@ internal sealed class ActionRun : IDisposable
     private readonly DashboardModel _model;
     private readonly ActionDesk _desk;
     private readonly string _campaign;
-    private BackgroundWork<Finding>? _work;
+    private SideJob<Finding>? _work;
     private WorkProgress? _progress;
     private LedgerHead? _seen;
     private Preview? _preview;
@@ -183,11 +183,12 @@ internal sealed class ActionRun : IDisposable
         }
 
         _progress = _work.Progress ?? _progress;
-        if (_work.End is { } end)
+        if (_work.IsOver)
         {
+            (Finding? result, Exception? thrown) = (_work.Result, _work.Thrown);
             _work.Dispose();
             _work = null;
-            Take(end.Result, end.Thrown);
+            Take(result, thrown);
         }
 
         return true;
@@ -200,7 +201,7 @@ internal sealed class ActionRun : IDisposable
     /// <inheritdoc/>
     public void Dispose()
     {
-        _work?.Stop();
+        _work?.Dispose();
         _work = null;
     }
 
@@ -246,7 +247,7 @@ internal sealed class ActionRun : IDisposable
     private void Begin(ActionStage stage, Func<Action<WorkProgress>, CancellationToken, Finding> work)
     {
         (Stage, _progress, _isOutrun, _began) = (stage, null, false, _desk.Clock.GetTimestamp());
-        _work = new BackgroundWork<Finding>(work);
+        _work = new SideJob<Finding>(work);
     }
 
     private void Take(Finding? finding, Exception? thrown)

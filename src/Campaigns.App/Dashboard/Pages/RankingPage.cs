@@ -9,14 +9,8 @@ using Terminal.Gui.ViewBase;
 namespace Campaigns.App.Dashboard.Pages;
 
 /// <summary>The ranked p-values of a family beside the boundaries of several corrections, a level to look at, the p-values in bars, and every correction side by side.</summary>
-public sealed class RankingPage : DashboardPage
+public sealed class RankingPage : PicturesPage
 {
-    /// <summary>From this width and height on, all pictures stand together.</summary>
-    public const int TogetherWidth = 110;
-
-    /// <summary>See <see cref="TogetherWidth"/>.</summary>
-    public const int TogetherHeight = 30;
-
     private const int SideWidth = 48;
     private const int LeastHistogram = 9;
     private const int LeastCorrections = 18;
@@ -30,9 +24,7 @@ public sealed class RankingPage : DashboardPage
     private readonly CanvasView _histogram;
     private readonly CanvasView _corrections;
     private readonly CanvasView _families;
-    private readonly Dictionary<Key, Action> _keys;
     private readonly Awaiter _awaiter;
-    private int _view;
     private bool _isNear;
     private (int Families, int View, bool IsLevelSaid) _arranged;
 
@@ -52,14 +44,12 @@ public sealed class RankingPage : DashboardPage
         _corrections = Part(PaintCorrections, takesKeys: true);
         _families = Part((width, height) => FamiliesPainter.Paint(_ranking, width, height, Glyphs), takesKeys: true);
         Add(_above, _plot, _onLevel, _ruler, _below, _histogram, _corrections, _families);
-        _keys = KeysOf();
         _plot.Wheeled += Walk;
         _plot.Clicked += (x, _) => SelectRank(RankingPlot.RankAt(_ranking.Ranking, _isNear, _plot.Frame.Width, x));
         _ruler.Clicked += (x, _) => LookAt(LevelRuler.LevelAt(_ranking, _ruler.Frame.Width, x));
         _ruler.Wheeled += rows => MoveLevel(rows > 0 ? -1 : 1);
         _corrections.Clicked += (_, y) => TurnRow(y - CorrectionsPainter.HeaderRows);
         _families.Clicked += (_, y) => TurnFamily((FamiliesPainter.PlaceAt(_ranking, _families.Frame.Height, y) ?? _ranking.FamilyPlace) - _ranking.FamilyPlace);
-        Model.Changed += Follow;
         FrameChanged += (_, _) => Arrange();
         Arrange();
     }
@@ -90,21 +80,19 @@ public sealed class RankingPage : DashboardPage
     ];
 
     /// <inheritdoc/>
-    public override View Entrance => IsTogether ? _plot : new View[] { _plot, _histogram, _corrections, _families }[View];
+    protected override IReadOnlyList<CanvasView> Pictures => [_plot, _histogram, _corrections, _families];
+
+    /// <inheritdoc/>
+    protected override int ViewCount => HasFamilies ? 4 : 3;
+
+    /// <inheritdoc/>
+    protected override IReadOnlyList<string> ViewNames => ["ranking", "bars", "corrections", "families"];
 
     private ErrorProcedure? Procedure => _ranking.Standing.Families.Count > 1 ? Model.Find(_ranking.Family.Correction) : Model.Correction;
 
     private bool HasFamilies => Model.Standing.Families.Count > 1;
 
-    private int ViewCount => HasFamilies ? 4 : 3;
-
-    private int View => Math.Min(_view, ViewCount - 1);
-
-    private string NextView => ((View + 1) % ViewCount) switch { 0 => "ranking", 1 => "bars", 2 => "corrections", _ => "families" };
-
     private (int Families, int View, bool IsLevelSaid) State => (Model.Standing.Families.Count, View, _ranking.Exploration is not null || _ranking.WhyNoExploration is not null);
-
-    private bool IsTogether => Frame.Width >= TogetherWidth && Frame.Height >= TogetherHeight;
 
     /// <inheritdoc/>
     public override bool Back()
@@ -119,29 +107,7 @@ public sealed class RankingPage : DashboardPage
     }
 
     /// <inheritdoc/>
-    protected override bool OnKeyDown(Key key)
-    {
-        if (!_keys.TryGetValue(key, out Action? act))
-        {
-            return false;
-        }
-
-        act();
-        return true;
-    }
-
-    /// <inheritdoc/>
-    protected override void Dispose(bool disposing)
-    {
-        if (disposing)
-        {
-            Model.Changed -= Follow;
-        }
-
-        base.Dispose(disposing);
-    }
-
-    private Dictionary<Key, Action> KeysOf() => new()
+    protected override Dictionary<Key, Action> KeysOf() => new()
     {
         [Key.CursorRight] = () => Walk(1),
         [Key.CursorDown] = () => Walk(1),
@@ -199,17 +165,6 @@ public sealed class RankingPage : DashboardPage
         }
     }
 
-    private void TurnView(int step)
-    {
-        if (!IsTogether)
-        {
-            _view = (View + step + ViewCount) % ViewCount;
-            Arrange();
-            Entrance.SetFocus();
-            ShowAll();
-        }
-    }
-
     private void TurnFamily(int step)
     {
         if (HasFamilies)
@@ -223,9 +178,7 @@ public sealed class RankingPage : DashboardPage
     {
         if (!IsTogether && View != 2)
         {
-            _view = 2;
-            Arrange();
-            Entrance.SetFocus();
+            ShowView(2);
         }
         else
         {
@@ -245,14 +198,9 @@ public sealed class RankingPage : DashboardPage
         }
     }
 
-    private void ShowAll()
-    {
-        ShowChange();
-        SuperView?.SetNeedsDraw();
-    }
-
     // Another campaign may have families where the last one had none.
-    private void Follow()
+    /// <inheritdoc/>
+    protected override void Follow()
     {
         if (_arranged != State)
         {
@@ -267,7 +215,8 @@ public sealed class RankingPage : DashboardPage
         ShowAll();
     }
 
-    private void Arrange()
+    /// <inheritdoc/>
+    protected override void Arrange()
     {
         _arranged = State;
         int left = IsTogether ? Frame.Width - SideWidth - 1 : Frame.Width;

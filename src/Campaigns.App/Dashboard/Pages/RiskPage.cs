@@ -8,10 +8,8 @@ using Terminal.Gui.ViewBase;
 namespace Campaigns.App.Dashboard.Pages;
 
 /// <summary>What the campaign has risked test by test, the standing decisions of an online campaign, and at most how many of the marked experiments are false.</summary>
-public sealed class RiskPage : DashboardPage
+public sealed class RiskPage : PicturesPage
 {
-    private const int TogetherWidth = 110;
-    private const int TogetherHeight = 30;
     private const int SideWidth = 60;
     private const int LeastBound = 17;
     private static readonly TimeSpan Pause = TimeSpan.FromMilliseconds(20);
@@ -22,8 +20,6 @@ public sealed class RiskPage : DashboardPage
     private readonly CanvasView _decisions;
     private readonly ScrollPane _scroll;
     private readonly Awaiter _awaiter;
-    private readonly Dictionary<Key, Action> _keys;
-    private int _view;
     private bool _isNear = true;
     private bool _wasOnline;
     private bool _isBeginning;
@@ -41,13 +37,11 @@ public sealed class RiskPage : DashboardPage
         _words = Part(_scroll.Paint, takesKeys: true);
         _decisions = Part((width, height) => DecisionsPainter.Paint(_risk, width, height, Glyphs), takesKeys: true);
         Add(_curve, _bound, _words, _decisions);
-        _keys = KeysOf();
         _curve.Wheeled += _risk.Walk;
         _curve.Clicked += (x, _) => _risk.GoTo(RiskCurvePlot.TestAt(_risk.Points?.Count ?? 0, _curve.Frame.Width, x));
         _words.Wheeled += ScrollWords;
         _decisions.Wheeled += rows => _risk.GoToDecision(_risk.Decision + rows);
         _decisions.Clicked += (_, y) => _risk.GoToDecision(DecisionsPainter.PlaceAt(_risk, _decisions.Frame.Height, y) ?? _risk.Decision);
-        Model.Changed += Follow;
         FrameChanged += (_, _) => Arrange();
         Arrange();
     }
@@ -76,19 +70,17 @@ public sealed class RiskPage : DashboardPage
     ];
 
     /// <inheritdoc/>
-    public override View Entrance => IsTogether ? _curve : new View[] { _curve, _bound, _words, _decisions }[View];
+    protected override IReadOnlyList<CanvasView> Pictures => [_curve, _bound, _words, _decisions];
 
-    private int ViewCount => _risk.IsOnline ? 4 : 3;
+    /// <inheritdoc/>
+    protected override int ViewCount => _risk.IsOnline ? 4 : 3;
 
-    private int View => Math.Min(_view, ViewCount - 1);
-
-    private bool IsTogether => Frame.Width >= TogetherWidth && Frame.Height >= TogetherHeight;
+    /// <inheritdoc/>
+    protected override IReadOnlyList<string> ViewNames => ["risk", "marked", "words", "decisions"];
 
     private bool IsWords => !IsTogether && View == 2;
 
     private bool IsDecisions => !IsTogether && View == 3;
-
-    private string NextView => ((View + 1) % ViewCount) switch { 0 => "risk", 1 => "marked", 2 => "words", _ => "decisions" };
 
     /// <inheritdoc/>
     protected override bool OnKeyDown(Key key)
@@ -100,27 +92,11 @@ public sealed class RiskPage : DashboardPage
             return true;
         }
 
-        if (!_keys.TryGetValue(key, out Action? act))
-        {
-            return false;
-        }
-
-        act();
-        return true;
+        return base.OnKeyDown(key);
     }
 
     /// <inheritdoc/>
-    protected override void Dispose(bool disposing)
-    {
-        if (disposing)
-        {
-            Model.Changed -= Follow;
-        }
-
-        base.Dispose(disposing);
-    }
-
-    private Dictionary<Key, Action> KeysOf() => new()
+    protected override Dictionary<Key, Action> KeysOf() => new()
     {
         [Key.CursorRight] = () => Walk(1),
         [Key.CursorLeft] = () => Walk(-1),
@@ -156,31 +132,15 @@ public sealed class RiskPage : DashboardPage
         }
     }
 
-    private void TurnView(int step)
-    {
-        if (!IsTogether)
-        {
-            _view = (View + step + ViewCount) % ViewCount;
-            Arrange();
-            Entrance.SetFocus();
-            ShowAll();
-        }
-    }
-
     private void ScrollWords(int lines)
     {
         _scroll.Move(lines);
         _words.SetNeedsDraw();
     }
 
-    private void ShowAll()
-    {
-        ShowChange();
-        SuperView?.SetNeedsDraw();
-    }
-
     // The next campaign may be decided otherwise.
-    private void Follow()
+    /// <inheritdoc/>
+    protected override void Follow()
     {
         if (_wasOnline != _risk.IsOnline)
         {
@@ -188,7 +148,8 @@ public sealed class RiskPage : DashboardPage
         }
     }
 
-    private void Arrange()
+    /// <inheritdoc/>
+    protected override void Arrange()
     {
         _wasOnline = _risk.IsOnline;
         int left = Frame.Width - SideWidth - 1, half = Frame.Height / 2;
