@@ -92,7 +92,7 @@ internal static class RiskTable
         if (c.SurvivorCount > 0)
         {
             string estimate = risk.ExpectedFalseSurvivors is { } number ? $", by estimate {NumberText.Screen(number, 2)} (share of true nulls {NumberText.Screen(risk.TrueNulls.Share ?? 0, 2)})" : "";
-            sentences.Add(FormattableString.Invariant($"Of the {c.SurvivorCount} survivor{(c.SurvivorCount == 1 ? "" : "s")} at most {risk.SurvivorBound.FalseAtMost} {(risk.SurvivorBound.FalseAtMost == 1 ? "is" : "are")} false ({BoundWording.ConfidenceText(risk.Confidence)} confidence){estimate}."));
+            sentences.Add($"{BoundWording.OfSurvivors(c.SurvivorCount, risk.SurvivorBound.FalseAtMost, risk.Confidence)}{estimate}.");
             if (procedure.Controls == ErrorRate.FalseDiscovery)
             {
                 sentences.Add("With effects the number of false survivors grows with the survivors, about their number times the rate.");

@@ -37,6 +37,19 @@ internal sealed class Marks : ScatterSeries
     }
 }
 
+/// <summary>How a line stands in the legend: as it stands in the plot, so that lines differ there in form and not in colour alone.</summary>
+internal enum LegendForm
+{
+    /// <summary>A level line.</summary>
+    Level,
+
+    /// <summary>A level line with a short upright one at either end.</summary>
+    Capped,
+
+    /// <summary>An upright line.</summary>
+    Upright,
+}
+
 /// <summary>Lines through points, broken where <see cref="Break"/> was called, in a group that bears their name.</summary>
 internal sealed class Strokes : LineSeries
 {
@@ -56,6 +69,27 @@ internal sealed class Strokes : LineSeries
         LineStyle = dash;
         Decimator = null;
         MinimumSegmentLength = 0.5;
+    }
+
+    /// <summary>How the line stands in the legend.</summary>
+    public LegendForm Form { get; init; }
+
+    /// <inheritdoc/>
+    public override void RenderLegend(IRenderContext rc, OxyRect legendBox)
+    {
+        double x = (legendBox.Left + legendBox.Right) / 2, y = (legendBox.Top + legendBox.Bottom) / 2, half = legendBox.Height * 0.42;
+        if (Form == LegendForm.Upright)
+        {
+            rc.DrawLine([new(x, y - half), new(x, y + half)], Color, StrokeThickness, EdgeRenderingMode, LineStyle.GetDashArray(), LineJoin);
+            return;
+        }
+
+        base.RenderLegend(rc, legendBox);
+        if (Form == LegendForm.Capped)
+        {
+            double cap = half * 0.7;
+            rc.DrawLineSegments([new(legendBox.Left, y - cap), new(legendBox.Left, y + cap), new(legendBox.Right, y - cap), new(legendBox.Right, y + cap)], Color, StrokeThickness, EdgeRenderingMode, null, LineJoin);
+        }
     }
 
     /// <summary>Adds a point.</summary>
