@@ -53,6 +53,9 @@ internal enum LegendForm
 /// <summary>Lines through points, broken where <see cref="Break"/> was called, in a group that bears their name.</summary>
 internal sealed class Strokes : LineSeries
 {
+    /// <summary>Room between the last cap in the legend and its words.</summary>
+    private const double CapGap = 4;
+
     private readonly string _name;
 
     /// <summary>Makes a series without points.</summary>
@@ -84,11 +87,14 @@ internal sealed class Strokes : LineSeries
             return;
         }
 
-        base.RenderLegend(rc, legendBox);
-        if (Form == LegendForm.Capped)
+        if (Form == LegendForm.Level)
         {
-            double cap = half * 0.7;
-            rc.DrawLineSegments([new(legendBox.Left, y - cap), new(legendBox.Left, y + cap), new(legendBox.Right, y - cap), new(legendBox.Right, y + cap)], Color, StrokeThickness, EdgeRenderingMode, null, LineJoin);
+            base.RenderLegend(rc, legendBox);
+        }
+        else
+        {
+            double cap = half * 0.7, left = legendBox.Left, right = legendBox.Right - CapGap;
+            rc.DrawLineSegments([new(left, y), new(right, y), new(left, y - cap), new(left, y + cap), new(right, y - cap), new(right, y + cap)], Color, StrokeThickness, EdgeRenderingMode, null, LineJoin);
         }
     }
 

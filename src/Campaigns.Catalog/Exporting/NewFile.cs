@@ -86,8 +86,8 @@ public static class NewFile
         if (Path.GetDirectoryName(Path.GetFullPath(file)) is { } folder && !Directory.Exists(folder))
         {
             throw new RefusedException(File.Exists(folder)
-                ? $"'{file}' cannot be written: '{folder}' is a file and no folder; name another place."
-                : $"'{file}' cannot be written: there is no folder '{folder}'; make it, or name another place.");
+                ? $"'{file}' could not be written: '{folder}' is a file and no folder; name another place."
+                : $"'{file}' could not be written: there is no folder '{folder}'; make it, or name another place.");
         }
 
         if (!force && (File.Exists(file) || new FileInfo(file).LinkTarget is not null))

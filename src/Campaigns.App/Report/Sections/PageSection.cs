@@ -76,8 +76,8 @@ internal sealed class PageSection : ReportSection
     private static string Lead(ReportData data) => data.Overview.TestedCount == 0 && data.Survivors.Listed.Count == 0
         ? $"Nothing has a result yet. Goal: {CampaignText.Goal(data.Overview.Campaign)}."
         : data.Survivors.Listed.Count == 0
-            ? FormattableString.Invariant($"None of {data.Overview.TestedCount} tested experiments survives ({CampaignText.Goal(data.Overview.Campaign)}): no difference shown, which is not the same as no difference.")
-            : $"{SurvivorTables.Counted(data.Overview)} survive ({CampaignText.Goal(data.Overview.Campaign)}).";
+            ? FormattableString.Invariant($"None of {Counted.Of(data.Overview.TestedCount, "tested experiment")} survives ({CampaignText.Goal(data.Overview.Campaign)}): no difference shown, which is not the same as no difference.")
+            : $"{SurvivorTables.Counted(data.Overview)} {Counted.Word(data.Overview.SurvivorCount, "survives", "survive")} ({CampaignText.Goal(data.Overview.Campaign)}).";
 
     private static TableBlock Survivors(ReportData data, SheetRoom room)
     {
@@ -147,7 +147,7 @@ internal sealed class PageSection : ReportSection
     private static IEnumerable<string> Risked(ReportData data)
     {
         CampaignOverview overview = data.Overview;
-        yield return $"{Capital(CampaignText.Goal(overview.Campaign))}, over {overview.FamilySize.ToString(System.Globalization.CultureInfo.InvariantCulture)} experiments. {RiskTable.Held(overview)}";
+        yield return $"{Capital(CampaignText.Goal(overview.Campaign))}, over {Counted.Of(overview.FamilySize, "experiment")}. {RiskTable.Held(overview)}";
         yield return RiskTable.Sentences(overview)[0];
         if (RiskTable.MayBeFalse(data.Risk) is { Count: > 0 } sentences)
         {
