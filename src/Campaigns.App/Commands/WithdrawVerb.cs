@@ -43,7 +43,7 @@ internal sealed class WithdrawVerb : Verb
     /// <summary>A row a decision.</summary>
     public static RowTable Rows(IEnumerable<Withdrawal> decisions) => new(
         [
-            new("experiment", "experiment"), new("withdrawn", "withdrawn"), new("had_data", "had data"), new("after_results", "after results", GivesWay: 1), new("reason", "reason", CutLast: true, Wraps: true), new("by", "by", Wraps: true), new("at", "at"),
+            new("experiment", "experiment"), new("withdrawn", "withdrawn"), new("had_data", "had data"), new("after_results", "after results", GivesWay: 1), new("reason", "reason", CutLast: true, Wraps: true), new("by", "by", Wraps: true), new("at", "at", true),
         ],
         decisions.Select(d => (Cell[])
         [

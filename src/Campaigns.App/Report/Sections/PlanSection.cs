@@ -111,7 +111,9 @@ internal sealed class PlanSection : ReportSection
 
         if (data.Plan.Withdrawals.Count > 0)
         {
-            yield return TableBlock.Of("Experiments withdrawn, and taken in again", WithdrawVerb.Rows(data.Plan.Withdrawals));
+            // On a terminal what stands right is never cut; here nothing is cut, and a time is text.
+            TableBlock withdrawn = TableBlock.Of("Experiments withdrawn, and taken in again", WithdrawVerb.Rows(data.Plan.Withdrawals));
+            yield return withdrawn with { Columns = [.. withdrawn.Columns.Select(c => c.Name == "at" ? c with { IsNumeric = false } : c)] };
         }
 
         if (data.Plan.Exclusions.Count > 0)
