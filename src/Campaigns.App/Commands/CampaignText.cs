@@ -95,7 +95,7 @@ internal static class CampaignText
     {
         if (standing.LastReview is not { } review)
         {
-            return $"No review was taken yet; 'campaigns review {standing.Campaign.Code}' takes one.";
+            return $"No review was taken yet; {ReviewWording.HowToTakeTheFirst(standing)}.";
         }
 
         string which = FormattableString.Invariant($"Review {review.Number} of {review.At:yyyy-MM-dd HH:mm} UTC{(review.IsInterim ? " (interim: tested experiments only)" : "")}");

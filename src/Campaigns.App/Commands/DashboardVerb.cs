@@ -15,7 +15,7 @@ internal sealed class DashboardVerb : Verb
     private readonly Option<bool> _ascii = new("--ascii") { Description = "Draw with ASCII signs alone." };
 
     private readonly Option<string?> _picture = TypedOptions.NotBlank(new Option<string?>("--picture") { Description = "Write one page as a picture (SVG) instead; needs no terminal.", HelpName = "FILE.svg" });
-    private readonly Option<string?> _page = TypedOptions.Word("--page", "The page that is shown first, or drawn.", "NAME", [.. PageList.All.Select(p => p.Name.ToLowerInvariant())]);
+    private readonly Option<string?> _page = TypedOptions.Word("--page", "The page that is shown first, or drawn.", "NAME", ignoresCase: true, [.. PageList.All.Select(p => p.Name.ToLowerInvariant())]);
     private readonly Option<(int Width, int Height)?> _size = NewSize();
     private readonly Option<bool> _force = new("--force") { Description = "With --picture, take the place of a file that is there." };
 

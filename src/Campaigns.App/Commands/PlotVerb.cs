@@ -39,6 +39,11 @@ internal sealed class PlotVerb : Verb
             throw new UsageException("The figure itself goes to standard output here; for rows about it (--format), name a file with --out.");
         }
 
+        if (file is null && session.Host.OutIsTerminal)
+        {
+            throw new UsageException($"A drawing in SVG is nothing to read on a terminal, and nothing was written: name a file with --out, as in 'campaigns plot {code} --out figure.svg'.");
+        }
+
         if (file is not null)
         {
             FileEnding.Fits(file, "A figure is SVG: name a .svg file.", ".svg");

@@ -8,7 +8,7 @@ namespace Campaigns.App.Commands;
 internal sealed class ReportVerb : Verb
 {
     private readonly Argument<string> _code = SharedOptions.Code();
-    private readonly Option<string?> _out = TypedOptions.NotBlank(new Option<string?>("--out") { Description = "The file to write; without it the report goes to standard output.", HelpName = "FILE" });
+    private readonly Option<string?> _out = TypedOptions.NotBlank(new Option<string?>("--out") { Description = "The file to write; without it the report goes to standard output, a page of HTML only into a pipe or a file.", HelpName = "FILE" });
     private readonly Option<string?> _format = TypedOptions.Word("--format", "One page for a browser, or Markdown for a notebook (else by the file's name: .md is Markdown).", "html|markdown", "html", "markdown");
     private readonly Option<bool> _force = new("--force") { Description = "Take the place of a file that is there." };
     private readonly Option<int> _most = TypedOptions.Whole("--most", 0, "Experiments to show in full with their figures, survivors first.", ReportQuestion.UsualInFull);
@@ -32,6 +32,11 @@ internal sealed class ReportVerb : Verb
         if (session.Get(_force) && file is null)
         {
             throw new UsageException("--force goes with --out: standard output takes the place of nothing.");
+        }
+
+        if (file is null && !asMarkdown && session.Host.OutIsTerminal)
+        {
+            throw new UsageException($"A page of HTML is nothing to read on a terminal, and nothing was written: name a file with --out, as in 'campaigns report {session.Get(_code)} --out report.html', or ask for --format markdown.");
         }
 
         if (file is not null)

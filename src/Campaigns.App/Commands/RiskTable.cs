@@ -57,7 +57,7 @@ internal static class RiskTable
 
         return
         [
-            FormattableString.Invariant($"Cumulative risk: {tests} tests at {c.Campaign.Level} each. Without a correction, if nothing is real, {NumberText.Screen(FamilyRisk.ExpectedFalsePositives(tests, c.Campaign.Level), 3)} false positives are to be expected, and the risk of at least one is {Words.Percent(FamilyRisk.AtLeastOneIfIndependent(tests, c.Campaign.Level))} for independent tests (between {Words.Percent(FamilyRisk.AtLeastOneLowerBound(tests, c.Campaign.Level))} and {Words.Percent(FamilyRisk.AtLeastOneUpperBound(tests, c.Campaign.Level))} whatever the dependence). {c.UncorrectedCount} experiments would count as hits; {c.SurvivorCount} survive the correction."),
+            FormattableString.Invariant($"Cumulative risk: {Counted.Of(tests, "test")} at {c.Campaign.Level}{(tests == 1 ? "" : " each")}. Without a correction, if nothing is real, {NumberText.Screen(FamilyRisk.ExpectedFalsePositives(tests, c.Campaign.Level), 3)} false positives are to be expected, and the risk of at least one is {Words.Percent(FamilyRisk.AtLeastOneIfIndependent(tests, c.Campaign.Level))} for independent tests (between {Words.Percent(FamilyRisk.AtLeastOneLowerBound(tests, c.Campaign.Level))} and {Words.Percent(FamilyRisk.AtLeastOneUpperBound(tests, c.Campaign.Level))} whatever the dependence). {Counted.Of(c.UncorrectedCount, "experiment")} would count as {Counted.Word(c.UncorrectedCount, "a hit", "hits")}; {c.SurvivorCount} {Counted.Word(c.SurvivorCount, "survives", "survive")} the correction."),
             $"What the correction holds: {Held(c)}",
         ];
     }
@@ -92,7 +92,7 @@ internal static class RiskTable
         if (c.SurvivorCount > 0)
         {
             string estimate = risk.ExpectedFalseSurvivors is { } number ? $", by estimate {NumberText.Screen(number, 2)} (share of true nulls {NumberText.Screen(risk.TrueNulls.Share ?? 0, 2)})" : "";
-            sentences.Add(FormattableString.Invariant($"Of the {c.SurvivorCount} survivor{(c.SurvivorCount == 1 ? "" : "s")} at most {risk.SurvivorBound.FalseAtMost} {(risk.SurvivorBound.FalseAtMost == 1 ? "is" : "are")} false ({BoundWording.ConfidenceText(risk.Confidence)} confidence){estimate}."));
+            sentences.Add($"{BoundWording.OfSurvivors(c.SurvivorCount, risk.SurvivorBound.FalseAtMost, risk.Confidence)}{estimate}.");
             if (procedure.Controls == ErrorRate.FalseDiscovery)
             {
                 sentences.Add("With effects the number of false survivors grows with the survivors, about their number times the rate.");

@@ -20,7 +20,7 @@ internal static class SurvivorTables
         var verdict = new ComparisonVerdict(overview.Campaign, overview.Families);
         return new RowTable(Columns, listed.Select(e => Row(e, gaps.GetValueOrDefault(e.Plan.Code), [.. comparisons[e.Plan.Code]], verdict.SelectedRisk(e)!.Value)))
         {
-            Above = [FormattableString.Invariant($"{code}: {Counted(overview)} survive ({CampaignText.Goal(overview.Campaign)}).{more}")],
+            Above = [FormattableString.Invariant($"{code}: {Counted(overview)} {Wording.Counted.Word(overview.SurvivorCount, "survives", "survive")} ({CampaignText.Goal(overview.Campaign)}).{more}")],
             Below = [.. OnlineText.OnOtherData(listed), .. CampaignText.Footnotes(overview, listed.Select(e => e.Plan.Test).DefaultIfEmpty(overview.Campaign.DefaultTest)), .. UnitNotes.Of(listed), "Gap: the widest between two group means of the sample; gaps of what was selected look larger than they are. Its selected interval comes from the follow-up.", CampaignText.Caution],
             WhenEmpty = "No experiment survives: no difference shown, which is not the same as no difference.",
         };
@@ -41,7 +41,7 @@ internal static class SurvivorTables
     /// <summary>How many of how many survive, for a sentence. A standing decision stands while the values of its experiment, changed since, await a new test.</summary>
     public static string Counted(CampaignOverview overview) => overview.Campaign.Streams.Count > 0 && overview.AwaitingNewTest > 0
         ? FormattableString.Invariant($"{overview.SurvivorCount} experiments, by standing decisions, {overview.TestedCount} having a result and {overview.AwaitingNewTest} awaiting a new test,")
-        : FormattableString.Invariant($"{overview.SurvivorCount} of {overview.TestedCount} tested experiments");
+        : FormattableString.Invariant($"{overview.SurvivorCount} of {Wording.Counted.Of(overview.TestedCount, "tested experiment")}");
 
     /// <summary>Claims stand inside selected experiments, so people see the intervals that account for it before the others; that all are claimed they know from the heading.</summary>
     private static IReadOnlyList<Column> ClaimColumns { get; } =

@@ -52,6 +52,18 @@ internal static class TypedOptions
         return option;
     }
 
+    /// <summary>One of a few words, in small letters or capitals.</summary>
+    public static Option<string?> Word(string name, string description, string helpName, bool ignoresCase, params string[] words)
+    {
+        Option<string?> option = Word(name, description, helpName, words);
+        if (ignoresCase)
+        {
+            option.CustomParser = typed => words.FirstOrDefault(w => w.Equals(typed.Tokens[0].Value, StringComparison.OrdinalIgnoreCase)) ?? WordOf(typed, name, words);
+        }
+
+        return option;
+    }
+
     /// <summary>A text that must not be empty.</summary>
     public static Option<T> NotBlank<T>(Option<T> option)
     {

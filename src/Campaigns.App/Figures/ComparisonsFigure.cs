@@ -59,9 +59,9 @@ internal static class ComparisonsFigure
         PlotModel plot = FigureStyle.NewPlot();
         plot.Axes.Add(FigureAxes.Numbers(AxisPosition.Bottom, FigureAxes.WithUnit("difference of means", plan.Unit), low, high));
         plot.Axes.Add(FigureAxes.Names(AxisPosition.Left, "", [.. shown.Select(c => $"{c.GroupB} \u2212 {c.GroupA}")], WidestName));
-        var zero = new Strokes("no difference", FigureStyle.Axis, 1, LineStyle.Dash);
+        var zero = new Strokes("no difference", FigureStyle.Axis, 1, LineStyle.Dash) { Form = LegendForm.Upright };
         zero.Add(0, -0.5, 0, shown.Length - 0.5);
-        var interval = new Strokes("simultaneous interval", FigureStyle.Text);
+        var interval = new Strokes("simultaneous interval", FigureStyle.Text) { Form = LegendForm.Capped };
         var wider = new Strokes("interval after selection", FigureStyle.Third, 1.4, LineStyle.Dot);
         var claimed = new Marks("claimed", MarkerType.Diamond, FigureStyle.Survivor, size: 4.5);
         var other = new Marks("not claimed", MarkerType.Circle, FigureStyle.Other, isHollow: true, size: 3.5);

@@ -37,9 +37,25 @@ internal sealed class Marks : ScatterSeries
     }
 }
 
+/// <summary>How a line stands in the legend: as it stands in the plot, so that lines differ there in form and not in colour alone.</summary>
+internal enum LegendForm
+{
+    /// <summary>A level line.</summary>
+    Level,
+
+    /// <summary>A level line with a short upright one at either end.</summary>
+    Capped,
+
+    /// <summary>An upright line.</summary>
+    Upright,
+}
+
 /// <summary>Lines through points, broken where <see cref="Break"/> was called, in a group that bears their name.</summary>
 internal sealed class Strokes : LineSeries
 {
+    /// <summary>Room between the last cap in the legend and its words.</summary>
+    private const double CapGap = 4;
+
     private readonly string _name;
 
     /// <summary>Makes a series without points.</summary>
@@ -56,6 +72,30 @@ internal sealed class Strokes : LineSeries
         LineStyle = dash;
         Decimator = null;
         MinimumSegmentLength = 0.5;
+    }
+
+    /// <summary>How the line stands in the legend.</summary>
+    public LegendForm Form { get; init; }
+
+    /// <inheritdoc/>
+    public override void RenderLegend(IRenderContext rc, OxyRect legendBox)
+    {
+        double x = (legendBox.Left + legendBox.Right) / 2, y = (legendBox.Top + legendBox.Bottom) / 2, half = legendBox.Height * 0.42;
+        if (Form == LegendForm.Upright)
+        {
+            rc.DrawLine([new(x, y - half), new(x, y + half)], Color, StrokeThickness, EdgeRenderingMode, LineStyle.GetDashArray(), LineJoin);
+            return;
+        }
+
+        if (Form == LegendForm.Level)
+        {
+            base.RenderLegend(rc, legendBox);
+        }
+        else
+        {
+            double cap = half * 0.7, left = legendBox.Left, right = legendBox.Right - CapGap;
+            rc.DrawLineSegments([new(left, y), new(right, y), new(left, y - cap), new(left, y + cap), new(right, y - cap), new(right, y + cap)], Color, StrokeThickness, EdgeRenderingMode, null, LineJoin);
+        }
     }
 
     /// <summary>Adds a point.</summary>

@@ -54,7 +54,7 @@ internal static class SurvivorsFigure
         PlotModel plot = FigureStyle.NewPlot();
         plot.Axes.Add(FigureAxes.Numbers(AxisPosition.Bottom, "eta squared", 0, 1));
         plot.Axes.Add(FigureAxes.Names(AxisPosition.Left, "", [.. shown.Select(e => e.Plan.Title.Length > 0 ? $"{e.Plan.Code} {e.Plan.Title}" : e.Plan.Code)], WidestName));
-        var interval = new Strokes("interval after selection", FigureStyle.Text, 1.2);
+        var interval = new Strokes("interval after selection", FigureStyle.Text, 1.2) { Form = LegendForm.Capped };
         var effect = new Marks("eta squared of the sample", MarkerType.Diamond, FigureStyle.Survivor, size: 4.2);
         for (int y = 0; y < shown.Length; y++)
         {

@@ -59,7 +59,7 @@ public static class NumberText
         }
 
         int decimals = Math.Max(0, significantDigits - 1 - (int)Math.Floor(Math.Log10(size)));
-        return value.ToString("F" + decimals.ToString(CultureInfo.InvariantCulture), CultureInfo.InvariantCulture);
+        return Decimals(value, decimals);
     }
 
     /// <summary>The shortest text that reads back as the same double.</summary>
@@ -82,6 +82,11 @@ public static class NumberText
         double halfUnit = (Math.BitIncrement(-p.Log) + p.Log) / 2;
         return FromLog(p.Log, Math.Clamp((int)Math.Floor(-Math.Log10(halfUnit)), 1, 17), 'E');
     }
+
+    /// <summary>Rounds the decimal number that stands for the double, halves away from zero, as people round what they read: 172.5 becomes 173, and 0.125 becomes 0.13.</summary>
+    private static string Decimals(double value, int decimals) =>
+        Math.Round(decimal.Parse(RoundTrip(value), NumberStyles.Float, CultureInfo.InvariantCulture), decimals, MidpointRounding.AwayFromZero)
+            .ToString("F" + decimals.ToString(CultureInfo.InvariantCulture), CultureInfo.InvariantCulture);
 
     private static string Exponent(double value, int digits) =>
         value.ToString("0" + (digits > 1 ? "." + new string('0', digits - 1) : "") + "e-0", CultureInfo.InvariantCulture);

@@ -15,6 +15,22 @@ internal static class BoundWording
     public static string Line(MarkedBound bound, double confidence) =>
         FormattableString.Invariant($"marked {bound.Marked}: at least {bound.RealAtLeast} real, at most {bound.FalseAtMost} false ({ConfidenceText(confidence)} confidence)");
 
+    /// <summary>For example "Of the 14 survivors at most 6 are false (95% confidence)", without a full stop.</summary>
+    /// <param name="survivors">Survivors, at least one.</param>
+    /// <param name="falseAtMost">How many of them are false at most.</param>
+    /// <param name="confidence">In (0, 1).</param>
+    public static string OfSurvivors(int survivors, int falseAtMost, double confidence)
+    {
+        string clause = (survivors, falseAtMost) switch
+        {
+            (1, 0) => "The one survivor is not false",
+            (1, _) => "The one survivor may be false: the bound does not exclude it",
+            (_, 0) => FormattableString.Invariant($"Of the {survivors} survivors none is false"),
+            _ => FormattableString.Invariant($"Of the {survivors} survivors at most {falseAtMost} {Counted.Word(falseAtMost, "is", "are")} false"),
+        };
+        return $"{clause} ({ConfidenceText(confidence)} confidence)";
+    }
+
     /// <summary>For example "95%".</summary>
     /// <param name="confidence">In (0, 1).</param>
     public static string ConfidenceText(double confidence) => confidence < 0.99999999

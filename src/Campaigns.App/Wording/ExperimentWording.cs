@@ -36,10 +36,29 @@ internal static class ExperimentWording
         ? $"It survives: evidence against the hypothesis \"{GroupTestRegistry.Find(result.Plan.Test)?.Hypothesis}\""
         : "It does not survive: no difference shown, which is not the same as no difference.";
 
-    /// <summary>What the intervals of the group table hold; null where there are none.</summary>
-    public static string? MeanIntervals(ExperimentDetail detail) => detail.Groups.Any(g => g.Summary.Lower is not null)
-        ? FormattableString.Invariant($"Intervals: {100 * detail.Confidence:0.#} % for each mean alone, from the group's own standard deviation and Student's t.")
-        : null;
+    /// <summary>What the intervals of the group table hold, and which groups have none and why; null where there is neither.</summary>
+    public static string? MeanIntervals(ExperimentDetail detail)
+    {
+        string held = detail.Groups.Any(g => g.Summary.Lower is not null)
+            ? FormattableString.Invariant($"Intervals: {100 * detail.Confidence:0.#} % for each mean alone, from the group's own standard deviation and Student's t.")
+            : "";
+        string[] without =
+        [
+            .. WithoutInterval(detail, g => g.Count == 1, "a single value, which tells nothing of spread"),
+            .. WithoutInterval(detail, g => g is { Count: > 1, Lower: null }, "all values alike, which gives Student's t no spread to measure by"),
+        ];
+        string sentences = string.Join(" ", without.Prepend(held)).Trim();
+        return sentences.Length > 0 ? sentences : null;
+    }
+
+    private static IEnumerable<string> WithoutInterval(ExperimentDetail detail, Func<GroupSummary, bool> isSuch, string why)
+    {
+        string[] groups = [.. detail.Groups.Where(g => isSuch(g.Summary)).Select(g => g.Label)];
+        if (groups.Length > 0)
+        {
+            yield return $"No interval for {CautionText.Names(groups)}: {why}.";
+        }
+    }
 
     /// <summary>A test, what it assumes, and where it comes from.</summary>
     public static string Assumptions(GroupTest test) => $"{test.Name}, assumes: {AsClause(test.Assumes)} Source: {test.Source}";

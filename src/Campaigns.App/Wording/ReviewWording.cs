@@ -11,6 +11,16 @@ namespace Campaigns.App.Wording;
 /// <summary>Reviews, and what lies between two of them, in words.</summary>
 internal static class ReviewWording
 {
+    /// <summary>What brings a campaign without a review to its first one, in a clause: nothing is reviewed before it is tested.</summary>
+    /// <param name="standing">The campaign in figures.</param>
+    public static string HowToTakeTheFirst(CampaignOverview standing)
+    {
+        string code = standing.Campaign.Code;
+        return standing.TestedCount > 0 ? $"'campaigns review {code}' takes one"
+            : standing.Campaign.IsSealed ? $"nothing has a result yet: 'campaigns test {code}' tests the experiments that are complete"
+            : $"the plan is not sealed yet: 'campaigns seal {code}' seals it, and 'campaigns test {code}' then tests the experiments that are complete";
+    }
+
     /// <summary>For example "Review 2 of 2026-12-01 09:30 UTC: 3 of 10 tested experiments survive, in a family of 12".</summary>
     public static string Line(ReviewHead review) => FormattableString.Invariant(
         $"Review {review.Number} of {review.At:yyyy-MM-dd HH:mm} UTC: {review.SurvivorCount} of {review.TestedCount} tested experiments survive, in a family of {review.FamilySize}{(review.IsInterim ? " (interim: tested experiments only)" : "")}");

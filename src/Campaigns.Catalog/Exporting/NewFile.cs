@@ -83,6 +83,13 @@ public static class NewFile
             throw new RefusedException($"'{file}' is a folder; name a file.");
         }
 
+        if (Path.GetDirectoryName(Path.GetFullPath(file)) is { } folder && !Directory.Exists(folder))
+        {
+            throw new RefusedException(File.Exists(folder)
+                ? $"'{file}' could not be written: '{folder}' is a file and no folder; name another place."
+                : $"'{file}' could not be written: there is no folder '{folder}'; make it, or name another place.");
+        }
+
         if (!force && (File.Exists(file) || new FileInfo(file).LinkTarget is not null))
         {
             throw new RefusedException($"'{file}' exists; nothing was written. Name another file, or say --force to take its place.");

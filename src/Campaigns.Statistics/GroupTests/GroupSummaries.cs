@@ -49,12 +49,19 @@ public static class GroupSummaries
 
         WideReal variance = moments.CountTimesSquaredDeviations(group) / n / (n - 1);
         WideReal error = WideReal.Sqrt(variance / n) * unit;
+        double standardError = error.ToDouble();
+        if (standardError == 0)
+        {
+            // Student's t has nothing to scale: an interval without any width would claim that the mean is known exactly.
+            return new GroupSummary(n, mean.ToDouble(), 0, 0, null, null);
+        }
+
         WideReal half = error * WideReal.From(StudentT.TwoSidedQuantile(1 - confidence, n - 1));
         return new GroupSummary(
             n,
             mean.ToDouble(),
             (WideReal.Sqrt(variance) * unit).ToDouble(),
-            error.ToDouble(),
+            standardError,
             (mean - half).ToDouble(),
             (mean + half).ToDouble());
     }

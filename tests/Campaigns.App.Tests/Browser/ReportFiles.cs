@@ -1,6 +1,7 @@
 using System.Globalization;
 using System.Text;
 using Campaigns.App.Tests.Commands;
+using Campaigns.App.Tests.Report;
 
 namespace Campaigns.App.Tests.Browser;
 
@@ -18,7 +19,8 @@ public sealed class ReportFiles : IDisposable
             _place.Run("run", Path.Combine(Workplace.Repository(), "campaigns", folder)).Well();
         }
 
-        foreach (string code in new[] { Demo, Odd, "nist-one-way", "published-classics", "published-designs" })
+        _place.Run("run", ManySurvivors.Folder(_place)).Well();
+        foreach (string code in new[] { "many", Demo, Odd, "nist-one-way", "published-classics", "published-designs" })
         {
             // As many experiments in full as tell all kinds of content apart: every one would make each look at the page slower.
             _place.Run("report", code, "--most", "12", "--out", FileOf(code)).Well();

@@ -101,6 +101,8 @@ public sealed class ReportLayoutTests(Chromium browser, ReportFiles reports)
     [InlineData(ReportFiles.Demo, "A4")]
     [InlineData(ReportFiles.Demo, "Letter")]
     [InlineData(ReportFiles.Odd, "Letter")]
+    [InlineData("many", "A4")]
+    [InlineData("many", "Letter")]
     [InlineData("nist-one-way", "Letter")]
     [InlineData("published-classics", "Letter")]
     [InlineData("published-designs", "Letter")]

@@ -186,6 +186,16 @@ public sealed class CampaignFigureTests
     }
 
     [Fact]
+    public void Lines_of_comparisons_differ_in_form_in_the_legend()
+    {
+        CampaignStanding standing = SampleCampaign.Standing(SampleCampaign.Family, "bh", withoutResult: 0);
+        Strokes[] lines = [.. ComparisonsFigure.Of(standing, SampleCampaign.Detail(standing.Experiments[1])).Plot!.Series.OfType<Strokes>()];
+        Assert.Equal(LegendForm.Upright, lines.Single(l => l.Title == "no difference").Form);
+        Assert.Equal(LegendForm.Capped, lines.Single(l => l.Title == "simultaneous interval").Form);
+        Assert.Equal(lines.Length, lines.Select(l => l.Form).Distinct().Count());
+    }
+
+    [Fact]
     public void A_campaign_without_results_has_sentences_in_place_of_pictures()
     {
         CampaignStanding none = SampleCampaign.Standing(5, "bh", status: _ => ExperimentStatus.Planned);

@@ -49,7 +49,10 @@ public sealed class ReportFileTests : IDisposable
         Assert.All(new[] { "-journal", "-wal", "-shm" }, ending => Assert.Equal(3, _place.Run("plot", "C", "--out", _place.Catalog + ending, "--force").Code));
         Assert.Equal(before, File.ReadAllBytes(_place.Catalog));
         _place.Run("report", "C", "--out", _place.Folder).Refused(3, "folder");
-        _place.Run("report", "C", "--out", _place.At("nowhere", "c.html")).Refused(3, "nowhere");
+        _place.Run("report", "C", "--out", _place.At("nowhere", "c.html")).Refused(3, "there is no folder", "nowhere", "make it");
+        _place.Run("plot", "C", "--out", _place.At("nowhere", "c.svg")).Refused(3, "there is no folder", "nowhere", "make it");
+        _place.Run("dashboard", "C", "--page", "RANKING", "--picture", _place.At("nowhere", "c.svg")).Refused(3, "there is no folder", "nowhere", "make it");
+        _place.Run("report", "C", "--out", _place.At("campaigns.db", "c.html")).Refused(3, "is a file and no folder");
         _place.Run("report", "C", "--force").Refused(2, "--out");
     }
 
@@ -75,6 +78,23 @@ public sealed class ReportFileTests : IDisposable
         string[] inFull = [.. page.Document.QuerySelectorAll("#in-full h3").Select(h => h.TextContent.Split(':')[0])];
         Assert.Equal(shown.Split(' ', StringSplitOptions.RemoveEmptyEntries), inFull);
         Assert.Equal(["E1", "E2"], page.Table("results", "Results").Column("experiment"));
+    }
+
+    [Theory]
+    [InlineData("risk")]
+    [InlineData("Risk")]
+    [InlineData("RISK")]
+    public void The_name_of_a_page_may_be_typed_in_small_letters_or_capitals(string name) =>
+        Assert.Contains("the page Risk", _place.Run("dashboard", "C", "--page", name, "--picture", _place.At(name + ".svg")).Well().Out, StringComparison.Ordinal);
+
+    [Fact]
+    public void A_terminal_gets_neither_HTML_nor_SVG_but_Markdown()
+    {
+        using Workplace desk = new() { IsTerminal = true };
+        desk.Variables["CAMPAIGNS_CATALOG"] = _place.Catalog;
+        desk.Run("report", "C").Refused(2, "--out", "--format markdown");
+        desk.Run("plot", "C").Refused(2, "--out");
+        Assert.StartsWith("# ", desk.Run("report", "C", "--format", "markdown").Well().Out, StringComparison.Ordinal);
     }
 
     [Fact]

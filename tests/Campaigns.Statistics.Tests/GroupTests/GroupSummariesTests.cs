@@ -22,10 +22,10 @@ public sealed class GroupSummariesTests
     }
 
     [Fact]
-    public void A_constant_group_has_spread_zero_and_its_value_as_interval()
+    public void A_constant_group_has_spread_zero_and_no_interval()
     {
         GroupSummary constant = GroupSummaries.Of(new GroupedSample([1L, 1, 1], 1, [0, 0, 0], 1), 0.99)[0];
-        Assert.Equal(new GroupSummary(3, 0.1, 0, 0, 0.1, 0.1), constant);
+        Assert.Equal(new GroupSummary(3, 0.1, 0, 0, null, null), constant);
     }
 
     [Fact]

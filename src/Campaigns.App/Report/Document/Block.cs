@@ -33,6 +33,10 @@ internal sealed record Paragraph(string Text, Tone Tone = Tone.Plain) : Block;
 /// <param name="Items">A sentence or more each.</param>
 internal sealed record BulletList(IReadOnlyList<string> Items) : Block;
 
+/// <summary>Blocks about one thing, which may stand beside each other where there is room.</summary>
+/// <param name="Blocks">What it holds, in the order in which it is read.</param>
+internal sealed record Panel(IReadOnlyList<Block> Blocks) : Block;
+
 /// <summary>What the reader has to be warned of, set apart from the text.</summary>
 /// <param name="Text">One or more sentences.</param>
 internal sealed record Caution(string Text) : Block;

@@ -29,6 +29,9 @@ internal sealed record TableBlock(string Caption, IReadOnlyList<Column> Columns,
     /// <summary>Place of the column whose "yes" sets a row apart; null for none.</summary>
     public int? SetsApart { get; init; }
 
+    /// <summary>Whether a narrow screen shows each row as a card of its own, everything in sight, instead of scrolling sideways.</summary>
+    public bool AsCards { get; init; }
+
     private static IReadOnlyDictionary<string, string> NoLinks { get; } = new Dictionary<string, string>();
 
     /// <summary>The rows of a command as people see them there, without the columns that only scripts get.</summary>

@@ -23,6 +23,15 @@ internal sealed class HtmlBlocks(TextWriter writer)
             case Paragraph paragraph:
                 writer.Write($"<p{ClassOf(paragraph.Tone)}>{HtmlText.Escape(paragraph.Text)}</p>\n");
                 break;
+            case Panel panel:
+                writer.Write("<div class=\"panel\">\n");
+                foreach (Block inside in panel.Blocks)
+                {
+                    Write(inside);
+                }
+
+                writer.Write("</div>\n");
+                break;
             case BulletList list:
                 Write(list.Items);
                 break;

@@ -10,8 +10,15 @@ internal sealed class HtmlTables(TextWriter writer)
     /// <summary>Rows that fit a sheet of paper together, and are then not parted.</summary>
     private const int SmallTable = 15;
 
+    /// <summary>Lines that fit it together, where texts go on below; and letters of a text that fit a line of its column on paper.</summary>
+    private const int SmallLines = 24;
+    private const int LettersOfColumn = 18;
+
     /// <summary>From so many letters on, a text gets room to run in, rather than standing word below word.</summary>
     private const int WideFrom = 22;
+
+    /// <summary>Up to so many letters, the words of a text stay together: a unit such as "mPa s" is one thing.</summary>
+    private const int BriefTo = 8;
 
     private int _count;
 
@@ -45,9 +52,12 @@ internal sealed class HtmlTables(TextWriter writer)
 
     private static string ClassOf(TableBlock table)
     {
-        string[] classes = [.. table.MaySort ? ["sorts"] : (string[])[], .. table.Rows.Count <= SmallTable ? ["small"] : (string[])[]];
+        string[] classes = [.. table.MaySort ? ["sorts"] : (string[])[], .. IsSmall(table) ? ["small"] : (string[])[], .. table.AsCards ? ["cards"] : (string[])[]];
         return classes.Length == 0 ? "" : $" class=\"{string.Join(' ', classes)}\"";
     }
+
+    private static bool IsSmall(TableBlock table) => table.Rows.Count <= SmallTable
+        && table.Rows.Sum(row => row.Max(cell => cell.Kind == CellKind.Text ? 1 + (cell.AsText.Length / LettersOfColumn) : 1)) <= SmallLines;
 
     private void Heads(TableBlock table)
     {
@@ -68,10 +78,13 @@ internal sealed class HtmlTables(TextWriter writer)
         {
             string plain = TextTable.Text(row[c]);
             string text = HtmlText.Breakable(plain);
-            string kind = table.Columns[c].IsNumeric ? " class=\"n\"" : HtmlText.HasLongWord(plain) ? " class=\"long\"" : plain.Length >= WideFrom ? " class=\"wide\"" : "";
+            string kind = table.Columns[c].IsNumeric ? " class=\"n\"" : HtmlText.HasLongWord(plain) ? " class=\"long\"" : plain.Length >= WideFrom ? " class=\"wide\""
+                : plain.Length <= BriefTo && plain.Contains(' ') ? " class=\"brief\"" : "";
             if (c > 0)
             {
-                writer.Write($"<td{kind}{ValueOf(row[c])}>{text}</td>");
+                // On a card no heading stands above a number, so that it carries its own.
+                string label = table.AsCards && table.Columns[c].IsNumeric ? $" data-label=\"{HtmlText.Escape(table.Columns[c].Heading ?? "")}\"" : "";
+                writer.Write($"<td{kind}{label}{ValueOf(row[c])}>{text}</td>");
                 continue;
             }
 

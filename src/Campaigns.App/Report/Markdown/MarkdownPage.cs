@@ -39,6 +39,13 @@ internal sealed class MarkdownPage
             case Paragraph paragraph:
                 _writer.Write(paragraph.Tone == Tone.Lead ? $"\n**{MarkdownText.Escape(paragraph.Text)}**\n" : $"\n{MarkdownText.Escape(paragraph.Text)}\n");
                 break;
+            case Panel panel:
+                foreach (Block inside in panel.Blocks)
+                {
+                    Write(inside);
+                }
+
+                break;
             case BulletList list:
                 Items(list.Items.Select(MarkdownText.Escape));
                 break;

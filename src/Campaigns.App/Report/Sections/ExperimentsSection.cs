@@ -21,10 +21,7 @@ internal sealed class ExperimentsSection : ReportSection
         yield return new Paragraph(Which(data), Tone.Note);
         foreach (ReportExperiment experiment in data.InFull)
         {
-            foreach (Block block in Of(data.Standing, data.Overview, experiment))
-            {
-                yield return block;
-            }
+            yield return new Panel([.. Of(data.Standing, data.Overview, experiment)]);
         }
     }
 
@@ -54,6 +51,11 @@ internal sealed class ExperimentsSection : ReportSection
             yield return table.WithoutEmptyColumns();
         }
 
+        foreach (Block block in Effects(standing, detail, code))
+        {
+            yield return block;
+        }
+
         if (detail.Analysis.Checks.Count > 0)
         {
             yield return new Paragraph($"{code}: checks of the assumptions ({ExperimentWording.ChecksAreAdvice}; what a quiet one cannot see stands under Methods)");
@@ -76,18 +78,31 @@ internal sealed class ExperimentsSection : ReportSection
         TableBlock.Of($"{code}: table of variation{InUnit(detail.Result, "mean squares in the square of ")}", ExperimentSections.Variation(detail)) with { MaySort = false },
         TableBlock.Of($"{code}: specimens and their readings", ExperimentSections.Specimens(detail) with { Below = [.. ExperimentNotes.Specimens(detail)] }) with { MaySort = false },
         TableBlock.Of($"{code}: test", ExperimentSections.Tests(detail) with { Below = [.. ExperimentNotes.Tests(standing, detail)] }) with { MaySort = false },
-        TableBlock.Of($"{code}: effects", EffectSection.Table(detail) with { Below = [.. ExperimentWording.Effects(standing, detail)] }) with { MaySort = false },
     ];
+
+    /// <summary>The picture of the comparisons comes before the table of effects, so that the two stand side by side where there is room.</summary>
+    private static IEnumerable<Block> Effects(CampaignStanding standing, ExperimentDetail detail, string code)
+    {
+        if (detail.Comparisons.Count > 0)
+        {
+            yield return new FigureBlock(ComparisonsFigure.Of(standing, detail));
+        }
+
+        TableBlock effects = TableBlock.Of($"{code}: effects", EffectSection.Table(detail) with { Below = [.. ExperimentWording.Effects(standing, detail)] }) with { MaySort = false };
+        if (effects.Rows.Count > 0)
+        {
+            yield return effects.WithoutEmptyColumns();
+        }
+    }
 
     private static IEnumerable<Block> Comparisons(CampaignStanding standing, CampaignOverview overview, ExperimentDetail detail)
     {
         if (detail.Comparisons.Count > 0)
         {
-            yield return new FigureBlock(ComparisonsFigure.Of(standing, detail));
             string followUp = FollowUpRegistry.Find(detail.Result.Plan.FollowUp)?.Name ?? detail.Result.Plan.FollowUp;
             yield return TableBlock.Of($"{detail.Result.Plan.Code}: comparisons{InUnit(detail.Result)}, {followUp}", ExperimentSections.Comparisons(detail) with
             {
-                Below = [.. ExperimentWording.Comparisons(overview, [detail.Result.Plan.FollowUp]).Take(1), "What is claimed, and what the selected intervals hold, stands below the figure and under Methods."],
+                Below = [.. ExperimentWording.Comparisons(overview, [detail.Result.Plan.FollowUp]).Take(1), .. SelectedWording.WithoutInterval(detail.Comparisons), "What is claimed, and what the selected intervals hold, stands below the figure and under Methods."],
             }).WithoutEmptyColumns();
         }
     }

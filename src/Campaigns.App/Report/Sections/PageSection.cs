@@ -12,23 +12,23 @@ namespace Campaigns.App.Report.Sections;
 /// <summary>The one page: what survives and by how much, what was risked, what to be careful about. It fits a sheet of paper, whatever the campaign.</summary>
 internal sealed class PageSection : ReportSection
 {
-    private const int MostSurvivors = 8;
     private const int LettersOfTitle = 55;
     private const int LettersOfLead = 80;
     private const double LeadHeight = 1.25;
 
     /// <summary>Lines of headings, notes, caution and record, of the table's frame and of a figure.</summary>
-    private const int FixedLines = 15;
-    private const int TableFrame = 6;
+    private const double FixedLines = 12.5;
+    private const int TableFrame = 5;
     private const int FigureLines = 14;
 
-    /// <summary>Lines that survivors leave to cautions.</summary>
+    /// <summary>Lines that survivors leave to cautions, where these need so many.</summary>
     private const int CautionLines = 9;
     private const int LongestName = 60;
+    private const int LongestPurpose = 380;
     private const int LongestSentence = 760;
     private const int LongestCaution = 330;
-    private const int LettersOfName = 40;
-    private const int LettersOfGroups = 30;
+    private const int LettersOfName = 54;
+    private const int LettersOfGroups = 34;
     private const double RowHeight = 0.86;
     private const double RowFrame = 0.3;
 
@@ -44,6 +44,13 @@ internal sealed class PageSection : ReportSection
         room.Take(FixedLines + (2 * SheetRoom.Of(data.Standing.Campaign.Title, LettersOfTitle)));
         string lead = Shorten(Lead(data), LongestSentence);
         room.Take(SheetRoom.Of(lead, LettersOfLead) * LeadHeight);
+        if (data.Standing.Campaign.Purpose is { Length: > 0 } purpose)
+        {
+            string asked = Shorten($"Purpose: {purpose}", LongestPurpose);
+            room.Take(SheetRoom.Of(asked) + RowFrame);
+            yield return new Paragraph(asked);
+        }
+
         yield return new Paragraph(lead, Tone.Lead);
         string[] risked = [.. Risked(data).Select(s => Shorten(s, LongestSentence))];
         room.Take(risked.Sum(s => SheetRoom.Of(s)));
@@ -69,19 +76,20 @@ internal sealed class PageSection : ReportSection
     private static string Lead(ReportData data) => data.Overview.TestedCount == 0 && data.Survivors.Listed.Count == 0
         ? $"Nothing has a result yet. Goal: {CampaignText.Goal(data.Overview.Campaign)}."
         : data.Survivors.Listed.Count == 0
-            ? FormattableString.Invariant($"None of {data.Overview.TestedCount} tested experiments survives ({CampaignText.Goal(data.Overview.Campaign)}): no difference shown, which is not the same as no difference.")
-            : $"{SurvivorTables.Counted(data.Overview)} survive ({CampaignText.Goal(data.Overview.Campaign)}).";
+            ? FormattableString.Invariant($"None of {Counted.Of(data.Overview.TestedCount, "tested experiment")} survives ({CampaignText.Goal(data.Overview.Campaign)}): no difference shown, which is not the same as no difference.")
+            : $"{SurvivorTables.Counted(data.Overview)} {Counted.Word(data.Overview.SurvivorCount, "survives", "survive")} ({CampaignText.Goal(data.Overview.Campaign)}).";
 
     private static TableBlock Survivors(ReportData data, SheetRoom room)
     {
         room.Take(TableFrame);
+        double kept = Math.Min(CautionLines, CautionsSection.All(data).Sum(c => SheetRoom.Of(Shorten(c, LongestCaution))) + 1);
         List<ExperimentResult> shown = [];
         List<Cell[]> rows = [];
-        foreach (ExperimentResult survivor in data.Survivors.Listed.Take(MostSurvivors))
+        foreach (ExperimentResult survivor in data.Survivors.Listed)
         {
             Cell[] row = Row(data.Survivors, survivor);
             double lines = LinesOf(row);
-            if (rows.Count > 0 && room.Left < lines + CautionLines)
+            if (rows.Count > 0 && room.Left < lines + kept)
             {
                 break;
             }
@@ -93,30 +101,31 @@ internal sealed class PageSection : ReportSection
 
         return new TableBlock(
             shown.Count < data.Overview.SurvivorCount
-                ? FormattableString.Invariant($"What survives, and by how much: the {shown.Count} of {data.Overview.SurvivorCount} with the smallest p; all of them stand under Survivors")
+                ? FormattableString.Invariant($"What survives, and by how much: the {shown.Count} of {data.Overview.SurvivorCount} with the smallest p; the other {data.Overview.SurvivorCount - shown.Count} stand under Survivors")
                 : "What survives, and by how much",
             [
-                new("experiment", "experiment"), new("groups", "largest difference claimed"), new("difference", "difference", true), new("selected_lower", "from", true), new("selected_upper", "to", true),
-                new("unit", "unit"), new("adjusted_p", "adjusted p", true),
+                new("experiment", "experiment"), new("groups", "largest difference claimed"), new("difference", "difference", true), new("unit", "unit"), new("selected_lower", "from", true),
+                new("selected_upper", "to", true), new("adjusted_p", "adjusted p", true),
             ],
             rows)
         {
             Links = shown.Select(e => (Name: NameOf(e), Anchor: Anchors.InFull(data).GetValueOrDefault(e.Plan.Code))).Where(l => l.Anchor is not null).DistinctBy(l => l.Name).ToDictionary(l => l.Name, l => l.Anchor!, StringComparer.Ordinal),
             MaySort = false,
-            Below = ["From, to: the interval of the difference, which accounts for the selection of the survivors; none where the follow-up gives none. Differences of what was selected look larger than they are."],
+            AsCards = true,
+            Below = ["From, to: the interval of the difference, which accounts for the selection of the survivors; none where the follow-up gives none for these two groups, as said under Survivors. Differences of what was selected look larger than they are."],
         };
     }
 
     private static Cell[] Row(SurvivorData survivors, ExperimentResult e)
     {
         Cell named = Cell.Text(NameOf(e));
-        Cell[] ending = [Cell.Text(Shorten(e.Plan.Unit, LongestName)), Cell.P(e.AdjustedP)];
+        Cell unit = Cell.Text(Shorten(e.Plan.Unit, LongestName)), p = Cell.P(e.AdjustedP);
         if (survivors.Leading(e) is { } leading)
         {
             return
             [
-                named, Cell.Text($"{Shorten(leading.GroupB, LongestName)} less {Shorten(leading.GroupA, LongestName)}"), Rounded(leading.Comparison.Difference),
-                Rounded(leading.SelectedInterval?.Lower), Rounded(leading.SelectedInterval?.Upper), .. ending,
+                named, Cell.Text($"{Shorten(leading.GroupB, LongestName)} less {Shorten(leading.GroupA, LongestName)}"), Rounded(leading.Comparison.Difference), unit,
+                Rounded(leading.SelectedInterval?.Lower), Rounded(leading.SelectedInterval?.Upper), p,
             ];
         }
 
@@ -124,8 +133,8 @@ internal sealed class PageSection : ReportSection
         Interval? interval = gap is null ? null : SurvivorData.OfGap(gap, survivors.Comparisons[e.Plan.Code]);
         return
         [
-            named, Cell.Text(gap is null ? null : $"no pair claimed; widest gap: {Shorten(gap.Highest, LongestName)} less {Shorten(gap.Lowest, LongestName)}"), Rounded(gap?.Difference),
-            Rounded(interval?.Lower), Rounded(interval?.Upper), .. ending,
+            named, Cell.Text(gap is null ? null : $"no pair claimed; widest gap: {Shorten(gap.Highest, LongestName)} less {Shorten(gap.Lowest, LongestName)}"), Rounded(gap?.Difference), unit,
+            Rounded(interval?.Lower), Rounded(interval?.Upper), p,
         ];
     }
 
@@ -138,7 +147,7 @@ internal sealed class PageSection : ReportSection
     private static IEnumerable<string> Risked(ReportData data)
     {
         CampaignOverview overview = data.Overview;
-        yield return $"{Capital(CampaignText.Goal(overview.Campaign))}, over {overview.FamilySize.ToString(System.Globalization.CultureInfo.InvariantCulture)} experiments. {RiskTable.Held(overview)}";
+        yield return $"{Capital(CampaignText.Goal(overview.Campaign))}, over {Counted.Of(overview.FamilySize, "experiment")}. {RiskTable.Held(overview)}";
         yield return RiskTable.Sentences(overview)[0];
         if (RiskTable.MayBeFalse(data.Risk) is { Count: > 0 } sentences)
         {

@@ -25,9 +25,9 @@ internal sealed class PlanSection : ReportSection
         [
             new("Goal", Cell.Text(CampaignText.Goal(campaign))),
             new("Level", Cell.Setting(campaign.Level.Value)),
-            new("Correction", Cell.Text(FamilyText.Procedures(campaign))),
-            new("Usual test", Cell.Text(campaign.DefaultTest)),
-            new("Usual follow-up", Cell.Text(campaign.DefaultFollowUp)),
+            new("Correction", Cell.Text(Correction(campaign))),
+            new("Usual test", Cell.Text(KeyWording.Test(campaign.DefaultTest))),
+            new("Usual follow-up", Cell.Text(KeyWording.FollowUp(campaign.DefaultFollowUp))),
             new("Experiments planned", Cell.Whole(data.Plan.Experiments.Count)),
             new("Opened", Cell.Text(Words.Instant(campaign.OpenedAt))),
             new("Sealed", Cell.Text(campaign.SealedAt is { } at ? Words.Instant(at) : "not sealed")),
@@ -49,14 +49,54 @@ internal sealed class PlanSection : ReportSection
         }
     }
 
-    private static TableBlock Plan(ReportData data, Campaign campaign) =>
-        TableBlock.Of(data.Plan.Amendments.Count > 0 ? "The plan as it stands, amendments included" : "The plan", PlanHistory.Plan(data.Plan.Experiments)).WithoutEmptyColumns() with
+    private static string Correction(Campaign campaign) => campaign.JudgedFamilies.Count == 0
+        ? KeyWording.Named(FamilyText.Procedures(campaign), FamilyVerdict.ProcedureOf(campaign).Key)
+        : FamilyText.Procedures(campaign);
+
+    /// <summary>People read the names of procedures; the key stands behind for who types it.</summary>
+    private static RowTable Named(RowTable plan) => plan with
+    {
+        Rows = plan.Rows.Select(row => (Cell[])[.. row.Select((cell, c) => cell.Kind != CellKind.Text ? cell : plan.Columns[c].Name switch
+        {
+            "test" => Cell.Text(KeyWording.Test(cell.AsText)),
+            "follow_up" => Cell.Text(KeyWording.FollowUp(cell.AsText)),
+            _ => cell,
+        })]),
+    };
+
+    /// <summary>A procedure that all experiments share is named once, below the table, and takes no room in it.</summary>
+    private static IEnumerable<(string Column, string Sentence)> Shared(ReportData data)
+    {
+        if (data.Plan.Experiments.Count > 1)
+        {
+            if (data.Plan.Experiments.Select(e => e.Test).Distinct().ToArray() is [string test])
+            {
+                yield return ("test", $"Test of every experiment: {KeyWording.Test(test)}.");
+            }
+
+            if (data.Plan.Experiments.Select(e => e.FollowUp).Distinct().ToArray() is [string followUp])
+            {
+                yield return ("follow_up", $"Follow-up of every experiment: {KeyWording.FollowUp(followUp)}.");
+            }
+        }
+    }
+
+    private static TableBlock Plan(ReportData data, Campaign campaign)
+    {
+        (string Column, string Sentence)[] shared = [.. Shared(data)];
+        TableBlock plan = TableBlock.Of(data.Plan.Amendments.Count > 0 ? "The plan as it stands, amendments included" : "The plan", Named(PlanHistory.Plan(data.Plan.Experiments))).WithoutEmptyColumns();
+        plan = plan.Only([.. plan.Columns.Select(c => c.Name).Where(name => !shared.Any(s => s.Column == name))]);
+        return plan with
         {
             Links = Anchors.InFull(data),
-            Below = data.Plan.Experiments.Count > TableBlock.MostRows ? [ResultsSection.Cut(data.Plan.Experiments.Count, "first in the plan")]
-                : campaign.IsExploratory || data.Plan.Experiments.Count == 0 ? []
-                : ["Empty: the plan says nothing of it. Replicates are values in each group, or specimens where these are recorded."],
+            Below = [.. shared.Select(s => s.Sentence), .. Notes(data, campaign)],
         };
+    }
+
+    private static string[] Notes(ReportData data, Campaign campaign) =>
+        data.Plan.Experiments.Count > TableBlock.MostRows ? [ResultsSection.Cut(data.Plan.Experiments.Count, "first in the plan")]
+        : campaign.IsExploratory || data.Plan.Experiments.Count == 0 ? []
+        : ["Empty: the plan says nothing of it. Replicates are values in each group, or specimens where these are recorded."];
 
     private static IEnumerable<Block> Deviations(ReportData data)
     {
@@ -71,7 +111,9 @@ internal sealed class PlanSection : ReportSection
 
         if (data.Plan.Withdrawals.Count > 0)
         {
-            yield return TableBlock.Of("Experiments withdrawn, and taken in again", WithdrawVerb.Rows(data.Plan.Withdrawals));
+            // On a terminal what stands right is never cut; here nothing is cut, and a time is text.
+            TableBlock withdrawn = TableBlock.Of("Experiments withdrawn, and taken in again", WithdrawVerb.Rows(data.Plan.Withdrawals));
+            yield return withdrawn with { Columns = [.. withdrawn.Columns.Select(c => c.Name == "at" ? c with { IsNumeric = false } : c)] };
         }
 
         if (data.Plan.Exclusions.Count > 0)
