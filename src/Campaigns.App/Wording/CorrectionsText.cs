@@ -8,6 +8,9 @@ internal static class CorrectionsText
     /// <summary>What the view is not for.</summary>
     public const string NeverToChoose = "The sealed correction alone decides what survives; choosing another after seeing this table would undo what a correction is for.";
 
+    /// <summary>The same where there is little room.</summary>
+    public const string NeverToChooseBriefly = "The sealed correction alone decides; choosing another after seeing this table undoes it.";
+
     /// <summary>What hangs on the choice, without its full stop.</summary>
     /// <param name="hanging">Experiments that survive under some corrections of the kind and not under others.</param>
     /// <param name="rate">The kind, in words.</param>

@@ -27,7 +27,7 @@ internal static class ReviewWording
 
     /// <summary>What a review would hold, in a sentence.</summary>
     public static string Foreseen(string code, ReviewHead review) => FormattableString.Invariant(
-        $"Review {review.Number} of {code} will hold: {review.SurvivorCount} of {review.TestedCount} tested experiments survive {review.Correction} at level {review.Level}, in a family of {review.FamilySize}.{(review.IsInterim ? " Interim: only tested experiments are counted." : "")}");
+        $"Review {review.Number} of {code} will hold: {review.SurvivorCount} of {review.TestedCount} tested experiments survive under {ProcedureName(review.Correction)} at level {review.Level}, in a family of {review.FamilySize}.{(review.IsInterim ? " Interim: only tested experiments are counted." : "")}");
 
     /// <summary>Which corrections at which levels the lines of a review belong to, with its number and its date.</summary>
     /// <param name="review">The review.</param>
@@ -43,7 +43,7 @@ internal static class ReviewWording
 
     /// <summary>What a family was on the day of a review.</summary>
     public static string Family(ReviewHead review, FamilyStanding family) => FormattableString.Invariant(
-        $"Review {review.Number}, family {family.Name}: {family.Correction} at {FamilyText.Level(family.Level)}, {family.Size} counted, {family.Tested} tested, {family.Survivors} {(family.Survivors == 1 ? "survives" : "survive")}{(family.IsOpen ? "" : "; closed")}.");
+        $"Review {review.Number}, family {family.Name}: {ProcedureName(family.Correction)} at {FamilyText.Level(family.Level)}, {family.Size} counted, {family.Tested} tested, {family.Survivors} {(family.Survivors == 1 ? "survives" : "survive")}{(family.IsOpen ? "" : "; closed")}.");
 
     /// <summary>What changed between two reviews, in a sentence.</summary>
     public static string Summary(ReviewComparison comparison)
@@ -85,7 +85,7 @@ internal static class ReviewWording
 
     /// <summary>What stands below such a table.</summary>
     public static string Sealed(ReviewComparison comparison) =>
-        $"Level and correction are those of the sealed plan in both: {comparison.After.Head.Correction} at {comparison.After.Head.Level}. A reason is found by judging one review again with one thing as it was in the other.";
+        $"Level and correction are those of the sealed plan in both: {ProcedureName(comparison.After.Head.Correction)} at {comparison.After.Head.Level}. A reason is found by judging one review again with one thing as it was in the other.";
 
     /// <summary>Why an experiment was gained or lost, in a sentence.</summary>
     public static string Why(ReviewDifference difference)
