@@ -12,7 +12,7 @@ public sealed class RiskPage : DashboardPage
 {
     private const int TogetherWidth = 110;
     private const int TogetherHeight = 30;
-    private const int SideWidth = 60;
+    private const int SideWidth = 62;
     private const int LeastBound = 17;
     private static readonly TimeSpan Pause = TimeSpan.FromMilliseconds(20);
     private readonly RiskModel _risk;
@@ -237,7 +237,7 @@ public sealed class RiskPage : DashboardPage
     private TextCanvas PaintBound(int width, int height)
     {
         Begin();
-        return _risk.IsBegun ? BoundPainter.Paint(Model.Marks, Model.Ranking, _isNear, width, height, Glyphs) : OneLine("The bounds are reckoned in a moment.", width, Ink.Open);
+        return _risk.IsBegun ? BoundPainter.Paint(Model.Marks, Model.Ranking, _isNear, width, height, Glyphs, IsTogether ? -1 : Model.SelectedPosition) : OneLine("The bounds are reckoned in a moment.", width, Ink.Open);
     }
 
     private TextCanvas PaintCurve(int width, int height)
