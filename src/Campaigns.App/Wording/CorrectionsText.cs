@@ -16,6 +16,16 @@ internal static class CorrectionsText
     /// <param name="rate">The kind, in words.</param>
     public static string Hanging(int hanging, string rate) => $"Hanging on the choice among those that hold the {rate}: {Counted.Of(hanging, "experiment")}";
 
+    /// <summary>The same without the independence that each of these conditions holds under, too.</summary>
+    /// <param name="dependence">The condition.</param>
+    public static string UnderBriefly(Dependence dependence) => dependence switch
+    {
+        Dependence.Sidak => "Sidak's inequality",
+        Dependence.Simes => "Simes' inequality",
+        Dependence.PositiveRegression => "positive dependence",
+        _ => Under(dependence),
+    };
+
     /// <summary>Under what dependence a procedure is proved, in a phrase.</summary>
     /// <param name="dependence">The condition.</param>
     public static string Under(Dependence dependence) => dependence switch

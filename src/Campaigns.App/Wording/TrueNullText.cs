@@ -9,7 +9,7 @@ internal static class TrueNullText
     public const string Supposes = "Supposes that true nulls spread p evenly, as independent tests do; an estimate, no bound.";
 
     /// <summary>The same where there is little room.</summary>
-    public const string SupposesBriefly = "Supposes independent tests; an estimate, no bound.";
+    public const string SupposesBriefly = "An estimate, for independent tests.";
 
     /// <summary>For example "Storey's estimate of their share (2002), 0.873 (lambda 0.5)"; null without an estimate.</summary>
     /// <param name="share">The estimate that counts.</param>

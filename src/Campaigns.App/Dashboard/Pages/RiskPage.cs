@@ -192,7 +192,7 @@ public sealed class RiskPage : DashboardPage
     {
         _wasOnline = _risk.IsOnline;
         int left = Frame.Width - SideWidth - 1, half = Frame.Height / 2;
-        int bound = _risk.IsOnline ? Math.Max(LeastBound, half) : Frame.Height;
+        int bound = _risk.IsOnline ? Math.Max(LeastBound, half + 4) : Frame.Height;
         Place(_curve, 0, 0, 0, left, half + 2);
         Place(_words, 2, 0, half + 3, left, Frame.Height - half - 3);
         Place(_bound, 1, left + 1, 0, SideWidth, bound);

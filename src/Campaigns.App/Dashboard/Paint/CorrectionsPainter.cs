@@ -66,7 +66,7 @@ public static class CorrectionsPainter
         canvas.Write(KeyColumn, y, row.IsSealed ? row.Key + " (sealed)" : row.Key, ink);
         canvas.WriteRight(CountEnd, y, row.Survivors?.ToString(CultureInfo.InvariantCulture) ?? glyphs.Cut, row.IsSealed ? Ink.Survivor : Ink.Text);
         canvas.Write(RateColumn, y, RateWord(row.Procedure.Controls), ink);
-        canvas.Write(UnderColumn, y, CellText.Fit(CorrectionsText.Under(row.Procedure.ValidUnder), canvas.Width - UnderColumn, glyphs.Cut), Ink.Quiet);
+        canvas.Write(UnderColumn, y, CellText.FirstThatFits(canvas.Width - UnderColumn, glyphs.Cut, CorrectionsText.Under(row.Procedure.ValidUnder), CorrectionsText.UnderBriefly(row.Procedure.ValidUnder)), Ink.Quiet);
     }
 
     // A correction without a letter either is drawn with the sign of the sealed boundary, as the family shown was sealed with it, or has none that depends on rank alone.

@@ -114,10 +114,12 @@ public static class RiskCurvePlot
     {
         Steps(canvas, points, p => p.AtMost, rows, columns, glyphs, glyphs.Explored, glyphs.Explored, Ink.Axis);
         Steps(canvas, points, p => p.AtLeast, rows, columns, glyphs, glyphs.Explored, glyphs.Explored, Ink.Axis);
-        Steps(canvas, points, p => p.Independent, rows, columns, glyphs, glyphs.Across, glyphs.Mean, Ink.Mean);
+        // In plain signs the lines of the curves and of the bounds would look alike.
+        bool isTold = glyphs.Across != glyphs.Explored;
+        Steps(canvas, points, p => p.Independent, rows, columns, glyphs, isTold ? glyphs.Across : glyphs.Mean, glyphs.Mean, Ink.Mean);
         if (points.All(p => p.Corrected is not null))
         {
-            Steps(canvas, points, p => p.Corrected!.Value.AtLeastOne, rows, columns, glyphs, glyphs.Across, glyphs.Survivor, Ink.Survivor);
+            Steps(canvas, points, p => p.Corrected!.Value.AtLeastOne, rows, columns, glyphs, isTold ? glyphs.Across : glyphs.Survivor, glyphs.Survivor, Ink.Survivor);
         }
     }
 

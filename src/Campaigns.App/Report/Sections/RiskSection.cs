@@ -1,8 +1,8 @@
-using Campaigns.App.Wording;
 using Campaigns.App.Commands;
 using Campaigns.App.Figures;
 using Campaigns.App.Output;
 using Campaigns.App.Report.Document;
+using Campaigns.App.Wording;
 
 namespace Campaigns.App.Report.Sections;
 
