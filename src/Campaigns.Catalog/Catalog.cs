@@ -136,6 +136,11 @@ public sealed class Catalog : IDisposable
                 keep: false);
     }
 
+    /// <summary>Demands, inside <see cref="Change"/> or <see cref="Rehearse"/>, that the catalog can be written: work that only reads before it is carried out would else not find out.</summary>
+    /// <remarks>SQLite grants a transaction that may write on a file that cannot be written, and looks no sooner than at the first page. Here that is the header, rewritten with what it holds.</remarks>
+    /// <exception cref="CatalogException">The file or its folder is read-only for this user.</exception>
+    public void DemandWritable() => Run(FormattableString.Invariant($"PRAGMA user_version = {SqliteCatalogFile.SchemaVersion}"));
+
     /// <summary>Writes an entry for the action at hand, after its rows and inside its transaction.</summary>
     internal LedgerHead Record(LedgerAct act)
     {

@@ -66,8 +66,11 @@ internal static class CampaignText
         : FamilyText.Lines(standing);
 
     /// <summary>Lines on experiments that were withdrawn or deviate from their plan; empty where none does.</summary>
-    public static IEnumerable<string> Deviations(CampaignOverview standing)
+    /// <param name="standing">The campaign in figures.</param>
+    /// <param name="steps">How what tells more is named; null for commands.</param>
+    public static IEnumerable<string> Deviations(CampaignOverview standing, StepNames? steps = null)
     {
+        steps ??= StepNames.Commands;
         foreach (string line in WithdrawalText.Lines(standing.Withdrawn, standing.FamilySize))
         {
             yield return line;
@@ -75,12 +78,12 @@ internal static class CampaignText
 
         if (standing.AmendedPlan is { Amendments: > 0 } plan)
         {
-            yield return FormattableString.Invariant($"The sealed plan was amended {(plan.Amendments == 1 ? "once" : Counted.Of(plan.Amendments, "time"))}: {Counted.Of(plan.Added, "experiment")} added, {plan.Changed} changed; 'campaigns show {standing.Campaign.Code}' tells what, who, when and why.");
+            yield return FormattableString.Invariant($"The sealed plan was amended {(plan.Amendments == 1 ? "once" : Counted.Of(plan.Amendments, "time"))}: {Counted.Of(plan.Added, "experiment")} added, {plan.Changed} changed; {steps.PlanChanges(standing.Campaign.Code)} tells what, who, when and why.");
         }
 
         if (standing.AmendedCount > 0)
         {
-            yield return FormattableString.Invariant($"Deviations: {Counted.Of(standing.AmendedCount, "experiment")}. {Counted.Word(standing.AmendedCount, "It", "Each")} received values after it had been tested, had values left out, was withdrawn at some time, was added or changed by an amendment of the sealed plan, or was tested short of its plan; 'campaigns show {standing.Campaign.Code} EXPERIMENT' gives the reason.");
+            yield return FormattableString.Invariant($"Deviations: {Counted.Of(standing.AmendedCount, "experiment")}. {Counted.Word(standing.AmendedCount, "It", "Each")} received values after it had been tested, had values left out, was withdrawn at some time, was added or changed by an amendment of the sealed plan, or was tested short of its plan; {steps.Deviation(standing.Campaign.Code)} gives the reason.");
         }
     }
 
@@ -91,22 +94,26 @@ internal static class CampaignText
     }
 
     /// <summary>Whether the latest review is up to date.</summary>
-    public static string ReviewLine(CampaignOverview standing)
+    /// <param name="standing">The campaign in figures.</param>
+    /// <param name="steps">How what helps is named; null for commands.</param>
+    public static string ReviewLine(CampaignOverview standing, StepNames? steps = null)
     {
-        if (standing.LastReview is not { } review)
+        steps ??= StepNames.Commands;
+        string review = steps.Review(standing.Campaign.Code);
+        if (standing.LastReview is not { } last)
         {
-            return $"No review was taken yet; {ReviewWording.HowToTakeTheFirst(standing)}.";
+            return $"No review was taken yet; {ReviewWording.HowToTakeTheFirst(standing, steps)}.";
         }
 
-        string which = FormattableString.Invariant($"Review {review.Number} of {review.At:yyyy-MM-dd HH:mm} UTC{(review.IsInterim ? " (interim: tested experiments only)" : "")}");
+        string which = FormattableString.Invariant($"Review {last.Number} of {last.At:yyyy-MM-dd HH:mm} UTC{(last.IsInterim ? " (interim: tested experiments only)" : "")}");
         return standing.AwaitingNewTest > 0
-                ? FormattableString.Invariant($"{which} is out of date: {Counted.Of(standing.AwaitingNewTest, "experiment")} {Counted.Word(standing.AwaitingNewTest, "awaits", "await")} a new test, because values were changed after the last one or because of being taken in again; 'campaigns test {standing.Campaign.Code}' and 'campaigns review {standing.Campaign.Code}' take this in.")
+                ? FormattableString.Invariant($"{which} is out of date: {Counted.Of(standing.AwaitingNewTest, "experiment")} {Counted.Word(standing.AwaitingNewTest, "awaits", "await")} a new test, because values were changed after the last one or because of being taken in again; {steps.Test(standing.Campaign.Code)} and {review} take this in.")
             : standing.DecisionsSinceReview > 0
-                ? FormattableString.Invariant($"{which} is out of date: {Counted.Of(standing.DecisionsSinceReview, "decision")} to withdraw experiments, to take them in again or to amend the plan came after it; 'campaigns review {standing.Campaign.Code}' takes a new one.")
+                ? FormattableString.Invariant($"{which} is out of date: {Counted.Of(standing.DecisionsSinceReview, "decision")} to withdraw experiments, to take them in again or to amend the plan came after it; {review} takes a new one.")
             : standing.ResultsSinceReview > 0
-                ? FormattableString.Invariant($"{which} is out of date: {Counted.Of(standing.ResultsSinceReview, "result")} came after it; 'campaigns review {standing.Campaign.Code}' takes a new one.")
-            : review.IsInterim && review.FamilySize != standing.FamilySize
-                ? FormattableString.Invariant($"{which} counted {review.FamilySize} of {standing.FamilySize} hypotheses, these results count all of them; 'campaigns review {standing.Campaign.Code}' takes a review that does.")
+                ? FormattableString.Invariant($"{which} is out of date: {Counted.Of(standing.ResultsSinceReview, "result")} came after it; {review} takes a new one.")
+            : last.IsInterim && last.FamilySize != standing.FamilySize
+                ? FormattableString.Invariant($"{which} counted {last.FamilySize} of {standing.FamilySize} hypotheses, these results count all of them; {review} takes a review that does.")
             : $"{which} holds these results.";
     }
 

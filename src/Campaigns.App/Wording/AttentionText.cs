@@ -11,9 +11,12 @@ internal static class AttentionText
     private const int MostNamed = 20;
 
     /// <summary>A sentence for everything that waits in a campaign; empty where nothing does.</summary>
-    public static IEnumerable<string> Needs(CampaignAttention of)
+    /// <param name="of">What waits.</param>
+    /// <param name="steps">How what helps is named.</param>
+    public static IEnumerable<string> Needs(CampaignAttention of, StepNames steps)
     {
         ArgumentNullException.ThrowIfNull(of);
+        ArgumentNullException.ThrowIfNull(steps);
         string code = of.Overview.Campaign.Code;
         if (of.IsPlanOpen)
         {
@@ -23,19 +26,19 @@ internal static class AttentionText
         if (of.NeverTested > 0)
         {
             string enough = of.Waiting.AsManyAsPlanned == 0
-                ? "none holds as many values as planned, so that 'campaigns test' leaves them alone without --incomplete"
-                : FormattableString.Invariant($"{of.Waiting.AsManyAsPlanned} of them with at least as many values as planned; 'campaigns test {code}' tests those that are complete");
+                ? $"none holds as many values as planned, so that {steps.TestIncomplete.Step} leaves them alone {steps.TestIncomplete.Unless}"
+                : FormattableString.Invariant($"{of.Waiting.AsManyAsPlanned} of them with at least as many values as planned; {steps.Test(code)} tests those that are complete");
             yield return FormattableString.Invariant($"Data not tested: {Counted.Of(of.NeverTested, "experiment")} with data and no test, {enough}.");
         }
 
         if (of.AwaitingNewTest > 0 && of.Overview.LastReview is null)
         {
-            yield return FormattableString.Invariant($"New test awaited by {Counted.Of(of.AwaitingNewTest, "experiment")}, because values were changed after the last one or because of being taken in again; 'campaigns test {code}' runs it.");
+            yield return FormattableString.Invariant($"New test awaited by {Counted.Of(of.AwaitingNewTest, "experiment")}, because values were changed after the last one or because of being taken in again; {steps.Test(code)} runs it.");
         }
 
         if (of.LacksReview || of.IsReviewBehind)
         {
-            yield return CampaignText.ReviewLine(of.Overview);
+            yield return CampaignText.ReviewLine(of.Overview, steps);
         }
 
         foreach (FamilyStanding family in of.Overview.Families.Where(f => !f.IsOpen))
@@ -52,13 +55,15 @@ internal static class AttentionText
     }
 
     /// <summary>What should be known of a campaign though nothing waits for it: deviations, no plan before the data.</summary>
-    public static IEnumerable<string> ToKnow(CampaignOverview overview)
+    /// <param name="overview">The campaign in figures.</param>
+    /// <param name="steps">How what tells more is named.</param>
+    public static IEnumerable<string> ToKnow(CampaignOverview overview, StepNames steps)
     {
         ArgumentNullException.ThrowIfNull(overview);
         return
         [
             .. overview.Campaign.IsExploratory ? [CampaignText.Exploratory] : Array.Empty<string>(),
-            .. CampaignText.Deviations(overview),
+            .. CampaignText.Deviations(overview, steps),
         ];
     }
 
@@ -124,7 +129,7 @@ internal static class AttentionText
             ? [made + "none warns."]
             :
             [
-                made + FormattableString.Invariant($"in {checks.Warning.Count} of them something warns. {char.ToUpperInvariant(ExperimentWording.ChecksAreAdvice[0])}{ExperimentWording.ChecksAreAdvice[1..]}."),
+                made + FormattableString.Invariant($"in {checks.Warning.Count} of them something warns. {Sentence.Start(ExperimentWording.ChecksAreAdvice)}."),
                 .. checks.Warning.Take(MostNamed).Select(w => $"{w.Experiment}: {string.Join(" ", w.Warnings.Select(c => c.Finding.Saw))}"),
                 .. checks.Warning.Count > MostNamed ? [FormattableString.Invariant($"and {checks.Warning.Count - MostNamed} more")] : Array.Empty<string>(),
             ];

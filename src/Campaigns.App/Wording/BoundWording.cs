@@ -9,13 +9,13 @@ internal static class BoundWording
     /// <summary>What the bound is not.</summary>
     public const string NoEstimate = "It is an upper confidence bound on how many are false, no estimate of it; 'at least 0 real' does not mean that nothing is real.";
 
-    /// <summary>For example "marked 7: at least 4 real, at most 3 false (95% confidence)".</summary>
+    /// <summary>For example "marked 7: at least 4 real, at most 3 false (95 % confidence)".</summary>
     /// <param name="bound">The bound.</param>
     /// <param name="confidence">In (0, 1).</param>
     public static string Line(MarkedBound bound, double confidence) =>
         FormattableString.Invariant($"marked {bound.Marked}: at least {bound.RealAtLeast} real, at most {bound.FalseAtMost} false ({ConfidenceText(confidence)} confidence)");
 
-    /// <summary>For example "Of the 14 survivors at most 6 are false (95% confidence)", without a full stop.</summary>
+    /// <summary>For example "Of the 14 survivors at most 6 are false (95 % confidence)", without a full stop.</summary>
     /// <param name="survivors">Survivors, at least one.</param>
     /// <param name="falseAtMost">How many of them are false at most.</param>
     /// <param name="confidence">In (0, 1).</param>
@@ -31,11 +31,17 @@ internal static class BoundWording
         return $"{clause} ({ConfidenceText(confidence)} confidence)";
     }
 
-    /// <summary>For example "95%".</summary>
+    /// <summary>The same where a few cells are lacking, and the marked stand below: "of 7 at least 4 real, at most 3 false (95 % confidence)".</summary>
+    /// <param name="bound">The bound.</param>
+    /// <param name="confidence">In (0, 1).</param>
+    public static string ShortLine(MarkedBound bound, double confidence) =>
+        FormattableString.Invariant($"of {bound.Marked} at least {bound.RealAtLeast} real, at most {bound.FalseAtMost} false ({ConfidenceText(confidence)} confidence)");
+
+    /// <summary>For example "95 %".</summary>
     /// <param name="confidence">In (0, 1).</param>
     public static string ConfidenceText(double confidence) => confidence < 0.99999999
-        ? FormattableString.Invariant($"{100 * confidence:0.######}%")
-        : "more than 99.999999%";
+        ? FormattableString.Invariant($"{100 * confidence:0.######} %")
+        : "more than 99.999999 %";
 
     /// <summary>What the bound rests on where no choice is offered.</summary>
     public const string SimesAlone = "The bound holds if Simes' inequality holds for the true nulls, as it does for independent and for positively dependent experiments (Goeman and Solari 2011).";

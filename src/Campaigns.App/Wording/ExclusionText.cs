@@ -13,7 +13,8 @@ internal static class ExclusionText
 
     /// <summary>What puts a decision in force, in a sentence; null where nothing has to.</summary>
     /// <param name="campaign">The campaign.</param>
-    public static string? Next(Campaign campaign) => campaign.IsSealed
-        ? $"'campaigns test {campaign.Code}' and 'campaigns review {campaign.Code}' put this in force; until then the experiment counts as not tested."
+    /// <param name="steps">How what puts it in force is named; null for commands.</param>
+    public static string? Next(Campaign campaign, StepNames? steps = null) => campaign.IsSealed
+        ? $"{Sentence.Start((steps ?? StepNames.Commands).Test(campaign.Code))} and {(steps ?? StepNames.Commands).Review(campaign.Code)} put this in force; until then the experiment counts as not tested."
         : null;
 }

@@ -68,6 +68,30 @@ internal static class LedgerText
         };
     }
 
+    /// <summary>The same in fewer words, for a list: what was done first, then to what, the campaign last.</summary>
+    public static string ShortDeed(LedgerEntry entry)
+    {
+        ArgumentNullException.ThrowIfNull(entry);
+        string of = entry.Campaign ?? "the catalog";
+        string behind = entry.Subject is { } text ? $" ({text})" : "";
+        return entry.Action switch
+        {
+            LedgerAction.Plan => $"planned experiments of {of}{behind}",
+            LedgerAction.Families => $"families of {of}{behind}",
+            LedgerAction.Amend => $"amended the plan of {of}{behind}",
+            LedgerAction.Load when entry.Subject is { } file => $"loaded {file} into {of}",
+            LedgerAction.Register => $"gave levels in {of}{behind}",
+            LedgerAction.Restream => $"new stream in {of}{behind}",
+            LedgerAction.Test => $"tested {of}{behind}",
+            LedgerAction.Review => $"took a review of {of}{behind}",
+            LedgerAction.Exclude when entry.Subject is { } one => $"left out value {one}, {of}",
+            LedgerAction.Include when entry.Subject is { } one => $"took in value {one} again, {of}",
+            LedgerAction.Withdraw when entry.Subject is { } one => $"withdrew {one}, {of}",
+            LedgerAction.Restore when entry.Subject is { } one => $"took in {one} again, {of}",
+            _ => Deed(entry),
+        };
+    }
+
     /// <summary>A value before and after, in words.</summary>
     public static string Change(LedgerChange change)
     {

@@ -40,7 +40,8 @@ internal static class OnlineText
     /// <summary>The lines under tables of a campaign that is judged as its experiments arrive.</summary>
     /// <param name="overview">The campaign in figures.</param>
     /// <param name="procedure">The procedure that it was sealed with.</param>
-    public static IEnumerable<string> Lines(CampaignOverview overview, OnlineProcedure procedure)
+    /// <param name="steps">How a next step is named; null for commands.</param>
+    public static IEnumerable<string> Lines(CampaignOverview overview, OnlineProcedure procedure, StepNames? steps = null)
     {
         Campaign campaign = overview.Campaign;
         yield return FormattableString.Invariant($"{procedure.Name} at {campaign.Level} decides each experiment when it arrives, at the level that it was given before its p-value was seen; {overview.TestedCount} of {overview.FamilySize} have a result. A decision stands, whatever comes after it. Adjusted p: p x {campaign.Level} / level given. The batch view beside it may change with every experiment and decides nothing.");
@@ -58,7 +59,7 @@ internal static class OnlineText
             yield return $"{SeveralStreams} {Outside}";
         }
 
-        if (Awaiting(overview) is { } awaiting)
+        if (Awaiting(overview, steps) is { } awaiting)
         {
             yield return awaiting;
         }
@@ -66,11 +67,12 @@ internal static class OnlineText
 
     /// <summary>What counts while decided experiments await a new test, in decisions and in reviews; null where none does, or where experiments are not judged as they arrive.</summary>
     /// <param name="overview">The campaign in figures.</param>
-    public static string? Awaiting(CampaignOverview overview)
+    /// <param name="steps">How what tests is named; null for commands.</param>
+    public static string? Awaiting(CampaignOverview overview, StepNames? steps = null)
     {
         int count = overview.AwaitingNewTest;
         return count == 0 || OnlineVerdict.ProcedureOf(overview.Campaign) is null ? null
-            : $"{Counted.Of(count, "decided experiment")} {Counted.Word(count, "awaits", "await")} a new test: decisions, results and survivors keep {Counted.Word(count, "its decision", "their decisions")}, a review counts only what has a result and is without {Counted.Word(count, "it", "them")} until 'campaigns test {overview.Campaign.Code}'.";
+            : $"{Counted.Of(count, "decided experiment")} {Counted.Word(count, "awaits", "await")} a new test: decisions, results and survivors keep {Counted.Word(count, "its decision", "their decisions")}, a review counts only what has a result and is without {Counted.Word(count, "it", "them")} until {(steps ?? StepNames.Commands).Test(overview.Campaign.Code)} tests {Counted.Word(count, "it", "them")}.";
     }
 
     /// <summary>A stream in a sentence without its full stop.</summary>

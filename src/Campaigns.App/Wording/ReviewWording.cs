@@ -13,12 +13,13 @@ internal static class ReviewWording
 {
     /// <summary>What brings a campaign without a review to its first one, in a clause: nothing is reviewed before it is tested.</summary>
     /// <param name="standing">The campaign in figures.</param>
-    public static string HowToTakeTheFirst(CampaignOverview standing)
+    /// <param name="steps">How what helps is named; sealing is done in the shell alone.</param>
+    public static string HowToTakeTheFirst(CampaignOverview standing, StepNames steps)
     {
         string code = standing.Campaign.Code;
-        return standing.TestedCount > 0 ? $"'campaigns review {code}' takes one"
-            : standing.Campaign.IsSealed ? $"nothing has a result yet: 'campaigns test {code}' tests the experiments that are complete"
-            : $"the plan is not sealed yet: 'campaigns seal {code}' seals it, and 'campaigns test {code}' then tests the experiments that are complete";
+        return standing.TestedCount > 0 ? $"{steps.Review(code)} takes one"
+            : standing.Campaign.IsSealed ? $"nothing has a result yet: {steps.Test(code)} tests the experiments that are complete"
+            : $"the plan is not sealed yet: 'campaigns seal {code}' seals it, and {steps.Test(code)} then tests the experiments that are complete";
     }
 
     /// <summary>For example "Review 2 of 2026-12-01 09:30 UTC: 3 of 10 tested experiments survive, in a family of 12".</summary>
@@ -37,7 +38,7 @@ internal static class ReviewWording
 
     /// <summary>What a review would hold, in a sentence.</summary>
     public static string Foreseen(string code, ReviewHead review) => FormattableString.Invariant(
-        $"Review {review.Number} of {code} will hold: {review.SurvivorCount} of {review.TestedCount} tested experiments survive {review.Correction} at level {review.Level}, in a family of {review.FamilySize}.{(review.IsInterim ? " Interim: only tested experiments are counted." : "")}");
+        $"Review {review.Number} of {code} will hold: {review.SurvivorCount} of {review.TestedCount} tested experiments survive under {ProcedureName(review.Correction)} at level {review.Level}, in a family of {review.FamilySize}.{(review.IsInterim ? " Interim: only tested experiments are counted." : "")}");
 
     /// <summary>Which corrections at which levels the lines of a review belong to, with its number and its date.</summary>
     /// <param name="review">The review.</param>
@@ -53,7 +54,7 @@ internal static class ReviewWording
 
     /// <summary>What a family was on the day of a review.</summary>
     public static string Family(ReviewHead review, FamilyStanding family) => FormattableString.Invariant(
-        $"Review {review.Number}, family {family.Name}: {family.Correction} at {FamilyText.Level(family.Level)}, {family.Size} counted, {family.Tested} tested, {family.Survivors} {(family.Survivors == 1 ? "survives" : "survive")}{(family.IsOpen ? "" : "; closed")}.");
+        $"Review {review.Number}, family {family.Name}: {ProcedureName(family.Correction)} at {FamilyText.Level(family.Level)}, {family.Size} counted, {family.Tested} tested, {family.Survivors} {(family.Survivors == 1 ? "survives" : "survive")}{(family.IsOpen ? "" : "; closed")}.");
 
     /// <summary>What changed between two reviews, in a sentence.</summary>
     public static string Summary(ReviewComparison comparison)
@@ -95,7 +96,7 @@ internal static class ReviewWording
 
     /// <summary>What stands below such a table.</summary>
     public static string Sealed(ReviewComparison comparison) =>
-        $"Level and correction are those of the sealed plan in both: {comparison.After.Head.Correction} at {comparison.After.Head.Level}. A reason is found by judging one review again with one thing as it was in the other.";
+        $"Level and correction are those of the sealed plan in both: {ProcedureName(comparison.After.Head.Correction)} at {comparison.After.Head.Level}. A reason is found by judging one review again with one thing as it was in the other.";
 
     /// <summary>Why an experiment was gained or lost, in a sentence.</summary>
     public static string Why(ReviewDifference difference)

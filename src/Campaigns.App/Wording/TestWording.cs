@@ -32,10 +32,21 @@ internal static class TestWording
                 + (includeIncomplete ? "tested all the same, and recorded as tested incomplete." : "left alone, and open to more data.");
         }
 
-        yield return "No result is shown before: whoever tests has decided to test.";
+        if (outlook.ToTest.Count > 0)
+        {
+            yield return "No result is shown before: whoever tests has decided to test.";
+        }
     }
 
+    /// <summary>What comes after a run that tested something, in a sentence.</summary>
+    /// <param name="code">The campaign.</param>
+    /// <param name="steps">How the step is named.</param>
+    public static string Next(string code, StepNames steps) =>
+        $"Results and survivors count this from now on; {steps.Review(code)} takes it into a review.";
+
     /// <summary>The first few codes, and how many more.</summary>
-    public static string Named(IReadOnlyList<string> codes) =>
-        string.Join(", ", codes.Take(MostNamed)) + (codes.Count > MostNamed ? FormattableString.Invariant($" and {codes.Count - MostNamed} more") : "");
+    /// <param name="codes">The codes, or phrases that begin with them.</param>
+    /// <param name="between">What stands between two.</param>
+    public static string Named(IReadOnlyList<string> codes, string between = ", ") =>
+        string.Join(between, codes.Take(MostNamed)) + (codes.Count > MostNamed ? FormattableString.Invariant($" and {codes.Count - MostNamed} more") : "");
 }

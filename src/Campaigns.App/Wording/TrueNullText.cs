@@ -8,11 +8,18 @@ internal static class TrueNullText
     /// <summary>What every estimate of it supposes, and what it is not.</summary>
     public const string Supposes = "Supposes that true nulls spread p evenly, as independent tests do; an estimate, no bound.";
 
+    /// <summary>The same where there is little room.</summary>
+    public const string SupposesBriefly = "An estimate, for independent tests.";
+
+    /// <summary>For example "Storey's estimate of their share (2002), 0.873 (lambda 0.5)"; null without an estimate.</summary>
+    /// <param name="share">The estimate that counts.</param>
+    public static string? Alone(TrueNullShare share) => share.Share is { } known ? FormattableString.Invariant($"Storey's estimate of their share (2002), {known:0.###} ({share.Method})") : null;
+
     /// <summary>For example "Storey's estimate of their share (2002), 0.873 (lambda 0.5); others: 0.9 (bootstrap choice of lambda)"; null without an estimate.</summary>
     /// <param name="share">The estimate that counts.</param>
     /// <param name="others">Estimates by other methods.</param>
-    public static string? Brief(TrueNullShare share, IEnumerable<TrueNullShare> others) => share.Share is { } known
-        ? FormattableString.Invariant($"Storey's estimate of their share (2002), {known:0.###} ({share.Method}); others: {string.Join(", ", others.Select(Other))}")
+    public static string? Brief(TrueNullShare share, IEnumerable<TrueNullShare> others) => Alone(share) is { } alone
+        ? $"{alone}; others: {string.Join(", ", others.Select(Other))}"
         : null;
 
     /// <summary>For example "an estimated share of true nulls of 0.873 (lambda 0.5) among the 40 tested; other estimates: ..."; null without an estimate.</summary>

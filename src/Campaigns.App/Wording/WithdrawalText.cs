@@ -17,10 +17,11 @@ internal static class WithdrawalText
     /// <summary>What puts decisions in force, in a sentence; null where nothing has to.</summary>
     /// <param name="campaign">The campaign.</param>
     /// <param name="decisions">What was decided, at least one.</param>
-    public static string? Next(Campaign campaign, IReadOnlyList<Withdrawal> decisions) => !campaign.IsSealed || !decisions.Any(d => d.HadData) ? null
+    /// <param name="steps">How what puts them in force is named; null for commands.</param>
+    public static string? Next(Campaign campaign, IReadOnlyList<Withdrawal> decisions, StepNames? steps = null) => !campaign.IsSealed || !decisions.Any(d => d.HadData) ? null
         : decisions[0].IsWithdrawn
-            ? $"Results and survivors count this from now on; 'campaigns review {campaign.Code}' takes it into a review."
-            : $"'campaigns test {campaign.Code}' and 'campaigns review {campaign.Code}' put this in force; until then an experiment that was taken in again counts as not tested.";
+            ? $"Results and survivors count this from now on; {(steps ?? StepNames.Commands).Review(campaign.Code)} takes it into a review."
+            : $"{Sentence.Start((steps ?? StepNames.Commands).Test(campaign.Code))} and {(steps ?? StepNames.Commands).Review(campaign.Code)} put this in force; until then an experiment that was taken in again counts as not tested.";
 
     /// <summary>How many experiments are withdrawn and how they count; empty where none is.</summary>
     /// <param name="counts">How many are.</param>

@@ -21,6 +21,34 @@ internal sealed class Completeness
             return values.Count > 0;
         }
 
+        Count(values, groupCount);
+        int full = 0;
+        for (int group = 0; group < groupCount; group++)
+        {
+            full += _counts[group] >= needed ? 1 : 0;
+        }
+
+        return full == groupCount && (groupsArePlanned || groupCount >= 2);
+    }
+
+    /// <summary>How many of the planned replicates are there; more than planned in one group do not make up for another.</summary>
+    /// <param name="values">The experiment's values.</param>
+    /// <param name="groupCount">Groups of the experiment.</param>
+    /// <param name="replicates">Planned replicates in each group.</param>
+    public int Present(ObservationColumns values, int groupCount, int replicates)
+    {
+        Count(values, groupCount);
+        int present = 0;
+        for (int group = 0; group < groupCount; group++)
+        {
+            present += Math.Min(_counts[group], replicates);
+        }
+
+        return present;
+    }
+
+    private void Count(ObservationColumns values, int groupCount)
+    {
         if (_counts.Length < groupCount)
         {
             _counts = new int[groupCount];
@@ -42,13 +70,5 @@ internal sealed class Completeness
                 _counts[groups[i]]++;
             }
         }
-
-        int full = 0;
-        for (int group = 0; group < groupCount; group++)
-        {
-            full += _counts[group] >= needed ? 1 : 0;
-        }
-
-        return full == groupCount && (groupsArePlanned || groupCount >= 2);
     }
 }

@@ -37,7 +37,7 @@ public sealed class ReviewStore(Catalog catalog)
         long? lastRun = families.LastTestRun(stored.Id);
         if (lastRun is null)
         {
-            throw new RefusedException($"Nothing of the campaign '{code}' was tested yet, so there is nothing to review; run 'campaigns test {code}'.");
+            throw new RefusedException($"Nothing of the campaign '{code}' was tested yet, so there is nothing to review; test it first ('campaigns test {code}', in the dashboard key t).");
         }
 
         // An amendment takes a result away, and only a new run, another sign of change, brings one back: the count tells.

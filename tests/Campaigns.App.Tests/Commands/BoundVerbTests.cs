@@ -82,7 +82,7 @@ public sealed class BoundVerbTests : IDisposable
     public void People_read_what_the_bound_is_and_is_not()
     {
         string text = _place.Run("bound", "adhesion-screen", "GS-09", "GS-48").Well().Out.ReplaceLineEndings(" ");
-        Assert.Contains("marked 2: at least 1 real, at most 1 false (95% confidence)", text, StringComparison.Ordinal);
+        Assert.Contains("marked 2: at least 1 real, at most 1 false (95 % confidence)", text, StringComparison.Ordinal);
         Assert.Contains("Marked without a result, counted as p = 1: GS-48.", text, StringComparison.Ordinal);
         Assert.Contains("may be chosen after looking at everything", text, StringComparison.Ordinal);
         Assert.Contains("over all 48 planned experiments", text, StringComparison.Ordinal);

@@ -119,7 +119,7 @@ public sealed class OnlineCampaignTests : IDisposable
         foreach (string command in (string[])["decisions", "results", "survivors", "review"])
         {
             string said = _place.Run(command, "C").Well().Out.Replace('\n', ' ');
-            Assert.Contains("1 decided experiment awaits a new test: decisions, results and survivors keep its decision, a review counts only what has a result and is without it until 'campaigns test C'.", said, StringComparison.Ordinal);
+            Assert.Contains("1 decided experiment awaits a new test: decisions, results and survivors keep its decision, a review counts only what has a result and is without it until 'campaigns test C' tests it.", said, StringComparison.Ordinal);
             Assert.True(command == "review" || said.Contains("withdrawing a survivor afterwards decides by results, and is outside it.", StringComparison.Ordinal), command);
         }
 

@@ -47,7 +47,7 @@ public sealed class ReviewsVerbTests : IDisposable
         Assert.Equal("Between review 1 and review 2: 1 gained, 0 lost, 1 survive in both.\n", ran.Error);
         string table = _place.Run("reviews", "C", "--compare", "1", "2").Well().Out;
         Assert.Contains("with the same verdict and another adjusted p-value: 1.", table.ReplaceLineEndings(" "), StringComparison.Ordinal);
-        Assert.Contains("Level and correction are those of the sealed plan in both: bh at 0.05.", table, StringComparison.Ordinal);
+        Assert.Contains("Level and correction are those of the sealed plan in both: Benjamini-Hochberg at 0.05.", table, StringComparison.Ordinal);
 
         Assert.Contains("Nothing changed between review 2 and review 2", _place.Run("reviews", "C", "--compare", "2", "2").Well().Out, StringComparison.Ordinal);
     }

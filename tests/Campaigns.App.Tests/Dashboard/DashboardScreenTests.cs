@@ -96,7 +96,7 @@ public sealed class DashboardScreenTests
         screen.Press(Key.CursorRight);
         Assert.Contains("lines 1 to", screen.Text, StringComparison.Ordinal);
         screen.Press(Key.PageDown, Key.Esc);
-        Assert.Contains(screen.Lines, l => l.StartsWith("experimen▼", StringComparison.Ordinal));
+        Assert.Contains(screen.Lines, l => l.StartsWith("experiment▼", StringComparison.Ordinal));
         Assert.False(screen.IsStopped);
     }
 
@@ -113,7 +113,7 @@ public sealed class DashboardScreenTests
         Assert.Equal(["▪", " ", "▪"], new[] { 0, 1, 2 }.Select(row => screen.CellsOf(first + row)["experiment".Length]));
         MarkedBound bound = screen.Model.Marks.Bound;
         Assert.Equal(2, bound.Marked);
-        Assert.Contains(FormattableString.Invariant($"marked 2: at least {bound.RealAtLeast} real, at most {bound.FalseAtMost} false (95% confidence)"), screen.Text, StringComparison.Ordinal);
+        Assert.Contains(FormattableString.Invariant($"marked 2: at least {bound.RealAtLeast} real, at most {bound.FalseAtMost} false (95 % confidence)"), screen.Text, StringComparison.Ordinal);
 
         // The last row can still be reached, and the text of the filter takes the key as a letter.
         screen.Press(Key.End);
@@ -176,7 +176,7 @@ public sealed class DashboardScreenTests
         screen.Press(new Key('/')).Type("survives:no").Press(Key.Enter).Turn("Ranking").Press(Key.Home, Key.CursorRight);
         ExperimentResult second = screen.Model.Ranking.At(2);
         Assert.Same(second, screen.Model.Selected);
-        Assert.Contains($"{second.Plan.Code} ◆ rank 2, ", screen.Text, StringComparison.Ordinal);
+        Assert.Contains($"{second.Plan.Code} ◆ survives: rank 2, ", screen.Text, StringComparison.Ordinal);
         screen.Press(Key.Z);
         Assert.Contains("20 of 48", screen.Text, StringComparison.Ordinal);
         screen.Press(Key.Enter);

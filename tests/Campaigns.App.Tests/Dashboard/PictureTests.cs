@@ -102,7 +102,7 @@ public sealed class PictureTests
     public void Ascii_pictures_hold_ascii_alone()
     {
         DashboardModel model = new(SampleCampaign.Source(SampleCampaign.Standing(3)), SampleCampaign.Code, SampleCampaign.Find);
-        string all = RankingPlot.Paint(model.Ranking, 1, false, 80, 20, GlyphSet.Ascii) + RankingPlot.Key(model.Ranking, GlyphSet.Ascii)
+        string all = RankingPlot.Paint(model.Ranking, 1, false, 80, 20, GlyphSet.Ascii) + string.Concat(RankingPlot.Key(model.Ranking, GlyphSet.Ascii))
             + DetailPainter.Paint(model.SelectedDetail()!, model.Standing, model.Heading, 80, GlyphSet.Ascii) + HelpPainter.Paint(model, null, 80)
             + ListPainter.Paint(model, new ListLayout(model.Standing.Experiments), 0, 80, 10, GlyphSet.Ascii);
         Assert.DoesNotContain(all, c => c > '~');

@@ -120,6 +120,7 @@ public sealed class RankingModelTests
         ranking.TurnPointed();
         Assert.Equal(3, ranking.Beside.Count);
         Assert.Null(ranking.Rows.Single(r => r.Key == "hommel").Letter);
+        Assert.Equal("abcdefg", string.Concat(ranking.Rows.Select(r => r.Letter)));
         ranking.Point(-1);
         Assert.Equal("bonferroni", ranking.Rows[ranking.Pointed].Key);
     }

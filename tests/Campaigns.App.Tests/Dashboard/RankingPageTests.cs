@@ -54,13 +54,13 @@ public sealed partial class RankingPageTests
     [Fact]
     public void Every_rank_that_is_pointed_at_reads_back_as_the_models()
     {
-        using TestScreen screen = new(124, 40, _standing);
+        using TestScreen screen = new(128, 40, _standing);
         screen.Turn("Ranking").Press(Key.Home);
         for (int rank = 1; rank <= 12; rank++)
         {
             ExperimentResult e = screen.Model.Ranking.At(rank);
             string boundary = NumberText.Screen(0.05 * rank / 48, 3);
-            Assert.Contains(FormattableString.Invariant($"{e.Plan.Code} {(e.Survives == true ? "◆" : "◇")} rank {rank}, p {NumberText.P(e.P!.Value)}, adjusted {NumberText.P(e.AdjustedP!.Value)}, boundary {boundary}"), screen.Text, StringComparison.Ordinal);
+            Assert.Contains(FormattableString.Invariant($"{e.Plan.Code} {(e.Survives == true ? "◆ survives" : "◇ does not survive")}: rank {rank}, p {NumberText.P(e.P!.Value)}, adjusted {NumberText.P(e.AdjustedP!.Value)}, boundary {boundary}"), screen.Text, StringComparison.Ordinal);
             screen.Press(Key.CursorRight);
         }
     }
@@ -102,8 +102,8 @@ public sealed partial class RankingPageTests
             Golden.Match("ranking-gates-80x24", screen.Text);
         }
 
-        Assert.Contains("late: ! closed, holm at 0.03", screen.Text, StringComparison.Ordinal);
-        Assert.Contains("films: open, holm at 0.03", screen.Text, StringComparison.Ordinal);
+        Assert.Contains(width < 110 ? "late: ! closed, holm at 0.03, 6 of 12 tested, 0 survive" : "late: ! closed, 6/12 tested, 0 survive", screen.Text, StringComparison.Ordinal);
+        Assert.Contains(width < 110 ? "films: open, holm at 0.03" : "films: open, 12/12 tested, 3 survive", screen.Text, StringComparison.Ordinal);
         Assert.Contains("Family 2 of 3, inks", screen.Press(Key.F.WithShift, Key.N).Text, StringComparison.Ordinal);
     }
 
@@ -164,6 +164,6 @@ public sealed partial class RankingPageTests
 
     private static string Joined(TestScreen screen, int width) => string.Join(" ", screen.Lines.Select(l => width > 110 && l.Length > 71 ? l[..71].Trim() : l.Trim()).Where(l => l.Length > 0));
 
-    [GeneratedRegex("exploration, nothing is stored: at 0\\.15 (?<would>[0-9]+) would survive \\(sealed: (?<sealed>[0-9]+) at 0\\.05\\); gained (?<gained>[0-9]+): ")]
+    [GeneratedRegex("exploration, nothing is stored: at 0\\.15 (?<would>[0-9]+) would survive \\(sealed: (?<sealed>[0-9]+) at 0\\.05\\); \\+ gained (?<gained>[0-9]+): ")]
     private static partial Regex Exploration();
 }

@@ -1,4 +1,5 @@
 using System.Globalization;
+using Campaigns.App.Dashboard.Canvas;
 using Campaigns.App.Dashboard.Pages;
 using Campaigns.App.Dashboard.Paint;
 using Campaigns.App.Output;
@@ -33,7 +34,7 @@ public sealed class RiskPageTests
         screen.Turn("Risk").Press(Key.Home);
         foreach (RiskPoint point in source.Risk)
         {
-            string text = string.Join(" ", screen.Lines.Select(l => l.Length > 59 ? l[..59].Trim() : l.Trim()));
+            string text = string.Join(" ", screen.Lines.Select(l => l.Length > 57 ? l[..57].Trim() : l.Trim()));
             Assert.Contains(FormattableString.Invariant($"Test {point.Tests} of {source.Risk.Count}, {point.Experiment.Plan.Code} (p {NumberText.P(point.Experiment.P!.Value)}): risk "), text, StringComparison.Ordinal);
             double shown = double.Parse(text[(text.IndexOf("): risk ", StringComparison.Ordinal) + 8)..].Split(' ')[0], CultureInfo.InvariantCulture);
             Assert.Equal(100 * (1 - Math.Pow(0.95, point.Tests)), shown, 0.0501);
@@ -65,7 +66,39 @@ public sealed class RiskPageTests
             screen.Press(Key.CursorRight);
         }
 
-        Assert.Contains("inequality holds for the true nulls", screen.Text, StringComparison.Ordinal);
+        string notes = string.Join(' ', screen.Lines.Select(l => width < 110 ? l.Trim() : l.Length > 58 ? l[58..].Trim() : ""));
+        Assert.Contains("inequality holds for the true nulls", notes, StringComparison.Ordinal);
+    }
+
+    [Fact]
+    public void The_picture_of_the_marked_names_the_experiment_pointed_at_where_no_other_picture_does()
+    {
+        using TestScreen screen = new(80, 24, SampleCampaigns.Source(_standing));
+        screen.Turn("Risk").Press(Key.Home, Key.N);
+        for (int i = 0; i < 8; i++)
+        {
+            ExperimentResult e = screen.Model.Selected!;
+            int rank = screen.Model.Ranking.RankOf(screen.Model.SelectedPosition);
+            Assert.Contains(FormattableString.Invariant($"▲ {e.Plan.Code}: rank {rank} of 40{(rank > 20 ? " (z shows it)" : "")}, p {NumberText.P(e.P!.Value)}; not marked, m marks it"), screen.Text, StringComparison.Ordinal);
+            Assert.Equal(rank <= 20, screen.Lines.Any(l => l.Contains("└─", StringComparison.Ordinal) && l.Contains('▲', StringComparison.Ordinal)));
+            screen.Press(Key.CursorRight);
+        }
+
+        Assert.Contains("; marked, m takes the mark off", screen.Press(Key.M).Text, StringComparison.Ordinal);
+    }
+
+    [Fact]
+    public void Between_tests_the_risk_is_drawn_as_it_stays()
+    {
+        RiskPoint[] few = [.. SampleCampaigns.Source(_standing).Risk.Take(3)];
+        TextCanvas canvas = RiskCurvePlot.Paint(few, 1, 80, 24, GlyphSet.Full);
+        string[] rows = canvas.ToString().Split('\n');
+        for (int x = 6; x < 79; x++)
+        {
+            Assert.Contains(Enumerable.Range(1, 18), y => canvas.InkAt(x, y) == Ink.Mean);
+        }
+
+        Assert.Equal(3, rows.Take(19).Sum(r => r.Count(c => c == '●')));
     }
 
     [Theory]

@@ -48,6 +48,9 @@ internal sealed class TestScreen : IDisposable
 
     public DashboardModel Model { get; }
 
+    /// <summary>The keys below the page at hand, as many as there are.</summary>
+    public IReadOnlyList<(string Key, string Does)> Footer => _window.FooterKeys;
+
     public bool IsStopped => _window.StopRequested;
 
     public IReadOnlyList<string> Lines

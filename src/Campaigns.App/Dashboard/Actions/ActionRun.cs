@@ -226,7 +226,15 @@ internal sealed class ActionRun : IDisposable
         {
             using Catalog.Catalog catalog = _desk.Open(null);
             catalog.StopOn(cancel);
-            (Preview preview, LedgerHead seen) = catalog.Rehearse(() => Action.Rehearse(new ActionWork(catalog, _campaign, values, cancel) { Report = report }));
+            (Preview preview, LedgerHead seen) = catalog.Rehearse(() =>
+            {
+                if (Action.Changes)
+                {
+                    catalog.DemandWritable();
+                }
+
+                return Action.Rehearse(new ActionWork(catalog, _campaign, values, cancel) { Report = report });
+            });
             return new Finding(preview, seen, []);
         });
     }

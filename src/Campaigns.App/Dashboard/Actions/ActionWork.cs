@@ -1,3 +1,4 @@
+using Campaigns.App.Wording;
 using Campaigns.Catalog;
 
 namespace Campaigns.App.Dashboard.Actions;
@@ -11,6 +12,9 @@ internal sealed record ActionWork(Catalog.Catalog Catalog, string Campaign, Acti
 {
     /// <summary>Told now and then how far the work is.</summary>
     public required Action<WorkProgress> Report { get; init; }
+
+    /// <summary>How sentences name what can be done next: the dialog says it to who has the keys at hand.</summary>
+    public StepNames Steps => StepNames.Keys(Campaign);
 
     /// <summary>What the preview expected to be done; 0 where it did not count.</summary>
     public long Expected { get; init; }

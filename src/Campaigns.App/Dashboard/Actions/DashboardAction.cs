@@ -14,6 +14,9 @@ internal abstract class DashboardAction
     /// <summary>What it does, in a sentence.</summary>
     public abstract string Does { get; }
 
+    /// <summary>Whether it changes the catalog, and so needs the right to.</summary>
+    public virtual bool Changes => true;
+
     /// <summary>What it asks for, filled in as far as what is selected and marked tells.</summary>
     /// <param name="model">What the dashboard shows.</param>
     /// <param name="desk">Where the catalog is opened.</param>

@@ -1,3 +1,4 @@
+using Campaigns.App.Wording;
 using Campaigns.Domain;
 
 namespace Campaigns.App.Dashboard.Actions;
@@ -22,7 +23,7 @@ internal static class DecisionPreview
         if (after.AwaitingNewTest > before.AwaitingNewTest)
         {
             int again = after.AwaitingNewTest - before.AwaitingNewTest;
-            yield return FormattableString.Invariant($"{again} {(again == 1 ? "result falls: its experiment counts" : "results fall: their experiments count")} as not tested, with p = 1, until the test is run again.");
+            yield return FormattableString.Invariant($"{(before.TestedCount > after.TestedCount ? again == 1 ? "1 result falls: its experiment counts" : $"{again} results fall: their experiments count" : $"{Counted.Of(again, "experiment")} {Counted.Word(again, "awaits a new test and counts", "await a new test and count")}")} as not tested, with p = 1, until the test is run again.");
         }
 
         if (before.LastReview is { } review)

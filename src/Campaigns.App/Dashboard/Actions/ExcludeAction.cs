@@ -64,7 +64,7 @@ internal sealed class ExcludeAction : DashboardAction
     public override IReadOnlyList<string> CarryOut(ActionWork work)
     {
         List<string> sentences = [ExclusionText.Recorded(Decide(work)), "The page Experiments shows the test with and without what is left out."];
-        if (ExclusionText.Next(new CampaignStore(work.Catalog).Get(work.Campaign).Campaign) is { } next)
+        if (ExclusionText.Next(new CampaignStore(work.Catalog).Get(work.Campaign).Campaign, work.Steps) is { } next)
         {
             sentences.Add(next);
         }

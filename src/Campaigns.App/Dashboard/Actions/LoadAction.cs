@@ -2,6 +2,8 @@ using Campaigns.App.Commands;
 using Campaigns.App.Dashboard.Model;
 using Campaigns.App.Wording;
 using Campaigns.Catalog.Loading;
+using Campaigns.Catalog.Plans;
+using Campaigns.Catalog.Results;
 
 namespace Campaigns.App.Dashboard.Actions;
 
@@ -42,7 +44,9 @@ internal sealed class LoadAction : DashboardAction
     public override Preview Rehearse(ActionWork work)
     {
         LoadSummary load = Load(work);
-        List<string> sentences = [$"{load.FileName} will be loaded: {LoadWording.Content(load)}.", .. LoadWording.Notices(load)];
+        bool isPlanned = !new CampaignStore(work.Catalog).Get(work.Campaign).Campaign.IsExploratory;
+        LoadOutlook outlook = new LoadOutlookReader(work.Catalog).Read(work.Campaign);
+        List<string> sentences = [$"{load.FileName} will be loaded: {LoadWording.Content(load)}.", .. LoadWording.Outlook(outlook, isPlanned), .. LoadWording.Notices(load)];
         if (load.AmendedExperiments.Count > 0)
         {
             sentences.Add($"An amendment of tested experiments will be recorded, with its reason: {TestWording.Named(load.AmendedExperiments)}. They count as not tested until they are tested again.");
@@ -56,9 +60,14 @@ internal sealed class LoadAction : DashboardAction
     {
         LoadSummary load = Load(work);
         List<string> sentences = [LoadWording.Loaded(load), .. LoadWording.Notices(load)];
-        if (LoadWording.Amended(work.Campaign, load) is { } amended)
+        if (LoadWording.Amended(work.Campaign, load, work.Steps) is { } amended)
         {
             sentences.Add(amended);
+        }
+
+        else
+        {
+            sentences.Add($"{Sentence.Start(work.Steps.Test(work.Campaign))} tests what is complete.");
         }
 
         return sentences;

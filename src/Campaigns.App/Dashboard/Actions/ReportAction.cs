@@ -1,6 +1,7 @@
 using Campaigns.App.Dashboard.Model;
 using Campaigns.App.Report;
 using Campaigns.Catalog.Exporting;
+using Campaigns.Domain;
 
 namespace Campaigns.App.Dashboard.Actions;
 
@@ -10,6 +11,7 @@ internal sealed class ReportAction : DashboardAction
     private const string File = "file";
     private const string Existing = "a file there";
     private const string Kept = "is kept";
+    private const string Replaced = "is replaced";
 
     /// <inheritdoc/>
     public override char Key => 'o';
@@ -21,6 +23,9 @@ internal sealed class ReportAction : DashboardAction
     public override string Does => "Writes everything about the campaign into one file: a page for the manager first, then the full record with figures, methods and the head of the ledger.";
 
     /// <inheritdoc/>
+    public override bool Changes => false;
+
+    /// <inheritdoc/>
     public override IReadOnlyList<ActionField> Fields(DashboardModel model, ActionDesk desk) =>
     [
         new(File, "The file to write: NAME.html for a browser, NAME.md for a notebook. Tab completes.", new SafeFileNames().For(model.Standing.Campaign.Code + ".html"))
@@ -28,14 +33,19 @@ internal sealed class ReportAction : DashboardAction
             IfEmpty = "Into which file? Type its path.",
             Suggest = values => FileNames.That(values[File]),
         },
-        new(Existing, "What becomes of a file of that name: it is kept, and nothing is written, or the report takes its place.", Kept) { Words = [Kept, "is replaced"] },
+        new(Existing, "What becomes of a file of that name: it is kept, and nothing is written, or the report takes its place.", Kept) { Words = [Kept, Replaced] },
     ];
 
     /// <inheritdoc/>
     public override Preview Rehearse(ActionWork work)
     {
         string file = Path.GetFullPath(FileNames.Whole(work.Values[File]));
-        NewFile.Demand(work.Catalog, file, Replaces(work));
+        NewFile.Demand(work.Catalog, file, force: true);
+        if (!Replaces(work) && System.IO.File.Exists(file))
+        {
+            throw new RefusedException($"'{file}' exists; nothing was written. Name another file, or choose '{Replaced}' for '{Existing}'.");
+        }
+
         string folder = Path.GetDirectoryName(file)!;
         string replaced = System.IO.File.Exists(file) ? ", in the place of the one that is there" : "";
         return new Preview(

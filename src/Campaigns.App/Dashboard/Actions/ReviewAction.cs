@@ -67,7 +67,7 @@ internal sealed class ReviewAction : DashboardAction
     {
         var families = ReviewedFamilies.Read(work.Catalog, work.Campaign);
         CampaignOverview overview = new OverviewReader(work.Catalog).Read(new CampaignStore(work.Catalog).Get(work.Campaign));
-        string[] awaiting = OnlineText.Awaiting(overview) is { } line ? [line] : [];
-        return [.. families.Lines, .. families.Warnings, .. awaiting, .. CampaignText.Deviations(overview)];
+        string[] awaiting = OnlineText.Awaiting(overview, work.Steps) is { } line ? [line] : [];
+        return [.. families.Lines, .. families.Warnings, .. awaiting, .. CampaignText.Deviations(overview, work.Steps)];
     }
 }

@@ -37,7 +37,7 @@ internal sealed class TestAction : DashboardAction
     public override IReadOnlyList<string> CarryOut(ActionWork work)
     {
         TestRunSummary summary = new TestRunner(work.Catalog).Run(work.Campaign, TakesIncomplete(work), progress => work.Report(progress with { Total = work.Expected }), work.Cancel);
-        return [TestWording.Summary(work.Campaign, summary)];
+        return summary.Ran ? [TestWording.Summary(work.Campaign, summary), TestWording.Next(work.Campaign, work.Steps)] : [TestWording.Summary(work.Campaign, summary)];
     }
 
     private static bool TakesIncomplete(ActionWork work) => work.Values[Incomplete] != LeftAlone;

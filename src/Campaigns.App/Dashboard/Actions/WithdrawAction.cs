@@ -58,7 +58,7 @@ internal sealed class WithdrawAction : DashboardAction
     {
         IReadOnlyList<Withdrawal> decisions = Decide(work);
         List<string> sentences = [.. decisions.Select(WithdrawalText.Recorded)];
-        if (WithdrawalText.Next(new CampaignStore(work.Catalog).Get(work.Campaign).Campaign, decisions) is { } next)
+        if (WithdrawalText.Next(new CampaignStore(work.Catalog).Get(work.Campaign).Campaign, decisions, work.Steps) is { } next)
         {
             sentences.Add(next);
         }

@@ -72,6 +72,16 @@ public static class CellText
         return width <= 0 ? "" : kept.Append(cut).ToString();
     }
 
+    /// <summary>Of several ways to say the same the first that fits a width; where none does, the last one, cut.</summary>
+    /// <param name="width">Cells at hand.</param>
+    /// <param name="cut">One-cell sign that stands where text was cut.</param>
+    /// <param name="ways">The ways, the fullest first.</param>
+    public static string FirstThatFits(int width, string cut, params IReadOnlyList<string> ways)
+    {
+        ArgumentNullException.ThrowIfNull(ways);
+        return Fit(ways.FirstOrDefault(w => Width(w) <= width) ?? ways[^1], width, cut);
+    }
+
     /// <summary>A text broken at spaces into lines of a width; a longer word is broken anywhere.</summary>
     /// <param name="text">Any text.</param>
     /// <param name="width">Cells of a line, at least 1.</param>

@@ -13,7 +13,7 @@ internal abstract class PopUp : Runnable
     /// <summary>Column of the body's left edge, and cells that the frame takes on either side.</summary>
     protected const int Edge = 2;
 
-    private const int Around = 4;
+    private const int LeastBeside = 10;
     private const int Bars = 2;
     private readonly GlyphSet _glyphs;
     private int _rows;
@@ -110,7 +110,8 @@ internal abstract class PopUp : Runnable
         SetNeedsDraw();
     }
 
-    private int Across(int wanted) => Math.Min(wanted, Room.Width > 40 ? Room.Width - Around : Room.Width);
+    // Of the page beside it only as much is left as can be read: a sliver tells nothing.
+    private int Across(int wanted) => Room.Width < wanted + (2 * LeastBeside) ? Room.Width : wanted;
 
     private int Rows(int width) => _rows = Math.Max(_rows, WantedRows(Math.Max(1, width)));
 

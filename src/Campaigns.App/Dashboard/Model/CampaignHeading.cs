@@ -29,7 +29,7 @@ public sealed class CampaignHeading
         ReviewTrouble = TroubleWith(standing);
         Review = standing.LastReview is not { } review ? "no review stored yet"
             : $"review {Count(review.Number)} of {review.At.UtcDateTime.ToString("yyyy-MM-dd", CultureInfo.InvariantCulture)} " + (ReviewTrouble ?? "is up to date");
-        ShortReview = standing.LastReview is { } last && ReviewTrouble is not null ? $"review {Count(last.Number)} {ReviewTrouble.Replace("out of date", "behind", StringComparison.Ordinal)}" : Review;
+        ShortReview = standing.LastReview is { } last && ReviewTrouble is not null ? $"review {Count(last.Number)} {ReviewTrouble}".Replace(" is out of date:", ":", StringComparison.Ordinal) : standing.LastReview is null ? "no review yet" : Review;
         string stands = correction is OnlineProcedure ? "Each experiment is decided when it arrives, and its decision stands. " : "";
         Meaning = campaign.JudgedFamilies.Count > 0 ? string.Join(" ", [.. FamilyText.Guarantees(standing.Overview), FamilyText.Together(standing.Overview)])
             : correction is not null ? stands + correction.Guarantee

@@ -95,8 +95,8 @@ public sealed class RankingModel(DashboardModel model)
             Ranking ranking = Ranking;
             SignificanceLevel level = Family.Level;
             return ranking.FamilySize == 0 ? []
-                : [.. WithBoundary.Select((c, i) => (Sign: LetterAt(i), Correction: c)).Where(c => _drawn.Contains(c.Correction.Key) && c.Correction.Key != Family.Correction)
-                    .Select(c => (c.Sign, new BoundaryLine(c.Correction, ranking.FamilySize, level)))];
+                : [.. WithBoundary.Where(c => _drawn.Contains(c.Key) && c.Key != Family.Correction && LetterOf(c.Key) is not null)
+                    .Select(c => (LetterOf(c.Key)!, new BoundaryLine(c, ranking.FamilySize, level)))];
         }
     }
 
@@ -193,13 +193,18 @@ public sealed class RankingModel(DashboardModel model)
         }
     }
 
-    private static string LetterAt(int place) => ((char)('a' + place)).ToString();
+    /// <summary>The sign of a boundary: letters follow each other without a gap over the corrections that have one, without the sealed one, whose sign is its own.</summary>
+    private string? LetterOf(string key)
+    {
+        string? sealedKey = Standing.Families.Count > 1 ? null : Family.Correction;
+        int place = Array.FindIndex([.. WithBoundary.Where(c => c.Key != sealedKey)], c => c.Key == key);
+        return place < 0 ? null : ((char)('a' + place)).ToString();
+    }
 
     private CorrectionRow Row(string key, ErrorProcedure procedure, bool isSealed, int? survivors)
     {
-        int place = Array.FindIndex(WithBoundary, c => c.Key == procedure.Key);
         bool isOwn = procedure.Key == Family.Correction;
-        string? letter = isSealed || isOwn || place < 0 ? null : LetterAt(place);
+        string? letter = isSealed || isOwn ? null : LetterOf(procedure.Key);
         return new CorrectionRow(key, procedure, isSealed, letter, letter is not null && _drawn.Contains(procedure.Key), survivors);
     }
 

@@ -103,6 +103,7 @@ public sealed class ExperimentsPage : DashboardPage
         (ListPainter.SurvivalText(true, Glyphs), "survives: its adjusted p-value is at most the level"),
         (ListPainter.SurvivalText(false, Glyphs), "does not survive"),
         (ListPainter.SurvivalText(null, Glyphs), "has no result (the status says why) and counts as p = 1 in the family"),
+        ("! behind a status", "what happened after the test, or not as planned, is told in the experiment's detail"),
         (Glyphs.Marked + " behind a code", "marked by you: " + MarksPainter.Meaning),
         ("numbers", "p with four decimals, below 0.0001 as 3.2e-7; others with four significant digits"),
     ];
@@ -292,7 +293,7 @@ public sealed class ExperimentsPage : DashboardPage
         (_caption.X, _caption.Width, _caption.Height) = (captionX, Math.Max(0, ListWidth - captionX), 1);
         int below = IsWide ? 0 : NoteRows;
         int marks = _hasMarks ? MarksPainter.Rows : 0;
-        (_list.Y, _list.Width, _list.Height) = (1, ListWidth, Dim.Fill(below + marks));
+        (_list.Y, _list.Width, _list.Height) = (1, ListWidth - (IsWide ? 1 : 0), Dim.Fill(below + marks));
         (_marks.Y, _marks.Width, _marks.Height) = (Pos.AnchorEnd(below + MarksPainter.Rows), ListWidth, MarksPainter.Rows);
         (_note.Y, _note.Width, _note.Height) = (Pos.AnchorEnd(NoteRows), Dim.Fill(), NoteRows);
         (_divider.X, _divider.Width, _divider.Height) = (ListWidth, 1, Dim.Fill());

@@ -211,8 +211,8 @@ public sealed class LedgerPage : TwoPartPage
     private TextCanvas PaintCaption(int width, int height)
     {
         TextCanvas canvas = new(width, height);
-        string caption = _ledger.Proving is { } progress ? LedgerSheet.Progress(progress) : _ledger.FilterProblem ?? LedgerList.Caption(_ledger, Model.Standing.Campaign.Code);
-        canvas.Write(0, 0, CellText.Fit(caption, width, Glyphs.Cut), _ledger.FilterProblem is null ? Ink.Quiet : Ink.Warning);
+        IReadOnlyList<string> caption = _ledger.Proving is { } progress ? [LedgerSheet.Progress(progress)] : _ledger.FilterProblem is { } problem ? [problem] : LedgerList.Caption(_ledger, Model.Standing.Campaign.Code);
+        canvas.Write(0, 0, CellText.FirstThatFits(width, Glyphs.Cut, caption), _ledger.FilterProblem is null ? Ink.Quiet : Ink.Warning);
         return canvas;
     }
 

@@ -139,6 +139,9 @@ public sealed class ProgrammePage : TwoPartPage
         base.Dispose(disposing);
     }
 
+    // The text says all of it.
+    private const string Below = " (all: below)";
+
     private TextCanvas PaintCaption(int width, int height)
     {
         TextCanvas canvas = new(width, height);
@@ -147,7 +150,7 @@ public sealed class ProgrammePage : TwoPartPage
         for (int y = 0; y < Math.Min(height, lines.Count); y++)
         {
             bool isCut = y == height - 1 && lines.Count > height;
-            canvas.Write(1, y, isCut ? CellText.Fit(lines[y] + " " + lines[y + 1], width - 2, Glyphs.Cut) : lines[y], waits ? Ink.Warning : Ink.Text);
+            canvas.Write(1, y, isCut ? CellText.Fit(lines[y] + " " + lines[y + 1], width - 2 - Below.Length, Glyphs.Cut) + Below : lines[y], waits ? Ink.Warning : Ink.Text);
         }
 
         return canvas;

@@ -13,7 +13,7 @@ public sealed class RankingPage : PicturesPage
 {
     private const int SideWidth = 48;
     private const int LeastHistogram = 9;
-    private const int LeastCorrections = 18;
+    private const int LeastCorrections = 19;
     private const int MostFamilies = 7;
     private readonly RankingModel _ranking;
     private readonly CanvasView _above;
@@ -226,9 +226,10 @@ public sealed class RankingPage : PicturesPage
             part.Width = left;
         }
 
-        _above.Height = RankingNotes.RowsAbove;
+        int above = RankingNotes.RowsAbove(HasFamilies);
+        _above.Height = above;
         const int Ruler = RankingNotes.RowsBelow + 1, Level = Ruler + RankingNotes.RowsOnLevel;
-        (_plot.Y, _plot.Height) = (RankingNotes.RowsAbove, Dim.Fill(State.IsLevelSaid ? Level : Ruler));
+        (_plot.Y, _plot.Height) = (above, Dim.Fill(State.IsLevelSaid ? Level : Ruler));
         (_onLevel.Y, _onLevel.Height) = (Pos.AnchorEnd(Level), RankingNotes.RowsOnLevel);
         _onLevel.Visible &= State.IsLevelSaid;
         (_ruler.Y, _ruler.Height) = (Pos.AnchorEnd(Ruler), 1);

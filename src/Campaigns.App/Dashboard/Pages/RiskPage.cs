@@ -10,7 +10,7 @@ namespace Campaigns.App.Dashboard.Pages;
 /// <summary>What the campaign has risked test by test, the standing decisions of an online campaign, and at most how many of the marked experiments are false.</summary>
 public sealed class RiskPage : PicturesPage
 {
-    private const int SideWidth = 60;
+    private const int SideWidth = 62;
     private const int LeastBound = 17;
     private static readonly TimeSpan Pause = TimeSpan.FromMilliseconds(20);
     private readonly RiskModel _risk;
@@ -153,7 +153,7 @@ public sealed class RiskPage : PicturesPage
     {
         _wasOnline = _risk.IsOnline;
         int left = Frame.Width - SideWidth - 1, half = Frame.Height / 2;
-        int bound = _risk.IsOnline ? Math.Max(LeastBound, half) : Frame.Height;
+        int bound = _risk.IsOnline ? Math.Max(LeastBound, half + 4) : Frame.Height;
         Place(_curve, 0, 0, 0, left, half + 2);
         Place(_words, 2, 0, half + 3, left, Frame.Height - half - 3);
         Place(_bound, 1, left + 1, 0, SideWidth, bound);
@@ -198,7 +198,7 @@ public sealed class RiskPage : PicturesPage
     private TextCanvas PaintBound(int width, int height)
     {
         Begin();
-        return _risk.IsBegun ? BoundPainter.Paint(Model.Marks, Model.Ranking, _isNear, width, height, Glyphs) : OneLine("The bounds are reckoned in a moment.", width, Ink.Open);
+        return _risk.IsBegun ? BoundPainter.Paint(Model.Marks, Model.Ranking, _isNear, width, height, Glyphs, IsTogether ? -1 : Model.SelectedPosition) : OneLine("The bounds are reckoned in a moment.", width, Ink.Open);
     }
 
     private TextCanvas PaintCurve(int width, int height)

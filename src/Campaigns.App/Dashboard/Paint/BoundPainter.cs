@@ -1,7 +1,9 @@
 using System.Globalization;
 using Campaigns.App.Dashboard.Canvas;
 using Campaigns.App.Dashboard.Model;
+using Campaigns.App.Output;
 using Campaigns.App.Wording;
+using Campaigns.Domain;
 
 namespace Campaigns.App.Dashboard.Paint;
 
@@ -21,13 +23,14 @@ public static class BoundPainter
     /// <param name="width">Cells across.</param>
     /// <param name="height">Rows.</param>
     /// <param name="glyphs">The signs.</param>
-    public static TextCanvas Paint(Marks marks, Ranking ranking, bool isNear, int width, int height, GlyphSet glyphs)
+    /// <param name="pointed">Position of the experiment that the keys act on, where it is to be named here; -1 where another picture names it.</param>
+    public static TextCanvas Paint(Marks marks, Ranking ranking, bool isNear, int width, int height, GlyphSet glyphs, int pointed = -1)
     {
         ArgumentNullException.ThrowIfNull(marks);
         ArgumentNullException.ThrowIfNull(ranking);
         ArgumentNullException.ThrowIfNull(glyphs);
         TextCanvas canvas = new(width, height);
-        canvas.Write(1, 0, CellText.Fit(marks.Count == 0 ? "Nothing is marked; m marks an experiment." : BoundWording.Line(marks.Bound, marks.Confidence), width - 1, glyphs.Cut), Ink.Heading);
+        canvas.Write(1, 0, CellText.FirstThatFits(width - 1, glyphs.Cut, marks.Count == 0 ? ["Nothing is marked; m marks an experiment."] : [BoundWording.Line(marks.Bound, marks.Confidence), BoundWording.ShortLine(marks.Bound, marks.Confidence)]), Ink.Heading);
         canvas.Write(1, 1, CellText.Fit(Named(marks, ranking, glyphs), width - 1, glyphs.Cut), Ink.Text);
         if (ranking.Count == 0)
         {
@@ -36,8 +39,9 @@ public static class BoundPainter
         }
 
         IReadOnlyList<string> notes = CellText.Wrap(Notes(marks, glyphs), Math.Max(20, width - 2));
-        int rows = height - 5 - notes.Count;
-        rows = Math.Min(Math.Max(rows, LeastRows + 2), height - 5);
+        int named = pointed < 0 ? 0 : 1;
+        int rows = height - 5 - named - notes.Count;
+        rows = Math.Min(Math.Max(rows, LeastRows + 2), height - 5 - named);
         if (width < Narrowest || rows < LeastRows)
         {
             canvas.Write(1, 2, "too small to draw", Ink.Quiet);
@@ -45,8 +49,13 @@ public static class BoundPainter
         }
 
         int shown = isNear ? Math.Clamp(2 * ranking.SurvivorCount, Math.Min(FewestRanks, ranking.Count), ranking.Count) : ranking.Count;
-        Draw(canvas, marks, ranking, shown, rows, glyphs);
+        Draw(canvas, marks, ranking, shown, rows, glyphs, ranking.RankOf(pointed));
         int first = rows + 5;
+        if (named > 0)
+        {
+            canvas.Write(1, first++, CellText.Fit(PointedText(marks, ranking, pointed, shown, glyphs), width - 2, glyphs.Cut), Ink.Heading);
+        }
+
         for (int i = 0; i < notes.Count && first + i < height; i++)
         {
             bool isCut = first + i == height - 1 && i < notes.Count - 1;
@@ -56,7 +65,7 @@ public static class BoundPainter
         return canvas;
     }
 
-    private static void Draw(TextCanvas canvas, Marks marks, Ranking ranking, int shown, int rows, GlyphSet glyphs)
+    private static void Draw(TextCanvas canvas, Marks marks, Ranking ranking, int shown, int rows, GlyphSet glyphs, int pointed)
     {
         const int Top = 3;
         int columns = canvas.Width - Left - 1;
@@ -93,6 +102,11 @@ public static class BoundPainter
             canvas.Put(ColumnOf(marks.Bound.Marked), Top + RowOf(marks.Bound.FalseAtMost), glyphs.Marked, Ink.Selected);
         }
 
+        if (pointed > 0 && pointed <= shown)
+        {
+            canvas.Put(ColumnOf(pointed), Top + rows, glyphs.Here, Ink.Selected);
+        }
+
         int ColumnOf(int k) => Left + (shown == 1 ? 0 : (int)Math.Round((k - 1.0) * (columns - 1) / (shown - 1)));
 
         int RowOf(int falseAtMost) => (int)Math.Round((1 - ((double)falseAtMost / highest)) * (rows - 1));
@@ -107,6 +121,15 @@ public static class BoundPainter
 
         IEnumerable<string> names = marks.Positions.Order().Take(MostNamed).Select(i => ranking.Experiment(i).Plan.Code);
         return $"{glyphs.Marked} {string.Join(" ", names)}{(marks.Count > MostNamed ? string.Create(CultureInfo.InvariantCulture, $" and {marks.Count - MostNamed} more") : "")}";
+    }
+
+    private static string PointedText(Marks marks, Ranking ranking, int pointed, int shown, GlyphSet glyphs)
+    {
+        ExperimentResult e = ranking.Experiment(pointed);
+        int rank = ranking.RankOf(pointed);
+        string where = rank == 0 || e.P is not { } p ? e.Status.Sentence()
+            : string.Create(CultureInfo.InvariantCulture, $"rank {rank} of {ranking.Count}{(rank > shown ? " (z shows it)" : "")}, p {NumberText.P(p)}");
+        return $"{glyphs.Here} {e.Plan.Code}: {where}; {(marks.Has(pointed) ? "marked, m takes the mark off" : "not marked, m marks it")}";
     }
 
     private static string Notes(Marks marks, GlyphSet glyphs) =>

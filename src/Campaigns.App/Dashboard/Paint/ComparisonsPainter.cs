@@ -35,6 +35,11 @@ internal static class ComparisonsPainter
         sheet.Blank();
         Figures(sheet, detail.Comparisons);
         Verdicts(sheet, detail.Comparisons);
+        if (HasSelected(detail.Comparisons) && sheet.Width < SelectedWidth)
+        {
+            Selected(sheet, detail.Comparisons);
+        }
+
         foreach (string note in ExperimentWording.Comparisons(standing.Overview, [result.Plan.FollowUp]))
         {
             sheet.Line(note, Ink.Quiet);
@@ -58,7 +63,7 @@ internal static class ComparisonsPainter
 
     private static void Figures(DetailSheet sheet, IReadOnlyList<ExperimentComparison> comparisons)
     {
-        if (sheet.Width >= SelectedWidth && comparisons.Any(c => c.SelectedInterval is not null))
+        if (sheet.Width >= SelectedWidth && HasSelected(comparisons))
         {
             int label = sheet.Width - (7 * NumberWidth);
             sheet.Row(label, "pair", Columns("difference", "lower", "upper", "p", "adjusted p", "sel. lower", "sel. upper"), Ink.Heading);
@@ -97,6 +102,20 @@ internal static class ComparisonsPainter
                 string[] numbers = Numbers(sheet, c);
                 sheet.Marked(Sign(c, sheet.Glyphs), $"{c.GroupB} - {c.GroupA}: {numbers[0]}, from {numbers[1]} to {numbers[2]}, p {numbers[3]}, adjusted {numbers[4]}", InkOf(c));
             }
+        }
+    }
+
+    private static bool HasSelected(IReadOnlyList<ExperimentComparison> comparisons) => comparisons.Any(c => c.SelectedInterval is not null);
+
+    /// <summary>A table of their own for the intervals that pay for the selection, where they find no room beside the others.</summary>
+    private static void Selected(DetailSheet sheet, IReadOnlyList<ExperimentComparison> comparisons)
+    {
+        int label = Math.Max(4, sheet.Width - (2 * NumberWidth));
+        sheet.Blank();
+        sheet.Row(label, "selected intervals", Columns("lower", "upper"), Ink.Heading);
+        foreach (ExperimentComparison c in comparisons.Where(c => c.SelectedInterval is not null))
+        {
+            sheet.Row(label, $"{Sign(c, sheet.Glyphs)} {PairText(c, label - 2, sheet.Glyphs)}", Columns(sheet.Number(c.SelectedInterval?.Lower), sheet.Number(c.SelectedInterval?.Upper)), InkOf(c));
         }
     }
 

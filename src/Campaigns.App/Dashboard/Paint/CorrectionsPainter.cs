@@ -44,35 +44,45 @@ public static class CorrectionsPainter
         canvas.Write(UnderColumn, 1, "under", Ink.Heading);
         for (int i = 0; i < rows.Count; i++)
         {
-            Row(canvas, rows[i], HeaderRows + i, glyphs);
+            Row(canvas, model, rows[i], HeaderRows + i, glyphs);
             if (takesKeys && i == model.Pointed)
             {
                 canvas.InkRow(HeaderRows + i, Ink.Selected);
             }
         }
 
-        Notes(canvas, Note(model, glyphs), HeaderRows + rows.Count, width, height, glyphs);
+        // What the table is not for comes first, and never cut: more is said where there is room for all of it.
+        int first = HeaderRows + rows.Count;
+        string full = Note(model, glyphs, isBrief: false);
+        Notes(canvas, CellText.Wrap(full, Math.Max(20, width - 2)).Count <= height - first ? full : Note(model, glyphs, isBrief: true), first, width, height, glyphs);
         return canvas;
     }
 
-    private static void Row(TextCanvas canvas, CorrectionRow row, int y, GlyphSet glyphs)
+    private static void Row(TextCanvas canvas, RankingModel model, CorrectionRow row, int y, GlyphSet glyphs)
     {
         Ink ink = row.IsSealed ? Ink.Heading : Ink.Text;
-        canvas.Write(1, y, row.IsSealed ? glyphs.Boundary : row.Letter ?? " ", row.IsSealed ? Ink.Boundary : Ink.Text);
+        canvas.Write(1, y, SignOf(row, model, glyphs), row.IsSealed ? Ink.Boundary : Ink.Text);
         canvas.Write(2, y, row.IsDrawn ? glyphs.Marked : " ");
         canvas.Write(KeyColumn, y, row.IsSealed ? row.Key + " (sealed)" : row.Key, ink);
         canvas.WriteRight(CountEnd, y, row.Survivors?.ToString(CultureInfo.InvariantCulture) ?? glyphs.Cut, row.IsSealed ? Ink.Survivor : Ink.Text);
         canvas.Write(RateColumn, y, RateWord(row.Procedure.Controls), ink);
-        canvas.Write(UnderColumn, y, CellText.Fit(CorrectionsText.Under(row.Procedure.ValidUnder), canvas.Width - UnderColumn, glyphs.Cut), Ink.Quiet);
+        canvas.Write(UnderColumn, y, CellText.FirstThatFits(canvas.Width - UnderColumn, glyphs.Cut, CorrectionsText.Under(row.Procedure.ValidUnder), CorrectionsText.UnderBriefly(row.Procedure.ValidUnder)), Ink.Quiet);
     }
 
-    private static string Note(RankingModel model, GlyphSet glyphs)
+    // A correction without a letter either is drawn with the sign of the sealed boundary, as the family shown was sealed with it, or has none that depends on rank alone.
+    private static string SignOf(CorrectionRow row, RankingModel model, GlyphSet glyphs) =>
+        row.IsSealed || row.Key == model.Family.Correction ? glyphs.Boundary : row.Letter ?? glyphs.None;
+
+    private static string Note(RankingModel model, GlyphSet glyphs, bool isBrief)
     {
         CampaignStanding standing = model.Standing;
         string hanging = model.Hanging is { } count ? CorrectionsText.Hanging(count, CampaignText.RateWords(standing.Campaign.ErrorRate)) + ". " : "The others are reckoned in a moment. ";
         string families = standing.Families.Count > 1 ? "Over all families, each at its level and behind its gate. " : "";
         ErrorProcedure pointed = model.Rows[model.Pointed].Procedure;
-        return $"{pointed.Name}: under {CorrectionsText.Under(pointed.ValidUnder)}. {CorrectionsText.NeverToChoose} {hanging}{families}All at the sealed level. A letter is the sign of a boundary, {glyphs.Marked} behind it: drawn.";
+        string under = $"{pointed.Name}: under {CorrectionsText.Under(pointed.ValidUnder)}.";
+        return isBrief
+            ? $"{CorrectionsText.NeverToChooseBriefly} {under}"
+            : $"{under} {CorrectionsText.NeverToChoose} {hanging}{families}All at the sealed level. A letter is the sign of a boundary, {glyphs.Marked} behind it: drawn; {glyphs.None}: no simple one.";
     }
 
     private static void Notes(TextCanvas canvas, string text, int y, int width, int height, GlyphSet glyphs)

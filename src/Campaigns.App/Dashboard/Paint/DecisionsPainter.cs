@@ -17,6 +17,7 @@ public static class DecisionsPainter
     private const int LevelWidth = 10;
     private const int PWidth = 11;
     private const int VerdictWidth = 14;
+    private const int OverlapsWidth = 22;
     private const int ShortestCode = 6;
     private const int LongestCode = 24;
 
@@ -38,7 +39,8 @@ public static class DecisionsPainter
             return canvas;
         }
 
-        int code = Math.Clamp(width - CodeColumn - LevelWidth - PWidth - VerdictWidth - 1, ShortestCode, LongestCode);
+        int verdictWidth = decisions.Any(e => e.Entry!.Overlaps) ? OverlapsWidth : VerdictWidth;
+        int code = Math.Clamp(width - CodeColumn - LevelWidth - PWidth - verdictWidth - 1, ShortestCode, LongestCode);
         int levelEnd = CodeColumn + code + LevelWidth - 1, pEnd = levelEnd + PWidth;
         canvas.WriteRight(PlaceEnd, 1, "place", Ink.Heading);
         canvas.Write(CodeColumn, 1, CellText.Fit("experiment", code, glyphs.Cut), Ink.Heading);

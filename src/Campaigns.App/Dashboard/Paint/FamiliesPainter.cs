@@ -30,14 +30,27 @@ public static class FamiliesPainter
             int place = first + y - HeaderRows;
             FamilyStanding family = families[place];
             bool isShown = place == model.FamilyPlace;
-            canvas.Write(1, y, CellText.Fit(Line(family, isShown, glyphs), width - 1, glyphs.Cut), family.IsOpen ? Ink.Text : Ink.Warning);
+            canvas.Write(1, y, CellText.FirstThatFits(width - 1, glyphs.Cut, Ways(family, isShown, glyphs)), family.IsOpen ? Ink.Text : Ink.Warning);
             if (isShown)
             {
                 canvas.InkRow(y, Ink.Selected);
             }
         }
 
+        Waiting(canvas, model.Family, HeaderRows + families.Count + 1);
         return canvas;
+    }
+
+    // What the family shown waits for, where its row has no room for it and there is some below.
+    private static void Waiting(TextCanvas canvas, FamilyStanding family, int y)
+    {
+        foreach (string line in CellText.Wrap(family.Waits is { } waits ? $"{family.Name} {waits}." : "", Math.Max(20, canvas.Width - 2)))
+        {
+            if (y < canvas.Height)
+            {
+                canvas.Write(1, y++, line, Ink.Warning);
+            }
+        }
     }
 
     /// <summary>The family in a row; null beside all.</summary>
@@ -54,10 +67,13 @@ public static class FamiliesPainter
     private static int FirstOf(RankingModel model, int height) =>
         RowWindow.Follow(0, model.FamilyPlace, model.Standing.Families.Count, height - HeaderRows);
 
-    private static string Line(FamilyStanding family, bool isShown, GlyphSet glyphs)
+    /// <summary>What a family is waiting for, in full where there is room, and the word "closed" alone where there is little.</summary>
+    private static IReadOnlyList<string> Ways(FamilyStanding family, bool isShown, GlyphSet glyphs)
     {
-        string gate = family.IsOpen ? "open" : glyphs.Warns + " closed";
-        return string.Create(CultureInfo.InvariantCulture,
-            $"{(isShown ? glyphs.Marked : " ")} {family.Name}: {gate}, {family.Correction} at {FamilyText.Level(family.Level)}, {family.Tested} of {family.Planned} tested, {family.Survivors} {(family.Survivors == 1 ? "survives" : "survive")}{(family.Waits is { } waits ? "; " + waits : "")}");
+        string name = $"{(isShown ? glyphs.Marked : " ")} {family.Name}: {(family.IsOpen ? "open" : glyphs.Warns + " closed")}";
+        string survive = string.Create(CultureInfo.InvariantCulture, $"{family.Survivors} {(family.Survivors == 1 ? "survives" : "survive")}");
+        string counts = string.Create(CultureInfo.InvariantCulture, $"{family.Correction} at {FamilyText.Level(family.Level)}, {family.Tested} of {family.Planned} tested, {survive}");
+        string few = string.Create(CultureInfo.InvariantCulture, $"{family.Correction} {FamilyText.Level(family.Level)}, {family.Tested}/{family.Planned} tested, {survive}");
+        return [.. family.Waits is { } waits ? [$"{name}, {counts}; {waits}", $"{name}, {few}; {waits}"] : (string[])[], $"{name}, {counts}", $"{name}, {few}", string.Create(CultureInfo.InvariantCulture, $"{name}, {family.Tested}/{family.Planned} tested, {survive}")];
     }
 }

@@ -16,7 +16,7 @@ internal static class GroupsPainter
     public static void Paint(DetailSheet sheet, ExperimentDetail detail)
     {
         string unit = detail.Result.Plan.Unit.Length > 0 ? $" ({detail.Result.Plan.Unit})" : "";
-        sheet.Title($"values by group{unit}, mean and " + NumberText.RoundTrip(Math.Round(detail.Confidence * 100, 6)) + "% interval");
+        sheet.Title($"values by group{unit}, mean and " + NumberText.RoundTrip(Math.Round(detail.Confidence * 100, 6)) + " % interval");
         sheet.Insert(ObservationPlot.Paint(detail.Groups, sheet.Width, sheet.Glyphs));
         sheet.Title("groups" + unit);
         string[]? letters = detail.Analysis.Letters is { } given ? [.. given] : null;

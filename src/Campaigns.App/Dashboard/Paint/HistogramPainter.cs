@@ -29,7 +29,9 @@ public static class HistogramPainter
             return canvas;
         }
 
-        IReadOnlyList<string> notes = CellText.Wrap(Notes(histogram, glyphs), Math.Max(20, width - 2));
+        int across = Math.Max(20, width - 2);
+        IReadOnlyList<string> notes = CellText.Wrap(Notes(histogram, glyphs, isBrief: false), across);
+        notes = notes.Count <= height - 3 - LeastRows ? notes : CellText.Wrap(Notes(histogram, glyphs, isBrief: true), across);
         int rows = Math.Max(LeastRows, height - 3 - notes.Count);
         int cell = (width - Left - 1) / PHistogram.Bars;
         if (cell < 1 || height < 1 + LeastRows + 2)
@@ -101,12 +103,12 @@ public static class HistogramPainter
         canvas.WriteRight(end, rows + 2, "p 1", Ink.Axis);
     }
 
-    private static string Notes(PHistogram histogram, GlyphSet glyphs)
+    private static string Notes(PHistogram histogram, GlyphSet glyphs, bool isBrief)
     {
-        string first = TrueNullText.Brief(histogram.TrueNulls, histogram.Others) is { } share && histogram.ExpectedNulls is { } expected
-            ? $"{glyphs.Explored}{glyphs.Explored} {NumberText.Screen(expected, 3)} a bar: true nulls alone, by {share}. {TrueNullText.Supposes}"
+        string first = (isBrief ? TrueNullText.Alone(histogram.TrueNulls) : TrueNullText.Brief(histogram.TrueNulls, histogram.Others)) is { } share && histogram.ExpectedNulls is { } expected
+            ? $"{glyphs.Explored}{glyphs.Explored} {NumberText.Screen(expected, 3)} a bar: true nulls alone, by {share}. {(isBrief ? TrueNullText.SupposesBriefly : TrueNullText.Supposes)}"
             : histogram.TrueNulls.Reason ?? "";
-        return TrueNullText.Few(histogram.Tested) is { } few ? few + " " + first : first;
+        return TrueNullText.Few(histogram.Tested) is { } few && !isBrief ? few + " " + first : first;
     }
 
     private static string Count(int n) => n.ToString(CultureInfo.InvariantCulture);

@@ -44,6 +44,31 @@ public static class KeysPainter
         return place < 0 ? null : place;
     }
 
+    /// <summary>The one key that stands at a cell: where a name holds two, parted by a stroke or a space, the one clicked; for a word the key that goes on, or the first of two that do different things.</summary>
+    /// <param name="keys">The keys as they were painted.</param>
+    /// <param name="width">Cells across.</param>
+    /// <param name="at">Cell from 0.</param>
+    /// <returns>The name of the key, for example "Right" of "Left/Right"; null beside all.</returns>
+    public static string? NameAt(IReadOnlyList<(string Key, string Does)> keys, int width, int at)
+    {
+        ArgumentNullException.ThrowIfNull(keys);
+        if (KeyAt(keys, width, at) is not { } place)
+        {
+            return null;
+        }
+
+        (int x, string name, _) = Place(keys, width).ElementAt(place);
+        int offset = at - x;
+        char between = name.Length > 1 && name.Contains('/', StringComparison.Ordinal) ? '/' : ' ';
+        string[] parts = name.Length > 1 ? name.Split(between) : [name];
+        if (offset >= name.Length)
+        {
+            return between == '/' ? parts[^1] : parts[0];
+        }
+
+        return parts[name.AsSpan(0, offset).Count(between)];
+    }
+
     private static IEnumerable<(int X, string Key, string Does)> Place(IEnumerable<(string Key, string Does)> keys, int width)
     {
         int x = 1;

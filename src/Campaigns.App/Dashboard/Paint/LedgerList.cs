@@ -40,7 +40,8 @@ public static class LedgerList
             canvas.Write(when, y, entry.At.UtcDateTime.ToString("yyyy-MM-dd HH:mm", CultureInfo.InvariantCulture), Ink.Quiet);
             canvas.Write(who, y, CellText.Fit(entry.By.ActingAs ?? entry.By.Account, WhoWidth, glyphs.Cut));
             string why = entry.Reason is { } reason ? $". Reason: {reason}" : "";
-            canvas.Write(what, y, CellText.Fit(LedgerText.Deed(entry) + why, width - what, glyphs.Cut), entry.Reason is null ? Ink.Text : Ink.Warning);
+            string deed = CellText.Width(LedgerText.Deed(entry)) <= width - what ? LedgerText.Deed(entry) : LedgerText.ShortDeed(entry);
+            canvas.Write(what, y, CellText.Fit(deed + why, width - what, glyphs.Cut), entry.Reason is null ? Ink.Text : Ink.Warning);
             if (top + y - HeaderRows == ledger.Row)
             {
                 canvas.InkRow(y, Ink.Selected);
@@ -58,13 +59,15 @@ public static class LedgerList
     /// <summary>Which row is selected of how many, of what, and in which order.</summary>
     /// <param name="ledger">What is shown.</param>
     /// <param name="campaign">Code of the open campaign.</param>
-    public static string Caption(LedgerModel ledger, string campaign)
+    /// <returns>The ways to say it, the fullest first.</returns>
+    public static IReadOnlyList<string> Caption(LedgerModel ledger, string campaign)
     {
         ArgumentNullException.ThrowIfNull(ledger);
         string rows = ledger.RowCount == 0 ? $"none of {Whole(ledger.EntryCount)} entries shown"
             : ledger.RowCount == ledger.EntryCount ? $"row {Whole(ledger.Row + 1)} of {Whole(ledger.EntryCount)}"
             : $"row {Whole(ledger.Row + 1)} of {Whole(ledger.RowCount)} shown, {Whole(ledger.EntryCount)} in all";
-        return $"{rows}; {(ledger.IsCampaignOnly ? campaign + " alone" : "whole catalog")}, {(ledger.IsOldestFirst ? "oldest" : "newest")} first";
+        string of = ledger.IsCampaignOnly ? campaign + " alone" : "whole catalog", first = ledger.IsOldestFirst ? "oldest first" : "newest first";
+        return [$"{rows}; {of}, {first}", $"{rows}; {of}", rows];
     }
 
     private static string Whole(long n) => n.ToString(CultureInfo.InvariantCulture);

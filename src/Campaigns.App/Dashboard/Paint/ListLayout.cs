@@ -12,10 +12,10 @@ public sealed class ListLayout
 {
     private const int LongestCode = 16;
     private const int ShortestTitle = 6;
-    private const int ShortestStatus = 8;
     private readonly int _code;
     private readonly int _title;
     private readonly int _status;
+    private readonly int _shortStatus;
     private readonly Dictionary<string, int> _fixed;
 
     /// <summary>Measures a campaign.</summary>
@@ -25,7 +25,8 @@ public sealed class ListLayout
         _code = Math.Clamp(Longest(experiments, e => CellText.Width(e.Plan.Code)), "experiment".Length, LongestCode);
         _title = Math.Max("title".Length, Longest(experiments, e => e.Plan.Title.Length));
         ExperimentColumn status = ExperimentColumn.Named("status");
-        _status = Math.Max(ShortestStatus, Longest(experiments, e => status.TextOf(e)!.Length));
+        _status = Math.Max("status".Length, Longest(experiments, e => status.TextOf(e)!.Length));
+        _shortStatus = Math.Max("status".Length, Longest(experiments, e => status.ShortTextOf!(e).Length));
         _fixed = new()
         {
             ["groups"] = "groups".Length,
@@ -39,25 +40,25 @@ public sealed class ListLayout
 
     /// <summary>The columns that a width has room for, with their first cells and widths.</summary>
     /// <param name="width">Cells across.</param>
-    /// <returns>Where there is too little room, the title goes first, then groups and n; what is still too wide ends at the right edge.</returns>
+    /// <returns>Where there is too little room, the title goes first, then groups and n; what is still too wide ends at the right edge. A status column without room for all words takes the short ones.</returns>
     public IReadOnlyList<(ExperimentColumn Column, int X, int Width)> Place(int width)
     {
         HashSet<string> left = [];
         int spare = width - _code - _fixed.Values.Sum() - (ExperimentColumn.All.Count - 1);
-        int title = Math.Min(_title, spare - Math.Min(_status, Math.Max(ShortestStatus, spare / 2)));
+        int title = Math.Min(_title, spare - Math.Min(_status, Math.Max(_shortStatus, spare / 2)));
         if (title < ShortestTitle)
         {
             title = -1;
             foreach (string name in new[] { "groups", "n" })
             {
-                if (spare - title < ShortestStatus && left.Add(name))
+                if (spare - title < _shortStatus && left.Add(name))
                 {
                     spare += _fixed[name] + 1;
                 }
             }
         }
 
-        int status = Math.Clamp(spare - title, ShortestStatus, _status);
+        int status = Math.Clamp(spare - title, _shortStatus, _status);
         List<(ExperimentColumn Column, int X, int Width)> placed = [];
         int x = 0;
         foreach (ExperimentColumn column in ExperimentColumn.All)
@@ -72,6 +73,10 @@ public sealed class ListLayout
 
         return placed;
     }
+
+    /// <summary>Whether every status is written in full where its column has a width.</summary>
+    /// <param name="width">Cells of the column.</param>
+    public bool IsStatusInFull(int width) => width >= _status;
 
     private static int Longest(IReadOnlyList<ExperimentResult> experiments, Func<ExperimentResult, int> length)
     {

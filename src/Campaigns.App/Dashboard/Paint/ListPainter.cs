@@ -26,8 +26,12 @@ public static class ListPainter
         {
             bool isSorted = column == model.SortColumn;
             string mark = model.IsFalling ? glyphs.Falling : glyphs.Rising;
-            string name = column.Name[..Math.Min(column.Name.Length, isSorted ? w - 1 : w)];
-            Cell(canvas, column, x, w, 0, isSorted ? name + mark : name, Ink.Heading);
+            Cell(canvas, column, x, w, 0, column.Name[..Math.Min(column.Name.Length, w)], Ink.Heading);
+            if (isSorted)
+            {
+                // On the side to which the name is not aligned: where it fills its column, in the gap.
+                canvas.Put(column.IsRightAligned ? x + w - 1 - column.Name.Length : x + column.Name.Length, 0, mark, Ink.Heading);
+            }
         }
 
         if (model.RowCount == 0)
@@ -39,7 +43,7 @@ public static class ListPainter
         for (int y = HeaderRows; y < height && top + y - HeaderRows < model.RowCount; y++)
         {
             int row = top + y - HeaderRows;
-            Row(canvas, columns, model.RowAt(row), y, glyphs);
+            Row(canvas, columns, layout, model.RowAt(row), y, glyphs);
             if (model.Marks.Has(model.PositionAt(row)))
             {
                 // In the gap behind the code.
@@ -85,12 +89,14 @@ public static class ListPainter
         null => glyphs.Open + " " + glyphs.None,
     };
 
-    private static void Row(TextCanvas canvas, IReadOnlyList<(ExperimentColumn Column, int X, int Width)> columns, ExperimentResult e, int y, GlyphSet glyphs)
+    private static void Row(TextCanvas canvas, IReadOnlyList<(ExperimentColumn Column, int X, int Width)> columns, ListLayout layout, ExperimentResult e, int y, GlyphSet glyphs)
     {
         foreach ((ExperimentColumn column, int x, int w) in columns)
         {
             bool isSurvival = column.Name == "survives";
-            string text = isSurvival ? SurvivalText(e.Survives, glyphs) : column.TextOf(e) ?? glyphs.None;
+            string text = isSurvival ? SurvivalText(e.Survives, glyphs)
+                : column.ShortTextOf is { } shortly && !layout.IsStatusInFull(w) ? shortly(e)
+                : column.TextOf(e) ?? glyphs.None;
             Ink ink = column.Name == "status" && e.Amendments.Count > 0 ? Ink.Warning
                 : isSurvival && e.Survives == true ? Ink.Survivor
                 : e.Survives is null && column.Name is not ("experiment" or "title") ? Ink.Open

@@ -31,9 +31,9 @@ public static class ProgrammeSheet
         {
             Campaign campaign = selected.Overview.Campaign;
             sheet.Line(campaign.Title.Length > 0 ? $"{campaign.Code}: {campaign.Title}" : campaign.Code, Ink.Heading);
-            Attention(sheet, selected);
+            Attention(sheet, selected, StepNames.Keys(programme.OpenCampaign));
             Checks(sheet, programme, selected.Overview);
-            foreach (string sentence in AttentionText.ToKnow(selected.Overview))
+            foreach (string sentence in AttentionText.ToKnow(selected.Overview, StepNames.Keys(programme.OpenCampaign)))
             {
                 sheet.Marked(glyphs.Between, sentence, Ink.Text);
             }
@@ -63,9 +63,9 @@ public static class ProgrammeSheet
     /// <param name="progress">How far they are.</param>
     public static string Progress(WorkProgress progress) => FormattableString.Invariant($"{progress.What}: {progress.Done} of {progress.Total} {progress.Unit}; Esc stops");
 
-    private static void Attention(DetailSheet sheet, CampaignAttention selected)
+    private static void Attention(DetailSheet sheet, CampaignAttention selected, StepNames steps)
     {
-        string[] needs = [.. AttentionText.Needs(selected)];
+        string[] needs = [.. AttentionText.Needs(selected, steps)];
         foreach (string sentence in needs)
         {
             sheet.Marked(sheet.Glyphs.Warns, sentence, Ink.Warning);

@@ -12,7 +12,8 @@ namespace Campaigns.App.Dashboard.Paint;
 public static class RankingNotes
 {
     /// <summary>Rows above the picture.</summary>
-    public const int RowsAbove = 3;
+    /// <param name="hasFamilies">Whether the campaign has several families: the one shown takes a row.</param>
+    public static int RowsAbove(bool hasFamilies) => hasFamilies ? 4 : 3;
 
     /// <summary>Rows between the picture and the row of levels, where there is something to say of another level.</summary>
     public const int RowsOnLevel = 2;
@@ -32,17 +33,23 @@ public static class RankingNotes
     {
         ArgumentNullException.ThrowIfNull(model);
         ArgumentNullException.ThrowIfNull(glyphs);
-        TextCanvas canvas = new(width, RowsAbove);
         FamilyStanding family = model.Family;
         bool hasFamilies = model.Standing.Families.Count > 1;
+        TextCanvas canvas = new(width, RowsAbove(hasFamilies));
         string assumes = procedure is null ? "" : $"{procedure.Name} {CampaignHeading.DependenceWords(procedure.ValidUnder)}.";
         string gate = family.IsOpen ? "" : $" ({glyphs.Warns} closed: none survives)";
-        string which = string.Create(CultureInfo.InvariantCulture, $"Family {model.FamilyPlace + 1} of {model.Standing.Families.Count}, {family.Name}{gate}, level {FamilyText.Level(family.Level)}. {assumes}");
+        string which = string.Create(CultureInfo.InvariantCulture, $"Family {model.FamilyPlace + 1} of {model.Standing.Families.Count}, {family.Name}{gate}, level {FamilyText.Level(family.Level)}.");
         string boundary = RankingPlot.BoundaryText(model.Ranking);
         string beside = string.Join(", ", model.Beside.Select(b => $"{b.Sign} {b.Line.Correction.Key}"));
-        Line(0, hasFamilies ? which : boundary, !family.IsOpen ? Ink.Warning : hasFamilies ? Ink.Heading : Ink.Boundary);
-        Line(1, hasFamilies ? boundary : assumes, hasFamilies ? Ink.Boundary : Ink.Quiet);
-        Line(2, beside.Length == 0 ? "" : "Beside it, deciding nothing: " + beside, Ink.Quiet);
+        if (hasFamilies)
+        {
+            Line(0, which, family.IsOpen ? Ink.Heading : Ink.Warning);
+        }
+
+        int first = canvas.Height - 3;
+        Line(first, boundary, family.IsOpen ? Ink.Boundary : Ink.Warning);
+        Line(first + 1, assumes, Ink.Quiet);
+        canvas.Write(1, first + 2, beside.Length == 0 ? "" : CellText.FirstThatFits(width - 1, glyphs.Cut, "Beside it, deciding nothing: " + beside, "Deciding nothing: " + beside), Ink.Quiet);
         return canvas;
 
         void Line(int y, string text, Ink ink) => canvas.Write(1, y, CellText.Fit(text, width - 1, glyphs.Cut), ink);
@@ -57,7 +64,7 @@ public static class RankingNotes
         ArgumentNullException.ThrowIfNull(model);
         ArgumentNullException.ThrowIfNull(glyphs);
         TextCanvas canvas = new(width, RowsOnLevel);
-        string level = model.Exploration is { } explored ? ExplorationText(model, explored) : model.WhyNoExploration ?? "";
+        string level = model.Exploration is { } explored ? ExplorationText(model, explored, glyphs) : model.WhyNoExploration ?? "";
         IReadOnlyList<string> lines = CellText.Wrap(level, Math.Max(20, width - 2));
         for (int i = 0; i < Math.Min(RowsOnLevel, lines.Count); i++)
         {
@@ -78,21 +85,23 @@ public static class RankingNotes
         ArgumentNullException.ThrowIfNull(model);
         ArgumentNullException.ThrowIfNull(glyphs);
         TextCanvas canvas = new(width, RowsBelow);
-        canvas.Write(1, 0, CellText.Fit(RankingPlot.Key(model.Ranking, glyphs, RankingOverlay.Of(model)), width - 1, glyphs.Cut), Ink.Quiet);
-        canvas.Write(1, 1, CellText.Fit(SelectedText(model, selected, glyphs), width - 1, glyphs.Cut), Ink.Heading);
+        canvas.Write(1, 0, CellText.FirstThatFits(width - 1, glyphs.Cut, RankingPlot.Key(model.Ranking, glyphs, RankingOverlay.Of(model))), Ink.Quiet);
+        canvas.Write(1, 1, CellText.FirstThatFits(width - 1, glyphs.Cut, SelectedText(model, selected, glyphs)), Ink.Heading);
         return canvas;
     }
 
-    /// <summary>What another level would change, for example "exploration, nothing is stored: at 0.1 12 would survive (sealed: 8 at 0.05); gained 4: E7 ...; lost none".</summary>
+    /// <summary>What another level would change, for example "exploration, nothing is stored: at 0.1 12 would survive (sealed: 8 at 0.05); + gained 4: E7 ...; ◈ lost none".</summary>
     /// <param name="model">The page's model.</param>
     /// <param name="explored">The level.</param>
-    public static string ExplorationText(RankingModel model, LevelExploration explored)
+    /// <param name="glyphs">The signs: those of gained and lost stand in the picture.</param>
+    public static string ExplorationText(RankingModel model, LevelExploration explored, GlyphSet glyphs)
     {
         ArgumentNullException.ThrowIfNull(model);
         ArgumentNullException.ThrowIfNull(explored);
+        ArgumentNullException.ThrowIfNull(glyphs);
         CampaignStanding standing = model.Standing;
         return string.Create(CultureInfo.InvariantCulture,
-            $"{NothingStored}: at {explored.Level} {explored.SurvivorCount} would survive (sealed: {standing.SurvivorCount} at {standing.Campaign.Level}); gained {Named(standing, explored.Gained)}; lost {Named(standing, explored.Lost)}");
+            $"{NothingStored}: at {explored.Level} {explored.SurvivorCount} would survive (sealed: {standing.SurvivorCount} at {standing.Campaign.Level}); {glyphs.Gained} gained {Named(standing, explored.Gained)}; {glyphs.Lost} lost {Named(standing, explored.Lost)}");
     }
 
     private static string Named(CampaignStanding standing, HashSet<int> positions)
@@ -107,22 +116,24 @@ public static class RankingNotes
         return string.Create(CultureInfo.InvariantCulture, $"{positions.Count}: {names}{(positions.Count > Most ? " ..." : "")}");
     }
 
-    private static string SelectedText(RankingModel model, ExperimentResult? selected, GlyphSet glyphs)
+    /// <summary>The selected experiment; the verdict comes first, and the boundary is given up before it: the picture shows it.</summary>
+    private static IReadOnlyList<string> SelectedText(RankingModel model, ExperimentResult? selected, GlyphSet glyphs)
     {
         if (selected is null)
         {
-            return "";
+            return [""];
         }
 
         if (model.Rank == 0 || selected.P is not { } p || selected.AdjustedP is not { } adjusted)
         {
-            return $"{selected.Plan.Code}: {selected.Status.Sentence()}";
+            return [$"{selected.Plan.Code}: {selected.Status.Sentence()}"];
         }
 
         string boundary = selected.GivenLevel is { } given ? $", level given {NumberText.Screen(given, 3)}"
             : model.Ranking.BoundaryAt(model.Rank) is { } b ? $", boundary {NumberText.Screen(b, 3)}" : "";
         (string sign, string survives) = selected.Survives == true ? (glyphs.Survivor, "survives") : (glyphs.Other, "does not survive");
         string mark = model.IsSelectedMarked ? glyphs.Marked : "";
-        return string.Create(CultureInfo.InvariantCulture, $"{selected.Plan.Code}{mark} {sign} rank {model.Rank}, p {NumberText.P(p)}, adjusted {NumberText.P(adjusted)}{boundary}: {survives}");
+        string verdict = $"{selected.Plan.Code}{mark} {sign} {survives}", numbers = string.Create(CultureInfo.InvariantCulture, $"rank {model.Rank}, p {NumberText.P(p)}, adjusted {NumberText.P(adjusted)}");
+        return [$"{verdict}: {numbers}{boundary}", $"{verdict}: {numbers}"];
     }
 }

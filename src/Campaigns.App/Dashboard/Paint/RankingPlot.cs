@@ -106,30 +106,23 @@ public sealed class RankingPlot
     /// <param name="ranking">The ranked p-values.</param>
     /// <param name="glyphs">The signs.</param>
     /// <param name="overlay">What else is drawn; null for nothing.</param>
-    public static string Key(Ranking ranking, GlyphSet glyphs, RankingOverlay? overlay = null)
+    /// <returns>The ways to say it, the fullest first.</returns>
+    public static IReadOnlyList<string> Key(Ranking ranking, GlyphSet glyphs, RankingOverlay? overlay = null)
     {
         ArgumentNullException.ThrowIfNull(ranking);
         ArgumentNullException.ThrowIfNull(glyphs);
         List<string> parts = [glyphs.Survivor + " survives", glyphs.Other + " does not"];
-        bool isExplored = overlay?.Explored is not null || overlay?.Gained.Count > 0 || overlay?.Lost.Count > 0;
-        if (isExplored)
-        {
-            parts.Add($"{glyphs.Gained} gained  {glyphs.Lost} lost");
-        }
-
         parts.Add(glyphs.Boundary + (ranking.IsOnline ? " level given" : ranking.HasBoundary ? " boundary" : " largest survivor"));
         if (overlay?.Explored is not null)
         {
             parts.Add(glyphs.Explored + " explored");
         }
 
-        if (ranking.FamilySize > ranking.Count)
-        {
-            parts.Add(glyphs.Open + " no result (p = 1)");
-        }
-
-        parts.Add(glyphs.BelowScale + " lower");
-        return string.Join("  ", parts);
+        bool hasOpen = ranking.FamilySize > ranking.Count;
+        string lower = glyphs.BelowScale + " lower";
+        string full = string.Join("  ", [.. parts, .. hasOpen ? [glyphs.Open + " no result (p = 1)"] : (string[])[], lower]);
+        string brief = string.Join("  ", [.. parts, .. hasOpen ? [glyphs.Open + " no result"] : (string[])[], lower]);
+        return [full, brief, brief.Replace("  ", " ", StringComparison.Ordinal)];
     }
 
     private static int ShownOf(Ranking ranking, bool isNear) =>

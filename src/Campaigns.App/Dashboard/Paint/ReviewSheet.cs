@@ -24,7 +24,7 @@ public static class ReviewSheet
         DetailSheet sheet = new(width, glyphs);
         if (reviews.Review < 0)
         {
-            sheet.Line($"No review was taken yet; 'campaigns review {campaign}' takes one.", Ink.Open);
+            sheet.Line($"No review was taken yet; {StepNames.Keys(campaign).Review(campaign)} takes one.", Ink.Open);
             return sheet.Painted();
         }
 

@@ -109,22 +109,41 @@ public static class RiskCurvePlot
         }
     }
 
+    // The risk stays as it is from one test to the next: every curve is a line of steps, and where tests stand apart a mark of the curve stands at each of them.
     private static void Curves(TextCanvas canvas, IReadOnlyList<RiskPoint> points, int rows, int columns, GlyphSet glyphs)
     {
-        int count = Math.Min(points.Count, columns);
-        foreach (RiskPoint point in Enumerable.Range(0, count).Select(i => points[count == 1 ? 0 : (int)Math.Round((double)i * (points.Count - 1) / (count - 1))]))
+        Steps(canvas, points, p => p.AtMost, rows, columns, glyphs, glyphs.Explored, glyphs.Explored, Ink.Axis);
+        Steps(canvas, points, p => p.AtLeast, rows, columns, glyphs, glyphs.Explored, glyphs.Explored, Ink.Axis);
+        // In plain signs the lines of the curves and of the bounds would look alike.
+        bool isTold = glyphs.Across != glyphs.Explored;
+        Steps(canvas, points, p => p.Independent, rows, columns, glyphs, isTold ? glyphs.Across : glyphs.Mean, glyphs.Mean, Ink.Mean);
+        if (points.All(p => p.Corrected is not null))
         {
-            int x = ColumnOf(point.Tests, points.Count, columns);
-            foreach (double bound in new[] { point.AtMost, point.AtLeast })
+            Steps(canvas, points, p => p.Corrected!.Value.AtLeastOne, rows, columns, glyphs, isTold ? glyphs.Across : glyphs.Survivor, glyphs.Survivor, Ink.Survivor);
+        }
+    }
+
+    private static void Steps(TextCanvas canvas, IReadOnlyList<RiskPoint> points, Func<RiskPoint, double> risk, int rows, int columns, GlyphSet glyphs, string line, string mark, Ink ink)
+    {
+        int before = -1, test = 0;
+        for (int x = Left; x < Left + columns; x++)
+        {
+            bool isTest = false;
+            while (test < points.Count && ColumnOf(test + 1, points.Count, columns) <= x)
             {
-                canvas.Put(x, 1 + RowOf(bound, rows), glyphs.Explored, Ink.Axis);
+                test++;
+                isTest = true;
             }
 
-            canvas.Put(x, 1 + RowOf(point.Independent, rows), glyphs.Mean, Ink.Mean);
-            if (point.Corrected is { } corrected)
+            int y = 1 + RowOf(risk(points[test - 1]), rows);
+            int from = before < 0 ? y : Math.Min(y, before) + 1, to = before < 0 ? y : Math.Max(y, before) - 1;
+            for (int rise = from; rise <= to; rise++)
             {
-                canvas.Put(x, 1 + RowOf(corrected.AtLeastOne, rows), glyphs.Survivor, Ink.Survivor);
+                canvas.Put(x, rise, glyphs.Upright, ink);
             }
+
+            canvas.Put(x, y, isTest ? mark : line, ink);
+            before = y;
         }
     }
 

@@ -35,7 +35,7 @@ public static class RiskWordsPainter
             .. cumulative, .. RiskTable.MayBeFalse(risk),
             .. overview.TestedCount > 0 ? [RiskTable.CorrectedMeans(risk.Corrected is { } corrected ? [corrected] : [])] : (string[])[],
             .. FamilyVerdict.ProcedureOf(standing.Campaign) is OnlineProcedure procedure ? Online(standing, procedure) : [],
-            .. CampaignText.Deviations(overview),
+            .. CampaignText.Deviations(overview, StepNames.Keys(overview.Campaign.Code)),
         ];
     }
 
@@ -43,6 +43,6 @@ public static class RiskWordsPainter
     {
         IEnumerable<string?> late = [OnlineText.WithoutLevel(standing.Experiments.Where(e => e.Entry is not null).Select(e => e.Entry!))];
         string? overlaps = standing.Experiments.Any(e => e.Entry?.Overlaps == true) ? OnlineText.Overlaps : null;
-        return [.. OnlineText.Lines(standing.Overview, procedure), .. late.Append(overlaps).OfType<string>(), .. OnlineText.OnOtherData(standing.Experiments)];
+        return [.. OnlineText.Lines(standing.Overview, procedure, StepNames.Keys(standing.Campaign.Code)), .. late.Append(overlaps).OfType<string>(), .. OnlineText.OnOtherData(standing.Experiments)];
     }
 }

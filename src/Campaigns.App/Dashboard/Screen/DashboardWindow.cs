@@ -42,14 +42,7 @@ public sealed class DashboardWindow : Runnable
         _strip = new CanvasView((width, _) => _names.Paint(model.Page, width), theme) { Y = Pos.Bottom(_heading), Width = Dim.Fill(), Height = 1 };
         _keys = new CanvasView((width, _) => model.Watch.Sentence is { } trouble ? KeysPainter.Paint(trouble, width, glyphs) : KeysPainter.Paint(KeysOf(_pages[model.Page]), width), theme) { Y = Pos.AnchorEnd(1), Width = Dim.Fill(), Height = 1 };
         _strip.Clicked += (x, _) => TurnTo(_names.PageAt(x) ?? model.Page);
-        _keys.Clicked += (x, _) =>
-        {
-            DashboardPage page = _pages[model.Page];
-            if (KeysPainter.KeyAt(KeysOf(page), _keys.Frame.Width, x) is { } at && KeysOf(page)[at] == ActionKeys)
-            {
-                ChooseAction();
-            }
-        };
+        _keys.Clicked += (x, _) => PressAt(x);
         Add(_heading, _strip);
         foreach (DashboardPage page in _pages)
         {
@@ -123,6 +116,9 @@ public sealed class DashboardWindow : Runnable
         base.Dispose(disposing);
     }
 
+    /// <summary>The keys below the page that is shown, the most needed first.</summary>
+    internal IReadOnlyList<(string Key, string Does)> FooterKeys => KeysOf(_pages[_model.Page]);
+
     private static (string Key, string Does) ActionKeys => ("a", "actions");
 
     // Before the keys that turn pages, which no page needs most.
@@ -136,6 +132,30 @@ public sealed class DashboardWindow : Runnable
         }
 
         return keys;
+    }
+
+    // A click on a key's name or its word does what the key does; a filter that is being typed is left first, or it would take the letter.
+    private void PressAt(int x)
+    {
+        DashboardPage page = _pages[_model.Page];
+        if (_model.Watch.Sentence is not null || KeysPainter.NameAt(KeysOf(page), _keys.Frame.Width, x) is not { } name)
+        {
+            return;
+        }
+
+        if (name == DashboardPage.TurnKeys.Key)
+        {
+            TurnTo((_model.Page + 1) % _pages.Count);
+        }
+        else if (KeyNames.Of(name) is { } key)
+        {
+            if (MostFocused is TextBox && KeyNames.IsLetter(name))
+            {
+                page.Entrance.SetFocus();
+            }
+
+            NewKeyDownEvent(key);
+        }
     }
 
     private void ChooseAction()

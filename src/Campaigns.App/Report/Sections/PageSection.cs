@@ -147,7 +147,7 @@ internal sealed class PageSection : ReportSection
     private static IEnumerable<string> Risked(ReportData data)
     {
         CampaignOverview overview = data.Overview;
-        yield return $"{Capital(CampaignText.Goal(overview.Campaign))}, over {Counted.Of(overview.FamilySize, "experiment")}. {RiskTable.Held(overview)}";
+        yield return $"{Sentence.Start(CampaignText.Goal(overview.Campaign))}, over {Counted.Of(overview.FamilySize, "experiment")}. {RiskTable.Held(overview)}";
         yield return RiskTable.Sentences(overview)[0];
         if (RiskTable.MayBeFalse(data.Risk) is { Count: > 0 } sentences)
         {
@@ -183,8 +183,6 @@ internal sealed class PageSection : ReportSection
 
     /// <summary>Lines of a row, whose first two columns may be wrapped.</summary>
     private static double LinesOf(Cell[] row) => Math.Max(SheetRoom.Of(row[0].AsText, LettersOfName), SheetRoom.Of(row[1].AsText, LettersOfGroups)) * RowHeight + RowFrame;
-
-    private static string Capital(string clause) => char.ToUpperInvariant(clause[0]) + clause[1..];
 
     /// <summary>A text as far as there is room for it, cut between words; all of it stands in the full record.</summary>
     private static string Shorten(string text, int longest)

@@ -2,6 +2,7 @@ using Campaigns.App.Commands;
 using Campaigns.App.Figures;
 using Campaigns.App.Output;
 using Campaigns.App.Report.Document;
+using Campaigns.App.Wording;
 
 namespace Campaigns.App.Report.Sections;
 
@@ -24,12 +25,10 @@ internal sealed class RiskSection : ReportSection
         yield return new FigureBlock(RiskFigure.Of(data.Standing, data.RiskCurve));
         RowTable risk = RiskTable.Of([data.Risk], withTotal: false);
         Cell[] values = risk.Rows.Single();
-        yield return new FactList([.. risk.Columns.Select((c, i) => (Column: c, Value: values[i])).Where(f => f.Column.Heading is not null && f.Column.Name != "campaign").Select(f => new Fact(Capital(f.Column.Heading!), f.Value))]);
+        yield return new FactList([.. risk.Columns.Select((c, i) => (Column: c, Value: values[i])).Where(f => f.Column.Heading is not null && f.Column.Name != "campaign").Select(f => new Fact(Sentence.Start(f.Column.Heading!), f.Value))]);
         foreach (string sentence in risk.Below)
         {
             yield return new Paragraph(sentence, Tone.Note);
         }
     }
-
-    private static string Capital(string text) => char.ToUpperInvariant(text[0]) + text[1..];
 }

@@ -239,10 +239,10 @@ internal sealed class ExperimentSink : IDisposable
         $"{ShownText.Quote(code)} is no experiment of the campaign '{_campaign.Campaign.Code}'{Suggest(code, _codes ??= ExperimentDirectory.Codes(_catalog, _campaign.Id))}; correct the file, or plan the experiment in another campaign.";
 
     private static string Closed(string code) =>
-        $"experiment {ShownText.Quote(code)} was tested already and is closed to more data: looking, then adding, then looking again is another way to a false positive. Register a new experiment that confirms it (plan column confirms) and put the new data there, or give --amend REASON to have them recorded as an amendment.";
+        $"experiment {ShownText.Quote(code)} was tested already and is closed to more data: looking, then adding, then looking again is another way to a false positive. Register a new experiment that confirms it (plan column confirms) and put the new data there, or give --amend REASON (in the dashboard the field 'amend because') to have them recorded as an amendment.";
 
     private string Withdrawn(string code) =>
-        $"experiment {ShownText.Quote(code)} is withdrawn and takes no measurements. Leave its rows out, or take it in again first: 'campaigns withdraw {_campaign.Campaign.Code} {code} --take-back --reason TEXT'.";
+        $"experiment {ShownText.Quote(code)} is withdrawn and takes no measurements. Leave its rows out, or take it in again first: 'campaigns withdraw {_campaign.Campaign.Code} {code} --take-back --reason TEXT', in the dashboard key w.";
 
     private static string Suggest(string word, IReadOnlyList<string> known) =>
         Nearest.Of(word, known) is { } near ? $" (did you mean '{near}'?)" : "";

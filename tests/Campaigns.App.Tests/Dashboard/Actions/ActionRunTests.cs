@@ -43,8 +43,9 @@ public sealed class ActionRunTests : IDisposable
         Assert.True(run.Stage == ActionStage.Done, string.Join('\n', run.Sentences));
         Ran ran = _place.Place.Run([.. command.Select(w => w.EndsWith(".csv", StringComparison.Ordinal) && key == 'l' ? _place.Place.At(w) : w), "--catalog", copy, "--as", "Ada"]).Well();
         Assert.Equal(ActionPlace.DigestOf(copy), _place.Digest);
-        string said = Flat(ran.Out + ran.Error);
-        Assert.All(run.Sentences.Where(s => !s.StartsWith("The page Experiments", StringComparison.Ordinal)), s => Assert.Contains(Flat(s), said, StringComparison.Ordinal));
+        string said = Flat(ran.Out + ran.Error).Replace("'campaigns test mini'", "key t", StringComparison.Ordinal).Replace("'campaigns review mini'", "key v", StringComparison.Ordinal);
+        string[] ofDashboard = ["The page Experiments", "Key t tests what", "Results and survivors count this from now on; key v"];
+        Assert.All(run.Sentences.Where(s => !ofDashboard.Any(o => s.StartsWith(o, StringComparison.Ordinal))), s => Assert.Contains(Flat(s), said, StringComparison.OrdinalIgnoreCase));
         Assert.True(run.Next());
     }
 
@@ -63,8 +64,65 @@ public sealed class ActionRunTests : IDisposable
             ],
             run.Sentences);
         place.Enter(run);
-        Assert.Equal(["Tested 2 experiments of mini; 1 left alone because planned values are missing."], run.Sentences);
+        Assert.Equal(["Tested 2 experiments of mini; 1 left alone because planned values are missing.", "Results and survivors count this from now on; key v takes it into a review."], run.Sentences);
         Assert.Equal(2, place.Model.Standing.TestedCount);
+    }
+
+    [Fact]
+    public void The_preview_of_a_file_holds_it_against_the_plan()
+    {
+        string file = _place.Place.Write("w2.csv", "experiment,group,value\nE3,a,1\nE3,a,1.1\nE3,b,9\nE3,b,9.1\nE4,a,1\nE4,a,2\nE4,a,3\n");
+        using ActionRun run = _place.Enter(_place.Begin('l', ("file", file)));
+        Assert.Equal(
+            [
+                "w2.csv will be loaded: 7 rows for 2 experiments.",
+                "In the file: 2 of 4 planned experiments: E3, E4.",
+                "Complete with it: 1 (E3).",
+                "Short of planned values even with it: 1 (E4: 2 of 4 planned replicates, 1 of 2 groups in the file).",
+                "The record names as who did it: Ada (account lab).",
+            ],
+            run.Sentences);
+        _place.Enter(run);
+        Assert.Equal("Key t tests what is complete.", run.Sentences[^1]);
+
+        string one = _place.Place.Write("w3.csv", "experiment,group,value\nE4,b,1\nE4,b,2\n");
+        using ActionRun rest = _place.Enter(_place.Begin('l', ("file", one)));
+        Assert.Contains("Complete with it: 1 (E4).", rest.Sentences);
+        using ActionPlace place = new();
+        using ActionRun first = place.Enter(place.Begin('l', ("file", place.Place.Write("w4.csv", "experiment,group,value\nE3,a,1\n"))));
+        Assert.Contains("Planned and without any value from any file: 1 (E4).", first.Sentences);
+        using ActionRun wrong = place.Enter(place.Begin('l', ("file", place.Place.Write("w5.csv", "experiment,group,value\nE9,a,1\n"))));
+        Assert.Equal(ActionStage.Refused, wrong.Stage);
+        Assert.Contains(wrong.Sentences, s => s.Contains("is no experiment of the campaign 'mini'", StringComparison.Ordinal));
+    }
+
+    [Theory]
+    [InlineData('l')]
+    [InlineData('t')]
+    [InlineData('v')]
+    [InlineData('w')]
+    [InlineData('x')]
+    public void A_catalog_that_cannot_be_written_is_told_before_anything_is_promised(char key)
+    {
+        _place.Place.Run("load", ActionPlace.Code, _place.Place.Write("w2.csv", "experiment,group,value\nE3,a,1\nE3,a,1.1\nE3,b,9\nE3,b,9.1\n")).Well();
+        ActionDesk reading = new(_ => Catalog.Catalog.OpenReadOnly(_place.Place.Catalog, _place.Place.Clock), _place.Desk.Actor, _place.Place.Clock);
+        using ActionRun run = new(ActionList.Of(key)!, _place.Model, reading);
+        for (int i = 0; i < run.Fields.Count; i++)
+        {
+            if (run.Fields[i] is { Words.Count: 0, Text.Length: 0 })
+            {
+                run.Type(i, run.Fields[i].Name == "line" ? "4" : "as asked");
+            }
+        }
+
+        _place.Enter(run);
+        Assert.Equal(ActionStage.Refused, run.Stage);
+        string sentence = Assert.Single(run.Sentences);
+        Assert.Contains("cannot be written: the file or its folder is read-only for you.", sentence, StringComparison.Ordinal);
+        Assert.Contains("work on a copy of your own", sentence, StringComparison.Ordinal);
+        using ActionRun report = new(ActionList.Of('o')!, _place.Model, reading);
+        report.Type(0, _place.Place.At("read.html"));
+        Assert.Equal(ActionStage.Preview, _place.Enter(report).Stage);
     }
 
     [Fact]
