@@ -4,6 +4,7 @@ using Campaigns.App.Dashboard;
 using Campaigns.App.Dashboard.Pages;
 using Campaigns.App.Dashboard.Picture;
 using Campaigns.Catalog.Exporting;
+using Campaigns.Catalog.Plans;
 using Campaigns.Domain;
 
 namespace Campaigns.App.Commands;
@@ -72,12 +73,14 @@ internal sealed class DashboardVerb : Verb
     internal static (string Campaign, string Page) Opening(Catalog.Catalog catalog, string? asked)
     {
         const string one = "Experiments", all = "Programme";
+        var campaigns = new CampaignStore(catalog);
         if (asked is not null)
         {
-            return (asked, one);
+            // Refused here where there is none, before the terminal is taken.
+            return (campaigns.Get(asked).Campaign.Code, one);
         }
 
-        string[] codes = [.. new Campaigns.Catalog.Plans.CampaignStore(catalog).All().Select(c => c.Campaign.Code)];
+        string[] codes = [.. campaigns.All().Select(c => c.Campaign.Code)];
         return codes switch
         {
             [string only] => (only, one),

@@ -3,7 +3,6 @@ using Campaigns.App.Dashboard.Canvas;
 using Campaigns.App.Dashboard.Model;
 using Campaigns.App.Dashboard.Pages;
 using Campaigns.App.Dashboard.Screen;
-using Campaigns.App.Output;
 using Campaigns.Statistics.Corrections;
 using Campaigns.Statistics.Online;
 using Terminal.Gui.App;
@@ -13,8 +12,6 @@ namespace Campaigns.App.Dashboard;
 /// <summary>Runs the dashboard in the terminal that the program was started from.</summary>
 public static class DashboardProgram
 {
-    private const string EraseLine = "\r\e[K";
-    private const int Done = 0;
     private const int WrongUsage = 2;
 
     /// <summary>Shows the campaigns of a catalog until the user quits.</summary>
@@ -34,27 +31,33 @@ public static class DashboardProgram
             return WrongUsage;
         }
 
-        // A large campaign takes a good part of a second to read: that is said at once, and the screen's library is loaded meanwhile.
-        Console.Out.Write($"Reading {SafeText.Escape(campaign)} ...");
         Task<DashboardModel> reading = Task.Run(() => new DashboardModel(source, campaign, key => (ErrorProcedure?)CorrectionRegistry.Find(key) ?? OnlineRegistry.Find(key)));
+        GlyphSet glyphs = ascii ? GlyphSet.Ascii : GlyphSet.Full;
         Theme theme = Theme.For(Environment.GetEnvironmentVariable);
         theme.Apply();
         IApplication app = Application.Create();
-        DashboardModel model;
+        using TerminalGuard guard = new(app);
+        app.Init();
+        using LoopPace pace = new(app, TimeProvider.System);
         try
         {
-            model = reading.GetAwaiter().GetResult();
+            using OpeningScreen opening = new(campaign, () => reading.IsCompleted, glyphs, theme);
+            app.Run(opening);
+            if (opening.IsLeft || guard.ExitCode != 0)
+            {
+                return guard.ExitCode;
+            }
         }
         finally
         {
-            Console.Out.Write(EraseLine);
+            // The catalog is closed after this, and must not be closed under whoever reads it.
+            reading.ContinueWith(_ => { }, TaskScheduler.Default).Wait();
         }
 
+        DashboardModel model = reading.GetAwaiter().GetResult();
         model.TurnTo(PageList.PlaceOf(page));
-        using TerminalGuard guard = new(app);
-        app.Init();
-        using DashboardWindow window = new(model, ascii ? GlyphSet.Ascii : GlyphSet.Full, theme, desk);
+        using DashboardWindow window = new(model, glyphs, theme, desk);
         app.Run(window, window.Excuse);
-        return guard.ExitCode is var asked && asked != 0 ? asked : Done;
+        return guard.ExitCode;
     }
 }

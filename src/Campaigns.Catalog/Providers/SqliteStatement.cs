@@ -1,5 +1,6 @@
 using System.Buffers;
 using System.Diagnostics.CodeAnalysis;
+using System.Runtime.CompilerServices;
 using System.Runtime.InteropServices;
 using System.Text;
 using Campaigns.Catalog.Ledger;
@@ -27,6 +28,9 @@ internal sealed class SqliteStatement : IDisposable
 
     // A binding stays from one use to the next, so a parameter that is null again need not be bound again.
     private readonly bool[] _isNull;
+
+    // The text that each column gave last: rows that follow each other often share their test, response and unit, and then one string will do.
+    private string?[]? _texts;
 
     // For cells, which are asked for a million times: guarding the handle at each of them costs several times what the call does. 0 while no row is at hand, and after the end.
     private nint _row;
@@ -321,7 +325,15 @@ internal sealed class SqliteStatement : IDisposable
     private string TextAt(int column)
     {
         nint bytes = NativeCells.Bytes(_row, column);
-        string text = bytes == 0 ? "" : Marshal.PtrToStringUTF8(bytes, NativeCells.ByteCount(_row, column));
+        int count = bytes == 0 ? 0 : NativeCells.ByteCount(_row, column);
+        _texts ??= new string?[sqlite3_column_count(_statement)];
+        if (_texts[column] is { } before && Ascii.Equals(MemoryMarshal.CreateReadOnlySpan(ref Unsafe.AddByteOffset(ref Unsafe.NullRef<byte>(), bytes), count), before))
+        {
+            GC.KeepAlive(_statement);
+            return before;
+        }
+
+        string text = _texts[column] = count == 0 ? "" : Marshal.PtrToStringUTF8(bytes, count);
         GC.KeepAlive(_statement);
 
         // What is no UTF-8 was read as U+FFFD, so that two different texts may have become one.

@@ -70,11 +70,11 @@ public sealed class ReportWordingTests : IDisposable
     }
 
     [Theory]
-    [InlineData(14, 6, "Of the 14 survivors at most 6 are false (95% confidence)")]
-    [InlineData(4, 1, "Of the 4 survivors at most 1 is false (95% confidence)")]
-    [InlineData(4, 0, "Of the 4 survivors none is false (95% confidence)")]
-    [InlineData(1, 0, "The one survivor is not false (95% confidence)")]
-    [InlineData(1, 1, "The one survivor may be false: the bound does not exclude it (95% confidence)")]
+    [InlineData(14, 6, "Of the 14 survivors at most 6 are false (95 % confidence)")]
+    [InlineData(4, 1, "Of the 4 survivors at most 1 is false (95 % confidence)")]
+    [InlineData(4, 0, "Of the 4 survivors none is false (95 % confidence)")]
+    [InlineData(1, 0, "The one survivor is not false (95 % confidence)")]
+    [InlineData(1, 1, "The one survivor may be false: the bound does not exclude it (95 % confidence)")]
     public void The_bound_of_the_survivors_reads_well_for_every_number(int survivors, int falseAtMost, string expected) =>
         Assert.Equal(expected, BoundWording.OfSurvivors(survivors, falseAtMost, 0.95));
 

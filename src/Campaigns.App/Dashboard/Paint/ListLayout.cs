@@ -22,18 +22,34 @@ public sealed class ListLayout
     /// <param name="experiments">Its experiments.</param>
     public ListLayout(IReadOnlyList<ExperimentResult> experiments)
     {
-        _code = Math.Clamp(Longest(experiments, e => CellText.Width(e.Plan.Code)), "experiment".Length, LongestCode);
-        _title = Math.Max("title".Length, Longest(experiments, e => e.Plan.Title.Length));
+        int code = 0, title = 0, values = 0;
+        PValue smallest = PValue.One, smallestAdjusted = PValue.One;
+        Dictionary<(ExperimentStatus, bool), ExperimentResult> statuses = [];
+
+        // Once through all of them: in a large campaign every look at an experiment is a look at far memory.
+        for (int i = 0; i < experiments.Count; i++)
+        {
+            ExperimentResult e = experiments[i];
+            code = Math.Max(code, CellText.Width(e.Plan.Code));
+            title = Math.Max(title, e.Plan.Title.Length);
+            values = Math.Max(values, e.ObservationCount);
+            smallest = Smaller(smallest, e.P);
+            smallestAdjusted = Smaller(smallestAdjusted, e.AdjustedP);
+            statuses.TryAdd((e.Status, e.Amendments.Count > 0), e);
+        }
+
+        _code = Math.Clamp(code, "experiment".Length, LongestCode);
+        _title = Math.Max("title".Length, title);
         ExperimentColumn status = ExperimentColumn.Named("status");
-        _status = Math.Max("status".Length, Longest(experiments, e => status.TextOf(e)!.Length));
-        _shortStatus = Math.Max("status".Length, Longest(experiments, e => status.ShortTextOf!(e).Length));
+        _status = statuses.Values.Select(e => status.TextOf(e)!.Length).Append("status".Length).Max();
+        _shortStatus = statuses.Values.Select(e => status.ShortTextOf!(e).Length).Append("status".Length).Max();
         _fixed = new()
         {
             ["groups"] = "groups".Length,
-            ["n"] = Math.Max(3, Longest(experiments, e => e.ObservationCount).ToString(CultureInfo.InvariantCulture).Length),
+            ["n"] = Math.Max(3, values.ToString(CultureInfo.InvariantCulture).Length),
             ["statistic"] = "statistic".Length,
-            ["p"] = Math.Max(6, SmallestWidth(experiments, e => e.P)),
-            ["adjusted"] = Math.Max("adjusted".Length, SmallestWidth(experiments, e => e.AdjustedP)),
+            ["p"] = Math.Max(6, NumberText.P(smallest).Length),
+            ["adjusted"] = Math.Max("adjusted".Length, NumberText.P(smallestAdjusted).Length),
             ["survives"] = "survives".Length,
         };
     }
@@ -78,29 +94,6 @@ public sealed class ListLayout
     /// <param name="width">Cells of the column.</param>
     public bool IsStatusInFull(int width) => width >= _status;
 
-    private static int Longest(IReadOnlyList<ExperimentResult> experiments, Func<ExperimentResult, int> length)
-    {
-        int longest = 0;
-        foreach (ExperimentResult e in experiments)
-        {
-            longest = Math.Max(longest, length(e));
-        }
-
-        return longest;
-    }
-
     // The text of a p-value is longest where its exponent is, that is at the smallest.
-    private static int SmallestWidth(IReadOnlyList<ExperimentResult> experiments, Func<ExperimentResult, PValue?> p)
-    {
-        PValue smallest = PValue.One;
-        foreach (ExperimentResult e in experiments)
-        {
-            if (p(e) is { } value && value < smallest)
-            {
-                smallest = value;
-            }
-        }
-
-        return NumberText.P(smallest).Length;
-    }
+    private static PValue Smaller(PValue smallest, PValue? p) => p is { } value && value < smallest ? value : smallest;
 }

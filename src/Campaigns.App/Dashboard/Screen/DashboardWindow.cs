@@ -15,7 +15,8 @@ namespace Campaigns.App.Dashboard.Screen;
 public sealed class DashboardWindow : Runnable
 {
     private readonly DashboardModel _model;
-    private readonly IReadOnlyList<DashboardPage> _pages;
+    private readonly PageContext _context;
+    private readonly DashboardPage?[] _pages = new DashboardPage?[PageList.All.Count];
     private readonly PageStrip _names;
     private readonly CanvasView _heading;
     private readonly CanvasView _strip;
@@ -35,22 +36,15 @@ public sealed class DashboardWindow : Runnable
     {
         (_model, _desk, _glyphs, _theme) = (model, desk, glyphs, theme);
         _shown = _before = model.Page;
-        PageContext context = new(model, glyphs, theme);
-        _pages = [.. PageList.All.Select(page => page.Make(context))];
+        _context = new PageContext(model, glyphs, theme);
         _names = new PageStrip([.. PageList.All.Select(p => p.Name)]);
         _heading = new CanvasView((width, _) => HeadingPainter.Paint(model.Heading, width, glyphs, Frame.Height), theme) { Width = Dim.Fill(), Height = Dim.Func(_ => HeadingPainter.HeightOf(model.Heading, Frame.Width, Frame.Height)) };
         _strip = new CanvasView((width, _) => _names.Paint(model.Page, width), theme) { Y = Pos.Bottom(_heading), Width = Dim.Fill(), Height = 1 };
-        _keys = new CanvasView((width, _) => model.Watch.Sentence is { } trouble ? KeysPainter.Paint(trouble, width, glyphs) : KeysPainter.Paint(KeysOf(_pages[model.Page]), width), theme) { Y = Pos.AnchorEnd(1), Width = Dim.Fill(), Height = 1 };
+        _keys = new CanvasView((width, _) => model.Watch.Sentence is { } trouble ? KeysPainter.Paint(trouble, width, glyphs) : KeysPainter.Paint(KeysOf(PageAt(model.Page)), width), theme) { Y = Pos.AnchorEnd(1), Width = Dim.Fill(), Height = 1 };
         _strip.Clicked += (x, _) => TurnTo(_names.PageAt(x) ?? model.Page);
         _keys.Clicked += (x, _) => PressAt(x);
-        Add(_heading, _strip);
-        foreach (DashboardPage page in _pages)
-        {
-            (page.Y, page.Height, page.Visible) = (Pos.Bottom(_strip), Dim.Fill(1), page == _pages[model.Page]);
-            Add(page);
-        }
-
-        Add(_keys);
+        Add(_heading, _strip, _keys);
+        PageAt(model.Page).Visible = true;
         model.Changed += ShowChange;
     }
 
@@ -60,7 +54,7 @@ public sealed class DashboardWindow : Runnable
         base.OnIsRunningChanged(newIsRunning);
         if (newIsRunning)
         {
-            _pages[_model.Page].Entrance.SetFocus();
+            PageAt(_model.Page).Entrance.SetFocus();
         }
     }
 
@@ -77,7 +71,7 @@ public sealed class DashboardWindow : Runnable
         }
         else if (key == Key.F1 || key == new Key('?'))
         {
-            TurnTo(_pages.Count - 1);
+            TurnTo(_pages.Length - 1);
         }
         else if (key == Key.F5)
         {
@@ -91,7 +85,7 @@ public sealed class DashboardWindow : Runnable
         {
             Begin(action);
         }
-        else if (key.AsRune.Value - '1' is var page && page >= 0 && page < _pages.Count)
+        else if (key.AsRune.Value - '1' is var page && page >= 0 && page < _pages.Length)
         {
             TurnTo(page);
         }
@@ -117,7 +111,20 @@ public sealed class DashboardWindow : Runnable
     }
 
     /// <summary>The keys below the page that is shown, the most needed first.</summary>
-    internal IReadOnlyList<(string Key, string Does)> FooterKeys => KeysOf(_pages[_model.Page]);
+    internal IReadOnlyList<(string Key, string Does)> FooterKeys => KeysOf(PageAt(_model.Page));
+
+    // Made when it is first turned to: whoever opens a campaign waits for one page only.
+    private DashboardPage PageAt(int place)
+    {
+        if (_pages[place] is not { } page)
+        {
+            _pages[place] = page = PageList.All[place].Make(_context);
+            (page.Y, page.Height, page.Visible) = (Pos.Bottom(_strip), Dim.Fill(1), false);
+            Add(page);
+        }
+
+        return page;
+    }
 
     private static (string Key, string Does) ActionKeys => ("a", "actions");
 
@@ -137,7 +144,7 @@ public sealed class DashboardWindow : Runnable
     // A click on a key's name or its word does what the key does; a filter that is being typed is left first, or it would take the letter.
     private void PressAt(int x)
     {
-        DashboardPage page = _pages[_model.Page];
+        DashboardPage page = PageAt(_model.Page);
         if (_model.Watch.Sentence is not null || KeysPainter.NameAt(KeysOf(page), _keys.Frame.Width, x) is not { } name)
         {
             return;
@@ -145,7 +152,7 @@ public sealed class DashboardWindow : Runnable
 
         if (name == DashboardPage.TurnKeys.Key)
         {
-            TurnTo((_model.Page + 1) % _pages.Count);
+            TurnTo((_model.Page + 1) % _pages.Length);
         }
         else if (KeyNames.Of(name) is { } key)
         {
@@ -188,7 +195,7 @@ public sealed class DashboardWindow : Runnable
 
     private void Back()
     {
-        if (!_pages[_model.Page].Back() && _model.Page == _pages.Count - 1)
+        if (!PageAt(_model.Page).Back() && _model.Page == _pages.Length - 1)
         {
             TurnTo(_before);
         }
@@ -199,9 +206,9 @@ public sealed class DashboardWindow : Runnable
         if (page != _model.Page)
         {
             _before = _model.Page;
-            if (_pages[page] is HelpPage help)
+            if (PageAt(page) is HelpPage help)
             {
-                help.Explain(PageList.All[_before].Name, _pages[_before]);
+                help.Explain(PageList.All[_before].Name, PageAt(_before));
             }
 
             _model.Watch.Look();
@@ -231,12 +238,13 @@ public sealed class DashboardWindow : Runnable
         if (_shown != _model.Page)
         {
             _shown = _model.Page;
-            for (int i = 0; i < _pages.Count; i++)
+            DashboardPage shown = PageAt(_shown);
+            foreach (DashboardPage page in _pages.OfType<DashboardPage>())
             {
-                _pages[i].Visible = i == _shown;
+                page.Visible = page == shown;
             }
 
-            _pages[_shown].Entrance.SetFocus();
+            shown.Entrance.SetFocus();
         }
 
         foreach (CanvasView part in new[] { _heading, _strip, _keys })
