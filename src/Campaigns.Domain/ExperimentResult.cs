@@ -6,6 +6,10 @@ namespace Campaigns.Domain;
 /// <summary>One experiment as it stands: its plan, its test and what the campaign's correction makes of it.</summary>
 public sealed record ExperimentResult
 {
+    private PValue? _adjustedP;
+    private bool? _survives;
+    private FamilyStanding? _family;
+
     /// <summary>What was planned.</summary>
     public required PlannedExperiment Plan { get; init; }
 
@@ -37,13 +41,25 @@ public sealed record ExperimentResult
     public PValue? P { get; init; }
 
     /// <summary>The p-value adjusted over the family; null without a result.</summary>
-    public PValue? AdjustedP { get; init; }
+    public PValue? AdjustedP
+    {
+        get => _adjustedP;
+        init => _adjustedP = value;
+    }
 
     /// <summary>Whether the adjusted p-value is at most the level; null without a result. In an online campaign, the standing decision.</summary>
-    public bool? Survives { get; init; }
+    public bool? Survives
+    {
+        get => _survives;
+        init => _survives = value;
+    }
 
     /// <summary>The family in which it is corrected, in figures; null where it was read without its campaign.</summary>
-    public FamilyStanding? Family { get; init; }
+    public FamilyStanding? Family
+    {
+        get => _family;
+        init => _family = value;
+    }
 
     /// <summary>Its place in a stream; null for a batch correction, and before it was registered.</summary>
     public StreamEntry? Entry { get; init; }
@@ -74,4 +90,7 @@ public sealed record ExperimentResult
 
     /// <summary>Deviations from the plan: reasons of the amendments by which values came in after the test, values left out, decisions to withdraw it, changes of its sealed plan, and a test short of the planned values; empty where there are none.</summary>
     public IReadOnlyList<string> Amendments { get; init; } = [];
+
+    /// <summary>Puts the verdict in, where nobody else has seen the experiment yet: a copy of each would be half the memory of a large campaign.</summary>
+    internal void Judge(PValue? adjusted, bool? survives, FamilyStanding family) => (_adjustedP, _survives, _family) = (adjusted, survives, family);
 }

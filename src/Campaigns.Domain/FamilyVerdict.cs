@@ -77,6 +77,37 @@ public static class FamilyVerdict
         return judged;
     }
 
+    /// <summary>The same for experiments that were just read and that nobody else holds: a batch verdict is put into them instead of into copies.</summary>
+    /// <param name="own">As in <see cref="Apply(IReadOnlyList{ExperimentResult}, CampaignVerdict)"/>.</param>
+    /// <param name="verdict">The verdict on those that have a p-value.</param>
+    /// <returns>The experiments, judged, in the same order.</returns>
+    public static IReadOnlyList<ExperimentResult> ApplyToOwn(IReadOnlyList<ExperimentResult> own, CampaignVerdict verdict)
+    {
+        ArgumentNullException.ThrowIfNull(own);
+        ArgumentNullException.ThrowIfNull(verdict);
+        if (verdict.Batch is not null)
+        {
+            return Apply(own, verdict);
+        }
+
+        Func<ExperimentResult, FamilyStanding> familyOf = FamiliesOf(verdict);
+        int next = 0;
+        for (int i = 0; i < own.Count; i++)
+        {
+            if (own[i].P is null)
+            {
+                own[i].Judge(null, null, familyOf(own[i]));
+            }
+            else
+            {
+                own[i].Judge(verdict.Adjusted[next], verdict.Survives[next], verdict.FamilyAt(next));
+                next++;
+            }
+        }
+
+        return own;
+    }
+
     /// <summary>The experiments of a campaign, judged: all of them are counted.</summary>
     /// <param name="campaign">Level, correction, families.</param>
     /// <param name="experiments">Every experiment of the campaign, those without a result included.</param>

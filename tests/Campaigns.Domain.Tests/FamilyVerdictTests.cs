@@ -41,6 +41,17 @@ public sealed class FamilyVerdictTests
     }
 
     [Fact]
+    public void A_verdict_put_into_the_experiments_is_the_one_put_into_copies()
+    {
+        ExperimentResult[] own = [Result("b", 0.5), Result("untested", null), Result("a", 0.03), Result("d", 0.01)];
+        CampaignVerdict verdict = FamilyVerdict.Judge(Family, FamilyMembers.Of(Family, own));
+        IReadOnlyList<ExperimentResult> copies = FamilyVerdict.Apply(own, verdict);
+        Assert.All(own, e => Assert.Null(e.Family));
+        Assert.Equal(copies, FamilyVerdict.ApplyToOwn(own, verdict));
+        Assert.Equal(copies, own);
+    }
+
+    [Fact]
     public void A_family_smaller_than_its_results_is_a_fault_of_the_caller() =>
         Assert.ThrowsAny<ArgumentException>(() => FamilyVerdict.Judge(Family, FamilyMembers.OneFamily(new[] { PValue.FromValue(0.1), PValue.FromValue(0.2) }, 1)));
 

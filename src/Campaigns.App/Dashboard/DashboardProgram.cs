@@ -3,6 +3,7 @@ using Campaigns.App.Dashboard.Canvas;
 using Campaigns.App.Dashboard.Model;
 using Campaigns.App.Dashboard.Pages;
 using Campaigns.App.Dashboard.Screen;
+using Campaigns.App.Output;
 using Campaigns.Statistics.Corrections;
 using Campaigns.Statistics.Online;
 using Terminal.Gui.App;
@@ -12,6 +13,7 @@ namespace Campaigns.App.Dashboard;
 /// <summary>Runs the dashboard in the terminal that the program was started from.</summary>
 public static class DashboardProgram
 {
+    private const string FirstCell = "\e[H";
     private const int WrongUsage = 2;
 
     /// <summary>Shows the campaigns of a catalog until the user quits.</summary>
@@ -31,32 +33,27 @@ public static class DashboardProgram
             return WrongUsage;
         }
 
+        // A large campaign takes a good part of a second to read: the screen's library gets ready meanwhile, and what is typed waits.
         Task<DashboardModel> reading = Task.Run(() => new DashboardModel(source, campaign, key => (ErrorProcedure?)CorrectionRegistry.Find(key) ?? OnlineRegistry.Find(key)));
-        GlyphSet glyphs = ascii ? GlyphSet.Ascii : GlyphSet.Full;
+        DashboardModel model;
         Theme theme = Theme.For(Environment.GetEnvironmentVariable);
         theme.Apply();
         IApplication app = Application.Create();
         using TerminalGuard guard = new(app);
-        app.Init();
-        using LoopPace pace = new(app, TimeProvider.System);
         try
         {
-            using OpeningScreen opening = new(campaign, () => reading.IsCompleted, glyphs, theme);
-            app.Run(opening);
-            if (opening.IsLeft || guard.ExitCode != 0)
-            {
-                return guard.ExitCode;
-            }
+            app.Init();
+            Console.Out.Write($"{FirstCell}Reading {SafeText.Escape(campaign)} ...");
         }
         finally
         {
-            // The catalog is closed after this, and must not be closed under whoever reads it.
-            reading.ContinueWith(_ => { }, TaskScheduler.Default).Wait();
+            // Whatever happens, nobody closes the catalog under whoever reads it.
+            model = reading.GetAwaiter().GetResult();
         }
 
-        DashboardModel model = reading.GetAwaiter().GetResult();
         model.TurnTo(PageList.PlaceOf(page));
-        using DashboardWindow window = new(model, glyphs, theme, desk);
+        using LoopPace pace = new(app, TimeProvider.System);
+        using DashboardWindow window = new(model, ascii ? GlyphSet.Ascii : GlyphSet.Full, theme, desk);
         app.Run(window, window.Excuse);
         return guard.ExitCode;
     }

@@ -30,7 +30,7 @@ public sealed class StandingReader(Catalog catalog)
         CampaignVerdict verdict = FamilyVerdict.Judge(stored.Campaign, FamilyMembers.Of(stored.Campaign, experiments));
         return new CampaignStanding(
             stored.Campaign,
-            FamilyVerdict.Apply(experiments, verdict),
+            FamilyVerdict.ApplyToOwn(experiments, verdict),
             experiments.Count(e => !e.LeftFamily),
             latest?.Head,
             new FamilyReader(catalog).ResultsAfter(stored.Id, latest?.LastRun ?? 0))

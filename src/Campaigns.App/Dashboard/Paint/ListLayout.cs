@@ -24,7 +24,8 @@ public sealed class ListLayout
     {
         int code = 0, title = 0, values = 0;
         PValue smallest = PValue.One, smallestAdjusted = PValue.One;
-        Dictionary<(ExperimentStatus, bool), ExperimentResult> statuses = [];
+        List<ExperimentResult> statuses = [];
+        (ExperimentStatus?, bool) before = (null, false);
 
         // Once through all of them: in a large campaign every look at an experiment is a look at far memory.
         for (int i = 0; i < experiments.Count; i++)
@@ -35,14 +36,18 @@ public sealed class ListLayout
             values = Math.Max(values, e.ObservationCount);
             smallest = Smaller(smallest, e.P);
             smallestAdjusted = Smaller(smallestAdjusted, e.AdjustedP);
-            statuses.TryAdd((e.Status, e.Amendments.Count > 0), e);
+            if (before != (e.Status, e.Amendments.Count > 0))
+            {
+                before = (e.Status, e.Amendments.Count > 0);
+                statuses.Add(e);
+            }
         }
 
         _code = Math.Clamp(code, "experiment".Length, LongestCode);
         _title = Math.Max("title".Length, title);
         ExperimentColumn status = ExperimentColumn.Named("status");
-        _status = statuses.Values.Select(e => status.TextOf(e)!.Length).Append("status".Length).Max();
-        _shortStatus = statuses.Values.Select(e => status.ShortTextOf!(e).Length).Append("status".Length).Max();
+        _status = statuses.Select(e => status.TextOf(e)!.Length).Append("status".Length).Max();
+        _shortStatus = statuses.Select(e => status.ShortTextOf!(e).Length).Append("status".Length).Max();
         _fixed = new()
         {
             ["groups"] = "groups".Length,

@@ -41,7 +41,10 @@ public sealed class LoopPace : IDisposable
 
     private void OnMouse(object? sender, Mouse mouse) => Hurry();
 
-    private void OnTurn(object? sender, EventArgs<IApplication?> e)
+    private void OnTurn(object? sender, EventArgs<IApplication?> e) => Turn();
+
+    /// <summary>Looks at the clock, as in every turn of the loop.</summary>
+    internal void Turn()
     {
         if (_clock.GetElapsedTime(_last) > Lasting)
         {
