@@ -11,9 +11,10 @@ usage: dashboard.py PROGRAM CATALOG CODE [--size 120x40] [--times N] [--opens N]
   --opens    starts of the program (default 7)
 
 Prints a table in Markdown: median, 90th percentile and longest time, in milliseconds, from the key to the screen that
-shows what it did; for opening, from the command to the first page. The program looks for keys 25 times a second, so up to
-40 ms belong to every key. 'seen' is what looking at the screen takes by itself. 'CPU' is the median of the processor time
-that the program itself took meanwhile, all threads together: what remains of the figures where the machine is shared.
+shows what it did; for opening, from the command to the first page. The program looks for keys 100 times a second while they
+come and 25 times after two seconds without one, so up to 10 ms belong to every key here.
+'seen' is what looking at the screen takes by itself. 'CPU' is the median of the processor time that the program itself took
+meanwhile, all threads together: what remains of the figures where the machine is shared.
 """
 import argparse
 import os
