@@ -153,7 +153,12 @@ def main():
         print(f"{options.size}, load of the machine {os.getloadavg()[0]:.1f}\n")
         print("| | times | median ms | 90 % | longest | CPU | at most |\n|---|---|---|---|---|---|---|")
         opens, reads = [], []
-        for _ in range(options.opens):
+        for turn in range(options.opens):
+            if turn > 0:
+                # A program that is still ending would take its share of the machine.
+                terminal.press("q")
+                terminal.wait(lambda _: terminal.ask("display-message -p '#{pane_dead}'")[0] == "1")
+                time.sleep(0.5)
             began = time.perf_counter()
             terminal.start()
             terminal.wait(lambda screen: screen.strip() and "Pane is dead" not in screen)
