@@ -159,13 +159,15 @@ public sealed class DashboardScreenTests
         Assert.Contains("values by group", screen.Text, StringComparison.Ordinal);
     }
 
-    [Fact]
-    public void Control_and_q_quit_even_from_the_filter()
+    [Theory]
+    [InlineData('q')]
+    [InlineData('c')]
+    public void Control_and_q_or_c_quit_even_from_the_filter(char letter)
     {
         using TestScreen screen = new(80, 24, Standing);
         screen.Press(Key.F3, Key.Q);
         Assert.False(screen.IsStopped);
-        screen.Press(Key.Q.WithCtrl);
+        screen.Press(new Key(letter).WithCtrl);
         Assert.True(screen.IsStopped);
     }
 

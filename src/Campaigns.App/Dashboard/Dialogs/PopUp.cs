@@ -67,7 +67,7 @@ internal abstract class PopUp : Runnable
             return false;
         }
 
-        if (key == Key.Q.WithCtrl)
+        if (key == Key.Q.WithCtrl || key == Key.C.WithCtrl)
         {
             IsLeaving = true;
             App?.RequestStop(this);

@@ -15,7 +15,7 @@ public static class HelpPainter
         ("l t v w x o", "at once: load a file, test, take a review, withdraw experiments, exclude an observation, write the report; each shows first what will happen"),
         ("F5", "load the campaign again"),
         ("F1 or ?", "this page, about the one you came from; Esc goes back"),
-        ("q or Ctrl+Q", "quit"),
+        ("q, Ctrl+Q, Ctrl+C", "quit"),
     ];
 
     /// <summary>Paints the page, as high as it needs.</summary>

@@ -61,7 +61,7 @@ public sealed class DashboardWindow : Runnable
     /// <inheritdoc/>
     protected override bool OnKeyDown(Key key)
     {
-        if (key == Key.Q || key == Key.Q.WithCtrl)
+        if (key == Key.Q || key == Key.Q.WithCtrl || key == Key.C.WithCtrl)
         {
             App?.RequestStop(this);
         }

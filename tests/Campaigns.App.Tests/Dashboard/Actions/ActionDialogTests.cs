@@ -266,8 +266,10 @@ public sealed class ActionDialogTests : IDisposable
         Assert.DoesNotContain("actions", screen.Press(Key.A, Key.L).Text, StringComparison.Ordinal);
     }
 
-    [Fact]
-    public void Control_and_q_leave_the_dashboard_from_a_dialog()
+    [Theory]
+    [InlineData('q')]
+    [InlineData('c')]
+    public void Control_and_q_or_c_leave_the_dashboard_from_a_dialog(char letter)
     {
         using TestScreen screen = Screen(80, 24);
         screen.InDialog(Key.L, Leave());
@@ -276,7 +278,7 @@ public sealed class ActionDialogTests : IDisposable
         IEnumerable<int> Leave()
         {
             yield return 0;
-            screen.Press(Key.Q.WithCtrl);
+            screen.Press(new Key(letter).WithCtrl);
             yield return 0;
         }
     }
