@@ -2,6 +2,7 @@ using Campaigns.App.Dashboard.Canvas;
 using Campaigns.App.Dashboard.Model;
 using Campaigns.App.Dashboard.Paint;
 using Campaigns.App.Wording;
+using Campaigns.Domain;
 using Terminal.Gui.Input;
 
 namespace Campaigns.App.Tests.Dashboard;
@@ -66,6 +67,17 @@ public sealed class NothingCutTests
         {
             Assert.DoesNotContain(Cut, screen.Press(Key.N).Text + screen.Press(Key.N).Text, StringComparison.Ordinal);
         }
+    }
+
+    [Theory]
+    [InlineData(58)]
+    [InlineData(79)]
+    public void The_picture_of_the_risk_says_whole_why_families_have_no_corrected_curve(int width)
+    {
+        CampaignStanding families = SampleCampaigns.InFamilies();
+        IReadOnlyList<RiskPoint> curve = RiskCurve.Of(families, families.Experiments.ToDictionary(e => e.Plan.Code, e => 1L));
+        Assert.Null(curve[^1].Corrected);
+        Assert.Contains("corrected: none over several families", RiskCurvePlot.Paint(curve, 1, width, 30, GlyphSet.Full).ToString(), StringComparison.Ordinal);
     }
 
     [Fact]

@@ -149,7 +149,7 @@ public static class RiskCurvePlot
 
     private static string Legend(IReadOnlyList<RiskPoint> points, GlyphSet glyphs) =>
         $"{glyphs.Mean} without correction (independent tests)  {glyphs.Explored} its bounds (any dependence)"
-        + (points[^1].Corrected is { } corrected ? $"  {glyphs.Survivor} with the correction, {(corrected.IsExact ? "exactly" : "at most")}" : "  (corrected in several families or streams: no one figure)");
+        + (points[^1].Corrected is { } corrected ? $"  {glyphs.Survivor} with the correction, {(corrected.IsExact ? "exactly" : "at most")}" : "  corrected: none over several families");
 
     private static int ColumnOf(int test, int tests, int columns) => Left + (tests == 1 ? 0 : (int)Math.Round((test - 1.0) * (columns - 1) / (tests - 1)));
 
